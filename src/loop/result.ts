@@ -1,0 +1,102 @@
+import type { RunStatus } from './plan.ts';
+
+/** A run over a road: how it ended, the record by bin, the account of energy. */
+export interface LoopResult {
+  readonly status: RunStatus;
+  /** Where it ended: horizontal distance [m], time [s]. */
+  readonly endDistance: number;
+  readonly endTime: number;
+  readonly bins: BinRecord;
+  readonly ledger: Ledger;
+  /** About one a kilometre of the road, the first at the start. */
+  readonly checkpoints: readonly Checkpoint[];
+}
+
+/**
+ * Per distance bin: bin i covers [edge[i], edge[i + 1]) of horizontal distance. A controller sample belongs to the
+ * bin in which it starts. `size` bins were reached; `edge` has size + 1 entries. SI.
+ */
+export interface BinRecord {
+  readonly size: number;
+  readonly edge: Float64Array;
+  /** Time at entry, from the start of the run [s], and time spent [s]. */
+  readonly timeAt: Float64Array;
+  readonly time: Float64Array;
+  readonly setSpeed: Float64Array;
+  readonly speedMean: Float64Array;
+  readonly speedMin: Float64Array;
+  readonly speedMax: Float64Array;
+  /** Error e = true speed - set speed (in terms of `setSpeedIs`): time integrals of e and e^2, extremes. */
+  readonly errorMean: Float64Array;
+  readonly errorSquare: Float64Array;
+  readonly errorMin: Float64Array;
+  readonly errorMax: Float64Array;
+  /** Actuator throttle. */
+  readonly throttleMean: Float64Array;
+  readonly throttleMin: Float64Array;
+  readonly throttleMax: Float64Array;
+  /** Sum of |change of command| over the samples. */
+  readonly throttleTravel: Float64Array;
+  /** Time with the command at the upper, at the lower limit, with the actuator at its rate limit, with the brake on [s]. */
+  readonly timeUpper: Float64Array;
+  readonly timeLower: Float64Array;
+  readonly timeRate: Float64Array;
+  readonly timeBrake: Float64Array;
+  /** Time with |e| inside each band, band by band: size x bands.length, row by row [s]. */
+  readonly timeInBand: Float64Array;
+  readonly gear: Uint8Array;
+  /** Mean wheel force of the drive [N], mean wheel power [W], work in the bin: drive (positive part), regeneration (negative part), brake [J]. */
+  readonly driveForce: Float64Array;
+  readonly wheelPower: Float64Array;
+  readonly driveWork: Float64Array;
+  readonly regenerationWork: Float64Array;
+  readonly brakeWork: Float64Array;
+}
+
+/** Energies over the whole run [J]. drive + regeneration = aero + rolling + climb + brake + kinetic, to the residual. */
+export interface Ledger {
+  /** Work of the drive while it pushes (>= 0) and while it holds back (<= 0). */
+  readonly drive: number;
+  readonly regeneration: number;
+  readonly aero: number;
+  readonly rolling: number;
+  readonly climb: number;
+  readonly brake: number;
+  readonly kinetic: number;
+  /** Drawn from battery where the drive has an efficiency; null where not. */
+  readonly battery: number | null;
+  /** Sum of the terms over the integral of the terms' magnitudes. */
+  readonly residual: number;
+}
+
+/** All state of a run at a sample: a copy of its flat arrays. */
+export interface Checkpoint {
+  /** Horizontal distance [m], station, time [s]. */
+  readonly distance: number;
+  readonly station: number;
+  readonly time: number;
+  readonly state: Float64Array;
+}
+
+/** Every controller sample of a stretch. Equal lengths; SI; angles none. */
+export interface FullSeries {
+  readonly size: number;
+  readonly time: Float64Array;
+  readonly distance: Float64Array;
+  readonly setSpeed: Float64Array;
+  readonly reference: Float64Array;
+  readonly speed: Float64Array;
+  readonly measured: Float64Array;
+  /** Command before it is limited, and throttle at the actuator. */
+  readonly command: Float64Array;
+  readonly actuator: Float64Array;
+  readonly proportional: Float64Array;
+  readonly integral: Float64Array;
+  readonly feedforward: Float64Array;
+  /** LIMIT_ bits. */
+  readonly limit: Uint8Array;
+  readonly gear: Uint8Array;
+  readonly driveForce: Float64Array;
+  readonly brakeForce: Float64Array;
+  readonly acceleration: Float64Array;
+}

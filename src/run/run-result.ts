@@ -1,0 +1,63 @@
+import type { Candidate } from '../control/setup.ts';
+import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
+import type { FullSeries, LoopResult } from '../loop/result.ts';
+import type { Warning } from '../problems/warning.ts';
+import type { Road } from '../road/road.ts';
+import type { Demand, FigureValues, Hill, RequirementFinding, Segment } from '../study/findings.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+
+/** Everything one run of a case found: what the report, the files and both programs read. Plain data. */
+export interface RunResult {
+  /** Version of the shape of summary.json. */
+  readonly schemaVersion: string;
+  readonly toolVersion: string;
+  readonly title: string;
+  /** Name of the case file without folder and ending. */
+  readonly caseName: string;
+  /** Files read, by the name written in the case (the case itself first). */
+  readonly inputs: readonly InputFile[];
+  /** Changes given beside the case, as typed: `hold.set_speed_kmh=70`. */
+  readonly overrides: readonly string[];
+  readonly road: Road;
+  readonly vehicle: Vehicle;
+  readonly hold: HoldPlan;
+  readonly rider: RiderPlan;
+  readonly scheme: 'exact' | 'fast';
+  /** Half-width of the band that the figures and charts use [m/s]. */
+  readonly band: number;
+  readonly candidates: readonly CandidateResult[];
+  readonly demand: Demand;
+  readonly hills: readonly Hill[];
+  readonly segmentsBy: 'length' | 'terrain';
+  readonly segments: readonly Segment[];
+  readonly requirements: readonly RequirementFinding[];
+  readonly defaults: readonly DefaultUsed[];
+  readonly warnings: readonly Warning[];
+  /** `requirement_not_met` when any requirement is not met; `incomplete` when a candidate did not reach the end. */
+  readonly status: 'ok' | 'requirement_not_met' | 'incomplete';
+}
+
+export interface InputFile {
+  readonly name: string;
+  readonly sha256: string;
+  readonly bytes: number;
+}
+
+export interface CandidateResult extends Candidate {
+  readonly result: LoopResult;
+  readonly figures: FigureValues;
+  /** Every controller sample, where the case asks for `series: full`. */
+  readonly full: FullSeries | null;
+}
+
+/** A value the user did not give. */
+export interface DefaultUsed {
+  /** Dotted path in the case or vehicle file, unit in the key. */
+  readonly key: string;
+  /** As it would be written in the file. */
+  readonly value: string;
+  /** `vehicle` or `case`. */
+  readonly of: 'vehicle' | 'case';
+  /** Where the value comes from. */
+  readonly source: string;
+}

@@ -1,0 +1,166 @@
+import type { LoopPlan } from '../loop/plan.ts';
+import type { Checkpoint, FullSeries, LoopResult } from '../loop/result.ts';
+
+/** A figure that does not exist, and why; never NaN. */
+export interface None {
+  readonly none: string;
+}
+export type Figure = number | None;
+export const isNone = (figure: Figure): figure is None => typeof figure !== 'number';
+
+/** A candidate after its run: what every study starts from. */
+export interface Replayed {
+  readonly name: string;
+  readonly plan: LoopPlan;
+  readonly result: LoopResult;
+}
+
+/** What the road asks at the set speed, and what the drive has, knot by knot of the road (equal lengths, SI). */
+export interface Demand {
+  readonly setSpeed: Float64Array;
+  /** Wheel force that holds the set speed steadily [N]. */
+  readonly required: Float64Array;
+  /** Greatest and least wheel force there [N]: full throttle; closed throttle or full regeneration. */
+  readonly upper: Float64Array;
+  readonly lower: Float64Array;
+  /**
+   * Share of the range in use: required / upper while the drive must push; minus required / lower while it must hold back.
+   * Above 1: more than there is. Below -1: even the least force is too much. Limited to [-9.99, 9.99].
+   */
+  readonly share: Float64Array;
+  /** Highest speed that full throttle can hold there for ever; the set speed where that is held [m/s]; 0 where nothing can. */
+  readonly sustained: Float64Array;
+  /** Where the least force is too much: the speed it runs away to [m/s] and the brake power that holds the set speed [W]; else set speed, 0. */
+  readonly runaway: Float64Array;
+  readonly brakePower: Float64Array;
+}
+
+export type HillKind = 'climb' | 'descent' | 'rolling';
+
+export type Cause =
+  | 'torque'
+  | 'power'
+  | 'closed_throttle'
+  | 'gains'
+  | 'rate'
+  | 'slack'
+  | 'windup'
+  | 'derating'
+  | 'wind'
+  | 'gear'
+  | 'traction';
+
+/** A stretch of the road where demand leaves the range, or a candidate leaves its band or sits on a limit. Shared by all candidates. */
+export interface Hill {
+  /** From 1, in order along the way. */
+  readonly number: number;
+  readonly kind: HillKind;
+  /** Horizontal distance [m]. */
+  readonly from: number;
+  readonly to: number;
+  readonly meanGrade: number;
+  readonly meanGradeSd: number;
+  /** Steepest grade, with its sign. */
+  readonly maxGrade: number;
+  /** Extreme share of demand (see Demand.share), with the forces there [N] and the sustained (or runaway) speed [m/s]. */
+  readonly share: number;
+  readonly requiredForce: number;
+  readonly availableForce: number;
+  readonly sustainedSpeed: number;
+  /** Shorter than the smoothing can resolve. */
+  readonly unresolved: boolean;
+  readonly outcomes: readonly HillOutcome[];
+}
+
+/** What one candidate did on a hill. */
+export interface HillOutcome {
+  readonly candidate: string;
+  /** It left its band or sat on a limit here. */
+  readonly affected: boolean;
+  /** Extreme error within hill and recovery, signed [m/s]: lost (negative) or gained. */
+  readonly speedChange: number;
+  /** By the hand formula (quasi-steady plus momentum) [m/s]. */
+  readonly predictedChange: Figure;
+  /** Simulated and predicted differ by more than 15 %. */
+  readonly predictionDiffers: boolean;
+  readonly timeLost: number;
+  readonly timeAtLimit: number;
+  /** From leaving the band or the limit to within 1 km/h for 3 s [s]. */
+  readonly recovery: Figure;
+  readonly cause: Cause | None;
+  /** One sentence: why. */
+  readonly why: string;
+  readonly wouldHold: readonly Remedy[];
+  /** Every sample from a little before the hill to the recovery, thinned to at most 400 rows, extremes kept. */
+  readonly picture: FullSeries;
+}
+
+export interface Remedy {
+  readonly lever: 'set_speed' | 'power' | 'load' | 'gear';
+  /** The value that holds and the next step that does not, SI; {none} where the lever cannot help. */
+  readonly holds: Figure;
+  readonly fails: Figure;
+  /** One sentence with units. */
+  readonly words: string;
+}
+
+export interface Segment {
+  readonly number: number;
+  /** Horizontal distance [m]. */
+  readonly from: number;
+  readonly to: number;
+  readonly meanGrade: number;
+  readonly meanHeadwind: number;
+  readonly runs: readonly SegmentRun[];
+}
+export interface SegmentRun {
+  readonly candidate: string;
+  /** [m/s]; {none} where the run ended before. */
+  readonly meanError: Figure;
+  readonly rmsError: Figure;
+  readonly worstError: Figure;
+  readonly meanThrottle: Figure;
+  /** Share of the time at a limit. */
+  readonly atLimit: Figure;
+  /** Wheel energy [J]. */
+  readonly wheelEnergy: Figure;
+  readonly time: Figure;
+}
+
+/** Where a requirement applies. */
+export type Where = 'holdable' | 'all' | { readonly from: number; readonly to: number };
+
+export interface Requirement {
+  readonly id: string;
+  /** Name in the table of figures. */
+  readonly figure: string;
+  /** Parameter of the figure: half-width of the band [m/s]; null where it has none. */
+  readonly band: number | null;
+  /** In the unit of the figure's table row. */
+  readonly atLeast: number | null;
+  readonly atMost: number | null;
+  readonly where: Where;
+  /** Names; null: all but the locked ones. */
+  readonly candidates: readonly string[] | null;
+}
+
+export interface RequirementFinding {
+  readonly requirement: Requirement;
+  readonly candidate: string;
+  /** In the unit of the figure's table row. */
+  readonly measured: Figure;
+  /** Distance to the limit, positive on the good side. */
+  readonly margin: Figure;
+  /** S.d. of the figure from the grade's uncertainty, same unit. */
+  readonly spread: number;
+  /** Where it was worst, horizontal distance [m]; null for a figure without a place. */
+  readonly worstAt: number | null;
+  readonly verdict: 'met' | 'not met' | 'too close to call';
+  /** One sentence. */
+  readonly words: string;
+}
+
+/** Figures of one candidate by name, in the unit of the table of figures. */
+export type FigureValues = Readonly<Record<string, Figure>>;
+
+export type { Checkpoint, FullSeries };
