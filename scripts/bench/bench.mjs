@@ -1,0 +1,126 @@
+// Speed as ratios within one run: `npm run bench`. CPU time, alternating rounds, medians. Times mean little on a
+// shared machine; ratios hold. What is not installed is left out, and said.
+import { spawnSync } from 'node:child_process';
+import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { must, root } from '../run.mjs';
+import { benchBytes, benchPlan, benchRoad } from './scenario.mjs';
+
+if (!existsSync(join(root, 'dist/index.js'))) must('npm', ['run', '-s', 'build']);
+const library = await import(new URL('../../dist/index.js', import.meta.url).href);
+const folder = mkdtempSync(join(tmpdir(), 'ridgehold-bench-'));
+const ROUNDS = 7;
+const KM = 1000;
+
+const median = (values) => [...values].sort((a, b) => a - b)[values.length >> 1];
+const show = (label, value, note = '') => console.log(`${label.padEnd(66)} ${value} ${note}`.trimEnd());
+const factor = (value) => `${value < 10 ? value.toFixed(2) : value.toFixed(0)} x`;
+
+/** CPU seconds of one call, garbage included. */
+function cpu(task) {
+  const before = process.cpuUsage();
+  const result = task();
+  const used = process.cpuUsage(before);
+  return { seconds: (used.user + used.system) / 1e6, result };
+}
+
+function has(command, args) {
+  const done = spawnSync(command, args, { stdio: 'ignore' });
+  return !done.error && done.status === 0;
+}
+
+try {
+  const road = benchRoad(100 * KM);
+  const exact = () => library.runLoop(benchPlan(library, road, 'exact'));
+  const fast = () => library.runLoop(benchPlan(library, road, 'fast'));
+  for (let i = 0; i < 3; i++) {
+    exact();
+    fast();
+  }
+
+  console.log('One vehicle, 100 km, controller at 50 Hz; whole public call with its results\n');
+  const table = join(folder, 'road.bin');
+  writeFileSync(table, benchBytes(road));
+  const program = join(folder, 'reference');
+  const gcc =
+    has('gcc', ['--version']) &&
+    has('gcc', ['-O3', '-march=native', '-o', program, join(root, 'scripts/bench/reference.c'), '-lm']);
+  if (!gcc) console.log('left out: the C reference (no gcc here)');
+
+  const rounds = [];
+  for (let i = 0; i < ROUNDS; i++) {
+    const c = gcc ? JSON.parse(spawnSync(program, [table, '8'], { encoding: 'utf8' }).stdout) : null;
+    const e = cpu(exact);
+    const f = cpu(fast);
+    rounds.push({ c, e, f });
+  }
+  const nsPerTick = (seconds, result) => (seconds * 1e9) / (result.endTime / 0.02);
+  const last = rounds.at(-1);
+  if (gcc) {
+    const ratios = rounds.map((r) => r.e.seconds / r.c.seconds);
+    show(
+      'default scheme / C, gcc -O3 -march=native, plain RK4',
+      factor(median(ratios)),
+      `(best ${factor(Math.min(...ratios))}; goal 1.25)`,
+    );
+    show('fast scheme / the same C', factor(median(rounds.map((r) => r.f.seconds / r.c.seconds))));
+    const work = last.e.result.ledger.drive + last.e.result.ledger.regeneration;
+    const gap = Math.abs(work / last.c.drive - 1);
+    show('  they agree: drive work differs by', gap.toExponential(1), `relative; ${last.c.ticks} ticks`);
+    if (!(gap < 1e-4))
+      throw new Error(`the C reference and the library disagree: ${work} J, ${last.c.drive} J`);
+  }
+  show('fast / default scheme', factor(median(rounds.map((r) => r.f.seconds / r.e.seconds))), '(goal 0.6)');
+  show('  default, ns a tick', nsPerTick(median(rounds.map((r) => r.e.seconds)), last.e.result).toFixed(0));
+
+  const long = benchRoad(1000 * KM);
+  const short = benchRoad(20 * KM);
+  const perMetre = (r, plan) =>
+    cpu(() => library.runLoop(benchPlan(library, r, plan))).seconds / r.distance[r.size - 1];
+  const growth = [0, 1, 2].map(() => {
+    const small = median([0, 1, 2, 3, 4].map(() => perMetre(short, 'exact')));
+    return perMetre(long, 'exact') / small;
+  });
+  show('cost per metre, 1,000 km / 20 km', factor(median(growth)), '(goal 1.1)');
+
+  if (has('python3', ['-c', 'import scipy'])) {
+    const python = JSON.parse(
+      spawnSync('python3', [join(root, 'scripts/bench/solver.py'), table, '1500'], {
+        encoding: 'utf8',
+        env: { ...process.env, OPENBLAS_NUM_THREADS: '1' },
+      }).stdout,
+    );
+    const tick = median(rounds.map((r) => r.e.seconds)) / (last.e.result.endTime / 0.02);
+    show('plain loop in a scripting language / default scheme', factor(python.loop / tick), '(goal 200)');
+    show(
+      'adaptive solver restarted at each sample / default scheme',
+      factor(python.solver / tick),
+      '(goal 3,000)',
+    );
+  } else console.log('left out: the general adaptive solver (no python3 with scipy here)');
+
+  const points = 500_000;
+  const rows = [];
+  for (let i = 0; i < points; i++)
+    rows.push(
+      `<trkpt lat="${(40 + i * 9e-5).toFixed(7)}" lon="${(-30 + 0.01 * Math.sin(i / 500)).toFixed(7)}"><ele>${(200 + 50 * Math.sin(i / 300)).toFixed(2)}</ele></trkpt>`,
+    );
+  const gpx = join(folder, 'long.gpx');
+  writeFileSync(
+    gpx,
+    `<?xml version="1.0"?><gpx version="1.1" xmlns="http://www.topografix.com/GPX/1/1"><trk><trkseg>${rows.join('\n')}</trkseg></trk></gpx>`,
+  );
+  const reader = spawnSync(process.execPath, [join(root, 'scripts/bench/read-points.mjs'), gpx], {
+    encoding: 'utf8',
+  });
+  if (reader.status !== 0) throw new Error(`reading ${points} points failed: ${reader.stderr}`);
+  const read = JSON.parse(reader.stdout);
+  show(
+    `reading ${read.points} GPX points`,
+    `${read.seconds.toFixed(1)} s`,
+    `${read.peakMb.toFixed(0)} MB at peak (goal 5 s, 1,000 MB)`,
+  );
+} finally {
+  rmSync(folder, { recursive: true, force: true });
+}
