@@ -1,0 +1,2 @@
+export const ROOMS: readonly string[];
+export function roomProblems(folder?: string): string[];
