@@ -14,24 +14,30 @@ export interface LoopResult {
 
 /**
  * Per distance bin: bin i covers [edge[i], edge[i + 1]) of horizontal distance. A controller sample belongs to the
- * bin in which it starts. `size` bins were reached; `edge` has size + 1 entries. SI.
+ * bin in which it starts. `size` bins were reached; `edge` has size + 1 entries. SI. A bin in which no sample starts
+ * (bins shorter than the way of one sample) has time 0 and the values of the sample that passes over it.
  */
 export interface BinRecord {
   readonly size: number;
   readonly edge: Float64Array;
-  /** Time at entry, from the start of the run [s], and time spent [s]. */
+  /** Time at its first sample, from the start of the run [s], and time spent [s]. */
   readonly timeAt: Float64Array;
   readonly time: Float64Array;
+  /** Set speed at the first sample, as the true speed that it stands for [m/s]. */
   readonly setSpeed: Float64Array;
+  /** Distance travelled over time; extremes over the samples [m/s]. */
   readonly speedMean: Float64Array;
   readonly speedMin: Float64Array;
   readonly speedMax: Float64Array;
-  /** Error e = true speed - set speed (in terms of `setSpeedIs`): time integrals of e and e^2, extremes. */
+  /**
+   * Error e = true speed - set speed (in terms of `setSpeedIs`): time mean of e [m/s] and of e^2 [m2/s2], extremes.
+   * Over several bins weigh the means with `time`.
+   */
   readonly errorMean: Float64Array;
   readonly errorSquare: Float64Array;
   readonly errorMin: Float64Array;
   readonly errorMax: Float64Array;
-  /** Actuator throttle. */
+  /** Actuator throttle: time mean, extremes. */
   readonly throttleMean: Float64Array;
   readonly throttleMin: Float64Array;
   readonly throttleMax: Float64Array;
@@ -44,8 +50,9 @@ export interface BinRecord {
   readonly timeBrake: Float64Array;
   /** Time with |e| inside each band, band by band: size x bands.length, row by row [s]. */
   readonly timeInBand: Float64Array;
+  /** As the rider counts: from 1. */
   readonly gear: Uint8Array;
-  /** Mean wheel force of the drive [N], mean wheel power [W], work in the bin: drive (positive part), regeneration (negative part), brake [J]. */
+  /** Mean wheel force of the drive over the distance [N], mean wheel power [W], work in the bin: drive (positive part), regeneration (negative part), brake [J]. */
   readonly driveForce: Float64Array;
   readonly wheelPower: Float64Array;
   readonly driveWork: Float64Array;
@@ -95,6 +102,7 @@ export interface FullSeries {
   readonly feedforward: Float64Array;
   /** LIMIT_ bits. */
   readonly limit: Uint8Array;
+  /** As the rider counts: from 1. */
   readonly gear: Uint8Array;
   readonly driveForce: Float64Array;
   readonly brakeForce: Float64Array;
