@@ -104,13 +104,19 @@ export interface Remedy {
   readonly words: string;
 }
 
-export interface Segment {
-  readonly number: number;
-  /** Horizontal distance [m]. */
+/** Part of the road, horizontal distances [m]. */
+export interface Stretch {
   readonly from: number;
   readonly to: number;
+}
+
+export interface RoadSegment extends Stretch {
+  /** From 1, in order along the way. */
+  readonly number: number;
   readonly meanGrade: number;
   readonly meanHeadwind: number;
+}
+export interface Segment extends RoadSegment {
   readonly runs: readonly SegmentRun[];
 }
 export interface SegmentRun {

@@ -1,0 +1,420 @@
+import type { BinRecord } from '../loop/result.ts';
+import { fromKmh, toKm, toKmh, toPct, toWh } from '../units/convert.ts';
+import type { Figure } from './findings.ts';
+
+/** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
+export interface Recovery {
+  /** Horizontal distance of the hill's start [m]. */
+  readonly at: number;
+  readonly time: Figure;
+}
+
+/** What a figure is taken over. */
+export interface FigureRecord {
+  readonly bins: BinRecord;
+  /** One a bin: 1 where the bin counts. */
+  readonly chosen: Uint8Array;
+  /** Where the run ended [m]: the last bin counts up to there. */
+  readonly end: number;
+  /** Bands of the record [m/s], and the one that is asked for (null where the figure takes none). */
+  readonly bands: readonly number[];
+  readonly band: number | null;
+  /** Of the hills that count. */
+  readonly recoveries: readonly Recovery[];
+  /** From drive to battery; null where the drive has none. */
+  readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
+  /** Of the whole run. */
+  readonly ledgerResidual: number;
+}
+
+export interface Measure {
+  /** In the unit of the row. */
+  readonly value: Figure;
+  /** Where it was worst [m]; null: the figure has no place. */
+  readonly at: number | null;
+}
+
+/** One row of the table of figures. */
+export interface FigureRow {
+  /** The unit is its ending. */
+  readonly name: string;
+  readonly label: string;
+  readonly unit: string;
+  /** What the figure is weighted with. */
+  readonly weight: 'time' | 'distance' | 'event';
+  readonly takesBand: boolean;
+  /** The better direction; null where neither is. */
+  readonly better: 'lower' | 'higher' | null;
+  readonly definition: string;
+  readonly source: string;
+  readonly measure: (record: FigureRecord) => Measure;
+}
+
+/** Half-width within which a run counts as recovered, and for how long [m/s], [s]. */
+export const RECOVERED_BAND = fromKmh(1);
+export const RECOVERED_FOR = 3;
+
+const NOTHING: Measure = { value: { none: 'no such stretch was driven' }, at: null };
+const placeless = (value: Figure): Measure => ({ value, at: null });
+
+/** Sum over the chosen bins. */
+function sum({ bins, chosen }: FigureRecord, of: (i: number) => number): number {
+  let total = 0;
+  for (let i = 0; i < bins.size; i++) if (chosen[i] === 1) total += of(i);
+  return total;
+}
+
+const timeOf = (record: FigureRecord): number => sum(record, (i) => record.bins.time[i]);
+const lengthOf = (record: FigureRecord): number => {
+  const { bins, end } = record;
+  return sum(record, (i) => Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]));
+};
+
+/** A figure that exists wherever any chosen time was driven. */
+function driven(record: FigureRecord, of: (time: number) => Figure): Measure {
+  const time = timeOf(record);
+  return time > 0 ? placeless(of(time)) : NOTHING;
+}
+
+/** Chosen bin with the greatest score above 0, with its middle. */
+function worstBin(record: FigureRecord, score: (i: number) => number): { value: number; at: number } | null {
+  const { bins, chosen } = record;
+  let worst: { value: number; at: number } | null = null;
+  for (let i = 0; i < bins.size; i++) {
+    if (chosen[i] !== 1) continue;
+    const value = score(i);
+    if (value > (worst?.value ?? 0)) worst = { value, at: (bins.edge[i] + bins.edge[i + 1]) / 2 };
+  }
+  return worst;
+}
+
+function withinBand(record: FigureRecord): Measure {
+  const { bins, bands, band } = record;
+  // Bands pass through files in km/h: equal to a nanometre a second is equal.
+  const k = band === null ? -1 : bands.findIndex((b) => Math.abs(b - band) < 1e-9);
+  if (k < 0) return placeless({ none: 'the run did not count the time within this band' });
+  const time = timeOf(record);
+  if (!(time > 0)) return NOTHING;
+  const inside = (i: number): number => bins.timeInBand[i * bands.length + k];
+  const outside = worstBin(record, (i) =>
+    bins.time[i] - inside(i) > 1e-9 ? Math.max(bins.errorMax[i], -bins.errorMin[i]) : 0,
+  );
+  return { value: toPct(Math.min(1, sum(record, inside) / time)), at: outside?.at ?? null };
+}
+
+function worstSide(record: FigureRecord, side: 1 | -1): Measure {
+  if (!(timeOf(record) > 0)) return NOTHING;
+  const { errorMin, errorMax } = record.bins;
+  const worst = worstBin(record, (i) => (side > 0 ? errorMax[i] : -errorMin[i]));
+  return worst === null ? placeless(0) : { value: toKmh(side * worst.value), at: worst.at };
+}
+
+function absoluteErrorQuantile(record: FigureRecord, share: number): Measure {
+  const { bins, chosen } = record;
+  const rows: { error: number; time: number }[] = [];
+  for (let i = 0; i < bins.size; i++)
+    if (chosen[i] === 1 && bins.time[i] > 0)
+      rows.push({ error: Math.sqrt(Math.max(0, bins.errorSquare[i] / bins.time[i])), time: bins.time[i] });
+  if (rows.length === 0) return NOTHING;
+  rows.sort((a, b) => a.error - b.error);
+  const target = share * rows.reduce((total, row) => total + row.time, 0);
+  let passed = 0;
+  for (const row of rows) {
+    passed += row.time;
+    if (passed >= target) return placeless(toKmh(row.error));
+  }
+  return placeless(toKmh(rows[rows.length - 1].error));
+}
+
+function worstRecovery({ recoveries }: FigureRecord): Measure {
+  let worst: { value: number; at: number } | null = null;
+  for (const { at, time } of recoveries) {
+    if (typeof time !== 'number') return { value: time, at };
+    if (time > (worst?.value ?? -1)) worst = { value: time, at };
+  }
+  return worst ?? placeless(0);
+}
+
+function batteryEnergy(record: FigureRecord): Measure {
+  const { bins, efficiency } = record;
+  if (efficiency === null) return placeless({ none: 'the drive has no efficiency' });
+  return driven(record, () =>
+    toWh(
+      sum(
+        record,
+        (i) =>
+          bins.driveWork[i] / efficiency.drive - Math.abs(bins.regenerationWork[i]) * efficiency.regeneration,
+      ),
+    ),
+  );
+}
+
+/** Distance of a bin driven with the brake on: its length by share of time. */
+const brakeDistance = (record: FigureRecord): number => {
+  const { bins, end } = record;
+  return sum(record, (i) =>
+    bins.time[i] > 0
+      ? (Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]) * bins.timeBrake[i]) / bins.time[i]
+      : 0,
+  );
+};
+
+const perKm = (record: FigureRecord, amount: number): Figure => {
+  const length = lengthOf(record);
+  return length > 0 ? amount / toKm(length) : { none: 'no such stretch was driven' };
+};
+
+const DEFINED_HERE = 'defined here';
+const timed = (
+  name: string,
+  label: string,
+  definition: string,
+  of: (bins: BinRecord) => Float64Array,
+  better: FigureRow['better'] = 'lower',
+): FigureRow => ({
+  name,
+  label,
+  unit: 's',
+  weight: 'time',
+  takesBand: false,
+  better,
+  definition,
+  source: DEFINED_HERE,
+  measure: (record) => driven(record, () => sum(record, (i) => of(record.bins)[i])),
+});
+
+/**
+ * The one table of figures: requirement names, columns, the method section and the docs are made from it.
+ * Error e = speed - set speed: negative is too slow. Figures are taken over the bins that `where` chooses.
+ */
+export const FIGURES: readonly FigureRow[] = [
+  {
+    name: 'within_band_pct',
+    label: 'Time within the band',
+    unit: '%',
+    weight: 'time',
+    takesBand: true,
+    better: 'higher',
+    definition:
+      'Share of the time, controller sample by sample, with |e| inside the band. Its place is where |e| was greatest outside of it.',
+    source: DEFINED_HERE,
+    measure: withinBand,
+  },
+  {
+    name: 'rms_error_kmh',
+    label: 'Rms error',
+    unit: 'km/h',
+    weight: 'time',
+    takesBand: false,
+    better: 'lower',
+    definition: 'Root of the time mean of e squared.',
+    source: 'the root mean square speed error of driving-cycle metrics (SAE J2951, from memory)',
+    measure: (record) =>
+      driven(record, (time) =>
+        toKmh(Math.sqrt(Math.max(0, sum(record, (i) => record.bins.errorSquare[i]) / time))),
+      ),
+  },
+  {
+    name: 'mean_error_kmh',
+    label: 'Mean error',
+    unit: 'km/h',
+    weight: 'time',
+    takesBand: false,
+    better: null,
+    definition: 'Time mean of e, with its sign.',
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, (time) => toKmh(sum(record, (i) => record.bins.errorMean[i]) / time)),
+  },
+  {
+    name: 'worst_low_kmh',
+    label: 'Furthest below',
+    unit: 'km/h',
+    weight: 'event',
+    takesBand: false,
+    better: 'higher',
+    definition: 'Least e, 0 or negative: -7.3 is 7.3 km/h below the set speed. A requirement says at_least.',
+    source: DEFINED_HERE,
+    measure: (record) => worstSide(record, -1),
+  },
+  {
+    name: 'worst_high_kmh',
+    label: 'Furthest above',
+    unit: 'km/h',
+    weight: 'event',
+    takesBand: false,
+    better: 'lower',
+    definition: 'Greatest e, 0 or positive. A requirement says at_most.',
+    source: DEFINED_HERE,
+    measure: (record) => worstSide(record, 1),
+  },
+  {
+    name: 'p95_abs_error_kmh',
+    label: '95 % of |e|',
+    unit: 'km/h',
+    weight: 'time',
+    takesBand: false,
+    better: 'lower',
+    definition: 'The value that |e| (its rms over each bin of distance) stays within for 95 % of the time.',
+    source: DEFINED_HERE,
+    measure: (record) => absoluteErrorQuantile(record, 0.95),
+  },
+  {
+    name: 'recovery_s',
+    label: 'Longest recovery',
+    unit: 's',
+    weight: 'event',
+    takesBand: false,
+    better: 'lower',
+    definition:
+      'Longest, over the hills that count, of the time from leaving the limit (or, where none was met, the band) to the start of 3 s within 1 km/h. 0 where no hill needed one.',
+    source: DEFINED_HERE,
+    measure: worstRecovery,
+  },
+  timed('time_s', 'Time', 'Driving time.', (bins) => bins.time, null),
+  {
+    name: 'time_lost_s',
+    label: 'Time lost',
+    unit: 's',
+    weight: 'time',
+    takesBand: false,
+    better: 'lower',
+    definition:
+      'Driving time less the time at the set speed over the same distance: the time integral of -e / set speed. Negative where time is gained.',
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, () => sum(record, (i) => -record.bins.errorMean[i] / record.bins.setSpeed[i])),
+  },
+  {
+    name: 'wheel_energy_wh',
+    label: 'Wheel energy',
+    unit: 'Wh',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition: 'Work of the drive at the wheel while it pushes; what it holds back is counted apart.',
+    source: DEFINED_HERE,
+    measure: (record) => driven(record, () => toWh(sum(record, (i) => record.bins.driveWork[i]))),
+  },
+  {
+    name: 'wheel_energy_wh_per_km',
+    label: 'Wheel energy per km',
+    unit: 'Wh/km',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition: 'Wheel energy over the horizontal distance driven.',
+    source: DEFINED_HERE,
+    measure: (record) => placeless(perKm(record, toWh(sum(record, (i) => record.bins.driveWork[i])))),
+  },
+  {
+    name: 'regeneration_wh',
+    label: 'Held back by the drive',
+    unit: 'Wh',
+    weight: 'distance',
+    takesBand: false,
+    better: null,
+    definition: 'Work that the drive takes from the wheel while it holds back: engine drag or regeneration.',
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, () => toWh(sum(record, (i) => Math.abs(record.bins.regenerationWork[i])))),
+  },
+  {
+    name: 'battery_energy_wh',
+    label: 'Battery energy',
+    unit: 'Wh',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition:
+      'Wheel energy over the drive efficiency, less what regeneration returns times its efficiency; only for a drive that has efficiencies.',
+    source: DEFINED_HERE,
+    measure: batteryEnergy,
+  },
+  {
+    name: 'throttle_mean_pct',
+    label: 'Mean throttle',
+    unit: '%',
+    weight: 'time',
+    takesBand: false,
+    better: null,
+    definition: 'Time mean of the throttle at the actuator.',
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, (time) =>
+        toPct(sum(record, (i) => record.bins.throttleMean[i] * record.bins.time[i]) / time),
+      ),
+  },
+  {
+    name: 'throttle_travel_pct_per_km',
+    label: 'Throttle travel',
+    unit: '%/km',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition:
+      'Sum of the changes of the throttle command without their signs, over the horizontal distance driven.',
+    source: 'total variation of the control signal (Skogestad, J. Process Control 13 (2003), from memory)',
+    measure: (record) => placeless(perKm(record, toPct(sum(record, (i) => record.bins.throttleTravel[i])))),
+  },
+  timed('at_upper_limit_s', 'At full throttle', 'Time with the command at its upper limit.', (b) => b.timeUpper),
+  timed(
+    'at_lower_limit_s',
+    'At closed throttle',
+    'Time with the command at its lower limit.',
+    (b) => b.timeLower,
+  ),
+  timed('at_rate_limit_s', 'At the rate limit', 'Time with the actuator at its rate limit.', (b) => b.timeRate),
+  {
+    name: 'at_limit_pct',
+    label: 'At a limit',
+    unit: '%',
+    weight: 'time',
+    takesBand: false,
+    better: 'lower',
+    definition: 'Share of the time with the command at its upper or lower limit.',
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, (time) =>
+        toPct(sum(record, (i) => record.bins.timeUpper[i] + record.bins.timeLower[i]) / time),
+      ),
+  },
+  {
+    name: 'brake_energy_wh',
+    label: 'Brake energy',
+    unit: 'Wh',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition: "Work of the rider's brake.",
+    source: DEFINED_HERE,
+    measure: (record) =>
+      driven(record, () => toWh(sum(record, (i) => Math.abs(record.bins.brakeWork[i])))),
+  },
+  {
+    name: 'brake_distance_m',
+    label: 'Braked distance',
+    unit: 'm',
+    weight: 'distance',
+    takesBand: false,
+    better: 'lower',
+    definition: "Horizontal distance driven with the rider's brake on: in each bin its share of the time.",
+    source: DEFINED_HERE,
+    measure: (record) => driven(record, () => brakeDistance(record)),
+  },
+  {
+    name: 'ledger_residual',
+    label: 'Energy account open',
+    unit: '1',
+    weight: 'event',
+    takesBand: false,
+    better: 'lower',
+    definition:
+      'Sum of the terms of the energy account of the whole run over the integral of their magnitudes, without its sign: how well the numbers close.',
+    source: DEFINED_HERE,
+    measure: (record) => placeless(Math.abs(record.ledgerResidual)),
+  },
+];
+
+/** Row by name; undefined for a name that the table does not have. */
+export const figureRow = (name: string): FigureRow | undefined => FIGURES.find((row) => row.name === name);
