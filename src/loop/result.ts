@@ -30,8 +30,8 @@ export interface BinRecord {
   readonly speedMin: Float64Array;
   readonly speedMax: Float64Array;
   /**
-   * Error e = true speed - set speed (in terms of `setSpeedIs`): time mean of e [m/s] and of e^2 [m2/s2], extremes.
-   * Over several bins weigh the means with `time`.
+   * Error e = true speed - set speed (in terms of `setSpeedIs`): time INTEGRALS of e [m/s s] and e^2 [m2/s2 s] over the
+   * bin (divide by `time` for means), extremes [m/s].
    */
   readonly errorMean: Float64Array;
   readonly errorSquare: Float64Array;
@@ -50,7 +50,7 @@ export interface BinRecord {
   readonly timeBrake: Float64Array;
   /** Time with |e| inside each band, band by band: size x bands.length, row by row [s]. */
   readonly timeInBand: Float64Array;
-  /** As the rider counts: from 1. */
+  /** Index into the drive's gears. */
   readonly gear: Uint8Array;
   /** Mean wheel force of the drive over the distance [N], mean wheel power [W], work in the bin: drive (positive part), regeneration (negative part), brake [J]. */
   readonly driveForce: Float64Array;
@@ -102,7 +102,7 @@ export interface FullSeries {
   readonly feedforward: Float64Array;
   /** LIMIT_ bits. */
   readonly limit: Uint8Array;
-  /** As the rider counts: from 1. */
+  /** Index into the drive's gears. */
   readonly gear: Uint8Array;
   readonly driveForce: Float64Array;
   readonly brakeForce: Float64Array;
