@@ -1,0 +1,156 @@
+import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from '../../loop/plan.ts';
+import type { BinRecord } from '../../loop/result.ts';
+import type { CandidateResult, RunResult } from '../../run/run-result.ts';
+import { toKmh, toKw, toPct, toWh } from '../../units/convert.ts';
+import { ShareAlong } from './share-along.ts';
+import { type Column, csvText } from './table.ts';
+
+/** What the rows of a series by bin are made from. */
+export interface BinSource {
+  readonly bins: BinRecord;
+  /** Share of demand of greatest magnitude in each bin. */
+  readonly share: Float64Array;
+  /** Drive work from the start to the end of each bin [J]. */
+  readonly work: Float64Array;
+  readonly locked: boolean;
+}
+
+/** `upper`, `lower`, `rate`, joined by `+`; empty when nothing limited the throttle. */
+export function limitWords(bits: number): string {
+  const words: string[] = [];
+  if (bits & LIMIT_UPPER) words.push('upper');
+  if (bits & LIMIT_LOWER) words.push('lower');
+  if (bits & LIMIT_RATE) words.push('rate');
+  return words.join('+');
+}
+
+/** `brake` while the rider brakes, else `locked` or `hold`. */
+export function modeWord(bits: number, locked: boolean): string {
+  if (bits & LIMIT_BRAKE) return 'brake';
+  return locked ? 'locked' : 'hold';
+}
+
+function bits(bins: BinRecord, i: number): number {
+  return (
+    (bins.timeUpper[i]! > 0 ? LIMIT_UPPER : 0) |
+    (bins.timeLower[i]! > 0 ? LIMIT_LOWER : 0) |
+    (bins.timeRate[i]! > 0 ? LIMIT_RATE : 0) |
+    (bins.timeBrake[i]! > 0 ? LIMIT_BRAKE : 0)
+  );
+}
+
+/** Mean over time [m/s]; a bin in which no sample starts has the values of the one that passes over it. */
+function meanError(bins: BinRecord, i: number): number {
+  const time = bins.time[i]!;
+  return time > 0 ? bins.errorMean[i]! / time : bins.speedMean[i]! - bins.setSpeed[i]!;
+}
+
+/** The columns of series-<candidate>.csv by bin: one row a distance bin. */
+export const BIN_COLUMNS: readonly Column<BinSource>[] = [
+  {
+    name: 'time_s',
+    decimals: 3,
+    about: 'time at which the bin is entered',
+    value: (s, i) => s.bins.timeAt[i]!,
+  },
+  { name: 'distance_m', decimals: 2, about: 'start of the bin', value: (s, i) => s.bins.edge[i]! },
+  { name: 'set_speed_kmh', decimals: 3, about: 'set speed', value: (s, i) => toKmh(s.bins.setSpeed[i]!) },
+  {
+    name: 'speed_kmh',
+    decimals: 4,
+    about: 'true speed, mean over time',
+    value: (s, i) => toKmh(s.bins.speedMean[i]!),
+  },
+  {
+    name: 'speed_min_kmh',
+    decimals: 4,
+    about: 'least speed in the bin',
+    value: (s, i) => toKmh(s.bins.speedMin[i]!),
+  },
+  {
+    name: 'speed_max_kmh',
+    decimals: 4,
+    about: 'greatest speed in the bin',
+    value: (s, i) => toKmh(s.bins.speedMax[i]!),
+  },
+  {
+    name: 'speed_error_kmh',
+    decimals: 4,
+    about: 'speed minus set speed, mean over time, negative is too slow',
+    value: (s, i) => toKmh(meanError(s.bins, i)),
+  },
+  {
+    name: 'throttle_pct',
+    decimals: 3,
+    about: 'throttle at the actuator, mean over time',
+    value: (s, i) => toPct(s.bins.throttleMean[i]!),
+  },
+  {
+    name: 'throttle_min_pct',
+    decimals: 3,
+    about: 'least throttle in the bin',
+    value: (s, i) => toPct(s.bins.throttleMin[i]!),
+  },
+  {
+    name: 'throttle_max_pct',
+    decimals: 3,
+    about: 'greatest throttle in the bin',
+    value: (s, i) => toPct(s.bins.throttleMax[i]!),
+  },
+  { name: 'gear', decimals: 0, about: 'gear, from 1', value: (s, i) => s.bins.gear[i]! + 1 },
+  {
+    name: 'demand_pct',
+    decimals: 2,
+    about:
+      'force that the set speed needs over the force that is there, of greatest magnitude in the bin; negative: it must hold back',
+    value: (s, i) => toPct(s.share[i]!),
+  },
+  {
+    name: 'drive_force_n',
+    decimals: 2,
+    about: 'force of the drive at the wheel, mean',
+    value: (s, i) => s.bins.driveForce[i]!,
+  },
+  {
+    name: 'wheel_power_kw',
+    decimals: 4,
+    about: 'power at the wheel, mean',
+    value: (s, i) => toKw(s.bins.wheelPower[i]!),
+  },
+  {
+    name: 'wheel_energy_wh',
+    decimals: 3,
+    about: 'work of the drive while it pushes, from the start of the run to the end of the bin',
+    value: (s, i) => toWh(s.work[i]!),
+  },
+  {
+    name: 'limit',
+    decimals: 0,
+    about: 'upper, lower, rate: what limited the throttle somewhere in the bin, joined by +',
+    value: (s, i) => limitWords(bits(s.bins, i)),
+  },
+  {
+    name: 'mode',
+    decimals: 0,
+    about: 'hold, locked, or brake where the rider brakes',
+    value: (s, i) => modeWord(bits(s.bins, i), s.locked),
+  },
+];
+
+/** series-<candidate>.csv, one row a distance bin. */
+export function binSeriesCsv(run: RunResult, candidate: CandidateResult): string {
+  const { bins } = candidate.result;
+  const along = new ShareAlong(run.road, run.demand);
+  const share = new Float64Array(bins.size);
+  const work = new Float64Array(bins.size);
+  let total = 0;
+  for (let i = 0; i < bins.size; i++) {
+    const inTime = run.road.along === 'time';
+    const from = inTime ? bins.timeAt[i]! : bins.edge[i]!;
+    share[i] = along.extreme(from, inTime ? from + bins.time[i]! : bins.edge[i + 1]!);
+    total += bins.driveWork[i]!;
+    work[i] = total;
+  }
+  const source = { bins, share, work, locked: candidate.controller.kind === 'locked' };
+  return csvText(BIN_COLUMNS, source, bins.size);
+}

@@ -1,0 +1,45 @@
+import type { Road } from '../../road/road.ts';
+import type { RunResult } from '../../run/run-result.ts';
+import { binSeriesCsv } from './bin-series.ts';
+import { disturbanceCsv } from './disturbance.ts';
+import { fullSeriesCsv } from './full-series.ts';
+import { hillsCsv } from './hill-table.ts';
+import { routeGeoJson } from './route.ts';
+import { segmentsCsv } from './segment-table.ts';
+
+/** A file to be written: its name below the folder of results, with `/`, and its text. */
+export interface TextFile {
+  readonly name: string;
+  readonly text: string;
+}
+
+/**
+ * The data files of a run, but for summary.json, which lists them and comes last.
+ *
+ * @throws NotFiniteError for a number that is not finite
+ */
+export function dataFiles(run: RunResult): readonly TextFile[] {
+  return [
+    ...roadFiles(run.road, run),
+    { name: 'segments.csv', text: segmentsCsv(run.segments) },
+    { name: 'hills.csv', text: hillsCsv(run.hills) },
+    ...run.candidates.map((candidate) => ({
+      name: `series-${candidate.name}.csv`,
+      text:
+        candidate.full === null
+          ? binSeriesCsv(run, candidate)
+          : fullSeriesCsv(run, candidate, candidate.full),
+    })),
+  ];
+}
+
+/** The data files of a road alone: disturbance.csv and route.geojson. */
+export function roadFiles(
+  road: Road,
+  { hills }: Pick<RunResult, 'hills'> = { hills: [] },
+): readonly TextFile[] {
+  return [
+    { name: 'disturbance.csv', text: disturbanceCsv(road) },
+    { name: 'route.geojson', text: routeGeoJson(road, hills) },
+  ];
+}

@@ -1,0 +1,127 @@
+import type { Hill, HillOutcome } from '../../study/findings.ts';
+import { toKm, toKmh, toPct } from '../../units/convert.ts';
+import { inUnit } from './segment-table.ts';
+import { type Column, csvText, type JsonRow, jsonRow } from './table.ts';
+
+interface HillRow {
+  readonly hill: Hill;
+  readonly outcome: HillOutcome;
+}
+
+/** The columns of hills.csv, and the keys of `hills[]` in summary.json: one row a hill and candidate. */
+export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
+  {
+    name: 'hill',
+    decimals: 0,
+    about: 'number of the hill, from 1',
+    value: (rows, i) => rows[i]!.hill.number,
+  },
+  {
+    name: 'candidate',
+    decimals: 0,
+    about: 'name of the candidate',
+    value: (rows, i) => rows[i]!.outcome.candidate,
+  },
+  { name: 'kind', decimals: 0, about: 'climb, descent or rolling', value: (rows, i) => rows[i]!.hill.kind },
+  { name: 'from_km', decimals: 4, about: 'start of the hill', value: (rows, i) => toKm(rows[i]!.hill.from) },
+  { name: 'to_km', decimals: 4, about: 'end of the hill', value: (rows, i) => toKm(rows[i]!.hill.to) },
+  {
+    name: 'length_m',
+    decimals: 1,
+    about: 'horizontal length',
+    value: (rows, i) => rows[i]!.hill.to - rows[i]!.hill.from,
+  },
+  {
+    name: 'mean_grade_pct',
+    decimals: 3,
+    about: 'rise over length',
+    value: (rows, i) => toPct(rows[i]!.hill.meanGrade),
+  },
+  {
+    name: 'mean_grade_sd_pct',
+    decimals: 3,
+    about: 'one standard deviation of the mean grade',
+    value: (rows, i) => toPct(rows[i]!.hill.meanGradeSd),
+  },
+  {
+    name: 'max_grade_pct',
+    decimals: 3,
+    about: 'steepest grade, with its sign',
+    value: (rows, i) => toPct(rows[i]!.hill.maxGrade),
+  },
+  {
+    name: 'demand_pct',
+    decimals: 2,
+    about: 'demand of greatest magnitude: force needed over force there',
+    value: (rows, i) => toPct(rows[i]!.hill.share),
+  },
+  {
+    name: 'required_force_n',
+    decimals: 1,
+    about: 'wheel force that the set speed needs there',
+    value: (rows, i) => rows[i]!.hill.requiredForce,
+  },
+  {
+    name: 'available_force_n',
+    decimals: 1,
+    about: 'wheel force that is there',
+    value: (rows, i) => rows[i]!.hill.availableForce,
+  },
+  {
+    name: 'sustained_speed_kmh',
+    decimals: 2,
+    about: 'speed that can be held there for ever, or that it runs away to',
+    value: (rows, i) => toKmh(rows[i]!.hill.sustainedSpeed),
+  },
+  {
+    name: 'speed_change_kmh',
+    decimals: 3,
+    about: 'extreme speed error on the hill and until recovery; negative: lost',
+    value: (rows, i) => toKmh(rows[i]!.outcome.speedChange),
+  },
+  {
+    name: 'predicted_change_kmh',
+    decimals: 3,
+    about: 'the same by the hand formula',
+    value: (rows, i) => inUnit(rows[i]!.outcome.predictedChange, toKmh),
+  },
+  {
+    name: 'time_at_limit_s',
+    decimals: 2,
+    about: 'time at a limit of the throttle',
+    value: (rows, i) => rows[i]!.outcome.timeAtLimit,
+  },
+  {
+    name: 'recovery_s',
+    decimals: 2,
+    about: 'from leaving the band or the limit to within 1 km/h for 3 s',
+    value: (rows, i) => rows[i]!.outcome.recovery,
+  },
+  {
+    name: 'cause',
+    decimals: 0,
+    about: 'why it left its band; empty where it did not',
+    value: (rows, i) => rows[i]!.outcome.cause,
+  },
+  {
+    name: 'would_hold',
+    decimals: 0,
+    about: 'what would hold, one sentence a lever',
+    value: (rows, i) => rows[i]!.outcome.wouldHold.map((remedy) => remedy.words).join(' '),
+  },
+];
+
+const rowsOf = (hills: readonly Hill[]): readonly HillRow[] =>
+  hills.flatMap((hill) => hill.outcomes.map((outcome) => ({ hill, outcome })));
+
+/** hills.csv: in order along the way, each candidate in turn. */
+export function hillsCsv(hills: readonly Hill[]): string {
+  const rows = rowsOf(hills);
+  return csvText(HILL_COLUMNS, rows, rows.length);
+}
+
+/** The same rows as JSON. */
+export function hillRows(hills: readonly Hill[]): readonly JsonRow[] {
+  const rows = rowsOf(hills);
+  return rows.map((_, i) => jsonRow(HILL_COLUMNS, rows, i));
+}

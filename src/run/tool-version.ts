@@ -1,0 +1,6 @@
+import { version } from '../../package.json' with { type: 'json' };
+
+/** Version of the tool, as results and reports carry it. */
+export const TOOL_VERSION: string = version;
+/** Version of the shape of summary.json: the first number changes when a key is renamed or removed. */
+export const SCHEMA_VERSION = '1.0';
