@@ -1,0 +1,209 @@
+import type * as z from 'zod';
+import { FIGURES } from '../study/figure-table.ts';
+import { type caseSchema, TERRAIN_ROUGHNESS } from './case-schema.ts';
+import type { Rule, RuleFault } from './check-file.ts';
+import { nearestKey } from './nearest-key.ts';
+import { isMapping } from './schema-walk.ts';
+import type { Path } from './yaml-source.ts';
+
+type CaseInput = z.input<typeof caseSchema>;
+
+/** What no single field of a case can say. */
+export const caseRules: readonly Rule<CaseInput>[] = [
+  {
+    about: ['track', 'profile'],
+    check: ({ track }) =>
+      'profile' in track ? oneWay(track.profile, ['track', 'profile'], 'length_m', 'for_s') : [],
+  },
+  {
+    about: ['road', 'masks'],
+    check: ({ road }) => (road?.masks ?? []).flatMap((mask, i) => upwards(mask, ['road', 'masks', i])),
+  },
+  {
+    about: ['road', 'shelter'],
+    check: ({ road }) =>
+      (road?.shelter ?? []).flatMap((shelter, i) => upwards(shelter, ['road', 'shelter', i])),
+  },
+  { about: ['wind'], check: ({ wind }) => (wind === undefined ? [] : aboveRoughness(wind)) },
+  { about: ['hold', 'changes'], check: ({ hold }) => changesInOrder(hold.changes ?? []) },
+  { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
+];
+
+/** Checks by name, which hold whatever else is wrong with the items. */
+export const caseNameRules: readonly Rule<unknown>[] = [
+  {
+    about: ['candidates', -1],
+    check: (file) => doubled(file, 'candidates', (item) => item.name ?? item.kind, 'name'),
+  },
+  { about: ['requirements', -1], check: (file) => doubled(file, 'requirements', (item) => item.id, 'id') },
+  { about: ['requirements', -1], check: unknownCandidates },
+  { about: ['requirements', -1], check: unknownFigures },
+];
+
+/** The list under a key, whatever is wrong in it. */
+function items(file: unknown, key: string): Record<string, unknown>[] {
+  const list = isMapping(file) ? file[key] : undefined;
+  return Array.isArray(list) ? list.map((item) => (isMapping(item) ? item : {})) : [];
+}
+
+function doubled(
+  file: unknown,
+  key: string,
+  nameOf: (item: Record<string, unknown>) => unknown,
+  field: string,
+): RuleFault[] {
+  const seen = new Set<unknown>();
+  return items(file, key).flatMap((item, i) => {
+    const name = nameOf(item);
+    if (typeof name !== 'string' || !seen.has(name)) {
+      seen.add(name);
+      return [];
+    }
+    return [
+      {
+        path: [key, i, field],
+        code: 'doubled-name',
+        message: `the ${field} is taken already`,
+        found: name,
+        allowed: `each ${field} once`,
+      },
+    ];
+  });
+}
+
+/** The names of the candidates as written; a candidate without one is called by its kind. */
+export const candidateNames = (file: unknown): string[] =>
+  items(file, 'candidates').map((item) => String(item.name ?? item.kind));
+
+function unknownCandidates(file: unknown): RuleFault[] {
+  const known = candidateNames(file);
+  return items(file, 'requirements').flatMap((requirement, i) =>
+    (Array.isArray(requirement.candidates) ? requirement.candidates : []).flatMap(
+      (name: unknown, k: number) =>
+        typeof name !== 'string' || known.includes(name)
+          ? []
+          : [
+              {
+                path: ['requirements', i, 'candidates', k],
+                code: 'unknown-candidate',
+                message: 'is no candidate of this case',
+                found: name,
+                allowed: known.join(', '),
+              },
+            ],
+    ),
+  );
+}
+
+function upwards(stretch: { from_km: number; to_km: number }, path: Path): RuleFault[] {
+  if (stretch.from_km < stretch.to_km) return [];
+  return [
+    {
+      path: [...path, 'to_km'],
+      code: 'not-in-order',
+      message: 'the stretch ends before it starts',
+      found: `${stretch.from_km} km to ${stretch.to_km} km`,
+      allowed: `more than ${stretch.from_km} km`,
+    },
+  ];
+}
+
+/** All items of a list say where they are in the same of two ways. */
+function oneWay(list: readonly object[], path: Path, one: string, other: string): RuleFault[] {
+  const first = list[0] !== undefined && one in list[0] ? one : other;
+  const odd = list.findIndex((item) => !(first in item));
+  if (odd < 0) return [];
+  return [
+    {
+      path: [...path, odd],
+      code: 'mixed-list',
+      message: `${one} and ${other} are mixed in one list`,
+      found: `${first} before, ${first === one ? other : one} here`,
+      allowed: `all by ${one}, or all by ${other}`,
+    },
+  ];
+}
+
+function changesInOrder(changes: readonly ({ at_km: number } | { at_s: number })[]): RuleFault[] {
+  const path = ['hold', 'changes'];
+  const mixed = oneWay(changes, path, 'at_km', 'at_s');
+  if (mixed.length > 0) return mixed;
+  return changes.flatMap((change, i) => {
+    const key = 'at_km' in change ? 'at_km' : 'at_s';
+    const at = (c: { at_km: number } | { at_s: number }): number => ('at_km' in c ? c.at_km : c.at_s);
+    const before = i === 0 ? Number.NEGATIVE_INFINITY : at(changes[i - 1]!);
+    if (at(change) > before) return [];
+    return [
+      {
+        path: [...path, i, key],
+        code: 'not-in-order',
+        message: 'the changes are not in order',
+        found: `${at(change)} after ${before}`,
+        allowed: `more than ${before}`,
+      },
+    ];
+  });
+}
+
+/** The log law has no wind at or below the roughness length. */
+function aboveRoughness(wind: NonNullable<CaseInput['wind']>): RuleFault[] {
+  const roughness = 'roughness_m' in wind ? wind.roughness_m : TERRAIN_ROUGHNESS[wind.terrain ?? 'open'];
+  return (['height_m', 'rider_height_m'] as const).flatMap((key) => {
+    const height = wind[key];
+    if (height === undefined || height > roughness) return [];
+    return [
+      {
+        path: ['wind', key],
+        code: 'below-roughness',
+        message: 'is not above the roughness of the terrain',
+        found: `${height} m`,
+        allowed: `more than ${roughness} m`,
+      },
+    ];
+  });
+}
+
+function requirementWhere({ where }: NonNullable<CaseInput['requirements']>[number], i: number): RuleFault[] {
+  return typeof where === 'object' ? upwards(where, ['requirements', i, 'where']) : [];
+}
+
+function unknownFigures(file: unknown): RuleFault[] {
+  return items(file, 'requirements').flatMap(({ figure, band_kmh: band }, i): RuleFault[] => {
+    if (typeof figure !== 'string') return [];
+    const row = FIGURES.find(({ name }) => name === figure);
+    const names = FIGURES.map(({ name }) => name);
+    if (row === undefined) {
+      const near = nearestKey(figure, names);
+      return [
+        {
+          path: ['requirements', i, 'figure'],
+          code: 'unknown-figure',
+          message: `is not in the table of figures${near === null ? '' : `, did you mean ${near.key}?`}`,
+          found: figure,
+          allowed: names.join(', '),
+        },
+      ];
+    }
+    if (row.takesBand && band === undefined)
+      return [
+        {
+          path: ['requirements', i, 'band_kmh'],
+          code: 'missing-key',
+          message: `is missing: ${figure} is counted within a band`,
+          allowed: 'a half-width in km/h',
+        },
+      ];
+    if (!row.takesBand && band !== undefined)
+      return [
+        {
+          path: ['requirements', i, 'band_kmh'],
+          code: 'keys-exclude',
+          message: `has no meaning for ${figure}`,
+          allowed: FIGURES.filter(({ takesBand }) => takesBand)
+            .map(({ name }) => name)
+            .join(', '),
+        },
+      ];
+    return [];
+  });
+}
