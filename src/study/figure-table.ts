@@ -223,8 +223,7 @@ export const FIGURES: readonly FigureRow[] = [
     better: null,
     definition: 'Time mean of e, with its sign.',
     source: DEFINED_HERE,
-    measure: (record) =>
-      driven(record, (time) => toKmh(sum(record, (i) => record.bins.errorMean[i]) / time)),
+    measure: (record) => driven(record, (time) => toKmh(sum(record, (i) => record.bins.errorMean[i]) / time)),
   },
   {
     name: 'worst_low_kmh',
@@ -357,14 +356,24 @@ export const FIGURES: readonly FigureRow[] = [
     source: 'total variation of the control signal (Skogestad, J. Process Control 13 (2003), from memory)',
     measure: (record) => placeless(perKm(record, toPct(sum(record, (i) => record.bins.throttleTravel[i])))),
   },
-  timed('at_upper_limit_s', 'At full throttle', 'Time with the command at its upper limit.', (b) => b.timeUpper),
+  timed(
+    'at_upper_limit_s',
+    'At full throttle',
+    'Time with the command at its upper limit.',
+    (b) => b.timeUpper,
+  ),
   timed(
     'at_lower_limit_s',
     'At closed throttle',
     'Time with the command at its lower limit.',
     (b) => b.timeLower,
   ),
-  timed('at_rate_limit_s', 'At the rate limit', 'Time with the actuator at its rate limit.', (b) => b.timeRate),
+  timed(
+    'at_rate_limit_s',
+    'At the rate limit',
+    'Time with the actuator at its rate limit.',
+    (b) => b.timeRate,
+  ),
   {
     name: 'at_limit_pct',
     label: 'At a limit',
@@ -388,8 +397,7 @@ export const FIGURES: readonly FigureRow[] = [
     better: 'lower',
     definition: "Work of the rider's brake.",
     source: DEFINED_HERE,
-    measure: (record) =>
-      driven(record, () => toWh(sum(record, (i) => Math.abs(record.bins.brakeWork[i])))),
+    measure: (record) => driven(record, () => toWh(sum(record, (i) => Math.abs(record.bins.brakeWork[i])))),
   },
   {
     name: 'brake_distance_m',

@@ -33,6 +33,16 @@ export interface Demand {
   /** Where the least force is too much: the speed it runs away to [m/s] and the brake power that holds the set speed [W]; else set speed, 0. */
   readonly runaway: Float64Array;
   readonly brakePower: Float64Array;
+  /** Speed of the ideal hold (see quasi-steady.ts) over the whole road, changes of set speed included [m/s]. */
+  readonly ideal: Float64Array;
+  /**
+   * 1 where a hold can be asked for: the demand is in range, the ideal hold is back within half a km/h of the set
+   * speed since 10 s, and no change of set speed is still settling. Share of the road's length for which that is so.
+   */
+  readonly holdable: Uint8Array;
+  readonly holdableShare: number;
+  /** Where a change of set speed is being followed; no hold is judged there. */
+  readonly settling: readonly Stretch[];
 }
 
 export type HillKind = 'climb' | 'descent' | 'rolling';

@@ -1,7 +1,7 @@
 import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
-import type { Figure, Replayed, RoadSegment, Segment, SegmentRun, Stretch } from './findings.ts';
 import { meanAlong, valueAt } from './along-road.ts';
+import type { Figure, Replayed, RoadSegment, Segment, SegmentRun, Stretch } from './findings.ts';
 
 /**
  * Cuts the road into stretches of equal length; the last one takes the rest, and joins its neighbour when it is

@@ -58,9 +58,10 @@ describe('segments by terrain', () => {
       }
       const penalty = [0.001, 0.01, 0.1, 1][seed % 4]!;
       const expected = bruteForce(weight, value, penalty);
-      expect(segmentStarts(Float64Array.from(weight), Float64Array.from(value), penalty), `seed ${seed}`).toEqual(
-        expected.starts,
-      );
+      expect(
+        segmentStarts(Float64Array.from(weight), Float64Array.from(value), penalty),
+        `seed ${seed}`,
+      ).toEqual(expected.starts);
     }
   });
 

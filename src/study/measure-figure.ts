@@ -1,0 +1,105 @@
+import type { BinRecord } from '../loop/result.ts';
+import type { Road } from '../road/road.ts';
+import { FIGURES, type FigureRow, type Measure, type Recovery } from './figure-table.ts';
+import type { Demand, FigureValues, Hill, Replayed, Where } from './findings.ts';
+
+/** What figures are taken from, beside the run itself. */
+export interface FigureContext {
+  readonly road: Road;
+  readonly demand: Demand;
+  readonly hills: readonly Hill[];
+}
+
+/**
+ * One figure of one candidate over the part of the road that `where` names.
+ *
+ * @param row of the table of figures
+ * @param replayed the candidate after its run
+ * @param where `all`; `holdable`: bins that lie whole where a hold can be asked for (Demand.holdable); or a stretch [m]
+ * @param band half-width [m/s] for a row that takes one; must be among the plan's bands
+ */
+export function measureFigure(
+  row: FigureRow,
+  replayed: Replayed,
+  context: FigureContext,
+  where: Where,
+  band: number | null,
+): Measure {
+  const chosen = chooseBins(replayed.result.bins, where, context);
+  return measureOver(row, replayed, chosen, recoveriesOf(replayed.name, context.hills, where), band);
+}
+
+/** The same over given bins and recoveries. */
+export function measureOver(
+  row: FigureRow,
+  { plan, result }: Replayed,
+  chosen: Uint8Array,
+  recoveries: readonly Recovery[],
+  band: number | null,
+): Measure {
+  return row.measure({
+    bins: result.bins,
+    chosen,
+    end: result.endDistance,
+    bands: plan.bands,
+    band: row.takesBand ? band : null,
+    recoveries,
+    efficiency: plan.vehicle.drive.efficiency,
+    ledgerResidual: result.ledger.residual,
+  });
+}
+
+/** Every figure of the table over one `where`, by name, in the units of the table. */
+export function figureValues(
+  replayed: Replayed,
+  context: FigureContext,
+  where: Where,
+  band: number,
+): FigureValues {
+  const chosen = chooseBins(replayed.result.bins, where, context);
+  const recoveries = recoveriesOf(replayed.name, context.hills, where);
+  return Object.fromEntries(
+    FIGURES.map((row) => [row.name, measureOver(row, replayed, chosen, recoveries, band).value]),
+  );
+}
+
+/** Marks the bins that count: for `holdable` those that lie whole on holdable road, for a stretch those whose middle is in it. */
+export function chooseBins(
+  bins: BinRecord,
+  where: Where,
+  { road, demand }: Pick<FigureContext, 'road' | 'demand'>,
+): Uint8Array {
+  const chosen = new Uint8Array(bins.size);
+  if (where === 'all') return chosen.fill(1);
+  if (where !== 'holdable') {
+    for (let i = 0; i < bins.size; i++) {
+      const middle = (bins.edge[i] + bins.edge[i + 1]) / 2;
+      chosen[i] = middle >= where.from && middle < where.to ? 1 : 0;
+    }
+    return chosen;
+  }
+  let knot = 0;
+  for (let i = 0; i < bins.size; i++) {
+    // All knots inside the bin and those next to it on both sides.
+    while (knot + 1 < road.size && road.distance[knot + 1] <= bins.edge[i]) knot++;
+    let all = demand.holdable[knot];
+    for (let k = knot; all === 1 && k < road.size && road.distance[k] < bins.edge[i + 1]; k++)
+      all = demand.holdable[k] & demand.holdable[Math.min(k + 1, road.size - 1)];
+    chosen[i] = all;
+  }
+  return chosen;
+}
+
+/**
+ * Recoveries that count: of the hills that touch the stretch; all of them for `holdable`, because a recovery begins
+ * where the road can be held again, whatever the hill was.
+ */
+function recoveriesOf(name: string, hills: readonly Hill[], where: Where): Recovery[] {
+  return hills
+    .filter((hill) => typeof where === 'string' || (hill.from < where.to && hill.to > where.from))
+    .flatMap((hill) =>
+      hill.outcomes
+        .filter((outcome) => outcome.candidate === name && outcome.affected)
+        .map((outcome) => ({ at: hill.from, time: outcome.recovery })),
+    );
+}

@@ -1,0 +1,163 @@
+import { describe, expect, it } from 'vitest';
+import { FIGURES, type FigureRecord, figureRow } from '../../src/study/figure-table.ts';
+import { expectClose } from '../compare.ts';
+import { recordOf } from './record-of.ts';
+
+/**
+ * Four bins of 100 m at a set speed of 20 m/s, worked out by hand. Errors are constant within a bin:
+ * e = 0, -2, -4, +1 m/s, so the speeds are 20, 18, 16, 21 m/s and the times 5, 100/18, 6.25, 100/21 s.
+ */
+const SPEEDS = [20, 18, 16, 21];
+const BINS = recordOf(
+  100,
+  SPEEDS.map((speed, i) => {
+    const time = 100 / speed;
+    const e = speed - 20;
+    return {
+      time,
+      setSpeed: 20,
+      speedMean: speed,
+      errorMean: e * time,
+      errorSquare: e * e * time,
+      errorMin: e - 0.1,
+      errorMax: e + 0.1,
+      throttleMean: [0.3, 0.5, 1, 0.2][i]!,
+      throttleTravel: [0, 0.2, 0.5, 0.8][i]!,
+      timeUpper: i === 2 ? time : 0,
+      timeLower: i === 3 ? 1 : 0,
+      timeRate: i === 1 ? 0.5 : 0,
+      timeBrake: i === 3 ? time / 2 : 0,
+      timeInBand: [i === 0 || i === 3 ? time : 0, i === 2 ? 0 : time],
+      driveWork: [3600, 7200, 18000, 0][i]!,
+      regenerationWork: i === 3 ? -1800 : 0,
+      brakeWork: i === 3 ? 900 : 0,
+    };
+  }),
+  2,
+);
+
+const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecord => ({
+  bins: BINS,
+  chosen: Uint8Array.from(chosen),
+  end: 400,
+  bands: [1.5, 2.5],
+  band: 1.5,
+  recoveries: [],
+  efficiency: null,
+  ledgerResidual: -3e-9,
+  ...more,
+});
+const measure = (name: string, of: FigureRecord) => figureRow(name)!.measure(of);
+const value = (name: string, of = record([1, 1, 1, 1])): number => {
+  const { value: found } = measure(name, of);
+  if (typeof found !== 'number') throw new Error(`${name}: ${found.none}`);
+  return found;
+};
+
+// By hand: total time 5 + 5.5555... + 6.25 + 4.7619... s.
+const TIME = 5 + 50 / 9 + 6.25 + 100 / 21;
+
+describe('figures of a record worked out by hand', () => {
+  it('weigh errors with time', () => {
+    expectClose(value('mean_error_kmh'), (3.6 * ((-2 * 50) / 9 - 4 * 6.25 + 100 / 21)) / TIME, 1e-12);
+    expectClose(value('rms_error_kmh'), 3.6 * Math.sqrt(((4 * 50) / 9 + 16 * 6.25 + 100 / 21) / TIME), 1e-12);
+    expectClose(value('within_band_pct'), (100 * (5 + 100 / 21)) / TIME, 1e-12);
+    expectClose(
+      value('within_band_pct', record([1, 1, 1, 1], { band: 2.5 })),
+      (100 * (TIME - 6.25)) / TIME,
+      1e-12,
+    );
+    expectClose(value('p95_abs_error_kmh'), 4 * 3.6, 1e-12);
+    expectClose(value('p95_abs_error_kmh', record([1, 0, 0, 1])), 3.6, 1e-12);
+  });
+
+  it('give extremes their sign and their place', () => {
+    const low = measure('worst_low_kmh', record([1, 1, 1, 1]));
+    expectClose(low.value as number, -4.1 * 3.6, 1e-12);
+    expect(low.at).toBe(250);
+    const high = measure('worst_high_kmh', record([1, 1, 1, 1]));
+    expectClose(high.value as number, 1.1 * 3.6, 1e-12);
+    expect(high.at).toBe(350);
+    expect(measure('within_band_pct', record([1, 1, 1, 1])).at).toBe(250);
+    expect(measure('worst_high_kmh', record([0, 1, 1, 0]))).toEqual({ value: 0, at: null });
+  });
+
+  it('count the time lost against the set speed over the same way', () => {
+    // 400 m at 20 m/s take 20 s.
+    expectClose(value('time_lost_s'), TIME - 20, 1e-12);
+    expectClose(value('time_s'), TIME, 1e-12);
+    expectClose(value('time_lost_s', record([0, 0, 1, 0])), 6.25 - 5, 1e-12);
+  });
+
+  it('count limits, travel, energy and brake', () => {
+    expectClose(value('at_upper_limit_s'), 6.25, 1e-12);
+    expectClose(value('at_lower_limit_s'), 1, 1e-12);
+    expectClose(value('at_rate_limit_s'), 0.5, 1e-12);
+    expectClose(value('at_limit_pct'), (100 * 7.25) / TIME, 1e-12);
+    expectClose(value('throttle_travel_pct_per_km'), 150 / 0.4, 1e-9);
+    expectClose(
+      value('throttle_mean_pct'),
+      (100 * (0.3 * 5 + (0.5 * 50) / 9 + 6.25 + (0.2 * 100) / 21)) / TIME,
+      1e-12,
+    );
+    expectClose(value('wheel_energy_wh'), 8, 1e-12);
+    expectClose(value('wheel_energy_wh_per_km'), 20, 1e-12);
+    expectClose(value('regeneration_wh'), 0.5, 1e-12);
+    expectClose(value('brake_energy_wh'), 0.25, 1e-12);
+    expectClose(value('brake_distance_m'), 50, 1e-12);
+    expectClose(value('ledger_residual'), 3e-9, 1e-24);
+    expectClose(
+      value('battery_energy_wh', record([1, 1, 1, 1], { efficiency: { drive: 0.8, regeneration: 0.6 } })),
+      8 / 0.8 - 0.5 * 0.6,
+      1e-12,
+    );
+  });
+
+  it('count the last bin only as far as the run went', () => {
+    expectClose(value('wheel_energy_wh_per_km', record([1, 1, 1, 1], { end: 320 })), 8 / 0.32, 1e-9);
+  });
+
+  it('take the longest recovery, and a missing one before any other', () => {
+    const of = (...times: (number | { none: string })[]) =>
+      measure('recovery_s', record([1], { recoveries: times.map((time, k) => ({ at: 100 * k, time })) }));
+    expect(of(2, 7, 3)).toEqual({ value: 7, at: 100 });
+    expect(of()).toEqual({ value: 0, at: null });
+    expect(of(2, { none: 'never' }, 9)).toEqual({ value: { none: 'never' }, at: 100 });
+  });
+
+  it('do not exist where nothing was driven, and are never NaN', () => {
+    const nowhere = record([0, 0, 0, 0], { efficiency: { drive: 0.8, regeneration: 0.6 } });
+    for (const row of FIGURES) {
+      const { value: found } = row.measure(nowhere);
+      if (row.weight !== 'event' || row.name.startsWith('worst'))
+        expect(found, row.name).toEqual({ none: 'no such stretch was driven' });
+    }
+    expect(measure('within_band_pct', record([1, 1, 1, 1], { band: 0.7 })).value).toEqual({
+      none: 'the run did not count the time within this band',
+    });
+    expect(measure('battery_energy_wh', record([1, 1, 1, 1])).value).toEqual({
+      none: 'the drive has no efficiency',
+    });
+  });
+});
+
+describe('the table of figures', () => {
+  it('has one row a name, each with its unit as its ending', () => {
+    const endings: Record<string, string> = {
+      '%': '_pct',
+      'km/h': '_kmh',
+      s: '_s',
+      Wh: '_wh',
+      'Wh/km': '_wh_per_km',
+      '%/km': '_pct_per_km',
+      m: '_m',
+      '1': 'residual',
+    };
+    expect(new Set(FIGURES.map((row) => row.name)).size).toBe(FIGURES.length);
+    for (const row of FIGURES) {
+      expect(row.name.endsWith(endings[row.unit]!), row.name).toBe(true);
+      expect(row.definition.length).toBeGreaterThan(10);
+      expect(row.definition.endsWith('.'), row.name).toBe(true);
+    }
+  });
+});
