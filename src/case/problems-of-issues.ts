@@ -12,15 +12,7 @@ import {
   shapeOf,
   tellingKeys,
 } from './schema-walk.ts';
-import {
-  type Path,
-  pathId,
-  pathWords,
-  placeOf,
-  placeOfKey,
-  valueAt,
-  type YamlSource,
-} from './yaml-source.ts';
+import { type Path, pathId, placeOf, placeOfKey, valueAt, type YamlSource } from './yaml-source.ts';
 
 type Schema = z.core.$ZodType;
 type Issue = z.core.$ZodIssue;
