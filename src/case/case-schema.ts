@@ -13,6 +13,11 @@ const pieceRest = {
   heading_deg: optional(number('deg', 0, 360, 'Heading, clockwise from true north')),
   headwind_m_s: optional(number('m/s', -60, 60, 'Wind against travel')),
 };
+const direction = otherwise(
+  word(['there', 'back', 'both'], 'Which way the road is driven'),
+  'there',
+  'as written',
+);
 const fileTrack = mapping('A road from a track file', {
   file: fileName,
   track: optional(
@@ -28,11 +33,7 @@ const fileTrack = mapping('A road from a track file', {
     0,
     'nothing is left out',
   ),
-  direction: otherwise(
-    word(['there', 'back', 'both'], 'Which way the track is driven'),
-    'there',
-    'as the file goes',
-  ),
+  direction,
 });
 const profileTrack = mapping('A written road', {
   profile: list(
@@ -49,6 +50,7 @@ const profileTrack = mapping('A written road', {
     0,
     'the grade steps',
   ),
+  direction,
   start_elevation_m: otherwise(number('m', -450, 6000, 'Elevation of the first point'), 0, 'sea level'),
 });
 

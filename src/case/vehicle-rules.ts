@@ -26,21 +26,4 @@ export const vehicleRules: readonly Rule<VehicleInput>[] = [
       return faults;
     },
   },
-  {
-    about: ['drive', 'regeneration_fade_kmh'],
-    check: ({ drive }) => {
-      if (drive?.kind !== 'electric' || drive.regeneration_fade_kmh === undefined) return [];
-      const [from, to] = drive.regeneration_fade_kmh;
-      if (from < to) return [];
-      return [
-        {
-          path: ['drive', 'regeneration_fade_kmh'],
-          code: 'not-in-order',
-          message: 'the fade does not go upwards in speed',
-          found: `${from} to ${to} km/h`,
-          allowed: 'the lower speed first',
-        },
-      ];
-    },
-  },
 ];

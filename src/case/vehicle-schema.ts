@@ -91,7 +91,7 @@ const peakPower = optional(
 const driveSchemas = {
   force: mapping('Force at the wheel by throttle, one fixed ratio', {
     kind: kind('force'),
-    peak_force_n: number('N', 0, 20000, 'Greatest force at the wheel, at full throttle'),
+    peak_force_n: number('N', 1, 20000, 'Greatest force at the wheel, at full throttle'),
     peak_power_kw: peakPower,
     closed_throttle_force_n: otherwise(
       number('N', 0, 5000, 'Force at the wheel that holds back at closed throttle, written positive'),
@@ -107,8 +107,8 @@ const driveSchemas = {
   }),
   electric: mapping('Electric motor: force-power envelope, regeneration down to throttle -100 %', {
     kind: kind('electric'),
-    peak_force_n: number('N', 0, 20000, 'Greatest force at the wheel'),
-    peak_power_kw: number('kW', 0.01, 500, 'Greatest power at the wheel'),
+    peak_force_n: number('N', 1, 20000, 'Greatest force at the wheel'),
+    peak_power_kw: peakPower,
     regeneration_force_n: otherwise(
       number('N', 0, 20000, 'Greatest force that regeneration holds back with, written positive'),
       0,
@@ -120,24 +120,22 @@ const driveSchemas = {
       'not given: no power limit of its own',
     ),
     regeneration_fade_kmh: otherwise(
-      z
-        .tuple([
-          number('km/h', 0, 50, 'Speed below which nothing is regenerated'),
-          number('km/h', 0, 80, 'Speed above which all of it is there'),
-        ])
-        .meta({ description: 'Regeneration fades in between these two speeds [km/h]' }),
-      [2, 8],
-      'invented round figures: a motor cannot hold back at a standstill',
+      number('km/h', 0, 50, 'Speed below which drag and regeneration fade to nothing at a standstill'),
+      8,
+      'an assumed round figure, about 2 m/s: a motor cannot hold back at a standstill',
     ),
-    drive_efficiency_pct: otherwise(
-      number('%', 10, 100, 'Battery to wheel'),
-      100,
-      'ideal: battery energy equals wheel energy',
+    closed_throttle_force_n: otherwise(
+      number('N', 0, 5000, 'Drag of the motor at closed throttle, written positive'),
+      0,
+      'ideal: no drag at closed throttle',
     ),
-    regeneration_efficiency_pct: otherwise(
-      number('%', 0, 100, 'Wheel to battery'),
-      100,
-      'ideal: battery energy equals wheel energy',
+    efficiency_pct: optional(
+      mapping('Efficiencies [%]', {
+        drive: number('%', 1, 100, 'Wheel energy over battery energy'),
+        regeneration: number('%', 0, 100, 'Battery energy over wheel energy'),
+      }),
+      'none',
+      'not given: no account of battery energy',
     ),
     lag_s: lag,
   }),
