@@ -1,0 +1,158 @@
+import { bracketedRoot } from '../numeric/root.ts';
+import { derateFactor } from './derating.ts';
+import { throttleFor, wheelForce } from './drive-law.ts';
+import { requiredForce } from './resistance.ts';
+import { type Surroundings, stillAndLevel } from './surroundings.ts';
+import type { Vehicle } from './vehicle.ts';
+
+/** No speed above this is looked for [m/s]. */
+export const SPEED_CEILING = 150;
+const SCAN_STEP = 1;
+const TOLERANCE = 1e-10;
+
+/** A speed at which a locked throttle neither gains nor loses. */
+export interface Equilibrium {
+  /** [m/s] */
+  readonly speed: number;
+  /** A small disturbance dies out. */
+  readonly stable: boolean;
+}
+
+/** Wheel force of a locked throttle less what the road asks, as a function of speed [N]. */
+function surplusOf(vehicle: Vehicle, at: Surroundings, throttle: number): (speed: number) => number {
+  const derate = derateFactor(vehicle.drive, at.airDensity, at.airTemperature);
+  const { drive } = vehicle;
+  return (speed) =>
+    wheelForce(drive, drive.gear, speed, throttle, derate) - requiredForce(vehicle, speed, at);
+}
+
+/**
+ * All speeds in (0, 150 m/s] at which a locked throttle is in balance, in rising order. The surplus of force is scanned
+ * in steps of 1 m/s and at every corner of drive and wind, a peak or a dip between two steps is followed to its end so
+ * that a close pair is not missed, and every change of sign is refined by Brent's method to 1e-10 m/s.
+ *
+ * @param vehicle in its engaged gear
+ * @param at surroundings, the same for ever
+ * @param throttle locked
+ */
+export function equilibriumSpeeds(
+  vehicle: Vehicle,
+  at: Surroundings,
+  throttle: number,
+): readonly Equilibrium[] {
+  const surplus = surplusOf(vehicle, at, throttle);
+  const speeds = scanSpeeds(vehicle, at);
+  const values = speeds.map(surplus);
+  for (let i = speeds.length - 2; i >= 1; i--) {
+    const toward = Math.sign(values[i]!);
+    const nearest =
+      toward * values[i]! <= toward * values[i - 1]! && toward * values[i]! <= toward * values[i + 1]!;
+    if (toward === 0 || !nearest) continue;
+    const turn = turningPoint((speed) => toward * surplus(speed), speeds[i - 1]!, speeds[i + 1]!);
+    const value = surplus(turn);
+    if (toward * value > 0 || turn === speeds[i]) continue;
+    const where = turn < speeds[i]! ? i : i + 1;
+    speeds.splice(where, 0, turn);
+    values.splice(where, 0, value);
+  }
+  const found: Equilibrium[] = [];
+  for (let i = 1; i < speeds.length; i++) {
+    const before = values[i - 1]!;
+    const after = values[i]!;
+    if (before > 0 === after > 0) continue;
+    const root = bracketedRoot(surplus, speeds[i - 1]!, speeds[i]!, TOLERANCE);
+    if (root.x > 0) found.push({ speed: root.x, stable: before > 0 });
+  }
+  return found;
+}
+
+/**
+ * Highest speed that full throttle holds for ever.
+ *
+ * @returns [m/s]; 0 where full throttle holds no speed at all; at most 150
+ */
+export function sustainedSpeed(vehicle: Vehicle, at: Surroundings): number {
+  const full = vehicle.drive.throttleMax;
+  if (surplusOf(vehicle, at, full)(SPEED_CEILING) > 0) return SPEED_CEILING;
+  return equilibriumSpeeds(vehicle, at, full).findLast((balance) => balance.stable)?.speed ?? 0;
+}
+
+/**
+ * Speed at which a locked throttle settles when it starts from a given speed: the next stable balance in the direction
+ * in which the force pushes.
+ *
+ * @param from [m/s], > 0
+ * @returns [m/s]; 0 where the vehicle comes to a stop, 150 where nothing holds it below that
+ */
+export function settledSpeed(vehicle: Vehicle, at: Surroundings, throttle: number, from: number): number {
+  const surplus = surplusOf(vehicle, at, throttle)(from);
+  if (surplus === 0) return from;
+  const stable = equilibriumSpeeds(vehicle, at, throttle).filter((balance) => balance.stable);
+  if (surplus > 0) return stable.find((balance) => balance.speed >= from)?.speed ?? SPEED_CEILING;
+  return stable.findLast((balance) => balance.speed <= from)?.speed ?? 0;
+}
+
+/**
+ * Speed to which the vehicle runs away from `from` with the least throttle it has (closed, or full regeneration).
+ *
+ * @returns [m/s]; `from` itself where the least throttle holds it or slows it down
+ */
+export function runawaySpeed(vehicle: Vehicle, at: Surroundings, from: number): number {
+  return Math.max(from, settledSpeed(vehicle, at, vehicle.drive.throttleMin, from));
+}
+
+/**
+ * Throttle that holds a speed on the level in still air, limited to the range of the drive.
+ *
+ * @param speed [m/s], > 0
+ * @param airDensity [kg/m3]
+ * @param airTemperature [K]
+ */
+export function levelThrottle(
+  vehicle: Vehicle,
+  speed: number,
+  airDensity: number,
+  airTemperature: number,
+): number {
+  const { drive } = vehicle;
+  const force = requiredForce(vehicle, speed, stillAndLevel(airDensity, airTemperature));
+  const derate = derateFactor(drive, airDensity, airTemperature);
+  const throttle = throttleFor(drive, drive.gear, speed, force, derate) ?? 0;
+  return Math.min(Math.max(throttle, drive.throttleMin), drive.throttleMax);
+}
+
+function scanSpeeds(vehicle: Vehicle, at: Surroundings): number[] {
+  const { drive } = vehicle;
+  const { ratio } = drive.gears[drive.gear]!;
+  const corners = [...drive.speedEdges].map((edge) => edge / ratio);
+  const grid = Array.from({ length: SPEED_CEILING / SCAN_STEP }, (_, i) => (i + 1) * SCAN_STEP);
+  const inside = [1e-9, -at.headwind, ...corners, ...grid].filter((v) => v > 0 && v <= SPEED_CEILING);
+  return [...new Set(inside)].sort((a, b) => a - b);
+}
+
+/** Where a function with one dip between two ends is least (golden section), or the first point below zero on the way. */
+function turningPoint(f: (x: number) => number, a: number, b: number): number {
+  const share = (Math.sqrt(5) - 1) / 2;
+  let x1 = b - share * (b - a);
+  let x2 = a + share * (b - a);
+  let f1 = f(x1);
+  let f2 = f(x2);
+  while (b - a > 1e-9) {
+    if (f1 <= 0) return x1;
+    if (f2 <= 0) return x2;
+    if (f1 < f2) {
+      b = x2;
+      x2 = x1;
+      f2 = f1;
+      x1 = b - share * (b - a);
+      f1 = f(x1);
+    } else {
+      a = x1;
+      x1 = x2;
+      f1 = f2;
+      x2 = a + share * (b - a);
+      f2 = f(x2);
+    }
+  }
+  return f1 < f2 ? x1 : x2;
+}

@@ -1,0 +1,52 @@
+import { checkSpec } from './check-spec.ts';
+import type { Drive } from './vehicle.ts';
+
+/** A drive known by its force and power at the wheel. */
+export interface ForceDriveSpec {
+  /** Full-throttle force below the power limit [N]. */
+  readonly peakForce: number;
+  /** Power limit at the wheel [W]; null: none. */
+  readonly peakPower: number | null;
+  /** Force that holds the vehicle back at closed throttle [N], >= 0. */
+  readonly closedThrottleForce: number;
+  /** First-order lag from throttle to force [s]. */
+  readonly lag: number;
+  readonly derate: Drive['derate'];
+}
+
+/**
+ * F = -F_ct + u (min(F_peak, P_peak / v) + F_ct), u in [0, 1], compiled to one cell below the corner speed
+ * P_peak / F_peak and one above it. One fixed ratio; with a power limit this takes an ideal ratio for granted above
+ * the corner speed.
+ *
+ * @throws InputError `out-of-range`
+ */
+export function forceDrive(spec: ForceDriveSpec): Drive {
+  const { peakForce, peakPower, closedThrottleForce, lag, derate } = spec;
+  checkSpec('force drive', [
+    { key: 'peakForce', value: peakForce, unit: 'N', least: 0, above: true },
+    { key: 'peakPower', value: peakPower ?? 1, unit: 'W', least: 0, above: true },
+    { key: 'closedThrottleForce', value: closedThrottleForce, unit: 'N', least: 0 },
+    { key: 'lag', value: lag, unit: 's', least: 0 },
+  ]);
+  const belowCorner = [-closedThrottleForce, 0, peakForce + closedThrottleForce, 0, 0, 0];
+  const aboveCorner = [-closedThrottleForce, 0, closedThrottleForce, 0, 0, peakPower ?? 0];
+  return {
+    kind: 'force',
+    speedEdges: Float64Array.from(peakPower === null ? [] : [peakPower / peakForce]),
+    throttleEdges: new Float64Array(0),
+    cells: Float64Array.from(peakPower === null ? belowCorner : [...belowCorner, ...aboveCorner]),
+    gears: [{ ratio: 1, inertia: 0 }],
+    gear: 0,
+    throttleMin: 0,
+    throttleMax: 1,
+    lag,
+    derate,
+    stallSpeed: 0,
+    efficiency: null,
+    peakForce,
+    peakPower,
+    closedThrottleForce,
+    regenerationForce: 0,
+  };
+}

@@ -1,0 +1,71 @@
+import { derateFactor } from './derating.ts';
+import { throttleFor, wheelForceSlopes } from './drive-law.ts';
+import { requiredForce, resistanceSlopes } from './resistance.ts';
+import type { Surroundings } from './surroundings.ts';
+import type { Vehicle } from './vehicle.ts';
+
+/** Where a vehicle is linearised: it holds this speed steadily in these surroundings. */
+export interface OperatingPoint {
+  /** [m/s], > 0 */
+  readonly speed: number;
+  readonly surroundings: Surroundings;
+}
+
+/**
+ * The vehicle near an operating point, in deviations from it:
+ * dv/dt = a v + b u + gradeGain grade + headwindGain headwind + crosswindGain crosswind,
+ * u being what the actuator and the drive's lag pass on.
+ */
+export interface LinearVehicle {
+  readonly speed: number;
+  /** Throttle that holds the operating point; outside of the drive's range where the point cannot be held. */
+  readonly throttle: number;
+  /** The throttle is within the drive's range. */
+  readonly feasible: boolean;
+  /** [1/s], negative where a locked throttle is stable. */
+  readonly a: number;
+  /** [m/s2] for a throttle of 1. */
+  readonly b: number;
+  /** [m/s2] for a grade of 1 (a ratio, not an angle); negative. */
+  readonly gradeGain: number;
+  /** [m/s2 / (m/s)]; negative. */
+  readonly headwindGain: number;
+  readonly crosswindGain: number;
+  /** m_e [kg]. */
+  readonly effectiveMass: number;
+}
+
+/** Mass that the force must accelerate: mass, turning wheels, and what turns before the engaged gear [kg]. */
+export function effectiveMass(vehicle: Vehicle): number {
+  return vehicle.mass + vehicle.rotatingMass + vehicle.drive.gears[vehicle.drive.gear]!.inertia;
+}
+
+/**
+ * Linear model of the vehicle by exact derivatives; at a corner of the drive (power limit) those of its upper side.
+ *
+ * @param vehicle in its engaged gear
+ * @param point operating point; a speed of 0 has no linear model
+ * @returns plain numbers; null where the throttle has no effect at the operating point
+ */
+export function linearise(vehicle: Vehicle, point: OperatingPoint): LinearVehicle | null {
+  const { speed, surroundings: at } = point;
+  const { drive } = vehicle;
+  const derate = derateFactor(drive, at.airDensity, at.airTemperature);
+  const throttle = throttleFor(drive, drive.gear, speed, requiredForce(vehicle, speed, at), derate);
+  if (throttle === null || !(speed > 0)) return null;
+  const force = wheelForceSlopes(drive, drive.gear, speed, throttle, derate);
+  if (force.byThrottle === 0) return null;
+  const road = resistanceSlopes(vehicle, speed, at);
+  const mass = effectiveMass(vehicle);
+  return {
+    speed,
+    throttle,
+    feasible: throttle >= drive.throttleMin && throttle <= drive.throttleMax,
+    a: (force.bySpeed - road.bySpeed) / mass,
+    b: force.byThrottle / mass,
+    gradeGain: -road.byGrade / mass,
+    headwindGain: -road.byHeadwind / mass,
+    crosswindGain: -road.byCrosswind / mass,
+    effectiveMass: mass,
+  };
+}
