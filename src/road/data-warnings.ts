@@ -1,0 +1,46 @@
+import { medianOf } from '../numeric/running-median.ts';
+import type { Warning } from '../problems/warning.ts';
+import { toKm } from '../units/convert.ts';
+import type { DrivenTrack } from './driven-track.ts';
+import type { Road } from './road.ts';
+
+/** A gap is this many usual spacings wide, and at least this long [m]. */
+const GAP_SPACINGS = 5;
+const GAP_LENGTH = 50;
+
+/** What the points themselves give cause to say: too coarse for the grid, gaps bridged, too short for the smoothing. */
+export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
+  const warnings: Warning[] = [];
+  const { distance, size } = driven;
+  const steps = distance.slice(1).map((x, i) => x - distance[i]!);
+  const usual = medianOf(steps);
+  if (usual > 2 * road.grid)
+    warnings.push({
+      code: 'interpolated',
+      message: `Points of the track are ${usual.toFixed(0)} m apart (median); between them the ${road.grid} m grid is interpolated and shows no real detail.`,
+    });
+  const least = Math.max(GAP_SPACINGS * usual, GAP_LENGTH);
+  for (let i = 1; i < size; i++) {
+    if (steps[i - 1]! <= least) continue;
+    warnings.push({
+      code: 'gap-bridged',
+      message: `No points for ${steps[i - 1]!.toFixed(0)} m from km ${toKm(distance[i - 1]!).toFixed(2)}: bridged, and the grade there is little more than a guess.`,
+      from: distance[i - 1]!,
+      to: distance[i]!,
+    });
+  }
+  const length = distance[size - 1]!;
+  const { smoothing } = road;
+  if (smoothing === null) return warnings;
+  if (length < 2 * smoothing.wavelength)
+    warnings.push({
+      code: 'short-for-smoothing',
+      message: `The road is ${length.toFixed(0)} m long and its elevation is smoothed over ${smoothing.wavelength.toFixed(0)} m: little but one parabola is left of it.`,
+    });
+  if (smoothing.wavelength < 4 * road.grid)
+    warnings.push({
+      code: 'grid-coarse-for-smoothing',
+      message: `The grid of ${road.grid} m is coarse for a smoothing wavelength of ${smoothing.wavelength.toFixed(0)} m; a quarter of it or less shows what the smoothing keeps.`,
+    });
+  return warnings;
+}

@@ -1,0 +1,181 @@
+import { interpolateLinear } from '../numeric/interpolate.ts';
+import { medianOf } from '../numeric/running-median.ts';
+import { InputError } from '../problems/input-error.ts';
+import type { Repair } from '../track/track.ts';
+import type { DrivenTrack } from './driven-track.ts';
+import { gradeOf, smoothElevation } from './elevation-smoothing.ts';
+import { isWholeMetres, SOURCE_CLASSES } from './elevation-source.ts';
+import type { RoadOptions } from './options.ts';
+import type { Smoothing } from './road.ts';
+
+/** An isolated hill (a raised cosine) this many wavelengths from foot to foot keeps 90 % of its height. */
+const SHORTEST_HILL = 1.35;
+
+/** Grade at the uniform knots and where it comes from. */
+export interface GradeAlong {
+  readonly grade: Float64Array;
+  readonly gradeSd: Float64Array;
+  /** Of the first knot [m]. */
+  readonly startElevation: number;
+  readonly smoothing: Smoothing | null;
+  /** Elevation spikes, at driven distances. */
+  readonly repairs: readonly Repair[];
+}
+
+/**
+ * Grade of a driven track at uniform knots: from its grade column as it is, else from survey elevations by central
+ * differences, else from smoothed elevations with their uncertainty.
+ *
+ * The s.d. of a smoothed grade joins two independent parts far from ends: the smoother's posterior for the noise that the
+ * residuals show, and the source's own, which they do not show. Towards ends and over masks and gaps both grow by the ratio
+ * that the smoother's factor gives.
+ *
+ * @param uniform knots [m] from 0, at least 4, reaching the last point or past it
+ * @throws InputError `no-elevation`, `too-few-elevations`
+ */
+export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform: Float64Array): GradeAlong {
+  if (driven.grade !== null)
+    return {
+      grade: gradeByCell(driven.distance, driven.grade, uniform, options.grid),
+      gradeSd: new Float64Array(uniform.length),
+      startElevation: driven.elevation?.[0] ?? 0,
+      smoothing: null,
+      repairs: [],
+    };
+  if (driven.elevation === null)
+    throw new InputError({
+      code: 'no-elevation',
+      place: { key: 'track' },
+      message: 'the track has neither elevation nor grade',
+      allowed: 'an elevation for its points, or a grade_pct column',
+    });
+  const open = openPoints(driven);
+  const least = options.elevationSource === 'exact' ? 2 : 4;
+  if (open.length < least)
+    throw new InputError({
+      code: 'too-few-elevations',
+      place: { key: driven.masks.length > 0 ? 'road.masks' : 'track' },
+      message: 'too few points with elevation are left outside of the masks',
+      found: `${open.length}`,
+      allowed: `at least ${least}`,
+    });
+  return options.elevationSource === 'exact'
+    ? bySurvey(driven, driven.elevation, open, options.grid, uniform)
+    : bySmoothing(driven, driven.elevation, options, options.elevationSource, uniform);
+}
+
+function bySurvey(
+  driven: DrivenTrack,
+  elevation: Float64Array,
+  open: readonly number[],
+  grid: number,
+  uniform: Float64Array,
+): GradeAlong {
+  const x = Float64Array.from(open, (i) => driven.distance[i]!);
+  const z = Float64Array.from(open, (i) => elevation[i]!);
+  const atKnots = interpolateLinear(x, z, uniform);
+  // Knots past the last point go on along the last slope.
+  const last = x.length - 1;
+  const slope = (z[last]! - z[last - 1]!) / (x[last]! - x[last - 1]!);
+  for (let i = 0; i < uniform.length; i++)
+    if (uniform[i]! > x[last]!) atKnots[i] = z[last]! + slope * (uniform[i]! - x[last]!);
+  return {
+    grade: gradeOf(atKnots, grid),
+    gradeSd: new Float64Array(uniform.length),
+    startElevation: atKnots[0]!,
+    smoothing: null,
+    repairs: [],
+  };
+}
+
+function bySmoothing(
+  driven: DrivenTrack,
+  elevation: Float64Array,
+  options: RoadOptions,
+  name: keyof typeof SOURCE_CLASSES,
+  uniform: Float64Array,
+): GradeAlong {
+  const source = SOURCE_CLASSES[name];
+  const usual = isWholeMetres(elevation) ? source.wavelengthWholeMetres : source.wavelength;
+  const wavelength = options.smoothingWavelength ?? usual;
+  const smooth = smoothElevation({
+    distance: driven.distance,
+    elevation,
+    masks: driven.masks,
+    grid: options.grid,
+    knots: uniform.length,
+    wavelength,
+    noiseFloor: source.noiseFloor,
+  });
+  const sourceGradeSd = source.gradeSd * Math.max(1, wavelength / usual);
+  const shown = smooth.noiseSd * smooth.leastGradeSdPerNoise;
+  const middle = Math.sqrt(shown * shown + sourceGradeSd * sourceGradeSd);
+  return {
+    grade: smooth.grade,
+    gradeSd: smooth.gradeSdPerNoise.map((sd) => (middle * sd) / smooth.leastGradeSdPerNoise),
+    startElevation: smooth.elevation[0]!,
+    smoothing: {
+      source: name,
+      wavelength,
+      lambda: smooth.lambda,
+      residualSd: smooth.noiseSd,
+      sourceGradeSd,
+      shortestHill: SHORTEST_HILL * wavelength,
+    },
+    repairs: spikes(smooth.outliers, driven.distance),
+  };
+}
+
+/** Linear at the knots; the mean over the cell around a knot where the column is denser than the grid, so that the climb stays. */
+function gradeByCell(
+  distance: Float64Array,
+  grade: Float64Array,
+  uniform: Float64Array,
+  grid: number,
+): Float64Array {
+  const steps = distance.slice(1).map((x, i) => x - distance[i]!);
+  if (medianOf(steps) > 0.6 * grid) return interpolateLinear(distance, grade, uniform);
+  const climb = new Float64Array(grade.length);
+  for (let i = 1; i < climb.length; i++)
+    climb[i] = climb[i - 1]! + ((grade[i]! + grade[i - 1]!) / 2) * steps[i - 1]!;
+  const length = distance[distance.length - 1]!;
+  const edges = Float64Array.from({ length: uniform.length + 1 }, (_, i) =>
+    Math.min(Math.max((i - 0.5) * grid, 0), length),
+  );
+  const heights = interpolateLinear(distance, climb, edges);
+  return uniform.map((_, i) => {
+    const width = edges[i + 1]! - edges[i]!;
+    return width > 0 ? (heights[i + 1]! - heights[i]!) / width : grade[grade.length - 1]!;
+  });
+}
+
+function openPoints(driven: DrivenTrack): number[] {
+  const open: number[] = [];
+  for (let i = 0; i < driven.size; i++) {
+    const x = driven.distance[i]!;
+    if (!driven.masks.some((mask) => x >= mask.from && x <= mask.to)) open.push(i);
+  }
+  return open;
+}
+
+/** Neighbouring outliers make one repair. */
+function spikes(outliers: readonly number[], distance: Float64Array): Repair[] {
+  const repairs: Repair[] = [];
+  for (let k = 0; k < outliers.length; ) {
+    let end = k;
+    while (end + 1 < outliers.length && outliers[end + 1] === outliers[end]! + 1) end++;
+    const points = end - k + 1;
+    const from = distance[outliers[k]!]!;
+    const to = distance[outliers[end]!]!;
+    repairs.push({
+      kind: 'elevation_spike',
+      from,
+      to,
+      points,
+      line: null,
+      message: `Elevation of ${points === 1 ? '1 point' : `${points} points`} stands out from its neighbours and was left out of the smoothing.`,
+    });
+    k = end + 1;
+  }
+  return repairs;
+}
