@@ -1,0 +1,64 @@
+import type { RunResult } from '../run/run-result.ts';
+import { type Canvas, rectangle } from './charts/canvas.ts';
+import { energyChart } from './charts/energy.ts';
+import { forceSpeedChart } from './charts/force-speed.ts';
+import { hillPicture } from './charts/hill-picture.ts';
+import { laneChart, laneLooks } from './charts/lanes.ts';
+import { planChart } from './charts/plan.ts';
+import { profileChart } from './charts/profile.ts';
+import { segmentStrip } from './charts/segment-strip.ts';
+import type { Html } from './html.ts';
+import { planMap } from './model/plan-map.ts';
+import { viewOf } from './model/view.ts';
+import type { ReportOptions } from './page.ts';
+import { FILE_PAINT } from './paint.ts';
+
+export interface ChartFile {
+  /** File name, with its ending. */
+  readonly name: string;
+  readonly svg: string;
+}
+
+const WIDTH = 980;
+
+/**
+ * The charts of the report as files of their own: complete SVG with concrete colours on white, for slides and documents.
+ * The plan is left out where the positions are unknown.
+ */
+export function chartFiles(result: RunResult, options: ReportOptions): readonly ChartFile[] {
+  const view = viewOf(result, options.units);
+  const canvas = (name: string, width = WIDTH, narrow = false): Canvas => ({
+    id: name,
+    paint: FILE_PAINT,
+    width,
+    narrow,
+  });
+  const file = (name: string, drawn: Html): ChartFile => ({ name: `${name}.svg`, svg: onWhite(drawn) });
+  const map = planMap(result.road);
+  const design = view.candidates.find((candidate) => !candidate.locked) ?? view.candidates[0];
+  return [
+    file('profile', profileChart(view, canvas('profile'))),
+    file('force-speed', forceSpeedChart(view, canvas('force-speed'))),
+    ...laneLooks(view).map((look) => {
+      const name = `lane-${look.title.replaceAll(' ', '-')}`;
+      return file(name, laneChart(view, canvas(name), look));
+    }),
+    ...result.hills.map((hill) => {
+      const name = `hill-${hill.number}`;
+      return file(name, hillPicture(view, hill, canvas(name, 420, true)));
+    }),
+    ...(map === null || design === undefined
+      ? []
+      : [file('plan', planChart(view, design, map, canvas('plan')))]),
+    file('segments', segmentStrip(view, canvas('segments'))),
+    file('energy', energyChart(view, canvas('energy'))),
+  ];
+}
+
+/** A drawing has no ground of its own in the page; a file gets a white one, behind everything. */
+function onWhite(drawn: Html): string {
+  const text = drawn.toString();
+  const [, width, height] = /viewBox="0 0 ([\d.]+) ([\d.]+)"/.exec(text) ?? ['', '0', '0'];
+  const ground = rectangle({ left: 0, top: 0, width: Number(width), height: Number(height) }, '#ffffff');
+  return `<?xml version="1.0" encoding="UTF-8"?>\n${text.replace('</desc>', () => `</desc>${ground}`)}\n`;
+}

@@ -1,0 +1,168 @@
+import type { FullSeries } from '../../loop/result.ts';
+import type { Hill, HillOutcome } from '../../study/findings.ts';
+import { toPct } from '../../units/convert.ts';
+import { type Html, html } from '../html.ts';
+import type { CandidateView, View } from '../model/view.ts';
+import { changeText } from '../quantity.ts';
+import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
+import {
+  type Box,
+  type Canvas,
+  clip,
+  clipped,
+  drawing,
+  filled,
+  rectangle,
+  segment,
+  stroked,
+} from './canvas.ts';
+import { areaPath, linePath, type Point } from './paths.ts';
+
+/** A candidate on a hill, with its record. */
+interface Shown {
+  readonly candidate: CandidateView;
+  readonly outcome: HillOutcome;
+}
+
+/** A small picture over time: speed against the set speed above, command and demand below. Time counts from the foot of the hill. */
+export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
+  const { id, paint } = canvas;
+  const shown = shownOn(view, hill);
+  const width = canvas.width - 50;
+  const upper: Box = { left: 40, top: 24, width, height: 104 };
+  const lower: Box = { left: 40, top: 162, width, height: 84 };
+  const foot = (picture: FullSeries): number => timeAtPlace(picture, hill.from);
+  let [start, end] = [0, 1];
+  for (const { outcome } of shown) {
+    const { time, size } = outcome.picture;
+    start = Math.min(start, time[0]! - foot(outcome.picture));
+    end = Math.max(end, time[size - 1]! - foot(outcome.picture));
+  }
+  const x = scaleOf([start, end], upper.left, upper.left + width);
+  const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
+  const { throttleMin } = view.result.vehicle.drive;
+  const shares = scaleOf([Math.min(0, toPct(throttleMin)) - 5, 125], lower.top + lower.height, lower.top);
+  const over = (
+    scale: Scale,
+    values: Float64Array,
+    of: (v: number) => number,
+    picture: FullSeries,
+  ): Point[] =>
+    Array.from({ length: picture.size }, (_, i) => [
+      x(picture.time[i]! - foot(picture)),
+      scale(of(values[i]!)),
+    ]);
+  const first = shown.find(({ candidate }) => !candidate.locked) ?? shown[0];
+  const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}</defs>${
+    first !== undefined && onTheHill(first.outcome.picture, hill, x, [upper, lower], foot, canvas)
+  }${leftAxis(canvas, upper, speeds, `speed / ${view.speed.axis}`, 4)}${clipped(
+    `${id}-u`,
+    html`${
+      first !== undefined &&
+      stroked(linePath(over(speeds, first.outcome.picture.setSpeed, view.speed.of, first.outcome.picture)), {
+        stroke: paint.ink,
+        width: 1,
+        dash: '1 2',
+      })
+    }${shown.map(({ candidate, outcome }) =>
+      stroked(
+        linePath(over(speeds, outcome.picture.speed, view.speed.of, outcome.picture)),
+        lookOf(candidate, canvas),
+      ),
+    )}`,
+  )}${leftAxis(canvas, lower, shares, 'command and demand / %', 3)}${clipped(
+    `${id}-l`,
+    html`${first !== undefined && demandArea(view, first.outcome.picture, x, shares, foot, canvas)}${segment(
+      lower.left,
+      shares(100),
+      lower.left + width,
+      shares(100),
+      { stroke: paint.warn, dash: '4 2' },
+    )}${shown.map(({ candidate, outcome }) =>
+      stroked(
+        linePath(over(shares, outcome.picture.command, toPct, outcome.picture)),
+        lookOf(candidate, canvas),
+      ),
+    )}`,
+  )}${bottomAxis({ ...canvas, narrow: true }, upper, x, null)}${bottomAxis({ ...canvas, narrow: true }, lower, x, 'time from the foot / s')}`;
+  const words = {
+    title: `Hill ${hill.number}: speed, command and demand over time`,
+    desc: shown
+      .map(({ candidate, outcome }) => `${candidate.name}: ${changeText(outcome.speedChange, view.speed)}.`)
+      .join(' '),
+  };
+  return drawing(canvas, lower.top + lower.height + BOTTOM_AXIS_HEIGHT, words, body);
+}
+
+const shownOn = (view: View, hill: Hill): readonly Shown[] =>
+  view.candidates.flatMap((candidate) => {
+    const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
+    return outcome !== undefined && outcome.picture.size > 1 ? [{ candidate, outcome }] : [];
+  });
+
+const lookOf = (candidate: CandidateView, { paint }: Canvas) => ({
+  stroke: paint.series[candidate.colour]!,
+  width: 1.5,
+  dash: candidate.dash,
+});
+
+/** The designs decide the scale; a locked throttle that strays further leaves it at the edge. */
+function speedDomain(view: View, shown: readonly Shown[]): readonly [number, number] {
+  const { of } = view.speed;
+  const designs = shown.filter(({ candidate }) => !candidate.locked);
+  let low = Number.POSITIVE_INFINITY;
+  let high = Number.NEGATIVE_INFINITY;
+  for (const { outcome } of designs.length > 0 ? designs : shown)
+    for (let i = 0; i < outcome.picture.size; i++) {
+      for (const v of [of(outcome.picture.speed[i]!), of(outcome.picture.setSpeed[i]!)]) {
+        if (!Number.isFinite(v)) continue;
+        low = Math.min(low, v);
+        high = Math.max(high, v);
+      }
+    }
+  if (low > high) return [0, 1];
+  const room = Math.max(of(view.result.band), (high - low) * 0.15);
+  return [low - room, high + room];
+}
+
+/** Time at which a picture passes a place; its ends where it does not. */
+function timeAtPlace({ distance, time, size }: FullSeries, place: number): number {
+  for (let i = 1; i < size; i++) {
+    if (distance[i]! < place) continue;
+    const step = distance[i]! - distance[i - 1]!;
+    const part = step > 0 ? Math.max(0, (place - distance[i - 1]!) / step) : 0;
+    return time[i - 1]! + part * (time[i]! - time[i - 1]!);
+  }
+  return time[size - 1] ?? 0;
+}
+
+function onTheHill(
+  picture: FullSeries,
+  hill: Hill,
+  x: Scale,
+  boxes: readonly Box[],
+  foot: (picture: FullSeries) => number,
+  { paint }: Canvas,
+): Html {
+  const [from, to] = [x(0), x(timeAtPlace(picture, hill.to) - foot(picture))];
+  return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}`;
+}
+
+/** Demand at the set speed where the first design is, as an area. */
+function demandArea(
+  view: View,
+  picture: FullSeries,
+  x: Scale,
+  y: Scale,
+  foot: (picture: FullSeries) => number,
+  { paint }: Canvas,
+): Html | null {
+  const { road, demand } = view.result;
+  const points: Point[] = [];
+  let knot = 0;
+  for (let i = 0; i < picture.size; i++) {
+    while (knot < road.size - 1 && road.distance[knot + 1]! <= picture.distance[i]!) knot++;
+    points.push([x(picture.time[i]! - foot(picture)), y(toPct(demand.share[knot]!))]);
+  }
+  return filled(areaPath(points, y(0)), paint.demand[1]!, 0.75);
+}

@@ -1,0 +1,216 @@
+import { toKm, toKw, toPct, toWh } from '../../units/convert.ts';
+import { type Html, html } from '../html.ts';
+import { binCurve, type Lane } from '../model/bin-curves.ts';
+import { type Curve, columnsOf, extentOf } from '../model/columns.ts';
+import type { CandidateView, View } from '../model/view.ts';
+import { bandText, changeText, placeText } from '../quantity.ts';
+import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
+import {
+  type Box,
+  type Canvas,
+  clip,
+  clipped,
+  drawing,
+  filled,
+  label,
+  rectangle,
+  segment,
+  stroked,
+} from './canvas.ts';
+import { envelopePath, linePath, type Point } from './paths.ts';
+
+/** Columns of two user units: what a screen can tell apart, and half the bytes. */
+const COLUMN = 2;
+
+interface LaneLook {
+  readonly lane: Lane;
+  readonly name: string;
+  readonly title: string;
+  readonly of: (value: number) => number;
+  readonly height: number;
+  /** Fixed ends of the scale; the curves widen it where it is not `closed`. */
+  readonly domain: readonly [number, number];
+  readonly closed: boolean;
+}
+
+/** The lanes of a view, from above: what the rider feels, what the throttle does, what it costs. */
+export function laneLooks(view: View): readonly LaneLook[] {
+  const { speed, result } = view;
+  const band = speed.of(result.band);
+  const drive = result.vehicle.drive;
+  const error = (height: number, reach: number | null): LaneLook => ({
+    lane: 'error',
+    name: `speed error / ${speed.axis}`,
+    title: reach === null ? 'speed error' : 'speed error near the band',
+    of: speed.of,
+    height,
+    domain: reach === null ? [-band * 1.5, band * 1.5] : [-reach, reach],
+    closed: reach !== null,
+  });
+  const all = extentOf(view.candidates.map((c) => binCurve(c.result.bins, 'error')));
+  const reach = all === null ? 0 : Math.max(-speed.of(all[0]), speed.of(all[1]));
+  return [
+    error(150, null),
+    // Where a candidate strays far, the band would be a line: it gets a lane of its own, at its own scale.
+    ...(reach > 4 * band ? [error(130, band * 2.5)] : []),
+    {
+      lane: 'throttle',
+      name: 'throttle / %',
+      title: 'throttle',
+      of: toPct,
+      height: 110,
+      domain: [toPct(drive.throttleMin), toPct(drive.throttleMax)],
+      closed: true,
+    },
+    {
+      lane: 'power',
+      name: 'wheel power / kW',
+      title: 'wheel power',
+      of: toKw,
+      height: 110,
+      domain: [0, 1],
+      closed: false,
+    },
+    {
+      lane: 'energy',
+      name: 'wheel energy / Wh',
+      title: 'wheel energy',
+      of: toWh,
+      height: 90,
+      domain: [0, 1],
+      closed: false,
+    },
+  ];
+}
+
+/** All lanes under one another over the same distance. */
+export function lanesChart(view: View, canvas: Canvas): Html {
+  const looks = laneLooks(view);
+  const { narrow, id } = canvas;
+  const left = narrow ? 40 : 52;
+  const width = canvas.width - left - (narrow ? 10 : 118);
+  const gap = 38;
+  let top = 26;
+  const parts = looks.map((look, i) => {
+    const box: Box = { left, top, width, height: narrow ? Math.round(look.height * 0.8) : look.height };
+    top += box.height + gap;
+    return oneLane(view, { ...canvas, id: `${id}-${i}` }, look, box, i === looks.length - 1);
+  });
+  const words = {
+    title: `${looks[0]!.name} and what drives it over ${view.distanceName}`,
+    desc: view.candidates.map((candidate) => extremes(view, candidate)).join(' '),
+  };
+  return drawing(canvas, top - gap + BOTTOM_AXIS_HEIGHT, words, html`${parts}`);
+}
+
+/** One lane as a drawing of its own. */
+export function laneChart(view: View, canvas: Canvas, look: LaneLook): Html {
+  const box: Box = { left: 52, top: 26, width: canvas.width - 170, height: 220 };
+  const words = {
+    title: `${look.title} over ${view.distanceName}`,
+    desc: `${look.name} of every candidate.`,
+  };
+  return drawing(
+    canvas,
+    box.top + box.height + BOTTOM_AXIS_HEIGHT,
+    words,
+    oneLane(view, canvas, look, box, true),
+  );
+}
+
+function extremes(view: View, candidate: CandidateView): string {
+  const extent = extentOf([binCurve(candidate.result.bins, 'error')]);
+  if (extent === null) return `${candidate.name}: no record.`;
+  return `${candidate.name}: speed error from ${changeText(extent[0], view.speed)} to ${changeText(extent[1], view.speed)}.`;
+}
+
+function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, last: boolean): Html {
+  const { paint, id } = canvas;
+  const curves = view.candidates.map((candidate) => binCurve(candidate.result.bins, look.lane));
+  const x = scaleOf([0, toKm(view.length)], box.left, box.left + box.width);
+  const y = scaleOf(domainOf(look, curves), box.top + box.height, box.top);
+  const band = view.speed.of(view.result.band);
+  const inBand = { ...box, top: y(band), height: y(-band) - y(band) };
+  const drawn = view.candidates.map((candidate, i) =>
+    curveMarks(candidate, curves[i]!, look, canvas, x, y, view.length / (box.width / COLUMN)),
+  );
+  return html`<defs>${clip(`${id}-c`, box)}</defs>${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
+    canvas,
+    box,
+    y,
+    look.closed && look.lane === 'error' ? `${look.name}, near the band` : look.name,
+  )}${look.lane === 'error' && label(box.left + box.width - 4, y(band) - 4, `${bandText(view.result.band, view.speed)} band`, { anchor: 'end', size: 11, fill: paint.muted })}${clipped(
+    `${id}-c`,
+    drawn,
+  )}${endMarks(view, canvas, x, box)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
+    canvas,
+    box,
+    x,
+    last ? `${view.distanceName} / km` : null,
+  )}`;
+}
+
+function domainOf(look: LaneLook, curves: readonly Curve[]): readonly [number, number] {
+  if (look.closed) return look.domain;
+  const [low, high] = extentOf(curves) ?? [0, 0];
+  const [from, to] = [Math.min(look.domain[0], look.of(low)), Math.max(look.domain[1], look.of(high))];
+  return [from === 0 ? 0 : from - (to - from) * 0.04, to + (to - from) * 0.04];
+}
+
+function curveMarks(
+  candidate: CandidateView,
+  curve: Curve,
+  look: LaneLook,
+  { paint }: Canvas,
+  x: Scale,
+  y: Scale,
+  column: number,
+): Html {
+  const columns = columnsOf(curve, 0, column);
+  const points = (pick: 'low' | 'mean' | 'high'): Point[] =>
+    columns.map((c) => [x(toKm(c.at)), y(look.of(c[pick]))]);
+  const stroke = paint.series[candidate.colour]!;
+  const spread = columns.some((c) => c.high > c.low);
+  return html`<g>${spread && filled(envelopePath(points('low'), points('high')), stroke, 0.28)}${stroked(
+    linePath(points('mean')),
+    { stroke, width: candidate.locked ? 1.4 : 1.6, dash: candidate.dash },
+  )}</g>`;
+}
+
+/** Where a run ended before the end of the road. */
+function endMarks(view: View, { paint }: Canvas, x: Scale, box: Box): Html {
+  const early = view.candidates.filter((candidate) => candidate.result.status !== 'completed');
+  return html`${early.map((candidate) => {
+    const at = x(toKm(candidate.result.endDistance));
+    return html`<g><title>${`${candidate.name} ended at ${placeText(candidate.result.endDistance)}: ${candidate.result.status}`}</title>${segment(at, box.top, at, box.top + box.height, { stroke: paint.warn, width: 1.5, dash: '3 2' })}</g>`;
+  })}`;
+}
+
+/** Names beside the ends of the lines, moved apart where they would meet. */
+function endLabels(
+  view: View,
+  curves: readonly Curve[],
+  look: LaneLook,
+  { paint }: Canvas,
+  box: Box,
+  y: Scale,
+): Html {
+  const wanted = view.candidates
+    .map((candidate, i) => {
+      const curve = curves[i]!;
+      const value = curve.size > 0 ? look.of(curve.mean[curve.size - 1]!) : 0;
+      const at = Number.isFinite(value) ? y(value) : box.top;
+      return { candidate, at: Math.min(box.top + box.height, Math.max(box.top, at)) };
+    })
+    .sort((a, b) => a.at - b.at || a.candidate.colour - b.candidate.colour);
+  const step = 14;
+  const most = box.top + box.height - (wanted.length - 1) * step;
+  let free = Number.NEGATIVE_INFINITY;
+  return html`${wanted.map(({ candidate, at }, i) => {
+    const place = Math.max(free, Math.min(at, most + i * step));
+    free = place + step;
+    const left = box.left + box.width + 6;
+    const name = candidate.name.length > 13 ? `${candidate.name.slice(0, 12)}…` : candidate.name;
+    return html`${segment(left, place, left + 20, place, { stroke: paint.series[candidate.colour]!, width: 2, dash: candidate.dash })}${label(left + 24, place + 4, name, { size: 11, fill: paint.ink })}`;
+  })}`;
+}

@@ -1,0 +1,194 @@
+import type { Cause, Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
+import { isNone } from '../../study/findings.ts';
+import { fromKmh } from '../../units/convert.ts';
+import {
+  bandText,
+  changeText,
+  fixed,
+  gradeText,
+  placeText,
+  speedText,
+  stretchText,
+  withUnit,
+} from '../quantity.ts';
+import type { CandidateView, View } from './view.ts';
+
+export type Standing = 'met' | 'not met' | 'too close to call' | 'none asked' | 'incomplete';
+
+/** The run in one sentence, and how the design it speaks of stands against what was asked. */
+export interface Answer {
+  readonly sentence: string;
+  readonly standing: Standing;
+  /** The design that the sentence speaks of; null where there is none. */
+  readonly design: string | null;
+}
+
+/** Why a hill defeats a design, as the end of `because ...`. */
+export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
+  torque: 'full throttle gives too little force',
+  power: 'there is too little power',
+  closed_throttle: 'closed throttle holds back too little',
+  gains: 'its gains are too soft for the change of grade',
+  rate: 'the throttle moves too slowly',
+  slack: 'slack in the throttle swallows its command',
+  windup: 'its integral wound up at the limit',
+  derating: 'the thin air leaves too little force',
+  wind: 'the headwind asks for too much',
+  gear: 'the gear is too high',
+  traction: 'the tyre cannot pass the force on',
+};
+
+const STATUS_WORDS = {
+  completed: 'reached the end',
+  stalled: 'stalled',
+  stopped: 'came to a stop',
+  time_limit: 'ran out of time',
+  non_finite: 'failed numerically',
+} as const;
+
+/** How a run ended, in words. */
+export const statusWords = (candidate: CandidateView): string =>
+  candidate.result.status === 'completed'
+    ? STATUS_WORDS.completed
+    : `${STATUS_WORDS[candidate.result.status]} at ${placeText(candidate.result.endDistance)}`;
+
+const VERDICT_COST = { met: 0, 'too close to call': 1, 'not met': 3 } as const;
+
+function findingsOf(view: View, name: string): readonly RequirementFinding[] {
+  return view.result.requirements.filter((finding) => finding.candidate === name);
+}
+
+/** Best first: reached the end, fewest requirements missed, most time within the band, least rms error, order of the case. */
+function bestDesign(view: View): CandidateView | null {
+  const score = (candidate: CandidateView): readonly number[] => {
+    const cost = findingsOf(view, candidate.name).reduce((sum, one) => sum + VERDICT_COST[one.verdict], 0);
+    const within = candidate.figures.within_band_pct;
+    const rms = candidate.figures.rms_error_kmh;
+    return [
+      candidate.result.status === 'completed' ? 0 : 1,
+      cost,
+      typeof within === 'number' ? -within : 0,
+      typeof rms === 'number' ? rms : 0,
+    ];
+  };
+  const ranked = view.candidates
+    .filter((candidate) => !candidate.locked)
+    .map((candidate) => ({ candidate, score: score(candidate) }))
+    .sort((a, b) => {
+      const k = a.score.findIndex((value, i) => value !== b.score[i]);
+      return k < 0 ? 0 : a.score[k]! - b.score[k]!;
+    });
+  return ranked[0]?.candidate ?? null;
+}
+
+/** What share of the time a candidate is within the band, and of what: the holdable stretches where a requirement asks that. */
+function withinClause(view: View, candidate: CandidateView): string {
+  const { result, speed } = view;
+  const target =
+    result.hold.changes.length > 0 ? 'its set speeds' : speedText(result.hold.setSpeed, speed, 0);
+  const asked = findingsOf(view, candidate.name).find(
+    ({ requirement }) => requirement.figure === 'within_band_pct' && requirement.where === 'holdable',
+  );
+  const figure = asked?.measured ?? candidate.figures.within_band_pct;
+  if (figure === undefined || isNone(figure)) return `keeps ${target} on no part of the road`;
+  const band = bandText(asked?.requirement.band ?? result.band, speed);
+  const place = asked === undefined ? 'of the time' : 'of the time on the holdable road';
+  return `holds ${target} within ${band} for ${percent(figure)} ${place}`;
+}
+
+/** Never 100 % for what is a little less, nor 0 % for what is a little more. */
+export function percent(value: number): string {
+  const clear = value < 100 && value > 99.95 ? 99.9 : value > 0 && value < 0.05 ? 0.1 : value;
+  return withUnit(fixed(clear, clear > 99 && clear < 100 ? 1 : 0), '%');
+}
+
+interface Defeat {
+  readonly hill: Hill;
+  readonly outcome: HillOutcome;
+}
+
+/** The hill that takes most speed off a candidate, or gives it most. */
+function worstHill(view: View, name: string): Defeat | null {
+  let worst: Defeat | null = null;
+  for (const hill of view.result.hills)
+    for (const outcome of hill.outcomes) {
+      if (outcome.candidate !== name || !outcome.affected) continue;
+      if (
+        Math.abs(outcome.speedChange) <= Math.max(view.result.band, Math.abs(worst?.outcome.speedChange ?? 0))
+      )
+        continue;
+      worst = { hill, outcome };
+    }
+  return worst;
+}
+
+function hillClause(view: View, design: CandidateView): string {
+  const worst = worstHill(view, design.name);
+  if (worst === null) return 'no hill takes it out of its band';
+  const { hill, outcome } = worst;
+  const verb = outcome.speedChange < 0 ? 'loses' : 'gains';
+  const amount = changeText(Math.abs(outcome.speedChange), view.speed).replace('+', '');
+  const why = typeof outcome.cause === 'string' ? ` because ${CAUSE_WORDS[outcome.cause]}` : '';
+  return `hill ${hill.number} (${stretchText(hill.from, hill.to)}, mean ${gradeText(hill.meanGrade)}) defeats it: it ${verb} ${amount}${why}`;
+}
+
+function lockedClause(view: View, alone: boolean): string | null {
+  const locked = view.candidates.find((candidate) => candidate.locked);
+  if (locked === undefined) return null;
+  const subject = alone ? `The throttle locked in place` : 'a throttle locked in place';
+  if (locked.result.status !== 'completed') return `${subject} ${statusWords(locked)}`;
+  const [low, high] = [locked.figures.worst_low_kmh, locked.figures.worst_high_kmh];
+  if (typeof low !== 'number' || typeof high !== 'number') return `${subject} reached the end`;
+  return `${subject} strays from ${changeText(fromKmh(low), view.speed, 0)} to ${changeText(fromKmh(high), view.speed, 0)} of the set speed`;
+}
+
+function requirementClause(findings: readonly RequirementFinding[]): { words: string; standing: Standing } {
+  if (findings.length === 0) return { words: '', standing: 'none asked' };
+  const missed = findings.filter((one) => one.verdict === 'not met');
+  const close = findings.filter((one) => one.verdict === 'too close to call');
+  const ids = (some: readonly RequirementFinding[]) =>
+    [...new Set(some.map((one) => one.requirement.id))].join(', ');
+  if (missed.length > 0)
+    return {
+      words: `but misses ${missed.length} of ${findings.length} requirements (${ids(missed)})`,
+      standing: 'not met',
+    };
+  if (close.length > 0)
+    return {
+      words: `and misses no requirement, but ${ids(close)} ${close.length === 1 ? 'is' : 'are'} too close to call`,
+      standing: 'too close to call',
+    };
+  const all = findings.length === 1 ? 'its one requirement' : `all ${findings.length} requirements`;
+  return { words: `and meets ${all}`, standing: 'met' };
+}
+
+/** The sentence that opens the page. */
+export function answerOf(view: View): Answer {
+  const design = bestDesign(view);
+  if (design === null) {
+    const asked = requirementClause(view.result.requirements);
+    const words = lockedClause(view, true) ?? 'Nothing was replayed';
+    const within = view.candidates[0] === undefined ? '' : ` and ${withinClause(view, view.candidates[0])}`;
+    return {
+      sentence: `${words}${within}; no design was replayed beside it.`,
+      standing: asked.standing,
+      design: null,
+    };
+  }
+  const asked = requirementClause(findingsOf(view, design.name));
+  const early = view.candidates.filter((candidate) => candidate.result.status !== 'completed');
+  const others = early.filter((candidate) => candidate !== design && !candidate.locked);
+  const parts = [
+    design.result.status === 'completed'
+      ? `${design.name} ${withinClause(view, design)}${asked.words === '' ? '' : `, ${asked.words}`}`
+      : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
+    hillClause(view, design),
+    ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),
+    lockedClause(view, false),
+  ].filter((part) => part !== null);
+  return {
+    sentence: `${parts.join('; ')}.`,
+    standing: design.result.status === 'completed' ? asked.standing : 'incomplete',
+    design: design.name,
+  };
+}

@@ -1,0 +1,37 @@
+import type { BinRecord } from '../../loop/result.ts';
+import type { Curve } from './columns.ts';
+
+/** The lanes that a record by bin can fill. */
+export type Lane = 'error' | 'throttle' | 'power' | 'energy';
+
+/** Middles of the bins that were reached [m]. */
+function middles(bins: BinRecord): Float64Array {
+  const at = new Float64Array(bins.size);
+  for (let i = 0; i < bins.size; i++) at[i] = (bins.edge[i]! + bins.edge[i + 1]!) / 2;
+  return at;
+}
+
+/** A lane of the record, SI: speed error [m/s], throttle (ratio), wheel power [W], wheel energy so far [J]. */
+export function binCurve(bins: BinRecord, lane: Lane): Curve {
+  const { size } = bins;
+  const at = middles(bins);
+  if (lane === 'error') {
+    const mean = new Float64Array(size);
+    // A bin in which no sample starts has time 0 and the values of the sample that passes over it.
+    for (let i = 0; i < size; i++)
+      mean[i] =
+        bins.time[i]! > 0 ? bins.errorMean[i]! / bins.time[i]! : (bins.errorMin[i]! + bins.errorMax[i]!) / 2;
+    return { size, at, low: bins.errorMin, mean, high: bins.errorMax };
+  }
+  if (lane === 'throttle')
+    return { size, at, low: bins.throttleMin, mean: bins.throttleMean, high: bins.throttleMax };
+  if (lane === 'power')
+    return { size, at, low: bins.wheelPower, mean: bins.wheelPower, high: bins.wheelPower };
+  const energy = new Float64Array(size);
+  let sum = 0;
+  for (let i = 0; i < size; i++) {
+    sum += bins.driveWork[i]! + bins.regenerationWork[i]!;
+    energy[i] = sum;
+  }
+  return { size, at, low: energy, mean: energy, high: energy };
+}

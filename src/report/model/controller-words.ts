@@ -1,0 +1,29 @@
+import type { AntiWindup, ControllerSetup } from '../../control/setup.ts';
+import { toPct } from '../../units/convert.ts';
+import { fixed, type SpeedUnit, significant, withUnit } from '../quantity.ts';
+
+function antiWindupWords(setup: AntiWindup): string {
+  switch (setup.kind) {
+    case 'none':
+      return 'no anti-windup';
+    case 'conditional':
+      return 'conditional integration';
+    case 'back_calculation':
+      return `back calculation over ${withUnit(significant(setup.trackingTime, 2), 's')}`;
+  }
+}
+
+/** A controller in a few words, gains in per cent of throttle per unit of the reader's speed. */
+export function controllerWords(setup: ControllerSetup, speed: SpeedUnit): string {
+  if (setup.kind === 'locked')
+    return setup.throttle === 'level'
+      ? 'locked at what holds the set speed on the level in still air'
+      : `locked at ${withUnit(fixed(toPct(setup.throttle), 1), '%')}`;
+  const perUnit = 1 / speed.of(1);
+  const gain = withUnit(significant(toPct(setup.kp) * perUnit, 3), `%/(${speed.name})`);
+  const integral = setup.ki > 0 ? `Ti ${withUnit(significant(setup.kp / setup.ki, 3), 's')}` : 'no integral';
+  const every = `every ${withUnit(fixed(setup.sample * 1000), 'ms')}`;
+  const weight = `set-point weight ${significant(setup.setpointWeight, 2)}`;
+  const design = setup.design === null ? '' : `; ${setup.design.words}`;
+  return `PI, Kp ${gain}, ${integral}, ${weight}, ${every}, ${antiWindupWords(setup.antiWindup)}${design}`;
+}

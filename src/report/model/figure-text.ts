@@ -1,0 +1,53 @@
+import { figureRow } from '../../study/figure-table.ts';
+import type { Figure } from '../../study/findings.ts';
+import { isNone } from '../../study/findings.ts';
+import { fromKmh } from '../../units/convert.ts';
+import { digitsFor, fixed, NO_VALUE, type SpeedUnit, signed, timeText, withUnit } from '../quantity.ts';
+
+/** Value of the table of figures in the reader's unit, with that unit's name. */
+export function readable(value: number, unit: string, speed: SpeedUnit): { value: number; unit: string } {
+  if (unit === 'km/h') return { value: speed.of(fromKmh(value)), unit: speed.name };
+  return { value, unit: unit === '1' ? '' : unit };
+}
+
+/** Digits after the point that such a figure supports. */
+function digitsOf(value: number, unit: string): number {
+  if (unit === '%' || unit === 'km/h') return 1;
+  if (unit === 's') return Math.abs(value) < 9.95 ? 1 : 0;
+  return digitsFor(value, 3);
+}
+
+/** A figure for people: rounded, with its unit; a figure that does not exist is a dash. */
+export function figureText(figure: Figure | undefined, unit: string, speed: SpeedUnit): string {
+  if (figure === undefined || isNone(figure)) return NO_VALUE;
+  if (unit === 's' && figure >= 120) return timeText(figure);
+  if (unit === '1') return figure === 0 ? '0' : scientific(figure);
+  const shown = readable(figure, unit, speed);
+  return withUnit(fixed(shown.value, digitsOf(shown.value, unit)), shown.unit);
+}
+
+/** A small ratio as `2 × 10⁻⁹`. */
+export function scientific(value: number): string {
+  const [mantissa, exponent] = value.toExponential(0).split('e') as [string, string];
+  const raised = exponent.replace(/[+\-0-9]/g, (c) =>
+    c === '+' ? '' : c === '-' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)]!,
+  );
+  return raised === '0' || raised === '⁰'
+    ? mantissa.replace('-', '\u2212')
+    : `${mantissa.replace('-', '\u2212')}\u00a0×\u00a010${raised}`;
+}
+
+/** A margin with its sign; with more digits where fewer would show a miss as nothing. */
+export function marginText(margin: Figure, unit: string, speed: SpeedUnit): string {
+  if (isNone(margin)) return NO_VALUE;
+  const shown = readable(margin, unit, speed);
+  let digits = digitsOf(shown.value, unit);
+  while (digits < 4 && shown.value !== 0 && !/[1-9]/.test(fixed(shown.value, digits))) digits++;
+  return withUnit(signed(shown.value, digits), shown.unit);
+}
+
+/** Name and unit of a figure for people; the figure's own name where the table does not have it. */
+export function figureLabel(name: string): { label: string; unit: string } {
+  const row = figureRow(name);
+  return row === undefined ? { label: name, unit: '' } : { label: row.label, unit: row.unit };
+}

@@ -1,0 +1,85 @@
+import { fromPct } from '../../units/convert.ts';
+import { derateFactor } from '../../vehicle/derating.ts';
+import { forceRange } from '../../vehicle/drive-law.ts';
+import { requiredForce } from '../../vehicle/resistance.ts';
+import type { View } from './view.ts';
+
+/** Force over speed: what the drive gives, or what a grade asks. SI. */
+export interface ForceLine {
+  readonly kind: 'full' | 'least' | 'required';
+  readonly words: string;
+  readonly speed: readonly number[];
+  readonly force: readonly number[];
+}
+
+export interface ForceLines {
+  readonly lines: readonly ForceLine[];
+  readonly topSpeed: number;
+}
+
+const POINTS = 121;
+const GRADES_PCT = [-8, -4, 0, 4, 8, 12] as const;
+
+/** Knots of the route's thickest and thinnest air. */
+function airExtremes(view: View): readonly [thick: number, thin: number] {
+  const { airDensity, size } = view.result.road;
+  let [thick, thin] = [0, 0];
+  for (let i = 0; i < size; i++) {
+    if (airDensity[i]! > airDensity[thick]!) thick = i;
+    if (airDensity[i]! < airDensity[thin]!) thin = i;
+  }
+  return [thick, thin];
+}
+
+/**
+ * What the drive has against what steady speed asks without wind: full throttle in the thickest and, for a drive that
+ * altitude derates, the thinnest air of the route; the least force; and the grades, in the thickest air.
+ */
+export function forceLines(view: View): ForceLines {
+  const { vehicle, road, hold } = view.result;
+  const { drive } = vehicle;
+  const speeds = [hold.setSpeed, hold.startSpeed, ...hold.changes.map((change) => change.setSpeed)];
+  const topSpeed = Math.max(...speeds) * 1.6;
+  const speed = Array.from({ length: POINTS }, (_, i) => (topSpeed * (i + 1)) / POINTS);
+  const [thick, thin] = airExtremes(view);
+  const factor = (knot: number) => derateFactor(drive, road.airDensity[knot]!, road.airTemperature[knot]!);
+  const full = (knot: number, words: string): ForceLine => ({
+    kind: 'full',
+    words,
+    speed,
+    force: speed.map((v) => forceRange(drive, drive.gear, v, factor(knot)).greatest),
+  });
+  const differs = Math.abs(factor(thick) - factor(thin)) > 0.005;
+  const at = (knot: number) => `${Math.round(road.elevation[knot]!)} m`;
+  const least: ForceLine = {
+    kind: 'least',
+    words: drive.throttleMin < 0 ? 'full regeneration' : 'closed throttle',
+    speed,
+    force: speed.map((v) => forceRange(drive, drive.gear, v, factor(thick)).least),
+  };
+  const required = GRADES_PCT.map(
+    (pct): ForceLine => ({
+      kind: 'required',
+      words: `${pct > 0 ? '+' : pct < 0 ? '\u2212' : ''}${Math.abs(pct)} %`,
+      speed,
+      force: speed.map((v) =>
+        requiredForce(vehicle, v, {
+          grade: fromPct(pct),
+          headwind: 0,
+          crosswind: 0,
+          airDensity: road.airDensity[thick]!,
+          airTemperature: road.airTemperature[thick]!,
+        }),
+      ),
+    }),
+  );
+  return {
+    lines: [
+      full(thick, differs ? `full throttle, ${at(thick)}` : 'full throttle'),
+      ...(differs ? [full(thin, `full throttle, ${at(thin)}`)] : []),
+      least,
+      ...required,
+    ],
+    topSpeed,
+  };
+}

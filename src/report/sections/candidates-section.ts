@@ -1,0 +1,127 @@
+import { figureRow } from '../../study/figure-table.ts';
+import type { Figure } from '../../study/findings.ts';
+import { fromKmh, toKmh } from '../../units/convert.ts';
+import { rectangle, segment } from '../charts/canvas.ts';
+import { lineKey } from '../charts/line-key.ts';
+import { type Html, type HtmlValue, html } from '../html.ts';
+import { statusWords } from '../model/answer.ts';
+import { controllerWords } from '../model/controller-words.ts';
+import { figureText } from '../model/figure-text.ts';
+import type { CandidateView, View } from '../model/view.ts';
+import { PAGE_PAINT } from '../paint.ts';
+import { bandText, changeText, NO_VALUE } from '../quantity.ts';
+import type { Section } from './section.ts';
+import { table } from './table.ts';
+
+/** Figures side by side, in the order of the rows; those that no candidate has are left out. */
+const SHOWN = [
+  'within_band_pct',
+  'rms_error_kmh',
+  'p95_abs_error_kmh',
+  'mean_error_kmh',
+  'recovery_s',
+  'time_s',
+  'time_lost_s',
+  'wheel_energy_wh_per_km',
+  'battery_energy_wh',
+  'throttle_travel_pct_per_km',
+  'at_upper_limit_s',
+  'at_lower_limit_s',
+  'at_rate_limit_s',
+  'brake_energy_wh',
+  'brake_distance_m',
+] as const;
+
+const BAR = 96;
+
+/** 3: all candidates on the same road, the locked throttle first. */
+export function candidatesSection(view: View): Section {
+  const { candidates } = view;
+  const columns = [
+    { head: 'over the whole road' },
+    ...candidates.map((candidate) => ({
+      head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
+    })),
+  ];
+  const rows: HtmlValue[][] = [
+    [
+      'throttle',
+      ...candidates.map(
+        (candidate) => html`<span class="small">${controllerWords(candidate.controller, view.speed)}</span>`,
+      ),
+    ],
+    ['run', ...candidates.map(statusWords)],
+    rangeRow(view),
+    ...SHOWN.flatMap((name) => figureCells(view, name)),
+  ];
+  const body = html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better.</p>
+${table('Candidates side by side', columns, rows)}`;
+  return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
+}
+
+const numberOf = (figure: Figure | undefined): number | null => (typeof figure === 'number' ? figure : null);
+
+function figureCells(view: View, name: string): readonly HtmlValue[][] {
+  const row = figureRow(name);
+  if (row === undefined) return [];
+  const values = view.candidates.map((candidate) => numberOf(candidate.figures[name]));
+  const exist = values.filter((value) => value !== null);
+  if (exist.length === 0) return [];
+  const [low, high] = [Math.min(0, ...exist), Math.max(0, ...exist)];
+  if (low === high && name !== 'recovery_s') return [];
+  const best = bestOf(view.candidates, values, row.better);
+  const head = row.takesBand ? `${row.label}, ${bandText(view.result.band, view.speed)}` : row.label;
+  return [
+    [
+      html`<span title="${row.definition}">${head}</span>`,
+      ...view.candidates.map((candidate, i) => {
+        const text = figureText(candidate.figures[name], row.unit, view.speed);
+        const value = values[i]!;
+        return html`${i === best ? html`<strong>${text}</strong>` : text}${value !== null && high > low && bar(value, low, high, candidate)}`;
+      }),
+    ],
+  ];
+}
+
+/** Index of the best design; none where two are equal to what is shown, or only one design ran. */
+function bestOf(
+  candidates: readonly CandidateView[],
+  values: readonly (number | null)[],
+  better: 'lower' | 'higher' | null,
+): number | null {
+  if (better === null) return null;
+  const designs = candidates.flatMap((candidate, i) => {
+    const value = values[i];
+    return candidate.locked || value === null || value === undefined ? [] : [{ i, value }];
+  });
+  if (designs.length < 2) return null;
+  const order = designs.sort((a, b) => (better === 'lower' ? a.value - b.value : b.value - a.value));
+  const [first, second] = [order[0]!, order[1]!];
+  return Math.abs(first.value - second.value) <= 0.005 * Math.abs(second.value) ? null : first.i;
+}
+
+function bar(value: number, low: number, high: number, candidate: CandidateView): Html {
+  const at = (v: number): number => ((v - low) / (high - low)) * BAR;
+  const [left, right] = value < 0 ? [at(value), at(0)] : [at(0), at(value)];
+  const fill = PAGE_PAINT.series[candidate.colour]!;
+  return html`<svg class="bar" viewBox="0 0 ${BAR} 8" width="${BAR}" height="8" aria-hidden="true">${rectangle({ left: 0, top: 3.5, width: BAR, height: 1 }, PAGE_PAINT.grid)}${rectangle({ left, top: 0, width: Math.max(1, right - left), height: 8 }, fill)}</svg>`;
+}
+
+/** Furthest below and above as a range mark around the set speed, the band behind it; all on one scale. */
+function rangeRow(view: View): HtmlValue[] {
+  const band = toKmh(view.result.band);
+  const ranges = view.candidates.map((candidate) => ({
+    low: numberOf(candidate.figures.worst_low_kmh),
+    high: numberOf(candidate.figures.worst_high_kmh),
+  }));
+  const low = Math.min(-band, ...ranges.map((range) => range.low ?? 0));
+  const high = Math.max(band, ...ranges.map((range) => range.high ?? 0));
+  const at = (v: number): number => 2 + ((v - low) / (high - low)) * (BAR - 4);
+  const cells = ranges.map((range, i): HtmlValue => {
+    if (range.low === null || range.high === null) return NO_VALUE;
+    const stroke = PAGE_PAINT.series[view.candidates[i]!.colour]!;
+    const [a, b] = [at(range.low), at(range.high)];
+    return html`${changeText(fromKmh(range.low), view.speed)} to ${changeText(fromKmh(range.high), view.speed)}<svg class="bar" viewBox="0 0 ${BAR} 12" width="${BAR}" height="12" aria-hidden="true">${rectangle({ left: at(-band), top: 0, width: at(band) - at(-band), height: 12 }, PAGE_PAINT.band)}${segment(a, 6, b, 6, { stroke, width: 2.5 })}${segment(a, 2, a, 10, { stroke, width: 2 })}${segment(b, 2, b, 10, { stroke, width: 2 })}${segment(at(0), 0, at(0), 12, { stroke: PAGE_PAINT.ink })}</svg>`;
+  });
+  return ['Furthest below to furthest above', ...cells];
+}

@@ -1,0 +1,13 @@
+import type { View } from '../model/view.ts';
+
+/** What every reader must know, whatever the figures say. */
+export function cautions(view: View): readonly string[] {
+  const brake = view.result.rider.brakesAbove !== null;
+  return [
+    'A simulation is no approval to ride. It shows where a design fails on paper; it cannot show that one is safe on the road.',
+    'Speed hold can hide a slide, a bend or a stop ahead: it keeps driving while grip or sight goes. Nothing here looks at grip, lean, bends or traffic.',
+    `The rider's override, and the cut-outs by brake, clutch and stand, are outside this model${brake ? '; the brake that it has only holds a given overspeed on descents' : ''}.`,
+    "Type-approval rules, local law and a qualified person's judgement come first.",
+    'Every figure is as good as the track, the vehicle data and the defaults below; a requirement that is met by less than its spread is not met with certainty.',
+  ];
+}

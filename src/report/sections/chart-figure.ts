@@ -1,0 +1,17 @@
+import type { Canvas } from '../charts/canvas.ts';
+import { type Html, type HtmlValue, html } from '../html.ts';
+import { PAGE_PAINT } from '../paint.ts';
+
+/** Widths in user units: as wide as the text column, and as wide as a small screen. */
+export const WIDE = 980;
+export const NARROW = 360;
+
+/**
+ * A chart twice, for wide and for narrow screens, so that its words can be read on both; the style sheet shows one.
+ * Ids get a prefix each.
+ */
+export function chartFigure(id: string, draw: (canvas: Canvas) => Html, caption: HtmlValue): Html {
+  const wide = draw({ id: `${id}-w`, paint: PAGE_PAINT, width: WIDE, narrow: false });
+  const narrow = draw({ id: `${id}-n`, paint: PAGE_PAINT, width: NARROW, narrow: true });
+  return html`<figure><div class="wide">${wide}</div><div class="narrow">${narrow}</div><figcaption>${caption}</figcaption></figure>`;
+}

@@ -1,0 +1,46 @@
+import { toKm, toPct, toWh } from '../../units/convert.ts';
+import { rectangle } from '../charts/canvas.ts';
+import { energyChart } from '../charts/energy.ts';
+import { lineKey } from '../charts/line-key.ts';
+import { type HtmlValue, html } from '../html.ts';
+import { ENERGY_TERMS, energyAccount } from '../model/energy-account.ts';
+import type { View } from '../model/view.ts';
+import { PAGE_PAINT } from '../paint.ts';
+import { fixed, NO_VALUE, significant } from '../quantity.ts';
+import { chartFigure } from './chart-figure.ts';
+import type { Section } from './section.ts';
+import { table } from './table.ts';
+
+/** 8: where the drive's work went. */
+export function energySection(view: View): Section {
+  const battery = view.candidates.some((candidate) => candidate.result.ledger.battery !== null);
+  const rows = view.candidates.map((candidate): HtmlValue[] => {
+    const { ledger, endDistance } = candidate.result;
+    const account = energyAccount(ledger);
+    return [
+      html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
+      fixed(toWh(ledger.drive)),
+      ...ENERGY_TERMS.map((term) => {
+        const share = ledger.drive > 0 ? toPct(account[term.name] / ledger.drive) : null;
+        return html`${fixed(toWh(account[term.name]))}${share !== null && html`<br><span class="small">${fixed(share)} %</span>`}`;
+      }),
+      endDistance > 0 ? significant(toWh(ledger.drive) / toKm(endDistance)) : NO_VALUE,
+      ...(battery ? [ledger.battery === null ? NO_VALUE : fixed(toWh(ledger.battery))] : []),
+    ];
+  });
+  const body = html`<p>All of the drive's pushing work ends in the air, in rolling, in height, in the brake, in speed, or goes back into the drive where it holds back (${view.result.vehicle.drive.throttleMin < 0 ? 'regeneration' : 'engine drag'}). Left of zero: what height or speed gave.</p>
+<ul class="keys">${ENERGY_TERMS.map((term, k) => html`<li><svg class="key" viewBox="0 0 22 12" width="22" height="12" aria-hidden="true">${rectangle({ left: 0, top: 0, width: 22, height: 12 }, PAGE_PAINT.energy[k]!)}</svg> ${term.words}</li>`)}</ul>
+${chartFigure('energy', (canvas) => energyChart(view, canvas), 'Energy at the wheel over the whole run, one bar a candidate, one scale.')}
+${table(
+  'Energy account',
+  [
+    { head: 'candidate' },
+    { head: 'pushing work / Wh', number: true },
+    ...ENERGY_TERMS.map((term) => ({ head: `${term.words} / Wh`, number: true })),
+    { head: 'pushing work per km / (Wh/km)', number: true },
+    ...(battery ? [{ head: 'from the battery / Wh', number: true }] : []),
+  ],
+  rows,
+)}`;
+  return { id: 'energy', number: 8, title: 'Energy', body };
+}

@@ -1,0 +1,159 @@
+import { type Hill, type HillOutcome, isNone } from '../../study/findings.ts';
+import { toPct } from '../../units/convert.ts';
+import { hillPicture } from '../charts/hill-picture.ts';
+import { candidateKey, lineKey } from '../charts/line-key.ts';
+import { type Html, type HtmlValue, html } from '../html.ts';
+import type { CandidateView, View } from '../model/view.ts';
+import { PAGE_PAINT } from '../paint.ts';
+import {
+  changeText,
+  fixed,
+  forceText,
+  gradeText,
+  lengthText,
+  NO_VALUE,
+  shareText,
+  speedText,
+  stretchText,
+  timeText,
+  withUnit,
+} from '../quantity.ts';
+import type { Section } from './section.ts';
+import { table } from './table.ts';
+
+/** Cards are for the hills that matter most; the table has all. */
+const MOST_CARDS = 12;
+const PICTURE_WIDTH = 420;
+
+/** 6: the hills, in order along the road: a card for each of the worst, a table for all. */
+export function hillsSection(view: View): Section {
+  const { hills } = view.result;
+  if (hills.length === 0) {
+    const body = html`<p>On no stretch does the demand leave the range of the drive, and no candidate leaves its band or meets a limit.</p>`;
+    return { id: 'hills', number: 6, title: 'Hills', body };
+  }
+  const worst = [...hills].sort((a, b) => weight(b) - weight(a) || a.number - b.number).slice(0, MOST_CARDS);
+  const shown = worst.sort((a, b) => a.number - b.number);
+  const rest = hills.length - shown.length;
+  const body = html`<p>A hill is every stretch where the demand leaves the range of the drive, or a candidate leaves its band or meets a limit; all candidates share them. ${
+    rest > 0 && `Cards: the ${shown.length} worst of ${hills.length}; the table at the end has all.`
+  } In the pictures time counts from the foot of the hill, and the hill is shaded. Above: speed, the set speed dotted. Below: the command as lines, the demand as an area; above the dashed line at 100 % there is no more.</p>
+${candidateKey(view.candidates, PAGE_PAINT)}
+<div class="cards">${shown.map((hill) => card(view, hill))}</div>
+<h3>All hills</h3>
+${allHills(view)}`;
+  return { id: 'hills', number: 6, title: 'Hills', body };
+}
+
+/** How much a hill matters: what it does to the designs, then how far the demand is out of range. */
+function weight(hill: Hill): number {
+  let most = 0;
+  for (const outcome of hill.outcomes)
+    if (outcome.affected) most = Math.max(most, Math.abs(outcome.speedChange));
+  return most + Math.max(0, Math.abs(hill.share) - 1);
+}
+
+function card(view: View, hill: Hill): Html {
+  const runs = view.candidates.flatMap((candidate) => {
+    const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
+    return outcome === undefined ? [] : [{ candidate, outcome }];
+  });
+  const canvas = { id: `hill-${hill.number}`, paint: PAGE_PAINT, width: PICTURE_WIDTH, narrow: true };
+  return html`<article class="card" aria-labelledby="hill-${hill.number}-h"><h3 id="hill-${hill.number}-h">Hill ${hill.number}: ${hill.kind} <span class="of">${stretchText(hill.from, hill.to)}</span></h3>
+<p class="facts">${facts(view, hill)}</p>
+${hillPicture(view, hill, canvas)}
+${outcomes(view, hill, runs)}
+${sentences(runs)}</article>`;
+}
+
+function facts(view: View, hill: Hill): string {
+  const above = hill.share > 0;
+  const needs = above
+    ? `Asks ${forceText(hill.requiredForce)}, full throttle has ${forceText(hill.availableForce)} (${shareText(hill.share)}).`
+    : `Asks the drive to hold back ${forceText(-hill.requiredForce)}; it can hold back ${forceText(-hill.availableForce)} (${shareText(-hill.share)}).`;
+  const steady =
+    Math.abs(hill.share) <= 1
+      ? ''
+      : above
+        ? ` Full throttle would hold ${speedText(hill.sustainedSpeed, view.speed, 0)}.`
+        : ` It would run away to ${speedText(hill.sustainedSpeed, view.speed, 0)}.`;
+  const grade = `${lengthText(hill.to - hill.from)} at ${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %, steepest ${gradeText(hill.maxGrade)}.`;
+  return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
+}
+
+interface Run {
+  readonly candidate: CandidateView;
+  readonly outcome: HillOutcome;
+}
+
+function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
+  const rows = runs.map(({ candidate, outcome }): HtmlValue[] => [
+    html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
+    changeText(outcome.speedChange, view.speed),
+    html`${isNone(outcome.predictedChange) ? html`<span title="${outcome.predictedChange.none}">${NO_VALUE}</span>` : changeText(outcome.predictedChange, view.speed)}${outcome.predictionDiffers && html` <span class="flag" title="simulation and hand formula differ by more than 15 %">≠</span>`}`,
+    lostText(outcome.timeLost),
+    timeText(outcome.timeAtLimit),
+    isNone(outcome.recovery)
+      ? html`<span title="${outcome.recovery.none}">${NO_VALUE}</span>`
+      : timeText(outcome.recovery),
+    typeof outcome.cause === 'string' ? outcome.cause.replaceAll('_', ' ') : NO_VALUE,
+  ]);
+  return table(
+    `Hill ${hill.number}: outcomes`,
+    [
+      { head: 'candidate' },
+      { head: 'change', number: true },
+      { head: 'by hand', number: true },
+      { head: 'time lost', number: true },
+      { head: 'at limit', number: true },
+      { head: 'recovery', number: true },
+      { head: 'cause' },
+    ],
+    rows,
+  );
+}
+
+const lostText = (time: number): string => withUnit(fixed(time, Math.abs(time) < 9.95 ? 1 : 0), 's');
+
+/** Why, and what would hold, for each that the hill touched; equal sentences once. */
+function sentences(runs: readonly Run[]): Html | null {
+  const touched = runs.filter(({ outcome }) => outcome.affected && outcome.why !== '');
+  if (touched.length === 0) return null;
+  return html`<ul class="why">${touched.map(
+    ({ candidate, outcome }) =>
+      html`<li><strong>${candidate.name}</strong>: ${outcome.why}${outcome.wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${outcome.wouldHold.map((remedy) => remedy.words).join(' ')}</span>`}</li>`,
+  )}</ul>`;
+}
+
+function allHills(view: View): Html {
+  const rows = view.result.hills.map((hill): HtmlValue[] => [
+    String(hill.number),
+    hill.kind,
+    stretchText(hill.from, hill.to),
+    `${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %`,
+    shareText(hill.share),
+    forceText(hill.requiredForce),
+    forceText(hill.availableForce),
+    speedText(hill.sustainedSpeed, view.speed, 0),
+    ...view.candidates.map((candidate) => {
+      const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
+      if (outcome === undefined) return NO_VALUE;
+      return html`${changeText(outcome.speedChange, view.speed)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
+    }),
+  ]);
+  return table(
+    'All hills',
+    [
+      { head: 'hill', number: true },
+      { head: 'kind' },
+      { head: 'stretch' },
+      { head: 'mean grade', number: true },
+      { head: 'demand', number: true },
+      { head: 'asked', number: true },
+      { head: 'there is', number: true },
+      { head: 'steady speed', number: true },
+      ...view.candidates.map((candidate) => ({ head: candidate.name, number: true })),
+    ],
+    rows,
+  );
+}

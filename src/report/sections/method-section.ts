@@ -1,0 +1,139 @@
+import { figureRow } from '../../study/figure-table.ts';
+import { validityNotes } from '../../vehicle/validity.ts';
+import { REPAIR_KINDS } from '../charts/repair-marks.ts';
+import { type Html, type HtmlValue, html } from '../html.ts';
+import { scientific } from '../model/figure-text.ts';
+import type { View } from '../model/view.ts';
+import { bandText, fixed, lengthText, placeText, stretchText } from '../quantity.ts';
+import { cautions } from './cautions.ts';
+import { EQUATIONS } from './equations.ts';
+import type { Section } from './section.ts';
+import { table } from './table.ts';
+
+/** 10: how everything above was computed, from what, and what it does not say. */
+export function methodSection(view: View): Section {
+  const body = html`${cautionPart(view)}
+<h3>Model</h3>
+${EQUATIONS}
+<h3>Validity: what is left out</h3>
+<ul>${validityNotes(view.result.vehicle).map((note) => html`<li>${note.words}</li>`)}</ul>
+${solver(view)}
+${definitions(view)}
+${roadSources(view)}
+${defaultsTable(view)}
+${inputs(view)}`;
+  return { id: 'method', number: 10, title: 'How it was computed', body };
+}
+
+function cautionPart(view: View): Html {
+  const { warnings } = view.result;
+  return html`<h3 id="method-cautions">Cautions</h3>
+<ul class="cautions">${cautions(view).map((words) => html`<li>${words}</li>`)}</ul>
+${
+  warnings.length > 0 &&
+  html`<h3>Warnings of this run</h3><ul>${warnings.map(
+    (warning) =>
+      html`<li>${warning.message}${warning.from !== undefined && warning.to !== undefined && html` <span class="small">(${stretchText(warning.from, warning.to)})</span>`}</li>`,
+  )}</ul>`
+}`;
+}
+
+function solver(view: View): Html {
+  const exact = view.result.scheme === 'exact';
+  const scheme = exact
+    ? 'Scheme exact: the classical fourth-order Runge-Kutta method between controller samples, cut at every kink of the road, the drive and the actuator. Its aim is a speed within 2 × 10⁻⁸ m/s of a high-precision solution of the same equations.'
+    : 'Scheme fast: one evaluation a controller sample, lags solved exactly. Its aim is a speed within 2 × 10⁻⁵ m/s of a high-precision solution of the same equations.';
+  return html`<h3>Solver</h3>
+<p>${scheme} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay. The steps of the numerics are far below what the road's uncertainty leaves open.</p>
+<p>The energy account closes to: ${view.candidates
+    .map(
+      (candidate) =>
+        `${candidate.name} ${Number.isFinite(candidate.result.ledger.residual) ? scientific(Math.abs(candidate.result.ledger.residual)) : 'not closed'}`,
+    )
+    .join(', ')} (sum of all terms over the sum of their magnitudes; 10⁻⁶ is allowed).</p>`;
+}
+
+/** Definitions of the figures that this page shows. */
+function definitions(view: View): Html {
+  const names = new Set([
+    ...view.candidates.flatMap((candidate) => Object.keys(candidate.figures)),
+    ...view.result.requirements.map((finding) => finding.requirement.figure),
+  ]);
+  const rows = [...names].flatMap((name): HtmlValue[][] => {
+    const row = figureRow(name);
+    return row === undefined
+      ? []
+      : [[row.label, html`<code>${row.name}</code>`, row.unit, row.weight, row.definition, row.source]];
+  });
+  return html`<h3>Definitions of the figures</h3>
+<p>The error e is true speed minus set speed${view.result.hold.setSpeedIs === 'indicated' && ', the set speed being what the sensor indicates'}; negative is too slow. The band of the charts is ${bandText(view.result.band, view.speed)}. Holdable: where the drive has what the set speed asks, an ideal hold is back at the set speed after what came before, and no change of set speed is still settling.</p>
+${table('Definitions', [{ head: 'figure' }, { head: 'name in files' }, { head: 'unit in files' }, { head: 'by' }, { head: 'definition' }, { head: 'source' }], rows)}
+<p>The hand formula beside a simulated loss on a hill: the speed to which full (or least) force would settle there, reached with the momentum of the vehicle at the foot: v² changes by twice the missing force over the effective mass for each metre. Where simulation and hand formula differ by more than 15 % the cards show ≠.</p>`;
+}
+
+function roadSources(view: View): Html {
+  const { road } = view.result;
+  const { smoothing } = road;
+  const how =
+    smoothing === null
+      ? 'The grade was taken as given: a written profile or survey data, without smoothing and without uncertainty.'
+      : `Elevation was brought to a grid of ${lengthText(road.grid)} and smoothed by a robust penalised least-squares smoother of third order (Eilers, Anal. Chem. 75 (2003) 3631; gain one half at a wavelength of ${lengthText(smoothing.wavelength)}); the grade's standard deviation comes from the same equations.`;
+  const repairs =
+    road.repairs.length === 0
+      ? html`<p>The track needed no repair.</p>`
+      : table(
+          'Repairs',
+          [
+            { head: 'kind' },
+            { head: 'place', number: true },
+            { head: 'points', number: true },
+            { head: 'line', number: true },
+            { head: 'what was done' },
+          ],
+          road.repairs
+            .slice(0, MOST_REPAIRS)
+            .map((repair) => [
+              REPAIR_KINDS[repair.kind].words,
+              repair.to > repair.from ? stretchText(repair.from, repair.to) : placeText(repair.from),
+              String(repair.points),
+              repair.line === null ? '' : String(repair.line),
+              repair.message,
+            ]),
+        );
+  const more = road.repairs.length - MOST_REPAIRS;
+  return html`<h3 id="method-repairs">Road and repairs</h3><p>${how}</p>${repairs}${more > 0 && html`<p class="note">${more} more repairs are counted in summary.json.</p>`}${
+    road.masks.length > 0 &&
+    table(
+      'Masks',
+      [{ head: 'masked stretch' }, { head: 'reason' }],
+      road.masks.map((mask) => [stretchText(mask.from, mask.to), mask.reason]),
+    )
+  }`;
+}
+const MOST_REPAIRS = 60;
+
+function defaultsTable(view: View): Html {
+  const { defaults } = view.result;
+  return html`<h3 id="method-defaults">Defaults that were used</h3>
+${
+  defaults.length === 0
+    ? html`<p>None: every value was given.</p>`
+    : table(
+        'Defaults',
+        [{ head: 'key' }, { head: 'value' }, { head: 'of' }, { head: 'source' }],
+        defaults.map((one) => [html`<code>${one.key}</code>`, one.value, one.of, one.source]),
+      )
+}`;
+}
+
+function inputs(view: View): Html {
+  const { result } = view;
+  return html`<h3>Inputs</h3>
+${table(
+  'Inputs',
+  [{ head: 'file' }, { head: 'bytes', number: true }, { head: 'SHA-256' }],
+  result.inputs.map((file) => [file.name, fixed(file.bytes), html`<code class="hash">${file.sha256}</code>`]),
+)}
+${result.overrides.length > 0 && html`<p>Changed beside the case: ${result.overrides.map((one) => html`<code>${one}</code> `)}</p>`}
+<p>Ridgehold ${result.toolVersion}, shape of the summary ${result.schemaVersion}. The same inputs give the same bytes.</p>`;
+}

@@ -1,0 +1,31 @@
+import { type Html, type HtmlValue, html } from '../html.ts';
+
+export interface TableColumn {
+  readonly head: HtmlValue;
+  /** Figures stand at the right. */
+  readonly number?: boolean;
+}
+
+/**
+ * A table that scrolls inside itself where it is too wide; the first cell of a row is its head.
+ *
+ * @param name what it is, for those who do not see it; unique on the page, because a region bears it
+ */
+export function table(
+  name: string,
+  columns: readonly TableColumn[],
+  rows: readonly (readonly HtmlValue[])[],
+): Html {
+  const cell = (column: TableColumn | undefined) => (column?.number === true ? html` class="num"` : null);
+  return html`<div class="scroll" role="region" aria-label="${name}" tabindex="0"><table><thead><tr>${columns.map(
+    (column) => html`<th scope="col"${cell(column)}>${column.head}</th>`,
+  )}</tr></thead><tbody>${rows.map(
+    (row) =>
+      html`<tr>${row.map((value, i) =>
+        i === 0
+          ? html`<th scope="row"${cell(columns[i])}>${value}</th>`
+          : html`<td${cell(columns[i])}>${value}</td>`,
+      )}</tr>`,
+  )}</tbody></table></div>
+`;
+}
