@@ -19,7 +19,7 @@ export interface DefaultUsed {
 export function listDefaults(schema: z.ZodType, value: unknown, of: DefaultUsed['of']): DefaultUsed[] {
   const list: DefaultUsed[] = [];
   const note = (path: Path, field: z.core.$ZodType, written: string): void => {
-    const source = fieldNotes.get(field as z.ZodType)?.source;
+    const source = fieldNotes.get(field)?.source;
     if (source !== undefined) list.push({ key: pathWords(value, path), value: written, of, source });
   };
   const visit = (field: z.core.$ZodType, here: unknown, path: Path): void => {
@@ -34,7 +34,7 @@ export function listDefaults(schema: z.ZodType, value: unknown, of: DefaultUsed[
       if (Object.hasOwn(here, key)) visit(inner, here[key], at);
       else if (inner instanceof z.ZodPrefault) visit(bare(inner), {}, at);
       else if (inner instanceof z.ZodDefault) note(at, inner, written(inner.def.defaultValue));
-      else note(at, inner, fieldNotes.get(inner as z.ZodType)?.absent ?? '');
+      else note(at, inner, fieldNotes.get(inner)?.absent ?? '');
     }
   };
   visit(schema, value, []);

@@ -119,7 +119,7 @@ export function allowedWords(schema: Schema): string {
     const inner = bare(option);
     if (inner instanceof z.ZodUnion) return allowedWords(inner);
     return (
-      fieldNotes.get(inner as z.ZodType)?.allowed ?? (inner as z.ZodType).description ?? inner._zod.def.type
+      fieldNotes.get(inner)?.allowed ?? (inner as z.ZodType).description ?? inner._zod.def.type
     );
   });
   return [...new Set(words)].join(', or ');
