@@ -27,8 +27,9 @@ export interface GradeAlong {
  * differences, else from smoothed elevations with their uncertainty.
  *
  * The s.d. of a smoothed grade joins two independent parts far from ends: the smoother's posterior for the noise that the
- * residuals show, and the source's own, which they do not show. Towards ends and over masks and gaps both grow by the ratio
- * that the smoother's factor gives.
+ * residuals show, and the source's own, which they do not show. Towards ends and over masks and gaps the first grows by the
+ * ratio that the smoother's factor gives, and the second, whose errors are alike over a hundred metres, by its root: at
+ * an end about 3.9 and 2 times, against 1.7 to 2.3 measured on synthetic roads.
  *
  * @param uniform knots [m] from 0, at least 4, reaching the last point or past it
  * @throws InputError `no-elevation`, `too-few-elevations`
@@ -109,10 +110,13 @@ function bySmoothing(
   });
   const sourceGradeSd = source.gradeSd * Math.max(1, wavelength / usual);
   const shown = smooth.noiseSd * smooth.leastGradeSdPerNoise;
-  const middle = Math.sqrt(shown * shown + sourceGradeSd * sourceGradeSd);
+  const gradeSd = smooth.gradeSdPerNoise.map((sd) => {
+    const growth = sd / smooth.leastGradeSdPerNoise;
+    return Math.sqrt(shown * shown * growth * growth + sourceGradeSd * sourceGradeSd * growth);
+  });
   return {
     grade: smooth.grade,
-    gradeSd: smooth.gradeSdPerNoise.map((sd) => (middle * sd) / smooth.leastGradeSdPerNoise),
+    gradeSd,
     startElevation: smooth.elevation[0]!,
     smoothing: {
       source: name,

@@ -1,0 +1,57 @@
+import { exp } from '../numeric/elementary.ts';
+import type { RandomStream } from '../numeric/random.ts';
+import { integrateSlope } from './along-slope.ts';
+import type { Road } from './road.ts';
+
+/** Reach of the kernel, in its own lengths. */
+const REACH = 4;
+/** The kernel's length as a share of the smoothing wavelength: 1 / (2 pi), so that the errors' spectrum peaks at the wavelength. */
+const SHARE = 1 / (2 * Math.PI);
+
+/**
+ * The same road as another truth that its measurement allows: grade plus a seeded random field whose standard deviation
+ * at each knot is `gradeSd`, with station and elevation integrated anew.
+ *
+ * A smoothed elevation is wrong by a bounded height, not by a random walk; so the field is the slope of a stationary
+ * height error, white noise under the derivative of a Gaussian of length wavelength / (2 pi): its errors change sign over
+ * about half a wavelength and nearly cancel over a hill longer than that. On a road out and back both ways share the field.
+ * Where `gradeSd` is zero the grade stays as it is; a road without smoothing comes back unchanged.
+ * Air keeps its values: metres of height change its density by less than 1e-3.
+ *
+ * @param stream normal numbers, drawn once a grid spacing
+ */
+export function perturbRoad(road: Road, stream: Pick<RandomStream, 'normal'>): Road {
+  if (road.smoothing === null) return road;
+  const length = Math.max(road.smoothing.wavelength * SHARE, road.grid);
+  const field = slopeField(road, length, stream);
+  const grade = road.grade.map((g, i) => g + road.gradeSd[i]! * field[i]!);
+  const line = integrateSlope(road.distance, grade, road.elevation[0]!);
+  return { ...road, grade, elevation: line.elevation, station: line.station };
+}
+
+/** Unit-variance field at the knots; odd about the turn of a road out and back. */
+function slopeField(road: Road, length: number, stream: Pick<RandomStream, 'normal'>): Float64Array {
+  const { distance, grid, turnsAt, size } = road;
+  const oneWay = turnsAt ?? distance[size - 1]!;
+  const margin = Math.ceil((REACH * length) / grid);
+  const noise = Float64Array.from({ length: Math.ceil(oneWay / grid) + 1 + 2 * margin }, () =>
+    stream.normal(),
+  );
+  const outward = turnsAt === null ? size : size / 2;
+  const field = new Float64Array(size);
+  for (let i = 0; i < outward; i++) {
+    const x = distance[i]! / grid;
+    const nearest = Math.floor(x) + margin;
+    let sum = 0;
+    let squares = 0;
+    for (let j = Math.max(0, nearest - margin); j <= Math.min(noise.length - 1, nearest + margin + 1); j++) {
+      const u = ((j - margin - x) * grid) / length;
+      const kernel = u * exp((-u * u) / 2);
+      sum += kernel * noise[j]!;
+      squares += kernel * kernel;
+    }
+    field[i] = sum / Math.sqrt(squares);
+    if (turnsAt !== null) field[size - 1 - i] = -field[i]!;
+  }
+  return field;
+}
