@@ -1,6 +1,18 @@
 import * as z from 'zod';
 import type { AntiWindup, ControllerSetup } from '../control/setup.ts';
-import { block, kind, line, list, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
+import {
+  block,
+  fieldNotes,
+  kind,
+  line,
+  list,
+  mapping,
+  NOT_GIVEN,
+  number,
+  optional,
+  otherwise,
+  word,
+} from './fields.ts';
 import { vehicleSchema } from './vehicle-schema.ts';
 
 const kmh = (words: string) => number('km/h', 1, 300, words);
@@ -94,7 +106,7 @@ const roadSchema = mapping('From track to road', {
         factor: number(
           '',
           0,
-          1.5,
+          1,
           'What is left of the wind speed: 1 open, 0.7 hedged, 0.3 to 0.5 wood or town',
         ),
         reason: optional(line('Why')),
@@ -211,7 +223,8 @@ const antiWindupSchemas = {
 const name = z
   .string()
   .regex(/^[a-z0-9][a-z0-9-]{0,40}$/)
-  .meta({ description: 'Name: lower-case letters, digits and hyphens' });
+  .meta({ description: 'Name: lower-case letters, digits and hyphens' })
+  .register(fieldNotes, { allowed: 'lower-case letters, digits and hyphens, up to 41, not a hyphen first' });
 const candidateName = optional(name);
 const throttle = (words: string) => number('%', -100, 100, words);
 
@@ -312,7 +325,10 @@ const requirementRest = {
   id: z
     .string()
     .regex(/^[A-Za-z0-9][A-Za-z0-9_.-]{0,40}$/)
-    .meta({ description: 'Letters, digits, hyphens, dots' }),
+    .meta({ description: 'Letters, digits, hyphens, dots' })
+    .register(fieldNotes, {
+      allowed: 'letters, digits, hyphens and dots, up to 41, a letter or digit first',
+    }),
   figure: line('Name in the table of figures', 60),
   band_kmh: optional(number('km/h', 0.05, 50, 'Half-width of the band of a figure that has one')),
   where: otherwise(where, 'holdable', 'a hill beyond the drive is no fault of the design'),

@@ -36,7 +36,7 @@ export type Editable =
  */
 export function editCase(text: string, path: Path, value: Editable): string {
   const before = readYaml(text, 'case');
-  const doc = parseDocument(text, { prettyErrors: false, logLevel: 'silent' });
+  const doc = parseDocument(text, { prettyErrors: false, logLevel: 'error' });
   const edited = splice(text, doc, path, value);
   const after = readYaml(edited, 'case').value;
   const wanted = withValue(before.value, path, value);

@@ -36,7 +36,7 @@ export function readOverride(text: string): Override {
   if (equals < 1 || path === '')
     refuse(text, 'is not a change of a key', text, 'key=value, such as hold.set_speed_kmh=70');
   const written = text.slice(equals + 1);
-  const doc = parseDocument(written, { prettyErrors: false, logLevel: 'silent' });
+  const doc = parseDocument(written, { prettyErrors: false, logLevel: 'error' });
   const fault = doc.errors[0];
   if (fault !== undefined)
     refuse(text, `its value is not valid YAML: ${fault.message}`, written, 'a value as in the file');

@@ -173,14 +173,25 @@ function unknownKey(
   }
   const near = nearestKey(key, mine);
   if (near !== null) suggested.add(pathId([...path, near.key]));
-  const elsewhere = near === null ? homeOf(root, key) : null;
-  const hint =
-    near !== null
-      ? `, did you mean ${near.key}?${near.unit ? ' (the unit is part of the key)' : ''}`
-      : elsewhere !== null
-        ? `, it belongs under ${elsewhere}`
-        : '';
-  add(at, 'unknown-key', `is not a key known here${hint}`, { allowed: mine.join(', ') });
+  add(at, 'unknown-key', `is not a key known here${hint(root, options, key, near)}`, {
+    allowed: mine.join(', '),
+  });
+}
+
+/** What may help with an unknown key, to follow on the message. */
+function hint(
+  root: Schema,
+  options: readonly Schema[],
+  key: string,
+  near: ReturnType<typeof nearestKey>,
+): string {
+  if (key === '<<') return ': YAML 1.2 has no merge keys';
+  const other = options.find((option) => key in shapeOf(option));
+  const telling = other === undefined ? undefined : [...tellingKeys([other])][0];
+  if (telling !== undefined) return `, it goes with ${telling[0]}: ${telling[1].join(', ')}`;
+  if (near !== null) return `, did you mean ${near.key}?${near.unit ? ' (the unit is part of the key)' : ''}`;
+  const home = homeOf(root, key);
+  return home === null ? '' : `, it belongs under ${home}`;
 }
 
 /** The top-level block that has a key; null when none or several have. */

@@ -118,9 +118,7 @@ export function allowedWords(schema: Schema): string {
   const words = optionsOf(schema).map((option) => {
     const inner = bare(option);
     if (inner instanceof z.ZodUnion) return allowedWords(inner);
-    return (
-      fieldNotes.get(inner)?.allowed ?? (inner as z.ZodType).description ?? inner._zod.def.type
-    );
+    return fieldNotes.get(inner)?.allowed ?? (inner as z.ZodType).description ?? inner._zod.def.type;
   });
   return [...new Set(words)].join(', or ');
 }

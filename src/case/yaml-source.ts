@@ -53,7 +53,7 @@ export function readYaml(text: string, file: string): YamlSource {
       allowed: `at most ${LONGEST_TEXT}`,
     });
   const lines = new LineCounter();
-  const doc = parseDocument(text, { lineCounter: lines, prettyErrors: false, logLevel: 'silent' });
+  const doc = parseDocument(text, { lineCounter: lines, prettyErrors: false, logLevel: 'error' });
   const spotAt = (offset: number): Spot => {
     const { line, col } = lines.linePos(offset);
     return { line: Math.max(1, line), column: Math.max(1, col) };
