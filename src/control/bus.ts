@@ -1,0 +1,21 @@
+/** Places of the bus between the loop and a controller. Speeds as the sensor indicates them [m/s], throttle as a ratio. */
+
+/** Measured speed: scale error, filter and delays included. */
+export const BUS_MEASURED = 0;
+/** Reference of this sample, and the set speed that it moves to. */
+export const BUS_REFERENCE = 1;
+export const BUS_TARGET = 2;
+/** Greatest change of the reference in one sample [m/s]; Infinity: it steps. */
+export const BUS_REFERENCE_STEP = 3;
+/** Command before and after it is limited to the drive's range. */
+export const BUS_COMMAND = 4;
+export const BUS_LIMITED = 5;
+/** Parts of the command. */
+export const BUS_PROPORTIONAL = 6;
+export const BUS_INTEGRAL = 7;
+export const BUS_FEEDFORWARD = 8;
+/** What the controller carries to its next sample: four places. */
+export const BUS_MEMORY = 9;
+/** Throttle at which a locked throttle is held; the loop sets it. */
+export const BUS_LOCK = 13;
+export const BUS_SIZE = 14;

@@ -1,0 +1,95 @@
+import { controllerFor } from '../control/controller-for.ts';
+import { exp } from '../numeric/elementary.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import { dragTangent } from './crosswind.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+import type { LoopPlan } from './plan.ts';
+import { emptySums } from './record.ts';
+import { roadTable } from './road-table.ts';
+
+/** Longest step of either scheme [s]: a controller at 20 Hz or slower is stepped several times a sample. */
+const LONGEST_STEP = 0.025;
+/** Lags closer to each other than this, relatively, are taken as equal. */
+const EQUAL_LAGS = 1e-7;
+
+/** Compiles a plan to flat arrays. The state is empty: see `settle`. */
+export function buildMachine(plan: LoopPlan): Machine {
+  const { vehicle } = plan;
+  const { drive } = vehicle;
+  const table = roadTable(plan.road, drive.derate);
+  const controller = controllerFor(plan.controller, drive.throttleMin, drive.throttleMax);
+  const p = new Float64Array(at.P_SIZE);
+  const sample = controller.sample ?? plan.lockedSample;
+  const gear = drive.gears[drive.gear]!;
+
+  p[at.P_SAMPLE] = sample;
+  p[at.P_STEPS] = Math.ceil(sample / LONGEST_STEP - 1e-9);
+  p[at.P_STEP] = sample / p[at.P_STEPS];
+  p[at.P_ROAD_CELLS] = table.cells;
+  p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
+  p[at.P_MASS] = vehicle.mass;
+  p[at.P_EFFECTIVE_MASS] = vehicle.mass + vehicle.rotatingMass + gear.inertia;
+  p[at.P_CDA] = vehicle.roadLoad.cda;
+  p[at.P_C0] = vehicle.roadLoad.c0;
+  p[at.P_C1] = vehicle.roadLoad.c1;
+  p[at.P_C2] = vehicle.roadLoad.c2;
+  p[at.P_STALL_SPEED] = drive.stallSpeed;
+  p[at.P_LOW] = drive.throttleMin;
+  p[at.P_HIGH] = drive.throttleMax;
+  p[at.P_DERATED] = drive.derate === 'none' ? 0 : 1;
+  p[at.P_CROSSWIND] = table.crosswind ? 1 : 0;
+  p[at.P_SPEED_CELLS] = drive.speedEdges.length + 1;
+  p[at.P_THROTTLE_CELLS] = drive.throttleEdges.length + 1;
+  for (let i = 0; i < 4; i++) p[at.P_BANDS + i] = plan.bands[i] ?? -1;
+  const { scaleError } = vehicle.sensor;
+  p[at.P_TO_TRUE] = plan.hold.setSpeedIs === 'indicated' ? 1 / (1 + scaleError) : 1;
+  p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
+  writeLags(p, vehicle, controller.computingDelay);
+
+  return {
+    s: new Float64Array(at.HISTORY + at.HISTORY_STRIDE * p[at.P_HISTORY]),
+    p,
+    rows: table.rows,
+    cells: cellsOverSpeed(drive.cells, gear.ratio),
+    speedEdges: drive.speedEdges.map((edge) => edge / gear.ratio),
+    throttleEdges: drive.throttleEdges,
+    controller,
+    tangent: dragTangent(vehicle.roadLoad),
+    sums: emptySums(),
+  };
+}
+
+function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): void {
+  const step = p[at.P_STEP];
+  const { rateLimit } = vehicle.actuator;
+  const ta = vehicle.actuator.lag;
+  const given = vehicle.drive.lag;
+  const equal = ta > 0 && Math.abs(ta - given) <= EQUAL_LAGS * ta;
+  const td = equal ? ta : given;
+  const decay = (lag: number, time: number): number => (lag > 0 ? exp(-time / lag) : 0);
+  p[at.P_ACTUATOR_LAG] = ta;
+  p[at.P_DRIVE_LAG] = td;
+  p[at.P_RATE] = rateLimit ?? Number.POSITIVE_INFINITY;
+  p[at.P_RATE_GAP] = rateLimit === null ? Number.POSITIVE_INFINITY : rateLimit * ta;
+  p[at.P_LAG_WEIGHT] = equal || ta === 0 ? 0 : ta / (ta - td);
+  p[at.P_LAG_EQUAL] = equal ? 1 / td : 0;
+  p[at.P_ACTUATOR_HALF] = decay(ta, 0.5 * step);
+  p[at.P_ACTUATOR_FULL] = p[at.P_ACTUATOR_HALF] * p[at.P_ACTUATOR_HALF];
+  p[at.P_DRIVE_HALF] = decay(td, 0.5 * step);
+  p[at.P_DRIVE_FULL] = p[at.P_DRIVE_HALF] * p[at.P_DRIVE_HALF];
+  const { filter, delay, scaleError } = vehicle.sensor;
+  p[at.P_FILTER] = filter;
+  p[at.P_FILTER_FULL] = decay(filter, step);
+  p[at.P_SCALE] = 1 + scaleError;
+  // A command that is late by the computing delay is the command of a measurement that is older by it.
+  p[at.P_DELAY] = (delay + computingDelay) / p[at.P_SAMPLE];
+  p[at.P_HISTORY] = p[at.P_DELAY] > 0 ? Math.ceil(p[at.P_DELAY]) + 1 : 0;
+}
+
+/** Cells in terms of wheel force and vehicle speed: w = ratio v, F = ratio T. */
+function cellsOverSpeed(cells: Float64Array, ratio: number): Float64Array {
+  const square = ratio * ratio;
+  const factors = [ratio, square, ratio, square, square * ratio, 1];
+  return cells.map((value, i) => value * factors[i % 6]!);
+}

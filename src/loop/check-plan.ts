@@ -1,0 +1,42 @@
+import { InputError } from '../problems/input-error.ts';
+import type { LoopPlan } from './plan.ts';
+
+/** Greatest number of samples of one run. */
+const MOST_SAMPLES = 1e9;
+const MOST_BANDS = 4;
+
+/**
+ * Refuses a plan that cannot be run at all. Values of road and vehicle are the matter of those who made them.
+ *
+ * @throws InputError `road-too-short`, `out-of-range`
+ */
+export function checkPlan(plan: LoopPlan): void {
+  const { road, hold } = plan;
+  const sample = plan.controller.kind === 'pi' ? plan.controller.sample : plan.lockedSample;
+  if (!(road.size >= 2 && road.station[road.size - 1] > 0)) {
+    throw new InputError({
+      code: 'road-too-short',
+      place: { key: 'road' },
+      message: 'the road has no length',
+      found: `${road.size} knots`,
+      allowed: 'at least 2, not all in one place',
+    });
+  }
+  above('sample', sample, 0, 's');
+  above('bin', plan.bin, 0, 'm');
+  above('timeLimit', plan.timeLimit, 0, 's');
+  above('hold.setSpeed', hold.setSpeed, 0, 'm/s');
+  above('hold.startSpeed', hold.startSpeed, 0, 'm/s');
+  for (const [i, change] of hold.changes.entries())
+    above(`hold.changes[${i}].setSpeed`, change.setSpeed, 0, 'm/s');
+  if (plan.timeLimit / sample > MOST_SAMPLES) refuse('timeLimit', `${plan.timeLimit} s`, '1e9 samples');
+  if (plan.bands.length > MOST_BANDS) refuse('bands', `${plan.bands.length} bands`, `at most ${MOST_BANDS}`);
+}
+
+function above(key: string, value: number, least: number, unit: string): void {
+  if (!(value > least && Number.isFinite(value))) refuse(key, `${value} ${unit}`, `above ${least} ${unit}`);
+}
+
+function refuse(key: string, found: string, allowed: string): never {
+  throw new InputError({ code: 'out-of-range', place: { key }, message: 'out of range', found, allowed });
+}

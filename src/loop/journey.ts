@@ -1,0 +1,83 @@
+import { BUS_TARGET } from '../control/bus.ts';
+import { setTarget } from '../control/set-point.ts';
+import { advanceExact } from './exact.ts';
+import { advanceFast } from './fast.ts';
+import * as at from './layout.ts';
+import type { Kernel, Machine } from './machine.ts';
+import { stationAt } from './places.ts';
+import type { LoopPlan, SetSpeedChange } from './plan.ts';
+import { lockThrottle, markLock } from './settle.ts';
+
+/** Ticks that reach a time [s] from a tick count; a hair early counts as reached. */
+const ticksTo = (time: number, sample: number, tick: number): number =>
+  Math.max(0, Math.ceil(time / sample - 1e-9) - tick);
+
+/** A run under way: chunks of the kernel, cut where the set speed changes. */
+export interface Journey {
+  /** Runs samples until one would start at or beyond a station [m] or [s], or `ticks` have run. Returns the event. */
+  readonly advance: (until: number, ticks: number) => number;
+  /** Seconds since the start of the run. */
+  readonly time: () => number;
+  /** True when the time limit is reached. */
+  readonly late: () => boolean;
+}
+
+/**
+ * A journey from the machine's present state. Set-speed changes that lie at or before it are taken as made: where the
+ * set speed in force is not the plan's (a replay with another one), it changes now.
+ */
+export function journey(machine: Machine, plan: LoopPlan): Journey {
+  const { s, p } = machine;
+  const kernel: Kernel = plan.scheme === 'fast' ? advanceFast : advanceExact;
+  const sample = p[at.P_SAMPLE];
+  const { changes } = plan.hold;
+  const lastTick = Math.ceil(plan.timeLimit / sample - 1e-9);
+  const places = changes.map(({ at: place }) =>
+    'distance' in place ? stationAt(plan.road, place.distance) : Number.POSITIVE_INFINITY,
+  );
+  const due = (i: number): boolean => {
+    const place = changes[i]!.at;
+    return 'time' in place ? ticksTo(place.time, sample, s[at.TICK]) === 0 : s[at.STATION] >= places[i]!;
+  };
+  const change = (setSpeed: number, made: SetSpeedChange | null): void => {
+    setTarget(s, setSpeed, made?.ramp ?? machine.controller.ramp, sample);
+    markLock(machine, plan);
+  };
+  const makeChanges = (): void => {
+    while (s[at.CHANGES] < changes.length && due(s[at.CHANGES])) {
+      const made = changes[s[at.CHANGES]]!;
+      s[at.CHANGES] += 1;
+      change(made.setSpeed, made);
+      lockThrottle(machine, plan, made.setSpeed);
+    }
+  };
+
+  // The set speed in force here, by this plan.
+  s[at.CHANGES] = 0;
+  while (s[at.CHANGES] < changes.length && due(s[at.CHANGES])) s[at.CHANGES] += 1;
+  const last = s[at.CHANGES] > 0 ? changes[s[at.CHANGES] - 1]! : null;
+  const inForce = last?.setSpeed ?? plan.hold.setSpeed;
+  if (s[BUS_TARGET] !== inForce) change(inForce, last);
+  lockThrottle(machine, plan, inForce);
+
+  const advance = (until: number, ticks: number): number => {
+    let left = Math.min(ticks, lastTick - s[at.TICK]);
+    let event = at.RUNNING;
+    while (left > 0 && s[at.STATION] < until && event === at.RUNNING) {
+      makeChanges();
+      const next = s[at.CHANGES] < changes.length ? changes[s[at.CHANGES]]! : null;
+      const place = next === null ? Number.POSITIVE_INFINITY : places[s[at.CHANGES]]!;
+      const run =
+        next !== null && 'time' in next.at ? Math.min(left, ticksTo(next.at.time, sample, s[at.TICK])) : left;
+      const before = s[at.TICK];
+      event = kernel(machine, run, Math.min(until, place));
+      left -= s[at.TICK] - before;
+    }
+    return event;
+  };
+  return {
+    advance,
+    time: () => s[at.TICK] * sample + s[at.PARTIAL],
+    late: () => s[at.TICK] >= lastTick,
+  };
+}

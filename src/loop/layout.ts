@@ -1,0 +1,137 @@
+import { BUS_SIZE } from '../control/bus.ts';
+
+// Places of the flat arrays that the kernels work on. SI.
+
+// --- state: the bus of the controller, then the plant; a copy of it is a checkpoint ---
+/** Samples since the start, and seconds of a last sample that was cut short. */
+export const TICK = BUS_SIZE;
+export const PARTIAL = BUS_SIZE + 1;
+/** Station [m] or [s], and the road cell it lies in. */
+export const STATION = BUS_SIZE + 2;
+export const CELL = BUS_SIZE + 3;
+export const SPEED = BUS_SIZE + 4;
+/** Acceleration at the end of the last step. */
+export const ACCELERATION = BUS_SIZE + 5;
+/** Throttle at the actuator, and behind the drive's lag. */
+export const ACTUATOR = BUS_SIZE + 6;
+export const THROTTLE = BUS_SIZE + 7;
+/** Output of the sensor's filter, before its scale error. */
+export const FILTERED = BUS_SIZE + 8;
+/** Indices of the drive's cell over speed and throttle. */
+export const SPEED_CELL = BUS_SIZE + 9;
+export const THROTTLE_CELL = BUS_SIZE + 10;
+/** Energies since the start [J], the integral of their magnitudes, the distance travelled [m]. */
+export const DRIVE_WORK = BUS_SIZE + 11;
+export const REGENERATION_WORK = BUS_SIZE + 12;
+export const AERO_WORK = BUS_SIZE + 13;
+export const ROLLING_WORK = BUS_SIZE + 14;
+export const CLIMB_WORK = BUS_SIZE + 15;
+export const BRAKE_WORK = BUS_SIZE + 16;
+export const WORK_MAGNITUDE = BUS_SIZE + 17;
+export const TRAVELLED = BUS_SIZE + 18;
+export const START_SPEED = BUS_SIZE + 19;
+/** Air where a throttle was locked `level` the last time: density [kg/m3], temperature [K]. */
+export const LOCK_DENSITY = BUS_SIZE + 20;
+export const LOCK_TEMPERATURE = BUS_SIZE + 21;
+/** Set-speed changes that have happened. */
+export const CHANGES = BUS_SIZE + 22;
+/** What the last sample saw and did: at its start, except for sums over it. */
+export const SAMPLE_SPEED = BUS_SIZE + 23;
+export const SAMPLE_ACTUATOR = BUS_SIZE + 24;
+export const SAMPLE_ACCELERATION = BUS_SIZE + 25;
+export const SAMPLE_DRIVE_FORCE = BUS_SIZE + 26;
+export const SAMPLE_BRAKE_FORCE = BUS_SIZE + 27;
+/** LIMIT_ bits. */
+export const SAMPLE_LIMIT = BUS_SIZE + 28;
+export const SAMPLE_TIME = BUS_SIZE + 29;
+export const SAMPLE_DISTANCE = BUS_SIZE + 30;
+export const SAMPLE_DRIVE_WORK = BUS_SIZE + 31;
+export const SAMPLE_BRAKE_WORK = BUS_SIZE + 32;
+export const SAMPLE_PUSH = BUS_SIZE + 33;
+/** Limited command of the sample before. */
+export const LAST_COMMAND = BUS_SIZE + 34;
+/** 1: the last sample began with the actuator at its rate limit. */
+export const SAMPLE_RATED = BUS_SIZE + 35;
+/** History for delayed measurement: rows of [value, slope after it, slope before the next], see delayed-speed.ts. */
+export const HISTORY = BUS_SIZE + 36;
+export const HISTORY_STRIDE = 3;
+
+// --- parameters: constant over a run ---
+export const P_SAMPLE = 0;
+/** Steps a sample and length of a step. */
+export const P_STEPS = 1;
+export const P_STEP = 2;
+export const P_ROAD_CELLS = 3;
+/** 1: the station is time. */
+export const P_TIMED = 4;
+export const P_MASS = 5;
+export const P_EFFECTIVE_MASS = 6;
+export const P_CDA = 7;
+export const P_C0 = 8;
+export const P_C1 = 9;
+export const P_C2 = 10;
+export const P_ACTUATOR_LAG = 11;
+export const P_DRIVE_LAG = 12;
+/** Greatest rate of the actuator [1/s], and the gap |u - y| above which it rules; both Infinity without a limit. */
+export const P_RATE = 13;
+export const P_RATE_GAP = 14;
+/** Weights of the two exponentials of the lags: ta / (ta - td), and 1 / td where the two are equal. */
+export const P_LAG_WEIGHT = 15;
+export const P_LAG_EQUAL = 16;
+/** e^(-t / lag) at half a step and at a whole one. */
+export const P_ACTUATOR_HALF = 17;
+export const P_ACTUATOR_FULL = 18;
+export const P_DRIVE_HALF = 19;
+export const P_DRIVE_FULL = 20;
+export const P_FILTER = 21;
+export const P_FILTER_FULL = 22;
+/** Measured over true speed. */
+export const P_SCALE = 23;
+/** Transport and computing delay in samples, and rows of the history. */
+export const P_DELAY = 24;
+export const P_HISTORY = 25;
+export const P_STALL_SPEED = 26;
+export const P_LOW = 27;
+export const P_HIGH = 28;
+/** 1: the drive's force depends on altitude. */
+export const P_DERATED = 29;
+/** 1: there is crosswind somewhere. */
+export const P_CROSSWIND = 30;
+export const P_YAW_GAIN = 31;
+export const P_SPEED_CELLS = 32;
+export const P_THROTTLE_CELLS = 33;
+/** Half-widths of the bands, -1 where there is none: four places. */
+export const P_BANDS = 34;
+/** True speed over the units of the set speed; overspeed at which the rider brakes, Infinity: never. */
+export const P_TO_TRUE = 38;
+export const P_BRAKES_ABOVE = 39;
+export const P_SIZE = 40;
+
+// --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
+export const R_STATION = 0;
+export const R_LENGTH = 1;
+/** g sin(theta), g cos(theta). */
+export const R_SIN = 2;
+export const R_COS = 4;
+export const R_HEADWIND = 6;
+export const R_CROSSWIND = 8;
+/** Half the air density. */
+export const R_AIR = 10;
+/** Full-throttle torque over its value at sea level. */
+export const R_DERATE = 12;
+/** Horizontal distance. */
+export const R_DISTANCE = 14;
+/** Integral of g sin(theta) over the station up to the near knot. */
+export const R_CLIMB = 16;
+export const R_STRIDE = 17;
+
+// --- what a kernel returns ---
+export const RUNNING = 0;
+export const END_OF_ROAD = 1;
+export const STOPPED = 2;
+export const STALLED = 3;
+export const NON_FINITE = 4;
+
+/** The rider's brake: time constant with which it takes the overspeed away [s], and strongest deceleration [m/s2]. */
+export const BRAKE_TIME = 0.5;
+export const BRAKE_LIMIT = 3;

@@ -1,0 +1,28 @@
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+import type { Ledger } from './result.ts';
+
+/** The account of energy up to the machine's present state. */
+export function ledgerOf(machine: Machine, vehicle: Vehicle): Ledger {
+  const { s, p } = machine;
+  const v = s[at.SPEED];
+  const start = s[at.START_SPEED];
+  const drive = s[at.DRIVE_WORK];
+  const regeneration = s[at.REGENERATION_WORK];
+  const kinetic = 0.5 * p[at.P_EFFECTIVE_MASS] * (v * v - start * start);
+  const spent = s[at.AERO_WORK] + s[at.ROLLING_WORK] + s[at.CLIMB_WORK] + s[at.BRAKE_WORK] + kinetic;
+  const magnitude = s[at.WORK_MAGNITUDE];
+  const { efficiency } = vehicle.drive;
+  return {
+    drive,
+    regeneration,
+    aero: s[at.AERO_WORK],
+    rolling: s[at.ROLLING_WORK],
+    climb: s[at.CLIMB_WORK],
+    brake: s[at.BRAKE_WORK],
+    kinetic,
+    battery: efficiency === null ? null : drive / efficiency.drive + regeneration * efficiency.regeneration,
+    residual: magnitude > 0 ? Math.abs(drive + regeneration - spent) / magnitude : 0,
+  };
+}

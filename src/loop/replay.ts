@@ -1,0 +1,88 @@
+import { cellIndex } from '../vehicle/drive-law.ts';
+import { buildMachine } from './build-machine.ts';
+import { checkPlan } from './check-plan.ts';
+import { journey } from './journey.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+import { distanceAt, stationAt } from './places.ts';
+import type { LoopPlan, RunStatus } from './plan.ts';
+import type { Checkpoint, FullSeries, LoopResult } from './result.ts';
+import { sampleColumns } from './sample-columns.ts';
+import { settle } from './settle.ts';
+import { statusOf } from './status.ts';
+
+/** Where a replay starts: all state of a run at a sample, or settled at a horizontal distance [m] at the set speed there. */
+export type ReplayStart = Checkpoint | { readonly settledAt: number };
+
+/**
+ * Runs a window of the road and keeps every controller sample.
+ *
+ * From a checkpoint of the same plan the samples are those of the run, bit for bit. The plan may differ from the one
+ * that made the checkpoint in vehicle, controller gains or set speed (which then changes at the start of the window);
+ * the road must be the same.
+ *
+ * @param start a checkpoint, or a place to start settled
+ * @param to horizontal distance [m] at which the window ends
+ * @returns `completed` when the window was driven; the samples that start before `to`
+ * @throws InputError where the plan itself cannot be run
+ */
+export function replay(
+  plan: LoopPlan,
+  start: ReplayStart,
+  to: number,
+): { readonly status: RunStatus; readonly series: FullSeries } {
+  checkPlan(plan);
+  const { road } = plan;
+  const machine = buildMachine(plan);
+  const { s, p } = machine;
+  if ('settledAt' in start)
+    settle(machine, plan, stationAt(road, start.settledAt), setSpeedAt(plan, start.settledAt));
+  else restore(machine, start);
+  const run = journey(machine, plan);
+  const until = to >= road.distance[road.size - 1] ? Number.POSITIVE_INFINITY : stationAt(road, to);
+  const columns = sampleColumns();
+  const { gear } = plan.vehicle.drive;
+
+  let status: RunStatus | null = s[at.SPEED] < p[at.P_STALL_SPEED] ? 'stalled' : null;
+  while (status === null && s[at.STATION] < until) {
+    if (run.late()) status = 'time_limit';
+    else {
+      const time = run.time();
+      const distance = distanceAt(road, s[at.STATION]);
+      status = statusOf(run.advance(until, 1));
+      if (status !== 'non_finite') columns.push(machine, time, distance, gear);
+    }
+  }
+  return { status: status ?? 'completed', series: columns.finish() };
+}
+
+/** The last checkpoint at or before a horizontal distance [m]; the first where there is none. */
+export function nearestCheckpoint(result: LoopResult, distance: number): Checkpoint {
+  return result.checkpoints.findLast((point) => point.distance <= distance) ?? result.checkpoints[0]!;
+}
+
+/** Set speed in force at a place; changes by time are not known there. */
+function setSpeedAt(plan: LoopPlan, distance: number): number {
+  const made = plan.hold.changes.findLast(
+    (change) => 'distance' in change.at && change.at.distance <= distance,
+  );
+  return made?.setSpeed ?? plan.hold.setSpeed;
+}
+
+function restore(machine: Machine, { state }: Checkpoint): void {
+  const { s, speedEdges, throttleEdges } = machine;
+  s.set(state.subarray(0, at.HISTORY));
+  if (state.length === s.length) s.set(state.subarray(at.HISTORY), at.HISTORY);
+  else for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = s[at.FILTERED];
+  // Another vehicle has other cells; at an edge of the same one, either side is right and must stay.
+  if (!holds(speedEdges, s[at.SPEED_CELL], s[at.SPEED]))
+    s[at.SPEED_CELL] = cellIndex(speedEdges, s[at.SPEED]);
+  if (!holds(throttleEdges, s[at.THROTTLE_CELL], s[at.THROTTLE]))
+    s[at.THROTTLE_CELL] = cellIndex(throttleEdges, s[at.THROTTLE]);
+}
+
+function holds(edges: Float64Array, cell: number, x: number): boolean {
+  const low = edges[cell - 1] ?? Number.NEGATIVE_INFINITY;
+  const high = edges[cell] ?? Number.POSITIVE_INFINITY;
+  return cell <= edges.length && x >= low - 1e-6 && x <= high + 1e-6;
+}

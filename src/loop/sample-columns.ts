@@ -1,0 +1,80 @@
+import {
+  BUS_COMMAND,
+  BUS_FEEDFORWARD,
+  BUS_INTEGRAL,
+  BUS_MEASURED,
+  BUS_PROPORTIONAL,
+  BUS_REFERENCE,
+  BUS_TARGET,
+} from '../control/bus.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+import type { FullSeries } from './result.ts';
+
+const NUMBERS = [
+  'time',
+  'distance',
+  'setSpeed',
+  'reference',
+  'speed',
+  'measured',
+  'command',
+  'actuator',
+  'proportional',
+  'integral',
+  'feedforward',
+  'driveForce',
+  'brakeForce',
+  'acceleration',
+] as const;
+
+/** A full series while it grows. */
+export interface SampleColumns {
+  /** Adds the sample that a kernel has just run, with the time [s] and horizontal distance [m] of its start. */
+  readonly push: (machine: Machine, time: number, distance: number, gear: number) => void;
+  readonly finish: () => FullSeries;
+}
+
+/** Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read. */
+export function sampleColumns(): SampleColumns {
+  const width = NUMBERS.length + 2;
+  let rows = new Float64Array(width * 1024);
+  let size = 0;
+  const push: SampleColumns['push'] = ({ s, p }, time, distance, gear) => {
+    if (width * (size + 1) > rows.length) {
+      const more = new Float64Array(2 * rows.length);
+      more.set(rows);
+      rows = more;
+    }
+    const row = [
+      time,
+      distance,
+      s[BUS_TARGET] * p[at.P_TO_TRUE],
+      s[BUS_REFERENCE] * p[at.P_TO_TRUE],
+      s[at.SAMPLE_SPEED],
+      s[BUS_MEASURED],
+      s[BUS_COMMAND],
+      s[at.SAMPLE_ACTUATOR],
+      s[BUS_PROPORTIONAL],
+      s[BUS_INTEGRAL],
+      s[BUS_FEEDFORWARD],
+      s[at.SAMPLE_DRIVE_FORCE],
+      s[at.SAMPLE_BRAKE_FORCE],
+      s[at.SAMPLE_ACCELERATION],
+      s[at.SAMPLE_LIMIT],
+      gear,
+    ];
+    rows.set(row, width * size++);
+  };
+  const finish = (): FullSeries => {
+    const column = (k: number): Float64Array =>
+      Float64Array.from({ length: size }, (_, i) => rows[width * i + k]!);
+    const numbers = Object.fromEntries(NUMBERS.map((name, k) => [name, column(k)])) as Record<
+      (typeof NUMBERS)[number],
+      Float64Array
+    >;
+    const limit = Uint8Array.from(column(NUMBERS.length));
+    return { ...numbers, size, limit, gear: Uint8Array.from(column(NUMBERS.length + 1)) };
+  };
+  return { push, finish };
+}

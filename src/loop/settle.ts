@@ -1,0 +1,65 @@
+import { BUS_LIMITED, BUS_LOCK, BUS_MEASURED, BUS_REFERENCE } from '../control/bus.ts';
+import { derateFactor } from '../vehicle/derating.ts';
+import { cellIndex, throttleFor } from '../vehicle/drive-law.ts';
+import { levelThrottle } from '../vehicle/equilibrium.ts';
+import { requiredForce } from '../vehicle/resistance.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+import { cellAt, surroundingsAt } from './places.ts';
+import type { LoopPlan } from './plan.ts';
+
+/**
+ * Puts the machine at a station in the steady state of a speed: force and throttle that hold it there, limited to the
+ * drive's range, and a controller that takes over without a bump. Under a given locked throttle the throttle is that
+ * one, and the speed is only where the run starts.
+ *
+ * @param speed in the units of the set speed [m/s]
+ */
+export function settle(machine: Machine, plan: LoopPlan, station: number, speed: number): void {
+  const { s, p } = machine;
+  const { vehicle, controller } = plan;
+  const { drive } = vehicle;
+  const v = speed * p[at.P_TO_TRUE];
+  const here = surroundingsAt(plan.road, station);
+  const derate = derateFactor(drive, here.airDensity, here.airTemperature);
+  const needed = throttleFor(drive, drive.gear, v, requiredForce(vehicle, v, here), derate) ?? 0;
+  const given =
+    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
+  const throttle = Math.min(Math.max(given, drive.throttleMin), drive.throttleMax);
+
+  s.fill(0);
+  s[at.STATION] = station;
+  s[at.CELL] = cellAt(plan.road.station, station);
+  s[at.SPEED] = v;
+  s[at.START_SPEED] = v;
+  s[at.FILTERED] = v;
+  s[at.ACTUATOR] = throttle;
+  s[at.THROTTLE] = throttle;
+  s[at.LAST_COMMAND] = throttle;
+  s[at.SPEED_CELL] = cellIndex(machine.speedEdges, v);
+  s[at.THROTTLE_CELL] = cellIndex(machine.throttleEdges, throttle);
+  for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = v;
+  s[BUS_MEASURED] = p[at.P_SCALE] * v;
+  s[BUS_REFERENCE] = speed;
+  s[BUS_LIMITED] = throttle;
+  machine.controller.engage(s);
+  markLock(machine, plan);
+}
+
+/** Remembers the air at this place for a throttle locked `level`. */
+export function markLock(machine: Machine, plan: LoopPlan): void {
+  const here = surroundingsAt(plan.road, machine.s[at.STATION]);
+  machine.s[at.LOCK_DENSITY] = here.airDensity;
+  machine.s[at.LOCK_TEMPERATURE] = here.airTemperature;
+}
+
+/** Locks a locked throttle for a set speed, in the air that was remembered. */
+export function lockThrottle(machine: Machine, plan: LoopPlan, setSpeed: number): void {
+  const { controller, vehicle } = plan;
+  if (controller.kind !== 'locked') return;
+  const { s, p } = machine;
+  s[BUS_LOCK] =
+    controller.throttle === 'level'
+      ? levelThrottle(vehicle, setSpeed * p[at.P_TO_TRUE], s[at.LOCK_DENSITY], s[at.LOCK_TEMPERATURE])
+      : controller.throttle;
+}
