@@ -1,7 +1,9 @@
 import { interpolateLinear } from '../numeric/interpolate.ts';
 import { medianOf } from '../numeric/running-median.ts';
 import { InputError } from '../problems/input-error.ts';
+import type { Warning } from '../problems/warning.ts';
 import type { Repair } from '../track/track.ts';
+import { SUSPICION_WAVELENGTH, suspectBridges } from './bridge-suspicion.ts';
 import type { DrivenTrack } from './driven-track.ts';
 import { gradeOf, smoothElevation } from './elevation-smoothing.ts';
 import { isWholeMetres, SOURCE_CLASSES } from './elevation-source.ts';
@@ -9,7 +11,7 @@ import type { RoadOptions } from './options.ts';
 import type { Smoothing } from './road.ts';
 
 /** An isolated hill (a raised cosine) this many wavelengths from foot to foot keeps 90 % of its height. */
-const SHORTEST_HILL = 1.35;
+const SHORTEST_HILL = 1.3;
 
 /** Grade at the uniform knots and where it comes from. */
 export interface GradeAlong {
@@ -20,6 +22,7 @@ export interface GradeAlong {
   readonly smoothing: Smoothing | null;
   /** Elevation spikes, at driven distances. */
   readonly repairs: readonly Repair[];
+  readonly warnings: readonly Warning[];
 }
 
 /**
@@ -42,6 +45,7 @@ export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform:
       startElevation: driven.elevation?.[0] ?? 0,
       smoothing: null,
       repairs: [],
+      warnings: [],
     };
   if (driven.elevation === null)
     throw new InputError({
@@ -86,6 +90,7 @@ function bySurvey(
     startElevation: atKnots[0]!,
     smoothing: null,
     repairs: [],
+    warnings: [],
   };
 }
 
@@ -99,7 +104,7 @@ function bySmoothing(
   const source = SOURCE_CLASSES[name];
   const usual = isWholeMetres(elevation) ? source.wavelengthWholeMetres : source.wavelength;
   const wavelength = options.smoothingWavelength ?? usual;
-  const smooth = smoothElevation({
+  const input = {
     distance: driven.distance,
     elevation,
     masks: driven.masks,
@@ -107,7 +112,12 @@ function bySmoothing(
     knots: uniform.length,
     wavelength,
     noiseFloor: source.noiseFloor,
-  });
+  };
+  const smooth = smoothElevation(input);
+  const fine =
+    wavelength <= SUSPICION_WAVELENGTH
+      ? smooth
+      : smoothElevation({ ...input, wavelength: SUSPICION_WAVELENGTH });
   const sourceGradeSd = source.gradeSd * Math.max(1, wavelength / usual);
   const shown = smooth.noiseSd * smooth.leastGradeSdPerNoise;
   const gradeSd = smooth.gradeSdPerNoise.map((sd) => {
@@ -127,6 +137,7 @@ function bySmoothing(
       shortestHill: SHORTEST_HILL * wavelength,
     },
     repairs: spikes(smooth.outliers, driven.distance),
+    warnings: suspectBridges(fine.grade, smooth.grade, gradeSd, options.grid),
   };
 }
 

@@ -39,19 +39,27 @@ function slopeField(road: Road, length: number, stream: Pick<RandomStream, 'norm
   );
   const outward = turnsAt === null ? size : size / 2;
   const field = new Float64Array(size);
+  const onGrid = kernelAt(0, margin, grid / length);
   for (let i = 0; i < outward; i++) {
     const x = distance[i]! / grid;
-    const nearest = Math.floor(x) + margin;
+    const nearest = Math.floor(x + 1e-9);
+    const kernel = x - nearest < 1e-9 ? onGrid : kernelAt(x - nearest, margin, grid / length);
     let sum = 0;
-    let squares = 0;
-    for (let j = Math.max(0, nearest - margin); j <= Math.min(noise.length - 1, nearest + margin + 1); j++) {
-      const u = ((j - margin - x) * grid) / length;
-      const kernel = u * exp((-u * u) / 2);
-      sum += kernel * noise[j]!;
-      squares += kernel * kernel;
-    }
-    field[i] = sum / Math.sqrt(squares);
+    for (let j = 0; j < kernel.length; j++) sum += kernel[j]! * noise[nearest + j]!;
+    field[i] = sum;
     if (turnsAt !== null) field[size - 1 - i] = -field[i]!;
   }
   return field;
+}
+
+/** Weights of the 2 margin + 1 noise values around a knot that stands `past` spacings after the middle one; unit sum of squares. */
+function kernelAt(past: number, margin: number, spacing: number): Float64Array {
+  const kernel = new Float64Array(2 * margin + 1);
+  let squares = 0;
+  for (let j = 0; j < kernel.length; j++) {
+    const u = (j - margin - past) * spacing;
+    kernel[j] = u * exp((-u * u) / 2);
+    squares += kernel[j]! * kernel[j]!;
+  }
+  return kernel.map((weight) => weight / Math.sqrt(squares));
 }

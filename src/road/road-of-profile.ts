@@ -109,7 +109,11 @@ function knotsOf(pieces: readonly ProfilePiece[], half: number, grid: number): C
       before.heading !== piece.heading ||
       before.headwind !== piece.headwind;
     if (stepped) add(start, gradeAt(start), p);
-    for (const x of inside(start, end, half, grid)) add(x, gradeAt(x), p);
+    const curves = [
+      ...(before.grade === piece.grade ? [] : [start + half]),
+      ...(after.grade === piece.grade ? [] : [end - half]),
+    ];
+    for (const x of inside(start, end, half > 0 ? curves : [], grid)) add(x, gradeAt(x), p);
     add(end, gradeAt(end), p);
     start = end;
   });
@@ -117,9 +121,9 @@ function knotsOf(pieces: readonly ProfilePiece[], half: number, grid: number): C
 }
 
 /** Grid multiples and ends of vertical curves strictly between two places, ascending. */
-function inside(start: number, end: number, half: number, grid: number): number[] {
+function inside(start: number, end: number, curves: readonly number[], grid: number): number[] {
   const near = SAME * grid;
-  const places = half > 0 ? [start + half, end - half] : [];
+  const places = curves.slice();
   for (let k = Math.floor(start / grid) + 1; k * grid < end; k++) places.push(k * grid);
   const kept: number[] = [];
   for (const x of places.sort((a, b) => a - b))
@@ -147,10 +151,10 @@ function windOfPieces(
   };
 }
 
-/** Curves reach `half` into the pieces on both sides of a change; a first or last piece has one, the others two. */
+/** Curves reach `half` into the pieces on both sides of a change of grade. */
 function refuseOverlap(pieces: readonly ProfilePiece[], half: number, speed: number): void {
   pieces.forEach((piece, p) => {
-    const curves = (p > 0 ? 1 : 0) + (p < pieces.length - 1 ? 1 : 0);
+    const curves = [pieces[p - 1], pieces[p + 1]].filter((next) => next && next.grade !== piece.grade).length;
     if (curves * half <= piece.extent * (1 + 1e-12)) return;
     throw new InputError({
       code: 'vertical-curve-too-long',

@@ -68,7 +68,10 @@ export function roadOfTrack(track: Track, options: RoadOptions): Road {
     warnings: [],
     turnsAt: null,
   };
-  const warned = { ...road, warnings: [...dataWarnings(driven, road), ...roadWarnings(road)] };
+  const warned = {
+    ...road,
+    warnings: [...dataWarnings(driven, road), ...along.warnings, ...roadWarnings(road)],
+  };
   return options.direction === 'both' ? thereAndBack(warned) : warned;
 }
 
