@@ -159,13 +159,15 @@ function unknownKey(
   const telling = tellingKeys(options);
   const sibling = options.find(
     (option) =>
-      key in shapeOf(option) &&
+      Object.hasOwn(shapeOf(option), key) &&
       [...telling.keys()].every(
-        (k) => !(k in raw) || (shapeOf(option)[k] as z.ZodLiteral).def.values.includes(raw[k] as string),
+        (k) =>
+          !Object.hasOwn(raw, k) ||
+          (shapeOf(option)[k] as z.ZodLiteral).def.values.includes(raw[k] as string),
       ),
   );
   if (sibling !== undefined) {
-    const against = Object.keys(raw).filter((k) => mine.includes(k) && !(k in shapeOf(sibling)));
+    const against = Object.keys(raw).filter((k) => mine.includes(k) && !Object.hasOwn(shapeOf(sibling), k));
     add(at, 'keys-exclude', `cannot stand beside ${against.join(', ') || 'the other keys'}`, {
       allowed: 'one of them',
     });
@@ -186,7 +188,7 @@ function hint(
   near: ReturnType<typeof nearestKey>,
 ): string {
   if (key === '<<') return ': YAML 1.2 has no merge keys';
-  const other = options.find((option) => key in shapeOf(option));
+  const other = options.find((option) => Object.hasOwn(shapeOf(option), key));
   const telling = other === undefined ? undefined : [...tellingKeys([other])][0];
   if (telling !== undefined) return `, it goes with ${telling[0]}: ${telling[1].join(', ')}`;
   if (near !== null) return `, did you mean ${near.key}?${near.unit ? ' (the unit is part of the key)' : ''}`;
@@ -197,7 +199,7 @@ function hint(
 /** The top-level block that has a key; null when none or several have. */
 function homeOf(root: Schema, key: string): string | null {
   const homes = Object.entries(shapeOf(root)).filter(([, field]) =>
-    optionsOf(field).some((option) => key in shapeOf(option)),
+    optionsOf(field).some((option) => Object.hasOwn(shapeOf(option), key)),
   );
   return homes.length === 1 ? homes[0]![0] : null;
 }
@@ -206,7 +208,9 @@ function missingKey(root: Schema, path: Path, source: YamlSource, add: Add): voi
   const parent = path.slice(0, -1);
   const { options, raw } = around(root, parent, source);
   const fits = (option: Schema): boolean =>
-    Object.keys(raw).every((key) => key in shapeOf(option) || !options.some((o) => key in shapeOf(o)));
+    Object.keys(raw).every(
+      (key) => Object.hasOwn(shapeOf(option), key) || !options.some((o) => Object.hasOwn(shapeOf(o), key)),
+    );
   const ways = options
     .filter(
       (option) =>

@@ -110,7 +110,8 @@ export function chosen(schema: Schema, value: unknown): Schema {
 function stepInto(schema: Schema, step: string | number): Schema | undefined {
   if (schema instanceof z.ZodArray) return schema.def.element as Schema;
   if (schema instanceof z.ZodTuple) return schema.def.items[Number(step)] as Schema | undefined;
-  return shapeOf(schema)[String(step)];
+  const shape = shapeOf(schema);
+  return Object.hasOwn(shape, step) ? shape[String(step)] : undefined;
 }
 
 /** What is allowed, in words: every option of a union. */
