@@ -1,1 +1,44 @@
-export {};
+// The public library: text and bytes in, plain data and text out. The same in Node, a page and a worker.
+
+export { caseJsonSchema, vehicleJsonSchema } from './case/json-schema.ts';
+export { starterCase } from './case/starter-case.ts';
+export type { Candidate, ControllerSetup, LockedSetup, PiSetup } from './control/setup.ts';
+export type { HoldPlan, LoopPlan, RiderPlan, RunStatus } from './loop/plan.ts';
+export { replay } from './loop/replay.ts';
+export type { BinRecord, Checkpoint, FullSeries, Ledger, LoopResult } from './loop/result.ts';
+export { runLoop } from './loop/run-loop.ts';
+export { formatProblem, InputError, type Problem } from './problems/input-error.ts';
+export { formatPlace, type Place } from './problems/place.ts';
+export type { Warning } from './problems/warning.ts';
+export { type ChartFile, chartFiles } from './report/chart-files.ts';
+export { dataFiles, roadFiles, type TextFile } from './report/data/data-files.ts';
+export { NotFiniteError } from './report/data/fixed.ts';
+export { roadJson } from './report/data/road-json.ts';
+export { summaryJson } from './report/data/summary.ts';
+export { renderReport } from './report/render-report.ts';
+export type { ProfileOptions, RoadOptions } from './road/options.ts';
+export type { Road } from './road/road.ts';
+export { roadOfProfile } from './road/road-of-profile.ts';
+export { roadOfTrack } from './road/road-of-track.ts';
+export { type RoadRequest, roadOf } from './run/road-of.ts';
+export type { RoadResult } from './run/road-result.ts';
+export { type RunRequest, runCase } from './run/run-case.ts';
+export type { CandidateResult, InputFile, RunResult } from './run/run-result.ts';
+export { SCHEMA_VERSION, TOOL_VERSION } from './run/tool-version.ts';
+export { demandOf } from './study/demand.ts';
+export { FIGURES, type FigureRow } from './study/figure-table.ts';
+export { findHills } from './study/find-hills.ts';
+export type {
+  Demand,
+  Figure,
+  FigureValues,
+  Hill,
+  HillOutcome,
+  None,
+  Requirement,
+  RequirementFinding,
+  Segment,
+} from './study/findings.ts';
+export { readTrack } from './track/read-track.ts';
+export type { Profile, Repair, Track } from './track/track.ts';
+export type { Drive, RoadLoad, Vehicle } from './vehicle/vehicle.ts';

@@ -1,3 +1,4 @@
+import type { DefaultUsed } from '../case/list-defaults.ts';
 import type { Candidate } from '../control/setup.ts';
 import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
@@ -50,14 +51,4 @@ export interface CandidateResult extends Candidate {
   readonly full: FullSeries | null;
 }
 
-/** A value the user did not give. */
-export interface DefaultUsed {
-  /** Dotted path in the case or vehicle file, unit in the key. */
-  readonly key: string;
-  /** As it would be written in the file. */
-  readonly value: string;
-  /** `vehicle` or `case`. */
-  readonly of: 'vehicle' | 'case';
-  /** Where the value comes from. */
-  readonly source: string;
-}
+export type { DefaultUsed };

@@ -26,7 +26,9 @@ interface Line {
 export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
   const { longitudeDeg, latitudeDeg, elevation, size } = road;
   const line =
-    longitudeDeg === null || latitudeDeg === null ? null : { longitudeDeg, latitudeDeg, elevation };
+    longitudeDeg === null || latitudeDeg === null
+      ? null
+      : { longitudeDeg: longitudeDeg.map(wrapped), latitudeDeg, elevation };
   const climb = climbOf(road);
   const route = {
     type: 'Feature',
@@ -43,6 +45,10 @@ export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
   const located = line === null ? [] : hills.map((hill) => hillFeature(road, line, hill));
   return jsonText({ type: 'FeatureCollection', features: [route, ...located] });
 }
+
+/** A longitude in [-180, 180]: a road over the antimeridian may count on. */
+const wrapped = (degrees: number): number =>
+  degrees >= -180 && degrees <= 180 ? degrees : degrees - 360 * Math.floor((degrees + 180) / 360);
 
 /** Metres climbed and descended along the smoothed elevation. */
 export function climbOf(road: Road): { readonly up: number; readonly down: number } {

@@ -1,14 +1,12 @@
-import type { Warning } from '../../problems/warning.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { type Figure, isNone, type RequirementFinding } from '../../study/findings.ts';
 import { toKm, toKmh, toPct, toWh } from '../../units/convert.ts';
 import { decimalsOf } from './decimals-of.ts';
 import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
+import { type Json, numbers, warningJson } from './json-parts.ts';
 import { jsonText } from './json-text.ts';
-import { climbOf } from './route.ts';
-
-type Json = string | number | boolean | null | readonly Json[] | { readonly [key: string]: Json };
+import { routeSummary } from './route-summary.ts';
 
 /**
  * summary.json: what a run found, for programs. Files read are named with their SHA-256; no clock and no absolute
@@ -32,75 +30,21 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     inputs: run.inputs.map(({ name, sha256, bytes }) => ({ name, sha256, bytes })),
     overrides: run.overrides,
     scheme: run.scheme,
-    route: routeOf(run),
+    route: routeSummary(run.road, run.demand),
     vehicle: { name: run.vehicle.name, ...numbers({ mass_kg: run.vehicle.mass }) },
     hold: numbers({ set_speed_kmh: toKmh(run.hold.setSpeed), band_kmh: toKmh(run.band) }),
     candidates: run.candidates.map(candidateOf),
     hills: hillRows(run.hills),
     requirements: run.requirements.map(requirementOf),
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),
-    warnings: run.warnings.map(warningOf),
+    warnings: run.warnings.map(warningJson),
     files,
   };
-}
-
-/** Numbers and figures, rounded by the unit in their names. */
-function numbers(values: Readonly<Record<string, Figure>>): Record<string, Json> {
-  const json: Record<string, Json> = {};
-  for (const [name, value] of Object.entries(values)) {
-    if (isNone(value)) {
-      json[name] = null;
-      json[`${name}_reason`] = value.none;
-    } else json[name] = rounded(value, decimalsOf(name), name);
-  }
-  return json;
 }
 
 /** A number without a unit, to so many significant digits. */
 function significant(value: number, digits: number, what: string): number {
   return rounded(value, 0, what) === value ? value : Number(value.toPrecision(digits));
-}
-
-function routeOf({ road, demand }: RunResult): Json {
-  const { up, down } = climbOf(road);
-  let beyond = 0;
-  let runaway = 0;
-  for (let i = 0; i + 1 < road.size; i++) {
-    const share = (demand.share[i]! + demand.share[i + 1]!) / 2;
-    const length = road.distance[i + 1]! - road.distance[i]!;
-    if (share > 1) beyond += length;
-    if (share < -1) runaway += length;
-  }
-  return {
-    name: road.name,
-    ...numbers({ length_m: road.distance[road.size - 1] ?? 0, climb_m: up, descent_m: down }),
-    points: road.size,
-    repairs: road.repairs.length,
-    ...numbers({ grid_m: road.grid, above_range_m: beyond, below_range_m: runaway }),
-    smoothing:
-      road.smoothing === null
-        ? null
-        : {
-            source: road.smoothing.source,
-            ...numbers({
-              wavelength_m: road.smoothing.wavelength,
-              residual_sd_m: road.smoothing.residualSd,
-              source_grade_sd_pct: toPct(road.smoothing.sourceGradeSd),
-              shortest_hill_m: road.smoothing.shortestHill,
-            }),
-          },
-    masks: road.masks.map(({ from, to, reason }) => ({
-      ...numbers({ from_km: toKm(from), to_km: toKm(to) }),
-      reason,
-    })),
-    repair_list: road.repairs.map(({ kind, from, to, points, line, message }) => ({
-      kind,
-      ...numbers({ from_km: toKm(from), to_km: toKm(to) }),
-      points,
-      line,
-      message,
-    })),
-  };
 }
 
 function candidateOf({ name, controller, result, figures }: CandidateResult): Json {
@@ -161,14 +105,4 @@ function requirementOf(finding: RequirementFinding): Json {
 
 function whereWords(where: RequirementFinding['requirement']['where']): string {
   return typeof where === 'string' ? where : `km ${toKm(where.from)} to ${toKm(where.to)}`;
-}
-
-function warningOf({ code, message, place, from, to }: Warning): Json {
-  return {
-    code,
-    message,
-    ...(place === undefined ? {} : { place: { ...place } }),
-    ...(from === undefined ? {} : numbers({ from_km: toKm(from) })),
-    ...(to === undefined ? {} : numbers({ to_km: toKm(to) })),
-  };
 }

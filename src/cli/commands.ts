@@ -1,0 +1,109 @@
+// The one table of commands and options: the parser, the help and the types of the handlers are made from it,
+// so that an option without a line of help does not compile.
+
+interface OptionRow {
+  readonly type: 'string' | 'boolean';
+  readonly short?: string;
+  readonly multiple?: true;
+  /** Name of its value in the help. */
+  readonly value?: string;
+  readonly choices?: readonly string[];
+  readonly about: string;
+}
+
+export const OPTIONS = {
+  out: { type: 'string', short: 'o', value: 'PATH', about: 'where the output goes' },
+  set: {
+    type: 'string',
+    multiple: true,
+    value: 'KEY=VALUE',
+    about: 'change a value of the case, by its dotted path; may be given more than once',
+  },
+  json: { type: 'boolean', about: 'print the summary as JSON to standard output' },
+  quiet: { type: 'boolean', about: 'print errors only' },
+  units: {
+    type: 'string',
+    value: 'kmh|mph',
+    choices: ['kmh', 'mph'],
+    about: 'speeds that people read, in km/h (the default) or mph; data files stay metric',
+  },
+  help: { type: 'boolean', short: 'h', about: 'print this help' },
+} as const satisfies Readonly<Record<string, OptionRow>>;
+
+export type OptionName = keyof typeof OPTIONS;
+
+interface CommandRow {
+  /** Names of its operands in the help; all are required. */
+  readonly operands: readonly string[];
+  readonly about: string;
+  /** What more there is to know: paragraphs of the command's own help. */
+  readonly details: readonly string[];
+  readonly options: readonly OptionName[];
+  readonly example: string;
+}
+
+export const COMMANDS = {
+  run: {
+    operands: ['CASE'],
+    about: 'replay a case: road, loops, study, report',
+    details: [
+      'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name>.',
+      'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are removed.',
+      'Exit status: 0 done; 1 done, but a requirement is not met; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
+    ],
+    options: ['out', 'set', 'json', 'quiet', 'units', 'help'],
+    example: 'ridgehold run night-post.yaml --set hold.set_speed_kmh=70 -o out/at-70',
+  },
+  road: {
+    operands: ['TRACK|CASE'],
+    about: 'turn a track into disturbance sequences, and say what was repaired',
+    details: [
+      'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson and a picture of the profile into a folder: --out, or out/<name>.',
+      'Repairs, warnings and the uncertainty of the grade are told on standard error. For a bare track, --set takes the keys of a case that concern the road: track.*, road.*, wind.*, air.*.',
+    ],
+    options: ['out', 'set', 'json', 'quiet', 'units', 'help'],
+    example: 'ridgehold road ride.gpx --set road.elevation_source=gnss --set track.trim_ends_m=300',
+  },
+  new: {
+    operands: ['DIR'],
+    about: 'write a commented starter case into a new folder',
+    details: ['The folder is made if it does not exist; one that holds anything is refused.'],
+    options: ['quiet', 'help'],
+    example: 'ridgehold new my-road && ridgehold run my-road/case.yaml',
+  },
+  schema: {
+    operands: ['case|vehicle'],
+    about: 'print the JSON Schema of a case or vehicle file',
+    details: [
+      'To standard output, or into the file that --out names. Editors check and complete YAML by it.',
+    ],
+    options: ['out', 'help'],
+    example: 'ridgehold schema case -o case.schema.json',
+  },
+} as const satisfies Readonly<Record<string, CommandRow>>;
+
+export type CommandName = keyof typeof COMMANDS;
+
+export const isCommand = (name: string): name is CommandName => Object.hasOwn(COMMANDS, name);
+
+type ValueOf<Name extends OptionName> = (typeof OPTIONS)[Name] extends { readonly type: 'boolean' }
+  ? boolean
+  : (typeof OPTIONS)[Name] extends { readonly multiple: true }
+    ? readonly string[]
+    : (typeof OPTIONS)[Name] extends { readonly choices: readonly (infer Choice)[] }
+      ? Choice | undefined
+      : string | undefined;
+
+/** The values of the options that a command has, and no others. */
+export type Values<Name extends CommandName> = {
+  readonly [Option in (typeof COMMANDS)[Name]['options'][number]]: ValueOf<Option>;
+};
+
+type Texts<Operands extends readonly unknown[]> = { readonly [Index in keyof Operands]: string };
+
+/** A command line that was understood. */
+export interface Invocation<Name extends CommandName> {
+  readonly command: Name;
+  readonly operands: Texts<(typeof COMMANDS)[Name]['operands']>;
+  readonly values: Values<Name>;
+}

@@ -1,0 +1,172 @@
+import {
+  accessSync,
+  constants,
+  existsSync,
+  mkdirSync,
+  readdirSync,
+  readFileSync,
+  renameSync,
+  rmdirSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs';
+import { dirname, join, resolve } from 'node:path';
+import { InputError } from '../problems/input-error.ts';
+import { fileProblem } from './file-problem.ts';
+
+export interface TextFile {
+  /** Below the folder, with `/`. */
+  readonly name: string;
+  readonly text: string;
+}
+
+const STAGE = /^\.ridgehold-(\d+)$/;
+/** Names that a run writes; a summary that lists anything else is not believed. */
+const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg)$/i;
+
+/**
+ * Refuses, before the work begins, a folder that could not be written: nothing is changed.
+ *
+ * @throws InputError `not-a-folder`, `not-permitted`
+ */
+export function checkFolder(folder: string): void {
+  let here = resolve(folder);
+  while (!existsSync(here) && dirname(here) !== here) here = dirname(here);
+  try {
+    if (!statSync(here).isDirectory())
+      throw new InputError({
+        code: 'not-a-folder',
+        place: { file: folder },
+        message: notFolder(here, folder),
+      });
+    accessSync(here, constants.W_OK | constants.X_OK);
+  } catch (error) {
+    throw fileProblem(error, folder, 'cannot be written');
+  }
+}
+
+const notFolder = (here: string, folder: string): string =>
+  `cannot be written: ${here === resolve(folder) ? 'it' : 'a part of the path'} is a file, not a folder`;
+
+/**
+ * Writes a whole result, or nothing. All files are written below a temporary name and then renamed, the last of
+ * the list (the mark of a whole result) at the end; where a step fails, what was there before is put back.
+ * Then the files that the former mark lists, and the new one does not, are removed.
+ *
+ * @param files the mark last
+ * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`
+ */
+export function writeResult(folder: string, files: readonly TextFile[]): void {
+  const made = makeFolder(folder);
+  const stage = join(folder, `.ridgehold-${process.pid}`);
+  try {
+    removeAbandoned(folder);
+    for (const { name } of files) refuseFolder(folder, name);
+    const mark = files.at(-1)?.name;
+    const former = mark === undefined ? [] : formerFiles(join(folder, mark));
+    for (const { name, text } of files) {
+      const path = join(stage, 'new', name);
+      within(join(folder, name), () => {
+        mkdirSync(dirname(path), { recursive: true });
+        writeFileSync(path, text, { flag: 'wx' });
+      });
+    }
+    swap(folder, stage, files);
+    const kept = new Set(files.map(({ name }) => name));
+    for (const name of former) if (!kept.has(name)) remove(folder, name);
+    rmSync(stage, { recursive: true, force: true });
+  } catch (error) {
+    rmSync(stage, { recursive: true, force: true });
+    if (made !== undefined) rmSync(made, { recursive: true, force: true });
+    throw error;
+  }
+}
+
+/** Does something to a path; what the system refuses is told with that path. */
+function within(path: string, act: () => void): void {
+  try {
+    act();
+  } catch (error) {
+    throw fileProblem(error, path, 'cannot be written');
+  }
+}
+
+/** Makes the folder; the topmost folder that had to be made, if any. */
+function makeFolder(folder: string): string | undefined {
+  let made: string | undefined;
+  within(folder, () => {
+    made = mkdirSync(folder, { recursive: true });
+  });
+  return made;
+}
+
+function refuseFolder(folder: string, name: string): void {
+  const path = join(folder, name);
+  if (existsSync(path) && statSync(path).isDirectory())
+    throw new InputError({
+      code: 'not-a-file',
+      place: { file: path },
+      message: 'cannot be written: a folder stands in place of the file',
+    });
+}
+
+/** Moves the new files into place and the old ones aside; undoes all of it when a step fails. */
+function swap(folder: string, stage: string, files: readonly TextFile[]): void {
+  const undo: (() => void)[] = [];
+  try {
+    for (const { name } of files) {
+      const target = join(folder, name);
+      const aside = join(stage, 'old', name);
+      within(target, () => {
+        mkdirSync(dirname(target), { recursive: true });
+        mkdirSync(dirname(aside), { recursive: true });
+        if (existsSync(target)) {
+          renameSync(target, aside);
+          undo.push(() => renameSync(aside, target));
+        }
+        renameSync(join(stage, 'new', name), target);
+        undo.push(() => rmSync(target, { force: true }));
+      });
+    }
+  } catch (error) {
+    for (const step of undo.reverse()) step();
+    throw error;
+  }
+}
+
+/** Files that the summary of an earlier run lists; none where it is no such summary. */
+function formerFiles(path: string): readonly string[] {
+  try {
+    const summary: unknown = JSON.parse(readFileSync(path, 'utf8'));
+    if (typeof summary !== 'object' || summary === null) return [];
+    if (!('schema_version' in summary) || !('files' in summary) || !Array.isArray(summary.files)) return [];
+    return summary.files.filter((name): name is string => typeof name === 'string' && OURS.test(name));
+  } catch {
+    return [];
+  }
+}
+
+function remove(folder: string, name: string): void {
+  rmSync(join(folder, name), { force: true });
+  const parent = dirname(join(folder, name));
+  if (resolve(parent) !== resolve(folder) && existsSync(parent) && readdirSync(parent).length === 0)
+    rmdirSync(parent);
+}
+
+/** Temporary folders of runs that were killed. */
+function removeAbandoned(folder: string): void {
+  for (const name of readdirSync(folder)) {
+    const pid = Number(STAGE.exec(name)?.[1] ?? 0);
+    if (pid > 0 && !isAlive(pid)) rmSync(join(folder, name), { recursive: true, force: true });
+  }
+}
+
+function isAlive(pid: number): boolean {
+  try {
+    process.kill(pid, 0);
+    return true;
+  } catch (error) {
+    return error instanceof Error && 'code' in error && error.code === 'EPERM';
+  }
+}

@@ -1,0 +1,63 @@
+import { join } from 'node:path';
+import { roadFiles } from '../report/data/data-files.ts';
+import { roadJson } from '../report/data/road-json.ts';
+import { caseNameOf } from '../run/case-name.ts';
+import { roadOf } from '../run/road-of.ts';
+import type { RoadResult } from '../run/road-result.ts';
+import type { Repair } from '../track/track.ts';
+import { toKm, toPct } from '../units/convert.ts';
+import { readerOf } from './case-reader.ts';
+import type { Invocation } from './commands.ts';
+import { DONE } from './exit-status.ts';
+import { checkFolder, writeResult } from './result-folder.ts';
+import { say, tellWarnings } from './tell.ts';
+
+/** `ridgehold road TRACK|CASE`: writes the disturbances along a road, tells people what was repaired. */
+export function roadCommand({ operands: [path], values }: Invocation<'road'>): number {
+  const folder = values.out ?? join('out', caseNameOf(path));
+  checkFolder(folder);
+  const reader = readerOf(path);
+  const result = reader.telling(() =>
+    roadOf({ file: reader.file, read: reader.read, overrides: values.set }),
+  );
+  const files = roadFiles(result.road);
+  const mark = roadJson(
+    result,
+    files.map(({ name }) => name),
+  );
+  writeResult(folder, [...files, { name: 'road.json', text: mark }]);
+  if (!values.quiet) {
+    tellRoad(result);
+    tellWarnings(result.warnings, reader.seen);
+    say(`The road is at ${join(folder, 'disturbance.csv')}`);
+  }
+  if (values.json) process.stdout.write(mark);
+  return DONE;
+}
+
+function tellRoad({ road, defaults }: RoadResult): void {
+  const length = road.distance[road.size - 1] ?? 0;
+  say(`${road.name}: ${toKm(length).toFixed(2)} km, ${road.size} points`);
+  if (road.smoothing !== null) {
+    const { source, wavelength, residualSd, shortestHill } = road.smoothing;
+    const assumed = defaults.some(({ key }) => key === 'road.elevation_source') ? ' (assumed)' : '';
+    say(
+      `Elevation: ${source}${assumed}, smoothed over ${wavelength.toFixed(0)} m, noise ${residualSd.toFixed(2)} m; hills shorter than ${shortestHill.toFixed(0)} m lose more than a tenth of their height`,
+    );
+  }
+  const spread = Array.from(road.gradeSd).sort((a, b) => a - b);
+  const median = spread[Math.floor(spread.length / 2)] ?? 0;
+  say(
+    `Grade: one standard deviation ${toPct(median).toFixed(2)} % at the median, ${toPct(spread.at(-1) ?? 0).toFixed(2)} % at most`,
+  );
+  tellRepairs(road.repairs);
+}
+
+function tellRepairs(repairs: readonly Repair[]): void {
+  const counts = new Map<string, number>();
+  for (const { kind } of repairs) counts.set(kind, (counts.get(kind) ?? 0) + 1);
+  const words = [...counts].map(([kind, count]) => `${count} ${kind.replaceAll('_', ' ')}`).join(', ');
+  say(`Repairs: ${words === '' ? 'none' : words}`);
+  for (const { message } of repairs.slice(0, 12)) say(`  ${message}`);
+  if (repairs.length > 12) say(`  and ${repairs.length - 12} more, which road.json lists`);
+}

@@ -1,0 +1,57 @@
+import { join } from 'node:path';
+import { chartFiles } from '../report/chart-files.ts';
+import { dataFiles } from '../report/data/data-files.ts';
+import { summaryJson } from '../report/data/summary.ts';
+import { answerOf } from '../report/model/answer.ts';
+import { viewOf } from '../report/model/view.ts';
+import { renderReport } from '../report/render-report.ts';
+import { caseNameOf } from '../run/case-name.ts';
+import { runCase } from '../run/run-case.ts';
+import type { RunResult } from '../run/run-result.ts';
+import { readerOf } from './case-reader.ts';
+import type { Invocation } from './commands.ts';
+import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
+import { ProgressBar } from './progress-bar.ts';
+import { checkFolder, writeResult } from './result-folder.ts';
+import { say, tellWarnings } from './tell.ts';
+
+/** `ridgehold run CASE`: replays the case, writes the result whole, tells people the answer. */
+export function runCommand({ operands: [path], values }: Invocation<'run'>): number {
+  const folder = values.out ?? join('out', caseNameOf(path));
+  checkFolder(folder);
+  const reader = readerOf(path);
+  const bar = new ProgressBar(process.stderr);
+  const units = values.units ?? 'kmh';
+  let run: RunResult;
+  try {
+    run = reader.telling(() =>
+      runCase({ file: reader.file, read: reader.read, overrides: values.set, onProgress: bar.show }),
+    );
+  } finally {
+    bar.clear();
+  }
+  const files = [
+    { name: 'report.html', text: renderReport(run, { units }) },
+    ...dataFiles(run),
+    ...chartFiles(run, { units }).map(({ name, svg }) => ({ name: `charts/${name}`, text: svg })),
+  ];
+  const summary = summaryJson(
+    run,
+    files.map(({ name }) => name),
+  );
+  writeResult(folder, [...files, { name: 'summary.json', text: summary }]);
+  if (!values.quiet) {
+    say(answerOf(viewOf(run, units)).sentence);
+    for (const { requirement, verdict, words } of run.requirements)
+      say(`  ${requirement.id} ${verdict}: ${words}`);
+    tellWarnings(run.warnings, reader.seen);
+    say(`The report is at ${join(folder, 'report.html')}`);
+  }
+  if (values.json) process.stdout.write(summary);
+  return statusOf(run);
+}
+
+function statusOf(run: RunResult): number {
+  if (run.candidates.some(({ result }) => result.status === 'non_finite')) return NUMERICAL_FAILURE;
+  return run.requirements.some(({ verdict }) => verdict === 'not met') ? NOT_MET : DONE;
+}

@@ -1,0 +1,16 @@
+import { mkdirSync, renameSync, rmSync, writeFileSync } from 'node:fs';
+import { basename, dirname, join } from 'node:path';
+import { fileProblem } from './file-problem.ts';
+
+/** Writes one file whole or not at all: under a temporary name, then renamed. */
+export function writeText(path: string, text: string): void {
+  const draft = join(dirname(path), `.${basename(path)}.${process.pid}`);
+  try {
+    mkdirSync(dirname(path), { recursive: true });
+    writeFileSync(draft, text, { flag: 'wx' });
+    renameSync(draft, path);
+  } catch (error) {
+    rmSync(draft, { force: true });
+    throw fileProblem(error, path, 'cannot be written');
+  }
+}

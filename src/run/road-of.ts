@@ -1,0 +1,84 @@
+import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
+import { profileOf, roadOptionsOf, trackChoiceOf } from '../case/road-of.ts';
+import { placeOf } from '../case/yaml-source.ts';
+import type { Place } from '../problems/place.ts';
+import type { Road } from '../road/road.ts';
+import { roadOfProfile } from '../road/road-of-profile.ts';
+import { roadOfTrack } from '../road/road-of-track.ts';
+import { decodeText } from '../track/decode-text.ts';
+import { readTrack } from '../track/read-track.ts';
+import { caseNameOf } from './case-name.ts';
+import { InputLog, type Reader } from './input-log.ts';
+import type { RoadResult } from './road-result.ts';
+import { SCHEMA_VERSION, TOOL_VERSION } from './tool-version.ts';
+
+export interface RoadRequest {
+  /** Name of the case or track. */
+  readonly file: string;
+  readonly read: Reader;
+  /** Changes given beside the case: `road.grid_m=5`. */
+  readonly overrides?: readonly string[];
+}
+
+/**
+ * The road of a case, or of a bare track with the default road options. The vehicle of a case is not read.
+ *
+ * @throws InputError for what the reader, the case or the track refuse
+ */
+export function roadOf({ file, read, overrides = [] }: RoadRequest): RoadResult {
+  const log = new InputLog(read);
+  const isCase = /\.ya?ml$/i.test(file) || (/\.json$/i.test(file) && !isGeoJson(read(file)));
+  const document = isCase
+    ? readCaseFile(decodeText(log.read(file), file), file, overrides)
+    : readCaseFile(caseAround(file), file, overrides);
+  const road = roadOfCase(
+    document,
+    log,
+    file,
+    isCase ? placeOf(document.source, ['track', 'file']) : undefined,
+  );
+  return {
+    schemaVersion: SCHEMA_VERSION,
+    toolVersion: TOOL_VERSION,
+    name: caseNameOf(file),
+    inputs: log.files,
+    overrides,
+    road,
+    defaults: document.defaults.filter(({ key }) => /^(?:track|road|wind|air)\b/.test(key)),
+    warnings: road.warnings,
+  };
+}
+
+/**
+ * Reads the track that a case names, or lays the profile written in it.
+ *
+ * @param namedAt where the case names the track
+ */
+export function roadOfCase(document: CaseDocument, log: InputLog, file: string, namedAt?: Place): Road {
+  const profile = profileOf(document);
+  if (profile !== null) return roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file)));
+  const name = document.trackFile ?? '';
+  const bytes = log.read(name, namedAt);
+  const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
+  return roadOfTrack(track, roadOptionsOf(document, track.name ?? caseNameOf(name)));
+}
+
+/** A case of which only the road is looked at: so a bare track has the keys, the checks and the defaults of a case. */
+function caseAround(track: string): string {
+  return JSON.stringify({
+    track: { file: track },
+    vehicle: { mass: { kerb_kg: 100 }, road_load: { cda_m2: 0.5, crr: 0.01 } },
+    hold: { set_speed_kmh: 60 },
+    candidates: [{ kind: 'locked', throttle_pct: 0 }],
+  });
+}
+
+/** Tells a GeoJSON text from a case written in JSON: by its `type` (RFC 7946, section 1.4), which no case has. */
+function isGeoJson(bytes: Uint8Array): boolean {
+  try {
+    const value: unknown = JSON.parse(new TextDecoder().decode(bytes));
+    return typeof value === 'object' && value !== null && 'type' in value;
+  } catch {
+    return false;
+  }
+}

@@ -1,0 +1,148 @@
+import { candidatesOf } from '../case/candidates-of.ts';
+import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
+import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
+import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
+import { vehicleOf } from '../case/vehicle-of.ts';
+import { placeOf } from '../case/yaml-source.ts';
+import type { Candidate } from '../control/setup.ts';
+import type { LoopPlan } from '../loop/plan.ts';
+import { replay } from '../loop/replay.ts';
+import type { FullSeries, LoopResult } from '../loop/result.ts';
+import { runLoop } from '../loop/run-loop.ts';
+import { InputError } from '../problems/input-error.ts';
+import { compareCandidates } from '../study/compare-candidates.ts';
+import { demandOf } from '../study/demand.ts';
+import { findHills } from '../study/find-hills.ts';
+import type { Replayed } from '../study/findings.ts';
+import { judge } from '../study/judge.ts';
+import { segmentRuns, segmentsByLength } from '../study/segments.ts';
+import { segmentsByTerrain } from '../study/terrain-segments.ts';
+import { decodeText } from '../track/decode-text.ts';
+import { toKmh } from '../units/convert.ts';
+import { caseNameOf } from './case-name.ts';
+import { InputLog, type Reader } from './input-log.ts';
+import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
+import { roadOfCase } from './road-of.ts';
+import type { CandidateResult, RunResult } from './run-result.ts';
+import { runWarnings } from './run-warnings.ts';
+import { SCHEMA_VERSION, TOOL_VERSION } from './tool-version.ts';
+
+export interface RunRequest {
+  /** Name of the case. */
+  readonly file: string;
+  /** Gives the bytes of the case and of the files that it names, by those names. */
+  readonly read: Reader;
+  /** Changes given beside the case: `hold.set_speed_kmh=70`. */
+  readonly overrides?: readonly string[];
+  /** Told now and then what is being done, and the share of the work that is done, 0 to 1. */
+  readonly onProgress?: (share: number, words: string) => void;
+}
+
+/** Bands that one run can count in. */
+const MOST_BANDS = 4;
+
+/**
+ * The main job: reads a case and its files, makes the road, replays every candidate over it, and finds what the
+ * report and the data files tell.
+ *
+ * @throws InputError for what the reader or a file refuses; a numerical failure is a status of the candidate
+ */
+export function runCase({ file, read, overrides = [], onProgress = () => {} }: RunRequest): RunResult {
+  const log = new InputLog(read);
+  onProgress(0, 'reading');
+  const document = readCaseFile(decodeText(log.read(file), file), file, overrides);
+  const vehicleDocument = vehicleDocumentOf(document, log);
+  const vehicle = vehicleOf(vehicleDocument);
+  const road = roadOfCase(document, log, file, placeOf(document.source, ['track', 'file']));
+  const hold = holdOf(document);
+  const rider = riderOf(document);
+  const requirements = requirementsOf(document);
+  const band = bandOf(requirements);
+  const bands = bandsOf(requirements);
+  if (bands.length > MOST_BANDS) throw tooManyBands(document, bands);
+  const { series, bin } = outputOf(document);
+  const scheme = schemeOf(document);
+  const candidates = candidatesOf(document, vehicle);
+  const demand = demandOf(road, vehicle, hold, rider);
+  const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin }, candidates);
+  const replayed = replayAll(candidates, plans, onProgress);
+  onProgress(0.4, 'hills');
+  const hills = findHills({ road, demand, replayed, band });
+  onProgress(0.9, 'segments and requirements');
+  const segmenting = segmentsOf(document);
+  const segments =
+    segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
+  const context = { road, demand, hills };
+  const figures = compareCandidates(replayed, context, band);
+  const findings = judge(requirements, replayed, context);
+  const results = replayed.map(({ plan, result }, i): CandidateResult => {
+    const full = series === 'full' ? fullSeries(plan, result) : null;
+    return { ...(candidates[i] as Candidate), result, figures: figures[i]?.all ?? {}, full };
+  });
+  return {
+    schemaVersion: SCHEMA_VERSION,
+    toolVersion: TOOL_VERSION,
+    title: titleOf(document) ?? caseNameOf(file),
+    caseName: caseNameOf(file),
+    inputs: log.files,
+    overrides,
+    road,
+    vehicle,
+    hold,
+    rider,
+    scheme,
+    band,
+    candidates: results,
+    demand,
+    hills,
+    segmentsBy: segmenting.by,
+    segments: segmentRuns(segments, replayed),
+    requirements: findings,
+    defaults: [...document.defaults, ...vehicleDocument.defaults],
+    warnings: runWarnings(road, results),
+    status: statusOf(results, findings),
+  };
+}
+
+function vehicleDocumentOf(document: CaseDocument, log: InputLog): VehicleDocument {
+  if (document.vehicle !== null) return document.vehicle;
+  const name = document.vehicleFile ?? '';
+  const bytes = log.read(name, placeOf(document.source, ['vehicle']));
+  return readVehicleFile(decodeText(bytes, name), name, document.vehicleOverrides);
+}
+
+function replayAll(
+  candidates: readonly Candidate[],
+  plans: readonly LoopPlan[],
+  onProgress: (share: number, words: string) => void,
+): readonly Replayed[] {
+  return plans.map((plan, i) => {
+    const name = candidates[i]?.name ?? '';
+    onProgress((0.4 * i) / plans.length, name);
+    return { name, plan, result: runLoop(plan) };
+  });
+}
+
+/** Every sample of a run, by replay from its start. */
+function fullSeries(plan: LoopPlan, result: LoopResult): FullSeries {
+  const end = plan.road.distance[plan.road.size - 1] ?? 0;
+  return replay(plan, result.checkpoints[0] ?? { settledAt: 0 }, end).series;
+}
+
+function statusOf(
+  candidates: readonly CandidateResult[],
+  findings: RunResult['requirements'],
+): RunResult['status'] {
+  if (candidates.some(({ result }) => result.status !== 'completed')) return 'incomplete';
+  return findings.some(({ verdict }) => verdict === 'not met') ? 'requirement_not_met' : 'ok';
+}
+
+function tooManyBands(document: CaseDocument, bands: readonly number[]): InputError {
+  return new InputError({
+    code: 'too-many-bands',
+    place: { ...placeOf(document.source, ['requirements']), key: 'requirements' },
+    message: 'the requirements count time in too many different bands',
+    found: bands.map((one) => `${toKmh(one).toFixed(2)} km/h`).join(', '),
+    allowed: `at most ${MOST_BANDS} bands`,
+  });
+}
