@@ -34,7 +34,7 @@ export function demandOf(
   hold: HoldPlan,
   rider: RiderPlan = { brakesAbove: null },
 ): Demand {
-  const { setSpeed, settling } = setSpeedAlong(road, hold, vehicle.sensor.scaleError);
+  const { setSpeed, startSpeed, settling } = setSpeedAlong(road, hold, vehicle.sensor.scaleError);
   const column = (): Float64Array => new Float64Array(road.size);
   const required = column();
   const upper = column();
@@ -65,7 +65,7 @@ export function demandOf(
     { road, vehicle, setSpeed, brakesAbove: rider.brakesAbove, throttle: null },
     0,
     road.size - 1,
-    hold.startSpeed,
+    startSpeed,
   );
   const holdable = holdableKnots(road, setSpeed, share, ideal, settling);
   return {

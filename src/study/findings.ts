@@ -68,12 +68,16 @@ export interface Hill {
   /** Horizontal distance [m]. */
   readonly from: number;
   readonly to: number;
+  /** End of what the hill is answerable for: the next hill, or 15 s behind its own end [m]. */
+  readonly until: number;
   readonly meanGrade: number;
   readonly meanGradeSd: number;
   /** Steepest grade, with its sign. */
   readonly maxGrade: number;
   /** Extreme share of demand (see Demand.share), with the forces there [N] and the sustained (or runaway) speed [m/s]. */
   readonly share: number;
+  /** Where that is [m]. */
+  readonly shareAt: number;
   readonly requiredForce: number;
   readonly availableForce: number;
   readonly sustainedSpeed: number;

@@ -11,9 +11,14 @@ const GRANTED_SETTLING = 10;
 export interface SetSpeedAlong {
   /** Set speed as true speed, knot by knot; at the place of a change the new one [m/s]. */
   readonly setSpeed: Float64Array;
+  /** True speed at the start [m/s]. */
+  readonly startSpeed: number;
   /** Changes with their places [m] and true speeds [m/s]. */
   readonly changes: readonly { readonly at: number; readonly setSpeed: number }[];
-  /** From each change: |change| / ramp (0.5 m/s2 where it steps) and 10 s for settling, at the new set speed. */
+  /**
+   * From each change, and from a start at another speed: |change| / ramp (0.5 m/s2 where it steps) and 10 s for
+   * settling, at the higher of the two speeds.
+   */
   readonly settling: readonly Stretch[];
 }
 
@@ -28,7 +33,13 @@ export function setSpeedAlong(road: Road, hold: HoldPlan, scaleError: number): S
   const toTrue = hold.setSpeedIs === 'indicated' ? 1 / (1 + scaleError) : 1;
   const changes: { at: number; setSpeed: number }[] = [];
   const settling: Stretch[] = [];
+  const startSpeed = hold.startSpeed * toTrue;
   let speed = hold.setSpeed * toTrue;
+  const grant = (at: number, before: number, after: number, ramp: number | null): void => {
+    const seconds = Math.abs(after - before) / (ramp ?? GRANTED_RATE) + GRANTED_SETTLING;
+    settling.push({ from: at, to: at + seconds * Math.max(before, after) });
+  };
+  if (startSpeed !== speed) grant(0, startSpeed, speed, null);
   let place = 0;
   let time = 0;
   for (const change of hold.changes) {
@@ -42,8 +53,7 @@ export function setSpeedAlong(road: Road, hold: HoldPlan, scaleError: number): S
     time += speed > 0 ? (at - place) / speed : 0;
     place = at;
     changes.push({ at, setSpeed: next });
-    const seconds = Math.abs(next - speed) / (change.ramp ?? GRANTED_RATE) + GRANTED_SETTLING;
-    settling.push({ from: at, to: at + seconds * Math.max(next, speed) });
+    grant(at, speed, next, change.ramp);
     speed = next;
   }
   const setSpeed = new Float64Array(road.size);
@@ -52,7 +62,7 @@ export function setSpeedAlong(road: Road, hold: HoldPlan, scaleError: number): S
     while (k + 1 < changes.length && changes[k + 1].at <= road.distance[i]) k++;
     setSpeed[i] = k < 0 ? hold.setSpeed * toTrue : changes[k].setSpeed;
   }
-  return { setSpeed, changes, settling };
+  return { setSpeed, startSpeed, changes, settling };
 }
 
 /** Nominal distance of a time on a road along time. */

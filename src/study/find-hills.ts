@@ -1,0 +1,38 @@
+import type { Road } from '../road/road.ts';
+import { RECOVERED_BAND } from './figure-table.ts';
+import type { Demand, Hill, Replayed } from './findings.ts';
+import { hillFacts } from './hill-facts.ts';
+import { hillOutcome } from './hill-outcome.ts';
+import { hillStretches } from './hill-stretches.ts';
+
+export interface HillSearch {
+  readonly road: Road;
+  readonly demand: Demand;
+  /** Candidates after their runs over this road. */
+  readonly replayed: readonly Replayed[];
+  /** Half-width of the band that a hill defeats [m/s]. */
+  readonly band: number;
+  /** Half-width within which a run has recovered [m/s]; 1 km/h by default. */
+  readonly recoveryBand?: number;
+}
+
+/**
+ * Finds the hills of a road and what each candidate did on each. Hills are the road's and shared: every stretch where
+ * the demand leaves the range, or a candidate that regulates leaves its band or sits on a limit. A locked throttle is
+ * told what it did on them, but makes none: it would make one of the whole road.
+ *
+ * Everything about a candidate on a hill is found by replay over a window, from a checkpoint of its run or from a
+ * settled start before the hill, so that its cost depends on the hills and not on the length of the road.
+ *
+ * @returns hills in order along the way, empty where everything holds
+ */
+export function findHills(search: HillSearch): Hill[] {
+  const { road, demand, replayed, band, recoveryBand = RECOVERED_BAND } = search;
+  return hillStretches(road, demand, replayed, band).map((stretch, k) => {
+    const facts = hillFacts(road, demand, stretch, k + 1);
+    return {
+      ...facts,
+      outcomes: replayed.map((candidate) => hillOutcome(candidate, facts, { demand, band, recoveryBand })),
+    };
+  });
+}

@@ -1,0 +1,183 @@
+import type { LoopPlan } from '../loop/plan.ts';
+import { derateFactor } from '../vehicle/derating.ts';
+import { forceRange } from '../vehicle/drive-law.ts';
+import { requiredForce } from '../vehicle/resistance.ts';
+import { demandShare } from './demand.ts';
+import type { Cause, None } from './findings.ts';
+import type { HillFacts } from './hill-facts.ts';
+import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
+import { has, type Limitation, without } from './limitations.ts';
+import { surroundingsBetween } from './quasi-steady.ts';
+import { setSpeedAlong } from './set-speed-along.ts';
+import { inKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
+
+/** What the candidate did on the hill, from its own run. */
+export interface HillEvents {
+  readonly leftBand: boolean;
+  /** Least and greatest error there [m/s]. */
+  readonly low: number;
+  readonly high: number;
+  /** Time at the limits there [s]. */
+  readonly timeUpper: number;
+  readonly timeLower: number;
+  readonly timeRate: number;
+}
+
+export interface CauseFinding {
+  readonly cause: Cause | None;
+  readonly why: string;
+}
+
+/**
+ * Why a candidate left its band or sat on a limit on a hill: by replays over the hill's window that take one
+ * limitation away at a time, gains untouched.
+ *
+ * 1. A limit was met but the band was kept: the demand alone decides (step 4); if it is in range too, `gains`.
+ * 2. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no throttle range, each
+ *    only where it was met. The first without which the band is kept is the cause.
+ * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it;
+ *    else `gains`.
+ * 4. The throttle range is named by the demand: it would be in range at sea level: `derating`; in still air: `wind`;
+ *    else, upwards, `power` where the power limit is below the peak force at the place of greatest demand, or
+ *    `torque`; downwards `closed_throttle`. A demand in range throughout: `gains`, the controller went there itself.
+ *
+ * @returns the cause and one sentence
+ */
+export function causeOnHill(
+  plan: LoopPlan,
+  hill: HillFacts,
+  window: HillWindow,
+  events: HillEvents,
+  band: number,
+): CauseFinding {
+  if (plan.controller.kind === 'locked') return lockedCause(hill);
+  const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
+  if (!events.leftBand) {
+    const range = nameRange(windowed, window, hill, events);
+    if (range !== null) return { ...range, why: `${range.why} The band was kept.` };
+    return {
+      cause: 'gains',
+      why: `The command met its limit for ${inSeconds(events.timeUpper + events.timeLower)} although the demand stays in range; the band was kept.`,
+    };
+  }
+  const atLimit = events.timeUpper + events.timeLower > 0;
+  const candidates: Limitation[] = [];
+  if (atLimit) candidates.push('windup');
+  if (events.timeRate > 0) candidates.push('rate');
+  if (atLimit) candidates.push('range');
+  const base = excessOf(passHill(windowed, window), band);
+  let best: { limitation: Limitation; excess: number; passage: HillPassage } | null = null;
+  for (const limitation of candidates) {
+    if (!has(windowed, limitation)) continue;
+    const passage = passHill(without(windowed, limitation), window);
+    const excess = excessOf(passage, band);
+    if (best === null || excess < best.excess) best = { limitation, excess, passage };
+    if (excess === 0) break;
+  }
+  const explains = best !== null && base > 0 && (best.excess === 0 || best.excess <= base / 2);
+  if (best !== null && explains) {
+    const found = explain(best.limitation, best.passage, windowed, window, hill, events);
+    if (found !== null) return found;
+  }
+  return gainsCause(hill, events, atLimit);
+}
+
+function explain(
+  limitation: Limitation,
+  passage: HillPassage,
+  windowed: LoopPlan,
+  window: HillWindow,
+  hill: HillFacts,
+  events: HillEvents,
+): CauseFinding | null {
+  if (limitation === 'range') return nameRange(windowed, window, hill, events);
+  const left = `from ${inKmh(events.low)} to ${inKmh(events.high)} of error`;
+  const kept = `${inKmh(passage.low)} to ${inKmh(passage.high)}`;
+  if (limitation === 'windup')
+    return {
+      cause: 'windup',
+      why: `The integral went on growing at the limit and had to be paid back after it (${left}); with an integrator that follows the limit it is ${kept}.`,
+    };
+  return {
+    cause: 'rate',
+    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${left}); without that limit it is ${kept}.`,
+  };
+}
+
+function lockedCause(hill: HillFacts): CauseFinding {
+  return {
+    cause: { none: 'a locked throttle does not regulate' },
+    why: `The throttle is locked; the steepest demand here is ${inPct(hill.share)} of the range.`,
+  };
+}
+
+function gainsCause(hill: HillFacts, events: HillEvents, atLimit: boolean): CauseFinding {
+  const worst = -events.low > events.high ? events.low : events.high;
+  const limit = atLimit ? 'taking the limits away does not keep it in the band' : 'it never met a limit';
+  return {
+    cause: 'gains',
+    why: `The demand is up to ${inPct(hill.share)} of the range and ${limit}: the gains let the error grow to ${inKmh(worst)}.`,
+  };
+}
+
+/** Names what limits the range by the demand over the hill; null where the demand is in range throughout. */
+function nameRange(
+  windowed: LoopPlan,
+  window: HillWindow,
+  hill: HillFacts,
+  events: HillEvents,
+): CauseFinding | null {
+  const from = hill.from - window.start;
+  const to = hill.until - window.start;
+  const up = events.timeUpper >= events.timeLower;
+  const here = extremeDemand(windowed, from, to, up);
+  if (here.share <= 1) return null;
+  const asked = `At ${inKm(window.start + here.at)} the set speed needs ${inNewton(here.required)} and ${up ? 'full throttle gives' : 'the least throttle gives'} ${inNewton(here.available)}`;
+  if (has(windowed, 'derating')) {
+    const there = extremeDemand(without(windowed, 'derating'), from, to, up);
+    if (there.share <= 1)
+      return {
+        cause: 'derating',
+        why: `${asked}; at sea level it would have ${inNewton(there.available)}, which is enough.`,
+      };
+  }
+  if (has(windowed, 'wind')) {
+    const there = extremeDemand(without(windowed, 'wind'), from, to, up);
+    if (there.share <= 1)
+      return { cause: 'wind', why: `${asked}; in still air it would need ${inNewton(there.required)}.` };
+  }
+  if (!up) return { cause: 'closed_throttle', why: `${asked}: it cannot hold back enough.` };
+  const { peakForce, peakPower } = windowed.vehicle.drive;
+  if (peakPower !== null && peakPower < peakForce * here.speed)
+    return { cause: 'power', why: `${asked}: the power limit of ${inKw(peakPower)} binds.` };
+  return { cause: 'torque', why: `${asked}: the greatest force binds.` };
+}
+
+/** Greatest demand upwards (or downwards, as a positive share) between two places of a windowed plan. */
+function extremeDemand(
+  plan: LoopPlan,
+  from: number,
+  to: number,
+  up: boolean,
+): { share: number; at: number; required: number; available: number; speed: number } {
+  const { road, vehicle } = plan;
+  const { setSpeed } = setSpeedAlong(road, plan.hold, vehicle.sensor.scaleError);
+  let found = { share: Number.NEGATIVE_INFINITY, at: from, required: 0, available: 0, speed: 0 };
+  for (let i = 0; i < road.size; i++) {
+    if (road.distance[i] < from || road.distance[i] > to) continue;
+    const at = surroundingsBetween(road, i, 0);
+    const speed = setSpeed[i];
+    const { least, greatest } = forceRange(
+      vehicle.drive,
+      vehicle.drive.gear,
+      speed,
+      derateFactor(vehicle.drive, at.airDensity, at.airTemperature),
+    );
+    const required = requiredForce(vehicle, speed, at);
+    const signed = demandShare(required, least, greatest);
+    const share = up ? signed : -signed;
+    if (share > found.share)
+      found = { share, at: road.distance[i], required, available: up ? greatest : least, speed };
+  }
+  return found;
+}

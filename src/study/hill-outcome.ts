@@ -1,0 +1,209 @@
+import { nearestCheckpoint, replay } from '../loop/replay.ts';
+import type { FullSeries, LoopResult } from '../loop/result.ts';
+import { fromKmh } from '../units/convert.ts';
+import { knotBefore, valueAt } from './along-road.ts';
+import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
+import { causeOnHill, type HillEvents } from './hill-cause.ts';
+import type { HillFacts } from './hill-facts.ts';
+import { marksBin } from './hill-stretches.ts';
+import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
+import { quasiSteadySpeeds } from './quasi-steady.ts';
+import { leversHelp, remediesFor } from './remedies.ts';
+import { passageOf, recoveryOf, sampleAt, thinSeries } from './series-measures.ts';
+
+/** Shown before the hill [s at the set speed] and after the recovery [s]; rows of a picture. */
+const LEAD = 10;
+const TAIL = 5;
+const PICTURE_ROWS = 400;
+/** A recovery is looked for this long behind the hill, first near by [s at the set speed]. */
+const NEAR = 25;
+const FAR = 120;
+/** Simulated and predicted loss may differ by this share, or by half a km/h. */
+const AGREES = 0.15;
+const AGREES_ABSOLUTE = fromKmh(0.5);
+
+export interface OutcomeContext {
+  readonly demand: Demand;
+  readonly band: number;
+  readonly recoveryBand: number;
+}
+
+/**
+ * What one candidate did on one hill: a replay from the nearest checkpoint with every sample for the figures and the
+ * picture, the hand formula from the speed at which it came in, the cause by replays with one limitation less, and
+ * what would hold.
+ */
+export function hillOutcome(replayed: Replayed, hill: HillFacts, context: OutcomeContext): HillOutcome {
+  const { name, result } = replayed;
+  if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
+  const { demand, band } = context;
+  const events = eventsOn(result, hill, demand, band);
+  const { series, whole, shownFrom } = seriesOver(replayed, hill, context);
+  const first = sampleAt(series, hill.from);
+  const last = Math.max(first + 1, sampleAt(series, hill.until));
+  const recovery = events.marked
+    ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
+    : { time: 0, over: last };
+  const over = Math.max(last, recovery.over);
+  const passage = passageOf(series, first, over);
+  const predictedChange = predict(replayed, hill, demand, series, first);
+  const reasons = events.marked
+    ? explainOutcome(replayed, hill, context, events)
+    : { cause: { none: 'it kept its band and met no limit' }, why: 'It kept its band.', wouldHold: [] };
+  return {
+    candidate: name,
+    affected: events.marked,
+    speedChange: passage.extreme,
+    predictedChange,
+    predictionDiffers: differs(passage.extreme, predictedChange),
+    timeLost: passage.timeLost,
+    timeAtLimit: passage.timeAtLimit,
+    recovery: recovery.time,
+    ...reasons,
+    picture: thinSeries(series, shownFrom, pictureEnd(series, over), PICTURE_ROWS),
+  };
+}
+
+function pictureEnd(series: FullSeries, over: number): number {
+  const until = series.time[Math.min(over, series.size - 1)] + TAIL;
+  let end = Math.min(over, series.size);
+  while (end < series.size && series.time[end] < until) end++;
+  return end;
+}
+
+/** The candidate's own record on the hill. */
+function eventsOn(
+  { bins }: LoopResult,
+  hill: HillFacts,
+  demand: Demand,
+  band: number,
+): HillEvents & { readonly marked: boolean } {
+  const events = { marked: false, leftBand: false, low: 0, high: 0, timeUpper: 0, timeLower: 0, timeRate: 0 };
+  const width = bins.edge[1] - bins.edge[0];
+  for (let i = Math.floor(hill.from / width); i < bins.size && bins.edge[i] < hill.until; i++) {
+    events.timeUpper += bins.timeUpper[i];
+    events.timeLower += bins.timeLower[i];
+    events.timeRate += bins.timeRate[i];
+    if (!marksBin(bins, i, band, demand.settling)) continue;
+    events.marked = true;
+    events.low = Math.min(events.low, bins.errorMin[i]);
+    events.high = Math.max(events.high, bins.errorMax[i]);
+    if (bins.errorMax[i] > band || -bins.errorMin[i] > band) events.leftBand = true;
+  }
+  return events;
+}
+
+/** Every sample from a little before the hill until it is recovered from; `whole`: as far as a recovery is waited for. */
+export function seriesOver(
+  { plan, result }: Replayed,
+  hill: HillFacts,
+  { demand, band, recoveryBand }: OutcomeContext,
+): { series: FullSeries; whole: boolean; shownFrom: number } {
+  const { road } = plan;
+  const setSpeed = demand.setSpeed[knotBefore(road, hill.to)];
+  const from = Math.max(0, hill.from - LEAD * setSpeed);
+  const start = nearestCheckpoint(result, from);
+  const over = (behind: number) => {
+    const to = hill.until + behind * setSpeed;
+    const { series } = replay(plan, start, Math.min(to, result.endDistance));
+    return { series, whole: to < result.endDistance, shownFrom: sampleAt(series, from) };
+  };
+  const near = over(NEAR);
+  const first = sampleAt(near.series, hill.from);
+  const last = sampleAt(near.series, hill.until);
+  const { time } = recoveryOf(near.series, first, last, band, recoveryBand, near.whole);
+  return typeof time === 'number' || !near.whole ? near : over(FAR);
+}
+
+function predict(
+  { plan }: Replayed,
+  hill: HillFacts,
+  demand: Demand,
+  series: FullSeries,
+  first: number,
+): Figure {
+  const { road, vehicle, rider } = plan;
+  const locked = plan.controller.kind === 'locked';
+  const a = knotBefore(road, hill.from);
+  const b = Math.min(knotBefore(road, hill.until) + 1, road.size - 1);
+  let out = locked;
+  for (let i = a; i <= b && !out; i++) out = Math.abs(demand.share[i]) > 1;
+  if (!out) return { none: 'the demand stays in range: an ideal hold loses nothing here' };
+  const entry = Math.min(first, series.size - 1);
+  const speeds = quasiSteadySpeeds(
+    {
+      road,
+      vehicle,
+      setSpeed: demand.setSpeed,
+      brakesAbove: rider.brakesAbove,
+      throttle: locked ? series.actuator[entry] : null,
+    },
+    a,
+    b,
+    series.speed[entry],
+  );
+  let extreme = 0;
+  for (let i = 0; i < speeds.length; i++) {
+    const change = speeds[i] - demand.setSpeed[a + i];
+    if (Math.abs(change) > Math.abs(extreme)) extreme = change;
+  }
+  return extreme;
+}
+
+function differs(simulated: number, predicted: Figure): boolean {
+  if (typeof predicted !== 'number') return false;
+  const gap = Math.abs(simulated - predicted);
+  return gap > AGREES_ABSOLUTE && gap > AGREES * Math.abs(simulated);
+}
+
+function explainOutcome(
+  { plan }: Replayed,
+  hill: HillFacts,
+  { demand, band }: OutcomeContext,
+  events: HillEvents,
+): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
+  const { road } = plan;
+  const near = hillWindow(hill, road, demand);
+  if (!events.leftBand || plan.controller.kind === 'locked')
+    return { ...causeOnHill(plan, hill, near, events, band), wouldHold: [] };
+  const window = windowThatShows(plan, near, band);
+  if (window === null)
+    return {
+      cause: { none: 'started settled before the hill it holds' },
+      why: 'Started settled a kilometre and more before the hill, it holds: what came before the hill is to blame.',
+      wouldHold: [],
+    };
+  const { cause, why } = causeOnHill(plan, hill, window, events, band);
+  if (typeof cause !== 'string' || !leversHelp(cause)) return { cause, why, wouldHold: [] };
+  const brakePower = valueAt(road, demand.brakePower, hill.shareAt);
+  return { cause, why, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
+}
+
+/** The window, or a longer one with what came before the hill, in which the candidate leaves its band as it did in its run. */
+function windowThatShows(plan: Replayed['plan'], near: HillWindow, band: number): HillWindow | null {
+  for (const more of [0, 2000, 4000]) {
+    const window = { ...near, start: Math.max(0, near.start - more) };
+    if (excessOf(passHill(planOverWindow(plan, window), window), band) > 0) return window;
+    if (window.start === 0) return null;
+  }
+  return null;
+}
+
+function neverReached(candidate: string, { plan, result }: Replayed, hill: HillFacts): HillOutcome {
+  const { series } = replay(plan, result.checkpoints[0], 0);
+  const none = `the run ended ${Math.round(hill.from - result.endDistance)} m before this hill`;
+  return {
+    candidate,
+    affected: false,
+    speedChange: 0,
+    predictedChange: { none },
+    predictionDiffers: false,
+    timeLost: 0,
+    timeAtLimit: 0,
+    recovery: { none },
+    cause: { none },
+    why: `It did not get here: ${none}.`,
+    wouldHold: [],
+    picture: thinSeries(series, 0, 0, 1),
+  };
+}

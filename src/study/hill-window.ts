@@ -1,0 +1,69 @@
+import type { LoopPlan, RunStatus } from '../loop/plan.ts';
+import { runLoop } from '../loop/run-loop.ts';
+import type { Road } from '../road/road.ts';
+import { knotBefore } from './along-road.ts';
+import type { Demand, Hill, Stretch } from './findings.ts';
+import { windowPlan } from './road-window.ts';
+
+/** A settled start lies this far before the hill, where the road has it [m]. */
+const NEAREST_START = 1000;
+const FARTHEST_START = 1500;
+
+/** A hill cut out of the road, for replays that start settled before it. Horizontal distances of the whole road [m]. */
+export interface HillWindow {
+  readonly start: number;
+  readonly from: number;
+  readonly until: number;
+  /** Where a change of set speed is being followed: not judged. */
+  readonly settling: readonly Stretch[];
+}
+
+/** What a run did between a hill's beginning and the end of what it is answerable for. */
+export interface HillPassage {
+  readonly status: RunStatus;
+  /** Least and greatest error, 0 where it never was on that side [m/s]. */
+  readonly low: number;
+  readonly high: number;
+}
+
+/** Window of a hill: its start is where the demand is least between 1 and 1.5 km before the hill, or the road's start. */
+export function hillWindow(hill: Pick<Hill, 'from' | 'until'>, road: Road, demand: Demand): HillWindow {
+  const least = Math.max(0, hill.from - FARTHEST_START);
+  const most = Math.max(0, hill.from - NEAREST_START);
+  let start = least;
+  let share = Number.POSITIVE_INFINITY;
+  for (let i = knotBefore(road, least); i < road.size && road.distance[i] <= most; i++) {
+    if (road.distance[i] < least || !(Math.abs(demand.share[i]) < share)) continue;
+    share = Math.abs(demand.share[i]);
+    start = road.distance[i];
+  }
+  return { start, from: hill.from, until: hill.until, settling: demand.settling };
+}
+
+/** The candidate's plan over the window, started settled. Limitations and levers are applied to this. */
+export const planOverWindow = (plan: LoopPlan, window: HillWindow): LoopPlan =>
+  windowPlan(plan, window.start, window.until);
+
+/** Replays a window's plan and looks at the hill in it, bins of which any part lies on the hill counted whole. */
+export function passHill(windowed: LoopPlan, window: HillWindow): HillPassage {
+  const { status, bins } = runLoop(windowed);
+  let low = 0;
+  let high = 0;
+  for (let i = 0; i < bins.size; i++) {
+    const from = window.start + bins.edge[i];
+    const to = window.start + bins.edge[i + 1];
+    if (to <= window.from || window.settling.some((s) => from < s.to && to > s.from)) continue;
+    low = Math.min(low, bins.errorMin[i]);
+    high = Math.max(high, bins.errorMax[i]);
+  }
+  return { status, low, high };
+}
+
+/** How far outside of the band a passage was [m/s]; infinite for a run that ended on the way. */
+export function excessOf(passage: HillPassage, band: number): number {
+  if (passage.status !== 'completed') return Number.POSITIVE_INFINITY;
+  return Math.max(0, passage.high - band, -passage.low - band);
+}
+
+/** The run got over the hill and stayed inside the band. */
+export const holds = (passage: HillPassage, band: number): boolean => excessOf(passage, band) === 0;

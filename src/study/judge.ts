@@ -1,0 +1,141 @@
+import { InputError } from '../problems/input-error.ts';
+import { candidatesOf, type FigureSpread, figureSpread } from './figure-spread.ts';
+import { FIGURES, type FigureRow, figureRow } from './figure-table.ts';
+import type { Figure, Replayed, Requirement, RequirementFinding, Where } from './findings.ts';
+import { type FigureContext, measureFigure } from './measure-figure.ts';
+import { NOT_RECOVERED } from './series-measures.ts';
+import { inKm, withUnit } from './wording.ts';
+
+/** A limit within this many standard deviations of the measured figure cannot be told apart from it. */
+const TOO_CLOSE = 2;
+
+/**
+ * Judges each requirement for each candidate that it speaks of: the measured figure, its margin to the limit, where it
+ * was worst, and `met`, `not met`, or `too close to call` when the limit lies within two standard deviations (from the
+ * grade's uncertainty) of the figure.
+ *
+ * A run that did not get to the end of what the requirement is about does not meet it. A figure that does not exist is
+ * `too close to call` with its reason, except a recovery that never came, which is `not met`.
+ *
+ * @param requirements as written; where both limits are given both count, and the nearer one makes the margin
+ * @param replayed all candidates after their runs
+ * @param context road, demand and hills of the same runs
+ * @param spread of the figures; made here, with its defaults, where it is left out
+ * @throws InputError `unknown-figure`
+ */
+export function judge(
+  requirements: readonly Requirement[],
+  replayed: readonly Replayed[],
+  context: FigureContext,
+  spread: FigureSpread = figureSpread(requirements, replayed, context),
+): RequirementFinding[] {
+  return requirements.flatMap((requirement) => {
+    const row = figureRow(requirement.figure);
+    if (row === undefined) throw unknownFigure(requirement);
+    return candidatesOf(requirement, replayed).map((candidate) => {
+      const sd =
+        spread.rows.find((r) => r.requirement === requirement.id && r.candidate === candidate.name)?.sd ?? 0;
+      return judgeOne(requirement, row, candidate, context, sd);
+    });
+  });
+}
+
+function judgeOne(
+  requirement: Requirement,
+  row: FigureRow,
+  candidate: Replayed,
+  context: FigureContext,
+  spread: number,
+): RequirementFinding {
+  const measure = measureFigure(row, candidate, context, requirement.where, requirement.band);
+  const measured = measure.value;
+  const margin = marginOf(requirement, measured);
+  const ended = endedEarly(candidate, requirement.where);
+  const verdict = verdictOf(measured, margin, spread, ended);
+  return {
+    requirement,
+    candidate: candidate.name,
+    measured,
+    margin,
+    spread,
+    worstAt: measure.at,
+    verdict,
+    words: wordsOf(requirement, row, candidate, { measured, margin, spread, at: measure.at, ended }, verdict),
+  };
+}
+
+function marginOf({ atLeast, atMost }: Requirement, measured: Figure): Figure {
+  if (typeof measured !== 'number') return measured;
+  const low = atLeast === null ? Number.POSITIVE_INFINITY : measured - atLeast;
+  const high = atMost === null ? Number.POSITIVE_INFINITY : atMost - measured;
+  const margin = Math.min(low, high);
+  return Number.isFinite(margin) ? margin : { none: 'the requirement has no limit' };
+}
+
+/** The run ended before the end of the stretch that is asked about. */
+function endedEarly({ plan, result }: Replayed, where: Where): boolean {
+  if (result.status === 'completed') return false;
+  const { road } = plan;
+  const end = typeof where === 'string' ? road.distance[road.size - 1] : where.to;
+  return result.endDistance < end;
+}
+
+function verdictOf(
+  measured: Figure,
+  margin: Figure,
+  spread: number,
+  ended: boolean,
+): RequirementFinding['verdict'] {
+  if (ended) return 'not met';
+  if (typeof measured !== 'number') return measured.none === NOT_RECOVERED ? 'not met' : 'too close to call';
+  if (typeof margin !== 'number') return 'too close to call';
+  // A figure that came out right on its limit, to rounding, is met; with a spread that is too close.
+  if (spread > 0 && Math.abs(margin) <= TOO_CLOSE * spread) return 'too close to call';
+  return margin >= 0 ? 'met' : 'not met';
+}
+
+interface Numbers {
+  readonly measured: Figure;
+  readonly margin: Figure;
+  readonly spread: number;
+  readonly at: number | null;
+  readonly ended: boolean;
+}
+
+function wordsOf(
+  requirement: Requirement,
+  row: FigureRow,
+  { name, result }: Replayed,
+  { measured, margin, spread, at, ended }: Numbers,
+  verdict: RequirementFinding['verdict'],
+): string {
+  const subject = `${name}: ${row.label.toLowerCase()}`;
+  if (ended)
+    return `${subject}: ${verdict}, the run ended at ${inKm(result.endDistance)} (${result.status}).`;
+  if (typeof measured !== 'number') return `${subject}: ${verdict}, ${measured.none}.`;
+  const place = at === null ? '' : `, worst at ${inKm(at)}`;
+  const around = spread > 0 ? ` (s.d. ${withUnit(spread, row.unit)})` : '';
+  const side =
+    typeof margin !== 'number'
+      ? ''
+      : `, ${withUnit(Math.abs(margin), row.unit)} ${margin >= 0 ? 'to spare' : 'short'}`;
+  return `${subject} ${withUnit(measured, row.unit)}${around} against ${limitWords(requirement, row)}: ${verdict}${side}${place}.`;
+}
+
+function limitWords({ atLeast, atMost }: Requirement, row: FigureRow): string {
+  const limits = [
+    atLeast === null ? '' : `at least ${withUnit(atLeast, row.unit)}`,
+    atMost === null ? '' : `at most ${withUnit(atMost, row.unit)}`,
+  ];
+  return limits.filter((limit) => limit !== '').join(' and ');
+}
+
+function unknownFigure({ id, figure }: Requirement): InputError {
+  return new InputError({
+    code: 'unknown-figure',
+    place: { key: `requirements.${id}.figure` },
+    message: 'the table has no such figure',
+    found: figure,
+    allowed: FIGURES.map((row) => row.name).join(', '),
+  });
+}

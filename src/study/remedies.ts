@@ -1,0 +1,145 @@
+import type { LoopPlan } from '../loop/plan.ts';
+import { fromKmh, toKmh } from '../units/convert.ts';
+import { forceRange } from '../vehicle/drive-law.ts';
+import type { Cause, Remedy } from './findings.ts';
+import type { HillFacts } from './hill-facts.ts';
+import { type HillWindow, holds, passHill, planOverWindow } from './hill-window.ts';
+import { withMoreForce, withPayload, withSetSpeed } from './levers.ts';
+import { inKg, inKmh, inKw, inPct } from './wording.ts';
+
+/** Steps of the levers, and how far they go: 1 km/h down to 10 km/h; 5 % of the force up to three times; 5 kg. */
+const SPEED_STEP = fromKmh(1);
+const LEAST_SPEED = 10;
+const FORCE_STEP = 0.05;
+const FORCE_STEPS = 40;
+const LOAD_STEP = 5;
+
+/** Causes that a lever of vehicle or rider can do something about; the others want other gains. */
+const LEVERED: readonly Cause[] = [
+  'torque',
+  'power',
+  'derating',
+  'wind',
+  'gear',
+  'traction',
+  'closed_throttle',
+];
+
+export const leversHelp = (cause: Cause): boolean => LEVERED.includes(cause);
+
+/**
+ * What would hold on a hill: a lower set speed, more force, less load, each alone, gains fixed, found by replays over
+ * the hill's window that start settled. "Holds": the run gets over and stays in the band.
+ *
+ * The number of steps is bracketed by doubling and then bisected under the fast scheme, and both neighbours are
+ * replayed by the plan's own scheme; where that disagrees, the search is made again under it. So the value that is
+ * said to hold holds, and the step before it does not.
+ *
+ * @returns one remedy a lever; `{none}` where the lever cannot help
+ */
+export function remediesFor(
+  plan: LoopPlan,
+  hill: HillFacts,
+  window: HillWindow,
+  band: number,
+  cause: Cause,
+  brakePower: number,
+): Remedy[] {
+  const windowed = planOverWindow(plan, window);
+  const steps = (change: (n: number) => LoopPlan, most: number): number | null =>
+    fewestSteps((n, scheme) => holds(passHill({ ...change(n), scheme }, window), band), most, plan.scheme);
+  const load = loadRemedy(windowed, steps);
+  if (cause === 'closed_throttle')
+    return [
+      {
+        lever: 'set_speed',
+        holds: { none: 'closed throttle holds back no more at a lower speed' },
+        fails: { none: 'closed throttle holds back no more at a lower speed' },
+        words: `No lower set speed holds: the rider must brake (${inKw(brakePower)} holds the set speed at the worst place).`,
+      },
+      load,
+    ];
+  return [speedRemedy(windowed, hill, steps), forceRemedy(windowed, steps), load];
+}
+
+type Search = (change: (n: number) => LoopPlan, most: number) => number | null;
+
+function speedRemedy(windowed: LoopPlan, hill: HillFacts, search: Search): Remedy {
+  const highest = [windowed.hold.setSpeed, ...windowed.hold.changes.map((change) => change.setSpeed)];
+  const top = Math.ceil(toKmh(highest.reduce((a, b) => Math.max(a, b))) - 1e-9);
+  const speedAt = (n: number): number => SPEED_STEP * (top - n);
+  const n = search((k) => withSetSpeed(windowed, speedAt(k)), Math.max(0, top - LEAST_SPEED));
+  if (n === null) return noRemedy('set_speed', `No set speed down to ${LEAST_SPEED} km/h holds.`);
+  const sustained = hill.share > 1 ? ` (full throttle sustains ${inKmh(hill.sustainedSpeed)})` : '';
+  return {
+    lever: 'set_speed',
+    holds: speedAt(n),
+    fails: speedAt(n - 1),
+    words: `Holds at ${inKmh(speedAt(n), 0)}; at ${inKmh(speedAt(n - 1), 0)} it does not${sustained}.`,
+  };
+}
+
+function forceRemedy(windowed: LoopPlan, search: Search): Remedy {
+  const speed = windowed.hold.setSpeed;
+  const powerAt = (n: number): number => {
+    const { drive } = withMoreForce(windowed, n * FORCE_STEP).vehicle;
+    return forceRange(drive, drive.gear, speed, 1).greatest * speed;
+  };
+  const n = search((k) => withMoreForce(windowed, k * FORCE_STEP), FORCE_STEPS);
+  if (n === null) return noRemedy('power', 'Three times the force does not hold either.');
+  return {
+    lever: 'power',
+    holds: powerAt(n),
+    fails: powerAt(n - 1),
+    words: `Holds with ${inPct(n * FORCE_STEP)} more force, ${inKw(powerAt(n))} at the wheel at ${inKmh(speed, 0)} at sea level; with ${inPct((n - 1) * FORCE_STEP)} more it does not.`,
+  };
+}
+
+function loadRemedy(windowed: LoopPlan, search: Search): Remedy {
+  const { payload } = windowed.vehicle;
+  if (payload <= 0) return noRemedy('load', 'There is no payload to take off.');
+  const top = Math.ceil(payload / LOAD_STEP - 1e-9);
+  const loadAt = (n: number): number => (n === 0 ? payload : LOAD_STEP * (top - n));
+  const n = search((k) => withPayload(windowed, loadAt(k)), top);
+  if (n === null) return noRemedy('load', `Taking off all ${inKg(payload)} of payload does not hold either.`);
+  return {
+    lever: 'load',
+    holds: loadAt(n),
+    fails: loadAt(n - 1),
+    words: `Holds with ${inKg(loadAt(n))} of payload; with ${inKg(loadAt(n - 1))} it does not.`,
+  };
+}
+
+const noRemedy = (lever: Remedy['lever'], words: string): Remedy => ({
+  lever,
+  holds: { none: words },
+  fails: { none: words },
+  words,
+});
+
+type Trial = (n: number, scheme: LoopPlan['scheme']) => boolean;
+
+/** Fewest steps that hold, with the step before failing; null where none up to `most` was found. */
+function fewestSteps(trial: Trial, most: number, scheme: LoopPlan['scheme']): number | null {
+  const guess = bracketAndBisect((n) => trial(n, 'fast'), most);
+  if (scheme === 'fast' || guess === null) return guess;
+  const confirmed = trial(guess, scheme) && (guess === 1 || !trial(guess - 1, scheme));
+  return confirmed ? guess : bracketAndBisect((n) => trial(n, scheme), most);
+}
+
+/** Doubles from 1 until a step holds, then bisects; 0 steps are known to fail. */
+function bracketAndBisect(trial: (n: number) => boolean, most: number): number | null {
+  let fails = 0;
+  let works = 0;
+  for (let n = 1; works === 0 && fails < most; n = Math.min(2 * n, most)) {
+    if (trial(n)) works = n;
+    else fails = n;
+  }
+  if (works === 0) return null;
+  while (works - fails > 1) {
+    const middle = (works + fails) >> 1;
+    if (trial(middle)) works = middle;
+    else fails = middle;
+  }
+  return works;
+}

@@ -1,0 +1,82 @@
+import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
+import type { Road } from '../road/road.ts';
+import { knotBefore } from './along-road.ts';
+import { setSpeedAlong } from './set-speed-along.ts';
+
+/**
+ * Part of a road as a road of its own: distances and stations start at 0 again, ends are interpolated.
+ *
+ * @param from horizontal distance [m]; on a step of the road the side behind it counts
+ * @param to horizontal distance [m], > from
+ */
+export function cutRoad(road: Road, from: number, to: number): Road {
+  const first = knotBefore(road, from);
+  const start = Math.max(from, road.distance[0]);
+  const end = Math.min(to, road.distance[road.size - 1]);
+  let last = first + 1;
+  while (last + 1 < road.size && road.distance[last] < end) last++;
+  const size = last - first + 1;
+  const cutAt = (i: number, place: number): number => {
+    const width = road.distance[i + 1] - road.distance[i];
+    return width > 0 ? (place - road.distance[i]) / width : 0;
+  };
+  const startShare = cutAt(first, start);
+  const endShare = cutAt(last - 1, end);
+  const cut = (column: Float64Array): Float64Array => {
+    const part = column.slice(first, last + 1);
+    part[0] = column[first] + startShare * (column[first + 1] - column[first]);
+    part[size - 1] = column[last - 1] + endShare * (column[last] - column[last - 1]);
+    return part;
+  };
+  const fromZero = (column: Float64Array): Float64Array => {
+    const part = cut(column);
+    const zero = part[0];
+    return part.map((x) => x - zero);
+  };
+  const maybe = (column: Float64Array | null): Float64Array | null => (column === null ? null : cut(column));
+  return {
+    ...road,
+    size,
+    station: fromZero(road.station),
+    distance: fromZero(road.distance),
+    elevation: cut(road.elevation),
+    rawElevation: maybe(road.rawElevation),
+    grade: cut(road.grade),
+    gradeSd: cut(road.gradeSd),
+    heading: road.heading === null ? null : road.heading.slice(first, last + 1),
+    curvature: maybe(road.curvature),
+    headwind: cut(road.headwind),
+    crosswind: cut(road.crosswind),
+    airDensity: cut(road.airDensity),
+    airTemperature: cut(road.airTemperature),
+    latitudeDeg: maybe(road.latitudeDeg),
+    longitudeDeg: maybe(road.longitudeDeg),
+    masks: [],
+    repairs: [],
+    warnings: [],
+    turnsAt: null,
+  };
+}
+
+/**
+ * The plan over part of its road, started settled at the set speed that holds at its beginning; changes of set speed
+ * inside come along.
+ */
+export function windowPlan(plan: LoopPlan, from: number, to: number): LoopPlan {
+  return { ...plan, road: cutRoad(plan.road, from, to), hold: windowHold(plan, from, to) };
+}
+
+function windowHold(plan: LoopPlan, from: number, to: number): HoldPlan {
+  const { hold } = plan;
+  const { changes } = setSpeedAlong(plan.road, hold, plan.vehicle.sensor.scaleError);
+  const before = changes.findLastIndex((change) => change.at <= from);
+  const setSpeed = before < 0 ? hold.setSpeed : hold.changes[before].setSpeed;
+  return {
+    ...hold,
+    setSpeed,
+    startSpeed: setSpeed,
+    changes: hold.changes
+      .map((change, k) => ({ ...change, at: { distance: changes[k].at - from } }))
+      .filter((change) => change.at.distance > 0 && change.at.distance < to - from),
+  };
+}
