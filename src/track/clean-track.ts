@@ -8,6 +8,7 @@ import { leaveOutReversals } from './leave-out-reversals.ts';
 import { leaveOutStandstill } from './leave-out-standstill.ts';
 import { legLength } from './leg-length.ts';
 import { FEWEST_POINTS, HIGHEST_ELEVATION, LOWEST_ELEVATION, SHORTEST_TRACK } from './limits.ts';
+import { pickPoints } from './pick-points.ts';
 import type { RawTrack } from './raw-track.ts';
 import { countPoints, RepairLog } from './repair-log.ts';
 import type { Track } from './track.ts';
@@ -32,13 +33,14 @@ export function cleanTrack(given: RawTrack): Track {
   kept = leaveOutReversals(raw, kept, log);
   kept = leaveOutJumps(raw, kept, leg, log);
   kept = leaveOutStandstill(raw, kept, leg, log);
+  requireLength(raw, kept.length, null);
   kept = trimUnknownEnds(raw, kept, leg, isElevation, log);
   requireLength(raw, kept.length, null);
   const distance = bridgeGaps(raw, kept, leg, log);
   requireLength(raw, kept.length, distance.at(-1)!);
 
   const pick = (values: Float64Array | null): Float64Array | null =>
-    values === null ? null : Float64Array.from(kept, (i) => values[i]!);
+    values === null ? null : pickPoints(values, kept);
   const fill = (name: string, values: Float64Array | null, usable = Number.isFinite): Float64Array | null =>
     values === null ? null : fillColumn(raw, { name, values, usable }, kept, distance, log);
   const time = pick(raw.time);

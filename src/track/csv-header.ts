@@ -1,6 +1,7 @@
 import { InputError } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
 import { CSV_COLUMNS, type CsvColumn, meantColumns } from './csv-columns.ts';
+import { parseNumber } from './parse-number.ts';
 
 /** The first line of a CSV track, understood. */
 export interface CsvHeader {
@@ -17,13 +18,21 @@ const DELIMITERS = [';', '\t', ','] as const;
  * @param line the first line that is not blank
  * @param number its number in the file
  * @param file name for messages
- * @throws InputError with line and column: `unknown-column`, `column-without-unit`, `duplicate-column`,
+ * @throws InputError with line and column: `missing-header`, `unknown-column`, `column-without-unit`, `duplicate-column`,
  *   `missing-column`
  */
 export function readCsvHeader(line: string, number: number, file: string): CsvHeader {
   const delimiter = DELIMITERS.find((mark) => line.includes(mark)) ?? ',';
   let at = 1;
   const seen = new Map<string, string>();
+  if (line.split(delimiter).every((cell) => parseNumber(cell.trim().replace(',', '.')) !== null))
+    throw new InputError({
+      code: 'missing-header',
+      place: { file, line: number },
+      message: 'the first line has only numbers; it must name the columns',
+      found: `'${line.trim().slice(0, 40)}'`,
+      allowed: ALLOWED,
+    });
   const columns = line.split(delimiter).map((cell) => {
     const name = cell.trim().replace(/^"(.*)"$/, '$1');
     const place = { file, line: number, column: at + cell.length - cell.trimStart().length };

@@ -1,4 +1,5 @@
 import { InputError } from '../problems/input-error.ts';
+import { lineOf } from './line-of.ts';
 
 /** Largest file that is read [bytes]: half a million GPX points with elevation and time are 51 MB. */
 export const LARGEST_FILE = 64 * 1024 * 1024;
@@ -59,7 +60,7 @@ export function decodeText(bytes: Uint8Array, name: string): string {
   if (zero >= 0)
     throw new InputError({
       code: 'binary-file',
-      place: { ...place, line: lineAt(text, zero) },
+      place: { ...place, ...lineOf(text, zero) },
       message: 'the file holds a zero character and is not text',
       allowed: 'plain text',
     });
@@ -102,10 +103,4 @@ function wrongLine(bytes: Uint8Array, label: string): { line?: number } {
     start = stop;
   }
   return {};
-}
-
-function lineAt(text: string, offset: number): number {
-  let line = 1;
-  for (let i = text.indexOf('\n'); i >= 0 && i < offset; i = text.indexOf('\n', i + 1)) line++;
-  return line;
 }

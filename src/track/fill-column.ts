@@ -1,5 +1,6 @@
 import { InputError } from '../problems/input-error.ts';
 import { LONGEST_FILL } from './limits.ts';
+import { pickPoints } from './pick-points.ts';
 import { placeOfPoint } from './place-of-point.ts';
 import type { RawTrack } from './raw-track.ts';
 import { countPoints, type RepairLog } from './repair-log.ts';
@@ -28,7 +29,7 @@ export function fillColumn(
   log: RepairLog,
 ): Float64Array {
   const { name, values, usable } = column;
-  const filled = Float64Array.from(kept, (i) => values[i]!);
+  const filled = pickPoints(values, kept);
   const end = kept.length - 1;
   for (let first = 0; first <= end; first++) {
     if (usable(filled[first]!)) continue;
@@ -58,7 +59,11 @@ function noteHole(
 ): void {
   const value = values[first]!;
   const absent = Number.isNaN(value);
-  const why = absent ? 'missing' : Number.isFinite(value) ? `impossible (${value})` : 'no finite number';
+  const why = absent
+    ? 'is missing'
+    : Number.isFinite(value)
+      ? `is impossible (${value})`
+      : 'is no finite number';
   const kind =
     name === 'elevation' && value !== Number.POSITIVE_INFINITY ? 'missing_elevation' : 'non_finite';
   log.add(kind, first, last, points, `${name} ${why} at ${countPoints(points)}; interpolated`);

@@ -5,7 +5,6 @@ declare module 'gpxparser' {
     readonly lat: number;
     readonly lon: number;
     readonly ele: number | null;
-    readonly time: Date | null;
   }
   export interface GpxPath {
     readonly name: string | null;

@@ -1,5 +1,5 @@
 import { toKmh } from '../units/convert.ts';
-import { CLOCK_RESOLUTION, FASTEST, JUMP_LEG, JUMP_RATIO, LONGEST_GAP } from './limits.ts';
+import { CLOCK_RESOLUTION, FASTEST, JUMP_LEG, JUMP_RATIO, LONGEST_GAP, LONGEST_JUMP } from './limits.ts';
 import type { RawTrack } from './raw-track.ts';
 import type { RepairLog } from './repair-log.ts';
 
@@ -7,10 +7,10 @@ import type { RepairLog } from './repair-log.ts';
 const AROUND = 5;
 
 /**
- * Leaves out single positions far off the line. With times: both legs of the point imply more than 70 m/s and the
- * leg past it does not. Without: both its legs are longer than 100 m and ten times the legs around, and the leg past
- * it is less than half of them, so that a sparse route or a hairpin keeps its points. A first or last point more than
- * 3 km away from a track of much shorter legs is left out too.
+ * Leaves out single positions, or up to five in a row, far off the line. With times: the legs to and from them imply
+ * more than 70 m/s and the leg past them does not. Without: both legs are longer than 100 m and ten times the legs
+ * around, and the leg past them is less than half of that, so that a sparse route or a hairpin keeps its points. A
+ * first or last point more than 3 km away from a track of much shorter legs is left out too.
  *
  * @param kept raw indices to look at
  * @param leg see legLength
@@ -22,34 +22,53 @@ export function leaveOutJumps(
   leg: (from: number, to: number) => number,
   log: RepairLog,
 ): Int32Array {
-  if (raw.distance !== null || kept.length < 4) return kept;
   const n = kept.length;
+  if (raw.distance !== null || n < 4) return kept;
   const legs = new Float64Array(n - 1);
   for (let k = 1; k < n; k++) legs[k - 1] = leg(kept[k - 1]!, kept[k]!);
   const stay: number[] = [];
+  const leaveOut = (k: number, points: number, off: number): void => {
+    const what = points === 1 ? 'a single position' : `${points} positions`;
+    const message = `${what} ${off.toFixed(0)} m off the line left out`;
+    log.add('position_jump', kept[k]!, kept[k + points - 1]!, points, message);
+  };
   for (let k = 0; k < n; k++) {
-    const i = kept[k]!;
-    const off = k === 0 || k === n - 1 ? endIsOff(legs, k) : isOff(k);
-    if (off === null) {
-      stay.push(i);
+    if ((k === 0 && endIsOff(legs, 0)) || (k === n - 1 && endIsOff(legs, n - 2))) {
+      leaveOut(k, 1, legs[Math.min(k, n - 2)]!);
       continue;
     }
-    log.add('position_jump', i, i, 1, `a single position ${off.toFixed(0)} m off the line left out`);
+    const points = k === 0 ? 0 : pointsOff(raw, kept, legs, leg, k);
+    if (points > 0) {
+      leaveOut(k, points, legs[k - 1]!);
+      k += points;
+    }
+    // The point after a jump is on the line again, though its own leg is long.
+    stay.push(kept[k]!);
   }
   return Int32Array.from(stay);
+}
 
-  /** How far the point lies off [m]; null: it belongs to the line. */
-  function isOff(k: number): number | null {
-    const [before, after] = [legs[k - 1]!, legs[k]!];
-    // Two jumps never stand side by side here: the second is judged from the first, which is itself off.
-    if (before <= JUMP_LEG || after <= JUMP_LEG) return null;
-    const [a, i, b] = [kept[k - 1]!, kept[k]!, kept[k + 1]!];
+/** How many points from the k-th on lie off the line; 0: it belongs to the line. */
+function pointsOff(
+  raw: RawTrack,
+  kept: Int32Array,
+  legs: Float64Array,
+  leg: (from: number, to: number) => number,
+  k: number,
+): number {
+  const away = legs[k - 1]!;
+  if (away <= JUMP_LEG) return 0;
+  for (let points = 1; points <= LONGEST_JUMP && k + points < kept.length; points++) {
+    const back = legs[k + points - 1]!;
+    if (back <= JUMP_LEG) continue;
+    const [a, first, last, b] = [kept[k - 1]!, kept[k]!, kept[k + points - 1]!, kept[k + points]!];
     const past = leg(a, b);
-    const off = Math.max(before, after);
-    if (tooFast(raw, before, a, i) && tooFast(raw, after, i, b) && !tooFast(raw, past, a, b)) return off;
-    const usual = JUMP_RATIO * medianAround(legs, k - 1, k);
-    return before > usual && after > usual && past < off / 2 ? off : null;
+    if (tooFast(raw, away, a, first) && tooFast(raw, back, last, b) && !tooFast(raw, past, a, b))
+      return points;
+    const usual = JUMP_RATIO * medianAround(legs, k - 1, k + points - 1);
+    if (away > usual && back > usual && past < Math.max(away, back) / 2) return points;
   }
+  return 0;
 }
 
 /** Whether a leg implies a speed that no road vehicle has; false where there are no times. */
@@ -64,10 +83,9 @@ export function impliedSpeed(raw: RawTrack, length: number, from: number, to: nu
   return interval > 0 ? `${toKmh(length / interval).toFixed(0)} km/h` : 'no time at all';
 }
 
-function endIsOff(legs: Float64Array, k: number): number | null {
-  const end = k === 0 ? 0 : legs.length - 1;
+function endIsOff(legs: Float64Array, end: number): boolean {
   const length = legs[end]!;
-  return length > LONGEST_GAP && length > JUMP_RATIO * medianAround(legs, end, end) ? length : null;
+  return length > LONGEST_GAP && length > JUMP_RATIO * medianAround(legs, end, end);
 }
 
 /** Median of up to five legs on either side of the legs `first` to `last`. */

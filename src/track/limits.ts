@@ -22,6 +22,8 @@ export const CLOCK_RESOLUTION = 1;
 /** Without times, a point is off the line when both its legs exceed this [m] and JUMP_RATIO times the legs around. */
 export const JUMP_LEG = 100;
 export const JUMP_RATIO = 10;
+/** Points in a row that may be off the line and are left out; a longer way aside is a way. */
+export const LONGEST_JUMP = 5;
 
 /** Distance [m] or time [s] may run backwards this far before the file is refused. */
 export const LONGEST_DISTANCE_REVERSAL = 50;

@@ -1,5 +1,6 @@
 import { SaxesParser } from 'saxes';
 import { InputError } from '../problems/input-error.ts';
+import { lineOf } from './line-of.ts';
 import { XmlNode } from './xml-node.ts';
 
 const DEEPEST = 64;
@@ -19,7 +20,7 @@ const MOST_ELEMENTS = 4_000_000;
  */
 export function parseXml(text: string, file: string): XmlNode {
   const sax = new SaxesParser();
-  const document = new XmlNode('#document', {}, null, 0);
+  const document = new XmlNode('#document', NO_ATTRIBUTES, null, 0);
   let at = document;
   let depth = 0;
   let elements = 0;
@@ -30,7 +31,17 @@ export function parseXml(text: string, file: string): XmlNode {
     const place = { file, line: sax.line, column: sax.column + 1 };
     throw new InputError({ code, place, message, ...(allowed === undefined ? {} : { allowed }) });
   };
-  sax.on('error', (error) => refuse('xml-syntax', plain(error.message)));
+  sax.on('error', (error) => {
+    const bare = bareAmpersand(text);
+    if (bare === null || bare > sax.position) return refuse('xml-syntax', plain(error.message));
+    // The parser looks for the end of the entity as far as the end of the file.
+    throw new InputError({
+      code: 'xml-syntax',
+      place: { file, ...lineOf(text, bare) },
+      message: 'an ampersand that begins no entity',
+      allowed: '&amp;',
+    });
+  });
   sax.on('doctype', () => refuse('xml-doctype', 'a document type declaration is not allowed in a track'));
   sax.on('opentag', (tag) => {
     if (++depth > DEEPEST) refuse('xml-too-deep', 'elements are nested too deep', `${DEEPEST} levels`);
@@ -45,12 +56,12 @@ export function parseXml(text: string, file: string): XmlNode {
       leftOut++;
       return;
     }
-    const node = new XmlNode(name, attributes, at, sax.line);
+    const node = new XmlNode(name, compact(attributes), at, sax.line);
     at.append(node);
     at = node;
   });
   const write = (part: string): void => {
-    if (leftOut === 0 && at.children.length === 0) at.text += part;
+    if (leftOut === 0 && at.firstChild === null) at.text += part;
   };
   sax.on('text', write);
   sax.on('cdata', write);
@@ -61,6 +72,20 @@ export function parseXml(text: string, file: string): XmlNode {
   });
   sax.write(text).close();
   return document;
+}
+
+const NO_ATTRIBUTES: readonly string[] = [];
+
+/** Names and values in turn: the parser's own attribute objects are hash tables of some 200 bytes, one an element. */
+function compact(attributes: Readonly<Record<string, string>>): readonly string[] {
+  const names = Object.keys(attributes);
+  if (names.length === 0) return NO_ATTRIBUTES;
+  const flat = new Array<string>(2 * names.length);
+  for (let i = 0; i < names.length; i++) {
+    flat[2 * i] = names[i]!;
+    flat[2 * i + 1] = attributes[names[i]!]!;
+  }
+  return flat;
 }
 
 /** The prefixes that stand for the root's own namespace: its own, and others bound to the same name there. */
@@ -74,6 +99,12 @@ function prefixesOfRoot(prefix: string, attributes: Readonly<Record<string, stri
     else if (key.startsWith('xmlns:')) own.add(key.slice('xmlns:'.length));
   }
   return own;
+}
+
+/** Offset of the first `&` that cannot begin a reference; null where there is none. */
+function bareAmpersand(text: string): number | null {
+  const at = text.search(/&(?!#?[\w:.-]+;)/);
+  return at < 0 ? null : at;
 }
 
 /** The parser's message without its own place in front and full stop behind. */

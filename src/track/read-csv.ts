@@ -109,8 +109,8 @@ function csvProblem(error: CsvError, header: CsvHeader, file: string): InputErro
       code: 'ragged-row',
       place,
       message: 'the row does not have as many cells as the header',
-      found: `${Array.isArray(record) ? record.length : 'other'} cells`,
-      allowed: `${header.columns.length} cells${header.delimiter === ',' ? '; decimal commas need semicolons or tabs between cells' : ''}`,
+      found: `cells: ${Array.isArray(record) ? record.length : 'another number'}`,
+      allowed: `${header.columns.length}${header.delimiter === ',' ? '; decimal commas need semicolons or tabs between cells' : ''}`,
     });
   }
   const quotes = error.code.includes('QUOTE');

@@ -1,5 +1,7 @@
 import { InputError } from '../problems/input-error.ts';
 import { chooseTrack } from './choose-track.ts';
+import { findJsonFault } from './find-json-fault.ts';
+import { lineOf } from './line-of.ts';
 import type { RawTrack } from './raw-track.ts';
 
 interface Line {
@@ -40,18 +42,12 @@ function sizeOf(line: Line): number {
 function parseJson(text: string, file: string): unknown {
   try {
     return JSON.parse(text);
-  } catch (error) {
-    // The engines word this differently; only the offset is taken, where there is one.
-    const message = error instanceof Error ? error.message : '';
-    const offset = Number(
-      /position (\d+)/.exec(message)?.[1] ?? (message.includes('end of') ? text.length : NaN),
-    );
-    const before = text.slice(0, offset).split('\n');
-    const place = Number.isNaN(offset) ? {} : { line: before.length, column: before.at(-1)!.length + 1 };
+  } catch {
+    const offset = findJsonFault(text) ?? 0;
     throw new InputError({
       code: 'json-syntax',
-      place: { file, ...place },
-      message: offset >= text.length ? 'the JSON text ends too early' : 'the text is not JSON',
+      place: { file, ...lineOf(text, offset) },
+      message: offset >= text.length ? 'the JSON text ends too early' : 'the text is not JSON from here on',
       allowed: 'GeoJSON (RFC 7946)',
     });
   }
@@ -172,6 +168,9 @@ function checkPosition(position: unknown, key: string, file: string): readonly [
 }
 
 function show(value: unknown): string {
-  const text = value === undefined ? 'nothing' : JSON.stringify(value);
+  const text =
+    value === undefined
+      ? 'nothing'
+      : JSON.stringify(value, (_, part) => (part === Infinity || part === -Infinity ? String(part) : part));
   return text.length > 60 ? `${text.slice(0, 57)}...` : text;
 }

@@ -2,6 +2,7 @@ import type { GpxPath } from 'gpxparser';
 import { InputError } from '../problems/input-error.ts';
 import { chooseTrack } from './choose-track.ts';
 import { parseNumber } from './parse-number.ts';
+import { parseTime } from './parse-time.ts';
 import type { RawTrack } from './raw-track.ts';
 import { SafeGpxParser } from './safe-gpx-parser.ts';
 import type { XmlNode } from './xml-node.ts';
@@ -29,7 +30,7 @@ export function readGpx(text: string, file: string, choice: string | number | un
       code: 'no-track',
       place: { file },
       message: 'the file holds no track and no route',
-      found: `${root.querySelectorAll('wpt').length} waypoints`,
+      found: `waypoints: ${root.querySelectorAll('wpt').length}`,
       allowed: '<trk> with <trkpt>, or <rte> with <rtept>',
     });
   const candidates = found.map(({ path, what }) => ({
@@ -61,9 +62,9 @@ function columns(path: GpxPath, nodes: readonly XmlNode[], file: string): RawTra
     latitudeDeg[i] = point.lat;
     longitudeDeg[i] = point.lon;
     elevation[i] = point.ele ?? Number.NaN;
-    time[i] = point.time === null ? Number.NaN : point.time.getTime() / 1000;
+    time[i] = secondsOf(node, file);
     if (point.ele !== null) elevations++;
-    if (point.time !== null) times++;
+    if (!Number.isNaN(time[i]!)) times++;
   }
   return {
     file,
@@ -82,6 +83,21 @@ function columns(path: GpxPath, nodes: readonly XmlNode[], file: string): RawTra
     time: times > 0 ? time : null,
     speed: null,
   };
+}
+
+function secondsOf(point: XmlNode, file: string): number {
+  const node = point.child('time');
+  const text = node?.innerHTML ?? '';
+  if (node === null || text === '') return Number.NaN;
+  const seconds = parseTime(text);
+  if (seconds !== null) return seconds;
+  throw new InputError({
+    code: 'not-a-time',
+    place: { file, line: node.line },
+    message: 'time is not a date and time',
+    found: `'${text}'`,
+    allowed: 'ISO 8601 such as 2024-05-10T07:20:55Z',
+  });
 }
 
 function nameOf(path: GpxPath): string | null {

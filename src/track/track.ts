@@ -2,7 +2,7 @@
 export type RepairKind =
   | 'doubled_point' // a point without movement, merged into the one before
   | 'missing_elevation' // filled by interpolation over distance
-  | 'position_jump' // one position far off the line, left out
+  | 'position_jump' // one position, or a few, far off the line, left out
   | 'reversal' // distance or time running backwards for a short way, points left out
   | 'gap' // a long stretch without points, bridged
   | 'segment_joined' // two segments of the file joined
