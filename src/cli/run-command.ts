@@ -12,6 +12,7 @@ import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
 import { ProgressBar } from './progress-bar.ts';
+import { requirementLines } from './requirement-lines.ts';
 import { checkFolder, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
 
@@ -42,8 +43,7 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
   writeResult(folder, [...files, { name: 'summary.json', text: summary }]);
   if (!values.quiet) {
     say(answerOf(viewOf(run, units)).sentence);
-    for (const { requirement, verdict, words } of run.requirements)
-      say(`  ${requirement.id} ${verdict}: ${words}`);
+    for (const line of requirementLines(run.requirements, units)) say(line);
     tellWarnings(run.warnings, reader.seen);
     say(`The report is at ${join(folder, 'report.html')}`);
   }

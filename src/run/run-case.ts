@@ -133,8 +133,8 @@ function statusOf(
   candidates: readonly CandidateResult[],
   findings: RunResult['requirements'],
 ): RunResult['status'] {
-  if (candidates.some(({ result }) => result.status !== 'completed')) return 'incomplete';
-  return findings.some(({ verdict }) => verdict === 'not met') ? 'requirement_not_met' : 'ok';
+  if (findings.some(({ verdict }) => verdict === 'not met')) return 'requirement_not_met';
+  return candidates.every(({ result }) => result.status === 'completed') ? 'ok' : 'incomplete';
 }
 
 function tooManyBands(document: CaseDocument, bands: readonly number[]): InputError {

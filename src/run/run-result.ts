@@ -34,7 +34,7 @@ export interface RunResult {
   readonly requirements: readonly RequirementFinding[];
   readonly defaults: readonly DefaultUsed[];
   readonly warnings: readonly Warning[];
-  /** `requirement_not_met` when any requirement is not met; `incomplete` when a candidate did not reach the end. */
+  /** `requirement_not_met` when any requirement is not met; else `incomplete` when a candidate did not reach the end. */
   readonly status: 'ok' | 'requirement_not_met' | 'incomplete';
 }
 
