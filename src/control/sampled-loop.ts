@@ -1,0 +1,234 @@
+import { Matrix } from 'ml-matrix';
+import { continuousPoles, eigenvalues } from '../linear/eigenvalues.ts';
+import { holdInput } from '../linear/hold-input.ts';
+import { resolvent } from '../linear/resolvent.ts';
+import {
+  addComplex,
+  type Complex,
+  complex,
+  divideComplex,
+  expComplex,
+  multiplyComplex,
+  powerOfComplex,
+  subtractComplex,
+} from '../numeric/complex.ts';
+import type { LinearVehicle } from '../vehicle/linearise.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+
+/** When and how a PI controller works in the loop. */
+export interface LoopTiming {
+  /** [s] */
+  readonly sample: number;
+  /** From sample to command [s]. */
+  readonly computingDelay: number;
+  readonly integration: 'forward' | 'backward';
+}
+
+export interface Gains {
+  /** [1/(m/s)] */
+  readonly kp: number;
+  /** [1/(m/s)/s] */
+  readonly ki: number;
+}
+
+/** What pushes the loop out of its rest: deviations that begin at time 0 and stay. */
+export interface Push {
+  /** Step of the set speed, in true speed [m/s]. */
+  readonly reference: number;
+  readonly setpointWeight: number;
+  /** Acceleration that the road takes away or adds [m/s2]. */
+  readonly disturbance: number;
+}
+
+/**
+ * The small-signal loop of a vehicle under a sampled PI controller, with every lag that the replay has: zero-order hold,
+ * actuator lag, drive lag, the vehicle, sensor filter, sensor and computing delay. Limits of range and rate are left out.
+ *
+ *     dy/dt = (u - y) / ta,  dx/dt = (y - x) / td,  dv/dt = a v + b x + d,  dz/dt = (v - z) / tf
+ *
+ * solved exactly over a sample. The controller sees scale z(t - delay); a delay that is no whole number of samples is
+ * met by the state at the instant within the sample.
+ */
+export interface SampledLoop {
+  /** Speed at every `spacing` from time 0 for a whole number of samples [m/s], all starting from rest. */
+  respond(gains: Gains, push: Push, duration: number, spacing: number): SpeedResponse;
+  /** Poles of the closed loop in the s plane [1/s], slowest first. */
+  poles(gains: Gains): readonly Complex[];
+  /** Gain around the open loop at z = e^(j w h). */
+  openLoop(gains: Gains, frequency: number): Complex;
+  /** The gains with which both s values, a conjugate pair or two real ones, are poles of the closed loop. */
+  placePair(frequency: number, damping: number): Gains;
+}
+
+export interface SpeedResponse {
+  readonly speed: Float64Array;
+  /** [s] */
+  readonly spacing: number;
+}
+
+/** Builds the loop around a linear model of the vehicle. */
+export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: LoopTiming): SampledLoop {
+  const { sample, integration } = timing;
+  const backward = integration === 'backward';
+  const { scaleError, delay } = vehicle.sensor;
+  const scale = 1 + scaleError;
+  const plant = plantOf(vehicle, model);
+  const { order, speed, measured } = plant;
+  const whole = holdInput(plant.a, plant.b, sample);
+  // The measurement of sample k is taken at t_k - delay, `share` of a sample after t_(k - back).
+  const samplesLate = (delay + timing.computingDelay) / sample;
+  const back = Math.ceil(samplesLate - 1e-9);
+  const share = Math.max(0, back - samplesLate);
+  const late = holdInput(plant.a, plant.b, share * sample);
+  const row = Float64Array.from({ length: order }, (_, j) => scale * late.phi.get(measured, j));
+  const direct = scale * late.gamma.get(measured, 0);
+
+  function respond(gains: Gains, push: Push, duration: number, spacing: number): SpeedResponse {
+    const parts = Math.max(1, Math.ceil(sample / spacing - 1e-9));
+    const step = holdInput(plant.a, plant.b, sample / parts);
+    const phi = Float64Array.from(step.phi.to1DArray());
+    const gamma = Float64Array.from(step.gamma.to1DArray());
+    const samples = Math.ceil(duration / sample);
+    const values = new Float64Array(samples * parts + 1);
+    const reference = scale * push.reference;
+    const disturbanceSeen = scale * late.gamma.get(measured, 1) * push.disturbance;
+    const queue = new Float64Array(Math.max(back, 1));
+    let x = new Float64Array(order);
+    let next = new Float64Array(order);
+    let integral = 0;
+    for (let k = 0, at = 1; k < samples; k++) {
+      const seen = back === 0 ? scale * x[measured]! : queue[k % back]!;
+      const increment = gains.ki * sample * (reference - seen);
+      if (backward) integral += increment;
+      const u = gains.kp * (push.setpointWeight * reference - seen) + integral;
+      if (!backward) integral += increment;
+      if (back > 0) {
+        let sum = direct * u + disturbanceSeen;
+        for (let j = 0; j < order; j++) sum += row[j]! * x[j]!;
+        queue[k % back] = sum;
+      }
+      for (let part = 0; part < parts; part++, at++) {
+        for (let i = 0; i < order; i++) {
+          let sum = gamma[2 * i]! * u + gamma[2 * i + 1]! * push.disturbance;
+          for (let j = 0; j < order; j++) sum += phi[i * order + j]! * x[j]!;
+          next[i] = sum;
+        }
+        [x, next] = [next, x];
+        values[at] = x[speed]!;
+      }
+    }
+    return { speed: values, spacing: sample / parts };
+  }
+
+  /** State, measurements on their way (the newest first), integral. */
+  function closedLoop(gains: Gains): Matrix {
+    const size = order + back + 1;
+    const matrix = Matrix.zeros(size, size);
+    const last = size - 1;
+    const seen = new Float64Array(size);
+    if (back === 0) seen[measured] = scale;
+    else seen[order + back - 1] = 1;
+    const command = seen.map((value) => -(gains.kp + (backward ? gains.ki * sample : 0)) * value);
+    command[last] = 1;
+    for (let j = 0; j < size; j++) {
+      for (let i = 0; i < order; i++)
+        matrix.set(i, j, (j < order ? whole.phi.get(i, j) : 0) + whole.gamma.get(i, 0) * command[j]!);
+      if (back > 0) matrix.set(order, j, (j < order ? row[j]! : 0) + direct * command[j]!);
+      matrix.set(last, j, (j === last ? 1 : 0) - gains.ki * sample * seen[j]!);
+    }
+    for (let i = 1; i < back; i++) matrix.set(order + i, order + i - 1, 1);
+    return matrix;
+  }
+
+  const throttleInput = whole.gamma.getColumn(0);
+  /** From command to measurement; null at a pole. */
+  function measurement(z: Complex): Complex | null {
+    const state = resolvent(whole.phi, throttleInput, z);
+    if (state === null) return null;
+    if (back === 0) return multiplyComplex(complex(scale), state[measured]!);
+    const now = state.reduce(
+      (sum, part, j) => addComplex(sum, multiplyComplex(complex(row[j]!), part)),
+      complex(direct),
+    );
+    return divideComplex(now, powerOfComplex(z, back));
+  }
+  /** C(z) = kp + ki integrator(z). */
+  function integrator(z: Complex): Complex {
+    const forward = divideComplex(complex(sample), subtractComplex(z, complex(1)));
+    return backward ? multiplyComplex(forward, z) : forward;
+  }
+  function openLoop(gains: Gains, frequency: number): Complex {
+    const z = expComplex(complex(0, frequency * sample));
+    const controller = addComplex(complex(gains.kp), multiplyComplex(complex(gains.ki), integrator(z)));
+    const path = measurement(z);
+    return path === null ? complex(Number.POSITIVE_INFINITY) : multiplyComplex(controller, path);
+  }
+
+  // 1 + C(z) G(z) = 0 at both poles: two equations, linear in the gains.
+  function placePair(frequency: number, damping: number): Gains {
+    // At a damping of 1 the two equations become one; so close to it that no figure shows, they are two.
+    const ratio = Math.abs(damping - 1) < 1e-7 ? 1 - 1e-7 : damping;
+    const equation = (s: Complex): { readonly left: Complex; readonly right: Complex } => {
+      const z = expComplex(complex(s.re * sample, s.im * sample));
+      const path = measurement(z);
+      return {
+        left: integrator(z),
+        right: path === null ? complex(0) : divideComplex(complex(-1), path),
+      };
+    };
+    if (ratio < 1) {
+      const pole = complex(-ratio * frequency, frequency * Math.sqrt(1 - ratio * ratio));
+      const { left, right } = equation(pole);
+      const ki = right.im / left.im;
+      return { kp: right.re - ki * left.re, ki };
+    }
+    const apart = Math.sqrt(ratio * ratio - 1);
+    const slow = equation(complex(-frequency / (ratio + apart)));
+    const fast = equation(complex(-frequency * (ratio + apart)));
+    const ki = (slow.right.re - fast.right.re) / (slow.left.re - fast.left.re);
+    return { kp: slow.right.re - ki * slow.left.re, ki };
+  }
+
+  return {
+    respond,
+    poles: (gains) => continuousPoles(eigenvalues(closedLoop(gains)), sample),
+    openLoop,
+    placePair,
+  };
+}
+
+interface Plant {
+  readonly a: Matrix;
+  /** Inputs: command, disturbance. */
+  readonly b: Matrix;
+  readonly order: number;
+  /** Places of speed and filtered speed in the state. */
+  readonly speed: number;
+  readonly measured: number;
+}
+
+/** Only the lags that exist become states: each first-order lag follows the one before it. */
+function plantOf(vehicle: Vehicle, model: LinearVehicle): Plant {
+  const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
+  const filter = vehicle.sensor.filter;
+  const speed = lags.length;
+  const order = speed + 1 + (filter > 0 ? 1 : 0);
+  const a = Matrix.zeros(order, order);
+  const b = Matrix.zeros(order, 2);
+  const drivenBy = (state: number, from: number, gain: number): void => {
+    if (from < 0) b.set(state, 0, gain);
+    else a.set(state, from, gain);
+  };
+  lags.forEach((lag, i) => {
+    a.set(i, i, -1 / lag);
+    drivenBy(i, i - 1, 1 / lag);
+  });
+  a.set(speed, speed, model.a);
+  drivenBy(speed, speed - 1, model.b);
+  b.set(speed, 1, 1);
+  if (filter > 0) {
+    a.set(speed + 1, speed + 1, -1 / filter);
+    a.set(speed + 1, speed, 1 / filter);
+  }
+  return { a, b, order, speed, measured: filter > 0 ? speed + 1 : speed };
+}
