@@ -99,7 +99,14 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
       (least, sd) => Math.min(least, sd),
       Number.POSITIVE_INFINITY,
     ),
-    noiseSd: noiseOf(residual, places, weights, covariance, knots),
+    noiseSd: noiseOf(
+      residual,
+      places,
+      base.map((weight, i) => (trust[i] === LEAST_WEIGHT ? 0 : weight)),
+      weights,
+      covariance,
+      knots,
+    ),
     lambda,
     outliers,
   };
@@ -172,10 +179,14 @@ function residualOf(fit: WhittakerFit, places: Float64Array, elevation: Float64A
   });
 }
 
-/** Weighted sum of squared cell means of the residuals, over the cells less the degrees of freedom that the fit took. */
+/**
+ * Weighted sum of squared cell means of the residuals, over the cells less the degrees of freedom that the fit took.
+ * Points not shut out count in full (`lengths`): with the fit's own weights the biweight would make noise look smaller.
+ */
 function noiseOf(
   residual: Float64Array,
   places: Float64Array,
+  lengths: Float64Array,
   weights: Float64Array,
   covariance: Float64Array,
   knots: number,
@@ -187,8 +198,8 @@ function noiseOf(
     const cell = Math.min(Math.floor(places[i]!), knots - 2);
     const t = places[i]! - cell;
     const nearest = t < 0.5 ? cell : cell + 1;
-    weight[nearest]! += weights[i]!;
-    moment[nearest]! += weights[i]! * residual[i]!;
+    weight[nearest]! += lengths[i]!;
+    moment[nearest]! += lengths[i]! * residual[i]!;
     const spread =
       (1 - t) * (1 - t) * covariance[4 * cell]! +
       2 * t * (1 - t) * covariance[4 * cell + 1]! +

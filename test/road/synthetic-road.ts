@@ -28,40 +28,31 @@ export interface TrueRoad {
 
 /** Tangents joined by parabolas; grade and elevation exact at multiples of `step` [m]. */
 export function syntheticRoad(random: Randomness, length: number, step: number): TrueRoad {
-  // Each vertical curve begins at `from`, is `extent` long, and takes the grade from `before` to `after`.
-  const curves: { from: number; extent: number; before: number; after: number }[] = [];
-  let at = 0;
-  let grade = 0.035 * random.normal();
-  while (at < length) {
-    const from = at + 100 + 800 * random.uniform();
-    const after = 0.035 * random.normal();
-    const extent = (10 + 50 * random.uniform()) * 100 * Math.abs(after - grade);
-    curves.push({ from, extent, before: grade, after });
-    grade = after;
-    at = from + extent;
-  }
-  const gradeAt = (x: number): number => {
-    const curve = curves.find((c) => x < c.from + c.extent) ?? curves.at(-1)!;
-    if (x <= curve.from) return curve.before;
-    return (
-      curve.before + ((curve.after - curve.before) * Math.min(x - curve.from, curve.extent)) / curve.extent
-    );
-  };
   const size = Math.round(length / step) + 1;
   const distance = Float64Array.from({ length: size }, (_, i) => i * step);
-  const trueGrade = distance.map(gradeAt);
   const elevation = new Float64Array(size);
-  elevation[0] = 300;
-  // Simpson on ten parts of a step: exact but for the few parts that hold a curve's end.
-  for (let i = 1; i < size; i++) {
-    let sum = 0;
-    for (let k = 0; k < 10; k++) {
-      const a = distance[i - 1]! + (step * k) / 10;
-      sum += ((gradeAt(a) + 4 * gradeAt(a + step / 20) + gradeAt(a + step / 10)) * step) / 60;
+  const grade = new Float64Array(size);
+  let i = 0;
+  let start = 0;
+  let height = 300;
+  let before = 0.035 * random.normal();
+  while (i < size) {
+    // A tangent, then the parabola to the next grade; heights in closed form.
+    const tangent = 100 + 800 * random.uniform();
+    const after = 0.035 * random.normal();
+    const curve = (10 + 50 * random.uniform()) * 100 * Math.abs(after - before);
+    const bend = (after - before) / curve;
+    for (; i < size && distance[i]! <= start + tangent + curve; i++) {
+      const past = distance[i]! - start;
+      const bent = Math.max(0, past - tangent);
+      grade[i] = before + bend * bent;
+      elevation[i] = height + before * past + (bend * bent * bent) / 2;
     }
-    elevation[i] = elevation[i - 1]! + sum;
+    height += before * (tangent + curve) + (bend * curve * curve) / 2;
+    start += tangent + curve;
+    before = after;
   }
-  return { distance, elevation, grade: trueGrade };
+  return { distance, elevation, grade };
 }
 
 /** Stationary first-order autoregressive noise: s.d. [m], correlation length [m], at equal steps [m]. */
