@@ -25,26 +25,39 @@ import type { PiSetup } from './setup.ts';
  * BUS_INTEGRAL is the integral that is in u; the integral for the next sample is carried in BUS_MEMORY.
  */
 export function piController(setup: PiSetup, low: number, high: number): Controller {
-  const { kp, setpointWeight, antiWindup } = setup;
-  const gain = setup.ki * setup.sample;
+  const { antiWindup } = setup;
   const backward = setup.integration === 'backward';
   const conditional = antiWindup.kind === 'conditional';
   const tracking = antiWindup.kind === 'back_calculation' ? setup.sample / antiWindup.trackingTime : 0;
+  // In a typed array, because numbers that a closure holds are boxed and checked at every sample.
+  const constants = Float64Array.of(
+    setup.kp,
+    setup.setpointWeight,
+    setup.ki * setup.sample,
+    tracking,
+    low,
+    high,
+  );
 
   const step = (bus: Float64Array): void => {
     const reference = bus[BUS_REFERENCE];
     const measured = bus[BUS_MEASURED];
+    const least = constants[4];
+    const most = constants[5];
     const error = reference - measured;
-    const proportional = kp * (setpointWeight * reference - measured);
+    const proportional = constants[0] * (constants[1] * reference - measured);
     let integral = bus[BUS_MEMORY];
-    const increment = gain * error;
-    let next = integral + increment;
-    const trial = proportional + (backward ? next : integral);
-    if (conditional && ((trial >= high && error > 0) || (trial <= low && error < 0))) next = integral;
+    let next = integral + constants[2] * error;
+    if (conditional) {
+      const trial = proportional + (backward ? next : integral);
+      if ((trial >= most && error > 0) || (trial <= least && error < 0)) next = integral;
+    }
     if (backward) integral = next;
     const command = proportional + integral;
-    const limited = command > high ? high : Math.max(command, low);
-    bus[BUS_MEMORY] = next + tracking * (limited - command);
+    let limited = command;
+    if (command > most) limited = most;
+    if (command < least) limited = least;
+    bus[BUS_MEMORY] = next + constants[3] * (limited - command);
     bus[BUS_PROPORTIONAL] = proportional;
     bus[BUS_INTEGRAL] = integral;
     bus[BUS_FEEDFORWARD] = 0;
@@ -52,7 +65,7 @@ export function piController(setup: PiSetup, low: number, high: number): Control
     bus[BUS_LIMITED] = limited;
   };
   const engage = (bus: Float64Array): void => {
-    const proportional = kp * (setpointWeight * bus[BUS_REFERENCE] - bus[BUS_MEASURED]);
+    const proportional = setup.kp * (setup.setpointWeight * bus[BUS_REFERENCE] - bus[BUS_MEASURED]);
     bus[BUS_MEMORY] = bus[BUS_LIMITED] - proportional;
   };
   return { sample: setup.sample, computingDelay: setup.computingDelay, ramp: setup.ramp, engage, step };

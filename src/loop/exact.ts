@@ -6,13 +6,6 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { recordSample } from './record.ts';
 
-/** A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle. */
-const KNOT = 1e-7;
-const EDGE = 1e-9;
-/** Trials to hit a kink; pieces of one step after which kinks are no longer looked for (a drive that chatters). */
-const TRIALS = 6;
-const PIECES = 40;
-
 /**
  * The `exact` kernel. With command u held over a sample, actuator y, throttle x behind the drive's lag:
  *
@@ -24,27 +17,48 @@ const PIECES = 40;
  * the right-hand side has a kink: at road knots, where the rate limit lets go, at edges of the drive's cells, at v = 0.
  * Coefficients of a cell are frozen over a piece, so that all stages are evaluated on one side of the kink.
  * Density, cos(theta) and derating are taken at the middle of the piece; grade and wind along the road stay linear.
+ *
+ * Inside a piece everything is per unit of effective mass and the acceleration is a cubic in v over v,
+ *
+ *     dv/dt = g0 + v (g1 + v g2) + x b3 / v,
+ *
+ * whose coefficients hang on x and q alone: they are ready before v is, which leaves three dependent operations a stage.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
   const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, sums } = machine;
+  // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle.
+  // Constants stand inside the function: as variables of the module they would be read and checked at every use.
+  const KNOT = 1e-7;
+  const EDGE = 1e-9;
+  // Trials to hit a kink; pieces of one step after which kinks are no longer looked for (a drive that chatters).
+  const TRIALS = 6;
+  const PIECES = 40;
+  const SIXTH = 1 / 6;
+  const BRAKE_MARGIN = at.BRAKE_TIME * at.BRAKE_LIMIT;
+
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const timed = p[at.P_TIMED] === 1;
-  const mass = p[at.P_MASS];
   const effectiveMass = p[at.P_EFFECTIVE_MASS];
   const inverse = 1 / effectiveMass;
-  const cda = p[at.P_CDA];
-  const c0 = p[at.P_C0];
-  const c1 = p[at.P_C1];
-  const c2 = p[at.P_C2];
+  const share = p[at.P_MASS] * inverse;
+  const cda = p[at.P_CDA] * inverse;
+  const roll0 = p[at.P_C0];
+  const roll1 = p[at.P_C1];
+  const roll2 = p[at.P_C2];
   const ta = p[at.P_ACTUATOR_LAG];
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
   const weight = p[at.P_LAG_WEIGHT];
   const equal = p[at.P_LAG_EQUAL];
+  const actuatorHalf = p[at.P_ACTUATOR_HALF];
+  const actuatorFull = p[at.P_ACTUATOR_FULL];
+  const driveHalf = p[at.P_DRIVE_HALF];
+  const driveFull = p[at.P_DRIVE_FULL];
   const filter = p[at.P_FILTER];
+  const filterFull = p[at.P_FILTER_FULL];
   const delay = p[at.P_DELAY];
   const scale = p[at.P_SCALE];
   const stallSpeed = p[at.P_STALL_SPEED];
@@ -66,6 +80,29 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
   let event = at.RUNNING;
+  // The road cell and the drive cell at hand, loaded where they change.
+  let loadedRow = -1;
+  let loadedDrive = -1;
+  let begin = 0;
+  let length = 0;
+  let sin0 = 0;
+  let sin1 = 0;
+  let cos0 = 0;
+  let cos1 = 0;
+  let wind0 = 0;
+  let wind1 = 0;
+  let air0 = 0;
+  let air1 = 0;
+  let floor = 0;
+  let ceiling = 0;
+  let low = 0;
+  let high = 0;
+  let a0 = 0;
+  let a1 = 0;
+  let c0 = 0;
+  let c1 = 0;
+  let c2 = 0;
+  let c3 = 0;
 
   for (let tick = 0; tick < ticks && q < until && event === at.RUNNING; tick++) {
     s[BUS_MEASURED] = scale * (delay > 0 ? readDelayed(s, p) : z);
@@ -120,20 +157,35 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         }
         const ld = x - l0 - la;
 
-        const from = q - rows[row + at.R_STATION];
-        const room = rows[row + at.R_LENGTH] - from;
-        const sin0 = mass * rows[row + at.R_SIN];
-        const sin1 = mass * rows[row + at.R_SIN + 1];
-        const wind0 = rows[row + at.R_HEADWIND];
-        const wind1 = rows[row + at.R_HEADWIND + 1];
-        const floor = speedCell > 0 ? speedEdges[speedCell - 1] : 0;
-        const ceiling = speedCell < lastSpeedCell ? speedEdges[speedCell] : Number.POSITIVE_INFINITY;
-        const low = throttleCell > 0 ? throttleEdges[throttleCell - 1] : Number.NEGATIVE_INFINITY;
-        const high =
-          throttleCell < throttleCells - 1 ? throttleEdges[throttleCell] : Number.POSITIVE_INFINITY;
-        const c = 6 * (speedCell * throttleCells + throttleCell);
-        const a0 = cells[c];
-        const a1 = cells[c + 1];
+        if (row !== loadedRow) {
+          loadedRow = row;
+          begin = rows[row + at.R_STATION];
+          length = rows[row + at.R_LENGTH];
+          sin0 = share * rows[row + at.R_SIN];
+          sin1 = share * rows[row + at.R_SIN + 1];
+          cos0 = share * rows[row + at.R_COS];
+          cos1 = share * rows[row + at.R_COS + 1];
+          wind0 = rows[row + at.R_HEADWIND];
+          wind1 = rows[row + at.R_HEADWIND + 1];
+          air0 = rows[row + at.R_AIR];
+          air1 = rows[row + at.R_AIR + 1];
+        }
+        const drive = speedCell * throttleCells + throttleCell;
+        if (drive !== loadedDrive) {
+          loadedDrive = drive;
+          floor = speedCell > 0 ? speedEdges[speedCell - 1] : 0;
+          ceiling = speedCell < lastSpeedCell ? speedEdges[speedCell] : Number.POSITIVE_INFINITY;
+          low = throttleCell > 0 ? throttleEdges[throttleCell - 1] : Number.NEGATIVE_INFINITY;
+          high = throttleCell < throttleCells - 1 ? throttleEdges[throttleCell] : Number.POSITIVE_INFINITY;
+          a0 = inverse * cells[6 * drive];
+          a1 = inverse * cells[6 * drive + 1];
+          c0 = inverse * cells[6 * drive + 2];
+          c1 = inverse * cells[6 * drive + 3];
+          c2 = inverse * cells[6 * drive + 4];
+          c3 = inverse * cells[6 * drive + 5];
+        }
+        const from = q - begin;
+        const room = length - from;
 
         let h = most;
         let aimed = false;
@@ -143,42 +195,28 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           aimed = true;
         }
 
-        let half = 0;
-        let w = 0;
         let k1 = 0;
         let k4 = 0;
-        let v2 = 0;
-        let v3 = 0;
-        let v4 = 0;
         let ve = 0;
         let xe = 0;
         let ds = 0;
         let dq = 0;
         let ea = 0;
-        let f1 = 0;
-        let f2 = 0;
-        let f3 = 0;
-        let f4 = 0;
-        let d1 = 0;
-        let d2 = 0;
-        let d3 = 0;
-        let d4 = 0;
-        let r0 = 0;
-        let r1 = 0;
-        let r2 = 0;
-        let p2 = 0;
-        let p3 = 0;
-        let p4 = 0;
+        let force = 0;
+        let work = 0;
+        let airWork = 0;
+        let rollingWork = 0;
+        let climbWork = 0;
         for (let trial = pieces < patience ? 0 : TRIALS; ; trial++) {
-          half = 0.5 * h;
+          const half = 0.5 * h;
           let eah = 0;
           let edh = 0;
           let ed = 0;
           if (h === step) {
-            eah = p[at.P_ACTUATOR_HALF];
-            ea = p[at.P_ACTUATOR_FULL];
-            edh = p[at.P_DRIVE_HALF];
-            ed = p[at.P_DRIVE_FULL];
+            eah = actuatorHalf;
+            ea = actuatorFull;
+            edh = driveHalf;
+            ed = driveFull;
           } else {
             eah = ta > 0 ? exp(-half / ta) : 0;
             ea = eah * eah;
@@ -188,29 +226,30 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           const xh = l0 + l1 * half + la * eah + (ld + le * half) * edh;
           xe = l0 + l1 * h + la * ea + (ld + le * h) * ed;
           if (throttleCells > 1 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
-            const share = ((xe > high ? high : low) - x) / (xe - x);
-            h *= Math.max(share, 0);
+            const part = ((xe > high ? high : low) - x) / (xe - x);
+            h *= part > 0 ? part : 0;
             continue;
           }
 
-          const middle = from + (timed ? half : half * (v + half * 0.5 * acceleration));
-          const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
-          const normal = mass * (rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle);
-          r0 = normal * c0;
-          r1 = normal * c1;
-          r2 = normal * c2;
+          const middle = from + (timed ? half : half * v);
+          const air = air0 + air1 * middle;
+          const normal = cos0 + cos1 * middle;
+          const r0 = normal * roll0;
+          const r1 = normal * roll1;
+          const r2 = normal * roll2;
+          const u1 = wind0 + wind1 * from;
           let near = 0;
           let slope = air * cda;
           if (crosswind) {
             const side = rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle;
-            tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air);
+            tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air * inverse);
             near = tangent.out[0];
             slope = tangent.out[1];
-          } else if (v + wind0 + wind1 * from < 0) slope = -slope;
-          let b0 = cells[c + 2];
-          let b1 = cells[c + 3];
-          let b2 = cells[c + 4];
-          let b3 = cells[c + 5];
+          } else if (v + u1 < 0) slope = -slope;
+          let b0 = c0;
+          let b1 = c1;
+          let b2 = c2;
+          let b3 = c3;
           if (derated) {
             const d = rows[row + at.R_DERATE] + rows[row + at.R_DERATE + 1] * middle;
             b0 = d * (b0 + a0) - a0;
@@ -219,42 +258,94 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
             b3 *= d;
           }
 
-          w = v + wind0 + wind1 * from;
-          f1 = a0 + a1 * v + x * (b0 + v * (b1 + v * b2) + (b3 === 0 ? 0 : b3 / v));
-          d1 = w * (near + slope * w);
-          k1 = (f1 - d1 - r0 - v * (r1 + v * r2) - sin0 - sin1 * from) * inverse;
-          if (pieces === 0 && v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT) {
-            brake = effectiveMass * (k1 + (v - brakeSpeed) / at.BRAKE_TIME);
-            if (!(brake > 0)) brake = 0;
-            if (brake > effectiveMass * at.BRAKE_LIMIT) brake = effectiveMass * at.BRAKE_LIMIT;
+          // Stage i: drive f0 + v (f1 + v f2) + e / v, air w (near + slope w) at w = v + u, slope sin0 + sin1 q.
+          const f01 = a0 + x * b0;
+          const f11 = a1 + x * b1;
+          const f21 = x * b2;
+          const e1 = x * b3;
+          force = f01 + v * (f11 + v * f21) + (b3 === 0 ? 0 : e1 / v);
+          const d1 = (v + u1) * (near + slope * (v + u1));
+          k1 = force - d1 - r0 - v * (r1 + v * r2) - sin0 - sin1 * from;
+          if (pieces === 0 && v > brakeSpeed - BRAKE_MARGIN) {
+            brake = k1 + (v - brakeSpeed) / at.BRAKE_TIME;
+            brake = brake > 0 ? (brake < at.BRAKE_LIMIT ? brake : at.BRAKE_LIMIT) : 0;
           }
-          k1 -= brake * inverse;
+          k1 -= brake;
+          const resist = r0 + sin0 + brake;
 
-          p2 = from + (timed ? half : half * v);
-          v2 = v + half * k1;
-          w = v2 + wind0 + wind1 * p2;
-          f2 = a0 + a1 * v2 + xh * (b0 + v2 * (b1 + v2 * b2) + (b3 === 0 ? 0 : b3 / v2));
-          d2 = w * (near + slope * w);
-          const k2 = (f2 - d2 - r0 - v2 * (r1 + v2 * r2) - sin0 - sin1 * p2 - brake) * inverse;
+          const q2 = from + (timed ? half : half * v);
+          const u2 = wind0 + wind1 * q2;
+          const f0h = a0 + xh * b0;
+          const f1h = a1 + xh * b1;
+          const f2h = xh * b2;
+          const eh = xh * b3;
+          const g1h = f1h - r1 - near;
+          const g2h = f2h - r2 - slope;
+          const v2 = v + half * k1;
+          const k2 =
+            f0h -
+            resist -
+            sin1 * q2 -
+            u2 * (near + slope * u2) +
+            (b3 === 0 ? 0 : eh / v2) +
+            v2 * (g1h - 2 * slope * u2 + v2 * g2h);
 
-          p3 = from + (timed ? half : half * v2);
-          v3 = v + half * k2;
-          w = v3 + wind0 + wind1 * p3;
-          f3 = a0 + a1 * v3 + xh * (b0 + v3 * (b1 + v3 * b2) + (b3 === 0 ? 0 : b3 / v3));
-          d3 = w * (near + slope * w);
-          const k3 = (f3 - d3 - r0 - v3 * (r1 + v3 * r2) - sin0 - sin1 * p3 - brake) * inverse;
+          const q3 = from + (timed ? half : half * v2);
+          const u3 = wind0 + wind1 * q3;
+          const v3 = v + half * k2;
+          const k3 =
+            f0h -
+            resist -
+            sin1 * q3 -
+            u3 * (near + slope * u3) +
+            (b3 === 0 ? 0 : eh / v3) +
+            v3 * (g1h - 2 * slope * u3 + v3 * g2h);
 
-          p4 = from + (timed ? h : h * v3);
-          v4 = v + h * k3;
-          w = v4 + wind0 + wind1 * p4;
-          f4 = a0 + a1 * v4 + xe * (b0 + v4 * (b1 + v4 * b2) + (b3 === 0 ? 0 : b3 / v4));
-          d4 = w * (near + slope * w);
-          k4 = (f4 - d4 - r0 - v4 * (r1 + v4 * r2) - sin0 - sin1 * p4 - brake) * inverse;
+          const q4 = from + (timed ? h : h * v3);
+          const u4 = wind0 + wind1 * q4;
+          const f04 = a0 + xe * b0;
+          const f14 = a1 + xe * b1;
+          const f24 = xe * b2;
+          const e4 = xe * b3;
+          const v4 = v + h * k3;
+          k4 =
+            f04 -
+            resist -
+            sin1 * q4 -
+            u4 * (near + slope * u4) +
+            (b3 === 0 ? 0 : e4 / v4) +
+            v4 * (f14 - r1 - near - 2 * slope * u4 + v4 * (f24 - r2 - slope));
 
-          const sixth = h / 6;
+          const sixth = h * SIXTH;
           ve = v + sixth * (k1 + 2 * (k2 + k3) + k4);
           ds = sixth * (v + 2 * (v2 + v3) + v4);
           dq = timed ? h : ds;
+
+          // Powers of the stages.
+          const s1 = v * v;
+          const s2 = v2 * v2;
+          const s3 = v3 * v3;
+          const s4 = v4 * v4;
+          work =
+            sixth *
+            (f01 * v +
+              s1 * (f11 + v * f21) +
+              e1 +
+              2 * (f0h * (v2 + v3) + s2 * (f1h + v2 * f2h) + s3 * (f1h + v3 * f2h) + 2 * eh) +
+              f04 * v4 +
+              s4 * (f14 + v4 * f24) +
+              e4);
+          airWork =
+            sixth *
+            (v * d1 +
+              2 *
+                (v2 * (v2 + u2) * (near + slope * (v2 + u2)) + v3 * (v3 + u3) * (near + slope * (v3 + u3))) +
+              v4 * (v4 + u4) * (near + slope * (v4 + u4)));
+          rollingWork =
+            r0 * ds +
+            sixth *
+              (s1 * (r1 + r2 * v) + 2 * (s2 * (r1 + r2 * v2) + s3 * (r1 + r2 * v3)) + s4 * (r1 + r2 * v4));
+          climbWork = sin0 * ds + sixth * sin1 * (from * v + 2 * (q2 * v2 + q3 * v3) + q4 * v4);
           if (trial >= TRIALS) break;
           const miss = room - dq;
           if (miss < -KNOT || (aimed && miss > KNOT && h < most)) {
@@ -274,30 +365,16 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
         if (pieces === 0) {
           s[at.SAMPLE_ACCELERATION] = k1;
-          s[at.SAMPLE_DRIVE_FORCE] = f1;
+          s[at.SAMPLE_DRIVE_FORCE] = effectiveMass * force;
           s[at.SAMPLE_RATED] = rated ? 1 : 0;
           slope0 = filter > 0 ? (v - z) / filter : k1;
         }
-        const sixth = h / 6;
-        const work = sixth * (f1 * v + 2 * (f2 * v2 + f3 * v3) + f4 * v4);
         if (work >= 0) push += work;
         else hold += work;
-        const airWork = sixth * (d1 * v + 2 * (d2 * v2 + d3 * v3) + d4 * v4);
-        const square = v * v;
-        const square2 = v2 * v2;
-        const square3 = v3 * v3;
-        const square4 = v4 * v4;
-        const rollingWork =
-          r0 * ds +
-          sixth *
-            (square * (r1 + r2 * v) +
-              2 * (square2 * (r1 + r2 * v2) + square3 * (r1 + r2 * v3)) +
-              square4 * (r1 + r2 * v4));
-        const climbWork = sin0 * ds + sixth * sin1 * (from * v + 2 * (p2 * v2 + p3 * v3) + p4 * v4);
         aero += airWork;
         rolling += rollingWork;
         climb += climbWork;
-        const kinetic = 0.5 * effectiveMass * (ve * ve - square);
+        const kinetic = 0.5 * (ve + v) * (ve - v);
         magnitude +=
           (work >= 0 ? work : -work) +
           (airWork >= 0 ? airWork : -airWork) +
@@ -311,9 +388,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           const cubic = h > 1e-3 ? (k1 + k4 - (2 * (ve - v)) / h) / (h * h) : 0;
           const bend = h > 0 ? (k4 - k1) / h - 3 * cubic * h : 0;
           const fixed = 6 * filter * filter * filter * cubic;
-          const ef = h === step ? p[at.P_FILTER_FULL] : exp(-h / filter);
-          const begin = v - filter * k1 + filter * filter * bend - fixed;
-          z = ve - filter * k4 + filter * filter * (bend + 6 * cubic * h) - fixed + (z - begin) * ef;
+          const ef = h === step ? filterFull : exp(-h / filter);
+          const start = v - filter * k1 + filter * filter * bend - fixed;
+          z = ve - filter * k4 + filter * filter * (bend + 6 * cubic * h) - fixed + (z - start) * ef;
         } else z = ve;
         y = y1 + l1 * h + ya * ea;
         if (rated && h === most && most < left) y = gap > 0 ? u - rateGap : u + rateGap;
@@ -353,20 +430,20 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
     s[at.SAMPLE_SPEED] = v0;
     s[at.SAMPLE_ACTUATOR] = y0;
-    s[at.SAMPLE_BRAKE_FORCE] = brake;
+    s[at.SAMPLE_BRAKE_FORCE] = effectiveMass * brake;
     s[at.SAMPLE_TIME] = elapsed;
     s[at.SAMPLE_DISTANCE] = travelled;
-    s[at.SAMPLE_DRIVE_WORK] = push + hold;
-    s[at.SAMPLE_PUSH] = push;
-    s[at.SAMPLE_BRAKE_WORK] = brake * travelled;
+    s[at.SAMPLE_DRIVE_WORK] = effectiveMass * (push + hold);
+    s[at.SAMPLE_PUSH] = effectiveMass * push;
+    s[at.SAMPLE_BRAKE_WORK] = effectiveMass * brake * travelled;
     recordSample(s, p, sums);
-    s[at.DRIVE_WORK] += push;
-    s[at.REGENERATION_WORK] += hold;
-    s[at.AERO_WORK] += aero;
-    s[at.ROLLING_WORK] += rolling;
-    s[at.CLIMB_WORK] += climb;
-    s[at.BRAKE_WORK] += brake * travelled;
-    s[at.WORK_MAGNITUDE] += magnitude;
+    s[at.DRIVE_WORK] += effectiveMass * push;
+    s[at.REGENERATION_WORK] += effectiveMass * hold;
+    s[at.AERO_WORK] += effectiveMass * aero;
+    s[at.ROLLING_WORK] += effectiveMass * rolling;
+    s[at.CLIMB_WORK] += effectiveMass * climb;
+    s[at.BRAKE_WORK] += effectiveMass * brake * travelled;
+    s[at.WORK_MAGNITUDE] += effectiveMass * magnitude;
     s[at.TRAVELLED] += travelled;
     s[at.SPEED] = v;
     s[at.STATION] = q;

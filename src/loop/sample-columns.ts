@@ -46,29 +46,31 @@ export function sampleColumns(): SampleColumns {
       more.set(rows);
       rows = more;
     }
-    const row = [
-      time,
-      distance,
-      s[BUS_TARGET] * p[at.P_TO_TRUE],
-      s[BUS_REFERENCE] * p[at.P_TO_TRUE],
-      s[at.SAMPLE_SPEED],
-      s[BUS_MEASURED],
-      s[BUS_COMMAND],
-      s[at.SAMPLE_ACTUATOR],
-      s[BUS_PROPORTIONAL],
-      s[BUS_INTEGRAL],
-      s[BUS_FEEDFORWARD],
-      s[at.SAMPLE_DRIVE_FORCE],
-      s[at.SAMPLE_BRAKE_FORCE],
-      s[at.SAMPLE_ACCELERATION],
-      s[at.SAMPLE_LIMIT],
-      gear,
-    ];
-    rows.set(row, width * size++);
+    const row = width * size++;
+    rows[row] = time;
+    rows[row + 1] = distance;
+    rows[row + 2] = s[BUS_TARGET] * p[at.P_TO_TRUE];
+    rows[row + 3] = s[BUS_REFERENCE] * p[at.P_TO_TRUE];
+    rows[row + 4] = s[at.SAMPLE_SPEED];
+    rows[row + 5] = s[BUS_MEASURED];
+    rows[row + 6] = s[BUS_COMMAND];
+    rows[row + 7] = s[at.SAMPLE_ACTUATOR];
+    rows[row + 8] = s[BUS_PROPORTIONAL];
+    rows[row + 9] = s[BUS_INTEGRAL];
+    rows[row + 10] = s[BUS_FEEDFORWARD];
+    rows[row + 11] = s[at.SAMPLE_DRIVE_FORCE];
+    rows[row + 12] = s[at.SAMPLE_BRAKE_FORCE];
+    rows[row + 13] = s[at.SAMPLE_ACCELERATION];
+    rows[row + 14] = s[at.SAMPLE_LIMIT];
+    rows[row + 15] = gear;
   };
   const finish = (): FullSeries => {
-    const column = (k: number): Float64Array =>
-      Float64Array.from({ length: size }, (_, i) => rows[width * i + k]!);
+    const column = (k: number): Float64Array => {
+      // A plain loop: `from` with a callback costs twenty times as much.
+      const values = new Float64Array(size);
+      for (let i = 0; i < size; i++) values[i] = rows[width * i + k]!;
+      return values;
+    };
     const numbers = Object.fromEntries(NUMBERS.map((name, k) => [name, column(k)])) as Record<
       (typeof NUMBERS)[number],
       Float64Array
