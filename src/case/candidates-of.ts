@@ -1,11 +1,11 @@
 import type { AntiWindup, Candidate, ControllerSetup } from '../control/setup.ts';
-import { InputError } from '../problems/input-error.ts';
+import { InputError, type Problem } from '../problems/input-error.ts';
 import { airAlong } from '../road/air.ts';
 import { fromPct } from '../units/convert.ts';
 import { type Surroundings, stillAndLevel } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateFile } from './case-schema.ts';
-import { gainsOf } from './gains-of.ts';
+import { type CandidateContext, gainsOf } from './gains-of.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import { roadOptionsOf } from './road-of.ts';
 import { onlyCoasts } from './vehicle-of.ts';
@@ -13,18 +13,9 @@ import { placeOf } from './yaml-source.ts';
 
 type FileOf<K extends ControllerSetup['kind']> = Extract<CandidateFile, { kind: K }>;
 
-/** What a candidate is worked out with. */
-interface Context {
-  readonly document: CaseDocument;
-  readonly vehicle: Vehicle;
-  readonly surroundings: Surroundings;
-  /** Of the candidate in the file's list. */
-  readonly index: number;
-}
-
 /** A kind of controller without a line here does not compile. */
 const setupOf: {
-  readonly [K in ControllerSetup['kind']]: (file: FileOf<K>, context: Context) => ControllerSetup;
+  readonly [K in ControllerSetup['kind']]: (file: FileOf<K>, context: CandidateContext) => ControllerSetup;
 } = {
   locked: (file, context) => ({ kind: 'locked', throttle: lockedThrottle(file, context) }),
   pi: (file, context) => {
@@ -50,18 +41,29 @@ const setupOf: {
  *
  * @param vehicle that they drive, as loaded
  * @param surroundings of the operating points of designs; by default level, still, the air of the case at sea level
- * @throws InputError where a design cannot be met or a throttle lies outside the drive's range
+ * @throws InputError with a problem for every candidate whose design cannot be met, whose throttle lies outside the
+ *   drive's range, or that needs a drive where there is none
  */
 export function candidatesOf(
   document: CaseDocument,
   vehicle: Vehicle,
   surroundings: Surroundings = atSeaLevel(document),
 ): Candidate[] {
-  return document.file.candidates.map((file, index) => {
+  const problems: Problem[] = [];
+  const candidates = document.file.candidates.flatMap((file, index): Candidate[] => {
     const context = { document, vehicle, surroundings, index };
-    const controller = file.kind === 'locked' ? setupOf.locked(file, context) : setupOf.pi(file, context);
-    return { name: file.name ?? file.kind, controller };
+    try {
+      const controller = file.kind === 'locked' ? setupOf.locked(file, context) : setupOf.pi(file, context);
+      return [{ name: file.name ?? file.kind, controller }];
+    } catch (error) {
+      if (!(error instanceof InputError)) throw error;
+      problems.push(...error.problems);
+      return [];
+    }
   });
+  const [first, ...others] = problems;
+  if (first !== undefined) throw new InputError(first, ...others);
+  return candidates;
 }
 
 function atSeaLevel(document: CaseDocument): Surroundings {
@@ -69,7 +71,7 @@ function atSeaLevel(document: CaseDocument): Surroundings {
   return stillAndLevel(density[0]!, temperature[0]!);
 }
 
-function lockedThrottle(file: FileOf<'locked'>, context: Context): number | 'level' {
+function lockedThrottle(file: FileOf<'locked'>, context: CandidateContext): number | 'level' {
   if (!('throttle_pct' in file)) {
     needsDrive(context);
     return file.throttle;
@@ -87,7 +89,7 @@ function lockedThrottle(file: FileOf<'locked'>, context: Context): number | 'lev
   return throttle;
 }
 
-function needsDrive({ document, vehicle, index }: Context): void {
+function needsDrive({ document, vehicle, index }: CandidateContext): void {
   if (!onlyCoasts(vehicle)) return;
   throw new InputError({
     code: 'no-drive',

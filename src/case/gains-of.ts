@@ -1,11 +1,16 @@
+import { designDroop } from '../control/design-droop.ts';
+import { designSettling } from '../control/design-settling.ts';
 import type { DesignRecord } from '../control/setup.ts';
-import { InputError } from '../problems/input-error.ts';
-import { fromPctPerKmh } from '../units/convert.ts';
+import { InputError, type Problem } from '../problems/input-error.ts';
+import { fromKmh, fromPct, fromPctPerKmh } from '../units/convert.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateFile } from './case-schema.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import { placeOf } from './yaml-source.ts';
+
+type PiFile = Extract<CandidateFile, { kind: 'pi' }>;
+type DesignedFile = Extract<PiFile, { design: unknown }>;
 
 /** Gains of a PI candidate [1/(m/s)], [1/(m/s)/s], and the design they come from; null: typed. */
 export interface GainsOfCandidate {
@@ -14,23 +19,60 @@ export interface GainsOfCandidate {
   readonly record: DesignRecord | null;
 }
 
-interface Context {
+/** What a candidate of the case is worked out with. */
+export interface CandidateContext {
   readonly document: CaseDocument;
   readonly vehicle: Vehicle;
+  /** Of the operating point of a design. */
   readonly surroundings: Surroundings;
+  /** Of the candidate in the file's list. */
   readonly index: number;
 }
 
-/** The gains as typed, or as worked out from what was asked. */
-export function gainsOf(file: Extract<CandidateFile, { kind: 'pi' }>, context: Context): GainsOfCandidate {
-  if (!('design' in file)) {
-    const kp = fromPctPerKmh(file.kp_pct_per_kmh);
-    const ki = 'ti_s' in file ? kp / file.ti_s : fromPctPerKmh(file.ki_pct_per_kmh_s);
-    return { kp, ki, record: null };
+/**
+ * The gains as typed, or as worked out from what was asked.
+ *
+ * @throws InputError at the candidate's `design`, where it cannot be met
+ */
+export function gainsOf(file: PiFile, context: CandidateContext): GainsOfCandidate {
+  if ('design' in file) return placed(context, () => designed(file, context));
+  const kp = fromPctPerKmh(file.kp_pct_per_kmh);
+  const ki = 'ti_s' in file ? kp / file.ti_s : fromPctPerKmh(file.ki_pct_per_kmh_s);
+  return { kp, ki, record: null };
+}
+
+function designed(
+  file: DesignedFile,
+  { document, vehicle, surroundings }: CandidateContext,
+): GainsOfCandidate {
+  const { design } = file;
+  const point = {
+    vehicle,
+    surroundings,
+    at: fromKmh(design.at_kmh ?? document.file.hold.set_speed_kmh),
+    sample: file.sample_s,
+    computingDelay: file.computing_delay_s,
+    integration: file.integration,
+    setpointWeight: file.setpoint_weight,
+  };
+  if ('droop_kmh' in design)
+    return designDroop({
+      ...point,
+      droop: fromKmh(design.droop_kmh),
+      gradeStep: fromPct(design.grade_step_pct),
+      damping: design.damping,
+    });
+  return designSettling({ ...point, settling: design.settling_s, overshoot: fromPct(design.overshoot_pct) });
+}
+
+/** Brings what a design refuses to its place in the file. */
+function placed<T>({ document, index }: CandidateContext, work: () => T): T {
+  try {
+    return work();
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    const place = placeOf(document.source, ['candidates', index, 'design']);
+    const [first, ...others] = error.problems.map((problem): Problem => ({ ...problem, place }));
+    throw first === undefined ? error : new InputError(first, ...others);
   }
-  throw new InputError({
-    code: 'design-not-met',
-    place: placeOf(context.document.source, ['candidates', context.index, 'design']),
-    message: 'the design cannot be met',
-  });
 }

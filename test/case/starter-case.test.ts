@@ -1,7 +1,9 @@
 import { expect, it } from 'vitest';
+import { candidatesOf } from '../../src/case/candidates-of.ts';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { starterCase } from '../../src/case/starter-case.ts';
+import { vehicleOf } from '../../src/case/vehicle-of.ts';
 
 const files = new Map(starterCase().map(({ name, text }) => [name, text]));
 
@@ -45,4 +47,11 @@ it('brings a track with rising distances, up and down again', () => {
   const heights = points.map(([, z]) => z);
   // 600 m at 2 %, 500 m at 5 %, 300 m at 8 %, 400 m at 3 %: 12 + 25 + 24 + 12 m above the start at 120 m.
   expect(Math.max(...heights)).toBeCloseTo(193, 6);
+});
+
+it('has designs that its vehicle can meet', () => {
+  const document = readCaseFile(files.get('case.yaml')!, 'case.yaml');
+  const vehicle = vehicleOf(readVehicleFile(files.get('vehicle.yaml')!, 'vehicle.yaml'));
+  const candidates = candidatesOf(document, vehicle);
+  expect(candidates.map(({ name }) => name)).toEqual(['locked', 'from-the-hill', 'settles-in-30s', 'typed']);
 });
