@@ -10,8 +10,8 @@ import { segmentStrip } from './charts/segment-strip.ts';
 import type { Html } from './html.ts';
 import { planMap } from './model/plan-map.ts';
 import { viewOf } from './model/view.ts';
-import type { ReportOptions } from './render-report.ts';
 import { FILE_PAINT } from './paint.ts';
+import type { ReportOptions } from './render-report.ts';
 
 export interface ChartFile {
   /** File name, with its ending. */

@@ -56,12 +56,12 @@ const DEMAND = [
 // Blue for too slow, orange for too fast: equal steps in lightness on both sides, so the sign needs the second cue.
 const DIVERGING = [
   shade('#004f7c', '#9ad4f5'),
-  shade('#3f8fbf', '#5aa5d1'),
+  shade('#2f7fb5', '#5aa5d1'),
   shade('#a9cfe4', '#2f5c78'),
-  shade('#e4e7ea', '#3a4147'),
+  shade('#c9d0d6', '#444c54'),
   shade('#f6cf8a', '#7a5a1c'),
-  shade('#e08a1e', '#d08a2c'),
-  shade('#9a4a00', '#ffd08a'),
+  shade('#c06f00', '#d08a2c'),
+  shade('#7d3a00', '#ffd08a'),
 ];
 const ENERGY = [
   shade('#0072b2', '#56b4e9'),

@@ -17,7 +17,7 @@ a:focus-visible,summary:focus-visible,.scroll:focus-visible{outline:3px solid va
 .sheet{max-width:1240px;margin:0 auto;padding:0 1.25rem;display:grid;grid-template-columns:11.5rem minmax(0,1fr);column-gap:2.5rem}
 header{grid-column:1/-1;border-bottom:3px solid var(--ink);padding:1.6rem 0 .9rem;margin-bottom:1.4rem}
 header h1{font-size:1.75rem;line-height:1.2;margin:0 0 .5rem;letter-spacing:-.01em;overflow-wrap:anywhere}
-.memo{display:grid;grid-template-columns:repeat(auto-fit,minmax(11rem,1fr));gap:.2rem 1.5rem;margin:0;font-size:.88rem}
+.memo{display:flex;flex-wrap:wrap;gap:.2rem 2rem;margin:0;max-width:none;font-size:.88rem}
 .memo div{display:flex;gap:.5rem}
 .memo dt{color:var(--muted)}
 .memo dd{margin:0;overflow-wrap:anywhere}
@@ -57,7 +57,10 @@ th,td{text-align:left;vertical-align:top;padding:.32rem .9rem .32rem 0;border-bo
 thead th{border-bottom:2px solid var(--muted);vertical-align:bottom;line-height:1.25}
 tbody th{font-weight:600}
 .num{text-align:right}
-td .small{white-space:normal}
+td.num,tbody th{white-space:nowrap}
+td.num .small{white-space:nowrap}
+table .small{font-size:.94em}
+.wrap{white-space:normal;display:inline-block;min-width:6.5rem}
 .verdict{font-weight:700;white-space:nowrap}
 .verdict.good{color:var(--good)}.verdict.bad{color:var(--bad)}.verdict.open{color:var(--open)}
 .cards{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,25rem),1fr));gap:1.2rem;margin:1rem 0}
@@ -73,11 +76,12 @@ td .small{white-space:normal}
 .equations dt{font-family:Georgia,'Times New Roman','DejaVu Serif',serif;font-size:1.05rem;margin-top:.6rem;overflow-wrap:anywhere}
 .equations dd{margin:0 0 0 1.2rem;font-size:.9rem;color:var(--muted)}
 code{font-family:ui-monospace,'SF Mono',Consolas,'DejaVu Sans Mono',monospace;font-size:.92em;overflow-wrap:anywhere}
-.hash{font-size:.8em}
+th code,td code{white-space:nowrap}
+td .hash{font-size:.8em;white-space:normal}
 summary{cursor:pointer;padding:.4rem 0;font-weight:600}
 footer{grid-column:1/-1;border-top:1px solid var(--grid);padding:1rem 0 2rem;font-size:.86rem;color:var(--muted)}
 @media (max-width:1000px){.sheet{grid-template-columns:minmax(0,1fr)}nav ol{position:static;display:flex;flex-wrap:wrap;gap:0 1.1rem;margin-bottom:1.5rem}nav .n{min-width:0}}
-@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}}
+@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}td:not(.num){min-width:8rem}tbody th{position:sticky;left:0;background:var(--page)}}
 @media print{
 @page{margin:14mm}
 :root{color-scheme:light;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}
@@ -92,9 +96,12 @@ section{margin-bottom:1.2rem}
 h2,h3,.keyline{break-after:avoid}
 figure,.card,tr,.answer,.caution{break-inside:avoid}
 thead{display:table-header-group}
-.cards{display:block}
-.card{margin-bottom:5mm}
-.card svg:not(.key){max-width:13cm}
+.cards{grid-template-columns:1fr 1fr;gap:4mm}
+.card{padding:2mm 3mm}
+.card p,.card ul{font-size:8pt}
+.card table{font-size:7pt}
+.keys,.keyline,.facts{break-after:avoid}
+p,li{orphans:3;widows:3}
 .hash{font-size:6.4pt}
 a{color:inherit;text-decoration:none}
 *{print-color-adjust:exact;-webkit-print-color-adjust:exact}

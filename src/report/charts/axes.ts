@@ -35,15 +35,15 @@ export function bottomAxis(canvas: Canvas, box: Box, x: Scale, name: string | nu
 /** Height that `bottomAxis` takes below its plot, with a name. */
 export const BOTTOM_AXIS_HEIGHT = 36;
 
-/** Axis at the left: grid lines and figures; its quantity with unit stands level, above the plot. */
+/** Axis at the left: grid lines and figures; its quantity with unit stands level, above the plot (empty: the caller writes it). */
 export function leftAxis(canvas: Canvas, box: Box, y: Scale, name: string, count?: number): Html {
   const { paint } = canvas;
-  const ticks = y.ticks(count ?? Math.max(2, Math.floor(box.height / 32)));
+  const ticks = y.ticks(count ?? Math.max(2, Math.floor(box.height / 40)));
   const digits = tickDigits(ticks);
   return html`<g>${ticks.map(
     (tick) =>
       html`${segment(box.left, y(tick), box.left + box.width, y(tick), {
         stroke: tick === 0 ? paint.muted : paint.grid,
       })}${label(box.left - 6, y(tick) + 4, fixed(tick, digits), { anchor: 'end', size: 11, fill: paint.muted })}`,
-  )}${label(0, box.top - 9, name, { bold: true, fill: paint.ink })}</g>`;
+  )}${name !== '' && label(0, box.top - 9, name, { bold: true, fill: paint.ink })}</g>`;
 }

@@ -41,7 +41,11 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const x = scaleOf([start, end], upper.left, upper.left + width);
   const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
   const { throttleMin } = view.result.vehicle.drive;
-  const shares = scaleOf([Math.min(0, toPct(throttleMin)) - 5, 125], lower.top + lower.height, lower.top);
+  const shares = scaleOf(
+    [hill.share < -1 || throttleMin < 0 ? -125 : -5, 125],
+    lower.top + lower.height,
+    lower.top,
+  );
   const over = (
     scale: Scale,
     values: Float64Array,
@@ -78,11 +82,12 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       lower.left + width,
       shares(100),
       { stroke: paint.warn, dash: '4 2' },
-    )}${shown.map(({ candidate, outcome }) =>
-      stroked(
-        linePath(over(shares, outcome.picture.command, toPct, outcome.picture)),
-        lookOf(candidate, canvas),
-      ),
+    )}${segment(lower.left, shares(-100), lower.left + width, shares(-100), { stroke: paint.warn, dash: '4 2' })}${shown.map(
+      ({ candidate, outcome }) =>
+        stroked(
+          linePath(over(shares, outcome.picture.command, toPct, outcome.picture)),
+          lookOf(candidate, canvas),
+        ),
     )}`,
   )}${bottomAxis({ ...canvas, narrow: true }, upper, x, null)}${bottomAxis({ ...canvas, narrow: true }, lower, x, 'time from the foot / s')}`;
   const words = {

@@ -16,6 +16,7 @@ import {
   rectangle,
   segment,
   stroked,
+  textWidth,
 } from './canvas.ts';
 import { envelopePath, linePath, type Point } from './paths.ts';
 
@@ -139,10 +140,7 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, last: boo
     box,
     y,
     look.closed && look.lane === 'error' ? `${look.name}, near the band` : look.name,
-  )}${look.lane === 'error' && label(box.left + box.width - 4, y(band) - 4, `${bandText(view.result.band, view.speed)} band`, { anchor: 'end', size: 11, fill: paint.muted })}${clipped(
-    `${id}-c`,
-    drawn,
-  )}${endMarks(view, canvas, x, box)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
+  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${endMarks(view, canvas, x, box)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
     canvas,
     box,
     x,
@@ -175,6 +173,14 @@ function curveMarks(
     linePath(points('mean')),
     { stroke, width: candidate.locked ? 1.4 : 1.6, dash: candidate.dash },
   )}</g>`;
+}
+
+/** The band's width, on a plate of the page's colour at its upper edge. */
+function bandLabel(view: View, { paint }: Canvas, box: Box, edge: number): Html {
+  const text = `band ${bandText(view.result.band, view.speed)}`;
+  const width = textWidth(text, 11) + 8;
+  const plate = { left: box.left + 6, top: edge - 16, width, height: 15 };
+  return html`${rectangle(plate, paint.page, 0.9)}${label(box.left + 10, edge - 5, text, { size: 11, fill: paint.ink })}`;
 }
 
 /** Where a run ended before the end of the road. */

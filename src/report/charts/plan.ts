@@ -5,18 +5,29 @@ import { binCurve } from '../model/bin-curves.ts';
 import { errorClass, errorClasses } from '../model/error-classes.ts';
 import type { PlanMap } from '../model/plan-map.ts';
 import type { CandidateView, View } from '../model/view.ts';
+import type { Paint } from '../paint.ts';
 import { fixed, lengthText } from '../quantity.ts';
-import { type Box, type Canvas, drawing, label, rectangle, segment, stroked, tenth } from './canvas.ts';
+import {
+  type Box,
+  type Canvas,
+  drawing,
+  type LineLook,
+  label,
+  rectangle,
+  segment,
+  stroked,
+  tenth,
+} from './canvas.ts';
 import type { Point } from './paths.ts';
 
-/** Line widths by class: what is far off is thick, too fast has a casing; so the classes differ without colour. */
+/** Line widths by class: what is far off is thick, what is too fast beyond the band has a casing; so the classes differ without colour. */
 const WIDTHS = [6, 4.5, 3, 2.2, 3, 4.5, 6] as const;
 
 /** The route from above, coloured by the speed error of one candidate: worst of each stretch of the drawing. */
 export function planChart(view: View, candidate: CandidateView, map: PlanMap, canvas: Canvas): Html {
   const { paint, narrow } = canvas;
   const height = narrow ? 300 : 420;
-  const keyWidth = narrow ? 0 : 190;
+  const keyWidth = narrow ? 0 : 225;
   const box: Box = { left: 16, top: 16, width: canvas.width - 32 - keyWidth, height: height - 32 };
   const place = placed(map, box);
   const bins = candidate.result.bins;
@@ -50,20 +61,24 @@ export function planChart(view: View, candidate: CandidateView, map: PlanMap, ca
   all.push(place.point(road.size - 1));
   const coloured = paths.map((runs, index) => {
     const path = runs.map(d).join('');
-    return html`${index > 3 && stroked(path, { stroke: paint.ink, width: WIDTHS[index]! + 2 })}${stroked(path, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}`;
+    return html`${index > 4 && edges((look) => stroked(path, look), index, paint)}${stroked(path, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}`;
   });
   const order = [3, 2, 4, 1, 5, 0, 6].map((index) => coloured[index]!);
   const words = {
     title: `The route in plan, coloured by the speed error of ${candidate.name}`,
-    desc: `North is up. ${lengthText(view.length)} from start to end. Thick: far from the set speed; with a dark edge: too fast.`,
+    desc: `North is up. ${lengthText(view.length)} from start to end. Thick: far from the set speed; with edges: too fast.`,
   };
   return drawing(
     canvas,
     height,
     words,
-    html`${rectangle({ left: 0, top: 0, width: canvas.width, height }, paint.ground)}${stroked(d(all), { stroke: paint.muted, width: 1 })}${order}${places(view, place, canvas)}${northArrow(canvas, box)}${scaleBar(canvas, box, place.scale)}${!narrow && key(view, canvas)}`,
+    html`${stroked(d(all), { stroke: paint.muted, width: 1 })}${order}${places(view, place, canvas)}${northArrow(canvas, box)}${scaleBar(canvas, box, place.scale)}${!narrow && key(view, canvas)}`,
   );
 }
+
+/** A thin line on both sides, apart from the colour by a gap: seen on light and dark. */
+const edges = (draw: (look: LineLook) => Html | null, index: number, paint: Paint): Html =>
+  html`${draw({ stroke: paint.ink, width: WIDTHS[index]! + 4.4 })}${draw({ stroke: paint.page, width: WIDTHS[index]! + 2.4 })}`;
 
 interface Placed {
   readonly point: (knot: number) => Point;
@@ -117,10 +132,10 @@ function places(view: View, place: Placed, { paint }: Canvas): Html {
   };
   const plate = (knot: number, text: string): Html | null => {
     const [x, y] = place.point(knot);
-    if (taken.some(([a, b]) => Math.abs(a - x) < 24 && Math.abs(b - y) < 16)) return null;
+    if (taken.some(([a, b]) => Math.abs(a - x) < 34 && Math.abs(b - y) < 18)) return null;
     taken.push([x, y]);
     const width = text.length * 7 + 7;
-    return html`<circle cx="${tenth(x)}" cy="${tenth(y)}" r="2.5" fill="${paint.ink}"/>${rectangle({ left: x + 7, top: y - 17, width, height: 16 }, paint.page, 0.9)}${label(x + 10, y - 5, text, { size: 11, bold: true, fill: paint.ink })}`;
+    return html`<circle cx="${tenth(x)}" cy="${tenth(y)}" r="2.5" fill="${paint.ink}"/>${rectangle({ left: x + 7, top: y - 17, width, height: 16 }, paint.page, 0.75)}${label(x + 10, y - 5, text, { size: 11, bold: true, fill: paint.ink })}`;
   };
   return html`${plate(0, 'start')}${plate(road.size - 1, 'end')}${hills.map((hill) => plate(knotAt((hill.from + hill.to) / 2), String(hill.number)))}`;
 }
@@ -139,11 +154,11 @@ function scaleBar({ paint }: Canvas, box: Box, scale: number): Html {
 }
 
 function key(view: View, { paint, width }: Canvas): Html {
-  const left = width - 196;
+  const left = width - 222;
   return html`${label(left, 26, `speed error / ${view.speed.axis}`, { bold: true, fill: paint.ink })}${errorClasses(
     view,
   ).map(({ index, words }) => {
     const y = 48 + index * 22;
-    return html`${index > 3 && segment(left, y - 4, left + 30, y - 4, { stroke: paint.ink, width: WIDTHS[index]! + 2 })}${segment(left, y - 4, left + 30, y - 4, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}${label(left + 38, y, words, { size: 11, fill: paint.ink })}`;
+    return html`${index > 4 && edges((look) => segment(left, y - 4, left + 30, y - 4, look), index, paint)}${segment(left, y - 4, left + 30, y - 4, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}${label(left + 38, y, words, { size: 11, fill: paint.ink })}`;
   })}`;
 }

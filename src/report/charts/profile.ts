@@ -36,7 +36,7 @@ export function profileChart(view: View, canvas: Canvas): Html {
   const { paint, id, narrow } = canvas;
   const box: Box = {
     left: narrow ? 40 : 52,
-    top: 30 + STRIP,
+    top: 24 + STRIP,
     width: canvas.width - (narrow ? 48 : 66),
     height: narrow ? 150 : 220,
   };
@@ -67,7 +67,7 @@ export function profileChart(view: View, canvas: Canvas): Html {
     Math.min(box.top + box.height, Math.max(box.top, point[1])),
   ];
   const body = html`<defs>${hatch(`${id}-up`, 'rising', paint.ink, 5)}${hatch(`${id}-down`, 'falling', paint.warn, 5)}</defs>
-${leftAxis(canvas, box, y, narrow ? 'elevation / m' : 'elevation above sea level / m')}
+${leftAxis(canvas, box, y, '')}${label(0, 12, narrow ? 'elevation / m' : 'elevation above sea level / m', { bold: true, fill: paint.ink })}
 ${road.masks.map((mask) => maskBand(x, box, mask.from, mask.to, mask.reason, canvas))}
 ${areas}
 ${

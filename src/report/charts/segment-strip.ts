@@ -29,7 +29,7 @@ export function segmentStrip(view: View, canvas: Canvas): Html {
       // Beyond the band a wedge says which way, for those who do not see the colour.
       const wedge =
         Math.abs(index - 3) >= 2 &&
-        html`<path d="M${tenth(middle - half)},${tenth(up ? top - 1 : top + 21)}H${tenth(middle + half)}L${tenth(middle)},${tenth(up ? top - 5 : top + 25)}Z" fill="${paint.ink}"/>`;
+        html`<path d="M${tenth(middle - half)},${tenth(up ? top + 8 : top + 12)}H${tenth(middle + half)}L${tenth(middle)},${tenth(up ? top + 3 : top + 17)}Z" fill="${paint.page}"/>`;
       return html`<g><title>${words}</title>${rectangle({ left: a, top, width: Math.max(0.6, b - a), height: 20 }, paint.diverging[index]!)}${wedge}</g>`;
     });
     const name = narrow

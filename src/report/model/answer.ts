@@ -139,7 +139,7 @@ function lockedClause(view: View, alone: boolean): string | null {
   if (locked.result.status !== 'completed') return `${subject} ${statusWords(locked)}`;
   const [low, high] = [locked.figures.worst_low_kmh, locked.figures.worst_high_kmh];
   if (typeof low !== 'number' || typeof high !== 'number') return `${subject} reached the end`;
-  return `${subject} strays from ${changeText(fromKmh(low), view.speed, 0)} to ${changeText(fromKmh(high), view.speed, 0)} of the set speed`;
+  return `${subject} strays from ${distanceFrom(low, view)} below the set speed to ${distanceFrom(high, view)} above it`;
 }
 
 function requirementClause(findings: readonly RequirementFinding[]): { words: string; standing: Standing } {
@@ -161,6 +161,10 @@ function requirementClause(findings: readonly RequirementFinding[]): { words: st
   const all = findings.length === 1 ? 'its one requirement' : `all ${findings.length} requirements`;
   return { words: `and meets ${all}`, standing: 'met' };
 }
+
+/** Size of an error of the table of figures [km/h], whole. */
+const distanceFrom = (errorKmh: number, view: View): string =>
+  speedText(fromKmh(Math.abs(errorKmh)), view.speed, 0);
 
 /** The sentence that opens the page. */
 export function answerOf(view: View): Answer {

@@ -1,4 +1,4 @@
-import { bandText, fixed } from '../quantity.ts';
+import { bandText, trimmed } from '../quantity.ts';
 import type { View } from './view.ts';
 
 /** Signed error in seven classes by multiples of the band: beyond 3, 1 to 3, within, and the same above. */
@@ -20,7 +20,7 @@ export function errorClass(error: number, band: number): number {
 /** The classes in words, with their limits in the reader's unit. */
 export function errorClasses(view: View): readonly ErrorClass[] {
   const { speed, result } = view;
-  const at = (edge: number) => fixed(speed.of(Math.abs(edge) * result.band), 1);
+  const at = (edge: number) => trimmed(speed.of(Math.abs(edge) * result.band), 1);
   const unit = speed.name;
   return [
     { index: 0, words: `more than ${at(3)} ${unit} too slow` },

@@ -73,7 +73,7 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
   const head = row.takesBand ? `${row.label}, ${bandText(view.result.band, view.speed)}` : row.label;
   return [
     [
-      html`<span title="${row.definition}">${head}</span>`,
+      html`<span class="wrap" title="${row.definition}">${head}</span>`,
       ...view.candidates.map((candidate, i) => {
         const text = figureText(candidate.figures[name], row.unit, view.speed);
         const value = values[i]!;
@@ -123,5 +123,5 @@ function rangeRow(view: View): HtmlValue[] {
     const [a, b] = [at(range.low), at(range.high)];
     return html`${changeText(fromKmh(range.low), view.speed)} to ${changeText(fromKmh(range.high), view.speed)}<svg class="bar" viewBox="0 0 ${BAR} 12" width="${BAR}" height="12" aria-hidden="true">${rectangle({ left: at(-band), top: 0, width: at(band) - at(-band), height: 12 }, PAGE_PAINT.band)}${segment(a, 6, b, 6, { stroke, width: 2.5 })}${segment(a, 2, a, 10, { stroke, width: 2 })}${segment(b, 2, b, 10, { stroke, width: 2 })}${segment(at(0), 0, at(0), 12, { stroke: PAGE_PAINT.ink })}</svg>`;
   });
-  return ['Furthest below to furthest above', ...cells];
+  return [html`<span class="wrap">Furthest below to furthest above</span>`, ...cells];
 }

@@ -77,7 +77,7 @@ function facts(view: View, hill: Hill): string {
       : above
         ? ` Full throttle would hold ${speedText(hill.sustainedSpeed, view.speed, 0)}.`
         : ` It would run away to ${speedText(hill.sustainedSpeed, view.speed, 0)}.`;
-  const grade = `${lengthText(hill.to - hill.from)} at ${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %, steepest ${gradeText(hill.maxGrade)}.`;
+  const grade = `${lengthText(hill.to - hill.from)} at ${gradeText(hill.meanGrade)} ±\u00a0${fixed(toPct(hill.meanGradeSd), 1)}\u00a0%, steepest ${gradeText(hill.maxGrade)}.`;
   return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
 
@@ -96,7 +96,6 @@ function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
     isNone(outcome.recovery)
       ? html`<span title="${outcome.recovery.none}">${NO_VALUE}</span>`
       : timeText(outcome.recovery),
-    typeof outcome.cause === 'string' ? outcome.cause.replaceAll('_', ' ') : NO_VALUE,
   ]);
   return table(
     `Hill ${hill.number}: outcomes`,
@@ -107,7 +106,6 @@ function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
       { head: 'time lost', number: true },
       { head: 'at limit', number: true },
       { head: 'recovery', number: true },
-      { head: 'cause' },
     ],
     rows,
   );
@@ -119,18 +117,29 @@ const lostText = (time: number): string => withUnit(fixed(time, Math.abs(time) <
 function sentences(runs: readonly Run[]): Html | null {
   const touched = runs.filter(({ outcome }) => outcome.affected && outcome.why !== '');
   if (touched.length === 0) return null;
-  return html`<ul class="why">${touched.map(
-    ({ candidate, outcome }) =>
-      html`<li><strong>${candidate.name}</strong>: ${outcome.why}${outcome.wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${outcome.wouldHold.map((remedy) => remedy.words).join(' ')}</span>`}</li>`,
-  )}</ul>`;
+  const groups = new Map<string, Run[]>();
+  for (const run of touched) {
+    const key = JSON.stringify([
+      run.outcome.cause,
+      run.outcome.why,
+      run.outcome.wouldHold.map((one) => one.words),
+    ]);
+    groups.set(key, [...(groups.get(key) ?? []), run]);
+  }
+  return html`<ul class="why">${[...groups.values()].map((group) => {
+    const { cause, why, wouldHold } = group[0]!.outcome;
+    const names = group.map(({ candidate }) => candidate.name).join(', ');
+    const tag = typeof cause === 'string' ? ` (${cause.replaceAll('_', ' ')})` : '';
+    return html`<li><strong>${names}</strong>${tag}: ${why}${wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${wouldHold.map((remedy) => remedy.words).join(' ')}</span>`}</li>`;
+  })}</ul>`;
 }
 
 function allHills(view: View): Html {
   const rows = view.result.hills.map((hill): HtmlValue[] => [
     String(hill.number),
     hill.kind,
-    stretchText(hill.from, hill.to),
-    `${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %`,
+    html`<span class="who">${stretchText(hill.from, hill.to)}</span>`,
+    html`<span class="who">${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %</span>`,
     shareText(hill.share),
     forceText(hill.requiredForce),
     forceText(hill.availableForce),

@@ -44,7 +44,7 @@ function solver(view: View): Html {
     ? 'Scheme exact: the classical fourth-order Runge-Kutta method between controller samples, cut at every kink of the road, the drive and the actuator. Its aim is a speed within 2 × 10⁻⁸ m/s of a high-precision solution of the same equations.'
     : 'Scheme fast: one evaluation a controller sample, lags solved exactly. Its aim is a speed within 2 × 10⁻⁵ m/s of a high-precision solution of the same equations.';
   return html`<h3>Solver</h3>
-<p>${scheme} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay. The steps of the numerics are far below what the road's uncertainty leaves open.</p>
+<p>${scheme} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay. The error of the numerics is far below what the road's uncertainty leaves open.</p>
 <p>The energy account closes to: ${view.candidates
     .map(
       (candidate) =>
@@ -63,11 +63,11 @@ function definitions(view: View): Html {
     const row = figureRow(name);
     return row === undefined
       ? []
-      : [[row.label, html`<code>${row.name}</code>`, row.unit, row.weight, row.definition, row.source]];
+      : [[html`${row.label}<br><code>${row.name}</code>`, row.unit, row.weight, row.definition, row.source]];
   });
   return html`<h3>Definitions of the figures</h3>
 <p>The error e is true speed minus set speed${view.result.hold.setSpeedIs === 'indicated' && ', the set speed being what the sensor indicates'}; negative is too slow. The band of the charts is ${bandText(view.result.band, view.speed)}. Holdable: where the drive has what the set speed asks, an ideal hold is back at the set speed after what came before, and no change of set speed is still settling.</p>
-${table('Definitions', [{ head: 'figure' }, { head: 'name in files' }, { head: 'unit in files' }, { head: 'by' }, { head: 'definition' }, { head: 'source' }], rows)}
+${table('Definitions', [{ head: 'figure, its name in files' }, { head: 'unit there' }, { head: 'by' }, { head: 'definition' }, { head: 'source' }], rows)}
 <p>The hand formula beside a simulated loss on a hill: the speed to which full (or least) force would settle there, reached with the momentum of the vehicle at the foot: v² changes by twice the missing force over the effective mass for each metre. Where simulation and hand formula differ by more than 15 % the cards show ≠.</p>`;
 }
 

@@ -22,7 +22,7 @@ export function whereSection(view: View): Section {
   const how = segmentsBy === 'length' ? 'of equal length' : 'of nearly constant grade';
   const body = html`${plan(view)}
 <h3>Segments</h3>
-<p>${segments.length} segments ${how}; each has the worst error of the candidate in it. A wedge above a cell: too fast by more than the band; below: too slow.</p>
+<p>${segments.length} segments ${how}; each has the worst error of the candidate in it. A wedge that points up: too fast by more than the band; down: too slow.</p>
 ${classKey(view)}
 ${chartFigure('segments', (canvas) => segmentStrip(view, canvas), 'Worst speed error by segment, one row a candidate.')}
 <details><summary>Table of the segments</summary>${segmentTable(view)}</details>`;
@@ -38,7 +38,7 @@ function plan(view: View): Html {
 ${chartFigure(
   'plan',
   (canvas) => planChart(view, candidate, map, canvas),
-  html`Worst speed error of ${candidate.name} along the route, north up. The thicker, the further from the set speed; with a dark edge: too fast. Numbers: hills.`,
+  html`Worst speed error of ${candidate.name} along the route, north up. The thicker, the further from the set speed; with edges: too fast. Numbers: hills.`,
 )}<div class="narrow">${classKey(view)}</div>`;
 }
 
@@ -55,7 +55,7 @@ function segmentTable(view: View): Html {
     figure === undefined || isNone(figure) ? NO_VALUE : signed(speed.of(figure), 1);
   const rows = result.segments.slice(0, MOST_ROWS).map((part): HtmlValue[] => [
     String(part.number),
-    stretchText(part.from, part.to),
+    html`<span class="who">${stretchText(part.from, part.to)}</span>`,
     gradeText(part.meanGrade),
     withUnit(signed(speed.of(part.meanHeadwind), 0), speed.name),
     ...candidates.flatMap((candidate): HtmlValue[] => {
