@@ -30,7 +30,7 @@ export interface SpreadPlan {
 const ROADS = 8;
 const SEED = 20_120_401;
 /** Hills whose recovery is taken again on every drawn road: those that recover slowest. */
-const SLOWEST = 4;
+const SLOWEST = 2;
 
 /** Names of the candidates that a requirement speaks of: those it names, or all but the locked ones. */
 export function candidatesOf(requirement: Requirement, replayed: readonly Replayed[]): Replayed[] {

@@ -41,6 +41,7 @@ export interface CauseFinding {
  *    else, upwards, `power` where the power limit is below the peak force at the place of greatest demand, or
  *    `torque`; downwards `closed_throttle`. A demand in range throughout: `gains`, the controller went there itself.
  *
+ * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
  * @returns the cause and one sentence
  */
 export function causeOnHill(
@@ -49,6 +50,7 @@ export function causeOnHill(
   window: HillWindow,
   events: HillEvents,
   band: number,
+  excess: number,
 ): CauseFinding {
   if (plan.controller.kind === 'locked') return lockedCause(hill);
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
@@ -60,47 +62,66 @@ export function causeOnHill(
       why: `The command met its limit for ${inSeconds(events.timeUpper + events.timeLower)} although the demand stays in range; the band was kept.`,
     };
   }
-  const atLimit = events.timeUpper + events.timeLower > 0;
-  const candidates: Limitation[] = [];
-  if (atLimit) candidates.push('windup');
-  if (events.timeRate > 0) candidates.push('rate');
-  if (atLimit) candidates.push('range');
-  const base = excessOf(passHill(windowed, window), band);
-  let best: { limitation: Limitation; excess: number; passage: HillPassage } | null = null;
-  for (const limitation of candidates) {
+  let best: Removal | null = null;
+  for (const limitation of metLimitations(events)) {
     if (!has(windowed, limitation)) continue;
     const passage = passHill(without(windowed, limitation), window);
-    const excess = excessOf(passage, band);
-    if (best === null || excess < best.excess) best = { limitation, excess, passage };
-    if (excess === 0) break;
+    const left = excessOf(passage, band);
+    if (best === null || left < best.left) best = { limitation, left, passage };
+    if (left === 0) break;
   }
-  const explains = best !== null && base > 0 && (best.excess === 0 || best.excess <= base / 2);
-  if (best !== null && explains) {
-    const found = explain(best.limitation, best.passage, windowed, window, hill, events);
+  if (best !== null && best.left <= excess / 2) {
+    const found = explain(best, windowed, window, hill, events);
     if (found !== null) return found;
   }
-  return gainsCause(hill, events, atLimit);
+  return gainsCause(hill, events);
 }
 
+/** What became of the hill with one limitation less, and what is left of the excess over the band [m/s]. */
+interface Removal {
+  readonly limitation: Limitation;
+  readonly left: number;
+  readonly passage: HillPassage;
+}
+
+function metLimitations(events: HillEvents): Limitation[] {
+  const limits: Limitation[] = [];
+  const atLimit = events.timeUpper + events.timeLower > 0;
+  if (atLimit) limits.push('windup');
+  if (events.timeRate > 0) limits.push('rate');
+  if (atLimit) limits.push('range');
+  return limits;
+}
+
+/** True where a replay with one limitation less can tell something. */
+export const metAnyLimit = (events: HillEvents): boolean => metLimitations(events).length > 0;
+
 function explain(
-  limitation: Limitation,
-  passage: HillPassage,
+  { limitation, left, passage }: Removal,
   windowed: LoopPlan,
   window: HillWindow,
   hill: HillFacts,
   events: HillEvents,
 ): CauseFinding | null {
-  if (limitation === 'range') return nameRange(windowed, window, hill, events);
-  const left = `from ${inKmh(events.low)} to ${inKmh(events.high)} of error`;
+  if (limitation === 'range') {
+    const named = nameRange(windowed, window, hill, events);
+    if (named === null || left === 0) return named;
+    const alone = passage.high > -passage.low ? passage.high : passage.low;
+    return {
+      ...named,
+      why: `${named.why} Without any limit the gains alone would still let the error grow to ${inKmh(alone)}.`,
+    };
+  }
+  const was = `from ${inKmh(events.low)} to ${inKmh(events.high)} of error`;
   const kept = `${inKmh(passage.low)} to ${inKmh(passage.high)}`;
   if (limitation === 'windup')
     return {
       cause: 'windup',
-      why: `The integral went on growing at the limit and had to be paid back after it (${left}); with an integrator that follows the limit it is ${kept}.`,
+      why: `The integral went on growing at the limit and had to be paid back after it (${was}); with an integrator that follows the limit it is ${kept}.`,
     };
   return {
     cause: 'rate',
-    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${left}); without that limit it is ${kept}.`,
+    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${was}); without that limit it is ${kept}.`,
   };
 }
 
@@ -111,9 +132,11 @@ function lockedCause(hill: HillFacts): CauseFinding {
   };
 }
 
-function gainsCause(hill: HillFacts, events: HillEvents, atLimit: boolean): CauseFinding {
+function gainsCause(hill: HillFacts, events: HillEvents): CauseFinding {
   const worst = -events.low > events.high ? events.low : events.high;
-  const limit = atLimit ? 'taking the limits away does not keep it in the band' : 'it never met a limit';
+  const limit = metAnyLimit(events)
+    ? 'taking the limits away does not keep it in the band'
+    : 'it never met a limit';
   return {
     cause: 'gains',
     why: `The demand is up to ${inPct(hill.share)} of the range and ${limit}: the gains let the error grow to ${inKmh(worst)}.`,

@@ -3,7 +3,7 @@ import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { fromKmh } from '../units/convert.ts';
 import { knotBefore, valueAt } from './along-road.ts';
 import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
-import { causeOnHill, type HillEvents } from './hill-cause.ts';
+import { causeOnHill, type HillEvents, metAnyLimit } from './hill-cause.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { marksBin } from './hill-stretches.ts';
 import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
@@ -164,26 +164,33 @@ function explainOutcome(
 ): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
   const { road } = plan;
   const near = hillWindow(hill, road, demand);
-  if (!events.leftBand || plan.controller.kind === 'locked')
-    return { ...causeOnHill(plan, hill, near, events, band), wouldHold: [] };
-  const window = windowThatShows(plan, near, band);
-  if (window === null)
+  // Where no limit was met there is nothing to take away, and no replay can say more.
+  if (!events.leftBand || plan.controller.kind === 'locked' || !metAnyLimit(events))
+    return { ...causeOnHill(plan, hill, near, events, band, 0), wouldHold: [] };
+  const shown = windowThatShows(plan, near, band);
+  if (shown === null)
     return {
       cause: { none: 'started settled before the hill it holds' },
       why: 'Started settled a kilometre and more before the hill, it holds: what came before the hill is to blame.',
       wouldHold: [],
     };
-  const { cause, why } = causeOnHill(plan, hill, window, events, band);
+  const { window, excess } = shown;
+  const { cause, why } = causeOnHill(plan, hill, window, events, band, excess);
   if (typeof cause !== 'string' || !leversHelp(cause)) return { cause, why, wouldHold: [] };
   const brakePower = valueAt(road, demand.brakePower, hill.shareAt);
   return { cause, why, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
 }
 
 /** The window, or a longer one with what came before the hill, in which the candidate leaves its band as it did in its run. */
-function windowThatShows(plan: Replayed['plan'], near: HillWindow, band: number): HillWindow | null {
+function windowThatShows(
+  plan: Replayed['plan'],
+  near: HillWindow,
+  band: number,
+): { readonly window: HillWindow; readonly excess: number } | null {
   for (const more of [0, 2000, 4000]) {
     const window = { ...near, start: Math.max(0, near.start - more) };
-    if (excessOf(passHill(planOverWindow(plan, window), window), band) > 0) return window;
+    const excess = excessOf(passHill(planOverWindow(plan, window), window), band);
+    if (excess > 0) return { window, excess };
     if (window.start === 0) return null;
   }
   return null;

@@ -7,11 +7,11 @@ import { type HillWindow, holds, passHill, planOverWindow } from './hill-window.
 import { withMoreForce, withPayload, withSetSpeed } from './levers.ts';
 import { inKg, inKmh, inKw, inPct } from './wording.ts';
 
-/** Steps of the levers, and how far they go: 1 km/h down to 10 km/h; 5 % of the force up to three times; 5 kg. */
+/** Steps of the levers, and how far they go: 1 km/h down to a third; 5 % of the force up to twice; 5 kg. */
 const SPEED_STEP = fromKmh(1);
-const LEAST_SPEED = 10;
+const LEAST_SHARE = 1 / 3;
 const FORCE_STEP = 0.05;
-const FORCE_STEPS = 40;
+const FORCE_STEPS = 20;
 const LOAD_STEP = 5;
 
 /** Causes that a lever of vehicle or rider can do something about; the others want other gains. */
@@ -68,8 +68,9 @@ function speedRemedy(windowed: LoopPlan, hill: HillFacts, search: Search): Remed
   const highest = [windowed.hold.setSpeed, ...windowed.hold.changes.map((change) => change.setSpeed)];
   const top = Math.ceil(toKmh(highest.reduce((a, b) => Math.max(a, b))) - 1e-9);
   const speedAt = (n: number): number => SPEED_STEP * (top - n);
-  const n = search((k) => withSetSpeed(windowed, speedAt(k)), Math.max(0, top - LEAST_SPEED));
-  if (n === null) return noRemedy('set_speed', `No set speed down to ${LEAST_SPEED} km/h holds.`);
+  const least = Math.ceil(top * LEAST_SHARE);
+  const n = search((k) => withSetSpeed(windowed, speedAt(k)), top - least);
+  if (n === null) return noRemedy('set_speed', `No set speed down to ${inKmh(least * SPEED_STEP, 0)} holds.`);
   const sustained = hill.share > 1 ? ` (full throttle sustains ${inKmh(hill.sustainedSpeed)})` : '';
   return {
     lever: 'set_speed',
@@ -86,7 +87,7 @@ function forceRemedy(windowed: LoopPlan, search: Search): Remedy {
     return forceRange(drive, drive.gear, speed, 1).greatest * speed;
   };
   const n = search((k) => withMoreForce(windowed, k * FORCE_STEP), FORCE_STEPS);
-  if (n === null) return noRemedy('power', 'Three times the force does not hold either.');
+  if (n === null) return noRemedy('power', 'Twice the force does not hold either.');
   return {
     lever: 'power',
     holds: powerAt(n),
