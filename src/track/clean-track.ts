@@ -1,4 +1,5 @@
 import { InputError } from '../problems/input-error.ts';
+import { toPct } from '../units/convert.ts';
 import { bridgeGaps } from './bridge-gaps.ts';
 import { fillColumn } from './fill-column.ts';
 import { fillHeading } from './fill-heading.ts';
@@ -7,7 +8,13 @@ import { leaveOutNonFinite } from './leave-out-non-finite.ts';
 import { leaveOutReversals } from './leave-out-reversals.ts';
 import { leaveOutStandstill } from './leave-out-standstill.ts';
 import { legLength } from './leg-length.ts';
-import { FEWEST_POINTS, HIGHEST_ELEVATION, LOWEST_ELEVATION, SHORTEST_TRACK } from './limits.ts';
+import {
+  FEWEST_POINTS,
+  HIGHEST_ELEVATION,
+  LARGEST_DISAGREEMENT,
+  LOWEST_ELEVATION,
+  SHORTEST_TRACK,
+} from './limits.ts';
 import { pickPoints } from './pick-points.ts';
 import type { RawTrack } from './raw-track.ts';
 import { countPoints, RepairLog } from './repair-log.ts';
@@ -22,7 +29,7 @@ import { trimUnknownEnds } from './trim-unknown-ends.ts';
  *
  * @param given points as the file gives them
  * @returns the track with every repair, in order of place
- * @throws InputError `no-elevation`, `track-too-short`, and what the steps throw
+ * @throws InputError `no-elevation`, `track-too-short`, `distance-disagrees`, and what the steps throw
  */
 export function cleanTrack(given: RawTrack): Track {
   requireElevation(given);
@@ -38,6 +45,7 @@ export function cleanTrack(given: RawTrack): Track {
   requireLength(raw, kept.length, null);
   const distance = bridgeGaps(raw, kept, leg, log);
   requireLength(raw, kept.length, distance.at(-1)!);
+  requireAgreement(raw, kept, distance.at(-1)!);
 
   const pick = (values: Float64Array | null): Float64Array | null =>
     values === null ? null : pickPoints(values, kept);
@@ -95,5 +103,21 @@ function requireLength(raw: RawTrack, points: number, length: number | null): vo
     message: 'the track is too short for a road',
     found: length === null ? countPoints(points) : `${length.toFixed(1)} m`,
     allowed: `at least ${FEWEST_POINTS} points and ${SHORTEST_TRACK} m`,
+  });
+}
+
+/** A distance column in another unit than it says shows against the positions beside it. */
+function requireAgreement(raw: RawTrack, kept: Int32Array, length: number): void {
+  if (raw.distance === null || raw.latitudeDeg === null) return;
+  const leg = legLength({ ...raw, distance: null });
+  let alongPositions = 0;
+  for (let k = 1; k < kept.length; k++) alongPositions += leg(kept[k - 1]!, kept[k]!);
+  if (Math.abs(alongPositions - length) <= LARGEST_DISAGREEMENT * length) return;
+  throw new InputError({
+    code: 'distance-disagrees',
+    place: { file: raw.file },
+    message: 'the distances do not agree with the positions beside them',
+    found: `${length.toFixed(0)} m against ${alongPositions.toFixed(0)} m`,
+    allowed: `a difference up to ${toPct(LARGEST_DISAGREEMENT)} %`,
   });
 }

@@ -37,7 +37,7 @@ export function readCsvHeader(line: string, number: number, file: string): CsvHe
     const name = cell.trim().replace(/^"(.*)"$/, '$1');
     const place = { file, line: number, column: at + cell.length - cell.trimStart().length };
     at += cell.length + 1;
-    const column = CSV_COLUMNS[name];
+    const column = Object.hasOwn(CSV_COLUMNS, name) ? CSV_COLUMNS[name] : undefined;
     if (column === undefined) throw unknownColumn(name, place);
     const before = seen.get(column.field);
     if (before !== undefined)

@@ -53,6 +53,7 @@ function forwardOnly(
     const i = kept[k]!;
     const value = values[i]!;
     const next = k + 1 < kept.length ? values[kept[k + 1]!]! : value;
+    const afterNext = k + 2 < kept.length ? values[kept[k + 2]!]! : next;
     if (value < highest) {
       const by = highest - value;
       if (by > longest)
@@ -64,7 +65,7 @@ function forwardOnly(
           allowed: `up to ${longest} ${unit}`,
         });
       leaveOut(i, by);
-    } else if (value > next && next >= highest && k > 0) {
+    } else if (k > 0 && value > next && next >= highest && afterNext >= next) {
       leaveOut(i, value - next);
     } else {
       close();

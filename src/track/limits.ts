@@ -41,3 +41,6 @@ export const HIGHEST_ELEVATION = 9000;
 
 /** Of all points, at most this share may be left out because they hold no finite number. */
 export const LARGEST_NON_FINITE_SHARE = 0.05;
+
+/** Where a file gives both, its distances and the way along its positions may differ by this share. */
+export const LARGEST_DISAGREEMENT = 0.1;
