@@ -5,7 +5,6 @@ import { dragTangent } from './crosswind.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
-import { emptySums } from './record.ts';
 import { roadTable } from './road-table.ts';
 
 /** Longest step of either scheme [s]: a controller at 20 Hz or slower is stepped several times a sample. */
@@ -41,7 +40,8 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_CROSSWIND] = table.crosswind ? 1 : 0;
   p[at.P_SPEED_CELLS] = drive.speedEdges.length + 1;
   p[at.P_THROTTLE_CELLS] = drive.throttleEdges.length + 1;
-  for (let i = 0; i < 4; i++) p[at.P_BANDS + i] = plan.bands[i] ?? -1;
+  p.set(plan.bands, at.P_BANDS);
+  p[at.P_BAND_COUNT] = plan.bands.length;
   const { scaleError } = vehicle.sensor;
   p[at.P_TO_TRUE] = plan.hold.setSpeedIs === 'indicated' ? 1 / (1 + scaleError) : 1;
   p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
@@ -56,7 +56,7 @@ export function buildMachine(plan: LoopPlan): Machine {
     throttleEdges: drive.throttleEdges,
     controller,
     tangent: dragTangent(vehicle.roadLoad),
-    sums: emptySums(),
+    log: new Float64Array(at.LOG_ROWS * at.L_STRIDE),
   };
 }
 

@@ -1,10 +1,9 @@
-import { BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
+import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { exp } from '../numeric/elementary.ts';
 import { keepHistory, readDelayed } from './delayed-speed.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { recordSample } from './record.ts';
 
 /**
  * The `exact` kernel. With command u held over a sample, actuator y, throttle x behind the drive's lag:
@@ -25,7 +24,7 @@ import { recordSample } from './record.ts';
  * whose coefficients hang on x and q alone: they are ready before v is, which leaves three dependent operations a stage.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, sums } = machine;
+  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, log } = machine;
   // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle.
   // Constants stand inside the function: as variables of the module they would be read and checked at every use.
   const KNOT = 1e-7;
@@ -104,7 +103,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let c2 = 0;
   let c3 = 0;
 
+  s[at.LOGGED] = 0;
   for (let tick = 0; tick < ticks && q < until && event === at.RUNNING; tick++) {
+    const entry = tick * at.L_STRIDE;
     s[BUS_MEASURED] = scale * (delay > 0 ? readDelayed(s, p) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
@@ -129,6 +130,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     let climb = 0;
     let magnitude = 0;
     let pieces = 0;
+    let limited = false;
     const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
 
     for (let part = 0; part < steps && event === at.RUNNING; part++) {
@@ -364,9 +366,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         }
 
         if (pieces === 0) {
-          s[at.SAMPLE_ACCELERATION] = k1;
-          s[at.SAMPLE_DRIVE_FORCE] = effectiveMass * force;
-          s[at.SAMPLE_RATED] = rated ? 1 : 0;
+          log[entry + at.L_ACCELERATION] = k1;
+          log[entry + at.L_DRIVE_FORCE] = effectiveMass * force;
+          limited = rated;
           slope0 = filter > 0 ? (v - z) / filter : k1;
         }
         if (work >= 0) push += work;
@@ -428,15 +430,16 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     slope1 = filter > 0 ? (v - z) / filter : acceleration;
     if (delay > 0) keepHistory(s, p, z0, slope0, slope1, sample);
 
-    s[at.SAMPLE_SPEED] = v0;
-    s[at.SAMPLE_ACTUATOR] = y0;
-    s[at.SAMPLE_BRAKE_FORCE] = effectiveMass * brake;
-    s[at.SAMPLE_TIME] = elapsed;
-    s[at.SAMPLE_DISTANCE] = travelled;
-    s[at.SAMPLE_DRIVE_WORK] = effectiveMass * (push + hold);
-    s[at.SAMPLE_PUSH] = effectiveMass * push;
-    s[at.SAMPLE_BRAKE_WORK] = effectiveMass * brake * travelled;
-    recordSample(s, p, sums);
+    log[entry + at.L_SPEED] = v0;
+    log[entry + at.L_ACTUATOR] = y0;
+    log[entry + at.L_LIMITED] = u;
+    log[entry + at.L_COMMAND] = s[BUS_COMMAND];
+    log[entry + at.L_RATED] = limited ? 1 : 0;
+    log[entry + at.L_BRAKE_FORCE] = effectiveMass * brake;
+    log[entry + at.L_TIME] = elapsed;
+    log[entry + at.L_DISTANCE] = travelled;
+    log[entry + at.L_PUSH] = effectiveMass * push;
+    log[entry + at.L_HOLD] = effectiveMass * hold;
     s[at.DRIVE_WORK] += effectiveMass * push;
     s[at.REGENERATION_WORK] += effectiveMass * hold;
     s[at.AERO_WORK] += effectiveMass * aero;
@@ -454,6 +457,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     s[at.CELL] = row / at.R_STRIDE;
     s[at.SPEED_CELL] = speedCell;
     s[at.THROTTLE_CELL] = throttleCell;
+    s[at.LOGGED] = tick + 1;
     if (event === at.RUNNING) s[at.TICK] += 1;
     else s[at.PARTIAL] = elapsed;
   }

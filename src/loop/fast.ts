@@ -1,10 +1,9 @@
-import { BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
+import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { exp } from '../numeric/elementary.ts';
 import { keepHistory, readDelayed } from './delayed-speed.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { recordSample } from './record.ts';
 
 /**
  * The `fast` kernel: one evaluation of the forces a step of length h, second order.
@@ -18,7 +17,7 @@ import { recordSample } from './record.ts';
  * Every work is its force over the same displacement, so that the account of energy closes to rounding.
  */
 export function advanceFast(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, sums } = machine;
+  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, log } = machine;
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
@@ -66,7 +65,9 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let throttleCell = s[at.THROTTLE_CELL] | 0;
   let event = at.RUNNING;
 
+  s[at.LOGGED] = 0;
   for (let tick = 0; tick < ticks && q < until && event === at.RUNNING; tick++) {
+    const entry = tick * at.L_STRIDE;
     s[BUS_MEASURED] = scale * (delay > 0 ? readDelayed(s, p) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
@@ -179,8 +180,8 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
           if (!(brake > 0)) brake = 0;
           if (brake > effectiveMass * at.BRAKE_LIMIT) brake = effectiveMass * at.BRAKE_LIMIT;
         }
-        s[at.SAMPLE_ACCELERATION] = a - brake * inverse;
-        s[at.SAMPLE_DRIVE_FORCE] = force;
+        log[entry + at.L_ACCELERATION] = a - brake * inverse;
+        log[entry + at.L_DRIVE_FORCE] = force;
         slope0 = filter > 0 ? (v - z) / filter : a - brake * inverse;
       }
       a -= brake * inverse;
@@ -240,16 +241,16 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     if (event === at.RUNNING && v < stallSpeed) event = at.STALLED;
     if (delay > 0) keepHistory(s, p, z0, slope0, filter > 0 ? (v - z) / filter : acceleration, sample);
 
-    s[at.SAMPLE_RATED] = rated ? 1 : 0;
-    s[at.SAMPLE_SPEED] = v0;
-    s[at.SAMPLE_ACTUATOR] = y0;
-    s[at.SAMPLE_BRAKE_FORCE] = brake;
-    s[at.SAMPLE_TIME] = elapsed;
-    s[at.SAMPLE_DISTANCE] = travelled;
-    s[at.SAMPLE_DRIVE_WORK] = push + hold;
-    s[at.SAMPLE_PUSH] = push;
-    s[at.SAMPLE_BRAKE_WORK] = brake * travelled;
-    recordSample(s, p, sums);
+    log[entry + at.L_SPEED] = v0;
+    log[entry + at.L_ACTUATOR] = y0;
+    log[entry + at.L_LIMITED] = u;
+    log[entry + at.L_COMMAND] = s[BUS_COMMAND];
+    log[entry + at.L_RATED] = rated ? 1 : 0;
+    log[entry + at.L_BRAKE_FORCE] = brake;
+    log[entry + at.L_TIME] = elapsed;
+    log[entry + at.L_DISTANCE] = travelled;
+    log[entry + at.L_PUSH] = push;
+    log[entry + at.L_HOLD] = hold;
     s[at.DRIVE_WORK] += push;
     s[at.REGENERATION_WORK] += hold;
     s[at.AERO_WORK] += aero;
@@ -267,6 +268,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     s[at.CELL] = row / at.R_STRIDE;
     s[at.SPEED_CELL] = speedCell;
     s[at.THROTTLE_CELL] = throttleCell;
+    s[at.LOGGED] = tick + 1;
     if (event === at.RUNNING) s[at.TICK] += 1;
     else s[at.PARTIAL] = elapsed;
   }

@@ -25,8 +25,10 @@ export interface Journey {
 /**
  * A journey from the machine's present state. Set-speed changes that lie at or before it are taken as made: where the
  * set speed in force is not the plan's (a replay with another one), it changes now.
+ *
+ * @param heard called after each chunk, while its samples are in the log
  */
-export function journey(machine: Machine, plan: LoopPlan): Journey {
+export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machine) => void): Journey {
   const { s, p } = machine;
   const kernel: Kernel = plan.scheme === 'fast' ? advanceFast : advanceExact;
   const sample = p[at.P_SAMPLE];
@@ -68,9 +70,10 @@ export function journey(machine: Machine, plan: LoopPlan): Journey {
       const next = s[at.CHANGES] < changes.length ? changes[s[at.CHANGES]]! : null;
       const place = next === null ? Number.POSITIVE_INFINITY : places[s[at.CHANGES]]!;
       const run =
-        next !== null && 'time' in next.at ? Math.min(left, ticksTo(next.at.time, sample, s[at.TICK])) : left;
+        next !== null && 'time' in next.at ? ticksTo(next.at.time, sample, s[at.TICK]) : at.LOG_ROWS;
       const before = s[at.TICK];
-      event = kernel(machine, run, Math.min(until, place));
+      event = kernel(machine, Math.min(run, left, at.LOG_ROWS), Math.min(until, place));
+      heard(machine);
       left -= s[at.TICK] - before;
     }
     return event;

@@ -34,26 +34,33 @@ export const LOCK_DENSITY = 34;
 export const LOCK_TEMPERATURE = 35;
 /** Set-speed changes that have happened. */
 export const CHANGES = 36;
-/** What the last sample saw and did: at its start, except for sums over it. */
-export const SAMPLE_SPEED = 37;
-export const SAMPLE_ACTUATOR = 38;
-export const SAMPLE_ACCELERATION = 39;
-export const SAMPLE_DRIVE_FORCE = 40;
-export const SAMPLE_BRAKE_FORCE = 41;
-/** LIMIT_ bits. */
-export const SAMPLE_LIMIT = 42;
-export const SAMPLE_TIME = 43;
-export const SAMPLE_DISTANCE = 44;
-export const SAMPLE_DRIVE_WORK = 45;
-export const SAMPLE_BRAKE_WORK = 46;
-export const SAMPLE_PUSH = 47;
-/** Limited command of the sample before. */
-export const LAST_COMMAND = 48;
-/** 1: the last sample began with the actuator at its rate limit. */
-export const SAMPLE_RATED = 49;
+/** Limited command of the last sample that was recorded. */
+export const LAST_COMMAND = 37;
+/** Rows of the log that the kernel has just written. */
+export const LOGGED = 38;
 /** History for delayed measurement: rows of [value, slope after it, slope before the next], see delayed-speed.ts. */
-export const HISTORY = 50;
+export const HISTORY = 39;
 export const HISTORY_STRIDE = 3;
+
+// --- log: a row a sample of the chunk that a kernel has just run; at the start of the sample, or summed over it ---
+export const L_SPEED = 0;
+export const L_ACTUATOR = 1;
+/** Command after and before it is limited. */
+export const L_LIMITED = 2;
+export const L_COMMAND = 3;
+/** 1: it began with the actuator at its rate limit. */
+export const L_RATED = 4;
+export const L_BRAKE_FORCE = 5;
+/** Seconds and distance travelled. */
+export const L_TIME = 6;
+export const L_DISTANCE = 7;
+/** Work of the drive while it pushed, and while it held back. */
+export const L_PUSH = 8;
+export const L_HOLD = 9;
+export const L_DRIVE_FORCE = 10;
+export const L_ACCELERATION = 11;
+export const L_STRIDE = 12;
+export const LOG_ROWS = 128;
 
 // --- parameters: constant over a run ---
 export const P_SAMPLE = 0;
@@ -99,12 +106,13 @@ export const P_CROSSWIND = 30;
 export const P_YAW_GAIN = 31;
 export const P_SPEED_CELLS = 32;
 export const P_THROTTLE_CELLS = 33;
-/** Half-widths of the bands, -1 where there is none: four places. */
+/** Half-widths of the bands: four places. */
 export const P_BANDS = 34;
 /** True speed over the units of the set speed; overspeed at which the rider brakes, Infinity: never. */
 export const P_TO_TRUE = 38;
 export const P_BRAKES_ABOVE = 39;
-export const P_SIZE = 40;
+export const P_BAND_COUNT = 40;
+export const P_SIZE = 41;
 
 // --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
 export const R_STATION = 0;

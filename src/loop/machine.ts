@@ -13,12 +13,12 @@ export interface Machine {
   readonly throttleEdges: Float64Array;
   readonly controller: Controller;
   readonly tangent: DragTangent;
-  /** Sums and extremes of the open bin. */
-  readonly sums: Float64Array;
+  /** What the samples of the last chunk saw and did. */
+  readonly log: Float64Array;
 }
 
 /**
- * Runs up to `ticks` samples, none of which starts at or beyond the station `until`, and adds them to `sums`.
+ * Runs up to `ticks` samples (at most LOG_ROWS), none of which starts at or beyond the station `until`, and logs them.
  * Returns RUNNING, or why it ended within a sample.
  */
 export type Kernel = (machine: Machine, ticks: number, until: number) => number;

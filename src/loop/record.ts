@@ -1,103 +1,125 @@
-import { BUS_COMMAND, BUS_LIMITED, BUS_TARGET } from '../control/bus.ts';
+import { BUS_TARGET } from '../control/bus.ts';
 import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
 import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from './plan.ts';
 import type { BinRecord } from './result.ts';
 
 // Places of the open bin's sums. Speed and error: extremes over the samples.
-const SAMPLES = 0;
-const TIME = 1;
-const DISTANCE = 2;
-const ERROR = 3;
-const SQUARE = 4;
-const SPEED_MIN = 5;
-const SPEED_MAX = 6;
-const ERROR_MIN = 7;
-const ERROR_MAX = 8;
-const THROTTLE = 9;
-const THROTTLE_MIN = 10;
-const THROTTLE_MAX = 11;
-const TRAVEL = 12;
-const UPPER = 13;
-const LOWER = 14;
-const RATE = 15;
-const BRAKE = 16;
-const BAND = 17;
-const DRIVE = 21;
-const PUSH = 22;
-const BRAKE_WORK = 23;
-const SET_SPEED = 24;
-const SUMS = 25;
+const TIME = 0;
+const DISTANCE = 1;
+const ERROR = 2;
+const SQUARE = 3;
+const SPEED_MIN = 4;
+const SPEED_MAX = 5;
+const THROTTLE = 6;
+const THROTTLE_MIN = 7;
+const THROTTLE_MAX = 8;
+const TRAVEL = 9;
+const UPPER = 10;
+const LOWER = 11;
+const RATE = 12;
+const BRAKE = 13;
+const BAND = 14;
+const PUSH = 18;
+const HOLD = 19;
+const BRAKE_WORK = 20;
+const SET_SPEED = 21;
+const ERROR_MIN = 22;
+const ERROR_MAX = 23;
+const SUMS = 24;
 
-/** Empty sums for one bin. */
-export function emptySums(): Float64Array {
-  return clearSums(new Float64Array(SUMS));
-}
-
-function clearSums(sums: Float64Array): Float64Array {
+function clearSums(sums: Float64Array): void {
   sums.fill(0);
   sums[SPEED_MIN] = sums[ERROR_MIN] = sums[THROTTLE_MIN] = Number.POSITIVE_INFINITY;
   sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = Number.NEGATIVE_INFINITY;
-  return sums;
 }
 
-/** Adds the sample that a kernel has just run (SAMPLE_ places and the bus) to the sums of the open bin. */
-export function recordSample(s: Float64Array, p: Float64Array, sums: Float64Array): void {
-  const time = s[at.SAMPLE_TIME];
-  const speed = s[at.SAMPLE_SPEED];
-  const throttle = s[at.SAMPLE_ACTUATOR];
-  const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
-  const error = speed - setSpeed;
-  const size = error < 0 ? -error : error;
-  if (sums[SAMPLES] === 0) sums[SET_SPEED] = setSpeed;
-  sums[SAMPLES] += 1;
-  sums[TIME] += time;
-  sums[DISTANCE] += s[at.SAMPLE_DISTANCE];
-  sums[ERROR] += error * time;
-  sums[SQUARE] += error * error * time;
-  if (speed < sums[SPEED_MIN]) sums[SPEED_MIN] = speed;
-  if (speed > sums[SPEED_MAX]) sums[SPEED_MAX] = speed;
-  if (error < sums[ERROR_MIN]) sums[ERROR_MIN] = error;
-  if (error > sums[ERROR_MAX]) sums[ERROR_MAX] = error;
-  sums[THROTTLE] += throttle * time;
-  if (throttle < sums[THROTTLE_MIN]) sums[THROTTLE_MIN] = throttle;
-  if (throttle > sums[THROTTLE_MAX]) sums[THROTTLE_MAX] = throttle;
+/** LIMIT_ bits of the sample in one row of the log. */
+export function limitBits({ p, log }: Machine, entry: number): number {
+  return (
+    (log[entry + at.L_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
+    (log[entry + at.L_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
+    (log[entry + at.L_RATED] > 0 ? LIMIT_RATE : 0) |
+    (log[entry + at.L_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0)
+  );
+}
 
-  const limited = s[BUS_LIMITED];
-  const change = limited - s[at.LAST_COMMAND];
-  s[at.LAST_COMMAND] = limited;
-  sums[TRAVEL] += change < 0 ? -change : change;
-  let limit = 0;
-  if (s[BUS_COMMAND] >= p[at.P_HIGH]) {
-    limit = LIMIT_UPPER;
-    sums[UPPER] += time;
-  } else if (s[BUS_COMMAND] <= p[at.P_LOW]) {
-    limit = LIMIT_LOWER;
-    sums[LOWER] += time;
+/** Adds the samples that a kernel has just run to the sums of the open bin. The set speed is the same for all of them. */
+function addSamples({ s, p, log }: Machine, sums: Float64Array): void {
+  const end = s[at.LOGGED] * at.L_STRIDE;
+  const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
+  const highest = p[at.P_HIGH];
+  const lowest = p[at.P_LOW];
+  const bands = p[at.P_BAND_COUNT];
+  let last = s[at.LAST_COMMAND];
+  let duration = 0;
+  let distance = 0;
+  let errors = 0;
+  let squares = 0;
+  let throttles = 0;
+  let travel = 0;
+  let push = 0;
+  let hold = 0;
+  let slowest = Number.POSITIVE_INFINITY;
+  let fastest = Number.NEGATIVE_INFINITY;
+  let least = sums[THROTTLE_MIN];
+  let most = sums[THROTTLE_MAX];
+  if (sums[TIME] === 0) sums[SET_SPEED] = setSpeed;
+  for (let i = 0; i < end; i += at.L_STRIDE) {
+    const time = log[i + at.L_TIME];
+    const speed = log[i + at.L_SPEED];
+    const throttle = log[i + at.L_ACTUATOR];
+    const limited = log[i + at.L_LIMITED];
+    const command = log[i + at.L_COMMAND];
+    const error = speed - setSpeed;
+    duration += time;
+    distance += log[i + at.L_DISTANCE];
+    errors += error * time;
+    squares += error * error * time;
+    throttles += throttle * time;
+    travel += Math.abs(limited - last);
+    push += log[i + at.L_PUSH];
+    hold += log[i + at.L_HOLD];
+    if (speed < slowest) slowest = speed;
+    if (speed > fastest) fastest = speed;
+    if (throttle < least) least = throttle;
+    if (throttle > most) most = throttle;
+    last = limited;
+    if (command >= highest) sums[UPPER] += time;
+    else if (command <= lowest) sums[LOWER] += time;
+    if (log[i + at.L_RATED] > 0) sums[RATE] += time;
+    if (log[i + at.L_BRAKE_FORCE] > 0) {
+      sums[BRAKE] += time;
+      sums[BRAKE_WORK] += log[i + at.L_BRAKE_FORCE] * log[i + at.L_DISTANCE];
+    }
+    const size = Math.abs(error);
+    for (let b = 0; b < bands; b++) if (size <= p[at.P_BANDS + b]) sums[BAND + b] += time;
   }
-  if (s[at.SAMPLE_RATED] !== 0) {
-    limit |= LIMIT_RATE;
-    sums[RATE] += time;
-  }
-  if (s[at.SAMPLE_BRAKE_FORCE] > 0) {
-    limit |= LIMIT_BRAKE;
-    sums[BRAKE] += time;
-  }
-  s[at.SAMPLE_LIMIT] = limit;
-  if (size <= p[at.P_BANDS]) sums[BAND] += time;
-  if (size <= p[at.P_BANDS + 1]) sums[BAND + 1] += time;
-  if (size <= p[at.P_BANDS + 2]) sums[BAND + 2] += time;
-  if (size <= p[at.P_BANDS + 3]) sums[BAND + 3] += time;
-  sums[DRIVE] += s[at.SAMPLE_DRIVE_WORK];
-  sums[PUSH] += s[at.SAMPLE_PUSH];
-  sums[BRAKE_WORK] += s[at.SAMPLE_BRAKE_WORK];
+  s[at.LAST_COMMAND] = last;
+  sums[TIME] += duration;
+  sums[DISTANCE] += distance;
+  sums[ERROR] += errors;
+  sums[SQUARE] += squares;
+  sums[THROTTLE] += throttles;
+  sums[TRAVEL] += travel;
+  sums[PUSH] += push;
+  sums[HOLD] += hold;
+  sums[THROTTLE_MIN] = least;
+  sums[THROTTLE_MAX] = most;
+  if (slowest < sums[SPEED_MIN]) sums[SPEED_MIN] = slowest;
+  if (fastest > sums[SPEED_MAX]) sums[SPEED_MAX] = fastest;
+  if (slowest - setSpeed < sums[ERROR_MIN]) sums[ERROR_MIN] = slowest - setSpeed;
+  if (fastest - setSpeed > sums[ERROR_MAX]) sums[ERROR_MAX] = fastest - setSpeed;
 }
 
 type Writable<T> = { -readonly [K in keyof T]: T[K] };
 
 /** The record of a run while it grows. */
 export interface Recorder {
+  /** Adds the samples that the kernel has just run to the open bin. */
+  readonly add: (machine: Machine) => void;
   /** Closes the open bin and starts the next; `time` is that of the first sample of the bin that is closed. */
-  readonly close: (s: Float64Array, p: Float64Array, sums: Float64Array, time: number, gear: number) => void;
+  readonly close: (machine: Machine, time: number, gear: number) => void;
   /** The record as far as it got. */
   readonly finish: () => BinRecord;
 }
@@ -142,7 +164,11 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     brakeWork: column(),
   };
 
-  const close: Recorder['close'] = (s, p, sums, timeAt, gear) => {
+  const sums = new Float64Array(SUMS);
+  clearSums(sums);
+  const add = (machine: Machine): void => addSamples(machine, sums);
+
+  const close: Recorder['close'] = ({ s, p, log }, timeAt, gear) => {
     const i = size++;
     const time = sums[TIME];
     r.timeAt[i] = timeAt;
@@ -154,8 +180,8 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
       r.speedMean[i] = r.speedMin[i] = r.speedMax[i] = s[at.SPEED];
       r.errorMin[i] = r.errorMax[i] = s[at.SPEED] - setSpeed;
       r.throttleMean[i] = r.throttleMin[i] = r.throttleMax[i] = s[at.ACTUATOR];
-      r.driveForce[i] = s[at.SAMPLE_DRIVE_FORCE];
-      r.wheelPower[i] = s[at.SAMPLE_DRIVE_FORCE] * s[at.SPEED];
+      r.driveForce[i] = log[at.L_DRIVE_FORCE];
+      r.wheelPower[i] = log[at.L_DRIVE_FORCE] * s[at.SPEED];
       clearSums(sums);
       return;
     }
@@ -177,10 +203,11 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     r.timeRate[i] = sums[RATE];
     r.timeBrake[i] = sums[BRAKE];
     for (let b = 0; b < bands; b++) r.timeInBand[i * bands + b] = sums[BAND + b];
-    r.driveForce[i] = sums[DISTANCE] > 0 ? sums[DRIVE] / sums[DISTANCE] : s[at.SAMPLE_DRIVE_FORCE];
-    r.wheelPower[i] = sums[DRIVE] / time;
+    const work = sums[PUSH] + sums[HOLD];
+    r.driveForce[i] = sums[DISTANCE] > 0 ? work / sums[DISTANCE] : log[at.L_DRIVE_FORCE];
+    r.wheelPower[i] = work / time;
     r.driveWork[i] = sums[PUSH];
-    r.regenerationWork[i] = sums[DRIVE] - sums[PUSH];
+    r.regenerationWork[i] = sums[HOLD];
     r.brakeWork[i] = sums[BRAKE_WORK];
     clearSums(sums);
   };
@@ -194,5 +221,5 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     }
     return { ...r, ...cut, size, gear: r.gear.slice(0, size) };
   };
-  return { close, finish };
+  return { add, close, finish };
 }

@@ -38,9 +38,9 @@ export function replay(
   if ('settledAt' in start)
     settle(machine, plan, stationAt(road, start.settledAt), setSpeedAt(plan, start.settledAt));
   else restore(machine, start);
-  const run = journey(machine, plan);
   const until = to >= road.distance[road.size - 1] ? Number.POSITIVE_INFINITY : stationAt(road, to);
   const columns = sampleColumns();
+  const run = journey(machine, plan, () => undefined);
   const { gear } = plan.vehicle.drive;
 
   let status: RunStatus | null = s[at.SPEED] < p[at.P_STALL_SPEED] ? 'stalled' : null;

@@ -28,12 +28,12 @@ export function runLoop(plan: LoopPlan): LoopResult {
   checkPlan(plan);
   const { road } = plan;
   const machine = buildMachine(plan);
-  const { s, p, sums } = machine;
+  const { s, p } = machine;
   settle(machine, plan, 0, plan.hold.startSpeed);
-  const run = journey(machine, plan);
   const end = road.distance[road.size - 1];
   const edge = binEdges(end, plan.bin);
   const record = recorder(edge, plan.bands.length);
+  const run = journey(machine, plan, record.add);
   const checkpoints: Checkpoint[] = [checkpoint(0, run.time(), s)];
   const bins = edge.length - 1;
   const { gear } = plan.vehicle.drive;
@@ -46,7 +46,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     const entered = run.time();
     const event = run.advance(until, Number.POSITIVE_INFINITY);
     status = statusOf(event) ?? (run.late() ? 'time_limit' : null);
-    record.close(s, p, sums, entered, gear);
+    record.close(machine, entered, gear);
     if (status === null && edge[bin + 1] >= CHECKPOINT_EVERY * checkpoints.length)
       checkpoints.push(checkpoint(distanceAt(road, s[at.STATION]), run.time(), s));
   }

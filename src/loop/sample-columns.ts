@@ -9,6 +9,7 @@ import {
 } from '../control/bus.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { limitBits } from './record.ts';
 import type { FullSeries } from './result.ts';
 
 const NUMBERS = [
@@ -40,7 +41,8 @@ export function sampleColumns(): SampleColumns {
   const width = NUMBERS.length + 2;
   let rows = new Float64Array(width * 1024);
   let size = 0;
-  const push: SampleColumns['push'] = ({ s, p }, time, distance, gear) => {
+  const push: SampleColumns['push'] = (machine, time, distance, gear) => {
+    const { s, p, log } = machine;
     if (width * (size + 1) > rows.length) {
       const more = new Float64Array(2 * rows.length);
       more.set(rows);
@@ -51,17 +53,17 @@ export function sampleColumns(): SampleColumns {
     rows[row + 1] = distance;
     rows[row + 2] = s[BUS_TARGET] * p[at.P_TO_TRUE];
     rows[row + 3] = s[BUS_REFERENCE] * p[at.P_TO_TRUE];
-    rows[row + 4] = s[at.SAMPLE_SPEED];
+    rows[row + 4] = log[at.L_SPEED];
     rows[row + 5] = s[BUS_MEASURED];
     rows[row + 6] = s[BUS_COMMAND];
-    rows[row + 7] = s[at.SAMPLE_ACTUATOR];
+    rows[row + 7] = log[at.L_ACTUATOR];
     rows[row + 8] = s[BUS_PROPORTIONAL];
     rows[row + 9] = s[BUS_INTEGRAL];
     rows[row + 10] = s[BUS_FEEDFORWARD];
-    rows[row + 11] = s[at.SAMPLE_DRIVE_FORCE];
-    rows[row + 12] = s[at.SAMPLE_BRAKE_FORCE];
-    rows[row + 13] = s[at.SAMPLE_ACCELERATION];
-    rows[row + 14] = s[at.SAMPLE_LIMIT];
+    rows[row + 11] = log[at.L_DRIVE_FORCE];
+    rows[row + 12] = log[at.L_BRAKE_FORCE];
+    rows[row + 13] = log[at.L_ACCELERATION];
+    rows[row + 14] = limitBits(machine, 0);
     rows[row + 15] = gear;
   };
   const finish = (): FullSeries => {
