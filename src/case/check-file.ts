@@ -2,7 +2,7 @@ import type * as z from 'zod';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import { type PathProblem, problemsOfIssues } from './problems-of-issues.ts';
 import { isMapping } from './schema-walk.ts';
-import { type Path, placeOf, type YamlSource } from './yaml-source.ts';
+import { MOST_PROBLEMS, type Path, placeOf, type YamlSource } from './yaml-source.ts';
 
 /** A fault that no single field has: two fields that do not go together. */
 export interface RuleFault {
@@ -23,7 +23,7 @@ export interface Rule<Input> {
  * Checks a file against its schema and its rules.
  *
  * @returns the file with its defaults filled in
- * @throws InputError with every problem of the file, by line; those of overrides come last
+ * @throws InputError with every problem of the file (at most MOST_PROBLEMS), by line; those of overrides come last
  */
 export function checkFile<S extends z.ZodType>(
   schema: S,
@@ -45,7 +45,10 @@ export function checkFile<S extends z.ZodType>(
     for (const { path, ...fault } of rule.check(source.value as z.input<S>))
       found.push({ path, problem: { place: placeOf(source, path), ...fault } });
   }
-  const [first, ...others] = found.map(({ problem }) => problem).sort(byLine);
+  const [first, ...others] = found
+    .map(({ problem }) => problem)
+    .sort(byLine)
+    .slice(0, MOST_PROBLEMS);
   if (first !== undefined) throw new InputError(first, ...others);
   return parsed.data as z.output<S>;
 }

@@ -85,7 +85,7 @@ export function line(words: string, most = 200) {
 
 /** A mapping with these keys and no others. */
 export function mapping<T extends z.core.$ZodLooseShape>(words: string, shape: T) {
-  return z.strictObject(shape).meta({ description: words }).register(fieldNotes, { allowed: 'a mapping' });
+  return z.strictObject(shape).meta({ description: words });
 }
 
 /** A list. */

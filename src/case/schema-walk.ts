@@ -114,11 +114,15 @@ function stepInto(schema: Schema, step: string | number): Schema | undefined {
   return Object.hasOwn(shape, step) ? shape[String(step)] : undefined;
 }
 
+const keyWords = (keys: readonly string[]): string =>
+  keys.length > 8 ? `${keys.slice(0, 7).join(', ')} and others` : keys.join(', ');
+
 /** What is allowed, in words: every option of a union. */
 export function allowedWords(schema: Schema): string {
   const words = optionsOf(schema).map((option) => {
     const inner = bare(option);
     if (inner instanceof z.ZodUnion) return allowedWords(inner);
+    if (inner instanceof z.ZodObject) return `a mapping of ${keyWords(Object.keys(shapeOf(inner)))}`;
     return fieldNotes.get(inner)?.allowed ?? (inner as z.ZodType).description ?? inner._zod.def.type;
   });
   return [...new Set(words)].join(', or ');

@@ -23,10 +23,13 @@ export interface YamlSource {
   readonly overridden: ReadonlyMap<string, string>;
 }
 
-/** More nodes than any written file has: what aliases of aliases blow up to. */
+/** More values than any written file has, and more than aliases are good for: aliases of aliases blow up. */
 const MOST_NODES = 100_000;
+const MOST_ALIASED = 2000;
 const DEEPEST = 40;
 const LONGEST_TEXT = 4_000_000;
+/** More than anyone reads. */
+export const MOST_PROBLEMS = 100;
 
 export const pathId = (path: Path): string => JSON.stringify(path);
 
@@ -41,7 +44,7 @@ const PARSER_WORDS: Readonly<Record<string, readonly [code: string, message: str
  *
  * @param file name for messages
  * @throws InputError `empty-file`, `yaml-syntax`, `duplicate-key`, `tab-indent`, `several-documents`,
- *   `alias-bomb`, `unknown-alias`, `bad-key`, `file-too-long`: all that the parser found, in order of lines
+ *   `alias-bomb`, `too-deep`, `unknown-alias`, `bad-key`, `file-too-long`: all that the parser found, in order of lines
  */
 export function readYaml(text: string, file: string): YamlSource {
   if (text.length > LONGEST_TEXT)
@@ -58,13 +61,21 @@ export function readYaml(text: string, file: string): YamlSource {
     const { line, col } = lines.linePos(offset);
     return { line: Math.max(1, line), column: Math.max(1, col) };
   };
-  const faults = [...doc.errors, ...doc.warnings].map((fault): Problem => {
-    const known = PARSER_WORDS[fault.code];
-    const place = { file, ...spotAt(fault.pos[0]) };
-    if (known !== undefined) return { code: known[0], place, message: known[1], allowed: known[2] };
-    return { code: 'yaml-syntax', place, message: `not valid YAML: ${firstLine(fault.message)}` };
-  });
-  const [first, ...others] = faults;
+  const faults = [...doc.errors, ...doc.warnings]
+    .sort((a, b) => a.pos[0] - b.pos[0])
+    .map((fault): Problem => {
+      const place = { file, ...spotAt(fault.pos[0]) };
+      const [code, message, allowed] = PARSER_WORDS[fault.code] ?? [];
+      if (code !== undefined && message !== undefined)
+        return { code, place, message, ...(allowed && { allowed }) };
+      if (/call stack/i.test(fault.message))
+        return { code: 'too-deep', place, message: 'the nesting is far too deep' };
+      return { code: 'yaml-syntax', place, message: `not valid YAML: ${firstLine(fault.message)}` };
+    });
+  // What follows on a fault of syntax is mostly its consequence.
+  const last = faults.findIndex(({ code }) => code === 'yaml-syntax' || code === 'too-deep');
+  const [first, ...others] =
+    last < 0 ? faults.slice(0, MOST_PROBLEMS) : faults.slice(0, last + 1).slice(-MOST_PROBLEMS);
   if (first !== undefined) throw new InputError(first, ...others);
   if (doc.contents === null || (isScalar(doc.contents) && doc.contents.value === null))
     throw new InputError({
@@ -76,19 +87,21 @@ export function readYaml(text: string, file: string): YamlSource {
   const values = new Map<string, Spot>();
   const keys = new Map<string, Spot>();
   let nodes = 0;
+  let aliased = 0;
   const refuse = (node: Node | null, code: string, message: string, allowed: string): never => {
     throw new InputError({ code, place: { file, ...spotAt(node?.range?.[0] ?? 0) }, message, allowed });
   };
 
   /** `at` is the place to tell: the alias's, while following one. */
   const convert = (node: Node | null, path: Path, at: Spot | null): unknown => {
-    nodes++;
-    if (nodes > MOST_NODES || path.length > DEEPEST)
+    if (at === null) nodes++;
+    else aliased++;
+    if (nodes > MOST_NODES || aliased > MOST_ALIASED || path.length > DEEPEST)
       refuse(
         node,
         'alias-bomb',
         'aliases or nesting make far too much of this',
-        `at most ${MOST_NODES} values, ${DEEPEST} deep`,
+        `at most ${MOST_NODES} values, ${MOST_ALIASED} of them through aliases, ${DEEPEST} deep`,
       );
     const spot = at ?? (node?.range ? spotAt(node.range[0]) : null);
     if (spot !== null) values.set(pathId(path), spot);
