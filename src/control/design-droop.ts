@@ -20,9 +20,9 @@ import { searchFrequency, type Trial } from './design-search.ts';
 import type { Gains } from './sampled-loop.ts';
 
 export interface DroopDemand extends DesignPoint {
-  /** Greatest loss of speed after the step of grade [m/s]. */
+  /** Greatest loss of speed after the step of grade [m/s]; greatest gain after a step downhill. */
   readonly droop: number;
-  /** Step of grade, as a ratio; its sign does not matter. */
+  /** Step of grade, as a ratio; negative downhill. */
   readonly gradeStep: number;
   /** Damping ratio of the dominant pair of poles. */
   readonly damping: number;
@@ -69,7 +69,7 @@ export function designDroop(demand: DroopDemand): Designed {
     );
   const { gains, frequency } = result.design;
   const words =
-    `Designed at ${speedWords(demand.at)} to lose ${speedWords(droop)} on a step of ${figure(toPct(gradeStep))} % of grade, ` +
+    `Designed at ${speedWords(demand.at)} to ${gradeStep > 0 ? 'lose' : 'gain'} ${speedWords(droop)} on a step of ${figure(toPct(gradeStep))} % of grade, ` +
     `with a damping of ${figure(damping)}: ${gainWords(gains)}.`;
   const promised = {
     ...promisedFigures(design, gains, frequency, damping),

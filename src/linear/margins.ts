@@ -1,6 +1,7 @@
 import { addComplex, angleOfComplex, type Complex, complex, sizeOfComplex } from '../numeric/complex.ts';
 import { exp, log } from '../numeric/elementary.ts';
 import { bracketedRoot } from '../numeric/root.ts';
+import { parabolicPeak } from './step-figures.ts';
 
 /** Margins of a loop with negative feedback; Infinity where there is no crossover. */
 export interface Margins {
@@ -13,7 +14,7 @@ export interface Margins {
   readonly gainCrossover: number;
   /** Dead time that may be added [s]. */
   readonly delayMargin: number;
-  /** Largest |1 / (1 + L)|. */
+  /** Largest |1 / (1 + L)|, read off the grid: good to about 1e-4 unless its peak is very sharp. */
   readonly sensitivity: number;
 }
 
@@ -39,7 +40,6 @@ export function loopMargins(response: (frequency: number) => Complex, from: numb
   let phaseMargin = Number.POSITIVE_INFINITY;
   let gainCrossover = Number.NaN;
   let delayMargin = Number.POSITIVE_INFINITY;
-  let sensitivity = 0;
   const considerGain = (frequency: number, value: Complex): void => {
     const margin = value.re < 0 ? -1 / value.re : Number.POSITIVE_INFINITY;
     if (!(margin > 1 && margin < gainMargin)) return;
@@ -48,7 +48,6 @@ export function loopMargins(response: (frequency: number) => Complex, from: numb
   };
   for (let i = 0; i <= POINTS; i++) {
     const value = values[i]!;
-    sensitivity = Math.max(sensitivity, 1 / sizeOfComplex(addComplex(complex(1), value)));
     if (i === 0) continue;
     const before = values[i - 1]!;
     if (before.im > 0 !== value.im > 0 && (before.re < 0 || value.re < 0)) {
@@ -67,5 +66,8 @@ export function loopMargins(response: (frequency: number) => Complex, from: numb
   }
   const end = values[POINTS]!;
   if (Math.abs(end.im) <= 1e-9 * sizeOfComplex(end)) considerGain(to, end);
+  const sensitivity = parabolicPeak(
+    Float64Array.from(values, (value) => 1 / sizeOfComplex(addComplex(complex(1), value))),
+  ).value;
   return { gainMargin, phaseCrossover, phaseMargin, gainCrossover, delayMargin, sensitivity };
 }
