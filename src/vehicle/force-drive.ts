@@ -3,7 +3,7 @@ import type { Drive } from './vehicle.ts';
 
 /** A drive known by its force and power at the wheel. */
 export interface ForceDriveSpec {
-  /** Full-throttle force below the power limit [N]. */
+  /** Full-throttle force below the power limit [N]; 0: the vehicle only coasts. */
   readonly peakForce: number;
   /** Power limit at the wheel [W]; null: none. */
   readonly peakPower: number | null;
@@ -24,18 +24,19 @@ export interface ForceDriveSpec {
 export function forceDrive(spec: ForceDriveSpec): Drive {
   const { peakForce, peakPower, closedThrottleForce, lag, derate } = spec;
   checkSpec('force drive', [
-    { key: 'peakForce', value: peakForce, unit: 'N', least: 0, above: true },
+    { key: 'peakForce', value: peakForce, unit: 'N', least: 0 },
     { key: 'peakPower', value: peakPower ?? 1, unit: 'W', least: 0, above: true },
     { key: 'closedThrottleForce', value: closedThrottleForce, unit: 'N', least: 0 },
     { key: 'lag', value: lag, unit: 's', least: 0 },
   ]);
+  const corner = peakPower === null || peakForce === 0 ? null : peakPower / peakForce;
   const belowCorner = [-closedThrottleForce, 0, peakForce + closedThrottleForce, 0, 0, 0];
   const aboveCorner = [-closedThrottleForce, 0, closedThrottleForce, 0, 0, peakPower ?? 0];
   return {
     kind: 'force',
-    speedEdges: Float64Array.from(peakPower === null ? [] : [peakPower / peakForce]),
+    speedEdges: Float64Array.from(corner === null ? [] : [corner]),
     throttleEdges: new Float64Array(0),
-    cells: Float64Array.from(peakPower === null ? belowCorner : [...belowCorner, ...aboveCorner]),
+    cells: Float64Array.from(corner === null ? belowCorner : [...belowCorner, ...aboveCorner]),
     gears: [{ ratio: 1, inertia: 0 }],
     gear: 0,
     throttleMin: 0,

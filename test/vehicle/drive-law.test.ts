@@ -61,6 +61,12 @@ describe('a force drive', () => {
     expectClose(forceRange(petrol, 0, 50, 0.8).greatest, 0.8 * 170, 1e-12);
   });
 
+  test('without any force only coasts', () => {
+    const none = forceDrive({ peakForce: 0, peakPower: 500, closedThrottleForce: 0, lag: 0, derate: 'none' });
+    for (const [v, u] of sampled(20)) expect(wheelForce(none, 0, v, Math.abs(u), 1)).toBe(0);
+    expect(throttleFor(none, 0, 10, 50, 1)).toBeNull();
+  });
+
   test('refuses a power of nothing', () => {
     const spec = { peakForce: 260, peakPower: 0, closedThrottleForce: 40, lag: 0, derate: 'none' as const };
     expect(() => forceDrive(spec)).toThrow(/peakPower.*found 0; allowed: a finite number above 0 W/);
