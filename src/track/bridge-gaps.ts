@@ -1,13 +1,14 @@
 import { InputError } from '../problems/input-error.ts';
 import { impliedSpeed, tooFast } from './leave-out-jumps.ts';
-import { GAP, LONGEST_GAP } from './limits.ts';
+import { GAP, LONGEST_GAP, SPARSE_RATIO } from './limits.ts';
 import { placeOfPoint } from './place-of-point.ts';
 import type { RawTrack } from './raw-track.ts';
 import type { RepairLog } from './repair-log.ts';
 
 /**
  * Measures the way along the kept points, and notes what it bridges: the joins of segments, legs longer than 500 m,
- * and legs that imply more than 70 m/s.
+ * and legs that imply more than 70 m/s. Where the file gives distances, a table may be as sparse as it likes: a leg
+ * is a gap only when it is three times the usual one as well.
  *
  * @param kept raw indices
  * @param leg see legLength
@@ -21,6 +22,7 @@ export function bridgeGaps(
   log: RepairLog,
 ): Float64Array {
   const distance = new Float64Array(kept.length);
+  const usual = raw.distance === null ? 0 : SPARSE_RATIO * medianLeg(kept, leg);
   for (let k = 1; k < kept.length; k++) {
     const [a, b] = [kept[k - 1]!, kept[k]!];
     const length = leg(a, b);
@@ -28,7 +30,7 @@ export function bridgeGaps(
     distance[k] =
       raw.distance === null ? distance[k - 1]! + length : raw.distance[b]! - raw.distance[kept[0]!]!;
     const metres = `${length.toFixed(0)} m`;
-    if (length > LONGEST_GAP)
+    if (length > Math.max(LONGEST_GAP, usual))
       throw new InputError({
         code: 'track-gap',
         place: placeOfPoint(raw, b),
@@ -38,7 +40,8 @@ export function bridgeGaps(
       });
     if (raw.segment[a] !== raw.segment[b])
       log.add('segment_joined', a, b, 0, `two segments of the file joined by a straight line of ${metres}`);
-    if (length > GAP) log.add('gap', a, b, 0, `no points for ${metres}; bridged by a straight line`);
+    if (length > Math.max(GAP, usual))
+      log.add('gap', a, b, 0, `no points for ${metres}; bridged by a straight line`);
     else if (tooFast(raw, length, a, b))
       log.add(
         'gap',
@@ -49,4 +52,9 @@ export function bridgeGaps(
       );
   }
   return distance;
+}
+
+function medianLeg(kept: Int32Array, leg: (from: number, to: number) => number): number {
+  const legs = Float64Array.from({ length: kept.length - 1 }, (_, k) => leg(kept[k]!, kept[k + 1]!)).sort();
+  return legs[legs.length >> 1]!;
 }

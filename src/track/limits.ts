@@ -32,6 +32,8 @@ export const LONGEST_TIME_REVERSAL = 60;
 /** A leg longer than GAP [m] is bridged and said; longer than LONGEST_GAP [m] it is refused. */
 export const GAP = 500;
 export const LONGEST_GAP = 3000;
+/** In a table of distances, a leg up to this many usual legs is no gap. */
+export const SPARSE_RATIO = 3;
 
 /** Elevations (and grades, headings, winds, speeds) are interpolated over stretches up to this [m]. */
 export const LONGEST_FILL = 300;

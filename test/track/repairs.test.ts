@@ -127,6 +127,14 @@ describe('no repair', () => {
     expect([track.size, track.repairs]).toEqual([7, []]);
   });
 
+  it('is made on a sparse table of distances', () => {
+    const track = readTrack({
+      name: 'a.csv',
+      bytes: bytes('distance_m,elevation_m\n0,0\n5000,50\n11000,50\n16000,0'),
+    });
+    expect([track.size, track.distance.at(-1), track.repairs]).toEqual([4, 16000, []]);
+  });
+
   it('is made on a dense hairpin', () => {
     const up = Array.from({ length: 50 }, (_, i) => point(51 + i * 1e-4, 0));
     const down = Array.from({ length: 50 }, (_, i) => point(51 + (49 - i) * 1e-4, 0.0002));
