@@ -270,7 +270,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           k1 = force - d1 - r0 - v * (r1 + v * r2) - sin0 - sin1 * from;
           if (pieces === 0 && v > brakeSpeed - BRAKE_MARGIN) {
             brake = k1 + (v - brakeSpeed) / at.BRAKE_TIME;
-            brake = brake > 0 ? (brake < at.BRAKE_LIMIT ? brake : at.BRAKE_LIMIT) : 0;
+            if (!(brake > 0)) brake = 0;
+            if (brake > at.BRAKE_LIMIT) brake = at.BRAKE_LIMIT;
           }
           k1 -= brake;
           const resist = r0 + sin0 + brake;
