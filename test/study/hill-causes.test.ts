@@ -1,0 +1,147 @@
+import { describe, expect, it } from 'vitest';
+import type { LoopPlan } from '../../src/loop/plan.ts';
+import { expectClose } from '../compare.ts';
+import { roadOf } from './road-of.ts';
+import { oneHill, outcomeOn, STIFF, study } from './scene.ts';
+import { piOf, planOf, vehicleOf } from './vehicle-of.ts';
+
+/** The outcome of the one candidate on the first hill. */
+function firstOutcome(plan: LoopPlan) {
+  const { hills } = study({ pi: plan });
+  expect(hills.length).toBeGreaterThan(0);
+  return { hill: hills[0]!, outcome: outcomeOn(hills[0]!, 'pi') };
+}
+
+// The road load at 60 km/h is 1/2 1.2 0.58 16.67^2 + 215 g 0.014 = 126 N; the weight 2108 N; the peak force 260 N.
+describe('the cause of a hill', () => {
+  it('is torque where the greatest force is short at any height and in any wind', () => {
+    const { hill, outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF));
+    expect(outcome.cause).toBe('torque');
+    expect(hill.kind).toBe('climb');
+    expect(outcome.why).toContain('294 N');
+    expect(outcome.why).toContain('260 N');
+  });
+
+  it('is power where the power limit binds below the peak force', () => {
+    const vehicle = vehicleOf({ drive: { peakForce: 400, peakPower: 3500 } });
+    expect(firstOutcome(planOf(oneHill(0.08), vehicle, STIFF)).outcome.cause).toBe('power');
+  });
+
+  it('is closed throttle on a descent beyond it', () => {
+    const { hill, outcome } = firstOutcome(planOf(oneHill(-0.1), vehicleOf(), STIFF));
+    expect(outcome.cause).toBe('closed_throttle');
+    expect(hill.kind).toBe('descent');
+    expect(outcome.speedChange).toBeGreaterThan(0);
+  });
+
+  it('is gains where a limit is never met and the band is left', () => {
+    const soft = piOf({ kp: 0.06, ki: 0.004 });
+    const { outcome } = firstOutcome(planOf(oneHill(0.05), vehicleOf(), soft));
+    expect(outcome.cause).toBe('gains');
+    expect(outcome.timeAtLimit).toBe(0);
+    expect(outcome.wouldHold).toEqual([]);
+  });
+
+  it('is rate where only the slow actuator stands in the way', () => {
+    const slow = vehicleOf({ actuator: { rateLimit: 0.05 } });
+    expect(firstOutcome(planOf(oneHill(0.05), slow, STIFF)).outcome.cause).toBe('rate');
+    // The same with a fast actuator holds.
+    expect(study({ pi: planOf(oneHill(0.05), vehicleOf(), STIFF) }).hills).toEqual([]);
+  });
+
+  it('is windup where the speed is held but the integral must be paid back behind the hill', () => {
+    // 264 N are needed and 260 N there: hardly any speed is lost, but the error stays for the whole hill.
+    const road = oneHill(0.0655, 400);
+    const plain = piOf({ kp: 1, ki: 0.3, antiWindup: { kind: 'none' } });
+    const { hills } = study({
+      plain: planOf(road, vehicleOf(), plain),
+      tracking: planOf(road, vehicleOf(), STIFF),
+    });
+    const outcome = outcomeOn(hills[0]!, 'plain');
+    expect(outcome.cause).toBe('windup');
+    expect(outcome.speedChange).toBeGreaterThan(2 / 3.6);
+    // The same gains with an integrator that follows the limit keep the band; the limit itself is the torque's.
+    const tracking = outcomeOn(hills[0]!, 'tracking');
+    expect(Math.abs(tracking.speedChange)).toBeLessThan(2 / 3.6);
+    expect(tracking.cause).toBe('torque');
+    expect(tracking.wouldHold).toEqual([]);
+  });
+
+  it('is derating where the force would do at sea level', () => {
+    const vehicle = vehicleOf({ drive: { derate: 'naturally_aspirated' } });
+    const thin = { airDensity: 0.95, airTemperature: 280 };
+    expect(firstOutcome(planOf(oneHill(0.055, 800, thin), vehicle, STIFF)).outcome.cause).toBe('derating');
+    // In the same thin air without derating it holds.
+    expect(study({ pi: planOf(oneHill(0.055, 800, thin), vehicleOf(), STIFF) }).hills).toEqual([]);
+  });
+
+  it('is wind where still air would do', () => {
+    const windy = roadOf([
+      { length: 1500, grade: 0 },
+      { length: 800, grade: 0, headwind: 13 },
+      { length: 2000, grade: 0 },
+    ]);
+    const { hill, outcome } = firstOutcome(planOf(windy, vehicleOf(), STIFF));
+    expect(outcome.cause).toBe('wind');
+    expect(hill.kind).toBe('rolling');
+  });
+
+  it('is not asked of a locked throttle, which makes no hill either', () => {
+    const locked: LoopPlan['controller'] = { kind: 'locked', throttle: 'level' };
+    const road = oneHill(0.03);
+    expect(study({ locked: planOf(road, vehicleOf(), locked) }).hills).toEqual([]);
+    const steep = oneHill(0.08);
+    const { hills } = study({
+      locked: planOf(steep, vehicleOf(), locked),
+      pi: planOf(steep, vehicleOf(), STIFF),
+    });
+    const outcome = outcomeOn(hills[0]!, 'locked');
+    expect(outcome.affected).toBe(true);
+    expect(outcome.cause).toEqual({ none: 'a locked throttle does not regulate' });
+  });
+});
+
+describe('what a candidate did on a hill', () => {
+  it('agrees with the hand formula where the force is simply short', () => {
+    const { outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF));
+    expect(outcome.predictionDiffers).toBe(false);
+    expectClose(outcome.speedChange, outcome.predictedChange as number, 0.02 * Math.abs(outcome.speedChange));
+    expect(outcome.timeAtLimit).toBeGreaterThan(50);
+    expect(outcome.timeLost).toBeGreaterThan(0);
+  });
+
+  it('says where the hand formula cannot know', () => {
+    const soft = piOf({ kp: 0.06, ki: 0.004 });
+    const inRange = firstOutcome(planOf(oneHill(0.05), vehicleOf(), soft)).outcome;
+    expect(inRange.predictedChange).toHaveProperty('none');
+    expect(inRange.predictionDiffers).toBe(false);
+    const { outcome } = firstOutcome(planOf(oneHill(0.0655, 150), vehicleOf(), soft));
+    expect(outcome.predictionDiffers).toBe(true);
+  });
+
+  it('has a picture of at most 400 rows that keeps the extreme', () => {
+    const { outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF));
+    const { picture } = outcome;
+    expect(picture.size).toBeLessThanOrEqual(400);
+    let least = 0;
+    for (let i = 0; i < picture.size; i++) least = Math.min(least, picture.speed[i]! - picture.setSpeed[i]!);
+    expect(least).toBe(outcome.speedChange);
+    for (let i = 1; i < picture.size; i++) expect(picture.time[i]!).toBeGreaterThan(picture.time[i - 1]!);
+  });
+
+  it('is said of a run that ended before', () => {
+    const road = roadOf([
+      { length: 1500, grade: 0 },
+      { length: 1500, grade: 0.14 },
+      { length: 1500, grade: 0 },
+      { length: 800, grade: -0.1 },
+      { length: 500, grade: 0 },
+    ]);
+    const { hills, replayed } = study({ pi: planOf(road, vehicleOf(), STIFF) });
+    expect(replayed[0]!.result.status).not.toBe('completed');
+    const last = outcomeOn(hills.at(-1)!, 'pi');
+    expect(last.affected).toBe(false);
+    expect(last.recovery).toHaveProperty('none');
+    expect(last.picture.size).toBe(0);
+  });
+});
