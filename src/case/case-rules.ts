@@ -1,9 +1,10 @@
 import type * as z from 'zod';
 import { FIGURES } from '../study/figure-table.ts';
-import { type caseSchema, TERRAIN_ROUGHNESS } from './case-schema.ts';
+import type { caseSchema } from './case-schema.ts';
 import type { Rule, RuleFault } from './check-file.ts';
 import { nearestKey } from './nearest-key.ts';
 import { isMapping } from './schema-walk.ts';
+import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
 import type { Path } from './yaml-source.ts';
 
 type CaseInput = z.input<typeof caseSchema>;

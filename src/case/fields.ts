@@ -120,3 +120,7 @@ export function optional<T extends z.ZodType>(
 ): z.ZodExactOptional<T> {
   return absent === undefined ? field.exactOptional() : noted(field.exactOptional(), { absent, source });
 }
+
+export const kmh = (words: string) => number('km/h', 1, 300, words);
+export const km = (words: string) => number('km', 0, 5000, words);
+export const fileName = line('File name, seen from the folder of this file', 1000);

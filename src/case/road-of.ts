@@ -1,8 +1,9 @@
 import type { Air, RoadOptions, SteadyWind } from '../road/options.ts';
 import type { Profile } from '../track/track.ts';
 import { fromCelsius, fromDeg, fromHpa, fromKm, fromKmh, fromPct } from '../units/convert.ts';
-import { type CaseFile, TERRAIN_ROUGHNESS } from './case-schema.ts';
+import type { CaseFile } from './case-schema.ts';
 import type { CaseDocument } from './read-case-file.ts';
+import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
 
 /**
  * What the road is made with.

@@ -1,0 +1,108 @@
+import * as z from 'zod';
+import type { AntiWindup, ControllerSetup } from '../control/setup.ts';
+import { fieldNotes, kind, kmh, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
+
+const antiWindupSchemas = {
+  none: mapping('The integral runs on at a limit', { kind: kind('none') }),
+  conditional: mapping('The integral stands still at a limit', { kind: kind('conditional') }),
+  back_calculation: mapping('The integral is pulled back at a limit', {
+    kind: kind('back_calculation'),
+    tracking_s: number('s', 0.01, 1000, 'Tracking time'),
+  }),
+} satisfies Record<AntiWindup['kind'], z.ZodType>;
+
+/** Lower case, digits, hyphens: a candidate's name becomes part of a file name. */
+export const candidateName = z
+  .string()
+  .regex(/^[a-z0-9][a-z0-9-]{0,40}$/)
+  .meta({ description: 'Name: lower-case letters, digits and hyphens' })
+  .register(fieldNotes, { allowed: 'lower-case letters, digits and hyphens, up to 41, not a hyphen first' });
+const name = optional(candidateName);
+const throttle = (words: string) => number('%', -100, 100, words);
+
+const lockedLevel = mapping('Throttle locked at what holds the set speed on the level in still air', {
+  name,
+  kind: kind('locked'),
+  throttle: otherwise(
+    word(
+      ['level'],
+      'Locked again at each change of the set speed',
+      'level; a figure goes under throttle_pct',
+    ),
+    'level',
+    NOT_GIVEN,
+  ),
+});
+const lockedGiven = mapping('Throttle locked at a given value', {
+  name,
+  kind: kind('locked'),
+  throttle_pct: throttle('Throttle; below 0 only where the drive regenerates'),
+});
+
+const piRest = {
+  name,
+  kind: kind('pi'),
+  sample_s: otherwise(
+    number('s', 0.0005, 2, 'Sample time'),
+    0.02,
+    'a usual period of a speed loop, 10 to 100 ms',
+  ),
+  computing_delay_s: otherwise(number('s', 0, 2, 'From sample to command'), 0, 'ideal: not given'),
+  integration: otherwise(
+    word(['forward', 'backward'], 'When the integral is added up: after the command, or before'),
+    'forward',
+    NOT_GIVEN,
+  ),
+  setpoint_ramp_m_s2: optional(
+    number('m/s2', 0.01, 20, 'Rate of the reference after a change of set speed'),
+    'step',
+    NOT_GIVEN,
+  ),
+  anti_windup: otherwise(
+    z
+      .union([antiWindupSchemas.none, antiWindupSchemas.conditional, antiWindupSchemas.back_calculation])
+      .meta({ description: 'What the integral does while the command is at a limit' }),
+    { kind: 'conditional' },
+    'needs no figure of its own',
+  ),
+};
+const weight = number('', 0, 1, 'Weight of the set speed in the proportional part');
+const typedWeight = otherwise(weight, 1, 'the common form: P on the error');
+const kp = (least: number) => number('% per km/h', least, 10000, 'Proportional gain');
+
+const settlingDesign = mapping('Gains from how the set speed is reached', {
+  settling_s: number('s', 0.1, 1000, 'Time after which the speed stays within 2 % of a step'),
+  overshoot_pct: number('%', 0, 60, 'Overshoot of a step'),
+  at_kmh: optional(kmh('Speed of the operating point'), 'hold.set_speed_kmh', NOT_GIVEN),
+});
+const droopDesign = mapping('Gains from the hill', {
+  droop_kmh: number('km/h', 0.05, 50, 'Greatest loss of speed on the step of grade'),
+  grade_step_pct: number('%', 0.1, 40, 'Step of grade'),
+  damping: number('', 0.1, 5, 'Damping ratio'),
+  at_kmh: optional(kmh('Speed of the operating point'), 'hold.set_speed_kmh', NOT_GIVEN),
+});
+const piDesigned = mapping('PI with designed gains', {
+  ...piRest,
+  design: z.union([settlingDesign, droopDesign]).meta({ description: 'What the gains are worked out from' }),
+  setpoint_weight: otherwise(weight, 0, 'designed gains: the zero of P on the error is left out'),
+});
+const piByTime = mapping('PI by gain and integral time', {
+  ...piRest,
+  kp_pct_per_kmh: kp(0.000001),
+  ti_s: number('s', 0.01, 100000, 'Integral time'),
+  setpoint_weight: typedWeight,
+});
+const piByGain = mapping('PI by two gains', {
+  ...piRest,
+  kp_pct_per_kmh: kp(0),
+  ki_pct_per_kmh_s: number('% per km/h s', 0, 10000, 'Integral gain'),
+  setpoint_weight: typedWeight,
+});
+
+const candidateSchemas = {
+  locked: [lockedLevel, lockedGiven],
+  pi: [piDesigned, piByTime, piByGain],
+} as const satisfies Record<ControllerSetup['kind'], readonly z.ZodType[]>;
+
+/** What drives the throttle. */
+export const candidateSchema = z.union([...candidateSchemas.locked, ...candidateSchemas.pi]);

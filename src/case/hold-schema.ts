@@ -1,0 +1,34 @@
+import * as z from 'zod';
+import { km, kmh, list, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
+
+const changeRest = {
+  set_speed_kmh: kmh('New set speed'),
+  ramp_m_s2: optional(number('m/s2', 0.01, 20, 'Rate at which the reference goes there')),
+};
+/** The speed to hold. */
+export const holdSchema = mapping('The speed to hold', {
+  set_speed_kmh: kmh('Set speed'),
+  set_speed_is: otherwise(
+    word(['true_speed', 'indicated'], 'What the set speed means'),
+    'true_speed',
+    NOT_GIVEN,
+  ),
+  start_speed_kmh: optional(
+    number('km/h', 1, 300, 'Speed at the first point'),
+    'set_speed_kmh',
+    'the run starts at the set speed',
+  ),
+  changes: otherwise(
+    list(
+      z.union([
+        mapping('Change at a place', { at_km: km('Where, along the driven road'), ...changeRest }),
+        mapping('Change at a time', { at_s: number('s', 0, 1000000, 'When'), ...changeRest }),
+      ]),
+      0,
+      1000,
+      'Changes of the set speed, in order',
+    ),
+    [],
+    null,
+  ),
+});
