@@ -68,8 +68,8 @@ table .small{font-size:.94em}
 .card h3{margin:0 0 .2rem}
 .card p,.card ul{font-size:.86rem}
 .card svg:not(.key){display:block;width:100%;height:auto;max-width:30rem}
-.card table{font-size:.8rem}
-.card th,.card td{padding-right:.6rem}
+.card table{font-size:.78rem}
+.card th,.card td{padding-right:.55rem}
 .card .why{padding-left:1.1rem;margin-bottom:0}
 .hold{color:var(--muted)}
 .flag{color:var(--warn);font-weight:700}
@@ -101,6 +101,8 @@ thead{display:table-header-group}
 .card p,.card ul{font-size:8pt}
 .card table{font-size:7pt}
 .keys,.keyline,.facts{break-after:avoid}
+.keys{break-inside:avoid}
+.sentence{font-size:12.5pt}
 p,li{orphans:3;widows:3}
 .hash{font-size:6.4pt}
 a{color:inherit;text-decoration:none}

@@ -51,10 +51,12 @@ export function forceSpeedChart(view: View, canvas: Canvas): Html {
     });
   });
   const sets = [...new Set([view.result.hold.setSpeed, ...view.result.hold.changes.map((c) => c.setSpeed)])];
+  const slowest = Math.min(...sets);
   const setMarks = sets.map((v, i) => {
     const at = x(view.speed.of(v));
+    const before = sets.length > 1 && v === slowest;
     const words = narrow ? speedText(v, view.speed, 0) : `set speed ${speedText(v, view.speed, 0)}`;
-    return html`${segment(at, box.top, at, box.top + box.height, { stroke: paint.ink, width: 1.2, dash: '1 3' })}${label(at + 4, box.top + 12 + 14 * i, words, { size: 11, fill: paint.ink })}`;
+    return html`${segment(at, box.top, at, box.top + box.height, { stroke: paint.ink, width: 1.2, dash: '1 3' })}${label(before ? at - 4 : at + 4, box.top + 12 + (before ? 0 : 14 * i), words, { anchor: before ? 'end' : 'start', size: 11, fill: paint.ink })}`;
   });
   const words = {
     title: 'Wheel force against speed: what the drive has and what grades ask',

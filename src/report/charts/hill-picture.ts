@@ -32,12 +32,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const upper: Box = { left: 40, top: 24, width, height: 104 };
   const lower: Box = { left: 40, top: 162, width, height: 84 };
   const foot = (picture: FullSeries): number => timeAtPlace(picture, hill.from);
-  let [start, end] = [0, 1];
-  for (const { outcome } of shown) {
-    const { time, size } = outcome.picture;
-    start = Math.min(start, time[0]! - foot(outcome.picture));
-    end = Math.max(end, time[size - 1]! - foot(outcome.picture));
-  }
+  const [start, end] = timeDomain(hill, shown, foot);
   const x = scaleOf([start, end], upper.left, upper.left + width);
   const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
   const { throttleMin } = view.result.vehicle.drive;
@@ -110,6 +105,26 @@ const lookOf = (candidate: CandidateView, { paint }: Canvas) => ({
   width: 1.5,
   dash: candidate.dash,
 });
+
+/**
+ * From the first record before the foot to the last recovery of a design, but no longer behind the hill than the hill
+ * itself takes, or 40 s: a locked throttle may take minutes and would squeeze the rest.
+ */
+function timeDomain(
+  hill: Hill,
+  shown: readonly Shown[],
+  foot: (picture: FullSeries) => number,
+): readonly [number, number] {
+  const designs = shown.filter(({ candidate }) => !candidate.locked);
+  let [start, end, over] = [0, 1, 0];
+  for (const { outcome } of designs.length > 0 ? designs : shown) {
+    const { picture } = outcome;
+    start = Math.min(start, picture.time[0]! - foot(picture));
+    end = Math.max(end, picture.time[picture.size - 1]! - foot(picture));
+    over = Math.max(over, timeAtPlace(picture, hill.to) - foot(picture));
+  }
+  return [start, Math.min(end, over + Math.max(40, over))];
+}
 
 /** The designs decide the scale; a locked throttle that strays further leaves it at the edge. */
 function speedDomain(view: View, shown: readonly Shown[]): readonly [number, number] {

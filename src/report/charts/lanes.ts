@@ -3,6 +3,7 @@ import { type Html, html } from '../html.ts';
 import { binCurve, type Lane } from '../model/bin-curves.ts';
 import { type Curve, columnsOf, extentOf } from '../model/columns.ts';
 import type { CandidateView, View } from '../model/view.ts';
+import type { Paint } from '../paint.ts';
 import { bandText, changeText, placeText } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
 import {
@@ -95,7 +96,7 @@ export function lanesChart(view: View, canvas: Canvas): Html {
   const parts = looks.map((look, i) => {
     const box: Box = { left, top, width, height: narrow ? Math.round(look.height * 0.8) : look.height };
     top += box.height + gap;
-    return oneLane(view, { ...canvas, id: `${id}-${i}` }, look, box, i === looks.length - 1);
+    return oneLane(view, { ...canvas, id: `${id}-${i}` }, look, box, i === 0, i === looks.length - 1);
   });
   const words = {
     title: `${looks[0]!.name} and what drives it over ${view.distanceName}`,
@@ -115,7 +116,7 @@ export function laneChart(view: View, canvas: Canvas, look: LaneLook): Html {
     canvas,
     box.top + box.height + BOTTOM_AXIS_HEIGHT,
     words,
-    oneLane(view, canvas, look, box, true),
+    oneLane(view, canvas, look, box, true, true),
   );
 }
 
@@ -125,7 +126,7 @@ function extremes(view: View, candidate: CandidateView): string {
   return `${candidate.name}: speed error from ${changeText(extent[0], view.speed)} to ${changeText(extent[1], view.speed)}.`;
 }
 
-function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, last: boolean): Html {
+function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: boolean, last: boolean): Html {
   const { paint, id } = canvas;
   const curves = view.candidates.map((candidate) => binCurve(candidate.result.bins, look.lane));
   const x = scaleOf([0, toKm(view.length)], box.left, box.left + box.width);
@@ -140,7 +141,7 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, last: boo
     box,
     y,
     look.closed && look.lane === 'error' ? `${look.name}, near the band` : look.name,
-  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${endMarks(view, canvas, x, box)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
+  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${endMarks(view, canvas, x, box, first)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
     canvas,
     box,
     x,
@@ -184,12 +185,19 @@ function bandLabel(view: View, { paint }: Canvas, box: Box, edge: number): Html 
 }
 
 /** Where a run ended before the end of the road. */
-function endMarks(view: View, { paint }: Canvas, x: Scale, box: Box): Html {
+function endMarks(view: View, { paint }: Canvas, x: Scale, box: Box, named: boolean): Html {
   const early = view.candidates.filter((candidate) => candidate.result.status !== 'completed');
   return html`${early.map((candidate) => {
     const at = x(toKm(candidate.result.endDistance));
-    return html`<g><title>${`${candidate.name} ended at ${placeText(candidate.result.endDistance)}: ${candidate.result.status}`}</title>${segment(at, box.top, at, box.top + box.height, { stroke: paint.warn, width: 1.5, dash: '3 2' })}</g>`;
+    return html`<g><title>${`${candidate.name} ended at ${placeText(candidate.result.endDistance)}: ${candidate.result.status}`}</title>${segment(at, box.top, at, box.top + box.height, { stroke: paint.warn, width: 1.5, dash: '3 2' })}</g>${named && endName(candidate.name, at, box, paint)}`;
   })}`;
+}
+
+/** `locked ended` on the side of the mark that has room. */
+function endName(name: string, at: number, box: Box, paint: Paint): Html {
+  const text = `${name} ended`;
+  const left = at + textWidth(text, 11) + 8 > box.left + box.width ? at - textWidth(text, 11) - 8 : at + 4;
+  return html`${rectangle({ left: left - 1, top: box.top + box.height - 18, width: textWidth(text, 11) + 4, height: 14 }, paint.page, 0.85)}${label(left, box.top + box.height - 7, text, { size: 11, fill: paint.ink })}`;
 }
 
 /** Names beside the ends of the lines, moved apart where they would meet. */
@@ -202,7 +210,9 @@ function endLabels(
   y: Scale,
 ): Html {
   const wanted = view.candidates
-    .map((candidate, i) => {
+    .map((candidate, i) => ({ candidate, i }))
+    .filter(({ candidate }) => candidate.result.status === 'completed')
+    .map(({ candidate, i }) => {
       const curve = curves[i]!;
       const value = curve.size > 0 ? look.of(curve.mean[curve.size - 1]!) : 0;
       const at = Number.isFinite(value) ? y(value) : box.top;

@@ -7,18 +7,28 @@ import {
   fixed,
   gradeText,
   placeText,
+  type SpeedUnit,
   speedText,
   stretchText,
   withUnit,
 } from '../quantity.ts';
+import { figureText } from './figure-text.ts';
 import type { CandidateView, View } from './view.ts';
 
 export type Standing = 'met' | 'not met' | 'too close to call' | 'none asked' | 'incomplete';
+
+export interface DesignStanding {
+  readonly name: string;
+  readonly standing: Standing;
+  readonly words: string;
+}
 
 /** The run in one sentence, and how the design it speaks of stands against what was asked. */
 export interface Answer {
   readonly sentence: string;
   readonly standing: Standing;
+  /** How every design stands, in the order of the case: `pi-60s: 2 of 3 not met`. */
+  readonly designs: readonly DesignStanding[];
   /** The design that the sentence speaks of; null where there is none. */
   readonly design: string | null;
 }
@@ -28,7 +38,7 @@ export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
   torque: 'full throttle gives too little force',
   power: 'there is too little power',
   closed_throttle: 'closed throttle holds back too little',
-  gains: 'its gains are too soft for the change of grade',
+  gains: 'its gains are too soft for how fast road and wind change',
   rate: 'the throttle moves too slowly',
   slack: 'slack in the throttle swallows its command',
   windup: 'its integral wound up at the limit',
@@ -93,14 +103,14 @@ function withinClause(view: View, candidate: CandidateView): string {
   if (figure === undefined || isNone(figure)) return `keeps ${target} on no part of the road`;
   const band = bandText(asked?.requirement.band ?? result.band, speed);
   const place = asked === undefined ? 'of the time' : 'of the time on the holdable road';
-  return `holds ${target} within ${band} for ${percent(figure)} ${place}`;
+  return `holds ${target} within ${band} for ${percent(figure, speed)} ${place}`;
 }
 
-/** Never 100 % for what is a little less, nor 0 % for what is a little more. */
-export function percent(value: number): string {
-  const clear = value < 100 && value > 99.95 ? 99.9 : value > 0 && value < 0.05 ? 0.1 : value;
-  return withUnit(fixed(clear, clear > 99 && clear < 100 ? 1 : 0), '%');
-}
+/** Whole per cent; as the table says it where that would make 100 % of a little less, or 0 % of a little more. */
+export const percent = (value: number, speed: SpeedUnit): string =>
+  (value > 99 && value < 100) || (value > 0 && value < 1)
+    ? figureText(value, '%', speed)
+    : withUnit(fixed(value), '%');
 
 interface Defeat {
   readonly hill: Hill;
@@ -166,9 +176,29 @@ function requirementClause(findings: readonly RequirementFinding[]): { words: st
 const distanceFrom = (errorKmh: number, view: View): string =>
   speedText(fromKmh(Math.abs(errorKmh)), view.speed, 0);
 
+/** How a design stands against what was asked of it. */
+function designStanding(view: View, design: CandidateView): DesignStanding {
+  const findings = findingsOf(view, design.name);
+  const { name } = design;
+  if (design.result.status !== 'completed')
+    return { name, standing: 'incomplete', words: statusWords(design) };
+  const { standing } = requirementClause(findings);
+  const count = (verdict: RequirementFinding['verdict']) =>
+    findings.filter((one) => one.verdict === verdict).length;
+  const words = {
+    met: `all ${findings.length} met`,
+    'not met': `${count('not met')} of ${findings.length} not met`,
+    'too close to call': `${count('too close to call')} of ${findings.length} too close to call`,
+    'none asked': 'nothing asked',
+    incomplete: '',
+  }[standing];
+  return { name, standing, words };
+}
+
 /** The sentence that opens the page. */
 export function answerOf(view: View): Answer {
   const design = bestDesign(view);
+  const designs = view.candidates.filter((one) => !one.locked).map((one) => designStanding(view, one));
   if (design === null) {
     const asked = requirementClause(view.result.requirements);
     const words = lockedClause(view, true) ?? 'Nothing was replayed';
@@ -176,6 +206,7 @@ export function answerOf(view: View): Answer {
     return {
       sentence: `${words}${within}; no design was replayed beside it.`,
       standing: asked.standing,
+      designs,
       design: null,
     };
   }
@@ -193,6 +224,7 @@ export function answerOf(view: View): Answer {
   return {
     sentence: `${parts.join('; ')}.`,
     standing: design.result.status === 'completed' ? asked.standing : 'incomplete',
+    designs,
     design: design.name,
   };
 }

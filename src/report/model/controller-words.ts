@@ -1,6 +1,7 @@
 import type { AntiWindup, ControllerSetup } from '../../control/setup.ts';
 import { toPct } from '../../units/convert.ts';
 import { fixed, type SpeedUnit, significant, withUnit } from '../quantity.ts';
+import { inReaderUnit } from './reader-unit.ts';
 
 function antiWindupWords(setup: AntiWindup): string {
   switch (setup.kind) {
@@ -24,6 +25,6 @@ export function controllerWords(setup: ControllerSetup, speed: SpeedUnit): strin
   const integral = setup.ki > 0 ? `Ti ${withUnit(significant(setup.kp / setup.ki, 3), 's')}` : 'no integral';
   const every = `every ${withUnit(fixed(setup.sample * 1000), 'ms')}`;
   const weight = `set-point weight ${significant(setup.setpointWeight, 2)}`;
-  const design = setup.design === null ? '' : `; ${setup.design.words}`;
+  const design = setup.design === null ? '' : `. ${inReaderUnit(setup.design.words, speed)}`;
   return `PI, Kp ${gain}, ${integral}, ${weight}, ${every}, ${antiWindupWords(setup.antiWindup)}${design}`;
 }

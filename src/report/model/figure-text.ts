@@ -10,9 +10,10 @@ export function readable(value: number, unit: string, speed: SpeedUnit): { value
   return { value, unit: unit === '1' ? '' : unit };
 }
 
-/** Digits after the point that such a figure supports. */
+/** Digits after the point that such a figure supports; more where fewer would make 100 % of a little less. */
 function digitsOf(value: number, unit: string): number {
-  if (unit === '%' || unit === 'km/h') return 1;
+  if (unit === '%') return value < 100 && value >= 99.95 ? (value >= 99.995 ? 3 : 2) : 1;
+  if (unit === 'km/h') return 1;
   if (unit === 's') return Math.abs(value) < 9.95 ? 1 : 0;
   return digitsFor(value, 3);
 }

@@ -15,6 +15,8 @@ export interface ForceLine {
 export interface ForceLines {
   readonly lines: readonly ForceLine[];
   readonly topSpeed: number;
+  /** Thin air takes so much that full throttle is drawn twice. */
+  readonly derated: boolean;
 }
 
 const POINTS = 121;
@@ -81,5 +83,6 @@ export function forceLines(view: View): ForceLines {
       ...required,
     ],
     topSpeed,
+    derated: differs,
   };
 }

@@ -1,8 +1,9 @@
 import { isNone, type RequirementFinding, type Where } from '../../study/findings.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, html } from '../html.ts';
-import { answerOf, type Standing } from '../model/answer.ts';
+import { answerOf, type DesignStanding, type Standing } from '../model/answer.ts';
 import { figureLabel, figureText, marginText, readable } from '../model/figure-text.ts';
+import { inReaderUnit } from '../model/reader-unit.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { bandText, fixed, NO_VALUE, placeText, stretchText, withUnit } from '../quantity.ts';
@@ -25,12 +26,19 @@ export function answerSection(view: View): Section {
   const standing = STANDING[answer.standing];
   const { defaults, requirements, overrides, warnings } = view.result;
   const ofVehicle = defaults.filter((one) => one.of === 'vehicle').length;
-  const body = html`<div class="answer ${standing.look}"><p class="standing"><span aria-hidden="true">${standing.mark}</span> ${standing.words}${answer.design !== null && html` <span class="of">(${answer.design})</span>`}</p><p class="sentence">${answer.sentence}</p></div>
+  const body = html`<div class="answer ${standing.look}"><p class="standing"><span aria-hidden="true">${standing.mark}</span> ${standing.words}${answer.design !== null && html` <span class="of">(${answer.design})</span>`}</p><p class="sentence">${answer.sentence}</p>${answer.designs.length > 1 && requirements.length > 0 && standings(answer.designs)}</div>
 ${requirements.length === 0 ? html`<p>The case gives no requirement; the figures below stand by themselves.</p>` : requirementTable(view)}
 <p class="note">${defaultsWords(ofVehicle)}${overrides.length > 0 && html` Changed beside the case: ${overrides.join('; ')}.`}${warnings.length > 0 && html` <a href="#method-cautions">${warnings.length === 1 ? 'One warning' : `${warnings.length} warnings`}</a> came with the run.`}</p>
 <p class="caution"><strong>A simulation is no approval to ride.</strong> Speed hold can hide a slide, a bend or a stop ahead. Local rules, type approval and qualified people come first: <a href="#method-cautions">all cautions</a>.</p>`;
   return { id: 'answer', number: 1, title: 'The answer', body };
 }
+
+/** One word for each design, so that the best one does not speak for the rest. */
+const standings = (designs: readonly DesignStanding[]): Html =>
+  html`<ul class="keys">${designs.map(({ name, standing, words }) => {
+    const { mark, look } = STANDING[standing];
+    return html`<li><span class="verdict ${look}"><span aria-hidden="true">${mark}</span> ${name}</span> ${words}</li>`;
+  })}</ul>`;
 
 function defaultsWords(count: number): Html {
   if (count === 0) return html`Every figure of the vehicle was given; none is a default.`;
@@ -79,7 +87,7 @@ function requirementTable(view: View): Html {
 function asked(view: View, { requirement, words }: RequirementFinding): Html {
   const { label } = figureLabel(requirement.figure);
   const band = requirement.band === null ? '' : ` ${bandText(requirement.band, view.speed)}`;
-  return html`<span title="${words}">${label}${band}</span><br><span class="small">${whereWords(requirement.where)}</span>`;
+  return html`<span title="${inReaderUnit(words, view.speed)}">${label}${band}</span><br><span class="small">${whereWords(requirement.where)}</span>`;
 }
 
 export function whereWords(where: Where): string {

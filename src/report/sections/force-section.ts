@@ -1,5 +1,6 @@
 import { forceSpeedChart } from '../charts/force-speed.ts';
 import { html } from '../html.ts';
+import { forceLines } from '../model/force-lines.ts';
 import type { View } from '../model/view.ts';
 import { fixed, forceText, powerText, withUnit } from '../quantity.ts';
 import { chartFigure } from './chart-figure.ts';
@@ -15,6 +16,6 @@ export function forceSection(view: View): Section {
       ? `regeneration up to ${forceText(drive.regenerationForce)}`
       : `${forceText(drive.closedThrottleForce)} of drag at closed throttle`;
   const body = html`<p>${vehicle.name}: ${withUnit(fixed(vehicle.mass), 'kg')} with rider and load, ${forceText(drive.peakForce)} at full throttle${power}, ${least}.</p>
-${chartFigure('force', (canvas) => forceSpeedChart(view, canvas), html`Shaded: what the drive can give. Thin lines: what steady speed asks on a grade in still air. Where a thin line leaves the shade at the set speed, that grade cannot be held.${drive.derate !== 'none' && ' Full throttle is drawn for the lowest and the highest place of the route: thin air takes force away.'}`)}`;
+${chartFigure('force', (canvas) => forceSpeedChart(view, canvas), html`Shaded: what the drive can give. Thin lines: what steady speed asks on a grade in still air. Where a thin line leaves the shade at the set speed, that grade cannot be held.${forceLines(view).derated && ' Full throttle is drawn for the lowest and the highest place of the route: thin air takes force away.'}`)}`;
   return { id: 'force', number: 4, title: 'Force against speed', body };
 }

@@ -3,6 +3,7 @@ import { toPct } from '../../units/convert.ts';
 import { hillPicture } from '../charts/hill-picture.ts';
 import { candidateKey, lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
+import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import {
@@ -13,10 +14,9 @@ import {
   lengthText,
   NO_VALUE,
   shareText,
+  signed,
   speedText,
   stretchText,
-  timeText,
-  withUnit,
 } from '../quantity.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
@@ -63,7 +63,7 @@ function card(view: View, hill: Hill): Html {
 <p class="facts">${facts(view, hill)}</p>
 ${hillPicture(view, hill, canvas)}
 ${outcomes(view, hill, runs)}
-${sentences(runs)}</article>`;
+${sentences(view, runs)}</article>`;
 }
 
 function facts(view: View, hill: Hill): string {
@@ -77,9 +77,15 @@ function facts(view: View, hill: Hill): string {
       : above
         ? ` Full throttle would hold ${speedText(hill.sustainedSpeed, view.speed, 0)}.`
         : ` It would run away to ${speedText(hill.sustainedSpeed, view.speed, 0)}.`;
-  const grade = `${lengthText(hill.to - hill.from)} at ${gradeText(hill.meanGrade)} ±\u00a0${fixed(toPct(hill.meanGradeSd), 1)}\u00a0%, steepest ${gradeText(hill.maxGrade)}.`;
+  const grade = `${lengthText(hill.to - hill.from)} at ${gradeWords(hill)}, steepest ${gradeText(hill.maxGrade)}.`;
   return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
+
+/** Mean grade with its standard deviation, where it has one. */
+const gradeWords = (hill: Hill): string =>
+  hill.meanGradeSd > 0
+    ? `${gradeText(hill.meanGrade)} ±\u00a0${fixed(toPct(hill.meanGradeSd), 1)}\u00a0%`
+    : gradeText(hill.meanGrade);
 
 interface Run {
   readonly candidate: CandidateView;
@@ -87,34 +93,35 @@ interface Run {
 }
 
 function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
+  const change = (speed: number): string => signed(view.speed.of(speed), 1);
   const rows = runs.map(({ candidate, outcome }): HtmlValue[] => [
     html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
-    changeText(outcome.speedChange, view.speed),
-    html`${isNone(outcome.predictedChange) ? html`<span title="${outcome.predictedChange.none}">${NO_VALUE}</span>` : changeText(outcome.predictedChange, view.speed)}${outcome.predictionDiffers && html` <span class="flag" title="simulation and hand formula differ by more than 15 %">≠</span>`}`,
-    lostText(outcome.timeLost),
-    timeText(outcome.timeAtLimit),
+    change(outcome.speedChange),
+    html`${isNone(outcome.predictedChange) ? html`<span title="${outcome.predictedChange.none}">${NO_VALUE}</span>` : change(outcome.predictedChange)}${outcome.predictionDiffers && html` <span class="flag" title="simulation and hand formula differ by more than 15 %">≠</span>`}`,
+    seconds(outcome.timeLost),
+    seconds(outcome.timeAtLimit),
     isNone(outcome.recovery)
       ? html`<span title="${outcome.recovery.none}">${NO_VALUE}</span>`
-      : timeText(outcome.recovery),
+      : seconds(outcome.recovery),
   ]);
   return table(
     `Hill ${hill.number}: outcomes`,
     [
       { head: 'candidate' },
-      { head: 'change', number: true },
-      { head: 'by hand', number: true },
-      { head: 'time lost', number: true },
-      { head: 'at limit', number: true },
-      { head: 'recovery', number: true },
+      { head: `change / ${view.speed.axis}`, number: true },
+      { head: `by hand / ${view.speed.axis}`, number: true },
+      { head: 'time lost / s', number: true },
+      { head: 'at limit / s', number: true },
+      { head: 'recovery / s', number: true },
     ],
     rows,
   );
 }
 
-const lostText = (time: number): string => withUnit(fixed(time, Math.abs(time) < 9.95 ? 1 : 0), 's');
+const seconds = (time: number): string => fixed(time, Math.abs(time) < 9.95 ? 1 : 0);
 
 /** Why, and what would hold, for each that the hill touched; equal sentences once. */
-function sentences(runs: readonly Run[]): Html | null {
+function sentences(view: View, runs: readonly Run[]): Html | null {
   const touched = runs.filter(({ outcome }) => outcome.affected && outcome.why !== '');
   if (touched.length === 0) return null;
   const groups = new Map<string, Run[]>();
@@ -130,7 +137,7 @@ function sentences(runs: readonly Run[]): Html | null {
     const { cause, why, wouldHold } = group[0]!.outcome;
     const names = group.map(({ candidate }) => candidate.name).join(', ');
     const tag = typeof cause === 'string' ? ` (${cause.replaceAll('_', ' ')})` : '';
-    return html`<li><strong>${names}</strong>${tag}: ${why}${wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${wouldHold.map((remedy) => remedy.words).join(' ')}</span>`}</li>`;
+    return html`<li><strong>${names}</strong>${tag}: ${inReaderUnit(why, view.speed)}${wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${inReaderUnit(wouldHold.map((remedy) => remedy.words).join(' '), view.speed)}</span>`}</li>`;
   })}</ul>`;
 }
 
@@ -139,7 +146,7 @@ function allHills(view: View): Html {
     String(hill.number),
     hill.kind,
     html`<span class="who">${stretchText(hill.from, hill.to)}</span>`,
-    html`<span class="who">${gradeText(hill.meanGrade)} ± ${fixed(toPct(hill.meanGradeSd), 1)} %</span>`,
+    html`<span class="who">${gradeWords(hill)}</span>`,
     shareText(hill.share),
     forceText(hill.requiredForce),
     forceText(hill.availableForce),

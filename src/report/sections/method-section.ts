@@ -3,6 +3,7 @@ import { validityNotes } from '../../vehicle/validity.ts';
 import { REPAIR_KINDS } from '../charts/repair-marks.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { scientific } from '../model/figure-text.ts';
+import { inReaderUnit } from '../model/reader-unit.ts';
 import type { View } from '../model/view.ts';
 import { bandText, fixed, lengthText, placeText, stretchText } from '../quantity.ts';
 import { cautions } from './cautions.ts';
@@ -33,7 +34,7 @@ ${
   warnings.length > 0 &&
   html`<h3>Warnings of this run</h3><ul>${warnings.map(
     (warning) =>
-      html`<li>${warning.message}${warning.from !== undefined && warning.to !== undefined && html` <span class="small">(${stretchText(warning.from, warning.to)})</span>`}</li>`,
+      html`<li>${inReaderUnit(warning.message, view.speed)}${warning.from !== undefined && warning.to !== undefined && warning.to > warning.from && html` <span class="small">(${stretchText(warning.from, warning.to)})</span>`}</li>`,
   )}</ul>`
 }`;
 }

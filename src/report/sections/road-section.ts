@@ -6,7 +6,7 @@ import { type Html, html } from '../html.ts';
 import { DEMAND_CLASSES } from '../model/demand-classes.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { changeText, fixed, gradeText, lengthText, shareText, speedText, withUnit } from '../quantity.ts';
+import { fixed, gradeText, lengthText, shareText, speedText, withUnit } from '../quantity.ts';
 import { chartFigure } from './chart-figure.ts';
 import type { Section } from './section.ts';
 
@@ -50,14 +50,16 @@ function windWords(view: View): string {
   }
   return low === 0 && high === 0
     ? ' No wind.'
-    : ` Headwind from ${changeText(low, view.speed, 0)} (behind) to ${changeText(high, view.speed, 0)}.`;
+    : low >= 0
+      ? ` Headwind up to ${speedText(high, view.speed, 0)}.`
+      : ` Wind from ${speedText(-low, view.speed, 0)} behind to ${speedText(high, view.speed, 0)} ahead.`;
 }
 
 function caption(view: View): Html {
   const { smoothing, rawElevation } = view.result.road;
   if (smoothing === null)
     return html`Elevation as given, without smoothing${rawElevation === null && ', from a written profile'}. Brackets: hills of section 6; bold: more, or less, than the drive has.`;
-  return html`Strong: smoothed (${smoothing.source} source, half gain at ${lengthText(smoothing.wavelength)}); faint: as measured. A hill shorter than ${lengthText(smoothing.shortestHill)} is not resolved. Elevation noise ${fixed(smoothing.residualSd, 1)} m, grade of the source uncertain by ${gradeText(smoothing.sourceGradeSd).replace('+', '')} (one s.d.). Brackets: hills of section 6; bold: more, or less, than the drive has.`;
+  return html`Strong: smoothed (${smoothing.source} source, half gain at ${lengthText(smoothing.wavelength)})${rawElevation !== null && '; faint: as measured'}. A hill shorter than ${lengthText(smoothing.shortestHill)} is not resolved. Elevation noise ${fixed(smoothing.residualSd, 1)} m, grade of the source uncertain by ${gradeText(smoothing.sourceGradeSd).replace('+', '')} (one s.d.). Brackets: hills of section 6; bold: more, or less, than the drive has.`;
 }
 
 /** What the shades under the line mean. */
