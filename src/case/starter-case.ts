@@ -68,13 +68,13 @@ speed_sensor: {filter_s: 0.05, delay_s: 0.02}
 /** Grades of the invented road, each over its length [m], [%]. */
 const PIECES: readonly (readonly [length: number, gradePct: number])[] = [
   [700, 0],
-  [600, 2],
-  [500, 5],
-  [300, 8],
-  [400, 3],
+  [600, 1.5],
+  [500, 3],
+  [300, 4.5],
+  [400, 2],
   [500, 0],
-  [700, -4],
-  [300, -8],
+  [700, -2.5],
+  [300, -5],
   [500, -2],
   [500, 0],
 ];
