@@ -7,6 +7,8 @@ import type { Road } from './road.ts';
 /** A gap is this many usual spacings wide, and at least this long [m]. */
 const GAP_SPACINGS = 5;
 const GAP_LENGTH = 50;
+/** Repairs that run on for longer than this [m] are named. */
+const LONG_REPAIR = 200;
 
 /** What the points themselves give cause to say: too coarse for the grid, gaps bridged, too short for the smoothing. */
 export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
@@ -29,6 +31,14 @@ export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
       to: distance[i]!,
     });
   }
+  for (const { kind, from, to, points } of road.repairs)
+    if (points > 0 && to - from > LONG_REPAIR)
+      warnings.push({
+        code: 'long-repair',
+        message: `From km ${toKm(from).toFixed(2)} to km ${toKm(to).toFixed(2)} the track was repaired (${kind.replaceAll('_', ' ')}, ${points} points): the road there is made up more than measured.`,
+        from,
+        to,
+      });
   const length = distance[size - 1]!;
   const { smoothing } = road;
   if (smoothing === null) return warnings;

@@ -1,11 +1,11 @@
 import { medianOf, runningMedian, windowsWithin } from '../numeric/running-median.ts';
+import { gradientAtKnots, gradientSdAtKnots } from '../numeric/uniform-gradient.ts';
 import {
   lambdaOfWavelength,
   smoothWhittaker,
   type WhittakerFit,
   whittakerCovariance,
 } from '../numeric/whittaker.ts';
-import type { MaskedStretch } from './road.ts';
 
 /** Hampel's threshold, in estimated standard deviations, and the biweight's (95 % efficient on normal noise). */
 const HAMPEL_LIMIT = 3;
@@ -21,11 +21,10 @@ const NEIGHBOURHOOD = 50;
 const LEAST_NEIGHBOURS = 3;
 
 export interface ElevationInput {
-  /** Places of the points [m], ascending from 0. */
+  /** Places of the measured points [m], ascending, >= 0; what is masked or not the file's own is not among them. */
   readonly distance: Float64Array;
   /** [m] */
   readonly elevation: Float64Array;
-  readonly masks: readonly MaskedStretch[];
   /** Spacing [m] and number of the knots, at least 4, which reach from 0 to the last point or past it. */
   readonly grid: number;
   readonly knots: number;
@@ -52,29 +51,30 @@ export interface SmoothElevation {
 /**
  * Robust penalised smoothing of third order, with the grade and its uncertainty from one factor.
  *
- * Points weigh as the length they stand for, so that a wavelength means the same at any spacing; points in a mask weigh
- * nothing and are bridged. Outliers start from Hampel's filter on the raw elevation (three scaled median deviations,
- * over distance), then Tukey's biweight is iterated on residuals from which the running median is taken: a spike leaves
- * its neighbours, a hill that the smoother cannot follow does not, and keeps its weight. The noise is estimated from
- * the residuals' means by cell, so that ten correlated points a cell do not count as ten.
+ * Points weigh as the length they stand for, so that a wavelength means the same at any spacing; where there are none,
+ * the third differences bridge. Outliers start from Hampel's filter on the raw elevation (three scaled median
+ * deviations, over distance), then Tukey's biweight is iterated on residuals from which the running median is taken: a
+ * spike leaves its neighbours, a hill that the smoother cannot follow does not, and keeps its weight. The noise is
+ * estimated from the residuals' means by cell, so that ten correlated points a cell do not count as ten.
  *
- * At least three points outside of masks, else the result is not finite.
+ * With fewer than three points the result is not finite.
  */
 export function smoothElevation(input: ElevationInput): SmoothElevation {
   const { distance, elevation, grid, knots } = input;
   const size = distance.length;
   const lambda = lambdaOfWavelength(Math.max(input.wavelength / grid, 2));
   const places = distance.map((x) => Math.min(x / grid, knots - 1));
-  const base = lengthWeights(distance, grid, input.masks);
+  const base = lengthWeights(distance, grid);
   const weights = startWeights(input, base);
   let fit = smoothWhittaker({ places, values: [elevation], weights, knots, lambda });
   let residual = residualOf(fit, places, elevation);
   const trust = new Float64Array(size).fill(1);
   const windows = windowsWithin(distance, NEIGHBOURHOOD, LEAST_NEIGHBOURS);
+  const apart = new Float64Array(size);
   for (let round = 0; round < ROUNDS; round++) {
     const local = runningMedian(residual, windows.first, windows.last).median;
-    const apart = residual.map((r, i) => Math.abs(r - local[i]!));
-    const scale = Math.max(NORMAL_SCALE * medianOf(apart.filter((_, i) => base[i]! > 0)), input.noiseFloor);
+    for (let i = 0; i < size; i++) apart[i] = Math.abs(residual[i]! - local[i]!);
+    const scale = Math.max(NORMAL_SCALE * medianOf(apart), input.noiseFloor);
     let change = 0;
     for (let i = 0; i < size; i++) {
       const next = biweight(apart[i]! / (BIWEIGHT_LIMIT * scale));
@@ -88,12 +88,12 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
   }
   const covariance = whittakerCovariance(fit);
   const smooth = fit.smooth[0]!;
-  const gradeSdPerNoise = gradeSdOf(covariance, knots, grid);
+  const gradeSdPerNoise = gradientSdAtKnots(covariance, grid);
   const outliers: number[] = [];
-  for (let i = 0; i < size; i++) if (base[i]! > 0 && trust[i] === LEAST_WEIGHT) outliers.push(i);
+  for (let i = 0; i < size; i++) if (trust[i] === LEAST_WEIGHT) outliers.push(i);
   return {
     elevation: smooth,
-    grade: gradeOf(smooth, grid),
+    grade: gradientAtKnots(smooth, grid),
     gradeSdPerNoise,
     leastGradeSdPerNoise: gradeSdPerNoise.reduce(
       (least, sd) => Math.min(least, sd),
@@ -112,46 +112,16 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
   };
 }
 
-/** Slope at the knots of a uniform grid: central differences, at the ends the slope of the parabola through three knots. */
-export function gradeOf(elevation: Float64Array, grid: number): Float64Array {
-  const last = elevation.length - 1;
-  const grade = new Float64Array(last + 1);
-  for (let i = 1; i < last; i++) grade[i] = (elevation[i + 1]! - elevation[i - 1]!) / (2 * grid);
-  grade[0] = (4 * elevation[1]! - 3 * elevation[0]! - elevation[2]!) / (2 * grid);
-  grade[last] = (3 * elevation[last]! - 4 * elevation[last - 1]! + elevation[last - 2]!) / (2 * grid);
-  return grade;
-}
-
-/** S.d. of `gradeOf` for a covariance band of unit noise. */
-function gradeSdOf(covariance: Float64Array, knots: number, grid: number): Float64Array {
-  const at = (i: number, j: number): number => covariance[4 * i + j]!;
-  const sd = new Float64Array(knots);
-  const last = knots - 1;
-  for (let i = 1; i < last; i++) sd[i] = at(i + 1, 0) - 2 * at(i - 1, 2) + at(i - 1, 0);
-  const end = (near: number, middle: number, far: number, a: number, b: number, c: number): number =>
-    9 * near + 16 * middle + far - 24 * a + 6 * b - 8 * c;
-  sd[0] = end(at(0, 0), at(1, 0), at(2, 0), at(0, 1), at(0, 2), at(1, 1));
-  sd[last] = end(
-    at(last, 0),
-    at(last - 1, 0),
-    at(last - 2, 0),
-    at(last - 1, 1),
-    at(last - 2, 2),
-    at(last - 2, 1),
-  );
-  return sd.map((variance) => Math.sqrt(Math.max(0, variance)) / (2 * grid));
-}
-
-/** Half the way to both neighbours, in grid spacings; a gap counts no more than the usual spacing; masked points weigh nothing. */
-function lengthWeights(distance: Float64Array, grid: number, masks: readonly MaskedStretch[]): Float64Array {
+/** Half the way to both neighbours, in grid spacings; a gap counts as the usual spacing. */
+function lengthWeights(distance: Float64Array, grid: number): Float64Array {
   const steps = distance.slice(1).map((x, i) => x - distance[i]!);
-  const most = Math.max(4 * medianOf(steps), grid);
+  const usual = medianOf(steps);
+  const most = Math.max(4 * usual, grid);
   const last = distance.length - 1;
-  return distance.map((x, i) => {
-    if (masks.some((mask) => x >= mask.from && x <= mask.to)) return 0;
-    const before = Math.min(steps[i === 0 ? 0 : i - 1]!, most);
-    const after = Math.min(steps[i === last ? last - 1 : i]!, most);
-    return (before + after) / (2 * grid);
+  return distance.map((_, i) => {
+    const before = steps[i === 0 ? 0 : i - 1]!;
+    const after = steps[i === last ? last - 1 : i]!;
+    return ((before > most ? usual : before) + (after > most ? usual : after)) / (2 * grid);
   });
 }
 

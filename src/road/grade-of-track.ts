@@ -1,11 +1,13 @@
 import { interpolateLinear } from '../numeric/interpolate.ts';
 import { medianOf } from '../numeric/running-median.ts';
+import { gradientAtKnots } from '../numeric/uniform-gradient.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Repair } from '../track/track.ts';
+import { toKm } from '../units/convert.ts';
 import { SUSPICION_WAVELENGTH, suspectBridges } from './bridge-suspicion.ts';
 import type { DrivenTrack } from './driven-track.ts';
-import { gradeOf, smoothElevation } from './elevation-smoothing.ts';
+import { type SmoothElevation, smoothElevation } from './elevation-smoothing.ts';
 import { isWholeMetres, SOURCE_CLASSES } from './elevation-source.ts';
 import type { RoadOptions } from './options.ts';
 import type { Smoothing } from './road.ts';
@@ -54,38 +56,35 @@ export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform:
       message: 'the track has neither elevation nor grade',
       allowed: 'an elevation for its points, or a grade_pct column',
     });
-  const open = openPoints(driven);
+  const open = Array.from(driven.measured.keys()).filter((i) => driven.measured[i] === 1);
   const least = options.elevationSource === 'exact' ? 2 : 4;
   if (open.length < least)
     throw new InputError({
       code: 'too-few-elevations',
       place: { key: driven.masks.length > 0 ? 'road.masks' : 'track' },
-      message: 'too few points with elevation are left outside of the masks',
+      message: 'too few points have an elevation of their own outside of the masks',
       found: `${open.length}`,
       allowed: `at least ${least}`,
     });
+  const distance = Float64Array.from(open, (i) => driven.distance[i]!);
+  const elevation = Float64Array.from(open, (i) => driven.elevation![i]!);
   return options.elevationSource === 'exact'
-    ? bySurvey(driven, driven.elevation, open, options.grid, uniform)
-    : bySmoothing(driven, driven.elevation, options, options.elevationSource, uniform);
+    ? bySurvey(distance, elevation, options.grid, uniform)
+    : bySmoothing(distance, elevation, options, options.elevationSource, uniform);
 }
 
-function bySurvey(
-  driven: DrivenTrack,
-  elevation: Float64Array,
-  open: readonly number[],
-  grid: number,
-  uniform: Float64Array,
-): GradeAlong {
-  const x = Float64Array.from(open, (i) => driven.distance[i]!);
-  const z = Float64Array.from(open, (i) => elevation[i]!);
+function bySurvey(x: Float64Array, z: Float64Array, grid: number, uniform: Float64Array): GradeAlong {
   const atKnots = interpolateLinear(x, z, uniform);
-  // Knots past the last point go on along the last slope.
+  // Knots outside of the points go on along the first and the last slope.
   const last = x.length - 1;
+  const first = (z[1]! - z[0]!) / (x[1]! - x[0]!);
   const slope = (z[last]! - z[last - 1]!) / (x[last]! - x[last - 1]!);
-  for (let i = 0; i < uniform.length; i++)
+  for (let i = 0; i < uniform.length; i++) {
+    if (uniform[i]! < x[0]!) atKnots[i] = z[0]! + first * (uniform[i]! - x[0]!);
     if (uniform[i]! > x[last]!) atKnots[i] = z[last]! + slope * (uniform[i]! - x[last]!);
+  }
   return {
-    grade: gradeOf(atKnots, grid),
+    grade: gradientAtKnots(atKnots, grid),
     gradeSd: new Float64Array(uniform.length),
     startElevation: atKnots[0]!,
     smoothing: null,
@@ -95,7 +94,7 @@ function bySurvey(
 }
 
 function bySmoothing(
-  driven: DrivenTrack,
+  distance: Float64Array,
   elevation: Float64Array,
   options: RoadOptions,
   name: keyof typeof SOURCE_CLASSES,
@@ -105,9 +104,8 @@ function bySmoothing(
   const usual = isWholeMetres(elevation) ? source.wavelengthWholeMetres : source.wavelength;
   const wavelength = options.smoothingWavelength ?? usual;
   const input = {
-    distance: driven.distance,
+    distance,
     elevation,
-    masks: driven.masks,
     grid: options.grid,
     knots: uniform.length,
     wavelength,
@@ -136,7 +134,7 @@ function bySmoothing(
       sourceGradeSd,
       shortestHill: SHORTEST_HILL * wavelength,
     },
-    repairs: spikes(smooth.outliers, driven.distance),
+    repairs: spikes(smooth, distance, elevation, uniform),
     warnings: suspectBridges(fine.grade, smooth.grade, gradeSd, options.grid),
   };
 }
@@ -164,17 +162,14 @@ function gradeByCell(
   });
 }
 
-function openPoints(driven: DrivenTrack): number[] {
-  const open: number[] = [];
-  for (let i = 0; i < driven.size; i++) {
-    const x = driven.distance[i]!;
-    if (!driven.masks.some((mask) => x >= mask.from && x <= mask.to)) open.push(i);
-  }
-  return open;
-}
-
 /** Neighbouring outliers make one repair. */
-function spikes(outliers: readonly number[], distance: Float64Array): Repair[] {
+function spikes(
+  { outliers, elevation: smooth }: SmoothElevation,
+  distance: Float64Array,
+  elevation: Float64Array,
+  uniform: Float64Array,
+): Repair[] {
+  const line = interpolateLinear(uniform, smooth, distance);
   const repairs: Repair[] = [];
   for (let k = 0; k < outliers.length; ) {
     let end = k;
@@ -182,13 +177,18 @@ function spikes(outliers: readonly number[], distance: Float64Array): Repair[] {
     const points = end - k + 1;
     const from = distance[outliers[k]!]!;
     const to = distance[outliers[end]!]!;
+    let most = 0;
+    for (const i of outliers.slice(k, end + 1)) most = Math.max(most, Math.abs(elevation[i]! - line[i]!));
+    const [km, kmTo] = [toKm(from).toFixed(3), toKm(to).toFixed(3)];
+    const place = from === to ? `At km ${km}` : `From km ${km} to km ${kmTo}`;
+    const what = points === 1 ? '1 point' : `${points} points`;
     repairs.push({
       kind: 'elevation_spike',
       from,
       to,
       points,
       line: null,
-      message: `Elevation of ${points === 1 ? '1 point' : `${points} points`} stands out from its neighbours and was left out of the smoothing.`,
+      message: `${place}: elevation of ${what} stands ${most.toFixed(1)} m off the road around it; left out of the smoothing.`,
     });
     k = end + 1;
   }

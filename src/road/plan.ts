@@ -1,9 +1,9 @@
 import { atan2, cos, sin } from '../numeric/elementary.ts';
 import { interpolateLinear } from '../numeric/interpolate.ts';
+import { gradientAtKnots } from '../numeric/uniform-gradient.ts';
 import { lambdaOfWavelength, smoothWhittaker } from '../numeric/whittaker.ts';
 import { WGS84_EQUATORIAL_RADIUS, WGS84_FLATTENING } from '../units/constants.ts';
 import { fromDeg } from '../units/convert.ts';
-import { gradeOf } from './elevation-smoothing.ts';
 
 const TURN = 2 * Math.PI;
 
@@ -56,8 +56,8 @@ export function planOfPositions(
   const places = distance.map((x) => Math.min(x / grid, knots - 1));
   const lambda = lambdaOfWavelength(Math.max(wavelength / grid, 3));
   const { smooth } = smoothWhittaker({ places, values: [east, north], weights, knots, lambda });
-  const eastward = gradeOf(smooth[0]!, grid);
-  const northward = gradeOf(smooth[1]!, grid);
+  const eastward = gradientAtKnots(smooth[0]!, grid);
+  const northward = gradientAtKnots(smooth[1]!, grid);
   const heading = new Float64Array(knots);
   for (let i = 0; i < knots; i++) {
     const still = eastward[i] === 0 && northward[i] === 0;
@@ -92,5 +92,5 @@ export function unwind(angles: Float64Array, turn = TURN): Float64Array {
 }
 
 function curvatureOf(heading: Float64Array, grid: number): Float64Array {
-  return gradeOf(unwind(heading), grid);
+  return gradientAtKnots(unwind(heading), grid);
 }

@@ -20,7 +20,6 @@ describe('robust smoothing of elevation', () => {
       smoothElevation({
         distance: truth.distance,
         elevation,
-        masks: [],
         grid: 10,
         knots: 4000,
         wavelength: 300,

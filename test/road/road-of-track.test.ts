@@ -306,6 +306,33 @@ describe('road of a track', () => {
     expect(road.gradeSd[330]!).toBeGreaterThan(2 * road.gradeSd[150]!);
   });
 
+  it('bridges elevations that the reader had to fill, instead of believing them', () => {
+    const track = noisyTrack(16);
+    const filled = (x: number): boolean => x >= 2000 && x <= 2300;
+    const repairs: Repair[] = [
+      {
+        kind: 'missing_elevation',
+        from: 2000,
+        to: 2300,
+        points: 31,
+        line: 9,
+        message: 'From km 2.000 to km 2.300 (line 9): elevation is missing at 31 points; interpolated.',
+      },
+    ];
+    const wrong = track.elevation!.map((z, i) => (filled(track.distance[i]!) ? z + 50 : z));
+    const road = columns({ ...track, repairs });
+    expectClose(columns({ ...track, elevation: wrong, repairs }).grade, road.grade, 0);
+    expect(road.warnings.some((w) => w.code === 'long-repair' && w.from === 2000)).toBe(true);
+    expect(road.gradeSd[215]!).toBeGreaterThan(1.1 * road.gradeSd[150]!);
+    const back = columns({ ...track, repairs }, { direction: 'back' });
+    expect(back.repairs[0]!.message).toBe(
+      'From km 5.700 to km 6.000 (line 9): elevation is missing at 31 points; interpolated.',
+    );
+    // A cut inside the filled run moves past it: nothing may lean on what is cut off.
+    const cut = columns({ ...track, repairs }, { trimEnds: 2100 });
+    expectClose(cut.distance[cut.size - 1]!, 5900 - 2310, 1e-9);
+  });
+
   it('says when points are coarser than the grid, and when the road is short for its smoothing', () => {
     const distance = evenly(300, 50);
     const codes = columns(trackOf(distance, { elevation: distance.map((x) => x / 50) })).warnings.map(
