@@ -34,7 +34,9 @@ export interface CauseFinding {
  *
  * 1. A limit was met but the band was kept: the demand alone decides (step 4); if it is in range too, `gains`.
  * 2. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no throttle range, each
- *    only where it was met. The first without which the band is kept is the cause.
+ *    only where it was met. The first without which the band is kept is the cause. Where the worst error lies on the
+ *    far side of the limit (too fast after full throttle, too slow after closed), windup need answer for that side
+ *    only, and is the cause if half of its excess goes with it.
  * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it;
  *    else `gains`.
  * 4. The throttle range is named by the demand: it would be in range at sea level: `derating`; in still air: `wind`;
@@ -62,11 +64,14 @@ export function causeOnHill(
       why: `The command met its limit for ${inSeconds(events.timeUpper + events.timeLower)} although the demand stays in range; the band was kept.`,
     };
   }
+  const far = farSide(events);
   let best: Removal | null = null;
   for (const limitation of metLimitations(events)) {
     if (!has(windowed, limitation)) continue;
     const passage = passHill(without(windowed, limitation), window);
-    const left = excessOf(passage, band);
+    const overshot = limitation === 'windup' && far !== 0;
+    const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
+    if (overshot && left <= excess / 2) return windupCause(passage, events);
     if (best === null || left < best.left) best = { limitation, left, passage };
     if (left === 0) break;
   }
@@ -76,6 +81,15 @@ export function causeOnHill(
   }
   return gainsCause(hill, events);
 }
+
+/** Side of the worst error where that is the side away from the limit; else 0. */
+function farSide({ timeUpper, timeLower, low, high }: HillEvents): 1 | -1 | 0 {
+  if (timeUpper >= timeLower) return high > -low ? 1 : 0;
+  return -low > high ? -1 : 0;
+}
+
+const onSide = (passage: HillPassage, side: 1 | -1): HillPassage =>
+  side > 0 ? { ...passage, low: 0 } : { ...passage, high: 0 };
 
 /** What became of the hill with one limitation less, and what is left of the excess over the band [m/s]. */
 interface Removal {
@@ -112,16 +126,20 @@ function explain(
       why: `${named.why} Without any limit the gains alone would still let the error grow to ${inKmh(alone)}.`,
     };
   }
-  const was = `from ${inKmh(events.low)} to ${inKmh(events.high)} of error`;
-  const kept = `${inKmh(passage.low)} to ${inKmh(passage.high)}`;
-  if (limitation === 'windup')
-    return {
-      cause: 'windup',
-      why: `The integral went on growing at the limit and had to be paid back after it (${was}); with an integrator that follows the limit it is ${kept}.`,
-    };
+  if (limitation === 'windup') return windupCause(passage, events);
   return {
     cause: 'rate',
-    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${was}); without that limit it is ${kept}.`,
+    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit it is ${errorRange(passage)}.`,
+  };
+}
+
+const errorRange = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): string =>
+  `error from ${inKmh(low)} to ${inKmh(high)}`;
+
+function windupCause(passage: HillPassage, events: HillEvents): CauseFinding {
+  return {
+    cause: 'windup',
+    why: `The integral went on growing at the limit and had to be paid back after it (${errorRange(events)}); with an integrator that follows the limit it is ${errorRange(passage)}.`,
   };
 }
 

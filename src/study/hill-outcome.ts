@@ -9,7 +9,7 @@ import { marksBin } from './hill-stretches.ts';
 import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
-import { passageOf, recoveryOf, sampleAt, thinSeries } from './series-measures.ts';
+import { isSettling, passageOf, recoveryOf, sampleAt, thinSeries } from './series-measures.ts';
 
 /** Shown before the hill [s at the set speed] and after the recovery [s]; rows of a picture. */
 const LEAD = 10;
@@ -45,7 +45,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
     ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
     : { time: 0, over: last };
   const over = Math.max(last, recovery.over);
-  const passage = passageOf(series, first, over);
+  const passage = passageOf(series, first, over, demand.settling);
   const predictedChange = predict(replayed, hill, demand, series, first);
   const reasons = events.marked
     ? explainOutcome(replayed, hill, context, events)
@@ -144,6 +144,7 @@ function predict(
   );
   let extreme = 0;
   for (let i = 0; i < speeds.length; i++) {
+    if (isSettling(road.distance[a + i], demand.settling)) continue;
     const change = speeds[i] - demand.setSpeed[a + i];
     if (Math.abs(change) > Math.abs(extreme)) extreme = change;
   }

@@ -1,7 +1,7 @@
 import { LIMIT_LOWER, LIMIT_UPPER } from '../loop/plan.ts';
 import type { FullSeries } from '../loop/result.ts';
 import { RECOVERED_FOR } from './figure-table.ts';
-import type { Figure } from './findings.ts';
+import type { Figure, Stretch } from './findings.ts';
 
 /** Breaks in a stay at a limit that do not end it [s]. */
 const SAME_STAY = 0.5;
@@ -13,6 +13,9 @@ export const ROAD_ENDED = 'the run ended before it was back within 1 km/h for 3 
 
 export const errorAt = (series: FullSeries, i: number): number => series.speed[i] - series.setSpeed[i];
 const limited = (series: FullSeries, i: number): boolean => (series.limit[i] & LIMITS) !== 0;
+
+export const isSettling = (distance: number, settling: readonly Stretch[]): boolean =>
+  settling.some(({ from, to }) => distance >= from && distance < to);
 
 /** Time that sample i stands for [s]. */
 const spanOf = (series: FullSeries, i: number): number =>
@@ -30,16 +33,18 @@ export function sampleAt(series: FullSeries, distance: number): number {
   return low;
 }
 
-/** Error, time lost and time at a limit over samples [first, last). */
+/** Error, time lost and time at a limit over samples [first, last), where no change of set speed is being followed. */
 export function passageOf(
   series: FullSeries,
   first: number,
   last: number,
+  settling: readonly Stretch[] = [],
 ): { extreme: number; timeLost: number; timeAtLimit: number } {
   let extreme = 0;
   let timeLost = 0;
   let timeAtLimit = 0;
   for (let i = first; i < last; i++) {
+    if (isSettling(series.distance[i], settling)) continue;
     const e = errorAt(series, i);
     if (Math.abs(e) > Math.abs(extreme)) extreme = e;
     timeLost -= (e / series.setSpeed[i]) * spanOf(series, i);

@@ -3,7 +3,7 @@ import type { LoopPlan } from '../../src/loop/plan.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
 import { oneHill, outcomeOn, STIFF, study } from './scene.ts';
-import { piOf, planOf, vehicleOf } from './vehicle-of.ts';
+import { HOLD_60, piOf, planOf, vehicleOf } from './vehicle-of.ts';
 
 /** The outcome of the one candidate on the first hill. */
 function firstOutcome(plan: LoopPlan) {
@@ -102,6 +102,52 @@ describe('the cause of a hill', () => {
 });
 
 describe('what a candidate did on a hill', () => {
+  it('is the droop formula where the loop is linear', () => {
+    // No air, no lag: dv/dt = b u - d under u = -kp v + ki integral(e). The error after a step d is that of a damped
+    // oscillator, with its peak d / wn exp(-zeta acos(zeta) / sqrt(1 - zeta^2)); textbook, derived here.
+    const mass = 200;
+    const vehicle = {
+      ...vehicleOf({
+        mass,
+        rotatingMass: 0,
+        cda: 0,
+        c0: 0,
+        drive: { peakForce: 1000, closedThrottleForce: 0, lag: 0 },
+      }),
+      actuator: { lag: 0, rateLimit: null },
+      sensor: { filter: 0, delay: 0, scaleError: 0 },
+    };
+    const [kp, ki] = [0.1, 0.03];
+    const controller = piOf({ kp, ki, setpointWeight: 1 });
+    const grade = 0.05;
+    const { outcome } = firstOutcome(planOf(oneHill(grade), vehicle, controller));
+    const b = 1000 / mass;
+    const d = (9.80665 * grade) / Math.sqrt(1 + grade * grade);
+    const wn = Math.sqrt(b * ki);
+    const zeta = (b * kp) / (2 * wn);
+    const peak = (d / wn) * Math.exp((-zeta * Math.acos(zeta)) / Math.sqrt(1 - zeta * zeta));
+    expectClose(outcome.speedChange, -peak, 0.02 * peak);
+    expect(outcome.cause).toBe('gains');
+  });
+
+  it('leaves out what a change of set speed explains', () => {
+    const road = oneHill(0.08);
+    const changes = [{ at: { distance: 2500 }, setSpeed: 45 / 3.6, ramp: null }];
+    const plan = planOf(road, vehicleOf(), STIFF, { hold: { ...HOLD_60, changes } });
+    const { outcome } = firstOutcome(plan);
+    // The step of 15 km/h down would be the extreme.
+    expect(outcome.speedChange).toBeLessThan(0);
+    expect(outcome.speedChange).toBeGreaterThan(-12 / 3.6);
+  });
+
+  it('is windup where a throttle closed for a long descent is paid for behind it', () => {
+    const plain = piOf({ kp: 0.4, ki: 0.08, antiWindup: { kind: 'none' } });
+    const plan = planOf(oneHill(-0.1), vehicleOf(), plain, { rider: { brakesAbove: 8 / 3.6 } });
+    const { outcome } = firstOutcome(plan);
+    expect(outcome.speedChange).toBeLessThan(-8 / 3.6);
+    expect(outcome.cause).toBe('windup');
+  });
+
   it('agrees with the hand formula where the force is simply short', () => {
     const { outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF));
     expect(outcome.predictionDiffers).toBe(false);
