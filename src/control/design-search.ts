@@ -13,7 +13,9 @@ export type SearchResult<T> =
   | { readonly status: 'limit'; readonly nearest: Trial<T> | null };
 
 /** All of these in the logarithm of frequency or figure. */
-const TOLERANCE = 1e-7;
+const TOLERANCE = 1e-6;
+/** A figure that is missed by more at the root jumps there. */
+const JUMP = 1e-3;
 const LEAST_STRIDE = 1e-3;
 const CAREFUL_STRIDE = 0.06;
 const LARGEST_STRIDE = 0.8;
@@ -87,7 +89,9 @@ function refine<T>(
     to,
     TOLERANCE,
   );
-  const made = at(root.x);
+  const there = at(root.x);
+  // On the faster side of a jump the demand is met, on the slower it is not.
+  const made = there !== null && miss(there) > JUMP ? at(root.x + 4 * TOLERANCE) : there;
   return made === null ? { status: 'limit', nearest: null } : { status: 'found', design: made.design };
 }
 

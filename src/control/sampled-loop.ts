@@ -83,11 +83,20 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
   const row = Float64Array.from({ length: order }, (_, j) => scale * late.phi.get(measured, j));
   const direct = scale * late.gamma.get(measured, 0);
 
+  const kept = new Map<number, { readonly phi: Float64Array; readonly gamma: Float64Array }>();
+  /** The plant over one of so many parts of a sample. */
+  function partOfSample(parts: number): { readonly phi: Float64Array; readonly gamma: Float64Array } {
+    const known = kept.get(parts);
+    if (known !== undefined) return known;
+    const { phi, gamma } = holdInput(plant.a, plant.b, sample / parts);
+    const made = { phi: Float64Array.from(phi.to1DArray()), gamma: Float64Array.from(gamma.to1DArray()) };
+    kept.set(parts, made);
+    return made;
+  }
+
   function respond(gains: Gains, push: Push, duration: number, spacing: number): SpeedResponse {
     const parts = Math.max(1, Math.ceil(sample / spacing - 1e-9));
-    const step = holdInput(plant.a, plant.b, sample / parts);
-    const phi = Float64Array.from(step.phi.to1DArray());
-    const gamma = Float64Array.from(step.gamma.to1DArray());
+    const { phi, gamma } = partOfSample(parts);
     const samples = Math.ceil(duration / sample);
     const values = new Float64Array(samples * parts + 1);
     const reference = scale * push.reference;
