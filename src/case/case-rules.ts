@@ -30,7 +30,7 @@ export const caseRules: readonly Rule<CaseInput>[] = [
   { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
 ];
 
-/** Checks by name, which hold whatever else is wrong with the items. */
+/** Checks by name, which hold whatever else is wrong with the items: no item has the number -1, so none stops them. */
 export const caseNameRules: readonly Rule<unknown>[] = [
   {
     about: ['candidates', -1],
@@ -81,7 +81,7 @@ function unknownCandidates(file: unknown): RuleFault[] {
   return items(file, 'requirements').flatMap((requirement, i) =>
     (Array.isArray(requirement.candidates) ? requirement.candidates : []).flatMap(
       (name: unknown, k: number) =>
-        typeof name !== 'string' || known.includes(name)
+        typeof name !== 'string' || known.includes(name) || known.length === 0
           ? []
           : [
               {

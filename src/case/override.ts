@@ -15,16 +15,18 @@ interface Override {
  * Applies changes given beside the file, in order. A path is dotted, list items by number from 0, by name or by id;
  * missing mappings on the way are made. A value is read as YAML.
  *
+ * @param under start of the paths that the source does not have: `vehicle.` for a vehicle in its own file
  * @returns the same source with the values put in, each known as coming from its option
  * @throws InputError `bad-override`, naming the option's text
  */
-export function applyOverrides(source: YamlSource, overrides: readonly string[]): YamlSource {
+export function applyOverrides(source: YamlSource, overrides: readonly string[], under = ''): YamlSource {
   if (overrides.length === 0) return source;
   const value = structuredCopy(source.value);
   const overridden = new Map(source.overridden);
   for (const text of overrides) {
     const override = readOverride(text);
-    overridden.set(pathId(put(value, override)), text);
+    const path = override.path.slice(override.path.startsWith(under) ? under.length : 0);
+    overridden.set(pathId(put(value, { ...override, path })), text);
   }
   return { ...source, value, overridden };
 }

@@ -17,7 +17,7 @@ export interface CaseDocument {
   readonly file: CaseFile;
   /** Changes given beside the case, as typed: all of them. */
   readonly overrides: readonly string[];
-  /** Those of them that belong in the vehicle's file, without the leading `vehicle.`: for readVehicleFile. */
+  /** Those of them that reach into the vehicle's own file, as typed: for readVehicleFile. */
   readonly vehicleOverrides: readonly string[];
   readonly defaults: readonly DefaultUsed[];
   /** Files named in the case, as written, relative to its folder; null: written in the case itself. */
@@ -52,7 +52,7 @@ export function readCaseFile(text: string, file: string, overrides: readonly str
     source,
     file: checked,
     overrides,
-    vehicleOverrides: overrides.filter(ofVehicleFile).map((text) => text.slice('vehicle.'.length)),
+    vehicleOverrides: overrides.filter(ofVehicleFile),
     defaults: caseDefaults(source.value, checked),
     trackFile: 'file' in checked.track ? checked.track.file : null,
     vehicleFile: typeof checked.vehicle === 'string' ? checked.vehicle : null,

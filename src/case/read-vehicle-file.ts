@@ -18,7 +18,7 @@ export interface VehicleDocument {
  *
  * @param text YAML or JSON
  * @param file name for messages
- * @param overrides changes given beside the case, `mass.payload_kg=40`; see CaseDocument.vehicleOverrides
+ * @param overrides changes given beside the case, as typed there: `vehicle.mass.payload_kg=40`; see CaseDocument.vehicleOverrides
  * @throws InputError with every problem of the file, by line
  */
 export function readVehicleFile(
@@ -26,13 +26,9 @@ export function readVehicleFile(
   file: string,
   overrides: readonly string[] = [],
 ): VehicleDocument {
-  return checkVehicle(applyOverrides(readYaml(text, file), overrides));
-}
-
-/** Checks a vehicle that has been parsed. */
-export function checkVehicle(source: YamlSource): VehicleDocument {
-  const file = checkFile(vehicleSchema, vehicleRules, source);
-  return { source, file, defaults: vehicleDefaults(source.value, file) };
+  const source = applyOverrides(readYaml(text, file), overrides, 'vehicle.');
+  const vehicle = checkFile(vehicleSchema, vehicleRules, source);
+  return { source, file: vehicle, defaults: vehicleDefaults(source.value, vehicle) };
 }
 
 /** The defaults a vehicle uses, those that hang on other keys with their figures. */

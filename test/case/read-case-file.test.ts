@@ -180,7 +180,7 @@ it('makes the mappings that an override needs', () => {
 it('hands on to the vehicle file what reaches into it, and puts it into a vehicle of the case', () => {
   const override = 'vehicle.mass.payload_kg=40';
   const outside = readCaseFile(FIVE_LINES, 'a.yaml', [override, 'hold.set_speed_kmh=50']);
-  expect(outside.vehicleOverrides).toEqual(['mass.payload_kg=40']);
+  expect(outside.vehicleOverrides).toEqual([override]);
   expect(
     readVehicleFile(route('vehicles/proving-125.yaml'), 'v.yaml', outside.vehicleOverrides).file.mass
       .payload_kg,
@@ -192,6 +192,16 @@ it('hands on to the vehicle file what reaches into it, and puts it into a vehicl
   const inside = readCaseFile(inline, 'a.yaml', [override]);
   expect(inside.vehicleOverrides).toEqual([]);
   expect(inside.vehicle?.file.mass.payload_kg).toBe(40);
+});
+
+it('names the option as typed when the vehicle file refuses its value', () => {
+  const { vehicleOverrides } = readCaseFile(FIVE_LINES, 'a.yaml', ['vehicle.mass.payload_kg=-1']);
+  const error = refused(() =>
+    readVehicleFile(route('vehicles/proving-125.yaml'), 'v.yaml', vehicleOverrides),
+  );
+  expect(error.message).toBe(
+    '--set vehicle.mass.payload_kg=-1: mass.payload_kg: is out of range (found -1; allowed: a number from 0 to 1000 kg)',
+  );
 });
 
 it.each([
@@ -222,3 +232,35 @@ it('keeps a key named __proto__ a key', () => {
   const { problems } = refused(() => readCaseFile(`${FIVE_LINES}__proto__: {scheme: fast}\n`, 'a.yaml'));
   expect(problems.map(({ code, place }) => [code, place.line])).toEqual([['unknown-key', 6]]);
 });
+
+it.each(['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml'])(
+  'means by each default of %s what it says: written out, nothing changes and none is left',
+  (name) => {
+    const { file, defaults } = readCaseFile(route(name), name);
+    // Words for what is not there have no value to write.
+    const values = defaults.filter(({ value }) => !['none', 'step', 'by elevation_source'].includes(value));
+    expect(values.length).toBeGreaterThan(5);
+    const written = readCaseFile(
+      route(name),
+      name,
+      values.map(({ key, value }) => `${key}=${value}`),
+    );
+    const left = written.defaults.filter(
+      ({ value }) => !['none', 'step', 'by elevation_source'].includes(value),
+    );
+    expect(left).toEqual([]);
+    const plain = (of: typeof file) => ({
+      ...of,
+      hold: { ...of.hold, start_speed_kmh: of.hold.start_speed_kmh ?? of.hold.set_speed_kmh },
+      candidates: of.candidates.map((candidate) =>
+        'design' in candidate
+          ? {
+              ...candidate,
+              design: { ...candidate.design, at_kmh: candidate.design.at_kmh ?? of.hold.set_speed_kmh },
+            }
+          : candidate,
+      ),
+    });
+    expect(plain(written.file)).toEqual(plain(file));
+  },
+);
