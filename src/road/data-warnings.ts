@@ -2,6 +2,7 @@ import { medianOf } from '../numeric/running-median.ts';
 import type { Warning } from '../problems/warning.ts';
 import { toKm } from '../units/convert.ts';
 import type { DrivenTrack } from './driven-track.ts';
+import type { RoadOptions } from './options.ts';
 import type { Road } from './road.ts';
 
 /** A gap is this many usual spacings wide, and at least this long [m]. */
@@ -11,7 +12,7 @@ const GAP_LENGTH = 50;
 const LONG_REPAIR = 200;
 
 /** What the points themselves give cause to say: too coarse for the grid, gaps bridged, too short for the smoothing. */
-export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
+export function dataWarnings(driven: DrivenTrack, road: Road, options: RoadOptions): Warning[] {
   const warnings: Warning[] = [];
   const { distance, size } = driven;
   const steps = distance.slice(1).map((x, i) => x - distance[i]!);
@@ -39,6 +40,7 @@ export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
         from,
         to,
       });
+  warnings.push(...unusedInput(driven, options));
   const length = distance[size - 1]!;
   const { smoothing } = road;
   if (smoothing === null) return warnings;
@@ -51,6 +53,28 @@ export function dataWarnings(driven: DrivenTrack, road: Road): Warning[] {
     warnings.push({
       code: 'grid-coarse-for-smoothing',
       message: `The grid of ${road.grid} m is coarse for a smoothing wavelength of ${smoothing.wavelength.toFixed(0)} m; a quarter of it or less shows what the smoothing keeps.`,
+    });
+  return warnings;
+}
+
+/** What was given and has no effect. */
+function unusedInput(driven: DrivenTrack, options: RoadOptions): Warning[] {
+  const warnings: Warning[] = [];
+  if (driven.headwind !== null && options.wind !== null)
+    warnings.push({
+      code: 'headwind-column-used',
+      message: 'The file gives the headwind itself: it is used, and the wind of the case is not.',
+    });
+  if (driven.grade !== null && options.masks.length > 0)
+    warnings.push({
+      code: 'masks-unused',
+      message: 'The file gives the grade itself: it is used as it is, and masks change nothing.',
+    });
+  const lost = options.masks.length - driven.masks.length;
+  if (lost > 0)
+    warnings.push({
+      code: 'mask-outside-road',
+      message: `${lost === 1 ? '1 mask lies' : `${lost} masks lie`} outside of the driven part of the track and ${lost === 1 ? 'changes' : 'change'} nothing.`,
     });
   return warnings;
 }

@@ -46,7 +46,7 @@ export const SOURCE_CLASSES: Readonly<Record<Exclude<ElevationSource, 'exact'>, 
   dem90: {
     wavelength: 1100,
     wavelengthWholeMetres: 1100,
-    gradeSd: 0.015,
+    gradeSd: 0.013,
     noiseFloor: 3,
     planWavelength: 60,
   },

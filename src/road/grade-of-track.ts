@@ -15,6 +15,9 @@ import type { Smoothing } from './road.ts';
 /** An isolated hill (a raised cosine) this many wavelengths from foot to foot keeps 90 % of its height. */
 const SHORTEST_HILL = 1.3;
 
+/** Elevations in whole metres flicker by one: that is no outlier. Scale of the noise [m]. */
+const WHOLE_METRE_FLOOR = 0.5;
+
 /** Grade at the uniform knots and where it comes from. */
 export interface GradeAlong {
   readonly grade: Float64Array;
@@ -57,7 +60,7 @@ export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform:
       allowed: 'an elevation for its points, or a grade_pct column',
     });
   const open = Array.from(driven.measured.keys()).filter((i) => driven.measured[i] === 1);
-  const least = options.elevationSource === 'exact' ? 2 : 4;
+  const least = options.elevationSource === 'exact' ? 2 : 3;
   if (open.length < least)
     throw new InputError({
       code: 'too-few-elevations',
@@ -101,7 +104,8 @@ function bySmoothing(
   uniform: Float64Array,
 ): GradeAlong {
   const source = SOURCE_CLASSES[name];
-  const usual = isWholeMetres(elevation) ? source.wavelengthWholeMetres : source.wavelength;
+  const whole = isWholeMetres(elevation);
+  const usual = whole ? source.wavelengthWholeMetres : source.wavelength;
   const wavelength = options.smoothingWavelength ?? usual;
   const input = {
     distance,
@@ -109,7 +113,7 @@ function bySmoothing(
     grid: options.grid,
     knots: uniform.length,
     wavelength,
-    noiseFloor: source.noiseFloor,
+    noiseFloor: whole ? Math.max(source.noiseFloor, WHOLE_METRE_FLOOR) : source.noiseFloor,
   };
   const smooth = smoothElevation(input);
   const fine =

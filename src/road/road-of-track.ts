@@ -70,7 +70,7 @@ export function roadOfTrack(track: Track, options: RoadOptions): Road {
   };
   const warned = {
     ...road,
-    warnings: [...dataWarnings(driven, road), ...along.warnings, ...roadWarnings(road)],
+    warnings: [...dataWarnings(driven, road, options), ...along.warnings, ...roadWarnings(road)],
   };
   return options.direction === 'both' ? thereAndBack(warned) : warned;
 }

@@ -341,6 +341,18 @@ describe('road of a track', () => {
     expect(codes).toEqual(['interpolated', 'short-for-smoothing', 'ends-uncertain']);
   });
 
+  it('says when something that was given has no effect', () => {
+    const distance = evenly(3000, 10);
+    const zeros = distance.map(() => 0);
+    const track = trackOf(distance, { grade: zeros, headwind: zeros });
+    const masks = [
+      { from: 100, to: 200, reason: 'viaduct' },
+      { from: 4000, to: 4100, reason: 'elsewhere' },
+    ];
+    const codes = columns(track, { wind: windFrom(0), masks }).warnings.map((w) => w.code);
+    expect(codes).toEqual(['headwind-column-used', 'masks-unused', 'mask-outside-road']);
+  });
+
   it('refuses what cannot become a road, with stable codes', () => {
     const code = (act: () => unknown): string => {
       try {
