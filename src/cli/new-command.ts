@@ -1,16 +1,17 @@
-import { mkdirSync, readdirSync, writeFileSync } from 'node:fs';
+import { readdirSync, writeFileSync } from 'node:fs';
 import { dirname, join } from 'node:path';
 import { starterCase } from '../case/starter-case.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Invocation } from './commands.ts';
 import { DONE } from './exit-status.ts';
 import { fileProblem } from './file-problem.ts';
+import { makeFolder } from './make-folder.ts';
 
 /** `ridgehold new DIR`: a commented starter case, its vehicle and its track. */
 export function newCommand({ operands: [folder], values }: Invocation<'new'>): number {
   const files = starterCase();
   try {
-    mkdirSync(folder, { recursive: true });
+    makeFolder(folder);
     if (readdirSync(folder).length > 0)
       throw new InputError({
         code: 'folder-not-empty',
@@ -19,7 +20,7 @@ export function newCommand({ operands: [folder], values }: Invocation<'new'>): n
         allowed: 'a new or an empty folder',
       });
     for (const { name, text } of files) {
-      mkdirSync(dirname(join(folder, name)), { recursive: true });
+      makeFolder(dirname(join(folder, name)));
       writeFileSync(join(folder, name), text, { flag: 'wx' });
     }
   } catch (error) {

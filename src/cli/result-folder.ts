@@ -2,7 +2,6 @@ import {
   accessSync,
   constants,
   existsSync,
-  mkdirSync,
   readdirSync,
   readFileSync,
   renameSync,
@@ -14,6 +13,7 @@ import {
 import { dirname, join, resolve } from 'node:path';
 import { InputError } from '../problems/input-error.ts';
 import { fileProblem } from './file-problem.ts';
+import { makeFolder } from './make-folder.ts';
 
 export interface TextFile {
   /** Below the folder, with `/`. */
@@ -58,7 +58,10 @@ const notFolder = (here: string, folder: string): string =>
  * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`
  */
 export function writeResult(folder: string, files: readonly TextFile[]): void {
-  const made = makeFolder(folder);
+  let made: string | undefined;
+  within(folder, () => {
+    made = makeFolder(folder);
+  });
   const stage = join(folder, `.ridgehold-${process.pid}`);
   try {
     removeAbandoned(folder);
@@ -68,7 +71,7 @@ export function writeResult(folder: string, files: readonly TextFile[]): void {
     for (const { name, text } of files) {
       const path = join(stage, 'new', name);
       within(join(folder, name), () => {
-        mkdirSync(dirname(path), { recursive: true });
+        makeFolder(dirname(path));
         writeFileSync(path, text, { flag: 'wx' });
       });
     }
@@ -92,15 +95,6 @@ function within(path: string, act: () => void): void {
   }
 }
 
-/** Makes the folder; the topmost folder that had to be made, if any. */
-function makeFolder(folder: string): string | undefined {
-  let made: string | undefined;
-  within(folder, () => {
-    made = mkdirSync(folder, { recursive: true });
-  });
-  return made;
-}
-
 function refuseFolder(folder: string, name: string): void {
   const path = join(folder, name);
   if (existsSync(path) && statSync(path).isDirectory())
@@ -119,8 +113,8 @@ function swap(folder: string, stage: string, files: readonly TextFile[]): void {
       const target = join(folder, name);
       const aside = join(stage, 'old', name);
       within(target, () => {
-        mkdirSync(dirname(target), { recursive: true });
-        mkdirSync(dirname(aside), { recursive: true });
+        makeFolder(dirname(target));
+        makeFolder(dirname(aside));
         if (existsSync(target)) {
           renameSync(target, aside);
           undo.push(() => renameSync(aside, target));

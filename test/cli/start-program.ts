@@ -16,7 +16,13 @@ export interface Ended {
 /** Runs `ridgehold ...args`; `shell` goes before it in a shell, such as `ulimit -f 8`. */
 export function ridgehold(folder: string, args: readonly string[], shell?: string): Ended {
   const env = { ...process.env, NO_COLOR: '1' };
-  const options = { cwd: folder, encoding: 'utf8', env, maxBuffer: 256 * 1024 * 1024 } as const;
+  const options = {
+    cwd: folder,
+    encoding: 'utf8',
+    env,
+    maxBuffer: 256 * 1024 * 1024,
+    timeout: 90_000,
+  } as const;
   const done =
     shell === undefined
       ? spawnSync(process.execPath, [PROGRAM, ...args], options)
