@@ -108,11 +108,13 @@ function matchOvershoot(design: DesignLoop, frequency: number, guess: number, ta
   const first = excess(guess);
   let near = guess;
   let far = guess;
-  for (let stride = STRIDE; excess(far) > 0 === first > 0; stride *= 2) {
+  let stride = STRIDE;
+  do {
     near = far;
     far = first > 0 ? far * (1 + stride) : far / (1 + stride);
+    stride *= 2;
     if (far > LARGEST_DAMPING || far < LEAST_DAMPING) return null;
-  }
+  } while (excess(far) > 0 === first > 0);
   const damping = bracketedRoot(excess, near, far, 1e-8).x;
   return { gains: gainsAt(damping), frequency, damping };
 }

@@ -52,7 +52,10 @@ export interface Push {
 export interface SampledLoop {
   /** Speed at every `spacing` from time 0 for a whole number of samples [m/s], all starting from rest. */
   respond(gains: Gains, push: Push, duration: number, spacing: number): SpeedResponse;
-  /** Poles of the closed loop in the s plane [1/s], slowest first. */
+  /**
+   * Poles of the closed loop in the s plane [1/s], slowest first. Where the delay is longer than 60 samples they are those of
+   * a loop with a coarser sample and the same lag in all, whose slow poles agree to a few thousandths.
+   */
   poles(gains: Gains): readonly Complex[];
   /** Gain around the open loop at z = e^(j w h). */
   openLoop(gains: Gains, frequency: number): Complex;
@@ -65,6 +68,9 @@ export interface SpeedResponse {
   /** [s] */
   readonly spacing: number;
 }
+
+/** Measurements on their way up to which the closed loop is one matrix. */
+const LONGEST_QUEUE = 60;
 
 /** Builds the loop around a linear model of the vehicle. */
 export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: LoopTiming): SampledLoop {
@@ -149,6 +155,19 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     return matrix;
   }
 
+  function poles(gains: Gains): readonly Complex[] {
+    if (back <= LONGEST_QUEUE) return continuousPoles(eigenvalues(closedLoop(gains)), sample);
+    const coarse = sample * Math.ceil(back / (LONGEST_QUEUE / 2));
+    // Half a sample of hold more is taken off the delay; the rectangle rule adds or takes ki h / 2 of P.
+    const more = (coarse - sample) / 2;
+    const twin = sampledLoop(vehicle, model, {
+      sample: coarse,
+      computingDelay: timing.computingDelay - more,
+      integration,
+    });
+    return twin.poles({ kp: gains.kp + (backward ? -more : more) * gains.ki, ki: gains.ki });
+  }
+
   const throttleInput = whole.gamma.getColumn(0);
   /** From command to measurement; null at a pole. */
   function measurement(z: Complex): Complex | null {
@@ -198,12 +217,7 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     return { kp: slow.right.re - ki * slow.left.re, ki };
   }
 
-  return {
-    respond,
-    poles: (gains) => continuousPoles(eigenvalues(closedLoop(gains)), sample),
-    openLoop,
-    placePair,
-  };
+  return { respond, poles, openLoop, placePair };
 }
 
 interface Plant {

@@ -157,6 +157,22 @@ describe('placePair', () => {
   });
 });
 
+test('slow poles of a loop with a long delay, taken at a coarser sample, are roots of the loop itself', () => {
+  const slow = withLags(0.06, 0.15, 0.05, 0.5);
+  for (const integration of ['forward', 'backward'] as const) {
+    const loop = sampledLoop(slow, model, { sample: 0.002, computingDelay: 0, integration });
+    for (const damping of [0.5, 1.6]) {
+      const frequency = 0.4;
+      const poles = loop.poles(loop.placePair(frequency, damping));
+      const root = Math.sqrt(Math.abs(1 - damping * damping));
+      const wanted =
+        damping < 1 ? complex(-damping * frequency, root * frequency) : complex((root - damping) * frequency);
+      const miss = Math.min(...poles.map((pole) => Math.hypot(pole.re - wanted.re, pole.im - wanted.im)));
+      expect(miss / frequency).toBeLessThan(2e-3);
+    }
+  }
+});
+
 test('the response between samples does not depend on how finely it is asked for', () => {
   const loop = sampledLoop(withLags(0.06, 0.15, 0.05, 0.033), model, {
     sample: 0.1,
