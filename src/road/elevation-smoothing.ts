@@ -7,9 +7,14 @@ import {
   whittakerCovariance,
 } from '../numeric/whittaker.ts';
 
-/** Hampel's threshold, in estimated standard deviations, and the biweight's (95 % efficient on normal noise). */
+/** Hampel's threshold, in estimated standard deviations. */
 const HAMPEL_LIMIT = 3;
-const BIWEIGHT_LIMIT = 4.685;
+/**
+ * Where the weights begin to fall and where they reach nothing, in standard deviations: Tukey's biweight behind a flat
+ * core. The plain biweight with the same limit makes the grade of clean data 2.9 % worse (white noise), this 0.2 %.
+ */
+const CORE_LIMIT = 2.5;
+const OUTLIER_LIMIT = 4.685;
 /** From a median absolute deviation to a standard deviation of normal noise. */
 const NORMAL_SCALE = 1.4826;
 /** An outlier keeps this share of its weight, so that the next round can take it back. */
@@ -53,7 +58,7 @@ export interface SmoothElevation {
  *
  * Points weigh as the length they stand for, so that a wavelength means the same at any spacing; where there are none,
  * the third differences bridge. Outliers start from Hampel's filter on the raw elevation (three scaled median
- * deviations, over distance), then Tukey's biweight is iterated on residuals from which the running median is taken: a
+ * deviations, over distance), then a biweight is iterated on residuals from which the running median is taken: a
  * spike leaves its neighbours, a hill that the smoother cannot follow does not, and keeps its weight. The noise is
  * estimated from the residuals' means by cell, so that ten correlated points a cell do not count as ten.
  *
@@ -77,7 +82,7 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
     const scale = Math.max(NORMAL_SCALE * medianOf(apart), input.noiseFloor);
     let change = 0;
     for (let i = 0; i < size; i++) {
-      const next = biweight(apart[i]! / (BIWEIGHT_LIMIT * scale));
+      const next = trustIn(apart[i]! / scale);
       change = Math.max(change, Math.abs(next - trust[i]!));
       trust[i] = next;
       weights[i] = base[i]! * next;
@@ -135,10 +140,11 @@ function startWeights(input: ElevationInput, base: Float64Array): Float64Array {
   });
 }
 
-function biweight(u: number): number {
-  if (u >= 1) return LEAST_WEIGHT;
-  const root = 1 - u * u;
-  return Math.max(root * root, LEAST_WEIGHT);
+function trustIn(deviations: number): number {
+  if (deviations <= CORE_LIMIT) return 1;
+  if (deviations >= OUTLIER_LIMIT) return LEAST_WEIGHT;
+  const u = (deviations - CORE_LIMIT) / (OUTLIER_LIMIT - CORE_LIMIT);
+  return Math.max((1 - u * u) * (1 - u * u), LEAST_WEIGHT);
 }
 
 function residualOf(fit: WhittakerFit, places: Float64Array, elevation: Float64Array): Float64Array {
@@ -151,7 +157,7 @@ function residualOf(fit: WhittakerFit, places: Float64Array, elevation: Float64A
 
 /**
  * Weighted sum of squared cell means of the residuals, over the cells less the degrees of freedom that the fit took.
- * Points not shut out count in full (`lengths`): with the fit's own weights the biweight would make noise look smaller.
+ * Points not shut out count in full (`lengths`): with the fit's own weights the noise would look smaller.
  */
 function noiseOf(
   residual: Float64Array,

@@ -30,6 +30,7 @@ describe('robust smoothing of elevation', () => {
     const error = 100 * rms(robust.grade, truth.grade);
     expect([...places].filter((i) => !robust.outliers.includes(i))).toEqual([]);
     expect(robust.outliers.length).toBeLessThanOrEqual(42);
+    // The published weights lose 2.5 % to the road without spikes; these may not lose more.
     expect(error).toBeLessThanOrEqual(reference * (0.249 / 0.243));
     expect(error).toBeLessThanOrEqual(0.3);
     expectClose(robust.noiseSd, 0.5, 0.03, 'noise seen in the residuals [m]');
