@@ -1,7 +1,8 @@
 import { runLoop } from '../loop/run-loop.ts';
 import { seededStream } from '../numeric/random.ts';
 import { perturbRoad } from '../road/perturb-road.ts';
-import { type FigureRow, figureRow, RECOVERED_BAND, type Recovery } from './figure-table.ts';
+import type { Recovery } from './figure-measures.ts';
+import { type FigureRow, figureRow, RECOVERED_BAND } from './figure-table.ts';
 import type { Hill, Replayed, Requirement } from './findings.ts';
 import { seriesOver } from './hill-outcome.ts';
 import { chooseBins, type FigureContext, measureOver } from './measure-figure.ts';

@@ -1,38 +1,19 @@
 import type { BinRecord } from '../loop/result.ts';
-import { fromKmh, toKm, toKmh, toPct, toWh } from '../units/convert.ts';
-import type { Figure } from './findings.ts';
-
-/** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
-export interface Recovery {
-  /** Horizontal distance of the hill's start [m]. */
-  readonly at: number;
-  readonly time: Figure;
-}
-
-/** What a figure is taken over. */
-export interface FigureRecord {
-  readonly bins: BinRecord;
-  /** One a bin: 1 where the bin counts. */
-  readonly chosen: Uint8Array;
-  /** Where the run ended [m]: the last bin counts up to there. */
-  readonly end: number;
-  /** Bands of the record [m/s], and the one that is asked for (null where the figure takes none). */
-  readonly bands: readonly number[];
-  readonly band: number | null;
-  /** Of the hills that count. */
-  readonly recoveries: readonly Recovery[];
-  /** From drive to battery; null where the drive has none. */
-  readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
-  /** Of the whole run. */
-  readonly ledgerResidual: number;
-}
-
-export interface Measure {
-  /** In the unit of the row. */
-  readonly value: Figure;
-  /** Where it was worst [m]; null: the figure has no place. */
-  readonly at: number | null;
-}
+import { fromKmh, toKmh, toPct, toWh } from '../units/convert.ts';
+import {
+  absoluteErrorQuantile,
+  batteryEnergy,
+  brakeDistance,
+  driven,
+  type FigureRecord,
+  type Measure,
+  perKm,
+  placeless,
+  sum,
+  withinBand,
+  worstRecovery,
+  worstSide,
+} from './figure-measures.ts';
 
 /** One row of the table of figures. */
 export interface FigureRow {
@@ -53,116 +34,6 @@ export interface FigureRow {
 /** Half-width within which a run counts as recovered, and for how long [m/s], [s]. */
 export const RECOVERED_BAND = fromKmh(1);
 export const RECOVERED_FOR = 3;
-
-const NOTHING: Measure = { value: { none: 'no such stretch was driven' }, at: null };
-const placeless = (value: Figure): Measure => ({ value, at: null });
-
-/** Sum over the chosen bins. */
-function sum({ bins, chosen }: FigureRecord, of: (i: number) => number): number {
-  let total = 0;
-  for (let i = 0; i < bins.size; i++) if (chosen[i] === 1) total += of(i);
-  return total;
-}
-
-const timeOf = (record: FigureRecord): number => sum(record, (i) => record.bins.time[i]);
-const lengthOf = (record: FigureRecord): number => {
-  const { bins, end } = record;
-  return sum(record, (i) => Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]));
-};
-
-/** A figure that exists wherever any chosen time was driven. */
-function driven(record: FigureRecord, of: (time: number) => Figure): Measure {
-  const time = timeOf(record);
-  return time > 0 ? placeless(of(time)) : NOTHING;
-}
-
-/** Chosen bin with the greatest score above 0, with its middle. */
-function worstBin(record: FigureRecord, score: (i: number) => number): { value: number; at: number } | null {
-  const { bins, chosen } = record;
-  let worst: { value: number; at: number } | null = null;
-  for (let i = 0; i < bins.size; i++) {
-    if (chosen[i] !== 1) continue;
-    const value = score(i);
-    if (value > (worst?.value ?? 0)) worst = { value, at: (bins.edge[i] + bins.edge[i + 1]) / 2 };
-  }
-  return worst;
-}
-
-function withinBand(record: FigureRecord): Measure {
-  const { bins, bands, band } = record;
-  // Bands pass through files in km/h: equal to a nanometre a second is equal.
-  const k = band === null ? -1 : bands.findIndex((b) => Math.abs(b - band) < 1e-9);
-  if (k < 0) return placeless({ none: 'the run did not count the time within this band' });
-  const time = timeOf(record);
-  if (!(time > 0)) return NOTHING;
-  const inside = (i: number): number => bins.timeInBand[i * bands.length + k];
-  const outside = worstBin(record, (i) =>
-    bins.time[i] - inside(i) > 1e-9 ? Math.max(bins.errorMax[i], -bins.errorMin[i]) : 0,
-  );
-  return { value: toPct(Math.min(1, sum(record, inside) / time)), at: outside?.at ?? null };
-}
-
-function worstSide(record: FigureRecord, side: 1 | -1): Measure {
-  if (!(timeOf(record) > 0)) return NOTHING;
-  const { errorMin, errorMax } = record.bins;
-  const worst = worstBin(record, (i) => (side > 0 ? errorMax[i] : -errorMin[i]));
-  return worst === null ? placeless(0) : { value: toKmh(side * worst.value), at: worst.at };
-}
-
-function absoluteErrorQuantile(record: FigureRecord, share: number): Measure {
-  const { bins, chosen } = record;
-  const rows: { error: number; time: number }[] = [];
-  for (let i = 0; i < bins.size; i++)
-    if (chosen[i] === 1 && bins.time[i] > 0)
-      rows.push({ error: Math.sqrt(Math.max(0, bins.errorSquare[i] / bins.time[i])), time: bins.time[i] });
-  if (rows.length === 0) return NOTHING;
-  rows.sort((a, b) => a.error - b.error);
-  const target = share * rows.reduce((total, row) => total + row.time, 0);
-  let passed = 0;
-  for (const row of rows) {
-    passed += row.time;
-    if (passed >= target) return placeless(toKmh(row.error));
-  }
-  return placeless(toKmh(rows[rows.length - 1].error));
-}
-
-function worstRecovery({ recoveries }: FigureRecord): Measure {
-  let worst: { value: number; at: number } | null = null;
-  for (const { at, time } of recoveries) {
-    if (typeof time !== 'number') return { value: time, at };
-    if (time > (worst?.value ?? -1)) worst = { value: time, at };
-  }
-  return worst ?? placeless(0);
-}
-
-function batteryEnergy(record: FigureRecord): Measure {
-  const { bins, efficiency } = record;
-  if (efficiency === null) return placeless({ none: 'the drive has no efficiency' });
-  return driven(record, () =>
-    toWh(
-      sum(
-        record,
-        (i) =>
-          bins.driveWork[i] / efficiency.drive - Math.abs(bins.regenerationWork[i]) * efficiency.regeneration,
-      ),
-    ),
-  );
-}
-
-/** Distance of a bin driven with the brake on: its length by share of time. */
-const brakeDistance = (record: FigureRecord): number => {
-  const { bins, end } = record;
-  return sum(record, (i) =>
-    bins.time[i] > 0
-      ? (Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]) * bins.timeBrake[i]) / bins.time[i]
-      : 0,
-  );
-};
-
-const perKm = (record: FigureRecord, amount: number): Figure => {
-  const length = lengthOf(record);
-  return length > 0 ? amount / toKm(length) : { none: 'no such stretch was driven' };
-};
 
 const DEFINED_HERE = 'defined here';
 const timed = (

@@ -20,6 +20,7 @@ const NEAR = 25;
 const FAR = 120;
 /** Simulated and predicted loss may differ by this share, or by half a km/h. */
 const AGREES = 0.15;
+const LOCKED: Figure = { none: 'a locked throttle does not regulate' };
 const AGREES_ABSOLUTE = fromKmh(0.5);
 
 export interface OutcomeContext {
@@ -38,12 +39,14 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
   const { demand, band } = context;
   const events = eventsOn(result, hill, demand, band);
-  const { series, whole, shownFrom } = seriesOver(replayed, hill, context);
+  const locked = replayed.plan.controller.kind === 'locked';
+  const { series, whole, shownFrom } = seriesOver(replayed, hill, context, events.marked && !locked);
   const first = sampleAt(series, hill.from);
   const last = Math.max(first + 1, sampleAt(series, hill.until));
-  const recovery = events.marked
-    ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
-    : { time: 0, over: last };
+  const recovery =
+    events.marked && !locked
+      ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
+      : { time: locked ? LOCKED : 0, over: last };
   const over = Math.max(last, recovery.over);
   const passage = passageOf(series, first, over, demand.settling);
   const predictedChange = predict(replayed, hill, demand, series, first);
@@ -93,11 +96,15 @@ function eventsOn(
   return events;
 }
 
-/** Every sample from a little before the hill until it is recovered from; `whole`: as far as a recovery is waited for. */
+/**
+ * Every sample from a little before the hill until it is recovered from, or to a little behind it where there is
+ * nothing to recover from; `whole`: as far as a recovery is waited for.
+ */
 export function seriesOver(
   { plan, result }: Replayed,
   hill: HillFacts,
   { demand, band, recoveryBand }: OutcomeContext,
+  recovers = true,
 ): { series: FullSeries; whole: boolean; shownFrom: number } {
   const { road } = plan;
   const setSpeed = demand.setSpeed[knotBefore(road, hill.to)];
@@ -108,6 +115,7 @@ export function seriesOver(
     const { series } = replay(plan, start, Math.min(to, result.endDistance));
     return { series, whole: to < result.endDistance, shownFrom: sampleAt(series, from) };
   };
+  if (!recovers) return over(TAIL);
   const near = over(NEAR);
   const first = sampleAt(near.series, hill.from);
   const last = sampleAt(near.series, hill.until);

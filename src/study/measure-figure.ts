@@ -1,6 +1,7 @@
 import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
-import { FIGURES, type FigureRow, type Measure, type Recovery } from './figure-table.ts';
+import type { Measure, Recovery } from './figure-measures.ts';
+import { FIGURES, type FigureRow } from './figure-table.ts';
 import type { Demand, FigureValues, Hill, Replayed, Where } from './findings.ts';
 
 /** What figures are taken from, beside the run itself. */

@@ -51,12 +51,15 @@ export function quasiSteadySpeeds(
   let v = entrySpeed;
   speeds[0] = v;
   for (let i = from; i < to; i++) {
-    const ds = slopeLength(road, i);
-    const steps = Math.max(1, Math.ceil(ds / STEP));
-    for (let k = 0; k < steps && ds > 0 && v > 0; k++) {
+    const timed = road.along === 'time';
+    const span = road.station[i + 1] - road.station[i];
+    const steps = Math.max(1, Math.ceil((timed ? span * setSpeed[i] : span) / STEP));
+    for (let k = 0; k < steps && span > 0 && v > 0; k++) {
+      // Along time the way of a step depends on the speed; its beginning is near enough for a step of this length.
+      const ds = timed ? (v * span) / steps : span / steps;
       const here = surroundingsBetween(road, i, k / steps);
       const next = surroundingsBetween(road, i, (k + 1) / steps);
-      v = oneStep(plan, mass, v, setSpeed[i], ds / steps, here, next);
+      v = oneStep(plan, mass, v, setSpeed[i], ds, here, next);
     }
     speeds[i + 1 - from] = v;
   }
@@ -100,13 +103,6 @@ function oneStep(
 
 const braked = (speed: number, target: number, above: number | null): number =>
   above === null ? speed : Math.min(speed, target + above);
-
-/** Length along the slope from knot i to the next [m]. */
-function slopeLength(road: Road, i: number): number {
-  if (road.along === 'distance') return road.station[i + 1] - road.station[i];
-  // Along time the nominal distance counts as driven at the set speed, along the slope.
-  return road.distance[i + 1] - road.distance[i];
-}
 
 /** What the vehicle meets a share of the way from knot i to the next. */
 export function surroundingsBetween(road: Road, i: number, share: number): Surroundings {

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { FIGURES, type FigureRecord, figureRow } from '../../src/study/figure-table.ts';
+import type { FigureRecord } from '../../src/study/figure-measures.ts';
+import { FIGURES, figureRow } from '../../src/study/figure-table.ts';
 import { expectClose } from '../compare.ts';
 import { recordOf } from './record-of.ts';
 

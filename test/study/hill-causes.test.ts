@@ -191,3 +191,21 @@ describe('what a candidate did on a hill', () => {
     expect(last.picture.size).toBe(0);
   });
 });
+
+describe('a road along time', () => {
+  it('has its hills at nominal distances, with cause, hand formula and remedies as on any road', () => {
+    // 90 s level, 48 s at 8 %, 120 s level: at 60 km/h these are 1500, 800 and 2000 m.
+    const along = oneHill(0.08);
+    const speed = 60 / 3.6;
+    const road = { ...along, along: 'time' as const, station: along.distance.map((x) => x / speed) };
+    const { hill, outcome } = firstOutcome(planOf(road, vehicleOf(), STIFF));
+    expect(hill.kind).toBe('climb');
+    expectClose(hill.from, 1500, 30);
+    expect(outcome.cause).toBe('torque');
+    expect(outcome.predictionDiffers).toBe(false);
+    // In the same 48 s less way is made up the slope than in the same 800 m, so less speed is lost.
+    const whole = firstOutcome(planOf(along, vehicleOf(), STIFF)).outcome;
+    expect(Math.abs(outcome.speedChange)).toBeLessThan(Math.abs(whole.speedChange));
+    expect(outcome.wouldHold.map((remedy) => remedy.lever)).toEqual(['set_speed', 'power', 'load']);
+  });
+});
