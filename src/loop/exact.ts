@@ -229,7 +229,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           xe = l0 + l1 * h + la * ea + (ld + le * h) * ed;
           if (throttleCells > 1 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
             const part = ((xe > high ? high : low) - x) / (xe - x);
-            h *= part > 0 ? part : 0;
+            h *= Math.max(0, part);
             continue;
           }
 

@@ -10,7 +10,8 @@ import type { Machine } from './machine.ts';
  *
  *     x, y         in closed form at the middle and the end of the step (as in exact.ts)
  *     vm           = v + h/2 a, a of the step before
- *     g sin(theta) = (H(q + h vm) - H(q)) / (h vm), H the integral of g sin(theta): no hill is stepped over
+ *     g sin(theta) = (H(q + h vm) - H(q)) / (h vm), H the integral of g sin(theta): no hill is stepped over;
+ *                    the headwind in the same way
  *     a            = (F(vm, xm) - F_aero(vm) - F_roll(vm) - F_brake) / me - mean slope
  *     v <- v + h a,  q <- q + h (v_old + v_new) / 2
  *
@@ -140,19 +141,25 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       while (there < lastRow && q + ahead >= rows[there + at.R_STRIDE + at.R_STATION]) there += at.R_STRIDE;
       const to = q + ahead - rows[there + at.R_STATION];
       let sine = rows[row + at.R_SIN] + rows[row + at.R_SIN + 1] * from;
-      if (ahead > 1e-9) {
-        const before =
-          rows[row + at.R_CLIMB] + from * (rows[row + at.R_SIN] + 0.5 * rows[row + at.R_SIN + 1] * from);
-        const after =
-          rows[there + at.R_CLIMB] + to * (rows[there + at.R_SIN] + 0.5 * rows[there + at.R_SIN + 1] * to);
-        sine = (after - before) / ahead;
+      let wind = rows[row + at.R_HEADWIND] + rows[row + at.R_HEADWIND + 1] * from;
+      if (there === row) {
+        sine += 0.5 * ahead * rows[row + at.R_SIN + 1];
+        wind += 0.5 * ahead * rows[row + at.R_HEADWIND + 1];
+      } else if (ahead > 1e-9) {
+        const each = 1 / ahead;
+        sine =
+          each *
+          (rows[there + at.R_CLIMB] -
+            rows[row + at.R_CLIMB] +
+            to * (rows[there + at.R_SIN] + 0.5 * rows[there + at.R_SIN + 1] * to) -
+            from * (rows[row + at.R_SIN] + 0.5 * rows[row + at.R_SIN + 1] * from));
+        wind =
+          each *
+          (rows[there + at.R_WIND_RUN] -
+            rows[row + at.R_WIND_RUN] +
+            to * (rows[there + at.R_HEADWIND] + 0.5 * rows[there + at.R_HEADWIND + 1] * to) -
+            from * (rows[row + at.R_HEADWIND] + 0.5 * rows[row + at.R_HEADWIND + 1] * from));
       }
-      const wind =
-        0.5 *
-        (rows[row + at.R_HEADWIND] +
-          rows[row + at.R_HEADWIND + 1] * from +
-          rows[there + at.R_HEADWIND] +
-          rows[there + at.R_HEADWIND + 1] * to);
       const middle = from + 0.5 * ahead;
       const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
       const normal = mass * (rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle);

@@ -128,9 +128,10 @@ export const R_AIR = 10;
 export const R_DERATE = 12;
 /** Horizontal distance. */
 export const R_DISTANCE = 14;
-/** Integral of g sin(theta) over the station up to the near knot. */
+/** Integrals of g sin(theta) and of the headwind over the station up to the near knot. */
 export const R_CLIMB = 16;
-export const R_STRIDE = 17;
+export const R_WIND_RUN = 17;
+export const R_STRIDE = 18;
 
 // --- what a kernel returns ---
 export const RUNNING = 0;

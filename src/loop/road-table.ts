@@ -14,6 +14,7 @@ import {
   R_SIN,
   R_STATION,
   R_STRIDE,
+  R_WIND_RUN,
 } from './layout.ts';
 
 /** A road as the kernels read it. */
@@ -45,6 +46,7 @@ function compile(road: Road, derate: Drive['derate']): RoadTable {
   const { station, grade } = road;
   const drive = { derate };
   let climb = 0;
+  let windRun = 0;
   let crosswind = false;
   const put = (at: number, near: number, far: number, length: number): void => {
     rows[at] = near;
@@ -68,6 +70,8 @@ function compile(road: Road, derate: Drive['derate']): RoadTable {
     put(at + R_DERATE, factor(i), factor(j), length);
     put(at + R_DISTANCE, road.distance[i], road.distance[j], length);
     rows[at + R_CLIMB] = climb;
+    rows[at + R_WIND_RUN] = windRun;
+    windRun += 0.5 * (road.headwind[i] + road.headwind[j]) * length;
     climb += 0.5 * (near * grade[i] + far * grade[j]) * length;
     if (road.crosswind[i] !== 0 || road.crosswind[j] !== 0) crosswind = true;
   }

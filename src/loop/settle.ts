@@ -1,6 +1,6 @@
 import { BUS_LIMITED, BUS_LOCK, BUS_MEASURED, BUS_REFERENCE } from '../control/bus.ts';
 import { derateFactor } from '../vehicle/derating.ts';
-import { cellIndex, throttleFor } from '../vehicle/drive-law.ts';
+import { cellIndex, throttleFor, wheelForce } from '../vehicle/drive-law.ts';
 import { levelThrottle } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import * as at from './layout.ts';
@@ -22,7 +22,8 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   const v = speed * p[at.P_TO_TRUE];
   const here = surroundingsAt(plan.road, station);
   const derate = derateFactor(drive, here.airDensity, here.airTemperature);
-  const needed = throttleFor(drive, drive.gear, v, requiredForce(vehicle, v, here), derate) ?? 0;
+  const force = requiredForce(vehicle, v, here);
+  const needed = throttleFor(drive, drive.gear, v, force, derate) ?? 0;
   const given =
     controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
   const throttle = Math.min(Math.max(given, drive.throttleMin), drive.throttleMax);
@@ -32,6 +33,7 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   s[at.CELL] = cellAt(plan.road.station, station);
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
+  s[at.ACCELERATION] = (wheelForce(drive, drive.gear, v, throttle, derate) - force) / p[at.P_EFFECTIVE_MASS];
   s[at.FILTERED] = v;
   s[at.ACTUATOR] = throttle;
   s[at.THROTTLE] = throttle;

@@ -85,7 +85,12 @@ describe('the continuous loop against solutions from outside', () => {
     test(`set speed 20 to 25 m/s at 5 s, ${c.case}`, () => {
       // The reference's row at 5 s is the one before the step.
       const rows = c.t_s?.map((t) => (t === 5 ? 5 - 1e-12 : t));
-      checkMotorcycle({ ...c, ...(rows === undefined ? {} : { t_s: rows }) }, [], (t) => (t < 5 ? 20 : 25), [5]);
+      checkMotorcycle(
+        { ...c, ...(rows === undefined ? {} : { t_s: rows }) },
+        [],
+        (t) => (t < 5 ? 20 : 25),
+        [5],
+      );
     });
 });
 

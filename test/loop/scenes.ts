@@ -12,7 +12,11 @@ export interface Along {
 }
 
 /** A road over given stations (slope distance, or time with `speed` for its nominal distance). */
-export function roadOver(station: Float64Array, along: Along = {}, timed: { speed: number } | null = null): Road {
+export function roadOver(
+  station: Float64Array,
+  along: Along = {},
+  timed: { speed: number } | null = null,
+): Road {
   const size = station.length;
   const column = (f: ((s: number) => number) | undefined, otherwise: number): Float64Array =>
     Float64Array.from(station, (s) => (f === undefined ? otherwise : f(s)));
@@ -21,7 +25,8 @@ export function roadOver(station: Float64Array, along: Along = {}, timed: { spee
   const elevation = new Float64Array(size);
   for (let i = 1; i < size; i++) {
     const mean = 0.5 * (grade[i]! + grade[i - 1]!);
-    const ds = (station[i]! - station[i - 1]!) * (timed === null ? 1 / Math.sqrt(1 + mean * mean) : timed.speed);
+    const ds =
+      (station[i]! - station[i - 1]!) * (timed === null ? 1 / Math.sqrt(1 + mean * mean) : timed.speed);
     distance[i] = distance[i - 1]! + ds;
     elevation[i] = elevation[i - 1]! + mean * ds;
   }
