@@ -8,6 +8,8 @@ export interface SourceClass {
   readonly wavelengthWholeMetres: number;
   /** One s.d. of the grade error that this source leaves at that wavelength and that the residuals do not show. */
   readonly gradeSd: number;
+  /** One s.d. of the height error that the smoothing leaves, slow drift left out [m]. */
+  readonly heightSd: number;
   /** Smallest scale of the noise that the outlier filter believes [m]. */
   readonly noiseFloor: number;
   /** Wavelength at which positions are smoothed for the heading [m]. */
@@ -25,6 +27,7 @@ export const SOURCE_CLASSES: Readonly<Record<Exclude<ElevationSource, 'exact'>, 
     wavelength: 200,
     wavelengthWholeMetres: 300,
     gradeSd: 0.0018,
+    heightSd: 0.15,
     noiseFloor: 0.15,
     planWavelength: 60,
   },
@@ -32,6 +35,7 @@ export const SOURCE_CLASSES: Readonly<Record<Exclude<ElevationSource, 'exact'>, 
     wavelength: 200,
     wavelengthWholeMetres: 300,
     gradeSd: 0.0025,
+    heightSd: 0.5,
     noiseFloor: 0.2,
     planWavelength: 100,
   },
@@ -39,14 +43,23 @@ export const SOURCE_CLASSES: Readonly<Record<Exclude<ElevationSource, 'exact'>, 
     wavelength: 800,
     wavelengthWholeMetres: 800,
     gradeSd: 0.0095,
+    heightSd: 2.7,
     noiseFloor: 0.5,
     planWavelength: 100,
   },
-  dem30: { wavelength: 800, wavelengthWholeMetres: 800, gradeSd: 0.009, noiseFloor: 2, planWavelength: 60 },
+  dem30: {
+    wavelength: 800,
+    wavelengthWholeMetres: 800,
+    gradeSd: 0.009,
+    heightSd: 1.6,
+    noiseFloor: 2,
+    planWavelength: 60,
+  },
   dem90: {
     wavelength: 1100,
     wavelengthWholeMetres: 1100,
     gradeSd: 0.013,
+    heightSd: 3.5,
     noiseFloor: 3,
     planWavelength: 60,
   },

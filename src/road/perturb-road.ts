@@ -1,30 +1,34 @@
 import { exp } from '../numeric/elementary.ts';
 import type { RandomStream } from '../numeric/random.ts';
 import { integrateSlope } from './along-slope.ts';
+import { errorScales } from './error-scales.ts';
 import type { Road } from './road.ts';
 
-/** Reach of the kernel, in its own lengths. */
+/** Reach of a kernel, in its own lengths. */
 const REACH = 4;
-/** The kernel's length as a share of the smoothing wavelength: 1 / (2 pi), so that the errors' spectrum peaks at the wavelength. */
-const SHARE = 1 / (2 * Math.PI);
 
 /**
  * The same road as another truth that its measurement allows: grade plus a seeded random field whose standard deviation
  * at each knot is `gradeSd`, with station and elevation integrated anew.
  *
- * A smoothed elevation is wrong by a bounded height, not by a random walk; so the field is the slope of a stationary
- * height error, white noise under the derivative of a Gaussian of length wavelength / (2 pi): its errors change sign over
- * about half a wavelength and nearly cancel over a hill longer than that. On a road out and back both ways share the field.
+ * A measured elevation is wrong by a bounded height, not by a random walk; so the field is the slope of a stationary
+ * height error: two sums of white noise under derivatives of Gaussians, one as long as the smoothing lets pass, one as
+ * long as the source's own height error asks (`errorScales`). On a road out and back both ways share the field.
  * Where `gradeSd` is zero the grade stays as it is; a road without smoothing comes back unchanged.
  * Air keeps its values: metres of height change its density by less than 1e-3.
  *
- * @param stream normal numbers, drawn once a grid spacing
+ * @param stream normal numbers, drawn twice a grid spacing
  */
 export function perturbRoad(road: Road, stream: Pick<RandomStream, 'normal'>): Road {
-  if (road.smoothing === null) return road;
-  const length = Math.max(road.smoothing.wavelength * SHARE, road.grid);
-  const field = slopeField(road, length, stream);
-  const grade = road.grade.map((g, i) => g + road.gradeSd[i]! * field[i]!);
+  const scales = errorScales(road);
+  if (scales === null) return road;
+  const short = slopeField(road, scales.short, stream);
+  const long = slopeField(road, scales.long, stream);
+  const shortPart = Math.sqrt(1 - scales.longShare);
+  const longPart = Math.sqrt(scales.longShare);
+  const grade = road.grade.map(
+    (g, i) => g + road.gradeSd[i]! * (shortPart * short[i]! + longPart * long[i]!),
+  );
   const line = integrateSlope(road.distance, grade, road.elevation[0]!);
   return { ...road, grade, elevation: line.elevation, station: line.station };
 }

@@ -12,7 +12,7 @@ import { measure, type NoiseClass, randomness, syntheticRoad } from './synthetic
  * The recipe leaves the road's roughness open, and where the wavelength is long that counts: without noise the published
  * road is off by .126 % at 200 m and .273 % at 400 m, this one by .115 and .289, so it is the rougher one at length.
  * `allowed` is the published figure, but for the three long wavelengths the published figure with this road's own bias:
- * their single realisations here range from .31 to .39, .79 to 1.05 and .72 to 1.00, and hold the published ones.
+ * their single realisations here range from .31 to .38, .79 to 1.06 and .72 to 1.00, and hold the published ones.
  */
 const CLASSES: readonly {
   noise: NoiseClass;
@@ -24,7 +24,7 @@ const CLASSES: readonly {
   { noise: 'lidar', source: 'lidar', wavelength: null, allowed: 0.195, bestBelow: 0.19 },
   { noise: 'barometric', source: 'barometric', wavelength: null, allowed: 0.26, bestBelow: 0.26 },
   { noise: 'barometric-1m', source: 'barometric', wavelength: null, allowed: 0.29, bestBelow: 0.29 },
-  { noise: 'white', source: 'gnss', wavelength: 400, allowed: 0.36, bestBelow: 0.33 },
+  { noise: 'white', source: 'gnss', wavelength: 400, allowed: 0.35, bestBelow: 0.33 },
   { noise: 'gnss', source: 'gnss', wavelength: null, allowed: 1.0, bestBelow: 0.85 },
   { noise: 'dem30', source: 'dem30', wavelength: null, allowed: 0.92, bestBelow: 0.79 },
 ];

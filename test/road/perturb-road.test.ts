@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { meanGradeSd } from '../../src/road/error-scales.ts';
 import { perturbRoad } from '../../src/road/perturb-road.ts';
 import { roadOfTrack } from '../../src/road/road-of-track.ts';
 import { expectClose } from '../compare.ts';
@@ -37,19 +38,54 @@ describe('a perturbed road', () => {
         worst = Math.max(worst, Math.abs(z - road.elevation[i]!));
       });
     }
-    // A random walk of the same s.d. and a correlation of 50 m would end 3.7 m off (one s.d.).
-    expect(worst).toBeLessThan(1.5);
-    expect(worst).toBeGreaterThan(0.1);
+    // Height errors have a s.d. of 0.5 m, differences of two 0.7 m, and 60,000 knots are looked at.
+    expect(worst).toBeLessThan(4);
+    expect(worst).toBeGreaterThan(1);
   });
 
-  it('has errors that change sign with about half the smoothing wavelength', () => {
+  it.each([
+    ['lidar', 'lidar'],
+    ['barometric', 'barometric'],
+    ['barometric-1m', 'barometric'],
+    ['gnss', 'gnss'],
+    ['dem30', 'dem30'],
+  ] as const)(
+    'errs over a hill as the smoothed road does under %s noise, in draws and by formula',
+    (noise, source) => {
+      for (const stretch of [300, 1000, 3000]) {
+        let measured = 0;
+        let drawn = 0;
+        let stated = 0;
+        for (let seed = 1; seed <= 10; seed++) {
+          const random = randomness(77 * seed);
+          const real = syntheticRoad(random, 20_000, 10);
+          const elevation = measure(random, noise, real.elevation, 10);
+          const road = roadOfTrack(
+            trackOf(real.distance, { elevation }),
+            roadOptions({ elevationSource: source }),
+          );
+          const other = perturbRoad(road, random);
+          for (let i = 100; i + stretch / 10 < road.size - 100; i += 7) {
+            const k = i + stretch / 10;
+            const climb = road.elevation[k]! - road.elevation[i]!;
+            measured += ((climb - (real.elevation[k]! - real.elevation[i]!)) / stretch) ** 2;
+            drawn += ((climb - (other.elevation[k]! - other.elevation[i]!)) / stretch) ** 2;
+            stated += meanGradeSd(road, road.distance[i]!, road.distance[k]!) ** 2;
+          }
+        }
+        // The model has two lengths where the true errors have a whole spectrum: right within 0.8 to 1.55, rather too wide.
+        expect(Math.sqrt(stated / measured), `formula over ${stretch} m`).toBeGreaterThan(0.8);
+        expect(Math.sqrt(stated / measured), `formula over ${stretch} m`).toBeLessThan(1.55);
+        expect(Math.sqrt(drawn / stated), `draws over ${stretch} m`).toBeGreaterThan(0.8);
+        expect(Math.sqrt(drawn / stated), `draws over ${stretch} m`).toBeLessThan(1.2);
+      }
+    },
+  );
+
+  it('knows the mean grade of a short stretch as well as a knot, and of a written road exactly', () => {
     const road = roadOfTrack(track, roadOptions());
-    const other = perturbRoad(road, randomness(9));
-    let changes = 0;
-    for (let i = 1; i < road.size; i++)
-      if ((other.grade[i]! - road.grade[i]!) * (other.grade[i - 1]! - road.grade[i - 1]!) < 0) changes++;
-    // Derivative of a Gaussian field: mean distance between zeros pi a sqrt(2/3), a = 200 / (2 pi) (Rice's formula).
-    expectClose(20_000 / changes, Math.PI * (200 / (2 * Math.PI)) * Math.sqrt(2 / 3), 12);
+    expectClose(meanGradeSd(road, 9000, 9001) / road.gradeSd[900]!, 1, 1e-3);
+    expect(meanGradeSd(roadOfTrack(track, roadOptions({ elevationSource: 'exact' })), 0, 500)).toBe(0);
   });
 
   it('leaves a written or surveyed road as it is, and the same seed gives the same road', () => {
