@@ -68,7 +68,7 @@ export interface Hill {
   /** Horizontal distance [m]. */
   readonly from: number;
   readonly to: number;
-  /** End of what the hill is answerable for: the next hill, or 15 s behind its own end [m]. */
+  /** End of what the hill is answerable for: 15 s behind its own end, or the end of an overshoot begun there, but no further than the next hill [m]. */
   readonly until: number;
   readonly meanGrade: number;
   readonly meanGradeSd: number;

@@ -129,7 +129,7 @@ function explain(
   if (limitation === 'windup') return windupCause(passage, events);
   return {
     cause: 'rate',
-    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit it is ${errorRange(passage)}.`,
+    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit: ${errorRange(passage)}.`,
   };
 }
 
@@ -139,7 +139,7 @@ const errorRange = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): string =>
 function windupCause(passage: HillPassage, events: HillEvents): CauseFinding {
   return {
     cause: 'windup',
-    why: `The integral went on growing at the limit and had to be paid back after it (${errorRange(events)}); with an integrator that follows the limit it is ${errorRange(passage)}.`,
+    why: `The integral went on growing at the limit and had to be paid back after it (${errorRange(events)}); with an integrator that follows the limit: ${errorRange(passage)}.`,
   };
 }
 

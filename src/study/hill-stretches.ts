@@ -15,7 +15,7 @@ const FARTHEST = 600;
 
 export interface HillStretch extends Stretch {
   readonly kind: HillKind;
-  /** End of what the hill is answerable for: the next hill, or 15 s behind its own end [m]. */
+  /** See Hill.until. */
   readonly until: number;
 }
 
@@ -51,18 +51,37 @@ export function hillStretches(
     ...demandRuns(road, demand),
     ...regulating.flatMap(({ result }) => recordRuns(result.bins, band, demand.settling)),
   ]).flatMap((run) => splitByNature(road, demand, run));
-  const grown = joinTouching(growToHill(road, parts));
+  return answerable(road, demand, joinTouching(growToHill(road, parts)));
+}
+
+/**
+ * Gives each hill the end of what it is answerable for. A short stretch on level ground, out of band by a candidate's
+ * own doing and beginning within the aftermath of a hill, is that hill's: an overshoot is no hill of its own.
+ */
+function answerable(road: Road, demand: Demand, parts: readonly Part[]): HillStretch[] {
   const end = road.distance[road.size - 1];
-  return grown.map((part, k) => {
-    const next = k + 1 < grown.length ? grown[k + 1].from : end;
-    const aftermath = part.to + AFTERMATH * demand.setSpeed[knotBefore(road, part.to)];
-    return {
-      from: part.from,
-      to: part.to,
-      until: Math.max(part.to, Math.min(next, aftermath)),
-      kind: kindOf(road, part),
-    };
-  });
+  const hills: { part: Part; until: number }[] = [];
+  for (const part of parts) {
+    const last = hills.at(-1);
+    const aftermath = AFTERMATH * demand.setSpeed[knotBefore(road, part.to)];
+    const overshoot =
+      last !== undefined &&
+      part.nature === 0 &&
+      signOfGrade(road, part) === 0 &&
+      part.from <= last.until &&
+      part.to - part.from <= 2 * aftermath;
+    if (overshoot) last.until = Math.max(last.until, part.to);
+    else {
+      if (last !== undefined) last.until = Math.min(last.until, part.from);
+      hills.push({ part, until: Math.min(end, part.to + aftermath) });
+    }
+  }
+  return hills.map(({ part, until }) => ({
+    from: part.from,
+    to: part.to,
+    until: Math.max(part.to, until),
+    kind: kindOf(road, part),
+  }));
 }
 
 function demandRuns(road: Road, demand: Demand): Stretch[] {

@@ -72,12 +72,38 @@ describe('the stretches that are hills', () => {
     const far = stretchesOf(road, [
       withErrors(road, [
         [1000, 1200, -0.8],
-        [1300, 1400, 0.8],
+        [1500, 1600, 0.8],
       ]),
     ]);
     expect(far.map(({ from, to, until }) => [from, to, until])).toEqual([
-      [1000, 1200, 1300],
-      [1300, 1400, 1650],
+      [1000, 1200, 1450],
+      [1500, 1600, 1850],
+    ]);
+  });
+
+  it('have what swings over on level ground right behind them as their own', () => {
+    const road = roadOf([
+      { length: 1000, grade: 0 },
+      { length: 400, grade: 0.05 },
+      { length: 3000, grade: 0 },
+    ]);
+    const swinging = stretchesOf(road, [
+      withErrors(road, [
+        [1060, 1300, -0.8],
+        [1600, 1760, 0.8],
+      ]),
+    ]);
+    expect(swinging).toEqual([{ from: 1000, to: 1400, until: 1760, kind: 'climb' }]);
+    // What goes on for more than half a minute there is something of its own.
+    const lasting = stretchesOf(road, [
+      withErrors(road, [
+        [1060, 1300, -0.8],
+        [1600, 2200, 0.8],
+      ]),
+    ]);
+    expect(lasting.map(({ from, to, until }) => [from, to, until])).toEqual([
+      [1000, 1400, 1600],
+      [1600, 2200, 2450],
     ]);
   });
 
