@@ -4,11 +4,11 @@ import { gradientAtKnots } from '../numeric/uniform-gradient.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Repair } from '../track/track.ts';
-import { toKm } from '../units/convert.ts';
 import { SUSPICION_WAVELENGTH, suspectBridges } from './bridge-suspicion.ts';
 import type { DrivenTrack } from './driven-track.ts';
-import { type SmoothElevation, smoothElevation } from './elevation-smoothing.ts';
+import { smoothElevation } from './elevation-smoothing.ts';
 import { isWholeMetres, SOURCE_CLASSES } from './elevation-source.ts';
+import { spikesOf } from './elevation-spikes.ts';
 import type { RoadOptions } from './options.ts';
 import type { Smoothing } from './road.ts';
 
@@ -138,7 +138,7 @@ function bySmoothing(
       sourceGradeSd,
       shortestHill: SHORTEST_HILL * wavelength,
     },
-    repairs: spikes(smooth, distance, elevation, uniform),
+    repairs: spikesOf(smooth, distance, elevation, uniform),
     warnings: suspectBridges(fine.grade, smooth.grade, gradeSd, options.grid),
   };
 }
@@ -164,37 +164,4 @@ function gradeByCell(
     const width = edges[i + 1]! - edges[i]!;
     return width > 0 ? (heights[i + 1]! - heights[i]!) / width : grade[grade.length - 1]!;
   });
-}
-
-/** Neighbouring outliers make one repair. */
-function spikes(
-  { outliers, elevation: smooth }: SmoothElevation,
-  distance: Float64Array,
-  elevation: Float64Array,
-  uniform: Float64Array,
-): Repair[] {
-  const line = interpolateLinear(uniform, smooth, distance);
-  const repairs: Repair[] = [];
-  for (let k = 0; k < outliers.length; ) {
-    let end = k;
-    while (end + 1 < outliers.length && outliers[end + 1] === outliers[end]! + 1) end++;
-    const points = end - k + 1;
-    const from = distance[outliers[k]!]!;
-    const to = distance[outliers[end]!]!;
-    let most = 0;
-    for (const i of outliers.slice(k, end + 1)) most = Math.max(most, Math.abs(elevation[i]! - line[i]!));
-    const [km, kmTo] = [toKm(from).toFixed(3), toKm(to).toFixed(3)];
-    const place = from === to ? `At km ${km}` : `From km ${km} to km ${kmTo}`;
-    const what = points === 1 ? '1 point' : `${points} points`;
-    repairs.push({
-      kind: 'elevation_spike',
-      from,
-      to,
-      points,
-      line: null,
-      message: `${place}: elevation of ${what} stands ${most.toFixed(1)} m off the road around it; left out of the smoothing.`,
-    });
-    k = end + 1;
-  }
-  return repairs;
 }
