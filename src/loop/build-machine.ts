@@ -7,8 +7,11 @@ import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
 import { roadTable } from './road-table.ts';
 
-/** Longest step of either scheme [s]: a controller at 20 Hz or slower is stepped several times a sample. */
+/** Longest step of either scheme [s]: a controller slower than 40 Hz is stepped several times a sample. */
 const LONGEST_STEP = 0.025;
+/** RK4 must see a lag as something smooth: no step above this share of the shortest lag, and none below a time [s]. */
+const SHARE_OF_LAG = 0.4;
+const SHORTEST_STEP = 0.001;
 /** Lags closer to each other than this, relatively, are taken as equal. */
 const EQUAL_LAGS = 1e-7;
 
@@ -23,7 +26,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   const gear = drive.gears[drive.gear]!;
 
   p[at.P_SAMPLE] = sample;
-  p[at.P_STEPS] = Math.ceil(sample / LONGEST_STEP - 1e-9);
+  p[at.P_STEPS] = Math.ceil(sample / longestStep(plan) - 1e-9);
   p[at.P_STEP] = sample / p[at.P_STEPS];
   p[at.P_ROAD_CELLS] = table.cells;
   p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
@@ -58,6 +61,12 @@ export function buildMachine(plan: LoopPlan): Machine {
     tangent: dragTangent(vehicle.roadLoad),
     log: new Float64Array(at.LOG_ROWS * at.L_STRIDE),
   };
+}
+
+function longestStep({ scheme, vehicle }: LoopPlan): number {
+  if (scheme === 'fast') return LONGEST_STEP;
+  const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
+  return Math.min(LONGEST_STEP, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
 }
 
 function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): void {

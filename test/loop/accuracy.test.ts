@@ -48,6 +48,11 @@ describe('error of speed at 50 Hz against a solver with steps of 1e-4 s', () => 
     ['rough road, knots 5 m apart', roughRoad(5), plain],
     ['rough road, knots 50 m apart', roughRoad(50), plain],
     ['every lag, rate limit and filter, knots 10 m apart', roughRoad(10), filtered],
+    [
+      'a lag shorter than the sample, knots 10 m apart',
+      roughRoad(10),
+      { ...plain, drive: forceOf({ peakForce: 300, lag: 0.008 }) },
+    ],
     ['no lag at all, knots 10 m apart', roughRoad(10), { ...plain, drive: forceOf({ peakForce: 300 }) }],
   ];
   for (const [name, road, vehicle] of scenes)
