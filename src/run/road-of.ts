@@ -1,6 +1,7 @@
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { profileOf, roadOptionsOf, trackChoiceOf } from '../case/road-of.ts';
 import { placeOf } from '../case/yaml-source.ts';
+import { InputError } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
 import type { Road } from '../road/road.ts';
 import { roadOfProfile } from '../road/road-of-profile.ts';
@@ -56,11 +57,27 @@ export function roadOf({ file, read, overrides = [] }: RoadRequest): RoadResult 
  */
 export function roadOfCase(document: CaseDocument, log: InputLog, file: string, namedAt?: Place): Road {
   const profile = profileOf(document);
-  if (profile !== null) return roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file)));
+  const at = placeOf(document.source, ['track']);
+  if (profile !== null)
+    return placing(at, () => roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file))));
   const name = document.trackFile ?? '';
   const bytes = log.read(name, namedAt);
   const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
-  return roadOfTrack(track, roadOptionsOf(document, track.name ?? caseNameOf(name)));
+  const options = roadOptionsOf(document, track.name ?? caseNameOf(name));
+  return placing({ file: name }, () => roadOfTrack(track, options));
+}
+
+/** Makes a road; what is refused without a file has its place there. */
+function placing(place: Place, make: () => Road): Road {
+  try {
+    return make();
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    const [first, ...others] = error.problems.map((problem) =>
+      problem.place.file === undefined ? { ...problem, place: { ...place, ...problem.place } } : problem,
+    );
+    throw first === undefined ? error : new InputError(first, ...others);
+  }
 }
 
 /** A case of which only the road is looked at: so a bare track has the keys, the checks and the defaults of a case. */

@@ -32,12 +32,13 @@ function caseWith(track: string, vehicle: string): string {
 describe.each(['cases', 'vehicles', 'tracks'])('broken %s', (kind) => {
   test.each(rowsOf(kind))('$file is refused with its place and its words', ({ file, says }) => {
     cpSync(join(broken, kind, file), join(here, file), { recursive: true });
-    const { status, stdout, stderr } = ridgehold(here, ['run', around[kind]!(file), '-o', 'result']);
+    const result = `result-of-${file}`;
+    const { status, stdout, stderr } = ridgehold(here, ['run', around[kind]!(file), '-o', result]);
     expect(stderr.startsWith(`error: ${file}`), stderr).toBe(true);
     for (const words of says) expect(stderr).toContain(words);
     expect(stderr).not.toMatch(/fault of ridgehold| at .*\.js:\d+/);
     expect([status, stdout]).toEqual([2, '']);
-    expect(existsSync(join(here, 'result'))).toBe(false);
+    expect(existsSync(join(here, result))).toBe(false);
   });
 });
 

@@ -14,6 +14,18 @@ test('the built program is a command of its own', () => {
   expect(started.stdout).toBe(`ridgehold ${version}\n`);
 });
 
+test('an old Node is told what is needed, in one line', () => {
+  const older =
+    "Object.defineProperty(process, 'versions', { value: { ...process.versions, node: '18.20.4' } })";
+  writeFiles(here, { 'older.cjs': older });
+  const started = spawnSync(process.execPath, ['-r', './older.cjs', PROGRAM, '--version'], {
+    cwd: here,
+    encoding: 'utf8',
+  });
+  expect(started.stderr).toBe('error: ridgehold needs Node 20.19 or later, and this is Node 18.20.4\n');
+  expect([started.status, started.stdout]).toEqual([2, '']);
+});
+
 test('--version and -V print the version of the package', () => {
   for (const flag of ['--version', '-V'])
     expect(ridgehold(here, [flag])).toEqual({ status: 0, stdout: `ridgehold ${version}\n`, stderr: '' });

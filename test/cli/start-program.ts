@@ -69,9 +69,9 @@ actuator: {lag_s: 0.06, rate_limit_pct_per_s: 400}
 speed_sensor: {filter_s: 0.05, delay_s: 0.02}
 `;
 
-/** One hill that the drive cannot hold, and a long level before and after it. */
+/** A short hill that the drive cannot hold, and a long level before and after it. */
 export const CASE = `title: One hill
-track: {profile: [{length_m: 600, grade_pct: 0}, {length_m: 500, grade_pct: 11}, {length_m: 900, grade_pct: 0}], vertical_curve_m: 60}
+track: {profile: [{length_m: 600, grade_pct: 0}, {length_m: 80, grade_pct: 12}, {length_m: 920, grade_pct: 0}], vertical_curve_m: 40}
 vehicle: vehicle.yaml
 hold: {set_speed_kmh: 60}
 candidates:
