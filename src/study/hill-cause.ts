@@ -71,16 +71,19 @@ export function causeOnHill(
     const passage = passHill(without(windowed, limitation), window);
     const overshot = limitation === 'windup' && far !== 0;
     const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
-    if (overshot && left <= excess / 2) return windupCause(passage, events);
+    if (overshot && takesHalf(left, excess)) return windupCause(passage, events);
     if (best === null || left < best.left) best = { limitation, left, passage };
     if (left === 0) break;
   }
-  if (best !== null && best.left <= excess / 2) {
+  if (best !== null && takesHalf(best.left, excess)) {
     const found = explain(best, windowed, window, hill, events);
     if (found !== null) return found;
   }
   return gainsCause(hill, events);
 }
+
+/** A run that ended on the way has an infinite excess; one that still ends has lost nothing of it. */
+const takesHalf = (left: number, excess: number): boolean => Number.isFinite(left) && left <= excess / 2;
 
 /** Side of the worst error where that is the side away from the limit; else 0. */
 function farSide({ timeUpper, timeLower, low, high }: HillEvents): 1 | -1 | 0 {

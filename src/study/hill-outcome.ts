@@ -41,8 +41,8 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   const events = eventsOn(result, hill, demand, band);
   const locked = replayed.plan.controller.kind === 'locked';
   const { series, whole, shownFrom } = seriesOver(replayed, hill, context, events.marked && !locked);
-  const first = sampleAt(series, hill.from);
-  const last = Math.max(first + 1, sampleAt(series, hill.until));
+  const first = Math.min(sampleAt(series, hill.from), series.size - 1);
+  const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
   const recovery =
     events.marked && !locked
       ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
@@ -137,18 +137,17 @@ function predict(
   let out = locked;
   for (let i = a; i <= b && !out; i++) out = Math.abs(demand.share[i]) > 1;
   if (!out) return { none: 'the demand stays in range: an ideal hold loses nothing here' };
-  const entry = Math.min(first, series.size - 1);
   const speeds = quasiSteadySpeeds(
     {
       road,
       vehicle,
       setSpeed: demand.setSpeed,
       brakesAbove: rider.brakesAbove,
-      throttle: locked ? series.actuator[entry] : null,
+      throttle: locked ? series.actuator[first] : null,
     },
     a,
     b,
-    series.speed[entry],
+    series.speed[first],
   );
   let extreme = 0;
   for (let i = 0; i < speeds.length; i++) {

@@ -185,10 +185,51 @@ describe('what a candidate did on a hill', () => {
     ]);
     const { hills, replayed } = study({ pi: planOf(road, vehicleOf(), STIFF) });
     expect(replayed[0]!.result.status).not.toBe('completed');
+    expect(outcomeOn(hills[0]!, 'pi').cause).toBe('torque');
     const last = outcomeOn(hills.at(-1)!, 'pi');
     expect(last.affected).toBe(false);
     expect(last.recovery).toHaveProperty('none');
     expect(last.picture.size).toBe(0);
+  });
+});
+
+describe('hills of any road', () => {
+  it('have finite figures whatever happens on them, on seeded random roads', () => {
+    let state = 4711;
+    const random = (): number => {
+      state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+      return state / 4294967296;
+    };
+    const ends = new Set<string>();
+    for (let k = 0; k < 12; k++) {
+      const road = roadOf(
+        Array.from({ length: 8 }, () => ({
+          length: 60 + 500 * random(),
+          grade: 0.3 * (random() - 0.5),
+          headwind: 20 * (random() - 0.5),
+        })),
+      );
+      const vehicle = vehicleOf({ actuator: { rateLimit: random() < 0.5 ? 0.3 : null } });
+      const { hills, replayed } = study({
+        locked: planOf(road, vehicle, { kind: 'locked', throttle: 'level' }),
+        stiff: planOf(road, vehicle, STIFF),
+        plain: planOf(road, vehicle, piOf({ antiWindup: { kind: 'none' } }), {
+          rider: { brakesAbove: 8 / 3.6 },
+        }),
+      });
+      for (const { result } of replayed) ends.add(result.status);
+      for (const hill of hills) {
+        expect([hill.meanGrade, hill.share, hill.sustainedSpeed].every(Number.isFinite)).toBe(true);
+        for (const o of hill.outcomes) {
+          const figures = [o.speedChange, o.timeLost, o.timeAtLimit, o.recovery, o.predictedChange];
+          for (const figure of figures)
+            expect(typeof figure === 'number' ? Number.isFinite(figure) : figure.none.length > 0).toBe(true);
+          expect(o.why.endsWith('.')).toBe(true);
+          expect(o.why).not.toMatch(/NaN|Infinity|undefined/);
+        }
+      }
+    }
+    expect(ends.has('completed') && ends.has('stopped')).toBe(true);
   });
 });
 
