@@ -87,6 +87,9 @@ function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): v
   p[at.P_ACTUATOR_FULL] = p[at.P_ACTUATOR_HALF] * p[at.P_ACTUATOR_HALF];
   p[at.P_DRIVE_HALF] = decay(td, 0.5 * step);
   p[at.P_DRIVE_FULL] = p[at.P_DRIVE_HALF] * p[at.P_DRIVE_HALF];
+  p[at.P_ACTUATOR_MEAN] = (ta * (1 - p[at.P_ACTUATOR_FULL])) / step;
+  p[at.P_DRIVE_MEAN] = (td * (1 - p[at.P_DRIVE_FULL])) / step;
+  p[at.P_DRIVE_MOMENT] = td * (p[at.P_DRIVE_MEAN] - p[at.P_DRIVE_FULL]);
   const { filter, delay, scaleError } = vehicle.sensor;
   p[at.P_FILTER] = filter;
   p[at.P_FILTER_FULL] = decay(filter, step);

@@ -8,7 +8,7 @@ import type { Machine } from './machine.ts';
 /**
  * The `fast` kernel: one evaluation of the forces a step of length h, second order.
  *
- *     x, y         in closed form at the middle and the end of the step (as in exact.ts)
+ *     x, y         in closed form (as in exact.ts); xm the mean of x over the step
  *     vm           = v + h/2 a, a of the step before
  *     g sin(theta) = (H(q + h vm) - H(q)) / (h vm), H the integral of g sin(theta): no hill is stepped over;
  *                    the headwind in the same way
@@ -37,10 +37,11 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const rateGap = p[at.P_RATE_GAP];
   const weight = p[at.P_LAG_WEIGHT];
   const equal = p[at.P_LAG_EQUAL];
-  const eah = p[at.P_ACTUATOR_HALF];
   const eaf = p[at.P_ACTUATOR_FULL];
-  const edh = p[at.P_DRIVE_HALF];
   const edf = p[at.P_DRIVE_FULL];
+  const meanActuator = p[at.P_ACTUATOR_MEAN];
+  const meanDrive = p[at.P_DRIVE_MEAN];
+  const momentDrive = p[at.P_DRIVE_MOMENT];
   const filter = p[at.P_FILTER];
   const filterFull = p[at.P_FILTER_FULL];
   const delay = p[at.P_DELAY];
@@ -119,11 +120,12 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
           }
           if (side === 0) xm = xe;
         }
+        xm = (x + 4 * xm + xe) * (1 / 6);
       } else {
         const la = weight * gap;
         const le = equal * gap;
         const ld = x - u - la;
-        xm = u + la * eah + (ld + le * half) * edh;
+        xm = u + la * meanActuator + ld * meanDrive + le * momentDrive;
         xe = u + la * eaf + (ld + le * step) * edf;
         ye = u + gap * eaf;
       }

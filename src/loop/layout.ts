@@ -112,7 +112,11 @@ export const P_BANDS = 34;
 export const P_TO_TRUE = 38;
 export const P_BRAKES_ABOVE = 39;
 export const P_BAND_COUNT = 40;
-export const P_SIZE = 41;
+/** Mean over a step of e^(-t / lag) for actuator and drive, and of t e^(-t / lag) for the drive. */
+export const P_ACTUATOR_MEAN = 41;
+export const P_DRIVE_MEAN = 42;
+export const P_DRIVE_MOMENT = 43;
+export const P_SIZE = 44;
 
 // --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
 export const R_STATION = 0;
