@@ -99,7 +99,7 @@ export interface HillOutcome {
   readonly predictionDiffers: boolean;
   readonly timeLost: number;
   readonly timeAtLimit: number;
-  /** From leaving the band or the limit to within 1 km/h for 3 s [s]. */
+  /** From the end of the longest stay at a limit, or where there was none from leaving the band, to within 1 km/h for 3 s [s]. */
   readonly recovery: Figure;
   readonly cause: Cause | None;
   /** One sentence: why. */
@@ -111,7 +111,10 @@ export interface HillOutcome {
 
 export interface Remedy {
   readonly lever: 'set_speed' | 'power' | 'load' | 'gear';
-  /** The value that holds and the next step that does not, SI; {none} where the lever cannot help. */
+  /**
+   * The value that holds and the next step that does not; {none} where the lever cannot help. Set speed [m/s]; power at
+   * the wheel at the set speed under full throttle at sea level [W]; payload [kg].
+   */
   readonly holds: Figure;
   readonly fails: Figure;
   /** One sentence with units. */

@@ -146,10 +146,13 @@ function windupCause(passage: HillPassage, events: HillEvents): CauseFinding {
   };
 }
 
+const demandWords = (share: number): string =>
+  share >= 0 ? `${inPct(share)} of the full force` : `${inPct(-share)} of what the least throttle holds back`;
+
 function lockedCause(hill: HillFacts): CauseFinding {
   return {
     cause: { none: 'a locked throttle does not regulate' },
-    why: `The throttle is locked; the steepest demand here is ${inPct(hill.share)} of the range.`,
+    why: `The throttle is locked; the demand here is up to ${demandWords(hill.share)}.`,
   };
 }
 
@@ -160,7 +163,7 @@ function gainsCause(hill: HillFacts, events: HillEvents): CauseFinding {
     : 'it never met a limit';
   return {
     cause: 'gains',
-    why: `The demand is up to ${inPct(hill.share)} of the range and ${limit}: the gains let the error grow to ${inKmh(worst)}.`,
+    why: `The demand is up to ${demandWords(hill.share)} and ${limit}: the gains let the error grow to ${inKmh(worst)}.`,
   };
 }
 

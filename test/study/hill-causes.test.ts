@@ -201,7 +201,7 @@ describe('hills of any road', () => {
       return state / 4294967296;
     };
     const ends = new Set<string>();
-    for (let k = 0; k < 12; k++) {
+    for (let k = 0; k < 8; k++) {
       const road = roadOf(
         Array.from({ length: 8 }, () => ({
           length: 60 + 500 * random(),
