@@ -81,7 +81,7 @@ td .hash{font-size:.8em;white-space:normal}
 summary{cursor:pointer;padding:.4rem 0;font-weight:600}
 footer{grid-column:1/-1;border-top:1px solid var(--grid);padding:1rem 0 2rem;font-size:.86rem;color:var(--muted)}
 @media (max-width:1000px){.sheet{grid-template-columns:minmax(0,1fr)}nav ol{position:static;display:flex;flex-wrap:wrap;gap:0 1.1rem;margin-bottom:1.5rem}nav .n{min-width:0}}
-@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}td:not(.num){min-width:8rem}tbody th{position:sticky;left:0;background:var(--page)}}
+@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}td:not(.num){min-width:7rem}tbody th{position:sticky;left:0;background:var(--page)}}
 @media print{
 @page{margin:14mm}
 :root{color-scheme:light;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}

@@ -1,6 +1,6 @@
 import { toWh } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { ENERGY_TERMS, energyAccount } from '../model/energy-account.ts';
+import { ENERGY_TERMS, type EnergyAccount, energyAccount, isWhole } from '../model/energy-account.ts';
 import type { View } from '../model/view.ts';
 import { energyText, fixed } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, scaleOf } from './axes.ts';
@@ -21,7 +21,7 @@ export function energyChart(view: View, canvas: Canvas): Html {
     width: canvas.width - left - 16,
     height: row * view.candidates.length,
   };
-  const reach = accounts.flatMap((account) => [sum(account, 1), -sum(account, -1)]);
+  const reach = accounts.filter(isWhole).flatMap((account) => [sum(account, 1), -sum(account, -1)]);
   const x = scaleOf(
     [toWh(Math.min(0, ...reach)) * 1.02, toWh(Math.max(1, ...reach)) * 1.02],
     box.left,
@@ -30,7 +30,8 @@ export function energyChart(view: View, canvas: Canvas): Html {
   const bars = view.candidates.map((candidate, i) => {
     const top = box.top + i * row + (narrow ? 18 : 5);
     let [right, leftward] = [0, 0];
-    const parts = ENERGY_TERMS.map((term, k) => {
+    const whole = isWhole(accounts[i]!);
+    const parts = (whole ? ENERGY_TERMS : []).map((term, k) => {
       const value = accounts[i]![term.name];
       const from = value >= 0 ? right : leftward + value;
       if (value >= 0) right += value;
@@ -45,7 +46,8 @@ export function energyChart(view: View, canvas: Canvas): Html {
     const name = narrow
       ? label(box.left, top - 5, candidate.name, { fill: paint.ink })
       : label(box.left - 8, top + 15, candidate.name, { anchor: 'end', fill: paint.ink });
-    return html`${name}${parts}`;
+    const nothing = label(x(0) + 6, top + 15, 'failed numerically: no account', { fill: paint.muted });
+    return html`${name}${whole ? parts : nothing}`;
   });
   const words = {
     title: 'Where the energy went',
@@ -70,7 +72,7 @@ function named(x: number, y: number, text: string, { paint }: Canvas): Html {
   return html`${rectangle({ left: x - width / 2, top: y - 11, width, height: 14 }, paint.page, 0.88)}${label(x, y, text, { anchor: 'middle', size: 11, fill: paint.ink })}`;
 }
 
-function sum(account: ReturnType<typeof energyAccount>, sign: 1 | -1): number {
+function sum(account: EnergyAccount, sign: 1 | -1): number {
   let total = 0;
   for (const term of ENERGY_TERMS) total += Math.max(0, sign * account[term.name]);
   return total;

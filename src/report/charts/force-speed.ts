@@ -93,7 +93,7 @@ function names(
     const path = points(line);
     const end = path[path.length - 1]!;
     const bold = line.kind !== 'required';
-    const text = narrow && bold ? line.words.replace('full throttle', 'full').replace(', ', ' ') : line.words;
+    const text = narrow ? line.short : line.words;
     if (end[1] >= box.top && end[1] <= bottom) {
       atEdge.push({ text, at: end[1], bold });
       continue;

@@ -8,7 +8,7 @@ const DIGITS = 1;
 const TOLERANCE = 0.15;
 
 /**
- * Leaves out points that the line through the others meets within the tolerance: the swinging-door rule (Bristol 1990,
+ * Leaves out points that the line through the others meets within twice the tolerance: the swinging-door rule (Bristol 1990,
  * ISA 90-493, from memory), in one pass. First and last points, steps in x and every peak stay.
  *
  * @param points x does not decrease

@@ -1,4 +1,5 @@
 import { tickStep } from 'd3';
+import { knotBefore } from '../../study/along-road.ts';
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { binCurve } from '../model/bin-curves.ts';
@@ -13,10 +14,10 @@ import {
   drawing,
   type LineLook,
   label,
-  rectangle,
   segment,
   stroked,
   tenth,
+  textWidth,
 } from './canvas.ts';
 import type { Point } from './paths.ts';
 
@@ -26,9 +27,13 @@ const WIDTHS = [6, 4.5, 3, 2.2, 3, 4.5, 6] as const;
 /** The route from above, coloured by the speed error of one candidate: worst of each stretch of the drawing. */
 export function planChart(view: View, candidate: CandidateView, map: PlanMap, canvas: Canvas): Html {
   const { paint, narrow } = canvas;
-  const height = narrow ? 300 : 420;
   const keyWidth = narrow ? 0 : 225;
-  const box: Box = { left: 16, top: 16, width: canvas.width - 32 - keyWidth, height: height - 32 };
+  const width = canvas.width - 32 - keyWidth;
+  const [across, up] = [spanOf(map.east), spanOf(map.north)];
+  // As high as the route needs at full width, within what fits a screen and holds the key.
+  const wanted = ((width - 40) * (up[1] - up[0])) / Math.max(1, across[1] - across[0]) + 100;
+  const height = Math.round(Math.min(narrow ? 320 : 460, Math.max(narrow ? 160 : 220, wanted)));
+  const box: Box = { left: 16, top: 16, width, height: height - 32 };
   const place = placed(map, box);
   const bins = candidate.result.bins;
   const curve = binCurve(bins, 'error');
@@ -86,17 +91,18 @@ interface Placed {
   readonly scale: number;
 }
 
+function spanOf(values: Float64Array): readonly [number, number] {
+  let [low, high] = [values[0]!, values[0]!];
+  for (const value of values) {
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  return [low, high];
+}
+
 function placed(map: PlanMap, box: Box): Placed {
-  const range = (values: Float64Array): readonly [number, number] => {
-    let [low, high] = [values[0]!, values[0]!];
-    for (const value of values) {
-      low = Math.min(low, value);
-      high = Math.max(high, value);
-    }
-    return [low, high];
-  };
-  const [west, east] = range(map.east);
-  const [south, north] = range(map.north);
+  const [west, east] = spanOf(map.east);
+  const [south, north] = spanOf(map.north);
   // Room for the scale bar below and the arrow above.
   const inner = { width: box.width - 40, height: box.height - 50 };
   const scale = Math.min(inner.width / Math.max(1, east - west), inner.height / Math.max(1, north - south));
@@ -121,23 +127,24 @@ function planPath(points: readonly Point[]): string {
     .join('');
 }
 
-/** Start, end, and the numbers of the hills. */
+/** Start, end, and the numbers of the hills, beside the route: across its direction, on the upper side. */
 function places(view: View, place: Placed, { paint }: Canvas): Html {
   const { road, hills } = view.result;
   const taken: Point[] = [];
-  const knotAt = (distance: number): number => {
-    let knot = 0;
-    while (knot < road.size - 1 && road.distance[knot]! < distance) knot++;
-    return knot;
-  };
-  const plate = (knot: number, text: string): Html | null => {
+  const mark = (knot: number, text: string): Html | null => {
     const [x, y] = place.point(knot);
-    if (taken.some(([a, b]) => Math.abs(a - x) < 34 && Math.abs(b - y) < 18)) return null;
-    taken.push([x, y]);
-    const width = text.length * 7 + 7;
-    return html`<circle cx="${tenth(x)}" cy="${tenth(y)}" r="2.5" fill="${paint.ink}"/>${rectangle({ left: x + 7, top: y - 17, width, height: 16 }, paint.page, 0.75)}${label(x + 10, y - 5, text, { size: 11, bold: true, fill: paint.ink })}`;
+    const [x0, y0] = place.point(Math.max(0, knot - 20));
+    const [x1, y1] = place.point(Math.min(road.size - 1, knot + 20));
+    const length = Math.sqrt((x1 - x0) * (x1 - x0) + (y1 - y0) * (y1 - y0));
+    const side = x1 - x0 >= 0 ? 1 : -1;
+    const across: Point = length > 0 ? [(side * (y1 - y0)) / length, (-side * (x1 - x0)) / length] : [0, -1];
+    const reach = 9 + textWidth(text, 11) * 0.5 * Math.abs(across[0]) + 6 * Math.abs(across[1]);
+    const [left, top] = [x + across[0] * reach, y + across[1] * reach + 4];
+    if (taken.some(([a, b]) => Math.abs(a - left) < 30 && Math.abs(b - top) < 14)) return null;
+    taken.push([left, top]);
+    return html`<circle cx="${tenth(x)}" cy="${tenth(y)}" r="2.5" fill="${paint.ink}"/>${label(left, top, text, { anchor: 'middle', size: 11, bold: true, fill: paint.ink })}`;
   };
-  return html`${plate(0, 'start')}${plate(road.size - 1, 'end')}${hills.map((hill) => plate(knotAt((hill.from + hill.to) / 2), String(hill.number)))}`;
+  return html`${mark(0, 'start')}${mark(road.size - 1, 'end')}${hills.map((hill) => mark(knotBefore(road, (hill.from + hill.to) / 2), String(hill.number)))}`;
 }
 
 function northArrow({ paint }: Canvas, box: Box): Html {

@@ -16,8 +16,14 @@ export const ENERGY_TERMS: readonly {
   { name: 'kinetic', words: 'speed gained', short: 'speed' },
 ];
 
+export type EnergyAccount = Readonly<Record<EnergyTerm, number>>;
+
+/** False for a run that failed numerically: there is nothing to draw. */
+export const isWhole = (account: EnergyAccount): boolean =>
+  ENERGY_TERMS.every((term) => Number.isFinite(account[term.name]));
+
 /** The account as uses of the drive's pushing work [J]: drive = aero + rolling + climb + brake + kinetic + what the drive took back. */
-export function energyAccount(ledger: Ledger): Readonly<Record<EnergyTerm, number>> {
+export function energyAccount(ledger: Ledger): EnergyAccount {
   return {
     aero: ledger.aero,
     rolling: ledger.rolling,

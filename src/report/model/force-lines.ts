@@ -2,12 +2,15 @@ import { fromPct } from '../../units/convert.ts';
 import { derateFactor } from '../../vehicle/derating.ts';
 import { forceRange } from '../../vehicle/drive-law.ts';
 import { requiredForce } from '../../vehicle/resistance.ts';
+import { fixed, signed, withUnit } from '../quantity.ts';
 import type { View } from './view.ts';
 
 /** Force over speed: what the drive gives, or what a grade asks. SI. */
 export interface ForceLine {
   readonly kind: 'full' | 'least' | 'required';
   readonly words: string;
+  /** For narrow drawings. */
+  readonly short: string;
   readonly speed: readonly number[];
   readonly force: readonly number[];
 }
@@ -45,24 +48,28 @@ export function forceLines(view: View): ForceLines {
   const speed = Array.from({ length: POINTS }, (_, i) => (topSpeed * (i + 1)) / POINTS);
   const [thick, thin] = airExtremes(view);
   const factor = (knot: number) => derateFactor(drive, road.airDensity[knot]!, road.airTemperature[knot]!);
-  const full = (knot: number, words: string): ForceLine => ({
+  const full = (knot: number, place: string): ForceLine => ({
     kind: 'full',
-    words,
+    words: place === '' ? 'full throttle' : `full throttle, ${place}`,
+    short: place === '' ? 'full' : place,
     speed,
     force: speed.map((v) => forceRange(drive, drive.gear, v, factor(knot)).greatest),
   });
   const differs = Math.abs(factor(thick) - factor(thin)) > 0.005;
-  const at = (knot: number) => `${Math.round(road.elevation[knot]!)} m`;
+  const at = (knot: number) => withUnit(fixed(road.elevation[knot]!), 'm');
   const least: ForceLine = {
     kind: 'least',
     words: drive.throttleMin < 0 ? 'full regeneration' : 'closed throttle',
+    short: drive.throttleMin < 0 ? 'regen.' : 'closed',
     speed,
     force: speed.map((v) => forceRange(drive, drive.gear, v, factor(thick)).least),
   };
-  const required = GRADES_PCT.map(
-    (pct): ForceLine => ({
+  const required = GRADES_PCT.map((pct): ForceLine => {
+    const words = withUnit(signed(pct), '%');
+    return {
       kind: 'required',
-      words: `${pct > 0 ? '+' : pct < 0 ? '\u2212' : ''}${Math.abs(pct)} %`,
+      words,
+      short: words,
       speed,
       force: speed.map((v) =>
         requiredForce(vehicle, v, {
@@ -73,12 +80,12 @@ export function forceLines(view: View): ForceLines {
           airTemperature: road.airTemperature[thick]!,
         }),
       ),
-    }),
-  );
+    };
+  });
   return {
     lines: [
-      full(thick, differs ? `full throttle, ${at(thick)}` : 'full throttle'),
-      ...(differs ? [full(thin, `full throttle, ${at(thin)}`)] : []),
+      full(thick, differs ? at(thick) : ''),
+      ...(differs ? [full(thin, at(thin))] : []),
       least,
       ...required,
     ],

@@ -59,12 +59,12 @@ function requirementTable(view: View): Html {
     const candidate = look.get(finding.candidate);
     return [
       finding.requirement.id,
-      asked(view, finding),
+      html`<span class="verdict ${verdict.look}"><span aria-hidden="true">${verdict.mark}</span> ${finding.verdict}</span>`,
       html`<span class="who">${candidate !== undefined && lineKey(candidate, PAGE_PAINT)} ${finding.candidate}</span>`,
+      asked(view, finding),
       measured(view, finding, unit),
       limit(view, finding, unit),
       marginText(finding.margin, unit, view.speed),
-      html`<span class="verdict ${verdict.look}"><span aria-hidden="true">${verdict.mark}</span> ${finding.verdict}</span>`,
       finding.worstAt === null ? NO_VALUE : placeText(finding.worstAt),
     ];
   });
@@ -72,12 +72,12 @@ function requirementTable(view: View): Html {
     'Requirements',
     [
       { head: 'id' },
-      { head: 'figure' },
+      { head: 'verdict' },
       { head: 'candidate' },
+      { head: 'figure' },
       { head: 'measured', number: true },
       { head: 'limit', number: true },
       { head: 'margin', number: true },
-      { head: 'verdict' },
       { head: 'worst at', number: true },
     ],
     rows,

@@ -3,7 +3,7 @@ import { rectangle } from '../charts/canvas.ts';
 import { energyChart } from '../charts/energy.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type HtmlValue, html } from '../html.ts';
-import { ENERGY_TERMS, energyAccount } from '../model/energy-account.ts';
+import { ENERGY_TERMS, energyAccount, isWhole } from '../model/energy-account.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { fixed, NO_VALUE, significant } from '../quantity.ts';
@@ -21,7 +21,7 @@ export function energySection(view: View): Section {
       html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
       fixed(toWh(ledger.drive)),
       ...ENERGY_TERMS.map((term) => {
-        const share = ledger.drive > 0 ? toPct(account[term.name] / ledger.drive) : null;
+        const share = ledger.drive > 0 && isWhole(account) ? toPct(account[term.name] / ledger.drive) : null;
         return html`${fixed(toWh(account[term.name]))}${share !== null && html`<br><span class="small">${fixed(share)} %</span>`}`;
       }),
       endDistance > 0 ? significant(toWh(ledger.drive) / toKm(endDistance)) : NO_VALUE,

@@ -56,7 +56,7 @@ function weight(hill: Hill): number {
 function card(view: View, hill: Hill): Html {
   const runs = view.candidates.flatMap((candidate) => {
     const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
-    return outcome === undefined ? [] : [{ candidate, outcome }];
+    return outcome === undefined || endedBefore(candidate, hill) ? [] : [{ candidate, outcome }];
   });
   const canvas = { id: `hill-${hill.number}`, paint: PAGE_PAINT, width: PICTURE_WIDTH, narrow: true };
   return html`<article class="card" aria-labelledby="hill-${hill.number}-h"><h3 id="hill-${hill.number}-h">Hill ${hill.number}: ${hill.kind} <span class="of">${stretchText(hill.from, hill.to)}</span></h3>
@@ -65,6 +65,10 @@ ${hillPicture(view, hill, canvas)}
 ${outcomes(view, hill, runs)}
 ${sentences(view, runs)}</article>`;
 }
+
+/** A run that ended on the way has nothing to say of the hills behind. */
+const endedBefore = (candidate: CandidateView, hill: Hill): boolean =>
+  candidate.result.status !== 'completed' && candidate.result.endDistance <= hill.from;
 
 function facts(view: View, hill: Hill): string {
   const above = hill.share > 0;
@@ -153,7 +157,7 @@ function allHills(view: View): Html {
     speedText(hill.sustainedSpeed, view.speed, 0),
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
-      if (outcome === undefined) return NO_VALUE;
+      if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
       return html`${changeText(outcome.speedChange, view.speed)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
     }),
   ]);

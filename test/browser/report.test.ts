@@ -1,0 +1,127 @@
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import { AxeBuilder } from '@axe-core/playwright';
+import { type Browser, chromium, type Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { renderReport } from '../../src/report/render-report.ts';
+import { fixtureResult } from '../report/fixture.ts';
+
+let browser: Browser;
+let folder: string;
+let url: string;
+
+beforeAll(async () => {
+  folder = mkdtempSync(join(tmpdir(), 'report-'));
+  const file = join(folder, 'report.html');
+  writeFileSync(file, renderReport(fixtureResult({ lengthKm: 18 }), { units: 'kmh' }));
+  url = pathToFileURL(file).href;
+  browser = await chromium.launch({
+    executablePath: process.env.CHROMIUM_PATH ?? '/usr/bin/chromium',
+    args: ['--no-sandbox', '--disable-gpu', '--disable-dev-shm-usage', '--disable-background-networking'],
+  });
+});
+afterAll(async () => {
+  await browser?.close();
+  rmSync(folder, { recursive: true, force: true });
+});
+
+interface Opened {
+  readonly page: Page;
+  readonly requests: readonly string[];
+  readonly complaints: readonly string[];
+  readonly close: () => Promise<void>;
+}
+
+async function open(width: number, colorScheme: 'light' | 'dark'): Promise<Opened> {
+  const context = await browser.newContext({ viewport: { width, height: 900 }, colorScheme, offline: true });
+  const page = await context.newPage();
+  const requests: string[] = [];
+  const complaints: string[] = [];
+  page.on('request', (request) => requests.push(request.url()));
+  page.on('console', (message) => complaints.push(message.text()));
+  await page.goto(url);
+  return { page, requests, complaints, close: () => context.close() };
+}
+
+describe.each([
+  [1400, 'light'],
+  [1400, 'dark'],
+  [400, 'light'],
+  [400, 'dark'],
+] as const)('the report at %i px, %s', (width, scheme) => {
+  it('breaks no rule of accessibility that a machine can check', async () => {
+    const { page, close } = await open(width, scheme);
+    // The page has no frames: the mode that looks into none is twice as fast.
+    const { violations } = await new AxeBuilder({ page }).setLegacyMode().analyze();
+    expect(
+      violations.map(
+        (one) =>
+          `${one.id}: ${one.nodes
+            .slice(0, 3)
+            .map((node) => node.html.slice(0, 160))
+            .join(' | ')}`,
+      ),
+    ).toEqual([]);
+    await close();
+  });
+
+  it('requests only itself, is styled, and does not scroll sideways', async () => {
+    const { page, requests, complaints, close } = await open(width, scheme);
+    expect(requests).toEqual([url]);
+    expect(complaints).toEqual([]);
+    const seen = await page.evaluate(() => ({
+      over: document.documentElement.scrollWidth - document.documentElement.clientWidth,
+      ground: getComputedStyle(document.body).backgroundColor,
+      wide: getComputedStyle(document.querySelector('figure .wide')!).display,
+      narrow: getComputedStyle(document.querySelector('figure .narrow')!).display,
+    }));
+    expect(seen).toEqual({
+      over: 0,
+      ground: scheme === 'light' ? 'rgb(255, 255, 255)' : 'rgb(20, 23, 26)',
+      wide: width > 640 ? 'block' : 'none',
+      narrow: width > 640 ? 'none' : 'block',
+    });
+    await close();
+  });
+
+  it('keeps every word of a chart inside its drawing', async () => {
+    const { page, close } = await open(width, scheme);
+    const outside = await page.evaluate(() =>
+      [...document.querySelectorAll('svg[role=img]')].flatMap((svg) => {
+        const frame = svg.getBoundingClientRect();
+        if (frame.width === 0) return [];
+        return [...svg.querySelectorAll('text')]
+          .filter((text) => {
+            const box = text.getBoundingClientRect();
+            return box.left < frame.left - 2 || box.right > frame.right + 2;
+          })
+          .map((text) => `${svg.querySelector('title')?.textContent}: ${text.textContent}`);
+      }),
+    );
+    expect(outside).toEqual([]);
+    await close();
+  });
+});
+
+it('prints white, without the contents, with the wide charts and no card wider than the sheet', async () => {
+  const { page, close } = await open(1400, 'dark');
+  await page.emulateMedia({ media: 'print' });
+  await page.setViewportSize({ width: 690, height: 1000 });
+  const seen = await page.evaluate(() => ({
+    ground: getComputedStyle(document.body).backgroundColor,
+    contents: getComputedStyle(document.querySelector('nav')!).display,
+    wide: getComputedStyle(document.querySelector('figure .wide')!).display,
+    whole: getComputedStyle(document.querySelector('.card')!).breakInside,
+    over: document.documentElement.scrollWidth - document.documentElement.clientWidth,
+  }));
+  expect(seen).toEqual({
+    ground: 'rgb(255, 255, 255)',
+    contents: 'none',
+    wide: 'block',
+    whole: 'avoid',
+    over: 0,
+  });
+  await close();
+});

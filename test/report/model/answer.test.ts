@@ -1,0 +1,72 @@
+import { describe, expect, it } from 'vitest';
+import { answerOf } from '../../../src/report/model/answer.ts';
+import { viewOf } from '../../../src/report/model/view.ts';
+import { type FixtureWish, fixtureResult } from '../fixture.ts';
+
+const answer = (wish: FixtureWish) => answerOf(viewOf(fixtureResult({ lengthKm: 12, ...wish }), 'kmh'));
+/** Spaces that must not break are spaces to a reader. */
+const plain = (text: string) => text.replace(/\u00a0/g, ' ');
+
+describe('the answer', () => {
+  it('names the better design, its share of the holdable road, what defeats it and the locked throttle', () => {
+    const { sentence, design, standing, designs } = answer({ lengthKm: 28 });
+    expect(design).toBe('pi-firm');
+    expect(standing).toBe('not met');
+    const words = plain(sentence);
+    expect(words).toContain(
+      'pi-firm holds 60 km/h within ±2 km/h for 99.3 % of the time on the holdable road',
+    );
+    expect(words).toContain('misses 1 of 2 requirements (SH-02)');
+    expect(words).toMatch(
+      /hill \d+ \(km \d+\.\d\d to \d+\.\d\d, mean .+ %\) defeats it: it (loses|gains) \d+\.\d km\/h because/,
+    );
+    expect(words).toMatch(
+      /a throttle locked in place strays from \d+ km\/h below the set speed to \d+ km\/h above it\.$/,
+    );
+    expect(designs.map(({ name, words }) => `${name}: ${words}`)).toEqual([
+      'pi-firm: 1 of 2 not met',
+      'pi-soft: 2 of 2 not met',
+    ]);
+  });
+
+  it('says when all is met, when it is too close to call, and when nothing was asked', () => {
+    expect(answer({ requirements: 'met' })).toMatchObject({ standing: 'met' });
+    expect(answer({ requirements: 'met' }).sentence).toContain('meets all 2 requirements');
+    expect(answer({ requirements: 'close' })).toMatchObject({ standing: 'too close to call' });
+    expect(answer({ requirements: 'close' }).sentence).toContain('SH-01 is too close to call');
+    expect(answer({ requirements: 'none' })).toMatchObject({ standing: 'none asked' });
+    expect(answer({ requirements: 'none' }).sentence).not.toContain('requirement');
+  });
+
+  it('says when a run ended early: of the design, of another one, of the locked throttle', () => {
+    const own = answer({
+      designs: ['pi-only'],
+      ends: { 'pi-only': { km: 5, status: 'stalled' }, locked: { km: 4, status: 'stopped' } },
+    });
+    expect(own.standing).toBe('incomplete');
+    expect(plain(own.sentence)).toMatch(
+      /^pi-only stalled at km (4\.99|5\.\d\d) and does not finish the road/,
+    );
+    expect(plain(own.sentence)).toMatch(/a throttle locked in place came to a stop at km (3\.99|4\.\d\d)\.$/);
+    const other = answer({ ends: { 'pi-soft': { km: 5, status: 'time_limit' } } });
+    expect(other.design).toBe('pi-firm');
+    expect(plain(other.sentence)).toContain('pi-soft ran out of time at km');
+  });
+
+  it('speaks of the locked throttle alone where there is no design, and of designs alone where none is locked', () => {
+    const locked = answer({ designs: [], requirements: 'none' });
+    expect(locked.design).toBeNull();
+    expect(locked.sentence).toMatch(
+      /^The throttle locked in place strays .* no design was replayed beside it\.$/,
+    );
+    expect(answer({ locked: false }).sentence).not.toContain('locked');
+  });
+
+  it('is one sentence', () => {
+    for (const wish of [{}, { requirements: 'none' }, { designs: [] }, { locked: false }] as const) {
+      const { sentence } = answer(wish);
+      expect(sentence.endsWith('.')).toBe(true);
+      expect(sentence.slice(0, -1)).not.toMatch(/\.\s/);
+    }
+  });
+});

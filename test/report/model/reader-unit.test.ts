@@ -1,0 +1,11 @@
+import { expect, it } from 'vitest';
+import { inReaderUnit } from '../../../src/report/model/reader-unit.ts';
+import { SPEED_UNITS } from '../../../src/report/quantity.ts';
+
+it('sentences in km/h are told in mph where the reader wants that: 100 km/h are 62.1 mph', () => {
+  expect(inReaderUnit('Holds at 100 km/h; the gain is 4 % per km/h.', SPEED_UNITS.mph)).toBe(
+    'Holds at 62.1 mph; the gain is 4 % per km/h.',
+  );
+  expect(inReaderUnit('grow to \u22128.0 km/h', SPEED_UNITS.mph)).toBe('grow to \u22125.0 mph');
+  expect(inReaderUnit('Holds at 100 km/h.', SPEED_UNITS.kmh)).toBe('Holds at 100 km/h.');
+});

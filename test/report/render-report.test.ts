@@ -1,0 +1,234 @@
+import { createHash } from 'node:crypto';
+import { beforeAll, describe, expect, it } from 'vitest';
+import { chartFiles } from '../../src/report/chart-files.ts';
+import { renderReport } from '../../src/report/render-report.ts';
+import { type FixtureWish, fixtureResult } from './fixture.ts';
+
+const render = (wish: FixtureWish = {}, units: 'kmh' | 'mph' = 'kmh') =>
+  renderReport(fixtureResult(wish), { units });
+
+let page: string;
+beforeAll(() => {
+  page = render();
+});
+
+const idsOf = (text: string): readonly string[] => [...text.matchAll(/\sid="([^"]+)"/g)].map((m) => m[1]!);
+
+/** What a reader sees: no style sheet, no tags. */
+const wordsOf = (text: string): string =>
+  text.replace(/<style>[\s\S]*?<\/style>/g, '').replace(/<[^>]*>/g, ' ');
+
+describe('the report', () => {
+  it('has its sections in order, the answer first', () => {
+    const sections = [...page.matchAll(/<section id="([^"]+)"/g)].map((m) => m[1]);
+    expect(sections).toEqual([
+      'answer',
+      'road',
+      'candidates',
+      'force',
+      'lanes',
+      'hills',
+      'where',
+      'energy',
+      'method',
+    ]);
+    for (const id of sections) expect(page).toContain(`<a href="#${id}">`);
+  });
+
+  it('asks for nothing from outside: no script, no address, no source but itself', () => {
+    expect(page).not.toMatch(/<script|<link|<iframe|<img|<object|@import|javascript:/i);
+    expect(page).not.toMatch(/\s(src|srcset|action|formaction|background|poster)=/i);
+    for (const [, target] of page.matchAll(/\s(?:xlink:)?href="([^"]*)"/g)) expect(target).toMatch(/^#/);
+    for (const [, target] of page.matchAll(/url\(([^)]*)\)/g)) expect(target).toMatch(/^#/);
+    expect(page.replaceAll('xmlns="http://www.w3.org/2000/svg"', '')).not.toMatch(/https?:\/\//);
+  });
+
+  it('allows its own style by the hash that the browser computes, and no style attribute', () => {
+    const style = /<style>([\s\S]*?)<\/style>/.exec(page)![1]!;
+    const hash = createHash('sha256').update(style, 'utf8').digest('base64');
+    const policy = /http-equiv="Content-Security-Policy" content="([^"]*)"/
+      .exec(page)![1]!
+      .replaceAll('&#39;', "'");
+    expect(policy).toContain("default-src 'none'");
+    expect(policy).toContain(`style-src 'sha256-${hash}'`);
+    expect(page).not.toMatch(/\sstyle=/);
+    expect(page.match(/<style/g)).toHaveLength(1);
+  });
+
+  it('escapes every text that came from a file', () => {
+    const evil = `<script>alert(1)</script>"><img src=x onerror='y'>`;
+    const base = fixtureResult({ lengthKm: 6 });
+    const result = {
+      ...base,
+      title: evil,
+      caseName: evil,
+      road: {
+        ...base.road,
+        name: evil,
+        masks: [{ from: 100, to: 300, reason: evil }],
+        repairs: [{ ...base.road.repairs[0]!, message: evil }],
+      },
+      vehicle: { ...base.vehicle, name: evil },
+      inputs: [{ name: evil, sha256: evil, bytes: 1 }],
+      overrides: [evil],
+      warnings: [{ code: 'x', message: evil }],
+      defaults: [{ key: evil, value: evil, of: 'vehicle', source: evil }],
+      requirements: base.requirements.map((one) => ({
+        ...one,
+        words: evil,
+        requirement: { ...one.requirement, id: evil },
+      })),
+    } as const;
+    for (const text of [
+      renderReport(result, { units: 'kmh' }),
+      ...chartFiles(result, { units: 'kmh' }).map((f) => f.svg),
+    ])
+      expect(text).not.toMatch(/<script|<img/i);
+  });
+
+  it('shows no number that is none', () => {
+    const wishes: readonly FixtureWish[] = [
+      {},
+      { lengthKm: 6, withPositions: false, requirements: 'none' },
+      { lengthKm: 6, designs: [] },
+      {
+        lengthKm: 6,
+        ends: { 'pi-soft': { km: 0.2, status: 'non_finite' }, locked: { km: 3, status: 'stopped' } },
+      },
+    ];
+    for (const wish of wishes) {
+      const text = render(wish);
+      expect(text).not.toMatch(/\bNaN\b|\bundefined\b|\bInfinity\b|\[object/);
+    }
+  });
+
+  it('survives a run that broke down numerically', () => {
+    const base = fixtureResult({ lengthKm: 6 });
+    const [first, ...rest] = base.candidates;
+    const { bins } = first!.result;
+    const broken = Float64Array.from(bins.speedMax, (v, i) => (i > 200 ? Number.NaN : v));
+    const result = {
+      ...base,
+      candidates: [
+        {
+          ...first!,
+          result: {
+            ...first!.result,
+            status: 'non_finite' as const,
+            bins: {
+              ...bins,
+              speedMax: broken,
+              errorMax: broken,
+              errorMean: broken,
+              throttleMean: broken,
+              wheelPower: broken,
+            },
+            ledger: { ...first!.result.ledger, kinetic: Number.NaN, residual: Number.NaN },
+          },
+        },
+        ...rest,
+      ],
+    };
+    expect(renderReport(result, { units: 'kmh' })).not.toMatch(/\bNaN\b|\bInfinity\b/);
+  });
+
+  it('uses every id once, and points only at ids that exist', () => {
+    const ids = idsOf(page);
+    expect(new Set(ids).size).toBe(ids.length);
+    const known = new Set(ids);
+    for (const [, id] of page.matchAll(/href="#([^"]+)"|url\(#([^)]+)\)/g))
+      if (id !== undefined) expect(known).toContain(id);
+    for (const [, id] of page.matchAll(/url\(#([^)]+)\)/g)) expect(known).toContain(id);
+    for (const [, list] of page.matchAll(/aria-labelledby="([^"]+)"/g))
+      for (const id of list!.split(' ')) expect(known).toContain(id);
+  });
+
+  it('gives every chart a title, a description and axes with units', () => {
+    const charts = page.match(/<svg xmlns[\s\S]*?<\/svg>/g)!;
+    expect(charts.length).toBeGreaterThan(12);
+    for (const chart of charts) {
+      expect(chart).toMatch(/role="img"/);
+      expect(chart).toMatch(/<title id="[^"]+">[^<]+<\/title><desc id="[^"]+">[^<]+<\/desc>/);
+      expect(chart).toMatch(/ \/ (m|km|N|kW|Wh|s|%|\(km\/h\))<\/text>|>\d+ (k?m)<\/text>/);
+    }
+    const words = wordsOf(page);
+    for (const axis of [
+      'speed error / (km/h)',
+      'throttle / %',
+      'wheel power / kW',
+      'wheel energy / Wh',
+      'wheel force / N',
+      'distance / km',
+      'time from the foot / s',
+    ])
+      expect(words).toContain(axis);
+  });
+
+  it('always says the cautions', () => {
+    const words = wordsOf(render({ lengthKm: 6, requirements: 'met' }));
+    for (const caution of [
+      'A simulation is no approval to ride',
+      'Speed hold can hide a slide, a bend or a stop ahead',
+      'cut-outs by brake, clutch and stand, are outside this model',
+      'qualified person',
+    ])
+      expect(words).toContain(caution);
+  });
+
+  it('speaks mph to those who want it, everywhere', () => {
+    const words = wordsOf(render({ lengthKm: 12 }, 'mph'));
+    expect(words).toContain('speed error / mph');
+    // The definitions tell the units of the files, which stay metric.
+    const own = words.slice(0, words.indexOf('Definitions of the figures'));
+    expect(own).not.toContain('km/h');
+  });
+
+  it('calls distance nominal for a road along time', () => {
+    const base = fixtureResult({ lengthKm: 6, withPositions: false });
+    const words = wordsOf(renderReport({ ...base, road: { ...base.road, along: 'time' } }, { units: 'kmh' }));
+    expect(words).toContain('nominal distance / km');
+    expect(words).toContain('The positions of this road are not known');
+  });
+
+  it('gives the same bytes twice', () => {
+    expect(render()).toBe(page);
+  });
+
+  it('stays below 1.5 MB for a road of 100 km and five candidates', () => {
+    const long = render({ lengthKm: 100, designs: ['pi-a', 'pi-b', 'pi-c', 'pi-d'] });
+    expect(new TextEncoder().encode(long).length).toBeLessThan(1.5e6);
+  });
+});
+
+describe('chart files', () => {
+  it('stand alone: concrete colours, a name space, unique names, ids of their own', () => {
+    const files = chartFiles(fixtureResult(), { units: 'kmh' });
+    const names = files.map((file) => file.name);
+    expect(new Set(names).size).toBe(names.length);
+    for (const name of [
+      'profile.svg',
+      'force-speed.svg',
+      'plan.svg',
+      'segments.svg',
+      'energy.svg',
+      'lane-speed-error.svg',
+      'hill-1.svg',
+    ])
+      expect(names).toContain(name);
+    for (const { svg } of files) {
+      expect(svg).toMatch(
+        /^<\?xml version="1.0" encoding="UTF-8"\?>\n<svg xmlns="http:\/\/www\.w3\.org\/2000\/svg" /,
+      );
+      expect(svg).not.toContain('var(');
+      expect(svg).toContain('fill="#ffffff"');
+      expect(svg).not.toMatch(/NaN|undefined|Infinity|currentColor/);
+      const ids = idsOf(svg);
+      expect(new Set(ids).size).toBe(ids.length);
+    }
+  });
+
+  it('have no plan where the positions are unknown', () => {
+    const files = chartFiles(fixtureResult({ lengthKm: 6, withPositions: false }), { units: 'kmh' });
+    expect(files.map((file) => file.name)).not.toContain('plan.svg');
+  });
+});
