@@ -3,10 +3,11 @@ import { defineConfig } from 'vite';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 
-// One self-contained ES module per entry: nothing is read from node_modules when it runs.
+// Self-contained ES modules: nothing is read from node_modules when they run. Packages are taken in the form they have
+// for pages, so that the library needs nothing of Node, and both programs run the same code.
 export default defineConfig({
   root,
-  ssr: { noExternal: true },
+  ssr: { noExternal: true, resolve: { conditions: ['module', 'browser', 'production'] } },
   build: {
     ssr: true,
     target: 'node20',

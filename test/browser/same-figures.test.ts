@@ -41,6 +41,7 @@ interface Library {
   runCase(request: { file: string; read: (name: string) => Uint8Array }): never;
   summaryJson(run: never, files: readonly string[]): string;
   dataFiles(run: never): readonly { name: string; text: string }[];
+  renderReport(run: never, options: { units: 'kmh' }): string;
 }
 
 /** Bits of every number of every run, and the texts of the data files. Runs in Node and in the page: no names from outside. */
@@ -55,6 +56,7 @@ function figures(ridgehold: Library, files: Readonly<Record<string, string>>): R
     return typeof value === 'number' ? new Uint32Array(new Float64Array([value]).buffer).join(' ') : value;
   });
   const texts: Record<string, string> = { bits, summary: ridgehold.summaryJson(run, []) };
+  texts.report = ridgehold.renderReport(run, { units: 'kmh' });
   for (const { name, text } of ridgehold.dataFiles(run)) texts[name] = text;
   return texts;
 }
@@ -76,6 +78,7 @@ test('a run gives the same numbers bit for bit, and the same files, in Node and 
   const faults: string[] = [];
   page.on('pageerror', (error) => faults.push(String(error)));
   await page.addScriptTag({ content: await asOneScript() });
+  expect(faults).toEqual([]);
   const inPage = await page.evaluate(
     ([source, files]) => {
       const host = globalThis as unknown as { Ridgehold: unknown };
@@ -87,7 +90,7 @@ test('a run gives the same numbers bit for bit, and the same files, in Node and 
     [figures.toString(), FILES] as const,
   );
   expect(faults).toEqual([]);
-  expect(Object.keys(inPage).length).toBeGreaterThan(6);
+  expect(Object.keys(inPage).length).toBeGreaterThan(7);
   expect(inNode.bits!.length).toBeGreaterThan(100_000);
   expect(inPage).toEqual(inNode);
 });
