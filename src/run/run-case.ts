@@ -12,6 +12,7 @@ import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
+import { figureSpread } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
 import type { Replayed } from '../study/findings.ts';
 import { judge } from '../study/judge.ts';
@@ -37,6 +38,15 @@ export interface RunRequest {
   /** Told now and then what is being done, and the share of the work that is done, 0 to 1. */
   readonly onProgress?: (share: number, words: string) => void;
 }
+
+/** A part of the work with its usual shares of the time. */
+interface Stage {
+  readonly from: number;
+  readonly to: number;
+  readonly words: string;
+}
+const HILLS: Stage = { from: 0.15, to: 0.5, words: 'hills' };
+const SPREAD: Stage = { from: 0.5, to: 0.95, words: "roads drawn from the grade's uncertainty" };
 
 /** Bands that one run can count in. */
 const MOST_BANDS = 4;
@@ -66,15 +76,17 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const demand = demandOf(road, vehicle, hold, rider);
   const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin }, candidates);
   const replayed = replayAll(candidates, plans, onProgress);
-  onProgress(0.4, 'hills');
-  const hills = findHills({ road, demand, replayed, band });
-  onProgress(0.9, 'segments and requirements');
+  const within = (stage: Stage) => (done: number, of: number) =>
+    onProgress(stage.from + ((stage.to - stage.from) * done) / of, stage.words);
+  const hills = findHills({ road, demand, replayed, band, onHill: within(HILLS) });
   const segmenting = segmentsOf(document);
   const segments =
     segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
   const context = { road, demand, hills };
   const figures = compareCandidates(replayed, context, band);
-  const findings = judge(requirements, replayed, context);
+  const spread = figureSpread(requirements, replayed, context, { onRoad: within(SPREAD) });
+  const findings = judge(requirements, replayed, context, spread);
+  onProgress(SPREAD.to, 'series');
   const results = replayed.map(({ plan, result }, i): CandidateResult => {
     const full = series === 'full' ? fullSeries(plan, result) : null;
     return { ...(candidates[i] as Candidate), result, figures: figures[i]?.all ?? {}, full };
@@ -118,7 +130,7 @@ function replayAll(
 ): readonly Replayed[] {
   return plans.map((plan, i) => {
     const name = candidates[i]?.name ?? '';
-    onProgress((0.4 * i) / plans.length, name);
+    onProgress((HILLS.from * i) / plans.length, name);
     return { name, plan, result: runLoop(plan) };
   });
 }

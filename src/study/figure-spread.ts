@@ -26,6 +26,8 @@ export interface SpreadPlan {
   /** Roads to draw, >= 2. */
   readonly roads?: number;
   readonly seed?: number;
+  /** Told before each road how many are done, and of how many. */
+  readonly onRoad?: (done: number, of: number) => void;
 }
 
 const ROADS = 8;
@@ -54,7 +56,7 @@ export function figureSpread(
   requirements: readonly Requirement[],
   replayed: readonly Replayed[],
   context: FigureContext,
-  { roads = ROADS, seed = SEED }: SpreadPlan = {},
+  { roads = ROADS, seed = SEED, onRoad }: SpreadPlan = {},
 ): FigureSpread {
   const asked = requirements.flatMap((requirement) => {
     const row = figureRow(requirement.figure);
@@ -66,6 +68,7 @@ export function figureSpread(
   const values: number[][] = asked.map(() => []);
   const stream = seededStream(seed);
   for (let n = 0; n < draws; n++) {
+    onRoad?.(n, draws);
     const road = perturbRoad(context.road, stream);
     const runs = new Map<string, Replayed>();
     asked.forEach(({ requirement, row, candidate }, k) => {

@@ -14,6 +14,8 @@ export interface HillSearch {
   readonly band: number;
   /** Half-width within which a run has recovered [m/s]; 1 km/h by default. */
   readonly recoveryBand?: number;
+  /** Told before each hill how many are done, and of how many. */
+  readonly onHill?: (done: number, of: number) => void;
 }
 
 /**
@@ -27,8 +29,9 @@ export interface HillSearch {
  * @returns hills in order along the way, empty where everything holds
  */
 export function findHills(search: HillSearch): Hill[] {
-  const { road, demand, replayed, band, recoveryBand = RECOVERED_BAND } = search;
-  return hillStretches(road, demand, replayed, band).map((stretch, k) => {
+  const { road, demand, replayed, band, recoveryBand = RECOVERED_BAND, onHill } = search;
+  return hillStretches(road, demand, replayed, band).map((stretch, k, all) => {
+    onHill?.(k, all.length);
     const facts = hillFacts(road, demand, stretch, k + 1);
     return {
       ...facts,
