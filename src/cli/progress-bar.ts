@@ -18,7 +18,7 @@ export class ProgressBar {
     const width = 24;
     const full = Math.round(Math.min(1, Math.max(0, share)) * width);
     const line = `[${'#'.repeat(full)}${'.'.repeat(width - full)}] ${words}`;
-    this.stream.write(`\r\x1b[2K${line.slice(0, (this.stream.columns ?? 80) - 1)}`);
+    this.stream.write(`\r\x1b[2K${line.slice(0, (this.stream.columns || 80) - 1)}`);
   };
 
   /** Takes the bar away. */

@@ -26,7 +26,12 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
   let run: RunResult;
   try {
     run = reader.telling(() =>
-      runCase({ file: reader.file, read: reader.read, overrides: values.set, onProgress: bar.show }),
+      runCase({
+        file: reader.file,
+        read: reader.read,
+        overrides: values.set,
+        ...(values.quiet ? {} : { onProgress: bar.show }),
+      }),
     );
   } finally {
     bar.clear();
