@@ -58,9 +58,10 @@ thead th{border-bottom:2px solid var(--muted);vertical-align:bottom;line-height:
 tbody th{font-weight:600}
 .num{text-align:right}
 td.num,tbody th{white-space:nowrap}
-td.num .small{white-space:nowrap}
+td.num .small:not(.wrap){white-space:nowrap}
 table .small{font-size:.94em}
-.wrap{white-space:normal;display:inline-block;min-width:6.5rem}
+.wrap{white-space:normal;display:inline-block;min-width:6.5rem;max-width:22rem}
+.wrap.what{min-width:13rem}.wrap.reason{max-width:9rem}
 .verdict{font-weight:700;white-space:nowrap}
 .verdict.good{color:var(--good)}.verdict.bad{color:var(--bad)}.verdict.open{color:var(--open)}
 .cards{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,25rem),1fr));gap:1.2rem;margin:1rem 0}
@@ -81,7 +82,7 @@ td .hash{font-size:.8em;white-space:normal}
 summary{cursor:pointer;padding:.4rem 0;font-weight:600}
 footer{grid-column:1/-1;border-top:1px solid var(--grid);padding:1rem 0 2rem;font-size:.86rem;color:var(--muted)}
 @media (max-width:1000px){.sheet{grid-template-columns:minmax(0,1fr)}nav ol{position:static;display:flex;flex-wrap:wrap;gap:0 1.1rem;margin-bottom:1.5rem}nav .n{min-width:0}}
-@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}td:not(.num){min-width:7rem}tbody th{position:sticky;left:0;background:var(--page)}}
+@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}.wrap,.wrap.what{min-width:9rem}tbody th{position:sticky;left:0;background:var(--page)}}
 @media print{
 @page{margin:14mm}
 :root{color-scheme:light;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}
@@ -103,6 +104,7 @@ thead{display:table-header-group}
 .keys,.keyline,.facts{break-after:avoid}
 .keys{break-inside:avoid}
 .sentence{font-size:12.5pt}
+.wrap.what{min-width:9rem}
 p,li{orphans:3;widows:3}
 .hash{font-size:6.4pt}
 a{color:inherit;text-decoration:none}

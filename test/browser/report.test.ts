@@ -15,7 +15,11 @@ let url: string;
 beforeAll(async () => {
   folder = mkdtempSync(join(tmpdir(), 'report-'));
   const file = join(folder, 'report.html');
-  writeFileSync(file, renderReport(fixtureResult({ lengthKm: 18 }), { units: 'kmh' }));
+  const result = fixtureResult({ lengthKm: 18 });
+  const none = { none: 'it was not back within 1 km/h for 3 s in two minutes' };
+  const unmeasured = { ...result.requirements[0]!, measured: none, margin: none };
+  const requirements = [...result.requirements, unmeasured];
+  writeFileSync(file, renderReport({ ...result, requirements }, { units: 'kmh' }));
   url = pathToFileURL(file).href;
   browser = await chromium.launch({
     executablePath: process.env.CHROMIUM_PATH ?? '/usr/bin/chromium',
@@ -83,6 +87,17 @@ describe.each([
       wide: width > 640 ? 'block' : 'none',
       narrow: width > 640 ? 'none' : 'block',
     });
+    await close();
+  });
+
+  it('keeps the words of every cell inside the cell', async () => {
+    const { page, close } = await open(width, scheme);
+    const outside = await page.evaluate(() =>
+      [...document.querySelectorAll('td, th')]
+        .filter((cell) => cell.scrollWidth > cell.clientWidth + 1)
+        .map((cell) => cell.textContent),
+    );
+    expect(outside).toEqual([]);
     await close();
   });
 

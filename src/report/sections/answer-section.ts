@@ -87,7 +87,7 @@ function requirementTable(view: View): Html {
 function asked(view: View, { requirement, words }: RequirementFinding): Html {
   const { label } = figureLabel(requirement.figure);
   const band = requirement.band === null ? '' : ` ${bandText(requirement.band, view.speed)}`;
-  return html`<span title="${inReaderUnit(words, view.speed)}">${label}${band}</span><br><span class="small">${whereWords(requirement.where)}</span>`;
+  return html`<span class="wrap what"><span title="${inReaderUnit(words, view.speed)}">${label}${band}</span><br><span class="small">${whereWords(requirement.where)}</span></span>`;
 }
 
 export function whereWords(where: Where): string {
@@ -97,7 +97,7 @@ export function whereWords(where: Where): string {
 }
 
 function measured(view: View, { measured: value, spread }: RequirementFinding, unit: string): Html {
-  if (isNone(value)) return html`<span title="${value.none}">${NO_VALUE}</span>`;
+  if (isNone(value)) return html`<span class="wrap reason small">${value.none}</span>`;
   const wide = readable(spread, unit, view.speed);
   const digits = wide.value >= 1 ? 0 : wide.value >= 0.05 ? 1 : 2;
   const spreadWords = wide.value >= 0.005 ? ` ± ${fixed(wide.value, digits)}` : '';

@@ -47,14 +47,15 @@ export function candidatesSection(view: View): Section {
     [
       'throttle',
       ...candidates.map(
-        (candidate) => html`<span class="small">${controllerWords(candidate.controller, view.speed)}</span>`,
+        (candidate) =>
+          html`<span class="wrap small">${controllerWords(candidate.controller, view.speed)}</span>`,
       ),
     ],
     ['run', ...candidates.map(statusWords)],
     rangeRow(view),
     ...SHOWN.flatMap((name) => figureCells(view, name)),
   ];
-  const body = html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better.</p>
+  const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better.</p>`}
 ${table('Candidates side by side', columns, rows)}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }
@@ -77,7 +78,7 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
       ...view.candidates.map((candidate, i) => {
         const text = figureText(candidate.figures[name], row.unit, view.speed);
         const value = values[i]!;
-        return html`${i === best ? html`<strong>${text}</strong>` : text}${value !== null && high > low && bar(value, low, high, candidate)}`;
+        return html`${i === best ? html`<strong>${text}</strong>` : text}${value !== null && high > low && view.candidates.length > 1 && bar(value, low, high, candidate)}`;
       }),
     ],
   ];

@@ -7,7 +7,6 @@ import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import {
-  changeText,
   fixed,
   forceText,
   gradeText,
@@ -15,6 +14,7 @@ import {
   NO_VALUE,
   shareText,
   signed,
+  significant,
   speedText,
   stretchText,
 } from '../quantity.ts';
@@ -41,6 +41,7 @@ export function hillsSection(view: View): Section {
 ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
+<p>Under a candidate: its change of speed, and why.</p>
 ${allHills(view)}`;
   return { id: 'hills', number: 6, title: 'Hills', body };
 }
@@ -88,7 +89,7 @@ function facts(view: View, hill: Hill): string {
 /** Mean grade with its standard deviation, where it has one. */
 const gradeWords = (hill: Hill): string =>
   hill.meanGradeSd > 0
-    ? `${gradeText(hill.meanGrade)} ±\u00a0${fixed(toPct(hill.meanGradeSd), 1)}\u00a0%`
+    ? `${gradeText(hill.meanGrade)} ±\u00a0${significant(toPct(hill.meanGradeSd), 1)}\u00a0%`
     : gradeText(hill.meanGrade);
 
 interface Run {
@@ -151,14 +152,14 @@ function allHills(view: View): Html {
     hill.kind,
     html`<span class="who">${stretchText(hill.from, hill.to)}</span>`,
     html`<span class="who">${gradeWords(hill)}</span>`,
-    shareText(hill.share),
-    forceText(hill.requiredForce),
-    forceText(hill.availableForce),
-    speedText(hill.sustainedSpeed, view.speed, 0),
+    fixed(toPct(hill.share)),
+    fixed(hill.requiredForce),
+    fixed(hill.availableForce),
+    fixed(view.speed.of(hill.sustainedSpeed)),
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
       if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
-      return html`${changeText(outcome.speedChange, view.speed)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
+      return html`${signed(view.speed.of(outcome.speedChange), 1)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
     }),
   ]);
   return table(
@@ -168,11 +169,14 @@ function allHills(view: View): Html {
       { head: 'kind' },
       { head: 'stretch' },
       { head: 'mean grade', number: true },
-      { head: 'demand', number: true },
-      { head: 'asked', number: true },
-      { head: 'there is', number: true },
-      { head: 'steady speed', number: true },
-      ...view.candidates.map((candidate) => ({ head: candidate.name, number: true })),
+      { head: 'demand / %', number: true },
+      { head: 'asked / N', number: true },
+      { head: 'there is / N', number: true },
+      { head: `steady speed / ${view.speed.axis}`, number: true },
+      ...view.candidates.map((candidate) => ({
+        head: html`${candidate.name}<br>/ ${view.speed.axis}`,
+        number: true,
+      })),
     ],
     rows,
   );
