@@ -86,10 +86,10 @@ function facts(view: View, hill: Hill): string {
   return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
 
-/** Mean grade with its standard deviation, where it has one. */
+/** Mean grade with its standard deviation, where it has one; finer than 0.01 % no road is known. */
 const gradeWords = (hill: Hill): string =>
   hill.meanGradeSd > 0
-    ? `${gradeText(hill.meanGrade)} ±\u00a0${significant(toPct(hill.meanGradeSd), 1)}\u00a0%`
+    ? `${gradeText(hill.meanGrade)} ±\u00a0${significant(Math.max(0.01, toPct(hill.meanGradeSd)), 1)}\u00a0%`
     : gradeText(hill.meanGrade);
 
 interface Run {

@@ -42,8 +42,8 @@ ${
 function solver(view: View): Html {
   const exact = view.result.scheme === 'exact';
   const scheme = exact
-    ? 'Scheme exact: the classical fourth-order Runge-Kutta method between controller samples, cut at every kink of the road, the drive and the actuator. Its aim is a speed within 2 × 10⁻⁸ m/s of a high-precision solution of the same equations.'
-    : 'Scheme fast: one evaluation a controller sample, lags solved exactly. Its aim is a speed within 2 × 10⁻⁵ m/s of a high-precision solution of the same equations.';
+    ? 'Scheme exact: the classical fourth-order Runge-Kutta method between controller samples, cut at every kink of the road, the drive and the actuator. The tests of the program hold its speed within 2 × 10⁻⁸ m/s of a far finer solution of the same equations.'
+    : 'Scheme fast: one evaluation a controller sample, lags solved exactly. The tests of the program hold its speed within 2 × 10⁻⁵ m/s of a far finer solution of the same equations.';
   return html`<h3>Solver</h3>
 <p>${scheme} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay. The error of the numerics is far below what the road's uncertainty leaves open.</p>
 <p>The energy account closes to: ${view.candidates
@@ -69,7 +69,7 @@ function definitions(view: View): Html {
   return html`<h3>Definitions of the figures</h3>
 <p>The error e is true speed minus set speed${view.result.hold.setSpeedIs === 'indicated' && ', the set speed being what the sensor indicates'}; negative is too slow. The band of the charts is ${bandText(view.result.band, view.speed)}. Holdable: where the drive has what the set speed asks, an ideal hold is back at the set speed after what came before, and no change of set speed is still settling.</p>
 ${table('Definitions', [{ head: 'figure, its name in files' }, { head: 'unit there' }, { head: 'by' }, { head: 'definition' }, { head: 'source' }], rows)}
-<p>The hand formula beside a simulated loss on a hill: the speed to which full (or least) force would settle there, reached with the momentum of the vehicle at the foot: v² changes by twice the missing force over the effective mass for each metre. Where simulation and hand formula differ by more than 15 % the cards show ≠.</p>`;
+<p>The hand formula beside a simulated change on a hill: d(v²) = 2 (F − F<sub>required</sub>) ds / m<sub>e</sub> along the slope, with F what an ideal hold would give (whatever keeps the set speed while the drive has it, else full throttle or the least force), or the force of the locked throttle. No controller, lag or sampling is in it, so the rest is the design's own. Where simulation and hand formula differ by more than 15 % the cards show ≠.</p>`;
 }
 
 function roadSources(view: View): Html {
