@@ -1,12 +1,17 @@
 // The public library: text and bytes in, plain data and text out. The same in Node, a page and a worker.
 
+export { editCase } from './case/edit-case.ts';
 export { caseJsonSchema, vehicleJsonSchema } from './case/json-schema.ts';
 export { starterCase } from './case/starter-case.ts';
+export { designDroop } from './control/design-droop.ts';
+export { designSettling } from './control/design-settling.ts';
 export type { Candidate, ControllerSetup, LockedSetup, PiSetup } from './control/setup.ts';
+export { solveContinuous } from './loop/continuous.ts';
 export type { HoldPlan, LoopPlan, RiderPlan, RunStatus } from './loop/plan.ts';
 export { replay } from './loop/replay.ts';
 export type { BinRecord, Checkpoint, FullSeries, Ledger, LoopResult } from './loop/result.ts';
 export { runLoop } from './loop/run-loop.ts';
+export { warmUp } from './loop/warm-up.ts';
 export { formatProblem, InputError, type Problem } from './problems/input-error.ts';
 export { formatPlace, type Place } from './problems/place.ts';
 export type { Warning } from './problems/warning.ts';
@@ -41,4 +46,6 @@ export type {
 } from './study/findings.ts';
 export { readTrack } from './track/read-track.ts';
 export type { Profile, Repair, Track } from './track/track.ts';
+export { type ElectricDriveSpec, electricDrive } from './vehicle/electric-drive.ts';
+export { type ForceDriveSpec, forceDrive } from './vehicle/force-drive.ts';
 export type { Drive, RoadLoad, Vehicle } from './vehicle/vehicle.ts';
