@@ -39,6 +39,7 @@ export function benchRoad(length) {
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }
 

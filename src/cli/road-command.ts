@@ -37,7 +37,9 @@ export function roadCommand({ operands: [path], values }: Invocation<'road'>): n
 
 function tellRoad({ road, defaults }: RoadResult): void {
   const length = road.distance[road.size - 1] ?? 0;
-  say(`${road.name}: ${toKm(length).toFixed(2)} km, ${road.size} points`);
+  const what =
+    road.points === null ? `${road.size} knots` : `${road.points} points of the track, ${road.size} knots`;
+  say(`${road.name}: ${toKm(length).toFixed(2)} km, ${what}`);
   if (road.smoothing !== null) {
     const { source, wavelength, residualSd, shortestHill } = road.smoothing;
     const assumed = defaults.some(({ key }) => key === 'road.elevation_source') ? ' (assumed)' : '';

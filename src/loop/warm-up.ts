@@ -69,5 +69,6 @@ function practiceRoad(crosswind: number): Road {
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }

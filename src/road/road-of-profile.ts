@@ -60,6 +60,7 @@ export function roadOfProfile(given: Profile, options: ProfileOptions): Road {
     along: profile.by === 'time' ? 'time' : 'distance',
     name: options.name,
     size: at.length,
+    points: null,
     station: profile.by === 'time' ? at : line.station,
     distance,
     elevation: line.elevation,

@@ -48,6 +48,7 @@ export function roadOfTrack(track: Track, options: RoadOptions): Road {
     along: 'distance',
     name: options.name,
     size: distance.length,
+    points: driven.size,
     station,
     distance,
     elevation,

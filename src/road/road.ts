@@ -35,6 +35,8 @@ export interface Road {
   readonly along: 'distance' | 'time';
   readonly name: string;
   readonly size: number;
+  /** Points of the track that the driven road is made from: without those left out or cut off at the ends; null for a written road. */
+  readonly points: number | null;
   /** What the loop integrates over [m] or [s]; starts at 0, does not decrease. */
   readonly station: Float64Array;
   /** Horizontal distance from the driven start [m]; what every table and chart is over. Starts at 0, does not decrease. */

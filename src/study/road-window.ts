@@ -55,6 +55,7 @@ export function cutRoad(road: Road, from: number, to: number): Road {
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }
 

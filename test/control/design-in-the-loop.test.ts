@@ -75,6 +75,7 @@ function steppedRoad(start: number, end: number, speed: number, grade: number): 
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }
 

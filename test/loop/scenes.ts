@@ -54,6 +54,7 @@ export function roadOver(
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }
 

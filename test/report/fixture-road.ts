@@ -81,5 +81,6 @@ export function fixtureRoad(lengthKm: number, withPositions: boolean): Road {
     ],
     warnings: [],
     turnsAt: null,
+    points: Math.round(size / 1.5),
   };
 }

@@ -262,6 +262,55 @@ describe('road of a track', () => {
     expect(back.repairs.map((r) => [r.from, r.to])).toEqual([[2400, 2500]]);
   });
 
+  it('counts the points of the track that it is made from, not its own knots', () => {
+    const whole = noisyTrack(18, 6000);
+    expect(columns(whole, { grid: 5 }).points).toBe(601);
+    expect(columns(whole, { grid: 5 }).size).toBe(1201);
+    expect(columns(whole, { trimEnds: 500 }).points).toBe(501);
+    expect(columns(whole, { direction: 'both' }).points).toBe(601);
+  });
+
+  it('opens the message of every repair with its driven place, however the track was cut or turned', () => {
+    const whole = noisyTrack(19, 6000);
+    const elevation = whole.elevation!.slice();
+    elevation[250] = elevation[250]! + 60;
+    elevation[251] = elevation[251]! + 60;
+    elevation[400] = elevation[400]! - 60;
+    const repairs: Repair[] = [
+      {
+        kind: 'doubled_point',
+        from: 2000,
+        to: 2000,
+        points: 1,
+        line: 419,
+        message: 'At km 2.000 (line 419): x.',
+      },
+      {
+        kind: 'gap',
+        from: 3000,
+        to: 3100,
+        points: 0,
+        line: 7,
+        message: 'From km 3.000 to km 3.100 (line 7): x.',
+      },
+    ];
+    const km = (x: number): string => (x / 1000).toFixed(3);
+    for (const options of [{}, { trimEnds: 700 }, { trimEnds: 700, direction: 'back' }] as const) {
+      const road = columns({ ...whole, elevation, repairs }, options);
+      expect(road.repairs.map(({ kind }) => kind).sort()).toEqual([
+        'doubled_point',
+        'elevation_spike',
+        'elevation_spike',
+        'gap',
+      ]);
+      for (const { from, to, message } of road.repairs) {
+        const place = from === to ? `At km ${km(from)}` : `From km ${km(from)} to km ${km(to)}`;
+        expect(message.startsWith(`${place}:`) || message.startsWith(`${place} (line `)).toBe(true);
+        expect(message.match(/km \d/g)).toHaveLength(from === to ? 1 : 2);
+      }
+    }
+  });
+
   it('is one drive out and back, with its turn named', () => {
     const track = noisyTrack(13);
     const there = columns(track, { wind: windFrom(2) });

@@ -57,5 +57,6 @@ export function roadOf(pieces: readonly Piece[], options: RoadOptions = {}): Roa
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }

@@ -10,7 +10,8 @@ export function routeSummary(road: Road, demand: Demand | null): Json {
   return {
     name: road.name,
     ...numbers({ length_m: road.distance[road.size - 1] ?? 0, climb_m: up, descent_m: down }),
-    points: road.size,
+    points: road.points ?? road.size,
+    knots: road.size,
     repairs: road.repairs.length,
     ...numbers({ grid_m: road.grid }),
     ...(demand === null ? {} : authority(road, demand)),

@@ -33,6 +33,7 @@ function roadThrough(positions: readonly (readonly [number, number, number])[] |
     repairs: [],
     warnings: [],
     turnsAt: null,
+    points: null,
   };
 }
 
