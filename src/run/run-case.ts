@@ -12,7 +12,7 @@ import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
-import { figureSpread } from '../study/figure-spread.ts';
+import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
 import type { Replayed } from '../study/findings.ts';
 import { judge } from '../study/judge.ts';
@@ -110,8 +110,9 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),
     requirements: findings,
+    spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
     defaults: [...document.defaults, ...vehicleDocument.defaults],
-    warnings: runWarnings(road, results),
+    warnings: runWarnings(road, vehicle, results),
     status: statusOf(results, findings),
   };
 }

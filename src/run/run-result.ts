@@ -32,10 +32,20 @@ export interface RunResult {
   readonly segmentsBy: 'length' | 'terrain';
   readonly segments: readonly Segment[];
   readonly requirements: readonly RequirementFinding[];
+  readonly spread: SpreadMethod;
   readonly defaults: readonly DefaultUsed[];
   readonly warnings: readonly Warning[];
   /** `requirement_not_met` when any requirement is not met; else `incomplete` when a candidate did not reach the end. */
   readonly status: 'ok' | 'requirement_not_met' | 'incomplete';
+}
+
+/** How the spread of the figures in `requirements` was found. */
+export interface SpreadMethod {
+  /** Roads drawn from the grade's uncertainty, 0 where it has none or nothing is asked; and the seed of the draw. */
+  readonly roads: number;
+  readonly seed: number;
+  /** One sentence. */
+  readonly words: string;
 }
 
 export interface InputFile {

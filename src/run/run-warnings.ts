@@ -1,6 +1,8 @@
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import { toKm } from '../units/convert.ts';
+import { CORRECTION_RANGE, correctionFactor, deratingExtrapolates } from '../vehicle/derating.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateResult } from './run-result.ts';
 
 /** An energy account that is further open than this says that the solver went wrong. */
@@ -13,9 +15,41 @@ const ENDINGS = {
   non_finite: 'failed numerically: its speed is no number any more',
 } as const;
 
-/** What the road and the runs give cause to say, in the order of the work. */
-export function runWarnings(road: Road, candidates: readonly CandidateResult[]): readonly Warning[] {
-  return [...road.warnings, ...candidates.flatMap((candidate) => candidateWarnings(candidate))];
+/** What the road, the drive in its air and the runs give cause to say, in the order of the work. */
+export function runWarnings(
+  road: Road,
+  { drive }: Vehicle,
+  candidates: readonly CandidateResult[],
+): readonly Warning[] {
+  return [
+    ...road.warnings,
+    ...deratingWarnings(road, drive),
+    ...candidates.flatMap((candidate) => candidateWarnings(candidate)),
+  ];
+}
+
+/** One warning over all places where the altitude correction of the drive goes beyond its published range. */
+function deratingWarnings(road: Road, drive: Vehicle['drive']): readonly Warning[] {
+  let [first, last, most] = [-1, -1, 0];
+  for (let i = 0; i < road.size; i++) {
+    const density = road.airDensity[i] ?? 0;
+    const temperature = road.airTemperature[i] ?? 0;
+    if (!deratingExtrapolates(drive, density, temperature)) continue;
+    if (first < 0) first = i;
+    last = i;
+    most = Math.max(most, correctionFactor(density, temperature));
+  }
+  if (first < 0) return [];
+  const from = road.distance[first] ?? 0;
+  const to = road.distance[last] ?? 0;
+  return [
+    {
+      code: 'derating-extrapolated',
+      message: `The altitude correction of the drive is extrapolated between km ${toKm(from).toFixed(2)} and ${toKm(to).toFixed(2)}: its factor reaches ${most.toFixed(2)}, and ISO 1585 vouches for ${CORRECTION_RANGE.least} to ${CORRECTION_RANGE.greatest}.`,
+      from,
+      to,
+    },
+  ];
 }
 
 function candidateWarnings({ name, result }: CandidateResult): readonly Warning[] {

@@ -131,7 +131,8 @@ function sampleSd(values: readonly number[]): number {
 }
 
 /** One sentence for the method section. */
-export function spreadMethod({ roads, seed }: FigureSpread): string {
+export function spreadMethod({ roads, seed, rows }: FigureSpread): string {
+  if (rows.length === 0) return 'No requirement asks for a figure, so no spread was computed.';
   if (roads === 0) return 'The grade has no uncertainty here, so the figures have no spread from it.';
   return `The spread of a figure is its sample standard deviation over ${roads} roads drawn from the grade's uncertainty (seed ${seed}), each candidate replayed over all of them; a limit within two of it of the measured figure is too close to call.`;
 }

@@ -115,6 +115,7 @@ export function fixtureResult(wish: FixtureWish = {}): RunResult {
     segmentsBy: 'length',
     segments: segmentsOf(road, setups, runs),
     requirements: requirementsOf(wish.requirements ?? 'missed', designs),
+    spread: { roads: 8, seed: 7, words: 'The spread is that over 8 invented roads (seed 7).' },
     defaults: [
       {
         key: 'mass.rotating_kg',

@@ -128,6 +128,50 @@ test('a candidate that does not reach the end is a warning and a status, not an 
   expect(run.warnings.find(({ code }) => code === 'stopped')?.message).toMatch(/at km 1\.\d\d/);
 });
 
+test('a derated drive high up is told where its correction leaves the range that ISO 1585 vouches for', () => {
+  const high = CASE.replace(
+    'track: {profile: [',
+    'track: {start_elevation_m: 600, profile: [{length_m: 4000, grade_pct: 10}, ',
+  ).replace('air: {density_kg_m3: 1.2}', 'air: {temperature_c: 15}');
+  const derated = VEHICLE.replace(
+    'peak_force_n: 320',
+    'peak_force_n: 900, altitude_derate: naturally_aspirated',
+  );
+  const warningsOf = (text: string, vehicle: string) =>
+    runCase({
+      file: 'case.yaml',
+      read: from({ 'case.yaml': text, 'sub/vehicle.yaml': vehicle }),
+    }).warnings.filter(({ code }) => code === 'derating-extrapolated');
+  const [warning, ...others] = warningsOf(high, derated);
+  expect(others).toEqual([]);
+  // (99 / p)^1.2 (T / 298)^0.6 in the standard atmosphere is 1.07 at 890 m, recomputed outside of this project: 290 m above the start, at 10 %
+  expectClose(warning!.from!, 2900, 15, 'where it begins [m]');
+  expectClose(warning!.to!, 6000, 1e-6, 'where it ends: the road stays up there [m]');
+  expect(warning!.message).toMatch(/km 2\.9\d and 6\.00: its factor reaches 1\.\d\d, .*0\.93 to 1\.07/);
+  expect(warningsOf(high, VEHICLE.replace('peak_force_n: 320', 'peak_force_n: 900'))).toEqual([]);
+  expect(warningsOf(high.replace('600', '0'), derated)).toEqual([]);
+});
+
+test('the result says how the spread of its figures was found', () => {
+  const { spread } = runCase({ file: 'case.yaml', read: from(files) });
+  expect(spread).toMatchObject({
+    roads: 0,
+    words: 'No requirement asks for a figure, so no spread was computed.',
+  });
+  const asked = `${CASE}requirements: [{id: A, figure: worst_low_kmh, at_least: -9}]\n`;
+  const written = runCase({ file: 'case.yaml', read: from({ ...files, 'case.yaml': asked }) }).spread;
+  expect(written).toMatchObject({ roads: 0, words: expect.stringContaining('no uncertainty') });
+  const rows = Array.from({ length: 201 }, (_, i) => `${i * 10},${20 + (i % 7) * 0.3}`).join('\n');
+  const track = asked.replace(/^track: .*$/m, 'track: {file: bumps.csv}\nroad: {elevation_source: gnss}');
+  const measured = runCase({
+    file: 'case.yaml',
+    read: from({ ...files, 'case.yaml': track, 'bumps.csv': `distance_m,elevation_m\n${rows}\n` }),
+  }).spread;
+  expect(measured.roads).toBeGreaterThanOrEqual(2);
+  expect(measured.words).toContain(`${measured.roads} roads`);
+  expect(measured.words).toContain(`seed ${measured.seed}`);
+});
+
 test('progress grows from 0 and names the candidates', () => {
   const told: [number, string][] = [];
   runCase({ file: 'case.yaml', read: from(files), onProgress: (share, words) => told.push([share, words]) });

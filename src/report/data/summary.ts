@@ -36,6 +36,7 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     candidates: run.candidates.map(candidateOf),
     hills: hillRows(run.hills),
     requirements: run.requirements.map(requirementOf),
+    spread: { roads: run.spread.roads, seed: run.spread.seed },
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),
     warnings: run.warnings.map(warningJson),
     files,

@@ -46,6 +46,7 @@ function solver(view: View): Html {
     : 'Scheme fast: one evaluation a controller sample, lags solved exactly. The tests of the program hold its speed within 2 × 10⁻⁵ m/s of a far finer solution of the same equations.';
   return html`<h3>Solver</h3>
 <p>${scheme} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay. The error of the numerics is far below what the road's uncertainty leaves open.</p>
+<p>${view.result.spread.words}</p>
 <p>The energy account closes to: ${view.candidates
     .map(
       (candidate) =>
