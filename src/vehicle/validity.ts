@@ -56,6 +56,11 @@ export function validityNotes(vehicle: Vehicle): readonly ValidityNote[] {
       words:
         'Drive force grows in proportion to the throttle; a real throttle plate gives most of its torque in the first third of its travel.',
     });
+  if (drive.kind === 'force')
+    notes.push({
+      code: 'part-throttle-force',
+      words: `At part throttle${drive.peakPower === null ? '' : ', below the speed at which its power limit sets in,'} the force of this drive does not rise as it slows, as that of many engines does: a locked throttle does worse here than on such an engine, because on a climb that takes more than the air drag gives back it has no steady speed to settle at.`,
+    });
   if (drive.derate === 'naturally_aspirated')
     notes.push({
       code: 'altitude-correction',
