@@ -58,7 +58,7 @@ export const COMMANDS = {
     operands: ['TRACK|CASE'],
     about: 'turn a track into disturbance sequences, and say what was repaired',
     details: [
-      'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson and a picture of the profile into a folder: --out, or out/<name>.',
+      'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson, road.svg (elevation, grade with its uncertainty, wind) and road.json into a folder: --out, or out/<name>.',
       'Repairs, warnings and the uncertainty of the grade are told on standard error. For a bare track, --set takes the keys of a case that concern the road: track.*, road.*, wind.*, air.*.',
     ],
     options: ['out', 'set', 'json', 'quiet', 'units', 'help'],

@@ -1,6 +1,7 @@
 import { join } from 'node:path';
 import { roadFiles } from '../report/data/data-files.ts';
 import { roadJson } from '../report/data/road-json.ts';
+import { roadPicture } from '../report/road-picture.ts';
 import { caseNameOf } from '../run/case-name.ts';
 import { roadOf } from '../run/road-of.ts';
 import type { RoadResult } from '../run/road-result.ts';
@@ -20,7 +21,10 @@ export function roadCommand({ operands: [path], values }: Invocation<'road'>): n
   const result = reader.telling(() =>
     roadOf({ file: reader.file, read: reader.read, overrides: values.set }),
   );
-  const files = roadFiles(result.road);
+  const files = [
+    ...roadFiles(result.road),
+    { name: 'road.svg', text: roadPicture(result.road, { units: values.units ?? 'kmh' }) },
+  ];
   const mark = roadJson(
     result,
     files.map(({ name }) => name),

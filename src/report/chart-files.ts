@@ -1,11 +1,13 @@
 import type { RunResult } from '../run/run-result.ts';
-import { type Canvas, rectangle } from './charts/canvas.ts';
+import { chartOnWhite } from './chart-on-white.ts';
+import type { Canvas } from './charts/canvas.ts';
 import { energyChart } from './charts/energy.ts';
 import { forceSpeedChart } from './charts/force-speed.ts';
 import { hillPicture } from './charts/hill-picture.ts';
 import { laneChart, laneLooks } from './charts/lanes.ts';
 import { planChart } from './charts/plan.ts';
 import { profileChart } from './charts/profile.ts';
+import { roadLanesChart } from './charts/road-lanes.ts';
 import { segmentStrip } from './charts/segment-strip.ts';
 import type { Html } from './html.ts';
 import { planMap } from './model/plan-map.ts';
@@ -33,11 +35,12 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
     width,
     narrow,
   });
-  const file = (name: string, drawn: Html): ChartFile => ({ name: `${name}.svg`, svg: onWhite(drawn) });
+  const file = (name: string, drawn: Html): ChartFile => ({ name: `${name}.svg`, svg: chartOnWhite(drawn) });
   const map = planMap(result.road);
   const design = view.candidates.find((candidate) => !candidate.locked) ?? view.candidates[0];
   return [
     file('profile', profileChart(view, canvas('profile'))),
+    file('road-grade', roadLanesChart(result.road, view.speed, canvas('road-grade'))),
     file('force-speed', forceSpeedChart(view, canvas('force-speed'))),
     ...laneLooks(view).map((look) => {
       const name = `lane-${look.title.replaceAll(' ', '-')}`;
@@ -53,12 +56,4 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
     file('segments', segmentStrip(view, canvas('segments'))),
     file('energy', energyChart(view, canvas('energy'))),
   ];
-}
-
-/** A drawing has no ground of its own in the page; a file gets a white one, behind everything. */
-function onWhite(drawn: Html): string {
-  const text = drawn.toString();
-  const [, width, height] = /viewBox="0 0 ([\d.]+) ([\d.]+)"/.exec(text) ?? ['', '0', '0'];
-  const ground = rectangle({ left: 0, top: 0, width: Number(width), height: Number(height) }, '#ffffff');
-  return `<?xml version="1.0" encoding="UTF-8"?>\n${text.replace('</desc>', () => `</desc>${ground}`)}\n`;
 }

@@ -35,6 +35,7 @@ test('a bare track becomes disturbances, and people are told of repairs and unce
   expect(Object.keys(filesBelow(join(here, 'out/ramp'))).sort()).toEqual([
     'disturbance.csv',
     'road.json',
+    'road.svg',
     'route.geojson',
   ]);
   const rows = table('out/ramp/disturbance.csv');

@@ -57,6 +57,16 @@ export function columnsOf(curve: Curve, from: number, width: number): readonly C
   return columns;
 }
 
+/** Every value of a curve as a column of its own, but for those that are not finite: for a picture finer than they are. */
+export function everyValue(curve: Curve): readonly Column[] {
+  const columns: Column[] = [];
+  for (let i = 0; i < curve.size; i++) {
+    const column = { at: curve.at[i]!, low: curve.low[i]!, mean: curve.mean[i]!, high: curve.high[i]! };
+    if (Number.isFinite(column.low + column.mean + column.high)) columns.push(column);
+  }
+  return columns;
+}
+
 /** A curve without spread. */
 export const plainCurve = (at: ArrayLike<number>, values: ArrayLike<number>): Curve => ({
   size: Math.min(at.length, values.length),

@@ -1,6 +1,7 @@
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { DASHES } from '../paint.ts';
 import { SPEED_UNITS, type SpeedUnit, type Units } from '../quantity.ts';
+import { distanceNameOf, lengthOf } from './road-words.ts';
 
 /** A run as one reader sees it: the result, the unit of speeds, the order and look of the candidates. Plain data. */
 export interface View {
@@ -39,7 +40,7 @@ export function viewOf(result: RunResult, units: Units): View {
       ...locked.map((candidate, i) => looked(candidate, i === 0 ? -1 : designs.length + i - 1)),
       ...designs.map((candidate, i) => looked(candidate, i)),
     ],
-    distanceName: result.road.along === 'time' ? 'nominal distance' : 'distance',
-    length: result.road.distance[result.road.size - 1] ?? 0,
+    distanceName: distanceNameOf(result.road),
+    length: lengthOf(result.road),
   };
 }

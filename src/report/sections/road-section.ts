@@ -2,6 +2,8 @@ import type { RepairKind } from '../../track/track.ts';
 import { hatch, rectangle } from '../charts/canvas.ts';
 import { demandFill, profileChart } from '../charts/profile.ts';
 import { REPAIR_KINDS, repairKey } from '../charts/repair-marks.ts';
+import { hasWind, roadLanesChart } from '../charts/road-lanes.ts';
+import { WARNED_OPACITY, warnedStretches } from '../charts/stretches.ts';
 import { type Html, html } from '../html.ts';
 import { DEMAND_CLASSES } from '../model/demand-classes.ts';
 import type { View } from '../model/view.ts';
@@ -14,7 +16,8 @@ import type { Section } from './section.ts';
 export function roadSection(view: View): Section {
   const body = html`<p>${roadWords(view)}</p>
 ${chartFigure('profile', (canvas) => profileChart(view, canvas), caption(view))}
-${demandKey()}${repairKeys(view)}`;
+${demandKey()}${repairKeys(view)}
+${chartFigure('road-grade', (canvas) => roadLanesChart(view.result.road, view.speed, canvas), gradeCaption(view))}`;
   return { id: 'road', number: 2, title: 'The road', body };
 }
 
@@ -62,6 +65,15 @@ function caption(view: View): Html {
   return html`Strong: smoothed (${smoothing.source} source, half gain at ${lengthText(smoothing.wavelength)})${rawElevation !== null && '; faint: as measured'}. A hill shorter than ${lengthText(smoothing.shortestHill)} is not resolved. Elevation noise ${fixed(smoothing.residualSd, 1)} m, grade of the source uncertain by ${gradeText(smoothing.sourceGradeSd).replace('+', '')} (one s.d.). Brackets: hills of section 6; bold: more, or less, than the drive has.`;
 }
 
+function gradeCaption(view: View): Html {
+  const { smoothing } = view.result.road;
+  const known =
+    smoothing === null
+      ? 'Grade as given, without uncertainty.'
+      : 'Grade as the runs meet it; the shade is twice its standard deviation on both sides, and may leave the plot where little is known.';
+  return html`${known}${hasWind(view.result.road) && ' Wind at rider height, shelter counted.'}`;
+}
+
 /** What the shades under the line mean. */
 function demandKey(): Html {
   const swatch = (index: number): Html => {
@@ -82,7 +94,8 @@ function demandKey(): Html {
 
 function repairKeys(view: View): Html | null {
   const { repairs, masks } = view.result.road;
-  if (repairs.length === 0 && masks.length === 0) return null;
+  const warned = warnedStretches(view.result.road).length;
+  if (repairs.length === 0 && masks.length === 0 && warned === 0) return null;
   const counts = new Map<RepairKind, number>();
   for (const { kind } of repairs) counts.set(kind, (counts.get(kind) ?? 0) + 1);
   return html`<p class="keyline">Repairs to the track, at their places (<a href="#method-repairs">all of them</a>):</p><ul class="keys">${[
@@ -92,5 +105,8 @@ function repairKeys(view: View): Html | null {
   )}${
     masks.length > 0 &&
     html`<li><span class="masked" aria-hidden="true"></span> elevation masked (${masks.length})</li>`
+  }${
+    warned > 0 &&
+    html`<li><svg class="key" viewBox="0 0 26 14" width="26" height="14" aria-hidden="true">${rectangle({ left: 0, top: 0, width: 26, height: 14 }, PAGE_PAINT.warn, WARNED_OPACITY)}</svg> <a href="#method-cautions">stretch with a warning</a> (${warned})</li>`
   }</ul>`;
 }
