@@ -1,7 +1,7 @@
 import { controllerFor } from '../control/controller-for.ts';
-import { exp } from '../numeric/elementary.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
+import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
@@ -59,7 +59,9 @@ export function buildMachine(plan: LoopPlan): Machine {
     throttleEdges: drive.throttleEdges,
     controller,
     tangent: dragTangent(vehicle.roadLoad),
+    lags: decays(p),
     log: new Float64Array(at.LOG_ROWS * at.L_STRIDE),
+    chunk: new Float64Array(at.C_SIZE),
   };
 }
 
@@ -70,33 +72,38 @@ function longestStep({ scheme, vehicle }: LoopPlan): number {
 }
 
 function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): void {
-  const step = p[at.P_STEP];
   const { rateLimit } = vehicle.actuator;
   const ta = vehicle.actuator.lag;
   const given = vehicle.drive.lag;
   const equal = ta > 0 && Math.abs(ta - given) <= EQUAL_LAGS * ta;
   const td = equal ? ta : given;
-  const decay = (lag: number, time: number): number => (lag > 0 ? exp(-time / lag) : 0);
   p[at.P_ACTUATOR_LAG] = ta;
   p[at.P_DRIVE_LAG] = td;
   p[at.P_RATE] = rateLimit ?? Number.POSITIVE_INFINITY;
   p[at.P_RATE_GAP] = rateLimit === null ? Number.POSITIVE_INFINITY : rateLimit * ta;
   p[at.P_LAG_WEIGHT] = equal || ta === 0 ? 0 : ta / (ta - td);
   p[at.P_LAG_EQUAL] = equal ? 1 / td : 0;
-  p[at.P_ACTUATOR_HALF] = decay(ta, 0.5 * step);
-  p[at.P_ACTUATOR_FULL] = p[at.P_ACTUATOR_HALF] * p[at.P_ACTUATOR_HALF];
-  p[at.P_DRIVE_HALF] = decay(td, 0.5 * step);
-  p[at.P_DRIVE_FULL] = p[at.P_DRIVE_HALF] * p[at.P_DRIVE_HALF];
-  p[at.P_ACTUATOR_MEAN] = (ta * (1 - p[at.P_ACTUATOR_FULL])) / step;
-  p[at.P_DRIVE_MEAN] = (td * (1 - p[at.P_DRIVE_FULL])) / step;
-  p[at.P_DRIVE_MOMENT] = td * (p[at.P_DRIVE_MEAN] - p[at.P_DRIVE_FULL]);
   const { filter, delay, scaleError } = vehicle.sensor;
   p[at.P_FILTER] = filter;
-  p[at.P_FILTER_FULL] = decay(filter, step);
   p[at.P_SCALE] = 1 + scaleError;
   // A command that is late by the computing delay is the command of a measurement that is older by it.
   p[at.P_DELAY] = (delay + computingDelay) / p[at.P_SAMPLE];
   p[at.P_HISTORY] = p[at.P_DELAY] > 0 ? Math.ceil(p[at.P_DELAY]) + 1 : 0;
+}
+
+/** Decays over a whole step, and their means over it. */
+function decays(p: Float64Array): Float64Array {
+  const lags = new Float64Array(at.G_SIZE);
+  const step = p[at.P_STEP];
+  lagFactors(p, lags, 0, step);
+  const ta = p[at.P_ACTUATOR_LAG];
+  const td = p[at.P_DRIVE_LAG];
+  const actuator = (ta * (1 - lags[at.G_ACTUATOR])) / step;
+  const drive = (td * (1 - lags[at.G_DRIVE])) / step;
+  p[at.P_DRIVE_MEAN] = drive;
+  p[at.P_PULL_MEAN] =
+    p[at.P_LAG_WEIGHT] * (actuator - drive) + p[at.P_LAG_EQUAL] * td * (drive - lags[at.G_DRIVE]);
+  return lags;
 }
 
 /** Cells in terms of wheel force and vehicle speed: w = ratio v, F = ratio T. */

@@ -1,9 +1,10 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
-import { exp } from '../numeric/elementary.ts';
-import { keepHistory, readDelayed } from './delayed-speed.ts';
+import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { integralTo } from './road-table.ts';
 
 /**
  * The `exact` kernel. With command u held over a sample, actuator y, throttle x behind the drive's lag:
@@ -12,19 +13,18 @@ import type { Machine } from './machine.ts';
  *     me dv/dt = F(v, x) - F_aero - F_roll - m g sin(theta) - F_brake
  *     dq/dt = v (or 1 along time)                    dW/dt = power of each force
  *
- * y and x have closed forms, so RK4 sees only (v, q) under a smooth x(t); W is its quadrature. A step is cut where
- * the right-hand side has a kink: at road knots, where the rate limit lets go, at edges of the drive's cells, at v = 0.
- * Coefficients of a cell are frozen over a piece, so that all stages are evaluated on one side of the kink.
- * Density, cos(theta) and derating are taken at the middle of the piece; grade and wind along the road stay linear.
+ * y and x have closed forms, so RK4 sees only (v, q) under a smooth x(t); works are the quadrature of its stages, but
+ * that of the slope, which is the height gained. Per unit of effective mass, with the air speed w = v + headwind(q):
  *
- * Inside a piece everything is per unit of effective mass and the acceleration is a cubic in v over v,
+ *     F = f0 + v (f1 + v f2) + f3 / v                f0 = a0 + x b0, f1 = a1 + x b1, f2 = x b2, f3 = x b3
+ *     F_aero = w (near + slope w)                    F_roll = r0 + v (r1 + v r2)
  *
- *     dv/dt = g0 + v (g1 + v g2) + x b3 / v,
- *
- * whose coefficients hang on x and q alone: they are ready before v is, which leaves three dependent operations a stage.
+ * A step is cut where the right-hand side has a kink: at road knots, where the rate limit lets go, at edges of the
+ * drive's cells, at v = 0. The coefficients of a cell are frozen over a piece, so that all stages are evaluated on one
+ * side of the kink. Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, log } = machine;
+  const { s, p, rows, cells, speedEdges, throttleEdges, lags, controller, tangent, log, chunk } = machine;
   // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle.
   // Constants stand inside the function: as variables of the module they would be read and checked at every use.
   const KNOT = 1e-7;
@@ -32,34 +32,23 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   // Trials to hit a kink; pieces of one step after which kinks are no longer looked for (a drive that chatters).
   const TRIALS = 6;
   const PIECES = 40;
-  const SIXTH = 1 / 6;
-  const BRAKE_MARGIN = at.BRAKE_TIME * at.BRAKE_LIMIT;
 
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const timed = p[at.P_TIMED] === 1;
-  const effectiveMass = p[at.P_EFFECTIVE_MASS];
-  const inverse = 1 / effectiveMass;
+  const inverse = 1 / p[at.P_EFFECTIVE_MASS];
   const share = p[at.P_MASS] * inverse;
   const cda = p[at.P_CDA] * inverse;
-  const roll0 = p[at.P_C0];
-  const roll1 = p[at.P_C1];
-  const roll2 = p[at.P_C2];
-  const curved = roll1 !== 0 || roll2 !== 0;
-  const ta = p[at.P_ACTUATOR_LAG];
+  const roll0 = share * p[at.P_C0];
+  const roll1 = share * p[at.P_C1];
+  const roll2 = share * p[at.P_C2];
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
-  const weight = p[at.P_LAG_WEIGHT];
-  const equal = p[at.P_LAG_EQUAL];
-  const actuatorHalf = p[at.P_ACTUATOR_HALF];
-  const actuatorFull = p[at.P_ACTUATOR_FULL];
-  const driveHalf = p[at.P_DRIVE_HALF];
-  const driveFull = p[at.P_DRIVE_FULL];
+  const direct = p[at.P_ACTUATOR_LAG] === 0 && rate === Number.POSITIVE_INFINITY;
   const filter = p[at.P_FILTER];
-  const filterFull = p[at.P_FILTER_FULL];
-  const delay = p[at.P_DELAY];
+  const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
   const stallSpeed = p[at.P_STALL_SPEED];
   const derated = p[at.P_DERATED] === 1;
@@ -79,7 +68,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
-  let event = at.RUNNING;
+  let past = delayed ? latestRow(s, p) : 0;
   // The road cell and the drive cell at hand, loaded where they change.
   let loadedRow = -1;
   let loadedDrive = -1;
@@ -87,12 +76,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let length = 0;
   let sin0 = 0;
   let sin1 = 0;
-  let cos0 = 0;
-  let cos1 = 0;
   let wind0 = 0;
   let wind1 = 0;
-  let air0 = 0;
-  let air1 = 0;
   let floor = 0;
   let ceiling = 0;
   let low = 0;
@@ -104,61 +89,59 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let c2 = 0;
   let c3 = 0;
 
-  s[at.LOGGED] = 0;
-  for (let tick = 0; tick < ticks && q < until && event === at.RUNNING; tick++) {
-    const entry = tick * at.L_STRIDE;
-    s[BUS_MEASURED] = scale * (delay > 0 ? readDelayed(s, p) : z);
+  const v0 = v;
+  const height0 = integralTo(rows, row, at.R_SIN, q);
+  let travelled = 0;
+  let push = 0;
+  let hold = 0;
+  let aero = 0;
+  let rolling = 0;
+  let climb = 0;
+  let braked = 0;
+  let ratedTime = 0;
+  let brakeTime = 0;
+  let brake = 0;
+  let elapsed = 0;
+  let event = at.RUNNING;
+  let tick = 0;
+  chunk.fill(0, 0, at.C_DRIVE_FORCE);
+  while (tick < ticks && q < until && event === at.RUNNING) {
+    s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
     const u = s[BUS_LIMITED];
-    if (ta === 0 && rate === Number.POSITIVE_INFINITY) y = u;
+    if (direct) y = u;
     if (td === 0) x = y;
     while (throttleCell > 0 && x < throttleEdges[throttleCell - 1]) throttleCell--;
     while (throttleCell < throttleCells - 1 && x > throttleEdges[throttleCell]) throttleCell++;
+    log[tick * at.L_STRIDE + at.L_SPEED] = v;
+    log[tick * at.L_STRIDE + at.L_ACTUATOR] = y;
+    log[tick * at.L_STRIDE + at.L_COMMAND] = s[BUS_COMMAND];
+    tick++;
 
-    const v0 = v;
-    const z0 = z;
-    const y0 = y;
-    let slope0 = 0;
-    let slope1 = 0;
-    let brake = 0;
-    let elapsed = 0;
-    let travelled = 0;
-    let push = 0;
-    let hold = 0;
-    let aero = 0;
-    let rolling = 0;
-    let climb = 0;
-    let magnitude = 0;
-    let pieces = 0;
-    let limited = false;
     const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
-
+    let limited = false;
+    let slope0 = 0;
+    let pieces = 0;
     let parts = steps;
     let left = step;
     let patience = PIECES;
+    brake = 0;
     while (parts > 0 && event === at.RUNNING) {
-      // Actuator and lag: x(t) = l0 + l1 t + la e^(-t/ta) + (ld + le t) e^(-t/td), y(t) = y1 + l1 t + ya e^(-t/ta).
-      const gap = u - y;
+      // Actuator and drive over a time t of this piece, with the decays e of their lags (see lags.ts):
+      // x = l0 + l1 t + (x - l0) e_drive + gap e_pull; y = u + gap e_actuator, or on a ramp y + l1 t.
+      let gap = y - u;
       let most = left;
       let l0 = u;
       let l1 = 0;
-      let ya = -gap;
-      let y1 = u;
-      let la = weight * ya;
-      let le = equal * ya;
       const rated = gap - rateGap > 1e-12 || -gap - rateGap > 1e-12;
       if (rated) {
-        l1 = gap > 0 ? rate : -rate;
-        const over = ((gap > 0 ? gap : -gap) - rateGap) / rate;
-        if (over < most) most = over;
+        l1 = gap < 0 ? rate : -rate;
         l0 = y - l1 * td;
-        y1 = y;
-        ya = 0;
-        la = 0;
-        le = 0;
+        const over = (y - u - (gap < 0 ? -rateGap : rateGap)) / -l1;
+        if (over < most) most = over;
+        gap = 0;
       }
-      const ld = x - l0 - la;
 
       if (row !== loadedRow) {
         loadedRow = row;
@@ -166,12 +149,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         length = rows[row + at.R_LENGTH];
         sin0 = share * rows[row + at.R_SIN];
         sin1 = share * rows[row + at.R_SIN + 1];
-        cos0 = share * rows[row + at.R_COS];
-        cos1 = share * rows[row + at.R_COS + 1];
         wind0 = rows[row + at.R_HEADWIND];
         wind1 = rows[row + at.R_HEADWIND + 1];
-        air0 = rows[row + at.R_AIR];
-        air1 = rows[row + at.R_AIR + 1];
       }
       const drive = speedCell * throttleCells + throttleCell;
       if (drive !== loadedDrive) {
@@ -198,68 +177,36 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         aimed = true;
       }
 
-      let k1 = 0;
-      let k4 = 0;
-      let ve = 0;
-      let xe = 0;
-      let ds = 0;
-      let dq = 0;
-      let ea = 0;
-      let force = 0;
-      let drag = 0;
-      let r0 = 0;
-      let r1 = 0;
-      let r2 = 0;
-      let b0 = 0;
-      let b1 = 0;
-      let b2 = 0;
-      let b3 = 0;
-      let near = 0;
-      let slope = 0;
-      let xh = 0;
       for (let trial = pieces < patience ? 0 : TRIALS; ; trial++) {
+        const decay = h === step ? 0 : at.G_STRIDE;
+        if (decay > 0) lagFactors(p, lags, decay, h);
         const half = 0.5 * h;
-        let eah = 0;
-        let edh = 0;
-        let ed = 0;
-        if (h === step) {
-          eah = actuatorHalf;
-          ea = actuatorFull;
-          edh = driveHalf;
-          ed = driveFull;
-        } else {
-          eah = ta > 0 ? exp(-half / ta) : 0;
-          ea = eah * eah;
-          edh = td > 0 ? exp(-half / td) : 0;
-          ed = edh * edh;
-        }
-        xh = l0 + l1 * half + la * eah + (ld + le * half) * edh;
-        xe = l0 + l1 * h + la * ea + (ld + le * h) * ed;
+        const xh =
+          l0 + l1 * half + (x - l0) * lags[decay + at.G_DRIVE_HALF] + gap * lags[decay + at.G_PULL_HALF];
+        const xe = l0 + l1 * h + (x - l0) * lags[decay + at.G_DRIVE] + gap * lags[decay + at.G_PULL];
         if (throttleCells > 1 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
-          const part = ((xe > high ? high : low) - x) / (xe - x);
-          h *= Math.max(0, part);
+          h *= Math.max(0, ((xe > high ? high : low) - x) / (xe - x));
           continue;
         }
 
         const middle = from + (timed ? half : half * v);
-        const air = air0 + air1 * middle;
-        const normal = cos0 + cos1 * middle;
-        r0 = normal * roll0;
-        r1 = normal * roll1;
-        r2 = normal * roll2;
-        const u1 = wind0 + wind1 * from;
-        near = 0;
-        slope = air * cda;
+        const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
+        const normal = rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle;
+        const r0 = normal * roll0;
+        const r1 = normal * roll1;
+        const r2 = normal * roll2;
+        let near = 0;
+        let slope = air * cda;
         if (crosswind) {
           const side = rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle;
           tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air * inverse);
           near = tangent.out[0];
           slope = tangent.out[1];
-        } else if (v + u1 < 0) slope = -slope;
-        b0 = c0;
-        b1 = c1;
-        b2 = c2;
-        b3 = c3;
+        } else if (v + wind0 + wind1 * from < 0) slope = -slope;
+        let b0 = c0;
+        let b1 = c1;
+        let b2 = c2;
+        let b3 = c3;
         if (derated) {
           const d = rows[row + at.R_DERATE] + rows[row + at.R_DERATE + 1] * middle;
           b0 = d * (b0 + a0) - a0;
@@ -268,201 +215,152 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           b3 *= d;
         }
 
-        // Drive f0 + v (f1 + v f2) + x b3 / v, air w (near + slope w) at w = v + wind, slope sin0 + sin1 q.
-        force = a0 + x * b0 + v * (a1 + x * b1 + v * x * b2) + (b3 === 0 ? 0 : (x * b3) / v);
-        drag = (v + u1) * (near + slope * (v + u1));
-        k1 = force - drag - r0 - v * (r1 + v * r2) - sin0 - sin1 * from;
-        if (pieces === 0 && v > brakeSpeed - BRAKE_MARGIN) {
-          brake = k1 + (v - brakeSpeed) / at.BRAKE_TIME;
-          if (!(brake > 0)) brake = 0;
-          if (brake > at.BRAKE_LIMIT) brake = at.BRAKE_LIMIT;
+        const w1 = v + wind0 + wind1 * from;
+        const drive1 = a0 + x * b0 + v * (a1 + x * b1 + v * x * b2) + (b3 === 0 ? 0 : (x * b3) / v);
+        const aero1 = w1 * (near + slope * w1);
+        const roll1st = r0 + v * (r1 + v * r2);
+        let k1 = drive1 - aero1 - (roll1st + sin0 + sin1 * from);
+        if (pieces === 0 && v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT) {
+          brake = Math.max(0, Math.min(k1 + (v - brakeSpeed) / at.BRAKE_TIME, at.BRAKE_LIMIT));
         }
         k1 -= brake;
-        const resist = r0 + sin0 + brake;
+        const steady = sin0 + brake;
 
-        const q2 = from + (timed ? half : half * v);
-        const u2 = wind0 + wind1 * q2;
-        const f0h = a0 + xh * b0;
-        const f1h = a1 + xh * b1;
-        const f2h = xh * b2;
-        const eh = xh * b3;
-        const g1h = f1h - r1 - near;
-        const g2h = f2h - r2 - slope;
+        const f0 = a0 + xh * b0;
+        const f1 = a1 + xh * b1;
+        const f2 = xh * b2;
+        const f3 = xh * b3;
         const v2 = v + half * k1;
-        const k2 =
-          f0h -
-          resist -
-          sin1 * q2 -
-          u2 * (near + slope * u2) +
-          (b3 === 0 ? 0 : eh / v2) +
-          v2 * (g1h - 2 * slope * u2 + v2 * g2h);
+        const q2 = from + (timed ? half : half * v);
+        const w2 = v2 + (wind0 + wind1 * q2);
+        const drive2 = f0 + (b3 === 0 ? 0 : f3 / v2) + v2 * (f1 + v2 * f2);
+        const aero2 = w2 * (near + slope * w2);
+        const rolling2 = r0 + v2 * (r1 + v2 * r2);
+        const k2 = drive2 - aero2 - (rolling2 + (steady + sin1 * q2));
 
-        const q3 = from + (timed ? half : half * v2);
-        const u3 = wind0 + wind1 * q3;
         const v3 = v + half * k2;
-        const k3 =
-          f0h -
-          resist -
-          sin1 * q3 -
-          u3 * (near + slope * u3) +
-          (b3 === 0 ? 0 : eh / v3) +
-          v3 * (g1h - 2 * slope * u3 + v3 * g2h);
+        const q3 = from + (timed ? half : half * v2);
+        const w3 = v3 + (wind0 + wind1 * q3);
+        const drive3 = f0 + (b3 === 0 ? 0 : f3 / v3) + v3 * (f1 + v3 * f2);
+        const aero3 = w3 * (near + slope * w3);
+        const rolling3 = r0 + v3 * (r1 + v3 * r2);
+        const k3 = drive3 - aero3 - (rolling3 + (steady + sin1 * q3));
 
-        const q4 = from + (timed ? h : h * v3);
-        const u4 = wind0 + wind1 * q4;
-        const f04 = a0 + xe * b0;
-        const f14 = a1 + xe * b1;
-        const f24 = xe * b2;
-        const e4 = xe * b3;
         const v4 = v + h * k3;
-        k4 =
-          f04 -
-          resist -
-          sin1 * q4 -
-          u4 * (near + slope * u4) +
-          (b3 === 0 ? 0 : e4 / v4) +
-          v4 * (f14 - r1 - near - 2 * slope * u4 + v4 * (f24 - r2 - slope));
+        const q4 = from + (timed ? h : h * v3);
+        const w4 = v4 + (wind0 + wind1 * q4);
+        const drive4 = a0 + xe * b0 + (b3 === 0 ? 0 : (xe * b3) / v4) + v4 * (a1 + xe * b1 + v4 * (xe * b2));
+        const aero4 = w4 * (near + slope * w4);
+        const rolling4 = r0 + v4 * (r1 + v4 * r2);
+        const k4 = drive4 - aero4 - (rolling4 + (steady + sin1 * q4));
 
-        const sixth = h * SIXTH;
-        ve = v + sixth * (k1 + 2 * (k2 + k3) + k4);
-        ds = sixth * (v + 2 * (v2 + v3) + v4);
-        dq = timed ? h : ds;
-        if (trial >= TRIALS) break;
-        const miss = room - dq;
-        if (miss < -KNOT || (aimed && miss > KNOT && h < most)) {
-          h += timed ? miss : miss / ve;
-          if (!(h > 0)) h = 0;
-          if (h > most) h = most;
-          aimed = true;
-          continue;
+        const sixth = h * (1 / 6);
+        const ve = v + sixth * (k1 + 2 * (k2 + k3) + k4);
+        const ds = sixth * (v + 2 * (v2 + v3) + v4);
+        const dq = timed ? h : ds;
+        if (trial < TRIALS) {
+          const miss = room - dq;
+          if (miss < -KNOT || (aimed && miss > KNOT && h < most)) {
+            h = Math.min(Math.max(0, h + (timed ? miss : miss / ve)), most);
+            aimed = true;
+            continue;
+          }
+          if (ve < floor - EDGE || ve > ceiling + EDGE) {
+            h *= Math.max(0, ((ve < floor ? floor : ceiling) - v) / (ve - v));
+            continue;
+          }
         }
-        if (ve < floor - EDGE || ve > ceiling + EDGE) {
-          const share = ((ve < floor ? floor : ceiling) - v) / (ve - v);
-          h *= Math.max(share, 0);
-          continue;
+
+        const work = sixth * (v * drive1 + 2 * (v2 * drive2 + v3 * drive3) + v4 * drive4);
+        if (work >= 0) push += work;
+        else hold += work;
+        aero += sixth * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
+        rolling += sixth * (v * roll1st + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
+        braked += brake * ds;
+        travelled += ds;
+        if (timed) climb += ds * sin0 + sixth * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
+        if (pieces === 0) {
+          chunk[at.C_DRIVE_FORCE] = drive1;
+          chunk[at.C_ACCELERATION] = k1;
+          limited = rated;
+          slope0 = filter > 0 ? (v - z) / filter : k1;
         }
+        if (filter > 0) {
+          // The filter behind the cubic through both ends: particular solution P - tf P' + tf^2 P'' - tf^3 P'''.
+          const cubic = h > 1e-3 ? (k1 + k4 - (2 * (ve - v)) / h) / (h * h) : 0;
+          const bend = h > 0 ? (k4 - k1) / h - 3 * cubic * h : 0;
+          const fixed = 6 * filter * filter * filter * cubic;
+          const start = v - filter * k1 + filter * filter * bend - fixed;
+          const end = ve - filter * k4 + filter * filter * (bend + 6 * cubic * h) - fixed;
+          z = end + (z - start) * lags[decay + at.G_FILTER];
+        } else z = ve;
+        y = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
+        if (rated && h === most && most < left) y = l1 > 0 ? u - rateGap : u + rateGap;
+        if (throttleCells > 1) {
+          if (xe > x && xe > high - EDGE) throttleCell++;
+          else if (xe <= x && xe < low + EDGE) throttleCell--;
+        }
+        x = td === 0 ? y : xe;
+        v = ve;
+        q += dq;
+        acceleration = k4;
+        left -= h;
+        pieces++;
         break;
       }
 
-      if (pieces === 0) {
-        log[entry + at.L_ACCELERATION] = k1;
-        log[entry + at.L_DRIVE_FORCE] = effectiveMass * force;
-        limited = rated;
-        slope0 = filter > 0 ? (v - z) / filter : k1;
-      }
-      // Works, by Simpson's rule on the powers at both ends and in the middle, where v is that of the cubic through both.
-      const sixth = h * SIXTH;
-      const vm = 0.5 * (v + ve) + 0.125 * h * (k1 - k4);
-      const qm = from + 0.5 * dq + (timed ? 0 : 0.125 * h * (v - ve));
-      const qe = from + dq;
-      const wm = vm + wind0 + wind1 * qm;
-      const we = ve + wind0 + wind1 * qe;
-      const work =
-        sixth *
-        (force * v +
-          4 * (vm * (a0 + xh * b0 + vm * (a1 + xh * b1 + vm * xh * b2)) + xh * b3) +
-          ve * (a0 + xe * b0 + ve * (a1 + xe * b1 + ve * xe * b2)) +
-          xe * b3);
-      const airWork = sixth * (v * drag + 4 * vm * wm * (near + slope * wm) + ve * we * (near + slope * we));
-      let rollingWork = r0 * ds;
-      if (curved)
-        rollingWork +=
-          sixth * (v * v * (r1 + v * r2) + 4 * vm * vm * (r1 + vm * r2) + ve * ve * (r1 + ve * r2));
-      const climbWork = timed
-        ? sin0 * ds + sixth * sin1 * (from * v + 4 * qm * vm + qe * ve)
-        : ds * (sin0 + sin1 * (from + 0.5 * ds));
-      if (work >= 0) push += work;
-      else hold += work;
-      aero += airWork;
-      rolling += rollingWork;
-      climb += climbWork;
-      magnitude +=
-        Math.abs(work) +
-        Math.abs(airWork) +
-        rollingWork +
-        Math.abs(climbWork) +
-        Math.abs(0.5 * (ve + v) * (ve - v)) +
-        brake * ds;
-
-      if (filter > 0) {
-        // The filter behind the cubic through both ends: particular solution P - tf P' + tf^2 P'' - tf^3 P'''.
-        const cubic = h > 1e-3 ? (k1 + k4 - (2 * (ve - v)) / h) / (h * h) : 0;
-        const bend = h > 0 ? (k4 - k1) / h - 3 * cubic * h : 0;
-        const fixed = 6 * filter * filter * filter * cubic;
-        const ef = h === step ? filterFull : exp(-h / filter);
-        const start = v - filter * k1 + filter * filter * bend - fixed;
-        z = ve - filter * k4 + filter * filter * (bend + 6 * cubic * h) - fixed + (z - start) * ef;
-      } else z = ve;
-      y = y1 + l1 * h + ya * ea;
-      if (rated && h === most && most < left) y = gap > 0 ? u - rateGap : u + rateGap;
-      const rising = xe > x;
-      x = xe;
-      if (td === 0) x = y;
-      v = ve;
-      q += dq;
-      travelled += ds;
-      elapsed += h;
-      left -= h;
-      acceleration = k4;
-      pieces++;
       if (!(left > 0)) {
         parts--;
         left = step;
         patience = pieces + PIECES;
       }
-
-      if (dq > room - KNOT) {
+      if (q - begin > length - KNOT) {
         while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION] - KNOT) row += at.R_STRIDE;
         if (row === lastRow && q >= rows[row + at.R_STATION] + rows[row + at.R_LENGTH] - KNOT)
           event = at.END_OF_ROAD;
       }
-      if (v > ceiling - EDGE && k4 >= 0) speedCell++;
-      else if (v < floor + EDGE && k4 < 0) {
+      if (v > ceiling - EDGE && acceleration >= 0) speedCell++;
+      else if (v < floor + EDGE && acceleration < 0) {
         if (speedCell > 0) speedCell--;
         else event = at.STOPPED;
-      }
-      if (throttleCells > 1) {
-        if (rising && x > high - EDGE) throttleCell++;
-        else if (!rising && x < low + EDGE) throttleCell--;
       }
     }
 
     if (!(v < 1e9 && v > -1e9)) return at.NON_FINITE;
     if (event === at.STOPPED) v = 0;
     else if (v < stallSpeed) event = at.STALLED;
-    slope1 = filter > 0 ? (v - z) / filter : acceleration;
-    if (delay > 0) keepHistory(s, p, z0, slope0, slope1, sample);
-
-    log[entry + at.L_SPEED] = v0;
-    log[entry + at.L_ACTUATOR] = y0;
-    log[entry + at.L_LIMITED] = u;
-    log[entry + at.L_COMMAND] = s[BUS_COMMAND];
-    log[entry + at.L_RATED] = limited ? 1 : 0;
-    log[entry + at.L_BRAKE_FORCE] = effectiveMass * brake;
-    log[entry + at.L_TIME] = elapsed;
-    log[entry + at.L_DISTANCE] = travelled;
-    log[entry + at.L_PUSH] = effectiveMass * push;
-    log[entry + at.L_HOLD] = effectiveMass * hold;
-    s[at.DRIVE_WORK] += effectiveMass * push;
-    s[at.REGENERATION_WORK] += effectiveMass * hold;
-    s[at.AERO_WORK] += effectiveMass * aero;
-    s[at.ROLLING_WORK] += effectiveMass * rolling;
-    s[at.CLIMB_WORK] += effectiveMass * climb;
-    s[at.BRAKE_WORK] += effectiveMass * brake * travelled;
-    s[at.WORK_MAGNITUDE] += effectiveMass * magnitude;
-    s[at.TRAVELLED] += travelled;
-    s[at.SPEED] = v;
-    s[at.STATION] = q;
-    s[at.THROTTLE] = x;
-    s[at.ACTUATOR] = y;
-    s[at.FILTERED] = z;
-    s[at.ACCELERATION] = acceleration;
-    s[at.CELL] = row / at.R_STRIDE;
-    s[at.SPEED_CELL] = speedCell;
-    s[at.THROTTLE_CELL] = throttleCell;
-    s[at.LOGGED] = tick + 1;
-    if (event === at.RUNNING) s[at.TICK] += 1;
-    else s[at.PARTIAL] = elapsed;
+    elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
+    if (limited) ratedTime += elapsed;
+    if (brake > 0) brakeTime += elapsed;
+    if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
+
+  if (event === at.RUNNING) s[at.TICK] += tick;
+  else {
+    s[at.TICK] += tick - 1;
+    s[at.PARTIAL] = elapsed;
+  }
+  s[at.SPEED] = v;
+  s[at.STATION] = q;
+  s[at.THROTTLE] = x;
+  s[at.ACTUATOR] = y;
+  s[at.FILTERED] = z;
+  s[at.ACCELERATION] = acceleration;
+  s[at.CELL] = row / at.R_STRIDE;
+  s[at.SPEED_CELL] = speedCell;
+  s[at.THROTTLE_CELL] = throttleCell;
+  chunk[at.C_TICKS] = tick;
+  chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
+  chunk[at.C_DISTANCE] = travelled;
+  chunk[at.C_PUSH] = push;
+  chunk[at.C_HOLD] = hold;
+  chunk[at.C_AERO] = aero;
+  chunk[at.C_ROLLING] = rolling;
+  chunk[at.C_CLIMB] = timed ? climb : share * (integralTo(rows, row, at.R_SIN, q) - height0);
+  chunk[at.C_BRAKE] = braked;
+  chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
+  chunk[at.C_RATED_TIME] = ratedTime;
+  chunk[at.C_BRAKE_TIME] = brakeTime;
+  chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

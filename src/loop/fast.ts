@@ -1,50 +1,47 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
-import { exp } from '../numeric/elementary.ts';
-import { keepHistory, readDelayed } from './delayed-speed.ts';
+import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { decay, rampedStep } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { integralTo } from './road-table.ts';
 
 /**
- * The `fast` kernel: one evaluation of the forces a step of length h, second order.
+ * The `fast` kernel: one evaluation of the forces a step of length h, second order. Per unit of effective mass:
  *
- *     x, y         in closed form (as in exact.ts); xm the mean of x over the step
+ *     x, y         in closed form (see lags.ts); xm the mean of x over the step
  *     vm           = v + h/2 a, a of the step before
  *     g sin(theta) = (H(q + h vm) - H(q)) / (h vm), H the integral of g sin(theta): no hill is stepped over;
  *                    the headwind in the same way
- *     a            = (F(vm, xm) - F_aero(vm) - F_roll(vm) - F_brake) / me - mean slope
+ *     a            = F(vm, xm) - F_aero(vm) - F_roll(vm) - F_brake - mean slope
  *     v <- v + h a,  q <- q + h (v_old + v_new) / 2
  *
  * Every work is its force over the same displacement, so that the account of energy closes to rounding.
  */
 export function advanceFast(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, controller, tangent, log } = machine;
+  const { s, p, rows, cells, speedEdges, throttleEdges, lags, controller, tangent, log, chunk } = machine;
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const half = 0.5 * step;
   const timed = p[at.P_TIMED] === 1;
-  const mass = p[at.P_MASS];
-  const effectiveMass = p[at.P_EFFECTIVE_MASS];
-  const inverse = 1 / effectiveMass;
-  const cda = p[at.P_CDA];
-  const c0 = p[at.P_C0];
-  const c1 = p[at.P_C1];
-  const c2 = p[at.P_C2];
-  const ta = p[at.P_ACTUATOR_LAG];
+  const inverse = 1 / p[at.P_EFFECTIVE_MASS];
+  const share = p[at.P_MASS] * inverse;
+  const cda = p[at.P_CDA] * inverse;
+  const roll0 = share * p[at.P_C0];
+  const roll1 = share * p[at.P_C1];
+  const roll2 = share * p[at.P_C2];
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
-  const weight = p[at.P_LAG_WEIGHT];
-  const equal = p[at.P_LAG_EQUAL];
-  const eaf = p[at.P_ACTUATOR_FULL];
-  const edf = p[at.P_DRIVE_FULL];
-  const meanActuator = p[at.P_ACTUATOR_MEAN];
-  const meanDrive = p[at.P_DRIVE_MEAN];
-  const momentDrive = p[at.P_DRIVE_MOMENT];
+  const direct = p[at.P_ACTUATOR_LAG] === 0 && rate === Number.POSITIVE_INFINITY;
+  const actuatorDecay = lags[at.G_ACTUATOR];
+  const driveDecay = lags[at.G_DRIVE];
+  const pull = lags[at.G_PULL];
+  const driveMean = p[at.P_DRIVE_MEAN];
+  const pullMean = p[at.P_PULL_MEAN];
   const filter = p[at.P_FILTER];
-  const filterFull = p[at.P_FILTER_FULL];
-  const delay = p[at.P_DELAY];
+  const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
   const stallSpeed = p[at.P_STALL_SPEED];
   const derated = p[at.P_DERATED] === 1;
@@ -65,69 +62,50 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
-  let event = at.RUNNING;
+  let past = delayed ? latestRow(s, p) : 0;
 
-  s[at.LOGGED] = 0;
-  for (let tick = 0; tick < ticks && q < until && event === at.RUNNING; tick++) {
-    const entry = tick * at.L_STRIDE;
-    s[BUS_MEASURED] = scale * (delay > 0 ? readDelayed(s, p) : z);
+  const v0 = v;
+  let travelled = 0;
+  let push = 0;
+  let hold = 0;
+  let aero = 0;
+  let rolling = 0;
+  let climb = 0;
+  let braked = 0;
+  let ratedTime = 0;
+  let brakeTime = 0;
+  let brake = 0;
+  let elapsed = 0;
+  let event = at.RUNNING;
+  let tick = 0;
+  chunk.fill(0, 0, at.C_DRIVE_FORCE);
+  while (tick < ticks && q < until && event === at.RUNNING) {
+    s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
     const u = s[BUS_LIMITED];
-    if (ta === 0 && rate === Number.POSITIVE_INFINITY) y = u;
+    if (direct) y = u;
     if (td === 0) x = y;
+    log[tick * at.L_STRIDE + at.L_SPEED] = v;
+    log[tick * at.L_STRIDE + at.L_ACTUATOR] = y;
+    log[tick * at.L_STRIDE + at.L_COMMAND] = s[BUS_COMMAND];
+    tick++;
 
-    const v0 = v;
-    const z0 = z;
-    const y0 = y;
     const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
-    const rated = u - y - rateGap > 1e-12 || y - u - rateGap > 1e-12;
+    const limited = u - y - rateGap > 1e-12 || y - u - rateGap > 1e-12;
     let slope0 = 0;
-    let brake = 0;
-    let elapsed = 0;
-    let travelled = 0;
-    let push = 0;
-    let hold = 0;
-    let aero = 0;
-    let rolling = 0;
-    let climb = 0;
-    let magnitude = 0;
-
+    elapsed = 0;
+    brake = 0;
     for (let part = 0; part < steps && event === at.RUNNING; part++) {
-      let xm = x;
-      let xe = x;
-      let ye = y;
       const gap = y - u;
+      let xm = u + (x - u) * driveMean + gap * pullMean;
+      let xe = u + (x - u) * driveDecay + gap * pull;
+      let ye = u + gap * actuatorDecay;
       if (gap - rateGap > 1e-12 || -gap - rateGap > 1e-12) {
-        // At the rate limit: two halves, each a ramp and, after the crossover, the lags.
-        for (let side = 0; side < 2; side++) {
-          const far = u - ye;
-          const over = ((far > 0 ? far : -far) - rateGap) / rate;
-          const ramp = over <= 0 ? 0 : Math.min(over, half);
-          if (ramp > 0) {
-            const slope = far > 0 ? rate : -rate;
-            const l0 = ye - slope * td;
-            xe = l0 + slope * ramp + (xe - l0) * (td > 0 ? exp(-ramp / td) : 0);
-            ye += slope * ramp;
-          }
-          const rest = half - ramp;
-          if (rest > 0) {
-            const ya = ye - u;
-            const ea = ta > 0 ? exp(-rest / ta) : 0;
-            const ed = td > 0 ? exp(-rest / td) : 0;
-            xe = u + weight * ya * ea + (xe - u - weight * ya + equal * ya * rest) * ed;
-            ye = u + ya * ea;
-          }
-          if (side === 0) xm = xe;
-        }
-        xm = (x + 4 * xm + xe) * (1 / 6);
-      } else {
-        const la = weight * gap;
-        const le = equal * gap;
-        const ld = x - u - la;
-        xm = u + la * meanActuator + ld * meanDrive + le * momentDrive;
-        xe = u + la * eaf + (ld + le * step) * edf;
-        ye = u + gap * eaf;
+        rampedStep(p, lags, u, x, y);
+        xm = lags[at.G_RAMPED_MEAN];
+        xe = lags[at.G_RAMPED_DRIVE];
+        ye = lags[at.G_RAMPED_ACTUATOR];
       }
 
       let vm = v + half * acceleration;
@@ -139,78 +117,61 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
 
       const from = q - rows[row + at.R_STATION];
       const ahead = timed ? step : step * vm;
-      let there = row;
-      while (there < lastRow && q + ahead >= rows[there + at.R_STRIDE + at.R_STATION]) there += at.R_STRIDE;
-      const to = q + ahead - rows[there + at.R_STATION];
-      let sine = rows[row + at.R_SIN] + rows[row + at.R_SIN + 1] * from;
-      let wind = rows[row + at.R_HEADWIND] + rows[row + at.R_HEADWIND + 1] * from;
-      if (there === row) {
-        sine += 0.5 * ahead * rows[row + at.R_SIN + 1];
-        wind += 0.5 * ahead * rows[row + at.R_HEADWIND + 1];
-      } else if (ahead > 1e-9) {
-        const each = 1 / ahead;
-        sine =
-          each *
-          (rows[there + at.R_CLIMB] -
-            rows[row + at.R_CLIMB] +
-            to * (rows[there + at.R_SIN] + 0.5 * rows[there + at.R_SIN + 1] * to) -
-            from * (rows[row + at.R_SIN] + 0.5 * rows[row + at.R_SIN + 1] * from));
-        wind =
-          each *
-          (rows[there + at.R_WIND_RUN] -
-            rows[row + at.R_WIND_RUN] +
-            to * (rows[there + at.R_HEADWIND] + 0.5 * rows[there + at.R_HEADWIND + 1] * to) -
-            from * (rows[row + at.R_HEADWIND] + 0.5 * rows[row + at.R_HEADWIND + 1] * from));
-      }
       const middle = from + 0.5 * ahead;
+      let sine = rows[row + at.R_SIN] + rows[row + at.R_SIN + 1] * middle;
+      let wind = rows[row + at.R_HEADWIND] + rows[row + at.R_HEADWIND + 1] * middle;
+      if (from + ahead >= rows[row + at.R_LENGTH] && row < lastRow && ahead > 1e-9) {
+        let there = row;
+        while (there < lastRow && q + ahead >= rows[there + at.R_STRIDE + at.R_STATION]) there += at.R_STRIDE;
+        sine = (integralTo(rows, there, at.R_SIN, q + ahead) - integralTo(rows, row, at.R_SIN, q)) / ahead;
+        wind =
+          (integralTo(rows, there, at.R_HEADWIND, q + ahead) - integralTo(rows, row, at.R_HEADWIND, q)) /
+          ahead;
+      }
       const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
-      const normal = mass * (rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle);
+      const normal = rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle;
       const w = vm + wind;
-      let drag = 0;
+      let drag = air * cda * w * (w < 0 ? -w : w);
       if (crosswind) {
-        tangent.at(w, rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle, air);
+        const side = rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle;
+        tangent.at(w, side, air * inverse);
         drag = w * (tangent.out[0] + tangent.out[1] * w);
-      } else drag = air * cda * w * (w < 0 ? -w : w);
-      const c = 6 * (speedCell * throttleCells + throttleCell);
-      const b3 = cells[c + 5];
-      const closed = cells[c] + cells[c + 1] * vm;
-      let gain = cells[c + 2] + vm * (cells[c + 3] + vm * cells[c + 4]) + (b3 === 0 ? 0 : b3 / vm);
+      }
+      const cell = 6 * (speedCell * throttleCells + throttleCell);
+      const b3 = cells[cell + 5];
+      const closed = cells[cell] + cells[cell + 1] * vm;
+      let gain = cells[cell + 2] + vm * (cells[cell + 3] + vm * cells[cell + 4]) + (b3 === 0 ? 0 : b3 / vm);
       if (derated) {
         const d = rows[row + at.R_DERATE] + rows[row + at.R_DERATE + 1] * middle;
         gain = d * (gain + closed) - closed;
       }
-      const force = closed + xm * gain;
-      const resist = normal * (c0 + vm * (c1 + vm * c2));
-      const slope = mass * sine;
-      let a = (force - drag - resist - slope) * inverse;
+      const force = inverse * (closed + xm * gain);
+      const resist = normal * (roll0 + vm * (roll1 + vm * roll2));
+      const slope = share * sine;
+      let a = force - drag - resist - slope;
       if (part === 0) {
-        if (v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT) {
-          brake = effectiveMass * (a + (v - brakeSpeed) / at.BRAKE_TIME);
-          if (!(brake > 0)) brake = 0;
-          if (brake > effectiveMass * at.BRAKE_LIMIT) brake = effectiveMass * at.BRAKE_LIMIT;
-        }
-        log[entry + at.L_ACCELERATION] = a - brake * inverse;
-        log[entry + at.L_DRIVE_FORCE] = force;
-        slope0 = filter > 0 ? (v - z) / filter : a - brake * inverse;
+        if (v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT)
+          brake = Math.max(0, Math.min(a + (v - brakeSpeed) / at.BRAKE_TIME, at.BRAKE_LIMIT));
+        chunk[at.C_DRIVE_FORCE] = force;
+        chunk[at.C_ACCELERATION] = a - brake;
+        slope0 = filter > 0 ? (v - z) / filter : a - brake;
       }
-      a -= brake * inverse;
+      a -= brake;
 
       let h = step;
       let ve = v + h * a;
       if (ve <= 0) {
-        h = a < 0 ? v / -a : 0;
-        if (h > step) h = step;
+        h = a < 0 ? Math.min(v / -a, step) : 0;
         ve = 0;
         event = at.STOPPED;
       }
       let ds = 0.5 * h * (v + ve);
       if (q + (timed ? h : ds) >= end) {
+        // v is linear in time over the step: room = v t + a t^2 / 2.
         const room = end - q;
-        const share = timed ? room / h : room / ds;
-        if (share < 1) {
-          // v is linear in time over the step: room = v t + a t^2 / 2.
-          const time = timed ? room : (2 * room) / (v + Math.sqrt(Math.max(0, v * v + 2 * a * room)));
-          if (time < h) h = time;
+        const time = timed ? room : (2 * room) / (v + Math.sqrt(Math.max(0, v * v + 2 * a * room)));
+        if (time < h) {
+          h = time;
           ve = v + h * a;
           ds = timed ? 0.5 * h * (v + ve) : room;
         }
@@ -223,63 +184,57 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       aero += drag * ds;
       rolling += resist * ds;
       climb += slope * ds;
-      const kinetic = effectiveMass * a * ds;
-      magnitude +=
-        (work >= 0 ? work : -work) +
-        (drag >= 0 ? drag : -drag) * ds +
-        resist * ds +
-        (slope >= 0 ? slope : -slope) * ds +
-        (kinetic >= 0 ? kinetic : -kinetic) +
-        brake * ds;
+      braked += brake * ds;
+      travelled += ds;
+      elapsed += h;
       if (filter > 0) {
-        const ef = h === step ? filterFull : exp(-h / filter);
-        z = ve - filter * a + (z - v + filter * a) * ef;
+        const kept = h === step ? lags[at.G_FILTER] : decay(filter, h);
+        z = ve - filter * a + (z - v + filter * a) * kept;
       } else z = ve;
       v = ve;
       q = event === at.END_OF_ROAD ? end : q + (timed ? h : ds);
-      x = xe;
+      x = td === 0 ? ye : xe;
       y = ye;
-      if (td === 0) x = y;
-      travelled += ds;
-      elapsed += h;
       acceleration = a;
       while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION]) row += at.R_STRIDE;
     }
 
     if (!(v < 1e9)) return at.NON_FINITE;
-    if (event === at.RUNNING && v < stallSpeed) event = at.STALLED;
-    if (delay > 0) keepHistory(s, p, z0, slope0, filter > 0 ? (v - z) / filter : acceleration, sample);
-
-    log[entry + at.L_SPEED] = v0;
-    log[entry + at.L_ACTUATOR] = y0;
-    log[entry + at.L_LIMITED] = u;
-    log[entry + at.L_COMMAND] = s[BUS_COMMAND];
-    log[entry + at.L_RATED] = rated ? 1 : 0;
-    log[entry + at.L_BRAKE_FORCE] = brake;
-    log[entry + at.L_TIME] = elapsed;
-    log[entry + at.L_DISTANCE] = travelled;
-    log[entry + at.L_PUSH] = push;
-    log[entry + at.L_HOLD] = hold;
-    s[at.DRIVE_WORK] += push;
-    s[at.REGENERATION_WORK] += hold;
-    s[at.AERO_WORK] += aero;
-    s[at.ROLLING_WORK] += rolling;
-    s[at.CLIMB_WORK] += climb;
-    s[at.BRAKE_WORK] += brake * travelled;
-    s[at.WORK_MAGNITUDE] += magnitude;
-    s[at.TRAVELLED] += travelled;
-    s[at.SPEED] = v;
-    s[at.STATION] = q;
-    s[at.THROTTLE] = x;
-    s[at.ACTUATOR] = y;
-    s[at.FILTERED] = z;
-    s[at.ACCELERATION] = acceleration;
-    s[at.CELL] = row / at.R_STRIDE;
-    s[at.SPEED_CELL] = speedCell;
-    s[at.THROTTLE_CELL] = throttleCell;
-    s[at.LOGGED] = tick + 1;
-    if (event === at.RUNNING) s[at.TICK] += 1;
-    else s[at.PARTIAL] = elapsed;
+    if (event === at.RUNNING) {
+      elapsed = sample;
+      if (v < stallSpeed) event = at.STALLED;
+    }
+    if (limited) ratedTime += elapsed;
+    if (brake > 0) brakeTime += elapsed;
+    if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
+
+  if (event === at.RUNNING) s[at.TICK] += tick;
+  else {
+    s[at.TICK] += tick - 1;
+    s[at.PARTIAL] = elapsed;
+  }
+  s[at.SPEED] = v;
+  s[at.STATION] = q;
+  s[at.THROTTLE] = x;
+  s[at.ACTUATOR] = y;
+  s[at.FILTERED] = z;
+  s[at.ACCELERATION] = acceleration;
+  s[at.CELL] = row / at.R_STRIDE;
+  s[at.SPEED_CELL] = speedCell;
+  s[at.THROTTLE_CELL] = throttleCell;
+  chunk[at.C_TICKS] = tick;
+  chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
+  chunk[at.C_DISTANCE] = travelled;
+  chunk[at.C_PUSH] = push;
+  chunk[at.C_HOLD] = hold;
+  chunk[at.C_AERO] = aero;
+  chunk[at.C_ROLLING] = rolling;
+  chunk[at.C_CLIMB] = climb;
+  chunk[at.C_BRAKE] = braked;
+  chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
+  chunk[at.C_RATED_TIME] = ratedTime;
+  chunk[at.C_BRAKE_TIME] = brakeTime;
+  chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

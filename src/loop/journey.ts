@@ -3,6 +3,7 @@ import { setTarget } from '../control/set-point.ts';
 import { advanceExact } from './exact.ts';
 import { advanceFast } from './fast.ts';
 import * as at from './layout.ts';
+import { addWorks } from './ledger.ts';
 import type { Kernel, Machine } from './machine.ts';
 import { stationAt } from './places.ts';
 import type { LoopPlan, SetSpeedChange } from './plan.ts';
@@ -73,6 +74,7 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
         next !== null && 'time' in next.at ? ticksTo(next.at.time, sample, s[at.TICK]) : at.LOG_ROWS;
       const before = s[at.TICK];
       event = kernel(machine, Math.min(run, left, at.LOG_ROWS), Math.min(until, place));
+      addWorks(machine);
       heard(machine);
       left -= s[at.TICK] - before;
     }

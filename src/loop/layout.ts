@@ -27,39 +27,46 @@ export const ROLLING_WORK = 28;
 export const CLIMB_WORK = 29;
 export const BRAKE_WORK = 30;
 export const WORK_MAGNITUDE = 31;
-export const TRAVELLED = 32;
-export const START_SPEED = 33;
+export const START_SPEED = 32;
 /** Air where a throttle was locked `level` the last time: density [kg/m3], temperature [K]. */
-export const LOCK_DENSITY = 34;
-export const LOCK_TEMPERATURE = 35;
+export const LOCK_DENSITY = 33;
+export const LOCK_TEMPERATURE = 34;
 /** Set-speed changes that have happened. */
-export const CHANGES = 36;
+export const CHANGES = 35;
 /** Limited command of the last sample that was recorded. */
-export const LAST_COMMAND = 37;
-/** Rows of the log that the kernel has just written. */
-export const LOGGED = 38;
-/** History for delayed measurement: rows of [value, slope after it, slope before the next], see delayed-speed.ts. */
-export const HISTORY = 39;
+export const LAST_COMMAND = 36;
+/** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
+export const HISTORY = 37;
 export const HISTORY_STRIDE = 3;
 
-// --- log: a row a sample of the chunk that a kernel has just run; at the start of the sample, or summed over it ---
+// --- chunk: sums over the samples that a kernel has just run, works per unit of effective mass ---
+export const C_TICKS = 0;
+/** Seconds and distance travelled. */
+export const C_TIME = 1;
+export const C_DISTANCE = 2;
+/** Work of the drive while it pushed, and while it held back; of air, rolling, slope, the rider's brake. */
+export const C_PUSH = 3;
+export const C_HOLD = 4;
+export const C_AERO = 5;
+export const C_ROLLING = 6;
+export const C_CLIMB = 7;
+export const C_BRAKE = 8;
+/** Change of the kinetic energy. */
+export const C_KINETIC = 9;
+/** Time of the samples that began at the actuator's rate limit, and of those with the brake on. */
+export const C_RATED_TIME = 10;
+export const C_BRAKE_TIME = 11;
+/** At the start of the last sample: forces of drive and brake per unit of effective mass, acceleration. */
+export const C_DRIVE_FORCE = 12;
+export const C_BRAKE_FORCE = 13;
+export const C_ACCELERATION = 14;
+export const C_SIZE = 15;
+
+// --- log: a row a sample of the chunk, at its start: speed, throttle at the actuator, command before it is limited ---
 export const L_SPEED = 0;
 export const L_ACTUATOR = 1;
-/** Command after and before it is limited. */
-export const L_LIMITED = 2;
-export const L_COMMAND = 3;
-/** 1: it began with the actuator at its rate limit. */
-export const L_RATED = 4;
-export const L_BRAKE_FORCE = 5;
-/** Seconds and distance travelled. */
-export const L_TIME = 6;
-export const L_DISTANCE = 7;
-/** Work of the drive while it pushed, and while it held back. */
-export const L_PUSH = 8;
-export const L_HOLD = 9;
-export const L_DRIVE_FORCE = 10;
-export const L_ACCELERATION = 11;
-export const L_STRIDE = 12;
+export const L_COMMAND = 2;
+export const L_STRIDE = 3;
 export const LOG_ROWS = 128;
 
 // --- parameters: constant over a run ---
@@ -84,58 +91,60 @@ export const P_RATE_GAP = 14;
 /** Weights of the two exponentials of the lags: ta / (ta - td), and 1 / td where the two are equal. */
 export const P_LAG_WEIGHT = 15;
 export const P_LAG_EQUAL = 16;
-/** e^(-t / lag) at half a step and at a whole one. */
-export const P_ACTUATOR_HALF = 17;
-export const P_ACTUATOR_FULL = 18;
-export const P_DRIVE_HALF = 19;
-export const P_DRIVE_FULL = 20;
-export const P_FILTER = 21;
-export const P_FILTER_FULL = 22;
+/** Mean over a whole step of what lags.ts calls the decay of the drive, and the pull. */
+export const P_DRIVE_MEAN = 17;
+export const P_PULL_MEAN = 18;
+export const P_FILTER = 19;
 /** Measured over true speed. */
-export const P_SCALE = 23;
+export const P_SCALE = 20;
 /** Transport and computing delay in samples, and rows of the history. */
-export const P_DELAY = 24;
-export const P_HISTORY = 25;
-export const P_STALL_SPEED = 26;
-export const P_LOW = 27;
-export const P_HIGH = 28;
+export const P_DELAY = 21;
+export const P_HISTORY = 22;
+export const P_STALL_SPEED = 23;
+export const P_LOW = 24;
+export const P_HIGH = 25;
 /** 1: the drive's force depends on altitude. */
-export const P_DERATED = 29;
+export const P_DERATED = 26;
 /** 1: there is crosswind somewhere. */
-export const P_CROSSWIND = 30;
-export const P_YAW_GAIN = 31;
-export const P_SPEED_CELLS = 32;
-export const P_THROTTLE_CELLS = 33;
+export const P_CROSSWIND = 27;
+export const P_SPEED_CELLS = 28;
+export const P_THROTTLE_CELLS = 29;
 /** Half-widths of the bands: four places. */
-export const P_BANDS = 34;
+export const P_BANDS = 30;
 /** True speed over the units of the set speed; overspeed at which the rider brakes, Infinity: never. */
-export const P_TO_TRUE = 38;
-export const P_BRAKES_ABOVE = 39;
-export const P_BAND_COUNT = 40;
-/** Mean over a step of e^(-t / lag) for actuator and drive, and of t e^(-t / lag) for the drive. */
-export const P_ACTUATOR_MEAN = 41;
-export const P_DRIVE_MEAN = 42;
-export const P_DRIVE_MOMENT = 43;
-export const P_SIZE = 44;
+export const P_TO_TRUE = 34;
+export const P_BRAKES_ABOVE = 35;
+export const P_BAND_COUNT = 36;
+export const P_SIZE = 37;
+
+// --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
+export const G_DRIVE_HALF = 0;
+export const G_PULL_HALF = 1;
+export const G_DRIVE = 2;
+export const G_PULL = 3;
+export const G_ACTUATOR = 4;
+export const G_FILTER = 5;
+export const G_STRIDE = 6;
+/** After a whole step that begins at the rate limit: mean throttle, throttle, actuator. */
+export const G_RAMPED_MEAN = 12;
+export const G_RAMPED_DRIVE = 13;
+export const G_RAMPED_ACTUATOR = 14;
+export const G_SIZE = 15;
 
 // --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
 export const R_STATION = 0;
 export const R_LENGTH = 1;
-/** g sin(theta), g cos(theta). */
+/** g sin(theta), headwind: with a third place, the integral over the station up to the near knot. */
 export const R_SIN = 2;
-export const R_COS = 4;
-export const R_HEADWIND = 6;
-export const R_CROSSWIND = 8;
+export const R_HEADWIND = 5;
+/** g cos(theta). */
+export const R_COS = 8;
+export const R_CROSSWIND = 10;
 /** Half the air density. */
-export const R_AIR = 10;
+export const R_AIR = 12;
 /** Full-throttle torque over its value at sea level. */
-export const R_DERATE = 12;
-/** Horizontal distance. */
-export const R_DISTANCE = 14;
-/** Integrals of g sin(theta) and of the headwind over the station up to the near knot. */
-export const R_CLIMB = 16;
-export const R_WIND_RUN = 17;
-export const R_STRIDE = 18;
+export const R_DERATE = 14;
+export const R_STRIDE = 16;
 
 // --- what a kernel returns ---
 export const RUNNING = 0;

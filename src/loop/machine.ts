@@ -1,7 +1,7 @@
 import type { Controller } from '../control/controller.ts';
 import type { DragTangent } from './crosswind.ts';
 
-/** A run compiled to flat arrays: what a kernel works on. Places in layout.ts and record.ts. */
+/** A run compiled to flat arrays: what a kernel works on. Places in layout.ts. */
 export interface Machine {
   readonly s: Float64Array;
   readonly p: Float64Array;
@@ -13,12 +13,15 @@ export interface Machine {
   readonly throttleEdges: Float64Array;
   readonly controller: Controller;
   readonly tangent: DragTangent;
-  /** What the samples of the last chunk saw and did. */
+  /** Decays of the lags over a step. */
+  readonly lags: Float64Array;
+  /** The samples of the last chunk, and the sums over them. */
   readonly log: Float64Array;
+  readonly chunk: Float64Array;
 }
 
 /**
- * Runs up to `ticks` samples (at most LOG_ROWS), none of which starts at or beyond the station `until`, and logs them.
- * Returns RUNNING, or why it ended within a sample.
+ * Runs up to `ticks` samples (at most LOG_ROWS), none of which starts at or beyond the station `until`, logs them and
+ * sums over them. Returns RUNNING, or why it ended within a sample; NON_FINITE leaves the state as it was, and no sums.
  */
 export type Kernel = (machine: Machine, ticks: number, until: number) => number;

@@ -1,7 +1,6 @@
 import { BUS_TARGET } from '../control/bus.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from './plan.ts';
 import type { BinRecord } from './result.ts';
 
 // Places of the open bin's sums. Speed and error: extremes over the samples.
@@ -34,76 +33,64 @@ function clearSums(sums: Float64Array): void {
   sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = Number.NEGATIVE_INFINITY;
 }
 
-/** LIMIT_ bits of the sample in one row of the log. */
-export function limitBits({ p, log }: Machine, entry: number): number {
-  return (
-    (log[entry + at.L_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
-    (log[entry + at.L_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
-    (log[entry + at.L_RATED] > 0 ? LIMIT_RATE : 0) |
-    (log[entry + at.L_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0)
-  );
-}
-
 /** Adds the samples that a kernel has just run to the sums of the open bin. The set speed is the same for all of them. */
-function addSamples({ s, p, log }: Machine, sums: Float64Array): void {
-  const end = s[at.LOGGED] * at.L_STRIDE;
+function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
+  const ticks = chunk[at.C_TICKS];
+  if (ticks === 0) return;
   const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
   const highest = p[at.P_HIGH];
   const lowest = p[at.P_LOW];
   const bands = p[at.P_BAND_COUNT];
-  let last = s[at.LAST_COMMAND];
-  let duration = 0;
-  let distance = 0;
+  const sample = p[at.P_SAMPLE];
+  const lastTime = chunk[at.C_TIME] - (ticks - 1) * sample;
+  const last = (ticks - 1) * at.L_STRIDE;
+  let before = s[at.LAST_COMMAND];
   let errors = 0;
   let squares = 0;
   let throttles = 0;
   let travel = 0;
-  let push = 0;
-  let hold = 0;
   let slowest = Number.POSITIVE_INFINITY;
   let fastest = Number.NEGATIVE_INFINITY;
   let least = sums[THROTTLE_MIN];
   let most = sums[THROTTLE_MAX];
   if (sums[TIME] === 0) sums[SET_SPEED] = setSpeed;
-  for (let i = 0; i < end; i += at.L_STRIDE) {
-    const time = log[i + at.L_TIME];
+  for (let i = 0; i <= last; i += at.L_STRIDE) {
+    const time = i < last ? sample : lastTime;
     const speed = log[i + at.L_SPEED];
     const throttle = log[i + at.L_ACTUATOR];
-    const limited = log[i + at.L_LIMITED];
-    const command = log[i + at.L_COMMAND];
+    let command = log[i + at.L_COMMAND];
     const error = speed - setSpeed;
-    duration += time;
-    distance += log[i + at.L_DISTANCE];
     errors += error * time;
     squares += error * error * time;
     throttles += throttle * time;
-    travel += Math.abs(limited - last);
-    push += log[i + at.L_PUSH];
-    hold += log[i + at.L_HOLD];
     if (speed < slowest) slowest = speed;
     if (speed > fastest) fastest = speed;
     if (throttle < least) least = throttle;
     if (throttle > most) most = throttle;
-    last = limited;
-    if (command >= highest) sums[UPPER] += time;
-    else if (command <= lowest) sums[LOWER] += time;
-    if (log[i + at.L_RATED] > 0) sums[RATE] += time;
-    if (log[i + at.L_BRAKE_FORCE] > 0) {
-      sums[BRAKE] += time;
-      sums[BRAKE_WORK] += log[i + at.L_BRAKE_FORCE] * log[i + at.L_DISTANCE];
+    if (command >= highest) {
+      command = highest;
+      sums[UPPER] += time;
+    } else if (command <= lowest) {
+      command = lowest;
+      sums[LOWER] += time;
     }
+    travel += Math.abs(command - before);
+    before = command;
     const size = Math.abs(error);
     for (let b = 0; b < bands; b++) if (size <= p[at.P_BANDS + b]) sums[BAND + b] += time;
   }
-  s[at.LAST_COMMAND] = last;
-  sums[TIME] += duration;
-  sums[DISTANCE] += distance;
+  s[at.LAST_COMMAND] = before;
+  sums[TIME] += chunk[at.C_TIME];
+  sums[DISTANCE] += chunk[at.C_DISTANCE];
   sums[ERROR] += errors;
   sums[SQUARE] += squares;
   sums[THROTTLE] += throttles;
   sums[TRAVEL] += travel;
-  sums[PUSH] += push;
-  sums[HOLD] += hold;
+  sums[RATE] += chunk[at.C_RATED_TIME];
+  sums[BRAKE] += chunk[at.C_BRAKE_TIME];
+  sums[PUSH] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_PUSH];
+  sums[HOLD] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_HOLD];
+  sums[BRAKE_WORK] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE];
   sums[THROTTLE_MIN] = least;
   sums[THROTTLE_MAX] = most;
   if (slowest < sums[SPEED_MIN]) sums[SPEED_MIN] = slowest;
@@ -168,9 +155,10 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
   clearSums(sums);
   const add = (machine: Machine): void => addSamples(machine, sums);
 
-  const close: Recorder['close'] = ({ s, p, log }, timeAt, gear) => {
+  const close: Recorder['close'] = ({ s, p, chunk }, timeAt, gear) => {
     const i = size++;
     const time = sums[TIME];
+    const force = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
     r.timeAt[i] = timeAt;
     r.gear[i] = gear;
     if (!(time > 0)) {
@@ -180,8 +168,8 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
       r.speedMean[i] = r.speedMin[i] = r.speedMax[i] = s[at.SPEED];
       r.errorMin[i] = r.errorMax[i] = s[at.SPEED] - setSpeed;
       r.throttleMean[i] = r.throttleMin[i] = r.throttleMax[i] = s[at.ACTUATOR];
-      r.driveForce[i] = log[at.L_DRIVE_FORCE];
-      r.wheelPower[i] = log[at.L_DRIVE_FORCE] * s[at.SPEED];
+      r.driveForce[i] = force;
+      r.wheelPower[i] = force * s[at.SPEED];
       clearSums(sums);
       return;
     }
@@ -204,7 +192,7 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     r.timeBrake[i] = sums[BRAKE];
     for (let b = 0; b < bands; b++) r.timeInBand[i * bands + b] = sums[BAND + b];
     const work = sums[PUSH] + sums[HOLD];
-    r.driveForce[i] = sums[DISTANCE] > 0 ? work / sums[DISTANCE] : log[at.L_DRIVE_FORCE];
+    r.driveForce[i] = sums[DISTANCE] > 0 ? work / sums[DISTANCE] : force;
     r.wheelPower[i] = work / time;
     r.driveWork[i] = sums[PUSH];
     r.regenerationWork[i] = sums[HOLD];

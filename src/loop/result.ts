@@ -72,7 +72,7 @@ export interface Ledger {
   readonly kinetic: number;
   /** Drawn from battery where the drive has an efficiency; null where not. */
   readonly battery: number | null;
-  /** Sum of the terms over the integral of the terms' magnitudes. */
+  /** Sum of the terms over the sum of their magnitudes, taken stretch by stretch (at most a bin). */
   readonly residual: number;
 }
 

@@ -4,17 +4,14 @@ import { derateFactor } from '../vehicle/derating.ts';
 import type { Drive } from '../vehicle/vehicle.ts';
 import {
   R_AIR,
-  R_CLIMB,
   R_COS,
   R_CROSSWIND,
   R_DERATE,
-  R_DISTANCE,
   R_HEADWIND,
   R_LENGTH,
   R_SIN,
   R_STATION,
   R_STRIDE,
-  R_WIND_RUN,
 } from './layout.ts';
 
 /** A road as the kernels read it. */
@@ -38,6 +35,12 @@ export function roadTable(road: Road, derate: Drive['derate']): RoadTable {
   const table = kinds.get(derate) ?? compile(road, derate);
   kinds.set(derate, table);
   return table;
+}
+
+/** Integral of a column (R_SIN, R_HEADWIND) over the station, from the start of the road to q in the cell of a row. */
+export function integralTo(rows: Float64Array, row: number, column: number, q: number): number {
+  const from = q - rows[row + R_STATION];
+  return rows[row + column + 2] + from * (rows[row + column] + 0.5 * from * rows[row + column + 1]);
 }
 
 function compile(road: Road, derate: Drive['derate']): RoadTable {
@@ -68,9 +71,8 @@ function compile(road: Road, derate: Drive['derate']): RoadTable {
     put(at + R_CROSSWIND, road.crosswind[i], road.crosswind[j], length);
     put(at + R_AIR, 0.5 * road.airDensity[i], 0.5 * road.airDensity[j], length);
     put(at + R_DERATE, factor(i), factor(j), length);
-    put(at + R_DISTANCE, road.distance[i], road.distance[j], length);
-    rows[at + R_CLIMB] = climb;
-    rows[at + R_WIND_RUN] = windRun;
+    rows[at + R_SIN + 2] = climb;
+    rows[at + R_HEADWIND + 2] = windRun;
     windRun += 0.5 * (road.headwind[i] + road.headwind[j]) * length;
     climb += 0.5 * (near * grade[i] + far * grade[j]) * length;
     if (road.crosswind[i] !== 0 || road.crosswind[j] !== 0) crosswind = true;

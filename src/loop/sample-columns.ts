@@ -9,7 +9,7 @@ import {
 } from '../control/bus.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { limitBits } from './record.ts';
+import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from './plan.ts';
 import type { FullSeries } from './result.ts';
 
 const NUMBERS = [
@@ -36,13 +36,23 @@ export interface SampleColumns {
   readonly finish: () => FullSeries;
 }
 
+/** LIMIT_ bits of the one sample in the log. */
+function limitBits({ s, p, chunk }: Machine): number {
+  return (
+    (s[BUS_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
+    (s[BUS_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
+    (chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
+    (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0)
+  );
+}
+
 /** Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read. */
 export function sampleColumns(): SampleColumns {
   const width = NUMBERS.length + 2;
   let rows = new Float64Array(width * 1024);
   let size = 0;
   const push: SampleColumns['push'] = (machine, time, distance, gear) => {
-    const { s, p, log } = machine;
+    const { s, p, log, chunk } = machine;
     if (width * (size + 1) > rows.length) {
       const more = new Float64Array(2 * rows.length);
       more.set(rows);
@@ -60,10 +70,10 @@ export function sampleColumns(): SampleColumns {
     rows[row + 8] = s[BUS_PROPORTIONAL];
     rows[row + 9] = s[BUS_INTEGRAL];
     rows[row + 10] = s[BUS_FEEDFORWARD];
-    rows[row + 11] = log[at.L_DRIVE_FORCE];
-    rows[row + 12] = log[at.L_BRAKE_FORCE];
-    rows[row + 13] = log[at.L_ACCELERATION];
-    rows[row + 14] = limitBits(machine, 0);
+    rows[row + 11] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
+    rows[row + 12] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
+    rows[row + 13] = chunk[at.C_ACCELERATION];
+    rows[row + 14] = limitBits(machine);
     rows[row + 15] = gear;
   };
   const finish = (): FullSeries => {
