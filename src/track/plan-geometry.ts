@@ -57,32 +57,49 @@ export function planLine(latitudeDeg: Float64Array, longitudeDeg: Float64Array):
   };
 }
 
+/** Points that are thinned at a time: the method goes down by recursion, in the worst case as deep as the line is long. */
+const BLOCK = 1024;
+
 /**
- * Thins a line for outputs: Ramer, Douglas and Peucker's method (turf's, on a flat map in metres, so that the
- * tolerance is the same in both directions and the result the same on every engine). No point that is left out lies
- * farther than the tolerance from the line that remains.
+ * Thins a road for outputs by Ramer, Douglas and Peucker's method: in plan, on a flat map in metres, and in height over
+ * the way; what either keeps stays. The method is turf's, which uses arithmetic alone, so that the result is the same on
+ * every engine. No point that is left out lies farther than the tolerance from the line that remains in plan, or
+ * farther than that from its height.
  *
- * @param latitudeDeg any number of points [degree]
- * @param longitudeDeg of the same points [degree]
+ * @param line any number of points: latitude and longitude [degree], way along the line and elevation [m]
  * @param tolerance [m], 0 or more; 0 leaves out only points exactly on the line
  * @returns indices of the points that stay, ascending; the first and the last are always among them
  */
 export function simplifyLine(
-  latitudeDeg: Float64Array,
-  longitudeDeg: Float64Array,
+  line: {
+    readonly latitudeDeg: Float64Array;
+    readonly longitudeDeg: Float64Array;
+    readonly distance: Float64Array;
+    readonly elevation: Float64Array;
+  },
   tolerance: number,
 ): Int32Array {
-  const size = latitudeDeg.length;
+  const size = line.latitudeDeg.length;
   if (size <= 2) return Int32Array.from({ length: size }, (_, i) => i);
-  const { x, y } = planLine(latitudeDeg, longitudeDeg);
-  // The third coordinate is carried along untouched, and brings the index back.
-  const line = lineString(Array.from(x, (_, i) => [x[i]!, y[i]!, i]));
-  const thinned = simplify(line, { tolerance, highQuality: true, mutate: true });
-  const kept = Int32Array.from(thinned.geometry.coordinates, (position) => position[2]!);
-  // Where many points are one place, turf keeps any of them; the ends must be the ends.
-  kept[0] = 0;
-  kept[kept.length - 1] = size - 1;
-  return kept;
+  const { x, y } = planLine(line.latitudeDeg, line.longitudeDeg);
+  const keep = new Uint8Array(size);
+  // A point that only one of the two keeps moves the other's line by up to its tolerance: half of it to each.
+  thin(keep, x, y, tolerance / 2);
+  thin(keep, line.distance, line.elevation, tolerance / 2);
+  return Int32Array.from(keep.keys()).filter((i) => keep[i] === 1);
+}
+
+/** Marks the points of a flat line that stay, both ends of each block among them. */
+function thin(keep: Uint8Array, x: Float64Array, y: Float64Array, tolerance: number): void {
+  for (let from = 0; from < x.length - 1; from += BLOCK) {
+    const to = Math.min(from + BLOCK, x.length - 1);
+    // The third coordinate is carried along untouched, and brings the index back.
+    const block = Array.from({ length: to - from + 1 }, (_, k) => [x[from + k]!, y[from + k]!, from + k]);
+    const thinned = simplify(lineString(block), { tolerance, highQuality: true, mutate: true });
+    for (const position of thinned.geometry.coordinates) keep[position[2]!] = 1;
+    // Where many points are one place, turf keeps any of them; the ends must be the ends.
+    keep[from] = keep[to] = 1;
+  }
 }
 
 function rangeOf(values: Float64Array): [least: number, most: number] {

@@ -16,6 +16,16 @@ function toSegment(p: readonly number[], a: readonly number[], b: readonly numbe
   return Math.hypot(p[0]! - a[0]! - at * dx, p[1]! - a[1]! - at * dy);
 }
 
+/** A line in plan alone: its elevations are all the same. */
+function levelLine(latitudeDeg: Float64Array, longitudeDeg: Float64Array) {
+  return {
+    latitudeDeg,
+    longitudeDeg,
+    distance: latitudeDeg.map((_, i) => 10 * i),
+    elevation: latitudeDeg.map(() => 7),
+  };
+}
+
 function farthest(lat: Float64Array, lon: Float64Array, kept: Int32Array): number {
   const scale = DEGREE * Math.cos((lat[0]! * Math.PI) / 180);
   const place = (i: number): number[] => [lon[i]! * scale, lat[i]! * DEGREE];
@@ -42,7 +52,7 @@ describe('a simplified line', () => {
           b += step.lon * 1e-6;
           [lat[i], lon[i]] = [a, b];
         });
-        const kept = simplifyLine(lat, lon, tolerance);
+        const kept = simplifyLine(levelLine(lat, lon), tolerance);
         expect([kept[0], kept.at(-1)]).toEqual([0, steps.length - 1]);
         expect(kept.every((i, k) => k === 0 || i > kept[k - 1]!)).toBe(true);
         expect(farthest(lat, lon, kept)).toBeLessThanOrEqual(tolerance * 1.01 + 1e-3);
@@ -57,7 +67,7 @@ describe('a simplified line', () => {
       import.meta.url,
     );
     const { latitudeDeg, longitudeDeg, size } = readTrack({ name: 'run.gpx', bytes: readFileSync(file) });
-    const kept = simplifyLine(latitudeDeg!, longitudeDeg!, 2);
+    const kept = simplifyLine(levelLine(latitudeDeg!, longitudeDeg!), 2);
     expect(kept.length).toBeGreaterThan(20);
     expect(kept.length).toBeLessThan(size / 10);
     expect(farthest(latitudeDeg!, longitudeDeg!, kept)).toBeLessThan(2.02);
@@ -65,14 +75,62 @@ describe('a simplified line', () => {
 
   it('of one place, one point or none is what it must be', () => {
     const line = (...values: number[]): Float64Array => Float64Array.from(values);
-    expect(Array.from(simplifyLine(line(), line(), 1))).toEqual([]);
-    expect(Array.from(simplifyLine(line(1), line(1), 1))).toEqual([0]);
-    expect(Array.from(simplifyLine(line(1, 1, 1, 1), line(2, 2, 2, 2), 1))).toEqual([0, 3]);
-    expect(Array.from(simplifyLine(line(0, 0.001, 0.002), line(0, 0, 0), 1))).toEqual([0, 2]);
+    const kept = (lat: Float64Array, lon: Float64Array): number[] =>
+      Array.from(simplifyLine(levelLine(lat, lon), 1));
+    expect(kept(line(), line())).toEqual([]);
+    expect(kept(line(1), line(1))).toEqual([0]);
+    expect(kept(line(1, 1, 1, 1), line(2, 2, 2, 2))).toEqual([0, 3]);
+    expect(kept(line(0, 0.001, 0.002), line(0, 0, 0))).toEqual([0, 2]);
     // There and back the same way: the turning point stays.
-    expect(Array.from(simplifyLine(line(0, 0.001, 0.002, 0.001, 0), line(0, 0, 0, 0, 0), 1))).toEqual([
-      0, 2, 4,
-    ]);
+    expect(kept(line(0, 0.001, 0.002, 0.001, 0), line(0, 0, 0, 0, 0))).toEqual([0, 2, 4]);
+  });
+
+  it('keeps the heights of a straight road: a crest of 8 m stays, one of 0.4 m goes', () => {
+    const at = (...values: number[]): Float64Array => Float64Array.from(values);
+    const straight = (height: number) => ({
+      latitudeDeg: at(50, 50.001, 50.002, 50.003),
+      longitudeDeg: at(0, 0, 0, 0),
+      distance: at(0, 111, 222, 333),
+      elevation: at(0, 0, height, 0),
+    });
+    expect(Array.from(simplifyLine(straight(8), 1))).toEqual([0, 1, 2, 3]);
+    expect(Array.from(simplifyLine(straight(0.4), 1))).toEqual([0, 3]);
+  });
+
+  it('leaves no point farther than the tolerance in plan or in height, whichever of the two kept it', () => {
+    const random = fc.integer({ min: -30, max: 30 });
+    const walk = fc.array(fc.tuple(random, random, random), { minLength: 2, maxLength: 150 });
+    fc.assert(
+      fc.property(walk, (steps) => {
+        const column = (k: 0 | 1 | 2, start: number, scale: number): Float64Array => {
+          let value = start;
+          return Float64Array.from(steps, (step) => (value += step[k] * scale));
+        };
+        const line = {
+          latitudeDeg: column(0, 47, 1e-6),
+          longitudeDeg: column(1, 8, 1e-6),
+          distance: Float64Array.from(steps, (_, i) => 5 * i),
+          elevation: column(2, 300, 0.05),
+        };
+        const kept = simplifyLine(line, 1);
+        expect(farthest(line.latitudeDeg, line.longitudeDeg, kept)).toBeLessThanOrEqual(1.02);
+        for (let k = 1; k < kept.length; k++)
+          for (let i = kept[k - 1]!; i <= kept[k]!; i++) {
+            const [a, b] = [kept[k - 1]!, kept[k]!];
+            const t = (line.distance[i]! - line.distance[a]!) / (line.distance[b]! - line.distance[a]!);
+            const between = line.elevation[a]! + t * (line.elevation[b]! - line.elevation[a]!);
+            // Half the tolerance square to the line, whose grade is at most 1.5 / 5.
+            expect(Math.abs(line.elevation[i]! - between)).toBeLessThanOrEqual(1.05);
+          }
+      }),
+      { seed: 1973 },
+    );
+  });
+
+  it('of a hundred thousand saw teeth comes to an end, with all of them', () => {
+    const zigzag = Float64Array.from({ length: 100_000 }, (_, i) => 50 + 1e-3 * (i % 2));
+    const east = Float64Array.from({ length: 100_000 }, (_, i) => 1e-5 * i);
+    expect(simplifyLine(levelLine(zigzag, east), 1).length).toBe(100_000);
   });
 });
 

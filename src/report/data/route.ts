@@ -1,13 +1,11 @@
-import { cos } from '../../numeric/elementary.ts';
 import type { Road } from '../../road/road.ts';
 import type { Hill } from '../../study/findings.ts';
-import { WGS84_EQUATORIAL_RADIUS } from '../../units/constants.ts';
-import { fromDeg, toKm, toPct } from '../../units/convert.ts';
+import { boundingBox, simplifyLine } from '../../track/plan-geometry.ts';
+import { toKm, toPct } from '../../units/convert.ts';
 import { rounded } from './fixed.ts';
 import { jsonText } from './json-text.ts';
-import { simplifyLine } from './simplify-line.ts';
 
-/** No point of the road is further than this from the simplified line, height included [m]. */
+/** No point of the road is further than this from the simplified line, in plan and in height [m]. */
 const TOLERANCE = 1;
 
 type Position = readonly [longitudeDeg: number, latitudeDeg: number, elevation: number];
@@ -16,19 +14,22 @@ interface Line {
   readonly longitudeDeg: Float64Array;
   readonly latitudeDeg: Float64Array;
   readonly elevation: Float64Array;
+  /** Horizontal, along the road [m]. */
+  readonly distance: Float64Array;
 }
 
 /**
  * route.geojson by RFC 7946: the driven (trimmed) road as a line with its figures, then a line for each hill.
  * Simplified to 1 m; positions to 1e-6 degree (about 0.1 m). A line over the antimeridian is cut there
- * (section 3.1.9). A road without positions is one feature without a geometry (section 3.2).
+ * (section 3.1.9), and the bounding box of such a road has its west east of its east (section 5.2). A road without
+ * positions is one feature without a geometry (section 3.2), and no bounding box.
  */
 export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
-  const { longitudeDeg, latitudeDeg, elevation, size } = road;
+  const { longitudeDeg, latitudeDeg, elevation, distance, size } = road;
   const line =
     longitudeDeg === null || latitudeDeg === null
       ? null
-      : { longitudeDeg: longitudeDeg.map(wrapped), latitudeDeg, elevation };
+      : { longitudeDeg: longitudeDeg.map(wrapped), latitudeDeg, elevation, distance };
   const climb = climbOf(road);
   const route = {
     type: 'Feature',
@@ -43,7 +44,22 @@ export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
     },
   };
   const located = line === null ? [] : hills.map((hill) => hillFeature(road, line, hill));
-  return jsonText({ type: 'FeatureCollection', features: [route, ...located] });
+  return jsonText({
+    type: 'FeatureCollection',
+    ...(line === null ? {} : { bbox: boxAround(line) }),
+    features: [route, ...located],
+  });
+}
+
+/** RFC 7946, section 5: west, south, lowest, east, north, highest. */
+function boxAround({ latitudeDeg, longitudeDeg, elevation }: Line): number[] {
+  const [west, south, east, north] = boundingBox(latitudeDeg, longitudeDeg);
+  let [lowest, highest] = [elevation[0]!, elevation[0]!];
+  for (const z of elevation) {
+    if (z < lowest) lowest = z;
+    if (z > highest) highest = z;
+  }
+  return [...written([west, south, lowest]), ...written([east, north, highest])];
 }
 
 /** A longitude in [-180, 180]: a road over the antimeridian may count on. */
@@ -84,24 +100,17 @@ function hillFeature(road: Road, line: Line, hill: Hill): object {
 
 /** The line between two knots, both included, simplified. */
 function geometryOf(line: Line, from: number, to: number): object {
-  const count = to - from + 1;
-  const x = new Float64Array(count);
-  const y = new Float64Array(count);
-  const z = line.elevation.subarray(from, to + 1);
-  const metresPerDegree = fromDeg(1) * WGS84_EQUATORIAL_RADIUS;
-  const scale = cos(fromDeg(line.latitudeDeg[from] ?? 0));
-  let turns = 0;
-  for (let i = 0; i < count; i++) {
-    const step = i === 0 ? 0 : line.longitudeDeg[from + i]! - line.longitudeDeg[from + i - 1]!;
-    if (step > 180) turns -= 360;
-    if (step < -180) turns += 360;
-    x[i] = (line.longitudeDeg[from + i]! + turns) * scale * metresPerDegree;
-    y[i] = line.latitudeDeg[from + i]! * metresPerDegree;
-  }
-  const kept = simplifyLine(x, y, z, TOLERANCE).map(
-    (i): Position => [line.longitudeDeg[from + i]!, line.latitudeDeg[from + i]!, z[i]!],
+  const part: Line = {
+    longitudeDeg: line.longitudeDeg.subarray(from, to + 1),
+    latitudeDeg: line.latitudeDeg.subarray(from, to + 1),
+    elevation: line.elevation.subarray(from, to + 1),
+    distance: line.distance.subarray(from, to + 1),
+  };
+  const kept = Array.from(
+    simplifyLine(part, TOLERANCE),
+    (i): Position => [part.longitudeDeg[i]!, part.latitudeDeg[i]!, part.elevation[i]!],
   );
-  const parts = cutAtAntimeridian(kept).map((part) => part.map(written));
+  const parts = cutAtAntimeridian(kept).map((piece) => piece.map(written));
   return parts.length === 1
     ? { type: 'LineString', coordinates: parts[0] }
     : { type: 'MultiLineString', coordinates: parts };
@@ -113,7 +122,7 @@ const written = ([longitudeDeg, latitudeDeg, elevation]: Position): number[] => 
   rounded(elevation, 2),
 ];
 
-/** Parts that do not cross 180 degrees of longitude; each ends on it. */
+/** Parts that do not cross 180 degrees of longitude; each ends on it. A point on it belongs to both sides. */
 function cutAtAntimeridian(line: readonly Position[]): Position[][] {
   const parts: Position[][] = [[]];
   line.forEach((point, i) => {
@@ -121,12 +130,13 @@ function cutAtAntimeridian(line: readonly Position[]): Position[][] {
     if (before !== undefined && Math.abs(point[0] - before[0]) > 180) {
       const side = before[0] > 0 ? 180 : -180;
       const run = point[0] + 2 * side - before[0];
-      const t = (side - before[0]) / run;
+      const t = run === 0 ? 0 : (side - before[0]) / run;
       const at = (k: 1 | 2): number => before[k] + t * (point[k] - before[k]);
-      parts.at(-1)?.push([side, at(1), at(2)]);
-      parts.push([[-side, at(1), at(2)]]);
+      if (before[0] !== side) parts.at(-1)?.push([side, at(1), at(2)]);
+      parts.push(point[0] === -side ? [] : [[-side, at(1), at(2)]]);
     }
     parts.at(-1)?.push(point);
   });
-  return parts;
+  // A line that only touches the antimeridian has a lone point on its other side.
+  return parts.length === 1 ? parts : parts.filter((part) => part.length > 1);
 }

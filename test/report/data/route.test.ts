@@ -37,11 +37,17 @@ function roadThrough(positions: readonly (readonly [number, number, number])[] |
   };
 }
 
+interface Geometry {
+  readonly type: string;
+  readonly coordinates: never;
+}
+
 interface Collection {
   readonly type: string;
+  readonly bbox?: readonly number[];
   readonly features: readonly {
     readonly type: string;
-    readonly geometry: { readonly type: string; readonly coordinates: never } | null;
+    readonly geometry: Geometry | null;
     readonly properties: Readonly<Record<string, unknown>>;
   }[];
 }
@@ -96,6 +102,57 @@ test('a line over the antimeridian is cut there, both parts ending on it', () =>
       ],
     });
   }
+});
+
+test('a line that begins, ends or bends on the antimeridian has no lone point beyond it', () => {
+  // -180 and 180 are one meridian; a road has -180.
+  const geometry = (longitudes: readonly number[]): Geometry | null | undefined =>
+    routeOf(roadThrough(longitudes.map((lon, i) => [lon, 10 + 0.1 * i, 0] as const))).features[0]?.geometry;
+  expect(geometry([179.99, -180])).toEqual({
+    type: 'LineString',
+    coordinates: [
+      [179.99, 10, 0],
+      [180, 10.1, 0],
+    ],
+  });
+  expect(geometry([-180, 179.99])).toEqual({
+    type: 'LineString',
+    coordinates: [
+      [180, 10, 0],
+      [179.99, 10.1, 0],
+    ],
+  });
+  const longitudes = (line: readonly number[]): number[][] =>
+    ((geometry(line)?.coordinates ?? []) as number[][][]).map((part) => part.map((place) => place[0]!));
+  expect(longitudes([179.99, -180, 179.98])).toEqual([
+    [179.99, 180],
+    [180, 179.98],
+  ]);
+  expect(longitudes([179.99, -180, -179.98])).toEqual([
+    [179.99, 180],
+    [-180, -179.98],
+  ]);
+});
+
+test('the bounding box is west, south, lowest, east, north, highest, also over the antimeridian', () => {
+  const box = routeOf(
+    roadThrough([
+      [-1.5, 50, 10],
+      [-1.4986, 50, 30],
+      [-1.4972, 50.002, 25],
+    ]),
+  ).bbox;
+  expect(box).toEqual([-1.5, 50, 10, -1.4972, 50.002, 30]);
+  // RFC 7946, section 5.2: the box of the Fiji islands is [177, -20, -178, -16].
+  const fiji = routeOf(
+    roadThrough([
+      [177, -20, 0],
+      [179.5, -18, 90],
+      [-178, -16, 5],
+    ]),
+  ).bbox;
+  expect(fiji).toEqual([177, -20, 0, -178, -16, 90]);
+  expect(routeOf(roadThrough(null))).not.toHaveProperty('bbox');
 });
 
 test('a way out and back keeps its turn, and a straight its ends', () => {
