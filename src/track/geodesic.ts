@@ -1,4 +1,4 @@
-import { atan2, cos, sin } from '../numeric/elementary.ts';
+import { cos, sin } from '../numeric/elementary.ts';
 import { WGS84_EQUATORIAL_RADIUS, WGS84_FLATTENING } from '../units/constants.ts';
 import { fromDeg } from '../units/convert.ts';
 
@@ -9,7 +9,6 @@ const POLAR_LATITUDE_DEG = 85;
 
 /** Radius of curvature of the ellipsoid at the poles, a^2 / b [m]. */
 const POLAR_RADIUS = WGS84_EQUATORIAL_RADIUS / (1 - WGS84_FLATTENING);
-const FULL_TURN = fromDeg(360);
 
 /** A short leg, split at its middle: `east` and `north` [m]. Their hypotenuse is its length, their angle its azimuth there. */
 export interface Leg {
@@ -74,18 +73,6 @@ export function distanceBetween(
 ): number {
   const { east, north } = legBetween(latitudeDeg1, longitudeDeg1, latitudeDeg2, longitudeDeg2);
   return Math.sqrt(east * east + north * north);
-}
-
-/** Azimuth at the middle of the leg, clockwise from true north, in [0, 2 pi) [rad]; 0 for equal places: see legBetween. */
-export function azimuthBetween(
-  latitudeDeg1: number,
-  longitudeDeg1: number,
-  latitudeDeg2: number,
-  longitudeDeg2: number,
-): number {
-  const { east, north } = legBetween(latitudeDeg1, longitudeDeg1, latitudeDeg2, longitudeDeg2);
-  const azimuth = atan2(east, north);
-  return azimuth < 0 ? azimuth + FULL_TURN : azimuth;
 }
 
 /** The leg near a pole, where longitudes mean little: the chord in space, resolved at its middle. */

@@ -4,9 +4,7 @@
 export const fromKmh = (kmh: number): number => kmh / 3.6;
 /** [m/s] -> [km/h] */
 export const toKmh = (speed: number): number => speed * 3.6;
-/** International mile, 1609.344 m exactly. [mph] -> [m/s] */
-export const fromMph = (mph: number): number => mph * 0.44704;
-/** [m/s] -> [mph] */
+/** [m/s] -> [mph]: the international mile, 1609.344 m exactly */
 export const toMph = (speed: number): number => speed / 0.44704;
 /** [%] -> ratio */
 export const fromPct = (pct: number): number => pct / 100;
@@ -26,20 +24,12 @@ export const fromKw = (kw: number): number => kw * 1000;
 export const toKw = (power: number): number => power / 1000;
 /** [J] -> [Wh] */
 export const toWh = (energy: number): number => energy / 3600;
-/** [Wh] -> [J] */
-export const fromWh = (wh: number): number => wh * 3600;
 /** [degree Celsius] -> [K] */
 export const fromCelsius = (celsius: number): number => celsius + 273.15;
-/** [K] -> [degree Celsius] */
-export const toCelsius = (temperature: number): number => temperature - 273.15;
 /** [hPa] -> [Pa] */
 export const fromHpa = (hpa: number): number => hpa * 100;
-/** [Pa] -> [hPa] */
-export const toHpa = (pressure: number): number => pressure / 100;
 /** [% per km/h] -> [1/(m/s)]: a gain, or with another 1/s an integral gain. */
 export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPerKmh));
-/** [1/(m/s)] -> [% per km/h] */
-export const toPctPerKmh = (gain: number): number => fromKmh(toPct(gain));
 /** [N per km/h] -> [N/(m/s)] */
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */
