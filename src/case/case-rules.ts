@@ -39,6 +39,7 @@ export const caseNameRules: readonly Rule<unknown>[] = [
   { about: ['requirements', -1], check: (file) => doubled(file, 'requirements', (item) => item.id, 'id') },
   { about: ['requirements', -1], check: unknownCandidates },
   { about: ['requirements', -1], check: unknownFigures },
+  { about: ['requirements', -1], check: limitsInWrongSense },
 ];
 
 /** The list under a key, whatever is wrong in it. */
@@ -206,5 +207,38 @@ function unknownFigures(file: unknown): RuleFault[] {
         },
       ];
     return [];
+  });
+}
+
+/** A limit on the side where every run meets it, or none does, is a slip of the pen. */
+function limitsInWrongSense(file: unknown): RuleFault[] {
+  return items(file, 'requirements').flatMap((requirement, i): RuleFault[] => {
+    const row = FIGURES.find(({ name }) => name === requirement.figure);
+    if (row === undefined || row.better === null) return [];
+    const [right, wrong] = row.better === 'higher' ? ['at_least', 'at_most'] : ['at_most', 'at_least'];
+    const below = row.name === 'worst_low_kmh';
+    const hint = below ? `: it is 0 or negative, -3 is 3 ${row.unit} below the set speed` : '';
+    const limit = requirement[right];
+    // Where both stand, the schema complains already.
+    if (requirement[wrong] !== undefined && limit === undefined)
+      return [
+        {
+          path: ['requirements', i, wrong],
+          code: 'wrong-sense',
+          message: `limits ${row.name} on its better side${hint}`,
+          found: `${wrong}: ${String(requirement[wrong])}`,
+          allowed: right,
+        },
+      ];
+    if (!below || typeof limit !== 'number' || limit <= 0) return [];
+    return [
+      {
+        path: ['requirements', i, right],
+        code: 'wrong-sense',
+        message: `can never be met by ${row.name}${hint}`,
+        found: String(limit),
+        allowed: `a number up to 0 ${row.unit}`,
+      },
+    ];
   });
 }

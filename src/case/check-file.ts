@@ -39,9 +39,10 @@ export function checkFile<S extends z.ZodType>(
       allowed: 'keys with values, as key: value',
     });
   const parsed = schema.safeParse(source.value);
-  const found: PathProblem[] = parsed.success ? [] : problemsOfIssues(schema, parsed.error.issues, source);
+  const faults = parsed.success ? null : problemsOfIssues(schema, parsed.error.issues, source);
+  const found: PathProblem[] = [...(faults?.problems ?? [])];
   for (const rule of rules) {
-    if (found.some(({ path }) => overlaps(path, rule.about))) continue;
+    if (faults?.paths.some((path) => overlaps(path, rule.about))) continue;
     for (const { path, ...fault } of rule.check(source.value as z.input<S>))
       found.push({ path, problem: { place: placeOf(source, path), ...fault } });
   }

@@ -38,23 +38,28 @@ export function foundWords(value: unknown): string {
   return text;
 }
 
+/** What the schema complains of. */
+export interface SchemaFaults {
+  readonly problems: readonly PathProblem[];
+  /** Everything that is not as the schema wants it, with what goes without a problem of its own. */
+  readonly paths: readonly Path[];
+}
+
 /** Turns the schema's complaints into problems with place, what was found and what is allowed. */
-export function problemsOfIssues(
-  schema: Schema,
-  issues: readonly Issue[],
-  source: YamlSource,
-): PathProblem[] {
+export function problemsOfIssues(schema: Schema, issues: readonly Issue[], source: YamlSource): SchemaFaults {
   const found: PathProblem[] = [];
   const suggested = new Set<string>();
   for (const issue of issues) translate(schema, issue, [], source, found, suggested);
   const seen = new Set<string>();
-  return found.filter(({ path, problem }) => {
+  const problems = found.filter(({ path, problem }) => {
+    // "did you mean" says it already.
     if (problem.code === 'missing-key' && suggested.has(pathId(path))) return false;
     const id = `${problem.code} ${pathId(path)}`;
     if (seen.has(id)) return false;
     seen.add(id);
     return true;
   });
+  return { problems, paths: found.map(({ path }) => path) };
 }
 
 function translate(
@@ -175,7 +180,7 @@ function unknownKey(
   }
   const near = nearestKey(key, mine);
   if (near !== null) suggested.add(pathId([...path, near.key]));
-  add(at, 'unknown-key', `is not a key known here${hint(root, options, key, near)}`, {
+  add(at, 'unknown-key', `is not a key known here${hint(root, options, key, raw[key], near)}`, {
     allowed: mine.join(', '),
   });
 }
@@ -185,9 +190,12 @@ function hint(
   root: Schema,
   options: readonly Schema[],
   key: string,
+  value: unknown,
   near: ReturnType<typeof nearestKey>,
 ): string {
   if (key === '<<') return ': YAML 1.2 has no merge keys';
+  if (value === null && /^\d+$/.test(key))
+    return ': a comma ends a number, a decimal point goes in its place';
   const other = options.find((option) => Object.hasOwn(shapeOf(option), key));
   const telling = other === undefined ? undefined : [...tellingKeys([other])][0];
   if (telling !== undefined) return `, it goes with ${telling[0]}: ${telling[1].join(', ')}`;

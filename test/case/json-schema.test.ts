@@ -92,6 +92,7 @@ const ACROSS_FIELDS = [
   'unknown-candidate',
   'unknown-figure',
   'below-roughness',
+  'wrong-sense',
 ];
 const BAND = ['figure-without-band.yaml', 'band-without-meaning.yaml'];
 const NOT_DATA = /yaml-syntax|tab-|duplicate-|documents|alias|bad-key/;

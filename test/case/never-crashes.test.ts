@@ -1,13 +1,15 @@
 import { readFileSync } from 'node:fs';
 import fc from 'fast-check';
 import { expect, it } from 'vitest';
-import { stringify } from 'yaml';
+import { parse, stringify } from 'yaml';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { InputError } from '../../src/problems/input-error.ts';
 
 const route = (name: string): string =>
   readFileSync(new URL(`../../routes/${name}`, import.meta.url), 'utf8');
+const CASES = ['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml'] as const;
+const VEHICLES = ['vehicles/proving-125.yaml', 'vehicles/proving-e.yaml'] as const;
 const READERS = [
   [readCaseFile, route('harrow-gap.yaml')],
   [readVehicleFile, route('vehicles/proving-e.yaml')],
@@ -138,4 +140,50 @@ it('refuses overrides properly, whatever they are', () => {
     ),
     { seed: 13, numRuns: 400 },
   );
+});
+
+type Keyed = Record<string | number, unknown>;
+const isKeyed = (value: unknown): value is Keyed => typeof value === 'object' && value !== null;
+
+/** The way to every key of every mapping of a file. */
+const keysOf = (value: unknown, at: readonly (string | number)[] = []): (readonly (string | number)[])[] =>
+  isKeyed(value)
+    ? Object.entries(value).flatMap(([word, inner]) => {
+        const path = [...at, Array.isArray(value) ? Number(word) : word];
+        return Array.isArray(value) ? keysOf(inner, path) : [path, ...keysOf(inner, path)];
+      })
+    : [];
+
+const inlined = (name: string): unknown => ({
+  ...(parse(route(name)) as object),
+  vehicle: parse(route(VEHICLES[0])) as unknown,
+});
+
+it.each([
+  ...CASES.map((name) => [name, readCaseFile, parse(route(name)) as unknown] as const),
+  ...CASES.map((name) => [`${name} with its vehicle inside`, readCaseFile, inlined(name)] as const),
+  ...VEHICLES.map((name) => [name, readVehicleFile, parse(route(name)) as unknown] as const),
+])('refuses properly %s with any one key misspelt or gone', (_, read, file) => {
+  const ways: readonly ((key: string) => string | null)[] = [
+    () => null,
+    (key) => `${key}s`,
+    (key) => key.slice(0, -1),
+    (key) => `${key.slice(1, 2)}${key.slice(0, 1)}${key.slice(2)}`,
+    (key) => key.replace('_', ''),
+    () => 'zzz',
+  ];
+  const misspelt = keysOf(file).flatMap((path) =>
+    ways.map((way) => [path, way(String(path.at(-1)))] as const),
+  );
+  expect(misspelt.length).toBeGreaterThan(50);
+  for (const [path, word] of misspelt) {
+    const copy = structuredClone(file) as Keyed;
+    let parent = copy;
+    for (const step of path.slice(0, -1)) parent = parent[step] as Keyed;
+    const key = path.at(-1)!;
+    const value = parent[key];
+    delete parent[key];
+    if (word !== null) parent[word] = value;
+    readOrRefuse(read, stringify(copy, { aliasDuplicateObjects: false }));
+  }
 });
