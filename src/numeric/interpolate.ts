@@ -29,3 +29,8 @@ export function intervalOf(x: Float64Array, place: number): number {
   }
   return low;
 }
+
+/** The cell that holds a place: largest i in [0, size - 2] with x[i] <= place; the last cell at and past the end. `x` ascending, two or more. */
+export function cellOf(x: Float64Array, place: number): number {
+  return Math.max(0, Math.min(intervalOf(x, place), x.length - 2));
+}

@@ -1,3 +1,4 @@
+import { surroundingsBetween } from '../loop/places.ts';
 import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import { bracketedRoot } from '../numeric/root.ts';
 import type { Road } from '../road/road.ts';
@@ -9,7 +10,7 @@ import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Demand, Stretch } from './findings.ts';
-import { quasiSteadySpeeds, surroundingsBetween } from './quasi-steady.ts';
+import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { setSpeedAlong } from './set-speed-along.ts';
 
 /** Beyond this a share says no more [1]. */

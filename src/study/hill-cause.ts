@@ -1,3 +1,4 @@
+import { surroundingsBetween } from '../loop/places.ts';
 import type { LoopPlan } from '../loop/plan.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { forceRange } from '../vehicle/drive-law.ts';
@@ -7,7 +8,6 @@ import type { Cause, None } from './findings.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
 import { has, type Limitation, without } from './limitations.ts';
-import { surroundingsBetween } from './quasi-steady.ts';
 import { setSpeedAlong } from './set-speed-along.ts';
 import { inKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
 

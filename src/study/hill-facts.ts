@@ -1,6 +1,7 @@
+import { cellOf } from '../numeric/interpolate.ts';
 import { meanGradeSd } from '../road/error-scales.ts';
+import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
-import { knotBefore, valueAt } from './along-road.ts';
 import type { Demand, Hill } from './findings.ts';
 import type { HillStretch } from './hill-stretches.ts';
 
@@ -11,7 +12,7 @@ export type HillFacts = Omit<Hill, 'outcomes'>;
 export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, number: number): HillFacts {
   const { from, to, until, kind } = stretch;
   const length = to - from;
-  let steepest = knotBefore(road, from);
+  let steepest = cellOf(road.distance, from);
   let extreme = steepest;
   for (let i = steepest; i < road.size && road.distance[i] <= to; i++) {
     if (road.distance[i] < from) continue;
@@ -25,7 +26,7 @@ export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, numb
     from,
     to,
     until,
-    meanGrade: (valueAt(road, road.elevation, to) - valueAt(road, road.elevation, from)) / length,
+    meanGrade: (valueAt(road, 'elevation', to) - valueAt(road, 'elevation', from)) / length,
     meanGradeSd: meanGradeSd(road, from, to),
     maxGrade: road.grade[steepest],
     share: demand.share[extreme],

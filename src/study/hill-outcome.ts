@@ -1,7 +1,7 @@
 import { nearestCheckpoint, replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
+import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
-import { knotBefore, valueAt } from './along-road.ts';
 import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
 import { causeOnHill, type HillEvents, metAnyLimit } from './hill-cause.ts';
 import type { HillFacts } from './hill-facts.ts';
@@ -107,7 +107,7 @@ export function seriesOver(
   recovers = true,
 ): { series: FullSeries; whole: boolean; shownFrom: number } {
   const { road } = plan;
-  const setSpeed = demand.setSpeed[knotBefore(road, hill.to)];
+  const setSpeed = demand.setSpeed[cellOf(road.distance, hill.to)];
   const from = Math.max(0, hill.from - LEAD * setSpeed);
   const start = nearestCheckpoint(result, from);
   const over = (behind: number) => {
@@ -132,8 +132,8 @@ function predict(
 ): Figure {
   const { road, vehicle, rider } = plan;
   const locked = plan.controller.kind === 'locked';
-  const a = knotBefore(road, hill.from);
-  const b = Math.min(knotBefore(road, hill.until) + 1, road.size - 1);
+  const a = cellOf(road.distance, hill.from);
+  const b = Math.min(cellOf(road.distance, hill.until) + 1, road.size - 1);
   let out = locked;
   for (let i = a; i <= b && !out; i++) out = Math.abs(demand.share[i]) > 1;
   if (!out) return { none: 'the demand stays in range: an ideal hold loses nothing here' };
@@ -185,7 +185,8 @@ function explainOutcome(
   const { window, excess } = shown;
   const { cause, why } = causeOnHill(plan, hill, window, events, band, excess);
   if (typeof cause !== 'string' || !leversHelp(cause)) return { cause, why, wouldHold: [] };
-  const brakePower = valueAt(road, demand.brakePower, hill.shareAt);
+  const speed = demand.setSpeed[cellOf(road.distance, hill.shareAt)];
+  const brakePower = (hill.availableForce - hill.requiredForce) * speed;
   return { cause, why, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
 }
 

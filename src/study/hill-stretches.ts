@@ -1,6 +1,7 @@
 import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
-import { knotBefore, valueAt } from './along-road.ts';
+import { cellOf } from '../numeric/interpolate.ts';
+import { valueAt } from '../road/lookup.ts';
 import type { Demand, HillKind, Replayed, Stretch } from './findings.ts';
 
 /** Gaps shorter than this are bridged [s at the set speed]. */
@@ -63,7 +64,7 @@ function answerable(road: Road, demand: Demand, parts: readonly Part[]): HillStr
   const hills: { part: Part; until: number }[] = [];
   for (const part of parts) {
     const last = hills.at(-1);
-    const aftermath = AFTERMATH * demand.setSpeed[knotBefore(road, part.to)];
+    const aftermath = AFTERMATH * demand.setSpeed[cellOf(road.distance, part.to)];
     const overshoot =
       last !== undefined &&
       part.nature === 0 &&
@@ -108,7 +109,7 @@ function joinRuns(road: Road, demand: Demand, runs: Stretch[]): Stretch[] {
   const joined: { from: number; to: number }[] = [];
   for (const run of runs.sort((a, b) => a.from - b.from)) {
     const last = joined.at(-1);
-    const gap = BRIDGED * demand.setSpeed[knotBefore(road, run.from)];
+    const gap = BRIDGED * demand.setSpeed[cellOf(road.distance, run.from)];
     if (last !== undefined && run.from <= last.to + gap) last.to = Math.max(last.to, Math.min(run.to, end));
     else joined.push({ from: run.from, to: Math.min(run.to, end) });
   }
@@ -118,7 +119,7 @@ function joinRuns(road: Road, demand: Demand, runs: Stretch[]): Stretch[] {
 /** Parts a run between demands of opposite sign, and parts off what lies more than the aftermath away from any. */
 function splitByNature(road: Road, demand: Demand, run: Stretch): Part[] {
   const cores: Part[] = [];
-  for (let i = knotBefore(road, run.from); i + 1 < road.size && road.distance[i] < run.to; i++) {
+  for (let i = cellOf(road.distance, run.from); i + 1 < road.size && road.distance[i] < run.to; i++) {
     const nature = demand.share[i] > 1 ? 1 : demand.share[i] < -1 ? -1 : 0;
     if (nature === 0 || road.distance[i] < run.from) continue;
     const last = cores.at(-1);
@@ -126,7 +127,7 @@ function splitByNature(road: Road, demand: Demand, run: Stretch): Part[] {
     else cores.push({ from: road.distance[i], to: road.distance[i], nature });
   }
   if (cores.length === 0) return [{ ...run, nature: 0 }];
-  const reach = AFTERMATH * demand.setSpeed[knotBefore(road, run.from)];
+  const reach = AFTERMATH * demand.setSpeed[cellOf(road.distance, run.from)];
   const parts: Part[] = [];
   const first = cores[0];
   const lead = Math.max(run.from, first.from - reach);
@@ -148,8 +149,8 @@ function splitByNature(road: Road, demand: Demand, run: Stretch): Part[] {
 /** Crest (behind a climb) or foot (behind a descent) between two places. */
 function turningPlace(road: Road, from: number, to: number, nature: number): number {
   let best = from;
-  let height = nature * valueAt(road, road.elevation, from);
-  for (let i = knotBefore(road, from) + 1; i < road.size && road.distance[i] <= to; i++) {
+  let height = nature * valueAt(road, 'elevation', from);
+  for (let i = cellOf(road.distance, from) + 1; i < road.size && road.distance[i] <= to; i++) {
     if (nature * road.elevation[i] <= height) continue;
     height = nature * road.elevation[i];
     best = road.distance[i];
@@ -165,9 +166,9 @@ function growToHill(road: Road, parts: Part[]): Part[] {
     if (sign === 0) return part;
     const least = Math.max(k > 0 ? parts[k - 1].to : 0, part.from - FARTHEST);
     const most = Math.min(k + 1 < parts.length ? parts[k + 1].from : end, part.to + FARTHEST);
-    let i = knotBefore(road, part.from);
+    let i = cellOf(road.distance, part.from);
     while (i >= 0 && road.distance[i] > least && sign * road.grade[i] > STILL_A_HILL) i--;
-    let j = knotBefore(road, part.to) + 1;
+    let j = cellOf(road.distance, part.to) + 1;
     while (j < road.size && road.distance[j] < most && sign * road.grade[j] > STILL_A_HILL) j++;
     return {
       nature: part.nature,
@@ -190,7 +191,7 @@ function joinTouching(parts: Part[]): Part[] {
 }
 
 function signOfGrade(road: Road, { from, to }: Stretch): -1 | 0 | 1 {
-  const rise = valueAt(road, road.elevation, to) - valueAt(road, road.elevation, from);
+  const rise = valueAt(road, 'elevation', to) - valueAt(road, 'elevation', from);
   const mean = rise / (to - from);
   return mean > STILL_A_HILL ? 1 : mean < -STILL_A_HILL ? -1 : 0;
 }

@@ -1,7 +1,7 @@
 import type { LoopPlan, RunStatus } from '../loop/plan.ts';
 import { runLoop } from '../loop/run-loop.ts';
+import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import { knotBefore } from './along-road.ts';
 import type { Demand, Hill, Stretch } from './findings.ts';
 import { windowPlan } from './road-window.ts';
 
@@ -32,7 +32,7 @@ export function hillWindow(hill: Pick<Hill, 'from' | 'until'>, road: Road, deman
   const most = Math.max(0, hill.from - NEAREST_START);
   let start = least;
   let share = Number.POSITIVE_INFINITY;
-  for (let i = knotBefore(road, least); i < road.size && road.distance[i] <= most; i++) {
+  for (let i = cellOf(road.distance, least); i < road.size && road.distance[i] <= most; i++) {
     if (road.distance[i] < least || !(Math.abs(demand.share[i]) < share)) continue;
     share = Math.abs(demand.share[i]);
     start = road.distance[i];

@@ -1,3 +1,4 @@
+import { surroundingsBetween } from '../loop/places.ts';
 import type { Road } from '../road/road.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { forceRange, wheelForce } from '../vehicle/drive-law.ts';
@@ -103,16 +104,3 @@ function oneStep(
 
 const braked = (speed: number, target: number, above: number | null): number =>
   above === null ? speed : Math.min(speed, target + above);
-
-/** What the vehicle meets a share of the way from knot i to the next. */
-export function surroundingsBetween(road: Road, i: number, share: number): Surroundings {
-  const between = (column: Float64Array): number =>
-    share === 0 ? column[i] : column[i] + share * (column[i + 1] - column[i]);
-  return {
-    grade: between(road.grade),
-    headwind: between(road.headwind),
-    crosswind: between(road.crosswind),
-    airDensity: between(road.airDensity),
-    airTemperature: between(road.airTemperature),
-  };
-}

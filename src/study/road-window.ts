@@ -1,6 +1,6 @@
 import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
+import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import { knotBefore } from './along-road.ts';
 import { setSpeedAlong } from './set-speed-along.ts';
 
 /**
@@ -10,7 +10,7 @@ import { setSpeedAlong } from './set-speed-along.ts';
  * @param to horizontal distance [m], > from
  */
 export function cutRoad(road: Road, from: number, to: number): Road {
-  const first = knotBefore(road, from);
+  const first = cellOf(road.distance, from);
   const start = Math.max(from, road.distance[0]);
   const end = Math.min(to, road.distance[road.size - 1]);
   let last = first + 1;

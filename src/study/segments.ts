@@ -1,6 +1,7 @@
 import type { BinRecord } from '../loop/result.ts';
+import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
-import { meanAlong, valueAt } from './along-road.ts';
+import { meanAlong } from './along-road.ts';
 import type { Figure, Replayed, RoadSegment, Segment, SegmentRun, Stretch } from './findings.ts';
 
 /**
@@ -29,7 +30,7 @@ export function describeSegments(road: Road, stretches: readonly Stretch[]): Roa
     number: k + 1,
     from,
     to,
-    meanGrade: (valueAt(road, road.elevation, to) - valueAt(road, road.elevation, from)) / (to - from),
+    meanGrade: (valueAt(road, 'elevation', to) - valueAt(road, 'elevation', from)) / (to - from),
     meanHeadwind: meanAlong(road, road.headwind, from, to),
   }));
 }

@@ -1,6 +1,6 @@
 import type { HoldPlan } from '../loop/plan.ts';
+import { distanceAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
-import { valueAt } from './along-road.ts';
 import type { Stretch } from './findings.ts';
 
 /** Rate at which a change of set speed is granted to be followed when neither says its own [m/s2]. */
@@ -48,7 +48,7 @@ export function setSpeedAlong(road: Road, hold: HoldPlan, scaleError: number): S
       'distance' in change.at
         ? change.at.distance
         : road.along === 'time'
-          ? timedPlace(road, change.at.time)
+          ? distanceAt(road, change.at.time)
           : place + (change.at.time - time) * speed;
     time += speed > 0 ? (at - place) / speed : 0;
     place = at;
@@ -63,9 +63,4 @@ export function setSpeedAlong(road: Road, hold: HoldPlan, scaleError: number): S
     setSpeed[i] = k < 0 ? hold.setSpeed * toTrue : changes[k].setSpeed;
   }
   return { setSpeed, startSpeed, changes, settling };
-}
-
-/** Nominal distance of a time on a road along time. */
-function timedPlace(road: Road, time: number): number {
-  return valueAt({ ...road, distance: road.station }, road.distance, time);
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { interpolateLinear, intervalOf } from '../../src/numeric/interpolate.ts';
+import { cellOf, interpolateLinear, intervalOf } from '../../src/numeric/interpolate.ts';
 import { expectClose } from '../compare.ts';
 import { randomness } from '../road/synthetic-road.ts';
 
@@ -31,5 +31,6 @@ describe('linear interpolation', () => {
       Array.from(interpolateLinear(Float64Array.of(4), Float64Array.of(7), Float64Array.of(1, 4, 9))),
     ).toEqual([7, 7, 7]);
     expect([-1, 0, 0.9, 1, 2, 9].map((place) => intervalOf(x, place))).toEqual([0, 0, 0, 2, 3, 3]);
+    expect([-1, 0, 0.9, 1, 2, 9].map((place) => cellOf(x, place))).toEqual([0, 0, 0, 2, 2, 2]);
   });
 });

@@ -1,10 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { compareCandidates } from '../../src/study/compare-candidates.ts';
-import { energyAccounts } from '../../src/study/energy-account.ts';
 import { FIGURES } from '../../src/study/figure-table.ts';
 import type { Demand } from '../../src/study/findings.ts';
 import { chooseBins } from '../../src/study/measure-figure.ts';
-import { expectClose } from '../compare.ts';
 import { recordOf } from './record-of.ts';
 import { roadOf } from './road-of.ts';
 import { BAND, oneHill, STIFF, study } from './scene.ts';
@@ -57,14 +55,5 @@ describe('candidates side by side', () => {
     const pi = rows[1]!;
     expect(pi.holdable.rms_error_kmh as number).toBeLessThan(pi.all.rms_error_kmh as number);
     expect(pi.holdable.within_band_pct).toBe(100);
-  });
-
-  it('have accounts of energy that close, the climb being m g h', () => {
-    const [, pi] = energyAccounts(replayed);
-    // 800 m at 8 % with 215 kg.
-    expectClose(pi!.climb, 215 * 9.80665 * 64, 1);
-    expectClose(pi!.open, 0, 1e-6 * pi!.drive);
-    expect(pi!.battery).toHaveProperty('none');
-    expect(pi!.drive).toBeGreaterThan(pi!.climb);
   });
 });

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { replay } from '../../src/loop/replay.ts';
-import { valueAt } from '../../src/study/along-road.ts';
+import { valueAt } from '../../src/road/lookup.ts';
 import { cutRoad, windowPlan } from '../../src/study/road-window.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
@@ -21,12 +21,12 @@ describe('a road cut out of another', () => {
     expect(part.station[0]).toBe(0);
     expectClose(part.distance.at(-1)!, 1911 - from, 1e-9);
     for (const x of [0, 100.5, 266, 300, 866.5, 1000, 1177]) {
-      expectClose(valueAt(part, part.grade, x), valueAt(ROAD, ROAD.grade, from + x), 1e-12, `grade at ${x}`);
-      expectClose(valueAt(part, part.headwind, x), valueAt(ROAD, ROAD.headwind, from + x), 1e-12);
-      expectClose(valueAt(part, part.elevation, x), valueAt(ROAD, ROAD.elevation, from + x), 1e-9);
+      expectClose(valueAt(part, 'grade', x), valueAt(ROAD, 'grade', from + x), 1e-12, `grade at ${x}`);
+      expectClose(valueAt(part, 'headwind', x), valueAt(ROAD, 'headwind', from + x), 1e-12);
+      expectClose(valueAt(part, 'elevation', x), valueAt(ROAD, 'elevation', from + x), 1e-9);
       expectClose(
-        valueAt(part, part.station, x),
-        valueAt(ROAD, ROAD.station, from + x) - valueAt(ROAD, ROAD.station, from),
+        valueAt(part, 'station', x),
+        valueAt(ROAD, 'station', from + x) - valueAt(ROAD, 'station', from),
         1e-9,
       );
     }

@@ -1,5 +1,5 @@
 import { tickStep } from 'd3';
-import { knotBefore } from '../../study/along-road.ts';
+import { cellOf } from '../../numeric/interpolate.ts';
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { binCurve } from '../model/bin-curves.ts';
@@ -144,7 +144,7 @@ function places(view: View, place: Placed, { paint }: Canvas): Html {
     taken.push([left, top]);
     return html`<circle cx="${tenth(x)}" cy="${tenth(y)}" r="2.5" fill="${paint.ink}"/>${label(left, top, text, { anchor: 'middle', size: 11, bold: true, fill: paint.ink })}`;
   };
-  return html`${mark(0, 'start')}${mark(road.size - 1, 'end')}${hills.map((hill) => mark(knotBefore(road, (hill.from + hill.to) / 2), String(hill.number)))}`;
+  return html`${mark(0, 'start')}${mark(road.size - 1, 'end')}${hills.map((hill) => mark(cellOf(road.distance, (hill.from + hill.to) / 2), String(hill.number)))}`;
 }
 
 function northArrow({ paint }: Canvas, box: Box): Html {

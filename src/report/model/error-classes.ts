@@ -1,4 +1,4 @@
-import { bandText, trimmed } from '../quantity.ts';
+import { trimmed } from '../quantity.ts';
 import type { View } from './view.ts';
 
 /** Signed error in seven classes by multiples of the band: beyond 3, 1 to 3, within, and the same above. */
@@ -32,6 +32,3 @@ export function errorClasses(view: View): readonly ErrorClass[] {
     { index: 6, words: `more than ${at(3)} ${unit} too fast` },
   ];
 }
-
-/** `within ±2 km/h`: classes 2 to 4 together. */
-export const bandWords = (view: View): string => `within ${bandText(view.result.band, view.speed)}`;
