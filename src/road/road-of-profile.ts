@@ -2,6 +2,7 @@ import { InputError } from '../problems/input-error.ts';
 import type { Profile, ProfilePiece } from '../track/track.ts';
 import { airAlong } from './air.ts';
 import { integrateSlope } from './along-slope.ts';
+import { checkElevation, checkKnots } from './check-road.ts';
 import type { ProfileOptions, ShelteredStretch } from './options.ts';
 import { wrapTurn } from './plan.ts';
 import type { Road } from './road.ts';
@@ -28,7 +29,7 @@ interface Columns {
  * keeps its grades over time, and its distance is nominal: time times `nominalSpeed`.
  *
  * @throws InputError `profile-empty`, `vertical-curve-too-long` (curves of neighbouring changes would overlap),
- *   `wind-needs-heading` (a piece has neither heading nor headwind)
+ *   `wind-needs-heading` (a piece has neither heading nor headwind), `road-too-fine`, `elevation-out-of-range` (at its piece)
  */
 export function roadOfProfile(given: Profile, options: ProfileOptions): Road {
   if (given.pieces.length === 0)
@@ -40,6 +41,8 @@ export function roadOfProfile(given: Profile, options: ProfileOptions): Road {
     });
   const speed = given.by === 'time' ? options.nominalSpeed : 1;
   const extent = given.pieces.reduce((sum, piece) => sum + piece.extent, 0) * speed;
+  const drives = options.direction === 'both' ? 2 : 1;
+  checkKnots(drives * (extent / options.grid + 2 * given.pieces.length), drives * extent);
   const back = options.direction === 'back';
   const profile = back ? turnedRound(given, speed) : given;
   const shelter = back ? options.shelter.map((part) => turnedStretch(part, extent)) : options.shelter;
@@ -51,6 +54,10 @@ export function roadOfProfile(given: Profile, options: ProfileOptions): Road {
   const distance = at.map((x) => x * speed);
   const grade = Float64Array.from(columns.grade);
   const line = integrateSlope(distance, grade, profile.startElevation);
+  checkElevation(distance, line.elevation, (i) => {
+    const piece = columns.piece[i]!;
+    return { key: `track.profile.${back ? given.pieces.length - 1 - piece : piece}` };
+  });
   const pieceAt = (i: number): ProfilePiece => profile.pieces[columns.piece[i]!]!;
   const known = profile.pieces.every((piece) => piece.heading !== null);
   const heading = known ? at.map((_, i) => wrapTurn(pieceAt(i).heading ?? 0)) : null;

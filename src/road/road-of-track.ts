@@ -2,6 +2,7 @@ import { interpolateLinear } from '../numeric/interpolate.ts';
 import type { Track } from '../track/track.ts';
 import { airAlong } from './air.ts';
 import { integrateSlope } from './along-slope.ts';
+import { checkElevation, checkKnots } from './check-road.ts';
 import { dataWarnings } from './data-warnings.ts';
 import { type DrivenTrack, driveTrack } from './driven-track.ts';
 import { EXACT_PLAN_WAVELENGTH, SOURCE_CLASSES } from './elevation-source.ts';
@@ -24,19 +25,23 @@ import { windMet } from './wind.ts';
  *
  * @param track points after the reader's repairs: finite values, distance strictly increasing from 0
  * @param options values in range: grid > 0, from < to in masks and shelter
- * @throws InputError `road-too-short`, `no-elevation`, `too-few-elevations`, `wind-needs-heading`
+ * @throws InputError `road-too-short`, `no-elevation`, `too-few-elevations`, `wind-needs-heading`, `road-too-fine`,
+ *   `elevation-out-of-range`
  */
 export function roadOfTrack(track: Track, options: RoadOptions): Road {
   const driven = driveTrack(track, options);
   const { grid } = options;
   const length = driven.distance[driven.size - 1]!;
   const cells = Math.max(1, Math.ceil(length / grid - 1e-6));
+  const drives = options.direction === 'both' ? 2 : 1;
+  checkKnots(drives * (cells + 1), drives * length);
   const uniform = Float64Array.from({ length: Math.max(cells + 1, 4) }, (_, i) => i * grid);
   const distance = Float64Array.from({ length: cells + 1 }, (_, i) => (i === cells ? length : i * grid));
 
   const along = gradeOfTrack(driven, options, uniform);
   const grade = interpolateLinear(uniform, along.grade, distance);
   const { station, elevation } = integrateSlope(distance, grade, along.startElevation);
+  checkElevation(distance, elevation, () => ({ key: 'track' }));
   const plan = planOf(driven, options, uniform.length);
   const heading =
     plan === null ? null : interpolateLinear(uniform, unwind(plan.heading), distance).map(wrapTurn);

@@ -1,6 +1,6 @@
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { profileOf, roadOptionsOf, trackChoiceOf } from '../case/road-of.ts';
-import { placeOf } from '../case/yaml-source.ts';
+import { type Path, placeOf } from '../case/yaml-source.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
 import type { Road } from '../road/road.ts';
@@ -57,24 +57,35 @@ export function roadOf({ file, read, overrides = [] }: RoadRequest): RoadResult 
  */
 export function roadOfCase(document: CaseDocument, log: InputLog, file: string, namedAt?: Place): Road {
   const profile = profileOf(document);
-  const at = placeOf(document.source, ['track']);
+  const inCase = ({ key = 'track' }: Place): Place => placeOf(document.source, stepsOf(key));
   if (profile !== null)
-    return placing(at, () => roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file))));
+    return placing(inCase, () => roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file))));
   const name = document.trackFile ?? '';
   const bytes = log.read(name, namedAt);
   const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
   const options = roadOptionsOf(document, track.name ?? caseNameOf(name));
-  return placing({ file: name }, () => roadOfTrack(track, options));
+  // What a key asks of the track has its place in the case or the option, what the track is in its file.
+  const place = (found: Place): Place => {
+    const inFile = { file: name, ...found };
+    if (found.key === undefined || found.key === 'track') return inFile;
+    const asked = inCase(found);
+    return asked.file === name ? inFile : asked;
+  };
+  return placing(place, () => roadOfTrack(track, options));
 }
 
-/** Makes a road; what is refused without a file has its place there. */
-function placing(place: Place, make: () => Road): Road {
+/** `track.profile.3` as a path. */
+const stepsOf = (key: string): Path =>
+  key.split('.').map((step) => (/^\d+$/.test(step) ? Number(step) : step));
+
+/** Makes a road; what is refused without a file gets its place by `placed`. */
+function placing(placed: (found: Place) => Place, make: () => Road): Road {
   try {
     return make();
   } catch (error) {
     if (!(error instanceof InputError)) throw error;
     const [first, ...others] = error.problems.map((problem) =>
-      problem.place.file === undefined ? { ...problem, place: { ...place, ...problem.place } } : problem,
+      problem.place.file === undefined ? { ...problem, place: placed(problem.place) } : problem,
     );
     throw first === undefined ? error : new InputError(first, ...others);
   }

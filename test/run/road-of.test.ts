@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import { InputError } from '../../src/problems/input-error.ts';
 import { roadOf } from '../../src/run/road-of.ts';
 import { expectClose } from '../compare.ts';
 
@@ -59,4 +60,57 @@ test('a .json is a track when it says its GeoJSON type, else a case', () => {
   };
   const { road } = roadOf({ file: 'case.json', read: () => bytes(JSON.stringify(written)) });
   expectClose(road.distance[road.size - 1]!, 500, 1e-9, 'length [m]');
+});
+
+/** Line and message of what is refused. */
+function refusal(file: string, files: Readonly<Record<string, string>>, overrides: readonly string[] = []) {
+  try {
+    roadOf({ file, read: (name) => bytes(files[name] ?? ''), overrides });
+  } catch (error) {
+    expect(error).toBeInstanceOf(InputError);
+    return error as InputError;
+  }
+  return expect.unreachable();
+}
+const CASE_OF_PROFILE = (track: string): string => `track: ${track}
+vehicle: nowhere.yaml
+hold: {set_speed_kmh: 60}
+candidates: [{kind: locked}]
+`;
+
+test('a written road that climbs out of the range of elevations is refused at the piece', () => {
+  // 60 % over 20 km: 12 km up. The first piece is harmless.
+  const text = CASE_OF_PROFILE(`
+  profile:
+    - {length_m: 1000, grade_pct: 0}
+    - {length_m: 20000, grade_pct: 60}`);
+  const there = refusal('case.yaml', { 'case.yaml': text });
+  expect(there.message).toMatch(
+    /^case\.yaml:4:7: track\.profile\.1: the grades lead to no elevation of a road at km 16\.\d\d \(found 90\d\d m; allowed: -500 to 9000 m\)$/,
+  );
+  // Driven back from up there, the start is the first place outside.
+  const back = refusal('case.yaml', { 'case.yaml': text }, ['track.direction=back']);
+  expect(back.message).toMatch(/^case\.yaml:4:7: track\.profile\.1: .* at km 0\.00 \(found 12000 m/);
+});
+
+test('a track whose grades climb out of the range of elevations is refused in its file', () => {
+  const rows = Array.from({ length: 201 }, (_, i) => `${100 * i},55`).join('\n');
+  expect(refusal('steep.csv', { 'steep.csv': `distance_m,grade_pct\n${rows}\n` }).message).toMatch(
+    /^steep\.csv: track: the grades lead to no elevation of a road at km 16\.\d\d \(found 90\d\d m; allowed: -500 to 9000 m\)$/,
+  );
+});
+
+test('a road of too many knots is refused at once, at the grid', () => {
+  const pieces = Array.from({ length: 20 }, () => '{length_m: 1000000, grade_pct: 0}').join(', ');
+  const text = `road: {grid_m: 0.5}\n${CASE_OF_PROFILE(`{profile: [${pieces}]}`)}`;
+  expect(refusal('case.yaml', { 'case.yaml': text }).message).toMatch(
+    /^case\.yaml:1:16: road\.grid_m: the road of 20000\.0 km would have too many knots \(found about 400000\d\d knots; allowed: at most 2000000 knots/,
+  );
+  const byTime = text.replaceAll('length_m: 1000000', 'for_s: 60000');
+  expect(refusal('case.yaml', { 'case.yaml': byTime }).code).toBe('road-too-fine');
+  // A thousand kilometres at half a metre is just too much there and back.
+  const long = Array.from({ length: 1001 }, (_, i) => `${1000 * i},${i % 7}`).join('\n');
+  const track = { 'long.csv': `distance_m,elevation_m\n${long}\n` };
+  const fine = refusal('long.csv', track, ['road.grid_m=0.5', 'track.direction=both']);
+  expect(fine.message).toMatch(/^--set road\.grid_m=0\.5: road\.grid_m: .*found about 4000002 knots/);
 });
