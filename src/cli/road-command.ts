@@ -1,4 +1,5 @@
 import { join } from 'node:path';
+import { medianOf } from '../numeric/running-median.ts';
 import { roadFiles } from '../report/data/data-files.ts';
 import { roadJson } from '../report/data/road-json.ts';
 import { roadPicture } from '../report/road-picture.ts';
@@ -51,10 +52,11 @@ function tellRoad({ road, defaults }: RoadResult): void {
       `Elevation: ${source}${assumed}, smoothed over ${wavelength.toFixed(0)} m, noise ${residualSd.toFixed(2)} m; hills shorter than ${shortestHill.toFixed(0)} m lose more than a tenth of their height`,
     );
   }
-  const spread = Array.from(road.gradeSd).sort((a, b) => a - b);
-  const median = spread[Math.floor(spread.length / 2)] ?? 0;
+  const most = road.gradeSd.reduce((a, b) => Math.max(a, b), 0);
   say(
-    `Grade: one standard deviation ${toPct(median).toFixed(2)} % at the median, ${toPct(spread.at(-1) ?? 0).toFixed(2)} % at most`,
+    most === 0
+      ? 'Grade: as given, without uncertainty'
+      : `Grade: one standard deviation ${toPct(medianOf(road.gradeSd)).toFixed(2)} % at the median, ${toPct(most).toFixed(2)} % at most`,
   );
   tellRepairs(road.repairs);
 }

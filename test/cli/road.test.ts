@@ -31,6 +31,7 @@ test('a bare track becomes disturbances, and people are told of repairs and unce
   expect([status, stdout]).toEqual([0, '']);
   expect(stderr).toContain('gnss (assumed)');
   expect(stderr).toContain('1 doubled point');
+  expect(stderr).toMatch(/Ramp: 3\.00 km, 301 points of the track, \d+ knots/);
   expect(stderr).toMatch(/Grade: one standard deviation [\d.]+ %/);
   expect(Object.keys(filesBelow(join(here, 'out/ramp'))).sort()).toEqual([
     'disturbance.csv',
@@ -49,7 +50,22 @@ test('a bare track becomes disturbances, and people are told of repairs and unce
 test('--json prints the road as road.json holds it', () => {
   const { stdout } = ridgehold(here, ['road', 'ramp.gpx', '--json', '--quiet', '-o', 'json']);
   expect(stdout).toBe(readFileSync(join(here, 'json/road.json'), 'utf8'));
-  expect(JSON.parse(stdout).route).toMatchObject({ repairs: 1, name: 'Ramp' });
+  const road = JSON.parse(stdout);
+  expect(road.route).toMatchObject({ repairs: 1, name: 'Ramp', points: 301 });
+  expect(road.files).toContain('road.svg');
+  const half = ridgehold(here, [
+    'road',
+    'ramp.gpx',
+    '--json',
+    '--quiet',
+    '--set',
+    'road.grid_m=20',
+    '-o',
+    'half',
+  ]);
+  const coarse = JSON.parse(half.stdout).route;
+  expect(coarse.points).toBe(301);
+  expectClose(coarse.knots, 151, 1, 'knots every 20 m over 3 km');
 });
 
 test('the road of a case is the one that a run writes', () => {

@@ -23,6 +23,7 @@ interface Summary {
   readonly schema_version: string;
   readonly inputs: readonly { name: string; sha256: string; bytes: number }[];
   readonly route: { length_m: number; climb_m: number; points: number; repairs: number };
+  readonly spread: { roads: number; seed: number };
   readonly candidates: readonly Record<string, number | string>[];
   readonly hills: readonly Record<string, number | string | null>[];
   readonly requirements: readonly Record<string, number | string | null>[];
@@ -77,7 +78,8 @@ test('the summary names its inputs with their SHA-256', () => {
 
 test('the summary has the figures that checks read', () => {
   expect(summary.status).toBe('ok');
-  expect(summary.route).toMatchObject({ repairs: 0, points: expect.any(Number) });
+  expect(summary.route).toMatchObject({ repairs: 0, points: expect.any(Number), knots: expect.any(Number) });
+  expect(summary.spread).toMatchObject({ roads: expect.any(Number), seed: expect.any(Number) });
   expectClose(summary.route.length_m, 1600, 0.01, 'length [m]');
   expectClose(summary.route.climb_m, 9.6, 0.01, 'climb [m]');
   expect(summary.candidates.map(({ name }) => name)).toEqual(['locked', 'pi-20s']);

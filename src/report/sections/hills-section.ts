@@ -86,11 +86,12 @@ function facts(view: View, hill: Hill): string {
   return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
 
-/** Mean grade with its standard deviation, where it has one: two significant digits below 0.1 %, so that it is never a bare zero. */
+/** Mean grade with its standard deviation, where it has one: two significant digits below 0.1 %, so that it is never a bare zero; finer than 0.01 % no road is known. */
 function gradeWords(hill: Hill): string {
-  const sd = toPct(hill.meanGradeSd);
-  if (!(sd > 0)) return gradeText(hill.meanGrade);
-  return `${gradeText(hill.meanGrade)} ±\u00a0${significant(sd, sd < 0.1 ? 2 : 1)}\u00a0%`;
+  if (!(hill.meanGradeSd > 0)) return gradeText(hill.meanGrade);
+  const sd = Math.max(0.01, toPct(hill.meanGradeSd));
+  const fine = sd < 0.1;
+  return `${gradeText(hill.meanGrade, fine ? 2 : 1)} ±\u00a0${significant(sd, fine ? 2 : 1)}\u00a0%`;
 }
 
 interface Run {
