@@ -23,6 +23,14 @@ export function signed(value: number, digits = 0): string {
   return value > 0 && /[1-9]/.test(text) ? `+${text}` : text;
 }
 
+/** As `fixed`, with up to three digits more where fewer would make it look equal to another number. */
+export function fixedApart(value: number, others: readonly number[], digits = 0): string {
+  const alike = (n: number) => others.some((other) => other !== value && fixed(other, n) === fixed(value, n));
+  let n = digits;
+  while (n < digits + 3 && alike(n)) n++;
+  return fixed(value, n);
+}
+
 /** Digits after the point that leave `figures` significant digits, at most 6. */
 export function digitsFor(value: number, figures: number): number {
   let size = Math.abs(value);

@@ -1,6 +1,5 @@
 import type { Cause, Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
-import { fromKmh } from '../../units/convert.ts';
 import {
   bandText,
   changeText,
@@ -13,9 +12,12 @@ import {
   withUnit,
 } from '../quantity.ts';
 import { figureText } from './figure-text.ts';
+import { hillNoun } from './hill-words.ts';
+import { settledRange } from './settled-range.ts';
+import { VERDICTS, type Verdict } from './verdicts.ts';
 import type { CandidateView, View } from './view.ts';
 
-export type Standing = 'met' | 'not met' | 'too close to call' | 'none asked' | 'incomplete';
+export type Standing = Verdict | 'none asked' | 'incomplete';
 
 export interface DesignStanding {
   readonly name: string;
@@ -62,7 +64,12 @@ export const statusWords = (candidate: CandidateView): string =>
     ? STATUS_WORDS.completed
     : `${STATUS_WORDS[candidate.result.status]} at ${placeText(candidate.result.endDistance)}`;
 
-const VERDICT_COST = { met: 0, 'too close to call': 1, 'not met': 3 } as const;
+const VERDICT_COST: Readonly<Record<Verdict, number>> = {
+  met: 0,
+  'not judged': 1,
+  'too close to call': 1,
+  'not met': 3,
+};
 
 function findingsOf(view: View, name: string): readonly RequirementFinding[] {
   return view.result.requirements.filter((finding) => finding.candidate === name);
@@ -99,10 +106,11 @@ function withinClause(view: View, candidate: CandidateView): string {
   const asked = findingsOf(view, candidate.name).find(
     ({ requirement }) => requirement.figure === 'within_band_pct' && requirement.where === 'holdable',
   );
-  const figure = asked?.measured ?? candidate.figures.within_band_pct;
+  const judged = asked !== undefined && !isNone(asked.measured);
+  const figure = judged ? asked.measured : candidate.figures.within_band_pct;
   if (figure === undefined || isNone(figure)) return `keeps ${target} on no part of the road`;
   const band = bandText(asked?.requirement.band ?? result.band, speed);
-  const place = asked === undefined ? 'of the time' : 'of the time on the holdable road';
+  const place = judged ? 'of the time on the holdable road' : 'of the time';
   return `holds ${target} within ${band} for ${percent(figure, speed)} ${place}`;
 }
 
@@ -135,11 +143,13 @@ function worstHill(view: View, name: string): Defeat | null {
 function hillClause(view: View, design: CandidateView): string {
   const worst = worstHill(view, design.name);
   if (worst === null) return 'no hill takes it out of its band';
+  // Beyond its range the drive cannot hold, whatever the design; within it the design alone lets the speed go.
+  const verdict = Math.abs(worst.hill.share) > 1 ? 'defeats it' : 'takes it out of its band';
   const { hill, outcome } = worst;
   const verb = outcome.speedChange < 0 ? 'loses' : 'gains';
   const amount = changeText(Math.abs(outcome.speedChange), view.speed).replace('+', '');
   const why = typeof outcome.cause === 'string' ? ` because ${CAUSE_WORDS[outcome.cause]}` : '';
-  return `hill ${hill.number} (${stretchText(hill.from, hill.to)}, mean ${gradeText(hill.meanGrade)}) defeats it: it ${verb} ${amount}${why}`;
+  return `${hillNoun(hill)} ${hill.number} (${stretchText(hill.from, hill.to)}, mean grade ${gradeText(hill.meanGrade)}) ${verdict}: it ${verb} ${amount}${why}`;
 }
 
 function lockedClause(view: View, alone: boolean): string | null {
@@ -147,34 +157,32 @@ function lockedClause(view: View, alone: boolean): string | null {
   if (locked === undefined) return null;
   const subject = alone ? `The throttle locked in place` : 'a throttle locked in place';
   if (locked.result.status !== 'completed') return `${subject} ${statusWords(locked)}`;
-  const [low, high] = [locked.figures.worst_low_kmh, locked.figures.worst_high_kmh];
-  if (typeof low !== 'number' || typeof high !== 'number') return `${subject} reached the end`;
-  return `${subject} strays from ${distanceFrom(low, view)} below the set speed to ${distanceFrom(high, view)} above it`;
+  const range = settledRange(view, locked);
+  if (range === null) return `${subject} reached the end`;
+  return `${subject} strays from ${speedText(-range.low, view.speed, 0)} below the set speed to ${speedText(range.high, view.speed, 0)} above it`;
 }
+
+/** `both requirements`, `all 3 requirements`. */
+const allOf = (count: number): string =>
+  count === 1 ? 'its one requirement' : count === 2 ? 'both requirements' : `all ${count} requirements`;
 
 function requirementClause(findings: readonly RequirementFinding[]): { words: string; standing: Standing } {
   if (findings.length === 0) return { words: '', standing: 'none asked' };
-  const missed = findings.filter((one) => one.verdict === 'not met');
-  const close = findings.filter((one) => one.verdict === 'too close to call');
-  const ids = (some: readonly RequirementFinding[]) =>
-    [...new Set(some.map((one) => one.requirement.id))].join(', ');
-  if (missed.length > 0)
-    return {
-      words: `but misses ${missed.length} of ${findings.length} requirements (${ids(missed)})`,
-      standing: 'not met',
-    };
-  if (close.length > 0)
-    return {
-      words: `and misses no requirement, but ${ids(close)} ${close.length === 1 ? 'is' : 'are'} too close to call`,
-      standing: 'too close to call',
-    };
-  const all = findings.length === 1 ? 'its one requirement' : `all ${findings.length} requirements`;
-  return { words: `and meets ${all}`, standing: 'met' };
+  const standing = VERDICTS.find((verdict) => findings.some((one) => one.verdict === verdict))!;
+  const some = findings.filter((one) => one.verdict === standing);
+  const ids = [...new Set(some.map((one) => one.requirement.id))].join(', ');
+  const are = some.length === 1 ? 'is' : 'are';
+  switch (standing) {
+    case 'not met':
+      return { standing, words: `but misses ${some.length} of ${findings.length} requirements (${ids})` };
+    case 'too close to call':
+      return { standing, words: `and misses no requirement, but ${ids} ${are} too close to call` };
+    case 'not judged':
+      return { standing, words: `and misses no requirement, but ${ids} cannot be judged on this road` };
+    case 'met':
+      return { standing, words: `and meets ${allOf(findings.length)}` };
+  }
 }
-
-/** Size of an error of the table of figures [km/h], whole. */
-const distanceFrom = (errorKmh: number, view: View): string =>
-  speedText(fromKmh(Math.abs(errorKmh)), view.speed, 0);
 
 /** How a design stands against what was asked of it. */
 function designStanding(view: View, design: CandidateView): DesignStanding {
@@ -183,15 +191,17 @@ function designStanding(view: View, design: CandidateView): DesignStanding {
   if (design.result.status !== 'completed')
     return { name, standing: 'incomplete', words: statusWords(design) };
   const { standing } = requirementClause(findings);
-  const count = (verdict: RequirementFinding['verdict']) =>
-    findings.filter((one) => one.verdict === verdict).length;
-  const words = {
-    met: `all ${findings.length} met`,
-    'not met': `${count('not met')} of ${findings.length} not met`,
-    'too close to call': `${count('too close to call')} of ${findings.length} too close to call`,
-    'none asked': 'nothing asked',
-    incomplete: '',
-  }[standing];
+  if (standing === 'none asked') return { name, standing, words: 'nothing asked' };
+  const { length } = findings;
+  const count = findings.filter((one) => one.verdict === standing).length;
+  const words =
+    standing !== 'met'
+      ? `${count} of ${length} ${standing}`
+      : length === 1
+        ? 'its one met'
+        : length === 2
+          ? 'both met'
+          : `all ${length} met`;
   return { name, standing, words };
 }
 

@@ -21,10 +21,13 @@ export function controllerWords(setup: ControllerSetup, speed: SpeedUnit): strin
       ? 'locked at what holds the set speed on the level in still air'
       : `locked at ${withUnit(fixed(toPct(setup.throttle), 1), '%')}`;
   const perUnit = 1 / speed.of(1);
-  const gain = withUnit(significant(toPct(setup.kp) * perUnit, 3), `%/(${speed.name})`);
-  const integral = setup.ki > 0 ? `Ti ${withUnit(significant(setup.kp / setup.ki, 3), 's')}` : 'no integral';
+  const perSpeed = (gain: number, unit: string) => withUnit(significant(toPct(gain) * perUnit, 3), unit);
+  const gains =
+    setup.kp === 0
+      ? `I alone, Ki ${perSpeed(setup.ki, `% per ${speed.name} s`)}`
+      : `PI, Kp ${perSpeed(setup.kp, `% per ${speed.name}`)}, ${setup.ki > 0 ? `Ti ${withUnit(significant(setup.kp / setup.ki, 3), 's')}` : 'no integral'}`;
   const every = `every ${withUnit(fixed(setup.sample * 1000), 'ms')}`;
   const weight = `set-point weight ${significant(setup.setpointWeight, 2)}`;
   const design = setup.design === null ? '' : `. ${inReaderUnit(setup.design.words, speed)}`;
-  return `PI, Kp ${gain}, ${integral}, ${weight}, ${every}, ${antiWindupWords(setup.antiWindup)}${design}`;
+  return `${gains}, ${weight}, ${every}, ${antiWindupWords(setup.antiWindup)}${design}`;
 }

@@ -2,7 +2,16 @@ import { figureRow } from '../../study/figure-table.ts';
 import type { Figure } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
 import { fromKmh } from '../../units/convert.ts';
-import { digitsFor, fixed, NO_VALUE, type SpeedUnit, signed, timeText, withUnit } from '../quantity.ts';
+import {
+  digitsFor,
+  fixed,
+  fixedApart,
+  NO_VALUE,
+  type SpeedUnit,
+  signed,
+  timeText,
+  withUnit,
+} from '../quantity.ts';
 
 /** Value of the table of figures in the reader's unit, with that unit's name. */
 export function readable(value: number, unit: string, speed: SpeedUnit): { value: number; unit: string } {
@@ -27,6 +36,20 @@ export function figureText(figure: Figure | undefined, unit: string, speed: Spee
   return withUnit(fixed(shown.value, digitsOf(shown.value, unit)), shown.unit);
 }
 
+/** As `figureText`, with as many digits more as tell the figure from the limits it is held against. */
+export function figureTextBeside(
+  figure: Figure,
+  limits: readonly number[],
+  unit: string,
+  speed: SpeedUnit,
+): string {
+  if (isNone(figure) || unit === '1' || (unit === 's' && figure >= 120))
+    return figureText(figure, unit, speed);
+  const shown = readable(figure, unit, speed);
+  const others = limits.map((limit) => readable(limit, unit, speed).value);
+  return withUnit(fixedApart(shown.value, others, digitsOf(shown.value, unit)), shown.unit);
+}
+
 /** A small ratio as `2 × 10⁻⁹`. */
 export function scientific(value: number): string {
   const [mantissa, exponent] = value.toExponential(0).split('e') as [string, string];
@@ -38,13 +61,13 @@ export function scientific(value: number): string {
     : `${mantissa.replace('-', '\u2212')}\u00a0×\u00a010${raised}`;
 }
 
-/** A margin with its sign; with more digits where fewer would show a miss as nothing. */
+/** A margin with its sign; with more digits where fewer would show a miss as nothing. Between two shares it is points of a per cent. */
 export function marginText(margin: Figure, unit: string, speed: SpeedUnit): string {
   if (isNone(margin)) return NO_VALUE;
   const shown = readable(margin, unit, speed);
   let digits = digitsOf(shown.value, unit);
   while (digits < 4 && shown.value !== 0 && !/[1-9]/.test(fixed(shown.value, digits))) digits++;
-  return withUnit(signed(shown.value, digits), shown.unit);
+  return withUnit(signed(shown.value, digits), shown.unit === '%' ? 'points' : shown.unit);
 }
 
 /** Name and unit of a figure for people; the figure's own name where the table does not have it. */

@@ -1,13 +1,17 @@
 import { fromKmh } from '../../units/convert.ts';
-import { fixed, type SpeedUnit } from '../quantity.ts';
+import { fixed, type SpeedUnit, significant } from '../quantity.ts';
+
+const NUMBER = /(\d+(?:\.\d+)?(?:e[+-]?\d+)?)([ \u00a0]% per)?([ \u00a0])km\/h/g;
 
 /**
- * A sentence of the study, whose speeds are in km/h, in the reader's unit. Only numbers that stand right before `km/h`
- * are speeds: a gain in `% per km/h` stays as it is.
+ * A sentence of the study or of a design, whose speeds are in km/h, in the reader's unit: numbers right before `km/h` are
+ * speeds, those before `% per km/h` are gains.
  */
 export function inReaderUnit(words: string, speed: SpeedUnit): string {
   if (speed.name === 'km/h') return words;
-  return words.replace(/(\d+(?:\.\d+)?)([ \u00a0])km\/h/g, (_, number: string, gap: string) => {
+  return words.replace(NUMBER, (_, number: string, per: string | undefined, gap: string) => {
+    if (per !== undefined)
+      return `${significant(Number(number) / speed.of(fromKmh(1)))}${per}${gap}${speed.name}`;
     const value = speed.of(fromKmh(Number(number)));
     return `${fixed(value, value < 100 ? 1 : 0)}${gap}${speed.name}`;
   });

@@ -1,12 +1,13 @@
 import { isNone, type RequirementFinding, type Where } from '../../study/findings.ts';
+import { toKmh } from '../../units/convert.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, html } from '../html.ts';
 import { answerOf, type DesignStanding, type Standing } from '../model/answer.ts';
-import { figureLabel, figureText, marginText, readable } from '../model/figure-text.ts';
+import { figureLabel, figureTextBeside, marginText, readable } from '../model/figure-text.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
-import type { View } from '../model/view.ts';
+import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { bandText, fixed, NO_VALUE, placeText, stretchText, withUnit } from '../quantity.ts';
+import { bandText, fixed, NO_VALUE, placeText, stretchText, trimmed, withUnit } from '../quantity.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
@@ -16,6 +17,7 @@ const STANDING: Readonly<
   met: { mark: '✓', words: 'All requirements met', look: 'good' },
   'not met': { mark: '✗', words: 'A requirement is not met', look: 'bad' },
   'too close to call': { mark: '≈', words: 'Too close to call', look: 'open' },
+  'not judged': { mark: '○', words: 'Not all of it can be judged', look: 'open' },
   'none asked': { mark: '·', words: 'No requirement given', look: 'open' },
   incomplete: { mark: '✗', words: 'The run ended early', look: 'bad' },
 };
@@ -45,30 +47,26 @@ function defaultsWords(count: number): Html {
   return html`<a href="#method-defaults">${count === 1 ? 'One figure' : `${count} figures`} of the vehicle ${count === 1 ? 'is a default' : 'are defaults'}</a>, not given by its file.`;
 }
 
-const VERDICT = {
-  met: { mark: '✓', look: 'good' },
-  'not met': { mark: '✗', look: 'bad' },
-  'too close to call': { mark: '≈', look: 'open' },
-} as const;
-
 function requirementTable(view: View): Html {
   const look = new Map(view.candidates.map((candidate) => [candidate.name, candidate]));
   const rows = view.result.requirements.map((finding) => {
     const { unit } = figureLabel(finding.requirement.figure);
-    const verdict = VERDICT[finding.verdict];
+    const verdict = STANDING[finding.verdict];
     const candidate = look.get(finding.candidate);
+    const ended = endedAt(view, finding, candidate);
     return [
       finding.requirement.id,
       html`<span class="verdict ${verdict.look}"><span aria-hidden="true">${verdict.mark}</span> ${finding.verdict}</span>`,
       html`<span class="who">${candidate !== undefined && lineKey(candidate, PAGE_PAINT)} ${finding.candidate}</span>`,
       asked(view, finding),
-      measured(view, finding, unit),
+      measured(view, finding, unit, ended),
       limit(view, finding, unit),
-      marginText(finding.margin, unit, view.speed),
-      finding.worstAt === null ? NO_VALUE : placeText(finding.worstAt),
+      ended === null ? marginText(finding.margin, unit, view.speed) : NO_VALUE,
+      finding.worstAt === null ? NO_VALUE : placeText(Math.min(finding.worstAt, ended ?? finding.worstAt)),
     ];
   });
-  return table(
+  const uncertain = view.result.requirements.some((finding) => spreadText(view, finding) !== '');
+  return html`${table(
     'Requirements',
     [
       { head: 'id' },
@@ -81,7 +79,19 @@ function requirementTable(view: View): Html {
       { head: 'worst at', number: true },
     ],
     rows,
-  );
+  )}${uncertain && html`<p class="note">± one standard deviation, from the grade's uncertainty. A margin within two of them is too close to call.</p>`}`;
+}
+
+/** Where a run ended before the end of what is asked [m]; null where it did not. */
+function endedAt(
+  view: View,
+  { requirement }: RequirementFinding,
+  candidate: CandidateView | undefined,
+): number | null {
+  if (candidate === undefined || candidate.result.status === 'completed') return null;
+  const { where } = requirement;
+  const { endDistance } = candidate.result;
+  return endDistance < (typeof where === 'string' ? view.length : where.to) ? endDistance : null;
 }
 
 function asked(view: View, { requirement, words }: RequirementFinding): Html {
@@ -96,18 +106,28 @@ export function whereWords(where: Where): string {
   return stretchText(where.from, where.to);
 }
 
-function measured(view: View, { measured: value, spread }: RequirementFinding, unit: string): Html {
-  if (isNone(value)) return html`<span class="wrap reason small">${value.none}</span>`;
-  const wide = readable(spread, unit, view.speed);
-  const digits = wide.value >= 1 ? 0 : wide.value >= 0.05 ? 1 : 2;
-  const spreadWords = wide.value >= 0.005 ? ` ± ${fixed(wide.value, digits)}` : '';
-  return html`${figureText(value, unit, view.speed)}${spreadWords !== '' && html`<span class="small">${spreadWords}</span>`}`;
+function measured(view: View, finding: RequirementFinding, unit: string, ended: number | null): Html {
+  const { measured: value, requirement } = finding;
+  const early =
+    ended !== null && html`<br><span class="small">to ${placeText(ended)}, where the run ended</span>`;
+  if (isNone(value)) return html`<span class="wrap reason small">${value.none}</span>${early}`;
+  const { atLeast, atMost, band } = requirement;
+  const bandHere = band === null || unit !== 'km/h' ? null : toKmh(band);
+  const limits = [atLeast, atMost, bandHere].filter((bound) => bound !== null);
+  const spread = spreadText(view, finding);
+  return html`${figureTextBeside(value, limits, unit, view.speed)}${spread !== '' && html`<span class="small"> ${spread}</span>`}${early}`;
+}
+
+function spreadText(view: View, { measured: value, spread, requirement }: RequirementFinding): string {
+  const wide = readable(spread, figureLabel(requirement.figure).unit, view.speed).value;
+  if (isNone(value) || !(wide >= 0.005)) return '';
+  return `± ${fixed(wide, wide >= 1 ? 0 : wide >= 0.05 ? 1 : 2)}`;
 }
 
 function limit(view: View, { requirement }: RequirementFinding, unit: string): string {
   const text = (value: number): string => {
     const shown = readable(value, unit, view.speed);
-    return withUnit(fixed(shown.value, Number.isInteger(shown.value) ? 0 : 1), shown.unit);
+    return withUnit(trimmed(shown.value, shown.unit === 'mph' ? 1 : 3), shown.unit);
   };
   const bounds = [
     requirement.atLeast === null ? '' : `≥ ${text(requirement.atLeast)}`,

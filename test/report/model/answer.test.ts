@@ -18,7 +18,7 @@ describe('the answer', () => {
     );
     expect(words).toContain('misses 1 of 2 requirements (SH-02)');
     expect(words).toMatch(
-      /hill \d+ \(km \d+\.\d\d to \d+\.\d\d, mean .+ %\) defeats it: it (loses|gains) \d+\.\d km\/h because/,
+      /hill \d+ \(km \d+\.\d\d to \d+\.\d\d, mean grade .+ %\) defeats it: it (loses|gains) \d+\.\d km\/h because/,
     );
     expect(words).toMatch(
       /a throttle locked in place strays from \d+ km\/h below the set speed to \d+ km\/h above it\.$/,
@@ -31,7 +31,7 @@ describe('the answer', () => {
 
   it('says when all is met, when it is too close to call, and when nothing was asked', () => {
     expect(answer({ requirements: 'met' })).toMatchObject({ standing: 'met' });
-    expect(answer({ requirements: 'met' }).sentence).toContain('meets all 2 requirements');
+    expect(answer({ requirements: 'met' }).sentence).toContain('meets both requirements');
     expect(answer({ requirements: 'close' })).toMatchObject({ standing: 'too close to call' });
     expect(answer({ requirements: 'close' }).sentence).toContain('SH-01 is too close to call');
     expect(answer({ requirements: 'none' })).toMatchObject({ standing: 'none asked' });
