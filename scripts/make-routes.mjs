@@ -230,18 +230,19 @@ ${segment(rows.slice(split))}
 // Tarrow Saltings: a causeway road round the marsh, flat, in the wind from the sea.
 function tarrowSaltings() {
   const random = stream(7731);
+  // past north the headings count on, so that a bend is taken the short way
   const headings = [
     [2600, 268],
     [900, 300],
     [1800, 352],
-    [1400, 20],
-    [2200, 88],
-    [700, 130],
-    [1900, 178],
-    [800, 150],
-    [1500, 92],
-    [1200, 200],
-    [1700, 265],
+    [1400, 20 + 360],
+    [2200, 88 + 360],
+    [700, 130 + 360],
+    [1900, 178 + 360],
+    [800, 150 + 360],
+    [1500, 92 + 360],
+    [1200, 200 + 360],
+    [1700, 265 + 360],
   ];
   const grades = [
     [2400, 0.02],
@@ -268,7 +269,7 @@ function tarrowSaltings() {
   for (let i = 0; i <= count; i++) {
     const quantised = Math.round((elevation[i * every] + noise[i]) / 0.2) * 0.2;
     rows.push(
-      `${i * 20},${quantised.toFixed(1)},${heading[Math.min(i * every, heading.length - 1)].toFixed(1)}`,
+      `${i * 20},${quantised.toFixed(1)},${(heading[Math.min(i * every, heading.length - 1)] % 360).toFixed(1)}`,
     );
   }
   return `${rows.join('\n')}\n`;
