@@ -1,15 +1,16 @@
 import { figureRow } from '../../study/figure-table.ts';
 import type { Figure } from '../../study/findings.ts';
-import { fromKmh, toKmh } from '../../units/convert.ts';
+import { toKmh } from '../../units/convert.ts';
 import { rectangle, segment } from '../charts/canvas.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { statusWords } from '../model/answer.ts';
 import { controllerWords } from '../model/controller-words.ts';
-import { figureText } from '../model/figure-text.ts';
+import { figureTextBeside } from '../model/figure-text.ts';
+import { type ErrorRange, settledRange, wholeRange } from '../model/settled-range.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { bandText, changeText, NO_VALUE } from '../quantity.ts';
+import { bandText, changeText, NO_VALUE, placeText } from '../quantity.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
@@ -32,7 +33,14 @@ const SHOWN = [
   'brake_distance_m',
 ] as const;
 
+/** Best is what is nearest to zero: time gained is no better than time lost. */
+const BEST_IS_NONE = 'time_lost_s';
+
 const BAR = 96;
+
+const endedEarly = ({ result }: CandidateView): boolean => result.status !== 'completed';
+/** Behind a figure of a run that ended early. */
+const UP_TO_THERE = html` <span class="small" title="up to where the run ended">†</span>`;
 
 /** 3: all candidates on the same road, the locked throttle first. */
 export function candidatesSection(view: View): Section {
@@ -40,7 +48,7 @@ export function candidatesSection(view: View): Section {
   const columns = [
     { head: 'over the whole road' },
     ...candidates.map((candidate) => ({
-      head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
+      head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>${endedEarly(candidate) && html`<br><span class="flag small">ended at ${placeText(candidate.result.endDistance)} †</span>`}`,
     })),
   ];
   const rows: HtmlValue[][] = [
@@ -55,8 +63,12 @@ export function candidatesSection(view: View): Section {
     rangeRow(view),
     ...SHOWN.flatMap((name) => figureCells(view, name)),
   ];
-  const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better.</p>`}
-${table('Candidates side by side', columns, rows)}`;
+  const changes = view.result.demand.settling.length > 0;
+  const early = candidates.some(endedEarly);
+  const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
+${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
+${early && html`<p class="note">† Up to where that run ended, not over the whole road.</p>`}
+${changes && html`<p class="note">Furthest below and above are told outside of the changes of set speed. All other figures of the whole road include the changes, as a following of the new set speed is an error too.</p>`}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }
 
@@ -67,24 +79,28 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
   if (row === undefined) return [];
   const values = view.candidates.map((candidate) => numberOf(candidate.figures[name]));
   const exist = values.filter((value) => value !== null);
-  if (exist.length === 0) return [];
-  const [low, high] = [Math.min(0, ...exist), Math.max(0, ...exist)];
-  if (low === high && name !== 'recovery_s') return [];
-  const best = bestOf(view.candidates, values, row.better);
+  if (exist.length === 0 || (exist.every((value) => value === 0) && name !== 'recovery_s')) return [];
+  const whole = values.filter((value, i) => value !== null && !endedEarly(view.candidates[i]!));
+  const [low, high] = [Math.min(0, ...whole.map(Number)), Math.max(0, ...whole.map(Number))];
+  const merits = name === BEST_IS_NONE ? values.map((value) => value && Math.abs(value)) : values;
+  const best = bestOf(view.candidates, merits, row.better);
+  const beside = row.unit === 'km/h' ? [toKmh(view.result.band)] : [];
   const head = row.takesBand ? `${row.label}, ${bandText(view.result.band, view.speed)}` : row.label;
   return [
     [
       html`<span class="wrap" title="${row.definition}">${head}</span>`,
       ...view.candidates.map((candidate, i) => {
-        const text = figureText(candidate.figures[name], row.unit, view.speed);
         const value = values[i]!;
-        return html`${i === best ? html`<strong>${text}</strong>` : text}${value !== null && high > low && view.candidates.length > 1 && bar(value, low, high, candidate)}`;
+        if (value === null) return NO_VALUE;
+        const text = figureTextBeside(value, beside, row.unit, view.speed);
+        if (endedEarly(candidate)) return html`${text}${UP_TO_THERE}`;
+        return html`${i === best ? html`<strong>${text}</strong>` : text}${high > low && view.candidates.length > 1 && bar(value, low, high, candidate)}`;
       }),
     ],
   ];
 }
 
-/** Index of the best design; none where two are equal to what is shown, or only one design ran. */
+/** Index of the best design that reached the end; none where two are equal to what is shown, or only one design ran. */
 function bestOf(
   candidates: readonly CandidateView[],
   values: readonly (number | null)[],
@@ -93,7 +109,9 @@ function bestOf(
   if (better === null) return null;
   const designs = candidates.flatMap((candidate, i) => {
     const value = values[i];
-    return candidate.locked || value === null || value === undefined ? [] : [{ i, value }];
+    return candidate.locked || endedEarly(candidate) || value === null || value === undefined
+      ? []
+      : [{ i, value }];
   });
   if (designs.length < 2) return null;
   const order = designs.sort((a, b) => (better === 'lower' ? a.value - b.value : b.value - a.value));
@@ -110,19 +128,27 @@ function bar(value: number, low: number, high: number, candidate: CandidateView)
 
 /** Furthest below and above as a range mark around the set speed, the band behind it; all on one scale. */
 function rangeRow(view: View): HtmlValue[] {
-  const band = toKmh(view.result.band);
-  const ranges = view.candidates.map((candidate) => ({
-    low: numberOf(candidate.figures.worst_low_kmh),
-    high: numberOf(candidate.figures.worst_high_kmh),
-  }));
-  const low = Math.min(-band, ...ranges.map((range) => range.low ?? 0));
-  const high = Math.max(band, ...ranges.map((range) => range.high ?? 0));
+  const { band } = view.result;
+  const ranges = view.candidates.map((candidate) => settledRange(view, candidate));
+  const low = Math.min(-band, ...ranges.map((range) => range?.low ?? 0));
+  const high = Math.max(band, ...ranges.map((range) => range?.high ?? 0));
   const at = (v: number): number => 2 + ((v - low) / (high - low)) * (BAR - 4);
-  const cells = ranges.map((range, i): HtmlValue => {
-    if (range.low === null || range.high === null) return NO_VALUE;
-    const stroke = PAGE_PAINT.series[view.candidates[i]!.colour]!;
+  const cells = view.candidates.map((candidate, i): HtmlValue => {
+    const range = ranges[i];
+    if (range === null || range === undefined) return NO_VALUE;
+    const stroke = PAGE_PAINT.series[candidate.colour]!;
     const [a, b] = [at(range.low), at(range.high)];
-    return html`${changeText(fromKmh(range.low), view.speed)} to ${changeText(fromKmh(range.high), view.speed)}<svg class="bar" viewBox="0 0 ${BAR} 12" width="${BAR}" height="12" aria-hidden="true">${rectangle({ left: at(-band), top: 0, width: at(band) - at(-band), height: 12 }, PAGE_PAINT.band)}${segment(a, 6, b, 6, { stroke, width: 2.5 })}${segment(a, 2, a, 10, { stroke, width: 2 })}${segment(b, 2, b, 10, { stroke, width: 2 })}${segment(at(0), 0, at(0), 12, { stroke: PAGE_PAINT.ink })}</svg>`;
+    return html`${rangeWords(view, range)}${endedEarly(candidate) && UP_TO_THERE}<svg class="bar" viewBox="0 0 ${BAR} 12" width="${BAR}" height="12" aria-hidden="true">${rectangle({ left: at(-band), top: 0, width: at(band) - at(-band), height: 12 }, PAGE_PAINT.band)}${segment(a, 6, b, 6, { stroke, width: 2.5 })}${segment(a, 2, a, 10, { stroke, width: 2 })}${segment(b, 2, b, 10, { stroke, width: 2 })}${segment(at(0), 0, at(0), 12, { stroke: PAGE_PAINT.ink })}</svg>${changesWords(view, candidate, range)}`;
   });
   return [html`<span class="wrap">Furthest below to furthest above</span>`, ...cells];
+}
+
+const rangeWords = (view: View, { low, high }: ErrorRange): string =>
+  `${changeText(low, view.speed)} to ${changeText(high, view.speed)}`;
+
+/** What the changes of set speed add to the range, where they add anything. */
+function changesWords(view: View, candidate: CandidateView, range: ErrorRange): Html | null {
+  const whole = wholeRange(candidate);
+  if (whole === null || (whole.low === range.low && whole.high === range.high)) return null;
+  return html`<span class="small">with changes of set speed<br>${rangeWords(view, whole)}</span>`;
 }

@@ -10,14 +10,16 @@ export interface TableColumn {
  * A table that scrolls inside itself where it is too wide; the first cell of a row is its head.
  *
  * @param name what it is, for those who do not see it; unique on the page, because a region bears it
+ * @param look `dense` for one with many columns
  */
 export function table(
   name: string,
   columns: readonly TableColumn[],
   rows: readonly (readonly HtmlValue[])[],
+  look: 'plain' | 'dense' = 'plain',
 ): Html {
   const cell = (column: TableColumn | undefined) => (column?.number === true ? html` class="num"` : null);
-  return html`<div class="scroll" role="region" aria-label="${name}" tabindex="0"><table><thead><tr>${columns.map(
+  return html`<div class="scroll" role="region" aria-label="${name}" tabindex="0"><table${look === 'dense' && html` class="dense"`}><thead><tr>${columns.map(
     (column) => html`<th scope="col"${cell(column)}>${column.head}</th>`,
   )}</tr></thead><tbody>${rows.map(
     (row) =>
