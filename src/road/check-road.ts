@@ -7,7 +7,7 @@ import { toKm } from '../units/convert.ts';
  * Most knots of a road: its tables take about 250 MB, and their CSV text half of what a string can hold. At the finest
  * grid of 0.5 m it is 1,000 km, at the usual 10 m it is 20,000 km.
  */
-export const MOST_KNOTS = 2_000_000;
+const MOST_KNOTS = 2_000_000;
 
 /**
  * Refuses a road of too many knots before any is made.

@@ -21,8 +21,10 @@ import { segmentsByTerrain } from '../study/terrain-segments.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { toKmh } from '../units/convert.ts';
 import { caseNameOf } from './case-name.ts';
+import { checkFullSeries, checkSize } from './check-size.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
+import { changesNotReached, placesOnRoad } from './places-on-road.ts';
 import { roadOfCase } from './road-of.ts';
 import type { CandidateResult, RunResult } from './run-result.ts';
 import { runWarnings } from './run-warnings.ts';
@@ -70,16 +72,19 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const band = bandOf(requirements);
   const bands = bandsOf(requirements);
   if (bands.length > MOST_BANDS) throw tooManyBands(document, bands);
-  const { series, bin } = outputOf(document);
+  const placeWarnings = placesOnRoad(document, requirements, hold, road);
+  const output = outputOf(document);
+  const segmenting = segmentsOf(document);
   const scheme = schemeOf(document);
   const candidates = candidatesOf(document, vehicle);
+  const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin: output.bin }, candidates);
+  checkSize(document, plans, output, segmenting);
   const demand = demandOf(road, vehicle, hold, rider);
-  const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin }, candidates);
   const replayed = replayAll(candidates, plans, onProgress);
+  if (output.series === 'full') checkFullSeries(document, replayed);
   const within = (stage: Stage) => (done: number, of: number) =>
     onProgress(stage.from + ((stage.to - stage.from) * done) / of, stage.words);
   const hills = findHills({ road, demand, replayed, band, onHill: within(HILLS) });
-  const segmenting = segmentsOf(document);
   const segments =
     segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
   const context = { road, demand, hills };
@@ -88,7 +93,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const findings = judge(requirements, replayed, context, spread);
   onProgress(SPREAD.to, 'series');
   const results = replayed.map(({ plan, result }, i): CandidateResult => {
-    const full = series === 'full' ? fullSeries(plan, result) : null;
+    const full = output.series === 'full' ? fullSeries(plan, result) : null;
     return { ...(candidates[i] as Candidate), result, figures: figures[i]?.all ?? {}, full };
   });
   return {
@@ -112,7 +117,11 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     requirements: findings,
     spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
     defaults: [...document.defaults, ...vehicleDocument.defaults],
-    warnings: runWarnings(road, vehicle, results),
+    warnings: [
+      ...runWarnings(road, vehicle, results),
+      ...placeWarnings,
+      ...changesNotReached(document, hold, results),
+    ],
     status: statusOf(results, findings),
   };
 }

@@ -1,0 +1,93 @@
+import type { CaseDocument } from '../case/read-case-file.ts';
+import { placeOf } from '../case/yaml-source.ts';
+import type { HoldPlan } from '../loop/plan.ts';
+import { InputError, type Problem } from '../problems/input-error.ts';
+import type { Warning } from '../problems/warning.ts';
+import type { Road } from '../road/road.ts';
+import type { Requirement } from '../study/findings.ts';
+import { toKm } from '../units/convert.ts';
+import type { CandidateResult } from './run-result.ts';
+
+/** A stretch may run over the end by this much without a word: places are written in km, to a metre [m]. */
+const OVERRUN = 1;
+/** The end of a road is the end, to rounding [m]. */
+const AT_END = 1e-6;
+
+const lengthOf = (road: Road): number => road.distance[road.size - 1] ?? 0;
+/** A place or a length as people write it: to a metre, without zeros at the end. */
+const km = (distance: number): string => `${Number(toKm(distance).toFixed(3))} km`;
+
+/**
+ * What a case says by its kilometres must lie on the road: a requirement that begins beyond the end would be judged on
+ * nothing, and a change there would never happen.
+ *
+ * @returns a warning for each stretch that runs over the end
+ * @throws InputError `beyond-the-road`, for all of them, each at its key
+ */
+export function placesOnRoad(
+  { source }: CaseDocument,
+  requirements: readonly Requirement[],
+  hold: HoldPlan,
+  road: Road,
+): readonly Warning[] {
+  const length = lengthOf(road);
+  const beyond = (place: Problem['place'], message: string, found: number): Problem => ({
+    code: 'beyond-the-road',
+    place,
+    message,
+    found: km(found),
+    allowed: `less than ${km(length)}, the length of the road`,
+  });
+  const problems = hold.changes.flatMap(({ at }, i): Problem[] =>
+    'distance' in at && at.distance >= length - AT_END
+      ? [
+          beyond(
+            placeOf(source, ['hold', 'changes', i, 'at_km']),
+            'the set speed would change beyond the end of the road',
+            at.distance,
+          ),
+        ]
+      : [],
+  );
+  const warnings: Warning[] = [];
+  requirements.forEach(({ id, where }, i) => {
+    if (typeof where === 'string') return;
+    const place = (key: string) => placeOf(source, ['requirements', i, 'where', key]);
+    if (where.from >= length - AT_END)
+      problems.push(
+        beyond(place('from_km'), 'the stretch would begin beyond the end of the road', where.from),
+      );
+    else if (where.to > length + OVERRUN)
+      warnings.push({
+        code: 'stretch-cut-at-end',
+        message: `${id} is judged to the end of the road, ${km(length)}: its stretch would go on to ${km(where.to)}.`,
+        place: place('to_km'),
+        from: where.from,
+        to: length,
+      });
+  });
+  const [first, ...others] = problems;
+  if (first !== undefined) throw new InputError(first, ...others);
+  return warnings;
+}
+
+/** A warning for each change of the set speed at a time that a run had not reached when it ended. */
+export function changesNotReached(
+  { source }: CaseDocument,
+  hold: HoldPlan,
+  candidates: readonly Pick<CandidateResult, 'name' | 'result'>[],
+): readonly Warning[] {
+  return hold.changes.flatMap(({ at }, i): Warning[] => {
+    if (!('time' in at)) return [];
+    const ended = candidates.filter(({ result }) => result.endTime <= at.time);
+    if (ended.length === 0) return [];
+    const names = ended.map(({ name, result }) => `${name} after ${result.endTime.toFixed(1)} s`);
+    return [
+      {
+        code: 'change-not-reached',
+        message: `The set speed did not change at ${at.time} s: the run had ended before it (${names.join(', ')}).`,
+        place: placeOf(source, ['hold', 'changes', i, 'at_s']),
+      },
+    ];
+  });
+}
