@@ -66,7 +66,7 @@ ${sections.map(
 ${body}</section>
 `,
 )}</main>
-<footer>Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the inputs in section 10. A simulation is no approval to ride.</footer>
+<footer>Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the <a href="#method-inputs">inputs</a>. A simulation is no approval to ride.</footer>
 </div>`;
   // The style sheet is a constant of this program: its text must stand unescaped, and its hash is in the policy.
   return `<!doctype html>\n<html lang="en">\n<head>\n${page}<style>${STYLE}</style>\n</head>\n<body>\n${body}\n</body>\n</html>\n`;

@@ -2,6 +2,7 @@ import type { FullSeries } from '../../loop/result.ts';
 import type { Hill, HillOutcome } from '../../study/findings.ts';
 import { toPct } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
+import { holdingThrottle } from '../model/holding-throttle.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { changeText } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
@@ -17,6 +18,7 @@ import {
   stroked,
 } from './canvas.ts';
 import { areaPath, linePath, type Point } from './paths.ts';
+import { trace } from './trace.ts';
 
 /** A candidate on a hill, with its record. */
 interface Shown {
@@ -24,7 +26,10 @@ interface Shown {
   readonly outcome: HillOutcome;
 }
 
-/** A small picture over time: speed against the set speed above, command and demand below. Time counts from the foot of the hill. */
+/**
+ * A small picture over time: speed against the set speed above; below, the command against the throttle that would hold the
+ * set speed. Time counts from the foot of the hill.
+ */
 export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const { id, paint } = canvas;
   const shown = shownOn(view, hill);
@@ -35,15 +40,17 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const [start, end] = timeDomain(hill, shown, foot);
   const x = scaleOf([start, end], upper.left, upper.left + width);
   const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
-  const { throttleMin } = view.result.vehicle.drive;
-  const shares = scaleOf(
-    [hill.share < -1 || throttleMin < 0 ? -125 : -5, 125],
+  const first = shown.find(({ candidate }) => !candidate.locked) ?? shown[0];
+  const { throttleMin, throttleMax } = view.result.vehicle.drive;
+  const holding = first === undefined ? [] : holdingAlong(view, first.outcome.picture);
+  const throttles = scaleOf(
+    throttleDomain(throttleMin, throttleMax, holding),
     lower.top + lower.height,
     lower.top,
   );
   const over = (
     scale: Scale,
-    values: Float64Array,
+    values: ArrayLike<number>,
     of: (v: number) => number,
     picture: FullSeries,
   ): Point[] =>
@@ -51,7 +58,6 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       x(picture.time[i]! - foot(picture)),
       scale(of(values[i]!)),
     ]);
-  const first = shown.find(({ candidate }) => !candidate.locked) ?? shown[0];
   const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}</defs>${
     first !== undefined && onTheHill(first.outcome.picture, hill, x, [upper, lower], foot, canvas)
   }${leftAxis(canvas, upper, speeds, `speed / ${view.speed.axis}`, 4)}${clipped(
@@ -64,29 +70,28 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
         dash: '1 2',
       })
     }${shown.map(({ candidate, outcome }) =>
-      stroked(
-        linePath(over(speeds, outcome.picture.speed, view.speed.of, outcome.picture)),
-        lookOf(candidate, canvas),
-      ),
+      trace(over(speeds, outcome.picture.speed, view.speed.of, outcome.picture), candidate, upper, canvas),
     )}`,
-  )}${leftAxis(canvas, lower, shares, 'command and demand / %', 3)}${clipped(
+  )}${leftAxis(canvas, lower, throttles, 'command, and throttle that would hold / %', 3)}${clipped(
     `${id}-l`,
-    html`${first !== undefined && demandArea(view, first.outcome.picture, x, shares, foot, canvas)}${segment(
-      lower.left,
-      shares(100),
-      lower.left + width,
-      shares(100),
-      { stroke: paint.warn, dash: '4 2' },
-    )}${segment(lower.left, shares(-100), lower.left + width, shares(-100), { stroke: paint.warn, dash: '4 2' })}${shown.map(
-      ({ candidate, outcome }) =>
-        stroked(
-          linePath(over(shares, outcome.picture.command, toPct, outcome.picture)),
-          lookOf(candidate, canvas),
-        ),
+    html`${
+      first !== undefined &&
+      filled(
+        areaPath(over(throttles, holding, toPct, first.outcome.picture), throttles(0)),
+        paint.demand[1]!,
+        0.75,
+      )
+    }${[throttleMin, throttleMax].map((limit) =>
+      segment(lower.left, throttles(toPct(limit)), lower.left + width, throttles(toPct(limit)), {
+        stroke: paint.warn,
+        dash: '4 2',
+      }),
+    )}${shown.map(({ candidate, outcome }) =>
+      trace(over(throttles, outcome.picture.command, toPct, outcome.picture), candidate, lower, canvas),
     )}`,
   )}${bottomAxis({ ...canvas, narrow: true }, upper, x, null)}${bottomAxis({ ...canvas, narrow: true }, lower, x, 'time from the foot / s')}`;
   const words = {
-    title: `Hill ${hill.number}: speed, command and demand over time`,
+    title: `Hill ${hill.number}: speed, command and the throttle that would hold, over time`,
     desc: shown
       .map(({ candidate, outcome }) => `${candidate.name}: ${changeText(outcome.speedChange, view.speed)}.`)
       .join(' '),
@@ -100,11 +105,13 @@ const shownOn = (view: View, hill: Hill): readonly Shown[] =>
     return outcome !== undefined && outcome.picture.size > 1 ? [{ candidate, outcome }] : [];
   });
 
-const lookOf = (candidate: CandidateView, { paint }: Canvas) => ({
-  stroke: paint.series[candidate.colour]!,
-  width: 1.5,
-  dash: candidate.dash,
-});
+/** The range of the throttle with room beyond it, more below where holding asks for more: to as much again as the range. */
+function throttleDomain(least: number, most: number, holding: readonly number[]): readonly [number, number] {
+  const lowest = holding.reduce((low, value) => (Number.isFinite(value) ? Math.min(low, value) : low), least);
+  const range = most - least;
+  const below = Math.max(lowest, least - range) - 0.05 * range;
+  return [toPct(below), toPct(most + 0.25 * range)];
+}
 
 /**
  * From the first record before the foot to the last recovery of a design, but no longer behind the hill than the hill
@@ -168,21 +175,15 @@ function onTheHill(
   return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}`;
 }
 
-/** Demand at the set speed where the first design is, as an area. */
-function demandArea(
-  view: View,
-  picture: FullSeries,
-  x: Scale,
-  y: Scale,
-  foot: (picture: FullSeries) => number,
-  { paint }: Canvas,
-): Html | null {
-  const { road, demand } = view.result;
-  const points: Point[] = [];
-  let knot = 0;
+/** Throttle that would hold the set speed where the first design is, sample by sample of its picture. */
+function holdingAlong(view: View, picture: FullSeries): readonly number[] {
+  const { road } = view.result;
+  const values: number[] = [];
+  let [knot, known, throttle] = [0, -1, Number.NaN];
   for (let i = 0; i < picture.size; i++) {
     while (knot < road.size - 1 && road.distance[knot + 1]! <= picture.distance[i]!) knot++;
-    points.push([x(picture.time[i]! - foot(picture)), y(toPct(demand.share[knot]!))]);
+    if (knot !== known) [known, throttle] = [knot, holdingThrottle(view, knot)];
+    values.push(throttle);
   }
-  return filled(areaPath(points, y(0)), paint.demand[1]!, 0.75);
+  return values;
 }

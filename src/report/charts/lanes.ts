@@ -20,6 +20,7 @@ import {
   textWidth,
 } from './canvas.ts';
 import { envelopePath, linePath, type Point } from './paths.ts';
+import { setSpeedBrackets, setSpeedColumns, setSpeedHead } from './set-speed-brackets.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
@@ -92,7 +93,7 @@ export function lanesChart(view: View, canvas: Canvas): Html {
   const left = narrow ? 40 : 52;
   const width = canvas.width - left - (narrow ? 10 : 118);
   const gap = 38;
-  let top = 26;
+  let top = 26 + setSpeedHead(view);
   const parts = looks.map((look, i) => {
     const box: Box = { left, top, width, height: narrow ? Math.round(look.height * 0.8) : look.height };
     top += box.height + gap;
@@ -107,7 +108,7 @@ export function lanesChart(view: View, canvas: Canvas): Html {
 
 /** One lane as a drawing of its own. */
 export function laneChart(view: View, canvas: Canvas, look: LaneLook): Html {
-  const box: Box = { left: 52, top: 26, width: canvas.width - 170, height: 220 };
+  const box: Box = { left: 52, top: 26 + setSpeedHead(view), width: canvas.width - 170, height: 220 };
   const words = {
     title: `${look.title} over ${view.distanceName}`,
     desc: `${look.name} of every candidate.`,
@@ -136,7 +137,7 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: bo
   const drawn = view.candidates.map((candidate, i) =>
     curveMarks(candidate, curves[i]!, look, canvas, x, y, view.length / (box.width / COLUMN)),
   );
-  return html`<defs>${clip(`${id}-c`, box)}</defs>${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
+  return html`<defs>${clip(`${id}-c`, box)}</defs>${setSpeedColumns(view, canvas, box, x)}${first && setSpeedBrackets(view, canvas, { ...box, top: box.top - 20 }, x)}${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
     canvas,
     box,
     y,

@@ -68,7 +68,7 @@ export function candidatesSection(view: View): Section {
   const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
 ${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
 ${early && html`<p class="note">† Up to where that run ended, not over the whole road.</p>`}
-${changes && html`<p class="note">Furthest below and above are told outside of the changes of set speed. All other figures of the whole road include the changes, as a following of the new set speed is an error too.</p>`}`;
+${changes && html`<p class="note">Furthest below and above are told outside of the changes of set speed. All other figures here include them: until a new set speed is reached, the difference counts as error.</p>`}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }
 

@@ -3,23 +3,26 @@ import { toPct } from '../../units/convert.ts';
 import { hillPicture } from '../charts/hill-picture.ts';
 import { candidateKey, lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
+import { hillNoun } from '../model/hill-words.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import {
   fixed,
+  fixedApart,
   forceText,
   gradeText,
   lengthText,
   NO_VALUE,
-  shareText,
-  signed,
   significant,
-  speedText,
   stretchText,
+  withUnit,
 } from '../quantity.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
+
+const DEFINED =
+  'In the tables, largest error: the speed furthest from the set speed on the hill and until it is recovered from, less the set speed; negative is too slow. By hand: the same by the hand formula of the last section, without any controller.';
 
 /** Cards are for the hills that matter most; the table has all. */
 const MOST_CARDS = 12;
@@ -37,11 +40,12 @@ export function hillsSection(view: View): Section {
   const rest = hills.length - shown.length;
   const body = html`<p>A hill is every stretch where the demand leaves the range of the drive, or a candidate leaves its band or meets a limit; all candidates share them. ${
     rest > 0 && `Cards: the ${shown.length} worst of ${hills.length}; the table at the end has all.`
-  } In the pictures time counts from the foot of the hill, and the hill is shaded. Above: speed, the set speed dotted. Below: the command as lines, the demand as an area; above the dashed line at 100 % there is no more.</p>
+  } In the pictures time counts from the foot of the hill, and the hill is shaded. Above: speed, the set speed dotted. Below: the command as lines, and as an area the throttle that would hold the set speed steadily; beyond the dashed lines the drive has no more. A line that swings too fast to be drawn is a band from least to greatest.</p>
+<p>${DEFINED}</p>
 ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
-<p>Under a candidate: its change of speed, and why.</p>
+<p>Under a candidate: its largest error, and why.</p>
 ${allHills(view)}`;
   return { id: 'hills', number: 6, title: 'Hills', body };
 }
@@ -60,7 +64,7 @@ function card(view: View, hill: Hill): Html {
     return outcome === undefined || endedBefore(candidate, hill) ? [] : [{ candidate, outcome }];
   });
   const canvas = { id: `hill-${hill.number}`, paint: PAGE_PAINT, width: PICTURE_WIDTH, narrow: true };
-  return html`<article class="card" aria-labelledby="hill-${hill.number}-h"><h3 id="hill-${hill.number}-h">Hill ${hill.number}: ${hill.kind} <span class="of">${stretchText(hill.from, hill.to)}</span></h3>
+  return html`<article class="card" aria-labelledby="hill-${hill.number}-h"><h3 id="hill-${hill.number}-h">${hillNoun(hill) === 'hill' ? 'Hill' : 'Stretch'} ${hill.number}: ${hill.kind} <span class="of">${stretchText(hill.from, hill.to)}</span></h3>
 <p class="facts">${facts(view, hill)}</p>
 ${hillPicture(view, hill, canvas)}
 ${outcomes(view, hill, runs)}
@@ -73,17 +77,27 @@ const endedBefore = (candidate: CandidateView, hill: Hill): boolean =>
 
 function facts(view: View, hill: Hill): string {
   const above = hill.share > 0;
+  const share = `${fixedApart(toPct(Math.abs(hill.share)), [100])}\u00a0%`;
   const needs = above
-    ? `Asks ${forceText(hill.requiredForce)}, full throttle has ${forceText(hill.availableForce)} (${shareText(hill.share)}).`
-    : `Asks the drive to hold back ${forceText(-hill.requiredForce)}; it can hold back ${forceText(-hill.availableForce)} (${shareText(-hill.share)}).`;
+    ? `Asks ${forceText(hill.requiredForce)}, full throttle has ${forceText(hill.availableForce)} (${share}).`
+    : `Asks the drive to hold back ${forceText(-hill.requiredForce)}; it can hold back ${forceText(-hill.availableForce)} (${share}).`;
+  const set = view.speed.of(setSpeedAt(view, hill.shareAt));
+  const steadySpeed = withUnit(fixedApart(view.speed.of(hill.sustainedSpeed), [set]), view.speed.name);
   const steady =
     Math.abs(hill.share) <= 1
       ? ''
       : above
-        ? ` Full throttle would hold ${speedText(hill.sustainedSpeed, view.speed, 0)}.`
-        : ` It would run away to ${speedText(hill.sustainedSpeed, view.speed, 0)}.`;
+        ? ` Full throttle would hold ${steadySpeed}.`
+        : ` It would run away to ${steadySpeed}.`;
   const grade = `${lengthText(hill.to - hill.from)} at ${gradeWords(hill)}, steepest ${gradeText(hill.maxGrade)}.`;
   return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
+}
+
+/** Set speed [m/s] at a place [m]. */
+function setSpeedAt({ result: { road, demand } }: View, place: number): number {
+  let knot = 0;
+  while (knot < road.size - 1 && road.distance[knot + 1]! <= place) knot++;
+  return demand.setSpeed[knot]!;
 }
 
 /** Mean grade with its standard deviation, where it has one: two significant digits below 0.1 %, so that it is never a bare zero; finer than 0.01 % no road is known. */
@@ -100,7 +114,7 @@ interface Run {
 }
 
 function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
-  const change = (speed: number): string => signed(view.speed.of(speed), 1);
+  const change = (speed: number): string => errorText(view, speed);
   const rows = runs.map(({ candidate, outcome }): HtmlValue[] => [
     html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
     change(outcome.speedChange),
@@ -115,7 +129,7 @@ function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
     `Hill ${hill.number}: outcomes`,
     [
       { head: 'candidate' },
-      { head: `change / ${view.speed.axis}`, number: true },
+      { head: `largest error / ${view.speed.axis}`, number: true },
       { head: `by hand / ${view.speed.axis}`, number: true },
       { head: 'time lost / s', number: true },
       { head: 'at limit / s', number: true },
@@ -123,6 +137,12 @@ function outcomes(view: View, hill: Hill, runs: readonly Run[]): Html {
     ],
     rows,
   );
+}
+
+/** An error, with more digits where fewer would set it on the edge of the band. */
+function errorText({ speed, result }: View, error: number): string {
+  const text = fixedApart(speed.of(error), [speed.of(result.band), -speed.of(result.band)], 1);
+  return error > 0 && /[1-9]/.test(text) ? `+${text}` : text;
 }
 
 const seconds = (time: number): string => fixed(time, Math.abs(time) < 9.95 ? 1 : 0);
@@ -154,14 +174,14 @@ function allHills(view: View): Html {
     hill.kind,
     html`<span class="who">${stretchText(hill.from, hill.to)}</span>`,
     html`<span class="who">${gradeWords(hill)}</span>`,
-    fixed(toPct(hill.share)),
+    fixedApart(toPct(hill.share), [100, -100]),
     fixed(hill.requiredForce),
     fixed(hill.availableForce),
-    fixed(view.speed.of(hill.sustainedSpeed)),
+    fixedApart(view.speed.of(hill.sustainedSpeed), [view.speed.of(setSpeedAt(view, hill.shareAt))]),
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
       if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
-      return html`${signed(view.speed.of(outcome.speedChange), 1)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
+      return html`${errorText(view, outcome.speedChange)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
     }),
   ]);
   return table(
@@ -176,10 +196,11 @@ function allHills(view: View): Html {
       { head: 'there is / N', number: true },
       { head: `steady speed / ${view.speed.axis}`, number: true },
       ...view.candidates.map((candidate) => ({
-        head: html`${candidate.name}<br>/ ${view.speed.axis}`,
+        head: html`<span class="name">${candidate.name}</span> / ${view.speed.axis}`,
         number: true,
       })),
     ],
     rows,
+    'dense',
   );
 }

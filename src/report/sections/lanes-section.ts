@@ -15,6 +15,9 @@ ${chartFigure(
   'lanes',
   (canvas) => lanesChart(view, canvas),
   html`Lines: mean of each stretch that is one line of the picture wide; shade around them: least to greatest in it, so that no peak is lost.${
+    view.result.demand.settling.length > 0 &&
+    ' Brackets: a change of set speed is being followed, and the error there is planned.'
+  }${
     early.length > 0 &&
     ` ${early.map((candidate) => `${candidate.name} ${statusWords(candidate)}`).join('; ')}.`
   }`,

@@ -11,7 +11,7 @@ import { EQUATIONS } from './equations.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
-/** 10: how everything above was computed, from what, and what it does not say. */
+/** 9: how everything above was computed, from what, and what it does not say. */
 export function methodSection(view: View): Section {
   const body = html`${cautionPart(view)}
 <h3>Model</h3>
@@ -23,7 +23,7 @@ ${definitions(view)}
 ${roadSources(view)}
 ${defaultsTable(view)}
 ${inputs(view)}`;
-  return { id: 'method', number: 10, title: 'How it was computed', body };
+  return { id: 'method', number: 9, title: 'How it was computed', body };
 }
 
 function cautionPart(view: View): Html {
@@ -130,7 +130,7 @@ ${
 
 function inputs(view: View): Html {
   const { result } = view;
-  return html`<h3>Inputs</h3>
+  return html`<h3 id="method-inputs">Inputs</h3>
 ${table(
   'Inputs',
   [{ head: 'file' }, { head: 'bytes', number: true }, { head: 'SHA-256' }],
