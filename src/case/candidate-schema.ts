@@ -70,20 +70,30 @@ const weight = number('', 0, 1, 'Weight of the set speed in the proportional par
 const typedWeight = otherwise(weight, 1, 'the common form: P on the error');
 const kp = (least: number) => number('% per km/h', least, 10000, 'Proportional gain');
 
+const designSpeed = optional(
+  kmh('True speed of the operating point, on the level in the still air of sea level'),
+  'hold.set_speed_kmh',
+  'not given: the true speed of the set speed, on the level in the still air of sea level',
+);
 const settlingDesign = mapping('Gains from how the set speed is reached', {
   settling_s: number('s', 0.1, 1000, 'Time after which the speed stays within 2 % of a step'),
   overshoot_pct: number('%', 0, 60, 'Overshoot of a step'),
-  at_kmh: optional(kmh('Speed of the operating point'), 'hold.set_speed_kmh', NOT_GIVEN),
+  at_kmh: designSpeed,
 });
 const droopDesign = mapping('Gains from the hill', {
   droop_kmh: number('km/h', 0.05, 50, 'Greatest loss of speed on the step of grade'),
   grade_step_pct: number('%', 0.1, 40, 'Step of grade'),
   damping: number('', 0.1, 5, 'Damping ratio'),
-  at_kmh: optional(kmh('Speed of the operating point'), 'hold.set_speed_kmh', NOT_GIVEN),
+  at_kmh: designSpeed,
 });
 const piDesigned = mapping('PI with designed gains', {
   ...piRest,
-  design: z.union([settlingDesign, droopDesign]).meta({ description: 'What the gains are worked out from' }),
+  design: z
+    .union([settlingDesign, droopDesign])
+    .meta({
+      description:
+        'What the gains are worked out from, for the vehicle on the level in the still air of the case at sea level',
+    }),
   setpoint_weight: otherwise(weight, 0, 'designed gains: the zero of P on the error is left out'),
 });
 const piByTime = mapping('PI by gain and integral time', {

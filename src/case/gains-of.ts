@@ -49,7 +49,7 @@ function designed(
   const point = {
     vehicle,
     surroundings,
-    at: fromKmh(design.at_kmh ?? document.file.hold.set_speed_kmh),
+    at: design.at_kmh === undefined ? trueSetSpeed(document, vehicle) : fromKmh(design.at_kmh),
     sample: file.sample_s,
     computingDelay: file.computing_delay_s,
     integration: file.integration,
@@ -63,6 +63,12 @@ function designed(
       damping: design.damping,
     });
   return designSettling({ ...point, settling: design.settling_s, overshoot: fromPct(design.overshoot_pct) });
+}
+
+/** The true speed that the set speed stands for [m/s]: a sensor that shows too much makes the vehicle slower. */
+function trueSetSpeed({ file: { hold } }: CaseDocument, { sensor }: Vehicle): number {
+  const setSpeed = fromKmh(hold.set_speed_kmh);
+  return hold.set_speed_is === 'indicated' ? setSpeed / (1 + sensor.scaleError) : setSpeed;
 }
 
 /** Brings what a design refuses to its place in the file. */

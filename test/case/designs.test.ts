@@ -12,6 +12,8 @@ const route = (name: string): string =>
   readFileSync(new URL(`../../routes/${name}`, import.meta.url), 'utf8');
 const vehicle = (name: string) => vehicleOf(readVehicleFile(route(`vehicles/${name}`), name));
 
+const SENSOR = 'speed_sensor: {scale_error_pct: 10}';
+
 it.each([
   ['harrow-gap.yaml', 'proving-125.yaml'],
   ['one-hill.yaml', 'proving-125.yaml'],
@@ -41,6 +43,33 @@ it('hands a design what was asked, in SI, at the set speed where no speed is giv
   expectClose([settling.asked.settling!, settling.asked.overshoot!], [60, 0.01], 1e-12);
   const [, pi] = candidatesOf(readCaseFile(route('one-hill.yaml'), 'b.yaml'), vehicle('proving-125.yaml'));
   expectClose((pi!.controller as PiSetup).design!.speed, 60 / 3.6, 1e-12);
+});
+
+it('designs at the true speed where the set speed is what the sensor indicates', () => {
+  const text = (more: string, at = ''): string => `track: {profile: [{length_m: 1000, grade_pct: 0}]}
+vehicle: v.yaml
+hold: {set_speed_kmh: 66${more}}
+candidates: [{kind: pi, design: {settling_s: 60, overshoot_pct: 1${at}}}]
+`;
+  const shows = vehicleOf(
+    readVehicleFile(
+      `${route('vehicles/proving-125.yaml')}\n`.replace(/^speed_sensor:.*$/m, SENSOR),
+      'v.yaml',
+    ),
+  );
+  const speedOf = (written: string): number => {
+    const [candidate] = candidatesOf(readCaseFile(written, 'c.yaml'), shows);
+    return (candidate!.controller as PiSetup).design!.speed;
+  };
+  // The sensor shows a tenth too much: 66 km/h indicated are 60 km/h.
+  expectClose(speedOf(text(', set_speed_is: indicated')), 60 / 3.6, 1e-12);
+  expectClose(speedOf(text('')), 66 / 3.6, 1e-12);
+  expectClose(speedOf(text(', set_speed_is: indicated', ', at_kmh: 50')), 50 / 3.6, 1e-12);
+  const used = readCaseFile(text(', set_speed_is: indicated'), 'c.yaml').defaults;
+  expect(used.find(({ key }) => key === 'candidates.0.design.at_kmh')).toMatchObject({
+    value: '66 as indicated',
+    source: expect.stringContaining('on the level in the still air of sea level'),
+  });
 });
 
 it('agrees with the closed form of a loop without lags', () => {
