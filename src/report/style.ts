@@ -5,8 +5,8 @@ import { paintVariables } from './paint.ts';
  * System fonts, so that nothing is fetched. Print: white, no card cut in two, wide charts.
  */
 export const STYLE = `
-:root{color-scheme:light dark;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}
-@media (prefers-color-scheme:dark){:root{--good:#4fd1a8;--bad:#ff9d6b;--open:#f0e442;--accent:#7cc4ee;${paintVariables('dark')}}}
+:root{color-scheme:light dark;--edge:#1a1d2159;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}
+@media (prefers-color-scheme:dark){:root{--edge:#e9ecef66;--good:#4fd1a8;--bad:#ff9d6b;--open:#f0e442;--accent:#7cc4ee;${paintVariables('dark')}}}
 *{box-sizing:border-box}
 html{scroll-padding-top:1rem}
 body{margin:0;background:var(--page);color:var(--ink);font:16px/1.5 system-ui,'Segoe UI','Helvetica Neue',Arial,'DejaVu Sans',sans-serif}
@@ -51,11 +51,12 @@ svg.key{display:inline-block;flex:none;vertical-align:middle}
 .masked{display:inline-block;width:1.4rem;height:.8rem;background:var(--grid)}
 svg.bar{display:block;margin-top:.15rem}
 .who{white-space:nowrap}
-.scroll{overflow-x:auto;margin:.7rem 0 1rem;max-width:100%}
+.scroll{overflow-x:auto;margin:.7rem 0 1rem;max-width:100%;background:linear-gradient(90deg,var(--page) 40%,transparent) left/2.5rem 100% no-repeat local,linear-gradient(270deg,var(--page) 40%,transparent) right/2.5rem 100% no-repeat local,linear-gradient(90deg,var(--edge),transparent) left/1rem 100% no-repeat scroll,linear-gradient(270deg,var(--edge),transparent) right/1rem 100% no-repeat scroll}
 table{border-collapse:collapse;font-size:.86rem;font-variant-numeric:tabular-nums}
 th,td{text-align:left;vertical-align:top;padding:.32rem .9rem .32rem 0;border-bottom:1px solid var(--grid)}
 thead th{border-bottom:2px solid var(--muted);vertical-align:bottom;line-height:1.25}
 tbody th{font-weight:600}
+.dense{font-size:.8rem}.dense th,.dense td{padding-right:.6rem}.dense td.num .small:not(.wrap){white-space:normal}.name{overflow-wrap:anywhere}
 .num{text-align:right}
 td.num,tbody th{white-space:nowrap}
 td.num .small:not(.wrap){white-space:nowrap}
@@ -90,7 +91,7 @@ body{background:#fff;font-size:10pt}
 .sheet{display:block;max-width:none;padding:0}
 nav,.skip,details{display:none}
 .wide{display:block}.narrow{display:none}
-.scroll{overflow:visible}
+.scroll{overflow:visible;background:none}
 table{font-size:7.6pt}
 th,td{padding-right:.5rem}
 section{margin-bottom:1.2rem}
