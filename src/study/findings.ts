@@ -45,7 +45,8 @@ export interface Demand {
   readonly settling: readonly Stretch[];
 }
 
-export type HillKind = 'climb' | 'descent' | 'rolling';
+/** `rolling`: neither way on the whole; `level`: a stretch without height. */
+export type HillKind = 'climb' | 'descent' | 'rolling' | 'level';
 
 export type Cause =
   | 'torque'

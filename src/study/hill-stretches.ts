@@ -1,18 +1,25 @@
 import type { BinRecord } from '../loop/result.ts';
-import type { Road } from '../road/road.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { valueAt } from '../road/lookup.ts';
+import type { Road } from '../road/road.ts';
+import { STANDARD_GRAVITY } from '../units/constants.ts';
+
 import type { Demand, HillKind, Replayed, Stretch } from './findings.ts';
+import { turningPlaces } from './turning-places.ts';
 
 /** Gaps shorter than this are bridged [s at the set speed]. */
 const BRIDGED = 5;
-/** What follows a hill for this long still belongs to it, if nothing of its own begins [s at the set speed]. */
+/** What follows a hill for this long still belongs to it [s at the set speed]. */
 const AFTERMATH = 15;
 /** Time at a limit that makes a bin count [s]. */
 const AT_LIMIT = 0.2;
 /** A hill is followed to its foot and its top while the grade goes on at this, for at most this far [m]. */
 const STILL_A_HILL = 0.01;
-const FARTHEST = 600;
+const FARTHEST = 1500;
+/** Ground is level within this share of the height that the set speed is worth. */
+const LEVEL = 0.25;
+/** One stretch out of band, however long, is cut into at most so many hills. */
+const MOST_PIECES = 40;
 
 export interface HillStretch extends Stretch {
   readonly kind: HillKind;
@@ -20,11 +27,9 @@ export interface HillStretch extends Stretch {
   readonly until: number;
 }
 
-interface Part {
-  from: number;
-  to: number;
+interface Part extends Stretch {
   /** 1: more force than there is; -1: less than there can be; 0: only a candidate's own doing. */
-  nature: -1 | 0 | 1;
+  readonly nature: -1 | 0 | 1;
 }
 
 /** A bin in which a candidate left its band or sat on a limit, outside of what a change of set speed explains. */
@@ -36,10 +41,10 @@ export function marksBin(bins: BinRecord, i: number, band: number, settling: rea
 }
 
 /**
- * Stretches shared by all candidates: where demand leaves the range, or a candidate that regulates leaves its band or
- * sits on a limit. Close ones are joined; a climb and a descent are parted at the crest or the foot between them; each
- * is followed to the foot and the top of the road's own hill. Locked throttles do not count: they would make one hill
- * of the whole road.
+ * Stretches shared by all candidates. First those of the road itself: where demand leaves the range, followed to the
+ * foot and the top of the road's own slope; they are the same whoever rides. What is left of where a candidate that
+ * regulates leaves its band or sits on a limit is cut at the crests and the feet between, so that a hill is one climb
+ * or one descent. Locked throttles do not count: they would make hills of the whole road.
  */
 export function hillStretches(
   road: Road,
@@ -47,17 +52,25 @@ export function hillStretches(
   replayed: readonly Replayed[],
   band: number,
 ): HillStretch[] {
-  const regulating = replayed.filter(({ plan }) => plan.controller.kind !== 'locked');
-  const parts = joinRuns(road, demand, [
-    ...demandRuns(road, demand),
-    ...regulating.flatMap(({ result }) => recordRuns(result.bins, band, demand.settling)),
-  ]).flatMap((run) => splitByNature(road, demand, run));
-  return answerable(road, demand, joinTouching(growToHill(road, parts)));
+  const demanded = growToHill(road, demandParts(road, demand), () => true);
+  const cores = joinTouching(road, closeGaps(road, demand, demanded));
+  const marks = replayed
+    .filter(({ plan }) => plan.controller.kind !== 'locked')
+    .flatMap(({ result }) => recordRuns(result.bins, band, demand.settling));
+  const own = outside(cores, joinRuns(road, demand, marks))
+    .filter((run) => !isApproach(road, demand, cores, run))
+    .flatMap((run) => oneWay(road, demand, run));
+  const parts = [...cores, ...own.map((run): Part => ({ ...run, nature: 0 }))].sort(
+    (a, b) => a.from - b.from,
+  );
+  const grown = growToHill(road, parts, ({ nature }) => nature === 0);
+  return answerable(road, demand, joinTouching(road, grown));
 }
 
 /**
- * Gives each hill the end of what it is answerable for. A short stretch on level ground, out of band by a candidate's
- * own doing and beginning within the aftermath of a hill, is that hill's: an overshoot is no hill of its own.
+ * Gives each hill the end of what it is answerable for. What a candidate does right behind a hill that the demand made
+ * belongs to that hill. So does a short stretch on level ground, out of band by a candidate's own doing and beginning
+ * within the aftermath of any hill: an overshoot is no hill of its own.
  */
 function answerable(road: Road, demand: Demand, parts: readonly Part[]): HillStretch[] {
   const end = road.distance[road.size - 1];
@@ -65,35 +78,41 @@ function answerable(road: Road, demand: Demand, parts: readonly Part[]): HillStr
   for (const part of parts) {
     const last = hills.at(-1);
     const aftermath = AFTERMATH * demand.setSpeed[cellOf(road.distance, part.to)];
-    const overshoot =
-      last !== undefined &&
-      part.nature === 0 &&
-      signOfGrade(road, part) === 0 &&
-      part.from <= last.until &&
-      part.to - part.from <= 2 * aftermath;
-    if (overshoot) last.until = Math.max(last.until, part.to);
-    else {
-      if (last !== undefined) last.until = Math.min(last.until, part.from);
-      hills.push({ part, until: Math.min(end, part.to + aftermath) });
+    let from = part.from;
+    if (last !== undefined && from <= last.until && part.nature === 0) {
+      if (slopeOf(road, part) === 0 && part.to - from <= 2 * aftermath) {
+        last.until = Math.max(last.until, part.to);
+        continue;
+      }
+      if (last.part.nature !== 0) from = last.until;
     }
+    if (from >= part.to) continue;
+    if (last !== undefined) last.until = Math.min(last.until, from);
+    hills.push({ part: { ...part, from }, until: Math.min(end, part.to + aftermath) });
   }
   return hills.map(({ part, until }) => ({
     from: part.from,
     to: part.to,
     until: Math.max(part.to, until),
-    kind: kindOf(road, part),
+    kind: kindOf(road, demand, part),
   }));
 }
 
-function demandRuns(road: Road, demand: Demand): Stretch[] {
-  const runs: Stretch[] = [];
+/** Where demand leaves the range, a part for each direction; short gaps bridged. */
+function demandParts(road: Road, demand: Demand): Part[] {
+  const natureAt = (i: number) => (demand.share[i] > 1 ? 1 : demand.share[i] < -1 ? -1 : 0);
+  const parts: { from: number; to: number; nature: -1 | 1 }[] = [];
   for (let i = 0; i + 1 < road.size; i++) {
     if (!(road.distance[i + 1] > road.distance[i])) continue;
     // A cell is out where both of its ends are; a knot alone, where its two neighbours' cells meet, has no length.
-    if (Math.abs(demand.share[i]) > 1 && Math.abs(demand.share[i + 1]) > 1)
-      runs.push({ from: road.distance[i], to: road.distance[i + 1] });
+    const nature = natureAt(i);
+    if (nature === 0 || natureAt(i + 1) === 0) continue;
+    const last = parts.at(-1);
+    const gap = BRIDGED * demand.setSpeed[i];
+    if (last?.nature === nature && road.distance[i] <= last.to + gap) last.to = road.distance[i + 1];
+    else parts.push({ from: road.distance[i], to: road.distance[i + 1], nature });
   }
-  return runs;
+  return parts;
 }
 
 function recordRuns(bins: BinRecord, band: number, settling: readonly Stretch[]): Stretch[] {
@@ -116,34 +135,87 @@ function joinRuns(road: Road, demand: Demand, runs: Stretch[]): Stretch[] {
   return joined;
 }
 
-/** Parts a run between demands of opposite sign, and parts off what lies more than the aftermath away from any. */
-function splitByNature(road: Road, demand: Demand, run: Stretch): Part[] {
-  const cores: Part[] = [];
-  for (let i = cellOf(road.distance, run.from); i + 1 < road.size && road.distance[i] < run.to; i++) {
-    const nature = demand.share[i] > 1 ? 1 : demand.share[i] < -1 ? -1 : 0;
-    if (nature === 0 || road.distance[i] < run.from) continue;
-    const last = cores.at(-1);
-    if (last?.nature === nature) last.to = road.distance[i];
-    else cores.push({ from: road.distance[i], to: road.distance[i], nature });
-  }
-  if (cores.length === 0) return [{ ...run, nature: 0 }];
-  const reach = AFTERMATH * demand.setSpeed[cellOf(road.distance, run.from)];
-  const parts: Part[] = [];
-  const first = cores[0];
-  const lead = Math.max(run.from, first.from - reach);
-  if (lead > run.from) parts.push({ from: run.from, to: lead, nature: 0 });
-  let from = lead;
-  cores.forEach((core, k) => {
-    const next = cores[k + 1];
-    const to =
-      next === undefined
-        ? Math.min(run.to, core.to + reach)
-        : turningPlace(road, core.to, next.from, core.nature);
-    parts.push({ from, to, nature: core.nature });
-    from = to;
+/** What of the runs lies outside of the parts; both in order. */
+function outside(parts: readonly Part[], runs: readonly Stretch[]): Stretch[] {
+  return runs.flatMap((run) => {
+    const left: Stretch[] = [];
+    let from = run.from;
+    for (const part of parts) {
+      if (part.to <= from || part.from >= run.to) continue;
+      if (part.from > from) left.push({ from, to: part.from });
+      from = part.to;
+    }
+    if (from < run.to) left.push({ from, to: run.to });
+    return left;
   });
-  if (from < run.to) parts.push({ from, to: run.to, nature: 0 });
-  return parts;
+}
+
+/** Less than a gap before a hill that the demand made: too little to be told apart from it. */
+function isApproach(road: Road, demand: Demand, cores: readonly Part[], { from, to }: Stretch): boolean {
+  const gap = BRIDGED * demand.setSpeed[cellOf(road.distance, from)];
+  return to - from < gap && cores.some((core) => core.from === to);
+}
+
+/**
+ * Cuts a run at the crests and valleys that stand out by the height that the set speed is worth, v^2 / (2 g): what is
+ * lower a vehicle could roll over.
+ */
+function oneWay(road: Road, demand: Demand, run: Stretch): Stretch[] {
+  let height = speedHeight(road, demand, run);
+  let turns = turningPlaces(road, run, height);
+  while (turns.length >= MOST_PIECES) {
+    height *= 2;
+    turns = turningPlaces(road, run, height);
+  }
+  const edges = [run.from, ...turns, run.to];
+  return turns
+    .map((_, k) => k)
+    .concat(turns.length)
+    .map((k) => ({ from: edges[k], to: edges[k + 1] }));
+}
+
+const speedHeight = (road: Road, demand: Demand, { from }: Stretch): number => {
+  const speed = demand.setSpeed[cellOf(road.distance, from)];
+  return (speed * speed) / (2 * STANDARD_GRAVITY);
+};
+
+/** Lets each climb or descent grow along the road's own slope, never into its neighbour. */
+function growToHill(road: Road, parts: readonly Part[], grows: (part: Part) => boolean): Part[] {
+  const end = road.distance[road.size - 1];
+  return parts.map((part, k) => {
+    const sign = part.nature !== 0 ? part.nature : slopeOf(road, part);
+    if (sign === 0 || !grows(part)) return part;
+    const least = Math.max(k > 0 ? parts[k - 1].to : 0, part.from - FARTHEST);
+    const most = Math.min(k + 1 < parts.length ? parts[k + 1].from : end, part.to + FARTHEST);
+    const steep = (i: number) => sign * road.grade[i] > STILL_A_HILL;
+    let i = cellOf(road.distance, part.from);
+    while (i > 0 && road.distance[i] > least && steep(i) && steep(i - 1)) i--;
+    let j = cellOf(road.distance, part.to);
+    while (j + 1 < road.size && road.distance[j] < most && steep(j) && steep(j + 1)) j++;
+    return {
+      nature: part.nature,
+      from: Math.min(part.from, Math.max(least, road.distance[i])),
+      to: Math.max(part.to, Math.min(most, road.distance[j])),
+    };
+  });
+}
+
+/** Parts less than a gap from each other meet: at the crest behind a climb, at the foot behind a descent. */
+function closeGaps(road: Road, demand: Demand, parts: readonly Part[]): Part[] {
+  const closed: Part[] = [];
+  for (const part of parts) {
+    const last = closed.at(-1);
+    const gap = BRIDGED * demand.setSpeed[cellOf(road.distance, part.from)];
+    if (last === undefined || part.from > last.to + gap) {
+      closed.push(part);
+      continue;
+    }
+    const place =
+      last.nature === part.nature ? part.from : turningPlace(road, last.to, part.from, last.nature);
+    closed[closed.length - 1] = { ...last, to: place };
+    closed.push({ ...part, from: place });
+  }
+  return closed;
 }
 
 /** Crest (behind a climb) or foot (behind a descent) between two places. */
@@ -158,46 +230,45 @@ function turningPlace(road: Road, from: number, to: number, nature: number): num
   return best;
 }
 
-/** Lets each climb or descent grow along the road's own slope, never into its neighbour. */
-function growToHill(road: Road, parts: Part[]): Part[] {
-  const end = road.distance[road.size - 1];
-  return parts.map((part, k) => {
-    const sign = part.nature !== 0 ? part.nature : signOfGrade(road, part);
-    if (sign === 0) return part;
-    const least = Math.max(k > 0 ? parts[k - 1].to : 0, part.from - FARTHEST);
-    const most = Math.min(k + 1 < parts.length ? parts[k + 1].from : end, part.to + FARTHEST);
-    let i = cellOf(road.distance, part.from);
-    while (i >= 0 && road.distance[i] > least && sign * road.grade[i] > STILL_A_HILL) i--;
-    let j = cellOf(road.distance, part.to) + 1;
-    while (j < road.size && road.distance[j] < most && sign * road.grade[j] > STILL_A_HILL) j++;
-    return {
-      nature: part.nature,
-      from: Math.min(part.from, Math.max(least, road.distance[Math.max(i, 0)])),
-      to: Math.max(part.to, Math.min(most, road.distance[Math.min(j, road.size - 1)])),
-    };
-  });
-}
-
-/** Joins neighbours of one direction that grew together: one climb is one hill. */
-function joinTouching(parts: Part[]): Part[] {
+/** Joins neighbours of one direction that touch: one climb is one hill. */
+function joinTouching(road: Road, parts: readonly Part[]): Part[] {
   const joined: Part[] = [];
   for (const part of parts) {
     const last = joined.at(-1);
-    if (last !== undefined && part.from <= last.to && part.nature !== 0 && part.nature === last.nature)
-      last.to = Math.max(last.to, part.to);
+    const touches = last !== undefined && part.from <= last.to && part.nature === last.nature;
+    const slope = slopeOf(road, part);
+    if (touches && (part.nature !== 0 || (slope !== 0 && slope === slopeOf(road, last))))
+      joined[joined.length - 1] = { ...last, to: Math.max(last.to, part.to) };
     else joined.push({ ...part, from: Math.max(part.from, last?.to ?? 0) });
   }
   return joined.filter((part) => part.to > part.from);
 }
 
-function signOfGrade(road: Road, { from, to }: Stretch): -1 | 0 | 1 {
-  const rise = valueAt(road, 'elevation', to) - valueAt(road, 'elevation', from);
-  const mean = rise / (to - from);
+const riseOf = (road: Road, { from, to }: Stretch): number =>
+  valueAt(road, 'elevation', to) - valueAt(road, 'elevation', from);
+
+function slopeOf(road: Road, stretch: Stretch): -1 | 0 | 1 {
+  const mean = riseOf(road, stretch) / (stretch.to - stretch.from);
   return mean > STILL_A_HILL ? 1 : mean < -STILL_A_HILL ? -1 : 0;
 }
 
-function kindOf(road: Road, part: Part): HillKind {
-  // By the ground: wind may ask for more than there is on a level road.
-  const sign = signOfGrade(road, part);
-  return sign > 0 ? 'climb' : sign < 0 ? 'descent' : 'rolling';
+/** By the ground: wind may ask for more than there is on a level road. */
+function kindOf(road: Road, demand: Demand, part: Part): HillKind {
+  const worth = speedHeight(road, demand, part);
+  const rise = riseOf(road, part);
+  const slope = Math.abs(rise) >= worth ? Math.sign(rise) : slopeOf(road, part);
+  if (slope !== 0) return slope > 0 ? 'climb' : 'descent';
+  return heightRange(road, part) < LEVEL * worth ? 'level' : 'rolling';
+}
+
+/** Highest less lowest place [m]. */
+function heightRange(road: Road, { from, to }: Stretch): number {
+  const ends = [valueAt(road, 'elevation', from), valueAt(road, 'elevation', to)];
+  let high = Math.max(ends[0], ends[1]);
+  let low = Math.min(ends[0], ends[1]);
+  for (let i = cellOf(road.distance, from) + 1; i < road.size && road.distance[i] < to; i++) {
+    high = Math.max(high, road.elevation[i]);
+    low = Math.min(low, road.elevation[i]);
+  }
+  return high - low;
 }

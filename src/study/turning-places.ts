@@ -1,5 +1,7 @@
+import { cellOf } from '../numeric/interpolate.ts';
+import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
-import { knotBefore, valueAt } from './along-road.ts';
+
 import type { Stretch } from './findings.ts';
 
 /**
@@ -11,7 +13,7 @@ import type { Stretch } from './findings.ts';
  */
 export function turningPlaces(road: Road, { from, to }: Stretch, height: number): number[] {
   const places: number[] = [];
-  const first = valueAt(road, road.elevation, from);
+  const first = valueAt(road, 'elevation', from);
   let high = { at: from, z: first };
   let low = { at: from, z: first };
   // 1: going up since the last turning, -1: down, 0: not known yet.
@@ -29,8 +31,8 @@ export function turningPlaces(road: Road, { from, to }: Stretch, height: number)
       high = { at, z };
     }
   };
-  for (let i = knotBefore(road, from) + 1; i < road.size && road.distance[i] < to; i++)
+  for (let i = cellOf(road.distance, from) + 1; i < road.size && road.distance[i] < to; i++)
     if (road.distance[i] > from) pass(road.distance[i], road.elevation[i]);
-  pass(to, valueAt(road, road.elevation, to));
+  pass(to, valueAt(road, 'elevation', to));
   return places;
 }

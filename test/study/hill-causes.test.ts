@@ -83,7 +83,7 @@ describe('the cause of a hill', () => {
     ]);
     const { hill, outcome } = firstOutcome(planOf(windy, vehicleOf(), STIFF));
     expect(outcome.cause).toBe('wind');
-    expect(hill.kind).toBe('rolling');
+    expect(hill.kind).toBe('level');
   });
 
   it('is not asked of a locked throttle, which makes no hill either', () => {

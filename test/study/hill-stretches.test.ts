@@ -57,7 +57,7 @@ describe('the stretches that are hills', () => {
   it('come from a candidate that leaves its band where the demand is in range', () => {
     const road = roadOf([{ length: 3000, grade: 0 }]);
     const found = stretchesOf(road, [withErrors(road, [[1000, 1400, -0.8]])]);
-    expect(found).toEqual([{ from: 1000, to: 1400, until: 1650, kind: 'rolling' }]);
+    expect(found).toEqual([{ from: 1000, to: 1400, until: 1650, kind: 'level' }]);
   });
 
   it('are joined over gaps of up to 5 s and kept apart over longer ones', () => {
@@ -121,6 +121,68 @@ describe('the stretches that are hills', () => {
     expectClose(found[0]!.to, 1540, 11);
     expectClose(found[1]!.from, 1540, 41);
     expect(found[1]!.from).toBeGreaterThanOrEqual(found[0]!.to);
+  });
+
+  it('are one climb or one descent each where a candidate is out of its band over many', () => {
+    // Height that 60 km/h are worth: 16.67^2 / (2 9.81) = 14.2 m. Undulations of 24 m are cut, of 8 m are not.
+    const undulating = (rise: number) =>
+      roadOf([
+        { length: 600, grade: 0 },
+        ...[1, -1, 1, -1].map((way) => ({ length: 600, grade: (way * rise) / 600 })),
+        { length: 600, grade: 0 },
+      ]);
+    const high = undulating(24);
+    const cut = stretchesOf(high, [withErrors(high, [[700, 2900, -3]])]);
+    expect(cut.map(({ kind }) => kind)).toEqual(['climb', 'descent', 'climb', 'descent']);
+    for (const [k, { from, to }] of cut.entries()) {
+      expectClose(from, 600 + 600 * k, 1);
+      expectClose(to, 1200 + 600 * k, 1);
+    }
+    const low = undulating(8);
+    const whole = stretchesOf(low, [withErrors(low, [[700, 2900, -3]])]);
+    expect(whole.map(({ kind, from, to }) => [kind, from, to])).toEqual([['rolling', 700, 2900]]);
+  });
+
+  it('that the demand makes are the same beside a candidate that is out of its band everywhere', () => {
+    // Two descents and a climb beyond the drive, with gentler ground between.
+    const road = roadOf([
+      { length: 1500, grade: 0 },
+      { length: 900, grade: -0.1 },
+      { length: 400, grade: 0.01 },
+      { length: 900, grade: 0.09 },
+      { length: 300, grade: -0.005 },
+      { length: 1200, grade: -0.09 },
+      { length: 1500, grade: 0 },
+    ]);
+    const good = withErrors(road, [
+      [1540, 2460, 1.2],
+      [2860, 3760, -2],
+      [4060, 5260, 1.5],
+    ]);
+    const bad = withErrors(road, [[0, 6700, -5]]);
+    const demanded = (found: ReturnType<typeof stretchesOf>) =>
+      found.filter(({ from, to }) => [1900, 3200, 4700].some((x) => from < x && to > x));
+    const alone = demanded(stretchesOf(road, [good]));
+    const beside = demanded(stretchesOf(road, [good, bad]));
+    expect(alone.map(({ kind }) => kind)).toEqual(['descent', 'climb', 'descent']);
+    expect(beside).toHaveLength(3);
+    for (const [k, hill] of alone.entries()) {
+      expect(beside[k]!.kind).toBe(hill.kind);
+      expectClose(beside[k]!.from, hill.from, 100);
+      expectClose(beside[k]!.to, hill.to, 100);
+    }
+    const borders = [1500, 2400, 2800, 3700, 4000, 5200];
+    for (const [k, x] of alone.flatMap(({ from, to }) => [from, to]).entries())
+      expectClose(x, borders[k]!, 20);
+  });
+
+  it('are not hundreds on a long rolling road', () => {
+    const road = roadOf(
+      Array.from({ length: 240 }, (_, k) => ({ length: 400, grade: k % 2 === 0 ? 0.04 : -0.04 })),
+      { grid: 50 },
+    );
+    const found = stretchesOf(road, [withErrors(road, [[0, 96_000, -5]])]);
+    expect(found.length).toBeLessThanOrEqual(40);
   });
 
   it('never overlap, are numbered in order and stay on the road, on seeded random roads', () => {
