@@ -10,8 +10,8 @@ import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Demand, Stretch } from './findings.ts';
+import { nominalCourse, setSpeedAt } from './hold-course.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
-import { setSpeedAlong } from './set-speed-along.ts';
 
 /** Beyond this a share says no more [1]. */
 export const GREATEST_SHARE = 9.99;
@@ -37,7 +37,9 @@ export function demandOf(
   hold: HoldPlan,
   rider: RiderPlan = { brakesAbove: null },
 ): Demand {
-  const { setSpeed, startSpeed, settling } = setSpeedAlong(road, hold, vehicle.sensor.scaleError);
+  const course = nominalCourse(road, hold, vehicle);
+  const { startSpeed, settling } = course;
+  const setSpeed = setSpeedAt(road, course);
   const column = (): Float64Array => new Float64Array(road.size);
   const required = column();
   const upper = column();

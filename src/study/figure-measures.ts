@@ -1,6 +1,8 @@
 import type { BinRecord } from '../loop/result.ts';
+import type { Road } from '../road/road.ts';
 import { toKm, toKmh, toPct, toWh } from '../units/convert.ts';
-import type { Figure } from './findings.ts';
+import type { Figure, None } from './findings.ts';
+import { NOT_RECOVERED } from './recovery.ts';
 
 /** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
 export interface Recovery {
@@ -16,6 +18,8 @@ export interface FigureRecord {
   readonly chosen: Uint8Array;
   /** Where the run ended [m]: the last bin counts up to there. */
   readonly end: number;
+  /** Of the road: along time its distances are nominal, and lengths are taken from the speed. */
+  readonly along: Road['along'];
   /** Bands of the record [m/s], and the one that is asked for (null where the figure takes none). */
   readonly bands: readonly number[];
   readonly band: number | null;
@@ -32,6 +36,8 @@ export interface Measure {
   readonly value: Figure;
   /** Where it was worst [m]; null: the figure has no place. */
   readonly at: number | null;
+  /** Why the true value may be greater; left out where it is known. */
+  readonly open?: string;
 }
 
 const NOTHING: Measure = { value: { none: 'no such stretch was driven' }, at: null };
@@ -45,10 +51,10 @@ export function sum({ bins, chosen }: FigureRecord, of: (i: number) => number): 
 }
 
 const timeOf = (record: FigureRecord): number => sum(record, (i) => record.bins.time[i]);
-const lengthOf = (record: FigureRecord): number => {
-  const { bins, end } = record;
-  return sum(record, (i) => Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]));
-};
+const binLength = ({ bins, end, along }: FigureRecord, i: number): number =>
+  along === 'time'
+    ? bins.time[i] * bins.speedMean[i]
+    : Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]);
 
 /** A figure that exists wherever any chosen time was driven. */
 export function driven(record: FigureRecord, of: (time: number) => Figure): Measure {
@@ -106,13 +112,21 @@ export function absoluteErrorQuantile(record: FigureRecord, share: number): Meas
   return placeless(toKmh(rows[rows.length - 1].error));
 }
 
+/**
+ * The longest recovery that is known. One that never came although there was road for it is before any other; one
+ * that is not known leaves the figure open, or without a value where no other hill needed a recovery.
+ */
 export function worstRecovery({ recoveries }: FigureRecord): Measure {
   let worst: { value: number; at: number } | null = null;
+  let unknown: { value: None; at: number } | null = null;
   for (const { at, time } of recoveries) {
-    if (typeof time !== 'number') return { value: time, at };
-    if (time > (worst?.value ?? -1)) worst = { value: time, at };
+    if (typeof time === 'number') {
+      if (time > (worst?.value ?? -1)) worst = { value: time, at };
+    } else if (time.none === NOT_RECOVERED) return { value: time, at };
+    else unknown ??= { value: time, at };
   }
-  return worst ?? placeless(0);
+  if (unknown === null) return worst ?? placeless(0);
+  return worst === null || worst.value === 0 ? unknown : { ...worst, open: unknown.value.none };
 }
 
 export function batteryEnergy(record: FigureRecord): Measure {
@@ -131,15 +145,13 @@ export function batteryEnergy(record: FigureRecord): Measure {
 
 /** Distance of a bin driven with the brake on: its length by share of time. */
 export const brakeDistance = (record: FigureRecord): number => {
-  const { bins, end } = record;
+  const { bins } = record;
   return sum(record, (i) =>
-    bins.time[i] > 0
-      ? (Math.max(0, Math.min(bins.edge[i + 1], end) - bins.edge[i]) * bins.timeBrake[i]) / bins.time[i]
-      : 0,
+    bins.time[i] > 0 ? (binLength(record, i) * bins.timeBrake[i]) / bins.time[i] : 0,
   );
 };
 
 export const perKm = (record: FigureRecord, amount: number): Figure => {
-  const length = lengthOf(record);
+  const length = sum(record, (i) => binLength(record, i));
   return length > 0 ? amount / toKm(length) : { none: 'no such stretch was driven' };
 };

@@ -2,11 +2,14 @@ import { runLoop } from '../loop/run-loop.ts';
 import { seededStream } from '../numeric/random.ts';
 import { perturbRoad } from '../road/perturb-road.ts';
 import type { Recovery } from './figure-measures.ts';
-import { type FigureRow, figureRow, RECOVERED_BAND } from './figure-table.ts';
+import { type FigureRow, figureRow } from './figure-table.ts';
 import type { Hill, Replayed, Requirement } from './findings.ts';
 import { seriesOver } from './hill-outcome.ts';
-import { chooseBins, type FigureContext, measureOver } from './measure-figure.ts';
-import { recoveryOf, sampleAt } from './series-measures.ts';
+import { courseOfRun, type HoldCourse } from './hold-course.ts';
+import { chooseBins, endedEarly, type FigureContext, measureOver } from './measure-figure.ts';
+import { outOfRange } from './out-of-range.ts';
+import { RECOVERED_BAND, recoveryOf } from './recovery.ts';
+import { sampleAt } from './series-measures.ts';
 
 /** S.d. of the figures that requirements speak of, from the grade's uncertainty. */
 export interface FigureSpread {
@@ -20,6 +23,8 @@ export interface SpreadRow {
   readonly candidate: string;
   /** In the unit of the figure. */
   readonly sd: number;
+  /** Drawn roads on which the run ended early or gave no such figure: they are not in the s.d. */
+  readonly failed: number;
 }
 
 export interface SpreadPlan {
@@ -47,6 +52,9 @@ export function candidatesOf(requirement: Requirement, replayed: readonly Replay
  * How far the figures of the requirements depend on what is not known of the grade: each candidate is run, under the
  * fast scheme, over roads drawn from the grade's own error field (seeded, the same roads for all candidates), and the
  * sample s.d. of each figure is taken (n - 1). What is holdable is kept as it is on the road itself.
+ *
+ * A run that ends before the end of what the requirement is about, or that has no such figure, has failed; such roads
+ * are counted, because a s.d. over the others says nothing about them.
  *
  * With n roads the s.d. is itself known to about 1 / sqrt(2 (n - 1)): 27 % for 8.
  *
@@ -78,6 +86,7 @@ export function figureSpread(
         run = { name: candidate.name, plan, result: runLoop(plan) };
         runs.set(candidate.name, run);
       }
+      if (endedEarly(run, requirement.where)) return;
       const value = measureDrawn(row, requirement, run, context);
       if (typeof value === 'number') values[k].push(value);
     });
@@ -89,14 +98,17 @@ export function figureSpread(
       requirement: requirement.id,
       candidate: candidate.name,
       sd: sampleSd(values[k]),
+      failed: draws - values[k].length,
     })),
   };
 }
 
 function measureDrawn(row: FigureRow, requirement: Requirement, run: Replayed, context: FigureContext) {
-  const chosen = chooseBins(run.result.bins, requirement.where, context);
+  const course = courseOfRun(run);
+  const chosen = chooseBins(run.result.bins, requirement.where, context, course.settling);
   const band = requirement.band ?? run.plan.bands[0];
-  const recoveries = row.name === 'recovery_s' ? drawnRecoveries(requirement, run, context, band) : [];
+  const recoveries =
+    row.name === 'recovery_s' ? drawnRecoveries(requirement, run, context, band, course) : [];
   return measureOver(row, run, chosen, recoveries, requirement.band).value;
 }
 
@@ -104,8 +116,9 @@ function measureDrawn(row: FigureRow, requirement: Requirement, run: Replayed, c
 function drawnRecoveries(
   { where }: Requirement,
   run: Replayed,
-  { hills, demand }: FigureContext,
+  { road, hills, demand }: FigureContext,
   band: number,
+  course: HoldCourse,
 ): Recovery[] {
   const slow: { hill: Hill; time: number }[] = [];
   for (const hill of hills) {
@@ -115,11 +128,15 @@ function drawnRecoveries(
       slow.push({ hill, time: outcome.recovery });
   }
   slow.sort((a, b) => b.time - a.time);
+  const rule = { demand, outOfRange: outOfRange(road, demand), course, band, recoveryBand: RECOVERED_BAND };
   return slow.slice(0, SLOWEST).map(({ hill }) => {
-    const { series, whole } = seriesOver(run, hill, { demand, band, recoveryBand: RECOVERED_BAND });
+    const { series, whole } = seriesOver(run, hill, rule);
     const first = sampleAt(series, hill.from);
     const last = sampleAt(series, hill.until);
-    return { at: hill.from, time: recoveryOf(series, first, last, band, RECOVERED_BAND, whole).time };
+    return {
+      at: hill.from,
+      time: recoveryOf(series, first, last, { ...rule, settling: course.settling, whole }).time,
+    };
   });
 }
 

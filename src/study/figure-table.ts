@@ -1,5 +1,5 @@
 import type { BinRecord } from '../loop/result.ts';
-import { fromKmh, toKmh, toPct, toWh } from '../units/convert.ts';
+import { toKmh, toPct, toWh } from '../units/convert.ts';
 import {
   absoluteErrorQuantile,
   batteryEnergy,
@@ -30,10 +30,6 @@ export interface FigureRow {
   readonly source: string;
   readonly measure: (record: FigureRecord) => Measure;
 }
-
-/** Half-width within which a run counts as recovered, and for how long [m/s], [s]. */
-export const RECOVERED_BAND = fromKmh(1);
-export const RECOVERED_FOR = 3;
 
 const DEFINED_HERE = 'defined here';
 const timed = (
@@ -137,7 +133,7 @@ export const FIGURES: readonly FigureRow[] = [
     takesBand: false,
     better: 'lower',
     definition:
-      'Longest, over the hills that count, of the time from leaving the limit (or, where none was met, the band) to the start of 3 s within 1 km/h. 0 where no hill needed one.',
+      'Longest, over the hills that count, of the time to the start of 3 s within 1 km/h: from where the demand comes back into range, or, where it stays in range, from leaving the band; time at a limit counts. Up to where the demand leaves the range again or the set speed changes, if that comes first. 0 where no hill needed one.',
     source: DEFINED_HERE,
     measure: worstRecovery,
   },
@@ -173,7 +169,8 @@ export const FIGURES: readonly FigureRow[] = [
     weight: 'distance',
     takesBand: false,
     better: 'lower',
-    definition: 'Wheel energy over the horizontal distance driven.',
+    definition:
+      'Wheel energy over the horizontal distance driven; on a road along time, over the distance travelled.',
     source: DEFINED_HERE,
     measure: (record) => placeless(perKm(record, toWh(sum(record, (i) => record.bins.driveWork[i])))),
   },
@@ -223,7 +220,7 @@ export const FIGURES: readonly FigureRow[] = [
     takesBand: false,
     better: 'lower',
     definition:
-      'Sum of the changes of the throttle command without their signs, over the horizontal distance driven.',
+      'Sum of the changes of the throttle command without their signs, over the horizontal distance driven; on a road along time, over the distance travelled.',
     source: 'total variation of the control signal (Skogestad, J. Process Control 13 (2003), from memory)',
     measure: (record) => placeless(perKm(record, toPct(sum(record, (i) => record.bins.throttleTravel[i])))),
   },
@@ -277,7 +274,8 @@ export const FIGURES: readonly FigureRow[] = [
     weight: 'distance',
     takesBand: false,
     better: 'lower',
-    definition: "Horizontal distance driven with the rider's brake on: in each bin its share of the time.",
+    definition:
+      "Distance driven with the rider's brake on, horizontal (on a road along time: travelled): in each bin its share of the time.",
     source: DEFINED_HERE,
     measure: (record) => driven(record, () => brakeDistance(record)),
   },

@@ -41,7 +41,7 @@ export interface Demand {
    */
   readonly holdable: Uint8Array;
   readonly holdableShare: number;
-  /** Where a change of set speed is being followed; no hold is judged there. */
+  /** Where a change of set speed is being followed by the road's own reckoning (nominalCourse); candidates have their own. */
   readonly settling: readonly Stretch[];
 }
 
@@ -92,7 +92,7 @@ export interface HillOutcome {
   readonly candidate: string;
   /** It left its band or sat on a limit here. */
   readonly affected: boolean;
-  /** Extreme error within hill and recovery, signed [m/s]: lost (negative) or gained. */
+  /** Extreme error on what the hill is answerable for, signed [m/s]: lost (negative) or gained; so are the times. */
   readonly speedChange: number;
   /** By the hand formula (quasi-steady plus momentum) [m/s]. */
   readonly predictedChange: Figure;
@@ -100,7 +100,7 @@ export interface HillOutcome {
   readonly predictionDiffers: boolean;
   readonly timeLost: number;
   readonly timeAtLimit: number;
-  /** From the end of the longest stay at a limit, or where there was none from leaving the band, to within 1 km/h for 3 s [s]. */
+  /** From where the demand comes back into range, or where it stays there from leaving the band, to within 1 km/h for 3 s [s] (see recoveryOf). */
   readonly recovery: Figure;
   readonly cause: Cause | None;
   /** One sentence: why. */

@@ -7,8 +7,8 @@ import { demandShare } from './demand.ts';
 import type { Cause, None } from './findings.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
+import { nominalCourse, setSpeedAt } from './hold-course.ts';
 import { has, type Limitation, without } from './limitations.ts';
-import { setSpeedAlong } from './set-speed-along.ts';
 import { inKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
 
 /** What the candidate did on the hill, from its own run. */
@@ -208,7 +208,7 @@ function extremeDemand(
   up: boolean,
 ): { share: number; at: number; required: number; available: number; speed: number } {
   const { road, vehicle } = plan;
-  const { setSpeed } = setSpeedAlong(road, plan.hold, vehicle.sensor.scaleError);
+  const setSpeed = setSpeedAt(road, nominalCourse(road, plan.hold, vehicle));
   let found = { share: Number.NEGATIVE_INFINITY, at: from, required: 0, available: 0, speed: 0 };
   for (let i = 0; i < road.size; i++) {
     if (road.distance[i] < from || road.distance[i] > to) continue;

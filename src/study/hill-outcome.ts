@@ -2,14 +2,16 @@ import { nearestCheckpoint, replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
-import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
+import type { Demand, Figure, HillOutcome, Replayed, Stretch } from './findings.ts';
 import { causeOnHill, type HillEvents, metAnyLimit } from './hill-cause.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { marksBin } from './hill-stretches.ts';
 import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
+import type { HoldCourse } from './hold-course.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
+import { recoveryOf } from './recovery.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
-import { isSettling, passageOf, recoveryOf, sampleAt, thinSeries } from './series-measures.ts';
+import { isSettling, passageOf, sampleAt, thinSeries } from './series-measures.ts';
 
 /** Shown before the hill [s at the set speed] and after the recovery [s]; rows of a picture. */
 const LEAD = 10;
@@ -25,6 +27,10 @@ const AGREES_ABSOLUTE = fromKmh(0.5);
 
 export interface OutcomeContext {
   readonly demand: Demand;
+  /** Where the demand leaves the range, in order. */
+  readonly outOfRange: readonly Stretch[];
+  /** The candidate's own. */
+  readonly course: HoldCourse;
   readonly band: number;
   readonly recoveryBand: number;
 }
@@ -37,19 +43,19 @@ export interface OutcomeContext {
 export function hillOutcome(replayed: Replayed, hill: HillFacts, context: OutcomeContext): HillOutcome {
   const { name, result } = replayed;
   if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
-  const { demand, band } = context;
-  const events = eventsOn(result, hill, demand, band);
+  const { band, course } = context;
+  const events = eventsOn(result, hill, course, band);
   const locked = replayed.plan.controller.kind === 'locked';
   const { series, whole, shownFrom } = seriesOver(replayed, hill, context, events.marked && !locked);
   const first = Math.min(sampleAt(series, hill.from), series.size - 1);
   const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
   const recovery =
     events.marked && !locked
-      ? recoveryOf(series, first, last, band, context.recoveryBand, whole)
+      ? recoveryOf(series, first, last, { ...context, settling: course.settling, whole })
       : { time: locked ? LOCKED : 0, over: last };
   const over = Math.max(last, recovery.over);
-  const passage = passageOf(series, first, over, demand.settling);
-  const predictedChange = predict(replayed, hill, demand, series, first);
+  const passage = passageOf(series, first, last, course.settling);
+  const predictedChange = predict(replayed, hill, context, series, first);
   const reasons = events.marked
     ? explainOutcome(replayed, hill, context, events)
     : { cause: { none: 'it kept its band and met no limit' }, why: 'It kept its band.', wouldHold: [] };
@@ -78,7 +84,7 @@ function pictureEnd(series: FullSeries, over: number): number {
 function eventsOn(
   { bins }: LoopResult,
   hill: HillFacts,
-  demand: Demand,
+  course: HoldCourse,
   band: number,
 ): HillEvents & { readonly marked: boolean } {
   const events = { marked: false, leftBand: false, low: 0, high: 0, timeUpper: 0, timeLower: 0, timeRate: 0 };
@@ -87,7 +93,7 @@ function eventsOn(
     events.timeUpper += bins.timeUpper[i];
     events.timeLower += bins.timeLower[i];
     events.timeRate += bins.timeRate[i];
-    if (!marksBin(bins, i, band, demand.settling)) continue;
+    if (!marksBin(bins, i, band, course.settling)) continue;
     events.marked = true;
     events.low = Math.min(events.low, bins.errorMin[i]);
     events.high = Math.max(events.high, bins.errorMax[i]);
@@ -103,11 +109,11 @@ function eventsOn(
 export function seriesOver(
   { plan, result }: Replayed,
   hill: HillFacts,
-  { demand, band, recoveryBand }: OutcomeContext,
+  context: OutcomeContext,
   recovers = true,
 ): { series: FullSeries; whole: boolean; shownFrom: number } {
   const { road } = plan;
-  const setSpeed = demand.setSpeed[cellOf(road.distance, hill.to)];
+  const setSpeed = context.demand.setSpeed[cellOf(road.distance, hill.to)];
   const from = Math.max(0, hill.from - LEAD * setSpeed);
   const start = nearestCheckpoint(result, from);
   const over = (behind: number) => {
@@ -119,14 +125,15 @@ export function seriesOver(
   const near = over(NEAR);
   const first = sampleAt(near.series, hill.from);
   const last = sampleAt(near.series, hill.until);
-  const { time } = recoveryOf(near.series, first, last, band, recoveryBand, near.whole);
+  const rule = { ...context, settling: context.course.settling, whole: near.whole };
+  const { time } = recoveryOf(near.series, first, last, rule);
   return typeof time === 'number' || !near.whole ? near : over(FAR);
 }
 
 function predict(
   { plan }: Replayed,
   hill: HillFacts,
-  demand: Demand,
+  { demand, course }: OutcomeContext,
   series: FullSeries,
   first: number,
 ): Figure {
@@ -143,7 +150,8 @@ function predict(
       vehicle,
       setSpeed: demand.setSpeed,
       brakesAbove: rider.brakesAbove,
-      throttle: locked ? series.actuator[first] : null,
+      // The command: where the throttle is locked anew just here, the actuator is still where it was.
+      throttle: locked ? series.command[first] : null,
     },
     a,
     b,
@@ -151,7 +159,7 @@ function predict(
   );
   let extreme = 0;
   for (let i = 0; i < speeds.length; i++) {
-    if (isSettling(road.distance[a + i], demand.settling)) continue;
+    if (isSettling(road.distance[a + i], course.settling)) continue;
     const change = speeds[i] - demand.setSpeed[a + i];
     if (Math.abs(change) > Math.abs(extreme)) extreme = change;
   }
@@ -167,11 +175,11 @@ function differs(simulated: number, predicted: Figure): boolean {
 function explainOutcome(
   { plan }: Replayed,
   hill: HillFacts,
-  { demand, band }: OutcomeContext,
+  { demand, course, band }: OutcomeContext,
   events: HillEvents,
 ): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
   const { road } = plan;
-  const near = hillWindow(hill, road, demand);
+  const near = hillWindow(hill, road, demand, course);
   // Where no limit was met there is nothing to take away, and no replay can say more.
   if (!events.leftBand || plan.controller.kind === 'locked' || !metAnyLimit(events))
     return { ...causeOnHill(plan, hill, near, events, band, 0), wouldHold: [] };

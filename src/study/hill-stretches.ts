@@ -5,6 +5,7 @@ import type { Road } from '../road/road.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
 
 import type { Demand, HillKind, Replayed, Stretch } from './findings.ts';
+import { courseOfRun } from './hold-course.ts';
 import { turningPlaces } from './turning-places.ts';
 
 /** Gaps shorter than this are bridged [s at the set speed]. */
@@ -56,7 +57,7 @@ export function hillStretches(
   const cores = joinTouching(road, closeGaps(road, demand, demanded));
   const marks = replayed
     .filter(({ plan }) => plan.controller.kind !== 'locked')
-    .flatMap(({ result }) => recordRuns(result.bins, band, demand.settling));
+    .flatMap((one) => recordRuns(one.result.bins, band, courseOfRun(one).settling));
   const own = outside(cores, joinRuns(road, demand, marks))
     .filter((run) => !isApproach(road, demand, cores, run))
     .flatMap((run) => oneWay(road, demand, run));

@@ -2,20 +2,29 @@ import type { LoopPlan, RunStatus } from '../loop/plan.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import type { Demand, Hill, Stretch } from './findings.ts';
+import type { Demand, Hill } from './findings.ts';
+import type { HoldCourse } from './hold-course.ts';
 import { windowPlan } from './road-window.ts';
 
 /** A settled start lies this far before the hill, where the road has it [m]. */
 const NEAREST_START = 1000;
 const FARTHEST_START = 1500;
 
-/** A hill cut out of the road, for replays that start settled before it. Horizontal distances of the whole road [m]. */
+/**
+ * A hill cut out of the road, for replays that start settled before it. Horizontal distances of the whole road [m].
+ *
+ * The window is a road of its own that begins 1 to 1.5 km before the hill, and a plan over it starts settled at the
+ * set speed there. That equals a replay of the window on the whole road: the loop meets nothing but grade, wind and air
+ * at its station, and all of these are the same function of the way from the window's start. It costs the window's
+ * length only. What it leaves out is the state in which the run came to the window, which a settled loop has forgotten
+ * in a kilometre; where it has not, the window is lengthened (windowThatShows).
+ */
 export interface HillWindow {
   readonly start: number;
   readonly from: number;
   readonly until: number;
-  /** Where a change of set speed is being followed: not judged. */
-  readonly settling: readonly Stretch[];
+  /** The candidate's: where a change of set speed is being followed, nothing is judged. */
+  readonly course: HoldCourse;
 }
 
 /** What a run did between a hill's beginning and the end of what it is answerable for. */
@@ -27,7 +36,12 @@ export interface HillPassage {
 }
 
 /** Window of a hill: its start is where the demand is least between 1 and 1.5 km before the hill, or the road's start. */
-export function hillWindow(hill: Pick<Hill, 'from' | 'until'>, road: Road, demand: Demand): HillWindow {
+export function hillWindow(
+  hill: Pick<Hill, 'from' | 'until'>,
+  road: Road,
+  demand: Demand,
+  course: HoldCourse,
+): HillWindow {
   const least = Math.max(0, hill.from - FARTHEST_START);
   const most = Math.max(0, hill.from - NEAREST_START);
   let start = least;
@@ -37,12 +51,12 @@ export function hillWindow(hill: Pick<Hill, 'from' | 'until'>, road: Road, deman
     share = Math.abs(demand.share[i]);
     start = road.distance[i];
   }
-  return { start, from: hill.from, until: hill.until, settling: demand.settling };
+  return { start, from: hill.from, until: hill.until, course };
 }
 
 /** The candidate's plan over the window, started settled. Limitations and levers are applied to this. */
 export const planOverWindow = (plan: LoopPlan, window: HillWindow): LoopPlan =>
-  windowPlan(plan, window.start, window.until);
+  windowPlan(plan, window.start, window.until, window.course);
 
 /** Replays a window's plan and looks at the hill in it, bins of which any part lies on the hill counted whole. */
 export function passHill(windowed: LoopPlan, window: HillWindow): HillPassage {
@@ -52,7 +66,7 @@ export function passHill(windowed: LoopPlan, window: HillWindow): HillPassage {
   for (let i = 0; i < bins.size; i++) {
     const from = window.start + bins.edge[i];
     const to = window.start + bins.edge[i + 1];
-    if (to <= window.from || window.settling.some((s) => from < s.to && to > s.from)) continue;
+    if (to <= window.from || window.course.settling.some((s) => from < s.to && to > s.from)) continue;
     low = Math.min(low, bins.errorMin[i]);
     high = Math.max(high, bins.errorMax[i]);
   }

@@ -1,9 +1,9 @@
 import { InputError } from '../problems/input-error.ts';
 import { candidatesOf, type FigureSpread, figureSpread } from './figure-spread.ts';
 import { FIGURES, type FigureRow, figureRow } from './figure-table.ts';
-import type { Figure, Replayed, Requirement, RequirementFinding, Where } from './findings.ts';
-import { type FigureContext, measureFigure } from './measure-figure.ts';
-import { NOT_RECOVERED } from './series-measures.ts';
+import type { Figure, Replayed, Requirement, RequirementFinding } from './findings.ts';
+import { endedEarly, type FigureContext, measureFigure } from './measure-figure.ts';
+import { NOT_RECOVERED } from './recovery.ts';
 import { inKm, withUnit } from './wording.ts';
 
 /** A limit within this many standard deviations of the measured figure cannot be told apart from it. */
@@ -15,7 +15,8 @@ const TOO_CLOSE = 2;
  * grade's uncertainty) of the figure.
  *
  * A run that did not get to the end of what the requirement is about does not meet it. A figure that does not exist is
- * `too close to call` with its reason, except a recovery that never came, which is `not met`.
+ * `too close to call` with its reason, except a recovery that never came, which is `not met`. So is a figure inside its
+ * limit that may be greater than what is known of it, or that failed on any of the drawn roads.
  *
  * @param requirements as written; where both limits are given both count, and the nearer one makes the margin
  * @param replayed all candidates after their runs
@@ -33,9 +34,12 @@ export function judge(
     const row = figureRow(requirement.figure);
     if (row === undefined) throw unknownFigure(requirement);
     return candidatesOf(requirement, replayed).map((candidate) => {
-      const sd =
-        spread.rows.find((r) => r.requirement === requirement.id && r.candidate === candidate.name)?.sd ?? 0;
-      return judgeOne(requirement, row, candidate, context, sd);
+      const { sd, failed } = spread.rows.find(
+        (r) => r.requirement === requirement.id && r.candidate === candidate.name,
+      ) ?? { sd: 0, failed: 0 };
+      const draws =
+        failed === 0 ? null : `${failed} of ${spread.roads} drawn roads ended early or gave no figure`;
+      return judgeOne(requirement, row, candidate, context, sd, draws);
     });
   });
 }
@@ -46,12 +50,14 @@ function judgeOne(
   candidate: Replayed,
   context: FigureContext,
   spread: number,
+  failedDraws: string | null,
 ): RequirementFinding {
   const measure = measureFigure(row, candidate, context, requirement.where, requirement.band);
   const measured = measure.value;
   const margin = marginOf(requirement, measured);
   const ended = endedEarly(candidate, requirement.where);
-  const verdict = verdictOf(measured, margin, spread, ended);
+  const doubt = measure.open ?? failedDraws;
+  const verdict = verdictOf(measured, margin, spread, ended, doubt !== null);
   return {
     requirement,
     candidate: candidate.name,
@@ -60,7 +66,13 @@ function judgeOne(
     spread,
     worstAt: measure.at,
     verdict,
-    words: wordsOf(requirement, row, candidate, { measured, margin, spread, at: measure.at, ended }, verdict),
+    words: wordsOf(
+      requirement,
+      row,
+      candidate,
+      { measured, margin, spread, at: measure.at, ended, doubt },
+      verdict,
+    ),
   };
 }
 
@@ -72,26 +84,20 @@ function marginOf({ atLeast, atMost }: Requirement, measured: Figure): Figure {
   return Number.isFinite(margin) ? margin : { none: 'the requirement has no limit' };
 }
 
-/** The run ended before the end of the stretch that is asked about. */
-function endedEarly({ plan, result }: Replayed, where: Where): boolean {
-  if (result.status === 'completed') return false;
-  const { road } = plan;
-  const end = typeof where === 'string' ? road.distance[road.size - 1] : where.to;
-  return result.endDistance < end;
-}
-
 function verdictOf(
   measured: Figure,
   margin: Figure,
   spread: number,
   ended: boolean,
+  doubtful: boolean,
 ): RequirementFinding['verdict'] {
   if (ended) return 'not met';
   if (typeof measured !== 'number') return measured.none === NOT_RECOVERED ? 'not met' : 'too close to call';
   if (typeof margin !== 'number') return 'too close to call';
   // A figure that came out right on its limit, to rounding, is met; with a spread that is too close.
   if (spread > 0 && Math.abs(margin) <= TOO_CLOSE * spread) return 'too close to call';
-  return margin >= 0 ? 'met' : 'not met';
+  if (margin < 0) return 'not met';
+  return doubtful ? 'too close to call' : 'met';
 }
 
 interface Numbers {
@@ -100,13 +106,15 @@ interface Numbers {
   readonly spread: number;
   readonly at: number | null;
   readonly ended: boolean;
+  /** Why the figure may be worse than what is known of it. */
+  readonly doubt: string | null;
 }
 
 function wordsOf(
   requirement: Requirement,
   row: FigureRow,
   { name, result }: Replayed,
-  { measured, margin, spread, at, ended }: Numbers,
+  { measured, margin, spread, at, ended, doubt }: Numbers,
   verdict: RequirementFinding['verdict'],
 ): string {
   const subject = `${name}: ${row.label.toLowerCase()}`;
@@ -119,7 +127,7 @@ function wordsOf(
     typeof margin !== 'number'
       ? ''
       : `, ${withUnit(Math.abs(margin), row.unit)} ${margin >= 0 ? 'to spare' : 'short'}`;
-  return `${subject} ${withUnit(measured, row.unit)}${around} against ${limitWords(requirement, row)}: ${verdict}${side}${place}.`;
+  return `${subject} ${withUnit(measured, row.unit)}${around} against ${limitWords(requirement, row)}: ${verdict}${side}${place}${doubt === null ? '' : `; ${doubt}`}.`;
 }
 
 function limitWords({ atLeast, atMost }: Requirement, row: FigureRow): string {

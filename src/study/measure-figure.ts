@@ -2,7 +2,9 @@ import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
 import type { Measure, Recovery } from './figure-measures.ts';
 import { FIGURES, type FigureRow } from './figure-table.ts';
-import type { Demand, FigureValues, Hill, Replayed, Where } from './findings.ts';
+import type { Demand, Figure, FigureValues, Hill, Replayed, Stretch, Where } from './findings.ts';
+import { courseOfRun } from './hold-course.ts';
+import { withUnit } from './wording.ts';
 
 /** What figures are taken from, beside the run itself. */
 export interface FigureContext {
@@ -26,7 +28,7 @@ export function measureFigure(
   where: Where,
   band: number | null,
 ): Measure {
-  const chosen = chooseBins(replayed.result.bins, where, context);
+  const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
   return measureOver(row, replayed, chosen, recoveriesOf(replayed.name, context.hills, where), band);
 }
 
@@ -42,6 +44,7 @@ export function measureOver(
     bins: result.bins,
     chosen,
     end: result.endDistance,
+    along: plan.road.along,
     bands: plan.bands,
     band: row.takesBand ? band : null,
     recoveries,
@@ -57,18 +60,33 @@ export function figureValues(
   where: Where,
   band: number,
 ): FigureValues {
-  const chosen = chooseBins(replayed.result.bins, where, context);
+  const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
   const recoveries = recoveriesOf(replayed.name, context.hills, where);
   return Object.fromEntries(
-    FIGURES.map((row) => [row.name, measureOver(row, replayed, chosen, recoveries, band).value]),
+    FIGURES.map((row) => [row.name, figureOf(row, measureOver(row, replayed, chosen, recoveries, band))]),
   );
 }
 
-/** Marks the bins that count: for `holdable` those that lie whole on holdable road, for a stretch those whose middle is in it. */
+/** The value of a measure, where it is known. */
+const figureOf = (row: FigureRow, { value, open }: Measure): Figure =>
+  typeof value === 'number' && open !== undefined
+    ? { none: `${withUnit(value, row.unit)} or more: ${open}` }
+    : value;
+
+/** The run ended before the end of the stretch that is asked about. */
+export function endedEarly({ plan, result }: Replayed, where: Where): boolean {
+  if (result.status === 'completed') return false;
+  const { road } = plan;
+  const end = typeof where === 'string' ? road.distance[road.size - 1] : where.to;
+  return result.endDistance < end;
+}
+
+/** Marks the bins that count: for `holdable` those that lie whole on holdable road and in which the candidate itself was following no change of set speed, for a stretch those whose middle is in it. */
 export function chooseBins(
   bins: BinRecord,
   where: Where,
   { road, demand }: Pick<FigureContext, 'road' | 'demand'>,
+  settling: readonly Stretch[],
 ): Uint8Array {
   const chosen = new Uint8Array(bins.size);
   if (where === 'all') return chosen.fill(1);
@@ -86,7 +104,7 @@ export function chooseBins(
     let all = demand.holdable[knot];
     for (let k = knot; all === 1 && k < road.size && road.distance[k] < bins.edge[i + 1]; k++)
       all = demand.holdable[k] & demand.holdable[Math.min(k + 1, road.size - 1)];
-    chosen[i] = all;
+    chosen[i] = settling.some(({ from, to }) => bins.edge[i] < to && bins.edge[i + 1] > from) ? 0 : all;
   }
   return chosen;
 }

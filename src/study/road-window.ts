@@ -1,7 +1,7 @@
 import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import { setSpeedAlong } from './set-speed-along.ts';
+import { type HoldCourse, nominalCourse } from './hold-course.ts';
 
 /**
  * Part of a road as a road of its own: distances and stations start at 0 again, ends are interpolated.
@@ -62,14 +62,19 @@ export function cutRoad(road: Road, from: number, to: number): Road {
 /**
  * The plan over part of its road, started settled at the set speed that holds at its beginning; changes of set speed
  * inside come along.
+ *
+ * @param course where the changes of the plan stand; the road's own places where it is left out
  */
-export function windowPlan(plan: LoopPlan, from: number, to: number): LoopPlan {
-  return { ...plan, road: cutRoad(plan.road, from, to), hold: windowHold(plan, from, to) };
+export function windowPlan(
+  plan: LoopPlan,
+  from: number,
+  to: number,
+  course: HoldCourse = nominalCourse(plan.road, plan.hold, plan.vehicle),
+): LoopPlan {
+  return { ...plan, road: cutRoad(plan.road, from, to), hold: windowHold(plan, from, to, course) };
 }
 
-function windowHold(plan: LoopPlan, from: number, to: number): HoldPlan {
-  const { hold } = plan;
-  const { changes } = setSpeedAlong(plan.road, hold, plan.vehicle.sensor.scaleError);
+function windowHold({ hold }: LoopPlan, from: number, to: number, { changes }: HoldCourse): HoldPlan {
   const before = changes.findLastIndex((change) => change.at <= from);
   const setSpeed = before < 0 ? hold.setSpeed : hold.changes[before].setSpeed;
   return {

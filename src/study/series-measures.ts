@@ -1,15 +1,8 @@
 import { LIMIT_LOWER, LIMIT_UPPER } from '../loop/plan.ts';
 import type { FullSeries } from '../loop/result.ts';
-import { RECOVERED_FOR } from './figure-table.ts';
-import type { Figure, Stretch } from './findings.ts';
+import type { Stretch } from './findings.ts';
 
-/** Breaks in a stay at a limit that do not end it [s]. */
-const SAME_STAY = 0.5;
 const LIMITS = LIMIT_UPPER | LIMIT_LOWER;
-
-/** Said of a recovery that the record does not contain. */
-export const NOT_RECOVERED = 'it was not back within 1 km/h for 3 s in two minutes';
-export const ROAD_ENDED = 'the run ended before it was back within 1 km/h for 3 s';
 
 export const errorAt = (series: FullSeries, i: number): number => series.speed[i] - series.setSpeed[i];
 const limited = (series: FullSeries, i: number): boolean => (series.limit[i] & LIMITS) !== 0;
@@ -51,68 +44,6 @@ export function passageOf(
     if (limited(series, i)) timeAtLimit += spanOf(series, i);
   }
   return { extreme, timeLost, timeAtLimit };
-}
-
-/**
- * Recovery from a hill over samples [first, last): from the end of the longest stay at a limit, or where there was
- * none from leaving the band, to the beginning of 3 s within the recovery band; the search goes on behind `last`.
- *
- * @param whole whether the series goes as far as a recovery is waited for
- * @returns the time [s], 0 where neither happened, and the sample at which it was over (the end where it was not)
- */
-export function recoveryOf(
-  series: FullSeries,
-  first: number,
-  last: number,
-  band: number,
-  recoveryBand: number,
-  whole: boolean,
-): { time: Figure; over: number } {
-  const clock = clockStart(series, first, last, band);
-  if (clock === null) return { time: 0, over: last };
-  let inside = -1;
-  for (let i = clock; i < series.size; i++) {
-    if (Math.abs(errorAt(series, i)) > recoveryBand) {
-      inside = -1;
-      continue;
-    }
-    if (inside < 0) inside = i;
-    if (series.time[i] - series.time[inside] >= RECOVERED_FOR - 1e-9)
-      return { time: series.time[inside] - series.time[clock], over: inside };
-  }
-  return { time: { none: whole ? NOT_RECOVERED : ROAD_ENDED }, over: series.size };
-}
-
-function clockStart(series: FullSeries, first: number, last: number, band: number): number | null {
-  const stay = longestStay(series, first, last);
-  if (stay !== null) return stay;
-  for (let i = first; i < last; i++) if (Math.abs(errorAt(series, i)) > band) return i;
-  return null;
-}
-
-/** Sample at which the longest stay at a limit that begins on the hill is over. */
-function longestStay(series: FullSeries, first: number, last: number): number | null {
-  let longest = 0;
-  let found: number | null = null;
-  let begin = -1;
-  let seen = -1;
-  for (let i = first; i < series.size; i++) {
-    const at = limited(series, i);
-    const over = begin >= 0 && !at && series.time[i] - series.time[seen] > SAME_STAY;
-    if (over || (i === series.size - 1 && begin >= 0)) {
-      const length = series.time[seen] - series.time[begin];
-      if (length > longest || found === null) {
-        longest = length;
-        found = Math.min(seen + 1, series.size - 1);
-      }
-      begin = -1;
-    }
-    if (begin < 0 && i >= last) break;
-    if (!at) continue;
-    if (begin < 0) begin = i;
-    seen = i;
-  }
-  return found;
 }
 
 /** Samples [first, last) thinned to at most `most` rows; least and greatest speed and command of every piece are kept. */

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { demandOf, demandShare } from '../../src/study/demand.ts';
-import { setSpeedAlong } from '../../src/study/set-speed-along.ts';
+import { nominalCourse, setSpeedAt } from '../../src/study/hold-course.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
 import { HOLD_60, vehicleOf } from './vehicle-of.ts';
@@ -87,7 +87,7 @@ describe('demand along the road', () => {
 
   it('grants a change of set speed its ramp and 10 s', () => {
     const road = roadOf([{ length: 5000, grade: 0 }]);
-    const along = setSpeedAlong(
+    const course = nominalCourse(
       road,
       {
         setSpeed: 20,
@@ -98,24 +98,25 @@ describe('demand along the road', () => {
           { at: { time: 50 + 2000 / 16 }, setSpeed: 18, ramp: null },
         ],
       },
-      0,
+      vehicleOf(),
     );
     // 20 m/s to 1000 m takes 50 s, then 16 m/s: the second change stands at 3000 m.
     expectClose(
-      along.changes.map((change) => change.at),
+      course.changes.map((change) => change.at),
       [1000, 3000],
       1e-9,
     );
-    expectClose(along.settling[0]!.to, 1000 + (4 / 0.8 + 10) * 20, 1e-9);
-    expectClose(along.settling[1]!.to, 3000 + (2 / 0.5 + 10) * 18, 1e-9);
-    const speedAt = (x: number): number => along.setSpeed[road.distance.findIndex((d) => d >= x)]!;
+    expectClose(course.settling[0]!.to, 1000 + (4 / 0.8 + 10) * 20, 1e-9);
+    expectClose(course.settling[1]!.to, 3000 + (2 / 0.5 + 10) * 18, 1e-9);
+    const speedAt = (x: number): number => setSpeedAt(road, course)[road.distance.findIndex((d) => d >= x)]!;
     expect([speedAt(990), speedAt(1000), speedAt(2990), speedAt(3000)]).toEqual([20, 16, 16, 18]);
   });
 
   it('turns an indicated set speed into the true one', () => {
     const road = roadOf([{ length: 100, grade: 0 }]);
-    const along = setSpeedAlong(road, { ...HOLD_60, setSpeed: 20.4, setSpeedIs: 'indicated' }, 0.02);
-    expectClose(along.setSpeed[0]!, 20, 1e-12);
+    const vehicle = { sensor: { filter: 0, delay: 0, scaleError: 0.02 } };
+    const course = nominalCourse(road, { ...HOLD_60, setSpeed: 20.4, setSpeedIs: 'indicated' }, vehicle);
+    expectClose(setSpeedAt(road, course)[0]!, 20, 1e-12);
   });
 });
 

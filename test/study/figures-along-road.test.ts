@@ -16,7 +16,7 @@ describe('the bins that count', () => {
   );
   const chosen = (holdable: number[]): number[] =>
     Array.from(
-      chooseBins(bins, 'holdable', { road, demand: { holdable: Uint8Array.from(holdable) } as Demand }),
+      chooseBins(bins, 'holdable', { road, demand: { holdable: Uint8Array.from(holdable) } as Demand }, []),
     );
 
   it('are those that lie whole on holdable road', () => {
@@ -28,9 +28,16 @@ describe('the bins that count', () => {
     expect(chosen([1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 0])).toEqual([1, 1, 1, 1, 0]);
   });
 
+  it('are none in which the candidate follows a change of set speed', () => {
+    const held = { road, demand: { holdable: new Uint8Array(road.size).fill(1) } as Demand };
+    const settling = [{ from: 39, to: 60 }];
+    expect(Array.from(chooseBins(bins, 'holdable', held, settling))).toEqual([1, 0, 0, 1, 1]);
+    expect(Array.from(chooseBins(bins, 'all', held, settling))).toEqual([1, 1, 1, 1, 1]);
+  });
+
   it('are those whose middle is in a stretch', () => {
     const of = (from: number, to: number): number[] =>
-      Array.from(chooseBins(bins, { from, to }, { road, demand: {} as Demand }));
+      Array.from(chooseBins(bins, { from, to }, { road, demand: {} as Demand }, []));
     expect(of(20, 60)).toEqual([0, 1, 1, 0, 0]);
     expect(of(31, 71)).toEqual([0, 0, 1, 1, 0]);
   });

@@ -41,6 +41,7 @@ const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecor
   bins: BINS,
   chosen: Uint8Array.from(chosen),
   end: 400,
+  along: 'distance',
   bands: [1.5, 2.5],
   band: 1.5,
   recoveries: [],
@@ -118,12 +119,24 @@ describe('figures of a record worked out by hand', () => {
     expectClose(value('wheel_energy_wh_per_km', record([1, 1, 1, 1], { end: 320 })), 8 / 0.32, 1e-9);
   });
 
-  it('take the longest recovery, and a missing one before any other', () => {
+  it('take lengths from the speed on a road along time, whose distances are nominal', () => {
+    // 5 s at 20, 50 / 9 s at 18, 6.25 s at 16, 100 / 21 s at 21 m/s are 100 m each; run at half the speed, 50 m each.
+    const slow = { ...BINS, speedMean: BINS.speedMean.map((v) => v / 2) };
+    const along = record([1, 1, 1, 1], { bins: slow, along: 'time' });
+    expectClose(value('wheel_energy_wh_per_km', along), 8 / 0.2, 1e-9);
+    expectClose(value('throttle_travel_pct_per_km', along), 150 / 0.2, 1e-9);
+    expectClose(value('brake_distance_m', along), 25, 1e-9);
+  });
+
+  it('take the longest recovery that is known, and one that never came before any other', () => {
     const of = (...times: (number | { none: string })[]) =>
       measure('recovery_s', record([1], { recoveries: times.map((time, k) => ({ at: 100 * k, time })) }));
     expect(of(2, 7, 3)).toEqual({ value: 7, at: 100 });
     expect(of()).toEqual({ value: 0, at: null });
-    expect(of(2, { none: 'never' }, 9)).toEqual({ value: { none: 'never' }, at: 100 });
+    expect(of(2, { none: 'the road ended' }, 9)).toEqual({ value: 9, at: 200, open: 'the road ended' });
+    expect(of(0, { none: 'the road ended' })).toEqual({ value: { none: 'the road ended' }, at: 100 });
+    const never = { none: 'it was not back within 1 km/h for 3 s in two minutes' };
+    expect(of(2, { none: 'the road ended' }, never, 9)).toEqual({ value: never, at: 200 });
   });
 
   it('do not exist where nothing was driven, and are never NaN', () => {

@@ -39,10 +39,10 @@ const requirementOf = (more: Partial<Requirement>): Requirement => ({
   ...more,
 });
 
-const spreadOf = (sd: number) => ({
+const spreadOf = (sd: number, failed = 0) => ({
   roads: 8,
   seed: 1,
-  rows: [{ requirement: 'SH-01', candidate: 'pi', sd }],
+  rows: [{ requirement: 'SH-01', candidate: 'pi', sd, failed }],
 });
 const verdictOf = (requirement: Requirement, run: Replayed, sd = 0, context = CONTEXT) =>
   judge([requirement], [run], context, spreadOf(sd))[0]!;
@@ -125,6 +125,36 @@ describe('a requirement', () => {
     );
   });
 
+  it('on recovery is not met by a known one over the limit, whatever is unknown beside it', () => {
+    const hill = (from: number, recovery: HillOutcome['recovery']): Hill =>
+      ({
+        from,
+        to: from + 100,
+        outcomes: [{ candidate: 'pi', affected: true, recovery }],
+      }) as unknown as Hill;
+    const ended = { none: 'the run ended before it was back within 1 km/h for 3 s' };
+    const judged = (...hills: Hill[]) =>
+      verdictOf(requirementOf({ figure: 'recovery_s', atMost: 10 }), runOf('pi', [0]), 0, {
+        ...CONTEXT,
+        hills,
+      });
+    const failed = judged(hill(0, 25), hill(200, ended));
+    expect(failed.verdict).toBe('not met');
+    expect(failed.measured).toBe(25);
+    const open = judged(hill(0, 8), hill(200, ended));
+    expect(open.verdict).toBe('too close to call');
+    expect(open.words).toContain(ended.none);
+  });
+
+  it('is too close to call, not met, when it failed on a drawn road', () => {
+    const judged = (failed: number, kmh: number) =>
+      judge([requirementOf({})], [runOf('pi', [0, kmh, 1, 0])], CONTEXT, spreadOf(0.1, failed))[0]!;
+    expect(judged(0, 3).verdict).toBe('met');
+    expect(judged(1, 3).verdict).toBe('too close to call');
+    expect(judged(1, 3).words).toContain('1 of 8 drawn roads');
+    expect(judged(1, 5).verdict).toBe('not met');
+  });
+
   it('of an unknown figure is refused', () => {
     expect(() => judge([requirementOf({ figure: 'worst' })], [], CONTEXT)).toThrow(/no such figure.*worst/s);
   });
@@ -150,7 +180,7 @@ describe('the spread of a figure', () => {
   it('is 0 on a written road, and says so', () => {
     const spread = figureSpread([requirementOf({})], [runOf('pi', [0, 3])], CONTEXT);
     expect(spread.roads).toBe(0);
-    expect(spread.rows).toEqual([{ requirement: 'SH-01', candidate: 'pi', sd: 0 }]);
+    expect(spread.rows).toEqual([{ requirement: 'SH-01', candidate: 'pi', sd: 0, failed: 0 }]);
     expect(spreadMethod(spread)).toContain('no uncertainty');
   });
 

@@ -1,0 +1,117 @@
+import type { ControllerSetup } from '../control/setup.ts';
+import type { HoldPlan } from '../loop/plan.ts';
+import type { BinRecord, LoopResult } from '../loop/result.ts';
+import { intervalOf } from '../numeric/interpolate.ts';
+import { distanceAt } from '../road/lookup.ts';
+import type { Road } from '../road/road.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import type { Replayed, Stretch } from './findings.ts';
+
+/** Rate at which a change of set speed is granted to be followed when neither it nor the controller says one [m/s2]. */
+const GRANTED_RATE = 0.5;
+/** Granted for settling after it [s]. */
+const GRANTED_SETTLING = 10;
+
+/** The set speed in the order of the way, as true speeds [m/s]. */
+export interface HoldCourse {
+  /** In force before the first change. */
+  readonly setSpeed: number;
+  /** Speed at the start. */
+  readonly startSpeed: number;
+  /** Changes with their places [m]; infinite for one that was never made. */
+  readonly changes: readonly { readonly at: number; readonly setSpeed: number }[];
+  /**
+   * From each change, and from a start at another speed: |change| / ramp and 10 s for settling, at the higher of the
+   * two speeds. The ramp is the change's own, or the controller's, or 0.5 m/s2.
+   */
+  readonly settling: readonly Stretch[];
+}
+
+/** Factor from speeds of the plan's set speed to true ones: measured = (1 + scale error) true. */
+export const trueSpeedFactor = (hold: HoldPlan, { sensor }: Pick<Vehicle, 'sensor'>): number =>
+  hold.setSpeedIs === 'indicated' ? 1 / (1 + sensor.scaleError) : 1;
+
+/** The course that belongs to the road: a change at a time stands where a vehicle at the set speeds before it would be. */
+export function nominalCourse(road: Road, hold: HoldPlan, vehicle: Pick<Vehicle, 'sensor'>): HoldCourse {
+  return courseOf(hold, vehicle, null, (time, last) => {
+    const at = road.along === 'time' ? distanceAt(road, time) : last.at + (time - last.time) * last.setSpeed;
+    return { at, from: at };
+  });
+}
+
+/** The course of one candidate: a change at a time stands where its run made it, and its controller's ramp is granted. */
+export function courseOfRun({ plan, result }: Pick<Replayed, 'plan' | 'result'>): HoldCourse {
+  const ramp = rampOf(plan.controller);
+  return courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
+}
+
+const rampOf = (controller: ControllerSetup): number | null =>
+  controller.kind === 'pi' ? controller.ramp : null;
+
+/** Place of a time, and a place that is certainly not behind it: the beginning of its bin. */
+interface TimedPlace {
+  readonly at: number;
+  readonly from: number;
+}
+
+function placeInRun({ bins, endTime, endDistance }: LoopResult, time: number): TimedPlace {
+  if (time >= endTime || bins.size === 0)
+    return { at: Number.POSITIVE_INFINITY, from: Number.POSITIVE_INFINITY };
+  const i = intervalOf(bins.timeAt.subarray(0, bins.size), time);
+  return { at: Math.min(placeInBin(bins, i, time), endDistance), from: bins.edge[i] };
+}
+
+function placeInBin({ edge, timeAt, time }: BinRecord, i: number, moment: number): number {
+  const share = time[i] > 0 ? Math.min(1, (moment - timeAt[i]) / time[i]) : 0;
+  return edge[i] + Math.max(0, share) * (edge[i + 1] - edge[i]);
+}
+
+interface Reached {
+  readonly at: number;
+  readonly time: number;
+  readonly setSpeed: number;
+}
+
+function courseOf(
+  hold: HoldPlan,
+  vehicle: Pick<Vehicle, 'sensor'>,
+  ramp: number | null,
+  placeOf: (time: number, last: Reached) => TimedPlace,
+): HoldCourse {
+  const toTrue = trueSpeedFactor(hold, vehicle);
+  const setSpeed = hold.setSpeed * toTrue;
+  const startSpeed = hold.startSpeed * toTrue;
+  const changes: { at: number; setSpeed: number }[] = [];
+  const settling: Stretch[] = [];
+  const grant = (from: number, at: number, before: number, after: number, own: number | null): void => {
+    const seconds = Math.abs(after - before) / (own ?? ramp ?? GRANTED_RATE) + GRANTED_SETTLING;
+    settling.push({ from, to: at + seconds * Math.max(before, after) });
+  };
+  if (startSpeed !== setSpeed) grant(0, 0, startSpeed, setSpeed, null);
+  let last: Reached = { at: 0, time: 0, setSpeed };
+  for (const change of hold.changes) {
+    const next = change.setSpeed * toTrue;
+    const place =
+      'distance' in change.at
+        ? { at: change.at.distance, from: change.at.distance }
+        : placeOf(change.at.time, last);
+    // Changes are made in their order, none before the one that stands before it.
+    const at = Math.max(place.at, last.at);
+    const passed = last.setSpeed > 0 ? (at - last.at) / last.setSpeed : 0;
+    changes.push({ at, setSpeed: next });
+    grant(Math.min(place.from, at), at, last.setSpeed, next, change.ramp);
+    last = { at, time: last.time + passed, setSpeed: next };
+  }
+  return { setSpeed, startSpeed, changes, settling };
+}
+
+/** Set speed at each knot; at the place of a change the new one [m/s]. */
+export function setSpeedAt(road: Road, { setSpeed, changes }: HoldCourse): Float64Array {
+  const column = new Float64Array(road.size);
+  let k = -1;
+  for (let i = 0; i < road.size; i++) {
+    while (k + 1 < changes.length && changes[k + 1].at <= road.distance[i]) k++;
+    column[i] = k < 0 ? setSpeed : changes[k].setSpeed;
+  }
+  return column;
+}
