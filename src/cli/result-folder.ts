@@ -52,7 +52,9 @@ const notFolder = (here: string, folder: string): string =>
 /**
  * Writes a whole result, or nothing. All files are written below a temporary name and then renamed, the last of
  * the list (the mark of a whole result) at the end; where a step fails, what was there before is put back.
- * Then the files that the former mark lists, and the new one does not, are removed.
+ * The former mark is moved aside before any file changes: where the program is killed between two renames, the folder
+ * has no mark, and the next run clears up by the marks that were left aside.
+ * Then the files that a former mark lists, and the new one does not, are removed.
  *
  * @param files the mark last
  * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`
@@ -64,10 +66,13 @@ export function writeResult(folder: string, files: readonly TextFile[]): void {
   });
   const stage = join(folder, `.ridgehold-${process.pid}`);
   try {
-    removeAbandoned(folder);
     for (const { name } of files) refuseFolder(folder, name);
-    const mark = files.at(-1)?.name;
-    const former = mark === undefined ? [] : formerFiles(join(folder, mark));
+    const mark = files.at(-1)?.name ?? '';
+    const abandoned = abandonedStages(folder);
+    const former = [
+      ...formerFiles(join(folder, mark)),
+      ...abandoned.flatMap((path) => filesOfKilledRun(path, mark)),
+    ];
     for (const { name, text } of files) {
       const path = join(stage, 'new', name);
       within(join(folder, name), () => {
@@ -78,7 +83,7 @@ export function writeResult(folder: string, files: readonly TextFile[]): void {
     swap(folder, stage, files);
     const kept = new Set(files.map(({ name }) => name));
     for (const name of former) if (!kept.has(name)) remove(folder, name);
-    rmSync(stage, { recursive: true, force: true });
+    for (const path of [...abandoned, stage]) rmSync(path, { recursive: true, force: true });
   } catch (error) {
     rmSync(stage, { recursive: true, force: true });
     if (made !== undefined) rmSync(made, { recursive: true, force: true });
@@ -105,24 +110,34 @@ function refuseFolder(folder: string, name: string): void {
     });
 }
 
-/** Moves the new files into place and the old ones aside; undoes all of it when a step fails. */
+/** Moves the old files aside, the mark first, and the new ones into place, the mark last; undoes all of it when a step fails. */
 function swap(folder: string, stage: string, files: readonly TextFile[]): void {
   const undo: (() => void)[] = [];
+  const folderFor = (path: string): void => {
+    const made = makeFolder(dirname(path));
+    if (made !== undefined) undo.push(() => rmSync(made, { recursive: true, force: true }));
+  };
+  const moveAside = (name: string): void => {
+    const target = join(folder, name);
+    const aside = join(stage, 'old', name);
+    within(target, () => {
+      if (!existsSync(target)) return;
+      folderFor(aside);
+      renameSync(target, aside);
+      undo.push(() => renameSync(aside, target));
+    });
+  };
+  const moveIn = (name: string): void => {
+    const target = join(folder, name);
+    within(target, () => {
+      folderFor(target);
+      renameSync(join(stage, 'new', name), target);
+      undo.push(() => rmSync(target, { force: true }));
+    });
+  };
   try {
-    for (const { name } of files) {
-      const target = join(folder, name);
-      const aside = join(stage, 'old', name);
-      within(target, () => {
-        makeFolder(dirname(target));
-        makeFolder(dirname(aside));
-        if (existsSync(target)) {
-          renameSync(target, aside);
-          undo.push(() => renameSync(aside, target));
-        }
-        renameSync(join(stage, 'new', name), target);
-        undo.push(() => rmSync(target, { force: true }));
-      });
-    }
+    for (const { name } of files.toReversed()) moveAside(name);
+    for (const { name } of files) moveIn(name);
   } catch (error) {
     for (const step of undo.reverse()) step();
     throw error;
@@ -149,11 +164,21 @@ function remove(folder: string, name: string): void {
 }
 
 /** Temporary folders of runs that were killed. */
-function removeAbandoned(folder: string): void {
-  for (const name of readdirSync(folder)) {
-    const pid = Number(STAGE.exec(name)?.[1] ?? 0);
-    if (pid > 0 && !isAlive(pid)) rmSync(join(folder, name), { recursive: true, force: true });
-  }
+function abandonedStages(folder: string): readonly string[] {
+  return readdirSync(folder)
+    .filter((name) => {
+      const pid = Number(STAGE.exec(name)?.[1] ?? 0);
+      return pid > 0 && !isAlive(pid);
+    })
+    .map((name) => join(folder, name));
+}
+
+/** Files that a killed run found or had put into place already. */
+function filesOfKilledRun(stage: string, mark: string): readonly string[] {
+  const placed = formerFiles(join(stage, 'new', mark)).filter(
+    (name) => !existsSync(join(stage, 'new', name)),
+  );
+  return [...formerFiles(join(stage, 'old', mark)), ...placed];
 }
 
 function isAlive(pid: number): boolean {

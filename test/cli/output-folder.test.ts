@@ -64,3 +64,60 @@ test('what a killed run left is cleared away', () => {
   expect(run('killed').status).toBe(0);
   expect(readdirSync(join(here, 'killed')).filter((name) => name.startsWith('.'))).toEqual([]);
 });
+
+/** In front of a run: does something in the program just before its nth renaming of a file. */
+const beforeRename = (n: number, act: string): string => {
+  const code = `import fs from 'node:fs'; import { syncBuiltinESMExports } from 'node:module'; const rename = fs.renameSync; let n = 0; fs.renameSync = (...paths) => { if (++n === ${n}) { ${act} } return rename(...paths); }; syncBuiltinESMExports();`;
+  return `export NODE_OPTIONS='--import=data:text/javascript,${encodeURIComponent(code).replaceAll("'", '%27')}'`;
+};
+const visible = (folder: string): string[] =>
+  Object.keys(filesBelow(join(here, folder))).filter((name) => !name.startsWith('.'));
+
+test('a run that is killed between two renamings leaves no mark of a whole result', () => {
+  expect(run('cut').status).toBe(0);
+  const whole = visible('cut');
+  expect(whole).toContain('summary.json');
+  // Every old file is moved aside, the mark first, then every new one in: after the first, in the middle, before the last.
+  const renamings = 2 * whole.length;
+  for (const n of [2, whole.length + 1, renamings]) {
+    const { status } = run('cut', beforeRename(n, 'process.kill(process.pid, "SIGKILL");'));
+    expect(status, `killed before renaming ${n}`).toBeNull();
+    expect(visible('cut'), `killed before renaming ${n}`).not.toContain('summary.json');
+    expect(run('cut').status).toBe(0);
+    expect(visible('cut').sort()).toEqual(whole.sort());
+    expect(readdirSync(join(here, 'cut')).filter((name) => name.startsWith('.'))).toEqual([]);
+  }
+  expect(run('cut', beforeRename(renamings + 1, 'process.kill(process.pid, "SIGKILL");')).status).toBe(0);
+});
+
+test('after a killed run the files of the one before it are still known, and those of others stay', () => {
+  writeFiles(here, { 'renamed.yaml': CASE.replaceAll('pi-20s', 'other') });
+  const names = () =>
+    visible('chain')
+      .filter((name) => name.startsWith('series-'))
+      .sort();
+  expect(run('chain').status).toBe(0);
+  expect(names()).toEqual(['series-locked.csv', 'series-pi-20s.csv']);
+  const kill = beforeRename(3, 'process.kill(process.pid, "SIGKILL");');
+  expect(ridgehold(here, ['run', 'renamed.yaml', '-o', 'chain'], kill).status).toBeNull();
+  writeFiles(here, { 'chain/series-mine.csv': 'mine' });
+  expect(ridgehold(here, ['run', 'renamed.yaml', '-o', 'chain']).status).toBe(0);
+  expect(names()).toEqual(['series-locked.csv', 'series-mine.csv', 'series-other.csv']);
+});
+
+test('a renaming that fails puts back what was there, and takes away the folder of charts that it made', () => {
+  const full = "throw Object.assign(new Error('no space'), { code: 'ENOSPC' });";
+  writeFiles(here, { 'mine/notes.txt': 'mine' });
+  const fresh = run('mine', beforeRename(12, full));
+  expect(fresh.stderr).toMatch(
+    /^error: mine\/[^\n]+ cannot be written: there is no space left on the device\n$/,
+  );
+  expect(fresh.status).toBe(2);
+  expect(readdirSync(join(here, 'mine'))).toEqual(['notes.txt']);
+  expect(run('mine').status).toBe(0);
+  const before = filesBelow(join(here, 'mine'));
+  for (const n of [2, 12, 20])
+    expect(run('mine', beforeRename(n, full), '--set', 'hold.set_speed_kmh=50').status).toBe(2);
+  expect(filesBelow(join(here, 'mine'))).toEqual(before);
+  expect(readdirSync(join(here, 'mine')).filter((name) => name.startsWith('.'))).toEqual([]);
+});
