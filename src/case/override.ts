@@ -1,5 +1,6 @@
 import { parseDocument } from 'yaml';
 import { InputError } from '../problems/input-error.ts';
+import { deepNestingAt } from './deep-nesting.ts';
 import { nearestKey } from './nearest-key.ts';
 import { isMapping } from './schema-walk.ts';
 import { itemName, type Path, pathId, type YamlSource } from './yaml-source.ts';
@@ -38,6 +39,13 @@ export function readOverride(text: string): Override {
   if (equals < 1 || path === '')
     refuse(text, 'is not a change of a key', text, 'key=value, such as hold.set_speed_kmh=70');
   const written = text.slice(equals + 1);
+  if (deepNestingAt(written) >= 0)
+    refuse(
+      text.slice(0, equals),
+      'its value is nested far too deep',
+      'brackets in brackets',
+      'a value as in the file',
+    );
   const doc = parseDocument(written, { prettyErrors: false, logLevel: 'error' });
   const fault = doc.errors[0];
   if (fault !== undefined)

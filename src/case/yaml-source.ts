@@ -1,6 +1,7 @@
 import { isAlias, isCollection, isMap, isScalar, LineCounter, type Node, parseDocument } from 'yaml';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
+import { deepNestingAt } from './deep-nesting.ts';
 
 export type Path = readonly (string | number)[];
 
@@ -55,6 +56,8 @@ export function readYaml(text: string, file: string): YamlSource {
       found: `${text.length} characters`,
       allowed: `at most ${LONGEST_TEXT}`,
     });
+  const deep = deepNestingAt(text);
+  if (deep >= 0) throw new InputError(tooDeep({ file, ...spotIn(text, deep) }));
   const lines = new LineCounter();
   const doc = parseDocument(text, { lineCounter: lines, prettyErrors: false, logLevel: 'error' });
   const spotAt = (offset: number): Spot => {
@@ -68,8 +71,7 @@ export function readYaml(text: string, file: string): YamlSource {
       const [code, message, allowed] = PARSER_WORDS[fault.code] ?? [];
       if (code !== undefined && message !== undefined)
         return { code, place, message, ...(allowed && { allowed }) };
-      if (/call stack/i.test(fault.message))
-        return { code: 'too-deep', place, message: 'the nesting is far too deep' };
+      if (/call stack/i.test(fault.message)) return tooDeep(place);
       return { code: 'yaml-syntax', place, message: `not valid YAML: ${firstLine(fault.message)}` };
     });
   // What follows on a fault of syntax is mostly its consequence.
@@ -139,6 +141,18 @@ export function readYaml(text: string, file: string): YamlSource {
     return typeof value === 'bigint' ? Number(value) : (value ?? null);
   };
   return { file, text, value: convert(doc.contents, [], null), values, keys, overridden: new Map() };
+}
+
+const tooDeep = (place: Place): Problem => ({
+  code: 'too-deep',
+  place,
+  message: 'the nesting is far too deep',
+  allowed: `at most ${DEEPEST} deep`,
+});
+
+function spotIn(text: string, at: number): Spot {
+  const before = text.slice(0, at).split('\n');
+  return { line: before.length, column: (before.at(-1) ?? '').length + 1 };
 }
 
 const firstLine = (text: string): string => (text.split('\n')[0] ?? '').replace(/\.$/, '');
