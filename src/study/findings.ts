@@ -113,7 +113,7 @@ export interface HillOutcome {
 export interface Remedy {
   readonly lever: 'set_speed' | 'power' | 'load' | 'gear';
   /**
-   * The value that holds and the next step that does not; {none} where the lever cannot help. Set speed [m/s]; power at
+   * The value that holds and the next step that does not; {none} where the lever cannot help. Set speed [m/s], true or indicated as the plan has it; power at
    * the wheel at the set speed under full throttle at sea level [W]; payload [kg].
    */
   readonly holds: Figure;

@@ -4,7 +4,9 @@ import { forceRange } from '../vehicle/drive-law.ts';
 import type { Cause, Remedy } from './findings.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { type HillWindow, holds, passHill, planOverWindow } from './hill-window.ts';
+import { trueSpeedFactor } from './hold-course.ts';
 import { withMoreForce, withPayload, withSetSpeed } from './levers.ts';
+import { without } from './limitations.ts';
 import { inKg, inKmh, inKw, inPct } from './wording.ts';
 
 /** Steps of the levers, and how far they go: 1 km/h down to a third; 5 % of the force up to twice; 5 kg. */
@@ -35,6 +37,9 @@ export const leversHelp = (cause: Cause): boolean => LEVERED.includes(cause);
  * replayed by the plan's own scheme; where that disagrees, the search is made again under it. So the value that is
  * said to hold holds, and the step before it does not.
  *
+ * Speeds in words are those of the set speed, and say so where that is the indicated one; power is at the true speed.
+ *
+ * @param brakePower that holds the set speed where the demand is least [W]; told for `closed_throttle`
  * @returns one remedy a lever; `{none}` where the lever cannot help
  */
 export function remediesFor(
@@ -48,61 +53,82 @@ export function remediesFor(
   const windowed = planOverWindow(plan, window);
   const steps = (change: (n: number) => LoopPlan, most: number): number | null =>
     fewestSteps((n, scheme) => holds(passHill({ ...change(n), scheme }, window), band), most, plan.scheme);
-  const load = loadRemedy(windowed, steps);
-  if (cause === 'closed_throttle')
-    return [
-      {
-        lever: 'set_speed',
-        holds: { none: 'closed throttle holds back no more at a lower speed' },
-        fails: { none: 'closed throttle holds back no more at a lower speed' },
-        words: `No lower set speed holds: the rider must brake (${inKw(brakePower)} holds the set speed at the worst place).`,
-      },
-      load,
-    ];
-  return [speedRemedy(windowed, hill, steps), forceRemedy(windowed, steps), load];
+  const free = { ...without(windowed, 'range'), scheme: 'fast' as const };
+  let why: string | null = null;
+  /** Said where a lever finds nothing: looked at once, when it is first asked. */
+  const unlimited = (): string => {
+    why ??= holds(passHill(free, window), band) ? '' : ': the gains leave the band even without limits';
+    return why;
+  };
+  const search: Search = { steps, unlimited };
+  if (cause === 'closed_throttle') {
+    const brake = `${inKw(brakePower)} holds the set speed at the worst place`;
+    return [speedRemedy(windowed, search, `the rider must brake, ${brake}`), loadRemedy(windowed, search)];
+  }
+  const sustained = hill.sustainedSpeed / trueSpeedFactor(windowed.hold, windowed.vehicle);
+  const full = `full throttle sustains ${sustained > 0 ? speedWords(windowed, sustained, 1) : 'no speed'}`;
+  return [
+    speedRemedy(windowed, search, hill.share > 1 ? full : null),
+    forceRemedy(windowed, search),
+    loadRemedy(windowed, search),
+  ];
 }
 
-type Search = (change: (n: number) => LoopPlan, most: number) => number | null;
+interface Search {
+  /** Fewest steps of a lever that hold, up to a number of them; null: none. */
+  readonly steps: (change: (n: number) => LoopPlan, most: number) => number | null;
+  readonly unlimited: () => string;
+}
 
-function speedRemedy(windowed: LoopPlan, hill: HillFacts, search: Search): Remedy {
+/** A speed in the terms of the set speed, and which those are where they are not the true ones. */
+const speedWords = ({ hold }: LoopPlan, speed: number, decimals = 0): string =>
+  `${inKmh(speed, decimals)}${hold.setSpeedIs === 'indicated' ? ' indicated' : ''}`;
+
+function speedRemedy(windowed: LoopPlan, { steps, unlimited }: Search, aside: string | null): Remedy {
   const highest = [windowed.hold.setSpeed, ...windowed.hold.changes.map((change) => change.setSpeed)];
   const top = Math.ceil(toKmh(highest.reduce((a, b) => Math.max(a, b))) - 1e-9);
   const speedAt = (n: number): number => SPEED_STEP * (top - n);
   const least = Math.ceil(top * LEAST_SHARE);
-  const n = search((k) => withSetSpeed(windowed, speedAt(k)), top - least);
-  if (n === null) return noRemedy('set_speed', `No set speed down to ${inKmh(least * SPEED_STEP, 0)} holds.`);
-  const sustained = hill.share > 1 ? ` (full throttle sustains ${inKmh(hill.sustainedSpeed)})` : '';
+  const n = steps((k) => withSetSpeed(windowed, speedAt(k)), top - least);
+  const also = aside === null ? '' : ` (${aside})`;
+  if (n === null)
+    return noRemedy(
+      'set_speed',
+      `No set speed down to ${speedWords(windowed, least * SPEED_STEP)} holds${unlimited()}${also}.`,
+    );
   return {
     lever: 'set_speed',
     holds: speedAt(n),
     fails: speedAt(n - 1),
-    words: `Holds at ${inKmh(speedAt(n), 0)}; at ${inKmh(speedAt(n - 1), 0)} it does not${sustained}.`,
+    words: `Holds at ${speedWords(windowed, speedAt(n))}; at ${speedWords(windowed, speedAt(n - 1))} it does not${also}.`,
   };
 }
 
-function forceRemedy(windowed: LoopPlan, search: Search): Remedy {
-  const speed = windowed.hold.setSpeed;
+function forceRemedy(windowed: LoopPlan, { steps, unlimited }: Search): Remedy {
+  const speed = windowed.hold.setSpeed * trueSpeedFactor(windowed.hold, windowed.vehicle);
   const powerAt = (n: number): number => {
     const { drive } = withMoreForce(windowed, n * FORCE_STEP).vehicle;
     return forceRange(drive, drive.gear, speed, 1).greatest * speed;
   };
-  const n = search((k) => withMoreForce(windowed, k * FORCE_STEP), FORCE_STEPS);
-  if (n === null) return noRemedy('power', 'Twice the force does not hold either.');
+  const n = steps((k) => withMoreForce(windowed, k * FORCE_STEP), FORCE_STEPS);
+  if (n === null) return noRemedy('power', `Twice the force does not hold either${unlimited()}.`);
+  const at = windowed.hold.setSpeedIs === 'indicated' ? `${inKmh(speed)} true` : inKmh(speed, 0);
   return {
     lever: 'power',
     holds: powerAt(n),
     fails: powerAt(n - 1),
-    words: `Holds with ${inPct(n * FORCE_STEP)} more force, ${inKw(powerAt(n))} at the wheel at ${inKmh(speed, 0)} at sea level; with ${inPct((n - 1) * FORCE_STEP)} more it does not.`,
+    words: `Holds with ${inPct(n * FORCE_STEP)} more force, ${inKw(powerAt(n))} at the wheel at ${at} at sea level; with ${inPct((n - 1) * FORCE_STEP)} more it does not.`,
   };
 }
 
-function loadRemedy(windowed: LoopPlan, search: Search): Remedy {
+function loadRemedy(windowed: LoopPlan, { steps, unlimited }: Search): Remedy {
   const { payload } = windowed.vehicle;
   if (payload <= 0) return noRemedy('load', 'There is no payload to take off.');
   const top = Math.ceil(payload / LOAD_STEP - 1e-9);
   const loadAt = (n: number): number => (n === 0 ? payload : LOAD_STEP * (top - n));
-  const n = search((k) => withPayload(windowed, loadAt(k)), top);
-  if (n === null) return noRemedy('load', `Taking off all ${inKg(payload)} of payload does not hold either.`);
+  const n = steps((k) => withPayload(windowed, loadAt(k)), top);
+  if (n === null)
+    return noRemedy('load', `Taking off all ${inKg(payload)} of payload does not hold either${unlimited()}.`);
   return {
     lever: 'load',
     holds: loadAt(n),

@@ -148,6 +148,42 @@ describe('what a candidate did on a hill', () => {
     expect(outcome.cause).toBe('windup');
   });
 
+  it('ends where the next hill begins, however long the recovery takes', () => {
+    const road = roadOf([
+      { length: 1500, grade: 0 },
+      { length: 300, grade: 0.05 },
+      { length: 300, grade: 0 },
+      { length: 800, grade: 0.11 },
+      { length: 2000, grade: 0 },
+    ]);
+    const soft = piOf({ kp: 0.06, ki: 0.004 });
+    const { hills, replayed } = study({ pi: planOf(road, vehicleOf(), soft) });
+    expect(hills.length).toBeGreaterThan(1);
+    const { bins } = replayed[0]!.result;
+    for (const hill of hills) {
+      let [low, high] = [0, 0];
+      for (let i = 0; i < bins.size; i++) {
+        if (bins.edge[i + 1]! <= hill.from || bins.edge[i]! >= hill.until) continue;
+        low = Math.min(low, bins.errorMin[i]!);
+        high = Math.max(high, bins.errorMax[i]!);
+      }
+      const { speedChange } = outcomeOn(hill, 'pi');
+      expect(speedChange).toBeGreaterThanOrEqual(low - 1e-9);
+      expect(speedChange).toBeLessThanOrEqual(high + 1e-9);
+    }
+  });
+
+  it('agrees with the hand formula where the throttle is locked anew at its foot', () => {
+    const vehicle = vehicleOf({ drive: { peakForce: 150 } });
+    const changes = [{ at: { distance: 1500 }, setSpeed: 55 / 3.6, ramp: null }];
+    const locked: LoopPlan['controller'] = { kind: 'locked', throttle: 'level' };
+    const hold = { ...HOLD_60, changes };
+    const { hills } = study({ locked: planOf(oneHill(0.03, 200), vehicle, locked, { hold }) });
+    const outcome = outcomeOn(hills[0]!, 'locked');
+    // The throttle before the change would be worth 3 km/h and more here.
+    expectClose(outcome.speedChange, outcome.predictedChange as number, 0.3 / 3.6);
+  });
+
   it('agrees with the hand formula where the force is simply short', () => {
     const { outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF));
     expect(outcome.predictionDiffers).toBe(false);

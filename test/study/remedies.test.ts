@@ -7,7 +7,7 @@ import { wheelForce } from '../../src/vehicle/drive-law.ts';
 import { electricDrive } from '../../src/vehicle/electric-drive.ts';
 import { expectClose } from '../compare.ts';
 import { BAND, oneHill, outcomeOn, STIFF, study } from './scene.ts';
-import { HOLD_60, planOf, vehicleOf } from './vehicle-of.ts';
+import { HOLD_60, piOf, planOf, vehicleOf } from './vehicle-of.ts';
 
 /** Every sample from a settled start to the end of what the hill is answerable for stays in the band. */
 function holdsOn(plan: LoopPlan, hill: Hill): boolean {
@@ -77,6 +77,61 @@ describe('what would hold', () => {
     const down = study({ pi: planOf(oneHill(-0.1), vehicleOf(), STIFF) }).hills[0]!;
     expect(remedy(down, 'set_speed').holds).toHaveProperty('none');
     expect(remedy(down, 'set_speed').words).toContain('brake');
+  });
+
+  it('a lower set speed on a descent, where the drive holds back by power', () => {
+    // 2 kW of regeneration: the slower, the more force. 215 kg on 16 % push with 333 N, rolling and drag off 68 N.
+    const drive = electricDrive({
+      peakForce: 400,
+      peakPower: null,
+      closedThrottleForce: 40,
+      regenerationForce: 400,
+      regenerationPower: 2000,
+      fadeSpeed: 0,
+      throttleMin: -1,
+      lag: 0.1,
+      efficiency: null,
+    });
+    const steep = planOf(oneHill(-0.16), { ...vehicleOf(), drive }, piOf({ kp: 3, ki: 1 }));
+    const found = study({ pi: steep }).hills[0]!;
+    const { holds, fails, words } = remedy(found, 'set_speed');
+    const at = (speed: number): LoopPlan => ({
+      ...steep,
+      hold: { ...HOLD_60, setSpeed: speed, startSpeed: speed },
+    });
+    expect((holds as number) * 3.6).toBeGreaterThan(22);
+    expect((holds as number) * 3.6).toBeLessThan(32);
+    expect(holdsOn(at(holds as number), found)).toBe(true);
+    expect(holdsOn(at(fails as number), found)).toBe(false);
+    expect(words).toContain('the rider must brake');
+  });
+
+  it('speaks of speeds in the terms of the set speed, and of power at the true one', () => {
+    const scaleError = 0.08;
+    const vehicle = vehicleOf();
+    const optimistic = { ...vehicle, sensor: { ...vehicle.sensor, scaleError } };
+    const setSpeed = ((1 + scaleError) * 60) / 3.6;
+    const hold = { ...HOLD_60, setSpeedIs: 'indicated' as const, setSpeed, startSpeed: setSpeed };
+    const indicated = study({ pi: planOf(road, optimistic, STIFF, { hold }) }).hills[0]!;
+    const { holds, words } = remedy(indicated, 'set_speed');
+    expect(words).toMatch(/^Holds at \d+ km\/h indicated; at \d+ km\/h indicated it does not/);
+    const sustained = (indicated.sustainedSpeed * 3.6 * (1 + scaleError)).toFixed(1);
+    expect(words).toContain(`full throttle sustains ${sustained} km/h indicated`);
+    // The same hill, the same vehicle: the true speeds that hold are one step apart at most.
+    expectClose((holds as number) / (1 + scaleError), remedy(hill, 'set_speed').holds as number, 1 / 3.6);
+    const power = remedy(indicated, 'power');
+    expectClose(((power.holds as number) - (power.fails as number)) / (60 / 3.6), 0.05 * 260, 1e-9);
+    expect(power.words).toContain('at the wheel at 60.0 km/h true');
+  });
+
+  it('says where no lever helps because the gains leave the band by themselves', () => {
+    const soft = planOf(oneHill(0.08), vehicleOf(), piOf({ kp: 0.15, ki: 0.02 }));
+    const outcome = outcomeOn(study({ pi: soft }).hills[0]!, 'pi');
+    const failed = outcome.wouldHold.filter(({ holds }) => typeof holds !== 'number');
+    expect(failed.map(({ lever }) => lever)).toContain('power');
+    for (const { words } of failed) expect(words).toContain('the gains leave the band even without limits');
+    // With gains that hold without limits the words do not blame them.
+    for (const { words } of outcomeOn(hill, 'pi').wouldHold) expect(words).not.toContain('gains');
   });
 });
 
