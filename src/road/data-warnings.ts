@@ -1,18 +1,21 @@
 import { medianOf } from '../numeric/running-median.ts';
 import type { Warning } from '../problems/warning.ts';
-import { toKm } from '../units/convert.ts';
+import { toKm, toPct } from '../units/convert.ts';
 import type { DrivenTrack } from './driven-track.ts';
 import type { RoadOptions } from './options.ts';
 import type { Road } from './road.ts';
+import { stretchWarnings } from './stretch-warnings.ts';
 
-/** A gap is this many usual spacings wide, and at least this long [m]. */
-const GAP_SPACINGS = 5;
-const GAP_LENGTH = 50;
 /** Repairs that run on for longer than this [m] are named. */
 const LONG_REPAIR = 200;
 
-/** What the points themselves give cause to say: too coarse for the grid, gaps bridged, too short for the smoothing. */
-export function dataWarnings(driven: DrivenTrack, road: Road, options: RoadOptions): Warning[] {
+/** What the points themselves give cause to say: too coarse for the grid, gaps bridged, too short for the smoothing. The file's track has `fileLength` [m]. */
+export function dataWarnings(
+  driven: DrivenTrack,
+  road: Road,
+  options: RoadOptions,
+  fileLength: number,
+): Warning[] {
   const warnings: Warning[] = [];
   const { distance, size } = driven;
   const steps = distance.slice(1).map((x, i) => x - distance[i]!);
@@ -22,16 +25,14 @@ export function dataWarnings(driven: DrivenTrack, road: Road, options: RoadOptio
       code: 'interpolated',
       message: `Points of the track are ${usual.toFixed(0)} m apart (median); between them the ${road.grid} m grid is interpolated and shows no real detail.`,
     });
-  const least = Math.max(GAP_SPACINGS * usual, GAP_LENGTH);
-  for (let i = 1; i < size; i++) {
-    if (steps[i - 1]! <= least) continue;
-    warnings.push({
-      code: 'gap-bridged',
-      message: `No points for ${steps[i - 1]!.toFixed(0)} m from km ${toKm(distance[i - 1]!).toFixed(2)}: bridged, and the grade there is little more than a guess.`,
-      from: distance[i - 1]!,
-      to: distance[i]!,
-    });
-  }
+  for (const { kind, from, to } of driven.repairs)
+    if (kind === 'gap')
+      warnings.push({
+        code: 'gap-bridged',
+        message: `No points for ${(to - from).toFixed(0)} m from km ${toKm(from).toFixed(2)}: bridged, ${gradeThere(road, from, to)}.`,
+        from,
+        to,
+      });
   for (const { kind, from, to, points } of road.repairs)
     if (points > 0 && to - from > LONG_REPAIR)
       warnings.push({
@@ -40,7 +41,7 @@ export function dataWarnings(driven: DrivenTrack, road: Road, options: RoadOptio
         from,
         to,
       });
-  warnings.push(...unusedInput(driven, options));
+  warnings.push(...unusedInput(driven, options, fileLength));
   const length = distance[size - 1]!;
   const { smoothing } = road;
   if (smoothing === null) return warnings;
@@ -57,8 +58,17 @@ export function dataWarnings(driven: DrivenTrack, road: Road, options: RoadOptio
   return warnings;
 }
 
+/** How well the grade of a bridged stretch is known. */
+function gradeThere(road: Road, from: number, to: number): string {
+  const inside = road.gradeSd.filter((_, i) => road.distance[i]! >= from && road.distance[i]! <= to);
+  const most = inside.reduce((a, b) => Math.max(a, b), 0);
+  return most === 0
+    ? 'and the grade there is that between its ends'
+    : `and one standard deviation of the grade there reaches ${toPct(most).toFixed(1)} %`;
+}
+
 /** What was given and has no effect. */
-function unusedInput(driven: DrivenTrack, options: RoadOptions): Warning[] {
+function unusedInput(driven: DrivenTrack, options: RoadOptions, fileLength: number): Warning[] {
   const warnings: Warning[] = [];
   if (driven.headwind !== null && options.wind !== null)
     warnings.push({
@@ -70,11 +80,9 @@ function unusedInput(driven: DrivenTrack, options: RoadOptions): Warning[] {
       code: 'masks-unused',
       message: 'The file gives the grade itself: it is used as it is, and masks change nothing.',
     });
-  const lost = options.masks.length - driven.masks.length;
-  if (lost > 0)
-    warnings.push({
-      code: 'mask-outside-road',
-      message: `${lost === 1 ? '1 mask lies' : `${lost} masks lie`} outside of the driven part of the track and ${lost === 1 ? 'changes' : 'change'} nothing.`,
-    });
+  for (const kind of ['mask', 'shelter'] as const) {
+    const [given, used] = kind === 'mask' ? [options.masks, driven.masks] : [options.shelter, driven.shelter];
+    warnings.push(...stretchWarnings({ kind, given, lost: given.length - used.length, length: fileLength }));
+  }
   return warnings;
 }

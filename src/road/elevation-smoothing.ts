@@ -24,6 +24,8 @@ const SETTLED = 0.01;
 /** Outliers are judged against their neighbours within this distance [m], and against this many at least on each side. */
 const NEIGHBOURHOOD = 50;
 const LEAST_NEIGHBOURS = 3;
+/** A point can only be an outlier with so many neighbours on both sides within this many wavelengths: else it is all there is. */
+const NEIGHBOURS_WITHIN = 2;
 
 export interface ElevationInput {
   /** Places of the measured points [m], ascending, >= 0; what is masked or not the file's own is not among them. */
@@ -60,7 +62,8 @@ export interface SmoothElevation {
  * the third differences bridge. Outliers start from Hampel's filter on the raw elevation (three scaled median
  * deviations, over distance), then a biweight is iterated on residuals from which the running median is taken: a
  * spike leaves its neighbours, a hill that the smoother cannot follow does not, and keeps its weight. The noise is
- * estimated from the residuals' means by cell, so that ten correlated points a cell do not count as ten.
+ * estimated from the residuals' means by cell, so that ten correlated points a cell do not count as ten. Points too few or
+ * too sparse to be judged by their neighbours are all believed.
  *
  * With fewer than three points the result is not finite.
  */
@@ -70,7 +73,8 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
   const lambda = lambdaOfWavelength(Math.max(input.wavelength / grid, 2));
   const places = distance.map((x) => Math.min(x / grid, knots - 1));
   const base = lengthWeights(distance, grid);
-  const weights = startWeights(input, base);
+  const judged = judgedPoints(distance, NEIGHBOURS_WITHIN * input.wavelength);
+  const weights = startWeights(input, base, judged);
   let fit = smoothWhittaker({ places, values: [elevation], weights, knots, lambda });
   let residual = residualOf(fit, places, elevation);
   const trust = new Float64Array(size).fill(1);
@@ -82,7 +86,7 @@ export function smoothElevation(input: ElevationInput): SmoothElevation {
     const scale = Math.max(NORMAL_SCALE * medianOf(apart), input.noiseFloor);
     let change = 0;
     for (let i = 0; i < size; i++) {
-      const next = trustIn(apart[i]! / scale);
+      const next = judged[i] === 1 ? trustIn(apart[i]! / scale) : 1;
       change = Math.max(change, Math.abs(next - trust[i]!));
       trust[i] = next;
       weights[i] = base[i]! * next;
@@ -130,13 +134,27 @@ function lengthWeights(distance: Float64Array, grid: number): Float64Array {
   });
 }
 
-function startWeights(input: ElevationInput, base: Float64Array): Float64Array {
+/** 1 where a point has enough neighbours on both sides to be judged by; near an end, as many more on the other side. */
+function judgedPoints(distance: Float64Array, reach: number): Uint8Array {
+  const last = distance.length - 1;
+  return Uint8Array.from(distance, (x, i) => {
+    const before = Math.min(LEAST_NEIGHBOURS, i);
+    const after = Math.min(LEAST_NEIGHBOURS, last - i);
+    const low = i - before - (LEAST_NEIGHBOURS - after);
+    const high = i + after + (LEAST_NEIGHBOURS - before);
+    return low >= 0 && high <= last && x - distance[low]! <= reach && distance[high]! - x <= reach ? 1 : 0;
+  });
+}
+
+function startWeights(input: ElevationInput, base: Float64Array, judged: Uint8Array): Float64Array {
   const { distance, elevation, noiseFloor } = input;
   const { first, last } = windowsWithin(distance, NEIGHBOURHOOD, LEAST_NEIGHBOURS);
   const { median, deviation } = runningMedian(elevation, first, last);
   return base.map((weight, i) => {
     const scale = Math.max(NORMAL_SCALE * deviation[i]!, noiseFloor);
-    return Math.abs(elevation[i]! - median[i]!) > HAMPEL_LIMIT * scale ? weight * LEAST_WEIGHT : weight;
+    return judged[i] === 1 && Math.abs(elevation[i]! - median[i]!) > HAMPEL_LIMIT * scale
+      ? weight * LEAST_WEIGHT
+      : weight;
   });
 }
 

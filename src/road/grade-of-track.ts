@@ -4,6 +4,7 @@ import { gradientAtKnots } from '../numeric/uniform-gradient.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Repair } from '../track/track.ts';
+import { toKm } from '../units/convert.ts';
 import { SUSPICION_WAVELENGTH, suspectBridges } from './bridge-suspicion.ts';
 import type { DrivenTrack } from './driven-track.ts';
 import { smoothElevation } from './elevation-smoothing.ts';
@@ -40,7 +41,7 @@ export interface GradeAlong {
  * an end about 3.9 and 2 times, against 1.7 to 2.3 measured on synthetic roads.
  *
  * @param uniform knots [m] from 0, at least 4, reaching the last point or past it
- * @throws InputError `no-elevation`, `too-few-elevations`
+ * @throws InputError `no-elevation`, `too-few-elevations`, `points-too-sparse`
  */
 export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform: Float64Array): GradeAlong {
   if (driven.grade !== null)
@@ -126,6 +127,15 @@ function bySmoothing(
     const growth = sd / smooth.leastGradeSdPerNoise;
     return Math.sqrt(shown * shown * growth * growth + sourceGradeSd * sourceGradeSd * growth);
   });
+  if (!gradeSd.every(Number.isFinite) || !smooth.grade.every(Number.isFinite))
+    throw new InputError({
+      code: 'points-too-sparse',
+      place: { key: 'track' },
+      message: `the points are too sparse for a smoothing over ${wavelength.toFixed(0)} m`,
+      found: `${distance.length} points over ${toKm(distance.at(-1)! - distance[0]!).toFixed(1)} km`,
+      allowed:
+        'points evenly along the way, a longer road.smoothing_wavelength_m, or road.elevation_source: exact',
+    });
   return {
     grade: smooth.grade,
     gradeSd,

@@ -40,6 +40,8 @@ export interface ProfileOptions {
   readonly wind: SteadyWind | null;
   readonly air: Air;
   readonly shelter: readonly ShelteredStretch[];
+  /** Without effect on a written road, which says so. */
+  readonly masks?: readonly MaskedStretch[];
   /** Set speed at the start [m/s], > 0: distance over time of a profile by time. Tracks do not use it. */
   readonly nominalSpeed: number;
   readonly direction: 'there' | 'back' | 'both';

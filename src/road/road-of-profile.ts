@@ -1,4 +1,5 @@
 import { InputError } from '../problems/input-error.ts';
+import type { Warning } from '../problems/warning.ts';
 import type { Profile, ProfilePiece } from '../track/track.ts';
 import { airAlong } from './air.ts';
 import { integrateSlope } from './along-slope.ts';
@@ -7,6 +8,7 @@ import type { ProfileOptions, ShelteredStretch } from './options.ts';
 import { wrapTurn } from './plan.ts';
 import type { Road } from './road.ts';
 import { roadWarnings } from './road-warnings.ts';
+import { stretchWarnings } from './stretch-warnings.ts';
 import { thereAndBack } from './there-and-back.ts';
 import { windMet } from './wind.ts';
 
@@ -88,8 +90,27 @@ export function roadOfProfile(given: Profile, options: ProfileOptions): Road {
     warnings: [],
     turnsAt: null,
   };
-  const warned = { ...road, warnings: roadWarnings(road) };
+  const warned = { ...road, warnings: [...unusedStretches(options, extent), ...roadWarnings(road)] };
   return options.direction === 'both' ? thereAndBack(warned) : warned;
+}
+
+function unusedStretches({ masks = [], shelter }: ProfileOptions, length: number): Warning[] {
+  const outside = (parts: readonly { readonly from: number }[]): number =>
+    parts.filter(({ from }) => from >= length).length;
+  const warnings: Warning[] =
+    masks.length === 0
+      ? []
+      : [
+          {
+            code: 'masks-unused',
+            message: 'The road is written in the case: its grade is used as it is, and masks change nothing.',
+          },
+        ];
+  return [
+    ...warnings,
+    ...stretchWarnings({ kind: 'mask', given: masks, lost: outside(masks), length }),
+    ...stretchWarnings({ kind: 'shelter', given: shelter, lost: outside(shelter), length }),
+  ];
 }
 
 function knotsOf(pieces: readonly ProfilePiece[], half: number, grid: number): Columns {

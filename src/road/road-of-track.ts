@@ -76,7 +76,11 @@ export function roadOfTrack(track: Track, options: RoadOptions): Road {
   };
   const warned = {
     ...road,
-    warnings: [...dataWarnings(driven, road, options), ...along.warnings, ...roadWarnings(road)],
+    warnings: [
+      ...dataWarnings(driven, road, options, track.distance[track.size - 1] ?? 0),
+      ...along.warnings,
+      ...roadWarnings(road),
+    ],
   };
   return options.direction === 'both' ? thereAndBack(warned) : warned;
 }

@@ -1,19 +1,19 @@
 import { InputError } from '../problems/input-error.ts';
 import { impliedSpeed, tooFast } from './leave-out-jumps.ts';
-import { GAP, LONGEST_GAP, SPARSE_RATIO } from './limits.ts';
+import { GAP, LONGEST_GAP, USUAL_LEGS } from './limits.ts';
 import { placeOfPoint } from './place-of-point.ts';
 import type { RawTrack } from './raw-track.ts';
 import type { RepairLog } from './repair-log.ts';
 
 /**
- * Measures the way along the kept points, and notes what it bridges: the joins of segments, legs longer than 500 m,
- * and legs that imply more than 70 m/s. Where the file gives distances, a table may be as sparse as it likes: a leg
- * is a gap only when it is three times the usual one as well.
+ * Measures the way along the kept points, and notes what it bridges: the joins of segments, legs longer than 100 m and
+ * than five usual ones, and legs that imply more than 70 m/s. Where the file gives distances, a table may be as sparse
+ * as it likes, as long as it is so evenly.
  *
  * @param kept raw indices
  * @param leg see legLength
  * @returns distance of each kept point from the first [m], strictly increasing
- * @throws InputError `track-gap` for a leg longer than 3 km
+ * @throws InputError `track-gap` for a leg longer than 3 km; in a table, only where it is longer than five usual legs too
  */
 export function bridgeGaps(
   raw: RawTrack,
@@ -22,7 +22,8 @@ export function bridgeGaps(
   log: RepairLog,
 ): Float64Array {
   const distance = new Float64Array(kept.length);
-  const usual = raw.distance === null ? 0 : SPARSE_RATIO * medianLeg(kept, leg);
+  const usual = USUAL_LEGS * medianLeg(kept, leg);
+  const longest = raw.distance === null ? LONGEST_GAP : Math.max(LONGEST_GAP, usual);
   for (let k = 1; k < kept.length; k++) {
     const [a, b] = [kept[k - 1]!, kept[k]!];
     const length = leg(a, b);
@@ -30,13 +31,13 @@ export function bridgeGaps(
     distance[k] =
       raw.distance === null ? distance[k - 1]! + length : raw.distance[b]! - raw.distance[kept[0]!]!;
     const metres = `${length.toFixed(0)} m`;
-    if (length > Math.max(LONGEST_GAP, usual))
+    if (length > longest)
       throw new InputError({
         code: 'track-gap',
         place: placeOfPoint(raw, b),
         message: 'the track has a long stretch without points before this one',
         found: metres,
-        allowed: `up to ${LONGEST_GAP} m`,
+        allowed: `up to ${longest.toFixed(0)} m`,
       });
     if (raw.segment[a] !== raw.segment[b])
       log.add('segment_joined', a, b, 0, `two segments of the file joined by a straight line of ${metres}`);
@@ -54,7 +55,8 @@ export function bridgeGaps(
   return distance;
 }
 
+/** The lower one of the middle two of an even number: of two legs, the shorter is the usual one. */
 function medianLeg(kept: Int32Array, leg: (from: number, to: number) => number): number {
   const legs = Float64Array.from({ length: kept.length - 1 }, (_, k) => leg(kept[k]!, kept[k + 1]!)).sort();
-  return legs[legs.length >> 1]!;
+  return legs[(legs.length - 1) >> 1]!;
 }

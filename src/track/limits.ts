@@ -29,11 +29,13 @@ export const LONGEST_JUMP = 5;
 export const LONGEST_DISTANCE_REVERSAL = 50;
 export const LONGEST_TIME_REVERSAL = 60;
 
-/** A leg longer than GAP [m] is bridged and said; longer than LONGEST_GAP [m] it is refused. */
-export const GAP = 500;
+/**
+ * A leg longer than GAP [m], half of the shortest usual smoothing wavelength, and than USUAL_LEGS usual legs is bridged and said;
+ * longer than LONGEST_GAP [m] it is refused, in a table of distances only where it is longer than so many usual legs too.
+ */
+export const GAP = 100;
+export const USUAL_LEGS = 5;
 export const LONGEST_GAP = 3000;
-/** In a table of distances, a leg up to this many usual legs is no gap. */
-export const SPARSE_RATIO = 3;
 
 /** Elevations (and grades, headings, winds, speeds) are interpolated over stretches up to this [m]. */
 export const LONGEST_FILL = 300;

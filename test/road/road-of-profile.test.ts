@@ -33,6 +33,23 @@ describe('road of a written profile', () => {
     expect(road.heading).toBeNull();
   });
 
+  it('says that masks change nothing, and which stretches are not on it', () => {
+    const written = profile([piece(1000, 0.02)]);
+    const stretch = (from: number, to: number) => ({ from, to, reason: 'wood', factor: 0.5 });
+    const told = (some: Parameters<typeof roadOptions>[0], given = written): string[] =>
+      roadOfProfile(given, roadOptions(some)).warnings.map(({ code }) => code);
+    expect(told({})).toEqual([]);
+    expect(told({ masks: [stretch(100, 200)] })).toEqual(['masks-unused']);
+    expect(told({ masks: [stretch(5000, 6000)] })).toEqual(['masks-unused', 'mask-outside-road']);
+    expect(told({ shelter: [stretch(100, 1000)] })).toEqual([]);
+    expect(told({ shelter: [stretch(100, 1200)] })).toEqual(['shelter-past-end']);
+    expect(told({ shelter: [stretch(1000, 1200)] })).toEqual(['shelter-outside-road']);
+    // 50 s at the nominal 20 m/s.
+    const timed = profile([piece(50, 0.02)], { by: 'time' });
+    expect(told({ shelter: [stretch(100, 1000)] }, timed)).toEqual([]);
+    expect(told({ shelter: [stretch(100, 1200)] }, timed)).toEqual(['shelter-past-end']);
+  });
+
   it('lays a parabola over a change of grade, half on each side', () => {
     const road = roadOfProfile(profile([piece(200, 0), piece(200, 0.06)], { verticalCurve: 60 }), options());
     const at = (x: number): number => Array.from(road.distance).findIndex((d) => Math.abs(d - x) < 1e-9);

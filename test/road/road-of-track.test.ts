@@ -348,10 +348,15 @@ describe('road of a track', () => {
       (i) => track.distance[i]! <= 3000 || track.distance[i]! >= 3600,
     );
     const pick = (a: Float64Array | null): Float64Array => Float64Array.from(keep, (i) => a![i]!);
-    const gapped = trackOf(pick(track.distance), { elevation: pick(track.elevation) });
+    const gap = { kind: 'gap', from: 3000, to: 3600, points: 0, line: null, message: 'x' } as const;
+    const gapped = { ...trackOf(pick(track.distance), { elevation: pick(track.elevation) }), repairs: [gap] };
     const road = columns(gapped);
     const warning = road.warnings.find((w) => w.code === 'gap-bridged');
     expect([warning?.from, warning?.to]).toEqual([3000, 3600]);
+    const most = Math.max(...road.gradeSd.slice(300, 361));
+    expect(warning?.message).toContain(
+      `one standard deviation of the grade there reaches ${(100 * most).toFixed(1)} %`,
+    );
     expect(road.gradeSd[330]!).toBeGreaterThan(2 * road.gradeSd[150]!);
   });
 
@@ -400,6 +405,51 @@ describe('road of a track', () => {
     ];
     const codes = columns(track, { wind: windFrom(0), masks }).warnings.map((w) => w.code);
     expect(codes).toEqual(['headwind-column-used', 'masks-unused', 'mask-outside-road']);
+  });
+
+  it('says when a mask or a shelter lies past the end, or reaches past it', () => {
+    const distance = evenly(3000, 10);
+    const track = trackOf(distance, { elevation: distance.map(() => 50) });
+    const stretch = (from: number, to: number) => ({ from, to, reason: 'wood', factor: 0.5 });
+    const told = (options: Partial<RoadOptions>): string[] =>
+      columns(track, options)
+        .warnings.map(({ code }) => code)
+        .filter((code) => /road$|end$/.test(code));
+    expect(told({ masks: [stretch(2900, 3000.9)], shelter: [stretch(2900, 3000.9)] })).toEqual([]);
+    expect(told({ masks: [stretch(2900, 3600)], direction: 'back' })).toEqual(['mask-past-end']);
+    expect(told({ shelter: [stretch(2000, 3600), stretch(3000, 3600)] })).toEqual([
+      'shelter-outside-road',
+      'shelter-past-end',
+    ]);
+    // What the trimmed ends take away was there.
+    expect(told({ masks: [stretch(2500, 2900)], trimEnds: 300 })).toEqual([]);
+  });
+
+  it('believes every point of a track that is too sparse to judge them', () => {
+    for (const points of [
+      [100, 100, 140, 140],
+      [100, 100, 160, 100],
+      [1, 2, 90, 4, 5, 6, 7, 8, 8],
+    ]) {
+      const distance = Float64Array.from(points, (_, i) => 1000 * i);
+      const road = columns(trackOf(distance, { elevation: Float64Array.from(points) }));
+      expect(road.repairs).toEqual([]);
+      expectClose(
+        points.map((_, i) => road.elevation[100 * i]!),
+        points,
+        0.5,
+      );
+    }
+  });
+
+  it('still takes a spike out at the ends of a dense track', () => {
+    for (const spike of [0, 1, 60, 119, 120]) {
+      const distance = evenly(1200, 10);
+      const elevation = distance.map((x, i) => 100 + 0.03 * x + (i === spike ? 25 : 0));
+      const road = columns(trackOf(distance, { elevation }));
+      expect(road.repairs.map(({ kind, from }) => [kind, from])).toEqual([['elevation_spike', 10 * spike]]);
+      expectClose(road.grade, new Float64Array(road.size).fill(0.03), 0.001);
+    }
   });
 
   it('refuses what cannot become a road, with stable codes', () => {

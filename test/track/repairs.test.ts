@@ -36,6 +36,7 @@ const table: readonly Row[] = [
   ['clock-ahead.gpx', 9, 'reversal', 1, 9, 4, 4, '1 point left out'],
   ['half-a-clock.gpx', 10, 'non_finite', 1, 8, 4, 4, 'the times of the file are not used'],
   ['gap.gpx', 8, 'gap', 0, 7, 3, 12, 'no points for 901 m'],
+  ['dropout.gpx', 10, 'gap', 0, 8, 2, 6.63, 'no points for 464 m'],
   ['too-fast.gpx', 9, 'gap', 0, 8, 4, 7, '300 m in 1082 km/h'],
   ['segments.gpx', 9, 'segment_joined', 0, 8, 4, 5, 'straight line of 100 m'],
   ['nan-elevation.gpx', 8, 'non_finite', 1, 7, 3, 3, 'elevation is no finite number'],
