@@ -4,24 +4,13 @@ import { derateFactor } from '../vehicle/derating.ts';
 import { forceRange } from '../vehicle/drive-law.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import { demandShare } from './demand.ts';
-import type { Cause, None } from './findings.ts';
+import type { Cause, Figure, None } from './findings.ts';
+import type { HillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
 import { nominalCourse, setSpeedAt } from './hold-course.ts';
 import { has, type Limitation, without } from './limitations.ts';
 import { inKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
-
-/** What the candidate did on the hill, from its own run. */
-export interface HillEvents {
-  readonly leftBand: boolean;
-  /** Least and greatest error there [m/s]. */
-  readonly low: number;
-  readonly high: number;
-  /** Time at the limits there [s]. */
-  readonly timeUpper: number;
-  readonly timeLower: number;
-  readonly timeRate: number;
-}
 
 export interface CauseFinding {
   readonly cause: Cause | None;
@@ -37,14 +26,16 @@ export interface CauseFinding {
  *    only where it was met. The first without which the band is kept is the cause. Where the worst error lies on the
  *    far side of the limit (too fast after full throttle, too slow after closed), windup need answer for that side
  *    only, and is the cause if half of its excess goes with it.
- * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it;
- *    else `gains`.
+ * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it.
+ *    Else the throttle range, if the ideal hold, which has no gains, makes more than half of the worst error too; else
+ *    `gains`.
  * 4. The throttle range is named by the demand: it would be in range at sea level: `derating`; in still air: `wind`;
  *    else, upwards, `power` where the power limit is below the peak force at the place of greatest demand, or
  *    `torque`; downwards `closed_throttle`. A demand in range throughout: `gains`, the controller went there itself.
  *
  * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
- * @returns the cause and one sentence
+ * @param ideal change of speed of the ideal hold on the hill [m/s]
+ * @returns the cause, and why with what is left of the error without it
  */
 export function causeOnHill(
   plan: LoopPlan,
@@ -53,33 +44,55 @@ export function causeOnHill(
   events: HillEvents,
   band: number,
   excess: number,
+  ideal: Figure,
 ): CauseFinding {
   if (plan.controller.kind === 'locked') return lockedCause(hill);
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
+  const up = events.timeUpper >= events.timeLower;
   if (!events.leftBand) {
-    const range = nameRange(windowed, window, hill, events);
+    const range = nameRange(windowed, window, hill, up);
     if (range !== null) return { ...range, why: `${range.why} The band was kept.` };
     return {
       cause: 'gains',
       why: `The command met its limit for ${inSeconds(events.timeUpper + events.timeLower)} although the demand stays in range; the band was kept.`,
     };
   }
+  const { cause, why } = causeOfLeaving({ windowed, window, hill, events, band, excess }, ideal);
+  return { cause, why: `${why}${brakeWords(plan, events)}` };
+}
+
+interface Scene {
+  readonly windowed: LoopPlan;
+  readonly window: HillWindow;
+  readonly hill: HillFacts;
+  readonly events: HillEvents;
+  readonly band: number;
+  readonly excess: number;
+}
+
+function causeOfLeaving(scene: Scene, ideal: Figure): CauseFinding {
+  const { windowed, window, events, band, excess } = scene;
   const far = farSide(events);
-  let best: Removal | null = null;
+  const removals: Removal[] = [];
   for (const limitation of metLimitations(events)) {
     if (!has(windowed, limitation)) continue;
     const passage = passHill(without(windowed, limitation), window);
     const overshot = limitation === 'windup' && far !== 0;
     const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
     if (overshot && takesHalf(left, excess)) return windupCause(passage, events);
-    if (best === null || left < best.left) best = { limitation, left, passage };
+    removals.push({ limitation, left, passage });
     if (left === 0) break;
   }
+  const best = removals.reduce<Removal | null>(
+    (least, one) => (least === null || one.left < least.left ? one : least),
+    null,
+  );
   if (best !== null && takesHalf(best.left, excess)) {
-    const found = explain(best, windowed, window, hill, events);
+    const found = explain(best, scene);
     if (found !== null) return found;
   }
-  return gainsCause(hill, events);
+  const free = removals.find(({ limitation }) => limitation === 'range') ?? null;
+  return idealCause(scene, ideal, free) ?? gainsCause(scene, free);
 }
 
 /** A run that ended on the way has an infinite excess; one that still ends has lost nothing of it. */
@@ -113,27 +126,45 @@ function metLimitations(events: HillEvents): Limitation[] {
 /** True where a replay with one limitation less can tell something. */
 export const metAnyLimit = (events: HillEvents): boolean => metLimitations(events).length > 0;
 
-function explain(
-  { limitation, left, passage }: Removal,
-  windowed: LoopPlan,
-  window: HillWindow,
-  hill: HillFacts,
-  events: HillEvents,
-): CauseFinding | null {
+function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFinding | null {
+  const { windowed, window, hill, events } = scene;
   if (limitation === 'range') {
-    const named = nameRange(windowed, window, hill, events);
+    const named = nameRange(windowed, window, hill, events.timeUpper >= events.timeLower);
     if (named === null || left === 0) return named;
-    const alone = passage.high > -passage.low ? passage.high : passage.low;
-    return {
-      ...named,
-      why: `${named.why} Without any limit the gains alone would still let the error grow to ${inKmh(alone)}.`,
-    };
+    return { ...named, why: `${named.why} ${sentence(aloneWords(passage))}` };
   }
   if (limitation === 'windup') return windupCause(passage, events);
   return {
     cause: 'rate',
     why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit: ${errorRange(passage)}.`,
   };
+}
+
+/** The range first where the ideal hold makes most of the worst error too; gains second. */
+function idealCause(scene: Scene, ideal: Figure, free: Removal | null): CauseFinding | null {
+  const { windowed, window, hill, events } = scene;
+  const worst = worstOf(events);
+  if (typeof ideal !== 'number' || ideal * worst <= 0 || Math.abs(ideal) <= Math.abs(worst) / 2) return null;
+  const named = nameRange(windowed, window, hill, ideal < 0);
+  if (named === null) return null;
+  const share = `An ideal hold would ${ideal < 0 ? 'lose' : 'gain'} ${inKmh(Math.abs(ideal))} of the ${inKmh(Math.abs(worst))}`;
+  const second = free === null ? 'the rest is for the gains to answer' : aloneWords(free.passage);
+  return { ...named, why: `${named.why} ${share}; ${second}.` };
+}
+
+const worstOf = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): number => (-low > high ? low : high);
+
+const aloneWords = (passage: HillPassage): string =>
+  passage.status === 'completed'
+    ? `without any limit the gains alone would still let the error grow to ${inKmh(worstOf(passage))}`
+    : 'without any limit the run would still end here';
+
+const sentence = (words: string): string => `${words.charAt(0).toUpperCase()}${words.slice(1)}.`;
+
+/** Where the rider's brake kept the worst error from growing. */
+function brakeWords({ rider }: LoopPlan, events: HillEvents): string {
+  if (rider.brakesAbove === null || events.timeBrake === 0 || events.high < -events.low) return '';
+  return ` The rider's brake, on for ${inSeconds(events.timeBrake)} at ${inKmh(rider.brakesAbove)} above the set speed, kept it from growing further.`;
 }
 
 const errorRange = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): string =>
@@ -156,15 +187,15 @@ function lockedCause(hill: HillFacts): CauseFinding {
   };
 }
 
-function gainsCause(hill: HillFacts, events: HillEvents): CauseFinding {
-  const worst = -events.low > events.high ? events.low : events.high;
-  const limit = metAnyLimit(events)
-    ? 'taking the limits away does not keep it in the band'
-    : 'it never met a limit';
-  return {
-    cause: 'gains',
-    why: `The demand is up to ${demandWords(hill.share)} and ${limit}: the gains let the error grow to ${inKmh(worst)}.`,
-  };
+function gainsCause({ hill, events }: Scene, free: Removal | null): CauseFinding {
+  const demand = `The demand is up to ${demandWords(hill.share)}`;
+  const worst = inKmh(worstOf(events));
+  const atLimit = events.timeUpper + events.timeLower;
+  const why =
+    free !== null && Math.abs(hill.share) <= 1
+      ? `${demand}, yet the command sat at its limit for ${inSeconds(atLimit)} and the error grew to ${worst}; ${aloneWords(free.passage)}.`
+      : `${demand}${metAnyLimit(events) ? '' : ' and it never met a limit'}: the gains let the error grow to ${worst}${free === null ? '' : `; ${aloneWords(free.passage)}`}.`;
+  return { cause: 'gains', why };
 }
 
 /** Names what limits the range by the demand over the hill; null where the demand is in range throughout. */
@@ -172,11 +203,10 @@ function nameRange(
   windowed: LoopPlan,
   window: HillWindow,
   hill: HillFacts,
-  events: HillEvents,
+  up: boolean,
 ): CauseFinding | null {
   const from = hill.from - window.start;
   const to = hill.until - window.start;
-  const up = events.timeUpper >= events.timeLower;
   const here = extremeDemand(windowed, from, to, up);
   if (here.share <= 1) return null;
   const asked = `At ${inKm(window.start + here.at)} the set speed needs ${inNewton(here.required)} and ${up ? 'full throttle gives' : 'the least throttle gives'} ${inNewton(here.available)}`;

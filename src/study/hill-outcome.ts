@@ -3,7 +3,8 @@ import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
 import type { Demand, Figure, HillOutcome, Replayed, Stretch } from './findings.ts';
-import { causeOnHill, type HillEvents, metAnyLimit } from './hill-cause.ts';
+import { causeOnHill, metAnyLimit } from './hill-cause.ts';
+import { type HillEvents, hillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { marksBin } from './hill-stretches.ts';
 import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
@@ -44,24 +45,25 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   const { name, result } = replayed;
   if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
   const { band, course } = context;
-  const events = eventsOn(result, hill, course, band);
   const locked = replayed.plan.controller.kind === 'locked';
-  const { series, whole, shownFrom } = seriesOver(replayed, hill, context, events.marked && !locked);
+  const regulates = !locked && marks(result, hill, course, band);
+  const { series, whole, shownFrom } = seriesOver(replayed, hill, context, regulates);
   const first = Math.min(sampleAt(series, hill.from), series.size - 1);
   const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
+  const events = hillEvents(series, first, last, course.settling, band);
   const recovery =
-    events.marked && !locked
+    events.affected && regulates
       ? recoveryOf(series, first, last, { ...context, settling: course.settling, whole })
       : { time: locked ? LOCKED : 0, over: last };
   const over = Math.max(last, recovery.over);
   const passage = passageOf(series, first, last, course.settling);
   const predictedChange = predict(replayed, hill, context, series, first);
-  const reasons = events.marked
-    ? explainOutcome(replayed, hill, context, events)
+  const reasons = events.affected
+    ? explainOutcome(replayed, hill, context, events, predictedChange)
     : { cause: { none: 'it kept its band and met no limit' }, why: 'It kept its band.', wouldHold: [] };
   return {
     candidate: name,
-    affected: events.marked,
+    affected: events.affected,
     speedChange: passage.extreme,
     predictedChange,
     predictionDiffers: differs(passage.extreme, predictedChange),
@@ -80,26 +82,12 @@ function pictureEnd(series: FullSeries, over: number): number {
   return end;
 }
 
-/** The candidate's own record on the hill. */
-function eventsOn(
-  { bins }: LoopResult,
-  hill: HillFacts,
-  course: HoldCourse,
-  band: number,
-): HillEvents & { readonly marked: boolean } {
-  const events = { marked: false, leftBand: false, low: 0, high: 0, timeUpper: 0, timeLower: 0, timeRate: 0 };
+/** By its record, the candidate left its band or sat on a limit on the hill or in a bin that reaches into it. */
+function marks({ bins }: LoopResult, hill: HillFacts, course: HoldCourse, band: number): boolean {
   const width = bins.edge[1] - bins.edge[0];
-  for (let i = Math.floor(hill.from / width); i < bins.size && bins.edge[i] < hill.until; i++) {
-    events.timeUpper += bins.timeUpper[i];
-    events.timeLower += bins.timeLower[i];
-    events.timeRate += bins.timeRate[i];
-    if (!marksBin(bins, i, band, course.settling)) continue;
-    events.marked = true;
-    events.low = Math.min(events.low, bins.errorMin[i]);
-    events.high = Math.max(events.high, bins.errorMax[i]);
-    if (bins.errorMax[i] > band || -bins.errorMin[i] > band) events.leftBand = true;
-  }
-  return events;
+  for (let i = Math.floor(hill.from / width); i < bins.size && bins.edge[i] < hill.until; i++)
+    if (marksBin(bins, i, band, course.settling)) return true;
+  return false;
 }
 
 /**
@@ -177,12 +165,13 @@ function explainOutcome(
   hill: HillFacts,
   { demand, course, band }: OutcomeContext,
   events: HillEvents,
+  ideal: Figure,
 ): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
   const { road } = plan;
   const near = hillWindow(hill, road, demand, course);
   // Where no limit was met there is nothing to take away, and no replay can say more.
   if (!events.leftBand || plan.controller.kind === 'locked' || !metAnyLimit(events))
-    return { ...causeOnHill(plan, hill, near, events, band, 0), wouldHold: [] };
+    return { ...causeOnHill(plan, hill, near, events, band, 0, ideal), wouldHold: [] };
   const shown = windowThatShows(plan, near, band);
   if (shown === null)
     return {
@@ -191,7 +180,7 @@ function explainOutcome(
       wouldHold: [],
     };
   const { window, excess } = shown;
-  const { cause, why } = causeOnHill(plan, hill, window, events, band, excess);
+  const { cause, why } = causeOnHill(plan, hill, window, events, band, excess, ideal);
   if (typeof cause !== 'string' || !leversHelp(cause)) return { cause, why, wouldHold: [] };
   const speed = demand.setSpeed[cellOf(road.distance, hill.shareAt)];
   const brakePower = (hill.availableForce - hill.requiredForce) * speed;

@@ -12,8 +12,8 @@ import { turningPlaces } from './turning-places.ts';
 const BRIDGED = 5;
 /** What follows a hill for this long still belongs to it [s at the set speed]. */
 const AFTERMATH = 15;
-/** Time at a limit that makes a bin count [s]. */
-const AT_LIMIT = 0.2;
+/** Time at a limit that counts, in a bin or on a hill [s]. */
+export const AT_LIMIT = 0.2;
 /** A hill is followed to its foot and its top while the grade goes on at this, for at most this far [m]. */
 const STILL_A_HILL = 0.01;
 const FARTHEST = 1500;

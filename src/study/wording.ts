@@ -9,7 +9,8 @@ const fixed = (x: number, decimals: number): string => {
 export const inKmh = (speed: number, decimals = 1): string => `${fixed(toKmh(speed), decimals)} km/h`;
 export const inKm = (distance: number): string => `${fixed(toKm(distance), 2)} km`;
 export const inPct = (ratio: number, decimals = 0): string => `${fixed(toPct(ratio), decimals)} %`;
-export const inSeconds = (time: number): string => `${fixed(time, 1)} s`;
+/** To a tenth below 10 s, whole above. */
+export const inSeconds = (time: number): string => `${fixed(time, Math.abs(time) < 9.95 ? 1 : 0)} s`;
 export const inNewton = (force: number): string => `${fixed(force, 0)} N`;
 export const inKw = (power: number): string => `${fixed(toKw(power), 1)} kW`;
 export const inKg = (mass: number): string => `${fixed(mass, 0)} kg`;

@@ -22,6 +22,28 @@ describe('the cause of a hill', () => {
     expect(outcome.why).toContain('260 N');
   });
 
+  it('is torque first and gains second where an ideal hold loses most of it too', () => {
+    // 283 N are needed and 260 N there: the ideal hold loses speed for the whole hill; soft gains lose more, and would without a limit too.
+    const soft = piOf({ kp: 0.12, ki: 0.012 });
+    const { outcome } = firstOutcome(planOf(oneHill(0.075), vehicleOf(), soft));
+    const ideal = outcome.predictedChange as number;
+    expect(Math.abs(ideal)).toBeGreaterThan(Math.abs(outcome.speedChange) / 2);
+    expect(outcome.cause).toBe('torque');
+    expect(outcome.why).toMatch(/An ideal hold would lose [0-9.]+ km\/h of the [0-9.]+ km\/h/);
+    const left = /the gains alone would still let the error grow to \u2212([0-9.]+) km\/h/.exec(outcome.why);
+    // Less than with the limit, and out of the band all the same.
+    expect(Number(left![1])).toBeGreaterThan(2);
+    expect(Number(left![1])).toBeLessThan(Math.abs(outcome.speedChange) * 3.6);
+  });
+
+  it('says where the brake of the rider kept the error from growing', () => {
+    const braked = planOf(oneHill(-0.1), vehicleOf(), STIFF, { rider: { brakesAbove: 3 / 3.6 } });
+    const { outcome } = firstOutcome(braked);
+    expect(outcome.cause).toBe('closed_throttle');
+    expect(outcome.why).toMatch(/rider's brake, on for \d+(\.\d)? s at 3\.0 km\/h above the set speed/);
+    expect(firstOutcome(planOf(oneHill(-0.1), vehicleOf(), STIFF)).outcome.why).not.toContain('brake');
+  });
+
   it('is power where the power limit binds below the peak force', () => {
     const vehicle = vehicleOf({ drive: { peakForce: 400, peakPower: 3500 } });
     expect(firstOutcome(planOf(oneHill(0.08), vehicle, STIFF)).outcome.cause).toBe('power');
@@ -262,6 +284,11 @@ describe('hills of any road', () => {
             expect(typeof figure === 'number' ? Number.isFinite(figure) : figure.none.length > 0).toBe(true);
           expect(o.why.endsWith('.')).toBe(true);
           expect(o.why).not.toMatch(/NaN|Infinity|undefined/);
+          // One window for figures and words.
+          if (o.why.includes('never met a limit')) expect(o.timeAtLimit).toBe(0);
+          const grown = / the gains let the error grow to (\u2212?)([0-9.]+) km/.exec(o.why);
+          if (grown !== null)
+            expectClose(o.speedChange * 3.6, (grown[1] === '' ? 1 : -1) * Number(grown[2]), 0.0501);
         }
       }
     }
