@@ -1,13 +1,11 @@
 import { surroundingsBetween } from '../loop/places.ts';
 import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
-import { bracketedRoot } from '../numeric/root.ts';
 import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { forceRange } from '../vehicle/drive-law.ts';
-import { SPEED_CEILING } from '../vehicle/equilibrium.ts';
+import { runawaySpeed, settledSpeed } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
-import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Demand, Stretch } from './findings.ts';
 import { nominalCourse, setSpeedAt } from './hold-course.ts';
@@ -60,9 +58,10 @@ export function demandOf(
     upper[i] = range.greatest;
     lower[i] = range.least;
     share[i] = demandShare(required[i], lower[i], upper[i]);
-    if (required[i] > upper[i]) sustained[i] = balanceFrom(vehicle, at, setSpeed[i], -1);
+    if (required[i] > upper[i])
+      sustained[i] = settledSpeed(vehicle, at, vehicle.drive.throttleMax, setSpeed[i]);
     if (required[i] < lower[i]) {
-      runaway[i] = balanceFrom(vehicle, at, setSpeed[i], 1);
+      runaway[i] = runawaySpeed(vehicle, at, setSpeed[i]);
       brakePower[i] = (lower[i] - required[i]) * setSpeed[i];
     }
   }
@@ -87,29 +86,6 @@ export function demandOf(
     holdableShare: shareOfLength(road, holdable),
     settling,
   };
-}
-
-/**
- * The next speed, down from `from` under full throttle (-1) or up from it under the least throttle (1), at which the
- * force is in balance: the nearest stable one, since the force is short above it or too much below it. Scanned in
- * steps of 1 m/s, refined by Brent's method.
- *
- * @returns [m/s]; 0 where full throttle holds no speed, 150 where nothing holds it back
- */
-function balanceFrom(vehicle: Vehicle, at: Surroundings, from: number, direction: 1 | -1): number {
-  const { drive } = vehicle;
-  const derate = derateFactor(drive, at.airDensity, at.airTemperature);
-  const surplus = (speed: number): number => {
-    const { least, greatest } = forceRange(drive, drive.gear, speed, derate);
-    return (direction > 0 ? least : greatest) - requiredForce(vehicle, speed, at);
-  };
-  let last = from;
-  for (let speed = from + direction; ; speed += direction) {
-    const next = Math.min(Math.max(speed, 1e-6), SPEED_CEILING);
-    if (direction * surplus(next) <= 0) return bracketedRoot(surplus, last, next, 1e-10).x;
-    if (next !== speed) return direction > 0 ? SPEED_CEILING : 0;
-    last = next;
-  }
 }
 
 /** Share of the range in use (Demand.share). */

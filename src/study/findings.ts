@@ -28,7 +28,7 @@ export interface Demand {
    * Above 1: more than there is. Below -1: even the least force is too much. Limited to [-9.99, 9.99].
    */
   readonly share: Float64Array;
-  /** Highest speed that full throttle can hold there for ever; the set speed where that is held [m/s]; 0 where nothing can. */
+  /** Speed to which full throttle sinks from the set speed and holds for ever; the set speed where that is held [m/s]; 0 where it stops. */
   readonly sustained: Float64Array;
   /** Where the least force is too much: the speed it runs away to [m/s] and the brake power that holds the set speed [W]; else set speed, 0. */
   readonly runaway: Float64Array;

@@ -8,6 +8,8 @@ import type { Vehicle } from './vehicle.ts';
 /** No speed above this is looked for [m/s]. */
 export const SPEED_CEILING = 150;
 const SCAN_STEP = 1;
+/** In the place of standstill, where no gear turns. */
+const SLOWEST = 1e-9;
 const TOLERANCE = 1e-10;
 
 /** A speed at which a locked throttle neither gains nor loses. */
@@ -79,17 +81,32 @@ export function sustainedSpeed(vehicle: Vehicle, at: Surroundings): number {
 
 /**
  * Speed at which a locked throttle settles when it starts from a given speed: the next stable balance in the direction
- * in which the force pushes.
+ * in which the force pushes, which is the next balance at all, since the force pushes towards it. Scanned as in
+ * `equilibriumSpeeds`, but from the given speed and no further than it takes.
  *
  * @param from [m/s], > 0
  * @returns [m/s]; 0 where the vehicle comes to a stop, 150 where nothing holds it below that
  */
 export function settledSpeed(vehicle: Vehicle, at: Surroundings, throttle: number, from: number): number {
-  const surplus = surplusOf(vehicle, at, throttle)(from);
-  if (surplus === 0) return from;
-  const stable = equilibriumSpeeds(vehicle, at, throttle).filter((balance) => balance.stable);
-  if (surplus > 0) return stable.find((balance) => balance.speed >= from)?.speed ?? SPEED_CEILING;
-  return stable.findLast((balance) => balance.speed <= from)?.speed ?? 0;
+  const surplus = surplusOf(vehicle, at, throttle);
+  const push = surplus(from);
+  if (push === 0) return from;
+  const up = push > 0;
+  const left = (speed: number): number => (up ? surplus(speed) : -surplus(speed));
+  const end = up ? SPEED_CEILING : SLOWEST;
+  let [a, b, fa, fb] = [from, from, left(from), left(from)];
+  while (up ? b < end : b > end) {
+    const c = nextScanSpeed(vehicle, at, b, up);
+    const fc = left(c);
+    // A dip between the steps would be a pair of balances, of which the nearer one stops the vehicle.
+    if (fc > 0 && fb <= fa && fb <= fc && b !== from) {
+      const turn = up ? turningPoint(left, a, c) : turningPoint(left, c, a);
+      if (left(turn) <= 0) return bracketedRoot(surplus, a, turn, TOLERANCE).x;
+    }
+    if (fc <= 0) return bracketedRoot(surplus, b, c, TOLERANCE).x;
+    [a, b, fa, fb] = [b, c, fb, fc];
+  }
+  return up ? SPEED_CEILING : 0;
 }
 
 /**
@@ -121,12 +138,26 @@ export function levelThrottle(
   return Math.min(Math.max(throttle, drive.throttleMin), drive.throttleMax);
 }
 
+/** The next speed behind a given one at which a scan looks: a whole step, a corner of the drive, no wind any more, or the end. */
+function nextScanSpeed(vehicle: Vehicle, at: Surroundings, speed: number, up: boolean): number {
+  const { speedEdges, gears, gear } = vehicle.drive;
+  const { ratio } = gears[gear]!;
+  const whole = up ? Math.floor(speed / SCAN_STEP) + 1 : Math.ceil(speed / SCAN_STEP) - 1;
+  let next = Math.min(Math.max(whole * SCAN_STEP, SLOWEST), SPEED_CEILING);
+  const nearer = (place: number): void => {
+    if (up ? place > speed && place < next : place < speed && place > next) next = place;
+  };
+  nearer(-at.headwind);
+  for (let i = 0; i < speedEdges.length; i++) nearer(speedEdges[i]! / ratio);
+  return next;
+}
+
 function scanSpeeds(vehicle: Vehicle, at: Surroundings): number[] {
   const { drive } = vehicle;
   const { ratio } = drive.gears[drive.gear]!;
   const corners = [...drive.speedEdges].map((edge) => edge / ratio);
   const grid = Array.from({ length: SPEED_CEILING / SCAN_STEP }, (_, i) => (i + 1) * SCAN_STEP);
-  const inside = [1e-9, -at.headwind, ...corners, ...grid].filter((v) => v > 0 && v <= SPEED_CEILING);
+  const inside = [SLOWEST, -at.headwind, ...corners, ...grid].filter((v) => v > 0 && v <= SPEED_CEILING);
   return [...new Set(inside)].sort((a, b) => a - b);
 }
 

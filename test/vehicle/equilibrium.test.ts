@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import { electricDrive } from '../../src/vehicle/electric-drive.ts';
 import {
   equilibriumSpeeds,
   levelThrottle,
@@ -86,6 +87,44 @@ describe('the textbook car with its throttle locked', () => {
     // Published for the fold: 0.384 degrees, found here by an independent program.
     expectClose(low, 0.384, 1e-3);
     expect(pair[1]! - pair[0]!).toBeLessThan(0.2);
+  });
+});
+
+describe('settledSpeed', () => {
+  test('is the next stable one of all equilibria in the direction of the push, on seeded random drives and grades', () => {
+    let state = 20_26;
+    const random = (): number => {
+      state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+      return state / 4294967296;
+    };
+    let [rising, falling, stopped] = [0, 0, 0];
+    for (let k = 0; k < 300; k++) {
+      const vehicle = referenceMotorcycle({
+        drive: electricDrive({
+          peakForce: 200 + 600 * random(),
+          peakPower: 2000 + 8000 * random(),
+          closedThrottleForce: 60 * random(),
+          regenerationForce: 300 * random(),
+          regenerationPower: 500 + 3000 * random(),
+          fadeSpeed: 6 * random(),
+          throttleMin: -1,
+          lag: 0,
+          efficiency: null,
+        }),
+      });
+      const at = { ...still, grade: 0.4 * (random() - 0.5), headwind: 30 * (random() - 0.5) };
+      const throttle = 2 * random() - 1;
+      const from = 0.5 + 40 * random();
+      const settled = settledSpeed(vehicle, at, throttle, from);
+      const stable = equilibriumSpeeds(vehicle, at, throttle).filter((balance) => balance.stable);
+      const above = stable.find(({ speed }) => speed >= from)?.speed ?? 150;
+      const below = stable.findLast(({ speed }) => speed <= from)?.speed ?? 0;
+      expectClose(settled, settled >= from ? above : below, 1e-6);
+      if (settled === 0) stopped += 1;
+      else if (settled > from) rising += 1;
+      else falling += 1;
+    }
+    for (const count of [rising, falling, stopped]) expect(count).toBeGreaterThan(20);
   });
 });
 
