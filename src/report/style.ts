@@ -56,7 +56,7 @@ table{border-collapse:collapse;font-size:.86rem;font-variant-numeric:tabular-num
 th,td{text-align:left;vertical-align:top;padding:.32rem .9rem .32rem 0;border-bottom:1px solid var(--grid)}
 thead th{border-bottom:2px solid var(--muted);vertical-align:bottom;line-height:1.25}
 tbody th{font-weight:600}
-.dense{font-size:.8rem}.dense th,.dense td{padding-right:.6rem}.dense td.num .small:not(.wrap){white-space:normal}.name{overflow-wrap:anywhere}
+.dense{font-size:.8rem}.dense th,.dense td{padding-right:.6rem}.dense td.num .small:not(.wrap){white-space:normal}.name{display:inline-block;max-width:6.5rem;overflow-wrap:break-word}
 .num{text-align:right}
 td.num,tbody th{white-space:nowrap}
 td.num .small:not(.wrap){white-space:nowrap}

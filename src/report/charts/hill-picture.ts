@@ -40,9 +40,9 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const [start, end] = timeDomain(hill, shown, foot);
   const x = scaleOf([start, end], upper.left, upper.left + width);
   const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
-  const first = shown.find(({ candidate }) => !candidate.locked) ?? shown[0];
+  const guide = guideOf(shown);
   const { throttleMin, throttleMax } = view.result.vehicle.drive;
-  const holding = first === undefined ? [] : holdingAlong(view, first.outcome.picture);
+  const holding = guide === undefined ? [] : holdingAlong(view, guide.outcome.picture);
   const throttles = scaleOf(
     throttleDomain(throttleMin, throttleMax, holding),
     lower.top + lower.height,
@@ -59,12 +59,12 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       scale(of(values[i]!)),
     ]);
   const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}</defs>${
-    first !== undefined && onTheHill(first.outcome.picture, hill, x, [upper, lower], foot, canvas)
+    guide !== undefined && onTheHill(guide.outcome.picture, hill, x, [upper, lower], foot, canvas)
   }${leftAxis(canvas, upper, speeds, `speed / ${view.speed.axis}`, 4)}${clipped(
     `${id}-u`,
     html`${
-      first !== undefined &&
-      stroked(linePath(over(speeds, first.outcome.picture.setSpeed, view.speed.of, first.outcome.picture)), {
+      guide !== undefined &&
+      stroked(linePath(over(speeds, guide.outcome.picture.setSpeed, view.speed.of, guide.outcome.picture)), {
         stroke: paint.ink,
         width: 1,
         dash: '1 2',
@@ -75,9 +75,9 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   )}${leftAxis(canvas, lower, throttles, 'command, and throttle that would hold / %', 3)}${clipped(
     `${id}-l`,
     html`${
-      first !== undefined &&
+      guide !== undefined &&
       filled(
-        areaPath(over(throttles, holding, toPct, first.outcome.picture), throttles(0)),
+        areaPath(over(throttles, holding, toPct, guide.outcome.picture), throttles(0)),
         paint.demand[1]!,
         0.75,
       )
@@ -97,6 +97,15 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       .join(' '),
   };
   return drawing(canvas, lower.top + lower.height + BOTTOM_AXIS_HEIGHT, words, body);
+}
+
+/** The run that gives set speed, holding throttle and hill their times: of the designs that reached the end the one that is shown longest. */
+function guideOf(shown: readonly Shown[]): Shown | undefined {
+  const rank = ({ candidate, outcome: { picture } }: Shown): readonly [number, number] => [
+    (candidate.locked ? 2 : 0) + (candidate.result.status === 'completed' ? 0 : 1),
+    (picture.time[0] ?? 0) - (picture.time[picture.size - 1] ?? 0),
+  ];
+  return shown.toSorted((a, b) => rank(a)[0] - rank(b)[0] || rank(a)[1] - rank(b)[1])[0];
 }
 
 const shownOn = (view: View, hill: Hill): readonly Shown[] =>
@@ -175,7 +184,7 @@ function onTheHill(
   return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}`;
 }
 
-/** Throttle that would hold the set speed where the first design is, sample by sample of its picture. */
+/** Throttle that would hold the set speed where the guide is, sample by sample of its picture. */
 function holdingAlong(view: View, picture: FullSeries): readonly number[] {
   const { road } = view.result;
   const values: number[] = [];

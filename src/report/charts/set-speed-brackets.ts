@@ -1,6 +1,6 @@
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { setSpeedMarks } from '../model/set-speed-marks.ts';
+import { setSpeedMarks } from '../model/settling.ts';
 import type { View } from '../model/view.ts';
 import type { Scale } from './axes.ts';
 import { type Box, type Canvas, rectangle } from './canvas.ts';

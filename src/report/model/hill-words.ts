@@ -1,5 +1,5 @@
-import type { Hill, HillKind } from '../../study/findings.ts';
+import type { Hill } from '../../study/findings.ts';
 
 /** What to call it: where the road does not go up or down it is no hill. */
 export const hillNoun = (hill: Pick<Hill, 'kind'>): 'hill' | 'stretch' =>
-  (hill.kind as HillKind | 'level') === 'level' ? 'stretch' : 'hill';
+  hill.kind === 'level' ? 'stretch' : 'hill';

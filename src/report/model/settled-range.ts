@@ -1,4 +1,5 @@
 import type { Stretch } from '../../study/findings.ts';
+import { settlingOf } from './settling.ts';
 import type { CandidateView, View } from './view.ts';
 
 /** Furthest below (0 or less) and above (0 or more) the set speed [m/s]. */
@@ -9,7 +10,7 @@ export interface ErrorRange {
 
 /** Extreme errors of a run; where a change of set speed is being followed they say nothing of the hold and are left out. */
 export const settledRange = (view: View, candidate: CandidateView): ErrorRange | null =>
-  rangeOutside(candidate, view.result.demand.settling);
+  rangeOutside(candidate, settlingOf(view, candidate));
 
 /** Extreme errors of a run with all its changes of set speed. */
 export const wholeRange = (candidate: CandidateView): ErrorRange | null => rangeOutside(candidate, []);

@@ -40,7 +40,7 @@ const BAR = 96;
 
 const endedEarly = ({ result }: CandidateView): boolean => result.status !== 'completed';
 /** Behind a figure of a run that ended early. */
-const UP_TO_THERE = html` <span class="small" title="up to where the run ended">†</span>`;
+const UP_TO_THERE = html`\u00a0<span class="small" title="up to where the run ended">†</span>`;
 
 /** 3: all candidates on the same road, the locked throttle first. */
 export function candidatesSection(view: View): Section {

@@ -22,7 +22,7 @@ import type { Section } from './section.ts';
 import { table } from './table.ts';
 
 const DEFINED =
-  'In the tables, largest error: the speed furthest from the set speed on the hill and until it is recovered from, less the set speed; negative is too slow. By hand: the same by the hand formula of the last section, without any controller.';
+  'In the tables, largest error: the speed furthest from the set speed, less the set speed, on the hill and for 15 s behind it, or to the end of an overshoot begun there; negative is too slow. Changes of set speed do not count. By hand: the same by the hand formula of the last section, without any controller.';
 
 /** Cards are for the hills that matter most; the table has all. */
 const MOST_CARDS = 12;
@@ -196,7 +196,7 @@ function allHills(view: View): Html {
       { head: 'there is / N', number: true },
       { head: `steady speed / ${view.speed.axis}`, number: true },
       ...view.candidates.map((candidate) => ({
-        head: html`<span class="name">${candidate.name}</span> / ${view.speed.axis}`,
+        head: html`<span class="name">${candidate.name}</span><br>/ ${view.speed.axis}`,
         number: true,
       })),
     ],

@@ -1,0 +1,34 @@
+import type { Stretch } from '../../study/findings.ts';
+import { courseOfRun } from '../../study/hold-course.ts';
+import { fixed, withUnit } from '../quantity.ts';
+import type { CandidateView, View } from './view.ts';
+
+/** Where a candidate follows changes of its set speed, in their order; a start at another speed is the first. */
+export const settlingOf = (
+  { result: { hold, vehicle } }: View,
+  candidate: CandidateView,
+): readonly Stretch[] =>
+  courseOfRun({ plan: { hold, vehicle, controller: candidate.controller }, result: candidate.result })
+    .settling;
+
+/** A change of set speed with its words: `set speed 60 to 50 km/h`. */
+export interface SetSpeedMark extends Stretch {
+  readonly text: string;
+}
+
+/** The changes of set speed along the road, each from where the first design follows it to where the last one does. */
+export function setSpeedMarks(view: View): readonly SetSpeedMark[] {
+  const { demand, hold } = view.result;
+  const { of, name } = view.speed;
+  const designs = view.candidates.filter(({ locked }) => !locked).map((one) => settlingOf(view, one));
+  const start = demand.settling.length > hold.changes.length ? [hold.startSpeed] : [];
+  const steps = [...start, hold.setSpeed, ...hold.changes.map(({ setSpeed }) => setSpeed)];
+  return demand.settling.flatMap((nominal, k) => {
+    const made = designs.flatMap((settling) => settling[k] ?? []).filter(({ from }) => from < view.length);
+    const all = made.length > 0 ? made : [nominal];
+    const from = Math.min(...all.map((one) => one.from));
+    const to = Math.min(Math.max(...all.map((one) => one.to)), view.length);
+    const text = `set speed ${fixed(of(steps[k]!))} to ${withUnit(fixed(of(steps[k + 1]!)), name)}`;
+    return from < to ? [{ from, to, text }] : [];
+  });
+}
