@@ -11,7 +11,6 @@ export type { HoldPlan, LoopPlan, RiderPlan, RunStatus } from './loop/plan.ts';
 export { replay } from './loop/replay.ts';
 export type { BinRecord, Checkpoint, FullSeries, Ledger, LoopResult } from './loop/result.ts';
 export { runLoop } from './loop/run-loop.ts';
-export { warmUp } from './loop/warm-up.ts';
 export { formatProblem, InputError, type Problem } from './problems/input-error.ts';
 export { formatPlace, type Place } from './problems/place.ts';
 export type { Warning } from './problems/warning.ts';

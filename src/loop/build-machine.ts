@@ -28,7 +28,6 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_SAMPLE] = sample;
   p[at.P_STEPS] = Math.ceil(sample / longestStep(plan) - 1e-9);
   p[at.P_STEP] = sample / p[at.P_STEPS];
-  p[at.P_ROAD_CELLS] = table.cells;
   p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
   p[at.P_MASS] = vehicle.mass;
   p[at.P_EFFECTIVE_MASS] = vehicle.mass + vehicle.rotatingMass + gear.inertia;
@@ -39,10 +38,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_STALL_SPEED] = drive.stallSpeed;
   p[at.P_LOW] = drive.throttleMin;
   p[at.P_HIGH] = drive.throttleMax;
-  p[at.P_DERATED] = drive.derate === 'none' ? 0 : 1;
   p[at.P_CROSSWIND] = table.crosswind ? 1 : 0;
-  p[at.P_SPEED_CELLS] = drive.speedEdges.length + 1;
-  p[at.P_THROTTLE_CELLS] = drive.throttleEdges.length + 1;
   p.set(plan.bands, at.P_BANDS);
   p[at.P_BAND_COUNT] = plan.bands.length;
   const { scaleError } = vehicle.sensor;
@@ -60,6 +56,7 @@ export function buildMachine(plan: LoopPlan): Machine {
     controller,
     tangent: dragTangent(vehicle.roadLoad),
     lags: decays(p),
+    here: new Float64Array(at.H_SIZE),
     log: new Float64Array(at.LOG_ROWS * at.L_STRIDE),
     chunk: new Float64Array(at.C_SIZE),
   };

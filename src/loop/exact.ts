@@ -1,5 +1,6 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
+import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
@@ -24,7 +25,7 @@ import { integralTo } from './road-table.ts';
  * side of the kink. Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, lags, controller, tangent, log, chunk } = machine;
+  const { s, p, rows, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;
   // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle.
   // Constants stand inside the function: as variables of the module they would be read and checked at every use.
   const KNOT = 1e-7;
@@ -37,12 +38,11 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const timed = p[at.P_TIMED] === 1;
-  const inverse = 1 / p[at.P_EFFECTIVE_MASS];
-  const share = p[at.P_MASS] * inverse;
-  const cda = p[at.P_CDA] * inverse;
-  const roll0 = share * p[at.P_C0];
-  const roll1 = share * p[at.P_C1];
-  const roll2 = share * p[at.P_C2];
+  const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
+  const cda = p[at.P_CDA];
+  const c0 = p[at.P_C0];
+  const c1 = p[at.P_C1];
+  const c2 = p[at.P_C2];
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
@@ -51,11 +51,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
   const stallSpeed = p[at.P_STALL_SPEED];
-  const derated = p[at.P_DERATED] === 1;
   const crosswind = p[at.P_CROSSWIND] === 1;
-  const throttleCells = p[at.P_THROTTLE_CELLS];
-  const lastSpeedCell = p[at.P_SPEED_CELLS] - 1;
-  const lastRow = (p[at.P_ROAD_CELLS] - 1) * at.R_STRIDE;
+  const lastThrottleCell = throttleEdges.length;
+  const lastRow = rows.length - at.R_STRIDE;
   const toTrue = p[at.P_TO_TRUE];
   const brakesAbove = p[at.P_BRAKES_ABOVE];
 
@@ -71,40 +69,15 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let past = delayed ? latestRow(s, p) : 0;
   // The road cell and the drive cell at hand, loaded where they change.
   let loadedRow = -1;
-  let loadedDrive = -1;
-  let begin = 0;
-  let length = 0;
-  let sin0 = 0;
-  let sin1 = 0;
-  let wind0 = 0;
-  let wind1 = 0;
-  let floor = 0;
-  let ceiling = 0;
-  let low = 0;
-  let high = 0;
-  let a0 = 0;
-  let a1 = 0;
-  let c0 = 0;
-  let c1 = 0;
-  let c2 = 0;
-  let c3 = 0;
+  let loadedCell = -1;
 
   const v0 = v;
+  chunk.fill(0, 0, at.C_DRIVE_FORCE);
   const height0 = integralTo(rows, row, at.R_SIN, q);
-  let travelled = 0;
-  let push = 0;
-  let hold = 0;
-  let aero = 0;
-  let rolling = 0;
-  let climb = 0;
-  let braked = 0;
-  let ratedTime = 0;
-  let brakeTime = 0;
   let brake = 0;
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
-  chunk.fill(0, 0, at.C_DRIVE_FORCE);
   while (tick < ticks && q < until && event === at.RUNNING) {
     s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
@@ -113,7 +86,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     if (direct) y = u;
     if (td === 0) x = y;
     while (throttleCell > 0 && x < throttleEdges[throttleCell - 1]) throttleCell--;
-    while (throttleCell < throttleCells - 1 && x > throttleEdges[throttleCell]) throttleCell++;
+    while (throttleCell < lastThrottleCell && x > throttleEdges[throttleCell]) throttleCell++;
     log[tick * at.L_STRIDE + at.L_SPEED] = v;
     log[tick * at.L_STRIDE + at.L_ACTUATOR] = y;
     log[tick * at.L_STRIDE + at.L_COMMAND] = s[BUS_COMMAND];
@@ -145,27 +118,25 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
       if (row !== loadedRow) {
         loadedRow = row;
-        begin = rows[row + at.R_STATION];
-        length = rows[row + at.R_LENGTH];
-        sin0 = share * rows[row + at.R_SIN];
-        sin1 = share * rows[row + at.R_SIN + 1];
-        wind0 = rows[row + at.R_HEADWIND];
-        wind1 = rows[row + at.R_HEADWIND + 1];
+        enterRoadCell(machine, row);
       }
-      const drive = speedCell * throttleCells + throttleCell;
-      if (drive !== loadedDrive) {
-        loadedDrive = drive;
-        floor = speedCell > 0 ? speedEdges[speedCell - 1] : 0;
-        ceiling = speedCell < lastSpeedCell ? speedEdges[speedCell] : Number.POSITIVE_INFINITY;
-        low = throttleCell > 0 ? throttleEdges[throttleCell - 1] : Number.NEGATIVE_INFINITY;
-        high = throttleCell < throttleCells - 1 ? throttleEdges[throttleCell] : Number.POSITIVE_INFINITY;
-        a0 = inverse * cells[6 * drive];
-        a1 = inverse * cells[6 * drive + 1];
-        c0 = inverse * cells[6 * drive + 2];
-        c1 = inverse * cells[6 * drive + 3];
-        c2 = inverse * cells[6 * drive + 4];
-        c3 = inverse * cells[6 * drive + 5];
+      const cell = speedCell * (lastThrottleCell + 1) + throttleCell;
+      if (cell !== loadedCell) {
+        loadedCell = cell;
+        enterDriveCell(machine, speedCell, throttleCell);
       }
+      const sin0 = here[at.H_SIN];
+      const sin1 = here[at.H_SIN + 1];
+      const wind0 = here[at.H_HEADWIND];
+      const wind1 = here[at.H_HEADWIND + 1];
+      const floor = here[at.H_FLOOR];
+      const ceiling = here[at.H_CEILING];
+      const low = here[at.H_LOW];
+      const high = here[at.H_HIGH];
+      const a0 = here[at.H_CLOSED];
+      const a1 = here[at.H_CLOSED + 1];
+      const begin = here[at.H_STATION];
+      const length = here[at.H_LENGTH];
       const from = q - begin;
       const room = length - from;
 
@@ -184,42 +155,36 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const xh =
           l0 + l1 * half + (x - l0) * lags[decay + at.G_DRIVE_HALF] + gap * lags[decay + at.G_PULL_HALF];
         const xe = l0 + l1 * h + (x - l0) * lags[decay + at.G_DRIVE] + gap * lags[decay + at.G_PULL];
-        if (throttleCells > 1 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
+        if (lastThrottleCell > 0 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
           h *= Math.max(0, ((xe > high ? high : low) - x) / (xe - x));
           continue;
         }
 
         const middle = from + (timed ? half : half * v);
-        const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
-        const normal = rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle;
-        const r0 = normal * roll0;
-        const r1 = normal * roll1;
-        const r2 = normal * roll2;
+        const air = here[at.H_AIR] + here[at.H_AIR + 1] * middle;
+        const normal = here[at.H_COS] + here[at.H_COS + 1] * middle;
+        const r0 = normal * c0;
+        const r1 = normal * c1;
+        const r2 = normal * c2;
         let near = 0;
         let slope = air * cda;
         if (crosswind) {
           const side = rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle;
-          tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air * inverse);
+          tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air);
           near = tangent.out[0];
           slope = tangent.out[1];
         } else if (v + wind0 + wind1 * from < 0) slope = -slope;
-        let b0 = c0;
-        let b1 = c1;
-        let b2 = c2;
-        let b3 = c3;
-        if (derated) {
-          const d = rows[row + at.R_DERATE] + rows[row + at.R_DERATE + 1] * middle;
-          b0 = d * (b0 + a0) - a0;
-          b1 = d * (b1 + a1) - a1;
-          b2 *= d;
-          b3 *= d;
-        }
+        const d = here[at.H_DERATE] + here[at.H_DERATE + 1] * middle;
+        const b0 = d * here[at.H_FULL] - a0;
+        const b1 = d * here[at.H_FULL + 1] - a1;
+        const b2 = d * here[at.H_FULL + 2];
+        const b3 = d * here[at.H_FULL + 3];
 
         const w1 = v + wind0 + wind1 * from;
         const drive1 = a0 + x * b0 + v * (a1 + x * b1 + v * x * b2) + (b3 === 0 ? 0 : (x * b3) / v);
         const aero1 = w1 * (near + slope * w1);
-        const roll1st = r0 + v * (r1 + v * r2);
-        let k1 = drive1 - aero1 - (roll1st + sin0 + sin1 * from);
+        const rolling1 = r0 + v * (r1 + v * r2);
+        let k1 = drive1 - aero1 - (rolling1 + sin0 + sin1 * from);
         if (pieces === 0 && v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT) {
           brake = Math.max(0, Math.min(k1 + (v - brakeSpeed) / at.BRAKE_TIME, at.BRAKE_LIMIT));
         }
@@ -272,13 +237,14 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         }
 
         const work = sixth * (v * drive1 + 2 * (v2 * drive2 + v3 * drive3) + v4 * drive4);
-        if (work >= 0) push += work;
-        else hold += work;
-        aero += sixth * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
-        rolling += sixth * (v * roll1st + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
-        braked += brake * ds;
-        travelled += ds;
-        if (timed) climb += ds * sin0 + sixth * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
+        if (work >= 0) chunk[at.C_PUSH] += work;
+        else chunk[at.C_HOLD] += work;
+        chunk[at.C_AERO] += sixth * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
+        chunk[at.C_ROLLING] += sixth * (v * rolling1 + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
+        if (brake > 0) chunk[at.C_BRAKE] += brake * ds;
+        chunk[at.C_DISTANCE] += ds;
+        if (timed)
+          chunk[at.C_CLIMB] += ds * sin0 + sixth * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
         if (pieces === 0) {
           chunk[at.C_DRIVE_FORCE] = drive1;
           chunk[at.C_ACCELERATION] = k1;
@@ -296,7 +262,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         } else z = ve;
         y = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
         if (rated && h === most && most < left) y = l1 > 0 ? u - rateGap : u + rateGap;
-        if (throttleCells > 1) {
+        if (lastThrottleCell > 0) {
           if (xe > x && xe > high - EDGE) throttleCell++;
           else if (xe <= x && xe < low + EDGE) throttleCell--;
         }
@@ -326,12 +292,15 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       }
     }
 
-    if (!(v < 1e9 && v > -1e9)) return at.NON_FINITE;
+    if (!(v < 1e9 && v > -1e9)) {
+      chunk.fill(0);
+      return at.NON_FINITE;
+    }
     if (event === at.STOPPED) v = 0;
     else if (v < stallSpeed) event = at.STALLED;
     elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
-    if (limited) ratedTime += elapsed;
-    if (brake > 0) brakeTime += elapsed;
+    if (limited) chunk[at.C_RATED_TIME] += elapsed;
+    if (brake > 0) chunk[at.C_BRAKE_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
 
@@ -351,16 +320,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   s[at.THROTTLE_CELL] = throttleCell;
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
-  chunk[at.C_DISTANCE] = travelled;
-  chunk[at.C_PUSH] = push;
-  chunk[at.C_HOLD] = hold;
-  chunk[at.C_AERO] = aero;
-  chunk[at.C_ROLLING] = rolling;
-  chunk[at.C_CLIMB] = timed ? climb : share * (integralTo(rows, row, at.R_SIN, q) - height0);
-  chunk[at.C_BRAKE] = braked;
+  if (!timed) chunk[at.C_CLIMB] = share * (integralTo(rows, row, at.R_SIN, q) - height0);
   chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
-  chunk[at.C_RATED_TIME] = ratedTime;
-  chunk[at.C_BRAKE_TIME] = brakeTime;
   chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

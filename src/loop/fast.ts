@@ -1,10 +1,11 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
+import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { decay, rampedStep } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { integralTo } from './road-table.ts';
+import { meanBetween } from './road-table.ts';
 
 /**
  * The `fast` kernel: one evaluation of the forces a step of length h, second order. Per unit of effective mass:
@@ -19,18 +20,17 @@ import { integralTo } from './road-table.ts';
  * Every work is its force over the same displacement, so that the account of energy closes to rounding.
  */
 export function advanceFast(machine: Machine, ticks: number, until: number): number {
-  const { s, p, rows, cells, speedEdges, throttleEdges, lags, controller, tangent, log, chunk } = machine;
+  const { s, p, rows, speedEdges, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const half = 0.5 * step;
   const timed = p[at.P_TIMED] === 1;
-  const inverse = 1 / p[at.P_EFFECTIVE_MASS];
-  const share = p[at.P_MASS] * inverse;
-  const cda = p[at.P_CDA] * inverse;
-  const roll0 = share * p[at.P_C0];
-  const roll1 = share * p[at.P_C1];
-  const roll2 = share * p[at.P_C2];
+  const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
+  const cda = p[at.P_CDA];
+  const c0 = p[at.P_C0];
+  const c1 = p[at.P_C1];
+  const c2 = p[at.P_C2];
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
@@ -44,11 +44,10 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
   const stallSpeed = p[at.P_STALL_SPEED];
-  const derated = p[at.P_DERATED] === 1;
   const crosswind = p[at.P_CROSSWIND] === 1;
-  const throttleCells = p[at.P_THROTTLE_CELLS];
-  const lastSpeedCell = p[at.P_SPEED_CELLS] - 1;
-  const lastRow = (p[at.P_ROAD_CELLS] - 1) * at.R_STRIDE;
+  const lastThrottleCell = throttleEdges.length;
+  const lastSpeedCell = speedEdges.length;
+  const lastRow = rows.length - at.R_STRIDE;
   const end = rows[lastRow + at.R_STATION] + rows[lastRow + at.R_LENGTH];
   const toTrue = p[at.P_TO_TRUE];
   const brakesAbove = p[at.P_BRAKES_ABOVE];
@@ -64,21 +63,15 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let throttleCell = s[at.THROTTLE_CELL] | 0;
   let past = delayed ? latestRow(s, p) : 0;
 
+  let loadedRow = -1;
+  let loadedDrive = -1;
+
   const v0 = v;
-  let travelled = 0;
-  let push = 0;
-  let hold = 0;
-  let aero = 0;
-  let rolling = 0;
-  let climb = 0;
-  let braked = 0;
-  let ratedTime = 0;
-  let brakeTime = 0;
+  chunk.fill(0, 0, at.C_DRIVE_FORCE);
   let brake = 0;
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
-  chunk.fill(0, 0, at.C_DRIVE_FORCE);
   while (tick < ticks && q < until && event === at.RUNNING) {
     s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
@@ -113,41 +106,43 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       while (speedCell > 0 && vm < speedEdges[speedCell - 1]) speedCell--;
       while (speedCell < lastSpeedCell && vm > speedEdges[speedCell]) speedCell++;
       while (throttleCell > 0 && xm < throttleEdges[throttleCell - 1]) throttleCell--;
-      while (throttleCell < throttleCells - 1 && xm > throttleEdges[throttleCell]) throttleCell++;
+      while (throttleCell < lastThrottleCell && xm > throttleEdges[throttleCell]) throttleCell++;
 
-      const from = q - rows[row + at.R_STATION];
+      if (row !== loadedRow) {
+        loadedRow = row;
+        enterRoadCell(machine, row);
+      }
+      const drive = speedCell * (lastThrottleCell + 1) + throttleCell;
+      if (drive !== loadedDrive) {
+        loadedDrive = drive;
+        enterDriveCell(machine, speedCell, throttleCell);
+      }
+      const from = q - here[at.H_STATION];
       const ahead = timed ? step : step * vm;
       const middle = from + 0.5 * ahead;
-      let sine = rows[row + at.R_SIN] + rows[row + at.R_SIN + 1] * middle;
-      let wind = rows[row + at.R_HEADWIND] + rows[row + at.R_HEADWIND + 1] * middle;
-      if (from + ahead >= rows[row + at.R_LENGTH] && row < lastRow && ahead > 1e-9) {
+      let slope = here[at.H_SIN] + here[at.H_SIN + 1] * middle;
+      let wind = here[at.H_HEADWIND] + here[at.H_HEADWIND + 1] * middle;
+      if (from + ahead >= here[at.H_LENGTH] && row < lastRow && ahead > 1e-9) {
         let there = row;
         while (there < lastRow && q + ahead >= rows[there + at.R_STRIDE + at.R_STATION]) there += at.R_STRIDE;
-        sine = (integralTo(rows, there, at.R_SIN, q + ahead) - integralTo(rows, row, at.R_SIN, q)) / ahead;
-        wind =
-          (integralTo(rows, there, at.R_HEADWIND, q + ahead) - integralTo(rows, row, at.R_HEADWIND, q)) /
-          ahead;
+        slope = share * meanBetween(rows, at.R_SIN, row, q, there, q + ahead);
+        wind = meanBetween(rows, at.R_HEADWIND, row, q, there, q + ahead);
       }
-      const air = rows[row + at.R_AIR] + rows[row + at.R_AIR + 1] * middle;
-      const normal = rows[row + at.R_COS] + rows[row + at.R_COS + 1] * middle;
+      const air = here[at.H_AIR] + here[at.H_AIR + 1] * middle;
+      const normal = here[at.H_COS] + here[at.H_COS + 1] * middle;
       const w = vm + wind;
       let drag = air * cda * w * (w < 0 ? -w : w);
       if (crosswind) {
-        const side = rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle;
-        tangent.at(w, side, air * inverse);
+        tangent.at(w, rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle, air);
         drag = w * (tangent.out[0] + tangent.out[1] * w);
       }
-      const cell = 6 * (speedCell * throttleCells + throttleCell);
-      const b3 = cells[cell + 5];
-      const closed = cells[cell] + cells[cell + 1] * vm;
-      let gain = cells[cell + 2] + vm * (cells[cell + 3] + vm * cells[cell + 4]) + (b3 === 0 ? 0 : b3 / vm);
-      if (derated) {
-        const d = rows[row + at.R_DERATE] + rows[row + at.R_DERATE + 1] * middle;
-        gain = d * (gain + closed) - closed;
-      }
-      const force = inverse * (closed + xm * gain);
-      const resist = normal * (roll0 + vm * (roll1 + vm * roll2));
-      const slope = share * sine;
+      const d = here[at.H_DERATE] + here[at.H_DERATE + 1] * middle;
+      const f3 = here[at.H_FULL + 3];
+      const closed = here[at.H_CLOSED] + here[at.H_CLOSED + 1] * vm;
+      const full =
+        here[at.H_FULL] + vm * (here[at.H_FULL + 1] + vm * here[at.H_FULL + 2]) + (f3 === 0 ? 0 : f3 / vm);
+      const force = closed + xm * (d * full - closed);
+      const resist = normal * (c0 + vm * (c1 + vm * c2));
       let a = force - drag - resist - slope;
       if (part === 0) {
         if (v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT)
@@ -179,13 +174,13 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       }
 
       const work = force * ds;
-      if (work >= 0) push += work;
-      else hold += work;
-      aero += drag * ds;
-      rolling += resist * ds;
-      climb += slope * ds;
-      braked += brake * ds;
-      travelled += ds;
+      if (work >= 0) chunk[at.C_PUSH] += work;
+      else chunk[at.C_HOLD] += work;
+      chunk[at.C_AERO] += drag * ds;
+      chunk[at.C_ROLLING] += resist * ds;
+      chunk[at.C_CLIMB] += slope * ds;
+      if (brake > 0) chunk[at.C_BRAKE] += brake * ds;
+      chunk[at.C_DISTANCE] += ds;
       elapsed += h;
       if (filter > 0) {
         const kept = h === step ? lags[at.G_FILTER] : decay(filter, h);
@@ -199,13 +194,16 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION]) row += at.R_STRIDE;
     }
 
-    if (!(v < 1e9)) return at.NON_FINITE;
+    if (!(v < 1e9)) {
+      chunk.fill(0);
+      return at.NON_FINITE;
+    }
     if (event === at.RUNNING) {
       elapsed = sample;
       if (v < stallSpeed) event = at.STALLED;
     }
-    if (limited) ratedTime += elapsed;
-    if (brake > 0) brakeTime += elapsed;
+    if (limited) chunk[at.C_RATED_TIME] += elapsed;
+    if (brake > 0) chunk[at.C_BRAKE_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
 
@@ -225,16 +223,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   s[at.THROTTLE_CELL] = throttleCell;
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
-  chunk[at.C_DISTANCE] = travelled;
-  chunk[at.C_PUSH] = push;
-  chunk[at.C_HOLD] = hold;
-  chunk[at.C_AERO] = aero;
-  chunk[at.C_ROLLING] = rolling;
-  chunk[at.C_CLIMB] = climb;
-  chunk[at.C_BRAKE] = braked;
   chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
-  chunk[at.C_RATED_TIME] = ratedTime;
-  chunk[at.C_BRAKE_TIME] = brakeTime;
   chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

@@ -74,48 +74,43 @@ export const P_SAMPLE = 0;
 /** Steps a sample and length of a step. */
 export const P_STEPS = 1;
 export const P_STEP = 2;
-export const P_ROAD_CELLS = 3;
 /** 1: the station is time. */
-export const P_TIMED = 4;
-export const P_MASS = 5;
-export const P_EFFECTIVE_MASS = 6;
-export const P_CDA = 7;
-export const P_C0 = 8;
-export const P_C1 = 9;
-export const P_C2 = 10;
-export const P_ACTUATOR_LAG = 11;
-export const P_DRIVE_LAG = 12;
+export const P_TIMED = 3;
+export const P_MASS = 4;
+export const P_EFFECTIVE_MASS = 5;
+export const P_CDA = 6;
+export const P_C0 = 7;
+export const P_C1 = 8;
+export const P_C2 = 9;
+export const P_ACTUATOR_LAG = 10;
+export const P_DRIVE_LAG = 11;
 /** Greatest rate of the actuator [1/s], and the gap |u - y| above which it rules; both Infinity without a limit. */
-export const P_RATE = 13;
-export const P_RATE_GAP = 14;
+export const P_RATE = 12;
+export const P_RATE_GAP = 13;
 /** Weights of the two exponentials of the lags: ta / (ta - td), and 1 / td where the two are equal. */
-export const P_LAG_WEIGHT = 15;
-export const P_LAG_EQUAL = 16;
+export const P_LAG_WEIGHT = 14;
+export const P_LAG_EQUAL = 15;
 /** Mean over a whole step of what lags.ts calls the decay of the drive, and the pull. */
-export const P_DRIVE_MEAN = 17;
-export const P_PULL_MEAN = 18;
-export const P_FILTER = 19;
+export const P_DRIVE_MEAN = 16;
+export const P_PULL_MEAN = 17;
+export const P_FILTER = 18;
 /** Measured over true speed. */
-export const P_SCALE = 20;
+export const P_SCALE = 19;
 /** Transport and computing delay in samples, and rows of the history. */
-export const P_DELAY = 21;
-export const P_HISTORY = 22;
-export const P_STALL_SPEED = 23;
-export const P_LOW = 24;
-export const P_HIGH = 25;
-/** 1: the drive's force depends on altitude. */
-export const P_DERATED = 26;
+export const P_DELAY = 20;
+export const P_HISTORY = 21;
+export const P_STALL_SPEED = 22;
+export const P_LOW = 23;
+export const P_HIGH = 24;
 /** 1: there is crosswind somewhere. */
-export const P_CROSSWIND = 27;
-export const P_SPEED_CELLS = 28;
-export const P_THROTTLE_CELLS = 29;
+export const P_CROSSWIND = 25;
 /** Half-widths of the bands: four places. */
-export const P_BANDS = 30;
+export const P_BANDS = 26;
 /** True speed over the units of the set speed; overspeed at which the rider brakes, Infinity: never. */
-export const P_TO_TRUE = 34;
-export const P_BRAKES_ABOVE = 35;
-export const P_BAND_COUNT = 36;
-export const P_SIZE = 37;
+export const P_TO_TRUE = 30;
+export const P_BRAKES_ABOVE = 31;
+export const P_BAND_COUNT = 32;
+export const P_SIZE = 33;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;
@@ -145,6 +140,24 @@ export const R_AIR = 12;
 /** Full-throttle torque over its value at sea level. */
 export const R_DERATE = 14;
 export const R_STRIDE = 16;
+
+// --- here: the cells of road and drive in which the vehicle is, forces per unit of effective mass ---
+export const H_STATION = 0;
+export const H_LENGTH = 1;
+export const H_SIN = 2;
+export const H_COS = 4;
+export const H_HEADWIND = 6;
+export const H_AIR = 8;
+export const H_DERATE = 10;
+/** Edges of the drive's cell: speed, throttle. */
+export const H_FLOOR = 12;
+export const H_CEILING = 13;
+export const H_LOW = 14;
+export const H_HIGH = 15;
+/** Force at closed throttle a0 + a1 v, and at full throttle, underated, f0 + v (f1 + v f2) + f3 / v. */
+export const H_CLOSED = 16;
+export const H_FULL = 18;
+export const H_SIZE = 22;
 
 // --- what a kernel returns ---
 export const RUNNING = 0;

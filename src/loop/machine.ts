@@ -15,6 +15,8 @@ export interface Machine {
   readonly tangent: DragTangent;
   /** Decays of the lags over a step. */
   readonly lags: Float64Array;
+  /** The cells of road and drive at hand. */
+  readonly here: Float64Array;
   /** The samples of the last chunk, and the sums over them. */
   readonly log: Float64Array;
   readonly chunk: Float64Array;

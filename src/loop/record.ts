@@ -40,52 +40,61 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
   const highest = p[at.P_HIGH];
   const lowest = p[at.P_LOW];
-  const bands = p[at.P_BAND_COUNT];
   const sample = p[at.P_SAMPLE];
-  const lastTime = chunk[at.C_TIME] - (ticks - 1) * sample;
-  const last = (ticks - 1) * at.L_STRIDE;
+  // Samples are whole but for the last one of the run: everything is summed in samples.
+  const last = ((ticks - 1) * at.L_STRIDE) | 0;
+  const lastShare = chunk[at.C_TIME] / sample - (ticks - 1);
   let before = s[at.LAST_COMMAND];
   let errors = 0;
   let squares = 0;
   let throttles = 0;
   let travel = 0;
+  let upper = 0;
+  let lower = 0;
   let slowest = Number.POSITIVE_INFINITY;
   let fastest = Number.NEGATIVE_INFINITY;
   let least = sums[THROTTLE_MIN];
   let most = sums[THROTTLE_MAX];
   if (sums[TIME] === 0) sums[SET_SPEED] = setSpeed;
   for (let i = 0; i <= last; i += at.L_STRIDE) {
-    const time = i < last ? sample : lastTime;
+    const share = i < last ? 1 : lastShare;
     const speed = log[i + at.L_SPEED];
     const throttle = log[i + at.L_ACTUATOR];
     let command = log[i + at.L_COMMAND];
     const error = speed - setSpeed;
-    errors += error * time;
-    squares += error * error * time;
-    throttles += throttle * time;
+    errors += error * share;
+    squares += error * error * share;
+    throttles += throttle * share;
     if (speed < slowest) slowest = speed;
     if (speed > fastest) fastest = speed;
     if (throttle < least) least = throttle;
     if (throttle > most) most = throttle;
     if (command >= highest) {
       command = highest;
-      sums[UPPER] += time;
+      upper += share;
     } else if (command <= lowest) {
       command = lowest;
-      sums[LOWER] += time;
+      lower += share;
     }
     travel += Math.abs(command - before);
     before = command;
-    const size = Math.abs(error);
-    for (let b = 0; b < bands; b++) if (size <= p[at.P_BANDS + b]) sums[BAND + b] += time;
+  }
+  for (let b = 0; b < p[at.P_BAND_COUNT]; b++) {
+    const width = p[at.P_BANDS + b];
+    let inside = 0;
+    for (let i = 0; i <= last; i += at.L_STRIDE)
+      if (Math.abs(log[i + at.L_SPEED] - setSpeed) <= width) inside += i < last ? 1 : lastShare;
+    sums[BAND + b] += sample * inside;
   }
   s[at.LAST_COMMAND] = before;
   sums[TIME] += chunk[at.C_TIME];
   sums[DISTANCE] += chunk[at.C_DISTANCE];
-  sums[ERROR] += errors;
-  sums[SQUARE] += squares;
-  sums[THROTTLE] += throttles;
+  sums[ERROR] += sample * errors;
+  sums[SQUARE] += sample * squares;
+  sums[THROTTLE] += sample * throttles;
   sums[TRAVEL] += travel;
+  sums[UPPER] += sample * upper;
+  sums[LOWER] += sample * lower;
   sums[RATE] += chunk[at.C_RATED_TIME];
   sums[BRAKE] += chunk[at.C_BRAKE_TIME];
   sums[PUSH] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_PUSH];

@@ -18,7 +18,6 @@ import {
 export interface RoadTable {
   /** One row a cell between two knots (see layout.ts); cells of no length are steps. */
   readonly rows: Float64Array;
-  readonly cells: number;
   readonly crosswind: boolean;
 }
 
@@ -41,6 +40,18 @@ export function roadTable(road: Road, derate: Drive['derate']): RoadTable {
 export function integralTo(rows: Float64Array, row: number, column: number, q: number): number {
   const from = q - rows[row + R_STATION];
   return rows[row + column + 2] + from * (rows[row + column] + 0.5 * from * rows[row + column + 1]);
+}
+
+/** Mean of a column between two stations q0 < q1, each in the cell of its row. */
+export function meanBetween(
+  rows: Float64Array,
+  column: number,
+  row0: number,
+  q0: number,
+  row1: number,
+  q1: number,
+): number {
+  return (integralTo(rows, row1, column, q1) - integralTo(rows, row0, column, q0)) / (q1 - q0);
 }
 
 function compile(road: Road, derate: Drive['derate']): RoadTable {
@@ -77,5 +88,5 @@ function compile(road: Road, derate: Drive['derate']): RoadTable {
     climb += 0.5 * (near * grade[i] + far * grade[j]) * length;
     if (road.crosswind[i] !== 0 || road.crosswind[j] !== 0) crosswind = true;
   }
-  return { rows, cells, crosswind };
+  return { rows, crosswind };
 }

@@ -64,6 +64,19 @@ describe('error of speed at 50 Hz against a solver with steps of 1e-4 s', () => 
     });
 });
 
+test('with crosswind, whose drag is linearised once a step', () => {
+  const next = scatter(3);
+  const gusty = roadOver(stations(1500, 10), {
+    grade: (s) => 0.03 * Math.sin(s / 170),
+    headwind: () => 2 + next(),
+    crosswind: (s) => 3 * Math.sin(s / 90) + next(),
+  });
+  const plan = planOver(gusty, plain);
+  const fine = fineSpeeds(plan, 1e-4);
+  expect(worst(plan, fine)).toBeLessThan(1.4e-6);
+  expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(2e-5);
+});
+
 test('the exact scheme is of fourth order in its step', () => {
   // A smooth case: constant grade, a locked throttle that accelerates. The step is the sample up to 0.025 s; a road along
   // time with few knots leaves it whole. Speeds at 6 s by steps of 0.024, 0.012 against the closed form by tanh:

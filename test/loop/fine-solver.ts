@@ -21,10 +21,15 @@ export function fineSpeeds(plan: LoopPlan, step: number): number[] {
     while (cell > 0 && q < road.station[cell]!) cell--;
     const share = (q - road.station[cell]!) / (road.station[cell + 1]! - road.station[cell]!);
     const at = (c: Float64Array): number => c[cell]! + share * (c[cell + 1]! - c[cell]!);
-    const air = v + at(road.headwind);
+    const ahead = v + at(road.headwind);
+    const side = Math.abs(at(road.crosswind));
+    // CdA grows with the square of the yaw angle, up to 0.44 rad.
+    const yaw = Math.min(Math.atan2(side, ahead), 0.44);
+    const area = roadLoad.cda * (1 + roadLoad.yawGain * yaw * yaw);
     const rolling = roadLoad.c0 + v * (roadLoad.c1 + v * roadLoad.c2);
     return (
-      0.5 * at(road.airDensity) * roadLoad.cda * air * Math.abs(air) + mass * (at(cos) * rolling + at(sin))
+      0.5 * at(road.airDensity) * area * Math.hypot(ahead, side) * ahead +
+      mass * (at(cos) * rolling + at(sin))
     );
   };
   const push = (v: number, x: number): number =>
