@@ -1,23 +1,16 @@
+import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 
-/** Last index whose value is at or below x, in [0, size - 2], in a column that does not decrease. */
-export function cellAt(column: Float64Array, x: number): number {
-  let low = 0;
-  let high = column.length - 1;
-  while (high - low > 1) {
-    const middle = (low + high) >> 1;
-    if (column[middle] <= x) low = middle;
-    else high = middle;
-  }
-  return low;
+function between(over: Float64Array, x: number, column: Float64Array): number {
+  const i = cellOf(over, x);
+  return column[i] + shareOf(over, i, x) * (column[i + 1] - column[i]);
 }
 
-function between(over: Float64Array, x: number, column: Float64Array): number {
-  const i = cellAt(over, x);
+/** How far x is on the way from knot i to the next, in [0, 1]. */
+function shareOf(over: Float64Array, i: number, x: number): number {
   const width = over[i + 1] - over[i];
-  const share = width > 0 ? Math.min(1, Math.max(0, (x - over[i]) / width)) : 0;
-  return column[i] + share * (column[i + 1] - column[i]);
+  return width > 0 ? Math.min(1, Math.max(0, (x - over[i]) / width)) : 0;
 }
 
 /** Station at a horizontal distance [m]; the ends beyond the road. */
@@ -30,14 +23,21 @@ export function distanceAt(road: Road, station: number): number {
   return between(road.station, station, road.distance);
 }
 
+/** What a vehicle meets a share of the way from knot i to the next. */
+export function surroundingsBetween(road: Road, i: number, share: number): Surroundings {
+  const between = (column: Float64Array): number =>
+    share === 0 ? column[i] : column[i] + share * (column[i + 1] - column[i]);
+  return {
+    grade: between(road.grade),
+    headwind: between(road.headwind),
+    crosswind: between(road.crosswind),
+    airDensity: between(road.airDensity),
+    airTemperature: between(road.airTemperature),
+  };
+}
+
 /** What a vehicle meets at a station. */
 export function surroundingsAt(road: Road, station: number): Surroundings {
-  const at = (column: Float64Array): number => between(road.station, station, column);
-  return {
-    grade: at(road.grade),
-    headwind: at(road.headwind),
-    crosswind: at(road.crosswind),
-    airDensity: at(road.airDensity),
-    airTemperature: at(road.airTemperature),
-  };
+  const i = cellOf(road.station, station);
+  return surroundingsBetween(road, i, shareOf(road.station, i, station));
 }

@@ -1,11 +1,12 @@
 import { BUS_LIMITED, BUS_LOCK, BUS_MEASURED, BUS_REFERENCE } from '../control/bus.ts';
+import { cellOf } from '../numeric/interpolate.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { cellIndex, throttleFor, wheelForce } from '../vehicle/drive-law.ts';
 import { levelThrottle } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { cellAt, surroundingsAt } from './places.ts';
+import { surroundingsAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
 
 /**
@@ -30,7 +31,7 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
 
   s.fill(0);
   s[at.STATION] = station;
-  s[at.CELL] = cellAt(plan.road.station, station);
+  s[at.CELL] = cellOf(plan.road.station, station);
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
   s[at.ACCELERATION] = (wheelForce(drive, drive.gear, v, throttle, derate) - force) / p[at.P_EFFECTIVE_MASS];
