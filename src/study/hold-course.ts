@@ -1,11 +1,11 @@
 import type { ControllerSetup } from '../control/setup.ts';
-import type { HoldPlan } from '../loop/plan.ts';
+import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
 import type { BinRecord, LoopResult } from '../loop/result.ts';
 import { intervalOf } from '../numeric/interpolate.ts';
 import { distanceAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
-import type { Replayed, Stretch } from './findings.ts';
+import type { Stretch } from './findings.ts';
 
 /** Rate at which a change of set speed is granted to be followed when neither it nor the controller says one [m/s2]. */
 const GRANTED_RATE = 0.5;
@@ -39,8 +39,14 @@ export function nominalCourse(road: Road, hold: HoldPlan, vehicle: Pick<Vehicle,
   });
 }
 
+/** What the course of a run is told by. */
+interface PlannedRun {
+  readonly plan: Pick<LoopPlan, 'hold' | 'vehicle' | 'controller'>;
+  readonly result: LoopResult;
+}
+
 /** The course of one candidate: a change at a time stands where its run made it, and its controller's ramp is granted. */
-export function courseOfRun({ plan, result }: Pick<Replayed, 'plan' | 'result'>): HoldCourse {
+export function courseOfRun({ plan, result }: PlannedRun): HoldCourse {
   const ramp = rampOf(plan.controller);
   return courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
 }
