@@ -88,12 +88,10 @@ const droopDesign = mapping('Gains from the hill', {
 });
 const piDesigned = mapping('PI with designed gains', {
   ...piRest,
-  design: z
-    .union([settlingDesign, droopDesign])
-    .meta({
-      description:
-        'What the gains are worked out from, for the vehicle on the level in the still air of the case at sea level',
-    }),
+  design: z.union([settlingDesign, droopDesign]).meta({
+    description:
+      'What the gains are worked out from, for the vehicle on the level in the still air of the case at sea level',
+  }),
   setpoint_weight: otherwise(weight, 0, 'designed gains: the zero of P on the error is left out'),
 });
 const piByTime = mapping('PI by gain and integral time', {

@@ -49,6 +49,7 @@ export const COMMANDS = {
     details: [
       'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name>.',
       'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are removed.',
+      'Refused for its size: a road of more than 2,000,000 knots; runs of more than 500,000,000 controller samples, or tables of more than 2,000,000 rows, over all candidates.',
       'Exit status: 0 done; 1 done, but a requirement is not met; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
     ],
     options: ['out', 'set', 'json', 'quiet', 'units', 'help'],
