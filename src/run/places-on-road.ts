@@ -1,7 +1,9 @@
 import type { CaseDocument } from '../case/read-case-file.ts';
+import { roadOptionsOf } from '../case/road-of.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import type { HoldPlan } from '../loop/plan.ts';
 import { InputError, type Problem } from '../problems/input-error.ts';
+import type { Place } from '../problems/place.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Requirement } from '../study/findings.ts';
@@ -31,13 +33,8 @@ export function placesOnRoad(
   road: Road,
 ): readonly Warning[] {
   const length = lengthOf(road);
-  const beyond = (place: Problem['place'], message: string, found: number): Problem => ({
-    code: 'beyond-the-road',
-    place,
-    message,
-    found: km(found),
-    allowed: `less than ${km(length)}, the length of the road`,
-  });
+  const beyond = (place: Place, message: string, found: number): Problem =>
+    beyondTheRoad(place, message, found, `${km(length)}, the length of the road`);
   const problems = hold.changes.flatMap(({ at }, i): Problem[] =>
     'distance' in at && at.distance >= length - AT_END
       ? [
@@ -69,6 +66,39 @@ export function placesOnRoad(
   const [first, ...others] = problems;
   if (first !== undefined) throw new InputError(first, ...others);
   return warnings;
+}
+
+const beyondTheRoad = (place: Place, message: string, found: number, most: string): Problem => ({
+  code: 'beyond-the-road',
+  place,
+  message,
+  found: km(found),
+  allowed: `less than ${most}`,
+});
+
+/**
+ * Masks and shelter are places along the track: one that begins beyond its end would do nothing.
+ *
+ * @param length of the track as its file, or the profile, has it [m]
+ * @throws InputError `beyond-the-road`, for all of them, each at its key
+ */
+export function stretchesOnTrack(document: CaseDocument, length: number): void {
+  const { masks, shelter } = roadOptionsOf(document);
+  const beyond = (key: 'masks' | 'shelter', stretches: readonly { readonly from: number }[]): Problem[] =>
+    stretches.flatMap(({ from }, i) =>
+      from < length - AT_END
+        ? []
+        : [
+            beyondTheRoad(
+              placeOf(document.source, ['road', key, i, 'from_km']),
+              'the stretch would begin beyond the end of the track',
+              from,
+              `${km(length)}, the length of the track`,
+            ),
+          ],
+    );
+  const [first, ...others] = [...beyond('masks', masks), ...beyond('shelter', shelter)];
+  if (first !== undefined) throw new InputError(first, ...others);
 }
 
 /** A warning for each change of the set speed at a time that a run had not reached when it ended. */

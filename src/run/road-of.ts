@@ -10,6 +10,7 @@ import { decodeText } from '../track/decode-text.ts';
 import { readTrack } from '../track/read-track.ts';
 import { caseNameOf } from './case-name.ts';
 import { InputLog, type Reader } from './input-log.ts';
+import { stretchesOnTrack } from './places-on-road.ts';
 import type { RoadResult } from './road-result.ts';
 import { SCHEMA_VERSION, TOOL_VERSION } from './tool-version.ts';
 
@@ -58,11 +59,16 @@ export function roadOf({ file, read, overrides = [] }: RoadRequest): RoadResult 
 export function roadOfCase(document: CaseDocument, log: InputLog, file: string, namedAt?: Place): Road {
   const profile = profileOf(document);
   const inCase = ({ key = 'track' }: Place): Place => placeOf(document.source, stepsOf(key));
-  if (profile !== null)
-    return placing(inCase, () => roadOfProfile(profile, roadOptionsOf(document, caseNameOf(file))));
+  if (profile !== null) {
+    const options = roadOptionsOf(document, caseNameOf(file));
+    const scale = profile.by === 'time' ? options.nominalSpeed : 1;
+    stretchesOnTrack(document, scale * profile.pieces.reduce((sum, { extent }) => sum + extent, 0));
+    return placing(inCase, () => roadOfProfile(profile, options));
+  }
   const name = document.trackFile ?? '';
   const bytes = log.read(name, namedAt);
   const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
+  stretchesOnTrack(document, track.distance[track.size - 1] ?? 0);
   const options = roadOptionsOf(document, track.name ?? caseNameOf(name));
   // What a key asks of the track has its place in the case or the option, what the track is in its file.
   const place = (found: Place): Place => {

@@ -114,3 +114,21 @@ test('a road of too many knots is refused at once, at the grid', () => {
   const fine = refusal('long.csv', track, ['road.grid_m=0.5', 'track.direction=both']);
   expect(fine.message).toMatch(/^--set road\.grid_m=0\.5: road\.grid_m: .*found about 4000002 knots/);
 });
+
+test('a mask or a shelter that begins beyond the end of the track is refused at its key', () => {
+  const text = `road: {masks: [{from_km: 1.9, to_km: 5}, {from_km: 20, to_km: 21}], shelter: [{from_km: 2, to_km: 3, factor: 0.5}]}
+${CASE_OF_PROFILE('{file: slope.csv, trim_ends_m: 50}')}`;
+  const { problems, message } = refusal('case.yaml', { 'case.yaml': text, 'slope.csv': TRACK });
+  expect(problems.map(({ code, place }) => [code, place.line, place.key])).toEqual([
+    ['beyond-the-road', 1, 'road.masks.1.from_km'],
+    ['beyond-the-road', 1, 'road.shelter.0.from_km'],
+  ]);
+  expect(message).toContain(
+    'begin beyond the end of the track (found 20 km; allowed: less than 2 km, the length of the track)',
+  );
+  const written = `road: {shelter: [{from_km: 1.5, to_km: 3, factor: 0.5}]}
+${CASE_OF_PROFILE('{profile: [{length_m: 1000, grade_pct: 0}], direction: both}')}`;
+  expect(refusal('case.yaml', { 'case.yaml': written }).message).toMatch(
+    /less than 1 km, the length of the track/,
+  );
+});
