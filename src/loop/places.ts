@@ -23,6 +23,12 @@ export function distanceAt(road: Road, station: number): number {
   return between(road.station, station, road.distance);
 }
 
+/** Horizontal distance [m] at a station in a known cell (the one that `cellOf` finds for it). */
+export function distanceIn(road: Road, cell: number, station: number): number {
+  const share = shareOf(road.station, cell, station);
+  return road.distance[cell] + share * (road.distance[cell + 1] - road.distance[cell]);
+}
+
 /** What a vehicle meets a share of the way from knot i to the next. */
 export function surroundingsBetween(road: Road, i: number, share: number): Surroundings {
   const between = (column: Float64Array): number =>

@@ -1,10 +1,11 @@
+import { cellOf } from '../numeric/interpolate.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
 import { journey } from './journey.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { distanceAt, stationAt } from './places.ts';
+import { distanceIn, stationAt } from './places.ts';
 import type { LoopPlan, RunStatus } from './plan.ts';
 import type { Checkpoint, FullSeries, LoopResult } from './result.ts';
 import { sampleColumns } from './sample-columns.ts';
@@ -23,13 +24,15 @@ export type ReplayStart = Checkpoint | { readonly settledAt: number };
  *
  * @param start a checkpoint, or a place to start settled
  * @param to horizontal distance [m] at which the window ends
- * @returns `completed` when the window was driven; the samples that start before `to`
+ * @param from horizontal distance [m] from which samples are kept: what comes before is run and not told
+ * @returns `completed` when the window was driven; the samples that start at or behind `from` and before `to`
  * @throws InputError where the plan itself cannot be run
  */
 export function replay(
   plan: LoopPlan,
   start: ReplayStart,
   to: number,
+  from = 0,
 ): { readonly status: RunStatus; readonly series: FullSeries } {
   checkPlan(plan);
   const { road } = plan;
@@ -44,11 +47,15 @@ export function replay(
   const { gear } = plan.vehicle.drive;
 
   let status: RunStatus | null = s[at.SPEED] < p[at.P_STALL_SPEED] ? 'stalled' : null;
+  if (status === null)
+    status = statusOf(run.advance(Math.min(until, stationAt(road, from)), Number.POSITIVE_INFINITY));
+  let cell = cellOf(road.station, s[at.STATION]);
   while (status === null && s[at.STATION] < until) {
     if (run.late()) status = 'time_limit';
     else {
       const time = run.time();
-      const distance = distanceAt(road, s[at.STATION]);
+      while (cell < road.size - 2 && road.station[cell + 1] <= s[at.STATION]) cell++;
+      const distance = distanceIn(road, cell, s[at.STATION]);
       status = statusOf(run.advance(until, 1));
       if (status !== 'non_finite') columns.push(machine, time, distance, gear);
     }

@@ -48,47 +48,49 @@ function limitBits({ s, p, chunk }: Machine): number {
 
 /** Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read. */
 export function sampleColumns(): SampleColumns {
-  const width = NUMBERS.length + 2;
-  let rows = new Float64Array(width * 1024);
+  let capacity = 2048;
+  const columns = NUMBERS.map(() => new Float64Array(capacity));
+  let limit = new Uint8Array(capacity);
+  let gears = new Uint8Array(capacity);
   let size = 0;
+  const grow = (): void => {
+    capacity *= 2;
+    columns.forEach((column, k) => {
+      columns[k] = new Float64Array(capacity);
+      columns[k]!.set(column);
+    });
+    [limit, gears] = [limit, gears].map((bytes) => {
+      const more = new Uint8Array(capacity);
+      more.set(bytes);
+      return more;
+    }) as [typeof limit, typeof gears];
+  };
   const push: SampleColumns['push'] = (machine, time, distance, gear) => {
     const { s, p, log, chunk } = machine;
-    if (width * (size + 1) > rows.length) {
-      const more = new Float64Array(2 * rows.length);
-      more.set(rows);
-      rows = more;
-    }
-    const row = width * size++;
-    rows[row] = time;
-    rows[row + 1] = distance;
-    rows[row + 2] = s[BUS_TARGET] * p[at.P_TO_TRUE];
-    rows[row + 3] = s[BUS_REFERENCE] * p[at.P_TO_TRUE];
-    rows[row + 4] = log[at.L_SPEED];
-    rows[row + 5] = s[BUS_MEASURED];
-    rows[row + 6] = s[BUS_COMMAND];
-    rows[row + 7] = log[at.L_ACTUATOR];
-    rows[row + 8] = s[BUS_PROPORTIONAL];
-    rows[row + 9] = s[BUS_INTEGRAL];
-    rows[row + 10] = s[BUS_FEEDFORWARD];
-    rows[row + 11] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
-    rows[row + 12] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
-    rows[row + 13] = chunk[at.C_ACCELERATION];
-    rows[row + 14] = limitBits(machine);
-    rows[row + 15] = gear;
+    if (size === capacity) grow();
+    columns[0]![size] = time;
+    columns[1]![size] = distance;
+    columns[2]![size] = s[BUS_TARGET] * p[at.P_TO_TRUE];
+    columns[3]![size] = s[BUS_REFERENCE] * p[at.P_TO_TRUE];
+    columns[4]![size] = log[at.L_SPEED];
+    columns[5]![size] = s[BUS_MEASURED];
+    columns[6]![size] = s[BUS_COMMAND];
+    columns[7]![size] = log[at.L_ACTUATOR];
+    columns[8]![size] = s[BUS_PROPORTIONAL];
+    columns[9]![size] = s[BUS_INTEGRAL];
+    columns[10]![size] = s[BUS_FEEDFORWARD];
+    columns[11]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
+    columns[12]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
+    columns[13]![size] = chunk[at.C_ACCELERATION];
+    limit[size] = limitBits(machine);
+    gears[size] = gear;
+    size += 1;
   };
   const finish = (): FullSeries => {
-    const column = (k: number): Float64Array => {
-      // A plain loop: `from` with a callback costs twenty times as much.
-      const values = new Float64Array(size);
-      for (let i = 0; i < size; i++) values[i] = rows[width * i + k]!;
-      return values;
-    };
-    const numbers = Object.fromEntries(NUMBERS.map((name, k) => [name, column(k)])) as Record<
-      (typeof NUMBERS)[number],
-      Float64Array
-    >;
-    const limit = Uint8Array.from(column(NUMBERS.length));
-    return { ...numbers, size, limit, gear: Uint8Array.from(column(NUMBERS.length + 1)) };
+    const numbers = Object.fromEntries(
+      NUMBERS.map((name, k) => [name, columns[k]!.slice(0, size)]),
+    ) as Record<(typeof NUMBERS)[number], Float64Array>;
+    return { ...numbers, size, limit: limit.slice(0, size), gear: gears.slice(0, size) };
   };
   return { push, finish };
 }

@@ -1,11 +1,12 @@
-import { nearestCheckpoint, replay } from '../loop/replay.ts';
+import { replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
-import type { Demand, Figure, HillOutcome, Replayed, Stretch } from './findings.ts';
+import type { Figure, HillOutcome, Replayed } from './findings.ts';
 import { causeOnHill, metAnyLimit } from './hill-cause.ts';
 import { type HillEvents, hillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
+import { type SeriesContext, seriesOver } from './hill-series.ts';
 import { marksBin } from './hill-stretches.ts';
 import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
 import type { HoldCourse } from './hold-course.ts';
@@ -18,22 +19,14 @@ import { isSettling, passageOf, sampleAt, thinSeries } from './series-measures.t
 const LEAD = 10;
 const TAIL = 5;
 const PICTURE_ROWS = 400;
-/** A recovery is looked for this long behind the hill, first near by [s at the set speed]. */
-const NEAR = 25;
-const FAR = 120;
 /** Simulated and predicted loss may differ by this share, or by half a km/h. */
 const AGREES = 0.15;
 const LOCKED: Figure = { none: 'a locked throttle does not regulate' };
 const AGREES_ABSOLUTE = fromKmh(0.5);
 
-export interface OutcomeContext {
-  readonly demand: Demand;
-  /** Where the demand leaves the range, in order. */
-  readonly outOfRange: readonly Stretch[];
-  /** The candidate's own. */
-  readonly course: HoldCourse;
+export interface OutcomeContext extends SeriesContext {
+  /** Half-width of the band that is left [m/s]. */
   readonly band: number;
-  readonly recoveryBand: number;
 }
 
 /**
@@ -47,7 +40,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   const { band, course } = context;
   const locked = replayed.plan.controller.kind === 'locked';
   const regulates = !locked && marks(result, hill, course, band);
-  const { series, whole, shownFrom } = seriesOver(replayed, hill, context, regulates);
+  const { series, whole } = seriesOver(replayed, hill, context, { lead: LEAD, recovers: regulates });
   const first = Math.min(sampleAt(series, hill.from), series.size - 1);
   const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
   const events = hillEvents(series, first, last, course.settling, band);
@@ -71,7 +64,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
     timeAtLimit: passage.timeAtLimit,
     recovery: recovery.time,
     ...reasons,
-    picture: thinSeries(series, shownFrom, pictureEnd(series, over), PICTURE_ROWS),
+    picture: thinSeries(series, 0, pictureEnd(series, over), PICTURE_ROWS),
   };
 }
 
@@ -88,34 +81,6 @@ function marks({ bins }: LoopResult, hill: HillFacts, course: HoldCourse, band: 
   for (let i = Math.floor(hill.from / width); i < bins.size && bins.edge[i] < hill.until; i++)
     if (marksBin(bins, i, band, course.settling)) return true;
   return false;
-}
-
-/**
- * Every sample from a little before the hill until it is recovered from, or to a little behind it where there is
- * nothing to recover from; `whole`: as far as a recovery is waited for.
- */
-export function seriesOver(
-  { plan, result }: Replayed,
-  hill: HillFacts,
-  context: OutcomeContext,
-  recovers = true,
-): { series: FullSeries; whole: boolean; shownFrom: number } {
-  const { road } = plan;
-  const setSpeed = context.demand.setSpeed[cellOf(road.distance, hill.to)];
-  const from = Math.max(0, hill.from - LEAD * setSpeed);
-  const start = nearestCheckpoint(result, from);
-  const over = (behind: number) => {
-    const to = hill.until + behind * setSpeed;
-    const { series } = replay(plan, start, Math.min(to, result.endDistance));
-    return { series, whole: to < result.endDistance, shownFrom: sampleAt(series, from) };
-  };
-  if (!recovers) return over(TAIL);
-  const near = over(NEAR);
-  const first = sampleAt(near.series, hill.from);
-  const last = sampleAt(near.series, hill.until);
-  const rule = { ...context, settling: context.course.settling, whole: near.whole };
-  const { time } = recoveryOf(near.series, first, last, rule);
-  return typeof time === 'number' || !near.whole ? near : over(FAR);
 }
 
 function predict(

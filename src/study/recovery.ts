@@ -5,7 +5,7 @@ import { errorAt } from './series-measures.ts';
 
 /** Half-width within which a run counts as recovered, and for how long [m/s], [s]. */
 export const RECOVERED_BAND = fromKmh(1);
-const RECOVERED_FOR = 3;
+export const RECOVERED_FOR = 3;
 
 /** Said of a recovery that the record does not contain. */
 export const NOT_RECOVERED = 'it was not back within 1 km/h for 3 s in two minutes';

@@ -48,6 +48,16 @@ describe.each(['exact', 'fast'] as const)('replay by the %s scheme', (scheme) =>
     expect(series.distance[series.size - 1]).toBeGreaterThan(799);
   });
 
+  test('keeps what starts at or behind a place, and that is the same bit for bit', () => {
+    const point = result.checkpoints[1]!;
+    const all = replay(plan, point, 2500).series;
+    const kept = replay(plan, point, 2500, 1903).series;
+    const first = all.distance.findIndex((x) => x >= 1903);
+    expect(kept.size).toBe(all.size - first);
+    for (const name of ['speed', 'integral', 'distance', 'time', 'acceleration', 'limit'] as const)
+      expect(kept[name]).toEqual(all[name].slice(first));
+  });
+
   test('another set speed from a checkpoint takes over at once', () => {
     const point = nearestCheckpoint(result, 1500);
     expect(point.distance).toBeLessThan(1051);
