@@ -1,6 +1,6 @@
 /** What the program's exit status says. */
 export const DONE = 0;
-/** Done, but a requirement is not met. */
+/** Done, but a requirement is not met, or could not be judged. */
 export const NOT_MET = 1;
 /** The input (or the place for the output) was refused. */
 export const REFUSED = 2;

@@ -58,5 +58,5 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
 
 function statusOf(run: RunResult): number {
   if (run.candidates.some(({ result }) => result.status === 'non_finite')) return NUMERICAL_FAILURE;
-  return run.requirements.some(({ verdict }) => verdict === 'not met') ? NOT_MET : DONE;
+  return run.status === 'requirement_not_met' ? NOT_MET : DONE;
 }

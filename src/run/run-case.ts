@@ -155,7 +155,8 @@ function statusOf(
   candidates: readonly CandidateResult[],
   findings: RunResult['requirements'],
 ): RunResult['status'] {
-  if (findings.some(({ verdict }) => verdict === 'not met')) return 'requirement_not_met';
+  if (findings.some(({ verdict }) => verdict === 'not met' || verdict === 'not judged'))
+    return 'requirement_not_met';
   return candidates.every(({ result }) => result.status === 'completed') ? 'ok' : 'incomplete';
 }
 

@@ -35,7 +35,7 @@ export interface RunResult {
   readonly spread: SpreadMethod;
   readonly defaults: readonly DefaultUsed[];
   readonly warnings: readonly Warning[];
-  /** `requirement_not_met` when any requirement is not met; else `incomplete` when a candidate did not reach the end. */
+  /** `requirement_not_met` when any requirement is not met or could not be judged; else `incomplete` when a candidate did not reach the end. */
   readonly status: 'ok' | 'requirement_not_met' | 'incomplete';
 }
 

@@ -173,13 +173,16 @@ export interface RequirementFinding {
   readonly candidate: string;
   /** In the unit of the figure's table row. */
   readonly measured: Figure;
-  /** Distance to the limit, positive on the good side. */
+  /** Distance to the limit, positive on the good side; {none} for a run that ended before the end of what is asked about. */
   readonly margin: Figure;
   /** S.d. of the figure from the grade's uncertainty, same unit. */
   readonly spread: number;
-  /** Where it was worst, horizontal distance [m]; null for a figure without a place. */
+  /** Where it was worst, horizontal distance [m]; null for a figure without a place. Of a recovery the end of the hill. */
   readonly worstAt: number | null;
-  readonly verdict: 'met' | 'not met' | 'too close to call';
+  /** Number of the hill behind which it was worst, of a recovery. */
+  readonly afterHill?: number;
+  /** `not judged`: there is no such figure, for the reason that `words` tell; it counts as not met. */
+  readonly verdict: 'met' | 'not met' | 'too close to call' | 'not judged';
   /** One sentence. */
   readonly words: string;
 }

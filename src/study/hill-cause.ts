@@ -10,7 +10,7 @@ import type { HillFacts } from './hill-facts.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
 import { nominalCourse, setSpeedAt } from './hold-course.ts';
 import { has, type Limitation, without } from './limitations.ts';
-import { inKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
+import { atKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
 
 export interface CauseFinding {
   readonly cause: Cause | None;
@@ -209,7 +209,7 @@ function nameRange(
   const to = hill.until - window.start;
   const here = extremeDemand(windowed, from, to, up);
   if (here.share <= 1) return null;
-  const asked = `At ${inKm(window.start + here.at)} the set speed needs ${inNewton(here.required)} and ${up ? 'full throttle gives' : 'the least throttle gives'} ${inNewton(here.available)}`;
+  const asked = `At ${atKm(window.start + here.at)} the set speed needs ${inNewton(here.required)} and ${up ? 'full throttle gives' : 'the least throttle gives'} ${inNewton(here.available)}`;
   if (has(windowed, 'derating')) {
     const there = extremeDemand(without(windowed, 'derating'), from, to, up);
     if (there.share <= 1)

@@ -1,10 +1,10 @@
 import { InputError } from '../problems/input-error.ts';
 import { candidatesOf, type FigureSpread, figureSpread } from './figure-spread.ts';
 import { FIGURES, type FigureRow, figureRow } from './figure-table.ts';
-import type { Figure, Replayed, Requirement, RequirementFinding } from './findings.ts';
+import type { Figure, Hill, Replayed, Requirement, RequirementFinding } from './findings.ts';
 import { endedEarly, type FigureContext, measureFigure } from './measure-figure.ts';
 import { NOT_RECOVERED } from './recovery.ts';
-import { inKm, withUnit } from './wording.ts';
+import { atKm, withUnit } from './wording.ts';
 
 /** A limit within this many standard deviations of the measured figure cannot be told apart from it. */
 const TOO_CLOSE = 2;
@@ -14,9 +14,10 @@ const TOO_CLOSE = 2;
  * was worst, and `met`, `not met`, or `too close to call` when the limit lies within two standard deviations (from the
  * grade's uncertainty) of the figure.
  *
- * A run that did not get to the end of what the requirement is about does not meet it. A figure that does not exist is
- * `too close to call` with its reason, except a recovery that never came, which is `not met`. So is a figure inside its
- * limit that may be greater than what is known of it, or that failed on any of the drawn roads.
+ * A run that did not get to the end of what the requirement is about does not meet it, and has no margin. A figure that
+ * does not exist is `not judged`, with its reason, except a recovery that never came, which is `not met`. Too close to
+ * call is also a figure inside its limit that may be greater than what is known of it, or that failed on any of the
+ * drawn roads.
  *
  * @param requirements as written; where both limits are given both count, and the nearer one makes the margin
  * @param replayed all candidates after their runs
@@ -53,27 +54,44 @@ function judgeOne(
   failedDraws: string | null,
 ): RequirementFinding {
   const measure = measureFigure(row, candidate, context, requirement.where, requirement.band);
-  const measured = measure.value;
-  const margin = marginOf(requirement, measured);
-  const ended = endedEarly(candidate, requirement.where);
+  const measured =
+    requirement.where === 'holdable' &&
+    typeof measure.value !== 'number' &&
+    context.demand.holdableShare === 0
+      ? { none: 'the drive can hold the set speed on no part of the road' }
+      : measure.value;
+  const ended = endedEarly(candidate, requirement.where)
+    ? `the run ended at ${atKm(candidate.result.endDistance)} (${candidate.result.status})`
+    : null;
+  const margin = ended === null ? marginOf(requirement, measured) : { none: ended };
+  const hill = row.name === 'recovery_s' ? hillFrom(context, measure.at) : undefined;
   const doubt = measure.open ?? failedDraws;
-  const verdict = verdictOf(measured, margin, spread, ended, doubt !== null);
+  const verdict = ended === null ? verdictOf(measured, margin, spread, doubt !== null) : 'not met';
   return {
     requirement,
     candidate: candidate.name,
     measured,
     margin,
     spread,
-    worstAt: measure.at,
+    worstAt: hill?.to ?? measure.at,
+    ...(hill === undefined ? {} : { afterHill: hill.number }),
     verdict,
     words: wordsOf(
       requirement,
       row,
       candidate,
-      { measured, margin, spread, at: measure.at, ended, doubt },
+      { measured, margin, spread, place: placeWords(measure.at, hill), ended, doubt },
       verdict,
     ),
   };
+}
+
+const hillFrom = ({ hills }: FigureContext, at: number | null): Hill | undefined =>
+  hills.find((hill) => hill.from === at);
+
+function placeWords(at: number | null, hill: Hill | undefined): string {
+  if (hill !== undefined) return `, worst after hill ${hill.number}`;
+  return at === null ? '' : `, worst at ${atKm(at)}`;
 }
 
 function marginOf({ atLeast, atMost }: Requirement, measured: Figure): Figure {
@@ -88,12 +106,10 @@ function verdictOf(
   measured: Figure,
   margin: Figure,
   spread: number,
-  ended: boolean,
   doubtful: boolean,
 ): RequirementFinding['verdict'] {
-  if (ended) return 'not met';
-  if (typeof measured !== 'number') return measured.none === NOT_RECOVERED ? 'not met' : 'too close to call';
-  if (typeof margin !== 'number') return 'too close to call';
+  if (typeof measured !== 'number') return measured.none === NOT_RECOVERED ? 'not met' : 'not judged';
+  if (typeof margin !== 'number') return 'not judged';
   // A figure that came out right on its limit, to rounding, is met; with a spread that is too close.
   if (spread > 0 && Math.abs(margin) <= TOO_CLOSE * spread) return 'too close to call';
   if (margin < 0) return 'not met';
@@ -104,8 +120,10 @@ interface Numbers {
   readonly measured: Figure;
   readonly margin: Figure;
   readonly spread: number;
-  readonly at: number | null;
-  readonly ended: boolean;
+  /** Where it was worst. */
+  readonly place: string;
+  /** That and where the run ended before the end of what is asked about. */
+  readonly ended: string | null;
   /** Why the figure may be worse than what is known of it. */
   readonly doubt: string | null;
 }
@@ -113,15 +131,13 @@ interface Numbers {
 function wordsOf(
   requirement: Requirement,
   row: FigureRow,
-  { name, result }: Replayed,
-  { measured, margin, spread, at, ended, doubt }: Numbers,
+  { name }: Replayed,
+  { measured, margin, spread, place, ended, doubt }: Numbers,
   verdict: RequirementFinding['verdict'],
 ): string {
   const subject = `${name}: ${row.label.toLowerCase()}`;
-  if (ended)
-    return `${subject}: ${verdict}, the run ended at ${inKm(result.endDistance)} (${result.status}).`;
+  if (ended !== null) return `${subject}: ${verdict}, ${ended}.`;
   if (typeof measured !== 'number') return `${subject}: ${verdict}, ${measured.none}.`;
-  const place = at === null ? '' : `, worst at ${inKm(at)}`;
   const around = spread > 0 ? ` (s.d. ${withUnit(spread, row.unit)})` : '';
   const side =
     typeof margin !== 'number'

@@ -7,7 +7,8 @@ const fixed = (x: number, decimals: number): string => {
 };
 
 export const inKmh = (speed: number, decimals = 1): string => `${fixed(toKmh(speed), decimals)} km/h`;
-export const inKm = (distance: number): string => `${fixed(toKm(distance), 2)} km`;
+/** A place along the way. */
+export const atKm = (distance: number): string => `km ${fixed(toKm(distance), 2)}`;
 export const inPct = (ratio: number, decimals = 0): string => `${fixed(toPct(ratio), decimals)} %`;
 /** To a tenth below 10 s, whole above. */
 export const inSeconds = (time: number): string => `${fixed(time, Math.abs(time) < 9.95 ? 1 : 0)} s`;

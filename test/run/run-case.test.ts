@@ -52,6 +52,16 @@ test('inputs are noted with the SHA-256 that another implementation gives', () =
   );
 });
 
+test('what could not be judged is not passed', () => {
+  const asked = `${CASE.replace('set_speed_kmh: 60', 'set_speed_kmh: 200, start_speed_kmh: 60')}requirements:
+  - {id: T-1, figure: within_band_pct, band_kmh: 2, at_least: 95, where: holdable}
+`;
+  const run = runCase({ file: 'case.yaml', read: from({ ...files, 'case.yaml': asked }) });
+  expect(run.requirements.map(({ verdict }) => verdict)).toEqual(['not judged']);
+  expect(run.requirements[0]!.words).toContain('the drive can hold the set speed on no part of the road');
+  expect(run.status).toBe('requirement_not_met');
+});
+
 test('an absolute name in a case does not leave it', () => {
   const text = CASE.replace('sub/vehicle.yaml', '/home/someone/vehicle.yaml');
   const { inputs } = runCase({

@@ -86,14 +86,28 @@ describe('a requirement', () => {
     expectClose(finding.measured as number, 3, 1e-9);
     const nowhere = verdictOf(requirementOf({ where: { from: 5000, to: 6000 } }), run);
     expect(nowhere.measured).toHaveProperty('none');
-    expect(nowhere.verdict).toBe('too close to call');
+    expect(nowhere.verdict).toBe('not judged');
+    expect(nowhere.words).toContain('not judged, no such stretch');
+  });
+
+  it('is not judged where the drive can hold the set speed nowhere', () => {
+    const hold = { ...HOLD_60, setSpeed: 200 / 3.6, startSpeed: 200 / 3.6 };
+    const demand = demandOf(ROAD, vehicleOf(), hold);
+    const finding = verdictOf(requirementOf({ where: 'holdable' }), runOf('pi', [0, 0]), 0, {
+      ...CONTEXT,
+      demand,
+    });
+    expect(finding.verdict).toBe('not judged');
+    expect(finding.words).toContain('on no part of the road');
   });
 
   it('is not met by a run that did not get there', () => {
     const run = runOf('pi', [0, 0], { status: 'stopped', endDistance: 200 });
     const finding = verdictOf(requirementOf({}), run);
     expect(finding.verdict).toBe('not met');
-    expect(finding.words).toContain('0.20 km (stopped)');
+    expect(finding.words).toContain('not met, the run ended at km 0.20 (stopped)');
+    expect(finding.measured).toBe(0);
+    expect(finding.margin).toEqual({ none: 'the run ended at km 0.20 (stopped)' });
     expect(verdictOf(requirementOf({ where: { from: 0, to: 150 } }), run).verdict).toBe('met');
   });
 
@@ -120,14 +134,13 @@ describe('a requirement', () => {
     expect(judged(8)).toBe('met');
     expect(judged(12)).toBe('not met');
     expect(judged({ none: 'it was not back within 1 km/h for 3 s in two minutes' })).toBe('not met');
-    expect(judged({ none: 'the run ended before it was back within 1 km/h for 3 s' })).toBe(
-      'too close to call',
-    );
+    expect(judged({ none: 'the run ended before it was back within 1 km/h for 3 s' })).toBe('not judged');
   });
 
   it('on recovery is not met by a known one over the limit, whatever is unknown beside it', () => {
     const hill = (from: number, recovery: HillOutcome['recovery']): Hill =>
       ({
+        number: from / 100 + 7,
         from,
         to: from + 100,
         outcomes: [{ candidate: 'pi', affected: true, recovery }],
@@ -141,6 +154,9 @@ describe('a requirement', () => {
     const failed = judged(hill(0, 25), hill(200, ended));
     expect(failed.verdict).toBe('not met');
     expect(failed.measured).toBe(25);
+    expect(failed.words).toContain('worst after hill 7');
+    expect(failed.afterHill).toBe(7);
+    expect(failed.worstAt).toBe(100);
     const open = judged(hill(0, 8), hill(200, ended));
     expect(open.verdict).toBe('too close to call');
     expect(open.words).toContain(ended.none);
