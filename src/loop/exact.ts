@@ -135,10 +135,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       const high = here[at.H_HIGH];
       const a0 = here[at.H_CLOSED];
       const a1 = here[at.H_CLOSED + 1];
-      const begin = here[at.H_STATION];
-      const length = here[at.H_LENGTH];
-      const from = q - begin;
-      const room = length - from;
+      const from = q - here[at.H_STATION];
+      const room = here[at.H_LENGTH] - from;
 
       let h = most;
       let aimed = false;
@@ -251,15 +249,14 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           limited = rated;
           slope0 = filter > 0 ? (v - z) / filter : k1;
         }
-        if (filter > 0) {
-          // The filter behind the cubic through both ends: particular solution P - tf P' + tf^2 P'' - tf^3 P'''.
-          const cubic = h > 1e-3 ? (k1 + k4 - (2 * (ve - v)) / h) / (h * h) : 0;
-          const bend = h > 0 ? (k4 - k1) / h - 3 * cubic * h : 0;
-          const fixed = 6 * filter * filter * filter * cubic;
-          const start = v - filter * k1 + filter * filter * bend - fixed;
-          const end = ve - filter * k4 + filter * filter * (bend + 6 * cubic * h) - fixed;
-          z = end + (z - start) * lags[decay + at.G_FILTER];
-        } else z = ve;
+        if (filter > 0)
+          z =
+            v +
+            (z - v) * lags[decay + at.G_FILTER] +
+            (ve - v) * lags[decay + at.G_FILTER_RISE] +
+            k1 * lags[decay + at.G_FILTER_BEGIN] +
+            k4 * lags[decay + at.G_FILTER_END];
+        else z = ve;
         y = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
         if (rated && h === most && most < left) y = l1 > 0 ? u - rateGap : u + rateGap;
         if (lastThrottleCell > 0) {
@@ -280,7 +277,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         left = step;
         patience = pieces + PIECES;
       }
-      if (q - begin > length - KNOT) {
+      if (q - here[at.H_STATION] > here[at.H_LENGTH] - KNOT) {
         while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION] - KNOT) row += at.R_STRIDE;
         if (row === lastRow && q >= rows[row + at.R_STATION] + rows[row + at.R_LENGTH] - KNOT)
           event = at.END_OF_ROAD;

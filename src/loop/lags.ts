@@ -4,6 +4,9 @@ import {
   G_DRIVE,
   G_DRIVE_HALF,
   G_FILTER,
+  G_FILTER_BEGIN,
+  G_FILTER_END,
+  G_FILTER_RISE,
   G_PULL,
   G_PULL_HALF,
   G_RAMPED_ACTUATOR,
@@ -18,6 +21,9 @@ import {
   P_RATE_GAP,
   P_STEP,
 } from './layout.ts';
+
+/** Filter's lag over step beyond which the speed over the step is taken as a line. */
+const LONGEST_FILTER = 1000;
 
 /**
  * Writes a row of decays over a time h and its half: with the command u held, actuator y (lag ta), throttle x (lag td)
@@ -37,7 +43,29 @@ export function lagFactors(p: Float64Array, lags: Float64Array, row: number, h: 
   lags[row + G_DRIVE] = xd * xd;
   lags[row + G_PULL] = weight * (ya * ya - xd * xd) + equal * h * xd * xd;
   lags[row + G_ACTUATOR] = ya * ya;
-  lags[row + G_FILTER] = decay(p[P_FILTER], h);
+  if (p[P_FILTER] > 0) filterFactors(p[P_FILTER], lags, row, h);
+}
+
+/**
+ * The sensor's filter z, lag tf, behind a speed v(t) that is the cubic through speed and acceleration at both ends:
+ * z(h) = P(h) + (z - P(0)) e^(-h/tf) with P = v - tf dv/dt + tf^2 d2v/dt2 - tf^3 d3v/dt3, sorted by z - v, by the rise
+ * of v and by both accelerations. Where h is so short that these powers cancel, v is taken as a line.
+ */
+function filterFactors(tf: number, lags: Float64Array, row: number, h: number): void {
+  const kept = decay(tf, h);
+  const r = tf / h;
+  lags[row + G_FILTER] = kept;
+  if (r < LONGEST_FILTER) {
+    const square = r * r;
+    const cube = square * r;
+    lags[row + G_FILTER_RISE] = 1 - 6 * square + 12 * cube - kept * (6 * square + 12 * cube);
+    lags[row + G_FILTER_BEGIN] = h * (2 * square - 6 * cube + kept * (r + 4 * square + 6 * cube));
+    lags[row + G_FILTER_END] = h * (4 * square - r - 6 * cube + kept * (2 * square + 6 * cube));
+  } else {
+    lags[row + G_FILTER_RISE] = h > 0 ? 1 - r * (1 - kept) : 0;
+    lags[row + G_FILTER_BEGIN] = 0;
+    lags[row + G_FILTER_END] = 0;
+  }
 }
 
 /**

@@ -118,13 +118,17 @@ export const G_PULL_HALF = 1;
 export const G_DRIVE = 2;
 export const G_PULL = 3;
 export const G_ACTUATOR = 4;
+/** Of the sensor's filter: decay, weights of the rise of speed and of the accelerations at both ends. */
 export const G_FILTER = 5;
-export const G_STRIDE = 6;
+export const G_FILTER_RISE = 6;
+export const G_FILTER_BEGIN = 7;
+export const G_FILTER_END = 8;
+export const G_STRIDE = 9;
 /** After a whole step that begins at the rate limit: mean throttle, throttle, actuator. */
-export const G_RAMPED_MEAN = 12;
-export const G_RAMPED_DRIVE = 13;
-export const G_RAMPED_ACTUATOR = 14;
-export const G_SIZE = 15;
+export const G_RAMPED_MEAN = 18;
+export const G_RAMPED_DRIVE = 19;
+export const G_RAMPED_ACTUATOR = 20;
+export const G_SIZE = 21;
 
 // --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
 export const R_STATION = 0;
