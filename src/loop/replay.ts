@@ -34,15 +34,10 @@ export function replay(
   to: number,
   from = 0,
 ): { readonly status: RunStatus; readonly series: FullSeries } {
-  checkPlan(plan);
   const { road } = plan;
-  const machine = buildMachine(plan);
+  const machine = machineAt(plan, start);
   const { s, p } = machine;
-  if ('settledAt' in start)
-    settle(machine, plan, stationAt(road, start.settledAt), setSpeedAt(plan, start.settledAt));
-  else restore(machine, start);
   const until = to >= road.distance[road.size - 1] ? Number.POSITIVE_INFINITY : stationAt(road, to);
-  const columns = sampleColumns();
   const run = journey(machine, plan, () => undefined);
   const { gear } = plan.vehicle.drive;
 
@@ -50,6 +45,9 @@ export function replay(
   if (status === null)
     status = statusOf(run.advance(Math.min(until, stationAt(road, from)), Number.POSITIVE_INFINITY));
   let cell = cellOf(road.station, s[at.STATION]);
+  const length = Math.min(until, road.station[road.size - 1]) - s[at.STATION];
+  const pace = road.along === 'time' ? 1 : s[at.SPEED];
+  const columns = sampleColumns(length / (pace * p[at.P_SAMPLE]));
   while (status === null && s[at.STATION] < until) {
     if (run.late()) status = 'time_limit';
     else {
@@ -61,6 +59,16 @@ export function replay(
     }
   }
   return { status: status ?? 'completed', series: columns.finish() };
+}
+
+/** The machine of a plan, in the state of a checkpoint or settled at a place. */
+export function machineAt(plan: LoopPlan, start: ReplayStart): Machine {
+  checkPlan(plan);
+  const machine = buildMachine(plan);
+  if ('settledAt' in start)
+    settle(machine, plan, stationAt(plan.road, start.settledAt), setSpeedAt(plan, start.settledAt));
+  else restore(machine, start);
+  return machine;
 }
 
 /** The last checkpoint at or before a horizontal distance [m]; the first where there is none. */

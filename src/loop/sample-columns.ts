@@ -46,9 +46,14 @@ function limitBits({ s, p, chunk }: Machine): number {
   );
 }
 
-/** Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read. */
-export function sampleColumns(): SampleColumns {
-  let capacity = 2048;
+/**
+ * Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read.
+ *
+ * @param expected number of samples, about
+ */
+export function sampleColumns(expected: number): SampleColumns {
+  // A tenth more than expected; what is not to be told beforehand grows.
+  let capacity = Math.min(Math.max(Math.ceil(1.1 * expected), 256), 1 << 20);
   const columns = NUMBERS.map(() => new Float64Array(capacity));
   let limit = new Uint8Array(capacity);
   let gears = new Uint8Array(capacity);

@@ -4,7 +4,7 @@ import { perturbRoad } from '../road/perturb-road.ts';
 import type { Recovery } from './figure-measures.ts';
 import { type FigureRow, figureRow } from './figure-table.ts';
 import type { Hill, Replayed, Requirement } from './findings.ts';
-import { seriesOver } from './hill-series.ts';
+import { speedsOver } from './hill-series.ts';
 import { courseOfRun, type HoldCourse } from './hold-course.ts';
 import { chooseBins, endedEarly, type FigureContext, measureOver } from './measure-figure.ts';
 import { outOfRange } from './out-of-range.ts';
@@ -128,10 +128,9 @@ function drawnRecoveries(
       slow.push({ hill, time: outcome.recovery });
   }
   slow.sort((a, b) => b.time - a.time);
-  const wanted = { lead: 0, recovers: true };
   const rule = { demand, outOfRange: outOfRange(road, demand), course, band, recoveryBand: RECOVERED_BAND };
   return slow.slice(0, SLOWEST).map(({ hill }) => {
-    const { series, whole } = seriesOver(run, hill, rule, wanted);
+    const { series, whole } = speedsOver(run, hill, rule);
     const first = sampleAt(series, hill.from);
     const last = sampleAt(series, hill.until);
     return {

@@ -1,5 +1,6 @@
 import { nearestCheckpoint, replay } from '../loop/replay.ts';
 import type { BinRecord, FullSeries } from '../loop/result.ts';
+import { type SpeedTrace, traceSpeeds } from '../loop/trace-speeds.ts';
 import { cellOf, intervalOf } from '../numeric/interpolate.ts';
 import type { Demand, Hill, Replayed, Stretch } from './findings.ts';
 import type { HoldCourse } from './hold-course.ts';
@@ -22,26 +23,51 @@ export interface SeriesContext {
   readonly recoveryBand: number;
 }
 
-/** What part of a run is wanted. */
-export interface SeriesWanted {
-  /** Seconds at the set speed before the hill. */
-  readonly lead: number;
-  /** As far as the recovery, or only a little behind the hill. */
-  readonly recovers: boolean;
+/** A piece of a run behind and around a hill, horizontal distances [m]. */
+interface Reach {
+  readonly from: number;
+  readonly to: number;
+  /** It goes as far as a recovery is waited for. */
+  readonly whole: boolean;
 }
 
 /**
- * Every sample of a run from a little before a hill until it is recovered from, by replay from the nearest checkpoint;
- * the record by bins tells how far that is.
+ * Every sample of a run from `lead` [s at the set speed] before a hill until it is recovered from, or only a little
+ * behind it, by replay from the nearest checkpoint; the record by bins tells how far the recovery is.
  *
  * @returns the series, and whether it goes as far as a recovery is waited for where it has none
  */
 export function seriesOver(
-  { plan, result }: Replayed,
-  hill: Pick<Hill, 'from' | 'to' | 'until'>,
+  replayed: Replayed,
+  hill: HillPlace,
   context: SeriesContext,
-  { lead, recovers }: SeriesWanted,
+  { lead, recovers }: { readonly lead: number; readonly recovers: boolean },
 ): { readonly series: FullSeries; readonly whole: boolean } {
+  const { plan, result } = replayed;
+  const { from, to, whole } = reachOver(replayed, hill, context, lead, recovers);
+  return { series: replay(plan, nearestCheckpoint(result, from), to, from).series, whole };
+}
+
+/** The speeds from the hill's beginning until it is recovered from, and nothing else. */
+export function speedsOver(
+  replayed: Replayed,
+  hill: HillPlace,
+  context: SeriesContext,
+): { readonly series: SpeedTrace; readonly whole: boolean } {
+  const { plan, result } = replayed;
+  const { from, to, whole } = reachOver(replayed, hill, context, 0, true);
+  return { series: traceSpeeds(plan, nearestCheckpoint(result, from), to, from), whole };
+}
+
+type HillPlace = Pick<Hill, 'from' | 'to' | 'until'>;
+
+function reachOver(
+  { plan, result }: Replayed,
+  hill: HillPlace,
+  context: SeriesContext,
+  lead: number,
+  recovers: boolean,
+): Reach {
   const setSpeed = context.demand.setSpeed[cellOf(plan.road.distance, hill.to)];
   const from = Math.max(0, hill.from - lead * setSpeed);
   const tail = TAIL * setSpeed;
@@ -49,9 +75,7 @@ export function seriesOver(
   const to = recovers
     ? Math.min(farthest, recoveredAt(result.bins, hill.until, context) + tail)
     : hill.until + tail;
-  const start = nearestCheckpoint(result, from);
-  const { series } = replay(plan, start, Math.min(to, result.endDistance), from);
-  return { series, whole: farthest < result.endDistance };
+  return { from, to: Math.min(to, result.endDistance), whole: farthest < result.endDistance };
 }
 
 /** Where bins behind a place have been within the recovery band for long enough, or what comes next ends the waiting [m]. */

@@ -1,4 +1,4 @@
-import type { FullSeries } from '../loop/result.ts';
+import type { SpeedTrace } from '../loop/trace-speeds.ts';
 import { fromKmh } from '../units/convert.ts';
 import type { Figure, Stretch } from './findings.ts';
 import { errorAt } from './series-measures.ts';
@@ -34,7 +34,7 @@ export interface RecoveryRule {
  * @returns the time [s], 0 where neither happened, and the sample at which it was over (the end where it was not)
  */
 export function recoveryOf(
-  series: FullSeries,
+  series: SpeedTrace,
   first: number,
   last: number,
   rule: RecoveryRule,

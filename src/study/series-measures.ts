@@ -1,10 +1,11 @@
 import { LIMIT_LOWER, LIMIT_UPPER } from '../loop/plan.ts';
 import type { FullSeries } from '../loop/result.ts';
+import type { SpeedTrace } from '../loop/trace-speeds.ts';
 import type { Stretch } from './findings.ts';
 
 const LIMITS = LIMIT_UPPER | LIMIT_LOWER;
 
-export const errorAt = (series: FullSeries, i: number): number => series.speed[i] - series.setSpeed[i];
+export const errorAt = (series: SpeedTrace, i: number): number => series.speed[i] - series.setSpeed[i];
 const limited = (series: FullSeries, i: number): boolean => (series.limit[i] & LIMITS) !== 0;
 
 export const isSettling = (distance: number, settling: readonly Stretch[]): boolean =>
@@ -15,7 +16,7 @@ const spanOf = (series: FullSeries, i: number): number =>
   i + 1 < series.size ? series.time[i + 1] - series.time[i] : 0;
 
 /** First sample at or behind a horizontal distance; the size where there is none. */
-export function sampleAt(series: FullSeries, distance: number): number {
+export function sampleAt(series: SpeedTrace, distance: number): number {
   let low = 0;
   let high = series.size;
   while (low < high) {

@@ -1,6 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { nearestCheckpoint, replay } from '../../src/loop/replay.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
+import { traceSpeeds } from '../../src/loop/trace-speeds.ts';
 import { expectClose } from '../compare.ts';
 import { laggedVehicle, planOver, roadOver, stations } from './scenes.ts';
 
@@ -56,6 +57,20 @@ describe.each(['exact', 'fast'] as const)('replay by the %s scheme', (scheme) =>
     expect(kept.size).toBe(all.size - first);
     for (const name of ['speed', 'integral', 'distance', 'time', 'acceleration', 'limit'] as const)
       expect(kept[name]).toEqual(all[name].slice(first));
+  });
+
+  test('speeds alone are those of the samples, bit for bit, with distances to a centimetre', () => {
+    const point = result.checkpoints[1]!;
+    // Across two changes of set speed, and to the end of the road.
+    for (const to of [3600, 1e9]) {
+      const { series } = replay(plan, point, to, 1203);
+      const trace = traceSpeeds(plan, point, to, 1203);
+      expect(trace.size).toBe(series.size);
+      for (const name of ['speed', 'setSpeed'] as const)
+        expect(trace[name].slice(0, trace.size)).toEqual(series[name]);
+      expectClose(trace.time.slice(0, trace.size), series.time, 1e-9);
+      expectClose(trace.distance.slice(0, trace.size), series.distance, 0.01);
+    }
   });
 
   test('another set speed from a checkpoint takes over at once', () => {
