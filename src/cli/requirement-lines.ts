@@ -20,7 +20,7 @@ export function requirementLines(findings: readonly RequirementFinding[], units:
       verdict,
       id,
       candidate,
-      `${of} ${figureText(measured, unit, speed)}; ${limit} ${scope}${isNone(margin) ? '' : place}${reason}`,
+      `${of} ${figureText(measured, unit, speed)}; ${limit} ${scope}${isNone(margin) && afterHill === undefined ? '' : place}${reason}`,
     ];
   });
   const widths = [0, 1, 2].map((k) => Math.max(0, ...rows.map((row) => row[k]?.length ?? 0)));

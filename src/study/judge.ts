@@ -90,7 +90,7 @@ const hillFrom = ({ hills }: FigureContext, at: number | null): Hill | undefined
   hills.find((hill) => hill.from === at);
 
 function placeWords(at: number | null, hill: Hill | undefined): string {
-  if (hill !== undefined) return `, worst after hill ${hill.number}`;
+  if (hill !== undefined) return `, after hill ${hill.number}`;
   return at === null ? '' : `, worst at ${atKm(at)}`;
 }
 
@@ -137,7 +137,7 @@ function wordsOf(
 ): string {
   const subject = `${name}: ${row.label.toLowerCase()}`;
   if (ended !== null) return `${subject}: ${verdict}, ${ended}.`;
-  if (typeof measured !== 'number') return `${subject}: ${verdict}, ${measured.none}.`;
+  if (typeof measured !== 'number') return `${subject}: ${verdict}, ${measured.none}${place}.`;
   const around = spread > 0 ? ` (s.d. ${withUnit(spread, row.unit)})` : '';
   const side =
     typeof margin !== 'number'

@@ -251,6 +251,37 @@ describe('what a candidate did on a hill', () => {
   });
 });
 
+describe('a design beside a wild and an idle one', () => {
+  it('has the same hills that the demand makes, the same figures and the same causes on them', () => {
+    const road = roadOf([
+      { length: 1500, grade: 0 },
+      { length: 900, grade: -0.1 },
+      { length: 500, grade: 0 },
+      { length: 900, grade: 0.08 },
+      { length: 1500, grade: 0 },
+    ]);
+    const good = planOf(road, vehicleOf(), STIFF);
+    const demanded = (plans: Parameters<typeof study>[0]) =>
+      study(plans).hills.filter((hill) => Math.abs(hill.share) > 1);
+    const alone = demanded({ good });
+    const beside = demanded({
+      good,
+      wild: planOf(road, vehicleOf(), piOf({ kp: 6, ki: 8, antiWindup: { kind: 'none' } })),
+      idle: planOf(road, vehicleOf(), piOf({ kp: 0.004, ki: 0.0001 })),
+    });
+    expect(alone.map(({ kind }) => kind)).toEqual(['descent', 'climb']);
+    expect(beside.map(({ from, to, kind }) => [from, to, kind])).toEqual(
+      alone.map(({ from, to, kind }) => [from, to, kind]),
+    );
+    for (const [k, hill] of alone.entries()) {
+      const was = outcomeOn(hill, 'good');
+      const is = outcomeOn(beside[k]!, 'good');
+      expect([is.cause, is.why]).toEqual([was.cause, was.why]);
+      expectClose(is.speedChange, was.speedChange, 1e-9);
+    }
+  });
+});
+
 describe('hills of any road', () => {
   it('have finite figures whatever happens on them, on seeded random roads', () => {
     let state = 4711;

@@ -154,7 +154,7 @@ describe('a requirement', () => {
     const failed = judged(hill(0, 25), hill(200, ended));
     expect(failed.verdict).toBe('not met');
     expect(failed.measured).toBe(25);
-    expect(failed.words).toContain('worst after hill 7');
+    expect(failed.words).toContain('short, after hill 7');
     expect(failed.afterHill).toBe(7);
     expect(failed.worstAt).toBe(100);
     const open = judged(hill(0, 8), hill(200, ended));
