@@ -93,20 +93,30 @@ nav,.skip,details{display:none}
 .wide{display:block}.narrow{display:none}
 .scroll{overflow:visible;background:none}
 table{font-size:7.6pt}
-th,td{padding-right:.5rem}
+th,td{padding:.2rem .5rem .2rem 0}
 section{margin-bottom:1.2rem}
 h2,h3,.keyline{break-after:avoid}
 figure,.card,tr,.answer,.caution{break-inside:avoid}
 thead{display:table-header-group}
-.cards{grid-template-columns:1fr 1fr;gap:4mm}
-.card{padding:2mm 3mm}
-.card p,.card ul{font-size:8pt}
+.cards{display:block}
+.card{padding:1.5mm 3mm;margin-bottom:3.5mm;display:grid;grid-template-columns:7cm minmax(0,1fr);column-gap:5mm}
+.card h3{font-size:10.5pt}
+.card h3,.card .facts,.card .why{grid-column:1/-1;margin:.2rem 0}
+.card .scroll{margin:0}
+.card th,.card td{padding-top:.14rem;padding-bottom:.14rem}
+.dense{font-size:7pt}
+section>p:has(+figure),section>p:has(+.scroll),section>p:has(+.keys),section>p:has(+p+.keys){break-after:avoid}
+#force svg{max-height:58mm}
+#lanes svg:not(.key){max-height:106mm}
+.card p,.card ul{font-size:7.6pt;line-height:1.35}
 .card table{font-size:7pt}
 .keys,.keyline,.facts{break-after:avoid}
 .keys{break-inside:avoid}
 .sentence{font-size:12.5pt}
 .wrap.what{min-width:9rem}
-p,li{orphans:3;widows:3}
+p{break-inside:avoid;margin:.35rem 0}
+.note,figcaption,.keys{font-size:8.4pt}
+li{orphans:3;widows:3}
 .hash{font-size:6.4pt}
 a{color:inherit;text-decoration:none}
 *{print-color-adjust:exact;-webkit-print-color-adjust:exact}
