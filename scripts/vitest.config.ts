@@ -21,7 +21,13 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: 'program', include: ['test/cli/**/*.test.ts'], pool: 'forks', testTimeout: 120_000 },
+        test: {
+          name: 'program',
+          include: ['test/cli/**/*.test.ts'],
+          pool: 'forks',
+          testTimeout: 120_000,
+          hookTimeout: 120_000,
+        },
       },
       {
         extends: true,
