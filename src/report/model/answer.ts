@@ -66,7 +66,7 @@ export const statusWords = (candidate: CandidateView): string =>
 
 const VERDICT_COST: Readonly<Record<Verdict, number>> = {
   met: 0,
-  'not judged': 1,
+  'not judged': 2,
   'too close to call': 1,
   'not met': 3,
 };

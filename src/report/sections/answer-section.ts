@@ -57,7 +57,7 @@ function requirementTable(view: View): Html {
     return [
       finding.requirement.id,
       html`<span class="verdict ${verdict.look}"><span aria-hidden="true">${verdict.mark}</span> ${finding.verdict}</span>`,
-      html`<span class="who">${candidate !== undefined && lineKey(candidate, PAGE_PAINT)} ${finding.candidate}</span>`,
+      html`<span class="who">${candidate !== undefined && lineKey(candidate, PAGE_PAINT)} ${finding.candidate}</span>${ended !== null && html`<br><span class="who small">ended at ${placeText(ended)}</span>`}`,
       asked(view, finding),
       measured(view, finding, unit, ended),
       limit(view, finding, unit),
@@ -108,8 +108,7 @@ export function whereWords(where: Where): string {
 
 function measured(view: View, finding: RequirementFinding, unit: string, ended: number | null): Html {
   const { measured: value, requirement } = finding;
-  const early =
-    ended !== null && html`<br><span class="small">to ${placeText(ended)}, where the run ended</span>`;
+  const early = ended !== null && html`<br><span class="small">to ${placeText(ended)}</span>`;
   if (isNone(value)) return html`<span class="wrap reason small">${value.none}</span>${early}`;
   const { atLeast, atMost, band } = requirement;
   const bandHere = band === null || unit !== 'km/h' ? null : toKmh(band);

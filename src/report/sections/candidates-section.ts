@@ -33,6 +33,9 @@ const SHOWN = [
   'brake_distance_m',
 ] as const;
 
+const CHANGES =
+  'Furthest below and above are told outside of the changes of set speed. All other figures here include them: until a new set speed is reached, the difference counts as error.';
+
 /** Best is what is nearest to zero: time gained is no better than time lost. */
 const BEST_IS_NONE = 'time_lost_s';
 
@@ -67,8 +70,7 @@ export function candidatesSection(view: View): Section {
   const early = candidates.some(endedEarly);
   const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
 ${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
-${early && html`<p class="note">† Up to where that run ended, not over the whole road.</p>`}
-${changes && html`<p class="note">Furthest below and above are told outside of the changes of set speed. All other figures here include them: until a new set speed is reached, the difference counts as error.</p>`}`;
+${(early || changes) && html`<p class="note">${early && '† Up to where that run ended, not over the whole road. '}${changes && CHANGES}</p>`}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }
 
