@@ -66,7 +66,8 @@ export function candidatesOf(
   return candidates;
 }
 
-function atSeaLevel(document: CaseDocument): Surroundings {
+/** Level, still, the air of the case at sea level. */
+export function atSeaLevel(document: CaseDocument): Surroundings {
   const { density, temperature } = airAlong(Float64Array.of(0), roadOptionsOf(document).air);
   return stillAndLevel(density[0]!, temperature[0]!);
 }

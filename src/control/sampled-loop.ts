@@ -230,10 +230,13 @@ interface Plant {
   readonly measured: number;
 }
 
+/** Shorter lags [s] change nothing that can be seen, and would make the matrices stiff beyond any use. */
+const LEAST_LAG = 1e-6;
+
 /** Only the lags that exist become states: each first-order lag follows the one before it. */
 function plantOf(vehicle: Vehicle, model: LinearVehicle): Plant {
-  const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
-  const filter = vehicle.sensor.filter;
+  const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > LEAST_LAG);
+  const filter = vehicle.sensor.filter > LEAST_LAG ? vehicle.sensor.filter : 0;
   const speed = lags.length;
   const order = speed + 1 + (filter > 0 ? 1 : 0);
   const a = Matrix.zeros(order, order);

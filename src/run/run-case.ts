@@ -1,11 +1,12 @@
-import { candidatesOf } from '../case/candidates-of.ts';
+import { atSeaLevel, candidatesOf } from '../case/candidates-of.ts';
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
 import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
 import { vehicleOf } from '../case/vehicle-of.ts';
 import { placeOf } from '../case/yaml-source.ts';
+import { loopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { LoopPlan } from '../loop/plan.ts';
+import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
 import { replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
@@ -20,6 +21,7 @@ import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { toKmh } from '../units/convert.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
 import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
 import { InputLog, type Reader } from './input-log.ts';
@@ -92,9 +94,15 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const spread = figureSpread(requirements, replayed, context, { onRoad: within(SPREAD) });
   const findings = judge(requirements, replayed, context, spread);
   onProgress(SPREAD.to, 'series');
+  const speeds = trueSetSpeeds(hold, vehicle);
   const results = replayed.map(({ plan, result }, i): CandidateResult => {
     const full = output.series === 'full' ? fullSeries(plan, result) : null;
-    return { ...(candidates[i] as Candidate), result, figures: figures[i]?.all ?? {}, full };
+    const candidate = candidates[i] as Candidate;
+    const loop =
+      candidate.controller.kind === 'pi'
+        ? loopStability(vehicle, candidate.controller, speeds, atSeaLevel(document))
+        : null;
+    return { ...candidate, result, figures: figures[i]?.all ?? {}, loop, full };
   });
   return {
     schemaVersion: SCHEMA_VERSION,
@@ -124,6 +132,12 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     ],
     status: statusOf(results, findings),
   };
+}
+
+/** The true speeds that the set speeds of a run stand for [m/s]. */
+function trueSetSpeeds(hold: HoldPlan, { sensor }: Vehicle): readonly number[] {
+  const shown = hold.setSpeedIs === 'indicated' ? 1 + sensor.scaleError : 1;
+  return [hold.setSpeed, ...hold.changes.map(({ setSpeed }) => setSpeed)].map((speed) => speed / shown);
 }
 
 function vehicleDocumentOf(document: CaseDocument, log: InputLog): VehicleDocument {

@@ -1,4 +1,5 @@
 import type { DefaultUsed } from '../case/list-defaults.ts';
+import type { LoopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
 import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
@@ -57,6 +58,8 @@ export interface InputFile {
 export interface CandidateResult extends Candidate {
   readonly result: LoopResult;
   readonly figures: FigureValues;
+  /** The linear loop at the set speeds on the level; null for a locked throttle, and where the drive holds none of them. */
+  readonly loop: LoopStability | null;
   /** Every controller sample, where the case asks for `series: full`. */
   readonly full: FullSeries | null;
 }

@@ -1,6 +1,7 @@
+import { USUAL_GAIN_MARGIN, USUAL_PHASE_MARGIN } from '../control/loop-stability.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
-import { toKm } from '../units/convert.ts';
+import { toDeg, toKm, toKmh } from '../units/convert.ts';
 import { CORRECTION_RANGE, correctionFactor, deratingExtrapolates } from '../vehicle/derating.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateResult } from './run-result.ts';
@@ -52,8 +53,8 @@ function deratingWarnings(road: Road, drive: Vehicle['drive']): readonly Warning
   ];
 }
 
-function candidateWarnings({ name, result }: CandidateResult): readonly Warning[] {
-  const warnings: Warning[] = [];
+function candidateWarnings({ name, result, loop }: CandidateResult): readonly Warning[] {
+  const warnings: Warning[] = loopWarnings(name, loop);
   const { status, endDistance, ledger } = result;
   if (status !== 'completed')
     warnings.push({
@@ -68,4 +69,28 @@ function candidateWarnings({ name, result }: CandidateResult): readonly Warning[
       message: `The energy account of ${name} does not close: ${ledger.residual.toExponential(1)} of the energy is missing, and ${GREATEST_RESIDUAL.toExponential(0)} is allowed.`,
     });
   return warnings;
+}
+
+/** What the linear loop says of the gains before any road does. */
+function loopWarnings(name: string, loop: CandidateResult['loop']): Warning[] {
+  if (loop === null) return [];
+  const at = `${toKmh(loop.speed).toFixed(1)} km/h on the level`;
+  if (loop.gainMargin === null || loop.phaseMargin === null)
+    return [
+      {
+        code: 'loop-unstable',
+        message: `The gains of ${name} cannot work: with its lags and its sample time the linear loop at ${at} is unstable, and the throttle swings on any road.`,
+      },
+    ];
+  if (loop.gainMargin >= USUAL_GAIN_MARGIN && Math.abs(loop.phaseMargin) >= USUAL_PHASE_MARGIN) return [];
+  const gain = Number.isFinite(loop.gainMargin) ? loop.gainMargin.toFixed(2) : 'without limit';
+  const phase = Number.isFinite(loop.phaseMargin)
+    ? `${toDeg(loop.phaseMargin).toFixed(0)} deg`
+    : 'without limit';
+  return [
+    {
+      code: 'loop-margins-thin',
+      message: `The loop of ${name} at ${at} is close to oscillating: gain margin ${gain}, phase margin ${phase}. Common practice is at least ${USUAL_GAIN_MARGIN} and ${toDeg(USUAL_PHASE_MARGIN).toFixed(0)} deg (Astrom and Hagglund, Advanced PID Control, 2006, from memory).`,
+    },
+  ];
 }

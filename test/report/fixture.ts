@@ -73,6 +73,10 @@ export function fixtureResult(wish: FixtureWish = {}): RunResult {
         checkpoints: [],
       },
       figures: figuresOf(run),
+      loop:
+        setup.controller.kind === 'pi'
+          ? { speed: SET, stable: true, gainMargin: 4 + i, phaseMargin: 1.05 - 0.1 * i }
+          : null,
       full: null,
     };
   });

@@ -1,6 +1,6 @@
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { type Figure, isNone, type RequirementFinding } from '../../study/findings.ts';
-import { toKm, toKmh, toPct, toWh } from '../../units/convert.ts';
+import { toDeg, toKm, toKmh, toPct, toWh } from '../../units/convert.ts';
 import { decimalsOf } from './decimals-of.ts';
 import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
@@ -48,7 +48,7 @@ function significant(value: number, digits: number, what: string): number {
   return rounded(value, 0, what) === value ? value : Number(value.toPrecision(digits));
 }
 
-function candidateOf({ name, controller, result, figures }: CandidateResult): Json {
+function candidateOf({ name, controller, result, figures, loop }: CandidateResult): Json {
   const { ledger } = result;
   return {
     name,
@@ -77,7 +77,23 @@ function candidateOf({ name, controller, result, figures }: CandidateResult): Js
             design: controller.design === null ? null : controller.design.words,
           }
         : null,
+    ...marginsOf(loop),
   };
+}
+
+function marginsOf(loop: CandidateResult['loop']): Record<string, Json> {
+  const none = loop === null ? 'no feedback, or no set speed that the drive holds on the level' : null;
+  const figure = (value: number | null | undefined): Figure =>
+    value === null || value === undefined
+      ? { none: none ?? 'the linear loop is unstable' }
+      : Number.isFinite(value)
+        ? value
+        : { none: 'no crossover: nothing makes the linear loop oscillate' };
+  const phase = loop?.phaseMargin;
+  return numbers({
+    gain_margin: figure(loop?.gainMargin),
+    phase_margin_deg: figure(typeof phase === 'number' ? toDeg(phase) : phase),
+  });
 }
 
 function requirementOf(finding: RequirementFinding): Json {

@@ -11,6 +11,7 @@ import { type ErrorRange, settledRange, wholeRange } from '../model/settled-rang
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { bandText, changeText, NO_VALUE, placeText } from '../quantity.ts';
+import { loopMarginRows } from './loop-margin-rows.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
@@ -65,6 +66,7 @@ export function candidatesSection(view: View): Section {
     ['run', ...candidates.map(statusWords)],
     rangeRow(view),
     ...SHOWN.flatMap((name) => figureCells(view, name)),
+    ...loopMarginRows(candidates),
   ];
   const changes = view.result.demand.settling.length > 0;
   const early = candidates.some(endedEarly);

@@ -1,0 +1,73 @@
+import { loopMargins } from '../linear/margins.ts';
+import { sizeOfComplex } from '../numeric/complex.ts';
+import { fromDeg } from '../units/convert.ts';
+import { linearise } from '../vehicle/linearise.ts';
+import type { Surroundings } from '../vehicle/surroundings.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import { type Gains, type LoopTiming, type SampledLoop, sampledLoop } from './sampled-loop.ts';
+
+/** How far the linear loop of a candidate is from oscillating. */
+export interface LoopStability {
+  /** True speed that it stands for [m/s]. */
+  readonly speed: number;
+  /** Every pole of the closed loop decays. */
+  readonly stable: boolean;
+  /** Factor on the gain at which it oscillates, Infinity where none does; null for a loop that is not stable. */
+  readonly gainMargin: number | null;
+  /** Lag at the gain crossover with which it oscillates [rad], Infinity without a crossover; null as above. */
+  readonly phaseMargin: number | null;
+}
+
+/** Common practice: gain margins of 2 to 5, phase margins of 30 to 60 deg (Astrom and Hagglund, Advanced PID Control, 2006, from memory). */
+export const USUAL_GAIN_MARGIN = 2;
+export const USUAL_PHASE_MARGIN = fromDeg(30);
+
+/** Lowest frequency that is scanned for crossovers [rad/s]: a quarter of a day for a turn. */
+const SLOWEST = 3e-4;
+/** Of more set speeds than this, only the lowest and the highest are looked at: what lies between stands between. */
+const MOST_SPEEDS = 8;
+/** A pole nearer to 0 than this is the integral of a controller that does not use it [1/s]. */
+const STANDS = 1e-9;
+
+/**
+ * Poles and margins of a candidate's sampled loop, with all lags and without the limits of range and rate, on the level in
+ * the given surroundings: at the set speed where it stands worst. Gains whose loop is unstable cannot hold a speed whatever
+ * the road: the run swings between the limits.
+ *
+ * @param speeds true set speeds of the case [m/s]
+ * @returns null where the drive can hold none of these speeds on the level, or has no effect
+ */
+export function loopStability(
+  vehicle: Vehicle,
+  controller: Gains & LoopTiming,
+  speeds: readonly number[],
+  surroundings: Surroundings,
+): LoopStability | null {
+  let worst: LoopStability | null = null;
+  const inOrder = [...new Set(speeds)].sort((a, b) => a - b);
+  const few = inOrder.length <= MOST_SPEEDS ? inOrder : [inOrder[0]!, inOrder.at(-1)!];
+  for (const speed of few) {
+    const model = linearise(vehicle, { speed, surroundings });
+    if (model === null || !model.feasible) continue;
+    const found = {
+      speed,
+      ...stabilityOf(sampledLoop(vehicle, model, controller), controller, controller.sample),
+    };
+    if (worst === null || reserveOf(found) < reserveOf(worst)) worst = found;
+  }
+  return worst;
+}
+
+/** Stability and margins of one loop under these gains. */
+export function stabilityOf(loop: SampledLoop, gains: Gains, sample: number): Omit<LoopStability, 'speed'> {
+  const poles = loop.poles(gains).filter((pole) => gains.ki !== 0 || sizeOfComplex(pole) > STANDS);
+  if (!poles.every((pole) => pole.re < 0)) return { stable: false, gainMargin: null, phaseMargin: null };
+  const { gainMargin, phaseMargin } = loopMargins((w) => loop.openLoop(gains, w), SLOWEST, Math.PI / sample);
+  return { stable: true, gainMargin, phaseMargin };
+}
+
+/** The nearer of the two margins, in usual ones; 0 for a loop that is not stable. */
+function reserveOf({ gainMargin, phaseMargin }: LoopStability): number {
+  if (gainMargin === null || phaseMargin === null) return 0;
+  return Math.min((gainMargin - 1) / (USUAL_GAIN_MARGIN - 1), Math.abs(phaseMargin) / USUAL_PHASE_MARGIN);
+}

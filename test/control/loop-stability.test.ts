@@ -1,0 +1,123 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { loopStability, stabilityOf } from '../../src/control/loop-stability.ts';
+import { sampledLoop } from '../../src/control/sampled-loop.ts';
+import type { LinearVehicle } from '../../src/vehicle/linearise.ts';
+import { stillAndLevel } from '../../src/vehicle/surroundings.ts';
+import type { Vehicle } from '../../src/vehicle/vehicle.ts';
+import { expectClose } from '../compare.ts';
+import { readReference } from '../read-reference.ts';
+import { referenceMotorcycle } from '../vehicle/vehicles.ts';
+
+interface Margins {
+  readonly gain_margin: number;
+  readonly phase_margin_deg: number;
+}
+const reference = readReference<{
+  plants: { id: string; loops: Record<'forward' | 'backward', { margins: Margins }> }[];
+}>('linear/linear_discrete.json');
+
+// The motorcycle of the reference: dv/dt = -a v + b u.
+const model: LinearVehicle = {
+  speed: 25,
+  throttle: 0.4,
+  feasible: true,
+  a: -0.08307692307692306,
+  b: 3.4615384615384617,
+  gradeGain: -9.80665,
+  headwindGain: 0,
+  crosswindGain: 0,
+  effectiveMass: 260,
+};
+const withLags = (actuator: number, drive: number, delay = 0): Vehicle => {
+  const plain = referenceMotorcycle();
+  return {
+    ...plain,
+    actuator: { lag: actuator, rateLimit: null },
+    drive: { ...plain.drive, lag: drive },
+    sensor: { filter: 0, delay, scaleError: 0 },
+  };
+};
+const timing = { sample: 0.1, computingDelay: 0, integration: 'forward' } as const;
+
+describe('the stability of a sampled loop', () => {
+  it.each([
+    ['moto_actuator_lag', withLags(0, 0.25), { kp: 0.17, ki: 0.067 }],
+    ['moto_third_order', withLags(0.25, 0.15), { kp: 0.5, ki: 0.25 }],
+  ] as const)('has the margins of the reference: %s', (id, vehicle, gains) => {
+    for (const integration of ['forward', 'backward'] as const) {
+      const { margins } = reference.plants.find((plant) => plant.id === id)!.loops[integration];
+      const found = stabilityOf(sampledLoop(vehicle, model, { ...timing, integration }), gains, 0.1);
+      expect(found.stable).toBe(true);
+      expectClose(found.gainMargin!, margins.gain_margin, 1e-5 * margins.gain_margin);
+      expectClose((found.phaseMargin! * 180) / Math.PI, margins.phase_margin_deg, 1e-5);
+    }
+  });
+
+  it('says unstable just where a step of set speed grows, and the gain margin is that border', () => {
+    const grows = (vehicle: Vehicle, gains: { kp: number; ki: number }): boolean => {
+      const { speed } = sampledLoop(vehicle, model, timing).respond(
+        gains,
+        { reference: 1, setpointWeight: 1, disturbance: 0 },
+        1000,
+        0.1,
+      );
+      const off = (from: number, to: number): number =>
+        speed.slice(from, to).reduce((most, v) => Math.max(most, Math.abs(v - 1)), 0);
+      return !(off(7500, 10_000) <= off(0, 2500));
+    };
+    fc.assert(
+      fc.property(
+        fc.double({ min: -2, max: 2.6, noNaN: true }),
+        fc.double({ min: 0.5, max: 30, noNaN: true }),
+        fc.integer({ min: 0, max: 600 }).map((ms) => ms / 1000),
+        (power, ti, lag) => {
+          const kp = 10 ** power;
+          const vehicle = withLags(lag, 0.1, lag / 3);
+          const gains = { kp, ki: kp / ti };
+          const found = stabilityOf(sampledLoop(vehicle, model, timing), gains, timing.sample);
+          expect(grows(vehicle, gains)).toBe(!found.stable);
+          if (!found.stable) return;
+          const times = (factor: number) => ({ kp: factor * gains.kp, ki: factor * gains.ki });
+          expect(grows(vehicle, times(0.97 * found.gainMargin!))).toBe(false);
+          expect(grows(vehicle, times(1.03 * found.gainMargin!))).toBe(true);
+        },
+      ),
+      { seed: 31, numRuns: 40 },
+    );
+  });
+
+  it('is not spoilt by an integral that is not used', () => {
+    const loop = sampledLoop(withLags(0.1, 0.1), model, timing);
+    expect(stabilityOf(loop, { kp: 0.2, ki: 0 }, 0.1).stable).toBe(true);
+    expect(stabilityOf(loop, { kp: 0, ki: 0 }, 0.1)).toEqual({
+      stable: true,
+      gainMargin: Number.POSITIVE_INFINITY,
+      phaseMargin: Number.POSITIVE_INFINITY,
+    });
+  });
+});
+
+it('does not mind a lag that is all but none', () => {
+  const gains = { kp: 0.4, ki: 0.2 };
+  const of = (lag: number) => stabilityOf(sampledLoop(withLags(lag, 0.2), model, timing), gains, 0.1);
+  for (const lag of [Number.MIN_VALUE, 1e-300, 1e-12]) expect(of(lag)).toEqual(of(0));
+  expectClose(of(2e-6).gainMargin!, of(0).gainMargin!, 1e-3);
+});
+
+describe('the stability of a candidate', () => {
+  const air = stillAndLevel(1.2, 288.15);
+
+  it('is that of the set speed where it stands worst', () => {
+    const vehicle = withLags(0.1, 0.2, 0.05);
+    const gains = { ...timing, kp: 0.4, ki: 0.2 };
+    const at = (...speeds: number[]) => loopStability(vehicle, gains, speeds, air)!;
+    const each = [10, 20, 30].map((speed) => at(speed));
+    const least = Math.min(...each.map(({ gainMargin }) => gainMargin!));
+    expect(at(10, 20, 30).gainMargin).toBeCloseTo(least, 12);
+  });
+
+  it('is unknown where the drive cannot hold any of the speeds', () => {
+    expect(loopStability(withLags(0.1, 0.2), { ...timing, kp: 0.4, ki: 0.2 }, [150], air)).toBeNull();
+  });
+});
