@@ -92,7 +92,8 @@ body{background:#fff;font-size:10pt}
 nav,.skip,details{display:none}
 .wide{display:block}.narrow{display:none}
 .scroll{overflow:visible;background:none}
-table{font-size:7.6pt}
+table{font-size:7.6pt;line-height:1.32}
+svg.bar{margin-top:0}
 th,td{padding:.2rem .5rem .2rem 0}
 section{margin-bottom:1.2rem}
 h2,h3,.keyline{break-after:avoid}
