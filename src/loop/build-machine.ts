@@ -1,4 +1,5 @@
 import { controllerFor } from '../control/controller-for.ts';
+import { dragArea } from '../vehicle/road-load.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
 import { lagFactors } from './lags.ts';
@@ -31,7 +32,8 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
   p[at.P_MASS] = vehicle.mass;
   p[at.P_EFFECTIVE_MASS] = vehicle.mass + vehicle.rotatingMass + gear.inertia;
-  p[at.P_CDA] = vehicle.roadLoad.cda;
+  p[at.P_CDA] = dragArea(vehicle.roadLoad, 0);
+  p[at.P_CDA_BEHIND] = dragArea(vehicle.roadLoad, Math.PI);
   p[at.P_C0] = vehicle.roadLoad.c0;
   p[at.P_C1] = vehicle.roadLoad.c1;
   p[at.P_C2] = vehicle.roadLoad.c2;

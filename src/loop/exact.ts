@@ -5,6 +5,7 @@ import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { BRAKE_WATCH, riderBrake } from './rider-brake.ts';
 import { integralTo } from './road-table.ts';
 
 /**
@@ -22,7 +23,7 @@ import { integralTo } from './road-table.ts';
  *
  * A step is cut where the right-hand side has a kink: at road knots, where the rate limit lets go, at edges of the
  * drive's cells, at v = 0. The coefficients of a cell are frozen over a piece, so that all stages are evaluated on one
- * side of the kink. Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
+ * side of the kink; where the rider's brake comes on is not cut (a kink of about 1e-5 m/s). Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
   const { s, p, rows, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;
@@ -40,6 +41,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const timed = p[at.P_TIMED] === 1;
   const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
   const cda = p[at.P_CDA];
+  const cdaBehind = p[at.P_CDA_BEHIND];
   const c0 = p[at.P_C0];
   const c1 = p[at.P_C1];
   const c2 = p[at.P_C2];
@@ -74,7 +76,6 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const v0 = v;
   chunk.fill(0, 0, at.C_DRIVE_FORCE);
   const height0 = integralTo(rows, row, at.R_SIN, q);
-  let brake = 0;
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
@@ -99,7 +100,6 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     let parts = steps;
     let left = step;
     let patience = PIECES;
-    brake = 0;
     while (parts > 0 && event === at.RUNNING) {
       // Actuator and drive over a time t of this piece, with the decays e of their lags (see lags.ts):
       // x = l0 + l1 t + (x - l0) e_drive + gap e_pull; y = u + gap e_actuator, or on a ramp y + l1 t.
@@ -171,7 +171,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           tangent.at(v + half * acceleration + wind0 + wind1 * middle, side, air);
           near = tangent.out[0];
           slope = tangent.out[1];
-        } else if (v + wind0 + wind1 * from < 0) slope = -slope;
+        } else if (v + wind0 + wind1 * from < 0) slope = -air * cdaBehind;
         const d = here[at.H_DERATE] + here[at.H_DERATE + 1] * middle;
         const b0 = d * here[at.H_FULL] - a0;
         const b1 = d * here[at.H_FULL + 1] - a1;
@@ -182,12 +182,10 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const drive1 = a0 + x * b0 + v * (a1 + x * b1 + v * x * b2) + (b3 === 0 ? 0 : (x * b3) / v);
         const aero1 = w1 * (near + slope * w1);
         const rolling1 = r0 + v * (r1 + v * r2);
-        let k1 = drive1 - aero1 - (rolling1 + sin0 + sin1 * from);
-        if (pieces === 0 && v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT) {
-          brake = Math.max(0, Math.min(k1 + (v - brakeSpeed) / at.BRAKE_TIME, at.BRAKE_LIMIT));
-        }
-        k1 -= brake;
-        const steady = sin0 + brake;
+        const watched = v > brakeSpeed - BRAKE_WATCH;
+        let k1 = drive1 - aero1 - (rolling1 + (sin0 + sin1 * from));
+        const brake1 = watched ? riderBrake(k1, v - brakeSpeed) : 0;
+        k1 -= brake1;
 
         const f0 = a0 + xh * b0;
         const f1 = a1 + xh * b1;
@@ -199,7 +197,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const drive2 = f0 + (b3 === 0 ? 0 : f3 / v2) + v2 * (f1 + v2 * f2);
         const aero2 = w2 * (near + slope * w2);
         const rolling2 = r0 + v2 * (r1 + v2 * r2);
-        const k2 = drive2 - aero2 - (rolling2 + (steady + sin1 * q2));
+        let k2 = drive2 - aero2 - (rolling2 + (sin0 + sin1 * q2));
+        const brake2 = watched ? riderBrake(k2, v2 - brakeSpeed) : 0;
+        k2 -= brake2;
 
         const v3 = v + half * k2;
         const q3 = from + (timed ? half : half * v2);
@@ -207,7 +207,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const drive3 = f0 + (b3 === 0 ? 0 : f3 / v3) + v3 * (f1 + v3 * f2);
         const aero3 = w3 * (near + slope * w3);
         const rolling3 = r0 + v3 * (r1 + v3 * r2);
-        const k3 = drive3 - aero3 - (rolling3 + (steady + sin1 * q3));
+        let k3 = drive3 - aero3 - (rolling3 + (sin0 + sin1 * q3));
+        const brake3 = watched ? riderBrake(k3, v3 - brakeSpeed) : 0;
+        k3 -= brake3;
 
         const v4 = v + h * k3;
         const q4 = from + (timed ? h : h * v3);
@@ -215,7 +217,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const drive4 = a0 + xe * b0 + (b3 === 0 ? 0 : (xe * b3) / v4) + v4 * (a1 + xe * b1 + v4 * (xe * b2));
         const aero4 = w4 * (near + slope * w4);
         const rolling4 = r0 + v4 * (r1 + v4 * r2);
-        const k4 = drive4 - aero4 - (rolling4 + (steady + sin1 * q4));
+        let k4 = drive4 - aero4 - (rolling4 + (sin0 + sin1 * q4));
+        const brake4 = watched ? riderBrake(k4, v4 - brakeSpeed) : 0;
+        k4 -= brake4;
 
         const sixth = h * (1 / 6);
         const ve = v + sixth * (k1 + 2 * (k2 + k3) + k4);
@@ -239,13 +243,17 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         else chunk[at.C_HOLD] += work;
         chunk[at.C_AERO] += sixth * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
         chunk[at.C_ROLLING] += sixth * (v * rolling1 + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
-        if (brake > 0) chunk[at.C_BRAKE] += brake * ds;
+        if (watched) {
+          chunk[at.C_BRAKE] += sixth * (v * brake1 + 2 * (v2 * brake2 + v3 * brake3) + v4 * brake4);
+          if (brake1 + brake4 > 0) chunk[at.C_BRAKE_TIME] += h;
+        }
         chunk[at.C_DISTANCE] += ds;
         if (timed)
           chunk[at.C_CLIMB] += ds * sin0 + sixth * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
         if (pieces === 0) {
           chunk[at.C_DRIVE_FORCE] = drive1;
           chunk[at.C_ACCELERATION] = k1;
+          chunk[at.C_BRAKE_FORCE] = brake1;
           limited = rated;
           slope0 = filter > 0 ? (v - z) / filter : k1;
         }
@@ -297,7 +305,6 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     else if (v < stallSpeed) event = at.STALLED;
     elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
-    if (brake > 0) chunk[at.C_BRAKE_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
 
@@ -319,6 +326,5 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
   if (!timed) chunk[at.C_CLIMB] = share * (integralTo(rows, row, at.R_SIN, q) - height0);
   chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
-  chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

@@ -5,6 +5,7 @@ import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { decay, rampedStep } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { BRAKE_WATCH, riderBrake } from './rider-brake.ts';
 import { meanBetween } from './road-table.ts';
 
 /**
@@ -28,6 +29,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const timed = p[at.P_TIMED] === 1;
   const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
   const cda = p[at.P_CDA];
+  const cdaBehind = p[at.P_CDA_BEHIND];
   const c0 = p[at.P_C0];
   const c1 = p[at.P_C1];
   const c2 = p[at.P_C2];
@@ -68,7 +70,6 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
 
   const v0 = v;
   chunk.fill(0, 0, at.C_DRIVE_FORCE);
-  let brake = 0;
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
@@ -88,7 +89,6 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     const limited = u - y - rateGap > 1e-12 || y - u - rateGap > 1e-12;
     let slope0 = 0;
     elapsed = 0;
-    brake = 0;
     for (let part = 0; part < steps && event === at.RUNNING; part++) {
       const gap = y - u;
       let xm = u + (x - u) * driveMean + gap * pullMean;
@@ -131,7 +131,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       const air = here[at.H_AIR] + here[at.H_AIR + 1] * middle;
       const normal = here[at.H_COS] + here[at.H_COS + 1] * middle;
       const w = vm + wind;
-      let drag = air * cda * w * (w < 0 ? -w : w);
+      let drag = air * w * (w < 0 ? -w * cdaBehind : w * cda);
       if (crosswind) {
         tangent.at(w, rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle, air);
         drag = w * (tangent.out[0] + tangent.out[1] * w);
@@ -144,14 +144,14 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       const force = closed + xm * (d * full - closed);
       const resist = normal * (c0 + vm * (c1 + vm * c2));
       let a = force - drag - resist - slope;
-      if (part === 0) {
-        if (v > brakeSpeed - at.BRAKE_TIME * at.BRAKE_LIMIT)
-          brake = Math.max(0, Math.min(a + (v - brakeSpeed) / at.BRAKE_TIME, at.BRAKE_LIMIT));
-        chunk[at.C_DRIVE_FORCE] = force;
-        chunk[at.C_ACCELERATION] = a - brake;
-        slope0 = filter > 0 ? (v - z) / filter : a - brake;
-      }
+      const brake = v > brakeSpeed - BRAKE_WATCH ? riderBrake(a, vm - brakeSpeed) : 0;
       a -= brake;
+      if (part === 0) {
+        chunk[at.C_DRIVE_FORCE] = force;
+        chunk[at.C_ACCELERATION] = a;
+        chunk[at.C_BRAKE_FORCE] = brake;
+        slope0 = filter > 0 ? (v - z) / filter : a;
+      }
 
       let h = step;
       let ve = v + h * a;
@@ -179,7 +179,10 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       chunk[at.C_AERO] += drag * ds;
       chunk[at.C_ROLLING] += resist * ds;
       chunk[at.C_CLIMB] += slope * ds;
-      if (brake > 0) chunk[at.C_BRAKE] += brake * ds;
+      if (brake > 0) {
+        chunk[at.C_BRAKE] += brake * ds;
+        chunk[at.C_BRAKE_TIME] += h;
+      }
       chunk[at.C_DISTANCE] += ds;
       elapsed += h;
       if (filter > 0) {
@@ -203,7 +206,6 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       if (v < stallSpeed) event = at.STALLED;
     }
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
-    if (brake > 0) chunk[at.C_BRAKE_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
   }
 
@@ -224,6 +226,5 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
   chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
-  chunk[at.C_BRAKE_FORCE] = brake;
   return event;
 }

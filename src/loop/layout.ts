@@ -78,6 +78,7 @@ export const P_STEP = 2;
 export const P_TIMED = 3;
 export const P_MASS = 4;
 export const P_EFFECTIVE_MASS = 5;
+/** Drag area with the air from ahead; from behind: P_CDA_BEHIND. */
 export const P_CDA = 6;
 export const P_C0 = 7;
 export const P_C1 = 8;
@@ -110,7 +111,8 @@ export const P_BANDS = 26;
 export const P_TO_TRUE = 30;
 export const P_BRAKES_ABOVE = 31;
 export const P_BAND_COUNT = 32;
-export const P_SIZE = 33;
+export const P_CDA_BEHIND = 33;
+export const P_SIZE = 34;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;
@@ -169,7 +171,3 @@ export const END_OF_ROAD = 1;
 export const STOPPED = 2;
 export const STALLED = 3;
 export const NON_FINITE = 4;
-
-/** The rider's brake: time constant with which it takes the overspeed away [s], and strongest deceleration [m/s2]. */
-export const BRAKE_TIME = 0.5;
-export const BRAKE_LIMIT = 3;

@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import type { PiSetup } from '../../src/control/setup.ts';
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import { replay } from '../../src/loop/replay.ts';
 import type { Road } from '../../src/road/road.ts';
@@ -75,6 +76,34 @@ test('with crosswind, whose drag is linearised once a step', () => {
   const fine = fineSpeeds(plan, 1e-4);
   expect(worst(plan, fine)).toBeLessThan(1.4e-6);
   expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(2e-5);
+});
+
+test('with the air from behind, where the drag area is that of the largest yaw', () => {
+  const road = roadOver(stations(1500, 10), { grade: () => 0.04, headwind: (s) => -30 + Math.sin(s / 200) });
+  const yawing: Vehicle = { ...plain, roadLoad: { ...plain.roadLoad, yawGain: 1 } };
+  const plan = planOver(road, yawing);
+  const fine = fineSpeeds(plan, 1e-4);
+  expect(worst(plan, fine)).toBeLessThan(2e-8);
+  expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(2e-5);
+});
+
+test('with the brake of the rider, whose onset is a kink that is not cut', () => {
+  const road = roadOver(stations(2500, 10), { grade: (s) => -0.07 - 0.07 * Math.sin(s / 170) });
+  const plan = planOver(road, plain, { rider: { brakesAbove: 1 } });
+  const fine = fineSpeeds(plan, 1e-4);
+  expect(worst(plan, fine)).toBeLessThan(2e-5);
+  expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(1e-4);
+});
+
+test('the rider holds the same overspeed whatever the sample time', () => {
+  const road = roadOver(stations(2500, 10), { grade: () => -0.14 });
+  for (const scheme of ['exact', 'fast'] as const)
+    for (const sample of [0.02, 0.5, 2]) {
+      const plan = planOver(road, plain, { scheme, rider: { brakesAbove: 1 } });
+      const slow: LoopPlan = { ...plan, controller: { ...(plan.controller as PiSetup), sample } };
+      const { series } = replay(slow, { settledAt: 0 }, 2400);
+      expect(Math.abs(Math.max(...series.speed) - plan.hold.setSpeed - 1)).toBeLessThan(2e-3);
+    }
 });
 
 test('the exact scheme is of fourth order in its step', () => {

@@ -46,8 +46,11 @@ export function fineSpeeds(plan: LoopPlan, step: number): number[] {
     const yNow = ta > 0 ? y : u;
     const xNow = td > 0 ? x : yNow;
     const wanted = ta > 0 ? (u - y) / ta : 0;
+    // The rider lets the vehicle gain no more than this, and brakes by at most 3 m/s2.
+    const free = (push(v, xNow) - resistance(v, q)) / inertia;
+    const most = (hold.setSpeed + (plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY) - v) / 0.5;
     return [
-      (push(v, xNow) - resistance(v, q)) / inertia,
+      Math.min(free, Math.max(most, free - 3)),
       v,
       Math.min(rate, Math.max(-rate, wanted)),
       td > 0 ? (yNow - x) / td : 0,

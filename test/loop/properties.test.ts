@@ -146,8 +146,10 @@ test('over random roads, vehicles and controllers: energy closes, every number i
     fc.property(plan, (p) => {
       const result = runLoop(p);
       expect(['completed', 'stopped', 'time_limit']).toContain(result.status);
-      // The exact scheme's works are quadratures of fourth order, here over walls, gusts and seconds between samples.
-      expect(result.ledger.residual).toBeLessThan(p.scheme === 'fast' ? 1e-12 : 1e-8);
+      // The exact scheme's works are quadratures of fourth order, here over walls, gusts and seconds between samples,
+      // and over the kink where the rider's brake comes on.
+      const bound = p.scheme === 'fast' ? 1e-12 : result.ledger.brake > 0 ? 1e-6 : 1e-8;
+      expect(result.ledger.residual).toBeLessThan(bound);
       for (const value of Object.values(result.bins))
         if (value instanceof Float64Array) expect(value.every(Number.isFinite)).toBe(true);
       for (const point of result.checkpoints) expect(point.state.every((v) => !Number.isNaN(v))).toBe(true);

@@ -1,0 +1,19 @@
+/** Time constant with which the rider's brake takes overspeed away [s], and its strongest deceleration [m/s2]. */
+const TIME = 0.5;
+const STRONGEST = 3;
+
+/** Closer to the speed that the rider holds than this, a stage asks for the brake [m/s]: TIME times any acceleration of a vehicle. */
+export const BRAKE_WATCH = 5;
+
+/**
+ * Deceleration by the rider's brake: it lets the vehicle gain no more than dv/dt = -over / TIME, and brakes by at most
+ * STRONGEST. Continuous in speed and acceleration, so that both schemes meet the same solution.
+ *
+ * @param acceleration without the brake [m/s2]
+ * @param over speed less the speed that the rider holds [m/s]; before it negative
+ * @returns [m/s2], >= 0
+ */
+export function riderBrake(acceleration: number, over: number): number {
+  const wanted = acceleration + over / TIME;
+  return wanted > 0 ? Math.min(wanted, STRONGEST) : 0;
+}
