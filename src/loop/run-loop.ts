@@ -19,7 +19,7 @@ const CHECKPOINT_EVERY = 1000;
  * standstill, stall or the time limit. It never throws on the way: how it ended is the status.
  *
  * Errors of speed at 50 Hz against a converged solution: below 2e-8 m/s (`exact`; 1.4e-6 m/s with crosswind, whose drag
- * is linearised once a step), 2e-5 m/s (`fast`).
+ * is linearised once a step), 2e-5 m/s (`fast`). While the rider's brake is on: 2e-5 and 1e-4 m/s, since its onset is not cut.
  *
  * @param plan everything the run depends on
  * @returns records by distance bin, the account of energy, a checkpoint about every kilometre
