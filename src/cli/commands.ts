@@ -47,8 +47,8 @@ export const COMMANDS = {
     operands: ['CASE'],
     about: 'replay a case: road, loops, study, report',
     details: [
-      'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name>.',
-      'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are removed.',
+      'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name> (for a file called case.yaml, out/<name of its folder>).',
+      'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are replaced or removed: a file that no run wrote is refused.',
       'Refused for its size: a road of more than 2,000,000 knots; runs of more than 500,000,000 controller samples, or tables of more than 2,000,000 rows, over all candidates.',
       'Exit status: 0 done; 1 done, but a requirement is not met; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
     ],
@@ -59,7 +59,7 @@ export const COMMANDS = {
     operands: ['TRACK|CASE'],
     about: 'turn a track into disturbance sequences, and say what was repaired',
     details: [
-      'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson, road.svg (elevation, grade with its uncertainty, wind) and road.json into a folder: --out, or out/<name>.',
+      'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson, road.svg (elevation, grade with its uncertainty, wind) and road.json into a folder: --out, or out/<name> (for a file called case.yaml, out/<name of its folder>).',
       'Repairs, warnings and the uncertainty of the grade are told on standard error. For a bare track, --set takes the keys of a case that concern the road: track.*, road.*, wind.*, air.*.',
     ],
     options: ['out', 'set', 'json', 'quiet', 'units', 'help'],

@@ -25,12 +25,16 @@ const STAGE = /^\.ridgehold-(\d+)$/;
 /** Names that a run writes; a summary that lists anything else is not believed. */
 const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg)$/i;
 
+/** The marks of whole results of the commands, which may share a folder. */
+const MARKS = ['summary.json', 'road.json'];
+
 /**
  * Refuses, before the work begins, a folder that could not be written: nothing is changed.
  *
- * @throws InputError `not-a-folder`, `not-permitted`
+ * @param names of files that will be written, as far as they are known
+ * @throws InputError `not-a-folder`, `not-permitted`, `foreign-file`
  */
-export function checkFolder(folder: string): void {
+export function checkFolder(folder: string, names: readonly string[] = []): void {
   let here = resolve(folder);
   while (!existsSync(here) && dirname(here) !== here) here = dirname(here);
   try {
@@ -44,6 +48,29 @@ export function checkFolder(folder: string): void {
   } catch (error) {
     throw fileProblem(error, folder, 'cannot be written');
   }
+  refuseForeign(folder, names);
+}
+
+/** A file that would be written over must be that of an earlier run: one that a mark lists, or the mark itself. */
+function refuseForeign(folder: string, names: readonly string[]): void {
+  const there = names.filter((name) => {
+    const path = join(folder, name);
+    return existsSync(path) && statSync(path).isFile();
+  });
+  if (there.length === 0) return;
+  const listed = MARKS.map((mark) => formerFiles(join(folder, mark)));
+  const ours = new Set([
+    ...listed.flatMap((files, i) => (files.length === 0 ? [] : [...files, MARKS[i]!])),
+    ...abandonedStages(folder).flatMap((path) => MARKS.flatMap((mark) => filesOfKilledRun(path, mark))),
+  ]);
+  const foreign = there.find((name) => !ours.has(name));
+  if (foreign === undefined) return;
+  throw new InputError({
+    code: 'foreign-file',
+    place: { file: join(folder, foreign) },
+    message: 'would be written over, and no earlier run wrote it',
+    allowed: 'another folder, or the file moved away',
+  });
 }
 
 const notFolder = (here: string, folder: string): string =>
@@ -57,7 +84,7 @@ const notFolder = (here: string, folder: string): string =>
  * Then the files that a former mark lists, and the new one does not, are removed.
  *
  * @param files the mark last
- * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`
+ * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`, `foreign-file`
  */
 export function writeResult(folder: string, files: readonly TextFile[]): void {
   let made: string | undefined;
@@ -67,6 +94,10 @@ export function writeResult(folder: string, files: readonly TextFile[]): void {
   const stage = join(folder, `.ridgehold-${process.pid}`);
   try {
     for (const { name } of files) refuseFolder(folder, name);
+    refuseForeign(
+      folder,
+      files.map(({ name }) => name),
+    );
     const mark = files.at(-1)?.name ?? '';
     const abandoned = abandonedStages(folder);
     const former = [

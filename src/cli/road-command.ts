@@ -3,21 +3,21 @@ import { medianOf } from '../numeric/running-median.ts';
 import { roadFiles } from '../report/data/data-files.ts';
 import { roadJson } from '../report/data/road-json.ts';
 import { roadPicture } from '../report/road-picture.ts';
-import { caseNameOf } from '../run/case-name.ts';
 import { roadOf } from '../run/road-of.ts';
 import type { RoadResult } from '../run/road-result.ts';
 import type { Repair } from '../track/track.ts';
 import { toKm, toPct } from '../units/convert.ts';
 import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
+import { defaultFolder } from './default-folder.ts';
 import { DONE } from './exit-status.ts';
 import { checkFolder, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
 
 /** `ridgehold road TRACK|CASE`: writes the disturbances along a road, tells people what was repaired. */
 export function roadCommand({ operands: [path], values }: Invocation<'road'>): number {
-  const folder = values.out ?? join('out', caseNameOf(path));
-  checkFolder(folder);
+  const folder = values.out ?? defaultFolder(path);
+  checkFolder(folder, ['disturbance.csv', 'road.svg', 'road.json']);
   const reader = readerOf(path);
   const result = reader.telling(() =>
     roadOf({ file: reader.file, read: reader.read, overrides: values.set }),

@@ -1,15 +1,16 @@
 import { join } from 'node:path';
+import { InputError } from '../problems/input-error.ts';
 import { chartFiles } from '../report/chart-files.ts';
 import { dataFiles } from '../report/data/data-files.ts';
 import { summaryJson } from '../report/data/summary.ts';
 import { answerOf } from '../report/model/answer.ts';
 import { viewOf } from '../report/model/view.ts';
 import { renderReport } from '../report/render-report.ts';
-import { caseNameOf } from '../run/case-name.ts';
 import { runCase } from '../run/run-case.ts';
 import type { RunResult } from '../run/run-result.ts';
 import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
+import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { requirementLines } from './requirement-lines.ts';
@@ -18,8 +19,9 @@ import { say, tellWarnings } from './tell.ts';
 
 /** `ridgehold run CASE`: replays the case, writes the result whole, tells people the answer. */
 export function runCommand({ operands: [path], values }: Invocation<'run'>): number {
-  const folder = values.out ?? join('out', caseNameOf(path));
-  checkFolder(folder);
+  refuseTrack(path);
+  const folder = values.out ?? defaultFolder(path);
+  checkFolder(folder, ['report.html', 'summary.json']);
   const reader = readerOf(path);
   const bar = new ProgressBar(process.stderr);
   const units = values.units ?? 'kmh';
@@ -54,6 +56,16 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
   }
   if (values.json) process.stdout.write(summary);
   return statusOf(run);
+}
+
+function refuseTrack(path: string): void {
+  if (!/\.(?:gpx|csv|geojson)$/i.test(path)) return;
+  throw new InputError({
+    code: 'not-a-case',
+    place: { file: path },
+    message: `is a track, not a case; a track alone goes to: ridgehold road ${path}`,
+    allowed: 'a case in YAML or JSON that names the track',
+  });
 }
 
 function statusOf(run: RunResult): number {

@@ -2,6 +2,7 @@ import { InputError } from '../problems/input-error.ts';
 import { chooseTrack } from './choose-track.ts';
 import { cleanTrack } from './clean-track.ts';
 import { decodeText } from './decode-text.ts';
+import { lineOf } from './line-of.ts';
 import type { RawTrack } from './raw-track.ts';
 import { readCsv } from './read-csv.ts';
 import { readGeoJson } from './read-geojson.ts';
@@ -16,7 +17,7 @@ import type { Track } from './track.ts';
  * @param choice name or number (from 1) where the file has several tracks or routes
  * @returns the track, at least 3 points and 50 m long, with elevation or grade
  * @throws InputError for what cannot be read or safely repaired, with the place in the file; see decodeText,
- *   readGpx, readCsv, readGeoJson, cleanTrack; `unknown-format` for another ending, `html-page` for a web page
+ *   readGpx, readCsv, readGeoJson, cleanTrack; `unknown-format` for another ending, `html-page` for a web page, `not-gpx`
  */
 export function readTrack(
   file: { readonly name: string; readonly bytes: Uint8Array },
@@ -44,6 +45,15 @@ function readRaw(name: string, bytes: Uint8Array, choice: string | number | unde
       message: 'this is a web page, not a track',
       found: 'HTML',
       allowed: ending.slice(1).toUpperCase(),
+    });
+  const begin = text.search(/\S/);
+  if (ending === '.gpx' && begin >= 0 && text[begin] !== '<')
+    throw new InputError({
+      code: 'not-gpx',
+      place: { file: name, ...lineOf(text, begin) },
+      message: 'this is no GPX, which begins with a <, whatever the ending says',
+      found: `'${text.slice(begin, begin + 40).split(/[\r\n]/)[0]}'`,
+      allowed: 'GPX, or the ending of what it is: .csv, .geojson',
     });
   if (ending === '.gpx') return readGpx(text, name, choice);
   if (ending !== '.csv') return readGeoJson(text, name, choice);

@@ -52,10 +52,49 @@ test.skipIf(!existsSync('/proc/self'))('a folder that cannot be written is told'
 test('a summary that lists files elsewhere is not believed', () => {
   writeFiles(here, { 'victim.csv': 'mine' });
   writeFiles(join(here, 'trap'), {
-    'summary.json': JSON.stringify({ schema_version: '1.0', files: ['../victim.csv', '/etc/x.csv', 7] }),
+    'summary.json': JSON.stringify({
+      schema_version: '1.0',
+      files: ['../victim.csv', '/etc/x.csv', 7, 'report.html'],
+    }),
   });
   expect(run('trap').status).toBe(0);
   expect(readFileSync(join(here, 'victim.csv'), 'utf8')).toBe('mine');
+});
+
+test('a file that no run wrote is not written over', () => {
+  for (const name of ['report.html', 'summary.json', 'disturbance.csv']) {
+    const folder = `foreign-${name.replace(/\W/g, '-')}`;
+    writeFiles(here, { [`${folder}/${name}`]: 'mine', [`${folder}/notes.txt`]: 'mine too' });
+    const { status, stderr } = run(folder);
+    expect(stderr).toMatch(
+      new RegExp(`^error: ${folder}/${name}: would be written over, and no earlier run`),
+    );
+    expect(status).toBe(2);
+    expect(filesBelow(join(here, folder))).toEqual({ [name]: 'mine', 'notes.txt': 'mine too' });
+  }
+});
+
+test('a road and a run share a folder, and either is made anew', () => {
+  const road = () => ridgehold(here, ['road', 'hill.yaml', '-o', 'shared', '--quiet']).status;
+  const both = () => run('shared', undefined, '--quiet').status;
+  expect([road(), both(), road(), both()]).toEqual([0, 0, 0, 0]);
+});
+
+test('studies whose case is called case go each to the folder of their own name', () => {
+  for (const name of ['first', 'second']) {
+    writeFiles(join(here, name), { 'case.yaml': CASE, 'vehicle.yaml': VEHICLE });
+    expect(ridgehold(here, ['run', join(name, 'case.yaml'), '--quiet']).status).toBe(0);
+    expect(existsSync(join(here, 'out', name, 'report.html'))).toBe(true);
+  }
+  expect(ridgehold(join(here, 'first'), ['run', 'case.yaml', '--quiet']).status).toBe(0);
+  expect(existsSync(join(here, 'first/out/first/report.html'))).toBe(true);
+  expect(existsSync(join(here, 'out/case'))).toBe(false);
+});
+
+test('a track alone is pointed to the command for it', () => {
+  const { status, stderr } = ridgehold(here, ['run', 'ride.gpx']);
+  expect(stderr).toMatch(/^error: ride\.gpx: is a track, not a case; [^\n]*ridgehold road ride\.gpx/);
+  expect(status).toBe(2);
 });
 
 test('what a killed run left is cleared away', () => {
