@@ -118,6 +118,42 @@ describe.each([
     expect(outside).toEqual([]);
     await close();
   });
+
+  it('sets no two words of the force chart, the lanes or a hill picture over each other', async () => {
+    const { page, close } = await open(width, scheme);
+    const meeting = await page.evaluate(() =>
+      [
+        ...document.querySelectorAll('#force svg[role=img], #lanes svg[role=img], .card svg[role=img]'),
+      ].flatMap((svg) => {
+        const boxes = [...svg.querySelectorAll('text')]
+          .map((text) => ({ words: text.textContent, box: text.getBoundingClientRect() }))
+          .filter(({ box }) => box.width > 0);
+        // Boxes of letters have air above and below: a quarter of their height may meet.
+        const meet = (a: DOMRect, b: DOMRect) =>
+          Math.min(a.right, b.right) - Math.max(a.left, b.left) > 1 &&
+          Math.min(a.bottom, b.bottom) - Math.max(a.top, b.top) > a.height / 4;
+        return boxes.flatMap((one, i) =>
+          boxes
+            .slice(i + 1)
+            .flatMap((other) => (meet(one.box, other.box) ? [`${one.words} | ${other.words}`] : [])),
+        );
+      }),
+    );
+    expect(meeting).toEqual([]);
+    await close();
+  });
+
+  it('shades the edge behind which a table goes on', async () => {
+    const { page, close } = await open(width, scheme);
+    const unshaded = await page.evaluate(() =>
+      [...document.querySelectorAll('.scroll')]
+        .filter((frame) => frame.scrollWidth > frame.clientWidth + 1)
+        .filter((frame) => !getComputedStyle(frame).backgroundImage.includes('gradient'))
+        .map((frame) => frame.getAttribute('aria-label')),
+    );
+    expect(unshaded).toEqual([]);
+    await close();
+  });
 });
 
 it('prints white, without the contents, with the wide charts and no card wider than the sheet', async () => {

@@ -38,6 +38,28 @@ describe('the answer', () => {
     expect(answer({ requirements: 'none' }).sentence).not.toContain('requirement');
   });
 
+  it('is no green light where a requirement cannot be judged', () => {
+    const base = fixtureResult({ lengthKm: 12, requirements: 'met', designs: ['pi-firm'] });
+    const none = { none: 'no part of the road is holdable' };
+    const [first, ...rest] = base.requirements;
+    const unjudged = { ...first!, measured: none, margin: none, verdict: 'not judged' as const };
+    const { sentence, standing, designs } = answerOf(
+      viewOf({ ...base, requirements: [unjudged, ...rest] }, 'kmh'),
+    );
+    expect(standing).toBe('not judged');
+    expect(plain(sentence)).toContain('misses no requirement, but SH-01 cannot be judged on this road');
+    expect(designs[0]!.words).toBe('1 of 2 not judged');
+  });
+
+  it('says that a hill defeats a design only where the demand leaves the range of the drive', () => {
+    const base = fixtureResult({ lengthKm: 28 });
+    const within = base.hills.map((hill) => ({ ...hill, share: 0.9, kind: 'level' as const }));
+    const beyond = base.hills.map((hill) => ({ ...hill, share: -1.2, kind: 'descent' as const }));
+    const told = (hills: typeof base.hills) => plain(answerOf(viewOf({ ...base, hills }, 'kmh')).sentence);
+    expect(told(within)).toMatch(/stretch \d+ \(.*\) takes it out of its band: it/);
+    expect(told(beyond)).toMatch(/hill \d+ \(.*\) defeats it: it/);
+  });
+
   it('says when a run ended early: of the design, of another one, of the locked throttle', () => {
     const own = answer({
       designs: ['pi-only'],

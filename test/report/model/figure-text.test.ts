@@ -1,0 +1,20 @@
+import { expect, it } from 'vitest';
+import { figureTextBeside, marginText } from '../../../src/report/model/figure-text.ts';
+import { SPEED_UNITS } from '../../../src/report/quantity.ts';
+
+const { kmh } = SPEED_UNITS;
+const plain = (text: string) => text.replace(/\u00a0/g, ' ');
+
+it('a figure that rounding would set on its limit has as many digits as tell the two apart', () => {
+  expect(plain(figureTextBeside(2.04, [2], 'km/h', kmh))).toBe('2.04 km/h');
+  expect(plain(figureTextBeside(1.998, [2], 'km/h', kmh))).toBe('1.998 km/h');
+  expect(plain(figureTextBeside(2, [2], 'km/h', kmh))).toBe('2.0 km/h');
+  expect(plain(figureTextBeside(2.34, [2], 'km/h', kmh))).toBe('2.3 km/h');
+  expect(plain(figureTextBeside(94.98, [95], '%', kmh))).toBe('94.98 %');
+  expect(plain(figureTextBeside(20.2, [20], 's', kmh))).toBe('20.2 s');
+});
+
+it('a margin between shares is told in points', () => {
+  expect(plain(marginText(4.9, '%', kmh))).toBe('+4.9 points');
+  expect(plain(marginText(-4.21, 'km/h', kmh))).toBe('\u22124.2 km/h');
+});

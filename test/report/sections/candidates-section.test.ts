@@ -1,0 +1,42 @@
+import { expect, it } from 'vitest';
+import { viewOf } from '../../../src/report/model/view.ts';
+import { candidatesSection } from '../../../src/report/sections/candidates-section.ts';
+import type { Figure } from '../../../src/study/findings.ts';
+import { type FixtureWish, fixtureResult } from '../fixture.ts';
+
+/** Texts of the cells of a row, bold ones between stars. */
+function rowOf(
+  label: string,
+  wish: FixtureWish,
+  figures: Readonly<Record<string, Readonly<Record<string, Figure>>>>,
+) {
+  const result = fixtureResult({ lengthKm: 12, designs: ['a', 'b'], locked: false, ...wish });
+  const candidates = result.candidates.map((one) => ({
+    ...one,
+    figures: { ...one.figures, ...figures[one.name] },
+  }));
+  const page = candidatesSection(viewOf({ ...result, candidates }, 'kmh')).body.toString();
+  const row = page.split('<tr>').find((text) => text.includes(`>${label}`))!;
+  return row
+    .split('<td>')
+    .slice(1)
+    .map((cell) =>
+      cell
+        .replace(/<\/?strong>/g, '*')
+        .replace(/<[^>]*>/g, '')
+        .replace(/\u00a0/g, ' ')
+        .trim(),
+    );
+}
+
+it('the best design is bold, and one that ended early is never best', () => {
+  const figures = { a: { rms_error_kmh: 2 }, b: { rms_error_kmh: 1 } };
+  expect(rowOf('Rms error', {}, figures)).toEqual(['2.0 km/h', '*1.0 km/h*']);
+  const ends = { b: { km: 5, status: 'stopped' } } as const;
+  expect(rowOf('Rms error', { ends }, figures)).toEqual(['2.0 km/h', '1.0 km/h †']);
+});
+
+it('the best time lost is the one nearest to zero', () => {
+  const figures = { a: { time_lost_s: -20 }, b: { time_lost_s: 3 } };
+  expect(rowOf('Time lost', {}, figures)).toEqual(['\u221220 s', '*3.0 s*']);
+});
