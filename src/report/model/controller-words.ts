@@ -14,6 +14,9 @@ function antiWindupWords(setup: AntiWindup): string {
   }
 }
 
+/** A design ends with its gains, which stand before it here. */
+const GAINS_AGAIN = /: kp \S+ % per km\/h, ki \S+ % per km\/h s/;
+
 /** A controller in a few words, gains in per cent of throttle per unit of the reader's speed. */
 export function controllerWords(setup: ControllerSetup, speed: SpeedUnit): string {
   if (setup.kind === 'locked')
@@ -28,6 +31,7 @@ export function controllerWords(setup: ControllerSetup, speed: SpeedUnit): strin
       : `PI, Kp ${perSpeed(setup.kp, `% per ${speed.name}`)}, ${setup.ki > 0 ? `Ti ${withUnit(significant(setup.kp / setup.ki, 3), 's')}` : 'no integral'}`;
   const every = `every ${withUnit(fixed(setup.sample * 1000), 'ms')}`;
   const weight = `set-point weight ${significant(setup.setpointWeight, 2)}`;
-  const design = setup.design === null ? '' : `. ${inReaderUnit(setup.design.words, speed)}`;
+  const design =
+    setup.design === null ? '' : `. ${inReaderUnit(setup.design.words.replace(GAINS_AGAIN, ''), speed)}`;
   return `${gains}, ${weight}, ${every}, ${antiWindupWords(setup.antiWindup)}${design}`;
 }
