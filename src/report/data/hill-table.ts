@@ -22,7 +22,12 @@ export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
     about: 'name of the candidate',
     value: (rows, i) => rows[i]!.outcome.candidate,
   },
-  { name: 'kind', decimals: 0, about: 'climb, descent or rolling', value: (rows, i) => rows[i]!.hill.kind },
+  {
+    name: 'kind',
+    decimals: 0,
+    about: 'climb, descent, rolling or level',
+    value: (rows, i) => rows[i]!.hill.kind,
+  },
   { name: 'from_km', decimals: 4, about: 'start of the hill', value: (rows, i) => toKm(rows[i]!.hill.from) },
   { name: 'to_km', decimals: 4, about: 'end of the hill', value: (rows, i) => toKm(rows[i]!.hill.to) },
   {
@@ -76,7 +81,7 @@ export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
   {
     name: 'speed_change_kmh',
     decimals: 3,
-    about: 'extreme speed error on the hill and until recovery; negative: lost',
+    about: 'speed error furthest from zero, on the hill and just behind it; negative: too slow',
     value: (rows, i) => toKmh(rows[i]!.outcome.speedChange),
   },
   {
