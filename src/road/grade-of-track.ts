@@ -61,7 +61,9 @@ export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform:
       allowed: 'an elevation for its points, or a grade_pct column',
     });
   const open = Array.from(driven.measured.keys()).filter((i) => driven.measured[i] === 1);
-  const least = options.elevationSource === 'exact' ? 2 : 3;
+  // Two elevations say no more than a straight road: nothing to smooth. Masks must leave what the smoothing needs.
+  const straight = driven.size === 2;
+  const least = options.elevationSource === 'exact' || straight ? 2 : 3;
   if (open.length < least)
     throw new InputError({
       code: 'too-few-elevations',
@@ -72,9 +74,18 @@ export function gradeOfTrack(driven: DrivenTrack, options: RoadOptions, uniform:
     });
   const distance = Float64Array.from(open, (i) => driven.distance[i]!);
   const elevation = Float64Array.from(open, (i) => driven.elevation![i]!);
+  if (straight && options.elevationSource !== 'exact')
+    return { ...bySurvey(distance, elevation, options.grid, uniform), warnings: [straightWarning(distance)] };
   return options.elevationSource === 'exact'
     ? bySurvey(distance, elevation, options.grid, uniform)
     : bySmoothing(distance, elevation, options, options.elevationSource, uniform);
+}
+
+function straightWarning(distance: Float64Array): Warning {
+  return {
+    code: 'two-elevations',
+    message: `The track has two elevations, ${distance[1]!.toFixed(0)} m apart: the road between them is taken as straight, without uncertainty.`,
+  };
 }
 
 function bySurvey(x: Float64Array, z: Float64Array, grid: number, uniform: Float64Array): GradeAlong {

@@ -10,6 +10,7 @@ import { leaveOutStandstill } from './leave-out-standstill.ts';
 import { legLength } from './leg-length.ts';
 import {
   FEWEST_POINTS,
+  FEWEST_ROWS,
   HIGHEST_ELEVATION,
   LARGEST_DISAGREEMENT,
   LOWEST_ELEVATION,
@@ -96,13 +97,14 @@ function requireElevation(raw: RawTrack): void {
 }
 
 function requireLength(raw: RawTrack, points: number, length: number | null): void {
-  if (points >= FEWEST_POINTS && (length === null || length >= SHORTEST_TRACK)) return;
+  const fewest = raw.distance === null ? FEWEST_POINTS : FEWEST_ROWS;
+  if (points >= fewest && (length === null || length >= SHORTEST_TRACK)) return;
   throw new InputError({
     code: 'track-too-short',
     place: { file: raw.file },
     message: 'the track is too short for a road',
     found: length === null ? countPoints(points) : `${length.toFixed(1)} m`,
-    allowed: `at least ${FEWEST_POINTS} points and ${SHORTEST_TRACK} m`,
+    allowed: `at least ${fewest} points and ${SHORTEST_TRACK} m`,
   });
 }
 

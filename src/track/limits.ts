@@ -5,8 +5,9 @@
  * the grade over a hill that the elevation smoothing would keep.
  */
 
-/** Fewer points, or a shorter way [m], are no road. */
+/** Fewer points, or a shorter way [m], are no road; two rows of a table of distances are one: straight. */
 export const FEWEST_POINTS = 3;
+export const FEWEST_ROWS = 2;
 export const SHORTEST_TRACK = 50;
 
 /** Two positions nearer than this are one [m]: half a unit of the sixth decimal of a degree. */

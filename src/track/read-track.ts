@@ -15,7 +15,7 @@ import type { Track } from './track.ts';
  *
  * @param file name (for the ending and for messages) and whole content
  * @param choice name or number (from 1) where the file has several tracks or routes
- * @returns the track, at least 3 points and 50 m long, with elevation or grade
+ * @returns the track, at least 3 points (2 rows of a table of distances) and 50 m long, with elevation or grade
  * @throws InputError for what cannot be read or safely repaired, with the place in the file; see decodeText,
  *   readGpx, readCsv, readGeoJson, cleanTrack; `unknown-format` for another ending, `html-page` for a web page, `not-gpx`
  */

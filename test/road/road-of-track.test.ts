@@ -2,6 +2,7 @@ import geodesic from 'geographiclib-geodesic';
 import { describe, expect, it } from 'vitest';
 import type { RoadOptions } from '../../src/road/options.ts';
 import { roadOfTrack } from '../../src/road/road-of-track.ts';
+import { readTrack } from '../../src/track/read-track.ts';
 import type { Repair, Track } from '../../src/track/track.ts';
 import { expectClose } from '../compare.ts';
 import { evenly, roadOptions, trackOf, windFrom } from './road-fixtures.ts';
@@ -504,5 +505,16 @@ describe('road of a track', () => {
 
   it('gives the same road twice', () => {
     expect(columns(noisyTrack(15))).toEqual(columns(noisyTrack(15)));
+  });
+});
+
+describe('a table of two rows', () => {
+  it('is a straight road, and says that nothing is known of what lies between', () => {
+    const bytes = new TextEncoder().encode('distance_m,elevation_m\n0,100\n2000,150\n');
+    const road = columns(readTrack({ name: 'two.csv', bytes }), { elevationSource: 'gnss' });
+    expectClose(road.grade, new Array(road.size).fill(0.025), 1e-12);
+    expectClose(road.gradeSd, new Array(road.size).fill(0), 0);
+    expectClose(road.elevation[road.size - 1]!, 150, 1e-9);
+    expect(road.warnings.map(({ code }) => code)).toContain('two-elevations');
   });
 });

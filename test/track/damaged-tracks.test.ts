@@ -29,7 +29,8 @@ function expectSound(track: Track): void {
     true,
     true,
   ]);
-  expect(size).toBeGreaterThanOrEqual(3);
+  // Two rows of a table of distances are a straight road; positions need three.
+  expect(size).toBeGreaterThanOrEqual(format === 'csv' ? 2 : 3);
   for (const [key, column] of Object.entries({ distance, ...columns })) {
     if (column === null) continue;
     expect(column.length, key).toBe(size);
