@@ -16,7 +16,8 @@ export default defineConfig({
           include: ['test/**/*.test.ts'],
           exclude: ['test/cli/**', 'test/browser/**'],
           pool: 'threads',
-          testTimeout: 60_000,
+          testTimeout: 120_000,
+          hookTimeout: 120_000,
         },
       },
       {
