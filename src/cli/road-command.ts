@@ -5,7 +5,7 @@ import { roadJson } from '../report/data/road-json.ts';
 import { roadPicture } from '../report/road-picture.ts';
 import { roadOf } from '../run/road-of.ts';
 import type { RoadResult } from '../run/road-result.ts';
-import type { Repair } from '../track/track.ts';
+import type { Repair, RepairKind } from '../track/track.ts';
 import { toKm, toPct } from '../units/convert.ts';
 import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
@@ -61,10 +61,24 @@ function tellRoad({ road, defaults }: RoadResult): void {
   tellRepairs(road.repairs);
 }
 
+/** One and several of each kind. */
+const REPAIR_WORDS: Readonly<Record<RepairKind, readonly [string, string]>> = {
+  doubled_point: ['doubled point', 'doubled points'],
+  missing_elevation: ['missing elevation', 'missing elevations'],
+  position_jump: ['jump of position', 'jumps of position'],
+  reversal: ['reversal', 'reversals'],
+  gap: ['gap', 'gaps'],
+  segment_joined: ['joint of segments', 'joints of segments'],
+  elevation_spike: ['elevation spike', 'elevation spikes'],
+  non_finite: ['missing number', 'missing numbers'],
+};
+
 function tellRepairs(repairs: readonly Repair[]): void {
-  const counts = new Map<string, number>();
+  const counts = new Map<RepairKind, number>();
   for (const { kind } of repairs) counts.set(kind, (counts.get(kind) ?? 0) + 1);
-  const words = [...counts].map(([kind, count]) => `${count} ${kind.replaceAll('_', ' ')}`).join(', ');
+  const words = [...counts]
+    .map(([kind, count]) => `${count} ${REPAIR_WORDS[kind][count === 1 ? 0 : 1]}`)
+    .join(', ');
   say(`Repairs: ${words === '' ? 'none' : words}`);
   for (const { message } of repairs.slice(0, 12)) say(`  ${message}`);
   if (repairs.length > 12) say(`  and ${repairs.length - 12} more, which road.json lists`);
