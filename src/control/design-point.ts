@@ -87,7 +87,9 @@ export function pairDuration(frequency: number, damping: number): number {
 export function setSpeedStep(design: DesignLoop, gains: Gains, duration: number): StepFigures {
   const push = { reference: 1, setpointWeight: design.point.setpointWeight, disturbance: 0 };
   const { speed, spacing } = design.loop.respond(gains, push, duration, duration / 2000);
-  return stepFigures(speed, spacing, 1, SETTLING_BAND);
+  const figures = stepFigures(speed, spacing, 1, SETTLING_BAND);
+  // The response begins with the command that follows the step of set speed.
+  return { ...figures, settling: figures.settling + design.point.computingDelay };
 }
 
 /** Greatest loss of speed after a step of grade [m/s] (for a step downhill, the greatest gain). */

@@ -26,7 +26,7 @@ export interface PiSetup {
   readonly setpointWeight: number;
   /** Sample time [s]. */
   readonly sample: number;
-  /** From sample to command [s]. The loop reads the speed that much older; a change of set speed is heard without it. */
+  /** From sample to command [s]: the command acts on a speed, and on a set speed, that are that much older. */
   readonly computingDelay: number;
   readonly integration: 'forward' | 'backward';
   readonly antiWindup: AntiWindup;

@@ -35,12 +35,18 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
   const sample = p[at.P_SAMPLE];
   const { changes } = plan.hold;
   const lastTick = Math.ceil(plan.timeLimit / sample - 1e-9);
-  const places = changes.map(({ at: place }) =>
-    'distance' in place ? stationAt(plan.road, place.distance) : Number.POSITIVE_INFINITY,
-  );
+  // A change acts when the command that follows it does, the computing delay later; by distance, at the set speed before it.
+  const late = machine.controller.computingDelay;
+  const places = changes.map(({ at: place }, i) => {
+    if (!('distance' in place)) return Number.POSITIVE_INFINITY;
+    const before = p[at.P_TO_TRUE] * (i === 0 ? plan.hold : changes[i - 1]!).setSpeed;
+    return stationAt(plan.road, place.distance) + late * (plan.road.along === 'time' ? 1 : before);
+  });
   const due = (i: number): boolean => {
     const place = changes[i]!.at;
-    return 'time' in place ? ticksTo(place.time, sample, s[at.TICK]) === 0 : s[at.STATION] >= places[i]!;
+    return 'time' in place
+      ? ticksTo(place.time + late, sample, s[at.TICK]) === 0
+      : s[at.STATION] >= places[i]!;
   };
   const change = (setSpeed: number, made: SetSpeedChange | null): void => {
     setTarget(s, setSpeed, made?.ramp ?? machine.controller.ramp, sample);
@@ -71,7 +77,7 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
       const next = s[at.CHANGES] < changes.length ? changes[s[at.CHANGES]]! : null;
       const place = next === null ? Number.POSITIVE_INFINITY : places[s[at.CHANGES]]!;
       const run =
-        next !== null && 'time' in next.at ? ticksTo(next.at.time, sample, s[at.TICK]) : at.LOG_ROWS;
+        next !== null && 'time' in next.at ? ticksTo(next.at.time + late, sample, s[at.TICK]) : at.LOG_ROWS;
       const before = s[at.TICK];
       event = kernel(machine, Math.min(run, left, at.LOG_ROWS), Math.min(until, place));
       addWorks(machine);

@@ -44,6 +44,27 @@ describe.each(['exact', 'fast'] as const)('measured speed by the %s scheme', (sc
     expect(replay(late, { settledAt: 0 }, 1e9).series.speed).toEqual(sensor.speed);
   });
 
+  test('a change of set speed moves the actuator the computing delay later, but not the delay of the sensor', () => {
+    const level = roadOver(stations(1000, 10));
+    const hold = { setSpeed: 17, setSpeedIs: 'true_speed', startSpeed: 17 } as const;
+    const firstMove = (
+      computingDelay: number,
+      sensorDelay: number,
+      at: { time: number } | { distance: number },
+    ) => {
+      const sensor = { filter: 0, delay: sensorDelay, scaleError: 0 };
+      const plan = planOver(level, { ...referenceMotorcycle, sensor }, { scheme });
+      const controller = { ...plan.controller, computingDelay, setpointWeight: 1 } as LoopPlan['controller'];
+      const changed = { ...hold, changes: [{ at, setSpeed: 18, ramp: null }] };
+      const { series } = replay({ ...plan, controller, hold: changed }, { settledAt: 0 }, 1000);
+      const i = series.actuator.findIndex((u) => u > series.actuator[0]! + 0.01);
+      return series.time[i]!;
+    };
+    expectClose(firstMove(0, 0.5, { time: 10 }), 10, 0.021);
+    expectClose(firstMove(0.5, 0, { time: 10 }), 10.5, 0.021);
+    expectClose(firstMove(0.5, 0, { distance: 170 }), 10.5, 0.021);
+  });
+
   test('the filter follows its own differential equation', () => {
     const filter = 0.4;
     const { speed, measured, size } = run({ filter }, { scheme });
