@@ -28,7 +28,8 @@ const ALWAYS: readonly ValidityNote[] = [
   },
   {
     code: 'ideal-brake',
-    words: 'The rider by the brake holds an overspeed exactly and at once; no brake heats or fades.',
+    words:
+      'The rider by the brake waits for no reaction time: overspeed beyond what is allowed goes with a time constant of 0.5 s, by at most 3 m/s² of braking; no brake heats or fades.',
   },
   {
     code: 'no-cut-outs',

@@ -78,6 +78,18 @@ test('with crosswind, whose drag is linearised once a step', () => {
   expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(2e-5);
 });
 
+test('with a drive that loses force with altitude', () => {
+  const road = roadOver(stations(1500, 10), {
+    grade: (s) => 0.04 * Math.sin(s / 170),
+    airDensity: (s) => 1.15 - s * 1e-4,
+  });
+  const derated: Vehicle = { ...plain, drive: { ...plain.drive, derate: 'naturally_aspirated' } };
+  const plan = planOver(road, derated);
+  const fine = fineSpeeds(plan, 1e-4);
+  expect(worst(plan, fine)).toBeLessThan(2e-8);
+  expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(2e-5);
+});
+
 test('with the air from behind, where the drag area is that of the largest yaw', () => {
   const road = roadOver(stations(1500, 10), { grade: () => 0.04, headwind: (s) => -30 + Math.sin(s / 200) });
   const yawing: Vehicle = { ...plain, roadLoad: { ...plain.roadLoad, yawGain: 1 } };

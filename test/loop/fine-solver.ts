@@ -5,7 +5,7 @@ import type { LoopPlan } from '../../src/loop/plan.ts';
 
 const G = 9.80665;
 
-/** Speed at each controller sample [m/s]. PI with back-calculation or without, force drive without derating. */
+/** Speed at each controller sample [m/s]. PI with back-calculation or without, force drive. */
 export function fineSpeeds(plan: LoopPlan, step: number): number[] {
   const { road, vehicle, hold } = plan;
   const { drive, roadLoad, mass, actuator, sensor } = vehicle;
@@ -32,8 +32,20 @@ export function fineSpeeds(plan: LoopPlan, step: number): number[] {
       mass * (at(cos) * rolling + at(sin))
     );
   };
-  const push = (v: number, x: number): number =>
-    -closedThrottleForce + x * (Math.min(peakForce, power / v) + closedThrottleForce);
+  // ISO 1585 as printed: alpha = (99 kPa / p)^1.2 (T / 298 K)^0.6, dry air; linear between knots.
+  const derate = Float64Array.from(road.airDensity, (density, i) => {
+    if (drive.derate === 'none') return 1;
+    const temperature = road.airTemperature[i]!;
+    return Math.min(
+      1,
+      1 / ((99000 / (density * 287.05287 * temperature)) ** 1.2 * (temperature / 298) ** 0.6),
+    );
+  });
+  const push = (v: number, x: number, q: number): number => {
+    const share = (q - road.station[cell]!) / (road.station[cell + 1]! - road.station[cell]!);
+    const d = derate[cell]! + share * (derate[cell + 1]! - derate[cell]!);
+    return -closedThrottleForce + x * (d * Math.min(peakForce, power / v) + closedThrottleForce);
+  };
 
   const ta = actuator.lag;
   const td = drive.lag;
@@ -47,7 +59,8 @@ export function fineSpeeds(plan: LoopPlan, step: number): number[] {
     const xNow = td > 0 ? x : yNow;
     const wanted = ta > 0 ? (u - y) / ta : 0;
     // The rider lets the vehicle gain no more than this, and brakes by at most 3 m/s2.
-    const free = (push(v, xNow) - resistance(v, q)) / inertia;
+    const resist = resistance(v, q);
+    const free = (push(v, xNow, q) - resist) / inertia;
     const most = (hold.setSpeed + (plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY) - v) / 0.5;
     return [
       Math.min(free, Math.max(most, free - 3)),
@@ -59,7 +72,8 @@ export function fineSpeeds(plan: LoopPlan, step: number): number[] {
   };
   const v0 = hold.startSpeed;
   const settled =
-    (resistance(v0, 0) + closedThrottleForce) / (Math.min(peakForce, power / v0) + closedThrottleForce);
+    (resistance(v0, 0) + closedThrottleForce) /
+    (derate[0]! * Math.min(peakForce, power / v0) + closedThrottleForce);
   let state = [v0, 0, settled, settled, v0];
   let integral = settled - pi.kp * (pi.setpointWeight - 1) * v0;
   const speeds: number[] = [];

@@ -35,6 +35,21 @@ describe('the report', () => {
     for (const id of sections) expect(page).toContain(`<a href="#${id}">`);
   });
 
+  it('states the accuracy that holds for this run: crosswind and brake cost some', () => {
+    const result = fixtureResult({});
+    const still = { ...result.road, crosswind: new Float64Array(result.road.size) };
+    const told = (change: Partial<typeof result>) =>
+      wordsOf(renderReport({ ...result, ...change }, { units: 'kmh' })).match(
+        /At 50 Hz [^.]*\.?\d?[^.]*\./,
+      )![0];
+    expect(told({ scheme: 'exact' })).toMatch(/1\.4 × 10⁻⁶ m\/s.*2 × 10⁻⁵ m\/s where the rider brakes/);
+    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null } })).toContain(
+      'within 2 × 10⁻⁸ m/s',
+    );
+    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null } })).not.toContain('brakes');
+    expect(told({ scheme: 'fast' })).toMatch(/2 × 10⁻⁵ m\/s.*10⁻⁴ m\/s where the rider brakes/);
+  });
+
   it('asks for nothing from outside: no script, no address, no source but itself', () => {
     expect(page).not.toMatch(/<script|<link|<iframe|<img|<object|@import|javascript:/i);
     expect(page).not.toMatch(/\s(src|srcset|action|formaction|background|poster)=/i);
