@@ -45,6 +45,7 @@ export type {
 } from './study/findings.ts';
 export { readTrack } from './track/read-track.ts';
 export type { Profile, Repair, Track } from './track/track.ts';
+export type { Belt, Drive, Gear, Gearbox } from './vehicle/drive.ts';
 export { type ElectricDriveSpec, electricDrive } from './vehicle/electric-drive.ts';
 export { type ForceDriveSpec, forceDrive } from './vehicle/force-drive.ts';
-export type { Drive, RoadLoad, Vehicle } from './vehicle/vehicle.ts';
+export type { RoadLoad, Vehicle } from './vehicle/vehicle.ts';

@@ -20,7 +20,10 @@ export function holdOf({ file: { hold } }: CaseDocument): HoldPlan {
 
 /** The rider who stands by. */
 export function riderOf({ file: { rider } }: CaseDocument): RiderPlan {
-  return { brakesAbove: rider.brakes_above_kmh === undefined ? null : fromKmh(rider.brakes_above_kmh) };
+  return {
+    brakesAbove: rider.brakes_above_kmh === undefined ? null : fromKmh(rider.brakes_above_kmh),
+    shifts: [],
+  };
 }
 
 /** Limits stay in the unit of the figure, which its name ends in; bands become m/s. */

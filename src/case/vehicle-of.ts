@@ -1,8 +1,10 @@
 import { fromDeg, fromKmh, fromKw, fromNPerKmh, fromNPerKmh2, fromPct } from '../units/convert.ts';
+import type { Drive } from '../vehicle/drive.ts';
 import { electricDrive } from '../vehicle/electric-drive.ts';
 import { forceDrive } from '../vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../vehicle/ideal.ts';
 import { roadLoadOfCoefficients, roadLoadOfRegulation } from '../vehicle/road-load.ts';
-import type { Drive, RoadLoad, Vehicle } from '../vehicle/vehicle.ts';
+import type { RoadLoad, Vehicle } from '../vehicle/vehicle.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
 import { rotatingMassKg } from './vehicle-mass.ts';
 import type { VehicleFile } from './vehicle-schema.ts';
@@ -54,10 +56,17 @@ export function vehicleOf({ file }: VehicleDocument): Vehicle {
     roadLoad: roadLoadOf(file.road_load, mass),
     drive: compile(file.drive),
     actuator: {
+      ...IDEAL_ACTUATOR,
       lag: actuator.lag_s,
       rateLimit: actuator.rate_limit_pct_per_s === undefined ? null : fromPct(actuator.rate_limit_pct_per_s),
     },
-    sensor: { filter: sensor.filter_s, delay: sensor.delay_s, scaleError: fromPct(sensor.scale_error_pct) },
+    sensor: {
+      ...IDEAL_SENSOR,
+      filter: sensor.filter_s,
+      delay: sensor.delay_s,
+      scaleError: fromPct(sensor.scale_error_pct),
+    },
+    traction: null,
   };
 }
 

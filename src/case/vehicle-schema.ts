@@ -1,5 +1,5 @@
 import * as z from 'zod';
-import type { Drive } from '../vehicle/vehicle.ts';
+import type { Drive } from '../vehicle/drive.ts';
 import { block, kind, line, list, mapping, number, optional, otherwise, word } from './fields.ts';
 
 const IDEAL = 'ideal: not given';

@@ -35,8 +35,33 @@ export const LOCK_TEMPERATURE = 34;
 export const CHANGES = 35;
 /** Limited command of the last sample that was recorded. */
 export const LAST_COMMAND = 36;
+/** Gear engaged, index into the drive's gears; -1: the clutch is open. Ratio and effective mass in hand. */
+export const GEAR = 37;
+export const RATIO = 38;
+export const EFFECTIVE_MASS = 39;
+/** A shift under way: the gear it goes to, 0 none, 1 clutch open, 2 the rider's throttle until hold resumes; tick at which this part ends, tick of the last shift; planned shifts that have begun. */
+export const NEXT_GEAR = 40;
+export const SHIFT_PART = 41;
+export const SHIFT_UNTIL = 42;
+export const SHIFTED_AT = 43;
+export const SHIFTS = 44;
+/** Throttle behind the actuator's slack. */
+export const PLATE = 45;
+/** Distance travelled since the start [m]. */
+export const TRAVELLED = 46;
+/** Battery: energy left [J], heat (see Heating), factors of full-throttle force and of regeneration that follow. */
+export const CHARGE = 47;
+export const HEAT = 48;
+export const DRIVE_FACTOR = 49;
+export const REGENERATION_FACTOR = 50;
+/** Drawn from fuel or battery [J]; kinetic energy lost in shifts [J]. */
+export const DRAWN = 51;
+export const SHIFT_WORK = 52;
+/** What a sensor with pulses or noise keeps: filtered reading, and one more place. */
+export const SENSED = 53;
+export const SENSED_MORE = 54;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 37;
+export const HISTORY = 55;
 export const HISTORY_STRIDE = 3;
 
 // --- chunk: sums over the samples that a kernel has just run, works per unit of effective mass ---

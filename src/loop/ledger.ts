@@ -1,3 +1,4 @@
+import { powerDrawn } from '../vehicle/power-map.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -27,7 +28,7 @@ export function ledgerOf(machine: Machine, vehicle: Vehicle): Ledger {
   const kinetic = 0.5 * p[at.P_EFFECTIVE_MASS] * (v * v - start * start);
   const spent = s[at.AERO_WORK] + s[at.ROLLING_WORK] + s[at.CLIMB_WORK] + s[at.BRAKE_WORK] + kinetic;
   const magnitude = s[at.WORK_MAGNITUDE];
-  const { efficiency } = vehicle.drive;
+  const { source } = vehicle.drive;
   return {
     drive,
     regeneration,
@@ -36,7 +37,10 @@ export function ledgerOf(machine: Machine, vehicle: Vehicle): Ledger {
     climb: s[at.CLIMB_WORK],
     brake: s[at.BRAKE_WORK],
     kinetic,
-    battery: efficiency === null ? null : drive / efficiency.drive + regeneration * efficiency.regeneration,
+    shifts: 0,
+    drawn:
+      source === null ? null : powerDrawn(source.map, 1, drive) + powerDrawn(source.map, 1, regeneration),
+    chargeAtEnd: null,
     residual: magnitude > 0 ? Math.abs(drive + regeneration - spent) / magnitude : 0,
   };
 }

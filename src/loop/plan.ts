@@ -31,6 +31,12 @@ export interface HoldPlan {
   /** In order along the way. */
   readonly changes: readonly SetSpeedChange[];
 }
+export interface PlannedShift {
+  /** Horizontal distance [m]. */
+  readonly distance: number;
+  /** Index into the drive's gears. */
+  readonly gear: number;
+}
 export interface SetSpeedChange {
   /** Horizontal distance [m] or time [s]. */
   readonly at: { readonly distance: number } | { readonly time: number };
@@ -42,6 +48,8 @@ export interface SetSpeedChange {
 export interface RiderPlan {
   /** The rider brakes to hold this overspeed above the set speed [m/s]; null: no brake. */
   readonly brakesAbove: number | null;
+  /** The rider's plan of gears, in order along the way; for a clutch gearbox only. */
+  readonly shifts: readonly PlannedShift[];
 }
 
 export type RunStatus = 'completed' | 'stalled' | 'stopped' | 'time_limit' | 'non_finite';
@@ -51,3 +59,5 @@ export const LIMIT_UPPER = 1;
 export const LIMIT_LOWER = 2;
 export const LIMIT_RATE = 4;
 export const LIMIT_BRAKE = 8;
+/** The clutch is open, or the throttle in the rider's hand, for a shift. */
+export const LIMIT_SHIFT = 16;

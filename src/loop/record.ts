@@ -158,6 +158,10 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     driveWork: column(),
     regenerationWork: column(),
     brakeWork: column(),
+    driveForceMax: column(),
+    driveForceMin: column(),
+    timeShift: column(),
+    drawn: column(),
   };
 
   const sums = new Float64Array(SUMS);

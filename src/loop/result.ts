@@ -10,6 +10,8 @@ export interface LoopResult {
   readonly ledger: Ledger;
   /** About one a kilometre of the road, the first at the start. */
   readonly checkpoints: readonly Checkpoint[];
+  /** In order along the way. */
+  readonly shifts: readonly ShiftEvent[];
 }
 
 /**
@@ -58,9 +60,27 @@ export interface BinRecord {
   readonly driveWork: Float64Array;
   readonly regenerationWork: Float64Array;
   readonly brakeWork: Float64Array;
+  /** Greatest and least wheel force of the drive over the samples [N]. */
+  readonly driveForceMax: Float64Array;
+  readonly driveForceMin: Float64Array;
+  /** Time with the clutch open or the throttle in the rider's hand for a shift [s]. */
+  readonly timeShift: Float64Array;
+  /** Drawn from fuel or battery [J]; 0 without a source. */
+  readonly drawn: Float64Array;
 }
 
-/** Energies over the whole run [J]. drive + regeneration = aero + rolling + climb + brake + kinetic, to the residual. */
+/** A shift of gear that happened. Indices into the drive's gears. */
+export interface ShiftEvent {
+  /** [s], horizontal distance [m]. */
+  readonly time: number;
+  readonly distance: number;
+  readonly from: number;
+  readonly to: number;
+  /** The rider shifted: hold was off from here to `resumedAt` [s]; null: the gearbox shifted by itself. */
+  readonly resumedAt: number | null;
+}
+
+/** Energies over the whole run [J]. drive + regeneration = aero + rolling + climb + brake + kinetic + shifts, to the residual. */
 export interface Ledger {
   /** Work of the drive while it pushes (>= 0) and while it holds back (<= 0). */
   readonly drive: number;
@@ -70,8 +90,12 @@ export interface Ledger {
   readonly climb: number;
   readonly brake: number;
   readonly kinetic: number;
-  /** Drawn from battery where the drive has an efficiency; null where not. */
-  readonly battery: number | null;
+  /** Kinetic energy that shifts took out of what turns before the gear (or put in, negative): the clutch's part. */
+  readonly shifts: number;
+  /** Drawn from fuel or battery, where the drive has a source; null where not. */
+  readonly drawn: number | null;
+  /** Charge of the battery at the end, 0 to 1; null: no battery, or its capacity is not known. */
+  readonly chargeAtEnd: number | null;
   /** Sum of the terms over the sum of their magnitudes, taken stretch by stretch (at most a bin). */
   readonly residual: number;
 }
@@ -104,6 +128,8 @@ export interface FullSeries {
   readonly limit: Uint8Array;
   /** Index into the drive's gears. */
   readonly gear: Uint8Array;
+  /** Speed of the drive's shaft, in the unit of its law: [rad/s], or [m/s] for a drive without gears; 0 with the clutch open. */
+  readonly shaftSpeed: Float64Array;
   readonly driveForce: Float64Array;
   readonly brakeForce: Float64Array;
   readonly acceleration: Float64Array;

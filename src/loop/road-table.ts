@@ -1,7 +1,7 @@
 import type { Road } from '../road/road.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
 import { derateFactor } from '../vehicle/derating.ts';
-import type { Drive } from '../vehicle/vehicle.ts';
+import type { Drive } from '../vehicle/drive.ts';
 import {
   R_AIR,
   R_COS,

@@ -58,6 +58,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     bins: record.finish(),
     ledger: ledgerOf(machine, plan.vehicle),
     checkpoints,
+    shifts: [],
   };
 }
 

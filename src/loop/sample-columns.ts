@@ -24,6 +24,7 @@ const NUMBERS = [
   'proportional',
   'integral',
   'feedforward',
+  'shaftSpeed',
   'driveForce',
   'brakeForce',
   'acceleration',
@@ -84,9 +85,9 @@ export function sampleColumns(expected: number): SampleColumns {
     columns[8]![size] = s[BUS_PROPORTIONAL];
     columns[9]![size] = s[BUS_INTEGRAL];
     columns[10]![size] = s[BUS_FEEDFORWARD];
-    columns[11]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
-    columns[12]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
-    columns[13]![size] = chunk[at.C_ACCELERATION];
+    columns[12]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
+    columns[13]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
+    columns[14]![size] = chunk[at.C_ACCELERATION];
     limit[size] = limitBits(machine);
     gears[size] = gear;
     size += 1;

@@ -120,6 +120,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     candidates: results,
     demand,
     hills,
+    cycles: [],
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),
     requirements: findings,

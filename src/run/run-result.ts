@@ -5,7 +5,14 @@ import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
-import type { Demand, FigureValues, Hill, RequirementFinding, Segment } from '../study/findings.ts';
+import type {
+  Demand,
+  FigureValues,
+  Hill,
+  LimitCycle,
+  RequirementFinding,
+  Segment,
+} from '../study/findings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 
 /** Everything one run of a case found: what the report, the files and both programs read. Plain data. */
@@ -30,6 +37,8 @@ export interface RunResult {
   readonly candidates: readonly CandidateResult[];
   readonly demand: Demand;
   readonly hills: readonly Hill[];
+  /** Oscillations that loops sustain by themselves, by candidate and place. */
+  readonly cycles: readonly LimitCycle[];
   readonly segmentsBy: 'length' | 'terrain';
   readonly segments: readonly Segment[];
   readonly requirements: readonly RequirementFinding[];

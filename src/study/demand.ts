@@ -33,7 +33,7 @@ export function demandOf(
   road: Road,
   vehicle: Vehicle,
   hold: HoldPlan,
-  rider: RiderPlan = { brakesAbove: null },
+  rider: RiderPlan = { brakesAbove: null, shifts: [] },
 ): Demand {
   const course = nominalCourse(road, hold, vehicle);
   const { startSpeed, settling } = course;
@@ -77,6 +77,9 @@ export function demandOf(
     required,
     upper,
     lower,
+    grip: null,
+    gears: [{ upper, lower, share, shaftSpeed: setSpeed }],
+    gear: new Uint8Array(road.size),
     share,
     sustained,
     runaway,

@@ -25,8 +25,8 @@ export interface FigureRecord {
   readonly band: number | null;
   /** Of the hills that count. */
   readonly recoveries: readonly Recovery[];
-  /** From drive to battery; null where the drive has none. */
-  readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
+  /** What the drive lives on; null: not known. */
+  readonly source: 'fuel' | 'battery' | null;
   /** Of the whole run. */
   readonly ledgerResidual: number;
 }
@@ -130,17 +130,9 @@ export function worstRecovery({ recoveries }: FigureRecord): Measure {
 }
 
 export function batteryEnergy(record: FigureRecord): Measure {
-  const { bins, efficiency } = record;
-  if (efficiency === null) return placeless({ none: 'the drive has no efficiency' });
-  return driven(record, () =>
-    toWh(
-      sum(
-        record,
-        (i) =>
-          bins.driveWork[i] / efficiency.drive - Math.abs(bins.regenerationWork[i]) * efficiency.regeneration,
-      ),
-    ),
-  );
+  const { bins, source } = record;
+  if (source !== 'battery') return placeless({ none: 'the drive has no efficiency' });
+  return driven(record, () => toWh(sum(record, (i) => bins.drawn[i])));
 }
 
 /** Distance of a bin driven with the brake on: its length by share of time. */

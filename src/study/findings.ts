@@ -23,6 +23,12 @@ export interface Demand {
   /** Greatest and least wheel force there [N]: full throttle; closed throttle or full regeneration. */
   readonly upper: Float64Array;
   readonly lower: Float64Array;
+  /** Greatest wheel force that the grip of the driven wheel passes on [N], `upper` and `lower` kept within it; null: grip not known. */
+  readonly grip: Float64Array | null;
+  /** The same road in every gear, first gear first; one entry for a drive without gears. */
+  readonly gears: readonly GearDemand[];
+  /** Index of the gear that is engaged, or that the rider's plan has there, knot by knot; of an automatic gearbox the highest that holds, or the one that comes nearest. */
+  readonly gear: Uint8Array;
   /**
    * Share of the range in use: required / upper while the drive must push; minus required / lower while it must hold back.
    * Above 1: more than there is. Below -1: even the least force is too much. Limited to [-9.99, 9.99].
@@ -43,6 +49,15 @@ export interface Demand {
   readonly holdableShare: number;
   /** Where a change of set speed is being followed by the road's own reckoning (nominalCourse); candidates have their own. */
   readonly settling: readonly Stretch[];
+}
+
+/** Demand and authority in one gear, knot by knot [N]; see Demand. */
+export interface GearDemand {
+  readonly upper: Float64Array;
+  readonly lower: Float64Array;
+  readonly share: Float64Array;
+  /** Shaft speed at the set speed, in the unit of the drive's law. */
+  readonly shaftSpeed: Float64Array;
 }
 
 /** `rolling`: neither way on the whole; `level`: a stretch without height. */
@@ -84,7 +99,22 @@ export interface Hill {
   readonly sustainedSpeed: number;
   /** Shorter than the smoothing can resolve. */
   readonly unresolved: boolean;
+  /** Of a drive with gears; null: without. */
+  readonly gears: HillGears | null;
+  /** Braking that holds the set speed beside the least throttle: greatest power [W], energy over the hill [J]. */
+  readonly brakePower: number;
+  readonly brakeEnergy: number;
   readonly outcomes: readonly HillOutcome[];
+}
+
+/** Gears on a hill, indices into the drive's gears. */
+export interface HillGears {
+  /** Engaged at the place of greatest demand. */
+  readonly engaged: number;
+  /** Highest gear in which the demand stays in range all over the hill; null: none does. */
+  readonly needed: number | null;
+  /** Speed that each gear sustains at the place of greatest demand, first gear first [m/s]; 0: none. */
+  readonly sustained: readonly number[];
 }
 
 /** What one candidate did on a hill. */
@@ -112,14 +142,43 @@ export interface HillOutcome {
 
 export interface Remedy {
   readonly lever: 'set_speed' | 'power' | 'load' | 'gear';
+  /** Of the lever `gear`: where the rider changes down, horizontal distance [m]; null: nowhere, or another lever. */
+  readonly at?: number | null;
   /**
    * The value that holds and the next step that does not; {none} where the lever cannot help. Set speed [m/s], true or indicated as the plan has it; power at
-   * the wheel at the set speed under full throttle at sea level [W]; payload [kg].
+   * the wheel at the set speed under full throttle at sea level [W]; payload [kg]; gear, counted from 1.
    */
   readonly holds: Figure;
   readonly fails: Figure;
   /** One sentence with units. */
   readonly words: string;
+}
+
+/** Why a limit cycle runs. */
+export type CycleCause =
+  | 'slack'
+  | 'fuel_cut'
+  | 'pulse_counting'
+  | 'resolution'
+  | 'shifting'
+  | 'gains'
+  | 'unknown';
+
+/** An oscillation that a loop sustains by itself: found in the speed error, not asked for by the road. */
+export interface LimitCycle {
+  readonly candidate: string;
+  /** Horizontal distance [m]. */
+  readonly from: number;
+  readonly to: number;
+  /** [s], and how many of them were driven. */
+  readonly period: number;
+  readonly turns: number;
+  /** Half of peak to peak: speed [m/s], throttle. */
+  readonly speedAmplitude: number;
+  readonly throttleAmplitude: number;
+  readonly cause: CycleCause;
+  /** One sentence: what was taken away, and what was left of the amplitude. */
+  readonly why: string;
 }
 
 /** Part of the road, horizontal distances [m]. */

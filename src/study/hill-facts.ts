@@ -20,6 +20,14 @@ export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, numb
     if (Math.abs(demand.share[i]) > Math.abs(demand.share[extreme])) extreme = i;
   }
   const short = demand.share[extreme] >= 0;
+  let brakePower = 0;
+  let brakeEnergy = 0;
+  for (let i = cellOf(road.distance, from); i + 1 < road.size && road.distance[i] < to; i++) {
+    if (demand.brakePower[i] > brakePower) brakePower = demand.brakePower[i];
+    const time =
+      (2 * (road.station[i + 1] - road.station[i])) / (demand.setSpeed[i] + demand.setSpeed[i + 1]);
+    brakeEnergy += 0.5 * (demand.brakePower[i] + demand.brakePower[i + 1]) * time;
+  }
   return {
     number,
     kind,
@@ -34,6 +42,9 @@ export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, numb
     requiredForce: demand.required[extreme],
     availableForce: short ? demand.upper[extreme] : demand.lower[extreme],
     sustainedSpeed: short ? demand.sustained[extreme] : demand.runaway[extreme],
+    gears: null,
+    brakePower,
+    brakeEnergy,
     unresolved: road.smoothing !== null && length < road.smoothing.shortestHill,
   };
 }

@@ -1,6 +1,6 @@
 import type { LoopPlan } from '../loop/plan.ts';
+import type { Drive } from '../vehicle/drive.ts';
 import { CELL_SIZE } from '../vehicle/drive-law.ts';
-import type { Drive } from '../vehicle/vehicle.ts';
 
 /** The plan at another set speed [m/s]: lower ones of the plan stay, higher ones come down to it. */
 export function withSetSpeed(plan: LoopPlan, setSpeed: number): LoopPlan {

@@ -48,7 +48,7 @@ export function measureOver(
     bands: plan.bands,
     band: row.takesBand ? band : null,
     recoveries,
-    efficiency: plan.vehicle.drive.efficiency,
+    source: plan.vehicle.drive.source?.kind ?? null,
     ledgerResidual: result.ledger.residual,
   });
 }

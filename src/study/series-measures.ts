@@ -93,6 +93,7 @@ function pick(series: FullSeries, rows: readonly number[]): FullSeries {
     feedforward: numbers(series.feedforward),
     limit: bytes(series.limit),
     gear: bytes(series.gear),
+    shaftSpeed: numbers(series.shaftSpeed),
     driveForce: numbers(series.driveForce),
     brakeForce: numbers(series.brakeForce),
     acceleration: numbers(series.acceleration),

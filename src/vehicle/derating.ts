@@ -1,6 +1,6 @@
 import { pow } from '../numeric/elementary.ts';
 import { DRY_AIR_GAS_CONSTANT } from '../units/constants.ts';
-import type { Drive } from './vehicle.ts';
+import type { Drive } from './drive.ts';
 
 /** Range of the correction factor for which ISO 1585 vouches. */
 export const CORRECTION_RANGE = { least: 0.93, greatest: 1.07 } as const;

@@ -1,4 +1,4 @@
-import type { Drive } from './vehicle.ts';
+import type { Drive } from './drive.ts';
 
 /** Numbers a cell holds: a0, a1, b0, b1, b2, b3. */
 export const CELL_SIZE = 6;

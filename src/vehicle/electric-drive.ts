@@ -1,5 +1,7 @@
 import { checkSpec } from './check-spec.ts';
-import type { Drive } from './vehicle.ts';
+import type { Drive } from './drive.ts';
+import type { Battery } from './energy-source.ts';
+import { constantEfficiencyMap } from './power-map.ts';
 
 /** An electric drive known by its force and power at the wheel. */
 export interface ElectricDriveSpec {
@@ -20,7 +22,7 @@ export interface ElectricDriveSpec {
   /** First-order lag from throttle to force [s]. */
   readonly lag: number;
   /** Wheel energy over battery energy while driving, battery over wheel energy while regenerating, in (0, 1] and [0, 1]; null: no battery account. */
-  readonly efficiency: Drive['efficiency'];
+  readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
 }
 
 /**
@@ -46,6 +48,7 @@ export function electricDrive(spec: ElectricDriveSpec): Drive {
   const corners = [powerCorner, regenerationCorner, fadeSpeed].filter((v) => v > 0 && Number.isFinite(v));
   const edges = [...new Set(corners)].sort((a, b) => a - b);
   const cells: number[] = [];
+  const losses: number[] = [];
   for (let cell = 0; cell <= edges.length; cell++) {
     const from = cell === 0 ? 0 : edges[cell - 1]!;
     const fading = from < fadeSpeed;
@@ -55,33 +58,52 @@ export function electricDrive(spec: ElectricDriveSpec): Drive {
     const regeneration = from >= regenerationCorner ? [0, regenerationPower ?? 0] : [regenerationForce, 0];
     const [flat, hyperbolic] = regeneration as [number, number];
     // Fading multiplies by v / v_fade: constant becomes linear, 1 / v becomes constant.
-    cells.push(
-      a0,
-      a1,
+    const holding = [
       fading ? hyperbolic / fadeSpeed : flat,
       fading ? flat / fadeSpeed : 0,
       0,
       fading ? 0 : hyperbolic,
-    );
-    cells.push(a0, a1, (powerLimited ? 0 : peakForce) - a0, -a1, 0, powerLimited ? (peakPower ?? 0) : 0);
+    ];
+    const full = [powerLimited ? 0 : peakForce, 0, 0, powerLimited ? (peakPower ?? 0) : 0] as const;
+    cells.push(a0, a1, ...holding, a0, a1, full[0] - a0, -a1, 0, full[3]);
+    losses.push(0, 0, ...holding, 0, 0, ...full);
   }
   return {
     kind: 'electric',
     speedEdges: Float64Array.from(edges),
     throttleEdges: Float64Array.of(0),
     cells: Float64Array.from(cells),
+    losses: Float64Array.from(losses),
     gears: [{ ratio: 1, inertia: 0 }],
     gear: 0,
+    gearbox: { kind: 'fixed' },
+    belt: null,
     throttleMin: regenerationForce === 0 ? 0 : spec.throttleMin,
     throttleMax: 1,
     lag: spec.lag,
     derate: 'none',
     stallSpeed: 0,
-    efficiency: spec.efficiency,
+    idleSpeed: 0,
+    source: spec.efficiency === null ? null : batteryOf(spec.efficiency),
+    withoutFuelCut: null,
+    fuelCutBelow: 0,
     peakForce,
     peakPower,
     closedThrottleForce: drag,
     regenerationForce,
+  };
+}
+
+function batteryOf(efficiency: { readonly drive: number; readonly regeneration: number }): Battery {
+  return {
+    kind: 'battery',
+    map: constantEfficiencyMap(efficiency.drive, efficiency.regeneration),
+    capacity: null,
+    charge: 1,
+    reserve: 0,
+    sag: null,
+    acceptance: null,
+    heating: null,
   };
 }
 

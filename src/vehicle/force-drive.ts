@@ -1,5 +1,6 @@
 import { checkSpec } from './check-spec.ts';
-import type { Drive } from './vehicle.ts';
+import type { Drive } from './drive.ts';
+import { fullThrottleLosses } from './full-throttle-losses.ts';
 
 /** A drive known by its force and power at the wheel. */
 export interface ForceDriveSpec {
@@ -32,19 +33,26 @@ export function forceDrive(spec: ForceDriveSpec): Drive {
   const corner = peakPower === null || peakForce === 0 ? null : peakPower / peakForce;
   const belowCorner = [-closedThrottleForce, 0, peakForce + closedThrottleForce, 0, 0, 0];
   const aboveCorner = [-closedThrottleForce, 0, closedThrottleForce, 0, 0, peakPower ?? 0];
+  const cells = Float64Array.from(corner === null ? belowCorner : [...belowCorner, ...aboveCorner]);
   return {
     kind: 'force',
     speedEdges: Float64Array.from(corner === null ? [] : [corner]),
     throttleEdges: new Float64Array(0),
-    cells: Float64Array.from(corner === null ? belowCorner : [...belowCorner, ...aboveCorner]),
+    cells,
+    losses: fullThrottleLosses(cells),
     gears: [{ ratio: 1, inertia: 0 }],
     gear: 0,
+    gearbox: { kind: 'fixed' },
+    belt: null,
     throttleMin: 0,
     throttleMax: 1,
     lag,
     derate,
     stallSpeed: 0,
-    efficiency: null,
+    idleSpeed: 0,
+    source: null,
+    withoutFuelCut: null,
+    fuelCutBelow: 0,
     peakForce,
     peakPower,
     closedThrottleForce,

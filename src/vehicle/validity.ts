@@ -74,7 +74,7 @@ export function validityNotes(vehicle: Vehicle): readonly ValidityNote[] {
       words:
         'The electric drive keeps its envelope: state of charge, voltage, temperature and derating of motor and battery are left out, and regeneration never meets a full battery.',
     });
-  if (drive.efficiency !== null)
+  if (drive.source?.kind === 'battery')
     notes.push({
       code: 'constant-efficiency',
       words: 'Battery energy uses one constant efficiency for driving and one for regeneration.',

@@ -1,3 +1,5 @@
+import type { Drive } from './drive.ts';
+
 /** A vehicle as the loop sees it: SI, defaults filled in, one drive law. */
 export interface Vehicle {
   readonly name: string;
@@ -11,6 +13,8 @@ export interface Vehicle {
   readonly drive: Drive;
   readonly actuator: Actuator;
   readonly sensor: SpeedSensor;
+  /** Grip of the driven wheel; null: not known, not checked. */
+  readonly traction: Traction | null;
 }
 
 /**
@@ -31,66 +35,56 @@ export interface RoadLoad {
 }
 
 /**
- * The one drive law. In each cell of shaft speed w [rad/s, or m/s for a drive without gears] and throttle x
- *   T = a0 + a1 w + x (b0 + b1 w + b2 w^2 + b3 / w),
- * wheel force F = ratio T, w = ratio v. A drive is a compiler to these cells; the loop never calls it back.
- *
- * `cells` holds six numbers [a0, a1, b0, b1, b2, b3] a cell, row by row: cell (i, j) stands at
- * 6 (i nThrottle + j), i over shaft speed, j over throttle. Edges increase; outside of them the outer cell holds.
- * With altitude derating d, the force above the closed-throttle line is scaled: see `derate`.
+ * Command to throttle, in this order: dead time, steps of the resolution, end stops, first-order lag with a rate limit,
+ * slack. The throttle behind the slack is what the drive gets.
  */
-export interface Drive {
-  readonly kind: 'force' | 'electric' | 'engine' | 'variator';
-  /** Inner edges between shaft-speed cells, increasing; n cells have n - 1 edges. */
-  readonly speedEdges: Float64Array;
-  /** Inner edges between throttle cells, increasing. */
-  readonly throttleEdges: Float64Array;
-  readonly cells: Float64Array;
-  readonly gears: readonly Gear[];
-  /** Gear that is engaged, index into `gears`. */
-  readonly gear: number;
-  /** Range of the command: [0, 1], or down to -1 for a drive that regenerates. */
-  readonly throttleMin: number;
-  readonly throttleMax: number;
-  /** First-order lag from throttle to force [s]. */
-  readonly lag: number;
-  /**
-   * Altitude derating: with factor d <= 1 at this place, T = a + x (d (b + a) - a), a = a0 + a1 w, b = b0 + ... + b3 / w:
-   * the full-throttle torque is d times its sea-level value and the closed-throttle torque is unchanged.
-   */
-  readonly derate: 'none' | 'naturally_aspirated';
-  /** Wheel speed below which the gear cannot turn: the run ends `stalled` [m/s]; 0: never. */
-  readonly stallSpeed: number;
-  /** Battery or fuel side, for the energy account; null: wheel energy only. */
-  readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
-  /** For words and causes: full-throttle force below the power limit [N], power limit [W] or null, force at closed throttle [N, positive slows], strongest regeneration [N]. */
-  readonly peakForce: number;
-  readonly peakPower: number | null;
-  readonly closedThrottleForce: number;
-  readonly regenerationForce: number;
-}
-
-export interface Gear {
-  /** w / v. */
-  readonly ratio: number;
-  /** Equivalent mass of what turns before the gear [kg]. */
-  readonly inertia: number;
-}
-
-/** Command to throttle: first-order lag, rate limit. */
 export interface Actuator {
+  /** From command to the first movement [s]. */
+  readonly deadTime: number;
+  /** Step to whose multiples the command is rounded; 0: none. */
+  readonly resolution: number;
+  /** End stops of the throttle: within the drive's range. */
+  readonly travel: { readonly least: number; readonly greatest: number } | null;
   /** [s] */
   readonly lag: number;
   /** [1/s]; null: no limit. */
   readonly rateLimit: number | null;
+  /** Full width of the lost motion, in throttle: the play operator out = min(max(out, y - slack / 2), y + slack / 2); 0: none. */
+  readonly slack: number;
 }
 
-/** True speed to measured speed: scale error, first-order filter, transport delay. */
+/** True speed to measured speed: pulses (or none), scale error, noise, first-order filter, transport delay. */
 export interface SpeedSensor {
+  /** Toothed wheel; null: the speed itself is seen. */
+  readonly pulses: Pulses | null;
+  /** measured = (1 + scaleError) true. */
+  readonly scaleError: number;
+  /** White noise on each sample; null: none. */
+  readonly noise: { readonly sd: number; readonly seed: number } | null;
   /** [s] */
   readonly filter: number;
   /** [s] */
   readonly delay: number;
-  /** measured = (1 + scaleError) true. */
-  readonly scaleError: number;
+}
+
+/** Pulses of a toothed wheel: counted in a window [s], or the last period timed by a clock of a resolution [s]. */
+export interface Pulses {
+  /** Way of the vehicle between two pulses [m]: circumference over pulses a turn. */
+  readonly spacing: number;
+  readonly reading:
+    | { readonly kind: 'counted'; readonly window: number }
+    | { readonly kind: 'timed'; readonly clock: number };
+}
+
+/**
+ * Grip of the driven wheel with load transfer. With wheelbase p, distance b of the centre of mass from the contact of
+ * the driven rear wheel and its height h, a force F at the wheel loads it by N = m g cos(theta) (p - b) / p + F h / p.
+ */
+export interface Traction {
+  /** Greatest coefficient of friction, as the road is: dry or wet. */
+  readonly friction: number;
+  /** [m] */
+  readonly wheelbase: number;
+  readonly massCentreAhead: number;
+  readonly massCentreHeight: number;
 }

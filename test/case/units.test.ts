@@ -1,4 +1,5 @@
 // Every expected figure is worked out by hand, in the comment beside it.
+
 import { expect, it } from 'vitest';
 import { candidatesOf } from '../../src/case/candidates-of.ts';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
@@ -16,6 +17,7 @@ import {
 import { vehicleOf } from '../../src/case/vehicle-of.ts';
 import type { PiSetup } from '../../src/control/setup.ts';
 import type { InputError } from '../../src/problems/input-error.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { expectClose } from '../compare.ts';
 
 const VEHICLE = `
@@ -76,8 +78,8 @@ it('brings the vehicle to SI', () => {
     closedThrottleForce: 40,
     lag: 0.15,
   });
-  expect(vehicle.actuator).toEqual({ lag: 0.06, rateLimit: 4 });
-  expect(vehicle.sensor).toEqual({ filter: 0.05, delay: 0.02, scaleError: -0.03 });
+  expect(vehicle.actuator).toEqual({ ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: 4 });
+  expect(vehicle.sensor).toEqual({ ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: -0.03 });
 });
 
 it('brings coefficients, yaw tables and an electric drive to SI', () => {
@@ -100,8 +102,8 @@ drive: {kind: electric, peak_force_n: 400, regeneration_force_n: 90, regeneratio
     peakPower: null,
     regenerationForce: 90,
   });
-  expectClose(electric.drive.efficiency?.drive ?? 0, 0.88, 1e-15);
-  expectClose(electric.drive.efficiency?.regeneration ?? 0, 0.7, 1e-15);
+  // Power drawn for 1 W out of the shaft, and for 1 W into it.
+  expectClose(electric.drive.source?.map.power ?? [], [0, 0, 0, -0.7, 0, 1 / 0.88], 1e-15);
   expectClose(electric.drive.speedEdges, [2.5, 1500 / 90], 1e-12); // 9 km/h; 1.5 kW over 90 N
 });
 

@@ -3,6 +3,7 @@ import { designDroop } from '../../src/control/design-droop.ts';
 import type { DesignPoint } from '../../src/control/design-point.ts';
 import { InputError } from '../../src/problems/input-error.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { roadLoadOfRegulation } from '../../src/vehicle/road-load.ts';
 import { expectClose } from '../compare.ts';
 import { referenceMotorcycle, still } from '../vehicle/vehicles.ts';
@@ -70,8 +71,8 @@ describe('designDroop', () => {
         lag: 0.15,
         derate: 'none',
       }),
-      actuator: { lag: 0.06, rateLimit: null },
-      sensor: { filter: 0.05, delay: 0.02, scaleError: 0.01 },
+      actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: null },
+      sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: 0.01 },
     }),
     sample: 0.02,
     computingDelay: 0.005,

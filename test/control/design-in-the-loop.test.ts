@@ -1,4 +1,5 @@
 // What is designed on the linear loop comes out of the replay: nonlinear vehicle, sampled controller, all lags.
+
 import { describe, expect, test } from 'vitest';
 import { designDroop } from '../../src/control/design-droop.ts';
 import type { Designed, DesignPoint } from '../../src/control/design-point.ts';
@@ -8,6 +9,7 @@ import { replay } from '../../src/loop/replay.ts';
 import type { Road } from '../../src/road/road.ts';
 import { electricDrive } from '../../src/vehicle/electric-drive.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { referenceMotorcycle, still } from '../vehicle/vehicles.ts';
@@ -15,8 +17,8 @@ import { referenceMotorcycle, still } from '../vehicle/vehicles.ts';
 const motorcycle: Vehicle = referenceMotorcycle({
   rotatingMass: 9,
   drive: forceDrive({ peakForce: 900, peakPower: null, closedThrottleForce: 60, lag: 0.15, derate: 'none' }),
-  actuator: { lag: 0.06, rateLimit: 8 },
-  sensor: { filter: 0.05, delay: 0.02, scaleError: 0.015 },
+  actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: 8 },
+  sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: 0.015 },
 });
 // Above its corner speed of 9.4 m/s the drive's force falls with speed: part of the plant's own damping.
 const scooter: Vehicle = referenceMotorcycle({
@@ -32,8 +34,8 @@ const scooter: Vehicle = referenceMotorcycle({
     lag: 0.05,
     efficiency: null,
   }),
-  actuator: { lag: 0, rateLimit: null },
-  sensor: { filter: 0.1, delay: 0.137, scaleError: 0 },
+  actuator: { ...IDEAL_ACTUATOR, lag: 0, rateLimit: null },
+  sensor: { ...IDEAL_SENSOR, filter: 0.1, delay: 0.137, scaleError: 0 },
 });
 
 const point = (vehicle: Vehicle, at: number, change: Partial<DesignPoint> = {}): DesignPoint => ({
@@ -114,7 +116,7 @@ function deviation(
           ? []
           : [{ at: { time: start }, setSpeed: shown * (at.at + setSpeedStep), ramp: null }],
     },
-    rider: { brakesAbove: null },
+    rider: { brakesAbove: null, shifts: [] },
     scheme: 'exact',
     bands: [],
     bin: 100,

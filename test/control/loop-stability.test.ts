@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { loopStability, stabilityOf } from '../../src/control/loop-stability.ts';
 import { sampledLoop } from '../../src/control/sampled-loop.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { LinearVehicle } from '../../src/vehicle/linearise.ts';
 import { stillAndLevel } from '../../src/vehicle/surroundings.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
@@ -33,9 +34,9 @@ const withLags = (actuator: number, drive: number, delay = 0): Vehicle => {
   const plain = referenceMotorcycle();
   return {
     ...plain,
-    actuator: { lag: actuator, rateLimit: null },
+    actuator: { ...IDEAL_ACTUATOR, lag: actuator, rateLimit: null },
     drive: { ...plain.drive, lag: drive },
-    sensor: { filter: 0, delay, scaleError: 0 },
+    sensor: { ...IDEAL_SENSOR, filter: 0, delay, scaleError: 0 },
   };
 };
 const timing = { sample: 0.1, computingDelay: 0, integration: 'forward' } as const;

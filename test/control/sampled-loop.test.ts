@@ -11,6 +11,7 @@ import {
   sizeOfComplex,
   subtractComplex,
 } from '../../src/numeric/complex.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { LinearVehicle } from '../../src/vehicle/linearise.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
@@ -51,9 +52,9 @@ const withLags = (actuator: number, drive: number, filter: number, delay: number
   const plain = referenceMotorcycle();
   return {
     ...plain,
-    actuator: { lag: actuator, rateLimit: null },
+    actuator: { ...IDEAL_ACTUATOR, lag: actuator, rateLimit: null },
     drive: { ...plain.drive, lag: drive },
-    sensor: { filter, delay, scaleError: 0 },
+    sensor: { ...IDEAL_SENSOR, filter, delay, scaleError: 0 },
   };
 };
 const CASES: [string, Vehicle, number, { kp: number; ki: number }, number][] = [

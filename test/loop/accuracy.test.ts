@@ -3,6 +3,7 @@ import type { PiSetup } from '../../src/control/setup.ts';
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import { replay } from '../../src/loop/replay.ts';
 import type { Road } from '../../src/road/road.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { fineSpeeds } from './fine-solver.ts';
 import { forceOf, laggedVehicle, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
@@ -39,10 +40,13 @@ const worst = (plan: LoopPlan, fine: readonly number[]): number => {
 
 const plain: Vehicle = {
   ...laggedVehicle,
-  actuator: { lag: 0, rateLimit: null },
-  sensor: { filter: 0, delay: 0, scaleError: 0 },
+  actuator: { ...IDEAL_ACTUATOR, lag: 0, rateLimit: null },
+  sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0 },
 };
-const filtered: Vehicle = { ...laggedVehicle, sensor: { filter: 0.05, delay: 0, scaleError: 0 } };
+const filtered: Vehicle = {
+  ...laggedVehicle,
+  sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0, scaleError: 0 },
+};
 
 describe('error of speed at 50 Hz against a solver with steps of 1e-4 s', () => {
   const scenes: readonly [string, Road, Vehicle][] = [
@@ -101,7 +105,7 @@ test('with the air from behind, where the drag area is that of the largest yaw',
 
 test('with the brake of the rider, whose onset is a kink that is not cut', () => {
   const road = roadOver(stations(2500, 10), { grade: (s) => -0.07 - 0.07 * Math.sin(s / 170) });
-  const plan = planOver(road, plain, { rider: { brakesAbove: 1 } });
+  const plan = planOver(road, plain, { rider: { brakesAbove: 1, shifts: [] } });
   const fine = fineSpeeds(plan, 1e-4);
   expect(worst(plan, fine)).toBeLessThan(2e-5);
   expect(worst({ ...plan, scheme: 'fast' }, fine)).toBeLessThan(1e-4);
@@ -111,7 +115,7 @@ test('the rider holds the same overspeed whatever the sample time', () => {
   const road = roadOver(stations(2500, 10), { grade: () => -0.14 });
   for (const scheme of ['exact', 'fast'] as const)
     for (const sample of [0.02, 0.5, 2]) {
-      const plan = planOver(road, plain, { scheme, rider: { brakesAbove: 1 } });
+      const plan = planOver(road, plain, { scheme, rider: { brakesAbove: 1, shifts: [] } });
       const slow: LoopPlan = { ...plan, controller: { ...(plan.controller as PiSetup), sample } };
       const { series } = replay(slow, { settledAt: 0 }, 2400);
       expect(Math.abs(Math.max(...series.speed) - plan.hold.setSpeed - 1)).toBeLessThan(2e-3);

@@ -1,6 +1,7 @@
 import { describe, test } from 'vitest';
 import { type ContinuousCommand, solveContinuous } from '../../src/loop/continuous.ts';
-import type { Drive, Vehicle } from '../../src/vehicle/vehicle.ts';
+import type { Drive } from '../../src/vehicle/drive.ts';
+import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { readReference } from '../read-reference.ts';
 import { feetOf, raisedCosines, type WrittenHill } from './raised-cosines.ts';

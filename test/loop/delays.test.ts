@@ -2,6 +2,7 @@ import { describe, expect, test } from 'vitest';
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import { replay } from '../../src/loop/replay.ts';
 import type { FullSeries } from '../../src/loop/result.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { SpeedSensor, Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { forceOf, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
@@ -11,7 +12,7 @@ const run = (sensor: Partial<SpeedSensor>, more: Partial<LoopPlan> = {}): FullSe
   replay(
     planOver(
       road,
-      { ...referenceMotorcycle, sensor: { filter: 0, delay: 0, scaleError: 0, ...sensor } },
+      { ...referenceMotorcycle, sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0, ...sensor } },
       more,
     ),
     { settledAt: 0 },
@@ -52,7 +53,7 @@ describe.each(['exact', 'fast'] as const)('measured speed by the %s scheme', (sc
       sensorDelay: number,
       at: { time: number } | { distance: number },
     ) => {
-      const sensor = { filter: 0, delay: sensorDelay, scaleError: 0 };
+      const sensor = { ...IDEAL_SENSOR, filter: 0, delay: sensorDelay, scaleError: 0 };
       const plan = planOver(level, { ...referenceMotorcycle, sensor }, { scheme });
       const controller = { ...plan.controller, computingDelay, setpointWeight: 1 } as LoopPlan['controller'];
       const changed = { ...hold, changes: [{ at, setSpeed: 18, ramp: null }] };
@@ -97,7 +98,7 @@ describe('lags of actuator and drive', () => {
     const vehicle: Vehicle = {
       ...referenceMotorcycle,
       drive: forceOf({ peakForce: 900, lag: td }),
-      actuator: { lag: ta, rateLimit },
+      actuator: { ...IDEAL_ACTUATOR, lag: ta, rateLimit },
     };
     // Locked level for 17 m/s, then for 25 m/s from the first second: a step of the command.
     return replay(

@@ -4,7 +4,10 @@ import type { ControllerSetup } from '../../src/control/setup.ts';
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import { replay } from '../../src/loop/replay.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
-import type { Drive, Vehicle } from '../../src/vehicle/vehicle.ts';
+import type { Drive } from '../../src/vehicle/drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
+import { constantEfficiencyMap } from '../../src/vehicle/power-map.ts';
+import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { forceOf, planOver, roadOver } from './scenes.ts';
 
 const number = (min: number, max: number): fc.Arbitrary<number> => fc.double({ min, max, noNaN: true });
@@ -57,7 +60,16 @@ function electric(peak: number, power: number, regeneration: number, lag: number
     throttleEdges: Float64Array.of(0),
     cells: Float64Array.from(cells.flat()),
     throttleMin: -1,
-    efficiency: { drive: 0.85, regeneration: 0.6 },
+    source: {
+      kind: 'battery' as const,
+      map: constantEfficiencyMap(0.85, 0.6),
+      capacity: null,
+      charge: 1,
+      reserve: 0,
+      sag: null,
+      acceptance: null,
+      heating: null,
+    },
   };
 }
 
@@ -89,8 +101,9 @@ const vehicle: fc.Arbitrary<Vehicle> = fc
     drive: v.battery
       ? electric(v.peak, v.power, v.hold, v.lag)
       : forceOf({ peakForce: v.peak, peakPower: v.power, closedThrottleForce: v.hold, lag: v.lag }),
-    actuator: { lag: v.actuatorLag, rateLimit: v.rateLimit },
-    sensor: { filter: v.filter, delay: v.delay, scaleError: 0 },
+    actuator: { ...IDEAL_ACTUATOR, lag: v.actuatorLag, rateLimit: v.rateLimit },
+    sensor: { ...IDEAL_SENSOR, filter: v.filter, delay: v.delay, scaleError: 0 },
+    traction: null,
   }));
 
 const controller: fc.Arbitrary<ControllerSetup> = fc.oneof(
@@ -134,7 +147,7 @@ const plan: fc.Arbitrary<LoopPlan> = fc
         startSpeed: r.speed,
         changes: [{ at: { distance: 80 }, setSpeed: r.speed + 1, ramp: null }],
       },
-      rider: { brakesAbove: r.brakes },
+      rider: { brakesAbove: r.brakes, shifts: [] },
       scheme: r.scheme,
       bin: 25,
       timeLimit: 900,

@@ -20,7 +20,7 @@ const hold = {
 } as const;
 
 describe.each(['exact', 'fast'] as const)('replay by the %s scheme', (scheme) => {
-  const plan = planOver(road, laggedVehicle, { scheme, hold, rider: { brakesAbove: 1 } });
+  const plan = planOver(road, laggedVehicle, { scheme, hold, rider: { brakesAbove: 1, shifts: [] } });
   const result = runLoop(plan);
   const whole = replay(plan, result.checkpoints[0]!, 1e9).series;
 

@@ -5,6 +5,7 @@ import { replay } from '../../src/loop/replay.ts';
 import type { LoopResult } from '../../src/loop/result.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
 import { InputError } from '../../src/problems/input-error.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { forceOf, laggedVehicle, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
@@ -153,7 +154,7 @@ describe('limits', () => {
     const road = roadOver(stations(3000, 10), {
       grade: (s) => (s > 500 && s < 1000 ? 0.16 : s > 1800 && s < 2300 ? -0.16 : 0),
     });
-    const vehicle = { ...laggedVehicle, actuator: { lag: 0.06, rateLimit: 0.05 } };
+    const vehicle = { ...laggedVehicle, actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: 0.05 } };
     const plan = planOver(road, vehicle, { scheme });
     const { bins } = runLoop(plan);
     const bits = replay(plan, { settledAt: 0 }, 1e9).series.limit;
@@ -167,7 +168,7 @@ describe('limits', () => {
 
   test.each(schemes)('the rider holds the overspeed, and the brake has its own account (%s)', (scheme) => {
     const road = roadOver(stations(3000, 10), { grade: (s) => (s > 500 && s < 2500 ? -0.15 : 0) });
-    const plan = planOver(road, laggedVehicle, { scheme, rider: { brakesAbove: 2 } });
+    const plan = planOver(road, laggedVehicle, { scheme, rider: { brakesAbove: 2, shifts: [] } });
     const result = runLoop(plan);
     expect(result.status).toBe('completed');
     expect(Math.max(...result.bins.speedMax)).toBeLessThan(19.001);
@@ -249,7 +250,10 @@ describe('set speed', () => {
   });
 
   test.each(['true_speed', 'indicated'] as const)('a scale error of 3 %% under %s', (setSpeedIs) => {
-    const vehicle = { ...referenceMotorcycle, sensor: { filter: 0, delay: 0, scaleError: 0.03 } };
+    const vehicle = {
+      ...referenceMotorcycle,
+      sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0.03 },
+    };
     const plan = planOver(flat, vehicle, {
       hold: { setSpeed: 17, setSpeedIs, startSpeed: 17, changes: [] },
     });

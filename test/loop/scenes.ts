@@ -1,7 +1,10 @@
 // Roads, vehicles and plans of the loop's tests, as plain objects: nothing here is computed by the code under test.
+
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import type { Road } from '../../src/road/road.ts';
-import type { Drive, Vehicle } from '../../src/vehicle/vehicle.ts';
+import type { Drive } from '../../src/vehicle/drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
+import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 
 /** What a scene's road carries at a station. */
 export interface Along {
@@ -75,19 +78,27 @@ interface DriveScene {
 export function forceOf({ peakForce, peakPower, closedThrottleForce = 0, lag = 0 }: DriveScene): Drive {
   const below = [-closedThrottleForce, 0, peakForce + closedThrottleForce, 0, 0, 0];
   const above = [-closedThrottleForce, 0, closedThrottleForce, 0, 0, peakPower ?? 0];
+  const lossBelow = [0, 0, peakForce, 0, 0, 0];
+  const lossAbove = [0, 0, 0, 0, 0, peakPower ?? 0];
   return {
     kind: 'force',
     speedEdges: Float64Array.from(peakPower === undefined ? [] : [peakPower / peakForce]),
     throttleEdges: new Float64Array(0),
     cells: Float64Array.from(peakPower === undefined ? below : [...below, ...above]),
+    losses: Float64Array.from(peakPower === undefined ? lossBelow : [...lossBelow, ...lossAbove]),
     gears: [{ ratio: 1, inertia: 0 }],
     gear: 0,
+    gearbox: { kind: 'fixed' },
+    belt: null,
     throttleMin: 0,
     throttleMax: 1,
     lag,
     derate: 'none',
     stallSpeed: 0,
-    efficiency: null,
+    idleSpeed: 0,
+    source: null,
+    withoutFuelCut: null,
+    fuelCutBelow: 0,
     peakForce,
     peakPower: peakPower ?? null,
     closedThrottleForce,
@@ -103,8 +114,9 @@ export const referenceMotorcycle: Vehicle = {
   rotatingMass: 0,
   roadLoad: { cda: 0.6, yawGain: 0, yawTable: null, c0: 0.015, c1: 0, c2: 0 },
   drive: forceOf({ peakForce: 900, lag: 0.25 }),
-  actuator: { lag: 0, rateLimit: null },
-  sensor: { filter: 0, delay: 0, scaleError: 0 },
+  actuator: { ...IDEAL_ACTUATOR, lag: 0, rateLimit: null },
+  sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0 },
+  traction: null,
 };
 
 /** A light motorcycle with every lag, a power limit and closed-throttle drag. Invented. */
@@ -115,8 +127,9 @@ export const laggedVehicle: Vehicle = {
   rotatingMass: 9,
   roadLoad: { cda: 0.58, yawGain: 1, yawTable: null, c0: 0.012, c1: 1e-5, c2: 1e-6 },
   drive: forceOf({ peakForce: 400, peakPower: 6500, closedThrottleForce: 40, lag: 0.15 }),
-  actuator: { lag: 0.06, rateLimit: 2 },
-  sensor: { filter: 0.05, delay: 0.02, scaleError: 0 },
+  actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: 2 },
+  sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: 0 },
+  traction: null,
 };
 
 /** A plan around a road: PI at 50 Hz unless something else is said. */
@@ -137,7 +150,7 @@ export function planOver(road: Road, vehicle: Vehicle, more: Partial<LoopPlan> =
       design: null,
     },
     hold: { setSpeed: 17, setSpeedIs: 'true_speed', startSpeed: 17, changes: [] },
-    rider: { brakesAbove: null },
+    rider: { brakesAbove: null, shifts: [] },
     scheme: 'exact',
     bands: [0.5],
     bin: 50,

@@ -77,6 +77,10 @@ export function fixtureRun(
     driveWork: column(),
     regenerationWork: column(),
     brakeWork: column(),
+    driveForceMax: column(),
+    driveForceMin: column(),
+    timeShift: column(),
+    drawn: column(),
   };
   const ledger = { drive: 0, regeneration: 0, aero: 0, rolling: 0, climb: 0, brake: 0, kinetic: 0 };
   const rows: number[][] = [];
@@ -175,11 +179,18 @@ export function fixtureRun(
     feedforward: zero,
     limit: new Uint8Array(rows.length),
     gear: new Uint8Array(rows.length),
+    shaftSpeed: all(5).fill(0),
     driveForce: all(5),
     brakeForce: all(6),
     acceleration: all(7),
   };
-  return { bins, ledger: { ...ledger, battery: null, residual: 3e-9 }, series, endTime: t, endDistance: x };
+  return {
+    bins,
+    ledger: { ...ledger, shifts: 0, drawn: null, chargeAtEnd: null, residual: 3e-9 },
+    series,
+    endTime: t,
+    endDistance: x,
+  };
 }
 
 /** Every so many rows of a series between two times. */
@@ -204,6 +215,7 @@ export function cutSeries(series: FullSeries, from: number, to: number, most: nu
     feedforward: pick(series.feedforward),
     limit: new Uint8Array(rows.length),
     gear: new Uint8Array(rows.length),
+    shaftSpeed: pick(series.shaftSpeed),
     driveForce: pick(series.driveForce),
     brakeForce: pick(series.brakeForce),
     acceleration: pick(series.acceleration),

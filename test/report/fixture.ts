@@ -11,6 +11,7 @@ import type {
   Segment,
 } from '../../src/study/findings.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { fixtureRoad } from './fixture-road.ts';
 import { cutSeries, type FixtureRun, fixtureRun, forcesAt, PLANT } from './fixture-run.ts';
 
@@ -71,6 +72,7 @@ export function fixtureResult(wish: FixtureWish = {}): RunResult {
         bins: run.bins,
         ledger: run.ledger,
         checkpoints: [],
+        shifts: [],
       },
       figures: figuresOf(run),
       loop:
@@ -106,16 +108,18 @@ export function fixtureResult(wish: FixtureWish = {}): RunResult {
         lag: 0.15,
         derate: 'naturally_aspirated',
       }),
-      actuator: { lag: 0.06, rateLimit: 8 },
-      sensor: { filter: 0.05, delay: 0.02, scaleError: 0 },
+      actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: 8 },
+      sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: 0 },
+      traction: null,
     },
     hold: { setSpeed: SET, setSpeedIs: 'true_speed', startSpeed: SET, changes: [] },
-    rider: { brakesAbove: PLANT.brakeAbove },
+    rider: { brakesAbove: PLANT.brakeAbove, shifts: [] },
     scheme: 'exact',
     band: BAND,
     candidates,
     demand,
     hills,
+    cycles: [],
     segmentsBy: 'length',
     segments: segmentsOf(road, setups, runs),
     requirements: requirementsOf(wish.requirements ?? 'missed', designs),
@@ -163,6 +167,9 @@ function demandOf(road: Road): Demand {
     required,
     upper,
     lower,
+    grip: null,
+    gears: [{ upper, lower, share, shaftSpeed: column() }],
+    gear: new Uint8Array(road.size),
     share,
     sustained: set,
     runaway: set,
@@ -235,6 +242,9 @@ function hillsOf(
       requiredForce: demand.required[worst]!,
       availableForce: up ? demand.upper[worst]! : demand.lower[worst]!,
       sustainedSpeed: up ? SET * 0.7 : SET * 1.4,
+      gears: null,
+      brakePower: 0,
+      brakeEnergy: 0,
       unresolved: last - first < 29,
       outcomes: setups.flatMap((setup, k) =>
         outcomeOf(setup, runs[k]!, road.distance[first]!, road.distance[last]!, up),

@@ -43,10 +43,12 @@ describe('the report', () => {
         /At 50 Hz [^.]*\.?\d?[^.]*\./,
       )![0];
     expect(told({ scheme: 'exact' })).toMatch(/1\.4 × 10⁻⁶ m\/s.*2 × 10⁻⁵ m\/s where the rider brakes/);
-    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null } })).toContain(
+    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null, shifts: [] } })).toContain(
       'within 2 × 10⁻⁸ m/s',
     );
-    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null } })).not.toContain('brakes');
+    expect(told({ scheme: 'exact', road: still, rider: { brakesAbove: null, shifts: [] } })).not.toContain(
+      'brakes',
+    );
     expect(told({ scheme: 'fast' })).toMatch(/2 × 10⁻⁵ m\/s.*10⁻⁴ m\/s where the rider brakes/);
   });
 

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { demandOf, demandShare } from '../../src/study/demand.ts';
 import { nominalCourse, setSpeedAt } from '../../src/study/hold-course.ts';
+import { IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
 import { HOLD_60, vehicleOf } from './vehicle-of.ts';
@@ -114,7 +115,7 @@ describe('demand along the road', () => {
 
   it('turns an indicated set speed into the true one', () => {
     const road = roadOf([{ length: 100, grade: 0 }]);
-    const vehicle = { sensor: { filter: 0, delay: 0, scaleError: 0.02 } };
+    const vehicle = { sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0.02 } };
     const course = nominalCourse(road, { ...HOLD_60, setSpeed: 20.4, setSpeedIs: 'indicated' }, vehicle);
     expectClose(setSpeedAt(road, course)[0]!, 20, 1e-12);
   });

@@ -32,6 +32,7 @@ const BINS = recordOf(
       driveWork: [3600, 7200, 18000, 0][i]!,
       regenerationWork: i === 3 ? -1800 : 0,
       brakeWork: i === 3 ? 900 : 0,
+      drawn: [4500, 9000, 22500, -1080][i]!,
     };
   }),
   2,
@@ -45,7 +46,7 @@ const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecor
   bands: [1.5, 2.5],
   band: 1.5,
   recoveries: [],
-  efficiency: null,
+  source: null,
   ledgerResidual: -3e-9,
   ...more,
 });
@@ -109,8 +110,8 @@ describe('figures of a record worked out by hand', () => {
     expectClose(value('brake_distance_m'), 50, 1e-12);
     expectClose(value('ledger_residual'), 3e-9, 1e-24);
     expectClose(
-      value('battery_energy_wh', record([1, 1, 1, 1], { efficiency: { drive: 0.8, regeneration: 0.6 } })),
-      8 / 0.8 - 0.5 * 0.6,
+      value('battery_energy_wh', record([1, 1, 1, 1], { source: 'battery' })),
+      (4500 + 9000 + 22500 - 1080) / 3600,
       1e-12,
     );
   });
@@ -140,7 +141,7 @@ describe('figures of a record worked out by hand', () => {
   });
 
   it('do not exist where nothing was driven, and are never NaN', () => {
-    const nowhere = record([0, 0, 0, 0], { efficiency: { drive: 0.8, regeneration: 0.6 } });
+    const nowhere = record([0, 0, 0, 0], { source: 'battery' });
     for (const row of FIGURES) {
       const { value: found } = row.measure(nowhere);
       if (row.weight !== 'event' || row.name.startsWith('worst'))

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { LoopPlan } from '../../src/loop/plan.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
 import { oneHill, outcomeOn, STIFF, study } from './scene.ts';
@@ -37,7 +38,7 @@ describe('the cause of a hill', () => {
   });
 
   it('says where the brake of the rider kept the error from growing', () => {
-    const braked = planOf(oneHill(-0.1), vehicleOf(), STIFF, { rider: { brakesAbove: 3 / 3.6 } });
+    const braked = planOf(oneHill(-0.1), vehicleOf(), STIFF, { rider: { brakesAbove: 3 / 3.6, shifts: [] } });
     const { outcome } = firstOutcome(braked);
     expect(outcome.cause).toBe('closed_throttle');
     expect(outcome.why).toMatch(/rider's brake, on for \d+(\.\d)? s at 3\.0 km\/h above the set speed/);
@@ -136,8 +137,8 @@ describe('what a candidate did on a hill', () => {
         c0: 0,
         drive: { peakForce: 1000, closedThrottleForce: 0, lag: 0 },
       }),
-      actuator: { lag: 0, rateLimit: null },
-      sensor: { filter: 0, delay: 0, scaleError: 0 },
+      actuator: { ...IDEAL_ACTUATOR, lag: 0, rateLimit: null },
+      sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0 },
     };
     const [kp, ki] = [0.1, 0.03];
     const controller = piOf({ kp, ki, setpointWeight: 1 });
@@ -164,7 +165,7 @@ describe('what a candidate did on a hill', () => {
 
   it('is windup where a throttle closed for a long descent is paid for behind it', () => {
     const plain = piOf({ kp: 0.4, ki: 0.08, antiWindup: { kind: 'none' } });
-    const plan = planOf(oneHill(-0.1), vehicleOf(), plain, { rider: { brakesAbove: 8 / 3.6 } });
+    const plan = planOf(oneHill(-0.1), vehicleOf(), plain, { rider: { brakesAbove: 8 / 3.6, shifts: [] } });
     const { outcome } = firstOutcome(plan);
     expect(outcome.speedChange).toBeLessThan(-8 / 3.6);
     expect(outcome.cause).toBe('windup');
@@ -303,7 +304,7 @@ describe('hills of any road', () => {
         locked: planOf(road, vehicle, { kind: 'locked', throttle: 'level' }),
         stiff: planOf(road, vehicle, STIFF),
         plain: planOf(road, vehicle, piOf({ antiWindup: { kind: 'none' } }), {
-          rider: { brakesAbove: 8 / 3.6 },
+          rider: { brakesAbove: 8 / 3.6, shifts: [] },
         }),
       });
       for (const { result } of replayed) ends.add(result.status);

@@ -43,6 +43,10 @@ export function recordOf(width: number, rows: readonly BinRow[], bands = 1): Bin
     driveWork: column('driveWork'),
     regenerationWork: column('regenerationWork'),
     brakeWork: column('brakeWork'),
+    driveForceMax: column('driveForceMax'),
+    driveForceMin: column('driveForceMin'),
+    timeShift: column('timeShift'),
+    drawn: column('drawn'),
   };
 }
 
@@ -62,10 +66,13 @@ export function resultOf(bins: BinRecord, more: Partial<LoopResult> = {}): LoopR
       climb: 0,
       brake: 0,
       kinetic: 0,
-      battery: null,
+      shifts: 0,
+      drawn: null,
+      chargeAtEnd: null,
       residual: 0,
     },
     checkpoints: [],
+    shifts: [],
     ...more,
   };
 }

@@ -25,6 +25,7 @@ export function seriesOf(
     feedforward: zeros,
     limit: Uint8Array.from(time, (t) => limit(t)),
     gear: new Uint8Array(size),
+    shaftSpeed: zeros,
     driveForce: zeros,
     brakeForce: zeros,
     acceleration: zeros,

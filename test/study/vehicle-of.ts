@@ -1,8 +1,10 @@
 // Vehicles and plans for tests, in SI, with what a test does not name left ideal.
+
 import type { PiSetup } from '../../src/control/setup.ts';
 import type { HoldPlan, LoopPlan } from '../../src/loop/plan.ts';
 import type { Road } from '../../src/road/road.ts';
 import { type ForceDriveSpec, forceDrive } from '../../src/vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Actuator, Vehicle } from '../../src/vehicle/vehicle.ts';
 
 export interface VehicleOptions {
@@ -31,8 +33,9 @@ export function vehicleOf(options: VehicleOptions = {}): Vehicle {
       derate: 'none',
       ...options.drive,
     }),
-    actuator: { lag: 0.06, rateLimit: null, ...options.actuator },
-    sensor: { filter: 0.05, delay: 0.02, scaleError: 0 },
+    actuator: { ...IDEAL_ACTUATOR, lag: 0.06, rateLimit: null, ...options.actuator },
+    sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02, scaleError: 0 },
+    traction: null,
   };
 }
 
@@ -70,7 +73,7 @@ export function planOf(
     vehicle,
     controller,
     hold: HOLD_60,
-    rider: { brakesAbove: null },
+    rider: { brakesAbove: null, shifts: [] },
     scheme: 'exact',
     bands: [2 / 3.6],
     bin: 20,

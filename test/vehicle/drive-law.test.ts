@@ -1,8 +1,8 @@
 import { describe, expect, test } from 'vitest';
+import type { Drive } from '../../src/vehicle/drive.ts';
 import { forceRange, throttleFor, wheelForce, wheelForceSlopes } from '../../src/vehicle/drive-law.ts';
 import { type ElectricDriveSpec, electricDrive } from '../../src/vehicle/electric-drive.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
-import type { Drive } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { textbookCar } from './vehicles.ts';
 

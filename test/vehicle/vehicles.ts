@@ -1,7 +1,10 @@
 // Vehicles of the tests. Numbers here are written out, not taken from src/.
+
+import type { Drive } from '../../src/vehicle/drive.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
+import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Surroundings } from '../../src/vehicle/surroundings.ts';
-import type { Drive, Vehicle } from '../../src/vehicle/vehicle.ts';
+import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 
 export const still: Surroundings = {
   grade: 0,
@@ -20,8 +23,9 @@ export function referenceMotorcycle(change: Partial<Vehicle> = {}): Vehicle {
     rotatingMass: 0,
     roadLoad: { cda: 0.6, yawGain: 0, yawTable: null, c0: 0.015, c1: 0, c2: 0 },
     drive: forceDrive({ peakForce: 900, peakPower: null, closedThrottleForce: 0, lag: 0, derate: 'none' }),
-    actuator: { lag: 0, rateLimit: null },
-    sensor: { filter: 0, delay: 0, scaleError: 0 },
+    actuator: { ...IDEAL_ACTUATOR, lag: 0, rateLimit: null },
+    sensor: { ...IDEAL_SENSOR, filter: 0, delay: 0, scaleError: 0 },
+    traction: null,
     ...change,
   };
 }
@@ -46,12 +50,18 @@ export function textbookCar(): Vehicle {
     ),
     gears: [40, 25, 16, 12, 10].map((ratio) => ({ ratio, inertia: 0 })),
     gear: 3,
+    gearbox: { kind: 'fixed' },
+    belt: null,
+    losses: new Float64Array(6),
     throttleMin: 0,
     throttleMax: 1,
     lag: 0,
     derate: 'none',
     stallSpeed: 0,
-    efficiency: null,
+    idleSpeed: 0,
+    source: null,
+    withoutFuelCut: null,
+    fuelCutBelow: 0,
     peakForce: 12 * peak,
     peakPower: null,
     closedThrottleForce: 0,

@@ -65,7 +65,7 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
       climb_wh: toWh(ledger.climb),
       brake_wh: toWh(ledger.brake),
       kinetic_wh: toWh(ledger.kinetic),
-      ...(ledger.battery === null ? {} : { battery_wh: toWh(ledger.battery) }),
+      ...(ledger.drawn === null ? {} : { battery_wh: toWh(ledger.drawn) }),
     }),
     gains:
       controller.kind === 'pi'

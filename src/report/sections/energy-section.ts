@@ -13,7 +13,7 @@ import { table } from './table.ts';
 
 /** 8: where the drive's work went. */
 export function energySection(view: View): Section {
-  const battery = view.candidates.some((candidate) => candidate.result.ledger.battery !== null);
+  const battery = view.candidates.some((candidate) => candidate.result.ledger.drawn !== null);
   const rows = view.candidates.map((candidate): HtmlValue[] => {
     const { ledger, endDistance } = candidate.result;
     const account = energyAccount(ledger);
@@ -25,7 +25,7 @@ export function energySection(view: View): Section {
         return html`${fixed(toWh(account[term.name]))}${share !== null && html`<br><span class="small">${fixed(share)} %</span>`}`;
       }),
       endDistance > 0 ? significant(toWh(ledger.drive) / toKm(endDistance)) : NO_VALUE,
-      ...(battery ? [ledger.battery === null ? NO_VALUE : fixed(toWh(ledger.battery))] : []),
+      ...(battery ? [ledger.drawn === null ? NO_VALUE : fixed(toWh(ledger.drawn))] : []),
     ];
   });
   const body = html`<p>All of the drive's pushing work ends in the air, in rolling, in height, in the brake, in speed, or goes back into the drive where it holds back (${view.result.vehicle.drive.throttleMin < 0 ? 'regeneration' : 'engine drag'}). Left of zero: what height or speed gave.</p>
