@@ -1,7 +1,22 @@
 import type { LoopPlan } from '../loop/plan.ts';
+import type { Drive } from '../vehicle/drive.ts';
+import type { EnergySource } from '../vehicle/energy-source.ts';
+import type { Actuator, Vehicle } from '../vehicle/vehicle.ts';
 
-/** The same plan with one limitation taken away and nothing else changed. */
-export type Limitation = 'windup' | 'rate' | 'range' | 'derating' | 'wind';
+/** What a plan can have taken away with nothing else changed. */
+export type Limitation =
+  | 'windup'
+  | 'rate'
+  | 'range'
+  | 'derating'
+  | 'wind'
+  | 'slack'
+  | 'pulses'
+  | 'resolution'
+  | 'fuel_cut'
+  | 'dead_time'
+  | 'shifting'
+  | 'grip';
 
 /** A throttle range so wide that no hill reaches its ends; the drive's law goes on in a straight line, so the gain is the same. */
 const UNLIMITED = 50;
@@ -11,23 +26,44 @@ const TRACKING_SAMPLES = 5;
 /** True where the plan has this limitation at all. */
 export function has(plan: LoopPlan, limitation: Limitation): boolean {
   const { controller, vehicle, road } = plan;
+  const { actuator, drive } = vehicle;
   switch (limitation) {
     case 'windup':
       return controller.kind === 'pi' && controller.ki > 0;
     case 'rate':
-      return vehicle.actuator.rateLimit !== null;
+      return actuator.rateLimit !== null;
     case 'range':
       return true;
     case 'derating':
-      return vehicle.drive.derate !== 'none';
+      return drive.derate !== 'none' || deratesByItself(drive.source);
     case 'wind':
       return road.headwind.some((w) => w !== 0) || road.crosswind.some((w) => w !== 0);
+    case 'slack':
+      return actuator.slack > 0;
+    case 'pulses':
+      return vehicle.sensor.pulses !== null;
+    case 'resolution':
+      return actuator.resolution > 0;
+    case 'fuel_cut':
+      return drive.withoutFuelCut !== null;
+    case 'dead_time':
+      return actuator.deadTime > 0;
+    case 'shifting':
+      return drive.gearbox.kind === 'automatic' && drive.gears.length > 1;
+    case 'grip':
+      return vehicle.traction !== null;
   }
 }
 
-/** Takes the limitation away: an integrator that follows the limited command at once, no rate limit, no throttle range, sea-level force, still air. */
+/**
+ * Takes the limitation away: an integrator that follows the limited command at once; no rate limit; no throttle range
+ * or end stops; sea-level force and a battery that is always cold and full enough; still air; no lost motion; a sensor
+ * that sees the speed itself; commands of any fineness; no step of a fuel cut; no dead time; an automatic gearbox that
+ * stays in the gear it starts in; unbounded grip.
+ */
 export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
   const { controller, vehicle, road } = plan;
+  const { drive } = vehicle;
   switch (limitation) {
     case 'windup':
       if (controller.kind !== 'pi') return plan;
@@ -39,17 +75,17 @@ export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
         },
       };
     case 'rate':
-      return { ...plan, vehicle: { ...vehicle, actuator: { ...vehicle.actuator, rateLimit: null } } };
-    case 'range':
-      return {
-        ...plan,
-        vehicle: {
-          ...vehicle,
-          drive: { ...vehicle.drive, throttleMin: -UNLIMITED, throttleMax: UNLIMITED },
-        },
-      };
+      return withActuator(plan, { rateLimit: null });
+    case 'range': {
+      const free = withActuator(plan, { travel: null });
+      return withVehicle(free, {
+        drive: { ...drive, throttleMin: -UNLIMITED, throttleMax: UNLIMITED },
+      });
+    }
     case 'derating':
-      return { ...plan, vehicle: { ...vehicle, drive: { ...vehicle.drive, derate: 'none' } } };
+      return withVehicle(plan, {
+        drive: { ...drive, derate: 'none', source: atItsBest(drive.source) },
+      });
     case 'wind':
       return {
         ...plan,
@@ -59,5 +95,55 @@ export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
           crosswind: new Float64Array(road.size),
         },
       };
+    case 'slack':
+      return withActuator(plan, { slack: 0 });
+    case 'pulses':
+      return withVehicle(plan, { sensor: { ...vehicle.sensor, pulses: null } });
+    case 'resolution':
+      return withActuator(plan, { resolution: 0 });
+    case 'fuel_cut':
+      return withVehicle(plan, { drive: withoutFuelCut(drive) });
+    case 'dead_time':
+      return withActuator(plan, { deadTime: 0 });
+    case 'shifting':
+      return withVehicle(plan, { drive: { ...drive, gearbox: { kind: 'fixed' } } });
+    case 'grip':
+      return withVehicle(plan, { traction: null });
   }
+}
+
+const withVehicle = (plan: LoopPlan, change: Partial<Vehicle>): LoopPlan => ({
+  ...plan,
+  vehicle: { ...plan.vehicle, ...change },
+});
+
+const withActuator = (plan: LoopPlan, change: Partial<Actuator>): LoopPlan =>
+  withVehicle(plan, { actuator: { ...plan.vehicle.actuator, ...change } });
+
+/** Voltage or heat takes force away, or a full battery regeneration. */
+function deratesByItself(source: EnergySource | null): boolean {
+  if (source === null || source.kind !== 'battery') return false;
+  return source.sag !== null || source.acceptance !== null || source.heating !== null;
+}
+
+function atItsBest(source: EnergySource | null): EnergySource | null {
+  if (source === null || source.kind !== 'battery') return source;
+  return { ...source, sag: null, acceptance: null, heating: null };
+}
+
+/** The law alone is exchanged: gear, range and what else a study has changed stay. */
+function withoutFuelCut(drive: Drive): Drive {
+  const smooth = drive.withoutFuelCut;
+  if (smooth === null) return drive;
+  const { speedEdges, throttleEdges, cells, losses, closedThrottleForce } = smooth;
+  return {
+    ...drive,
+    speedEdges,
+    throttleEdges,
+    cells,
+    losses,
+    closedThrottleForce,
+    withoutFuelCut: null,
+    fuelCutBelow: 0,
+  };
 }
