@@ -45,6 +45,18 @@ type Unit =
   | 's2/m2'
   | 'N per km/h'
   | 'N per (km/h)2'
+  | 'N m'
+  | 'rpm'
+  | 'kg m2'
+  | 'W'
+  | 'Wh'
+  | 'V'
+  | 'ohm'
+  | 'MJ/kg'
+  | 'kg/l'
+  | 'l'
+  | 'g/kWh'
+  | 'g/h'
   | '';
 
 /** A finite number in a range, ends included. */

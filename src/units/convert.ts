@@ -34,3 +34,21 @@ export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPer
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */
 export const fromNPerKmh2 = (curve: number): number => toKmh(toKmh(curve));
+/** [rpm] -> [rad/s] */
+export const fromRpm = (rpm: number): number => (rpm * Math.PI) / 30;
+/** [rad/s] -> [rpm] */
+export const toRpm = (shaftSpeed: number): number => (shaftSpeed * 30) / Math.PI;
+/** [Wh] -> [J] */
+export const fromWh = (energy: number): number => energy * 3600;
+/** [MJ/kg] -> [J/kg] */
+export const fromMjPerKg = (heat: number): number => heat * 1e6;
+/** [kg/l] -> [kg/m3] */
+export const fromKgPerLitre = (density: number): number => density * 1000;
+/** [l] -> [m3] */
+export const fromLitre = (volume: number): number => volume / 1000;
+/** [m3] -> [l] */
+export const toLitre = (volume: number): number => volume * 1000;
+/** [g/kWh] -> [kg/J] */
+export const fromGPerKwh = (consumption: number): number => consumption / 3.6e9;
+/** [g/h] -> [kg/s] */
+export const fromGPerHour = (flow: number): number => flow / 3.6e6;
