@@ -57,6 +57,7 @@ test('the folder holds what the summary lists, and nothing else', () => {
   expect(files).toEqual(
     expect.arrayContaining([
       'disturbance.csv',
+      'cycles.csv',
       'hills.csv',
       'report.html',
       'route.geojson',
@@ -127,13 +128,13 @@ test('columns are those of the contract', () => {
     'distance_m,elevation_m,raw_elevation_m,grade_pct,grade_sd_pct,heading_deg,curvature_per_m,headwind_m_s,crosswind_m_s,air_density_kg_m3',
   );
   expect(header('series-pi-20s.csv')).toBe(
-    'time_s,distance_m,set_speed_kmh,speed_kmh,speed_min_kmh,speed_max_kmh,speed_error_kmh,throttle_pct,throttle_min_pct,throttle_max_pct,gear,demand_pct,drive_force_n,wheel_power_kw,wheel_energy_wh,limit,mode',
+    'time_s,distance_m,set_speed_kmh,speed_kmh,speed_min_kmh,speed_max_kmh,speed_error_kmh,throttle_pct,throttle_min_pct,throttle_max_pct,gear,demand_pct,drive_force_n,wheel_power_kw,wheel_energy_wh,limit,mode,drawn_energy_wh',
   );
   expect(header('segments.csv')).toBe(
     'candidate,segment,from_km,to_km,mean_grade_pct,mean_headwind_m_s,mean_error_kmh,rms_error_kmh,worst_error_kmh,mean_throttle_pct,at_limit_pct,wheel_energy_wh,time_s',
   );
   expect(header('hills.csv')).toBe(
-    'hill,candidate,kind,from_km,to_km,length_m,mean_grade_pct,mean_grade_sd_pct,max_grade_pct,demand_pct,required_force_n,available_force_n,sustained_speed_kmh,speed_change_kmh,predicted_change_kmh,time_at_limit_s,recovery_s,cause,would_hold',
+    'hill,candidate,kind,from_km,to_km,length_m,mean_grade_pct,mean_grade_sd_pct,max_grade_pct,demand_pct,required_force_n,available_force_n,sustained_speed_kmh,speed_change_kmh,predicted_change_kmh,time_at_limit_s,recovery_s,cause,would_hold,gear_engaged,gear_needed,sustained_by_gear_kmh,brake_power_kw,brake_energy_wh',
   );
 });
 

@@ -12,10 +12,13 @@ import type {
 } from '../../src/study/findings.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
 import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
+import { withEngine } from './fixture-engine.ts';
 import { fixtureRoad } from './fixture-road.ts';
 import { cutSeries, type FixtureRun, fixtureRun, forcesAt, PLANT } from './fixture-run.ts';
 
 export interface FixtureWish {
+  /** An engine with six gears in the place of a plain force. */
+  readonly engine?: boolean;
   readonly lengthKm?: number;
   readonly withPositions?: boolean;
   readonly title?: string;
@@ -49,7 +52,10 @@ const pi = (kp: number, ti: number): PiSetup => ({
 });
 
 /** A whole, plausible and wholly invented result, the same for the same wish. */
-export function fixtureResult(wish: FixtureWish = {}): RunResult {
+export const fixtureResult = (wish: FixtureWish = {}): RunResult =>
+  wish.engine === true ? withEngine(plainResult(wish)) : plainResult(wish);
+
+function plainResult(wish: FixtureWish): RunResult {
   const { lengthKm = 28, withPositions = true, designs = ['pi-firm', 'pi-soft'], locked = true } = wish;
   const road = fixtureRoad(lengthKm, withPositions);
   const setups: Candidate[] = [
@@ -315,7 +321,7 @@ function segmentsOf(road: Road, setups: readonly Candidate[], runs: readonly Fix
       runs: setups.map((setup, i) => {
         const { bins } = runs[i]!;
         const inside = Array.from({ length: bins.size }, (_, b) => b).filter(
-          (b) => bins.edge[b]! >= from && bins.edge[b]! < to,
+          (b) => bins.edge[b]! >= from && bins.edge[b]! < to && bins.time[b]! > 0,
         );
         if (inside.length === 0) {
           const none = { none: 'the run ended before' };

@@ -1,4 +1,4 @@
-import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from '../../loop/plan.ts';
+import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_SHIFT, LIMIT_UPPER } from '../../loop/plan.ts';
 import type { BinRecord } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { toKmh, toKw, toPct, toWh } from '../../units/convert.ts';
@@ -12,6 +12,8 @@ export interface BinSource {
   readonly share: Float64Array;
   /** Drive work from the start to the end of each bin [J]. */
   readonly work: Float64Array;
+  /** Drawn from fuel or battery so far [J]; null: no source. */
+  readonly drawn: Float64Array | null;
   readonly locked: boolean;
 }
 
@@ -24,8 +26,9 @@ export function limitWords(bits: number): string {
   return words.join('+');
 }
 
-/** `brake` while the rider brakes, else `locked` or `hold`. */
+/** `shift` with the clutch open or the throttle in the rider's hand, `brake` while the rider brakes, else `locked` or `hold`. */
 export function modeWord(bits: number, locked: boolean): string {
+  if (bits & LIMIT_SHIFT) return 'shift';
   if (bits & LIMIT_BRAKE) return 'brake';
   return locked ? 'locked' : 'hold';
 }
@@ -35,7 +38,8 @@ function bits(bins: BinRecord, i: number): number {
     (bins.timeUpper[i]! > 0 ? LIMIT_UPPER : 0) |
     (bins.timeLower[i]! > 0 ? LIMIT_LOWER : 0) |
     (bins.timeRate[i]! > 0 ? LIMIT_RATE : 0) |
-    (bins.timeBrake[i]! > 0 ? LIMIT_BRAKE : 0)
+    (bins.timeBrake[i]! > 0 ? LIMIT_BRAKE : 0) |
+    (bins.timeShift[i]! > 0 ? LIMIT_SHIFT : 0)
   );
 }
 
@@ -44,6 +48,10 @@ function meanError(bins: BinRecord, i: number): number {
   const time = bins.time[i]!;
   return time > 0 ? bins.errorMean[i]! / time : bins.speedMean[i]! - bins.setSpeed[i]!;
 }
+
+/** What `mode` says, in both series. */
+export const MODE_ABOUT =
+  "hold or locked; brake where the rider brakes; shift with the clutch open or the throttle in the rider's hand";
 
 /** The columns of series-<candidate>.csv by bin: one row a distance bin. */
 export const BIN_COLUMNS: readonly Column<BinSource>[] = [
@@ -132,25 +140,42 @@ export const BIN_COLUMNS: readonly Column<BinSource>[] = [
   {
     name: 'mode',
     decimals: 0,
-    about: 'hold, locked, or brake where the rider brakes',
+    about: MODE_ABOUT,
     value: (s, i) => modeWord(bits(s.bins, i), s.locked),
+  },
+  {
+    name: 'drawn_energy_wh',
+    decimals: 3,
+    about:
+      'drawn from fuel or battery, from the start of the run to the end of the bin; empty without a source of energy',
+    value: (s, i) => (s.drawn === null ? null : toWh(s.drawn[i]!)),
   },
 ];
 
 /** series-<candidate>.csv, one row a distance bin. */
 export function binSeriesCsv(run: RunResult, candidate: CandidateResult): string {
-  const { bins } = candidate.result;
+  const { bins, ledger } = candidate.result;
   const along = new ShareAlong(run.road, run.demand);
   const share = new Float64Array(bins.size);
   const work = new Float64Array(bins.size);
+  const drawn = new Float64Array(bins.size);
   let total = 0;
+  let used = 0;
   for (let i = 0; i < bins.size; i++) {
     const inTime = run.road.along === 'time';
     const from = inTime ? bins.timeAt[i]! : bins.edge[i]!;
     share[i] = along.extreme(from, inTime ? from + bins.time[i]! : bins.edge[i + 1]!);
     total += bins.driveWork[i]!;
     work[i] = total;
+    used += bins.drawn[i]!;
+    drawn[i] = used;
   }
-  const source = { bins, share, work, locked: candidate.controller.kind === 'locked' };
+  const source = {
+    bins,
+    share,
+    work,
+    drawn: ledger.drawn === null ? null : drawn,
+    locked: candidate.controller.kind === 'locked',
+  };
   return csvText(BIN_COLUMNS, source, bins.size);
 }

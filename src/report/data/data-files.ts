@@ -1,6 +1,7 @@
 import type { Road } from '../../road/road.ts';
 import type { RunResult } from '../../run/run-result.ts';
 import { binSeriesCsv } from './bin-series.ts';
+import { cyclesCsv } from './cycle-table.ts';
 import { disturbanceCsv } from './disturbance.ts';
 import { fullSeriesCsv } from './full-series.ts';
 import { hillsCsv } from './hill-table.ts';
@@ -23,6 +24,7 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
     ...roadFiles(run.road, run),
     { name: 'segments.csv', text: segmentsCsv(run.segments) },
     { name: 'hills.csv', text: hillsCsv(run.hills) },
+    { name: 'cycles.csv', text: cyclesCsv(run.cycles) },
     ...run.candidates.map((candidate) => ({
       name: `series-${candidate.name}.csv`,
       text:

@@ -13,6 +13,8 @@ const DECIMALS: Readonly<Record<string, number>> = {
   kw: 4,
   wh: 3,
   wh_per_km: 4,
+  l: 4,
+  l_per_100km: 4,
   kg: 3,
   deg: 3,
 };

@@ -1,7 +1,8 @@
 import type { FullSeries } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
-import { toKmh, toPct } from '../../units/convert.ts';
-import { limitWords, modeWord } from './bin-series.ts';
+import { toKmh, toPct, toRpm } from '../../units/convert.ts';
+import { turns } from '../model/gear-words.ts';
+import { limitWords, MODE_ABOUT, modeWord } from './bin-series.ts';
 import { ShareAlong } from './share-along.ts';
 import { type Column, csvText } from './table.ts';
 
@@ -10,6 +11,8 @@ export interface FullSource {
   readonly series: FullSeries;
   readonly share: Float64Array;
   readonly locked: boolean;
+  /** The drive has a shaft that turns: its law is over [rad/s]. */
+  readonly turns: boolean;
 }
 
 /** The columns of series-<candidate>.csv under `series: full`: one row a controller sample. */
@@ -79,15 +82,15 @@ export const FULL_COLUMNS: readonly Column<FullSource>[] = [
   {
     name: 'mode',
     decimals: 0,
-    about: 'hold, locked, or brake where the rider brakes',
+    about: MODE_ABOUT,
     value: (s, i) => modeWord(s.series.limit[i]!, s.locked),
   },
   { name: 'gear', decimals: 0, about: 'gear, from 1', value: (s, i) => s.series.gear[i]! + 1 },
   {
     name: 'engine_rpm',
     decimals: 0,
-    about: 'engine speed; empty for a drive without an engine',
-    value: () => null,
+    about: 'engine speed; 0 with the clutch open; empty for a drive without an engine',
+    value: (s, i) => (s.turns ? toRpm(s.series.shaftSpeed[i]!) : null),
   },
   {
     name: 'demand_pct',
@@ -115,9 +118,6 @@ export function fullSeriesCsv(run: RunResult, candidate: CandidateResult, series
   const place = run.road.along === 'time' ? series.time : series.distance;
   const share = new Float64Array(series.size);
   for (let i = 0; i < series.size; i++) share[i] = along.at(place[i]!);
-  return csvText(
-    FULL_COLUMNS,
-    { series, share, locked: candidate.controller.kind === 'locked' },
-    series.size,
-  );
+  const locked = candidate.controller.kind === 'locked';
+  return csvText(FULL_COLUMNS, { series, share, locked, turns: turns(run.vehicle.drive) }, series.size);
 }

@@ -1,5 +1,6 @@
 import type { Hill, HillOutcome } from '../../study/findings.ts';
-import { toKm, toKmh, toPct } from '../../units/convert.ts';
+import { toKm, toKmh, toKw, toPct, toWh } from '../../units/convert.ts';
+import { fixed } from './fixed.ts';
 import { inUnit } from './segment-table.ts';
 import { type Column, csvText, type JsonRow, jsonRow } from './table.ts';
 
@@ -114,7 +115,46 @@ export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
     about: 'what would hold, one sentence a lever',
     value: (rows, i) => rows[i]!.outcome.wouldHold.map((remedy) => remedy.words).join(' '),
   },
+  {
+    name: 'gear_engaged',
+    decimals: 0,
+    about: 'gear at the place of greatest demand, from 1; empty for a drive without gears',
+    value: (rows, i) => gearNumber(rows[i]!.hill.gears?.engaged),
+  },
+  {
+    name: 'gear_needed',
+    decimals: 0,
+    about: 'highest gear in which the demand stays in range all over the hill; empty where none does',
+    value: (rows, i) => gearNumber(rows[i]!.hill.gears?.needed),
+  },
+  {
+    name: 'sustained_by_gear_kmh',
+    decimals: 0,
+    about: 'speed that each gear sustains at the place of greatest demand, first gear first; 0: none',
+    value: (rows, i) => sustainedByGear(rows[i]!.hill),
+  },
+  {
+    name: 'brake_power_kw',
+    decimals: 3,
+    about: 'greatest braking power that holds the set speed beside the least throttle',
+    value: (rows, i) => toKw(rows[i]!.hill.brakePower),
+  },
+  {
+    name: 'brake_energy_wh',
+    decimals: 3,
+    about: 'energy of that braking over the hill',
+    value: (rows, i) => toWh(rows[i]!.hill.brakeEnergy),
+  },
 ];
+
+const gearNumber = (gear: number | null | undefined): number | null =>
+  gear === null || gear === undefined ? null : gear + 1;
+
+/** `43.2 60.0 51.7`: one field, so that the columns are the same for every vehicle. */
+const sustainedByGear = ({ gears }: Hill): string | null =>
+  gears === null
+    ? null
+    : gears.sustained.map((speed) => fixed(toKmh(speed), 1, 'sustained_by_gear_kmh')).join(' ');
 
 const rowsOf = (hills: readonly Hill[]): readonly HillRow[] =>
   hills.flatMap((hill) => hill.outcomes.map((outcome) => ({ hill, outcome })));

@@ -1,6 +1,10 @@
+import type { ShiftEvent } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { type Figure, isNone, type RequirementFinding } from '../../study/findings.ts';
-import { toDeg, toKm, toKmh, toPct, toWh } from '../../units/convert.ts';
+import { toDeg, toKm, toKmh, toLitre, toPct, toWh } from '../../units/convert.ts';
+import type { Vehicle } from '../../vehicle/vehicle.ts';
+import { type EnergyUse, energyUse, toLitrePer100Km } from '../model/energy-use.ts';
+import { cycleRows } from './cycle-table.ts';
 import { decimalsOf } from './decimals-of.ts';
 import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
@@ -33,8 +37,9 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     route: routeSummary(run.road, run.demand),
     vehicle: { name: run.vehicle.name, ...numbers({ mass_kg: run.vehicle.mass }) },
     hold: numbers({ set_speed_kmh: toKmh(run.hold.setSpeed), band_kmh: toKmh(run.band) }),
-    candidates: run.candidates.map(candidateOf),
+    candidates: run.candidates.map((candidate) => candidateOf(candidate, run.vehicle)),
     hills: hillRows(run.hills),
+    cycles: cycleRows(run.cycles),
     requirements: run.requirements.map(requirementOf),
     spread: { roads: run.spread.roads, seed: run.spread.seed },
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),
@@ -48,7 +53,7 @@ function significant(value: number, digits: number, what: string): number {
   return rounded(value, 0, what) === value ? value : Number(value.toPrecision(digits));
 }
 
-function candidateOf({ name, controller, result, figures, loop }: CandidateResult): Json {
+function candidateOf({ name, controller, result, figures, loop }: CandidateResult, { drive }: Vehicle): Json {
   const { ledger } = result;
   return {
     name,
@@ -65,8 +70,10 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
       climb_wh: toWh(ledger.climb),
       brake_wh: toWh(ledger.brake),
       kinetic_wh: toWh(ledger.kinetic),
-      ...(ledger.drawn === null ? {} : { battery_wh: toWh(ledger.drawn) }),
+      ...(drive.gears.length > 1 ? { shifts_wh: toWh(ledger.shifts) } : {}),
+      ...usedOf(energyUse(drive.source, result)),
     }),
+    ...(result.shifts.length === 0 ? {} : { shifts: result.shifts.map(shiftOf) }),
     gains:
       controller.kind === 'pi'
         ? {
@@ -80,6 +87,31 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
     ...marginsOf(loop),
   };
 }
+
+/** What was taken from tank or battery. */
+function usedOf(use: EnergyUse | null): Record<string, Figure> {
+  if (use === null) return {};
+  const range = use.range === null ? {} : { range_km: toKm(use.range) };
+  if (use.kind === 'battery')
+    return {
+      battery_wh: toWh(use.drawn),
+      ...(use.charge === null ? {} : { charge_at_end_pct: toPct(use.charge.end) }),
+      ...range,
+    };
+  return {
+    fuel_l: toLitre(use.volume ?? 0),
+    ...(use.volumePerDistance === null ? {} : { fuel_l_per_100km: toLitrePer100Km(use.volumePerDistance) }),
+    ...range,
+  };
+}
+
+/** Gears from 1. */
+const shiftOf = ({ time, distance, from, to, resumedAt }: ShiftEvent): Json => ({
+  ...numbers({ at_km: toKm(distance), time_s: time }),
+  from_gear: from + 1,
+  to_gear: to + 1,
+  ...(resumedAt === null ? {} : numbers({ hold_resumed_s: resumedAt })),
+});
 
 function marginsOf(loop: CandidateResult['loop']): Record<string, Json> {
   const none = loop === null ? 'no feedback, or no set speed that the drive holds on the level' : null;
