@@ -1,6 +1,8 @@
 import type { BinRecord } from '../loop/result.ts';
+import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import { toKm, toKmh, toPct, toWh } from '../units/convert.ts';
+import { toKm, toKmh, toKw, toLitre, toPct, toWh } from '../units/convert.ts';
+import type { EnergySource } from '../vehicle/energy-source.ts';
 import type { Figure, None } from './findings.ts';
 import { NOT_RECOVERED } from './recovery.ts';
 
@@ -26,7 +28,15 @@ export interface FigureRecord {
   /** Of the hills that count. */
   readonly recoveries: readonly Recovery[];
   /** What the drive lives on; null: not known. */
-  readonly source: 'fuel' | 'battery' | null;
+  readonly source: EnergySource | null;
+  /** Where gears were changed, horizontal distances in order [m]. */
+  readonly shifts: readonly number[];
+  /** A shift cancels hold: the rider makes it. */
+  readonly shiftsCancel: boolean;
+  /** One a bin: 1 where the drive reached the grip of the driven wheel; null: grip not known. */
+  readonly beyondGrip: Uint8Array | null;
+  /** One a bin: greatest power of a brake that holds the set speed beside the least throttle, by the demand [W]. */
+  readonly brakeNeeded: Float64Array;
   /** Of the whole run. */
   readonly ledgerResidual: number;
 }
@@ -129,10 +139,58 @@ export function worstRecovery({ recoveries }: FigureRecord): Measure {
   return worst === null || worst.value === 0 ? unknown : { ...worst, open: unknown.value.none };
 }
 
+const NO_SOURCE: None = { none: 'the vehicle says nothing of fuel or battery' };
+
+const drawnOver = (record: FigureRecord): number => sum(record, (i) => record.bins.drawn[i]);
+
 export function batteryEnergy(record: FigureRecord): Measure {
-  const { bins, source } = record;
-  if (source !== 'battery') return placeless({ none: 'the drive has no efficiency' });
-  return driven(record, () => toWh(sum(record, (i) => bins.drawn[i])));
+  if (record.source?.kind !== 'battery') return placeless({ none: 'the drive has no battery with losses' });
+  return driven(record, () => toWh(drawnOver(record)));
+}
+
+export function drawnPerKm(record: FigureRecord): Measure {
+  return placeless(record.source === null ? NO_SOURCE : perKm(record, toWh(drawnOver(record))));
+}
+
+export function fuelPer100Km(record: FigureRecord): Measure {
+  const { source } = record;
+  if (source?.kind !== 'fuel') return placeless({ none: 'the vehicle says nothing of fuel' });
+  const litres = perKm(record, toLitre(drawnOver(record) / source.heat));
+  return placeless(typeof litres === 'number' ? 100 * litres : litres);
+}
+
+/** Way on what is there at the start, at the consumption of the bins that count. */
+export function range(record: FigureRecord): Measure {
+  const { source } = record;
+  if (source === null) return placeless(NO_SOURCE);
+  const full = source.kind === 'fuel';
+  if (source.capacity === null)
+    return placeless({ none: `the ${full ? 'tank' : 'battery'} has no known size` });
+  const share = full ? 1 : Math.max(0, source.charge - source.reserve);
+  const drawn = perKm(record, drawnOver(record));
+  if (typeof drawn !== 'number') return placeless(drawn);
+  if (drawn <= 0) return placeless({ none: 'nothing was drawn on the whole' });
+  return placeless((source.capacity * share) / drawn);
+}
+
+/** Shifts in the bins that count. */
+export function shiftCount(record: FigureRecord): Measure {
+  const { bins, chosen, shifts } = record;
+  const counted = shifts.filter((place) => chosen[cellOf(bins.edge, place)] === 1);
+  return driven(record, () => counted.length);
+}
+
+export function timeBeyondGrip(record: FigureRecord): Measure {
+  const { bins, beyondGrip } = record;
+  if (beyondGrip === null) return placeless({ none: 'the grip of the driven wheel is not known' });
+  const first = worstBin(record, (i) => (beyondGrip[i] === 1 ? bins.time[i] : 0));
+  return { ...driven(record, () => sum(record, (i) => beyondGrip[i] * bins.time[i])), at: first?.at ?? null };
+}
+
+export function brakePowerNeeded(record: FigureRecord): Measure {
+  const worst = worstBin(record, (i) => record.brakeNeeded[i]);
+  const { value } = driven(record, () => toKw(worst?.value ?? 0));
+  return { value, at: worst?.at ?? null };
 }
 
 /** Distance of a bin driven with the brake on: its length by share of time. */

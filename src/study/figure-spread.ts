@@ -6,7 +6,7 @@ import { type FigureRow, figureRow } from './figure-table.ts';
 import type { Hill, Replayed, Requirement } from './findings.ts';
 import { speedsOver } from './hill-series.ts';
 import { courseOfRun, type HoldCourse } from './hold-course.ts';
-import { chooseBins, endedEarly, type FigureContext, measureOver } from './measure-figure.ts';
+import { chooseBins, endedEarly, type FigureContext, recordOf } from './measure-figure.ts';
 import { outOfRange } from './out-of-range.ts';
 import { RECOVERED_BAND, recoveryOf } from './recovery.ts';
 import { sampleAt } from './series-measures.ts';
@@ -109,7 +109,8 @@ function measureDrawn(row: FigureRow, requirement: Requirement, run: Replayed, c
   const band = requirement.band ?? run.plan.bands[0];
   const recoveries =
     row.name === 'recovery_s' ? drawnRecoveries(requirement, run, context, band, course) : [];
-  return measureOver(row, run, chosen, recoveries, requirement.band).value;
+  const record = recordOf(run, context, chosen, recoveries);
+  return row.measure({ ...record, band: row.takesBand ? requirement.band : null }).value;
 }
 
 /** Recoveries of one candidate over a drawn road, on the hills that it recovers from slowest on the road itself. */

@@ -1,8 +1,9 @@
 import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
-import type { Measure, Recovery } from './figure-measures.ts';
+import type { FigureRecord, Measure, Recovery } from './figure-measures.ts';
 import { FIGURES, type FigureRow } from './figure-table.ts';
 import type { Demand, Figure, FigureValues, Hill, Replayed, Stretch, Where } from './findings.ts';
+import { gripBins } from './grip-places.ts';
 import { courseOfRun } from './hold-course.ts';
 import { withUnit } from './wording.ts';
 
@@ -29,28 +30,48 @@ export function measureFigure(
   band: number | null,
 ): Measure {
   const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
-  return measureOver(row, replayed, chosen, recoveriesOf(replayed.name, context.hills, where), band);
+  const recoveries = recoveriesOf(replayed.name, context.hills, where);
+  return row.measure({
+    ...recordOf(replayed, context, chosen, recoveries),
+    band: row.takesBand ? band : null,
+  });
 }
 
-/** The same over given bins and recoveries. */
-export function measureOver(
-  row: FigureRow,
-  { plan, result }: Replayed,
+/** What a figure is taken over, but for its band: given bins and recoveries of a run. */
+export function recordOf(
+  replayed: Replayed,
+  { road, demand }: Pick<FigureContext, 'road' | 'demand'>,
   chosen: Uint8Array,
   recoveries: readonly Recovery[],
-  band: number | null,
-): Measure {
-  return row.measure({
+): Omit<FigureRecord, 'band'> {
+  const { plan, result } = replayed;
+  const { drive, traction } = plan.vehicle;
+  return {
     bins: result.bins,
     chosen,
     end: result.endDistance,
     along: plan.road.along,
     bands: plan.bands,
-    band: row.takesBand ? band : null,
     recoveries,
-    source: plan.vehicle.drive.source?.kind ?? null,
+    source: drive.source,
+    shifts: result.shifts.map(({ distance }) => distance),
+    shiftsCancel: drive.gearbox.kind === 'clutch',
+    beyondGrip: traction === null ? null : gripBins(replayed),
+    brakeNeeded: greatestByBin(result.bins, road, demand.brakePower),
     ledgerResidual: result.ledger.residual,
-  });
+  };
+}
+
+/** Greatest value of a column over the knots in each bin and those next to it, 0 or more. */
+function greatestByBin({ size, edge }: BinRecord, road: Road, column: Float64Array): Float64Array {
+  const greatest = new Float64Array(size);
+  let knot = 0;
+  for (let i = 0; i < size; i++) {
+    while (knot + 1 < road.size && road.distance[knot + 1] <= edge[i]) knot++;
+    for (let k = knot; k < road.size && road.distance[k] < edge[i + 1]; k++)
+      greatest[i] = Math.max(greatest[i], column[k]);
+  }
+  return greatest;
 }
 
 /** Every figure of the table over one `where`, by name, in the units of the table. */
@@ -61,9 +82,12 @@ export function figureValues(
   band: number,
 ): FigureValues {
   const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
-  const recoveries = recoveriesOf(replayed.name, context.hills, where);
+  const record = recordOf(replayed, context, chosen, recoveriesOf(replayed.name, context.hills, where));
   return Object.fromEntries(
-    FIGURES.map((row) => [row.name, figureOf(row, measureOver(row, replayed, chosen, recoveries, band))]),
+    FIGURES.map((row) => [
+      row.name,
+      figureOf(row, row.measure({ ...record, band: row.takesBand ? band : null })),
+    ]),
   );
 }
 

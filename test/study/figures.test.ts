@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { FigureRecord } from '../../src/study/figure-measures.ts';
 import { FIGURES, figureRow } from '../../src/study/figure-table.ts';
+import type { EnergySource } from '../../src/vehicle/energy-source.ts';
 import { expectClose } from '../compare.ts';
 import { recordOf } from './record-of.ts';
 
@@ -47,9 +48,32 @@ const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecor
   band: 1.5,
   recoveries: [],
   source: null,
+  shifts: [],
+  shiftsCancel: false,
+  beyondGrip: null,
+  brakeNeeded: Float64Array.of(0, 0, 500, 2400),
   ledgerResidual: -3e-9,
   ...more,
 });
+const MAP = {
+  shaftSpeed: Float64Array.of(0, 1),
+  torque: Float64Array.of(0, 1),
+  power: Float64Array.of(0, 0, 0, 1),
+  least: 0,
+};
+/** 12.96 MJ from full to empty, of which 90 % at the start and 10 % kept: 10.368 MJ. */
+const BATTERY: EnergySource = {
+  kind: 'battery',
+  map: MAP,
+  capacity: 12.96e6,
+  charge: 0.9,
+  reserve: 0.1,
+  sag: null,
+  acceptance: null,
+  heating: null,
+};
+/** 32 MJ a litre, 10 litres. */
+const TANK: EnergySource = { kind: 'fuel', map: MAP, heat: 32e9, capacity: 320e6 };
 const measure = (name: string, of: FigureRecord) => figureRow(name)!.measure(of);
 const value = (name: string, of = record([1, 1, 1, 1])): number => {
   const { value: found } = measure(name, of);
@@ -110,10 +134,41 @@ describe('figures of a record worked out by hand', () => {
     expectClose(value('brake_distance_m'), 50, 1e-12);
     expectClose(value('ledger_residual'), 3e-9, 1e-24);
     expectClose(
-      value('battery_energy_wh', record([1, 1, 1, 1], { source: 'battery' })),
+      value('battery_energy_wh', record([1, 1, 1, 1], { source: BATTERY })),
       (4500 + 9000 + 22500 - 1080) / 3600,
       1e-12,
     );
+  });
+
+  it('tell what was drawn from tank or battery, and how far what is there lasts', () => {
+    // 34 920 J over 400 m.
+    const drawn = 4500 + 9000 + 22500 - 1080;
+    const of = (source: EnergySource) => record([1, 1, 1, 1], { source });
+    expectClose(value('drawn_wh_per_km', of(TANK)), drawn / 3600 / 0.4, 1e-12);
+    expectClose(value('fuel_l_per_100km', of(TANK)), (drawn / 32e6 / 0.4) * 100, 1e-12);
+    expectClose(value('range_km', of(TANK)), 320e6 / (drawn / 0.4), 1e-9);
+    expectClose(value('range_km', of(BATTERY)), 10.368e6 / (drawn / 0.4), 1e-9);
+  });
+
+  it('count shifts, the time they cancel hold, the time beyond grip and the brake that would be needed', () => {
+    const shifted = recordOf(
+      100,
+      SPEEDS.map((speed, i) => ({ time: 100 / speed, timeShift: [0, 1.5, 0, 0.5][i]! })),
+    );
+    const of = (chosen: number[]) =>
+      record(chosen, {
+        bins: shifted,
+        shifts: [120, 399.9, 400],
+        shiftsCancel: true,
+        beyondGrip: Uint8Array.of(0, 0, 1, 1),
+      });
+    expect(value('shifts', of([1, 1, 1, 1]))).toBe(3);
+    expect(value('shifts', of([1, 1, 1, 0]))).toBe(1);
+    expect(value('hold_cancelled_s', of([1, 1, 1, 1]))).toBe(2);
+    expect(value('hold_cancelled_s', { ...of([1, 1, 1, 1]), shiftsCancel: false })).toBe(0);
+    expectClose(value('beyond_grip_s', of([1, 1, 1, 1])), 6.25 + 100 / 21, 1e-12);
+    expect(measure('brake_power_needed_kw', of([1, 1, 1, 1]))).toEqual({ value: 2.4, at: 350 });
+    expect(measure('brake_power_needed_kw', of([1, 1, 0, 0]))).toEqual({ value: 0, at: null });
   });
 
   it('count the last bin only as far as the run went', () => {
@@ -141,9 +196,11 @@ describe('figures of a record worked out by hand', () => {
   });
 
   it('do not exist where nothing was driven, and are never NaN', () => {
-    const nowhere = record([0, 0, 0, 0], { source: 'battery' });
+    const nowhere = record([0, 0, 0, 0], { source: BATTERY, beyondGrip: new Uint8Array(4) });
     for (const row of FIGURES) {
-      const { value: found } = row.measure(nowhere);
+      const { value: found } = row.measure(
+        row.name.startsWith('fuel') ? { ...nowhere, source: TANK } : nowhere,
+      );
       if (row.weight !== 'event' || row.name.startsWith('worst'))
         expect(found, row.name).toEqual({ none: 'no such stretch was driven' });
     }
@@ -151,8 +208,20 @@ describe('figures of a record worked out by hand', () => {
       none: 'the run did not count the time within this band',
     });
     expect(measure('battery_energy_wh', record([1, 1, 1, 1])).value).toEqual({
-      none: 'the drive has no efficiency',
+      none: 'the drive has no battery with losses',
     });
+    expect(measure('fuel_l_per_100km', record([1, 1, 1, 1], { source: BATTERY })).value).toHaveProperty(
+      'none',
+    );
+    expect(measure('range_km', record([1, 1, 1, 1])).value).toHaveProperty('none');
+    expect(measure('range_km', record([0, 0, 0, 1], { source: BATTERY })).value).toEqual({
+      none: 'nothing was drawn on the whole',
+    });
+    const endless = { ...TANK, capacity: null };
+    expect(measure('range_km', record([1, 1, 1, 1], { source: endless })).value).toEqual({
+      none: 'the tank has no known size',
+    });
+    expect(measure('beyond_grip_s', record([1, 1, 1, 1])).value).toHaveProperty('none');
   });
 });
 
@@ -166,6 +235,10 @@ describe('the table of figures', () => {
       'Wh/km': '_wh_per_km',
       '%/km': '_pct_per_km',
       m: '_m',
+      km: '_km',
+      kW: '_kw',
+      'l/100 km': '_l_per_100km',
+      shifts: 'shifts',
       '1': 'residual',
     };
     expect(new Set(FIGURES.map((row) => row.name)).size).toBe(FIGURES.length);
