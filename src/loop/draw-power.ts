@@ -1,0 +1,110 @@
+import * as fit from './fittings.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+
+/**
+ * What a sample takes from tank or battery. The power of the source's map at the shaft's speed and torque at the start
+ * of the sample is drawn all through it (with the clutch open: of idling). Then, for a battery, over a sample of length h:
+ *
+ *   charge  <- charge - power h, between empty and full: what would overfill it is lost
+ *   heat    <- r + (heat - r) e^(-h / time), r = (wheel power / continuous power)^2
+ *   factor of force = sag(charge) heatShare, of regeneration = acceptance(charge) heatShare; an empty battery gives nothing
+ *
+ * Strictly sample by sample, so that it is the same whatever the chunks are.
+ *
+ * @param row place of the sample's row in the log, a multiple of L_STRIDE
+ * @param elapsed length of the sample [s], where it was cut short
+ */
+export function drawPower(
+  { s, p, log, chunk, fittings }: Machine,
+  row: number,
+  elapsed = p[at.P_SAMPLE],
+): void {
+  const f = fittings.source;
+  const speed = log[row + at.L_SPEED];
+  const force = log[row + at.L_FORCE];
+  const open = s[at.GEAR] < 0;
+  let energy =
+    elapsed * powerAt(f, open ? f[fit.F_IDLE] : s[at.RATIO] * speed, open ? 0 : force / s[at.RATIO]);
+  if (f[fit.F_BATTERY] === 1) {
+    const capacity = f[fit.F_CAPACITY];
+    if (capacity > 0) {
+      const left = Math.min(Math.max(0, s[at.CHARGE] - energy), capacity);
+      energy = s[at.CHARGE] - left;
+      s[at.CHARGE] = left;
+    }
+    const continuous = f[fit.F_CONTINUOUS];
+    if (continuous > 0) {
+      const load = (force * speed) / continuous;
+      const square = load * load;
+      s[at.HEAT] = square + (s[at.HEAT] - square) * f[fit.F_COOLED];
+    }
+    writeFactors(s, f);
+  }
+  s[at.DRAWN] = s[at.DRAWN] + energy;
+  chunk[at.C_DRAWN] = chunk[at.C_DRAWN] + energy;
+}
+
+/** Puts charge and heat at their start: cold, charged as the plan says, factors to match. */
+export function settleSource({ s, fittings }: Machine): void {
+  const f = fittings.source;
+  s[at.HEAT] = 0;
+  s[at.DRAWN] = 0;
+  s[at.DRIVE_FACTOR] = 1;
+  s[at.REGENERATION_FACTOR] = 1;
+  if (f.length === 0 || f[fit.F_BATTERY] !== 1) return;
+  s[at.CHARGE] = f[fit.F_CHARGE] * f[fit.F_CAPACITY];
+  writeFactors(s, f);
+}
+
+function writeFactors(s: Float64Array, f: Float64Array): void {
+  const capacity = f[fit.F_CAPACITY];
+  const charge = capacity > 0 ? s[at.CHARGE] / capacity : f[fit.F_CHARGE];
+  const cool = f[fit.F_CONTINUOUS] > 0 ? heatShare(f, s[at.HEAT]) : 1;
+  const empty = capacity > 0 && charge <= 0;
+  s[at.DRIVE_FACTOR] = empty ? 0 : cool * shareAt(f, f[fit.F_SAG], f[fit.F_SAG_COUNT], charge);
+  s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE], f[fit.F_ACCEPTANCE_COUNT], charge);
+}
+
+function heatShare(f: Float64Array, heat: number): number {
+  const onset = f[fit.F_ONSET];
+  const least = f[fit.F_LEAST_SHARE];
+  if (heat <= onset) return 1;
+  return heat >= 1 ? least : 1 - ((1 - least) * (heat - onset)) / (1 - onset);
+}
+
+/** A line of so many corners at a charge; its ends hold on; 1 without a line. */
+function shareAt(f: Float64Array, line: number, count: number, charge: number): number {
+  if (count === 0) return 1;
+  if (charge <= f[line]) return f[line + count];
+  for (let i = 1; i < count; i++) {
+    const next = f[line + i];
+    if (charge > next) continue;
+    const low = f[line + i - 1];
+    const from = f[line + count + i - 1];
+    return from + ((charge - low) / (next - low)) * (f[line + count + i] - from);
+  }
+  return f[line + 2 * count - 1];
+}
+
+/** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W]. */
+function powerAt(f: Float64Array, shaftSpeed: number, torque: number): number {
+  const columns = f[fit.F_TORQUE_COUNT];
+  const i = cellFrom(f, f[fit.F_SPEEDS], f[fit.F_SPEED_COUNT], shaftSpeed);
+  const j = cellFrom(f, f[fit.F_TORQUES], columns, torque);
+  const u = f[fit.F_SPEEDS] + i;
+  const t = f[fit.F_TORQUES] + j;
+  const across = (shaftSpeed - f[u]) / (f[u + 1] - f[u]);
+  const along = (torque - f[t]) / (f[t + 1] - f[t]);
+  const corner = f[fit.F_POWER] + i * columns + j;
+  const low = f[corner] + along * (f[corner + 1] - f[corner]);
+  const high = f[corner + columns] + along * (f[corner + columns + 1] - f[corner + columns]);
+  return Math.max(f[fit.F_LEAST], low + across * (high - low));
+}
+
+/** Cell of a value among so many knots from a place on; beyond the ends the outer cell. */
+function cellFrom(f: Float64Array, place: number, count: number, value: number): number {
+  let cell = 0;
+  while (cell < count - 2 && value >= f[place + cell + 1]) cell++;
+  return cell;
+}

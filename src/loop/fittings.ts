@@ -1,0 +1,176 @@
+import { exp } from '../numeric/elementary.ts';
+import type { Gearbox } from '../vehicle/drive.ts';
+import type { EnergySource, Heating, ShareOverCharge } from '../vehicle/energy-source.ts';
+import type { SpeedSensor } from '../vehicle/vehicle.ts';
+import type { LoopPlan } from './plan.ts';
+
+/**
+ * The devices that work once a sample, compiled to flat arrays, because numbers that closures or objects hold are boxed
+ * and checked at every sample. An array of length 0: there is no such device. Places below.
+ */
+export interface Fittings {
+  /** A sensor that counts or times pulses, or is noisy: `senseSpeed` measures in the place of the kernel. */
+  readonly sensor: Float64Array;
+  /** Rows of the history that such a sensor needs (P_HISTORY); 0: none. */
+  readonly history: number;
+  /** Shift lines of an automatic gearbox: `shiftDue` looks at them. */
+  readonly gearbox: Float64Array;
+  /** Tank or battery: `drawPower` draws from it. */
+  readonly source: Float64Array;
+}
+
+// --- sensor ---
+/** What is read: 0 the speed itself, 1 pulses counted in a window, 2 the last period. */
+export const F_READING = 0;
+export const SPEED_READING = 0;
+export const COUNTED_READING = 1;
+export const TIMED_READING = 2;
+/** Way between two pulses [m], window in samples and in seconds, resolution of the clock [s]. */
+export const F_SPACING = 1;
+export const F_WINDOW = 2;
+export const F_WINDOW_TIME = 3;
+export const F_CLOCK = 4;
+/** Transport, computing and dead time in samples; sample [s]; rows of the ring. */
+export const F_DELAY = 5;
+export const F_SAMPLE = 6;
+export const F_ROWS = 7;
+export const F_SCALE = 8;
+/** Filter: what is kept of its output, weights of the reading before and of this one. */
+export const F_KEPT = 9;
+export const F_BEFORE = 10;
+export const F_NOW = 11;
+export const F_NOISE = 12;
+/** Seed: low and high word. */
+export const F_SEED = 13;
+export const F_SENSOR_SIZE = 15;
+
+// --- gearbox: gears, corners of the lines, then the lines: throttle, up, down ---
+export const F_GEARS = 0;
+export const F_CORNERS = 1;
+export const F_LINES = 2;
+
+// --- source: a head, then the arrays whose places and lengths it holds ---
+export const F_BATTERY = 0;
+/** Shaft speeds, torques, power row by row; the cell in which the map was read last. */
+export const F_SPEEDS = 1;
+export const F_SPEED_COUNT = 2;
+export const F_TORQUES = 3;
+export const F_TORQUE_COUNT = 4;
+export const F_POWER = 5;
+export const F_LEAST = 6;
+export const F_IDLE = 7;
+/** [J]; 0: not known, the charge stands still. */
+export const F_CAPACITY = 8;
+export const F_SAG = 9;
+export const F_SAG_COUNT = 10;
+export const F_ACCEPTANCE = 11;
+export const F_ACCEPTANCE_COUNT = 12;
+/** Continuous power [W], 0: no heat; decay of the heat over a sample, its onset, least share. */
+export const F_CONTINUOUS = 13;
+export const F_COOLED = 14;
+export const F_ONSET = 15;
+export const F_LEAST_SHARE = 16;
+/** Share of charge of a battery at the start. */
+export const F_CHARGE = 17;
+export const F_SOURCE_HEAD = 18;
+
+/** Rows before the ring of the history in which a sensor keeps what it remembers. */
+export const SENSOR_ROWS = 2;
+
+/** Compiles the sample devices of a plan. */
+export function fittingsOf(plan: LoopPlan): Fittings {
+  const { vehicle, controller } = plan;
+  const { drive, actuator } = vehicle;
+  const sample = controller.kind === 'pi' ? controller.sample : plan.lockedSample;
+  const computing = controller.kind === 'pi' ? controller.computingDelay : 0;
+  const sensor = sensorOf(vehicle.sensor, vehicle.sensor.delay + computing + actuator.deadTime, sample);
+  return {
+    sensor,
+    history: sensor.length > 0 ? SENSOR_ROWS + sensor[F_ROWS] : 0,
+    gearbox: gearboxOf(drive.gearbox, drive.gears.length),
+    source: drive.source === null ? new Float64Array(0) : sourceOf(drive.source, drive.idleSpeed, sample),
+  };
+}
+
+function sensorOf(sensor: SpeedSensor, delay: number, sample: number): Float64Array {
+  const { pulses, noise, filter } = sensor;
+  if (pulses === null && noise === null) return new Float64Array(0);
+  const f = new Float64Array(F_SENSOR_SIZE);
+  f[F_DELAY] = delay / sample;
+  f[F_SAMPLE] = sample;
+  f[F_SCALE] = 1 + sensor.scaleError;
+  let reach = f[F_DELAY];
+  if (pulses !== null) {
+    const { reading } = pulses;
+    f[F_SPACING] = pulses.spacing;
+    if (reading.kind === 'counted') {
+      f[F_READING] = COUNTED_READING;
+      f[F_WINDOW] = reading.window / sample;
+      f[F_WINDOW_TIME] = reading.window;
+      reach += f[F_WINDOW];
+    } else {
+      f[F_READING] = TIMED_READING;
+      f[F_CLOCK] = reading.clock;
+      reach += 1;
+    }
+  }
+  f[F_ROWS] = Math.ceil(reach) + 2;
+  // Exact for readings joined by straight lines, so that the filter lags by its time constant, as a continuous one does.
+  const kept = filter > 0 ? exp(-sample / filter) : 0;
+  const mean = filter > 0 ? ((1 - kept) * filter) / sample : 0;
+  f[F_KEPT] = kept;
+  f[F_BEFORE] = mean - kept;
+  f[F_NOW] = 1 - mean;
+  if (noise !== null) {
+    f[F_NOISE] = noise.sd;
+    const seed = Math.trunc(noise.seed);
+    f[F_SEED] = (seed % 4294967296) >>> 0;
+    f[F_SEED + 1] = Math.floor(Math.abs(seed) / 4294967296) >>> 0;
+  }
+  return f;
+}
+
+function gearboxOf(gearbox: Gearbox, gears: number): Float64Array {
+  if (gearbox.kind !== 'automatic') return new Float64Array(0);
+  const { throttle, upSpeed, downSpeed } = gearbox;
+  return Float64Array.of(gears, throttle.length, ...throttle, ...upSpeed, ...downSpeed);
+}
+
+function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Float64Array {
+  const { map } = source;
+  const battery = source.kind === 'battery' ? source : null;
+  const f: number[] = Array.from({ length: F_SOURCE_HEAD }, () => 0);
+  const append = (values: Float64Array): number => {
+    const place = f.length;
+    f.push(...values);
+    return place;
+  };
+  f[F_BATTERY] = battery === null ? 0 : 1;
+  f[F_SPEEDS] = append(map.shaftSpeed);
+  f[F_SPEED_COUNT] = map.shaftSpeed.length;
+  f[F_TORQUES] = append(map.torque);
+  f[F_TORQUE_COUNT] = map.torque.length;
+  f[F_POWER] = append(map.power);
+  f[F_LEAST] = map.least;
+  f[F_IDLE] = idleSpeed;
+  f[F_CAPACITY] = battery?.capacity ?? 0;
+  f[F_CHARGE] = battery?.charge ?? 0;
+  const line = (share: ShareOverCharge | null): readonly [number, number] => {
+    if (share === null) return [0, 0];
+    const place = append(share.charge);
+    append(share.share);
+    return [place, share.charge.length];
+  };
+  [f[F_SAG], f[F_SAG_COUNT]] = line(battery?.sag ?? null);
+  [f[F_ACCEPTANCE], f[F_ACCEPTANCE_COUNT]] = line(battery?.acceptance ?? null);
+  writeHeating(f, battery?.heating ?? null, sample);
+  return Float64Array.from(f);
+}
+
+function writeHeating(f: number[], heating: Heating | null, sample: number): void {
+  if (heating === null) return;
+  f[F_CONTINUOUS] = heating.continuousPower;
+  f[F_COOLED] = exp(-sample / heating.time);
+  f[F_ONSET] = heating.onset;
+  f[F_LEAST_SHARE] = heating.least;
+}
