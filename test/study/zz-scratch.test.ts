@@ -20,13 +20,7 @@ const flat = roadOf([
   { length: 5000, grade: 0 },
 ]);
 it('gains', () => {
-  for (const kp of [0.3, 1, 2, 3, 5])
-    console.log(kp, cycles(planOf(flat, vehicleOf({ actuator: { lag: 0.5 } }), piOf({ kp, ki: 0.1 }))));
-});
-it('slack', () => {
-  for (const slack of [0.02, 0.05, 0.1])
-    console.log(
-      slack,
-      cycles(planOf(flat, vehicleOf({ actuator: { lag: 0.1, slack } }), piOf({ kp: 0.3, ki: 0.1 }))),
-    );
+  const v = vehicleOf({actuator: {lag: 1.5}});
+  const late = {...v, sensor: {...v.sensor, delay: 0.6}};
+  for (const kp of [0.3, 0.5, 0.7, 1, 2, 3, 5]) console.log(kp, cycles(planOf(flat, late, piOf({ kp, ki: 0.03 }))));
 });
