@@ -1,44 +1,22 @@
+import { beltRatio, beltRatioSlopes } from './belt-law.ts';
+import { throttleUnderBelt } from './belt-throttle.ts';
+import { cellIndex, cellsInRange, lawAt } from './cell-law.ts';
 import type { Drive } from './drive.ts';
 
-/** Numbers a cell holds: a0, a1, b0, b1, b2, b3. */
-export const CELL_SIZE = 6;
+export { CELL_SIZE, cellIndex } from './cell-law.ts';
 
-/** Where a shaft speed or a throttle falls among inner edges: the number of edges at or below it. */
-export function cellIndex(edges: Float64Array, x: number): number {
-  let index = 0;
-  while (index < edges.length && x >= edges[index]!) index++;
-  return index;
-}
-
-/** Closed-throttle torque and what full opening adds, with their derivatives by shaft speed, in one cell. */
-interface CellLaw {
-  readonly closed: number;
-  readonly closedSlope: number;
-  readonly gain: number;
-  readonly gainSlope: number;
-}
-
-function lawAt(drive: Drive, throttleCell: number, shaftSpeed: number, derate: number): CellLaw {
-  const row = cellIndex(drive.speedEdges, shaftSpeed) * (drive.throttleEdges.length + 1);
-  const at = CELL_SIZE * (row + throttleCell);
-  const c = drive.cells;
-  const w = shaftSpeed;
-  const b3 = c[at + 5]!;
-  const closed = c[at]! + c[at + 1]! * w;
-  const closedSlope = c[at + 1]!;
-  const gain = c[at + 2]! + w * (c[at + 3]! + w * c[at + 4]!) + (b3 === 0 ? 0 : b3 / w);
-  const gainSlope = c[at + 3]! + 2 * w * c[at + 4]! - (b3 === 0 ? 0 : b3 / (w * w));
-  if (derate === 1) return { closed, closedSlope, gain, gainSlope };
-  return {
-    closed,
-    closedSlope,
-    gain: derate * (gain + closed) - closed,
-    gainSlope: derate * (gainSlope + closedSlope) - closedSlope,
-  };
+/**
+ * Shaft speed over wheel speed [1/m]: of the gear, or that at which the belt comes to rest.
+ *
+ * @param speed of the wheel [m/s], >= 0; without a belt it does not count, nor does the throttle
+ */
+export function shaftRatio(drive: Drive, gear: number, speed: number, throttle: number): number {
+  return drive.belt === null ? drive.gears[gear]!.ratio : beltRatio(drive.belt, speed, throttle);
 }
 
 /**
- * Steady wheel force of the one drive law (see `Drive`): lag, limits of the actuator and stall are not in it.
+ * Steady wheel force of the one drive law (see `Drive`), a belt at rest: lag, limits of the actuator and stall are not
+ * in it.
  *
  * @param drive compiled drive
  * @param gear index into `drive.gears`
@@ -54,7 +32,7 @@ export function wheelForce(
   throttle: number,
   derate: number,
 ): number {
-  const { ratio } = drive.gears[gear]!;
+  const ratio = shaftRatio(drive, gear, speed, throttle);
   const law = lawAt(drive, cellIndex(drive.throttleEdges, throttle), ratio * speed, derate);
   return ratio * (law.closed + throttle * law.gain);
 }
@@ -67,11 +45,18 @@ export function wheelForceSlopes(
   throttle: number,
   derate: number,
 ): { readonly bySpeed: number; readonly byThrottle: number } {
-  const { ratio } = drive.gears[gear]!;
+  const ratio = shaftRatio(drive, gear, speed, throttle);
   const law = lawAt(drive, cellIndex(drive.throttleEdges, throttle), ratio * speed, derate);
+  const torqueSlope = law.closedSlope + throttle * law.gainSlope;
+  const bySpeed = ratio * ratio * torqueSlope;
+  const byThrottle = ratio * law.gain;
+  if (drive.belt === null) return { bySpeed, byThrottle };
+  // F = r T(r v, x): dF/dr = T + r v dT/dw.
+  const byRatio = law.closed + throttle * law.gain + ratio * speed * torqueSlope;
+  const slopes = beltRatioSlopes(drive.belt, speed, throttle);
   return {
-    bySpeed: ratio * ratio * (law.closedSlope + throttle * law.gainSlope),
-    byThrottle: ratio * law.gain,
+    bySpeed: bySpeed + byRatio * slopes.bySpeed,
+    byThrottle: byThrottle + byRatio * slopes.byThrottle,
   };
 }
 
@@ -90,11 +75,12 @@ export function forceRange(
 
 /**
  * Throttle that gives a wheel force at a speed. Beyond the range of the drive its outer cells go on in a straight line,
- * so that the answer says how far out of reach the force is; compare it with `throttleMin` and `throttleMax`.
+ * so that the answer says how far out of reach the force is; compare it with `throttleMin` and `throttleMax`. Under a
+ * belt, whose ratio moves with the throttle, it is searched for, and the lowest is taken at which the force rises.
  *
  * @param force [N]
  * @returns the throttle; where the law steps over the force, the throttle of the step; null where no throttle gives it
- * (regeneration at standstill)
+ * (regeneration at standstill, an engine beyond its limiter)
  */
 export function throttleFor(
   drive: Drive,
@@ -103,19 +89,19 @@ export function throttleFor(
   force: number,
   derate: number,
 ): number | null {
+  if (drive.belt !== null) return throttleUnderBelt(drive, drive.belt, speed, force, derate);
   const { ratio } = drive.gears[gear]!;
   const edges = drive.throttleEdges;
-  const first = cellIndex(edges, drive.throttleMin);
-  let last = cellIndex(edges, drive.throttleMax);
-  if (last > first && edges[last - 1] === drive.throttleMax) last -= 1;
+  const { first, last } = cellsInRange(drive);
   let stepFrom = false;
   for (let cell = first; cell <= last; cell++) {
     const law = lawAt(drive, cell, ratio * speed, derate);
+    const missing = force / ratio - law.closed;
     if (law.gain === 0) {
-      stepFrom = false;
+      stepFrom = missing >= 0;
       continue;
     }
-    const throttle = (force / ratio - law.closed) / law.gain;
+    const throttle = missing / law.gain;
     const low = cell === first ? Number.NEGATIVE_INFINITY : edges[cell - 1]!;
     const high = cell === last ? Number.POSITIVE_INFINITY : edges[cell]!;
     if (throttle >= low && throttle <= high) return throttle;
