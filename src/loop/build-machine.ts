@@ -2,6 +2,7 @@ import { controllerFor } from '../control/controller-for.ts';
 import { dragArea } from '../vehicle/road-load.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
+import { fittingsOf } from './fittings.ts';
 import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -19,27 +20,32 @@ const EQUAL_LAGS = 1e-7;
 /** Compiles a plan to flat arrays. The state is empty: see `settle`. */
 export function buildMachine(plan: LoopPlan): Machine {
   const { vehicle } = plan;
-  const { drive } = vehicle;
+  const { drive, actuator } = vehicle;
   const table = roadTable(plan.road, drive.derate);
-  const controller = controllerFor(plan.controller, drive.throttleMin, drive.throttleMax);
+  const least = Math.max(drive.throttleMin, actuator.travel?.least ?? drive.throttleMin);
+  const greatest = Math.min(drive.throttleMax, actuator.travel?.greatest ?? drive.throttleMax);
+  // The controller's range is that of what it moves, so that it does not wind up behind an end stop.
+  const controller = controllerFor(plan.controller, least, greatest);
+  const fittings = fittingsOf(plan);
   const p = new Float64Array(at.P_SIZE);
   const sample = controller.sample ?? plan.lockedSample;
-  const gear = drive.gears[drive.gear]!;
 
   p[at.P_SAMPLE] = sample;
   p[at.P_STEPS] = Math.ceil(sample / longestStep(plan) - 1e-9);
   p[at.P_STEP] = sample / p[at.P_STEPS];
   p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
   p[at.P_MASS] = vehicle.mass;
-  p[at.P_EFFECTIVE_MASS] = vehicle.mass + vehicle.rotatingMass + gear.inertia;
+  p[at.P_BASE_MASS] = vehicle.mass + vehicle.rotatingMass;
   p[at.P_CDA] = dragArea(vehicle.roadLoad, 0);
   p[at.P_CDA_BEHIND] = dragArea(vehicle.roadLoad, Math.PI);
   p[at.P_C0] = vehicle.roadLoad.c0;
   p[at.P_C1] = vehicle.roadLoad.c1;
   p[at.P_C2] = vehicle.roadLoad.c2;
   p[at.P_STALL_SPEED] = drive.stallSpeed;
-  p[at.P_LOW] = drive.throttleMin;
-  p[at.P_HIGH] = drive.throttleMax;
+  p[at.P_LOW] = p[at.P_LEAST] = least;
+  p[at.P_HIGH] = p[at.P_GREATEST] = greatest;
+  p[at.P_RESOLUTION] = actuator.resolution;
+  p[at.P_PLAY] = 0.5 * actuator.slack;
   p[at.P_CROSSWIND] = table.crosswind ? 1 : 0;
   p.set(plan.bands, at.P_BANDS);
   p[at.P_BAND_COUNT] = plan.bands.length;
@@ -47,14 +53,20 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_TO_TRUE] = plan.hold.setSpeedIs === 'indicated' ? 1 / (1 + scaleError) : 1;
   p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
   writeLags(p, vehicle, controller.computingDelay);
+  writeKinds(p, vehicle);
+  if (fittings.history > 0) p[at.P_HISTORY] = fittings.history;
 
   return {
     s: new Float64Array(at.HISTORY + at.HISTORY_STRIDE * p[at.P_HISTORY]),
     p,
     rows: table.rows,
-    cells: cellsOverSpeed(drive.cells, gear.ratio),
-    speedEdges: drive.speedEdges.map((edge) => edge / gear.ratio),
+    cells: drive.cells,
+    losses: drive.losses,
+    speedEdges: drive.speedEdges,
     throttleEdges: drive.throttleEdges,
+    gears: Float64Array.from(drive.gears.flatMap(({ ratio, inertia }) => [ratio, inertia])),
+    belt: drive.belt,
+    fittings,
     controller,
     tangent: dragTangent(vehicle.roadLoad),
     lags: decays(p),
@@ -68,6 +80,19 @@ function longestStep({ scheme, vehicle }: LoopPlan): number {
   if (scheme === 'fast') return LONGEST_STEP;
   const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
   return Math.min(LONGEST_STEP, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
+}
+
+/** Which of the sample's devices this vehicle has. */
+function writeKinds(p: Float64Array, { drive, sensor }: Vehicle): void {
+  const { source } = drive;
+  const tiring =
+    source?.kind === 'battery' &&
+    (source.sag !== null || source.acceptance !== null || source.heating !== null);
+  p[at.P_DERATED] = drive.derate !== 'none' || tiring ? 1 : 0;
+  p[at.P_SOURCE] = source === null ? 0 : 1;
+  p[at.P_SENSED] = sensor.pulses === null && sensor.noise === null ? 0 : 1;
+  p[at.P_AUTOMATIC] = drive.gearbox.kind === 'automatic' ? 1 : 0;
+  p[at.P_BELT] = drive.belt === null ? 0 : 1;
 }
 
 function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): void {
@@ -85,8 +110,8 @@ function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): v
   const { filter, delay, scaleError } = vehicle.sensor;
   p[at.P_FILTER] = filter;
   p[at.P_SCALE] = 1 + scaleError;
-  // A command that is late by the computing delay is the command of a measurement that is older by it.
-  p[at.P_DELAY] = (delay + computingDelay) / p[at.P_SAMPLE];
+  // A command that is late by computing delay and dead time is the command of a measurement that is older by them.
+  p[at.P_DELAY] = (delay + computingDelay + vehicle.actuator.deadTime) / p[at.P_SAMPLE];
   p[at.P_HISTORY] = p[at.P_DELAY] > 0 ? Math.ceil(p[at.P_DELAY]) + 1 : 0;
 }
 
@@ -103,11 +128,4 @@ function decays(p: Float64Array): Float64Array {
   p[at.P_PULL_MEAN] =
     p[at.P_LAG_WEIGHT] * (actuator - drive) + p[at.P_LAG_EQUAL] * td * (drive - lags[at.G_DRIVE]);
   return lags;
-}
-
-/** Cells in terms of wheel force and vehicle speed: w = ratio v, F = ratio T. */
-function cellsOverSpeed(cells: Float64Array, ratio: number): Float64Array {
-  const square = ratio * ratio;
-  const factors = [ratio, square, ratio, square, square * ratio, 1];
-  return cells.map((value, i) => value * factors[i % 6]!);
 }

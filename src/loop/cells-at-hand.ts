@@ -2,8 +2,9 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
 /** Copies a cell of the road to `here`, where a kernel reads it at fixed places; g sin, g cos by mass over effective mass. */
-export function enterRoadCell({ p, rows, here }: Machine, row: number): void {
-  const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
+export function enterRoadCell({ s, p, rows, here }: Machine, row: number): void {
+  const effectiveMass = s[at.EFFECTIVE_MASS];
+  const share = p[at.P_MASS] / effectiveMass;
   here[at.H_STATION] = rows[row + at.R_STATION];
   here[at.H_LENGTH] = rows[row + at.R_LENGTH];
   here[at.H_SIN] = share * rows[row + at.R_SIN];
@@ -14,25 +15,38 @@ export function enterRoadCell({ p, rows, here }: Machine, row: number): void {
   here[at.H_HEADWIND + 1] = rows[row + at.R_HEADWIND + 1];
   here[at.H_DERATE] = rows[row + at.R_DERATE];
   here[at.H_DERATE + 1] = rows[row + at.R_DERATE + 1];
-  here[at.H_AIR] = rows[row + at.R_AIR] / p[at.P_EFFECTIVE_MASS];
-  here[at.H_AIR + 1] = rows[row + at.R_AIR + 1] / p[at.P_EFFECTIVE_MASS];
+  here[at.H_AIR] = rows[row + at.R_AIR] / effectiveMass;
+  here[at.H_AIR + 1] = rows[row + at.R_AIR + 1] / effectiveMass;
 }
 
-/** Copies a cell of the drive and its edges to `here`, forces per unit of effective mass. */
+/** Copies a cell of the drive and its edges to `here`, over vehicle speed, forces per unit of effective mass. */
 export function enterDriveCell(machine: Machine, speedCell: number, throttleCell: number): void {
-  const { p, cells, speedEdges, throttleEdges, here } = machine;
+  const { s, cells, losses, speedEdges, throttleEdges, here } = machine;
   const throttleCells = throttleEdges.length + 1;
-  here[at.H_FLOOR] = speedCell > 0 ? speedEdges[speedCell - 1] : 0;
-  here[at.H_CEILING] = speedCell < speedEdges.length ? speedEdges[speedCell] : Number.POSITIVE_INFINITY;
+  const ratio = s[at.RATIO];
+  here[at.H_FLOOR] = speedCell > 0 ? speedEdges[speedCell - 1] / ratio : 0;
+  here[at.H_CEILING] =
+    speedCell < speedEdges.length ? speedEdges[speedCell] / ratio : Number.POSITIVE_INFINITY;
   here[at.H_LOW] = throttleCell > 0 ? throttleEdges[throttleCell - 1] : Number.NEGATIVE_INFINITY;
   here[at.H_HIGH] =
     throttleCell < throttleEdges.length ? throttleEdges[throttleCell] : Number.POSITIVE_INFINITY;
+  // F = r T(r v): the hyperbola b3 / w keeps its power whatever the ratio, but for an open clutch.
   const cell = 6 * (speedCell * throttleCells + throttleCell);
-  const inverse = 1 / p[at.P_EFFECTIVE_MASS];
-  here[at.H_CLOSED] = inverse * cells[cell];
-  here[at.H_CLOSED + 1] = inverse * cells[cell + 1];
-  here[at.H_FULL] = inverse * (cells[cell] + cells[cell + 2]);
-  here[at.H_FULL + 1] = inverse * (cells[cell + 1] + cells[cell + 3]);
-  here[at.H_FULL + 2] = inverse * cells[cell + 4];
-  here[at.H_FULL + 3] = inverse * cells[cell + 5];
+  const inverse = 1 / s[at.EFFECTIVE_MASS];
+  const flat = ratio * inverse;
+  const slanted = ratio * flat;
+  const bent = ratio * slanted;
+  const power = ratio > 0 ? inverse : 0;
+  here[at.H_LAW] = flat * cells[cell];
+  here[at.H_LAW + 1] = slanted * cells[cell + 1];
+  here[at.H_LAW + 2] = flat * cells[cell + 2];
+  here[at.H_LAW + 3] = slanted * cells[cell + 3];
+  here[at.H_LAW + 4] = bent * cells[cell + 4];
+  here[at.H_LAW + 5] = power * cells[cell + 5];
+  here[at.H_LOSS] = flat * losses[cell];
+  here[at.H_LOSS + 1] = slanted * losses[cell + 1];
+  here[at.H_LOSS + 2] = flat * losses[cell + 2];
+  here[at.H_LOSS + 3] = slanted * losses[cell + 3];
+  here[at.H_LOSS + 4] = bent * losses[cell + 4];
+  here[at.H_LOSS + 5] = power * losses[cell + 5];
 }

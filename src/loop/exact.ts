@@ -2,6 +2,7 @@ import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } fro
 import { moveReference } from '../control/set-point.ts';
 import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { stallSpeed } from './engage-gear.ts';
 import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -39,7 +40,6 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const timed = p[at.P_TIMED] === 1;
-  const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
   const cda = p[at.P_CDA];
   const cdaBehind = p[at.P_CDA_BEHIND];
   const c0 = p[at.P_C0];
@@ -52,7 +52,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const filter = p[at.P_FILTER];
   const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
-  const stallSpeed = p[at.P_STALL_SPEED];
+  const stall = stallSpeed(machine);
+  const derated = p[at.P_DERATED] === 1;
+  const mass = s[at.EFFECTIVE_MASS];
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastRow = rows.length - at.R_STRIDE;
@@ -133,8 +135,6 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       const ceiling = here[at.H_CEILING];
       const low = here[at.H_LOW];
       const high = here[at.H_HIGH];
-      const a0 = here[at.H_CLOSED];
-      const a1 = here[at.H_CLOSED + 1];
       const from = q - here[at.H_STATION];
       const room = here[at.H_LENGTH] - from;
 
@@ -172,11 +172,22 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           near = tangent.out[0];
           slope = tangent.out[1];
         } else if (v + wind0 + wind1 * from < 0) slope = -air * cdaBehind;
-        const d = here[at.H_DERATE] + here[at.H_DERATE + 1] * middle;
-        const b0 = d * here[at.H_FULL] - a0;
-        const b1 = d * here[at.H_FULL + 1] - a1;
-        const b2 = d * here[at.H_FULL + 2];
-        const b3 = d * here[at.H_FULL + 3];
+        let a0 = here[at.H_LAW];
+        let a1 = here[at.H_LAW + 1];
+        let b0 = here[at.H_LAW + 2];
+        let b1 = here[at.H_LAW + 3];
+        let b2 = here[at.H_LAW + 4];
+        let b3 = here[at.H_LAW + 5];
+        if (derated) {
+          const factor = high > 0 ? s[at.DRIVE_FACTOR] : s[at.REGENERATION_FACTOR];
+          const lost = 1 - factor * (here[at.H_DERATE] + here[at.H_DERATE + 1] * middle);
+          a0 -= lost * here[at.H_LOSS];
+          a1 -= lost * here[at.H_LOSS + 1];
+          b0 -= lost * here[at.H_LOSS + 2];
+          b1 -= lost * here[at.H_LOSS + 3];
+          b2 -= lost * here[at.H_LOSS + 4];
+          b3 -= lost * here[at.H_LOSS + 5];
+        }
 
         const w1 = v + wind0 + wind1 * from;
         const drive1 = a0 + x * b0 + v * (a1 + x * b1 + v * x * b2) + (b3 === 0 ? 0 : (x * b3) / v);
@@ -238,22 +249,25 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           }
         }
 
-        const work = sixth * (v * drive1 + 2 * (v2 * drive2 + v3 * drive3) + v4 * drive4);
+        const weight = mass * sixth;
+        const work = weight * (v * drive1 + 2 * (v2 * drive2 + v3 * drive3) + v4 * drive4);
         if (work >= 0) chunk[at.C_PUSH] += work;
         else chunk[at.C_HOLD] += work;
-        chunk[at.C_AERO] += sixth * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
-        chunk[at.C_ROLLING] += sixth * (v * rolling1 + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
+        chunk[at.C_AERO] += weight * (v * aero1 + 2 * (v2 * aero2 + v3 * aero3) + v4 * aero4);
+        chunk[at.C_ROLLING] += weight * (v * rolling1 + 2 * (v2 * rolling2 + v3 * rolling3) + v4 * rolling4);
         if (watched) {
-          chunk[at.C_BRAKE] += sixth * (v * brake1 + 2 * (v2 * brake2 + v3 * brake3) + v4 * brake4);
+          chunk[at.C_BRAKE] += weight * (v * brake1 + 2 * (v2 * brake2 + v3 * brake3) + v4 * brake4);
           if (brake1 + brake4 > 0) chunk[at.C_BRAKE_TIME] += h;
         }
         chunk[at.C_DISTANCE] += ds;
         if (timed)
-          chunk[at.C_CLIMB] += ds * sin0 + sixth * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
+          chunk[at.C_CLIMB] +=
+            mass * ds * sin0 + weight * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
         if (pieces === 0) {
-          chunk[at.C_DRIVE_FORCE] = drive1;
+          chunk[at.C_DRIVE_FORCE] = mass * drive1;
+          log[(tick - 1) * at.L_STRIDE + at.L_FORCE] = mass * drive1;
           chunk[at.C_ACCELERATION] = k1;
-          chunk[at.C_BRAKE_FORCE] = brake1;
+          chunk[at.C_BRAKE_FORCE] = mass * brake1;
           limited = rated;
           slope0 = filter > 0 ? (v - z) / filter : k1;
         }
@@ -302,7 +316,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       return at.NON_FINITE;
     }
     if (event === at.STOPPED) v = 0;
-    else if (v < stallSpeed) event = at.STALLED;
+    else if (v < stall) event = at.STALLED;
     elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
@@ -324,7 +338,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   s[at.THROTTLE_CELL] = throttleCell;
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
-  if (!timed) chunk[at.C_CLIMB] = share * (integralTo(rows, row, at.R_SIN, q) - height0);
-  chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
+  if (!timed) chunk[at.C_CLIMB] = p[at.P_MASS] * (integralTo(rows, row, at.R_SIN, q) - height0);
+  chunk[at.C_KINETIC] = 0.5 * mass * (v - v0) * (v + v0);
   return event;
 }

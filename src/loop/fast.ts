@@ -2,6 +2,7 @@ import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } fro
 import { moveReference } from '../control/set-point.ts';
 import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { stallSpeed } from './engage-gear.ts';
 import { decay, rampedStep } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -27,7 +28,8 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const step = p[at.P_STEP];
   const half = 0.5 * step;
   const timed = p[at.P_TIMED] === 1;
-  const share = p[at.P_MASS] / p[at.P_EFFECTIVE_MASS];
+  const ratio = s[at.RATIO];
+  const share = p[at.P_MASS] / s[at.EFFECTIVE_MASS];
   const cda = p[at.P_CDA];
   const cdaBehind = p[at.P_CDA_BEHIND];
   const c0 = p[at.P_C0];
@@ -45,7 +47,9 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const filter = p[at.P_FILTER];
   const delayed = p[at.P_DELAY] > 0;
   const scale = p[at.P_SCALE];
-  const stallSpeed = p[at.P_STALL_SPEED];
+  const stall = stallSpeed(machine);
+  const derated = p[at.P_DERATED] === 1;
+  const mass = s[at.EFFECTIVE_MASS];
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastSpeedCell = speedEdges.length;
@@ -103,8 +107,8 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
 
       let vm = v + half * acceleration;
       if (!(vm > 0)) vm = 0.5 * v;
-      while (speedCell > 0 && vm < speedEdges[speedCell - 1]) speedCell--;
-      while (speedCell < lastSpeedCell && vm > speedEdges[speedCell]) speedCell++;
+      while (speedCell > 0 && ratio * vm < speedEdges[speedCell - 1]) speedCell--;
+      while (speedCell < lastSpeedCell && ratio * vm > speedEdges[speedCell]) speedCell++;
       while (throttleCell > 0 && xm < throttleEdges[throttleCell - 1]) throttleCell--;
       while (throttleCell < lastThrottleCell && xm > throttleEdges[throttleCell]) throttleCell++;
 
@@ -136,20 +140,32 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
         tangent.at(w, rows[row + at.R_CROSSWIND] + rows[row + at.R_CROSSWIND + 1] * middle, air);
         drag = w * (tangent.out[0] + tangent.out[1] * w);
       }
-      const d = here[at.H_DERATE] + here[at.H_DERATE + 1] * middle;
-      const f3 = here[at.H_FULL + 3];
-      const closed = here[at.H_CLOSED] + here[at.H_CLOSED + 1] * vm;
-      const full =
-        here[at.H_FULL] + vm * (here[at.H_FULL + 1] + vm * here[at.H_FULL + 2]) + (f3 === 0 ? 0 : f3 / vm);
-      const force = closed + xm * (d * full - closed);
+      const b3 = here[at.H_LAW + 5];
+      let force =
+        here[at.H_LAW] +
+        xm * here[at.H_LAW + 2] +
+        vm * (here[at.H_LAW + 1] + xm * (here[at.H_LAW + 3] + vm * here[at.H_LAW + 4])) +
+        (b3 === 0 ? 0 : (xm * b3) / vm);
+      if (derated) {
+        const factor = here[at.H_HIGH] > 0 ? s[at.DRIVE_FACTOR] : s[at.REGENERATION_FACTOR];
+        const lost = 1 - factor * (here[at.H_DERATE] + here[at.H_DERATE + 1] * middle);
+        const l3 = here[at.H_LOSS + 5];
+        force -=
+          lost *
+          (here[at.H_LOSS] +
+            xm * here[at.H_LOSS + 2] +
+            vm * (here[at.H_LOSS + 1] + xm * (here[at.H_LOSS + 3] + vm * here[at.H_LOSS + 4])) +
+            (l3 === 0 ? 0 : (xm * l3) / vm));
+      }
       const resist = normal * (c0 + vm * (c1 + vm * c2));
       let a = force - drag - resist - slope;
       const brake = v > brakeSpeed - BRAKE_WATCH ? riderBrake(a, vm - brakeSpeed) : 0;
       a -= brake;
       if (part === 0) {
-        chunk[at.C_DRIVE_FORCE] = force;
+        chunk[at.C_DRIVE_FORCE] = mass * force;
+        log[(tick - 1) * at.L_STRIDE + at.L_FORCE] = mass * force;
         chunk[at.C_ACCELERATION] = a;
-        chunk[at.C_BRAKE_FORCE] = brake;
+        chunk[at.C_BRAKE_FORCE] = mass * brake;
         slope0 = filter > 0 ? (v - z) / filter : a;
       }
 
@@ -173,14 +189,15 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
         event = at.END_OF_ROAD;
       }
 
-      const work = force * ds;
+      const way = mass * ds;
+      const work = force * way;
       if (work >= 0) chunk[at.C_PUSH] += work;
       else chunk[at.C_HOLD] += work;
-      chunk[at.C_AERO] += drag * ds;
-      chunk[at.C_ROLLING] += resist * ds;
-      chunk[at.C_CLIMB] += slope * ds;
+      chunk[at.C_AERO] += drag * way;
+      chunk[at.C_ROLLING] += resist * way;
+      chunk[at.C_CLIMB] += slope * way;
       if (brake > 0) {
-        chunk[at.C_BRAKE] += brake * ds;
+        chunk[at.C_BRAKE] += brake * way;
         chunk[at.C_BRAKE_TIME] += h;
       }
       chunk[at.C_DISTANCE] += ds;
@@ -203,7 +220,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     }
     if (event === at.RUNNING) {
       elapsed = sample;
-      if (v < stallSpeed) event = at.STALLED;
+      if (v < stall) event = at.STALLED;
     }
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
@@ -225,6 +242,6 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   s[at.THROTTLE_CELL] = throttleCell;
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
-  chunk[at.C_KINETIC] = 0.5 * (v - v0) * (v + v0);
+  chunk[at.C_KINETIC] = 0.5 * mass * (v - v0) * (v + v0);
   return event;
 }

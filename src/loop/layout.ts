@@ -39,12 +39,13 @@ export const LAST_COMMAND = 36;
 export const GEAR = 37;
 export const RATIO = 38;
 export const EFFECTIVE_MASS = 39;
-/** A shift under way: the gear it goes to, 0 none, 1 clutch open, 2 the rider's throttle until hold resumes; tick at which this part ends, tick of the last shift; planned shifts that have begun. */
+/** A shift under way: the gear it goes to, 0 none, 1 clutch open, 2 the rider's throttle until hold resumes; tick at which this part ends; planned shifts that have begun. A part of -1: an automatic gearbox rests after a shift. */
 export const NEXT_GEAR = 40;
 export const SHIFT_PART = 41;
 export const SHIFT_UNTIL = 42;
-export const SHIFTED_AT = 43;
-export const SHIFTS = 44;
+export const SHIFTS = 43;
+/** Gear for which a throttle was locked `level` the last time. */
+export const LOCK_GEAR = 44;
 /** Throttle behind the actuator's slack. */
 export const PLATE = 45;
 /** Distance travelled since the start [m]. */
@@ -60,11 +61,13 @@ export const SHIFT_WORK = 52;
 /** What a sensor with pulses or noise keeps: filtered reading, and one more place. */
 export const SENSED = 53;
 export const SENSED_MORE = 54;
+/** Effective mass at the start of the run [kg]. */
+export const START_MASS = 55;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 55;
+export const HISTORY = 56;
 export const HISTORY_STRIDE = 3;
 
-// --- chunk: sums over the samples that a kernel has just run, works per unit of effective mass ---
+// --- chunk: sums over the samples that a kernel has just run, works and energies [J] ---
 export const C_TICKS = 0;
 /** Seconds and distance travelled. */
 export const C_TIME = 1;
@@ -81,17 +84,20 @@ export const C_KINETIC = 9;
 /** Time of the samples that began at the actuator's rate limit, and of those with the brake on. */
 export const C_RATED_TIME = 10;
 export const C_BRAKE_TIME = 11;
-/** At the start of the last sample: forces of drive and brake per unit of effective mass, acceleration. */
-export const C_DRIVE_FORCE = 12;
-export const C_BRAKE_FORCE = 13;
-export const C_ACCELERATION = 14;
-export const C_SIZE = 15;
+/** Drawn from fuel or battery. */
+export const C_DRAWN = 12;
+/** At the start of the last sample: forces of drive and brake [N], acceleration. */
+export const C_DRIVE_FORCE = 13;
+export const C_BRAKE_FORCE = 14;
+export const C_ACCELERATION = 15;
+export const C_SIZE = 16;
 
-// --- log: a row a sample of the chunk, at its start: speed, throttle at the actuator, command before it is limited ---
+// --- log: a row a sample of the chunk, at its start: speed, throttle behind the slack, command before it is limited, wheel force of the drive ---
 export const L_SPEED = 0;
 export const L_ACTUATOR = 1;
 export const L_COMMAND = 2;
-export const L_STRIDE = 3;
+export const L_FORCE = 3;
+export const L_STRIDE = 4;
 export const LOG_ROWS = 128;
 
 // --- parameters: constant over a run ---
@@ -102,7 +108,8 @@ export const P_STEP = 2;
 /** 1: the station is time. */
 export const P_TIMED = 3;
 export const P_MASS = 4;
-export const P_EFFECTIVE_MASS = 5;
+/** Mass with the turning wheels, without what turns before the gear; with it: EFFECTIVE_MASS. */
+export const P_BASE_MASS = 5;
 /** Drag area with the air from ahead; from behind: P_CDA_BEHIND. */
 export const P_CDA = 6;
 export const P_C0 = 7;
@@ -122,9 +129,10 @@ export const P_PULL_MEAN = 17;
 export const P_FILTER = 18;
 /** Measured over true speed. */
 export const P_SCALE = 19;
-/** Transport and computing delay in samples, and rows of the history. */
+/** Transport delay, computing delay and dead time in samples, and rows of the history. */
 export const P_DELAY = 20;
 export const P_HISTORY = 21;
+/** Shaft speed below which the drive stalls. */
 export const P_STALL_SPEED = 22;
 export const P_LOW = 23;
 export const P_HIGH = 24;
@@ -137,7 +145,18 @@ export const P_TO_TRUE = 30;
 export const P_BRAKES_ABOVE = 31;
 export const P_BAND_COUNT = 32;
 export const P_CDA_BEHIND = 33;
-export const P_SIZE = 34;
+/** Step of the command, 0: none; the command's range between the actuator's end stops; half of the slack. */
+export const P_RESOLUTION = 34;
+export const P_LEAST = 35;
+export const P_GREATEST = 36;
+export const P_PLAY = 37;
+/** 1: the drive can be derated; there is a fuel tank or battery; a sensor with pulses or noise; an automatic gearbox; a belt. */
+export const P_DERATED = 38;
+export const P_SOURCE = 39;
+export const P_SENSED = 40;
+export const P_AUTOMATIC = 41;
+export const P_BELT = 42;
+export const P_SIZE = 43;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;
@@ -185,10 +204,10 @@ export const H_FLOOR = 12;
 export const H_CEILING = 13;
 export const H_LOW = 14;
 export const H_HIGH = 15;
-/** Force at closed throttle a0 + a1 v, and at full throttle, underated, f0 + v (f1 + v f2) + f3 / v. */
-export const H_CLOSED = 16;
-export const H_FULL = 18;
-export const H_SIZE = 22;
+/** The drive's law over vehicle speed, a0 + a1 v + x (b0 + b1 v + b2 v^2 + b3 / v), and what derating by all of it takes away. */
+export const H_LAW = 16;
+export const H_LOSS = 22;
+export const H_SIZE = 28;
 
 // --- what a kernel returns ---
 export const RUNNING = 0;

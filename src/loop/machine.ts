@@ -1,5 +1,7 @@
 import type { Controller } from '../control/controller.ts';
+import type { Belt } from '../vehicle/drive.ts';
 import type { DragTangent } from './crosswind.ts';
+import type { Fittings } from './fittings.ts';
 
 /** A run compiled to flat arrays: what a kernel works on. Places in layout.ts. */
 export interface Machine {
@@ -7,10 +9,16 @@ export interface Machine {
   readonly p: Float64Array;
   /** Road table. */
   readonly rows: Float64Array;
-  /** Drive cells in terms of vehicle speed, with the gear folded in, and their inner edges [m/s], [throttle]. */
+  /** Drive cells and losses over shaft speed and throttle, and their inner edges; the ratio in hand is s[RATIO]. */
   readonly cells: Float64Array;
+  readonly losses: Float64Array;
   readonly speedEdges: Float64Array;
   readonly throttleEdges: Float64Array;
+  /** Ratio [1/m] and equivalent mass before the gear [kg] of every gear. */
+  readonly gears: Float64Array;
+  readonly belt: Belt | null;
+  /** Devices that work once a sample. */
+  readonly fittings: Fittings;
   readonly controller: Controller;
   readonly tangent: DragTangent;
   /** Decays of the lags over a step. */
@@ -24,6 +32,7 @@ export interface Machine {
 
 /**
  * Runs up to `ticks` samples (at most LOG_ROWS), none of which starts at or beyond the station `until`, logs them and
- * sums over them. Returns RUNNING, or why it ended within a sample; NON_FINITE leaves the state as it was, and no sums.
+ * sums over them; fewer where an automatic gearbox wants to shift before the next. Returns RUNNING, or why it ended
+ * within a sample; NON_FINITE leaves the state as it was, and no sums.
  */
 export type Kernel = (machine: Machine, ticks: number, until: number) => number;

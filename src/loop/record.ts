@@ -1,4 +1,5 @@
 import { BUS_TARGET } from '../control/bus.ts';
+import { gearInHand } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { BinRecord } from './result.ts';
@@ -25,12 +26,16 @@ const BRAKE_WORK = 20;
 const SET_SPEED = 21;
 const ERROR_MIN = 22;
 const ERROR_MAX = 23;
-const SUMS = 24;
+const FORCE_MIN = 24;
+const FORCE_MAX = 25;
+const SHIFT = 26;
+const DRAWN = 27;
+const SUMS = 28;
 
 function clearSums(sums: Float64Array): void {
   sums.fill(0);
-  sums[SPEED_MIN] = sums[ERROR_MIN] = sums[THROTTLE_MIN] = Number.POSITIVE_INFINITY;
-  sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = Number.NEGATIVE_INFINITY;
+  sums[SPEED_MIN] = sums[ERROR_MIN] = sums[THROTTLE_MIN] = sums[FORCE_MIN] = Number.POSITIVE_INFINITY;
+  sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = sums[FORCE_MAX] = Number.NEGATIVE_INFINITY;
 }
 
 /** Adds the samples that a kernel has just run to the sums of the open bin. The set speed is the same for all of them. */
@@ -55,12 +60,15 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   let fastest = Number.NEGATIVE_INFINITY;
   let least = sums[THROTTLE_MIN];
   let most = sums[THROTTLE_MAX];
+  let weakest = sums[FORCE_MIN];
+  let strongest = sums[FORCE_MAX];
   if (sums[TIME] === 0) sums[SET_SPEED] = setSpeed;
   for (let i = 0; i <= last; i += at.L_STRIDE) {
     const share = i < last ? 1 : lastShare;
     const speed = log[i + at.L_SPEED];
     const throttle = log[i + at.L_ACTUATOR];
     let command = log[i + at.L_COMMAND];
+    const force = log[i + at.L_FORCE];
     const error = speed - setSpeed;
     errors += error * share;
     squares += error * error * share;
@@ -69,6 +77,8 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
     if (speed > fastest) fastest = speed;
     if (throttle < least) least = throttle;
     if (throttle > most) most = throttle;
+    if (force < weakest) weakest = force;
+    if (force > strongest) strongest = force;
     if (command >= highest) {
       command = highest;
       upper += share;
@@ -97,9 +107,13 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   sums[LOWER] += sample * lower;
   sums[RATE] += chunk[at.C_RATED_TIME];
   sums[BRAKE] += chunk[at.C_BRAKE_TIME];
-  sums[PUSH] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_PUSH];
-  sums[HOLD] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_HOLD];
-  sums[BRAKE_WORK] += p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE];
+  sums[PUSH] += chunk[at.C_PUSH];
+  sums[HOLD] += chunk[at.C_HOLD];
+  sums[BRAKE_WORK] += chunk[at.C_BRAKE];
+  sums[DRAWN] += chunk[at.C_DRAWN];
+  if (s[at.SHIFT_PART] > 0) sums[SHIFT] += chunk[at.C_TIME];
+  sums[FORCE_MIN] = weakest;
+  sums[FORCE_MAX] = strongest;
   sums[THROTTLE_MIN] = least;
   sums[THROTTLE_MAX] = most;
   if (slowest < sums[SPEED_MIN]) sums[SPEED_MIN] = slowest;
@@ -115,7 +129,7 @@ export interface Recorder {
   /** Adds the samples that the kernel has just run to the open bin. */
   readonly add: (machine: Machine) => void;
   /** Closes the open bin and starts the next; `time` is that of the first sample of the bin that is closed. */
-  readonly close: (machine: Machine, time: number, gear: number) => void;
+  readonly close: (machine: Machine, time: number) => void;
   /** The record as far as it got. */
   readonly finish: () => BinRecord;
 }
@@ -168,20 +182,20 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
   clearSums(sums);
   const add = (machine: Machine): void => addSamples(machine, sums);
 
-  const close: Recorder['close'] = ({ s, p, chunk }, timeAt, gear) => {
+  const close: Recorder['close'] = ({ s, p, chunk }, timeAt) => {
     const i = size++;
     const time = sums[TIME];
-    const force = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
+    const force = chunk[at.C_DRIVE_FORCE];
     r.timeAt[i] = timeAt;
-    r.gear[i] = gear;
+    r.gear[i] = gearInHand(s);
     if (!(time > 0)) {
       // No sample starts in this bin: what holds while it is passed over.
       const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
       r.setSpeed[i] = setSpeed;
       r.speedMean[i] = r.speedMin[i] = r.speedMax[i] = s[at.SPEED];
       r.errorMin[i] = r.errorMax[i] = s[at.SPEED] - setSpeed;
-      r.throttleMean[i] = r.throttleMin[i] = r.throttleMax[i] = s[at.ACTUATOR];
-      r.driveForce[i] = force;
+      r.throttleMean[i] = r.throttleMin[i] = r.throttleMax[i] = s[at.PLATE];
+      r.driveForce[i] = r.driveForceMin[i] = r.driveForceMax[i] = force;
       r.wheelPower[i] = force * s[at.SPEED];
       clearSums(sums);
       return;
@@ -210,6 +224,10 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     r.driveWork[i] = sums[PUSH];
     r.regenerationWork[i] = sums[HOLD];
     r.brakeWork[i] = sums[BRAKE_WORK];
+    r.driveForceMin[i] = sums[FORCE_MIN];
+    r.driveForceMax[i] = sums[FORCE_MAX];
+    r.timeShift[i] = sums[SHIFT];
+    r.drawn[i] = sums[DRAWN];
     clearSums(sums);
   };
 

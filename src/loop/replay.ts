@@ -1,7 +1,9 @@
 import { cellOf } from '../numeric/interpolate.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
+import { loadRatio } from './belt.ts';
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
+import { loadGear, stallSpeed } from './engage-gear.ts';
 import { journey } from './journey.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -9,6 +11,7 @@ import { distanceIn, stationAt } from './places.ts';
 import type { LoopPlan, RunStatus } from './plan.ts';
 import type { Checkpoint, FullSeries, LoopResult } from './result.ts';
 import { sampleColumns } from './sample-columns.ts';
+import { settleSensor } from './sense-speed.ts';
 import { settle } from './settle.ts';
 import { statusOf } from './status.ts';
 
@@ -39,9 +42,8 @@ export function replay(
   const { s, p } = machine;
   const until = to >= road.distance[road.size - 1] ? Number.POSITIVE_INFINITY : stationAt(road, to);
   const run = journey(machine, plan, () => undefined);
-  const { gear } = plan.vehicle.drive;
 
-  let status: RunStatus | null = s[at.SPEED] < p[at.P_STALL_SPEED] ? 'stalled' : null;
+  let status: RunStatus | null = s[at.SPEED] < stallSpeed(machine) ? 'stalled' : null;
   if (status === null)
     status = statusOf(run.advance(Math.min(until, stationAt(road, from)), Number.POSITIVE_INFINITY));
   let cell = cellOf(road.station, s[at.STATION]);
@@ -55,7 +57,7 @@ export function replay(
       while (cell < road.size - 2 && road.station[cell + 1] <= s[at.STATION]) cell++;
       const distance = distanceIn(road, cell, s[at.STATION]);
       status = statusOf(run.advance(until, 1));
-      if (status !== 'non_finite') columns.push(machine, time, distance, gear);
+      if (status !== 'non_finite') columns.push(machine, time, distance);
     }
   }
   return { status: status ?? 'completed', series: columns.finish() };
@@ -85,13 +87,17 @@ function setSpeedAt(plan: LoopPlan, distance: number): number {
 }
 
 function restore(machine: Machine, { state }: Checkpoint): void {
-  const { s, speedEdges, throttleEdges } = machine;
+  const { s, speedEdges, throttleEdges, gears, belt } = machine;
   s.set(state.subarray(0, at.HISTORY));
   if (state.length === s.length) s.set(state.subarray(at.HISTORY), at.HISTORY);
   else for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = s[at.FILTERED];
-  // Another vehicle has other cells; at an edge of the same one, either side is right and must stay.
-  if (!holds(speedEdges, s[at.SPEED_CELL], s[at.SPEED]))
-    s[at.SPEED_CELL] = cellIndex(speedEdges, s[at.SPEED]);
+  if (state.length !== s.length) settleSensor(machine);
+  // Another vehicle has other gears, masses and cells; at an edge of the same one, either side is right and must stay.
+  const speedCell = s[at.SPEED_CELL];
+  const ratio = s[at.RATIO];
+  loadGear(machine, Math.min(s[at.GEAR], gears.length / 2 - 1));
+  if (belt !== null) loadRatio(machine, Math.min(Math.max(ratio, belt.least), belt.greatest));
+  if (holds(speedEdges, speedCell, s[at.RATIO] * s[at.SPEED])) s[at.SPEED_CELL] = speedCell;
   if (!holds(throttleEdges, s[at.THROTTLE_CELL], s[at.THROTTLE]))
     s[at.THROTTLE_CELL] = cellIndex(throttleEdges, s[at.THROTTLE]);
 }

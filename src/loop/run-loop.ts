@@ -1,5 +1,6 @@
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
+import { stallSpeed } from './engage-gear.ts';
 import { journey } from './journey.ts';
 import * as at from './layout.ts';
 import { ledgerOf } from './ledger.ts';
@@ -29,7 +30,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
   checkPlan(plan);
   const { road } = plan;
   const machine = buildMachine(plan);
-  const { s, p } = machine;
+  const { s } = machine;
   settle(machine, plan, 0, plan.hold.startSpeed);
   const end = road.distance[road.size - 1];
   const edge = binEdges(end, plan.bin);
@@ -37,9 +38,8 @@ export function runLoop(plan: LoopPlan): LoopResult {
   const run = journey(machine, plan, record.add);
   const checkpoints: Checkpoint[] = [checkpoint(0, run.time(), s)];
   const bins = edge.length - 1;
-  const { gear } = plan.vehicle.drive;
 
-  let status: RunStatus | null = s[at.SPEED] < p[at.P_STALL_SPEED] ? 'stalled' : null;
+  let status: RunStatus | null = s[at.SPEED] < stallSpeed(machine) ? 'stalled' : null;
   let cell = 0;
   for (let bin = 0; bin < bins && status === null; bin++) {
     while (cell < road.size - 2 && road.distance[cell + 1] < edge[bin + 1]) cell++;
@@ -47,7 +47,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     const entered = run.time();
     const event = run.advance(until, Number.POSITIVE_INFINITY);
     status = statusOf(event) ?? (run.late() ? 'time_limit' : null);
-    record.close(machine, entered, gear);
+    record.close(machine, entered);
     if (status === null && edge[bin + 1] >= CHECKPOINT_EVERY * checkpoints.length)
       checkpoints.push(checkpoint(distanceAt(road, s[at.STATION]), run.time(), s));
   }

@@ -7,9 +7,10 @@ import {
   BUS_REFERENCE,
   BUS_TARGET,
 } from '../control/bus.ts';
+import { gearInHand } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_UPPER } from './plan.ts';
+import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_SHIFT, LIMIT_UPPER } from './plan.ts';
 import type { FullSeries } from './result.ts';
 
 const NUMBERS = [
@@ -33,7 +34,7 @@ const NUMBERS = [
 /** A full series while it grows. */
 export interface SampleColumns {
   /** Adds the sample that a kernel has just run, with the time [s] and horizontal distance [m] of its start. */
-  readonly push: (machine: Machine, time: number, distance: number, gear: number) => void;
+  readonly push: (machine: Machine, time: number, distance: number) => void;
   readonly finish: () => FullSeries;
 }
 
@@ -43,7 +44,8 @@ function limitBits({ s, p, chunk }: Machine): number {
     (s[BUS_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
     (s[BUS_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
     (chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
-    (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0)
+    (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0) |
+    (s[at.SHIFT_PART] > 0 ? LIMIT_SHIFT : 0)
   );
 }
 
@@ -71,7 +73,7 @@ export function sampleColumns(expected: number): SampleColumns {
       return more;
     }) as [typeof limit, typeof gears];
   };
-  const push: SampleColumns['push'] = (machine, time, distance, gear) => {
+  const push: SampleColumns['push'] = (machine, time, distance) => {
     const { s, p, log, chunk } = machine;
     if (size === capacity) grow();
     columns[0]![size] = time;
@@ -85,11 +87,12 @@ export function sampleColumns(expected: number): SampleColumns {
     columns[8]![size] = s[BUS_PROPORTIONAL];
     columns[9]![size] = s[BUS_INTEGRAL];
     columns[10]![size] = s[BUS_FEEDFORWARD];
-    columns[12]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_DRIVE_FORCE];
-    columns[13]![size] = p[at.P_EFFECTIVE_MASS] * chunk[at.C_BRAKE_FORCE];
+    columns[11]![size] = s[at.RATIO] * log[at.L_SPEED];
+    columns[12]![size] = chunk[at.C_DRIVE_FORCE];
+    columns[13]![size] = chunk[at.C_BRAKE_FORCE];
     columns[14]![size] = chunk[at.C_ACCELERATION];
     limit[size] = limitBits(machine);
-    gears[size] = gear;
+    gears[size] = gearInHand(s);
     size += 1;
   };
   const finish = (): FullSeries => {

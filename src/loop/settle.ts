@@ -1,13 +1,18 @@
 import { BUS_LIMITED, BUS_LOCK, BUS_MEASURED, BUS_REFERENCE } from '../control/bus.ts';
 import { cellOf } from '../numeric/interpolate.ts';
+import { beltRatio } from '../vehicle/belt-law.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { cellIndex, throttleFor, wheelForce } from '../vehicle/drive-law.ts';
 import { levelThrottle } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
+import { loadRatio } from './belt.ts';
+import { settleSource } from './draw-power.ts';
+import { gearInHand, loadGear } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { surroundingsAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
+import { settleSensor } from './sense-speed.ts';
 
 /**
  * Puts the machine at a station in the steady state of a speed: force and throttle that hold it there, limited to the
@@ -24,24 +29,34 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   const here = surroundingsAt(plan.road, station);
   const derate = derateFactor(drive, here.airDensity, here.airTemperature);
   const force = requiredForce(vehicle, v, here);
-  const needed = throttleFor(drive, drive.gear, v, force, derate) ?? 0;
-  const given =
-    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
-  const throttle = Math.min(Math.max(given, drive.throttleMin), drive.throttleMax);
 
   s.fill(0);
+  settleSource(machine);
+  const pushed = derate * s[at.DRIVE_FACTOR];
+  const held = derate * s[at.REGENERATION_FACTOR];
+  let needed = throttleFor(drive, drive.gear, v, force, pushed) ?? 0;
+  if (needed < 0) needed = throttleFor(drive, drive.gear, v, force, held) ?? 0;
+  const given =
+    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
+  const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
+
   s[at.STATION] = station;
   s[at.CELL] = cellOf(plan.road.station, station);
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
-  s[at.ACCELERATION] = (wheelForce(drive, drive.gear, v, throttle, derate) - force) / p[at.P_EFFECTIVE_MASS];
+  loadGear(machine, drive.gear);
+  if (drive.belt !== null) loadRatio(machine, beltRatio(drive.belt, v, throttle));
+  s[at.START_MASS] = s[at.EFFECTIVE_MASS];
+  s[at.ACCELERATION] =
+    (wheelForce(drive, drive.gear, v, throttle, throttle < 0 ? held : pushed) - force) / s[at.EFFECTIVE_MASS];
   s[at.FILTERED] = v;
   s[at.ACTUATOR] = throttle;
+  s[at.PLATE] = throttle;
   s[at.THROTTLE] = throttle;
   s[at.LAST_COMMAND] = throttle;
-  s[at.SPEED_CELL] = cellIndex(machine.speedEdges, v);
   s[at.THROTTLE_CELL] = cellIndex(machine.throttleEdges, throttle);
   for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = v;
+  settleSensor(machine);
   s[BUS_MEASURED] = p[at.P_SCALE] * v;
   s[BUS_REFERENCE] = speed;
   s[BUS_LIMITED] = throttle;
@@ -49,20 +64,23 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   markLock(machine, plan);
 }
 
-/** Remembers the air at this place for a throttle locked `level`. */
+/** Remembers the air at this place and the gear in hand for a throttle locked `level`. */
 export function markLock(machine: Machine, plan: LoopPlan): void {
+  machine.s[at.LOCK_GEAR] = gearInHand(machine.s);
   const here = surroundingsAt(plan.road, machine.s[at.STATION]);
   machine.s[at.LOCK_DENSITY] = here.airDensity;
   machine.s[at.LOCK_TEMPERATURE] = here.airTemperature;
 }
 
-/** Locks a locked throttle for a set speed, in the air that was remembered. */
+/** Locks a locked throttle for a set speed, in the air and the gear that were remembered. */
 export function lockThrottle(machine: Machine, plan: LoopPlan, setSpeed: number): void {
   const { controller, vehicle } = plan;
   if (controller.kind !== 'locked') return;
   const { s, p } = machine;
+  const gear = Math.min(s[at.LOCK_GEAR], vehicle.drive.gears.length - 1);
+  const inGear = { ...vehicle, drive: { ...vehicle.drive, gear } };
   s[BUS_LOCK] =
     controller.throttle === 'level'
-      ? levelThrottle(vehicle, setSpeed * p[at.P_TO_TRUE], s[at.LOCK_DENSITY], s[at.LOCK_TEMPERATURE])
+      ? levelThrottle(inGear, setSpeed * p[at.P_TO_TRUE], s[at.LOCK_DENSITY], s[at.LOCK_TEMPERATURE])
       : controller.throttle;
 }

@@ -1,4 +1,5 @@
 import { BUS_TARGET } from '../control/bus.ts';
+import { stallSpeed } from './engage-gear.ts';
 import { journey } from './journey.ts';
 import * as at from './layout.ts';
 import { distanceAt, stationAt } from './places.ts';
@@ -58,7 +59,7 @@ export function traceSpeeds(plan: LoopPlan, start: ReplayStart, to: number, from
     distance = behind;
   };
   const run = journey(machine, plan, keep);
-  if (s[at.SPEED] < p[at.P_STALL_SPEED]) return { ...columns, size };
+  if (s[at.SPEED] < stallSpeed(machine)) return { ...columns, size };
   const status = statusOf(run.advance(Math.min(until, stationAt(road, from)), Number.POSITIVE_INFINITY));
   keeping = true;
   tick = s[at.TICK];

@@ -1,0 +1,38 @@
+import { cellIndex } from '../vehicle/drive-law.ts';
+import * as at from './layout.ts';
+import type { Machine } from './machine.ts';
+
+/**
+ * Engages a gear at the speed in hand, or opens the clutch. What turns before the gear is brought to its new speed by
+ * the clutch, not by the vehicle: the speed stays, and the kinetic energy that the change of effective mass takes away
+ * is booked as the work of shifts.
+ *
+ * @param gear index into the drive's gears; -1: clutch open, no force, nothing turns before the gear
+ */
+export function engageGear(machine: Machine, gear: number): void {
+  const { s } = machine;
+  const before = s[at.EFFECTIVE_MASS];
+  loadGear(machine, gear);
+  const lost = 0.5 * (before - s[at.EFFECTIVE_MASS]) * s[at.SPEED] * s[at.SPEED];
+  s[at.SHIFT_WORK] += lost;
+  s[at.WORK_MAGNITUDE] += Math.abs(lost);
+}
+
+/** Puts a gear in hand without an account: ratio, effective mass, cell over speed. */
+export function loadGear({ s, p, gears, speedEdges }: Machine, gear: number): void {
+  const ratio = gear < 0 ? 0 : gears[2 * gear];
+  s[at.GEAR] = gear;
+  s[at.RATIO] = ratio;
+  s[at.EFFECTIVE_MASS] = p[at.P_BASE_MASS] + (gear < 0 ? 0 : gears[2 * gear + 1]);
+  s[at.SPEED_CELL] = ratio > 0 ? cellIndex(speedEdges, ratio * s[at.SPEED]) : 0;
+}
+
+/** Speed below which the drive stalls as it is engaged [m/s]; 0 with the clutch open. */
+export function stallSpeed({ s, p }: Machine): number {
+  return s[at.RATIO] > 0 ? p[at.P_STALL_SPEED] / s[at.RATIO] : 0;
+}
+
+/** Gear in hand, index into the drive's gears; with the clutch open the one that comes next. */
+export function gearInHand(s: Float64Array): number {
+  return s[at.GEAR] < 0 ? s[at.NEXT_GEAR] : s[at.GEAR];
+}
