@@ -2,18 +2,20 @@ import { BUS_TARGET } from '../control/bus.ts';
 import { setTarget } from '../control/set-point.ts';
 import { advanceExact } from './exact.ts';
 import { advanceFast } from './fast.ts';
+import { gearbox, restingController } from './gearbox.ts';
 import * as at from './layout.ts';
 import { addWorks } from './ledger.ts';
 import type { Kernel, Machine } from './machine.ts';
 import { stationAt } from './places.ts';
 import type { LoopPlan, SetSpeedChange } from './plan.ts';
+import type { ShiftEvent } from './result.ts';
 import { lockThrottle, markLock } from './settle.ts';
 
 /** Ticks that reach a time [s] from a tick count; a hair early counts as reached. */
 const ticksTo = (time: number, sample: number, tick: number): number =>
   Math.max(0, Math.ceil(time / sample - 1e-9) - tick);
 
-/** A run under way: chunks of the kernel, cut where the set speed changes. */
+/** A run under way: chunks of the kernel, cut where the set speed changes and where gears are shifted. */
 export interface Journey {
   /** Runs samples until one would start at or beyond a station [m] or [s], or `ticks` have run. Returns the event. */
   readonly advance: (until: number, ticks: number) => number;
@@ -21,6 +23,8 @@ export interface Journey {
   readonly time: () => number;
   /** True when the time limit is reached. */
   readonly late: () => boolean;
+  /** Shifts that have begun in this journey, in order along the way. */
+  readonly shifts: readonly ShiftEvent[];
 }
 
 /**
@@ -35,8 +39,8 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
   const sample = p[at.P_SAMPLE];
   const { changes } = plan.hold;
   const lastTick = Math.ceil(plan.timeLimit / sample - 1e-9);
-  // A change acts when the command that follows it does, the computing delay later; by distance, at the set speed before it.
-  const late = machine.controller.computingDelay;
+  // A change acts when the command that follows it does, computing delay and dead time later; by distance, at the set speed before it.
+  const late = machine.controller.computingDelay + plan.vehicle.actuator.deadTime;
   const places = changes.map(({ at: place }, i) => {
     if (!('distance' in place)) return Number.POSITIVE_INFINITY;
     const before = p[at.P_TO_TRUE] * (i === 0 ? plan.hold : changes[i - 1]!).setSpeed;
@@ -61,25 +65,38 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
     }
   };
 
-  // The set speed in force here, by this plan.
+  const setSpeedInForce = (): number =>
+    s[at.CHANGES] > 0 ? changes[s[at.CHANGES] - 1]!.setSpeed : plan.hold.setSpeed;
+
+  // Set speed and gear in force here, by this plan.
   s[at.CHANGES] = 0;
   while (s[at.CHANGES] < changes.length && due(s[at.CHANGES])) s[at.CHANGES] += 1;
   const last = s[at.CHANGES] > 0 ? changes[s[at.CHANGES] - 1]! : null;
-  const inForce = last?.setSpeed ?? plan.hold.setSpeed;
+  const gears = gearbox(machine, plan, () => {
+    markLock(machine, plan);
+    lockThrottle(machine, plan, setSpeedInForce());
+  });
+  const inForce = setSpeedInForce();
   if (s[BUS_TARGET] !== inForce) change(inForce, last);
   lockThrottle(machine, plan, inForce);
+  const ridden: Machine = { ...machine, controller: restingController(machine.controller) };
 
   const advance = (until: number, ticks: number): number => {
     let left = Math.min(ticks, lastTick - s[at.TICK]);
     let event = at.RUNNING;
     while (left > 0 && s[at.STATION] < until && event === at.RUNNING) {
       makeChanges();
+      gears.shift();
       const next = s[at.CHANGES] < changes.length ? changes[s[at.CHANGES]]! : null;
       const place = next === null ? Number.POSITIVE_INFINITY : places[s[at.CHANGES]]!;
       const run =
         next !== null && 'time' in next.at ? ticksTo(next.at.time + late, sample, s[at.TICK]) : at.LOG_ROWS;
       const before = s[at.TICK];
-      event = kernel(machine, Math.min(run, left, at.LOG_ROWS), Math.min(until, place));
+      event = kernel(
+        gears.holdIsOff() ? ridden : machine,
+        Math.min(run, left, at.LOG_ROWS, gears.ticksLeft()),
+        Math.min(until, place, gears.nextPlace()),
+      );
       addWorks(machine);
       heard(machine);
       left -= s[at.TICK] - before;
@@ -90,5 +107,6 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
     advance,
     time: () => s[at.TICK] * sample + s[at.PARTIAL],
     late: () => s[at.TICK] >= lastTick,
+    shifts: gears.shifts,
   };
 }
