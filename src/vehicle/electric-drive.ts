@@ -1,7 +1,7 @@
+import { batterySource } from './battery-source.ts';
+import type { BatterySpec, HeatingSpec, LossMapSpec } from './battery-spec.ts';
 import { checkSpec } from './check-spec.ts';
 import type { Drive } from './drive.ts';
-import type { Battery } from './energy-source.ts';
-import { constantEfficiencyMap } from './power-map.ts';
 
 /** An electric drive known by its force and power at the wheel. */
 export interface ElectricDriveSpec {
@@ -21,8 +21,14 @@ export interface ElectricDriveSpec {
   readonly throttleMin: number;
   /** First-order lag from throttle to force [s]. */
   readonly lag: number;
-  /** Wheel energy over battery energy while driving, battery over wheel energy while regenerating, in (0, 1] and [0, 1]; null: no battery account. */
+  /** Wheel energy over battery energy while driving, battery over wheel energy while regenerating, in (0, 1] and [0, 1]; null: no battery account, unless there is a loss map. */
   readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
+  /** Losses over speed and force, in the place of the efficiencies. */
+  readonly lossMap?: LossMapSpec | null;
+  /** Null: the battery gives and takes what it is asked for, and its charge is not followed. */
+  readonly battery?: BatterySpec | null;
+  /** Derating by time at power; null: none. Needs a power limit. */
+  readonly heating?: HeatingSpec | null;
 }
 
 /**
@@ -32,9 +38,11 @@ export interface ElectricDriveSpec {
  *     u <  0:  F = -D(v) + u R(v)
  *     D = F_ct fade(v),  R = min(F_reg, P_reg / v) fade(v),  fade = min(1, v / v_fade)
  *
- * compiled to cells between the corner speeds, with an edge at u = 0. A constant efficiency serves the energy account.
+ * compiled to cells between the corner speeds, with an edge at u = 0: the base speed P_peak / F_peak is one of them.
+ * The voltage that sags and the heat take a share of the full-throttle force, a battery near full one of the
+ * regeneration: those are in the source (`batterySource`), the cells are those of a full, cold battery.
  *
- * @throws InputError `out-of-range`
+ * @throws InputError `out-of-range`, and what `batterySource` throws
  */
 export function electricDrive(spec: ElectricDriveSpec): Drive {
   checkElectricSpec(spec);
@@ -84,26 +92,21 @@ export function electricDrive(spec: ElectricDriveSpec): Drive {
     derate: 'none',
     stallSpeed: 0,
     idleSpeed: 0,
-    source: spec.efficiency === null ? null : batteryOf(spec.efficiency),
+    source: batterySource({
+      efficiency: spec.efficiency,
+      lossMap: spec.lossMap ?? null,
+      battery: spec.battery ?? null,
+      heating: spec.heating ?? null,
+      greatestForce: peakForce,
+      leastForce: -drag - regenerationForce,
+      peakPower,
+    }),
     withoutFuelCut: null,
     fuelCutBelow: 0,
     peakForce,
     peakPower,
     closedThrottleForce: drag,
     regenerationForce,
-  };
-}
-
-function batteryOf(efficiency: { readonly drive: number; readonly regeneration: number }): Battery {
-  return {
-    kind: 'battery',
-    map: constantEfficiencyMap(efficiency.drive, efficiency.regeneration),
-    capacity: null,
-    charge: 1,
-    reserve: 0,
-    sag: null,
-    acceptance: null,
-    heating: null,
   };
 }
 

@@ -1,3 +1,4 @@
+import type { LossMapSpec } from './battery-spec.ts';
 import { cellIndex } from './drive-law.ts';
 import type { PowerMap } from './energy-source.ts';
 
@@ -31,4 +32,48 @@ export function constantEfficiencyMap(drive: number, regeneration: number): Powe
     power: Float64Array.of(0, 0, 0, -regeneration, 0, 1 / drive),
     least: Number.NEGATIVE_INFINITY,
   };
+}
+
+/**
+ * Power F v + loss of a loss map, exact in its bilinear cells. A map that begins at a force of 0 or above is mirrored
+ * for the forces below.
+ *
+ * @param losses checked: increasing, two or more rows and columns
+ */
+export function lossMap({ speed, force, loss }: LossMapSpec): PowerMap {
+  const columns = force.length;
+  const mirrored = force[0]! >= 0;
+  const source = Array.from(force, (_, j) => j);
+  const back = mirrored ? source.filter((j) => force[j]! > 0).reverse() : [];
+  const forces = [...back.map((j) => -force[j]!), ...force];
+  const from = [...back, ...source];
+  const power = Array.from(speed, (v, i) => from.map((j, k) => forces[k]! * v + loss[i * columns + j]!));
+  return {
+    shaftSpeed: speed,
+    torque: Float64Array.from(forces),
+    power: Float64Array.from(power.flat()),
+    least: Number.NEGATIVE_INFINITY,
+  };
+}
+
+/**
+ * A map through a function of its power, tabulated at nodes of its own and at the inner nodes of the map, where that
+ * has its corners.
+ *
+ * @param shaftSpeeds any order
+ * @param torques any order
+ * @param through what becomes of a power [W]
+ */
+export function refinedMap(
+  map: PowerMap,
+  shaftSpeeds: readonly number[],
+  torques: readonly number[],
+  through: (power: number) => number,
+): PowerMap {
+  const merged = (own: Float64Array, more: readonly number[]): Float64Array =>
+    Float64Array.from(new Set([...own.subarray(1, -1), ...more])).sort();
+  const shaftSpeed = merged(map.shaftSpeed, shaftSpeeds);
+  const torque = merged(map.torque, torques);
+  const rows = Array.from(shaftSpeed, (w) => Array.from(torque, (t) => through(powerDrawn(map, w, t))));
+  return { shaftSpeed, torque, power: Float64Array.from(rows.flat()), least: map.least };
 }
