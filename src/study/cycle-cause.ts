@@ -38,7 +38,8 @@ export interface CycleFinding {
  * 1. Without all that is not linear at once (slack, step of the fuel cut, pulses, steps of the throttle, shifts), at
  *    least half of the amplitude is left: none of them is to blame (3).
  * 2. One by one: that without which least of the amplitude is left, if that is less than half.
- * 3. `gains` where half the gains leave less than half of it, with what else would end it; else `unknown`.
+ * 3. `gains` where half of the gains, a quarter or an eighth leave less than half of it, with what else would end it;
+ *    else `unknown`.
  *
  * @param amplitude on the steady road with everything in place [m/s]
  * @param before cause found on another stretch of the same run, tried first; null: none
@@ -52,7 +53,7 @@ export function causeOfCycle(
   const ends = ({ amplitude: rest }: Left): boolean => rest < HALF * amplitude;
   const found = ({ cause, words }: Suspect, rest: number): CycleFinding => ({
     cause,
-    why: `${sentence(words)} ${leftWords(rest, amplitude)}`,
+    why: `Without ${words} ${leftWords(rest, amplitude)}`,
   });
   const suspects = SUSPECTS.filter(({ limitation }) => has(plan, limitation));
   const known = suspects.find(({ cause }) => cause === before);
@@ -72,6 +73,13 @@ export function causeOfCycle(
   return gainsOrUnknown(plan, amplitude, left, ends);
 }
 
+/** Gains that are tried, as shares of the candidate's own. */
+const SOFTER: readonly (readonly [number, string])[] = [
+  [1 / 2, 'half'],
+  [1 / 4, 'a quarter of'],
+  [1 / 8, 'an eighth of'],
+];
+
 function gainsOrUnknown(
   plan: LoopPlan,
   amplitude: number,
@@ -79,24 +87,26 @@ function gainsOrUnknown(
   ends: (rest: Left) => boolean,
 ): CycleFinding {
   const { controller } = plan;
-  if (controller.kind !== 'pi') return { cause: 'unknown', why: 'The throttle is locked.' };
-  const softer = left({
-    ...plan,
-    controller: { ...controller, kp: controller.kp / 2, ki: controller.ki / 2 },
-  });
-  if (!ends(softer))
-    return {
-      cause: 'unknown',
-      why: `With half the gains ${leftWords(softer.amplitude, amplitude)}`,
-    };
-  const late = LATENESS.filter(([limitation]) => has(plan, limitation))
-    .map(([limitation, words]) => ({ words, rest: left(without(plan, limitation)) }))
-    .find(({ rest }) => ends(rest));
-  const also = late === undefined ? '' : ` So it is without ${late.words}: ${inKmh(late.rest.amplitude)}.`;
-  return { cause: 'gains', why: `With half the gains ${leftWords(softer.amplitude, amplitude)}${also}` };
+  if (controller.kind !== 'pi') return { cause: 'unknown', why: 'A locked throttle has no gains.' };
+  let why = '';
+  for (const [share, words] of SOFTER) {
+    const softer = { ...controller, kp: share * controller.kp, ki: share * controller.ki };
+    const rest = left({ ...plan, controller: softer });
+    why = `With ${words} the gains ${leftWords(rest.amplitude, amplitude)}`;
+    if (ends(rest)) return { cause: 'gains', why: `${why}${lateWords(plan, left, ends)}` };
+  }
+  return { cause: 'unknown', why };
 }
 
-const sentence = (words: string): string => `Without ${words}`;
+/** What beside lower gains would end it. */
+function lateWords(plan: LoopPlan, left: (changed: LoopPlan) => Left, ends: (rest: Left) => boolean): string {
+  for (const [limitation, words] of LATENESS) {
+    if (!has(plan, limitation)) continue;
+    const rest = left(without(plan, limitation));
+    if (ends(rest)) return ` Without ${words}: ${inKmh(rest.amplitude)}.`;
+  }
+  return '';
+}
 
 const leftWords = (rest: number, amplitude: number): string =>
   Number.isFinite(rest)

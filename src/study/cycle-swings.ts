@@ -19,8 +19,8 @@ export function turningsOf(low: Float64Array, high: Float64Array, height: number
   // 1: going up since the last turning, -1: down, 0: not known yet.
   let way: -1 | 0 | 1 = 0;
   const pass = (at: number, value: number): void => {
-    if (value > top.value) top = { at, value };
-    if (value < bottom.value) bottom = { at, value };
+    if (value >= top.value) top = { at, value };
+    if (value <= bottom.value) bottom = { at, value };
     if (way >= 0 && top.value - value >= height) {
       turnings.push(top);
       way = -1;
