@@ -17,6 +17,7 @@ import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
 import type { Replayed } from '../study/findings.ts';
 import { judge } from '../study/judge.ts';
+import { findLimitCycles } from '../study/limit-cycles.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
 import { decodeText } from '../track/decode-text.ts';
@@ -49,7 +50,8 @@ interface Stage {
   readonly to: number;
   readonly words: string;
 }
-const HILLS: Stage = { from: 0.15, to: 0.5, words: 'hills' };
+const HILLS: Stage = { from: 0.15, to: 0.47, words: 'hills' };
+const CYCLES: Stage = { from: 0.47, to: 0.5, words: 'limit cycles' };
 const SPREAD: Stage = { from: 0.5, to: 0.95, words: "roads drawn from the grade's uncertainty" };
 
 /** Bands that one run can count in. */
@@ -87,6 +89,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const within = (stage: Stage) => (done: number, of: number) =>
     onProgress(stage.from + ((stage.to - stage.from) * done) / of, stage.words);
   const hills = findHills({ road, demand, replayed, band, onHill: within(HILLS) });
+  const cycles = findLimitCycles({ road, demand, replayed, onCandidate: within(CYCLES) });
   const segments =
     segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
   const context = { road, demand, hills };
@@ -120,7 +123,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     candidates: results,
     demand,
     hills,
-    cycles: [],
+    cycles,
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),
     requirements: findings,
