@@ -5,10 +5,10 @@ import { fromPct } from '../units/convert.ts';
 import { type Surroundings, stillAndLevel } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateFile } from './case-schema.ts';
+import { onlyCoasts } from './drive-of.ts';
 import { type CandidateContext, gainsOf } from './gains-of.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import { roadOptionsOf } from './road-of.ts';
-import { onlyCoasts } from './vehicle-of.ts';
 import { placeOf } from './yaml-source.ts';
 
 type FileOf<K extends ControllerSetup['kind']> = Extract<CandidateFile, { kind: K }>;

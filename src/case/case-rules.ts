@@ -3,6 +3,7 @@ import { FIGURES } from '../study/figure-table.ts';
 import type { caseSchema } from './case-schema.ts';
 import type { Rule, RuleFault } from './check-file.ts';
 import { nearestKey } from './nearest-key.ts';
+import { increasing } from './order-rules.ts';
 import { isMapping } from './schema-walk.ts';
 import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
 import type { Path } from './yaml-source.ts';
@@ -27,6 +28,15 @@ export const caseRules: readonly Rule<CaseInput>[] = [
   },
   { about: ['wind'], check: ({ wind }) => (wind === undefined ? [] : aboveRoughness(wind)) },
   { about: ['hold', 'changes'], check: ({ hold }) => changesInOrder(hold.changes ?? []) },
+  {
+    about: ['hold', 'shifts'],
+    check: ({ hold }) =>
+      increasing(
+        (hold.shifts ?? []).map(({ at_km }) => at_km),
+        (i) => ['hold', 'shifts', i, 'at_km'],
+        'km',
+      ),
+  },
   { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
 ];
 

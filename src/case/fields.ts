@@ -20,6 +20,7 @@ function noted<T extends z.ZodType>(field: T, notes: FieldNotes): T {
 }
 
 export const NOT_GIVEN = 'not given';
+export const IDEAL = 'ideal: not given';
 
 type Unit =
   | 's'
@@ -69,6 +70,16 @@ export function number(unit: Unit, least: number, most: number, words: string) {
     .max(most)
     .meta({ description: described })
     .register(fieldNotes, { allowed, unit });
+}
+
+/** A whole number in a range, ends included. */
+export function integer(least: number, most: number, words: string) {
+  return z
+    .int()
+    .min(least)
+    .max(most)
+    .meta({ description: words })
+    .register(fieldNotes, { allowed: `a whole number from ${least} to ${most}` });
 }
 
 /** One of some words. */
@@ -132,6 +143,14 @@ export function optional<T extends z.ZodType>(
 ): z.ZodExactOptional<T> {
   return absent === undefined ? field.exactOptional() : noted(field.exactOptional(), { absent, source });
 }
+
+/** Fields that several kinds of drive have. */
+export const driveLag = otherwise(number('s', 0, 20, 'First-order lag from throttle to force'), 0, IDEAL);
+export const altitudeDerate = otherwise(
+  word(['none', 'naturally_aspirated'], 'Loss of full-throttle force with air density'),
+  'none',
+  'not given: full-throttle force is the same at every altitude',
+);
 
 export const kmh = (words: string) => number('km/h', 1, 300, words);
 export const km = (words: string) => number('km', 0, 5000, words);

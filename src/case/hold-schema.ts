@@ -1,5 +1,5 @@
 import * as z from 'zod';
-import { km, kmh, list, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
+import { integer, km, kmh, list, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
 
 const changeRest = {
   set_speed_kmh: kmh('New set speed'),
@@ -17,6 +17,20 @@ export const holdSchema = mapping('The speed to hold', {
     number('km/h', 1, 300, 'Speed at the first point'),
     'set_speed_kmh',
     'the run starts at the set speed',
+  ),
+  gear: optional(integer(1, 20, 'Gear at the start, from 1, in place of the gear of the vehicle file')),
+  shifts: otherwise(
+    list(
+      mapping('Shift', {
+        at_km: km('Where, along the driven road'),
+        gear: integer(1, 20, 'New gear, from 1'),
+      }),
+      0,
+      1000,
+      'Changes of gear by the rider, in order; for a gearbox with a clutch',
+    ),
+    [],
+    null,
   ),
   changes: otherwise(
     list(

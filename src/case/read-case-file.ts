@@ -79,7 +79,7 @@ const inlineVehicleRules: readonly Rule<z.input<typeof caseSchema>>[] = vehicleR
 
 function inlineVehicle(source: YamlSource, file: Exclude<CaseFile['vehicle'], string>): VehicleDocument {
   const value = (source.value as { vehicle: unknown }).vehicle;
-  return { source, file, defaults: vehicleDefaults(value, file) };
+  return { source, at: ['vehicle'], file, defaults: vehicleDefaults(value, file) };
 }
 
 /** The defaults of the case alone, without those of a vehicle written in it, and with figures where they are worked out. */

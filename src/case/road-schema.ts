@@ -71,6 +71,7 @@ export const roadSchema = mapping('From track to road', {
     'by elevation_source',
     NOT_GIVEN,
   ),
+  surface: optional(word(['dry', 'wet'], 'State of the surface, for a vehicle with traction; left out: dry')),
   masks: otherwise(
     list(
       mapping('Stretch', { ...stretch, reason: optional(line('Why')) }),

@@ -18,11 +18,11 @@ export function holdOf({ file: { hold } }: CaseDocument): HoldPlan {
   };
 }
 
-/** The rider who stands by. */
-export function riderOf({ file: { rider } }: CaseDocument): RiderPlan {
+/** The rider who stands by, and changes gear as planned. */
+export function riderOf({ file: { rider, hold } }: CaseDocument): RiderPlan {
   return {
     brakesAbove: rider.brakes_above_kmh === undefined ? null : fromKmh(rider.brakes_above_kmh),
-    shifts: [],
+    shifts: hold.shifts.map(({ at_km, gear }) => ({ distance: fromKm(at_km), gear: gear - 1 })),
   };
 }
 

@@ -1,89 +1,44 @@
-import { fromDeg, fromKmh, fromKw, fromNPerKmh, fromNPerKmh2, fromPct } from '../units/convert.ts';
-import type { Drive } from '../vehicle/drive.ts';
-import { electricDrive } from '../vehicle/electric-drive.ts';
-import { forceDrive } from '../vehicle/force-drive.ts';
-import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../vehicle/ideal.ts';
+import { fromDeg, fromNPerKmh, fromNPerKmh2 } from '../units/convert.ts';
 import { roadLoadOfCoefficients, roadLoadOfRegulation } from '../vehicle/road-load.ts';
 import type { RoadLoad, Vehicle } from '../vehicle/vehicle.ts';
+import { atFileKeys } from './at-file-keys.ts';
+import { driveOf } from './drive-of.ts';
+import { actuatorOf, sensorOf, tractionOf } from './fittings-of.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
 import { rotatingMassKg } from './vehicle-mass.ts';
 import type { VehicleFile } from './vehicle-schema.ts';
 
-type DriveFile = NonNullable<VehicleFile['drive']>;
+/** What a case says of the ride, where the vehicle file does not have the last word. */
+export interface Ride {
+  /** Engaged gear, from 1; null: that of the vehicle file. */
+  readonly gear: number | null;
+  readonly surface: 'dry' | 'wet';
+}
 
-/** A vehicle without a drive coasts. The drive law needs a force above 0: this one moves nothing [N]. */
-const NO_FORCE = 0.001;
-
-const driveOf: { readonly [K in DriveFile['kind']]: (file: Extract<DriveFile, { kind: K }>) => Drive } = {
-  force: (file) =>
-    forceDrive({
-      peakForce: file.peak_force_n,
-      peakPower: file.peak_power_kw === undefined ? null : fromKw(file.peak_power_kw),
-      closedThrottleForce: file.closed_throttle_force_n,
-      lag: file.lag_s,
-      derate: file.altitude_derate,
-    }),
-  electric: (file) =>
-    electricDrive({
-      peakForce: file.peak_force_n,
-      peakPower: file.peak_power_kw === undefined ? null : fromKw(file.peak_power_kw),
-      closedThrottleForce: file.closed_throttle_force_n,
-      regenerationForce: file.regeneration_force_n,
-      regenerationPower: file.regeneration_power_kw === undefined ? null : fromKw(file.regeneration_power_kw),
-      fadeSpeed: fromKmh(file.regeneration_fade_kmh),
-      throttleMin: file.regeneration_force_n > 0 ? -1 : 0,
-      lag: file.lag_s,
-      efficiency:
-        file.efficiency_pct === undefined
-          ? null
-          : {
-              drive: fromPct(file.efficiency_pct.drive),
-              regeneration: fromPct(file.efficiency_pct.regeneration),
-            },
-    }),
-};
-
-/** The vehicle of a file in SI, its drive compiled to the one drive law. */
-export function vehicleOf({ file }: VehicleDocument): Vehicle {
+/**
+ * The vehicle of a file in SI, its drive compiled to the one drive law.
+ *
+ * @throws InputError for what the compilers of `vehicle/` refuse, with the places of the file
+ */
+export function vehicleOf(
+  document: VehicleDocument,
+  { gear, surface }: Ride = { gear: null, surface: 'dry' },
+): Vehicle {
+  const { file } = document;
   const { kerb_kg, rider_kg, payload_kg } = file.mass;
   const mass = kerb_kg + rider_kg + payload_kg;
-  const { actuator, speed_sensor: sensor } = file;
   return {
     name: file.name ?? 'vehicle',
     mass,
     payload: payload_kg,
     rotatingMass: rotatingMassKg(file),
-    roadLoad: roadLoadOf(file.road_load, mass),
-    drive: compile(file.drive),
-    actuator: {
-      ...IDEAL_ACTUATOR,
-      lag: actuator.lag_s,
-      rateLimit: actuator.rate_limit_pct_per_s === undefined ? null : fromPct(actuator.rate_limit_pct_per_s),
-    },
-    sensor: {
-      ...IDEAL_SENSOR,
-      filter: sensor.filter_s,
-      delay: sensor.delay_s,
-      scaleError: fromPct(sensor.scale_error_pct),
-    },
-    traction: null,
+    roadLoad: atFileKeys(document, 'road_load', {}, () => roadLoadOf(file.road_load, mass)),
+    drive: driveOf(document, gear),
+    actuator: actuatorOf(file.actuator),
+    sensor: sensorOf(file.speed_sensor),
+    traction: tractionOf(file.traction, surface),
   };
 }
-
-function compile(file: VehicleFile['drive']): Drive {
-  if (file === undefined)
-    return forceDrive({
-      peakForce: NO_FORCE,
-      peakPower: null,
-      closedThrottleForce: 0,
-      lag: 0,
-      derate: 'none',
-    });
-  return file.kind === 'force' ? driveOf.force(file) : driveOf.electric(file);
-}
-
-/** True where the file has no drive: such a vehicle can only coast. */
-export const onlyCoasts = ({ drive }: Vehicle): boolean => drive.peakForce <= NO_FORCE;
 
 function roadLoadOf(file: VehicleFile['road_load'], mass: number): RoadLoad {
   if ('f0_n' in file)

@@ -7,7 +7,7 @@ import type { Place } from '../problems/place.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Requirement } from '../study/findings.ts';
-import { toKm } from '../units/convert.ts';
+import { fromKm, toKm } from '../units/convert.ts';
 import type { CandidateResult } from './run-result.ts';
 
 /** A stretch may run over the end by this much without a word: places are written in km, to a metre [m]. */
@@ -27,7 +27,7 @@ const km = (distance: number): string => `${Number(toKm(distance).toFixed(3))} k
  * @throws InputError `beyond-the-road`, for all of them, each at its key
  */
 export function placesOnRoad(
-  { source }: CaseDocument,
+  { source, file }: CaseDocument,
   requirements: readonly Requirement[],
   hold: HoldPlan,
   road: Road,
@@ -46,6 +46,17 @@ export function placesOnRoad(
         ]
       : [],
   );
+  file.hold.shifts.forEach(({ at_km }, i) => {
+    const at = fromKm(at_km);
+    if (at >= length - AT_END)
+      problems.push(
+        beyond(
+          placeOf(source, ['hold', 'shifts', i, 'at_km']),
+          'the rider would shift beyond the end of the road',
+          at,
+        ),
+      );
+  });
   const warnings: Warning[] = [];
   requirements.forEach(({ id, where }, i) => {
     if (typeof where === 'string') return;

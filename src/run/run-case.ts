@@ -2,7 +2,7 @@ import { atSeaLevel, candidatesOf } from '../case/candidates-of.ts';
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
 import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
-import { vehicleOf } from '../case/vehicle-of.ts';
+import { rideDefaults, vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import { loopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
@@ -68,7 +68,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   onProgress(0, 'reading');
   const document = readCaseFile(decodeText(log.read(file), file), file, overrides);
   const vehicleDocument = vehicleDocumentOf(document, log);
-  const vehicle = vehicleOf(vehicleDocument);
+  const vehicle = vehicleOfCase(document, vehicleDocument);
   const road = roadOfCase(document, log, file, placeOf(document.source, ['track', 'file']));
   const hold = holdOf(document);
   const rider = riderOf(document);
@@ -128,7 +128,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     segments: segmentRuns(segments, replayed),
     requirements: findings,
     spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
-    defaults: [...document.defaults, ...vehicleDocument.defaults],
+    defaults: [...document.defaults, ...rideDefaults(document, vehicleDocument), ...vehicleDocument.defaults],
     warnings: [
       ...runWarnings(road, vehicle, results),
       ...placeWarnings,

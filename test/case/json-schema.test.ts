@@ -133,7 +133,16 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['_kg_m3', 'kg/m3'],
   ['_m_s2', 'm/s2'],
   ['_m_s', 'm/s'],
+  ['_mj_per_kg', 'MJ/kg'],
+  ['_kg_per_l', 'kg/l'],
+  ['_g_per_kwh', 'g/kWh'],
+  ['_g_per_h', 'g/h'],
+  ['_kg_m2', 'kg m2'],
+  ['_ohm', 'ohm'],
+  ['_rpm', 'rpm'],
   ['_kmh', 'km/h'],
+  ['_nm', 'N m'],
+  ['_wh', 'Wh'],
   ['_pct', '%'],
   ['_deg', 'deg'],
   ['_hpa', 'hPa'],
@@ -142,12 +151,17 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['_kg', 'kg'],
   ['_kw', 'kW'],
   ['_c', 'deg C'],
+  ['_w', 'W'],
+  ['_v', 'V'],
+  ['_l', 'l'],
   ['_n', 'N'],
   ['_s', 's'],
   ['_m', 'm'],
 ];
 /** Ratios, whose keys carry no unit; efficiencies have theirs in the key around them; limits in the figure's name. */
-const WITHOUT_UNIT = ['crr', 'factor', 'setpoint_weight', 'damping', 'at_least', 'at_most'];
+const WITHOUT_UNIT =
+  `crr factor setpoint_weight damping at_least at_most falloff part_throttle_shape gear_ratios primary_ratio
+final_ratio high_ratio low_ratio friction_dry friction_wet`.split(/\s/);
 
 it('says for every number its range, and the unit that its key ends in', () => {
   for (const schema of Object.values(schemas))
@@ -155,10 +169,11 @@ it('says for every number its range, and the unit that its key ends in', () => {
       if (field.type !== 'number') continue;
       expect(field.minimum, name).toBeTypeOf('number');
       expect(field.maximum, name).toBeTypeOf('number');
-      const ending = ENDINGS.find(([end]) => name.endsWith(end));
+      const key = `_${name.replaceAll('[]', '')}`;
+      const ending = ENDINGS.find(([end]) => key.endsWith(end));
       const unit = /\[([^\]]+)\]/.exec(field.description ?? '')?.[1];
       if (name === 'drive' || name === 'regeneration') expect(unit).toBe('%');
-      else if (ending === undefined) expect(WITHOUT_UNIT, name).toContain(name);
+      else if (ending === undefined) expect(WITHOUT_UNIT, name).toContain(key.slice(1));
       else expect(unit, name).toBe(ending[1]);
     }
 });

@@ -1,0 +1,45 @@
+import { InputError, type Problem } from '../problems/input-error.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import { NOT_GIVEN } from './fields.ts';
+import { gearsOfRide } from './gears-of-ride.ts';
+import type { DefaultUsed } from './list-defaults.ts';
+import type { CaseDocument } from './read-case-file.ts';
+import type { VehicleDocument } from './read-vehicle-file.ts';
+import { speedsOfGears } from './speeds-of-gears.ts';
+import { vehicleOf } from './vehicle-of.ts';
+import { placeOf } from './yaml-source.ts';
+
+/**
+ * The vehicle as a case rides it: in its gear, on its surface.
+ *
+ * @throws InputError for what the case asks of a vehicle that does not have it, with the places of the case:
+ *   `no-traction`, `no-gears`, `no-clutch`, `out-of-range` (gear), `gear-engaged-already`, and `beyond-the-gear` for set
+ *   speeds that the engaged gear cannot turn; for what the compilers of `vehicle/` refuse, with those of the vehicle
+ */
+export function vehicleOfCase(document: CaseDocument, vehicle: VehicleDocument): Vehicle {
+  const problems = [...surfaceProblems(document, vehicle), ...gearsOfRide(document, vehicle)];
+  if (problems.length === 0) problems.push(...speedsOfGears(document, vehicle));
+  const [first, ...others] = problems;
+  if (first !== undefined) throw new InputError(first, ...others);
+  const { hold, road } = document.file;
+  return vehicleOf(vehicle, { gear: hold.gear ?? null, surface: road.surface ?? 'dry' });
+}
+
+/** Defaults of a case that count only for such a vehicle. */
+export function rideDefaults({ file }: CaseDocument, vehicle: VehicleDocument): readonly DefaultUsed[] {
+  if (vehicle.file.traction === undefined || file.road.surface !== undefined) return [];
+  return [{ key: 'road.surface', value: 'dry', of: 'case', source: NOT_GIVEN }];
+}
+
+function surfaceProblems({ source, file }: CaseDocument, vehicle: VehicleDocument): Problem[] {
+  if (file.road.surface === undefined || vehicle.file.traction !== undefined) return [];
+  return [
+    {
+      code: 'no-traction',
+      place: placeOf(source, ['road', 'surface']),
+      message: 'has no meaning for a vehicle whose grip is not known',
+      found: file.road.surface,
+      allowed: `nothing, or traction in ${vehicle.source.file}`,
+    },
+  ];
+}
