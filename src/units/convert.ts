@@ -52,3 +52,9 @@ export const toLitre = (volume: number): number => volume * 1000;
 export const fromGPerKwh = (consumption: number): number => consumption / 3.6e9;
 /** [g/h] -> [kg/s] */
 export const fromGPerHour = (flow: number): number => flow / 3.6e6;
+/** [bar] -> [Pa] */
+export const fromBar = (bar: number): number => bar * 1e5;
+/** [Pa] -> [bar] */
+export const toBar = (pressure: number): number => pressure / 1e5;
+/** [1/(km/h)2] -> [1/(m/s)2] */
+export const fromPerKmh2 = (curve: number): number => toKmh(toKmh(curve));
