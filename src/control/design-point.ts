@@ -7,7 +7,9 @@ import { effectiveMass, type LinearVehicle, linearise } from '../vehicle/lineari
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { commandRange } from './command-range.ts';
 import { type Gains, type SampledLoop, sampledLoop } from './sampled-loop.ts';
+import { sensorDelay } from './sensor-delay.ts';
 import type { DesignRecord } from './setup.ts';
 
 /** Where and for what controller gains are designed. */
@@ -51,22 +53,22 @@ export interface DesignLoop {
  */
 export function designLoop(point: DesignPoint): DesignLoop {
   const model = linearise(point.vehicle, { speed: point.at, surroundings: point.surroundings });
-  const { throttleMin, throttleMax } = point.vehicle.drive;
+  const { least, greatest } = commandRange(point.vehicle);
   if (model === null)
     throw notFeasible(
       'the throttle has no effect at the operating point',
       speedWords(point.at),
       'a speed that the drive can hold',
     );
-  if (!model.feasible)
+  if (!model.feasible || model.throttle < least || model.throttle > greatest)
     throw notFeasible(
       `the drive cannot hold the operating point of ${speedWords(point.at)}`,
       `a throttle of ${figure(toPct(model.throttle))} %`,
-      `${toPct(throttleMin)} to ${toPct(throttleMax)} %`,
+      `${toPct(least)} to ${toPct(greatest)} %`,
     );
   const { actuator, drive, sensor } = point.vehicle;
-  const lags =
-    actuator.lag + drive.lag + sensor.filter + sensor.delay + point.computingDelay + point.sample / 2;
+  const delays = actuator.deadTime + sensorDelay(sensor, point.at) + point.computingDelay + point.sample / 2;
+  const lags = actuator.lag + drive.lag + sensor.filter + delays;
   return { point, model, loop: sampledLoop(point.vehicle, model, point), careful: 0.3 / lags };
 }
 
@@ -88,8 +90,9 @@ export function setSpeedStep(design: DesignLoop, gains: Gains, duration: number)
   const push = { reference: 1, setpointWeight: design.point.setpointWeight, disturbance: 0 };
   const { speed, spacing } = design.loop.respond(gains, push, duration, duration / 2000);
   const figures = stepFigures(speed, spacing, 1, SETTLING_BAND);
-  // The response begins with the command that follows the step of set speed.
-  return { ...figures, settling: figures.settling + design.point.computingDelay };
+  // The response begins with the throttle that follows the step of set speed.
+  const late = design.point.computingDelay + design.point.vehicle.actuator.deadTime;
+  return { ...figures, settling: figures.settling + late };
 }
 
 /** Greatest loss of speed after a step of grade [m/s] (for a step downhill, the greatest gain). */

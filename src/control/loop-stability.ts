@@ -4,12 +4,14 @@ import { fromDeg } from '../units/convert.ts';
 import { linearise } from '../vehicle/linearise.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { commandRange } from './command-range.ts';
 import { type Gains, type LoopTiming, type SampledLoop, sampledLoop } from './sampled-loop.ts';
 
 /** How far the linear loop of a candidate is from oscillating. */
 export interface LoopStability {
-  /** True speed that it stands for [m/s]. */
+  /** True speed that it stands for [m/s], and gear, index into the drive's gears. */
   readonly speed: number;
+  readonly gear: number;
   /** Every pole of the closed loop decays. */
   readonly stable: boolean;
   /** Factor on the gain at which it oscillates, Infinity where none does; null for a loop that is not stable. */
@@ -31,35 +33,47 @@ const STANDS = 1e-9;
 
 /**
  * Poles and margins of a candidate's sampled loop, with all lags and without the limits of range and rate, on the level in
- * the given surroundings: at the set speed where it stands worst. Gains whose loop is unstable cannot hold a speed whatever
+ * the given surroundings: at the set speed and in the gear where it stands worst. Gains whose loop is unstable cannot hold a speed whatever
  * the road: the run swings between the limits.
  *
  * @param speeds true set speeds of the case [m/s]
- * @returns null where the drive can hold none of these speeds on the level, or has no effect
+ * @param gears in which it is driven, indices into the drive's gears
+ * @returns null where the drive can hold none of these speeds on the level in any of these gears, or has no effect
  */
 export function loopStability(
   vehicle: Vehicle,
   controller: Gains & LoopTiming,
   speeds: readonly number[],
   surroundings: Surroundings,
+  gears: readonly number[] = [vehicle.drive.gear],
 ): LoopStability | null {
+  const { least, greatest } = commandRange(vehicle);
   let worst: LoopStability | null = null;
   const inOrder = [...new Set(speeds)].sort((a, b) => a - b);
   const few = inOrder.length <= MOST_SPEEDS ? inOrder : [inOrder[0]!, inOrder.at(-1)!];
-  for (const speed of few) {
-    const model = linearise(vehicle, { speed, surroundings });
-    if (model === null || !model.feasible) continue;
-    const found = {
-      speed,
-      ...stabilityOf(sampledLoop(vehicle, model, controller), controller, controller.sample),
-    };
-    if (worst === null || reserveOf(found) < reserveOf(worst)) worst = found;
+  for (const gear of new Set(gears)) {
+    const inGear = { ...vehicle, drive: { ...vehicle.drive, gear } };
+    for (const speed of few) {
+      if (vehicle.drive.gears[gear]!.ratio * speed < vehicle.drive.stallSpeed) continue;
+      const model = linearise(inGear, { speed, surroundings });
+      if (model === null || !model.feasible || model.throttle < least || model.throttle > greatest) continue;
+      const found = {
+        speed,
+        gear,
+        ...stabilityOf(sampledLoop(inGear, model, controller), controller, controller.sample),
+      };
+      if (worst === null || reserveOf(found) < reserveOf(worst)) worst = found;
+    }
   }
   return worst;
 }
 
 /** Stability and margins of one loop under these gains. */
-export function stabilityOf(loop: SampledLoop, gains: Gains, sample: number): Omit<LoopStability, 'speed'> {
+export function stabilityOf(
+  loop: SampledLoop,
+  gains: Gains,
+  sample: number,
+): Omit<LoopStability, 'speed' | 'gear'> {
   const poles = loop.poles(gains).filter((pole) => gains.ki !== 0 || sizeOfComplex(pole) > STANDS);
   if (!poles.every((pole) => pole.re < 0)) return { stable: false, gainMargin: null, phaseMargin: null };
   const { gainMargin, phaseMargin } = loopMargins((w) => loop.openLoop(gains, w), SLOWEST, Math.PI / sample);

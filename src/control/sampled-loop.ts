@@ -14,6 +14,7 @@ import {
 } from '../numeric/complex.ts';
 import type { LinearVehicle } from '../vehicle/linearise.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { sensorDelay } from './sensor-delay.ts';
 
 /** When and how a PI controller works in the loop. */
 export interface LoopTiming {
@@ -42,11 +43,12 @@ export interface Push {
 
 /**
  * The small-signal loop of a vehicle under a sampled PI controller, with every lag that the replay has: zero-order hold,
- * actuator lag, drive lag, the vehicle, sensor filter, sensor and computing delay. Limits of range and rate are left out.
+ * dead time and lag of the actuator, drive lag, the vehicle, sensor filter, sensor and computing delay; a sensor that
+ * counts or times pulses by the mean age of what it shows. Limits of range and rate, slack and steps are left out.
  *
  *     dy/dt = (u - y) / ta,  dx/dt = (y - x) / td,  dv/dt = a v + b x + d,  dz/dt = (v - z) / tf
  *
- * solved exactly over a sample. The controller sees scale z(t - delay); a delay that is no whole number of samples is
+ * solved exactly over a sample. The controller sees scale z(t - delay), all delays in one; a delay that is no whole number of samples is
  * met by the state at the instant within the sample.
  */
 export interface SampledLoop {
@@ -76,13 +78,14 @@ const LONGEST_QUEUE = 60;
 export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: LoopTiming): SampledLoop {
   const { sample, integration } = timing;
   const backward = integration === 'backward';
-  const { scaleError, delay } = vehicle.sensor;
-  const scale = 1 + scaleError;
+  const scale = 1 + vehicle.sensor.scaleError;
   const plant = plantOf(vehicle, model);
   const { order, speed, measured } = plant;
   const whole = holdInput(plant.a, plant.b, sample);
+  // A command that is late by computing delay and dead time is the command of a measurement that is older by them.
+  const delay = sensorDelay(vehicle.sensor, model.speed) + timing.computingDelay + vehicle.actuator.deadTime;
   // The measurement of sample k is taken at t_k - delay, `share` of a sample after t_(k - back).
-  const samplesLate = (delay + timing.computingDelay) / sample;
+  const samplesLate = delay / sample;
   const back = Math.ceil(samplesLate - 1e-9);
   const share = Math.max(0, back - samplesLate);
   const late = holdInput(plant.a, plant.b, share * sample);

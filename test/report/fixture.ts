@@ -83,7 +83,7 @@ function plainResult(wish: FixtureWish): RunResult {
       figures: figuresOf(run),
       loop:
         setup.controller.kind === 'pi'
-          ? { speed: SET, stable: true, gainMargin: 4 + i, phaseMargin: 1.05 - 0.1 * i }
+          ? { speed: SET, gear: 0, stable: true, gainMargin: 4 + i, phaseMargin: 1.05 - 0.1 * i }
           : null,
       full: null,
     };
