@@ -49,8 +49,8 @@ export function combustionTable(spec: CombustionSpec): CombustionTable {
   const loss = new Float64Array(torque.length);
   shaftSpeed.forEach((w, i) => {
     const within = Math.min(w, limit);
-    const closed = governed(curves, spec.idle, w);
-    const gain = curves.full(within) - governed(curves, spec.idle, within);
+    const closed = governedTorque(curves, spec.idle, w);
+    const gain = curves.full(within) - governedTorque(curves, spec.idle, within);
     const left = w <= limit ? gain : gain * Math.max(0, 1 - (w - limit) / limitBand);
     const least = atWheel(closed);
     const most = atWheel(closed + left);
@@ -93,8 +93,8 @@ function merged(places: readonly number[]): Float64Array {
   return Float64Array.from(sorted.filter((x, i) => i === 0 || x - sorted[i - 1]! > SAME));
 }
 
-/** Closed-throttle torque as the idle governor leaves it. */
-function governed(curves: CombustionCurves, idle: number, shaftSpeed: number): number {
+/** Closed-throttle torque as the idle governor leaves it, at the crankshaft [N m]. */
+export function governedTorque(curves: CombustionCurves, idle: number, shaftSpeed: number): number {
   if (shaftSpeed <= idle) return Math.max(0, curves.closed(shaftSpeed));
   const end = idle + GOVERNOR_BAND;
   if (shaftSpeed >= end) return curves.closed(shaftSpeed);
