@@ -32,8 +32,8 @@ export interface CombustionTable {
  * - Rev limiter: what the throttle adds to closed throttle falls from its value at `revLimit` to 0 over `limitBand`.
  * - Driveline: at the nodes, torque times efficiency where it drives, over efficiency where it holds back. In between
  *   the law stays straight, where the true one has a kink at no torque.
- * - Altitude: the loss at a node is f (T - c) / (f - c) with full and closed torque f and c there, so that full throttle
- *   is d f exactly (ISO 1585 corrects full-load torque) and closed throttle is unchanged.
+ * - Altitude: the loss at a node is f (T - c) / (f - c) with full and closed torque f and c there, by the driveline like
+ *   T, so that full throttle is d f exactly (ISO 1585 corrects full-load torque) and closed throttle is unchanged.
  *
  * @param spec checked (`checkCombustion`)
  */
@@ -44,7 +44,6 @@ export function combustionTable(spec: CombustionSpec): CombustionTable {
   const shaftSpeed = speedNodes(spec, curves);
   const throttle = merged(fuelCut === null ? [...curves.throttle] : [...curves.throttle, fuelCut.throttle]);
   const columns = throttle.length;
-  const atWheel = (torque: number): number => (torque > 0 ? torque * efficiency : torque / efficiency);
   const torque = new Float64Array(shaftSpeed.length * columns);
   const loss = new Float64Array(torque.length);
   shaftSpeed.forEach((w, i) => {
@@ -52,12 +51,12 @@ export function combustionTable(spec: CombustionSpec): CombustionTable {
     const closed = governedTorque(curves, spec.idle, w);
     const gain = curves.full(within) - governedTorque(curves, spec.idle, within);
     const left = w <= limit ? gain : gain * Math.max(0, 1 - (w - limit) / limitBand);
-    const least = atWheel(closed);
-    const most = atWheel(closed + left);
     throttle.forEach((x, j) => {
-      const at = atWheel(closed + left * curves.share(within, x));
-      torque[i * columns + j] = at;
-      loss[i * columns + j] = most > 0 && most > least ? (most * (at - least)) / (most - least) : 0;
+      const share = curves.share(within, x);
+      const at = closed + left * share;
+      const byDriveline = at > 0 ? efficiency : 1 / efficiency;
+      torque[i * columns + j] = byDriveline * at;
+      loss[i * columns + j] = byDriveline * Math.max(0, closed + left) * share;
     });
   });
   return {
