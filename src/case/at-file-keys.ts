@@ -7,7 +7,7 @@ import { type Path, placeOf } from './yaml-source.ts';
  * of the key of the file. The rules of the file come first; this is for what they leave.
  *
  * @param part of the vehicle that is compiled
- * @param keys of the file below that part, by the key of the specification; the part itself for any other
+ * @param keys of the file below that part, by the first word of the key of the specification; the part itself for any other
  */
 export function atFileKeys<T>(
   { source, at }: VehicleDocument,
@@ -20,7 +20,7 @@ export function atFileKeys<T>(
   } catch (error) {
     if (!(error instanceof InputError)) throw error;
     const [first, ...others] = error.problems.map((problem): Problem => {
-      const key = problem.place.key ?? '';
+      const key = problem.place.key?.split(/[.[]/)[0] ?? '';
       const path = Object.hasOwn(keys, key) ? (keys[key] ?? []) : [];
       return { ...problem, place: placeOf(source, [...at, part, ...path]) };
     });

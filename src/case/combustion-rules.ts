@@ -70,14 +70,14 @@ function mapFaults({ rpm, throttle_pct: throttle, nm }: TorqueMapFile): RuleFaul
         allowed: `${wanted} %`,
       });
   nm.forEach((row, i) => {
-    const [closed, full] = [row[0], row.at(-1)];
-    if (closed !== undefined && full !== undefined && full < closed)
+    const falls = row.findIndex((torque, j) => torque < (row[j - 1] ?? torque));
+    if (falls >= 0)
       faults.push({
-        path: [...path, 'nm', i],
+        path: [...path, 'nm', i, falls],
         code: 'not-in-order',
-        message: `full throttle gives less than closed throttle at ${rpm[i]} rpm`,
-        found: `${closed} N m closed, ${full} N m full`,
-        allowed: `at least ${closed} N m at full throttle`,
+        message: `torque falls as the throttle opens at ${rpm[i]} rpm`,
+        found: `${row[falls]} N m after ${row[falls - 1]} N m`,
+        allowed: `at least ${row[falls - 1]} N m`,
       });
   });
   return faults;

@@ -1,9 +1,11 @@
-import { InputError } from '../problems/input-error.ts';
 import { fromKw } from '../units/convert.ts';
 import type { Drive } from '../vehicle/drive.ts';
 import { electricDrive } from '../vehicle/electric-drive.ts';
+import { engineDrive } from '../vehicle/engine-drive.ts';
 import { forceDrive } from '../vehicle/force-drive.ts';
+import { variatorDrive } from '../vehicle/variator-drive.ts';
 import { atFileKeys } from './at-file-keys.ts';
+import { engineSpecOf, variatorSpecOf } from './combustion-of.ts';
 import type { DriveFile } from './drive-schemas.ts';
 import { electricSpecOf } from './electric-of.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
@@ -12,12 +14,27 @@ import type { Path } from './yaml-source.ts';
 /** A vehicle without a drive coasts. The drive law needs a force above 0: this one moves nothing [N]. */
 const NO_FORCE = 0.001;
 
-/** Where the keys of the compilers stand in a file, below its drive. */
+/** Where the keys of the compilers stand in a file, below its drive: each with all that follows on it. */
 const KEYS: Readonly<Record<string, Path>> = {
   peakForce: ['peak_force_n'],
   peakPower: ['peak_power_kw'],
   closedThrottleForce: ['closed_throttle_force_n'],
   lag: ['lag_s'],
+  torque: ['torque'],
+  drag: ['closed_throttle_drag'],
+  fuelCut: ['fuel_cut'],
+  stall: ['stall_rpm'],
+  idle: ['idle_rpm'],
+  revLimit: ['rev_limit_rpm'],
+  limitBand: ['rev_limit_band_rpm'],
+  efficiency: ['driveline_efficiency_pct'],
+  inertia: ['engine_inertia_kg_m2'],
+  ratios: ['gear_ratios'],
+  gear: ['gear'],
+  gearbox: ['gearbox'],
+  wheelRadius: ['wheel_radius_m'],
+  line: ['belt', 'line'],
+  clutch: ['clutch'],
 };
 
 /**
@@ -53,13 +70,9 @@ function compile(file: DriveFile, gear: number | null): Drive {
         derate: file.altitude_derate,
       });
     case 'engine':
+      return engineDrive(engineSpecOf(file, gear));
     case 'variator':
-      throw new InputError({
-        code: 'no-compiler',
-        place: { key: 'kind' },
-        message: 'this kind of drive is not driven yet',
-        found: `${file.kind}${gear === null ? '' : `, gear ${gear}`}`,
-      });
+      return variatorDrive(variatorSpecOf(file));
     case 'electric':
       return electricDrive(electricSpecOf(file));
   }

@@ -1,7 +1,7 @@
 import type { RuleFault } from './check-file.ts';
 import { stallRpm } from './combustion-of.ts';
 import type { DriveFileOf } from './drive-schemas.ts';
-import { above, below, decreasing, increasing } from './order-rules.ts';
+import { above, atMost, decreasing, increasing } from './order-rules.ts';
 
 type EngineFile = DriveFileOf<'engine'>;
 
@@ -39,9 +39,9 @@ function shiftLineFaults(file: EngineFile): RuleFault[] {
       if (crossed.length > 0) return crossed;
       return [
         ...above(at(i, 'down_rpm'), down, { value: stall, words: 'where the engine stalls' }, 'rpm'),
-        ...(limit === undefined || up <= limit
+        ...(limit === undefined
           ? []
-          : below(at(i, 'up_rpm'), up, { value: limit, words: 'the rev limit' }, 'rpm')),
+          : atMost(at(i, 'up_rpm'), up, { value: limit, words: 'the rev limit' }, 'rpm')),
         ...hunting(at(i, 'down_rpm'), up, down, step),
       ];
     }),

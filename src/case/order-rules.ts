@@ -82,42 +82,46 @@ export function tableFaults({ path, rows, columns, body }: TableOfFile): RuleFau
   return faults;
 }
 
+/** A number that another is held against, and what it is. */
+export interface Against {
+  readonly value: number;
+  readonly words: string;
+}
+
 /** One number that must lie above another. */
-export function above(
-  path: Path,
-  value: number,
-  than: { readonly value: number; readonly words: string },
-  unit: string,
-): RuleFault[] {
-  if (value > than.value) return [];
-  const ofUnit = unit === '' ? '' : ` ${unit}`;
-  return [
-    {
-      path,
-      code: 'not-in-order',
-      message: `is not above ${than.words}`,
-      found: `${value}${ofUnit}`,
-      allowed: `more than ${than.value}${ofUnit}`,
-    },
-  ];
+export function above(path: Path, value: number, than: Against, unit: string): RuleFault[] {
+  return value > than.value ? [] : [misplaced(path, value, than, unit, 'above', 'more than')];
 }
 
 /** One number that must lie below another. */
-export function below(
+export function below(path: Path, value: number, than: Against, unit: string): RuleFault[] {
+  return value < than.value ? [] : [misplaced(path, value, than, unit, 'below', 'less than')];
+}
+
+/** One number that must not lie below another. */
+export function atLeast(path: Path, value: number, than: Against, unit: string): RuleFault[] {
+  return value >= than.value ? [] : [misplaced(path, value, than, unit, 'at or above', 'at least')];
+}
+
+/** One number that must not lie above another. */
+export function atMost(path: Path, value: number, than: Against, unit: string): RuleFault[] {
+  return value <= than.value ? [] : [misplaced(path, value, than, unit, 'at or below', 'at most')];
+}
+
+function misplaced(
   path: Path,
   value: number,
-  than: { readonly value: number; readonly words: string },
+  than: Against,
   unit: string,
-): RuleFault[] {
-  if (value < than.value) return [];
+  where: string,
+  allowed: string,
+): RuleFault {
   const ofUnit = unit === '' ? '' : ` ${unit}`;
-  return [
-    {
-      path,
-      code: 'not-in-order',
-      message: `is not below ${than.words}`,
-      found: `${value}${ofUnit}`,
-      allowed: `less than ${than.value}${ofUnit}`,
-    },
-  ];
+  return {
+    path,
+    code: 'not-in-order',
+    message: `is not ${where} ${than.words}`,
+    found: `${value}${ofUnit}`,
+    allowed: `${allowed} ${than.value}${ofUnit}`,
+  };
 }

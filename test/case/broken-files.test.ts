@@ -2,6 +2,8 @@ import { readdirSync, readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { vehicleOf } from '../../src/case/vehicle-of.ts';
+import { vehicleOfCase } from '../../src/case/vehicle-of-case.ts';
 import { InputError } from '../../src/problems/input-error.ts';
 
 interface Row {
@@ -12,7 +14,16 @@ interface Row {
   readonly says: readonly string[];
 }
 
-const READERS = { cases: readCaseFile, vehicles: readVehicleFile };
+/** A file as a run takes it: read, and brought to SI with what it holds. */
+const READERS = {
+  cases: (text: string, file: string) => {
+    const document = readCaseFile(text, file);
+    if (document.vehicle !== null) vehicleOfCase(document, document.vehicle);
+  },
+  vehicles: (text: string, file: string) => {
+    vehicleOf(readVehicleFile(text, file));
+  },
+};
 
 for (const [folder, read] of Object.entries(READERS)) {
   const root = new URL(`../broken/${folder}/`, import.meta.url);
