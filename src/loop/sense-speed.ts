@@ -7,9 +7,9 @@ import { normalAt } from './sensor-noise.ts';
 // Such a sensor has the history to itself: two rows of its own, then a ring of [distance travelled, speed] at the start
 // of a sample; between two samples the distance is the cubic through both.
 
-/** Samples sensed; time of the last pulse, and its period [s]. */
+/** Samples sensed; time of the last pulse and its period in ticks of the clock. */
 const SAMPLES = HISTORY;
-const PULSE_TIME = HISTORY + 1;
+const PULSE_STAMP = HISTORY + 1;
 const PULSE_PERIOD = HISTORY + 2;
 const RING = HISTORY + fit.SENSOR_ROWS * HISTORY_STRIDE;
 
@@ -66,12 +66,13 @@ export function settleSensor({ s, fittings }: Machine): void {
     s[row + 1] = v;
   }
   s[SAMPLES] = k;
-  const spacing = f[fit.F_SPACING];
-  if (spacing > 0) {
+  if (f[fit.F_READING] === fit.TIMED_READING) {
+    const spacing = f[fit.F_SPACING];
     const read = (k - 1 - f[fit.F_DELAY]) * sample;
     const travelled = s[TRAVELLED] - v * (1 + f[fit.F_DELAY]) * sample;
-    s[PULSE_TIME] = read - (travelled - spacing * Math.floor(travelled / spacing)) / v;
-    s[PULSE_PERIOD] = spacing / v;
+    const last = read - (travelled - spacing * Math.floor(travelled / spacing)) / v;
+    s[PULSE_STAMP] = Math.floor(last / f[fit.F_CLOCK]);
+    s[PULSE_PERIOD] = spacing / v / f[fit.F_CLOCK];
   }
   s[SENSED] = s[SENSED_MORE] = f[fit.F_SCALE] * v;
 }
@@ -118,19 +119,20 @@ function slope(s: Float64Array, old: number, next: number, share: number, sample
 /** Speed by the last period [m/s], from the pulses up to this sample's reading. */
 function timePulses(s: Float64Array, f: Float64Array, k: number): number {
   const spacing = f[fit.F_SPACING];
+  const clock = f[fit.F_CLOCK];
   const delay = f[fit.F_DELAY];
   const before = Math.floor(travelledAgo(s, f, k, delay + 1) / spacing);
   const now = Math.floor(travelledAgo(s, f, k, delay) / spacing);
   if (now > before) {
-    const clock = f[fit.F_CLOCK];
-    const last = pulseTime(s, f, k, now * spacing);
-    const previous = now - before > 1 ? pulseTime(s, f, k, (now - 1) * spacing) : s[PULSE_TIME];
+    const last = Math.floor(pulseTime(s, f, k, now * spacing) / clock);
+    const previous =
+      now - before > 1 ? Math.floor(pulseTime(s, f, k, (now - 1) * spacing) / clock) : s[PULSE_STAMP];
     // A pulse faster than the clock is read as one tick of it.
-    s[PULSE_PERIOD] = Math.max(1, Math.floor(last / clock) - Math.floor(previous / clock)) * clock;
-    s[PULSE_TIME] = last;
+    s[PULSE_PERIOD] = Math.max(1, last - previous);
+    s[PULSE_STAMP] = last;
   }
-  const since = (k - delay) * f[fit.F_SAMPLE] - s[PULSE_TIME];
-  return spacing / Math.max(s[PULSE_PERIOD], since);
+  const since = Math.floor(((k - delay) * f[fit.F_SAMPLE]) / clock) - s[PULSE_STAMP];
+  return spacing / (clock * Math.max(s[PULSE_PERIOD], since));
 }
 
 /** Time at which a distance was reached, within a sample before this one's reading [s]. */
