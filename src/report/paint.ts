@@ -70,6 +70,7 @@ const ENERGY = [
   shade('#d55e00', '#e69f00'),
   shade('#7a8087', '#9aa2ab'),
   shade('#b5568c', '#e59cc4'),
+  shade('#8a6d00', '#f0e442'),
 ];
 
 const LISTS = { series: SERIES, demand: DEMAND, diverging: DIVERGING, energy: ENERGY } as const;

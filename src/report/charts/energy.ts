@@ -1,6 +1,6 @@
 import { toWh } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { ENERGY_TERMS, type EnergyAccount, energyAccount, isWhole } from '../model/energy-account.ts';
+import { type EnergyAccount, energyAccount, energyTerms, isWhole } from '../model/energy-account.ts';
 import type { View } from '../model/view.ts';
 import { energyText, fixed } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, scaleOf } from './axes.ts';
@@ -12,6 +12,7 @@ import { type Box, type Canvas, drawing, hatch, label, rectangle, segment, textW
  */
 export function energyChart(view: View, canvas: Canvas): Html {
   const { paint, narrow, id } = canvas;
+  const terms = energyTerms(view);
   const accounts = view.candidates.map((candidate) => energyAccount(candidate.result.ledger));
   const left = narrow ? 8 : 130;
   const row = narrow ? 44 : 34;
@@ -21,7 +22,9 @@ export function energyChart(view: View, canvas: Canvas): Html {
     width: canvas.width - left - 16,
     height: row * view.candidates.length,
   };
-  const reach = accounts.filter(isWhole).flatMap((account) => [sum(account, 1), -sum(account, -1)]);
+  const reach = accounts
+    .filter(isWhole)
+    .flatMap((account) => [sum(terms, account, 1), -sum(terms, account, -1)]);
   const x = scaleOf(
     [toWh(Math.min(0, ...reach)) * 1.02, toWh(Math.max(1, ...reach)) * 1.02],
     box.left,
@@ -31,7 +34,7 @@ export function energyChart(view: View, canvas: Canvas): Html {
     const top = box.top + i * row + (narrow ? 18 : 5);
     let [right, leftward] = [0, 0];
     const whole = isWhole(accounts[i]!);
-    const parts = (whole ? ENERGY_TERMS : []).map((term, k) => {
+    const parts = (whole ? terms : []).map((term, k) => {
       const value = accounts[i]![term.name];
       const from = value >= 0 ? right : leftward + value;
       if (value >= 0) right += value;
@@ -54,7 +57,7 @@ export function energyChart(view: View, canvas: Canvas): Html {
     desc: view.candidates
       .map(
         (candidate, i) =>
-          `${candidate.name}: ${ENERGY_TERMS.map((term) => `${term.words} ${fixed(toWh(accounts[i]![term.name]))} Wh`).join(', ')}.`,
+          `${candidate.name}: ${terms.map((term) => `${term.words} ${fixed(toWh(accounts[i]![term.name]))} Wh`).join(', ')}.`,
       )
       .join(' '),
   };
@@ -72,8 +75,8 @@ function named(x: number, y: number, text: string, { paint }: Canvas): Html {
   return html`${rectangle({ left: x - width / 2, top: y - 11, width, height: 14 }, paint.page, 0.88)}${label(x, y, text, { anchor: 'middle', size: 11, fill: paint.ink })}`;
 }
 
-function sum(account: EnergyAccount, sign: 1 | -1): number {
+function sum(terms: ReturnType<typeof energyTerms>, account: EnergyAccount, sign: 1 | -1): number {
   let total = 0;
-  for (const term of ENERGY_TERMS) total += Math.max(0, sign * account[term.name]);
+  for (const term of terms) total += Math.max(0, sign * account[term.name]);
   return total;
 }

@@ -2,6 +2,7 @@ import { toKm, toKw, toPct, toWh } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { binCurve, type Lane } from '../model/bin-curves.ts';
 import { type Curve, columnsOf, extentOf } from '../model/columns.ts';
+import { gearsChange } from '../model/hold-marks.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
 import { bandText, changeText, placeText } from '../quantity.ts';
@@ -19,8 +20,9 @@ import {
   stroked,
   textWidth,
 } from './canvas.ts';
+import { cycleMarks } from './cycle-marks.ts';
+import { holdBrackets, holdColumns, holdHead } from './hold-brackets.ts';
 import { envelopePath, linePath, type Point } from './paths.ts';
-import { setSpeedBrackets, setSpeedColumns, setSpeedHead } from './set-speed-brackets.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
@@ -34,6 +36,8 @@ interface LaneLook {
   /** Fixed ends of the scale; the curves widen it where it is not `closed`. */
   readonly domain: readonly [number, number];
   readonly closed: boolean;
+  /** Figures at the left axis; as many as fit where it is not given. */
+  readonly ticks?: number;
 }
 
 /** The lanes of a view, from above: what the rider feels, what the throttle does, what it costs. */
@@ -65,6 +69,7 @@ export function laneLooks(view: View): readonly LaneLook[] {
       domain: [toPct(drive.throttleMin), toPct(drive.throttleMax)],
       closed: true,
     },
+    ...(gearsChange(view) ? [gearLook(view)] : []),
     {
       lane: 'power',
       name: 'wheel power / kW',
@@ -86,6 +91,21 @@ export function laneLooks(view: View): readonly LaneLook[] {
   ];
 }
 
+/** The gears that were engaged, a step from one to the next. */
+function gearLook(view: View): LaneLook {
+  const [low, high] = extentOf(view.candidates.map((c) => binCurve(c.result.bins, 'gear'))) ?? [1, 1];
+  return {
+    lane: 'gear',
+    name: 'gear',
+    title: 'gear',
+    of: (gear) => gear,
+    height: 26 + 14 * Math.min(5, high - low + 1),
+    domain: [low - 0.5, high + 0.5],
+    closed: true,
+    ticks: Math.min(6, high - low + 1),
+  };
+}
+
 /** All lanes under one another over the same distance. */
 export function lanesChart(view: View, canvas: Canvas): Html {
   const looks = laneLooks(view);
@@ -93,7 +113,7 @@ export function lanesChart(view: View, canvas: Canvas): Html {
   const left = narrow ? 40 : 52;
   const width = canvas.width - left - (narrow ? 10 : 118);
   const gap = 38;
-  let top = 26 + setSpeedHead(view);
+  let top = 26 + holdHead(view);
   const parts = looks.map((look, i) => {
     const box: Box = { left, top, width, height: narrow ? Math.round(look.height * 0.8) : look.height };
     top += box.height + gap;
@@ -108,7 +128,7 @@ export function lanesChart(view: View, canvas: Canvas): Html {
 
 /** One lane as a drawing of its own. */
 export function laneChart(view: View, canvas: Canvas, look: LaneLook): Html {
-  const box: Box = { left: 52, top: 26 + setSpeedHead(view), width: canvas.width - 170, height: 220 };
+  const box: Box = { left: 52, top: 26 + holdHead(view), width: canvas.width - 170, height: 220 };
   const words = {
     title: `${look.title} over ${view.distanceName}`,
     desc: `${look.name} of every candidate.`,
@@ -137,12 +157,13 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: bo
   const drawn = view.candidates.map((candidate, i) =>
     curveMarks(candidate, curves[i]!, look, canvas, x, y, view.length / (box.width / COLUMN)),
   );
-  return html`<defs>${clip(`${id}-c`, box)}</defs>${setSpeedColumns(view, canvas, box, x)}${first && setSpeedBrackets(view, canvas, { ...box, top: box.top - 20 }, x)}${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
+  return html`<defs>${clip(`${id}-c`, box)}</defs>${holdColumns(view, canvas, box, x)}${first && holdBrackets(view, canvas, { ...box, top: box.top - 20 }, x)}${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
     canvas,
     box,
     y,
     look.closed && look.lane === 'error' ? `${look.name}, near the band` : look.name,
-  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${endMarks(view, canvas, x, box, first)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
+    look.ticks,
+  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${first && cycleMarks(view, canvas, box, x)}${endMarks(view, canvas, x, box, first)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
     canvas,
     box,
     x,

@@ -6,7 +6,7 @@ import type { View } from '../model/view.ts';
 import { changeText, stretchText } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, scaleOf } from './axes.ts';
 import { type Box, type Canvas, drawing, label, rectangle, tenth } from './canvas.ts';
-import { setSpeedBrackets, setSpeedHead } from './set-speed-brackets.ts';
+import { holdBrackets, holdHead } from './hold-brackets.ts';
 
 /** The segments as strips, a row for each candidate, coloured by the worst error; up and down wedges say too fast or too slow. */
 export function segmentStrip(view: View, canvas: Canvas): Html {
@@ -16,7 +16,7 @@ export function segmentStrip(view: View, canvas: Canvas): Html {
   const row = narrow ? 42 : 28;
   const box: Box = {
     left,
-    top: 6 + setSpeedHead(view),
+    top: 6 + holdHead(view),
     width: canvas.width - left - 16,
     height: row * view.candidates.length,
   };
@@ -51,6 +51,6 @@ export function segmentStrip(view: View, canvas: Canvas): Html {
     canvas,
     box.top + box.height + 6 + BOTTOM_AXIS_HEIGHT,
     words,
-    html`${setSpeedBrackets(view, canvas, box, x)}${rows}${bottomAxis(canvas, { ...box, height: box.height + 6 }, x, `${view.distanceName} / km`)}`,
+    html`${holdBrackets(view, canvas, box, x)}${rows}${bottomAxis(canvas, { ...box, height: box.height + 6 }, x, `${view.distanceName} / km`)}`,
   );
 }

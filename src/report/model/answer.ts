@@ -1,4 +1,4 @@
-import type { Cause, Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
+import type { Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
 import {
   bandText,
@@ -11,6 +11,8 @@ import {
   stretchText,
   withUnit,
 } from '../quantity.ts';
+import { CAUSE_WORDS } from './cause-words.ts';
+import { cycleClause } from './cycle-words.ts';
 import { figureText } from './figure-text.ts';
 import { hillNoun } from './hill-words.ts';
 import { settledRange } from './settled-range.ts';
@@ -34,21 +36,6 @@ export interface Answer {
   /** The design that the sentence speaks of; null where there is none. */
   readonly design: string | null;
 }
-
-/** Why a hill defeats a design, as the end of `because ...`. */
-export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
-  torque: 'full throttle gives too little force',
-  power: 'there is too little power',
-  closed_throttle: 'closed throttle holds back too little',
-  gains: 'its gains are too soft for how fast road and wind change',
-  rate: 'the throttle moves too slowly',
-  slack: 'slack in the throttle swallows its command',
-  windup: 'its integral wound up at the limit',
-  derating: 'the thin air leaves too little force',
-  wind: 'the headwind asks for too much',
-  gear: 'the gear is too high',
-  traction: 'the tyre cannot pass the force on',
-};
 
 const STATUS_WORDS = {
   completed: 'reached the end',
@@ -228,6 +215,7 @@ export function answerOf(view: View): Answer {
       ? `${design.name} ${withinClause(view, design)}${asked.words === '' ? '' : `, ${asked.words}`}`
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
     hillClause(view, design),
+    asked.standing === 'not met' ? null : cycleClause(view, design.name),
     ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),
     lockedClause(view, false),
   ].filter((part) => part !== null);

@@ -2,7 +2,7 @@ import type { BinRecord } from '../../loop/result.ts';
 import type { Curve } from './columns.ts';
 
 /** The lanes that a record by bin can fill. */
-export type Lane = 'error' | 'throttle' | 'power' | 'energy';
+export type Lane = 'error' | 'throttle' | 'gear' | 'power' | 'energy';
 
 /** Middles of the bins that were reached [m]. */
 function middles(bins: BinRecord): Float64Array {
@@ -11,7 +11,7 @@ function middles(bins: BinRecord): Float64Array {
   return at;
 }
 
-/** A lane of the record, SI: speed error [m/s], throttle (ratio), wheel power [W], wheel energy so far [J]. */
+/** A lane of the record, SI: speed error [m/s], throttle (ratio), gear (from 1), wheel power [W], wheel energy so far [J]. */
 export function binCurve(bins: BinRecord, lane: Lane): Curve {
   const { size } = bins;
   const at = middles(bins);
@@ -25,6 +25,10 @@ export function binCurve(bins: BinRecord, lane: Lane): Curve {
   }
   if (lane === 'throttle')
     return { size, at, low: bins.throttleMin, mean: bins.throttleMean, high: bins.throttleMax };
+  if (lane === 'gear') {
+    const gear = Float64Array.from(bins.gear.subarray(0, size), (index) => index + 1);
+    return { size, at, low: gear, mean: gear, high: gear };
+  }
   if (lane === 'power')
     return { size, at, low: bins.wheelPower, mean: bins.wheelPower, high: bins.wheelPower };
   const energy = new Float64Array(size);

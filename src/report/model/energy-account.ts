@@ -1,9 +1,10 @@
 import type { Ledger } from '../../loop/result.ts';
+import type { View } from './view.ts';
 
-export type EnergyTerm = 'aero' | 'rolling' | 'climb' | 'brake' | 'kinetic' | 'regeneration';
+export type EnergyTerm = 'aero' | 'rolling' | 'climb' | 'brake' | 'kinetic' | 'regeneration' | 'shifts';
 
 /** Where the drive's work goes, in the order of the bars. */
-export const ENERGY_TERMS: readonly {
+const ENERGY_TERMS: readonly {
   readonly name: EnergyTerm;
   readonly words: string;
   readonly short: string;
@@ -14,7 +15,14 @@ export const ENERGY_TERMS: readonly {
   { name: 'brake', words: 'brake', short: 'brake' },
   { name: 'regeneration', words: 'held back by the drive', short: 'drive' },
   { name: 'kinetic', words: 'speed gained', short: 'speed' },
+  { name: 'shifts', words: 'left in the clutch at shifts', short: 'clutch' },
 ];
+
+/** The terms that this run has: shifts only where somebody shifted. */
+export const energyTerms = ({ candidates }: Pick<View, 'candidates'>): typeof ENERGY_TERMS =>
+  ENERGY_TERMS.filter(
+    ({ name }) => name !== 'shifts' || candidates.some(({ result }) => result.ledger.shifts !== 0),
+  );
 
 export type EnergyAccount = Readonly<Record<EnergyTerm, number>>;
 
@@ -22,7 +30,7 @@ export type EnergyAccount = Readonly<Record<EnergyTerm, number>>;
 export const isWhole = (account: EnergyAccount): boolean =>
   ENERGY_TERMS.every((term) => Number.isFinite(account[term.name]));
 
-/** The account as uses of the drive's pushing work [J]: drive = aero + rolling + climb + brake + kinetic + what the drive took back. */
+/** The account as uses of the drive's pushing work [J]: drive = aero + rolling + climb + brake + kinetic + shifts + what the drive took back. */
 export function energyAccount(ledger: Ledger): EnergyAccount {
   return {
     aero: ledger.aero,
@@ -30,6 +38,7 @@ export function energyAccount(ledger: Ledger): EnergyAccount {
     climb: ledger.climb,
     brake: ledger.brake,
     kinetic: ledger.kinetic,
+    shifts: ledger.shifts,
     regeneration: -ledger.regeneration,
   };
 }

@@ -7,10 +7,13 @@ import { type Html, type HtmlValue, html } from '../html.ts';
 import { statusWords } from '../model/answer.ts';
 import { controllerWords } from '../model/controller-words.ts';
 import { figureTextBeside } from '../model/figure-text.ts';
+import { shiftMarks } from '../model/hold-marks.ts';
 import { type ErrorRange, settledRange, wholeRange } from '../model/settled-range.ts';
+import { setSpeedMarks } from '../model/settling.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { bandText, changeText, NO_VALUE, placeText } from '../quantity.ts';
+import { cycles } from './cycles.ts';
 import { loopMarginRows } from './loop-margin-rows.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
@@ -34,8 +37,18 @@ const SHOWN = [
   'brake_distance_m',
 ] as const;
 
-const CHANGES =
-  'Furthest below and above are told outside of the changes of set speed. All other figures here include them: until a new set speed is reached, the difference counts as error.';
+const changesNote = (what: string): string =>
+  `Furthest below and above are told outside of the ${what}. All other figures here include them: until the set speed is reached again, the difference counts as error.`;
+
+/** What takes a hold off its set speed by plan; null: nothing does. */
+function plannedWords(view: View): string | null {
+  const shifts = shiftMarks(view).length > 0;
+  const changes = setSpeedMarks(view).length > 0;
+  if (!shifts && !changes) return null;
+  return [...(changes ? ['changes of set speed'] : []), ...(shifts ? ['shifts of the rider'] : [])].join(
+    ' and ',
+  );
+}
 
 /** Best is what is nearest to zero: time gained is no better than time lost. */
 const BEST_IS_NONE = 'time_lost_s';
@@ -68,11 +81,12 @@ export function candidatesSection(view: View): Section {
     ...SHOWN.flatMap((name) => figureCells(view, name)),
     ...loopMarginRows(candidates),
   ];
-  const changes = view.result.demand.settling.length > 0;
+  const planned = plannedWords(view);
   const early = candidates.some(endedEarly);
   const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
 ${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
-${(early || changes) && html`<p class="note">${early && '† Up to where that run ended, not over the whole road. '}${changes && CHANGES}</p>`}`;
+${(early || planned !== null) && html`<p class="note">${early && '† Up to where that run ended, not over the whole road. '}${planned !== null && changesNote(planned)}</p>`}
+${cycles(view)}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }
 
@@ -154,5 +168,5 @@ const rangeWords = (view: View, { low, high }: ErrorRange): string =>
 function changesWords(view: View, candidate: CandidateView, range: ErrorRange): Html | null {
   const whole = wholeRange(candidate);
   if (whole === null || (whole.low === range.low && whole.high === range.high)) return null;
-  return html`<span class="small">with changes of set speed<br>${rangeWords(view, whole)}</span>`;
+  return html`<span class="small">with ${plannedWords(view) ?? 'all of it'}<br>${rangeWords(view, whole)}</span>`;
 }

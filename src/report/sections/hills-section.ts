@@ -1,23 +1,28 @@
-import { type Hill, type HillOutcome, isNone } from '../../study/findings.ts';
+import { type Hill, type HillGears, type HillOutcome, isNone } from '../../study/findings.ts';
 import { toPct } from '../../units/convert.ts';
 import { hillPicture } from '../charts/hill-picture.ts';
 import { candidateKey, lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
+import { CAUSE_NAMES } from '../model/cause-words.ts';
+import { gearName } from '../model/gear-words.ts';
 import { hillNoun } from '../model/hill-words.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import {
+  energyText,
   fixed,
   fixedApart,
   forceText,
   gradeText,
   lengthText,
   NO_VALUE,
+  powerText,
   significant,
   stretchText,
   withUnit,
 } from '../quantity.ts';
+import { descents } from './descents.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
@@ -46,7 +51,8 @@ ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
 <p>Under a candidate: its largest error, and why.</p>
-${allHills(view)}`;
+${allHills(view)}
+${descents(view)}`;
   return { id: 'hills', number: 6, title: 'Hills', body };
 }
 
@@ -90,8 +96,32 @@ function facts(view: View, hill: Hill): string {
         ? ` Full throttle would hold ${steadySpeed}.`
         : ` It would run away to ${steadySpeed}.`;
   const grade = `${lengthText(hill.to - hill.from)} at ${gradeWords(hill)}, steepest ${gradeText(hill.maxGrade)}.`;
-  return `${grade} ${needs}${steady}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
+  return `${grade} ${needs}${steady}${gearFacts(view, hill)}${brakeFacts(hill)}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
+
+/** Gear engaged and needed, and what each gear would sustain. */
+function gearFacts(view: View, { gears, share }: Hill): string {
+  if (gears === null) return '';
+  const { engaged, needed } = gears;
+  const enough =
+    needed === null
+      ? 'no gear holds it all the way'
+      : needed === engaged
+        ? 'which is enough'
+        : `${gearName(needed)} would be enough`;
+  const each =
+    share > 1 ? ` Speed that each gear sustains, from the first: ${sustainedWords(view, gears)}.` : '';
+  return ` In ${gearName(engaged)}; ${enough}.${each}`;
+}
+
+/** `44, 60, 52 km/h`; a dash where a gear sustains none. */
+const sustainedWords = ({ speed }: View, { sustained }: HillGears): string =>
+  withUnit(sustained.map((one) => (one > 0 ? fixed(speed.of(one)) : NO_VALUE)).join(', '), speed.name);
+
+const brakeFacts = ({ brakePower, brakeEnergy }: Hill): string =>
+  brakePower > 0
+    ? ` To hold the set speed the brake would have to take up to ${powerText(brakePower)}, ${energyText(brakeEnergy)} in all.`
+    : '';
 
 /** Set speed [m/s] at a place [m]. */
 function setSpeedAt({ result: { road, demand } }: View, place: number): number {
@@ -163,12 +193,13 @@ function sentences(view: View, runs: readonly Run[]): Html | null {
   return html`<ul class="why">${[...groups.values()].map((group) => {
     const { cause, why, wouldHold } = group[0]!.outcome;
     const names = group.map(({ candidate }) => candidate.name).join(', ');
-    const tag = typeof cause === 'string' ? ` (${cause.replaceAll('_', ' ')})` : '';
+    const tag = typeof cause === 'string' ? ` (${CAUSE_NAMES[cause]})` : '';
     return html`<li><strong>${names}</strong>${tag}: ${inReaderUnit(why, view.speed)}${wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${inReaderUnit(wouldHold.map((remedy) => remedy.words).join(' '), view.speed)}</span>`}</li>`;
   })}</ul>`;
 }
 
 function allHills(view: View): Html {
+  const geared = view.result.hills.some(({ gears }) => gears !== null);
   const rows = view.result.hills.map((hill): HtmlValue[] => [
     String(hill.number),
     hill.kind,
@@ -178,10 +209,11 @@ function allHills(view: View): Html {
     fixed(hill.requiredForce),
     fixed(hill.availableForce),
     fixedApart(view.speed.of(hill.sustainedSpeed), [view.speed.of(setSpeedAt(view, hill.shareAt))]),
+    ...(geared ? gearCells(view, hill) : []),
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
       if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
-      return html`${errorText(view, outcome.speedChange)}${typeof outcome.cause === 'string' && html`<br><span class="small">${outcome.cause.replaceAll('_', ' ')}</span>`}`;
+      return html`${errorText(view, outcome.speedChange)}${typeof outcome.cause === 'string' && html`<br><span class="small">${CAUSE_NAMES[outcome.cause]}</span>`}`;
     }),
   ]);
   return table(
@@ -195,6 +227,7 @@ function allHills(view: View): Html {
       { head: 'asked / N', number: true },
       { head: 'there is / N', number: true },
       { head: `steady speed / ${view.speed.axis}`, number: true },
+      ...(geared ? [{ head: 'gear, needed' }, { head: `sustained by gear / ${view.speed.axis}` }] : []),
       ...view.candidates.map((candidate) => ({
         head: html`<span class="name">${candidate.name}</span><br>/ ${view.speed.axis}`,
         number: true,
@@ -203,4 +236,17 @@ function allHills(view: View): Html {
     rows,
     'dense',
   );
+}
+
+/** `6 → 4`, and the speeds that the gears sustain where the one in hand does not. */
+function gearCells(view: View, { gears, share }: Hill): HtmlValue[] {
+  if (gears === null) return [NO_VALUE, NO_VALUE];
+  const { engaged, needed, sustained } = gears;
+  const change =
+    needed === engaged ? `${engaged + 1}` : `${engaged + 1} → ${needed === null ? 'none' : needed + 1}`;
+  const speeds = sustained.map((one) => (one > 0 ? fixed(view.speed.of(one)) : NO_VALUE)).join(' ');
+  return [
+    html`<span class="who">${change}</span>`,
+    share > 1 ? html`<span class="who">${speeds}</span>` : NO_VALUE,
+  ];
 }

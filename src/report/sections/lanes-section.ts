@@ -2,6 +2,8 @@ import { lanesChart } from '../charts/lanes.ts';
 import { candidateKey } from '../charts/line-key.ts';
 import { html } from '../html.ts';
 import { statusWords } from '../model/answer.ts';
+import { automaticShifts, shiftMarks } from '../model/hold-marks.ts';
+import { setSpeedMarks } from '../model/settling.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { chartFigure } from './chart-figure.ts';
@@ -15,12 +17,26 @@ ${chartFigure(
   'lanes',
   (canvas) => lanesChart(view, canvas),
   html`Lines: mean of each stretch that is one line of the picture wide; shade around them: least to greatest in it, so that no peak is lost.${
-    view.result.demand.settling.length > 0 &&
+    setSpeedMarks(view).length > 0 &&
     ' Brackets: a change of set speed is being followed, and the error there is planned.'
   }${
+    shiftMarks(view).length > 0 &&
+    ' Brackets with gears: the rider shifts, and the hold is off from the open clutch until it resumes.'
+  }${
+    view.result.cycles.length > 0 &&
+    html` Small waves at the upper edge of the first lane: <a href="#limit-cycles">limit cycles</a>.`
+  }${automaticWords(view)}${
     early.length > 0 &&
     ` ${early.map((candidate) => `${candidate.name} ${statusWords(candidate)}`).join('; ')}.`
   }`,
 )}`;
   return { id: 'lanes', number: 5, title: 'Along the road', body };
+}
+
+/** How often a gearbox shifted by itself, by candidate. */
+function automaticWords(view: View): string {
+  const counts = view.candidates.map((candidate) => `${candidate.name} ${automaticShifts(candidate)}`);
+  return view.candidates.some((candidate) => automaticShifts(candidate) > 0)
+    ? ` Shifts of the gearbox: ${counts.join(', ')}.`
+    : '';
 }

@@ -5,6 +5,7 @@ import { planChart } from '../charts/plan.ts';
 import { segmentStrip } from '../charts/segment-strip.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { errorClasses } from '../model/error-classes.ts';
+import { holdMarks } from '../model/hold-marks.ts';
 import { planMap } from '../model/plan-map.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
@@ -24,7 +25,7 @@ export function whereSection(view: View): Section {
 <h3>Segments</h3>
 <p>${segments.length} segments ${how}; each has the worst error of the candidate in it. A wedge that points up: too fast by more than the band; down: too slow.</p>
 ${classKey(view)}
-${chartFigure('segments', (canvas) => segmentStrip(view, canvas), `Worst speed error by segment, one row a candidate.${view.result.demand.settling.length > 0 ? ' Brackets: a change of set speed is being followed, and the error there is planned.' : ''}`)}
+${chartFigure('segments', (canvas) => segmentStrip(view, canvas), `Worst speed error by segment, one row a candidate.${holdMarks(view).length > 0 ? ' Brackets: a change of set speed is being followed, or the rider shifts, and the error there is planned.' : ''}`)}
 <details><summary>Table of the segments</summary>${segmentTable(view)}</details>`;
   return { id: 'where', number: 7, title: 'Where', body };
 }

@@ -1,0 +1,53 @@
+import type { BinRecord, ShiftEvent } from '../../loop/result.ts';
+import { type SetSpeedMark, setSpeedMarks } from './settling.ts';
+import type { CandidateView, View } from './view.ts';
+
+/** Stretches of the road, in order, on which the hold is not asked to keep its speed: changes of set speed, and shifts of the rider. */
+export function holdMarks(view: View): readonly SetSpeedMark[] {
+  return [...setSpeedMarks(view), ...shiftMarks(view)].sort((a, b) => a.from - b.from);
+}
+
+/** Shifts of the rider, each from where the first candidate opens the clutch to where the hold of the last resumes. */
+export function shiftMarks(view: View): readonly SetSpeedMark[] {
+  const marks: { from: number; to: number; text: string }[] = [];
+  for (const candidate of view.candidates)
+    for (const shift of candidate.result.shifts) {
+      if (shift.resumedAt === null) continue;
+      const to = resumedPlace(candidate, shift);
+      const text = `clutch open, hold off: gear ${shift.from + 1} to ${shift.to + 1}`;
+      const same = marks.find((mark) => mark.text === text && shift.distance <= mark.to && to >= mark.from);
+      if (same === undefined) marks.push({ from: shift.distance, to, text });
+      else {
+        same.from = Math.min(same.from, shift.distance);
+        same.to = Math.max(same.to, to);
+      }
+    }
+  return marks.sort((a, b) => a.from - b.from);
+}
+
+/** Where the hold had resumed: the first bin entered after that, or the end of the run [m]. */
+function resumedPlace({ result: { bins, endDistance } }: CandidateView, shift: ShiftEvent): number {
+  const i = firstAfter(bins, shift.resumedAt ?? shift.time);
+  return i < bins.size ? Math.max(shift.distance, bins.edge[i]!) : endDistance;
+}
+
+function firstAfter({ size, timeAt }: BinRecord, time: number): number {
+  let [low, high] = [0, size];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (timeAt[middle]! >= time) high = middle;
+    else low = middle + 1;
+  }
+  return low;
+}
+
+/** Any candidate was in more than one gear: the gears are worth a lane. */
+export const gearsChange = (view: View): boolean =>
+  view.candidates.some(({ result: { bins } }) => {
+    for (let i = 1; i < bins.size; i++) if (bins.gear[i] !== bins.gear[0]) return true;
+    return false;
+  });
+
+/** Shifts that gearboxes made by themselves, over all candidates. */
+export const automaticShifts = ({ result: { shifts } }: CandidateView): number =>
+  shifts.filter(({ resumedAt }) => resumedAt === null).length;
