@@ -1,6 +1,8 @@
 import { bracketedRoot } from '../numeric/root.ts';
 import { derateFactor } from './derating.ts';
+import type { Drive } from './drive.ts';
 import { throttleFor, wheelForce } from './drive-law.ts';
+import { piecewiseLinear } from './piecewise-linear.ts';
 import { requiredForce } from './resistance.ts';
 import { type Surroundings, stillAndLevel } from './surroundings.ts';
 import type { Vehicle } from './vehicle.ts';
@@ -43,7 +45,7 @@ export function equilibriumSpeeds(
   throttle: number,
 ): readonly Equilibrium[] {
   const surplus = surplusOf(vehicle, at, throttle);
-  const speeds = scanSpeeds(vehicle, at);
+  const speeds = scanSpeeds(vehicle, at, throttle);
   const values = speeds.map(surplus);
   for (let i = speeds.length - 2; i >= 1; i--) {
     const toward = Math.sign(values[i]!);
@@ -92,11 +94,12 @@ export function settledSpeed(vehicle: Vehicle, at: Surroundings, throttle: numbe
   const push = surplus(from);
   if (push === 0) return from;
   const up = push > 0;
+  const corners = cornerSpeeds(vehicle.drive, throttle);
   const left = (speed: number): number => (up ? surplus(speed) : -surplus(speed));
   const end = up ? SPEED_CEILING : SLOWEST;
   let [a, b, fa, fb] = [from, from, left(from), left(from)];
   while (up ? b < end : b > end) {
-    const c = nextScanSpeed(vehicle, at, b, up);
+    const c = nextScanSpeed(corners, -at.headwind, b, up);
     const fc = left(c);
     // A dip between the steps would be a pair of balances, of which the nearer one stops the vehicle.
     if (fc > 0 && fb <= fa && fb <= fc && b !== from) {
@@ -138,24 +141,28 @@ export function levelThrottle(
   return Math.min(Math.max(throttle, drive.throttleMin), drive.throttleMax);
 }
 
-/** The next speed behind a given one at which a scan looks: a whole step, a corner of the drive, no wind any more, or the end. */
-function nextScanSpeed(vehicle: Vehicle, at: Surroundings, speed: number, up: boolean): number {
-  const { speedEdges, gears, gear } = vehicle.drive;
+/** Speeds at which the force of a locked throttle has a corner: where shaft speed meets the edge of a cell, or a belt its limits. */
+function cornerSpeeds({ belt, gears, gear, speedEdges }: Drive, throttle: number): number[] {
   const { ratio } = gears[gear]!;
+  if (belt === null) return Array.from(speedEdges, (edge) => edge / ratio);
+  const line = piecewiseLinear(belt.throttle, belt.shaftSpeed, throttle);
+  return [line, ...speedEdges].flatMap((edge) => [edge / belt.greatest, edge / belt.least]);
+}
+
+/** The next speed behind a given one at which a scan looks: a whole step, a corner of the drive, no wind any more, or the end. */
+function nextScanSpeed(corners: readonly number[], calm: number, speed: number, up: boolean): number {
   const whole = up ? Math.floor(speed / SCAN_STEP) + 1 : Math.ceil(speed / SCAN_STEP) - 1;
   let next = Math.min(Math.max(whole * SCAN_STEP, SLOWEST), SPEED_CEILING);
   const nearer = (place: number): void => {
     if (up ? place > speed && place < next : place < speed && place > next) next = place;
   };
-  nearer(-at.headwind);
-  for (let i = 0; i < speedEdges.length; i++) nearer(speedEdges[i]! / ratio);
+  nearer(calm);
+  for (const corner of corners) nearer(corner);
   return next;
 }
 
-function scanSpeeds(vehicle: Vehicle, at: Surroundings): number[] {
-  const { drive } = vehicle;
-  const { ratio } = drive.gears[drive.gear]!;
-  const corners = [...drive.speedEdges].map((edge) => edge / ratio);
+function scanSpeeds(vehicle: Vehicle, at: Surroundings, throttle: number): number[] {
+  const corners = cornerSpeeds(vehicle.drive, throttle);
   const grid = Array.from({ length: SPEED_CEILING / SCAN_STEP }, (_, i) => (i + 1) * SCAN_STEP);
   const inside = [SLOWEST, -at.headwind, ...corners, ...grid].filter((v) => v > 0 && v <= SPEED_CEILING);
   return [...new Set(inside)].sort((a, b) => a - b);

@@ -1,3 +1,4 @@
+import { beltRatio } from './belt-law.ts';
 import { derateFactor } from './derating.ts';
 import { throttleFor, wheelForceSlopes } from './drive-law.ts';
 import { requiredForce, resistanceSlopes } from './resistance.ts';
@@ -35,13 +36,33 @@ export interface LinearVehicle {
   readonly effectiveMass: number;
 }
 
-/** Mass that the force must accelerate: mass, turning wheels, and what turns before the engaged gear [kg]. */
-export function effectiveMass(vehicle: Vehicle): number {
-  return vehicle.mass + vehicle.rotatingMass + vehicle.drive.gears[vehicle.drive.gear]!.inertia;
+/**
+ * Mass that the wheel force must accelerate: mass, turning wheels, and what turns before the gear [kg]. A belt between its
+ * limits keeps the engine's speed whatever the vehicle does, so that the engine's inertia then plays no part: with
+ * m_e = m + J r^2 and w = r v kept, the energy that the belt takes from the engine is J r^2 v dv/dt. Faster than the
+ * belt's lag the ratio stands, and m + J r^2 counts.
+ *
+ * @param speed [m/s] and
+ * @param throttle for the ratio of a belt; without them a belt is at its greatest ratio
+ * @param gear by default the engaged one
+ */
+export function effectiveMass(
+  vehicle: Vehicle,
+  speed?: number,
+  throttle?: number,
+  gear: number = vehicle.drive.gear,
+): number {
+  const { belt, gears } = vehicle.drive;
+  const mass = vehicle.mass + vehicle.rotatingMass;
+  if (belt === null || speed === undefined || throttle === undefined) return mass + gears[gear]!.inertia;
+  const ratio = beltRatio(belt, speed, throttle);
+  return ratio > belt.least && ratio < belt.greatest ? mass : mass + belt.inertia * ratio * ratio;
 }
 
 /**
- * Linear model of the vehicle by exact derivatives; at a corner of the drive (power limit) those of its upper side.
+ * Linear model of the vehicle by exact derivatives; at a corner of the drive (power limit, node of a map, limit of a
+ * belt) those of its upper side. Where the law steps over the operating point (fuel cut) it is that of the upper side of
+ * the step, over which a hold there swings to and fro. A belt is taken to be at rest, its own lag left out.
  *
  * @param vehicle in its engaged gear
  * @param point operating point; a speed of 0 has no linear model
@@ -56,7 +77,7 @@ export function linearise(vehicle: Vehicle, point: OperatingPoint): LinearVehicl
   const force = wheelForceSlopes(drive, drive.gear, speed, throttle, derate);
   if (force.byThrottle === 0) return null;
   const road = resistanceSlopes(vehicle, speed, at);
-  const mass = effectiveMass(vehicle);
+  const mass = effectiveMass(vehicle, speed, throttle);
   return {
     speed,
     throttle,
