@@ -21,7 +21,7 @@ export function correctionFactor(airDensity: number, airTemperature: number): nu
 
 /**
  * Share of the rated full-throttle torque that the engine has in this air: min(1, 1 / alpha); 1 for a drive without
- * altitude derating. Beyond `CORRECTION_RANGE` (from about 800 m up) it extrapolates: see `deratingExtrapolates`.
+ * altitude derating. Beyond `CORRECTION_RANGE` (from 890 m of the standard atmosphere up) it extrapolates: see `deratingExtrapolates`.
  */
 export function derateFactor(
   drive: Pick<Drive, 'derate'>,
