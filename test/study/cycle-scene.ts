@@ -7,11 +7,11 @@ import { findLimitCycles } from '../../src/study/limit-cycles.ts';
 import { roadOf } from './road-of.ts';
 
 /** A steady grade behind a short rise that sets the loop swinging. */
-export const kicked = (length: number, grade = 0) =>
+export const kicked = (length: number, grade = 0, rise = 20) =>
   roadOf([
     { length: 100, grade },
-    { length: 20, grade: grade + 0.03 },
-    { length: length - 120, grade },
+    { length: rise, grade: grade + 0.03 },
+    { length: length - 100 - rise, grade },
   ]);
 
 export function cyclesOf(plan: LoopPlan, leastAmplitude?: number): readonly LimitCycle[] {
