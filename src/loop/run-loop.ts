@@ -58,7 +58,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     bins: record.finish(),
     ledger: ledgerOf(machine, plan.vehicle),
     checkpoints,
-    shifts: [],
+    shifts: run.shifts,
   };
 }
 

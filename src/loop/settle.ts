@@ -8,9 +8,10 @@ import { requiredForce } from '../vehicle/resistance.ts';
 import { loadRatio } from './belt.ts';
 import { settleSource } from './draw-power.ts';
 import { gearInHand, loadGear } from './engage-gear.ts';
+import { gearInForce } from './gearbox.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { surroundingsAt } from './places.ts';
+import { distanceAt, surroundingsAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
 import { settleSensor } from './sense-speed.ts';
 
@@ -26,6 +27,7 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   const { vehicle, controller } = plan;
   const { drive } = vehicle;
   const v = speed * p[at.P_TO_TRUE];
+  const gear = gearInForce(plan, distanceAt(plan.road, station));
   const here = surroundingsAt(plan.road, station);
   const derate = derateFactor(drive, here.airDensity, here.airTemperature);
   const force = requiredForce(vehicle, v, here);
@@ -34,8 +36,8 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   settleSource(machine);
   const pushed = derate * s[at.DRIVE_FACTOR];
   const held = derate * s[at.REGENERATION_FACTOR];
-  let needed = throttleFor(drive, drive.gear, v, force, pushed) ?? 0;
-  if (needed < 0) needed = throttleFor(drive, drive.gear, v, force, held) ?? 0;
+  let needed = throttleFor(drive, gear, v, force, pushed) ?? 0;
+  if (needed < 0) needed = throttleFor(drive, gear, v, force, held) ?? 0;
   const given =
     controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
   const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
@@ -44,11 +46,11 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   s[at.CELL] = cellOf(plan.road.station, station);
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
-  loadGear(machine, drive.gear);
+  loadGear(machine, gear);
   if (drive.belt !== null) loadRatio(machine, beltRatio(drive.belt, v, throttle));
   s[at.START_MASS] = s[at.EFFECTIVE_MASS];
   s[at.ACCELERATION] =
-    (wheelForce(drive, drive.gear, v, throttle, throttle < 0 ? held : pushed) - force) / s[at.EFFECTIVE_MASS];
+    (wheelForce(drive, gear, v, throttle, throttle < 0 ? held : pushed) - force) / s[at.EFFECTIVE_MASS];
   s[at.FILTERED] = v;
   s[at.ACTUATOR] = throttle;
   s[at.PLATE] = throttle;
