@@ -62,7 +62,7 @@ export function openVoltageAt({ openVoltage }: BatteryCells, charge: number): nu
 export function checkCells({ openVoltage, resistance, nominalVoltage }: BatteryCells): void {
   checkTable('battery', [
     {
-      key: 'openVoltage.charge',
+      key: 'battery.cells.openVoltage.charge',
       values: openVoltage.charge,
       unit: '',
       least: 0,
@@ -70,7 +70,7 @@ export function checkCells({ openVoltage, resistance, nominalVoltage }: BatteryC
       increasing: true,
     },
     {
-      key: 'openVoltage.voltage',
+      key: 'battery.cells.openVoltage.voltage',
       values: openVoltage.voltage,
       unit: 'V',
       least: 0,
@@ -79,7 +79,7 @@ export function checkCells({ openVoltage, resistance, nominalVoltage }: BatteryC
     },
   ]);
   checkSpec('battery', [
-    { key: 'resistance', value: resistance, unit: 'ohm', least: 0 },
-    { key: 'nominalVoltage', value: nominalVoltage, unit: 'V', least: 0, above: true },
+    { key: 'battery.cells.resistance', value: resistance, unit: 'ohm', least: 0 },
+    { key: 'battery.cells.nominalVoltage', value: nominalVoltage, unit: 'V', least: 0, above: true },
   ]);
 }

@@ -20,9 +20,9 @@ export function heatingOf(spec: HeatingSpec, peakPower: number | null): Heating 
   const { continuousPower, peakPowerTime, onset } = spec;
   checkSpec('heating', [
     { key: 'peakPower', value: peakPower ?? Number.NaN, unit: 'W', least: 0, above: true },
-    { key: 'continuousPower', value: continuousPower, unit: 'W', least: 0, above: true },
-    { key: 'peakPowerTime', value: peakPowerTime, unit: 's', least: 0, above: true },
-    { key: 'onset', value: onset, unit: '', least: 0, greatest: 0.999 },
+    { key: 'heating.continuousPower', value: continuousPower, unit: 'W', least: 0, above: true },
+    { key: 'heating.peakPowerTime', value: peakPowerTime, unit: 's', least: 0, above: true },
+    { key: 'heating.onset', value: onset, unit: '', least: 0, greatest: 0.999 },
   ]);
   const least = continuousPower / peakPower!;
   if (least >= 1) return null;

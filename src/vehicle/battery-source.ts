@@ -9,8 +9,9 @@ import { constantEfficiencyMap, lossMap, powerDrawn, refinedMap } from './power-
 
 /** Highest wheel speed to which the losses within the battery are tabulated [m/s]; beyond, the last cell goes on. */
 const TABULATED_SPEED = 60;
-/** Steps of that table: over speed up to the base speed and as a share above it, over force ahead and back. */
-const STEPS = { slow: 8, fast: 0.1, ahead: 32, back: 12 } as const;
+/** Nodes of that table: even steps to a corner, then each greater than the one before by a ratio. */
+const AHEAD = { steps: 6, ratio: 1.15 } as const;
+const BACK = { steps: 2, ratio: 1.5 } as const;
 
 /** What an electric drive needs for its energy account. */
 export interface BatterySourceSpec {
@@ -29,7 +30,7 @@ export interface BatterySourceSpec {
  * Battery of an electric drive: its losses compiled to a power map over speed and wheel force. The map gives the power
  * that leaves the cells: what reaches the terminals and I^2 R, at the open-circuit voltage of the charge at the start
  * of the route. Without a battery it is the power at the terminals. The loss in the resistance is tabulated, with nodes
- * that lie close where power changes fast: to a thousandth of peak power within the envelope.
+ * that lie close where power changes fast: to about a thousandth of peak power within the envelope.
  *
  * @returns null where nothing of efficiency or losses is known
  * @throws InputError `out-of-range`, `not-increasing`, `wrong-length`; `missing-losses` for a battery or heating
@@ -78,42 +79,55 @@ function cellMap(terminals: PowerMap, spec: BatterySourceSpec, openVoltage: numb
   const { greatestForce, leastForce, peakPower } = spec;
   const resistance = spec.battery?.cells?.resistance ?? 0;
   if (resistance === 0) return terminals;
+  // Within the envelope either speed is below the base speed or power bounds force: steps that are even up to the
+  // corner and a constant ratio above it are alike in power.
   const base = Math.min(peakPower === null ? TABULATED_SPEED : peakPower / greatestForce, TABULATED_SPEED);
-  const speeds = Array.from({ length: STEPS.slow + 1 }, (_, i) => (base * i) / STEPS.slow);
-  for (let v = base; v < TABULATED_SPEED; speeds.push(v)) v *= 1 + STEPS.fast;
-  const back = leastForce < 0 ? squareSteps(leastForce, STEPS.back) : [-greatestForce];
-  const forces = [...back, ...squareSteps(greatestForce, STEPS.ahead)];
-  return refinedMap(terminals, speeds, forces, (power) => cellPower(power, openVoltage, resistance));
+  const slow = base / TABULATED_SPEED;
+  const speeds = nodesTo(TABULATED_SPEED, slow, AHEAD);
+  const ahead = nodesTo(greatestForce, slow, AHEAD);
+  const back = nodesTo(leastForce < 0 ? leastForce : -greatestForce, slow, BACK);
+  return refinedMap(terminals, speeds, [...back, ...ahead], (power) =>
+    cellPower(power, openVoltage, resistance),
+  );
 }
 
-/** From 0 to an end, closest at 0: at high speed forces are small. */
-function squareSteps(to: number, steps: number): number[] {
-  return Array.from({ length: steps + 1 }, (_, i) => (to * i * i) / (steps * steps));
+/** From 0 to an end: even steps to a share of it, then a constant ratio. */
+function nodesTo(end: number, share: number, { steps, ratio }: typeof AHEAD | typeof BACK): number[] {
+  const nodes = Array.from({ length: steps + 1 }, (_, i) => (end * share * i) / steps);
+  for (let part = share * ratio; part < 1; part *= ratio) nodes.push(end * part);
+  return share < 1 ? [...nodes, end] : nodes;
 }
 
 function checkBattery({ capacity, charge, reserve, cells, acceptance }: BatterySpec): void {
   checkSpec('battery', [
-    { key: 'capacity', value: capacity, unit: 'J', least: 0, above: true },
-    { key: 'charge', value: charge, unit: '', least: 0, greatest: 1 },
-    { key: 'reserve', value: reserve, unit: '', least: 0, greatest: 1 },
+    { key: 'battery.capacity', value: capacity, unit: 'J', least: 0, above: true },
+    { key: 'battery.charge', value: charge, unit: '', least: 0, greatest: 1 },
+    { key: 'battery.reserve', value: reserve, unit: '', least: 0, greatest: 1 },
   ]);
   if (cells !== null) checkCells(cells);
   if (acceptance === null) return;
   const { charge: charges, share } = acceptance;
   checkTable('battery', [
-    { key: 'acceptance.charge', values: charges, unit: '', least: 0, greatest: 1, increasing: true },
-    { key: 'acceptance.share', values: share, unit: '', least: 0, greatest: 1, length: charges.length },
+    { key: 'battery.acceptance.charge', values: charges, unit: '', least: 0, greatest: 1, increasing: true },
+    {
+      key: 'battery.acceptance.share',
+      values: share,
+      unit: '',
+      least: 0,
+      greatest: 1,
+      length: charges.length,
+    },
   ]);
 }
 
 function checkLosses({ speed, force, loss }: LossMapSpec): void {
   checkTable('loss map', [
-    { key: 'speed', values: speed, unit: 'm/s', least: 0, increasing: true },
-    { key: 'force', values: force, unit: 'N', increasing: true },
-    { key: 'loss', values: loss, unit: 'W', least: 0, length: speed.length * force.length },
+    { key: 'lossMap.speed', values: speed, unit: 'm/s', least: 0, increasing: true },
+    { key: 'lossMap.force', values: force, unit: 'N', increasing: true },
+    { key: 'lossMap.loss', values: loss, unit: 'W', least: 0, length: speed.length * force.length },
   ]);
   checkSpec('loss map', [
-    { key: 'speed.length', value: speed.length, unit: '', least: 2 },
-    { key: 'force.length', value: force.length, unit: '', least: 2 },
+    { key: 'lossMap.speed.length', value: speed.length, unit: '', least: 2 },
+    { key: 'lossMap.force.length', value: force.length, unit: '', least: 2 },
   ]);
 }

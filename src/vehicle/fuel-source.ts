@@ -24,9 +24,9 @@ export function fuelSource(fuel: FuelSpec, efficiency: number, idle: number): Fu
   checkSpec('fuel', [
     { key: 'efficiency', value: efficiency, unit: '', least: 0, above: true, greatest: 1 },
     { key: 'idle', value: idle, unit: 'rad/s', least: 0 },
-    { key: 'heat', value: fuel.heat, unit: 'J/kg', least: 0, above: true },
-    { key: 'density', value: fuel.density, unit: 'kg/m3', least: 0, above: true },
-    { key: 'tank', value: fuel.tank ?? 1, unit: 'm3', least: 0, above: true },
+    { key: 'fuel.heat', value: fuel.heat, unit: 'J/kg', least: 0, above: true },
+    { key: 'fuel.density', value: fuel.density, unit: 'kg/m3', least: 0, above: true },
+    { key: 'fuel.tank', value: fuel.tank ?? 1, unit: 'm3', least: 0, above: true },
   ]);
   const heat = fuel.heat * fuel.density;
   return {
@@ -42,8 +42,8 @@ export function fuelSource(fuel: FuelSpec, efficiency: number, idle: number): Fu
 
 function willansMap(friction: number, slope: number, efficiency: number): PowerMap {
   checkSpec('fuel', [
-    { key: 'friction', value: friction, unit: 'N m', least: 0 },
-    { key: 'slope', value: slope, unit: '', least: 0, above: true, greatest: 1 },
+    { key: 'fuel.use.friction', value: friction, unit: 'N m', least: 0 },
+    { key: 'fuel.use.slope', value: slope, unit: '', least: 0, above: true, greatest: 1 },
   ]);
   const power = (brake: number): number => (brake + friction) / slope;
   return {
@@ -59,10 +59,17 @@ type Consumption = Extract<FuelSpec['use'], { readonly kind: 'bsfc' }>;
 function consumptionMap(use: Consumption, heat: number, efficiency: number, idle: number): PowerMap {
   const { shaftSpeed, torque, consumption, idlePower } = use;
   checkTable('fuel', [
-    { key: 'shaftSpeed', values: shaftSpeed, unit: 'rad/s', least: 0, above: true, increasing: true },
-    { key: 'torque', values: torque, unit: 'N m', least: 0, above: true, increasing: true },
     {
-      key: 'consumption',
+      key: 'fuel.use.shaftSpeed',
+      values: shaftSpeed,
+      unit: 'rad/s',
+      least: 0,
+      above: true,
+      increasing: true,
+    },
+    { key: 'fuel.use.torque', values: torque, unit: 'N m', least: 0, above: true, increasing: true },
+    {
+      key: 'fuel.use.consumption',
       values: consumption,
       unit: 'kg/J',
       least: 0,
@@ -70,7 +77,7 @@ function consumptionMap(use: Consumption, heat: number, efficiency: number, idle
       length: shaftSpeed.length * torque.length,
     },
   ]);
-  checkSpec('fuel', [{ key: 'idlePower', value: idlePower, unit: 'W', least: 0 }]);
+  checkSpec('fuel', [{ key: 'fuel.use.idlePower', value: idlePower, unit: 'W', least: 0 }]);
   const rows = shaftSpeed.length;
   const columns = torque.length;
   // One row and one column more on each side, at which the end of the table still holds: its product with T w is

@@ -193,20 +193,20 @@ test('numbers that make no battery are refused with their key', () => {
   };
   expect(keysOf({ efficiency: null, battery })).toEqual(['missing-losses battery']);
   expect(keysOf({ battery: { ...battery, charge: 1.2, capacity: 0 } })).toEqual([
-    'out-of-range capacity',
-    'out-of-range charge',
+    'out-of-range battery.capacity',
+    'out-of-range battery.charge',
   ]);
   const heating = { continuousPower: 2000, peakPowerTime: 60, onset: 0.7 };
   expect(keysOf({ peakPower: null, heating })).toEqual(['out-of-range peakPower']);
   expect(keysOf({ efficiency: null, heating })).toEqual(['missing-losses heating']);
   const one = { speed: Float64Array.of(0), force: Float64Array.of(0, 1), loss: Float64Array.of(1, 1) };
-  expect(keysOf({ lossMap: one })).toEqual(['out-of-range speed.length']);
+  expect(keysOf({ lossMap: one })).toEqual(['out-of-range lossMap.speed.length']);
   const cells = {
     ...battery.cells!,
     openVoltage: { charge: Float64Array.of(0, 0), voltage: Float64Array.of(40) },
   };
   expect(keysOf({ battery: { ...battery, cells } })).toEqual([
-    'not-increasing openVoltage.charge',
-    'wrong-length openVoltage.voltage',
+    'not-increasing battery.cells.openVoltage.charge',
+    'wrong-length battery.cells.openVoltage.voltage',
   ]);
 });

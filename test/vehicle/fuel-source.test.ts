@@ -86,18 +86,18 @@ test('numbers that make no fuel are refused with their key', () => {
   };
   expect(keysOf(() => fuelSource({ ...willans, density: 0 }, 1.1, 0))).toEqual([
     'out-of-range efficiency',
-    'out-of-range density',
+    'out-of-range fuel.density',
   ]);
   const slope = { ...petrol, use: { kind: 'willans', friction: 1, slope: 0 } } as const;
-  expect(keysOf(() => fuelSource(slope, 1, 0))).toEqual(['out-of-range slope']);
+  expect(keysOf(() => fuelSource(slope, 1, 0))).toEqual(['out-of-range fuel.use.slope']);
   const bsfc = (change: object) => ({ ...petrol, use: { ...table.use, ...change } }) as FuelSpec;
   expect(keysOf(() => fuelSource(bsfc({ torque: Float64Array.of(10, 10) }), 1, 0))).toEqual([
-    'not-increasing torque',
+    'not-increasing fuel.use.torque',
   ]);
   expect(keysOf(() => fuelSource(bsfc({ shaftSpeed: Float64Array.of(300) }), 1, 0))).toEqual([
-    'wrong-length consumption',
+    'wrong-length fuel.use.consumption',
   ]);
   expect(keysOf(() => fuelSource(bsfc({ torque: Float64Array.of(0, 40) }), 1, 0))).toEqual([
-    'out-of-range torque',
+    'out-of-range fuel.use.torque',
   ]);
 });
