@@ -3,30 +3,35 @@ import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
 import { derateFactor } from '../vehicle/derating.ts';
-import { forceRange } from '../vehicle/drive-law.ts';
-import { runawaySpeed, settledSpeed } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Demand, Stretch } from './findings.ts';
+import { keptInGear, plannedGears } from './gear-course.ts';
+import { chosenGear, gearAt } from './gear-demand.ts';
+import { greatestGrip } from './grip-places.ts';
 import { nominalCourse, setSpeedAt } from './hold-course.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
+import { runawayFrom, sustainedFrom } from './settling-speed.ts';
 
-/** Beyond this a share says no more [1]. */
-export const GREATEST_SHARE = 9.99;
 /** An ideal hold this close to the set speed has it back [m/s]. */
 const BACK = fromKmh(0.5);
 /** Granted after that for settling [s]. */
 const SETTLING = 10;
 
 /**
- * Demand and authority along the road: the wheel force that the set speed needs against what the drive has, up and
- * down, with altitude; where that is too little, the speed that can be sustained; where even the least force is too
- * much, the speed it runs away to and the braking power that holds the set speed.
+ * Demand and authority along the road: the wheel force that the set speed needs against what the drive has in each
+ * gear, up and down, with altitude, end stops of the actuator and grip; where that is too little in the gear in force,
+ * the speed that can be sustained; where even the least force is too much, the speed it runs away to and the braking
+ * power that holds the set speed.
+ *
+ * The gear in force is the one engaged, or that of the rider's plan; a gearbox that shifts by itself is taken to be in
+ * the highest gear that holds, wherever its shift lines would have it. Voltage and heat of a battery are those of a
+ * run, not of the road: here the drive has all of its force.
  *
  * @param road the road
- * @param vehicle with its engaged gear
+ * @param vehicle with the gear engaged at the start
  * @param hold set speed and its changes; a change at a time is placed by the set speeds before it
- * @param rider whether a brake stands by, for the ideal hold
+ * @param rider the plan of shifts, and whether a brake stands by, for the ideal hold
  * @returns one value a knot, SI; `setSpeed` is true speed also where the plan's means the indicated one
  */
 export function demandOf(
@@ -35,71 +40,85 @@ export function demandOf(
   hold: HoldPlan,
   rider: RiderPlan = { brakesAbove: null, shifts: [] },
 ): Demand {
-  const course = nominalCourse(road, hold, vehicle);
-  const { startSpeed, settling } = course;
+  const course = nominalCourse(road, hold, vehicle, rider.shifts);
   const setSpeed = setSpeedAt(road, course);
-  const column = (): Float64Array => new Float64Array(road.size);
-  const required = column();
-  const upper = column();
-  const lower = column();
-  const share = column();
-  const sustained = setSpeed.slice();
-  const runaway = setSpeed.slice();
-  const brakePower = column();
-  for (let i = 0; i < road.size; i++) {
-    const at = surroundingsBetween(road, i, 0);
-    const range = forceRange(
-      vehicle.drive,
-      vehicle.drive.gear,
-      setSpeed[i],
-      derateFactor(vehicle.drive, at.airDensity, at.airTemperature),
-    );
-    required[i] = requiredForce(vehicle, setSpeed[i], at);
-    upper[i] = range.greatest;
-    lower[i] = range.least;
-    share[i] = demandShare(required[i], lower[i], upper[i]);
-    if (required[i] > upper[i])
-      sustained[i] = settledSpeed(vehicle, at, vehicle.drive.throttleMax, setSpeed[i]);
-    if (required[i] < lower[i]) {
-      runaway[i] = runawaySpeed(vehicle, at, setSpeed[i]);
-      brakePower[i] = (lower[i] - required[i]) * setSpeed[i];
-    }
-  }
+  const along = demandAlong(road, vehicle, setSpeed, plannedGears(road, vehicle.drive, rider.shifts));
   const ideal = quasiSteadySpeeds(
-    { road, vehicle, setSpeed, brakesAbove: rider.brakesAbove, throttle: null },
+    { road, vehicle, setSpeed, gear: along.gear, brakesAbove: rider.brakesAbove, throttle: null },
     0,
     road.size - 1,
-    startSpeed,
+    course.startSpeed,
   );
-  const holdable = holdableKnots(road, setSpeed, share, ideal, settling);
+  const holdable = holdableKnots(road, setSpeed, along.share, ideal, course.settling);
   return {
     setSpeed,
-    required,
-    upper,
-    lower,
-    grip: null,
-    gears: [{ upper, lower, share, shaftSpeed: setSpeed }],
-    gear: new Uint8Array(road.size),
-    share,
-    sustained,
-    runaway,
-    brakePower,
+    ...along,
     ideal,
     holdable,
     holdableShare: shareOfLength(road, holdable),
-    settling,
+    settling: course.following,
   };
 }
 
-/** Share of the range in use (Demand.share). */
-export function demandShare(required: number, lower: number, upper: number): number {
-  if (required >= 0) {
-    // A drive whose least force pushes (a high idle) is asked for too little of it.
-    if (required < lower) return -GREATEST_SHARE;
-    return upper > 0 ? Math.min(GREATEST_SHARE, required / upper) : required > 0 ? GREATEST_SHARE : 0;
+type AlongRoad = Pick<
+  Demand,
+  | 'required'
+  | 'upper'
+  | 'lower'
+  | 'grip'
+  | 'gears'
+  | 'gear'
+  | 'share'
+  | 'sustained'
+  | 'runaway'
+  | 'brakePower'
+>;
+
+function demandAlong(road: Road, vehicle: Vehicle, setSpeed: Float64Array, planned: Uint8Array): AlongRoad {
+  const { drive } = vehicle;
+  const chooses = drive.gearbox.kind === 'automatic';
+  const gear = planned.slice();
+  const inGears = drive.gears.map((_, g) => keptInGear(vehicle, g));
+  const column = (): Float64Array => new Float64Array(road.size);
+  const gears = drive.gears.map(() => ({
+    upper: column(),
+    lower: column(),
+    share: column(),
+    shaftSpeed: column(),
+  }));
+  const required = column();
+  const [upper, lower, share, brakePower] = [column(), column(), column(), column()];
+  const [sustained, runaway] = [setSpeed.slice(), setSpeed.slice()];
+  const grip = vehicle.traction === null ? null : column();
+  for (let i = 0; i < road.size; i++) {
+    const at = surroundingsBetween(road, i, 0);
+    const speed = setSpeed[i];
+    const derate = derateFactor(drive, at.airDensity, at.airTemperature);
+    required[i] = requiredForce(vehicle, speed, at);
+    if (grip !== null) grip[i] = greatestGrip(vehicle, at.grade);
+    for (let g = 0; g < gears.length; g++) {
+      const one = gearAt(inGears[g], g, speed, required[i], at, derate);
+      gears[g].upper[i] = one.greatest;
+      gears[g].lower[i] = one.least;
+      gears[g].share[i] = one.share;
+      gears[g].shaftSpeed[i] = one.shaftSpeed;
+    }
+    if (chooses) {
+      const shares = gears.map((one) => one.share[i]);
+      gear[i] = chosenGear(drive, speed, shares);
+    }
+    const inForce = gears[gear[i]];
+    upper[i] = inForce.upper[i];
+    lower[i] = inForce.lower[i];
+    share[i] = inForce.share[i];
+    const here = chooses ? vehicle : inGears[gear[i]];
+    if (share[i] > 1) sustained[i] = sustainedFrom(here, at, speed);
+    if (required[i] < lower[i]) {
+      runaway[i] = runawayFrom(here, at, speed);
+      brakePower[i] = (lower[i] - required[i]) * speed;
+    }
   }
-  if (lower >= 0) return -GREATEST_SHARE;
-  return Math.max(-GREATEST_SHARE, -required / lower);
+  return { required, upper, lower, grip, gears, gear, share, sustained, runaway, brakePower };
 }
 
 function holdableKnots(

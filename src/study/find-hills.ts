@@ -44,7 +44,7 @@ export function findHills(search: HillSearch): Hill[] {
   }));
   return hillStretches(road, demand, replayed, band).map((stretch, k, all) => {
     onHill?.(k, all.length);
-    const facts = hillFacts(road, demand, stretch, k + 1);
+    const facts = hillFacts(road, demand, stretch, k + 1, replayed[0]?.plan.vehicle);
     return {
       ...facts,
       outcomes: replayed.map((candidate, i) => hillOutcome(candidate, facts, contexts[i])),

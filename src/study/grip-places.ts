@@ -1,6 +1,7 @@
 import { cellOf } from '../numeric/interpolate.ts';
 import { valueAt } from '../road/lookup.ts';
 import { type GripForce, gripForce } from '../vehicle/traction.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Demand, Replayed, Stretch } from './findings.ts';
 
 /** Gaps shorter than this are bridged [s at the set speed]. */
@@ -61,6 +62,12 @@ export function gripBins({ plan: { road, vehicle }, result: { bins } }: Replayed
     marks[i] = beyond === null ? 0 : 1;
   }
   return marks;
+}
+
+/** Greatest force that the driven wheel passes on with the front wheel on the road [N]; infinite where the grip is not known. */
+export function greatestGrip(vehicle: Vehicle, grade: number): number {
+  const grip = gripForce(vehicle, grade);
+  return grip === null ? Number.POSITIVE_INFINITY : Math.min(grip.greatest, grip.lift);
 }
 
 /** Which limit a range of forces reaches, and which force does. */

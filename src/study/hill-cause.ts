@@ -1,16 +1,13 @@
-import { surroundingsBetween } from '../loop/places.ts';
 import type { LoopPlan } from '../loop/plan.ts';
-import { derateFactor } from '../vehicle/derating.ts';
-import { forceRange } from '../vehicle/drive-law.ts';
-import { requiredForce } from '../vehicle/resistance.ts';
-import { demandShare } from './demand.ts';
 import type { Cause, Figure, None } from './findings.ts';
+import { keptInGear } from './gear-course.ts';
 import type { HillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
+import { AT_LIMIT } from './hill-stretches.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
-import { nominalCourse, setSpeedAt } from './hold-course.ts';
-import { has, type Limitation, without } from './limitations.ts';
-import { atKm, inKmh, inKw, inNewton, inPct, inSeconds } from './wording.ts';
+import { deratesByItself, has, type Limitation, without } from './limitations.ts';
+import { nameRange } from './range-cause.ts';
+import { demandWords, inKmh, inPct, inSeconds } from './wording.ts';
 
 export interface CauseFinding {
   readonly cause: Cause | None;
@@ -18,20 +15,21 @@ export interface CauseFinding {
 }
 
 /**
- * Why a candidate left its band or sat on a limit on a hill: by replays over the hill's window that take one
- * limitation away at a time, gains untouched.
+ * Why a candidate that regulates left its band or sat on a limit on a hill: by replays over the hill's window that take
+ * one limitation away at a time, gains untouched.
  *
- * 1. A limit was met but the band was kept: the demand alone decides (step 4); if it is in range too, `gains`.
- * 2. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no throttle range, each
- *    only where it was met. The first without which the band is kept is the cause. Where the worst error lies on the
- *    far side of the limit (too fast after full throttle, too slow after closed), windup need answer for that side
- *    only, and is the cause if half of its excess goes with it.
+ * 1. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
+ *    where the drive went beyond the grip of its wheel by itself, else `gains`.
+ * 2. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
+ *    gearbox that stays in the gear the hill needs (`gear`), a battery that is always cold and full enough
+ *    (`derating`), no throttle range; each only where it was met. The first without which the band is kept is the
+ *    cause. Where the worst error lies on the far side of the limit (too fast after full throttle, too slow after
+ *    closed), windup need answer for that side only, and is the cause if half of its excess goes with it.
  * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it.
  *    Else the throttle range, if the ideal hold, which has no gains, makes more than half of the worst error too; else
  *    `gains`.
- * 4. The throttle range is named by the demand: it would be in range at sea level: `derating`; in still air: `wind`;
- *    else, upwards, `power` where the power limit is below the peak force at the place of greatest demand, or
- *    `torque`; downwards `closed_throttle`. A demand in range throughout: `gains`, the controller went there itself.
+ * 4. The throttle range is named by the demand (nameRange): `traction`, `gear`, `derating`, `wind`, `closed_throttle`,
+ *    `power`, `torque`. A demand in range throughout: `gains`, the controller went there itself.
  *
  * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
  * @param ideal change of speed of the ideal hold on the hill [m/s]
@@ -46,20 +44,37 @@ export function causeOnHill(
   excess: number,
   ideal: Figure,
 ): CauseFinding {
-  if (plan.controller.kind === 'locked') return lockedCause(hill);
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
-  const up = events.timeUpper >= events.timeLower;
-  if (!events.leftBand) {
-    const range = nameRange(windowed, window, hill, up);
-    if (range !== null) return { ...range, why: `${range.why} The band was kept.` };
-    return {
-      cause: 'gains',
-      why: `The command met its limit for ${inSeconds(events.timeUpper + events.timeLower)} although the demand stays in range; the band was kept.`,
-    };
-  }
+  if (!events.leftBand) return causeInBand(windowed, window, hill, events);
   const { cause, why } = causeOfLeaving({ windowed, window, hill, events, band, excess }, ideal);
-  return { cause, why: `${why}${brakeWords(plan, events)}` };
+  const beyond = cause === 'traction' ? '' : beyondGripWords(events);
+  return { cause, why: `${why}${beyond}${brakeWords(plan, events)}` };
 }
+
+function causeInBand(
+  windowed: LoopPlan,
+  window: HillWindow,
+  hill: HillFacts,
+  events: HillEvents,
+): CauseFinding {
+  const atLimit = events.timeUpper + events.timeLower;
+  const up = atLimit > 0 ? events.timeUpper >= events.timeLower : hill.share >= 0;
+  const range = nameRange(windowed, window, hill, up);
+  if (range?.cause === 'traction') return { ...range, why: `${range.why} In it the band was kept.` };
+  if (range !== null) return { ...range, why: `${range.why} The band was kept.` };
+  if (events.timeBeyondGrip > AT_LIMIT)
+    return { cause: 'traction', why: `The demand stays within the grip.${beyondGripWords(events)}` };
+  return {
+    cause: 'gains',
+    why: `The command met its limit for ${inSeconds(atLimit)} although the demand stays in range; the band was kept.`,
+  };
+}
+
+/** Where the drive pushed or held back beyond what the driven wheel passes on. */
+const beyondGripWords = ({ timeBeyondGrip }: HillEvents): string =>
+  timeBeyondGrip > AT_LIMIT
+    ? ` For ${inSeconds(timeBeyondGrip)} the drive went beyond the grip of its wheel; the model has no slip.`
+    : '';
 
 interface Scene {
   readonly windowed: LoopPlan;
@@ -71,12 +86,11 @@ interface Scene {
 }
 
 function causeOfLeaving(scene: Scene, ideal: Figure): CauseFinding {
-  const { windowed, window, events, band, excess } = scene;
+  const { windowed, window, hill, events, band, excess } = scene;
   const far = farSide(events);
   const removals: Removal[] = [];
-  for (const limitation of metLimitations(events)) {
-    if (!has(windowed, limitation)) continue;
-    const passage = passHill(without(windowed, limitation), window);
+  for (const limitation of triedLimitations(windowed, events)) {
+    const passage = passHill(withoutIt(windowed, hill, limitation), window);
     const overshot = limitation === 'windup' && far !== 0;
     const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
     if (overshot && takesHalf(left, excess)) return windupCause(passage, events);
@@ -114,17 +128,32 @@ interface Removal {
   readonly passage: HillPassage;
 }
 
-function metLimitations(events: HillEvents): Limitation[] {
-  const limits: Limitation[] = [];
+/** What is tried, in order: what was met and is there to be taken away. */
+function triedLimitations(plan: LoopPlan, events: HillEvents): Limitation[] {
   const atLimit = events.timeUpper + events.timeLower > 0;
-  if (atLimit) limits.push('windup');
-  if (events.timeRate > 0) limits.push('rate');
-  if (atLimit) limits.push('range');
-  return limits;
+  const met: readonly [Limitation, boolean][] = [
+    ['windup', atLimit],
+    ['rate', events.timeRate > 0],
+    ['slack', true],
+    ['shifting', events.shifts > 0],
+    ['derating', atLimit && deratesByItself(plan.vehicle.drive.source)],
+    ['range', atLimit],
+  ];
+  return met.filter(([limitation, was]) => was && has(plan, limitation)).map(([limitation]) => limitation);
 }
 
 /** True where a replay with one limitation less can tell something. */
-export const metAnyLimit = (events: HillEvents): boolean => metLimitations(events).length > 0;
+export const canTell = (plan: LoopPlan, events: HillEvents): boolean =>
+  triedLimitations(plan, events).length > 0;
+
+const metAnyLimit = ({ timeUpper, timeLower, timeRate }: HillEvents): boolean =>
+  timeUpper + timeLower + timeRate > 0;
+
+/** A gearbox that may not shift is kept in the gear that the hill needs. */
+function withoutIt(windowed: LoopPlan, { gears }: HillFacts, limitation: Limitation): LoopPlan {
+  if (limitation !== 'shifting' || gears === null) return without(windowed, limitation);
+  return { ...windowed, vehicle: keptInGear(windowed.vehicle, gears.needed ?? gears.engaged) };
+}
 
 function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFinding | null {
   const { windowed, window, hill, events } = scene;
@@ -133,11 +162,31 @@ function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFin
     if (named === null || left === 0) return named;
     return { ...named, why: `${named.why} ${sentence(aloneWords(passage))}` };
   }
-  if (limitation === 'windup') return windupCause(passage, events);
-  return {
-    cause: 'rate',
-    why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit: ${errorRange(passage)}.`,
-  };
+  const rest = errorRange(passage);
+  switch (limitation) {
+    case 'windup':
+      return windupCause(passage, events);
+    case 'slack':
+      return {
+        cause: 'slack',
+        why: `The throttle has ${inPct(windowed.vehicle.actuator.slack, 1)} of lost motion (${errorRange(events)}); without it: ${rest}.`,
+      };
+    case 'shifting':
+      return {
+        cause: 'gear',
+        why: `The gearbox shifted ${events.shifts === 1 ? 'once' : `${events.shifts} times`} here (${errorRange(events)}); kept in one gear: ${rest}.`,
+      };
+    case 'derating':
+      return {
+        cause: 'derating',
+        why: `The command was at its limit for ${inSeconds(events.timeUpper + events.timeLower)} (${errorRange(events)}); with a battery that is cold and full enough: ${rest}.`,
+      };
+    default:
+      return {
+        cause: 'rate',
+        why: `The actuator was at its rate limit for ${inSeconds(events.timeRate)} (${errorRange(events)}); without that limit: ${rest}.`,
+      };
+  }
 }
 
 /** The range first where the ideal hold makes most of the worst error too; gains second. */
@@ -177,16 +226,6 @@ function windupCause(passage: HillPassage, events: HillEvents): CauseFinding {
   };
 }
 
-const demandWords = (share: number): string =>
-  share >= 0 ? `${inPct(share)} of the full force` : `${inPct(-share)} of what the least throttle holds back`;
-
-function lockedCause(hill: HillFacts): CauseFinding {
-  return {
-    cause: { none: 'a locked throttle does not regulate' },
-    why: `The throttle is locked; the demand here is up to ${demandWords(hill.share)}.`,
-  };
-}
-
 function gainsCause({ hill, events }: Scene, free: Removal | null): CauseFinding {
   const demand = `The demand is up to ${demandWords(hill.share)}`;
   const worst = inKmh(worstOf(events));
@@ -196,65 +235,4 @@ function gainsCause({ hill, events }: Scene, free: Removal | null): CauseFinding
       ? `${demand}, yet the command sat at its limit for ${inSeconds(atLimit)} and the error grew to ${worst}; ${aloneWords(free.passage)}.`
       : `${demand}${metAnyLimit(events) ? '' : ' and it never met a limit'}: the gains let the error grow to ${worst}${free === null ? '' : `; ${aloneWords(free.passage)}`}.`;
   return { cause: 'gains', why };
-}
-
-/** Names what limits the range by the demand over the hill; null where the demand is in range throughout. */
-function nameRange(
-  windowed: LoopPlan,
-  window: HillWindow,
-  hill: HillFacts,
-  up: boolean,
-): CauseFinding | null {
-  const from = hill.from - window.start;
-  const to = hill.until - window.start;
-  const here = extremeDemand(windowed, from, to, up);
-  if (here.share <= 1) return null;
-  const asked = `At ${atKm(window.start + here.at)} the set speed needs ${inNewton(here.required)} and ${up ? 'full throttle gives' : 'the least throttle gives'} ${inNewton(here.available)}`;
-  if (has(windowed, 'derating')) {
-    const there = extremeDemand(without(windowed, 'derating'), from, to, up);
-    if (there.share <= 1)
-      return {
-        cause: 'derating',
-        why: `${asked}; at sea level it would have ${inNewton(there.available)}, which is enough.`,
-      };
-  }
-  if (has(windowed, 'wind')) {
-    const there = extremeDemand(without(windowed, 'wind'), from, to, up);
-    if (there.share <= 1)
-      return { cause: 'wind', why: `${asked}; in still air it would need ${inNewton(there.required)}.` };
-  }
-  if (!up) return { cause: 'closed_throttle', why: `${asked}: it cannot hold back enough.` };
-  const { peakForce, peakPower } = windowed.vehicle.drive;
-  if (peakPower !== null && peakPower < peakForce * here.speed)
-    return { cause: 'power', why: `${asked}: the power limit of ${inKw(peakPower)} binds.` };
-  return { cause: 'torque', why: `${asked}: the greatest force binds.` };
-}
-
-/** Greatest demand upwards (or downwards, as a positive share) between two places of a windowed plan. */
-function extremeDemand(
-  plan: LoopPlan,
-  from: number,
-  to: number,
-  up: boolean,
-): { share: number; at: number; required: number; available: number; speed: number } {
-  const { road, vehicle } = plan;
-  const setSpeed = setSpeedAt(road, nominalCourse(road, plan.hold, vehicle));
-  let found = { share: Number.NEGATIVE_INFINITY, at: from, required: 0, available: 0, speed: 0 };
-  for (let i = 0; i < road.size; i++) {
-    if (road.distance[i] < from || road.distance[i] > to) continue;
-    const at = surroundingsBetween(road, i, 0);
-    const speed = setSpeed[i];
-    const { least, greatest } = forceRange(
-      vehicle.drive,
-      vehicle.drive.gear,
-      speed,
-      derateFactor(vehicle.drive, at.airDensity, at.airTemperature),
-    );
-    const required = requiredForce(vehicle, speed, at);
-    const signed = demandShare(required, least, greatest);
-    const share = up ? signed : -signed;
-    if (share > found.share)
-      found = { share, at: road.distance[i], required, available: up ? greatest : least, speed };
-  }
-  return found;
 }

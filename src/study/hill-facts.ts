@@ -1,15 +1,30 @@
+import { surroundingsBetween } from '../loop/places.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { meanGradeSd } from '../road/error-scales.ts';
 import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
-import type { Demand, Hill } from './findings.ts';
+import type { Vehicle } from '../vehicle/vehicle.ts';
+import type { Demand, Hill, HillGears, Stretch } from './findings.ts';
+import { keptInGear } from './gear-course.ts';
 import type { HillStretch } from './hill-stretches.ts';
+import { runawayFrom, sustainedFrom } from './settling-speed.ts';
 
 /** What a hill is, whoever rides it. */
 export type HillFacts = Omit<Hill, 'outcomes'>;
 
-/** Figures of a hill from road and demand. The mean grade is net climb over length, its s.d. that of the road's error model. */
-export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, number: number): HillFacts {
+/**
+ * Figures of a hill from road and demand. The mean grade is net climb over length, its s.d. that of the road's error
+ * model. The energy of the brake is the integral of (least force - force needed) along the slope.
+ *
+ * @param vehicle whose demand it is; null: nothing is said of gears
+ */
+export function hillFacts(
+  road: Road,
+  demand: Demand,
+  stretch: HillStretch,
+  number: number,
+  vehicle: Vehicle | null = null,
+): HillFacts {
   const { from, to, until, kind } = stretch;
   const length = to - from;
   let steepest = cellOf(road.distance, from);
@@ -20,14 +35,6 @@ export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, numb
     if (Math.abs(demand.share[i]) > Math.abs(demand.share[extreme])) extreme = i;
   }
   const short = demand.share[extreme] >= 0;
-  let brakePower = 0;
-  let brakeEnergy = 0;
-  for (let i = cellOf(road.distance, from); i + 1 < road.size && road.distance[i] < to; i++) {
-    if (demand.brakePower[i] > brakePower) brakePower = demand.brakePower[i];
-    const time =
-      (2 * (road.station[i + 1] - road.station[i])) / (demand.setSpeed[i] + demand.setSpeed[i + 1]);
-    brakeEnergy += 0.5 * (demand.brakePower[i] + demand.brakePower[i + 1]) * time;
-  }
   return {
     number,
     kind,
@@ -42,9 +49,62 @@ export function hillFacts(road: Road, demand: Demand, stretch: HillStretch, numb
     requiredForce: demand.required[extreme],
     availableForce: short ? demand.upper[extreme] : demand.lower[extreme],
     sustainedSpeed: short ? demand.sustained[extreme] : demand.runaway[extreme],
-    gears: null,
-    brakePower,
-    brakeEnergy,
+    gears: vehicle === null ? null : hillGears(road, vehicle, demand, { from, to }, extreme),
+    ...brakeNeeded(road, demand, { from, to }),
     unresolved: road.smoothing !== null && length < road.smoothing.shortestHill,
+  };
+}
+
+/** Braking that holds the set speed beside the least throttle: greatest power [W], work over the stretch [J]. */
+function brakeNeeded(
+  road: Road,
+  demand: Demand,
+  { from, to }: Stretch,
+): Pick<HillFacts, 'brakePower' | 'brakeEnergy'> {
+  let brakePower = 0;
+  let brakeEnergy = 0;
+  const forceAt = (i: number): number => demand.brakePower[i] / demand.setSpeed[i];
+  for (let i = cellOf(road.distance, from); i + 1 < road.size && road.distance[i] < to; i++) {
+    const width = road.distance[i + 1] - road.distance[i];
+    if (!(width > 0)) continue;
+    const inside = (Math.min(to, road.distance[i + 1]) - Math.max(from, road.distance[i])) / width;
+    const span = (road.station[i + 1] - road.station[i]) * inside;
+    const way = road.along === 'time' ? span * demand.setSpeed[i] : span;
+    brakePower = Math.max(brakePower, demand.brakePower[i], demand.brakePower[i + 1]);
+    brakeEnergy += 0.5 * (forceAt(i) + forceAt(i + 1)) * way;
+  }
+  return { brakePower, brakeEnergy };
+}
+
+/** Which gear the hill needs, and what each does at the place of greatest demand. */
+function hillGears(
+  road: Road,
+  vehicle: Vehicle,
+  demand: Demand,
+  { from, to }: Stretch,
+  extreme: number,
+): HillGears | null {
+  const { gears } = vehicle.drive;
+  if (gears.length < 2) return null;
+  const inRange = (gear: number): boolean => {
+    const { share } = demand.gears[gear];
+    for (let i = cellOf(road.distance, from); i < road.size && road.distance[i] <= to; i++)
+      if (road.distance[i] >= from && Math.abs(share[i]) > 1) return false;
+    return true;
+  };
+  const needed = gears.findLastIndex((_, gear) => inRange(gear));
+  const at = surroundingsBetween(road, extreme, 0);
+  const speed = demand.setSpeed[extreme];
+  const settles = (gear: number): number => {
+    const share = demand.gears[gear].share[extreme];
+    if (demand.gears[gear].shaftSpeed[extreme] < vehicle.drive.stallSpeed) return 0;
+    const kept = keptInGear(vehicle, gear);
+    if (share > 1) return sustainedFrom(kept, at, speed);
+    return share < -1 ? runawayFrom(kept, at, speed) : speed;
+  };
+  return {
+    engaged: demand.gear[extreme],
+    needed: needed < 0 ? null : needed,
+    sustained: gears.map((_, gear) => settles(gear)),
   };
 }

@@ -3,13 +3,21 @@ import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
 import type { Figure, HillOutcome, Replayed } from './findings.ts';
-import { causeOnHill, metAnyLimit } from './hill-cause.ts';
+import { canTell, causeOnHill } from './hill-cause.ts';
 import { type HillEvents, hillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { type SeriesContext, seriesOver } from './hill-series.ts';
 import { marksBin } from './hill-stretches.ts';
-import { excessOf, type HillWindow, hillWindow, passHill, planOverWindow } from './hill-window.ts';
+import {
+  excessOf,
+  type HillWindow,
+  hillWindow,
+  passHill,
+  planOverWindow,
+  windowFrom,
+} from './hill-window.ts';
 import type { HoldCourse } from './hold-course.ts';
+import { lockedCause } from './locked-cause.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { recoveryOf } from './recovery.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
@@ -43,7 +51,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   const { series, whole } = seriesOver(replayed, hill, context, { lead: LEAD, recovers: regulates });
   const first = Math.min(sampleAt(series, hill.from), series.size - 1);
   const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
-  const events = hillEvents(series, first, last, course.settling, band);
+  const events = hillEvents(replayed.plan, series, first, last, course.settling, band);
   const recovery =
     events.affected && regulates
       ? recoveryOf(series, first, last, { ...context, settling: course.settling, whole })
@@ -52,7 +60,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Outcom
   const passage = passageOf(series, first, last, course.settling);
   const predictedChange = predict(replayed, hill, context, series, first);
   const reasons = events.affected
-    ? explainOutcome(replayed, hill, context, events, predictedChange)
+    ? explainOutcome(replayed, hill, context, events, predictedChange, series.command[first])
     : { cause: { none: 'it kept its band and met no limit' }, why: 'It kept its band.', wouldHold: [] };
   return {
     candidate: name,
@@ -100,8 +108,10 @@ function predict(
   const speeds = quasiSteadySpeeds(
     {
       road,
-      vehicle,
+      // The loop has no slip, so the formula that checks it has none either.
+      vehicle: { ...vehicle, traction: null },
       setSpeed: demand.setSpeed,
+      gear: demand.gear,
       brakesAbove: rider.brakesAbove,
       // The command: where the throttle is locked anew just here, the actuator is still where it was.
       throttle: locked ? series.command[first] : null,
@@ -126,18 +136,23 @@ function differs(simulated: number, predicted: Figure): boolean {
 }
 
 function explainOutcome(
-  { plan }: Replayed,
+  replayed: Replayed,
   hill: HillFacts,
   { demand, course, band }: OutcomeContext,
   events: HillEvents,
   ideal: Figure,
+  command: number,
 ): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
+  const { plan } = replayed;
   const { road } = plan;
-  const near = hillWindow(hill, road, demand, course);
+  if (plan.controller.kind === 'locked')
+    return { ...lockedCause(plan, hill, demand, command), wouldHold: [] };
+  const nearest = hillWindow(hill, road, demand, course);
+  const near = windowFrom(nearest, nearest.start, replayed);
   // Where no limit was met there is nothing to take away, and no replay can say more.
-  if (!events.leftBand || plan.controller.kind === 'locked' || !metAnyLimit(events))
+  if (!events.leftBand || !canTell(plan, events))
     return { ...causeOnHill(plan, hill, near, events, band, 0, ideal), wouldHold: [] };
-  const shown = windowThatShows(plan, near, band);
+  const shown = windowThatShows(replayed, near, band);
   if (shown === null)
     return {
       cause: { none: 'started settled before the hill it holds' },
@@ -152,15 +167,20 @@ function explainOutcome(
   return { cause, why, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
 }
 
-/** The window, or a longer one with what came before the hill, in which the candidate leaves its band as it did in its run. */
+/**
+ * The window, or a longer one with what came before the hill, in which the candidate leaves its band as it did in its
+ * run. A battery that is hot by then takes the whole way to become so.
+ */
 function windowThatShows(
-  plan: Replayed['plan'],
+  replayed: Replayed,
   near: HillWindow,
   band: number,
 ): { readonly window: HillWindow; readonly excess: number } | null {
-  for (const more of [0, 2000, 4000]) {
-    const window = { ...near, start: Math.max(0, near.start - more) };
-    const excess = excessOf(passHill(planOverWindow(plan, window), window), band);
+  const { source } = replayed.plan.vehicle.drive;
+  const heats = source?.kind === 'battery' && source.heating !== null;
+  for (const more of [0, 2000, 4000, ...(heats ? [near.start] : [])]) {
+    const window = windowFrom(near, Math.max(0, near.start - more), replayed);
+    const excess = excessOf(passHill(planOverWindow(replayed.plan, window), window), band);
     if (excess > 0) return { window, excess };
     if (window.start === 0) return null;
   }

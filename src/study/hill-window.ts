@@ -1,8 +1,11 @@
 import type { LoopPlan, RunStatus } from '../loop/plan.ts';
+import type { BinRecord } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
-import type { Demand, Hill } from './findings.ts';
+import type { EnergySource } from '../vehicle/energy-source.ts';
+import type { Demand, Hill, Replayed } from './findings.ts';
+import { inGear } from './gear-course.ts';
 import type { HoldCourse } from './hold-course.ts';
 import { windowPlan } from './road-window.ts';
 
@@ -16,7 +19,7 @@ const FARTHEST_START = 1500;
  * The window is a road of its own that begins 1 to 1.5 km before the hill, and a plan over it starts settled at the
  * set speed there. That equals a replay of the window on the whole road: the loop meets nothing but grade, wind and air
  * at its station, and all of these are the same function of the way from the window's start. It costs the window's
- * length only. What it leaves out is the state in which the run came to the window, which a settled loop has forgotten
+ * length only. It begins in the gear and with the charge that the run had there. What it leaves out is the state in which the run came to the window, which a settled loop has forgotten
  * in a kilometre; where it has not, the window is lengthened (windowThatShows).
  */
 export interface HillWindow {
@@ -25,7 +28,15 @@ export interface HillWindow {
   readonly until: number;
   /** The candidate's: where a change of set speed is being followed, nothing is judged. */
   readonly course: HoldCourse;
+  /** What the candidate came there with: gear of a gearbox that shifts by itself, charge of a battery; null: as the plan has it. */
+  readonly entry: WindowEntry;
 }
+
+export interface WindowEntry {
+  readonly gear: number | null;
+  readonly charge: number | null;
+}
+const AS_PLANNED: WindowEntry = { gear: null, charge: null };
 
 /** What a run did between a hill's beginning and the end of what it is answerable for. */
 export interface HillPassage {
@@ -51,12 +62,41 @@ export function hillWindow(
     share = Math.abs(demand.share[i]);
     start = road.distance[i];
   }
-  return { start, from: hill.from, until: hill.until, course };
+  return { start, from: hill.from, until: hill.until, course, entry: AS_PLANNED };
+}
+
+/** The window begun at another place, with what a run came there with. Heat of a battery is not in it: it begins cold. */
+export function windowFrom(window: HillWindow, start: number, { plan, result }: Replayed): HillWindow {
+  const { drive } = plan.vehicle;
+  const { bins } = result;
+  const bin = bins.size === 0 ? 0 : Math.min(cellOf(bins.edge, start), bins.size - 1);
+  return {
+    ...window,
+    start,
+    entry: {
+      gear: drive.gearbox.kind === 'automatic' && bins.size > 0 ? bins.gear[bin] : null,
+      charge: chargeAt(drive.source, bins, bin),
+    },
+  };
+}
+
+/** Charge at the beginning of a bin; null: no battery, or its capacity is not known. */
+function chargeAt(source: EnergySource | null, { drawn }: BinRecord, bin: number): number | null {
+  if (source?.kind !== 'battery' || source.capacity === null) return null;
+  let left = source.charge * source.capacity;
+  for (let i = 0; i < bin; i++) left -= drawn[i];
+  return Math.min(1, Math.max(0, left / source.capacity));
 }
 
 /** The candidate's plan over the window, started settled. Limitations and levers are applied to this. */
-export const planOverWindow = (plan: LoopPlan, window: HillWindow): LoopPlan =>
-  windowPlan(plan, window.start, window.until, window.course);
+export function planOverWindow(plan: LoopPlan, window: HillWindow): LoopPlan {
+  const windowed = windowPlan(plan, window.start, window.until, window.course);
+  const { gear, charge } = window.entry;
+  const vehicle = gear === null ? windowed.vehicle : inGear(windowed.vehicle, gear);
+  const { source } = vehicle.drive;
+  if (charge === null || source?.kind !== 'battery') return { ...windowed, vehicle };
+  return { ...windowed, vehicle: { ...vehicle, drive: { ...vehicle.drive, source: { ...source, charge } } } };
+}
 
 /** Replays a window's plan and looks at the hill in it, bins of which any part lies on the hill counted whole. */
 export function passHill(windowed: LoopPlan, window: HillWindow): HillPassage {

@@ -1,5 +1,5 @@
 import type { ControllerSetup } from '../control/setup.ts';
-import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
+import type { HoldPlan, LoopPlan, RiderPlan } from '../loop/plan.ts';
 import type { BinRecord, LoopResult } from '../loop/result.ts';
 import { intervalOf } from '../numeric/interpolate.ts';
 import { distanceAt } from '../road/lookup.ts';
@@ -22,22 +22,49 @@ export interface HoldCourse {
   readonly changes: readonly { readonly at: number; readonly setSpeed: number }[];
   /**
    * From each change, and from a start at another speed: |change| / ramp and 10 s for settling, at the higher of the
-   * two speeds. The ramp is the change's own, or the controller's, or 0.5 m/s2.
+   * two speeds. The ramp is the change's own, or the controller's, or 0.5 m/s2. And from each shift of the rider's,
+   * which cancels hold, to 10 s after hold resumes. In order along the way.
    */
   readonly settling: readonly Stretch[];
+  /** Of those the changes of set speed alone, a start at another speed first. */
+  readonly following: readonly Stretch[];
 }
 
 /** Factor from speeds of the plan's set speed to true ones: measured = (1 + scale error) true. */
 export const trueSpeedFactor = (hold: HoldPlan, { sensor }: Pick<Vehicle, 'sensor'>): number =>
   hold.setSpeedIs === 'indicated' ? 1 / (1 + sensor.scaleError) : 1;
 
-/** The course that belongs to the road: a change at a time stands where a vehicle at the set speeds before it would be. */
-export function nominalCourse(road: Road, hold: HoldPlan, vehicle: Pick<Vehicle, 'sensor'>): HoldCourse {
-  return courseOf(hold, vehicle, null, (time, last) => {
+/**
+ * The course that belongs to the road: a change at a time stands where a vehicle at the set speeds before it would be,
+ * and a shift of the rider's takes the time that the gearbox says, at the set speed.
+ */
+export function nominalCourse(
+  road: Road,
+  hold: HoldPlan,
+  vehicle: Pick<Vehicle, 'sensor'> & Partial<Pick<Vehicle, 'drive'>>,
+  shifts: RiderPlan['shifts'] = [],
+): HoldCourse {
+  const course = courseOf(hold, vehicle, null, (time, last) => {
     const at = road.along === 'time' ? distanceAt(road, time) : last.at + (time - last.time) * last.setSpeed;
     return { at, from: at };
   });
+  const gearbox = vehicle.drive?.gearbox;
+  if (gearbox?.kind !== 'clutch') return course;
+  const seconds = gearbox.open + gearbox.resume + GRANTED_SETTLING;
+  return withShifts(
+    course,
+    shifts.map(({ distance }) => ({ from: distance, to: distance + seconds * speedAt(course, distance) })),
+  );
 }
+
+/** Set speed in force at a place [m/s]. */
+const speedAt = ({ setSpeed, changes }: HoldCourse, place: number): number =>
+  changes.findLast(({ at }) => at <= place)?.setSpeed ?? setSpeed;
+
+const withShifts = (course: HoldCourse, shifts: readonly Stretch[]): HoldCourse => ({
+  ...course,
+  settling: [...course.settling, ...shifts].sort((a, b) => a.from - b.from),
+});
 
 /** What the course of a run is told by. */
 interface PlannedRun {
@@ -45,10 +72,17 @@ interface PlannedRun {
   readonly result: LoopResult;
 }
 
-/** The course of one candidate: a change at a time stands where its run made it, and its controller's ramp is granted. */
+/** The course of one candidate: a change at a time stands where its run made it, its controller's ramp is granted, and hold resumes after a shift when it did. */
 export function courseOfRun({ plan, result }: PlannedRun): HoldCourse {
   const ramp = rampOf(plan.controller);
-  return courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
+  const course = courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
+  const shifts = result.shifts.flatMap(({ distance, resumedAt }) => {
+    if (resumedAt === null) return [];
+    const { at } = placeInRun(result, resumedAt);
+    const resumed = Number.isFinite(at) ? at : result.endDistance;
+    return [{ from: distance, to: resumed + GRANTED_SETTLING * speedAt(course, distance) }];
+  });
+  return shifts.length === 0 ? course : withShifts(course, shifts);
 }
 
 const rampOf = (controller: ControllerSetup): number | null =>
@@ -108,7 +142,7 @@ function courseOf(
     grant(Math.min(place.from, at), at, last.setSpeed, next, change.ramp);
     last = { at, time: last.time + passed, setSpeed: next };
   }
-  return { setSpeed, startSpeed, changes, settling };
+  return { setSpeed, startSpeed, changes, settling, following: settling };
 }
 
 /** Set speed at each knot; at the place of a change the new one [m/s]. */

@@ -1,6 +1,7 @@
 import type { LoopPlan } from '../loop/plan.ts';
+import { CELL_SIZE } from '../vehicle/cell-law.ts';
 import type { Drive } from '../vehicle/drive.ts';
-import { CELL_SIZE } from '../vehicle/drive-law.ts';
+import { inGear } from './gear-course.ts';
 
 /** The plan at another set speed [m/s]: lower ones of the plan stay, higher ones come down to it. */
 export function withSetSpeed(plan: LoopPlan, setSpeed: number): LoopPlan {
@@ -22,6 +23,18 @@ export function withPayload(plan: LoopPlan, payload: number): LoopPlan {
   return { ...plan, vehicle: { ...vehicle, mass: vehicle.mass - vehicle.payload + payload, payload } };
 }
 
+/** The plan in another gear all the way; the rider's shifts are left out. */
+export function withGear(plan: LoopPlan, gear: number): LoopPlan {
+  const { vehicle, rider } = plan;
+  return { ...plan, vehicle: inGear(vehicle, gear), rider: { ...rider, shifts: [] } };
+}
+
+/** The plan with a shift at a place [m], and none of the rider's own behind it. */
+export function withShift(plan: LoopPlan, distance: number, gear: number): LoopPlan {
+  const before = plan.rider.shifts.filter((shift) => shift.distance < distance);
+  return { ...plan, rider: { ...plan.rider, shifts: [...before, { distance, gear }] } };
+}
+
 /** The plan with a drive of `1 + more` times the full-throttle force at every speed; closed throttle and regeneration stay. */
 export function withMoreForce(plan: LoopPlan, more: number): LoopPlan {
   const { vehicle } = plan;
@@ -29,29 +42,28 @@ export function withMoreForce(plan: LoopPlan, more: number): LoopPlan {
 }
 
 /**
- * T' = T + more x T_full for x >= 0: the uppermost throttle cell's a + b, added to b of every cell above x = 0, so
- * that T' at x = 1 is (1 + more) T_full and T' at x = 0 is T.
+ * T' = T + more L, with the drive's own losses L: they are what derating takes away for each unit, so that this is
+ * derating the other way: full throttle gives (1 + more) times its torque at every shaft speed, closed throttle what it
+ * did, and part throttle keeps its shape.
  */
 function strongerDrive(drive: Drive, more: number): Drive {
   const cells = drive.cells.slice();
-  const row = drive.throttleEdges.length + 1;
-  const columns = Array.from({ length: row }, (_, j) => j);
-  for (let i = 0; i <= drive.speedEdges.length; i++) {
-    const top = CELL_SIZE * (row * i + row - 1);
-    const [a0, a1, b0, b1, b2, b3] = drive.cells.subarray(top, top + CELL_SIZE);
-    for (const j of columns) {
-      // The cell that ends at or below x = 0 is the regeneration side.
-      if (j < row - 1 && drive.throttleEdges[j] <= 0) continue;
-      const at = CELL_SIZE * (row * i + j);
-      cells[at + 2] += more * (a0 + b0);
-      cells[at + 3] += more * (a1 + b1);
-      cells[at + 4] += more * b2;
-      cells[at + 5] += more * b3;
+  const losses = drive.losses.slice();
+  const { throttleEdges } = drive;
+  for (let at = 0; at < cells.length; at += CELL_SIZE) {
+    const column = (at / CELL_SIZE) % (throttleEdges.length + 1);
+    // The cell that ends at or below x = 0 is the regeneration side.
+    if (column < throttleEdges.length && throttleEdges[column] <= 0) continue;
+    for (let k = at; k < at + CELL_SIZE; k++) {
+      cells[k] += more * drive.losses[k];
+      losses[k] *= 1 + more;
     }
   }
   return {
     ...drive,
     cells,
+    losses,
+    withoutFuelCut: drive.withoutFuelCut === null ? null : strongerDrive(drive.withoutFuelCut, more),
     peakForce: (1 + more) * drive.peakForce,
     peakPower: drive.peakPower === null ? null : (1 + more) * drive.peakPower,
   };

@@ -121,7 +121,7 @@ const withActuator = (plan: LoopPlan, change: Partial<Actuator>): LoopPlan =>
   withVehicle(plan, { actuator: { ...plan.vehicle.actuator, ...change } });
 
 /** Voltage or heat takes force away, or a full battery regeneration. */
-function deratesByItself(source: EnergySource | null): boolean {
+export function deratesByItself(source: EnergySource | null): boolean {
   if (source === null || source.kind !== 'battery') return false;
   return source.sag !== null || source.acceptance !== null || source.heating !== null;
 }

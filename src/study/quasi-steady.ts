@@ -1,11 +1,14 @@
 import { surroundingsBetween } from '../loop/places.ts';
 import type { Road } from '../road/road.ts';
+import { authority } from '../vehicle/authority.ts';
 import { derateFactor } from '../vehicle/derating.ts';
-import { forceRange, wheelForce } from '../vehicle/drive-law.ts';
+import { wheelForce } from '../vehicle/drive-law.ts';
 import { effectiveMass } from '../vehicle/linearise.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { inGear, keptInGear } from './gear-course.ts';
+import { throttleRange } from './settling-speed.ts';
 
 /** Longest step along the slope [m]. */
 const STEP = 10;
@@ -21,6 +24,8 @@ export interface QuasiSteadyPlan {
   readonly brakesAbove: number | null;
   /** Throttle locked in place; null: an ideal hold. */
   readonly throttle: number | null;
+  /** Gear in force, knot by knot; the engaged one all the way where it is left out. An ideal hold with a gearbox that shifts by itself has the best of all gears at every speed. */
+  readonly gear?: Uint8Array;
 }
 
 /**
@@ -29,8 +34,11 @@ export interface QuasiSteadyPlan {
  *     d(v^2) = 2 (F - F_required(v)) ds / m_e,
  *
  * where F is what an ideal hold would give: whatever keeps the set speed while that is in the drive's range, full
- * throttle below the set speed, the least force above it; or the force of a throttle locked in place. No controller,
- * lag, rate or sampling is in it, so no design can do better, and the difference to a design is the design's own.
+ * throttle below the set speed, the least force above it, both within end stops and grip; or the force of a throttle
+ * locked in place. No controller, lag, rate or sampling is in it, so no design can do better, and the difference to a
+ * design is the design's own. The effective mass is that of the gear in force. Shifts take no time and no energy here:
+ * the speed that an open clutch loses is not in it, nor what voltage and heat take away, and a belt is at rest at every
+ * speed.
  * Work and energy along a path: any mechanics textbook; the deficit form is how truck climbing lanes are laid out
  * (AASHTO, A Policy on Geometric Design of Highways and Streets, speed-distance curves, from memory).
  *
@@ -46,9 +54,11 @@ export function quasiSteadySpeeds(
   to: number,
   entrySpeed: number,
 ): Float64Array {
-  const { road, vehicle, setSpeed } = plan;
+  const { road, vehicle, setSpeed, gear } = plan;
+  const inGears = vehicle.drive.gears.map((_, g) =>
+    (plan.throttle === null ? inGear : keptInGear)(vehicle, g),
+  );
   const speeds = new Float64Array(to - from + 1);
-  const mass = effectiveMass(vehicle);
   let v = entrySpeed;
   speeds[0] = v;
   for (let i = from; i < to; i++) {
@@ -60,7 +70,7 @@ export function quasiSteadySpeeds(
       const ds = timed ? (v * span) / steps : span / steps;
       const here = surroundingsBetween(road, i, k / steps);
       const next = surroundingsBetween(road, i, (k + 1) / steps);
-      v = oneStep(plan, mass, v, setSpeed[i], ds, here, next);
+      v = oneStep(plan, inGears[gear?.[i] ?? vehicle.drive.gear], v, setSpeed[i], ds, here, next);
     }
     speeds[i + 1 - from] = v;
   }
@@ -68,38 +78,56 @@ export function quasiSteadySpeeds(
 }
 
 function oneStep(
-  plan: QuasiSteadyPlan,
-  mass: number,
+  { throttle, brakesAbove }: QuasiSteadyPlan,
+  vehicle: Vehicle,
   v: number,
   target: number,
   ds: number,
   here: Surroundings,
   next: Surroundings,
 ): number {
-  const { vehicle, throttle, brakesAbove } = plan;
   const { drive } = vehicle;
   /** Speed after the step under full, least or locked throttle. */
-  const after = (force: (speed: number, derate: number) => number): number => {
-    const slope = (speed: number, at: Surroundings): number =>
-      (2 *
-        (force(speed, derateFactor(drive, at.airDensity, at.airTemperature)) -
-          requiredForce(vehicle, speed, at))) /
-      mass;
+  const after = (throttleThen: number, force: (speed: number, at: Surroundings) => GearForce): number => {
+    const slope = (speed: number, at: Surroundings): number => {
+      const { gear, newton } = force(speed, at);
+      const mass = effectiveMass(vehicle, speed, throttleThen, gear);
+      return (2 * (newton - requiredForce(vehicle, speed, at))) / mass;
+    };
     const first = slope(v, here);
     const trial = Math.sqrt(Math.max(STANDSTILL * STANDSTILL, v * v + ds * first));
     const square = v * v + (ds * (first + slope(trial, next))) / 2;
     return square > STANDSTILL * STANDSTILL ? Math.sqrt(square) : 0;
   };
-  if (throttle !== null)
-    return braked(
-      after((speed, derate) => wheelForce(drive, drive.gear, speed, throttle, derate)),
-      target,
-      brakesAbove,
-    );
-  const most = after((speed, derate) => forceRange(drive, drive.gear, speed, derate).greatest);
+  if (throttle !== null) {
+    const locked = (speed: number, at: Surroundings): GearForce => ({
+      gear: drive.gear,
+      newton: wheelForce(
+        drive,
+        drive.gear,
+        speed,
+        throttle,
+        derateFactor(drive, at.airDensity, at.airTemperature),
+      ),
+    });
+    return braked(after(throttle, locked), target, brakesAbove);
+  }
+  const range = throttleRange(vehicle);
+  const most = after(range.greatest, (speed, at) => {
+    const { greatest, gear } = authority(vehicle, drive.gear, speed, at);
+    return { gear, newton: greatest };
+  });
   if (most <= target) return most;
-  const least = after((speed, derate) => forceRange(drive, drive.gear, speed, derate).least);
+  const least = after(range.least, (speed, at) => {
+    const { least: newton, leastGear } = authority(vehicle, drive.gear, speed, at);
+    return { gear: leastGear, newton };
+  });
   return braked(Math.max(least, target), target, brakesAbove);
+}
+
+interface GearForce {
+  readonly gear: number;
+  readonly newton: number;
 }
 
 const braked = (speed: number, target: number, above: number | null): number =>

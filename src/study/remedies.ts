@@ -2,6 +2,7 @@ import type { LoopPlan } from '../loop/plan.ts';
 import { fromKmh, toKmh } from '../units/convert.ts';
 import { forceRange } from '../vehicle/drive-law.ts';
 import type { Cause, Remedy } from './findings.ts';
+import { gearRemedy } from './gear-remedy.ts';
 import type { HillFacts } from './hill-facts.ts';
 import { type HillWindow, holds, passHill, planOverWindow } from './hill-window.ts';
 import { trueSpeedFactor } from './hold-course.ts';
@@ -16,21 +17,13 @@ const FORCE_STEP = 0.05;
 const FORCE_STEPS = 20;
 const LOAD_STEP = 5;
 
-/** Causes that a lever of vehicle or rider can do something about; the others want other gains. */
-const LEVERED: readonly Cause[] = [
-  'torque',
-  'power',
-  'derating',
-  'wind',
-  'gear',
-  'traction',
-  'closed_throttle',
-];
+/** Causes that a lever of vehicle or rider can do something about; the others want other gains. Of grip no replay can tell: the loop has no slip. */
+const LEVERED: readonly Cause[] = ['torque', 'power', 'derating', 'wind', 'gear', 'closed_throttle'];
 
 export const leversHelp = (cause: Cause): boolean => LEVERED.includes(cause);
 
 /**
- * What would hold on a hill: a lower set speed, more force, less load, each alone, gains fixed, found by replays over
+ * What would hold on a hill: a lower gear, a lower set speed, more force, less load, each alone, gains fixed, found by replays over
  * the hill's window that start settled. "Holds": the run gets over and stays in the band.
  *
  * The number of steps is bracketed by doubling and then bisected under the fast scheme, and both neighbours are
@@ -61,13 +54,17 @@ export function remediesFor(
     return why;
   };
   const search: Search = { steps, unlimited };
-  if (cause === 'closed_throttle') {
+  const gear = gearRemedy(windowed, hill, window, band);
+  const inGear = gear === null ? [] : [gear];
+  if (cause === 'closed_throttle' || hill.share < 0) {
     const brake = `${inKw(brakePower)} holds the set speed at the worst place`;
-    return [speedRemedy(windowed, search, `the rider must brake, ${brake}`), loadRemedy(windowed, search)];
+    const aside = brakePower > 0 ? `the rider must brake, ${brake}` : null;
+    return [...inGear, speedRemedy(windowed, search, aside), loadRemedy(windowed, search)];
   }
   const sustained = hill.sustainedSpeed / trueSpeedFactor(windowed.hold, windowed.vehicle);
   const full = `full throttle sustains ${sustained > 0 ? speedWords(windowed, sustained, 1) : 'no speed'}`;
   return [
+    ...inGear,
     speedRemedy(windowed, search, hill.share > 1 ? full : null),
     forceRemedy(windowed, search),
     loadRemedy(windowed, search),

@@ -1,6 +1,8 @@
-import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
+import { gearInForce } from '../loop/gearbox.ts';
+import type { HoldPlan, LoopPlan, PlannedShift } from '../loop/plan.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
+import { inGear } from './gear-course.ts';
 import { type HoldCourse, nominalCourse } from './hold-course.ts';
 
 /**
@@ -60,8 +62,8 @@ export function cutRoad(road: Road, from: number, to: number): Road {
 }
 
 /**
- * The plan over part of its road, started settled at the set speed that holds at its beginning; changes of set speed
- * inside come along.
+ * The plan over part of its road, started settled at the set speed and in the gear that the plan has at its beginning;
+ * changes of set speed and shifts inside come along.
  *
  * @param course where the changes of the plan stand; the road's own places where it is left out
  */
@@ -71,8 +73,20 @@ export function windowPlan(
   to: number,
   course: HoldCourse = nominalCourse(plan.road, plan.hold, plan.vehicle),
 ): LoopPlan {
-  return { ...plan, road: cutRoad(plan.road, from, to), hold: windowHold(plan, from, to, course) };
+  const { road, vehicle, rider } = plan;
+  return {
+    ...plan,
+    road: cutRoad(road, from, to),
+    vehicle: inGear(vehicle, gearInForce(plan, from)),
+    hold: windowHold(plan, from, to, course),
+    rider: { ...rider, shifts: windowShifts(rider.shifts, from, to) },
+  };
 }
+
+const windowShifts = (shifts: readonly PlannedShift[], from: number, to: number): PlannedShift[] =>
+  shifts
+    .filter(({ distance }) => distance > from && distance < to)
+    .map((shift) => ({ ...shift, distance: shift.distance - from }));
 
 function windowHold({ hold }: LoopPlan, from: number, to: number, { changes }: HoldCourse): HoldPlan {
   const before = changes.findLastIndex((change) => change.at <= from);

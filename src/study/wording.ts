@@ -23,3 +23,10 @@ export const withUnit = (x: number, unit: string): string => {
   const text = decimals < 0 ? x.toExponential(1) : fixed(x, decimals);
   return unit === '1' ? text : `${text} ${unit}`;
 };
+
+/** A gear as riders say it: index 4 is `5th`. */
+export const gearName = (gear: number): string => `${gear + 1}${['st', 'nd', 'rd'][gear] ?? 'th'} gear`;
+
+/** Share of a range in words (see Demand.share). */
+export const demandWords = (share: number): string =>
+  share >= 0 ? `${inPct(share)} of the full force` : `${inPct(-share)} of what the least throttle holds back`;

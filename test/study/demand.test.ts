@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { demandOf, demandShare } from '../../src/study/demand.ts';
+import { demandOf } from '../../src/study/demand.ts';
+import { demandShare } from '../../src/study/demand-share.ts';
 import { nominalCourse, setSpeedAt } from '../../src/study/hold-course.ts';
 import { IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { expectClose } from '../compare.ts';
@@ -131,6 +132,7 @@ describe('the share of the range', () => {
     expect(demandShare(10, -40, 0)).toBe(9.99);
     expect(demandShare(1e9, -40, 200)).toBe(9.99);
     expect(demandShare(5, 20, 200)).toBe(-9.99);
+    expect(demandShare(-30, -80, -50)).toBe(9.99);
     expect(demandShare(0, -40, 0)).toBe(0);
   });
 });
