@@ -159,6 +159,29 @@ test('a fuel cut is a step at its throttle that the same drive without it does n
   expectClose(wheelForce(cut, 0, 2, 0, 1), 0, 1e-12);
 });
 
+test('a torque map and a full-load curve with a drag that say the same make the same drive', () => {
+  const speeds = [0, 200, 600, 900];
+  const rows = [20, 20, 20, 14].flatMap((full) => [-2, 0.5 * (full - 2), full]);
+  const mapped = variatorDrive({
+    ...scooter,
+    drag: null,
+    torque: {
+      kind: 'map',
+      shaftSpeed: Float64Array.from(speeds),
+      throttle: Float64Array.of(0, 0.5, 1),
+      torque: Float64Array.from(rows),
+    },
+  });
+  const stream = seededStream(77);
+  for (let k = 0; k < 300; k++) {
+    const v = 35 * stream.uniform();
+    const x = stream.uniform();
+    // Below the locked speed no torque at all is a corner between the nodes of the throttle.
+    if (v < 4) continue;
+    expectClose(wheelForce(mapped, 0, v, x, 0.9), force(v, x, 0.9), 1e-8);
+  }
+});
+
 test('numbers that make no variator are refused with their key', () => {
   const keysOf = (change: Partial<VariatorDriveSpec>): string[] => {
     try {
