@@ -111,5 +111,8 @@ describe('the textbook car with its engine and gears (Feedback Systems, section 
     // 420 (1 + 1 / sqrt(0.4)) = 1084.08 rad/s.
     expect(wheelForce(drive, 0, 1084.1 / 40, 1, 1)).toBe(0);
     expectClose(drive.peakForce, 12 * 190, 1e-9);
+    // w (1 - 0.4 (w / 420 - 1)^2) is greatest where 0.6 + 1.6 z - 1.2 z^2 = 0 with z = w / 420: z = (1.6 + sqrt(5.44)) / 2.4.
+    const z = (1.6 + Math.sqrt(5.44)) / 2.4;
+    expectClose(drive.peakPower!, 420 * z * 190 * (1 - 0.4 * (z - 1) ** 2), 1e-6);
   });
 });

@@ -5,6 +5,7 @@ import { engineDrive } from '../../src/vehicle/engine-drive.ts';
 import type { EngineDriveSpec } from '../../src/vehicle/engine-spec.ts';
 import { expectClose } from '../compare.ts';
 import { singleWithGears as spec, textbookEngine } from './engines.ts';
+import { uniform } from './uniform.ts';
 
 const drive = engineDrive(spec);
 
@@ -46,8 +47,8 @@ const bridged = (w: number, torque: number): number =>
   w > 800 && w < 825 ? 0.17 * 15 : Math.abs(torque) < 9 ? 0.17 * 2.25 : 0;
 
 const gears = fc.integer({ min: 0, max: 5 });
-const shaftSpeeds = fc.double({ min: 20, max: 900, noNaN: true });
-const throttles = fc.double({ min: 0, max: 1, noNaN: true });
+const shaftSpeeds = uniform(20, 900);
+const throttles = uniform(0, 1);
 const speedAt = (gear: number, w: number): number => w / drive.gears[gear]!.ratio;
 
 describe('an engine with gears', () => {
@@ -63,24 +64,19 @@ describe('an engine with gears', () => {
 
   test('derates full throttle to exactly d times itself and leaves closed throttle alone', () => {
     fc.assert(
-      fc.property(
-        gears,
-        fc.double({ min: 20, max: 800, noNaN: true }),
-        fc.double({ min: 0.5, max: 1, noNaN: true }),
-        (gear, w, d) => {
-          const full = forceRange(drive, gear, speedAt(gear, w), 1);
-          const thin = forceRange(drive, gear, speedAt(gear, w), d);
-          expectClose(thin.greatest, d * full.greatest, 1e-9);
-          expectClose(thin.least, full.least, 1e-9);
-        },
-      ),
+      fc.property(gears, uniform(20, 800), uniform(0.5, 1), (gear, w, d) => {
+        const full = forceRange(drive, gear, speedAt(gear, w), 1);
+        const thin = forceRange(drive, gear, speedAt(gear, w), d);
+        expectClose(thin.greatest, d * full.greatest, 1e-9);
+        expectClose(thin.least, full.least, 1e-9);
+      }),
       { seed: 2, numRuns: 500 },
     );
   });
 
   test('derates part throttle like an engine whose full-load curve is lower', () => {
     fc.assert(
-      fc.property(shaftSpeeds, throttles, fc.double({ min: 0.7, max: 1, noNaN: true }), (w, x, d) => {
+      fc.property(shaftSpeeds, throttles, uniform(0.7, 1), (w, x, d) => {
         const torque = crankTorqueOf(wheelForce(drive, 5, speedAt(5, w), x, d), 5);
         expectClose(torque, crankTorque(w, x, d), 0.002 * 71 + bridged(w, crankTorque(w, x, d)));
       }),
@@ -139,17 +135,11 @@ describe('an engine with gears', () => {
 
 test('throttleFor undoes wheelForce in every gear, derated or not', () => {
   fc.assert(
-    fc.property(
-      gears,
-      fc.double({ min: 20, max: 800, noNaN: true }),
-      fc.double({ min: -0.2, max: 1.3, noNaN: true }),
-      fc.constantFrom(1, 0.87),
-      (gear, w, x, d) => {
-        const force = wheelForce(drive, gear, speedAt(gear, w), x, d);
-        const back = throttleFor(drive, gear, speedAt(gear, w), force, d)!;
-        expectClose(back, x, 1e-9);
-      },
-    ),
+    fc.property(gears, uniform(20, 800), uniform(-0.2, 1.3), fc.constantFrom(1, 0.87), (gear, w, x, d) => {
+      const force = wheelForce(drive, gear, speedAt(gear, w), x, d);
+      const back = throttleFor(drive, gear, speedAt(gear, w), force, d)!;
+      expectClose(back, x, 1e-9);
+    }),
     { seed: 4, numRuns: 1000 },
   );
 });
