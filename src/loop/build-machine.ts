@@ -54,7 +54,12 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
   writeLags(p, vehicle, controller.computingDelay);
   writeKinds(p, vehicle);
-  if (fittings.history > 0) p[at.P_HISTORY] = fittings.history;
+  if (fittings.history > 0) {
+    // Such a sensor has its own filter and delay, and the history to itself.
+    p[at.P_FILTER] = 0;
+    p[at.P_DELAY] = 0;
+    p[at.P_HISTORY] = fittings.history;
+  }
 
   return {
     s: new Float64Array(at.HISTORY + at.HISTORY_STRIDE * p[at.P_HISTORY]),
@@ -87,7 +92,10 @@ function writeKinds(p: Float64Array, { drive, sensor }: Vehicle): void {
   const { source } = drive;
   const tiring =
     source?.kind === 'battery' &&
-    (source.sag !== null || source.acceptance !== null || source.heating !== null);
+    (source.capacity !== null ||
+      source.sag !== null ||
+      source.acceptance !== null ||
+      source.heating !== null);
   p[at.P_DERATED] = drive.derate !== 'none' || tiring ? 1 : 0;
   p[at.P_SOURCE] = source === null ? 0 : 1;
   p[at.P_SENSED] = sensor.pulses === null && sensor.noise === null ? 0 : 1;

@@ -1,13 +1,19 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
+import { takeUpTime } from './actuator-step.ts';
+import { moveBelt } from './belt.ts';
 import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
+import { heldCommand } from './held-command.ts';
 import { lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { BRAKE_WATCH, riderBrake } from './rider-brake.ts';
 import { integralTo } from './road-table.ts';
+import { senseSpeed } from './sense-speed.ts';
+import { shiftDue } from './shift-due.ts';
 
 /**
  * The `exact` kernel. With command u held over a sample, actuator y, throttle x behind the drive's lag:
@@ -36,6 +42,9 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const TRIALS = 6;
   const PIECES = 40;
 
+  // A gap of the actuator, or a play of its slack, smaller than this is none.
+  const NO_GAP = 1e-12;
+
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
@@ -49,12 +58,16 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
   const direct = p[at.P_ACTUATOR_LAG] === 0 && rate === Number.POSITIVE_INFINITY;
+  const sensed = p[at.P_SENSED] === 1;
+  const scale = p[at.P_SCALE];
+  const resolution = p[at.P_RESOLUTION];
+  const play = p[at.P_PLAY];
   const filter = p[at.P_FILTER];
   const delayed = p[at.P_DELAY] > 0;
-  const scale = p[at.P_SCALE];
-  const stall = stallSpeed(machine);
   const derated = p[at.P_DERATED] === 1;
-  const mass = s[at.EFFECTIVE_MASS];
+  const belted = p[at.P_BELT] === 1;
+  const automatic = p[at.P_AUTOMATIC] === 1;
+  const sourced = p[at.P_SOURCE] === 1;
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastRow = rows.length - at.R_STRIDE;
@@ -66,7 +79,10 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let x = s[at.THROTTLE];
   let y = s[at.ACTUATOR];
   let z = s[at.FILTERED];
+  let plate = s[at.PLATE];
   let acceleration = s[at.ACCELERATION];
+  let mass = s[at.EFFECTIVE_MASS];
+  let stall = stallSpeed(machine);
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
@@ -75,47 +91,80 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let loadedRow = -1;
   let loadedCell = -1;
 
-  const v0 = v;
+  const kinetic0 = 0.5 * mass * v * v;
   chunk.fill(0, 0, at.C_DRIVE_FORCE);
   const height0 = integralTo(rows, row, at.R_SIN, q);
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
   while (tick < ticks && q < until && event === at.RUNNING) {
-    s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
+    if (automatic && shiftDue(machine)) break;
+    if (belted) {
+      moveBelt(machine);
+      v = s[at.SPEED];
+      mass = s[at.EFFECTIVE_MASS];
+      stall = stallSpeed(machine);
+      speedCell = s[at.SPEED_CELL] | 0;
+      if (filter === 0) s[at.FILTERED] = z = v;
+      loadedRow = -1;
+      loadedCell = -1;
+    }
+    if (sensed) senseSpeed(machine);
+    else s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
-    const u = s[BUS_LIMITED];
+    const u = resolution > 0 ? heldCommand(p, s[BUS_LIMITED]) : s[BUS_LIMITED];
     if (direct) y = u;
-    if (td === 0) x = y;
+    plate = play === 0 ? y : Math.min(Math.max(plate, y - play), y + play);
+    if (td === 0) x = plate;
     while (throttleCell > 0 && x < throttleEdges[throttleCell - 1]) throttleCell--;
-    while (throttleCell < lastThrottleCell && x > throttleEdges[throttleCell]) throttleCell++;
-    log[tick * at.L_STRIDE + at.L_SPEED] = v;
-    log[tick * at.L_STRIDE + at.L_ACTUATOR] = y;
-    log[tick * at.L_STRIDE + at.L_COMMAND] = s[BUS_COMMAND];
+    while (throttleCell < lastThrottleCell && x >= throttleEdges[throttleCell]) throttleCell++;
+    const line = tick * at.L_STRIDE;
+    log[line + at.L_SPEED] = v;
+    log[line + at.L_ACTUATOR] = plate;
+    log[line + at.L_COMMAND] = s[BUS_COMMAND];
     tick++;
 
     const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
     let limited = false;
     let slope0 = 0;
+    let travelled = 0;
     let pieces = 0;
     let parts = steps;
     let left = step;
     let patience = PIECES;
     while (parts > 0 && event === at.RUNNING) {
       // Actuator and drive over a time t of this piece, with the decays e of their lags (see lags.ts):
-      // x = l0 + l1 t + (x - l0) e_drive + gap e_pull; y = u + gap e_actuator, or on a ramp y + l1 t.
+      // y = u + gap e_actuator, or on a ramp y + l1 t; x = l0 + x1 t + (x - l0) e_drive + seen e_pull.
       let gap = y - u;
       let most = left;
       let l0 = u;
       let l1 = 0;
-      const rated = gap - rateGap > 1e-12 || -gap - rateGap > 1e-12;
+      const rated = gap - rateGap > NO_GAP || -gap - rateGap > NO_GAP;
       if (rated) {
         l1 = gap < 0 ? rate : -rate;
         l0 = y - l1 * td;
         const over = (y - u - (gap < 0 ? -rateGap : rateGap)) / -l1;
         if (over < most) most = over;
         gap = 0;
+      }
+      let x1 = l1;
+      let seen = gap;
+      // The plate behind the slack is carried along, or rests until the play has been taken up.
+      let lead = 0;
+      let rests = false;
+      let takenUp = Number.POSITIVE_INFINITY;
+      if (play > 0) {
+        lead = u < y ? -play : play;
+        const free = play + (u < y ? y - plate : plate - y);
+        rests = free > NO_GAP;
+        if (rests) {
+          takenUp = takeUpTime(p[at.P_ACTUATOR_LAG], Math.abs(u - y), free, rated ? rate : 0);
+          if (takenUp < most) most = takenUp;
+          l0 = plate;
+          x1 = 0;
+          seen = 0;
+        } else l0 -= lead;
       }
 
       if (row !== loadedRow) {
@@ -146,15 +195,18 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         aimed = true;
       }
 
+      let crossed = 0;
       for (let trial = pieces < patience ? 0 : TRIALS; ; trial++) {
         const decay = h === step ? 0 : at.G_STRIDE;
         if (decay > 0) lagFactors(p, lags, decay, h);
         const half = 0.5 * h;
         const xh =
-          l0 + l1 * half + (x - l0) * lags[decay + at.G_DRIVE_HALF] + gap * lags[decay + at.G_PULL_HALF];
-        const xe = l0 + l1 * h + (x - l0) * lags[decay + at.G_DRIVE] + gap * lags[decay + at.G_PULL];
+          l0 + x1 * half + (x - l0) * lags[decay + at.G_DRIVE_HALF] + seen * lags[decay + at.G_PULL_HALF];
+        const xe = l0 + x1 * h + (x - l0) * lags[decay + at.G_DRIVE] + seen * lags[decay + at.G_PULL];
         if (lastThrottleCell > 0 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
-          h *= Math.max(0, ((xe > high ? high : low) - x) / (xe - x));
+          crossed = xe > high + EDGE ? 1 : -1;
+          const ye = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
+          h = timeToEdge(h, x, xe, crossed > 0 ? high : low, ((rests ? plate : ye - lead) - xe) / td);
           continue;
         }
 
@@ -260,12 +312,13 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           if (brake1 + brake4 > 0) chunk[at.C_BRAKE_TIME] += h;
         }
         chunk[at.C_DISTANCE] += ds;
+        travelled += ds;
         if (timed)
           chunk[at.C_CLIMB] +=
             mass * ds * sin0 + weight * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
         if (pieces === 0) {
           chunk[at.C_DRIVE_FORCE] = mass * drive1;
-          log[(tick - 1) * at.L_STRIDE + at.L_FORCE] = mass * drive1;
+          log[line + at.L_FORCE] = mass * drive1;
           chunk[at.C_ACCELERATION] = k1;
           chunk[at.C_BRAKE_FORCE] = mass * brake1;
           limited = rated;
@@ -280,12 +333,13 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
             k4 * lags[decay + at.G_FILTER_END];
         else z = ve;
         y = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
-        if (rated && h === most && most < left) y = l1 > 0 ? u - rateGap : u + rateGap;
-        if (lastThrottleCell > 0) {
-          if (xe > x && xe > high - EDGE) throttleCell++;
-          else if (xe <= x && xe < low + EDGE) throttleCell--;
-        }
-        x = td === 0 ? y : xe;
+        if (rated && h === most && most < left && most !== takenUp) y = l1 > 0 ? u - rateGap : u + rateGap;
+        if (play === 0) plate = y;
+        else if (!rests) plate = y - lead;
+        else if (h === takenUp) y = plate + lead;
+        if (crossed > 0 && xe > high - EDGE) throttleCell++;
+        else if (crossed < 0 && xe < low + EDGE) throttleCell--;
+        x = td === 0 ? plate : xe;
         v = ve;
         q += dq;
         acceleration = k4;
@@ -313,6 +367,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
     if (!(v < 1e9 && v > -1e9)) {
       chunk.fill(0);
+      s[at.TICK] += tick - 1;
       return at.NON_FINITE;
     }
     if (event === at.STOPPED) v = 0;
@@ -320,25 +375,37 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
+    s[at.SPEED] = v;
+    s[at.STATION] = q;
+    s[at.THROTTLE] = x;
+    s[at.ACTUATOR] = y;
+    s[at.PLATE] = plate;
+    s[at.FILTERED] = z;
+    s[at.ACCELERATION] = acceleration;
+    s[at.TRAVELLED] += travelled;
+    s[at.SPEED_CELL] = speedCell;
+    if (sourced) drawPower(machine, line, elapsed);
   }
 
-  if (event === at.RUNNING) s[at.TICK] += tick;
-  else {
-    s[at.TICK] += tick - 1;
-    s[at.PARTIAL] = elapsed;
-  }
-  s[at.SPEED] = v;
-  s[at.STATION] = q;
-  s[at.THROTTLE] = x;
-  s[at.ACTUATOR] = y;
-  s[at.FILTERED] = z;
-  s[at.ACCELERATION] = acceleration;
   s[at.CELL] = row / at.R_STRIDE;
-  s[at.SPEED_CELL] = speedCell;
   s[at.THROTTLE_CELL] = throttleCell;
+  if (event !== at.RUNNING) s[at.PARTIAL] = elapsed;
+  const whole = event === at.RUNNING ? tick : tick - 1;
+  s[at.TICK] += whole;
   chunk[at.C_TICKS] = tick;
-  chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
+  chunk[at.C_TIME] = whole * sample + s[at.PARTIAL];
   if (!timed) chunk[at.C_CLIMB] = p[at.P_MASS] * (integralTo(rows, row, at.R_SIN, q) - height0);
-  chunk[at.C_KINETIC] = 0.5 * mass * (v - v0) * (v + v0);
+  chunk[at.C_KINETIC] = 0.5 * mass * v * v - kinetic0;
   return event;
+}
+
+/**
+ * Where a throttle that runs past an edge within h meets it: Newton's rule from the far side, or along the chord where
+ * that leaves the piece, as it does without a lag of the drive.
+ *
+ * @param slope of the throttle at h
+ */
+function timeToEdge(h: number, x: number, xe: number, edge: number, slope: number): number {
+  const met = h + (edge - xe) / slope;
+  return met > 0 && met < h ? met : h * Math.max(0, (edge - x) / (xe - x));
 }

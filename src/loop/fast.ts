@@ -1,13 +1,19 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
+import { actuatorStep } from './actuator-step.ts';
+import { moveBelt } from './belt.ts';
 import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
+import { drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
-import { decay, rampedStep } from './lags.ts';
+import { heldCommand } from './held-command.ts';
+import { decay } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { BRAKE_WATCH, riderBrake } from './rider-brake.ts';
 import { meanBetween } from './road-table.ts';
+import { senseSpeed } from './sense-speed.ts';
+import { shiftDue } from './shift-due.ts';
 
 /**
  * The `fast` kernel: one evaluation of the forces a step of length h, second order. Per unit of effective mass:
@@ -23,13 +29,14 @@ import { meanBetween } from './road-table.ts';
  */
 export function advanceFast(machine: Machine, ticks: number, until: number): number {
   const { s, p, rows, speedEdges, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;
+  // A gap of the actuator, or a play of its slack, smaller than this is none.
+  const NO_GAP = 1e-12;
+
   const sample = p[at.P_SAMPLE];
   const steps = p[at.P_STEPS];
   const step = p[at.P_STEP];
   const half = 0.5 * step;
   const timed = p[at.P_TIMED] === 1;
-  const ratio = s[at.RATIO];
-  const share = p[at.P_MASS] / s[at.EFFECTIVE_MASS];
   const cda = p[at.P_CDA];
   const cdaBehind = p[at.P_CDA_BEHIND];
   const c0 = p[at.P_C0];
@@ -44,12 +51,16 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const pull = lags[at.G_PULL];
   const driveMean = p[at.P_DRIVE_MEAN];
   const pullMean = p[at.P_PULL_MEAN];
+  const sensed = p[at.P_SENSED] === 1;
+  const scale = p[at.P_SCALE];
+  const resolution = p[at.P_RESOLUTION];
+  const play = p[at.P_PLAY];
   const filter = p[at.P_FILTER];
   const delayed = p[at.P_DELAY] > 0;
-  const scale = p[at.P_SCALE];
-  const stall = stallSpeed(machine);
   const derated = p[at.P_DERATED] === 1;
-  const mass = s[at.EFFECTIVE_MASS];
+  const belted = p[at.P_BELT] === 1;
+  const automatic = p[at.P_AUTOMATIC] === 1;
+  const sourced = p[at.P_SOURCE] === 1;
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastSpeedCell = speedEdges.length;
@@ -63,7 +74,11 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let x = s[at.THROTTLE];
   let y = s[at.ACTUATOR];
   let z = s[at.FILTERED];
+  let plate = s[at.PLATE];
   let acceleration = s[at.ACCELERATION];
+  let mass = s[at.EFFECTIVE_MASS];
+  let ratio = s[at.RATIO];
+  let stall = stallSpeed(machine);
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
@@ -72,37 +87,69 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let loadedRow = -1;
   let loadedDrive = -1;
 
-  const v0 = v;
+  const kinetic0 = 0.5 * mass * v * v;
   chunk.fill(0, 0, at.C_DRIVE_FORCE);
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;
   while (tick < ticks && q < until && event === at.RUNNING) {
-    s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
+    if (automatic && shiftDue(machine)) break;
+    if (belted) {
+      moveBelt(machine);
+      v = s[at.SPEED];
+      mass = s[at.EFFECTIVE_MASS];
+      ratio = s[at.RATIO];
+      stall = stallSpeed(machine);
+      speedCell = s[at.SPEED_CELL] | 0;
+      if (filter === 0) s[at.FILTERED] = z = v;
+      loadedRow = -1;
+      loadedDrive = -1;
+    }
+    if (sensed) senseSpeed(machine);
+    else s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
-    const u = s[BUS_LIMITED];
+    const u = resolution > 0 ? heldCommand(p, s[BUS_LIMITED]) : s[BUS_LIMITED];
     if (direct) y = u;
-    if (td === 0) x = y;
-    log[tick * at.L_STRIDE + at.L_SPEED] = v;
-    log[tick * at.L_STRIDE + at.L_ACTUATOR] = y;
-    log[tick * at.L_STRIDE + at.L_COMMAND] = s[BUS_COMMAND];
+    plate = play === 0 ? y : Math.min(Math.max(plate, y - play), y + play);
+    if (td === 0) x = plate;
+    const line = tick * at.L_STRIDE;
+    log[line + at.L_SPEED] = v;
+    log[line + at.L_ACTUATOR] = plate;
+    log[line + at.L_COMMAND] = s[BUS_COMMAND];
     tick++;
 
     const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
-    const limited = u - y - rateGap > 1e-12 || y - u - rateGap > 1e-12;
+    const limited = u - y - rateGap > NO_GAP || y - u - rateGap > NO_GAP;
     let slope0 = 0;
+    let travelled = 0;
     elapsed = 0;
     for (let part = 0; part < steps && event === at.RUNNING; part++) {
       const gap = y - u;
-      let xm = u + (x - u) * driveMean + gap * pullMean;
-      let xe = u + (x - u) * driveDecay + gap * pull;
+      let rest = u;
+      let seen = gap;
       let ye = u + gap * actuatorDecay;
-      if (gap - rateGap > 1e-12 || -gap - rateGap > 1e-12) {
-        rampedStep(p, lags, u, x, y);
-        xm = lags[at.G_RAMPED_MEAN];
-        xe = lags[at.G_RAMPED_DRIVE];
-        ye = lags[at.G_RAMPED_ACTUATOR];
+      let moved = gap - rateGap > NO_GAP || -gap - rateGap > NO_GAP;
+      let pe = ye;
+      if (play > 0 && !moved) {
+        // The plate behind the slack is carried along, rests, or begins to move within the step.
+        const free = play + (gap > 0 ? y - plate : plate - y);
+        if (free <= NO_GAP) {
+          rest = gap > 0 ? u + play : u - play;
+          pe = rest + gap * actuatorDecay;
+        } else if (Math.abs(ye - y) <= free) {
+          rest = pe = plate;
+          seen = 0;
+        } else moved = true;
+      }
+      let xm = rest + (x - rest) * driveMean + seen * pullMean;
+      let xe = rest + (x - rest) * driveDecay + seen * pull;
+      if (moved) {
+        actuatorStep(p, lags, u, x, y, plate);
+        xm = lags[at.G_MOVED_MEAN];
+        xe = lags[at.G_MOVED_DRIVE];
+        ye = lags[at.G_MOVED_ACTUATOR];
+        pe = lags[at.G_MOVED_PLATE];
       }
 
       let vm = v + half * acceleration;
@@ -129,7 +176,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       if (from + ahead >= here[at.H_LENGTH] && row < lastRow && ahead > 1e-9) {
         let there = row;
         while (there < lastRow && q + ahead >= rows[there + at.R_STRIDE + at.R_STATION]) there += at.R_STRIDE;
-        slope = share * meanBetween(rows, at.R_SIN, row, q, there, q + ahead);
+        slope = (p[at.P_MASS] / mass) * meanBetween(rows, at.R_SIN, row, q, there, q + ahead);
         wind = meanBetween(rows, at.R_HEADWIND, row, q, there, q + ahead);
       }
       const air = here[at.H_AIR] + here[at.H_AIR + 1] * middle;
@@ -163,7 +210,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       a -= brake;
       if (part === 0) {
         chunk[at.C_DRIVE_FORCE] = mass * force;
-        log[(tick - 1) * at.L_STRIDE + at.L_FORCE] = mass * force;
+        log[line + at.L_FORCE] = mass * force;
         chunk[at.C_ACCELERATION] = a;
         chunk[at.C_BRAKE_FORCE] = mass * brake;
         slope0 = filter > 0 ? (v - z) / filter : a;
@@ -201,6 +248,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
         chunk[at.C_BRAKE_TIME] += h;
       }
       chunk[at.C_DISTANCE] += ds;
+      travelled += ds;
       elapsed += h;
       if (filter > 0) {
         const kept = h === step ? lags[at.G_FILTER] : decay(filter, h);
@@ -208,14 +256,16 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       } else z = ve;
       v = ve;
       q = event === at.END_OF_ROAD ? end : q + (timed ? h : ds);
-      x = td === 0 ? ye : xe;
+      x = td === 0 ? pe : xe;
       y = ye;
+      plate = pe;
       acceleration = a;
       while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION]) row += at.R_STRIDE;
     }
 
     if (!(v < 1e9)) {
       chunk.fill(0);
+      s[at.TICK] += tick - 1;
       return at.NON_FINITE;
     }
     if (event === at.RUNNING) {
@@ -224,24 +274,25 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     }
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
+    s[at.SPEED] = v;
+    s[at.STATION] = q;
+    s[at.THROTTLE] = x;
+    s[at.ACTUATOR] = y;
+    s[at.PLATE] = plate;
+    s[at.FILTERED] = z;
+    s[at.ACCELERATION] = acceleration;
+    s[at.TRAVELLED] += travelled;
+    s[at.SPEED_CELL] = speedCell;
+    if (sourced) drawPower(machine, line, elapsed);
   }
 
-  if (event === at.RUNNING) s[at.TICK] += tick;
-  else {
-    s[at.TICK] += tick - 1;
-    s[at.PARTIAL] = elapsed;
-  }
-  s[at.SPEED] = v;
-  s[at.STATION] = q;
-  s[at.THROTTLE] = x;
-  s[at.ACTUATOR] = y;
-  s[at.FILTERED] = z;
-  s[at.ACCELERATION] = acceleration;
   s[at.CELL] = row / at.R_STRIDE;
-  s[at.SPEED_CELL] = speedCell;
   s[at.THROTTLE_CELL] = throttleCell;
+  if (event !== at.RUNNING) s[at.PARTIAL] = elapsed;
+  const whole = event === at.RUNNING ? tick : tick - 1;
+  s[at.TICK] += whole;
   chunk[at.C_TICKS] = tick;
-  chunk[at.C_TIME] = (event === at.RUNNING ? tick : tick - 1) * sample + s[at.PARTIAL];
-  chunk[at.C_KINETIC] = 0.5 * mass * (v - v0) * (v + v0);
+  chunk[at.C_TIME] = whole * sample + s[at.PARTIAL];
+  chunk[at.C_KINETIC] = 0.5 * mass * v * v - kinetic0;
   return event;
 }

@@ -9,17 +9,11 @@ import {
   G_FILTER_RISE,
   G_PULL,
   G_PULL_HALF,
-  G_RAMPED_ACTUATOR,
-  G_RAMPED_DRIVE,
-  G_RAMPED_MEAN,
   P_ACTUATOR_LAG,
   P_DRIVE_LAG,
   P_FILTER,
   P_LAG_EQUAL,
   P_LAG_WEIGHT,
-  P_RATE,
-  P_RATE_GAP,
-  P_STEP,
 } from './layout.ts';
 
 /** Filter's lag over step beyond which the speed over the step is taken as a line. */
@@ -66,37 +60,6 @@ function filterFactors(tf: number, lags: Float64Array, row: number, h: number): 
     lags[row + G_FILTER_BEGIN] = 0;
     lags[row + G_FILTER_END] = 0;
   }
-}
-
-/**
- * Actuator and throttle after a whole step that begins at the rate limit, and the mean throttle by Simpson's rule: two
- * halves, each a ramp at the greatest rate, then, once the gap is small enough, the lags.
- */
-export function rampedStep(p: Float64Array, lags: Float64Array, u: number, x: number, y: number): void {
-  const ta = p[P_ACTUATOR_LAG];
-  const td = p[P_DRIVE_LAG];
-  const half = 0.5 * p[P_STEP];
-  let xe = x;
-  let ye = y;
-  let middle = x;
-  for (let side = 0; side < 2; side++) {
-    const slope = u > ye ? p[P_RATE] : -p[P_RATE];
-    const ramp = Math.min(Math.max(0, (Math.abs(u - ye) - p[P_RATE_GAP]) / p[P_RATE]), half);
-    const start = ye - slope * td;
-    xe = start + slope * ramp + (xe - start) * (ramp > 0 ? decay(td, ramp) : 1);
-    ye += slope * ramp;
-    const rest = half - ramp;
-    if (rest > 0) {
-      const kept = decay(ta, rest);
-      const slow = decay(td, rest);
-      xe = u + (xe - u) * slow + (ye - u) * (p[P_LAG_WEIGHT] * (kept - slow) + p[P_LAG_EQUAL] * rest * slow);
-      ye = u + (ye - u) * kept;
-    }
-    if (side === 0) middle = xe;
-  }
-  lags[G_RAMPED_MEAN] = (x + 4 * middle + xe) * (1 / 6);
-  lags[G_RAMPED_DRIVE] = xe;
-  lags[G_RAMPED_ACTUATOR] = ye;
 }
 
 /** e^(-time / lag), 0 without a lag. */

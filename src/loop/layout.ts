@@ -170,11 +170,12 @@ export const G_FILTER_RISE = 6;
 export const G_FILTER_BEGIN = 7;
 export const G_FILTER_END = 8;
 export const G_STRIDE = 9;
-/** After a whole step that begins at the rate limit: mean throttle, throttle, actuator. */
-export const G_RAMPED_MEAN = 18;
-export const G_RAMPED_DRIVE = 19;
-export const G_RAMPED_ACTUATOR = 20;
-export const G_SIZE = 21;
+/** After a whole step in which rate limit or slack has a say: mean throttle, throttle, actuator, plate. */
+export const G_MOVED_MEAN = 18;
+export const G_MOVED_DRIVE = 19;
+export const G_MOVED_ACTUATOR = 20;
+export const G_MOVED_PLATE = 21;
+export const G_SIZE = 22;
 
 // --- road table: a row a cell between two knots; value at the near knot and change per unit of station ---
 export const R_STATION = 0;

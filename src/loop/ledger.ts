@@ -1,4 +1,3 @@
-import { powerDrawn } from '../vehicle/power-map.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -28,6 +27,7 @@ export function ledgerOf(machine: Machine, vehicle: Vehicle): Ledger {
   const spent = s[at.AERO_WORK] + s[at.ROLLING_WORK] + s[at.CLIMB_WORK] + s[at.BRAKE_WORK] + kinetic + shifts;
   const magnitude = s[at.WORK_MAGNITUDE];
   const { source } = vehicle.drive;
+  const capacity = source?.kind === 'battery' ? source.capacity : null;
   return {
     drive,
     regeneration,
@@ -37,9 +37,8 @@ export function ledgerOf(machine: Machine, vehicle: Vehicle): Ledger {
     brake: s[at.BRAKE_WORK],
     kinetic,
     shifts,
-    drawn:
-      source === null ? null : powerDrawn(source.map, 1, drive) + powerDrawn(source.map, 1, regeneration),
-    chargeAtEnd: null,
+    drawn: source === null ? null : s[at.DRAWN],
+    chargeAtEnd: capacity === null ? null : s[at.CHARGE] / capacity,
     residual: magnitude > 0 ? Math.abs(drive + regeneration - spent) / magnitude : 0,
   };
 }

@@ -14,49 +14,31 @@ import type { Machine } from './machine.ts';
 import { distanceAt, surroundingsAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
 import { settleSensor } from './sense-speed.ts';
+import { gearDue } from './shift-due.ts';
 
 /**
- * Puts the machine at a station in the steady state of a speed: force and throttle that hold it there, limited to the
- * drive's range, and a controller that takes over without a bump. Under a given locked throttle the throttle is that
+ * Puts the machine at a station in the steady state of a speed: gear, force and throttle that hold it there, limited to
+ * the actuator's travel, the plate in the middle of the slack, and a controller that takes over without a bump. Under a given locked throttle the throttle is that
  * one, and the speed is only where the run starts.
  *
  * @param speed in the units of the set speed [m/s]
  */
 export function settle(machine: Machine, plan: LoopPlan, station: number, speed: number): void {
   const { s, p } = machine;
-  const { vehicle, controller } = plan;
-  const { drive } = vehicle;
+  const { drive } = plan.vehicle;
   const v = speed * p[at.P_TO_TRUE];
-  const gear = gearInForce(plan, distanceAt(plan.road, station));
-  const here = surroundingsAt(plan.road, station);
-  const derate = derateFactor(drive, here.airDensity, here.airTemperature);
-  const force = requiredForce(vehicle, v, here);
-
   s.fill(0);
-  settleSource(machine);
-  const pushed = derate * s[at.DRIVE_FACTOR];
-  const held = derate * s[at.REGENERATION_FACTOR];
-  let needed = throttleFor(drive, gear, v, force, pushed) ?? 0;
-  if (needed < 0) needed = throttleFor(drive, gear, v, force, held) ?? 0;
-  const given =
-    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
-  const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
-
   s[at.STATION] = station;
   s[at.CELL] = cellOf(plan.road.station, station);
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
-  loadGear(machine, gear);
-  if (drive.belt !== null) loadRatio(machine, beltRatio(drive.belt, v, throttle));
-  s[at.START_MASS] = s[at.EFFECTIVE_MASS];
-  s[at.ACCELERATION] =
-    (wheelForce(drive, gear, v, throttle, throttle < 0 ? held : pushed) - force) / s[at.EFFECTIVE_MASS];
   s[at.FILTERED] = v;
-  s[at.ACTUATOR] = throttle;
-  s[at.PLATE] = throttle;
-  s[at.THROTTLE] = throttle;
-  s[at.LAST_COMMAND] = throttle;
-  s[at.THROTTLE_CELL] = cellIndex(machine.throttleEdges, throttle);
+  settleSource(machine);
+  settleGear(machine, plan, gearInForce(plan, distanceAt(plan.road, station)));
+  // An automatic gearbox has shifted up or down as far as its lines ask, a gear at a time.
+  for (let shifts = 1; shifts < drive.gears.length && gearDue(machine) !== s[at.GEAR]; shifts++)
+    settleGear(machine, plan, gearDue(machine));
+  const throttle = s[at.PLATE];
   for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = v;
   settleSensor(machine);
   s[BUS_MEASURED] = p[at.P_SCALE] * v;
@@ -64,6 +46,31 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   s[BUS_LIMITED] = throttle;
   machine.controller.engage(s);
   markLock(machine, plan);
+}
+
+/** Puts a gear in hand, with the throttle that holds the speed at this place, and what follows from it. */
+function settleGear(machine: Machine, plan: LoopPlan, gear: number): void {
+  const { s, p } = machine;
+  const { vehicle, controller } = plan;
+  const { drive } = vehicle;
+  const v = s[at.SPEED];
+  const here = surroundingsAt(plan.road, s[at.STATION]);
+  const derate = derateFactor(drive, here.airDensity, here.airTemperature);
+  const force = requiredForce(vehicle, v, here);
+  const pushed = derate * s[at.DRIVE_FACTOR];
+  const held = derate * s[at.REGENERATION_FACTOR];
+  let needed = throttleFor(drive, gear, v, force, pushed) ?? 0;
+  if (needed < 0) needed = throttleFor(drive, gear, v, force, held) ?? 0;
+  const given =
+    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
+  const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
+  loadGear(machine, gear);
+  if (drive.belt !== null) loadRatio(machine, beltRatio(drive.belt, v, throttle));
+  s[at.START_MASS] = s[at.EFFECTIVE_MASS];
+  const push = wheelForce(drive, gear, v, throttle, throttle < 0 ? held : pushed);
+  s[at.ACCELERATION] = (push - force) / s[at.EFFECTIVE_MASS];
+  s[at.ACTUATOR] = s[at.PLATE] = s[at.THROTTLE] = s[at.LAST_COMMAND] = throttle;
+  s[at.THROTTLE_CELL] = cellIndex(machine.throttleEdges, throttle);
 }
 
 /** Remembers the air at this place and the gear in hand for a throttle locked `level`. */
