@@ -91,7 +91,7 @@ export function withEngine(base: RunResult): RunResult {
       actuator: {
         deadTime: 0.02,
         resolution: 0.001,
-        travel: { least: 0, greatest: 0.98 },
+        travel: { least: 0, greatest: 1 },
         lag: 0.06,
         rateLimit: 8,
         slack: 0.02,

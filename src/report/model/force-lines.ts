@@ -2,11 +2,11 @@ import type { Road } from '../../road/road.ts';
 import { fromPct } from '../../units/convert.ts';
 import { derateFactor } from '../../vehicle/derating.ts';
 import type { Drive } from '../../vehicle/drive.ts';
-import { forceRange } from '../../vehicle/drive-law.ts';
 import { requiredForce } from '../../vehicle/resistance.ts';
 import { gripForce } from '../../vehicle/traction.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
 import { fixed, signed, withUnit } from '../quantity.ts';
+import { endForces } from './end-forces.ts';
 import { hasGears } from './gear-words.ts';
 import { turningRange } from './turning-range.ts';
 import type { View } from './view.ts';
@@ -92,7 +92,7 @@ export function forceLines(view: View): ForceLines {
       ...line(
         { kind: 'full', gear, words: words.join(', '), short: many ? String(gear + 1) : at(thick) || 'full' },
         drive,
-        (v) => forceRange(drive, gear, v, factor(thick)).greatest,
+        (v) => endForces(vehicle, gear, v, factor(thick)).greatest,
       ),
       ...(differs
         ? line(
@@ -103,7 +103,7 @@ export function forceLines(view: View): ForceLines {
               short: place(thin),
             },
             drive,
-            (v) => forceRange(drive, gear, v, factor(thin)).greatest,
+            (v) => endForces(vehicle, gear, v, factor(thin)).greatest,
           )
         : []),
       ...(engaged || drive.belt === null
@@ -115,7 +115,7 @@ export function forceLines(view: View): ForceLines {
               short: drive.throttleMin < 0 ? 'regen.' : 'closed',
             },
             drive,
-            (v) => forceRange(drive, gear, v, factor(thick)).least,
+            (v) => endForces(vehicle, gear, v, factor(thick)).least,
           )
         : []),
     ];
@@ -127,7 +127,7 @@ export function forceLines(view: View): ForceLines {
     return line(
       { kind: 'ratio', gear: null, words, short: end === 'greatest' ? 'shortest' : 'longest' },
       held,
-      (v) => forceRange(held, 0, v, factor(thick)).greatest,
+      (v) => endForces({ ...vehicle, drive: held }, 0, v, factor(thick)).greatest,
     );
   });
   return {

@@ -1,10 +1,10 @@
 import { asin, atan, tan } from '../../numeric/elementary.ts';
 import { STANDARD_GRAVITY } from '../../units/constants.ts';
 import { derateFactor } from '../../vehicle/derating.ts';
-import { forceRange } from '../../vehicle/drive-law.ts';
 import { requiredForce, rollingForce } from '../../vehicle/resistance.ts';
 import { stillAndLevel } from '../../vehicle/surroundings.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
+import { endForces } from './end-forces.ts';
 import { airExtremes } from './force-lines.ts';
 import { turningRange } from './turning-range.ts';
 import type { View } from './view.ts';
@@ -40,7 +40,7 @@ export function gearAuthority({ result: { vehicle, road } }: View, speed: number
     const { least: from, greatest: to } = turningRange(drive, gear);
     const engaged = gear === drive.gear;
     if (speed < from || speed > to) return { gear, engaged, from, to, at: null };
-    const { greatest: full, least } = forceRange(drive, gear, speed, factor(thick));
+    const { greatest: full, least } = endForces(vehicle, gear, speed, factor(thick));
     return {
       gear,
       engaged,
@@ -49,7 +49,7 @@ export function gearAuthority({ result: { vehicle, road } }: View, speed: number
       at: {
         shaftSpeed: ratio * speed,
         full,
-        thin: forceRange(drive, gear, speed, factor(thin)).greatest,
+        thin: endForces(vehicle, gear, speed, factor(thin)).greatest,
         least,
         climb: steadyGrade(vehicle, speed, full - level),
         descent: steadyGrade(vehicle, speed, least - level),

@@ -1,15 +1,14 @@
 import type { Stretch } from '../../study/findings.ts';
-import { courseOfRun } from '../../study/hold-course.ts';
+import { courseOfRun, type HoldCourse, nominalCourse } from '../../study/hold-course.ts';
 import { fixed, withUnit } from '../quantity.ts';
 import type { CandidateView, View } from './view.ts';
 
-/** Where a candidate follows changes of its set speed, in their order; a start at another speed is the first. */
-export const settlingOf = (
-  { result: { hold, vehicle } }: View,
-  candidate: CandidateView,
-): readonly Stretch[] =>
-  courseOfRun({ plan: { hold, vehicle, controller: candidate.controller }, result: candidate.result })
-    .settling;
+const courseOf = ({ result: { hold, vehicle } }: View, candidate: CandidateView): HoldCourse =>
+  courseOfRun({ plan: { hold, vehicle, controller: candidate.controller }, result: candidate.result });
+
+/** Where a candidate follows changes of its set speed or gets over a shift of the rider's, in order along the way. */
+export const settlingOf = (view: View, candidate: CandidateView): readonly Stretch[] =>
+  courseOf(view, candidate).settling;
 
 /** A change of set speed with its words: `set speed 60 to 50 km/h`. */
 export interface SetSpeedMark extends Stretch {
@@ -18,12 +17,13 @@ export interface SetSpeedMark extends Stretch {
 
 /** The changes of set speed along the road, each from where the first design follows it to where the last one does. */
 export function setSpeedMarks(view: View): readonly SetSpeedMark[] {
-  const { demand, hold } = view.result;
+  const { road, hold, vehicle } = view.result;
   const { of, name } = view.speed;
-  const designs = view.candidates.filter(({ locked }) => !locked).map((one) => settlingOf(view, one));
-  const start = demand.settling.length > hold.changes.length ? [hold.startSpeed] : [];
+  const designs = view.candidates.filter(({ locked }) => !locked).map((one) => courseOf(view, one).following);
+  const { following } = nominalCourse(road, hold, vehicle);
+  const start = following.length > hold.changes.length ? [hold.startSpeed] : [];
   const steps = [...start, hold.setSpeed, ...hold.changes.map(({ setSpeed }) => setSpeed)];
-  return demand.settling.flatMap((nominal, k) => {
+  return following.flatMap((nominal, k) => {
     const made = designs.flatMap((settling) => settling[k] ?? []).filter(({ from }) => from < view.length);
     const all = made.length > 0 ? made : [nominal];
     const from = Math.min(...all.map((one) => one.from));

@@ -30,7 +30,7 @@ export function energySection(view: View): Section {
       endDistance > 0 ? significant(toWh(ledger.drive) / toKm(endDistance)) : NO_VALUE,
     ];
   });
-  const body = html`<p>All of the drive's pushing work ends in the air, in rolling, in height, in the brake, in speed, or goes back into the drive where it holds back (${throttleMin < 0 ? 'regeneration' : 'engine drag'}). Left of zero: what height or speed gave.</p>
+  const body = html`<p>All of the drive's pushing work ends in the air, in rolling, in height, in the brake, in speed, ${terms.some(({ name }) => name === 'shifts') && 'in the clutch at shifts, '}or goes back into the drive where it holds back (${throttleMin < 0 ? 'regeneration' : 'engine drag'}). Left of zero: what height or speed gave.</p>
 <ul class="keys">${terms.map((term, k) => html`<li><svg class="key" viewBox="0 0 22 12" width="22" height="12" aria-hidden="true">${rectangle({ left: 0, top: 0, width: 22, height: 12 }, PAGE_PAINT.energy[k]!)}</svg> ${term.words}</li>`)}</ul>
 ${chartFigure('energy', (canvas) => energyChart(view, canvas), 'Energy at the wheel over the whole run, one bar a candidate, one scale.')}
 ${table(

@@ -4,18 +4,20 @@ import { REPAIR_KINDS } from '../charts/repair-marks.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { scientific } from '../model/figure-text.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
+import { vehicleRows } from '../model/vehicle-rows.ts';
 import type { View } from '../model/view.ts';
 import { bandText, fixed, lengthText, placeText, stretchText } from '../quantity.ts';
 import { cautions } from './cautions.ts';
-import { EQUATIONS } from './equations.ts';
+import { equations } from './equations.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
 /** 9: how everything above was computed, from what, and what it does not say. */
 export function methodSection(view: View): Section {
   const body = html`${cautionPart(view)}
+${vehicleTable(view)}
 <h3>Model</h3>
-${EQUATIONS}
+${equations(view.result.vehicle)}
 <h3>Validity: what is left out</h3>
 <ul>${validityNotes(view.result.vehicle).map((note) => html`<li>${note.words}</li>`)}</ul>
 ${solver(view)}
@@ -37,6 +39,16 @@ ${
       html`<li>${inReaderUnit(warning.message, view.speed)}${warning.from !== undefined && warning.to !== undefined && warning.to > warning.from && html` <span class="small">(${stretchText(warning.from, warning.to)})</span>`}</li>`,
   )}</ul>`
 }`;
+}
+
+/** What the vehicle is made of. */
+function vehicleTable({ result: { vehicle }, speed }: View): Html {
+  return html`<h3 id="method-vehicle">The vehicle</h3>
+${table(
+  'The vehicle',
+  [{ head: vehicle.name }, { head: 'as the loop sees it' }],
+  vehicleRows(vehicle, speed).map(([part, words]) => [part, words]),
+)}`;
 }
 
 /** What the tests of the loop hold the two schemes to, at 50 Hz: change both together (test/loop/accuracy.test.ts). */
@@ -133,10 +145,20 @@ ${
     : table(
         'Defaults',
         [{ head: 'key' }, { head: 'value' }, { head: 'of' }, { head: 'source' }],
-        defaults.map((one) => [html`<code>${one.key}</code>`, one.value, one.of, one.source]),
+        defaults.map((one) => [
+          html`<code>${one.key}</code>`,
+          one.value,
+          one.of,
+          html`${one.source}${isRemembered(one.source) && html` <span class="flag">not checked</span>`}`,
+        ]),
       )
+}${
+  defaults.some(({ source }) => isRemembered(source)) &&
+  html`<p class="note">Not checked: a typical figure from memory, without a document behind it. Give the vehicle's own in its place.</p>`
 }`;
 }
+
+const isRemembered = (source: string): boolean => source.includes('from memory');
 
 function inputs(view: View): Html {
   const { result } = view;
