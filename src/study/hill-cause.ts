@@ -18,17 +18,19 @@ export interface CauseFinding {
  * Why a candidate that regulates left its band or sat on a limit on a hill: by replays over the hill's window that take
  * one limitation away at a time, gains untouched.
  *
- * 1. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
+ * 1. The set speed asks for more than the grip of the driven wheel passes on, and the drive has it: `traction`. The loop
+ *    has no slip, so that nothing in it can be to blame before that.
+ * 2. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
  *    where the drive went beyond the grip of its wheel by itself, else `gains`.
- * 2. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
+ * 3. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
  *    gearbox that stays in the gear the hill needs (`gear`), a battery that is always cold and full enough
  *    (`derating`), no throttle range; each only where it was met. The first without which the band is kept is the
  *    cause. Where the worst error lies on the far side of the limit (too fast after full throttle, too slow after
  *    closed), windup need answer for that side only, and is the cause if half of its excess goes with it.
- * 3. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it.
+ * 4. If none alone does it, the one that takes away most of the excess over the band, if that is at least half of it.
  *    Else the throttle range, if the ideal hold, which has no gains, makes more than half of the worst error too; else
  *    `gains`.
- * 4. The throttle range is named by the demand (nameRange): `traction`, `gear`, `derating`, `wind`, `closed_throttle`,
+ * 5. The throttle range is named by the demand (nameRange): `gear`, `derating`, `wind`, `closed_throttle`,
  *    `power`, `torque`. A demand in range throughout: `gains`, the controller went there itself.
  *
  * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
@@ -45,6 +47,11 @@ export function causeOnHill(
   ideal: Figure,
 ): CauseFinding {
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
+  const gripped = plan.vehicle.traction === null ? null : nameRange(windowed, window, hill, hill.share >= 0);
+  if (gripped?.cause === 'traction') {
+    const kept = events.leftBand ? `the error grew to ${inKmh(worstOf(events))}` : 'the band was kept';
+    return { ...gripped, why: `${gripped.why} In it ${kept}.` };
+  }
   if (!events.leftBand) return causeInBand(windowed, window, hill, events);
   const { cause, why } = causeOfLeaving({ windowed, window, hill, events, band, excess }, ideal);
   const beyond = cause === 'traction' ? '' : beyondGripWords(events);

@@ -46,7 +46,8 @@ export interface QuasiSteadyPlan {
  *
  * @param from first knot; `entrySpeed` [m/s] is the speed there
  * @param to last knot, >= from
- * @returns speed at knots from..to [m/s]; 0 from where it comes to a stop
+ * @returns speed at knots from..to [m/s]; 0 from where it comes to a stop, and the last speed at which the gear turned
+ * from where it can turn no longer
  */
 export function quasiSteadySpeeds(
   plan: QuasiSteadyPlan,
@@ -61,20 +62,31 @@ export function quasiSteadySpeeds(
   const speeds = new Float64Array(to - from + 1);
   let v = entrySpeed;
   speeds[0] = v;
+  let stalled = false;
   for (let i = from; i < to; i++) {
+    const geared = inGears[gear?.[i] ?? vehicle.drive.gear];
+    const slowest = slowestOf(geared);
     const timed = road.along === 'time';
     const span = road.station[i + 1] - road.station[i];
     const steps = Math.max(1, Math.ceil((timed ? span * setSpeed[i] : span) / STEP));
-    for (let k = 0; k < steps && span > 0 && v > 0; k++) {
+    for (let k = 0; k < steps && span > 0 && v > 0 && !stalled; k++) {
       // Along time the way of a step depends on the speed; its beginning is near enough for a step of this length.
       const ds = timed ? (v * span) / steps : span / steps;
       const here = surroundingsBetween(road, i, k / steps);
       const next = surroundingsBetween(road, i, (k + 1) / steps);
-      v = oneStep(plan, inGears[gear?.[i] ?? vehicle.drive.gear], v, setSpeed[i], ds, here, next);
+      v = oneStep(plan, geared, v, setSpeed[i], ds, here, next);
+      stalled = v < slowest;
+      if (stalled) v = slowest;
     }
     speeds[i + 1 - from] = v;
   }
   return speeds;
+}
+
+/** Speed below which the gear, or the lowest of a gearbox that shifts by itself, turns no longer [m/s]. */
+function slowestOf({ drive: { gears, gear, gearbox, belt, stallSpeed } }: Vehicle): number {
+  if (belt !== null) return stallSpeed / belt.greatest;
+  return stallSpeed / gears[gearbox.kind === 'automatic' ? 0 : gear].ratio;
 }
 
 function oneStep(
