@@ -1,8 +1,11 @@
+import { bracketedRoot } from '../numeric/root.ts';
 import { type CombustionCurves, combustionCurves } from './combustion-curves.ts';
 import type { CombustionSpec, FuelCutSpec } from './engine-spec.ts';
 
 /** Above idle, closed-throttle torque falls from 0 to the drag of the engine within this [rad/s], some 290 rpm. */
 export const GOVERNOR_BAND = 30;
+/** Into so many parts the throttles are divided over which the driveline turns from giving to taking. */
+const TURNING_STEPS = 3;
 /** Nodes no further apart are one [rad/s, or throttle]. */
 const SAME = 1e-9;
 
@@ -30,8 +33,8 @@ export interface CombustionTable {
  *
  * - Idle governor: closed throttle gives its drag down to idle + 30 rad/s, rises in a straight line to 0 at idle, 0 below.
  * - Rev limiter: what the throttle adds to closed throttle falls from its value at `revLimit` to 0 over `limitBand`.
- * - Driveline: at the nodes, torque times efficiency where it drives, over efficiency where it holds back. In between
- *   the law stays straight, where the true one has a kink at no torque.
+ * - Driveline: at the nodes, torque times efficiency where it drives, over efficiency where it holds back. Nodes stand
+ *   close where it turns from one to the other; the parabola, linear in the throttle, is straight over that corner.
  * - Altitude: the loss at a node is f (T - c) / (f - c) with full and closed torque f and c there, by the driveline like
  *   T, so that full throttle is d f exactly (ISO 1585 corrects full-load torque) and closed throttle is unchanged.
  *
@@ -42,7 +45,11 @@ export function combustionTable(spec: CombustionSpec): CombustionTable {
   const { efficiency, limitBand, fuelCut } = spec;
   const limit = spec.revLimit ?? Number.POSITIVE_INFINITY;
   const shaftSpeed = speedNodes(spec, curves);
-  const throttle = merged(fuelCut === null ? [...curves.throttle] : [...curves.throttle, fuelCut.throttle]);
+  const throttle = merged([
+    ...curves.throttle,
+    ...(fuelCut === null ? [] : [fuelCut.throttle]),
+    ...turningThrottles(spec, curves, shaftSpeed),
+  ]);
   const columns = throttle.length;
   const torque = new Float64Array(shaftSpeed.length * columns);
   const loss = new Float64Array(torque.length);
@@ -84,6 +91,30 @@ function speedNodes(spec: CombustionSpec, curves: CombustionCurves): Float64Arra
     ...(revLimit === null ? [] : [revLimit, revLimit + limitBand]),
     ...(fuelCut === null ? [] : [fuelCut.above, fuelCut.above + fuelCut.blend]),
   ]);
+}
+
+/**
+ * Throttles at which torque turns from holding back to driving, and the driveline with it: a few between the least and
+ * the greatest of all shaft speeds. The parabola is left linear in the throttle.
+ */
+function turningThrottles(
+  { torque, idle, efficiency, revLimit }: CombustionSpec,
+  curves: CombustionCurves,
+  shaftSpeed: Float64Array,
+): number[] {
+  if (torque.kind === 'parabola' || efficiency === 1) return [];
+  let [least, greatest] = [1, 0];
+  for (const w of shaftSpeed) {
+    const closed = governedTorque(curves, idle, w);
+    const full = curves.full(w);
+    if (closed >= 0 || full <= 0 || w > (revLimit ?? w)) continue;
+    const turn = bracketedRoot((x) => closed + curves.share(w, x) * (full - closed), 0, 1, SAME).x;
+    least = Math.min(least, turn);
+    greatest = Math.max(greatest, turn);
+  }
+  if (least > greatest) return [];
+  const steps = greatest - least > SAME ? TURNING_STEPS : 0;
+  return Array.from({ length: steps + 1 }, (_, i) => least + ((greatest - least) * i) / Math.max(1, steps));
 }
 
 /** In rising order, what differs by rounding only taken once. */
