@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { loopStability, stabilityOf } from '../../src/control/loop-stability.ts';
 import { sampledLoop } from '../../src/control/sampled-loop.ts';
+import type { Drive } from '../../src/vehicle/drive.ts';
 import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { LinearVehicle } from '../../src/vehicle/linearise.ts';
 import { stillAndLevel } from '../../src/vehicle/surroundings.ts';
@@ -120,5 +121,44 @@ describe('the stability of a candidate', () => {
 
   it('is unknown where the drive cannot hold any of the speeds', () => {
     expect(loopStability(withLags(0.1, 0.2), { ...timing, kp: 0.4, ki: 0.2 }, [150], air)).toBeNull();
+  });
+
+  it('is that of the gear where it stands worst, among those that can be driven there', () => {
+    // 60 N m less 8 N m of drag at the shaft, the same at every speed: a lower gear is a greater gain.
+    const plain = withLags(0.1, 0.2, 0.05);
+    const drive: Drive = {
+      ...plain.drive,
+      speedEdges: new Float64Array(0),
+      cells: Float64Array.of(-8, 0, 68, 0, 0, 0),
+      losses: Float64Array.of(0, 0, 60, 0, 0, 0),
+      gears: [20, 14, 10].map((ratio) => ({ ratio, inertia: 0.05 * ratio * ratio })),
+      gear: 2,
+      stallSpeed: 150,
+    };
+    const vehicle = { ...plain, drive };
+    const gains = { ...timing, kp: 0.4, ki: 0.2 };
+    const at = (speed: number, gears?: number[]) => loopStability(vehicle, gains, [speed], air, gears);
+    const each = [0, 1, 2].map((gear) => at(20, [gear])!);
+    // Gain over mass: 68 r / (m + J r^2); the phase is all but the same, and so the margins go with it.
+    const gain = (r: number): number => (68 * r) / (260 + 0.05 * r * r);
+    expectClose(each[0]!.gainMargin! / each[2]!.gainMargin!, gain(10) / gain(20), 0.03);
+    expect(at(20, [0, 1, 2])).toEqual(each[0]);
+    expect(each[0]!.gear).toBe(0);
+    expect(at(20)).toEqual(each[2]);
+    // At 12 m/s the top gear would turn 120 rad/s: slower than it can.
+    expect(at(12, [1, 2])!.gear).toBe(1);
+    expect(at(12)).toBeNull();
+  });
+
+  it('is unknown where the end stop of the actuator is below the throttle that is needed', () => {
+    const vehicle = withLags(0.1, 0.2);
+    const stopped = (greatest: number): Vehicle => ({
+      ...vehicle,
+      actuator: { ...vehicle.actuator, travel: { least: 0, greatest } },
+    });
+    // At 25 m/s 225 N of air and 38 N of rolling of 900 N: 0.29.
+    const gains = { ...timing, kp: 0.4, ki: 0.2 };
+    expect(loopStability(stopped(0.31), gains, [25], air)).not.toBeNull();
+    expect(loopStability(stopped(0.28), gains, [25], air)).toBeNull();
   });
 });

@@ -121,6 +121,44 @@ test('a dead time that is no whole number of samples gives the poles of the frac
   }
 });
 
+describe('what delays the loop', () => {
+  const timing = { sample: 0.02, computingDelay: 0, integration: 'forward' as const };
+  const gains = { kp: 0.17, ki: 0.067 };
+  const plain = withLags(0.06, 0.15, 0.05, 0);
+  const frequencies = [0.01, 0.3, 2, 9];
+  const ratios = (vehicle: Vehicle, more: Partial<typeof timing> = {}): Complex[] => {
+    const without = sampledLoop(plain, model, timing);
+    const loop = sampledLoop(vehicle, model, { ...timing, ...more });
+    return frequencies.map((w) => divideComplex(loop.openLoop(gains, w), without.openLoop(gains, w)));
+  };
+  const expectDelay = (found: readonly Complex[], delay: number, tolerance: number): void =>
+    found.forEach(({ re, im }, i) => {
+      expectClose(
+        [re, im],
+        [Math.cos(frequencies[i]! * delay), -Math.sin(frequencies[i]! * delay)],
+        tolerance,
+      );
+    });
+  const pulses = (reading: NonNullable<Vehicle['sensor']['pulses']>['reading'], delay: number): Vehicle => ({
+    ...plain,
+    sensor: { ...plain.sensor, delay, pulses: { spacing: 1.5, reading } },
+  });
+
+  test('is dead time, computing and transport delay, each by its phase', () => {
+    expectDelay(ratios({ ...plain, actuator: { ...plain.actuator, deadTime: 0.08 } }), 0.08, 1e-9);
+    expectDelay(ratios(plain, { computingDelay: 0.08 }), 0.08, 1e-9);
+    const all = { ...plain, actuator: { ...plain.actuator, deadTime: 0.03 } };
+    const sensed = { ...all, sensor: { ...plain.sensor, delay: 0.02 } };
+    expectDelay(ratios(sensed, { computingDelay: 0.01 }), 0.06, 1e-9);
+  });
+
+  test('is half the window of a count, and one period of pulses that are timed', () => {
+    expectDelay(ratios(pulses({ kind: 'counted', window: 0.12 }, 0.02)), 0.08, 1e-9);
+    // 1.5 m at 25 m/s: 60 ms.
+    expectDelay(ratios(pulses({ kind: 'timed', clock: 1e-6 }, 0.02)), 0.08, 1e-9);
+  });
+});
+
 describe('placePair', () => {
   const timing = { sample: 0.02, computingDelay: 0.005, integration: 'forward' as const };
   const loop = sampledLoop(withLags(0.06, 0.15, 0.05, 0.02), model, timing);
