@@ -15,6 +15,8 @@ import { chooseBins } from './measure-figure.ts';
 const LEAST_AMPLITUDE = fromKmh(0.5);
 /** Share of its amplitude that an oscillation keeps on a steady road, if the road is not what makes it. */
 const BY_ITSELF = 0.5;
+/** A limit cycle that pauses for no more turns than this is told as one. */
+const PAUSE_TURNS = 4;
 /** Bins blur the ends of a chain: it may look two turning points shorter. */
 const SCREENED_TURNINGS = 2 * LEAST_TURNS - 1;
 /** Bins see less of a swing than the samples do when a turning point lies across an edge. */
@@ -50,19 +52,47 @@ export function findLimitCycles(search: CycleSearch): LimitCycle[] {
   const holding = search.replayed.filter(({ plan }) => plan.controller.kind !== 'locked');
   return holding.flatMap((candidate, k) => {
     onCandidate?.(k, holding.length);
-    const stretches = swingingStretches(candidate, road, demand, leastAmplitude);
-    const { plan, result } = candidate;
-    let cause: CycleCause | null = null;
-    return stretches.flatMap(({ from, to }) => {
-      const trace = traceSpeeds(plan, nearestCheckpoint(result, from), to, from);
-      return oscillationsIn(trace, leastAmplitude).flatMap((oscillation): LimitCycle[] => {
-        const cycle = cycleOf(candidate, oscillation, cause);
-        if (cycle === null) return [];
-        cause = cycle.cause;
-        return [cycle];
-      });
-    });
+    return cyclesOfRun(candidate, swingingStretches(candidate, road, demand, leastAmplitude), leastAmplitude);
   });
+}
+
+function cyclesOfRun(
+  candidate: Replayed,
+  stretches: readonly Stretch[],
+  leastAmplitude: number,
+): LimitCycle[] {
+  const { plan, result } = candidate;
+  const cycles: LimitCycle[] = [];
+  for (const { from, to } of stretches) {
+    const trace = traceSpeeds(plan, nearestCheckpoint(result, from), to, from);
+    for (const oscillation of oscillationsIn(trace, leastAmplitude)) {
+      const last = cycles.at(-1);
+      const cycle = cycleOf(candidate, oscillation, last?.cause ?? null);
+      if (cycle === null) continue;
+      if (last !== undefined && goesOn(last, cycle)) cycles[cycles.length - 1] = joined(last, cycle);
+      else cycles.push(cycle);
+    }
+  }
+  return cycles;
+}
+
+/** Of the same cause, after no more than a few turns that were too small or too irregular to count. */
+function goesOn(one: LimitCycle, next: LimitCycle): boolean {
+  const turnLength = (one.to - one.from) / one.turns;
+  return one.cause === next.cause && next.from - one.to <= PAUSE_TURNS * turnLength;
+}
+
+function joined(one: LimitCycle, next: LimitCycle): LimitCycle {
+  const turns = one.turns + next.turns;
+  const mean = (a: number, b: number): number => (a * one.turns + b * next.turns) / turns;
+  return {
+    ...one,
+    to: next.to,
+    turns,
+    period: mean(one.period, next.period),
+    speedAmplitude: mean(one.speedAmplitude, next.speedAmplitude),
+    throttleAmplitude: mean(one.throttleAmplitude, next.throttleAmplitude),
+  };
 }
 
 /** Stretches of whole bins in which the record swings like a limit cycle [m]. */

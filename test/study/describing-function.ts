@@ -27,9 +27,9 @@ export interface Loop {
 
 export interface Swing {
   readonly period: number;
-  /** First harmonic of the true speed [m/s], and of the actuator before any play. */
+  /** First harmonic of the true speed [m/s], and of what the nonlinearity is fed, in throttle. */
   readonly speed: number;
-  readonly actuator: number;
+  readonly fed: number;
 }
 
 const lag = (time: number, w: number): Polar => ({
@@ -84,9 +84,8 @@ export function saturated(loop: Loop, limit: number): Swing {
     return (2 / Math.PI) * (Math.asin(q) + q * Math.sqrt(1 - q * q));
   };
   const x = falling(less, needed, 1, 1e6);
-  const command = limit * x;
-  const actuator = command * needed * lag(loop.actuatorLag, w).size;
-  return swing(loop, w, actuator, loop.forceGain);
+  const behind = needed * lag(loop.actuatorLag, w).size;
+  return swing(loop, w, limit * x, loop.forceGain * behind);
 }
 
 /**
@@ -97,8 +96,18 @@ export function stepped(loop: Loop, force: number): Swing {
   const w = crossover(loop);
   // Of the actuator's amplitude, what comes back: open(loop) is the way from there to there.
   const needed = 1 / open(loop, w).size;
-  const actuator = (2 * force) / (Math.PI * (needed - loop.forceGain));
-  return swing(loop, w, actuator, needed);
+  const fed = (2 * force) / (Math.PI * (needed - loop.forceGain));
+  return swing(loop, w, fed, needed);
+}
+
+/**
+ * A throttle that moves in steps of `force`, ahead of its lag, about the middle between two of them: the same relay, and
+ * no slope beside it.
+ */
+export function quantised(loop: Loop, force: number): Swing {
+  const relay = stepped({ ...loop, forceGain: 0 }, force);
+  const behind = lag(loop.actuatorLag, (2 * Math.PI) / relay.period).size;
+  return { ...relay, speed: relay.speed * behind };
 }
 
 /**
@@ -118,12 +127,11 @@ export function played(loop: Loop, slack: number): Swing {
   const round = (w: number): number => loop.forceGain * open(loop, w).size * describing(shareAt(w)).size;
   const w = falling(round, 1, 0.02, crossover(loop));
   const r = shareAt(w);
-  const actuator = slack / 2 / r;
-  return swing(loop, w, actuator, loop.forceGain * describing(r).size);
+  return swing(loop, w, slack / 2 / r, loop.forceGain * describing(r).size);
 }
 
-/** @param gain from actuator to wheel force [N] */
-function swing(loop: Loop, w: number, actuator: number, gain: number): Swing {
-  const speed = actuator * gain * times(lag(loop.driveLag, w), plant(loop, w)).size;
-  return { period: (2 * Math.PI) / w, speed, actuator };
+/** @param gain from what the nonlinearity is fed to the wheel force that is asked for [N] */
+function swing(loop: Loop, w: number, fed: number, gain: number): Swing {
+  const speed = fed * gain * times(lag(loop.driveLag, w), plant(loop, w)).size;
+  return { period: (2 * Math.PI) / w, speed, fed };
 }

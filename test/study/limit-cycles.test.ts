@@ -1,15 +1,17 @@
 import { describe, expect, it } from 'vitest';
+import { loopStability } from '../../src/control/loop-stability.ts';
 import type { LoopPlan } from '../../src/loop/plan.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
 import { traceSpeeds } from '../../src/loop/trace-speeds.ts';
+import { seededStream } from '../../src/numeric/random.ts';
 import { oscillationsIn } from '../../src/study/cycle-shape.ts';
 import { demandOf } from '../../src/study/demand.ts';
 import { findLimitCycles } from '../../src/study/limit-cycles.ts';
-import type { Drive } from '../../src/vehicle/drive.ts';
+import { engineDrive } from '../../src/vehicle/engine-drive.ts';
 import { expectClose } from '../compare.ts';
 import { roadOver, stations } from '../loop/scenes.ts';
-import { cyclesOf, kicked } from './cycle-scene.ts';
-import { type Loop, saturated, stepped } from './describing-function.ts';
+import { cyclesOf, engineOf, kicked, withFuelCut } from './cycle-scene.ts';
+import { crossover, type Loop, played, quantised, saturated, stepped } from './describing-function.ts';
 import { roadOf } from './road-of.ts';
 import { piOf, planOf, vehicleOf } from './vehicle-of.ts';
 
@@ -30,23 +32,15 @@ const loopOf = (loop: Pick<Loop, 'kp' | 'ki' | 'actuatorLag'> & Partial<Loop>): 
 const LEVEL = 0.5 * 1.2 * 0.58 * SPEED * SPEED + 215 * 9.80665 * 0.014;
 const gradeFor = (force: number): number => (force - LEVEL) / (215 * 9.80665);
 
+const LEVEL_GROUND = { grade: 0, headwind: 0, crosswind: 0, airDensity: 1.2, airTemperature: 288.15 };
+/** The speed under a force that steps to and fro is nearly a triangle, half of whose height is this many first harmonics. */
+const TRIANGLE = Math.PI ** 2 / 8;
+
 /** A throttle servo so slow, and a sensor so late, that the gain can be too high. */
 const slow = vehicleOf({ actuator: { lag: 1.5 }, drive: { peakForce: 292, closedThrottleForce: 40 } });
 const late = { ...slow, sensor: { ...slow.sensor, delay: 0.6 } };
+const gainsOf = (kp: number, ki: number) => piOf({ kp, ki, setpointWeight: 1 });
 const proportional = (kp: number) => piOf({ kp, ki: 0, setpointWeight: 1, antiWindup: { kind: 'none' } });
-
-/** A drive whose force steps down by `force` below a throttle. */
-function withFuelCut(drive: Drive, throttle: number, force: number): Drive {
-  const [closed, ...rest] = drive.cells;
-  return {
-    ...drive,
-    throttleEdges: Float64Array.of(throttle),
-    cells: Float64Array.of(closed! - force, ...rest, closed!, ...rest),
-    losses: Float64Array.of(...drive.losses, ...drive.losses),
-    withoutFuelCut: drive,
-    fuelCutBelow: throttle,
-  };
-}
 
 describe('a limit cycle', () => {
   it('of gains beyond the stability limit has the period and amplitude of the describing function', () => {
@@ -58,11 +52,25 @@ describe('a limit cycle', () => {
     expect(cycle).toMatchObject({ candidate: 'pi', cause: 'gains' });
     expectClose(cycle!.period, predicted.period, 0.05 * predicted.period);
     expectClose(cycle!.speedAmplitude, predicted.speed, 0.1 * predicted.speed);
-    expectClose(cycle!.throttleAmplitude, predicted.actuator, 0.1 * predicted.actuator);
     expect(cycle!.turns).toBeGreaterThan(20);
     expect(cycle!.from).toBeGreaterThan(90);
     expect(cycle!.to).toBeGreaterThan(2900);
     expect(cycle!.why).toMatch(/^With half the gains 0\.[0-2] km\/h of the amplitude of [0-9.]+ km\/h/);
+  });
+
+  it('of an integral that fights slack has the period and amplitude of the describing function of play', () => {
+    const predicted = played(loopOf({ kp: 0.2, ki: 0.2, actuatorLag: 0.06 }), 0.1);
+    const vehicle = vehicleOf({ actuator: { lag: 0.06, slack: 0.1 } });
+    const [cycle, ...more] = cyclesOf(planOf(kicked(4000), vehicle, gainsOf(0.2, 0.2)));
+    expect(more).toEqual([]);
+    expect(cycle).toMatchObject({ candidate: 'pi', cause: 'slack' });
+    expectClose(cycle!.period, predicted.period, 0.05 * predicted.period);
+    expectClose(cycle!.speedAmplitude, predicted.speed, 0.05 * predicted.speed);
+    // Behind the play the throttle moves by half of it less on either side.
+    expectClose(cycle!.throttleAmplitude, predicted.fed - 0.05, 0.1 * predicted.fed);
+    expect(cycle!.why).toMatch(
+      /^Without the slack of the actuator 0\.0 km\/h of the amplitude of 1\.0 km\/h/,
+    );
   });
 
   it('on a descent at the step of the fuel cut has the period and amplitude of a relay', () => {
@@ -70,17 +78,89 @@ describe('a limit cycle', () => {
     const vehicle = vehicleOf({ actuator: { lag: 0.6 } });
     const cut = { ...vehicle, drive: withFuelCut(vehicle.drive, 0.15, 150) };
     const predicted = stepped(loopOf({ kp: 0.2, ki: 0.04, actuatorLag: 0.6 }), 150);
-    const gains = piOf({ kp: 0.2, ki: 0.04, setpointWeight: 1 });
-    const [cycle, ...more] = cyclesOf(planOf(kicked(3000, gradeFor(-70)), cut, gains));
+    const [cycle, ...more] = cyclesOf(planOf(kicked(3000, gradeFor(-70)), cut, gainsOf(0.2, 0.04)));
     expect(more).toEqual([]);
     expect(cycle).toMatchObject({ candidate: 'pi', cause: 'fuel_cut' });
     expectClose(cycle!.period, predicted.period, 0.1 * predicted.period);
-    // The speed under a force that steps to and fro is nearly a triangle: pi^2 / 8 of its first harmonic.
-    const triangle = (Math.PI ** 2 / 8) * predicted.speed;
+    const triangle = TRIANGLE * predicted.speed;
     expectClose(cycle!.speedAmplitude, triangle, 0.1 * triangle);
     expect(cycle!.why).toMatch(/^Without the step of the fuel cut 0\.[01] km\/h of the amplitude/);
     // On a grade that needs more than the step it holds still.
-    expect(cyclesOf(planOf(kicked(3000, gradeFor(60)), cut, gains))).toEqual([]);
+    expect(cyclesOf(planOf(kicked(3000, gradeFor(60)), cut, gainsOf(0.2, 0.04)))).toEqual([]);
+  });
+
+  it('of an engine whose fuel is cut at closed throttle is found on the descent that needs the step', () => {
+    const vehicle = {
+      ...vehicleOf({ actuator: { lag: 0.8 } }),
+      drive: engineDrive(engineOf({ fuelCut: 4 })),
+    };
+    const plan = (grade: number) => planOf(kicked(3000, grade), vehicle, gainsOf(0.1, 0.02));
+    const [cycle] = cyclesOf(plan(-0.1));
+    expect(cycle?.cause).toBe('fuel_cut');
+    expect(cyclesOf(plan(-0.03))).toEqual([]);
+  });
+
+  it('of a throttle that moves in steps has the period and amplitude of a relay', () => {
+    // Needed is the middle between two steps of a tenth of 1040 N.
+    const vehicle = vehicleOf({ actuator: { lag: 0.8, resolution: 0.1 }, drive: { peakForce: 1000 } });
+    const stepper = { ...vehicle, sensor: { ...vehicle.sensor, delay: 0.3 } };
+    const loop = loopOf({ kp: 0.1, ki: 0.02, actuatorLag: 0.8, delay: 0.31, forceGain: 1040 });
+    const predicted = quantised(loop, 104);
+    const road = kicked(3000, gradeFor(1040 * 0.35 - 40));
+    const [cycle, ...more] = cyclesOf(planOf(road, stepper, gainsOf(0.1, 0.02)));
+    expect(more).toEqual([]);
+    expect(cycle).toMatchObject({ candidate: 'pi', cause: 'resolution' });
+    expectClose(cycle!.period, predicted.period, 0.1 * predicted.period);
+    expectClose(cycle!.speedAmplitude, predicted.speed, 0.15 * predicted.speed);
+  });
+
+  it('of a high gain on counted pulses has the period of the loop that is late by half of the window', () => {
+    const vehicle = vehicleOf({ actuator: { lag: 0.5 }, drive: { peakForce: 600 } });
+    const loop = { kp: 1, ki: 0.1, actuatorLag: 0.5, forceGain: 640 };
+    const window = 0.5;
+    const counting = {
+      ...vehicle.sensor,
+      pulses: { spacing: 0.24, reading: { kind: 'counted', window } },
+    } as const;
+    const [cycle, ...more] = cyclesOf(
+      planOf(kicked(3000), { ...vehicle, sensor: counting }, gainsOf(1, 0.1)),
+    );
+    expect(more).toEqual([]);
+    expect(cycle).toMatchObject({ candidate: 'pi', cause: 'pulse_counting' });
+    const predicted = (2 * Math.PI) / crossover(loopOf({ ...loop, delay: 0.03 + window / 2 }));
+    expectClose(cycle!.period, predicted, 0.1 * predicted);
+    // The quantum is 0.48 m/s: half of it on either side at the least.
+    expect(cycle!.speedAmplitude).toBeGreaterThan(0.24);
+    expect(cyclesOf(planOf(kicked(3000), vehicle, gainsOf(1, 0.1)))).toEqual([]);
+  });
+
+  it('of one pulse a turn, far coarser than the error, is found though the margins are there', () => {
+    // 1.9 m in 0.25 s: a quantum of 7.6 m/s. The window makes the loop late by an eighth of a second.
+    const vehicle = vehicleOf({ actuator: { lag: 0.5 }, drive: { peakForce: 600 } });
+    const pulses = { spacing: 1.9, reading: { kind: 'counted', window: 0.25 } } as const;
+    const one = { ...vehicle, sensor: { ...vehicle.sensor, pulses } };
+    const found = cyclesOf(planOf(kicked(4000), one, gainsOf(0.5, 0.3)));
+    expect(new Set(found.map(({ cause }) => cause))).toEqual(new Set(['pulse_counting']));
+    const margins = loopStability(one, gainsOf(0.5, 0.3), [SPEED], LEVEL_GROUND);
+    expect(margins?.gainMargin).toBeGreaterThan(1.5);
+  });
+
+  it('of an automatic gearbox that hunts has the period of its shifts', () => {
+    const vehicle = {
+      ...vehicleOf({ actuator: { lag: 0.2 } }),
+      drive: engineDrive(engineOf({ automatic: true })),
+    };
+    const plan = (grade: number) => planOf(kicked(3000, grade), vehicle, gainsOf(0.3, 0.1));
+    const hunting = plan(0.08);
+    const [cycle, ...more] = cyclesOf(hunting);
+    expect(more).toEqual([]);
+    expect(cycle?.cause).toBe('shifting');
+    const up = runLoop(hunting).shifts.filter(({ from, to }) => to > from && from > 0);
+    const first = up[up.length - 21]!;
+    expectClose(cycle!.period, (up.at(-1)!.time - first.time) / 20, 0.1);
+    // On a gentler climb it stays in its gear.
+    expect(runLoop(plan(0.03)).shifts).toEqual([]);
+    expect(cyclesOf(plan(0.03))).toEqual([]);
   });
 });
 
@@ -98,6 +178,23 @@ describe('no limit cycle', () => {
     const wave = roadOver(stations(4000, 2), { headwind: (x) => 12 * Math.sin((2 * Math.PI * x) / 150) });
     const plan = planOf(wave, vehicleOf({ drive: { peakForce: 600 } }), piOf({ kp: 0.05, ki: 0.005 }));
     expectClose(periodsIn(plan), [9], 0.2);
+    expect(cyclesOf(plan)).toEqual([]);
+  });
+
+  it('is a gusty wind, under gains that ring', () => {
+    // Gusts of 3 m/s, correlated over 30 m; gains at four fifths of the limit swing with them all the way.
+    const stream = seededStream(4);
+    let gust = 0;
+    const windy = roadOver(stations(4000, 10), {
+      headwind: () => {
+        gust = 0.717 * gust + 0.697 * 3 * stream.normal();
+        return 4 + gust;
+      },
+    });
+    const plan = planOf(windy, late, proportional(0.82));
+    const trace = traceSpeeds(plan, { settledAt: 0 }, 4000, 0);
+    const errors = trace.speed.subarray(0, trace.size).map((v) => Math.abs(v - SPEED));
+    expect(errors.filter((error) => error > LEAST).length).toBeGreaterThan(0.2 * trace.size);
     expect(cyclesOf(plan)).toEqual([]);
   });
 
