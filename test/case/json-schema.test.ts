@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
 import { parse } from 'yaml';
 import { caseJsonSchema, vehicleJsonSchema } from '../../src/case/json-schema.ts';
@@ -67,14 +67,16 @@ const schemas = { case: caseJsonSchema() as Schema, vehicle: vehicleJsonSchema()
 const read = (path: string): unknown =>
   parse(readFileSync(new URL(`../../${path}`, import.meta.url), 'utf8'));
 
-it.each(['routes/harrow-gap.yaml', 'routes/one-hill.yaml', 'routes/tarrow-saltings.yaml'])(
-  'accepts %s',
-  (path) => {
-    expect(accepts(schemas.case, read(path))).toBe(true);
-  },
-);
+const filesIn = (folder: string): string[] =>
+  readdirSync(new URL(`../../${folder}/`, import.meta.url))
+    .filter((name) => name.endsWith('.yaml'))
+    .map((name) => `${folder}/${name}`);
 
-it.each(['routes/vehicles/proving-125.yaml', 'routes/vehicles/proving-e.yaml'])('accepts %s', (path) => {
+it.each(filesIn('routes'))('accepts %s', (path) => {
+  expect(accepts(schemas.case, read(path))).toBe(true);
+});
+
+it.each(filesIn('routes/vehicles'))('accepts %s', (path) => {
   expect(accepts(schemas.vehicle, read(path))).toBe(true);
 });
 

@@ -8,11 +8,19 @@ import { InputError } from '../../src/problems/input-error.ts';
 
 const route = (name: string): string =>
   readFileSync(new URL(`../../routes/${name}`, import.meta.url), 'utf8');
-const CASES = ['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml'] as const;
-const VEHICLES = ['vehicles/proving-125.yaml', 'vehicles/proving-e.yaml'] as const;
+const CASES = ['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml', 'harrow-shifts.yaml'] as const;
+const INLINED = ['one-hill.yaml', 'harrow-shifts.yaml'] as const;
+const VEHICLES = [
+  'vehicles/proving-125.yaml',
+  'vehicles/proving-e.yaml',
+  'vehicles/proving-belt.yaml',
+  'vehicles/proving-125-cable.yaml',
+] as const;
 const READERS = [
   [readCaseFile, route('harrow-gap.yaml')],
   [readVehicleFile, route('vehicles/proving-e.yaml')],
+  [readVehicleFile, route('vehicles/proving-125.yaml')],
+  [readVehicleFile, route('vehicles/proving-belt.yaml')],
 ] as const;
 
 /** Reads; whatever is refused must be refused properly, with a place. */
@@ -75,7 +83,7 @@ it('refuses properly, whatever is cut out of a file or put into it', () => {
 
 it('refuses properly, whatever stands under a key', () => {
   const keys =
-    'track road wind air vehicle hold rider candidates segments requirements output mass road_load drive actuator'.split(
+    'track road wind air vehicle hold rider candidates segments requirements output mass road_load drive actuator speed_sensor traction'.split(
       ' ',
     );
   fc.assert(
@@ -161,7 +169,7 @@ const inlined = (name: string): unknown => ({
 
 it.each([
   ...CASES.map((name) => [name, readCaseFile, parse(route(name)) as unknown] as const),
-  ...CASES.map((name) => [`${name} with its vehicle inside`, readCaseFile, inlined(name)] as const),
+  ...INLINED.map((name) => [`${name} with its vehicle inside`, readCaseFile, inlined(name)] as const),
   ...VEHICLES.map((name) => [name, readVehicleFile, parse(route(name)) as unknown] as const),
 ])('refuses properly %s with any one key misspelt or gone', (_, read, file) => {
   const ways: readonly ((key: string) => string | null)[] = [

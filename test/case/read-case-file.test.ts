@@ -1,7 +1,9 @@
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { vehicleOf } from '../../src/case/vehicle-of.ts';
+import { vehicleOfCase } from '../../src/case/vehicle-of-case.ts';
 import { InputError } from '../../src/problems/input-error.ts';
 
 const FIVE_LINES = `track: {profile: [{length_m: 500, grade_pct: 0}, {length_m: 1500, grade_pct: 6}]}
@@ -12,6 +14,12 @@ candidates:
 `;
 const route = (name: string): string =>
   readFileSync(new URL(`../../routes/${name}`, import.meta.url), 'utf8');
+
+const CASES = readdirSync(new URL('../../routes/', import.meta.url)).filter((name) => name.endsWith('.yaml'));
+
+const VEHICLES = readdirSync(new URL('../../routes/vehicles/', import.meta.url)).map(
+  (name) => `vehicles/${name}`,
+);
 
 /** What reading throws. */
 function refused(read: () => unknown): InputError {
@@ -33,10 +41,14 @@ it('reads a step of hill in five lines', () => {
 });
 
 it('reads the demo cases and vehicles', () => {
-  for (const name of ['harrow-gap', 'one-hill', 'tarrow-saltings'])
-    expect(() => readCaseFile(route(`${name}.yaml`), `${name}.yaml`)).not.toThrow();
-  for (const name of ['proving-125', 'proving-e'])
-    expect(() => readVehicleFile(route(`vehicles/${name}.yaml`), `${name}.yaml`)).not.toThrow();
+  expect(CASES.length).toBeGreaterThanOrEqual(8);
+  for (const name of CASES) {
+    const document = readCaseFile(route(name), name);
+    expect(route(name).split('\n')[0], name).toContain('invented');
+    const vehicle = document.vehicleFile!;
+    expect(route(vehicle).split('\n')[0], vehicle).toMatch(/Invented|invented/);
+    expect(() => vehicleOfCase(document, readVehicleFile(route(vehicle), vehicle)), name).not.toThrow();
+  }
 });
 
 it('reads JSON, byte order mark, Windows line ends and aliases as YAML', () => {
@@ -233,7 +245,7 @@ it('keeps a key named __proto__ a key', () => {
   expect(problems.map(({ code, place }) => [code, place.line])).toEqual([['unknown-key', 6]]);
 });
 
-it.each(['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml'])(
+it.each(CASES)(
   'means by each default of %s what it says: written out, nothing changes and none is left',
   (name) => {
     const { file, defaults } = readCaseFile(route(name), name);
@@ -264,3 +276,16 @@ it.each(['harrow-gap.yaml', 'one-hill.yaml', 'tarrow-saltings.yaml'])(
     expect(plain(written.file)).toEqual(plain(file));
   },
 );
+
+it.each(VEHICLES)('means by each default of %s what it says: written out, it is the same vehicle', (name) => {
+  const { defaults } = readVehicleFile(route(name), name);
+  const values = defaults.filter(({ value }) => value !== 'none');
+  expect(values.length).toBeGreaterThan(5);
+  const written = readVehicleFile(
+    route(name),
+    name,
+    values.map(({ key, value }) => `vehicle.${key}=${value}`),
+  );
+  expect(written.defaults.filter(({ value }) => value !== 'none')).toEqual([]);
+  expect(vehicleOf(written)).toEqual(vehicleOf(readVehicleFile(route(name), name)));
+});
