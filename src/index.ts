@@ -38,14 +38,19 @@ export type {
   FigureValues,
   Hill,
   HillOutcome,
+  LimitCycle,
   None,
   Requirement,
   RequirementFinding,
   Segment,
 } from './study/findings.ts';
+export { type CycleSearch, findLimitCycles } from './study/limit-cycles.ts';
 export { readTrack } from './track/read-track.ts';
 export type { Profile, Repair, Track } from './track/track.ts';
 export type { Belt, Drive, Gear, Gearbox } from './vehicle/drive.ts';
 export { type ElectricDriveSpec, electricDrive } from './vehicle/electric-drive.ts';
+export { engineDrive } from './vehicle/engine-drive.ts';
+export type { CombustionSpec, EngineDriveSpec, VariatorDriveSpec } from './vehicle/engine-spec.ts';
 export { type ForceDriveSpec, forceDrive } from './vehicle/force-drive.ts';
+export { variatorDrive } from './vehicle/variator-drive.ts';
 export type { RoadLoad, Vehicle } from './vehicle/vehicle.ts';

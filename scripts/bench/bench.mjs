@@ -5,6 +5,7 @@ import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { must, root } from '../run.mjs';
+import { benchKinds } from './kinds.mjs';
 import { benchBytes, benchPlan, benchRoad } from './scenario.mjs';
 
 if (!existsSync(join(root, 'dist/index.js'))) must('npm', ['run', '-s', 'build']);
@@ -73,6 +74,28 @@ try {
   }
   show('fast / default scheme', factor(median(rounds.map((r) => r.f.seconds / r.e.seconds))), '(goal 0.6)');
   show('  default, ns a tick', nsPerTick(median(rounds.map((r) => r.e.seconds)), last.e.result).toFixed(0));
+
+  console.log('\nThe same road, default scheme: vehicles of every kind / the plain force, ns a tick');
+  const plain = benchPlan(library, road, 'exact');
+  const kinds = benchKinds(library, plain.vehicle).map((kind) => ({
+    ...kind,
+    plan: { ...plain, vehicle: kind.vehicle },
+    ratios: [],
+  }));
+  const perTick = (plan) => {
+    const { seconds, result } = cpu(() => library.runLoop(plan));
+    if (result.status !== 'completed') throw new Error(`a run of the bench ended: ${result.status}`);
+    return nsPerTick(seconds, result);
+  };
+  for (let i = 0; i < 2 + ROUNDS; i++)
+    for (const { plan, ratios } of kinds) {
+      const ratio = perTick(plan) / perTick(plain);
+      // The first rounds warm up.
+      if (i >= 2) ratios.push(ratio);
+    }
+  for (const { label, ratios } of kinds)
+    show(`  ${label}`, factor(median(ratios)), `(best ${factor(Math.min(...ratios))}; goal 1.5)`);
+  console.log('');
 
   const long = benchRoad(1000 * KM);
   const short = benchRoad(20 * KM);
