@@ -86,6 +86,8 @@ function askedOf(document: CaseDocument, drive: DriveFileOf<'engine'>): Asked[] 
     if (change === undefined) return { path, speedKmh, gears: [start] };
     return { path, speedKmh, gears: 'at_km' in change ? [gearAt(change.at_km)] : planned };
   });
+  // Which set speed is in force at a shift is not known where it changes at a time.
+  if (hold.changes.some((change) => 'at_s' in change)) return speeds;
   const shifts = hold.shifts.map(({ at_km, gear }, i): Asked => {
     const change = hold.changes.findLast((one) => 'at_km' in one && one.at_km <= at_km);
     const speedKmh = change?.set_speed_kmh ?? hold.set_speed_kmh;

@@ -54,6 +54,23 @@ test('a change of the set speed beyond the end of the road is refused, beside al
   ).toMatch(/^--set hold\.changes\.0\.at_km=7: hold\.changes\.0\.at_km: /);
 });
 
+test('a shift of the rider beyond the end of the road is refused at its key', () => {
+  const engine =
+    'kind: engine, torque: {peak_nm: 10, peak_rpm: 6000, falloff: 0.5}, gear_ratios: [25, 15, 11, 9], wheel_radius_m: 0.3, gearbox: {kind: clutch}';
+  const text = CASE(', gear: 4, shifts: [{at_km: 1, gear: 3}, {at_km: 3.3, gear: 4}]').replace(
+    'kind: force, peak_force_n: 320, closed_throttle_force_n: 40',
+    engine,
+  );
+  expect(refusal(text).problems).toMatchObject([
+    {
+      code: 'beyond-the-road',
+      place: { line: 6, key: 'hold.shifts.1.at_km' },
+      found: '3.3 km',
+      allowed: 'less than 3.3 km, the length of the road',
+    },
+  ]);
+});
+
 test('on a road there and back the whole way counts', () => {
   const { warnings } = run(CASE('', requirement('{from_km: 4, to_km: 6.6}')), ['track.direction=both']);
   expect(warnings.map(({ code }) => code)).toEqual(['turn-at-speed']);
