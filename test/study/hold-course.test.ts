@@ -1,8 +1,10 @@
 import { describe, expect, it } from 'vitest';
+import { runLoop } from '../../src/loop/run-loop.ts';
 import { figureRow } from '../../src/study/figure-table.ts';
-import { courseOfRun } from '../../src/study/hold-course.ts';
+import { courseOfRun, nominalCourse } from '../../src/study/hold-course.ts';
 import { measureFigure } from '../../src/study/measure-figure.ts';
 import { expectClose } from '../compare.ts';
+import { gearedVehicle } from './geared.ts';
 import { recordOf, resultOf } from './record-of.ts';
 import { roadOf } from './road-of.ts';
 import { STIFF, study } from './scene.ts';
@@ -53,6 +55,30 @@ describe('the course of a run', () => {
     const { changes: made, settling } = courseOfRun({ plan: late, result: RESULT });
     expect(made[0]!.at).toBe(Number.POSITIVE_INFINITY);
     expect(settling.some(({ from }) => from <= 1000)).toBe(false);
+  });
+});
+
+describe('the course around a shift of the rider', () => {
+  const gearbox = { kind: 'clutch', open: 0.5, resume: 1.5 } as const;
+  const rider = { brakesAbove: null, shifts: [{ distance: 400, gear: 2 }] };
+
+  it('grants the time of the gearbox and 10 s, by the road and by the run', () => {
+    const speed = HOLD_60.setSpeed;
+    const vehicle = gearedVehicle({ gearbox });
+    const nominal = nominalCourse(ROAD, HOLD_60, vehicle, rider.shifts);
+    expectClose(nominal.settling[0]!.from, 400, 1e-9);
+    expectClose(nominal.settling[0]!.to, 400 + 12 * speed, 1e-9);
+    expect(nominal.following).toEqual([]);
+    const plan = planOf(ROAD, vehicle, STIFF, { rider });
+    const run = courseOfRun({ plan, result: runLoop(plan) });
+    expectClose(run.settling[0]!.from, 400, 0.34);
+    // The speed falls a little while the clutch is open.
+    expectClose(run.settling[0]!.to, 400 + 12 * speed, 2);
+    expect(run.following).toEqual([]);
+  });
+
+  it('is nothing where the gearbox shifts by itself or not at all', () => {
+    expect(nominalCourse(ROAD, HOLD_60, gearedVehicle(), rider.shifts).settling).toEqual([]);
   });
 });
 

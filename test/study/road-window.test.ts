@@ -3,6 +3,7 @@ import { replay } from '../../src/loop/replay.ts';
 import { valueAt } from '../../src/road/lookup.ts';
 import { cutRoad, windowPlan } from '../../src/study/road-window.ts';
 import { expectClose } from '../compare.ts';
+import { gearedVehicle } from './geared.ts';
 import { roadOf } from './road-of.ts';
 import { STIFF } from './scene.ts';
 import { HOLD_60, planOf, vehicleOf } from './vehicle-of.ts';
@@ -72,5 +73,36 @@ describe('a plan over a window', () => {
     expect(part.hold.setSpeed).toBe(14);
     expect(part.hold.startSpeed).toBe(14);
     expect(part.hold.changes).toEqual([{ at: { distance: 400 }, setSpeed: 12, ramp: null }]);
+  });
+});
+
+describe('a plan over a window with gears', () => {
+  const shifts = [
+    { distance: 300, gear: 2 },
+    { distance: 900, gear: 1 },
+    { distance: 2400, gear: 3 },
+  ];
+  const plan = planOf(ROAD, gearedVehicle({ gearbox: { kind: 'clutch', open: 0.5, resume: 1 } }), STIFF, {
+    rider: { brakesAbove: null, shifts },
+  });
+
+  it('starts in the gear that the rider has there and keeps the shifts inside', () => {
+    const part = windowPlan(plan, 500, 2000);
+    expect(part.vehicle.drive.gear).toBe(2);
+    expect(part.rider.shifts).toEqual([{ distance: 400, gear: 1 }]);
+    // 300 N in the third gear, told of the gear that is engaged.
+    expectClose(part.vehicle.drive.peakForce, 300, 1e-9);
+  });
+
+  it('rides them as the whole road does', () => {
+    const whole = replay(plan, { settledAt: 600 }, 1900).series;
+    const cut = replay(windowPlan(plan, 600, 2000), { settledAt: 0 }, 1300).series;
+    expect(Math.max(...cut.gear.subarray(0, cut.size))).toBe(2);
+    expect(Math.min(...cut.gear.subarray(0, cut.size))).toBe(1);
+    expectClose(
+      Float64Array.from({ length: 180 }, (_, k) => cut.speed[20 * k]!),
+      Float64Array.from({ length: 180 }, (_, k) => whole.speed[20 * k]!),
+      1e-8,
+    );
   });
 });
