@@ -92,19 +92,14 @@ function powerAt(f: Float64Array, shaftSpeed: number, torque: number): number {
   const columns = f[fit.F_TORQUE_COUNT];
   const i = cellFrom(f, f[fit.F_SPEEDS], f[fit.F_SPEED_COUNT], shaftSpeed);
   const j = cellFrom(f, f[fit.F_TORQUES], columns, torque);
-  const u = f[fit.F_SPEEDS] + i;
-  const t = f[fit.F_TORQUES] + j;
-  const across = (shaftSpeed - f[u]) / (f[u + 1] - f[u]);
-  const along = (torque - f[t]) / (f[t + 1] - f[t]);
-  const corner = f[fit.F_POWER] + i * columns + j;
-  const low = f[corner] + along * (f[corner + 1] - f[corner]);
-  const high = f[corner + columns] + along * (f[corner + columns + 1] - f[corner + columns]);
-  return Math.max(f[fit.F_LEAST], low + across * (high - low));
+  const cell = f[fit.F_POWER] + 4 * (i * (columns + 1) + j);
+  const power = f[cell] + f[cell + 1] * shaftSpeed + torque * (f[cell + 2] + f[cell + 3] * shaftSpeed);
+  return Math.max(power, f[fit.F_LEAST]);
 }
 
-/** Cell of a value among so many knots from a place on; beyond the ends the outer cell. */
+/** Cell of a value among so many inner edges from a place on. */
 function cellFrom(f: Float64Array, place: number, count: number, value: number): number {
   let cell = 0;
-  while (cell < count - 2 && value >= f[place + cell + 1]) cell++;
+  while (cell < count && value >= f[place + cell]) cell++;
   return cell;
 }

@@ -1,8 +1,9 @@
 import { exp } from '../numeric/elementary.ts';
 import type { Gearbox } from '../vehicle/drive.ts';
-import type { EnergySource, Heating, ShareOverCharge } from '../vehicle/energy-source.ts';
+import type { EnergySource, Heating, PowerMap, ShareOverCharge } from '../vehicle/energy-source.ts';
 import type { SpeedSensor } from '../vehicle/vehicle.ts';
 import type { LoopPlan } from './plan.ts';
+import { noiseWords } from './sensor-noise.ts';
 
 /**
  * The devices that work once a sample, compiled to flat arrays, because numbers that closures or objects hold are boxed
@@ -25,11 +26,12 @@ export const F_READING = 0;
 export const SPEED_READING = 0;
 export const COUNTED_READING = 1;
 export const TIMED_READING = 2;
-/** Way between two pulses [m], window in samples and in seconds, resolution of the clock [s]. */
+/** Way between two pulses [m]; window in samples; ticks of the clock in a sample. */
 export const F_SPACING = 1;
 export const F_WINDOW = 2;
-export const F_WINDOW_TIME = 3;
-export const F_CLOCK = 4;
+export const F_CLOCK_RATE = 3;
+/** Speed of one pulse in the window, or of a period of one tick of the clock [m/s]. */
+export const F_SPEED_RATE = 4;
 /** Transport, computing and dead time in samples; sample [s]; rows of the ring. */
 export const F_DELAY = 5;
 export const F_SAMPLE = 6;
@@ -40,7 +42,7 @@ export const F_KEPT = 9;
 export const F_BEFORE = 10;
 export const F_NOW = 11;
 export const F_NOISE = 12;
-/** Seed: low and high word. */
+/** Two words of the seed. */
 export const F_SEED = 13;
 export const F_SENSOR_SIZE = 15;
 
@@ -51,7 +53,7 @@ export const F_LINES = 2;
 
 // --- source: a head, then the arrays whose places and lengths it holds ---
 export const F_BATTERY = 0;
-/** Shaft speeds, torques, power row by row; the cell in which the map was read last. */
+/** Inner edges of the map's cells over shaft speed and torque, then the cells: power c0 + c1 w + T (c2 + c3 w). */
 export const F_SPEEDS = 1;
 export const F_SPEED_COUNT = 2;
 export const F_TORQUES = 3;
@@ -61,6 +63,7 @@ export const F_LEAST = 6;
 export const F_IDLE = 7;
 /** [J]; 0: not known, the charge stands still. */
 export const F_CAPACITY = 8;
+/** Corners of a line over the charge, then its shares; count 0: none. */
 export const F_SAG = 9;
 export const F_SAG_COUNT = 10;
 export const F_ACCEPTANCE = 11;
@@ -106,11 +109,12 @@ function sensorOf(sensor: SpeedSensor, delay: number, sample: number): Float64Ar
     if (reading.kind === 'counted') {
       f[F_READING] = COUNTED_READING;
       f[F_WINDOW] = reading.window / sample;
-      f[F_WINDOW_TIME] = reading.window;
+      f[F_SPEED_RATE] = pulses.spacing / reading.window;
       reach += f[F_WINDOW];
     } else {
       f[F_READING] = TIMED_READING;
-      f[F_CLOCK] = reading.clock;
+      f[F_CLOCK_RATE] = sample / reading.clock;
+      f[F_SPEED_RATE] = pulses.spacing / reading.clock;
       reach += 1;
     }
   }
@@ -123,9 +127,7 @@ function sensorOf(sensor: SpeedSensor, delay: number, sample: number): Float64Ar
   f[F_NOW] = 1 - mean;
   if (noise !== null) {
     f[F_NOISE] = noise.sd;
-    const seed = Math.trunc(noise.seed);
-    f[F_SEED] = (seed % 4294967296) >>> 0;
-    f[F_SEED + 1] = Math.floor(Math.abs(seed) / 4294967296) >>> 0;
+    f.set(noiseWords(noise.seed), F_SEED);
   }
   return f;
 }
@@ -146,11 +148,11 @@ function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Floa
     return place;
   };
   f[F_BATTERY] = battery === null ? 0 : 1;
-  f[F_SPEEDS] = append(map.shaftSpeed);
-  f[F_SPEED_COUNT] = map.shaftSpeed.length;
-  f[F_TORQUES] = append(map.torque);
-  f[F_TORQUE_COUNT] = map.torque.length;
-  f[F_POWER] = append(map.power);
+  f[F_SPEEDS] = append(map.shaftSpeed.subarray(1, -1));
+  f[F_SPEED_COUNT] = map.shaftSpeed.length - 2;
+  f[F_TORQUES] = append(map.torque.subarray(1, -1));
+  f[F_TORQUE_COUNT] = map.torque.length - 2;
+  f[F_POWER] = append(powerCells(map));
   f[F_LEAST] = map.least;
   f[F_IDLE] = idleSpeed;
   f[F_CAPACITY] = battery?.capacity ?? 0;
@@ -165,6 +167,25 @@ function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Floa
   [f[F_ACCEPTANCE], f[F_ACCEPTANCE_COUNT]] = line(battery?.acceptance ?? null);
   writeHeating(f, battery?.heating ?? null, sample);
   return Float64Array.from(f);
+}
+
+/** The bilinear law of every cell, row by row: c0 + c1 w + T (c2 + c3 w). */
+function powerCells({ shaftSpeed: w, torque, power }: PowerMap): Float64Array {
+  const columns = torque.length - 1;
+  const cells = new Float64Array(4 * (w.length - 1) * columns);
+  for (let i = 0; i + 1 < w.length; i++)
+    for (let j = 0; j < columns; j++) {
+      const corner = i * torque.length + j;
+      const above = corner + torque.length;
+      const along = (row: number): number => (power[row + 1] - power[row]) / (torque[j + 1] - torque[j]);
+      const width = w[i + 1] - w[i];
+      const twist = (along(above) - along(corner)) / width;
+      const slope = (power[above] - power[corner]) / width - twist * torque[j];
+      const perTorque = along(corner) - twist * w[i];
+      const level = power[corner] - slope * w[i] - torque[j] * (perTorque + twist * w[i]);
+      cells.set([level, slope, perTorque, twist], 4 * (i * columns + j));
+    }
+  return cells;
 }
 
 function writeHeating(f: number[], heating: Heating | null, sample: number): void {

@@ -7,10 +7,12 @@ import { normalAt } from './sensor-noise.ts';
 // Such a sensor has the history to itself: two rows of its own, then a ring of [distance travelled, speed] at the start
 // of a sample; between two samples the distance is the cubic through both.
 
-/** Samples sensed; time of the last pulse and its period in ticks of the clock. */
+/** Samples sensed; pulses seen, time of the last and its period in ticks of the clock; place of the latest row. */
 const SAMPLES = HISTORY;
 const PULSE_STAMP = HISTORY + 1;
 const PULSE_PERIOD = HISTORY + 2;
+const LATEST = HISTORY + 3;
+const PULSES = HISTORY + 4;
 const RING = HISTORY + fit.SENSOR_ROWS * HISTORY_STRIDE;
 
 /**
@@ -27,9 +29,10 @@ const RING = HISTORY + fit.SENSOR_ROWS * HISTORY_STRIDE;
  */
 export function senseSpeed({ s, fittings }: Machine): void {
   const f = fittings.sensor;
-  const rows = f[fit.F_ROWS];
   const k = s[SAMPLES];
-  const row = RING + HISTORY_STRIDE * (k % rows);
+  const next = (s[LATEST] + HISTORY_STRIDE) | 0;
+  const row = next < s.length ? next : RING;
+  s[LATEST] = row;
   s[row] = s[TRAVELLED];
   s[row + 1] = s[SPEED];
   const kind = f[fit.F_READING];
@@ -38,14 +41,18 @@ export function senseSpeed({ s, fittings }: Machine): void {
   if (kind === fit.COUNTED_READING) {
     const spacing = f[fit.F_SPACING];
     const count =
-      Math.floor(travelledAgo(s, f, k, delay) / spacing) -
-      Math.floor(travelledAgo(s, f, k, delay + f[fit.F_WINDOW]) / spacing);
-    reading = (count * spacing) / f[fit.F_WINDOW_TIME];
-  } else if (kind === fit.TIMED_READING) reading = timePulses(s, f, k);
-  else reading = speedAgo(s, f, k, delay);
+      Math.floor(travelledAgo(s, f, delay) / spacing) -
+      Math.floor(travelledAgo(s, f, delay + f[fit.F_WINDOW]) / spacing);
+    reading = count * f[fit.F_SPEED_RATE];
+  } else if (kind === fit.TIMED_READING) {
+    timePulses(s, f, k);
+    const since = Math.floor((k - delay) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
+    reading = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
+  } else reading = speedAgo(s, f, delay);
 
   reading *= f[fit.F_SCALE];
-  if (f[fit.F_NOISE] > 0) reading += f[fit.F_NOISE] * normalAt(f[fit.F_SEED], f[fit.F_SEED + 1], k);
+  const sd = f[fit.F_NOISE];
+  if (sd > 0) reading += sd * normalAt(f[fit.F_SEED], f[fit.F_SEED + 1], k);
   s[SENSED] = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * s[SENSED_MORE] + f[fit.F_NOW] * reading;
   s[SENSED_MORE] = reading;
   s[BUS_MEASURED] = s[SENSED];
@@ -56,103 +63,106 @@ export function senseSpeed({ s, fittings }: Machine): void {
 export function settleSensor({ s, fittings }: Machine): void {
   const f = fittings.sensor;
   if (f.length === 0) return;
-  const rows = f[fit.F_ROWS];
   const v = s[SPEED];
-  const k = s[TICK];
   const sample = f[fit.F_SAMPLE];
-  for (let back = 1; back <= rows; back++) {
-    const row = RING + HISTORY_STRIDE * ((((k - back) % rows) + rows) % rows);
-    s[row] = s[TRAVELLED] - v * sample * back;
+  s[SAMPLES] = s[TICK];
+  s[LATEST] = s.length - HISTORY_STRIDE;
+  for (let row = RING; row < s.length; row += HISTORY_STRIDE) {
+    s[row] = s[TRAVELLED] - (v * sample * (s.length - row)) / HISTORY_STRIDE;
     s[row + 1] = v;
   }
-  s[SAMPLES] = k;
   if (f[fit.F_READING] === fit.TIMED_READING) {
     const spacing = f[fit.F_SPACING];
-    const read = (k - 1 - f[fit.F_DELAY]) * sample;
     const travelled = s[TRAVELLED] - v * (1 + f[fit.F_DELAY]) * sample;
-    const last = read - (travelled - spacing * Math.floor(travelled / spacing)) / v;
-    s[PULSE_STAMP] = Math.floor(last / f[fit.F_CLOCK]);
-    s[PULSE_PERIOD] = spacing / v / f[fit.F_CLOCK];
+    s[PULSES] = Math.floor(travelled / spacing);
+    const since = (travelled - spacing * s[PULSES]) / (v * sample);
+    s[PULSE_STAMP] = Math.floor((s[TICK] - 1 - f[fit.F_DELAY] - since) * f[fit.F_CLOCK_RATE]);
+    s[PULSE_PERIOD] = f[fit.F_SPEED_RATE] / v;
   }
   s[SENSED] = s[SENSED_MORE] = f[fit.F_SCALE] * v;
 }
 
-/** Row of sample k - back. */
-function rowOf(f: Float64Array, k: number, back: number): number {
-  const rows = f[fit.F_ROWS];
-  return RING + HISTORY_STRIDE * ((k - back + rows * (k < back ? 1 : 0)) % rows);
+/** Row so many samples before the latest. */
+function rowBack(s: Float64Array, back: number): number {
+  const row = (s[LATEST] - HISTORY_STRIDE * back) | 0;
+  return row >= RING ? row : row + s.length - RING;
+}
+
+function rowAfter(s: Float64Array, row: number): number {
+  return row + HISTORY_STRIDE < s.length ? row + HISTORY_STRIDE : RING;
+}
+
+// Between two rows, at a share x of the sample h: D = D0 + h v0 x + bend x^2 + twist x^3, through the speeds at both ends.
+function bendOf(s: Float64Array, old: number, next: number, h: number): number {
+  return 3 * (s[next] - s[old]) - h * (2 * s[old + 1] + s[next + 1]);
+}
+function twistOf(s: Float64Array, old: number, next: number, h: number): number {
+  return h * (s[old + 1] + s[next + 1]) - 2 * (s[next] - s[old]);
 }
 
 /** Distance travelled so many samples ago [m]. */
-function travelledAgo(s: Float64Array, f: Float64Array, k: number, ago: number): number {
+function travelledAgo(s: Float64Array, f: Float64Array, ago: number): number {
   const back = Math.ceil(ago);
-  const old = rowOf(f, k, back);
-  return back === ago ? s[old] : cubic(s, old, rowOf(f, k, back - 1), back - ago, f[fit.F_SAMPLE]);
+  const old = rowBack(s, back);
+  const x = back - ago;
+  if (x === 0) return s[old];
+  const next = rowAfter(s, old);
+  const h = f[fit.F_SAMPLE];
+  return s[old] + x * (h * s[old + 1] + x * (bendOf(s, old, next, h) + x * twistOf(s, old, next, h)));
 }
 
-function cubic(s: Float64Array, old: number, next: number, share: number, sample: number): number {
-  const rest = 1 - share;
-  const bend = share * rest * sample;
-  return (
-    s[old] * (1 + 2 * share) * rest * rest +
-    s[next] * (3 - 2 * share) * share * share +
-    bend * (rest * s[old + 1] - share * s[next + 1])
-  );
-}
-
-/** Speed so many samples ago: the slope of the cubic. */
-function speedAgo(s: Float64Array, f: Float64Array, k: number, ago: number): number {
+/** Speed so many samples ago [m/s]. */
+function speedAgo(s: Float64Array, f: Float64Array, ago: number): number {
   const back = Math.ceil(ago);
-  const old = rowOf(f, k, back);
-  return back === ago ? s[old + 1] : slope(s, old, rowOf(f, k, back - 1), back - ago, f[fit.F_SAMPLE]);
+  const old = rowBack(s, back);
+  const x = back - ago;
+  if (x === 0) return s[old + 1];
+  const next = rowAfter(s, old);
+  const h = f[fit.F_SAMPLE];
+  return s[old + 1] + (x * (2 * bendOf(s, old, next, h) + 3 * x * twistOf(s, old, next, h))) / h;
 }
 
-function slope(s: Float64Array, old: number, next: number, share: number, sample: number): number {
-  const rest = 1 - share;
-  return (
-    (6 * share * rest * (s[next] - s[old])) / sample +
-    rest * (1 - 3 * share) * s[old + 1] +
-    share * (3 * share - 2) * s[next + 1]
-  );
-}
-
-/** Speed by the last period [m/s], from the pulses up to this sample's reading. */
-function timePulses(s: Float64Array, f: Float64Array, k: number): number {
+/** Finds the pulses since the reading before, and keeps the last one and its period. */
+function timePulses(s: Float64Array, f: Float64Array, k: number): void {
   const spacing = f[fit.F_SPACING];
-  const clock = f[fit.F_CLOCK];
-  const delay = f[fit.F_DELAY];
-  const before = Math.floor(travelledAgo(s, f, k, delay + 1) / spacing);
-  const now = Math.floor(travelledAgo(s, f, k, delay) / spacing);
-  if (now > before) {
-    const last = Math.floor(pulseTime(s, f, k, now * spacing) / clock);
-    const previous =
-      now - before > 1 ? Math.floor(pulseTime(s, f, k, (now - 1) * spacing) / clock) : s[PULSE_STAMP];
-    // A pulse faster than the clock is read as one tick of it.
-    s[PULSE_PERIOD] = Math.max(1, last - previous);
-    s[PULSE_STAMP] = last;
-  }
-  const since = Math.floor(((k - delay) * f[fit.F_SAMPLE]) / clock) - s[PULSE_STAMP];
-  return spacing / (clock * Math.max(s[PULSE_PERIOD], since));
-}
-
-/** Time at which a distance was reached, within a sample before this one's reading [s]. */
-function pulseTime(s: Float64Array, f: Float64Array, k: number, distance: number): number {
-  const sample = f[fit.F_SAMPLE];
+  const h = f[fit.F_SAMPLE];
+  const before = s[PULSES];
+  const now = Math.floor(travelledAgo(s, f, f[fit.F_DELAY]) / spacing);
+  if (!(now > before)) return;
+  s[PULSES] = now;
+  let distance = now * spacing;
   let back = Math.max(1, Math.ceil(f[fit.F_DELAY]));
-  let old = rowOf(f, k, back);
-  while (s[old] > distance && back < f[fit.F_ROWS] - 1) {
-    back++;
-    old = rowOf(f, k, back);
+  let old = rowBack(s, back);
+  const last = s[PULSE_STAMP];
+  // The last pulse, then the one before it, where that is new too.
+  for (let pulse = 0; pulse < 2; pulse++) {
+    while (s[old] > distance && back < f[fit.F_ROWS] - 1) {
+      back++;
+      old = rowBack(s, back);
+    }
+    const next = rowAfter(s, old);
+    const speed = h * s[old + 1];
+    const bend = bendOf(s, old, next, h);
+    const twist = twistOf(s, old, next, h);
+    const reach = distance - s[old];
+    const way = s[next] - s[old];
+    let x = way > 0 ? reach / way : 1;
+    // Newton's rule from the secant: speed changes so little within a sample that one step reaches the last digits.
+    for (let step = 0, miss = 1; step < 3 && (miss > 1e-3 || miss < -1e-3); step++) {
+      const slope = speed + x * (2 * bend + 3 * x * twist);
+      miss = slope > 0 ? (reach - x * (speed + x * (bend + x * twist))) / slope : 0;
+      x += miss;
+    }
+    const stamp = Math.floor((k - back + Math.min(1, Math.max(0, x))) * f[fit.F_CLOCK_RATE]);
+    if (pulse === 0) {
+      s[PULSE_STAMP] = stamp;
+      if (now - before === 1) {
+        s[PULSE_PERIOD] = stamp - last;
+        break;
+      }
+      distance -= spacing;
+    } else s[PULSE_PERIOD] = s[PULSE_STAMP] - stamp;
   }
-  const next = rowOf(f, k, back - 1);
-  const way = s[next] - s[old];
-  let share = way > 0 ? (distance - s[old]) / way : 1;
-  // Newton's rule from the secant: speed changes little within a sample, so that two steps reach the last digits.
-  for (let i = 0; i < 3; i++) {
-    const speed = slope(s, old, next, share, sample);
-    if (!(speed > 0)) break;
-    share += (distance - cubic(s, old, next, share, sample)) / (speed * sample);
-    share = Math.min(1, Math.max(0, share));
-  }
-  return (k - back + share) * sample;
+  // A pulse faster than the clock is read as one tick of it.
+  if (s[PULSE_PERIOD] < 1) s[PULSE_PERIOD] = 1;
 }
