@@ -130,7 +130,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
     defaults: [...document.defaults, ...rideDefaults(document, vehicleDocument), ...vehicleDocument.defaults],
     warnings: [
-      ...runWarnings(road, vehicle, results),
+      ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,
       ...changesNotReached(document, hold, results),
     ],

@@ -1,9 +1,14 @@
 import { USUAL_GAIN_MARGIN, USUAL_PHASE_MARGIN } from '../control/loop-stability.ts';
+import type { RiderPlan } from '../loop/plan.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
+import type { Demand, Replayed } from '../study/findings.ts';
 import { toDeg, toKm, toKmh } from '../units/convert.ts';
 import { CORRECTION_RANGE, correctionFactor, deratingExtrapolates } from '../vehicle/derating.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { batteryWarnings } from './battery-warnings.ts';
+import { gearWarnings } from './gear-warnings.ts';
+import { gripWarnings } from './grip-warnings.ts';
 import type { CandidateResult } from './run-result.ts';
 
 /** An energy account that is further open than this says that the solver went wrong. */
@@ -16,15 +21,31 @@ const ENDINGS = {
   non_finite: 'failed numerically: its speed is no number any more',
 } as const;
 
-/** What the road, the drive in its air and the runs give cause to say, in the order of the work. */
-export function runWarnings(
-  road: Road,
-  { drive }: Vehicle,
-  candidates: readonly CandidateResult[],
-): readonly Warning[] {
+/** What a run found, as far as it gives cause to warn. */
+interface Warned {
+  readonly road: Road;
+  readonly vehicle: Vehicle;
+  readonly rider: RiderPlan;
+  readonly demand: Demand;
+  readonly replayed: readonly Replayed[];
+  readonly candidates: readonly CandidateResult[];
+}
+
+/** What the road, the drive in its air, gears, grip, battery and the runs give cause to say, in the order of the work. */
+export function runWarnings({
+  road,
+  vehicle,
+  rider,
+  demand,
+  replayed,
+  candidates,
+}: Warned): readonly Warning[] {
   return [
     ...road.warnings,
-    ...deratingWarnings(road, drive),
+    ...deratingWarnings(road, vehicle.drive),
+    ...gearWarnings(road, vehicle, rider, demand, replayed),
+    ...gripWarnings(replayed, demand),
+    ...batteryWarnings(replayed),
     ...candidates.flatMap((candidate) => candidateWarnings(candidate)),
   ];
 }

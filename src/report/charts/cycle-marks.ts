@@ -10,7 +10,7 @@ const HEIGHT = 5;
 const HALF = 3;
 const ROW = 8;
 
-/** Limit cycles as small waves along the upper edge of a plot, a row for each candidate that has any, in its colour. */
+/** Limit cycles as small waves above a plot, a row for each candidate that has any, in its colour. */
 export function cycleMarks(view: View, { paint }: Canvas, box: Box, x: Scale): Html {
   const swinging = view.candidates.filter(({ name }) =>
     view.result.cycles.some(({ candidate }) => candidate === name),
@@ -19,7 +19,7 @@ export function cycleMarks(view: View, { paint }: Canvas, box: Box, x: Scale): H
     view.result.cycles
       .filter((cycle) => cycle.candidate === candidate.name)
       .map((cycle) => {
-        const top = box.top + 3 + row * ROW;
+        const top = box.top - HEIGHT - 2 + row * ROW;
         const left = x(toKm(cycle.from));
         const waves = Math.max(2, Math.round((x(toKm(cycle.to)) - left) / HALF));
         const steps = Array.from({ length: waves }, (_, k) => `l${HALF},${k % 2 === 0 ? HEIGHT : -HEIGHT}`);

@@ -86,7 +86,7 @@ export function namesAtEnds(lines: readonly DrawnLine[], canvas: Canvas, box: Bo
     if (!isNamed(line)) continue;
     const [x, y] = points[points.length - 1]!;
     const text = nameOf(line, canvas);
-    const bold = line.kind !== 'required' && (line.gear === null || line.engaged);
+    const bold = line.engaged || line.kind === 'grip';
     const width = textWidth(text, SIZE);
     if (y > bottom) {
       const last = points.findLast(([, at]) => at <= bottom - 4);

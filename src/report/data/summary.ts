@@ -3,7 +3,7 @@ import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { type Figure, isNone, type RequirementFinding } from '../../study/findings.ts';
 import { toDeg, toKm, toKmh, toLitre, toPct, toWh } from '../../units/convert.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
-import { type EnergyUse, energyUse, toLitrePer100Km } from '../model/energy-use.ts';
+import { type EnergyUse, energyUse } from '../model/energy-use.ts';
 import { cycleRows } from './cycle-table.ts';
 import { decimalsOf } from './decimals-of.ts';
 import { rounded } from './fixed.ts';
@@ -91,17 +91,10 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
 /** What was taken from tank or battery. */
 function usedOf(use: EnergyUse | null): Record<string, Figure> {
   if (use === null) return {};
-  const range = use.range === null ? {} : { range_km: toKm(use.range) };
-  if (use.kind === 'battery')
-    return {
-      battery_wh: toWh(use.drawn),
-      ...(use.charge === null ? {} : { charge_at_end_pct: toPct(use.charge.end) }),
-      ...range,
-    };
+  if (use.volume !== null) return { fuel_l: toLitre(use.volume) };
   return {
-    fuel_l: toLitre(use.volume ?? 0),
-    ...(use.volumePerDistance === null ? {} : { fuel_l_per_100km: toLitrePer100Km(use.volumePerDistance) }),
-    ...range,
+    battery_wh: toWh(use.drawn),
+    ...(use.chargeAtEnd === null ? {} : { charge_at_end_pct: toPct(use.chargeAtEnd) }),
   };
 }
 

@@ -4,11 +4,11 @@ import { derateFactor } from '../../vehicle/derating.ts';
 import type { Drive } from '../../vehicle/drive.ts';
 import { requiredForce } from '../../vehicle/resistance.ts';
 import { gripForce } from '../../vehicle/traction.ts';
+import { turningRange } from '../../vehicle/turning-range.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
 import { fixed, signed, withUnit } from '../quantity.ts';
 import { endForces } from './end-forces.ts';
 import { hasGears } from './gear-words.ts';
-import { turningRange } from './turning-range.ts';
 import type { View } from './view.ts';
 
 /** Force over speed: what the drive gives, what the tyre passes on, or what a grade asks. SI. */

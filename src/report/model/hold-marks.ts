@@ -14,7 +14,7 @@ export function shiftMarks(view: View): readonly SetSpeedMark[] {
     for (const shift of candidate.result.shifts) {
       if (shift.resumedAt === null) continue;
       const to = resumedPlace(candidate, shift);
-      const text = `clutch open, hold off: gear ${shift.from + 1} to ${shift.to + 1}`;
+      const text = `hold off, gear ${shift.from + 1} to ${shift.to + 1}`;
       const same = marks.find((mark) => mark.text === text && shift.distance <= mark.to && to >= mark.from);
       if (same === undefined) marks.push({ from: shift.distance, to, text });
       else {

@@ -1,6 +1,7 @@
 import { fromRpm, toKw, toPct, toRpm, toWh } from '../../units/convert.ts';
 import type { Belt, Drive, Gearbox } from '../../vehicle/drive.ts';
 import type { EnergySource } from '../../vehicle/energy-source.ts';
+import { turningRange } from '../../vehicle/turning-range.ts';
 import type { RoadLoad, Traction, Vehicle } from '../../vehicle/vehicle.ts';
 import {
   fixed,
@@ -14,7 +15,6 @@ import {
 } from '../quantity.ts';
 import { actuatorWords, sensorWords } from './chain-words.ts';
 import { hasGears, turns } from './gear-words.ts';
-import { turningRange } from './turning-range.ts';
 
 /** A part of the vehicle and what it is, in words with figures. */
 export type VehicleRow = readonly [part: string, words: string];

@@ -5,7 +5,8 @@ import { energyChart } from '../charts/energy.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { energyAccount, energyTerms, isWhole } from '../model/energy-account.ts';
-import { energyUse, useColumns, useDefinitions } from '../model/energy-use.ts';
+import { energyUse, useDefinitions, useFigures, useText } from '../model/energy-use.ts';
+import { figureLabel, figureText } from '../model/figure-text.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { fixed, NO_VALUE, significant } from '../quantity.ts';
@@ -48,19 +49,24 @@ ${table(
 
 /** What every run took from tank or battery, and how far that would reach. */
 function useTable(view: View, source: EnergySource): Html {
-  const columns = useColumns(source);
+  const figures = useFigures(source);
   const rows = view.candidates.map((candidate): HtmlValue[] => {
     const use = energyUse(source, candidate.result);
     return [
       html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
-      ...columns.map(({ text }) => (use === null ? NO_VALUE : text(use))),
+      use === null ? NO_VALUE : useText(use),
+      ...figures.map((name) => figureText(candidate.figures[name], figureLabel(name).unit, view.speed)),
     ];
   });
   const fuel = source.kind === 'fuel';
   return html`<h3>${fuel ? 'Fuel' : 'Battery'}</h3>
 ${table(
   fuel ? 'Fuel' : 'Battery',
-  [{ head: 'candidate' }, ...columns.map(({ head }) => ({ head, number: true }))],
+  [
+    { head: 'candidate' },
+    { head: 'used', number: true },
+    ...figures.map((name) => ({ head: figureLabel(name).label, number: true })),
+  ],
   rows,
 )}
 <p class="note">${useDefinitions(source)}</p>`;

@@ -1,11 +1,11 @@
 import { toKw, toRpm } from '../../units/convert.ts';
 import { gripForce } from '../../vehicle/traction.ts';
+import { turningRange } from '../../vehicle/turning-range.ts';
 import { forceSpeedChart } from '../charts/force-speed.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { forceLines } from '../model/force-lines.ts';
 import { type GearAuthority, gearAuthority } from '../model/gear-authority.ts';
 import { gearName, hasGears, turns } from '../model/gear-words.ts';
-import { turningRange } from '../model/turning-range.ts';
 import type { View } from '../model/view.ts';
 import {
   fixed,
@@ -82,7 +82,8 @@ function gearTable(view: View): Html {
   const { setSpeed } = view.result.hold;
   const { speed } = view;
   const rows = gearAuthority(view, setSpeed);
-  const engine = turns(drive) && drive.belt === null;
+  const engine = turns(drive);
+  const rigid = engine && drive.belt === null;
   const airs = forceLines(view).airs;
   const range = ({ from, to }: GearAuthority): string =>
     `${fixed(speed.of(from))} to ${Number.isFinite(to) ? fixed(speed.of(to)) : 'no limit'}`;
@@ -93,7 +94,7 @@ function gearTable(view: View): Html {
     return [
       ...(engine
         ? [
-            range(row),
+            ...(rigid ? [range(row)] : []),
             at === null
               ? html`<span class="flag">${setSpeed > row.to ? 'over its limit' : 'stalls'}</span>`
               : fixed(toRpm(at.shaftSpeed)),
@@ -106,7 +107,7 @@ function gearTable(view: View): Html {
             ...(airs === null ? [] : [fixed(at.thin)]),
             significant(toKw(at.full * setSpeed), 2),
             fixed(at.least),
-            grade(at.climb),
+            html`${grade(at.climb)}${at.slips && html`<br><span class="small">by grip</span>`}`,
             grade(at.descent),
           ]),
     ];
@@ -119,8 +120,8 @@ ${table(
     { head: hasGears(drive) ? 'gear' : 'drive' },
     ...(engine
       ? [
-          { head: `turns from / ${speed.axis}`, number: true },
-          { head: 'engine / rpm', number: true },
+          ...(rigid ? [{ head: `turns from / ${speed.axis}`, number: true }] : []),
+          { head: rigid ? 'engine / rpm' : 'engine at full throttle / rpm', number: true },
         ]
       : []),
     { head: `full throttle${place} / N`, number: true },

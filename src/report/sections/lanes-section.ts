@@ -21,10 +21,10 @@ ${chartFigure(
     ' Brackets: a change of set speed is being followed, and the error there is planned.'
   }${
     shiftMarks(view).length > 0 &&
-    ' Brackets with gears: the rider shifts, and the hold is off from the open clutch until it resumes.'
+    ' Brackets with gears: the rider shifts; the clutch is open, then the throttle is in the rider\u2019s hand, and the hold is off until it resumes.'
   }${
     view.result.cycles.length > 0 &&
-    html` Small waves at the upper edge of the first lane: <a href="#limit-cycles">limit cycles</a>.`
+    html` Small waves above the first lane: <a href="#limit-cycles">limit cycles</a>.`
   }${automaticWords(view)}${
     early.length > 0 &&
     ` ${early.map((candidate) => `${candidate.name} ${statusWords(candidate)}`).join('; ')}.`

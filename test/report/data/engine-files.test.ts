@@ -68,13 +68,10 @@ test('a full series tells the engine in rpm, and nothing for a drive without an 
   expect(column(fixtureResult({ lengthKm: 18 }))).toBe('');
 });
 
-test('the summary tells fuel, range and shifts', () => {
+test('the summary tells fuel and shifts', () => {
   const [candidate] = summary.candidates;
-  const { ledger, endDistance } = run.candidates[0]!.result;
-  const litres = ledger.drawn! / 32e6;
-  expectClose(candidate.energy.fuel_l, litres, 1e-4, 'l');
-  expectClose(candidate.energy.fuel_l_per_100km, litres / (endDistance / 1e5), 1e-4, 'l/100 km');
-  expectClose(candidate.energy.range_km, (12 / litres) * (endDistance / 1000), 1e-3, 'km');
+  const { ledger } = run.candidates[0]!.result;
+  expectClose(candidate.energy.fuel_l, ledger.drawn! / 32e6, 1e-4, 'l');
   expect(candidate.shifts).toEqual([
     expect.objectContaining({ from_gear: 6, to_gear: 5, at_km: run.rider.shifts[0]!.distance / 1000 }),
   ]);

@@ -1,11 +1,6 @@
 import { expect, test } from 'vitest';
 import type { Ledger } from '../../../src/loop/result.ts';
-import {
-  energyUse,
-  toLitrePer100Km,
-  useColumns,
-  useDefinitions,
-} from '../../../src/report/model/energy-use.ts';
+import { energyUse, useDefinitions, useFigures, useText } from '../../../src/report/model/energy-use.ts';
 import type { Battery, FuelTank } from '../../../src/vehicle/energy-source.ts';
 import { expectClose } from '../../compare.ts';
 
@@ -28,41 +23,28 @@ const battery: Battery = {
   acceptance: null,
   heating: null,
 };
-const run = (drawn: number | null, endDistance: number, chargeAtEnd: number | null = null) => ({
-  endDistance,
+const run = (drawn: number | null, chargeAtEnd: number | null = null) => ({
   ledger: { drawn, chargeAtEnd } as Ledger,
 });
+const plain = (text: string): string => text.replaceAll('\u00a0', ' ');
 
-test('64 MJ of petrol over 50 km are 2 litres, 4 l/100 km, and 12 litres last 300 km', () => {
-  const use = energyUse(tank, run(64e6, 50_000))!;
+test('64 MJ of petrol are 2 litres', () => {
+  const use = energyUse(tank, run(64e6))!;
   expectClose(use.volume! * 1000, 2, 1e-12, 'litres');
-  expectClose(toLitrePer100Km(use.volumePerDistance!), 4, 1e-12, 'l/100 km');
-  expectClose(use.range! / 1000, 300, 1e-9, 'km');
-  expect(useColumns(tank).map(({ head, text }) => `${head}: ${text(use)}`)).toEqual([
-    'fuel / l: 2.00',
-    'fuel / (l/100 km): 4.00',
-    'range / km: 300',
-  ]);
+  expect(plain(useText(use))).toBe('2.00 l');
+  expect(useFigures(tank)).toEqual(['fuel_l_per_100km', 'range_km']);
 });
 
-test('a battery of 4 kWh lasts from its charge to its reserve: 70 % of it at 40 Wh/km are 70 km', () => {
-  const use = energyUse(battery, run(800 * 3600, 20_000, 0.6))!;
-  expectClose(use.range! / 1000, 70, 1e-9, 'km');
-  expect(use.charge).toEqual({ start: 0.8, end: 0.6 });
-  expect(useColumns(battery).map(({ text }) => text(use))).toEqual(['800', '60.0', '70.0']);
-  expect(useDefinitions(battery)).toMatch(/from 80.% at the start.*reserve of 10.%/);
+test('of a battery what was drawn and what is left is told', () => {
+  expect(plain(useText(energyUse(battery, run(800 * 3600, 0.6))!))).toBe('800 Wh, 60.0 % left');
+  expect(plain(useText(energyUse(battery, run(-5 * 3600))!))).toBe('\u22125 Wh');
+  expect(plain(useDefinitions(battery))).toMatch(/80 % of it at the start; the reserve is 10 %.*Range: /);
 });
 
-test('what does not exist is not told: no source, no capacity, more put back than drawn, no way driven', () => {
-  expect(energyUse(null, run(1, 1))).toBeNull();
-  expect(energyUse(tank, run(null, 1))).toBeNull();
-  expect(energyUse(tank, run(Number.NaN, 1))).toBeNull();
-  expect(energyUse({ ...tank, capacity: null }, run(1e6, 1000))!.range).toBeNull();
-  expect(energyUse(battery, run(-5, 1000, 0.81))!.range).toBeNull();
-  expect(energyUse(tank, run(0, 0))).toMatchObject({ volume: 0, volumePerDistance: null, range: null });
-  expect(useColumns({ ...tank, capacity: null }).map(({ head }) => head)).toEqual([
-    'fuel / l',
-    'fuel / (l/100 km)',
-  ]);
-  expect(useColumns({ ...battery, capacity: null })).toHaveLength(1);
+test('what does not exist is not told: no source, a run that failed, no capacity', () => {
+  expect(energyUse(null, run(1))).toBeNull();
+  expect(energyUse(tank, run(null))).toBeNull();
+  expect(energyUse(tank, run(Number.NaN))).toBeNull();
+  expect(useFigures({ ...battery, capacity: null })).toEqual(['drawn_wh_per_km']);
+  expect(useDefinitions({ ...battery, capacity: null })).not.toContain('Range');
 });

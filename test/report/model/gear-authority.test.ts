@@ -41,3 +41,18 @@ test('gears over their rev limit have nothing there', () => {
   ]);
   expect(gearAuthority(view, 1).every(({ at }) => at === null)).toBe(true);
 });
+
+test('where the tyre passes on less than the gear has, the grip ends the climb', () => {
+  const { result } = view;
+  const traction = { friction: 0.2, wheelbase: 1.3, massCentreAhead: 0.65, massCentreHeight: 0.6 };
+  const wet = viewOf({ ...result, vehicle: { ...result.vehicle, traction } }, 'kmh');
+  const { climb, slips } = gearAuthority(wet, SPEED)[3]!.at!;
+  expect(slips).toBe(true);
+  const angle = Math.atan(climb!);
+  const { mass, roadLoad } = result.vehicle;
+  const density = result.road.airDensity.reduce((a, b) => Math.max(a, b));
+  const asked =
+    0.5 * density * roadLoad.cda * SPEED ** 2 + mass * G * (roadLoad.c0 * Math.cos(angle) + Math.sin(angle));
+  // mu m g cos (p - b) / (p - mu h)
+  expectClose(asked, (0.2 * mass * G * Math.cos(angle) * 0.65) / (1.3 - 0.12), 1e-6, 'N');
+});

@@ -1,5 +1,5 @@
-import type { Drive } from '../../vehicle/drive.ts';
-import { forceRange } from '../../vehicle/drive-law.ts';
+import type { Drive } from './drive.ts';
+import { forceRange } from './drive-law.ts';
 
 /** Share of the greatest gain of throttle below which a drive gives nothing more: its limiter has it. */
 const NOTHING = 1e-6;
@@ -19,8 +19,14 @@ export function turningRange(drive: Drive, gear: number): TurningRange {
   const { ratio } = gears[gear]!;
   const least = drive.belt === null ? stallSpeed / ratio : 0;
   const lowest = drive.belt?.least ?? ratio;
-  // The belt apart, which would move the ratio under the shaft speed that is asked for.
-  const shaft: Drive = { ...drive, belt: null, gears: [{ ratio: 1, inertia: 0 }], gear: 0 };
+  // The belt apart, which would move the ratio under the shaft speed that is asked for; and the fuel cut, whose step
+  // stands between full and closed throttle at the limiter too.
+  const shaft: Drive = {
+    ...(drive.withoutFuelCut ?? drive),
+    belt: null,
+    gears: [{ ratio: 1, inertia: 0 }],
+    gear: 0,
+  };
   const gain = (shaftSpeed: number): number => {
     const range = forceRange(shaft, 0, shaftSpeed, 1);
     return range.greatest - range.least;

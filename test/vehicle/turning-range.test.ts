@@ -1,9 +1,10 @@
 import { expect, test } from 'vitest';
-import { turningRange } from '../../../src/report/model/turning-range.ts';
-import type { Drive } from '../../../src/vehicle/drive.ts';
-import { forceDrive } from '../../../src/vehicle/force-drive.ts';
-import { expectClose } from '../../compare.ts';
-import { fixtureEngine } from '../fixture-engine.ts';
+import type { Drive } from '../../src/vehicle/drive.ts';
+import { engineDrive } from '../../src/vehicle/engine-drive.ts';
+import { forceDrive } from '../../src/vehicle/force-drive.ts';
+import { turningRange } from '../../src/vehicle/turning-range.ts';
+import { expectClose } from '../compare.ts';
+import { fixtureEngine } from '../report/fixture-engine.ts';
 
 test('a gear turns from its stall speed to where its limiter begins', () => {
   const engine = fixtureEngine();
@@ -55,4 +56,39 @@ test('a belt stands still with its clutch open, and turns fastest at its least r
   );
   expect(least).toBe(0);
   expectClose(greatest, (8800 * Math.PI) / 30 / 20, 1e-12, 'greatest');
+});
+
+test('a compiled engine with driveline losses and a fuel cut turns from its stall to its rev limit', () => {
+  const rpm = (n: number): number => (n * Math.PI) / 30;
+  const drive = engineDrive({
+    torque: {
+      kind: 'full_load',
+      shaftSpeed: Float64Array.of(rpm(1500), rpm(6000), rpm(9500)),
+      torque: Float64Array.of(8, 11, 8),
+      shape: 4,
+    },
+    drag: { shaftSpeed: Float64Array.of(rpm(1500), rpm(9000)), torque: Float64Array.of(0.8, 2) },
+    fuelCut: { above: rpm(2500), blend: rpm(300), throttle: 0.03, torque: 1.5 },
+    idle: rpm(1400),
+    stall: rpm(900),
+    revLimit: rpm(9000),
+    limitBand: rpm(200),
+    inertia: 0.01,
+    efficiency: 0.92,
+    lag: 0.1,
+    derate: 'none',
+    fuel: null,
+    ratios: [30, 12],
+    gear: 1,
+    wheelRadius: 0.3,
+    gearbox: { kind: 'fixed' },
+  });
+  for (const [gear, ratio] of [
+    [0, 100],
+    [1, 40],
+  ] as const) {
+    const { least, greatest } = turningRange(drive, gear);
+    expectClose(least, rpm(900) / ratio, 1e-9, 'least');
+    expectClose(greatest, rpm(9000) / ratio, 1e-9, 'greatest');
+  }
 });

@@ -1,0 +1,78 @@
+import { exp } from '../numeric/elementary.ts';
+import type { Warning } from '../problems/warning.ts';
+import type { Replayed } from '../study/findings.ts';
+import { toKm, toPct } from '../units/convert.ts';
+import type { Battery, Heating } from '../vehicle/energy-source.ts';
+
+const km = (distance: number): string => `km ${toKm(distance).toFixed(2)}`;
+/** Derating below this is no news. */
+const NOTICED = 0.01;
+
+/** Where a battery comes down to its reserve or runs empty, and where heat takes force away, run by run. */
+export function batteryWarnings(replayed: readonly Replayed[]): readonly Warning[] {
+  return replayed.flatMap(({ name, plan, result: { bins, ledger } }) => {
+    const { source } = plan.vehicle.drive;
+    if (source?.kind !== 'battery' || ledger.drawn === null) return [];
+    return [
+      ...chargeWarnings(name, source, bins),
+      ...(source.heating === null ? [] : heatWarnings(name, source.heating, bins)),
+    ];
+  });
+}
+
+type Bins = Replayed['result']['bins'];
+
+function chargeWarnings(name: string, { capacity, charge, reserve }: Battery, bins: Bins): Warning[] {
+  if (capacity === null) return [];
+  let left = charge * capacity;
+  let reserved = reserve > 0 && charge > reserve;
+  const warnings: Warning[] = [];
+  for (let i = 0; i < bins.size; i++) {
+    left -= bins.drawn[i] ?? 0;
+    const at = bins.edge[i + 1] ?? 0;
+    // Energies are sums over samples: empty is empty to their rounding.
+    if (left <= 1e-9 * capacity) {
+      warnings.push({
+        code: 'battery-empty',
+        message: `${name} runs its battery empty at ${km(at)}: from there on it has no force.`,
+        from: at,
+        to: at,
+      });
+      return warnings;
+    }
+    if (reserved && left <= reserve * capacity) {
+      reserved = false;
+      warnings.push({
+        code: 'battery-reserve',
+        message: `${name} comes down to the reserve of ${toPct(reserve).toFixed(0)} % of its battery at ${km(at)}.`,
+        from: at,
+        to: at,
+      });
+    }
+  }
+  return warnings;
+}
+
+/** Heat by the mean wheel power of each bin: near enough for a place. */
+function heatWarnings(name: string, { continuousPower, time, onset, least }: Heating, bins: Bins): Warning[] {
+  let [heat, share, worstAt, from, to] = [0, 1, 0, -1, 0];
+  for (let i = 0; i < bins.size; i++) {
+    const load = (bins.wheelPower[i] ?? 0) / continuousPower;
+    const steady = load * load;
+    heat = steady + (heat - steady) * exp(-(bins.time[i] ?? 0) / time);
+    const here = heat <= onset ? 1 : Math.max(least, 1 - ((1 - least) * (heat - onset)) / (1 - onset));
+    if (here > 1 - NOTICED) continue;
+    if (from < 0) from = bins.edge[i] ?? 0;
+    to = bins.edge[i + 1] ?? 0;
+    if (here < share) [share, worstAt] = [here, bins.edge[i] ?? 0];
+  }
+  if (from < 0) return [];
+  return [
+    {
+      code: 'derated-by-heat',
+      message: `Heat takes force from ${name} between ${km(from)} and ${toKm(to).toFixed(2)}: down to ${toPct(share).toFixed(0)} % of it near ${km(worstAt)}.`,
+      from,
+      to,
+    },
+  ];
+}
