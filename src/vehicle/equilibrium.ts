@@ -71,17 +71,6 @@ export function equilibriumSpeeds(
 }
 
 /**
- * Highest speed that full throttle holds for ever.
- *
- * @returns [m/s]; 0 where full throttle holds no speed at all; at most 150
- */
-export function sustainedSpeed(vehicle: Vehicle, at: Surroundings): number {
-  const full = vehicle.drive.throttleMax;
-  if (surplusOf(vehicle, at, full)(SPEED_CEILING) > 0) return SPEED_CEILING;
-  return equilibriumSpeeds(vehicle, at, full).findLast((balance) => balance.stable)?.speed ?? 0;
-}
-
-/**
  * Speed at which a locked throttle settles when it starts from a given speed: the next stable balance in the direction
  * in which the force pushes, which is the next balance at all, since the force pushes towards it. Scanned as in
  * `equilibriumSpeeds`, but from the given speed and no further than it takes.
@@ -110,15 +99,6 @@ export function settledSpeed(vehicle: Vehicle, at: Surroundings, throttle: numbe
     [a, b, fa, fb] = [b, c, fb, fc];
   }
   return up ? SPEED_CEILING : 0;
-}
-
-/**
- * Speed to which the vehicle runs away from `from` with the least throttle it has (closed, or full regeneration).
- *
- * @returns [m/s]; `from` itself where the least throttle holds it or slows it down
- */
-export function runawaySpeed(vehicle: Vehicle, at: Surroundings, from: number): number {
-  return Math.max(from, settledSpeed(vehicle, at, vehicle.drive.throttleMin, from));
 }
 
 /**

@@ -1,12 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { electricDrive } from '../../src/vehicle/electric-drive.ts';
-import {
-  equilibriumSpeeds,
-  levelThrottle,
-  runawaySpeed,
-  settledSpeed,
-  sustainedSpeed,
-} from '../../src/vehicle/equilibrium.ts';
+import { equilibriumSpeeds, levelThrottle, settledSpeed } from '../../src/vehicle/equilibrium.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
 import { roadLoadOfRegulation } from '../../src/vehicle/road-load.ts';
 import { expectClose } from '../compare.ts';
@@ -128,7 +122,7 @@ describe('settledSpeed', () => {
   });
 });
 
-describe('sustainedSpeed', () => {
+describe('the speed at full and at closed throttle', () => {
   // Sustainable grades at the wheel's share 0.92 of the power, 280 kg, CdA 0.6, rolling 0.015, density 1.2; recomputed by
   // hand from the closed form theta = asin(q / R) - atan Crr.
   test.each([
@@ -148,28 +142,23 @@ describe('sustainedSpeed', () => {
         derate: 'none',
       }),
     });
-    expectClose(sustainedSpeed(vehicle, { ...still, grade }) * 3.6, kmh, 0.08);
+    expectClose(settledSpeed(vehicle, { ...still, grade }, 1, 60) * 3.6, kmh, 0.08);
   });
 
   test('is 0 where full throttle cannot move the vehicle, and the ceiling where nothing holds it back', () => {
     const vehicle = referenceMotorcycle();
-    expect(sustainedSpeed(vehicle, { ...still, grade: 0.5 })).toBe(0);
+    expect(settledSpeed(vehicle, { ...still, grade: 0.5 }, 1, 20)).toBe(0);
     const slippery = { ...vehicle.roadLoad, cda: 0 };
-    expect(sustainedSpeed(referenceMotorcycle({ roadLoad: slippery }), still)).toBe(150);
+    expect(settledSpeed(referenceMotorcycle({ roadLoad: slippery }), still, 1, 20)).toBe(150);
   });
-});
 
-describe('runawaySpeed', () => {
-  // Coasting: m g sin = m g c0 cos + 1/2 rho CdA v^2.
-  test('is where air and rolling resistance hold the weight', () => {
+  test('coasting is where air and rolling resistance hold the weight', () => {
+    // m g sin = m g c0 cos + 1/2 rho CdA v^2.
     const vehicle = referenceMotorcycle();
     const grade = -0.08;
     const cosine = 1 / Math.sqrt(1 + grade * grade);
     const speed = Math.sqrt((260 * 9.80665 * cosine * (0.08 - 0.015)) / (0.5 * 1.2 * 0.6));
-    expectClose(runawaySpeed(vehicle, { ...still, grade }, 15), speed, 1e-9);
-  });
-  test('is the speed itself where the least throttle holds it', () => {
-    expect(runawaySpeed(referenceMotorcycle(), { ...still, grade: -0.01 }, 20)).toBe(20);
+    expectClose(settledSpeed(vehicle, { ...still, grade }, 0, 15), speed, 1e-9);
   });
 });
 
