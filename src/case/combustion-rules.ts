@@ -1,3 +1,4 @@
+import { piecewiseLinear } from '../vehicle/piecewise-linear.ts';
 import type { RuleFault } from './check-file.ts';
 import { stallRpm } from './combustion-of.ts';
 import type { DriveFileOf } from './drive-schemas.ts';
@@ -10,7 +11,7 @@ export function combustionFaults(file: CombustionFile): RuleFault[] {
   return [...torqueFaults(file), ...speedFaults(file), ...fuelFaults(file)];
 }
 
-function torqueFaults({ torque, closed_throttle_drag: drag }: CombustionFile): RuleFault[] {
+function torqueFaults({ torque, closed_throttle_drag: drag, idle_rpm: idle }: CombustionFile): RuleFault[] {
   const faults = increasing(
     (drag ?? []).map(({ rpm }) => rpm),
     (i) => ['closed_throttle_drag', i, 'rpm'],
@@ -41,7 +42,8 @@ function torqueFaults({ torque, closed_throttle_drag: drag }: CombustionFile): R
         message: 'cannot stand beside torque.map, whose first column is the closed throttle',
         allowed: 'one of them',
       });
-    faults.push(...mapFaults(torque.map));
+    const found = mapFaults(torque.map);
+    faults.push(...found, ...(found.length > 0 ? [] : idlingFaults(torque.map, idle)));
   }
   return faults;
 }
@@ -81,6 +83,23 @@ function mapFaults({ rpm, throttle_pct: throttle, nm }: TorqueMapFile): RuleFaul
       });
   });
   return faults;
+}
+
+/** Down to the idle speed full throttle must not hold back: the engine would die under its own governor. */
+function idlingFaults({ rpm, nm }: TorqueMapFile, idle: number): RuleFault[] {
+  const full = Float64Array.from(nm, (row) => row.at(-1) ?? 0);
+  const atIdle = piecewiseLinear(Float64Array.from(rpm), full, idle);
+  const weak = rpm.findIndex((at, i) => full[i]! < 0 && (at <= idle || atIdle < 0));
+  if (weak < 0) return [];
+  return [
+    {
+      path: ['torque', 'map', 'nm', weak],
+      code: 'not-in-order',
+      message: `full throttle does not keep the engine turning at idle, ${idle} rpm`,
+      found: `${full[weak]} N m at ${rpm[weak]} rpm`,
+      allowed: 'at least 0 N m at and below idle',
+    },
+  ];
 }
 
 function speedFaults(file: CombustionFile): RuleFault[] {

@@ -32,7 +32,7 @@ export function speedsOfGears(document: CaseDocument, vehicle: VehicleDocument):
   if (drive?.kind === 'variator') {
     const { high_ratio, final_ratio } = drive.belt;
     const greatest = kmhAt(drive.rev_limit_rpm, high_ratio * final_ratio, drive.wheel_radius_m);
-    const range = { least: 0, greatest: greatest * shown, words: 'the belt in high gear' };
+    const range = { least: 0, greatest: greatest * shown, words: 'high gear of the belt' };
     return speedsOf(document).flatMap(({ path, speedKmh }) => beyond(document, path, speedKmh, [range]));
   }
   if (drive?.kind !== 'engine') return [];

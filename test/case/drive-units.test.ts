@@ -6,6 +6,7 @@ import { electricSpecOf } from '../../src/case/electric-of.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { vehicleOf } from '../../src/case/vehicle-of.ts';
 import type { VehicleFile } from '../../src/case/vehicle-schema.ts';
+import type { InputError } from '../../src/problems/input-error.ts';
 import { expectClose } from '../compare.ts';
 
 const HEAD = 'mass: {kerb_kg: 150, rider_kg: 50}\nroad_load: {cda_m2: 0.5, crr: 0.01}\n';
@@ -191,4 +192,34 @@ it('times pulses by a clock where that is asked for', () => {
     ),
   );
   expect(sensor.pulses).toEqual({ spacing: 0.1, reading: { kind: 'timed', clock: 0.000001 } });
+});
+
+it('tells what only a compiler refuses with the place of the key in the file', () => {
+  const document = readVehicleFile(
+    `${HEAD}drive:
+  kind: engine
+  torque: {peak_nm: 10, peak_rpm: 6000, falloff: 0.5}
+  gear_ratios: [20, 10]
+  driveline_efficiency_pct: 94
+  wheel_radius_m: 0.3
+`,
+    'v.yaml',
+  );
+  const drive = document.file.drive as Extract<Drive, { kind: 'engine' }>;
+  const refused = (changed: Partial<typeof drive>): unknown => {
+    try {
+      return vehicleOf({ ...document, file: { ...document.file, drive: { ...drive, ...changed } } });
+    } catch (error) {
+      return (error as InputError).problems[0]?.place;
+    }
+  };
+  // As if the rules of the file had let them through.
+  expect(refused({ driveline_efficiency_pct: 200 })).toEqual({
+    file: 'v.yaml',
+    line: 7,
+    column: 29,
+    key: 'drive.driveline_efficiency_pct',
+  });
+  expect(refused({ gear_ratios: [10, 20] })).toMatchObject({ line: 6, key: 'drive.gear_ratios' });
+  expect(refused({ rev_limit_rpm: 500 })).toMatchObject({ line: 3, key: 'drive.rev_limit_rpm' });
 });
