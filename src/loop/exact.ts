@@ -34,10 +34,12 @@ import { shiftDue } from './shift-due.ts';
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
   const { s, p, rows, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;
-  // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s] and throttle.
+  // A knot is met within this distance [m] or time [s], an edge of the drive within this speed [m/s]; one over throttle
+  // closer, because the law may step there and a throttle may creep over it.
   // Constants stand inside the function: as variables of the module they would be read and checked at every use.
   const KNOT = 1e-7;
   const EDGE = 1e-9;
+  const STOP = 1e-13;
   // Trials to hit a kink; pieces of one step after which kinks are no longer looked for (a drive that chatters).
   const TRIALS = 6;
   const PIECES = 40;
@@ -203,10 +205,13 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const xh =
           l0 + x1 * half + (x - l0) * lags[decay + at.G_DRIVE_HALF] + seen * lags[decay + at.G_PULL_HALF];
         const xe = l0 + x1 * h + (x - l0) * lags[decay + at.G_DRIVE] + seen * lags[decay + at.G_PULL];
-        if (lastThrottleCell > 0 && trial < TRIALS && (xe > high + EDGE || xe < low - EDGE)) {
-          crossed = xe > high + EDGE ? 1 : -1;
+        if (lastThrottleCell > 0 && trial < TRIALS && (xe > high + STOP || xe < low - STOP)) {
+          crossed = xe > high + STOP ? 1 : -1;
+          aimed = false;
           const ye = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
-          h = timeToEdge(h, x, xe, crossed > 0 ? high : low, ((rests ? plate : ye - lead) - xe) / td);
+          const slope = rated ? l1 : (u - ye) / p[at.P_ACTUATOR_LAG];
+          const target = rests ? plate : ye - lead;
+          h = timeToEdge(h, x, xe, crossed > 0 ? high : low, td > 0 ? (target - xe) / td : slope);
           continue;
         }
 
@@ -296,6 +301,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
             continue;
           }
           if (ve < floor - EDGE || ve > ceiling + EDGE) {
+            aimed = false;
             h *= Math.max(0, ((ve < floor ? floor : ceiling) - v) / (ve - v));
             continue;
           }
@@ -337,8 +343,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         if (play === 0) plate = y;
         else if (!rests) plate = y - lead;
         else if (h === takenUp) y = plate + lead;
-        if (crossed > 0 && xe > high - EDGE) throttleCell++;
-        else if (crossed < 0 && xe < low + EDGE) throttleCell--;
+        if (crossed > 0 && xe > high - STOP) throttleCell++;
+        else if (crossed < 0 && xe < low + STOP) throttleCell--;
         x = td === 0 ? plate : xe;
         v = ve;
         q += dq;
@@ -401,7 +407,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
 /**
  * Where a throttle that runs past an edge within h meets it: Newton's rule from the far side, or along the chord where
- * that leaves the piece, as it does without a lag of the drive.
+ * that leaves the piece.
  *
  * @param slope of the throttle at h
  */

@@ -19,24 +19,42 @@ import {
 /** Filter's lag over step beyond which the speed over the step is taken as a line. */
 const LONGEST_FILTER = 1000;
 
+/** Step over the shortest lag below which Simpson's rule over the throttle is right to 1e-12. */
+const SHORT = 0.01;
+
 /**
- * Writes a row of decays over a time h and its half: with the command u held, actuator y (lag ta), throttle x (lag td)
+ * Writes a row of decays over a time h and its middle: with the command u held, actuator y (lag ta), throttle x (lag td)
  *
  *     y(h) = u + (y - u) e^(-h/ta)
  *     x(h) = u + (x - u) e^(-h/td) + (y - u) pull(h)
  *     pull = ta / (ta - td) (e^(-h/ta) - e^(-h/td)), or h/td e^(-h/td) where the two lags are equal.
+ *
+ * The value in the middle is the one with which Simpson's rule gives the mean throttle exactly: (6 mean - start - end) / 4.
+ * It is that at h/2 to the fourth order of h/lag, and it takes the error of a jump of the command out of the speed.
  */
 export function lagFactors(p: Float64Array, lags: Float64Array, row: number, h: number): void {
+  const ta = p[P_ACTUATOR_LAG];
+  const td = p[P_DRIVE_LAG];
   const weight = p[P_LAG_WEIGHT];
   const equal = p[P_LAG_EQUAL];
   const half = 0.5 * h;
-  const ya = decay(p[P_ACTUATOR_LAG], half);
-  const xd = decay(p[P_DRIVE_LAG], half);
-  lags[row + G_DRIVE_HALF] = xd;
-  lags[row + G_PULL_HALF] = weight * (ya - xd) + equal * half * xd;
-  lags[row + G_DRIVE] = xd * xd;
-  lags[row + G_PULL] = weight * (ya * ya - xd * xd) + equal * h * xd * xd;
-  lags[row + G_ACTUATOR] = ya * ya;
+  const ya = decay(ta, half);
+  const xd = decay(td, half);
+  const actuator = ya * ya;
+  const drive = xd * xd;
+  const pull = weight * (actuator - drive) + equal * h * drive;
+  lags[row + G_DRIVE] = drive;
+  lags[row + G_PULL] = pull;
+  lags[row + G_ACTUATOR] = actuator;
+  if ((ta > 0 && h < SHORT * ta) || (td > 0 && h < SHORT * td) || h === 0) {
+    lags[row + G_DRIVE_HALF] = xd;
+    lags[row + G_PULL_HALF] = weight * (ya - xd) + equal * half * xd;
+  } else {
+    const driveMean = (td * (1 - drive)) / h;
+    const pullMean = weight * ((ta * (1 - actuator)) / h - driveMean) + equal * td * (driveMean - drive);
+    lags[row + G_DRIVE_HALF] = 0.25 * (6 * driveMean - 1 - drive);
+    lags[row + G_PULL_HALF] = 0.25 * (6 * pullMean - pull);
+  }
   if (p[P_FILTER] > 0) filterFactors(p[P_FILTER], lags, row, h);
 }
 
