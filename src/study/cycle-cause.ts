@@ -1,5 +1,5 @@
 import type { LoopPlan } from '../loop/plan.ts';
-import { type Left, type SteadyReplay, whatIsLeft } from './cycle-replay.ts';
+import { type SteadyReplay, whatIsLeft } from './cycle-replay.ts';
 import type { CycleCause } from './findings.ts';
 import { has, type Limitation, without } from './limitations.ts';
 import { inKmh } from './wording.ts';
@@ -24,12 +24,25 @@ const LATENESS: readonly (readonly [Limitation, string])[] = [
   ['dead_time', "the actuator's dead time"],
   ['windup', 'the windup of the integral'],
 ];
+/** Gains that are tried, as shares of the candidate's own. */
+const SOFTER: readonly (readonly [number, string])[] = [
+  [1 / 2, 'half'],
+  [1 / 4, 'a quarter of'],
+  [1 / 8, 'an eighth of'],
+];
 /** The cause is that without which less than this share of the amplitude is left. */
 const HALF = 0.5;
+/** Two that differ by less than this share of the amplitude explain as much. */
+const AS_MUCH = 0.05;
 
 export interface CycleFinding {
   readonly cause: CycleCause;
   readonly why: string;
+}
+
+/** A cycle on the steady road, and its amplitude there with everything in place [m/s]. */
+interface Trial extends SteadyReplay {
+  readonly amplitude: number;
 }
 
 /**
@@ -41,74 +54,58 @@ export interface CycleFinding {
  * 3. `gains` where half of the gains, a quarter or an eighth leave less than half of it, with what else would end it;
  *    else `unknown`.
  *
- * @param amplitude on the steady road with everything in place [m/s]
+ * @param trial with the amplitude on the steady road with everything in place [m/s]
  * @param before cause found on another stretch of the same run, tried first; null: none
  */
-export function causeOfCycle(
-  { plan, period }: SteadyReplay,
-  amplitude: number,
-  before: CycleCause | null,
-): CycleFinding {
-  const left = (changed: LoopPlan): Left => whatIsLeft(changed, period);
-  const ends = ({ amplitude: rest }: Left): boolean => rest < HALF * amplitude;
-  const found = ({ cause, words }: Suspect, rest: number): CycleFinding => ({
-    cause,
-    why: `Without ${words} ${leftWords(rest, amplitude)}`,
-  });
-  const suspects = SUSPECTS.filter(({ limitation }) => has(plan, limitation));
+export function causeOfCycle(trial: Trial, before: CycleCause | null): CycleFinding {
+  const suspects = SUSPECTS.filter(({ limitation }) => has(trial.plan, limitation));
+  const restWithout = ({ limitation }: Suspect): number => leftOf(trial, without(trial.plan, limitation));
   const known = suspects.find(({ cause }) => cause === before);
   if (known !== undefined) {
-    const rest = left(without(plan, known.limitation));
-    if (ends(rest)) return found(known, rest.amplitude);
+    const rest = restWithout(known);
+    if (ends(trial, rest)) return named(trial, known, rest);
   }
-  const bare = suspects.reduce((barer, { limitation }) => without(barer, limitation), plan);
-  if (suspects.length > 0 && ends(left(bare))) {
-    let best: { readonly suspect: Suspect; readonly rest: Left } | null = null;
-    for (const suspect of suspects) {
-      const rest = left(without(plan, suspect.limitation));
-      if (best === null || rest.amplitude < best.rest.amplitude) best = { suspect, rest };
-    }
-    if (best !== null && ends(best.rest)) return found(best.suspect, best.rest.amplitude);
+  const bare = suspects.reduce((barer, { limitation }) => without(barer, limitation), trial.plan);
+  if (suspects.length > 0 && ends(trial, leftOf(trial, bare))) {
+    const rests = suspects.map(restWithout);
+    const least = rests.reduce((a, b) => Math.min(a, b));
+    const best = rests.findIndex((rest) => rest <= least + AS_MUCH * trial.amplitude);
+    if (ends(trial, rests[best])) return named(trial, suspects[best], rests[best]);
   }
-  return gainsOrUnknown(plan, amplitude, left, ends);
+  return gainsOrUnknown(trial);
 }
 
-/** Gains that are tried, as shares of the candidate's own. */
-const SOFTER: readonly (readonly [number, string])[] = [
-  [1 / 2, 'half'],
-  [1 / 4, 'a quarter of'],
-  [1 / 8, 'an eighth of'],
-];
+const leftOf = ({ period }: Trial, changed: LoopPlan): number => whatIsLeft(changed, period).amplitude;
+const ends = ({ amplitude }: Trial, rest: number): boolean => rest < HALF * amplitude;
+const named = (trial: Trial, { cause, words }: Suspect, rest: number): CycleFinding => ({
+  cause,
+  why: whyWords(trial, `without ${words}`, rest),
+});
 
-function gainsOrUnknown(
-  plan: LoopPlan,
-  amplitude: number,
-  left: (changed: LoopPlan) => Left,
-  ends: (rest: Left) => boolean,
-): CycleFinding {
-  const { controller } = plan;
-  if (controller.kind !== 'pi') return { cause: 'unknown', why: 'A locked throttle has no gains.' };
-  let why = '';
+function gainsOrUnknown(trial: Trial): CycleFinding {
+  const { controller } = trial.plan;
+  let why = 'A locked throttle has no gains.';
+  if (controller.kind !== 'pi') return { cause: 'unknown', why };
   for (const [share, words] of SOFTER) {
     const softer = { ...controller, kp: share * controller.kp, ki: share * controller.ki };
-    const rest = left({ ...plan, controller: softer });
-    why = `With ${words} the gains ${leftWords(rest.amplitude, amplitude)}`;
-    if (ends(rest)) return { cause: 'gains', why: `${why}${lateWords(plan, left, ends)}` };
+    const rest = leftOf(trial, { ...trial.plan, controller: softer });
+    why = whyWords(trial, `with ${words} the gains`, rest);
+    if (ends(trial, rest)) return { cause: 'gains', why: `${why}${lateWords(trial)}` };
   }
   return { cause: 'unknown', why };
 }
 
 /** What beside lower gains would end it. */
-function lateWords(plan: LoopPlan, left: (changed: LoopPlan) => Left, ends: (rest: Left) => boolean): string {
+function lateWords(trial: Trial): string {
   for (const [limitation, words] of LATENESS) {
-    if (!has(plan, limitation)) continue;
-    const rest = left(without(plan, limitation));
-    if (ends(rest)) return ` Without ${words}: ${inKmh(rest.amplitude)}.`;
+    if (!has(trial.plan, limitation)) continue;
+    const rest = leftOf(trial, without(trial.plan, limitation));
+    if (ends(trial, rest)) return ` So it is without ${words}: ${inKmh(rest)}.`;
   }
   return '';
 }
 
-const leftWords = (rest: number, amplitude: number): string =>
-  Number.isFinite(rest)
-    ? `${inKmh(rest)} of the amplitude of ${inKmh(amplitude)} on a steady road is left.`
-    : 'the run would end on the way.';
+const whyWords = ({ amplitude }: Trial, change: string, rest: number): string =>
+  `On a steady road of the same mean grade it goes on by itself at ${inKmh(amplitude)}; ${change} ${
+    Number.isFinite(rest) ? `${inKmh(rest)} of that is left` : 'the run would end on the way'
+  }.`;

@@ -150,7 +150,7 @@ function cycleOf(
     turns,
     speedAmplitude: amplitude,
     throttleAmplitude: throttleAmplitude(result.bins, oscillation),
-    ...causeOfCycle(replay, alone.amplitude, before),
+    ...causeOfCycle({ ...replay, amplitude: alone.amplitude }, before),
   };
 }
 

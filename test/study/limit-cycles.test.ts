@@ -55,7 +55,14 @@ describe('a limit cycle', () => {
     expect(cycle!.turns).toBeGreaterThan(20);
     expect(cycle!.from).toBeGreaterThan(90);
     expect(cycle!.to).toBeGreaterThan(2900);
-    expect(cycle!.why).toMatch(/^With half the gains 0\.[0-2] km\/h of the amplitude of [0-9.]+ km\/h/);
+    expect(cycle!.why).toMatch(/at [0-9.]+ km\/h; with half the gains 0\.[0-2] km\/h of that is left\.$/);
+  });
+
+  it('of gains too high for a late actuator tells what else would end it', () => {
+    const dead = vehicleOf({ actuator: { lag: 0.3, deadTime: 0.8, rateLimit: 2 } });
+    const [cycle] = cyclesOf(planOf(kicked(3000), dead, gainsOf(1.2, 0.05)));
+    expect(cycle?.cause).toBe('gains');
+    expect(cycle?.why).toMatch(/ So it is without the actuator's dead time: 0\.[01] km\/h\.$/);
   });
 
   it('of an integral that fights slack has the period and amplitude of the describing function of play', () => {
@@ -69,7 +76,7 @@ describe('a limit cycle', () => {
     // Behind the play the throttle moves by half of it less on either side.
     expectClose(cycle!.throttleAmplitude, predicted.fed - 0.05, 0.1 * predicted.fed);
     expect(cycle!.why).toMatch(
-      /^Without the slack of the actuator 0\.0 km\/h of the amplitude of 1\.0 km\/h/,
+      /by itself at 1\.0 km\/h; without the slack of the actuator 0\.0 km\/h of that is left\.$/,
     );
   });
 
@@ -84,7 +91,7 @@ describe('a limit cycle', () => {
     expectClose(cycle!.period, predicted.period, 0.1 * predicted.period);
     const triangle = TRIANGLE * predicted.speed;
     expectClose(cycle!.speedAmplitude, triangle, 0.1 * triangle);
-    expect(cycle!.why).toMatch(/^Without the step of the fuel cut 0\.[01] km\/h of the amplitude/);
+    expect(cycle!.why).toMatch(/; without the step of the fuel cut 0\.[01] km\/h of that is left\.$/);
     // On a grade that needs more than the step it holds still.
     expect(cyclesOf(planOf(kicked(3000, gradeFor(60)), cut, gainsOf(0.2, 0.04)))).toEqual([]);
   });
