@@ -26,6 +26,8 @@ vehicle: vehicle.yaml
 hold:
   set_speed_kmh: 60
   # changes: [{at_km: 3, set_speed_kmh: 50, ramp_m_s2: 0.6}]
+  # gear: 4                         # of an engine with gears; the rider may change it on the way:
+  # shifts: [{at_km: 1.2, gear: 3}, {at_km: 2.6, gear: 4}]
 
 rider: {brakes_above_kmh: 8}        # the rider holds this overspeed with the brake
 
@@ -53,16 +55,31 @@ road_load: {cda_m2: 0.55, crr: 0.014}
 # ... or as regulations publish it:
 # road_load: {f0_n: 9.1, f2_n_per_kmh2: 0.0253, test_mass_kg: 205}
 
-# Force at the wheel in the gear that is ridden. There is also kind: electric.
+# Force at the wheel in the gear that is ridden ...
 drive:
   kind: force
   peak_force_n: 340
   peak_power_kw: 8
   closed_throttle_force_n: 45       # what the engine holds back with the throttle closed
   lag_s: 0.15
+# ... or an engine with gears, of which hold.gear in the case engages one. There are also kind: variator (a belt) and
+# kind: electric (with a battery, if you like).
+# drive:
+#   kind: engine
+#   torque: {full_load: [{rpm: 2000, nm: 9}, {rpm: 6500, nm: 10.5}, {rpm: 9500, nm: 8.5}]}
+#   closed_throttle_drag: [{rpm: 1500, nm: 0.9}, {rpm: 10000, nm: 2.6}]
+#   rev_limit_rpm: 10000
+#   gear_ratios: [2.8, 1.85, 1.4, 1.1, 0.92, 0.81]
+#   primary_ratio: 3.35
+#   final_ratio: 2.9
+#   wheel_radius_m: 0.3
+#   gear: 4
+#   gearbox: {kind: clutch}         # the rider shifts, and that cancels the hold; also fixed or automatic
+#   lag_s: 0.15
 
-actuator: {lag_s: 0.06, rate_limit_pct_per_s: 400}
-speed_sensor: {filter_s: 0.05, delay_s: 0.02}
+actuator: {lag_s: 0.06, rate_limit_pct_per_s: 400}   # also dead_time_s, resolution_pct, travel_pct, slack_pct
+speed_sensor: {filter_s: 0.05, delay_s: 0.02}        # also pulses_per_turn and how they are read, noise_sd_kmh
+# traction: {wheelbase_m: 1.3, mass_centre_ahead_m: 0.6, mass_centre_height_m: 0.65}   # grip of the driven wheel
 `;
 
 /** Grades of the invented road, each over its length [m], [%]. */

@@ -4,6 +4,7 @@ import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { starterCase } from '../../src/case/starter-case.ts';
 import { vehicleOf } from '../../src/case/vehicle-of.ts';
+import { vehicleOfCase } from '../../src/case/vehicle-of-case.ts';
 
 const files = new Map(starterCase().map(({ name, text }) => [name, text]));
 
@@ -36,6 +37,23 @@ it('works with every line that is commented out', () => {
   expect(() =>
     readVehicleFile(files.get('vehicle.yaml')!.replace(/^road_load: .*$/m, load), 'v.yaml'),
   ).not.toThrow();
+});
+
+it('works with the engine that is commented out, its gears and its grip', () => {
+  const text = files.get('vehicle.yaml')!;
+  const [before, after] = text.split(/^drive:\n(?: {2}.*\n)+/m) as [string, string];
+  const engine = after
+    .replace(/^# drive:\n(?:# {3}.*\n)+/m, (block) => block.replaceAll(/^# /gm, ''))
+    .replace(/^# traction: /m, 'traction: ');
+  const vehicle = readVehicleFile(before + engine, 'vehicle.yaml');
+  expect(vehicle.file.drive?.kind).toBe('engine');
+  expect(vehicle.file.traction).toBeDefined();
+  const ridden = files.get('case.yaml')!.replaceAll(/^ {2}# (gear|shifts): /gm, '  $1: ');
+  const document = readCaseFile(ridden, 'case.yaml');
+  expect(document.file.hold.shifts).toHaveLength(2);
+  const compiled = vehicleOfCase(document, vehicle);
+  expect(compiled.drive.gear).toBe(3);
+  expect(candidatesOf(document, compiled)).toHaveLength(4);
 });
 
 it('brings a track with rising distances, up and down again', () => {
