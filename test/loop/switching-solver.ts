@@ -13,7 +13,7 @@ export interface LawScene {
   readonly throttleEdges: readonly number[];
 }
 
-/** Speed at each controller sample [m/s], before the step of that sample; PI with back-calculation. */
+/** Speed at each controller sample [m/s]; PI with back-calculation. A rate limit needs a lag of the actuator. */
 export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): number[] {
   const { road, vehicle, hold } = plan;
   const { drive, roadLoad, mass, actuator } = vehicle;
@@ -50,6 +50,7 @@ export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): nu
   let j = 0;
   let u = 0;
   let rests = false;
+  let rated = false;
   let plate = 0;
   const plateAt = (y: number): number => (rests ? plate : u < y ? y + play : y - play);
   // State: v, q, y (actuator), x (behind the drive's lag).
@@ -58,11 +59,11 @@ export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): nu
   const slope = (s: State): number[] => {
     const [v, q, y, x] = s;
     const force = ratio === 0 ? 0 : ratio * law.torque(ratio * v, throttle(s), i, j);
-    const wanted = ta > 0 ? (u - y) / ta : Math.sign(u - y) * (Math.abs(u - y) > 1e-13 ? rate : 0);
+    const wanted = ta > 0 ? (u - y) / ta : 0;
     return [
       (force - resistance(v, q)) / inertia,
       v,
-      Math.min(rate, Math.max(-rate, wanted)),
+      rated ? Math.sign(u - y) * rate : wanted,
       td > 0 ? (plateAt(y) - x) / td : 0,
     ];
   };
@@ -89,14 +90,16 @@ export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): nu
       x - (law.throttleEdges[j] ?? inf),
       (law.throttleEdges[j - 1] ?? -inf) - x,
       rests ? Math.abs(s[2] - plate) - play : -inf,
+      ta > 0 ? (rated ? -1 : 1) * (Math.abs(u - s[2]) / ta - rate) : -inf,
     );
   };
   /** Enters the modes that hold just behind a border. */
   const turn = (s: State): void => {
     const ahead = rk4(s, 1e-9);
     if (rests && Math.abs(ahead[2] - plate) - play > 0) rests = false;
-    i = ratio === 0 ? 0 : below(law.shaftEdges, ratio * rk4(s, 1e-9)[0]);
-    j = below(law.throttleEdges, throttle(rk4(s, 1e-9)));
+    rated = ta > 0 && Math.abs(u - ahead[2]) / ta > rate;
+    i = ratio === 0 ? 0 : below(law.shaftEdges, ratio * ahead[0]);
+    j = below(law.throttleEdges, throttle(ahead));
   };
   const runSample = (start: State): State => {
     let s = start;
@@ -120,8 +123,6 @@ export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): nu
         turn(s);
         left -= high;
       }
-      if (ta === 0 && rate < Number.POSITIVE_INFINITY && Math.abs(u - s[2]) < rate * step)
-        throw new Error('a bare ramp is not for this solver');
     }
     return s;
   };
@@ -233,6 +234,7 @@ export function switchingSpeeds(plan: LoopPlan, law: LawScene, step: number): nu
     // At rest until the actuator has come to the end of the play on the side to which it goes.
     rests = play > 0 && (u < y ? plate - (y + play) < -1e-13 : u > y ? y - play - plate < -1e-13 : true);
     s = [s[0], s[1], y, s[3]];
+    rated = ta > 0 && Math.abs(u - y) / ta > rate;
     x = throttle(s);
     i = ratio === 0 ? 0 : below(law.shaftEdges, ratio * s[0]);
     j = below(law.throttleEdges, x);
