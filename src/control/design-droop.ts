@@ -57,7 +57,7 @@ export function designDroop(demand: DroopDemand): Designed {
       design: { gains, frequency },
     };
   };
-  const guess = (Math.abs(gradePush(demand, gradeStep)) / droop) * exp(-damping * peakAngle(damping));
+  const guess = (Math.abs(gradePush(design, gradeStep)) / droop) * exp(-damping * peakAngle(damping));
   const result = searchFrequency(trial, droop, guess, design.careful);
   if (result.status === 'limit')
     throw notFeasible(

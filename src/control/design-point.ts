@@ -3,7 +3,7 @@ import { type StepFigures, stepFigures } from '../linear/step-figures.ts';
 import { type Complex, complex, sizeOfComplex } from '../numeric/complex.ts';
 import { InputError } from '../problems/input-error.ts';
 import { toKmh, toPct } from '../units/convert.ts';
-import { effectiveMass, type LinearVehicle, linearise } from '../vehicle/linearise.ts';
+import { type LinearVehicle, linearise } from '../vehicle/linearise.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -68,15 +68,15 @@ export function designLoop(point: DesignPoint): DesignLoop {
     );
   const { actuator, drive, sensor } = point.vehicle;
   const delays = actuator.deadTime + sensorDelay(sensor, point.at) + point.computingDelay + point.sample / 2;
-  const lags = actuator.lag + drive.lag + sensor.filter + delays;
+  const lags = actuator.lag + drive.lag + (model.belt?.lag ?? 0) + sensor.filter + delays;
   return { point, model, loop: sampledLoop(point.vehicle, model, point), careful: 0.3 / lags };
 }
 
 /** Acceleration lost at once when the road steps from the grade of the point by `step` [m/s2], positive uphill. */
-export function gradePush(point: DesignPoint, step: number): number {
+export function gradePush({ point, model }: DesignLoop, step: number): number {
   const { vehicle, at, surroundings } = point;
   const after = requiredForce(vehicle, at, { ...surroundings, grade: surroundings.grade + step });
-  return (after - requiredForce(vehicle, at, surroundings)) / effectiveMass(vehicle);
+  return (after - requiredForce(vehicle, at, surroundings)) / model.effectiveMass;
 }
 
 /** Time in which a pair of poles has died out, and the peak of its response is over [s]. */
@@ -100,7 +100,7 @@ export function droopOf(design: DesignLoop, gains: Gains, gradeStep: number, dur
   const push = {
     reference: 0,
     setpointWeight: 0,
-    disturbance: -Math.abs(gradePush(design.point, gradeStep)),
+    disturbance: -Math.abs(gradePush(design, gradeStep)),
   };
   const { speed } = design.loop.respond(gains, push, duration, duration / 2000);
   let lost = 0;

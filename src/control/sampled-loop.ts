@@ -48,8 +48,9 @@ export interface Push {
  *
  *     dy/dt = (u - y) / ta,  dx/dt = (y - x) / td,  dv/dt = a v + b x + d,  dz/dt = (v - z) / tf
  *
- * solved exactly over a sample. The controller sees scale z(t - delay), all delays in one; a delay that is no whole number of samples is
- * met by the state at the instant within the sample.
+ * and, with a belt, its ratio as told in vehicle/belt-motion.ts, solved exactly over a sample. The controller sees
+ * scale z(t - delay), all delays in one; a delay that is no whole number of samples is met by the state at the instant
+ * within the sample.
  */
 export interface SampledLoop {
   /** Speed at every `spacing` from time 0 for a whole number of samples [m/s], all starting from rest. */
@@ -236,12 +237,16 @@ interface Plant {
 /** Shorter lags [s] change nothing that can be seen, and would make the matrices stiff beyond any use. */
 const LEAST_LAG = 1e-6;
 
-/** Only the lags that exist become states: each first-order lag follows the one before it. */
+/** Only the lags that exist become states: each first-order lag follows the one before it; the ratio of a belt comes last. */
 function plantOf(vehicle: Vehicle, model: LinearVehicle): Plant {
   const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > LEAST_LAG);
   const filter = vehicle.sensor.filter > LEAST_LAG ? vehicle.sensor.filter : 0;
+  const belt =
+    model.belt !== null && model.belt !== undefined && model.belt.lag > LEAST_LAG ? model.belt : null;
   const speed = lags.length;
-  const order = speed + 1 + (filter > 0 ? 1 : 0);
+  const measured = filter > 0 ? speed + 1 : speed;
+  const ratio = measured + 1;
+  const order = belt === null ? ratio : ratio + 1;
   const a = Matrix.zeros(order, order);
   const b = Matrix.zeros(order, 2);
   const drivenBy = (state: number, from: number, gain: number): void => {
@@ -252,12 +257,19 @@ function plantOf(vehicle: Vehicle, model: LinearVehicle): Plant {
     a.set(i, i, -1 / lag);
     drivenBy(i, i - 1, 1 / lag);
   });
-  a.set(speed, speed, model.a);
-  drivenBy(speed, speed - 1, model.b);
-  b.set(speed, 1, 1);
+  a.set(speed, speed, belt?.a ?? model.a);
+  drivenBy(speed, speed - 1, belt?.b ?? model.b);
+  // Disturbances are in terms of the mass of a belt at rest.
+  b.set(speed, 1, belt === null ? 1 : model.effectiveMass / belt.mass);
   if (filter > 0) {
-    a.set(speed + 1, speed + 1, -1 / filter);
-    a.set(speed + 1, speed, 1 / filter);
+    a.set(measured, measured, -1 / filter);
+    a.set(measured, speed, 1 / filter);
   }
-  return { a, b, order, speed, measured: filter > 0 ? speed + 1 : speed };
+  if (belt !== null) {
+    a.set(speed, ratio, belt.c);
+    a.set(ratio, ratio, -1 / belt.lag);
+    a.set(ratio, speed, belt.bySpeed / belt.lag);
+    drivenBy(ratio, speed - 1, belt.byThrottle / belt.lag);
+  }
+  return { a, b, order, speed, measured };
 }

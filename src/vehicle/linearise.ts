@@ -1,4 +1,5 @@
 import { beltRatio } from './belt-law.ts';
+import { type BeltMotion, beltMotion } from './belt-motion.ts';
 import { derateFactor } from './derating.ts';
 import { throttleFor, wheelForceSlopes } from './drive-law.ts';
 import { requiredForce, resistanceSlopes } from './resistance.ts';
@@ -34,6 +35,8 @@ export interface LinearVehicle {
   readonly crosswindGain: number;
   /** m_e [kg]. */
   readonly effectiveMass: number;
+  /** How a belt comes to the rest that is taken for granted above; absent or null: no such belt. */
+  readonly belt?: BeltMotion | null;
 }
 
 /**
@@ -62,7 +65,8 @@ export function effectiveMass(
 /**
  * Linear model of the vehicle by exact derivatives; at a corner of the drive (power limit, node of a map, limit of a
  * belt) those of its upper side. Where the law steps over the operating point (fuel cut) it is that of the upper side of
- * the step, over which a hold there swings to and fro. A belt is taken to be at rest, its own lag left out.
+ * the step, over which a hold there swings to and fro. A belt is taken to be at
+ * rest; `belt` tells how it gets there.
  *
  * @param vehicle in its engaged gear
  * @param point operating point; a speed of 0 has no linear model
@@ -88,5 +92,6 @@ export function linearise(vehicle: Vehicle, point: OperatingPoint): LinearVehicl
     headwindGain: -road.byHeadwind / mass,
     crosswindGain: -road.byCrosswind / mass,
     effectiveMass: mass,
+    belt: beltMotion(vehicle, speed, throttle, derate, road.bySpeed),
   };
 }

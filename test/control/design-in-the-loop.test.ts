@@ -11,9 +11,10 @@ import { electricDrive } from '../../src/vehicle/electric-drive.ts';
 import { engineDrive } from '../../src/vehicle/engine-drive.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
 import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
+import { variatorDrive } from '../../src/vehicle/variator-drive.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
-import { singleWithGears } from '../vehicle/engines.ts';
+import { single, singleWithGears } from '../vehicle/engines.ts';
 import { referenceMotorcycle, still } from '../vehicle/vehicles.ts';
 
 const motorcycle: Vehicle = referenceMotorcycle({
@@ -57,6 +58,34 @@ const timing: Vehicle = {
 const engine: Vehicle = referenceMotorcycle({
   drive: engineDrive({ ...singleWithGears, gear: 3 }),
   actuator: { ...IDEAL_ACTUATOR, lag: 0.05, deadTime: 0.03, rateLimit: 8 },
+  sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02 },
+});
+
+// A belt between its limits, whose ratio takes 0.3 s.
+const belted: Vehicle = referenceMotorcycle({
+  mass: 200,
+  drive: variatorDrive({
+    ...single,
+    torque: {
+      kind: 'full_load',
+      shaftSpeed: Float64Array.of(300, 600, 900),
+      torque: Float64Array.of(18, 22, 20),
+      shape: 2,
+    },
+    drag: { shaftSpeed: Float64Array.of(0, 900), torque: Float64Array.of(2, 4) },
+    fuelCut: null,
+    revLimit: null,
+    inertia: 0.01,
+    lag: 0.08,
+    derate: 'none',
+    leastRatio: 7.5,
+    greatestRatio: 25,
+    wheelRadius: 0.25,
+    line: { throttle: Float64Array.of(0, 1), shaftSpeed: Float64Array.of(500, 850) },
+    ratioLag: 0.3,
+    clutch: { begins: 300, locked: 400 },
+  }),
+  actuator: { ...IDEAL_ACTUATOR, lag: 0.05 },
   sensor: { ...IDEAL_SENSOR, filter: 0.05, delay: 0.02 },
 });
 
@@ -163,6 +192,7 @@ describe.each([
   ['dead time and a counting window', late, 25],
   ['a timed period', timing, 25],
   ['an engine in its fourth gear', engine, 22],
+  ['a belt', belted, 15],
 ] as const)('a small step of set speed in the replay: %s', (_, vehicle, at) => {
   test.each([
     [8, 0.05, {}],
@@ -190,6 +220,7 @@ describe.each([
   ['scooter', scooter, 14],
   ['dead time and a counting window', late, 25],
   ['an engine in its fourth gear', engine, 22],
+  ['a belt', belted, 15],
 ] as const)('a small step of grade in the replay: %s', (_, vehicle, at) => {
   test.each([
     [2 / 3.6, 0.06, 0.8, {}],
