@@ -23,11 +23,11 @@ export interface Demand {
   /** Greatest and least wheel force there [N]: full throttle; closed throttle or full regeneration. */
   readonly upper: Float64Array;
   readonly lower: Float64Array;
-  /** Greatest wheel force that the grip of the driven wheel passes on [N], `upper` and `lower` kept within it; null: grip not known. */
+  /** Greatest wheel force that the driven wheel passes on with the front wheel on the road [N], `upper` and `lower` kept within the grip; null: grip not known. */
   readonly grip: Float64Array | null;
   /** The same road in every gear, first gear first; one entry for a drive without gears. */
   readonly gears: readonly GearDemand[];
-  /** Index of the gear that is engaged, or that the rider's plan has there, knot by knot; of an automatic gearbox the highest that holds, or the one that comes nearest. */
+  /** Index of the gear that is engaged, or that the rider's plan has there, knot by knot; of an automatic gearbox the highest that holds, or the one that comes nearest, of those that its up line at full throttle does not leave. */
   readonly gear: Uint8Array;
   /**
    * Share of the range in use: required / upper while the drive must push; minus required / lower while it must hold back.
@@ -51,12 +51,12 @@ export interface Demand {
   readonly settling: readonly Stretch[];
 }
 
-/** Demand and authority in one gear, knot by knot [N]; see Demand. */
+/** Demand and authority in one gear, knot by knot [N]; see Demand. Where the gear cannot turn at the set speed there is no force. */
 export interface GearDemand {
   readonly upper: Float64Array;
   readonly lower: Float64Array;
   readonly share: Float64Array;
-  /** Shaft speed at the set speed, in the unit of the drive's law. */
+  /** Shaft speed at the set speed, in the unit of the drive's law; of a belt that at the throttle which holds it. */
   readonly shaftSpeed: Float64Array;
 }
 
@@ -120,7 +120,7 @@ export interface HillGears {
 /** What one candidate did on a hill. */
 export interface HillOutcome {
   readonly candidate: string;
-  /** It left its band or sat on a limit here. */
+  /** It left its band, sat on a limit, or went beyond the grip of its driven wheel here. */
   readonly affected: boolean;
   /** Extreme error on what the hill is answerable for, signed [m/s]: lost (negative) or gained; so are the times. */
   readonly speedChange: number;

@@ -30,9 +30,12 @@ export function lockedCause(
   const settles = settledSpeed(kept, surroundingsBetween(road, knot, 0), throttle, demand.setSpeed[knot]);
   const ratio = belt === null ? gears[gear].ratio : belt.greatest;
   const inIt = gears.length > 1 ? ` in ${gearName(gear)}` : '';
-  if (settles >= SPEED_CEILING) return { cause, why: `${asked}. On this slope it would run away.` };
+  if (settles >= SPEED_CEILING) return { cause, why: `${asked}. There it would run away.` };
   if (settles > 0 && ratio * settles >= stallSpeed)
-    return { cause, why: `${asked}. On this slope it would settle at ${inKmh(settles)}${inIt}.` };
+    return {
+      cause,
+      why: `${asked}. There, from the set speed, it would settle at ${inKmh(settles)}${inIt}.`,
+    };
   const end = stallSpeed > 0 ? `could turn no longer${inIt}` : 'stood still';
-  return { cause, why: `${asked}. On this slope no speed would hold: it would slow down until it ${end}.` };
+  return { cause, why: `${asked}. There no speed would hold: it would slow down until it ${end}.` };
 }

@@ -39,6 +39,7 @@ export interface QuasiSteadyPlan {
  * design is the design's own. The effective mass is that of the gear in force. Shifts take no time and no energy here:
  * the speed that an open clutch loses is not in it, nor what voltage and heat take away, and a belt is at rest at every
  * speed.
+ *
  * Work and energy along a path: any mechanics textbook; the deficit form is how truck climbing lanes are laid out
  * (AASHTO, A Policy on Geometric Design of Highways and Streets, speed-distance curves, from memory).
  *

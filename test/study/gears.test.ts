@@ -6,7 +6,7 @@ import { engineDrive } from '../../src/vehicle/engine-drive.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { textbookEngine } from '../vehicle/engines.ts';
-import { gearedVehicle, INERTIA, RATIOS } from './geared.ts';
+import { beltVehicle, gearedVehicle, INERTIA, RATIOS } from './geared.ts';
 import { roadOf } from './road-of.ts';
 import { HOLD_60, vehicleOf } from './vehicle-of.ts';
 
@@ -102,6 +102,21 @@ describe('demand in every gear', () => {
     expect([0.04, 0.07, 0.12].map(gearAt)).toEqual([3, 2, 1]);
     // 600 N of the lowest gear would do for 22 %, but it turns at 333 rad/s and is left for the next: the nearest.
     expect(gearAt(0.22)).toBe(1);
+  });
+});
+
+describe('demand on a belt', () => {
+  it('is that of its line: power over speed, and the shaft speed of the throttle that holds', () => {
+    const demand = demandOf(roadOf([{ length: 100, grade: 0.08 }]), beltVehicle(), HOLD_60);
+    const speed = 60 / 3.6;
+    expect(demand.gears).toHaveLength(1);
+    expectClose(demand.upper[0]!, 6400 / speed, 1e-6);
+    expectClose(demand.lower[0]!, -1000 / speed, 1e-6);
+    // At throttle x the belt holds 500 + 300 x rad/s and the engine gives -2 + 10 x N m.
+    const power = demand.required[0]! * speed;
+    const [a, b, c] = [3000, 5000 - 600, -1000 - power];
+    const x = (-b + Math.sqrt(b * b - 4 * a * c)) / (2 * a);
+    expectClose(demand.gears[0]!.shaftSpeed[0]!, 500 + 300 * x, 1e-6);
   });
 });
 

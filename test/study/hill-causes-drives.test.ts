@@ -8,7 +8,7 @@ import { engineDrive } from '../../src/vehicle/engine-drive.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { textbookEngine } from '../vehicle/engines.ts';
-import { gearedVehicle } from './geared.ts';
+import { beltVehicle, gearedVehicle } from './geared.ts';
 import { roadOf } from './road-of.ts';
 import { oneHill, outcomeOn, STIFF, study } from './scene.ts';
 import { HOLD_60, piOf, planOf, vehicleOf } from './vehicle-of.ts';
@@ -53,6 +53,15 @@ describe('the cause of a hill that a real drive meets', () => {
     expect(causeOn(planOf(oneHill(0.3), gearedVehicle(), STIFF))).toBe('torque');
     // 30 N m up to 500 rad/s are 15 kW; 45 % asks 1010 N, which is 16.8 kW at 60 km/h.
     expect(causeOn(planOf(oneHill(0.45), gearedVehicle(), STIFF))).toBe('power');
+  });
+
+  it('is power of a belt drive, which has no gears to change', () => {
+    // 6.4 kW are 384 N at 60 km/h; 15 % asks 438 N.
+    const { hill, outcome } = firstOutcome(planOf(oneHill(0.15), beltVehicle(), STIFF));
+    expect(outcome.cause).toBe('power');
+    expect(hill.gears).toBeNull();
+    const gear = outcome.wouldHold.find(({ lever }) => lever === 'gear')!;
+    expect(gear.holds).toEqual({ none: 'A belt has no gears to change.' });
   });
 
   it('is derating of an engine where it has no lower gear, and the gear where it has', () => {
