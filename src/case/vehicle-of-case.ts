@@ -25,10 +25,16 @@ export function vehicleOfCase(document: CaseDocument, vehicle: VehicleDocument):
   return vehicleOf(vehicle, { gear: hold.gear ?? null, surface: road.surface ?? 'dry' });
 }
 
-/** Defaults of a case that count only for such a vehicle. */
-export function rideDefaults({ file }: CaseDocument, vehicle: VehicleDocument): readonly DefaultUsed[] {
-  if (vehicle.file.traction === undefined || file.road.surface !== undefined) return [];
-  return [{ key: 'road.surface', value: 'dry', of: 'case', source: NOT_GIVEN }];
+/** Every default that a ride uses: those of case and vehicle that the other does not have the last word on. */
+export function rideDefaults(document: CaseDocument, vehicle: VehicleDocument): readonly DefaultUsed[] {
+  const { hold, road } = document.file;
+  const dry: DefaultUsed = { key: 'road.surface', value: 'dry', of: 'case', source: NOT_GIVEN };
+  const slips = vehicle.file.traction !== undefined && road.surface === undefined;
+  return [
+    ...document.defaults,
+    ...(slips ? [dry] : []),
+    ...vehicle.defaults.filter(({ key }) => hold.gear === undefined || key !== 'drive.gear'),
+  ];
 }
 
 function surfaceProblems({ source, file }: CaseDocument, vehicle: VehicleDocument): Problem[] {

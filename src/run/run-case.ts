@@ -103,7 +103,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     const candidate = candidates[i] as Candidate;
     const loop =
       candidate.controller.kind === 'pi'
-        ? loopStability(vehicle, candidate.controller, speeds, atSeaLevel(document))
+        ? loopStability(vehicle, candidate.controller, speeds, atSeaLevel(document), gearsDriven(result))
         : null;
     return { ...candidate, result, figures: figures[i]?.all ?? {}, loop, full };
   });
@@ -128,7 +128,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     segments: segmentRuns(segments, replayed),
     requirements: findings,
     spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
-    defaults: [...document.defaults, ...rideDefaults(document, vehicleDocument), ...vehicleDocument.defaults],
+    defaults: rideDefaults(document, vehicleDocument),
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,
@@ -186,4 +186,9 @@ function tooManyBands(document: CaseDocument, bands: readonly number[]): InputEr
     found: bands.map((one) => `${toKmh(one).toFixed(2)} km/h`).join(', '),
     allowed: `at most ${MOST_BANDS} bands`,
   });
+}
+
+/** Gears in which a run was driven, indices into the drive's gears. */
+function gearsDriven({ bins }: LoopResult): number[] {
+  return [...new Set(bins.gear.subarray(0, bins.size))];
 }

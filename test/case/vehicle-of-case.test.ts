@@ -58,9 +58,18 @@ it('takes the grip of the surface, dry unless said', () => {
   expect(vehicleOfCase(theCase('set_speed_kmh: 60', '{surface: wet}'), gripping).traction?.friction).toBe(
     0.3,
   );
-  expect(rideDefaults(dry, gripping)).toMatchObject([{ key: 'road.surface', value: 'dry', of: 'case' }]);
-  expect(rideDefaults(dry, vehicle())).toEqual([]);
-  expect(rideDefaults(theCase('set_speed_kmh: 60', '{surface: wet}'), gripping)).toEqual([]);
+  const listed = (document: typeof dry, of: typeof gripping) =>
+    rideDefaults(document, of).find(({ key }) => key === 'road.surface');
+  expect(listed(dry, gripping)).toMatchObject({ value: 'dry', of: 'case' });
+  expect(listed(dry, vehicle())).toBeUndefined();
+  expect(listed(theCase('set_speed_kmh: 60', '{surface: wet}'), gripping)).toBeUndefined();
+});
+
+it('lists the highest gear as a default only where the case does not engage one', () => {
+  const gearOf = (hold: string) =>
+    rideDefaults(theCase(hold), vehicle()).find(({ key }) => key === 'drive.gear')?.value;
+  expect(gearOf('set_speed_kmh: 60')).toBe('2');
+  expect(gearOf('set_speed_kmh: 50, gear: 1')).toBeUndefined();
 });
 
 it('tells the plan of shifts in metres and from gear 0', () => {
