@@ -31,6 +31,8 @@ export function inGear<V extends { readonly drive: Drive }>(vehicle: V, gear: nu
       peakForce: scale * drive.peakForce,
       closedThrottleForce: scale * drive.closedThrottleForce,
       regenerationForce: scale * drive.regenerationForce,
+      withoutFuelCut:
+        drive.withoutFuelCut === null ? null : inGear({ drive: drive.withoutFuelCut }, gear).drive,
     },
   };
 }

@@ -168,3 +168,55 @@ describe('what is said of a locked throttle', () => {
     expect(saidOn(0.0075)).toContain('no speed would hold');
   });
 });
+
+describe('hills of real drives on any road', () => {
+  it('have finite figures and whole sentences, on seeded random roads', () => {
+    let state = 2718;
+    const random = (): number => {
+      state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+      return state / 4294967296;
+    };
+    const gearboxes = [
+      { kind: 'fixed' },
+      { kind: 'clutch', open: 0.5, resume: 1 },
+      {
+        kind: 'automatic',
+        throttle: Float64Array.of(0, 0.8, 1),
+        upSpeed: Float64Array.of(180, 200, 420),
+        downSpeed: Float64Array.of(110, 110, 150),
+        gap: 0.4,
+        dwell: 1,
+      },
+    ] as const;
+    for (const gearbox of gearboxes) {
+      const road = roadOf(
+        Array.from({ length: 5 }, () => ({ length: 80 + 300 * random(), grade: 0.3 * (random() - 0.5) })),
+      );
+      const traction = {
+        friction: 0.2 + 0.6 * random(),
+        wheelbase: 1.3,
+        massCentreAhead: 0.65,
+        massCentreHeight: 0.6,
+      };
+      const vehicle = gearedVehicle({ gearbox, gear: 2 }, { traction, actuator: { slack: 0.05 } });
+      const { hills } = study({
+        locked: planOf(road, vehicle, { kind: 'locked', throttle: 'level' }),
+        stiff: planOf(road, vehicle, STIFF, {
+          rider: { brakesAbove: null, shifts: gearbox.kind === 'clutch' ? [{ distance: 300, gear: 1 }] : [] },
+        }),
+      });
+      for (const hill of hills) {
+        const { gears, brakePower, brakeEnergy, share } = hill;
+        for (const figure of [...gears!.sustained, brakePower, brakeEnergy, share])
+          expect(Number.isFinite(figure)).toBe(true);
+        for (const { why, wouldHold, speedChange } of hill.outcomes) {
+          expect(Number.isFinite(speedChange)).toBe(true);
+          for (const words of [why, ...wouldHold.map((remedy) => remedy.words)]) {
+            expect(words.endsWith('.')).toBe(true);
+            expect(words).not.toMatch(/NaN|Infinity|undefined|null/);
+          }
+        }
+      }
+    }
+  });
+});
