@@ -75,8 +75,8 @@ try {
   show('fast / default scheme', factor(median(rounds.map((r) => r.f.seconds / r.e.seconds))), '(goal 0.6)');
   show('  default, ns a tick', nsPerTick(median(rounds.map((r) => r.e.seconds)), last.e.result).toFixed(0));
 
-  console.log('\nThe same road, default scheme: vehicles of every kind / the plain force, ns a tick');
-  const plain = benchPlan(library, road, 'exact');
+  console.log('\n50 km of it, default scheme: vehicles of every kind / the plain force, ns a tick');
+  const plain = benchPlan(library, benchRoad(50 * KM), 'exact');
   const kinds = benchKinds(library, plain.vehicle).map((kind) => ({
     ...kind,
     plan: { ...plain, vehicle: kind.vehicle },
