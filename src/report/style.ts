@@ -106,8 +106,11 @@ thead{display:table-header-group}
 .card .scroll{margin:0}
 .card th,.card td{padding-top:.14rem;padding-bottom:.14rem}
 .dense{font-size:7pt}
+.dense th,.dense td{padding-right:.4rem}
+.dense .who{white-space:normal}
 section>p:has(+figure),section>p:has(+.scroll),section>p:has(+.keys),section>p:has(+p+.keys){break-after:avoid}
 #force svg{max-height:58mm}
+#force:has(tbody tr:nth-child(2)) svg{max-height:96mm}
 #lanes svg:not(.key){max-height:106mm}
 .card p,.card ul{font-size:7.6pt;line-height:1.35}
 .card table{font-size:7pt}

@@ -10,17 +10,21 @@ import { fixtureResult } from '../report/fixture.ts';
 
 let browser: Browser;
 let folder: string;
-let url: string;
+/** Of a plain drive, and of an engine with gears, shifts and limit cycles. */
+const urls = { plain: '', engine: '' };
+type Drive = keyof typeof urls;
 
 beforeAll(async () => {
   folder = mkdtempSync(join(tmpdir(), 'report-'));
-  const file = join(folder, 'report.html');
-  const result = fixtureResult({ lengthKm: 18 });
-  const none = { none: 'it was not back within 1 km/h for 3 s in two minutes' };
-  const unmeasured = { ...result.requirements[0]!, measured: none, margin: none };
-  const requirements = [...result.requirements, unmeasured];
-  writeFileSync(file, renderReport({ ...result, requirements }, { units: 'kmh' }));
-  url = pathToFileURL(file).href;
+  for (const drive of ['plain', 'engine'] as const) {
+    const file = join(folder, `${drive}.html`);
+    const result = fixtureResult(drive === 'engine' ? { engine: true } : { lengthKm: 18 });
+    const none = { none: 'it was not back within 1 km/h for 3 s in two minutes' };
+    const unmeasured = { ...result.requirements[0]!, measured: none, margin: none };
+    const requirements = [...result.requirements, unmeasured];
+    writeFileSync(file, renderReport({ ...result, requirements }, { units: 'kmh' }));
+    urls[drive] = pathToFileURL(file).href;
+  }
   browser = await chromium.launch({
     executablePath: process.env.CHROMIUM_PATH ?? '/usr/bin/chromium',
     args: ['--no-sandbox', '--disable-gpu', '--disable-dev-shm-usage', '--disable-background-networking'],
@@ -38,25 +42,27 @@ interface Opened {
   readonly close: () => Promise<void>;
 }
 
-async function open(width: number, colorScheme: 'light' | 'dark'): Promise<Opened> {
+async function open(drive: Drive, width: number, colorScheme: 'light' | 'dark'): Promise<Opened> {
   const context = await browser.newContext({ viewport: { width, height: 900 }, colorScheme, offline: true });
   const page = await context.newPage();
   const requests: string[] = [];
   const complaints: string[] = [];
   page.on('request', (request) => requests.push(request.url()));
   page.on('console', (message) => complaints.push(message.text()));
-  await page.goto(url);
+  await page.goto(urls[drive]);
   return { page, requests, complaints, close: () => context.close() };
 }
 
 describe.each([
-  [1400, 'light'],
-  [1400, 'dark'],
-  [400, 'light'],
-  [400, 'dark'],
-] as const)('the report at %i px, %s', (width, scheme) => {
+  ['plain', 1400, 'light'],
+  ['plain', 400, 'dark'],
+  ['engine', 1400, 'light'],
+  ['engine', 1400, 'dark'],
+  ['engine', 400, 'light'],
+  ['engine', 400, 'dark'],
+] as const)('the report of a drive that is %s at %i px, %s', (drive, width, scheme) => {
   it('breaks no rule of accessibility that a machine can check', async () => {
-    const { page, close } = await open(width, scheme);
+    const { page, close } = await open(drive, width, scheme);
     // The page has no frames: the mode that looks into none is twice as fast.
     const { violations } = await new AxeBuilder({ page }).setLegacyMode().analyze();
     expect(
@@ -72,8 +78,8 @@ describe.each([
   });
 
   it('requests only itself, is styled, and does not scroll sideways', async () => {
-    const { page, requests, complaints, close } = await open(width, scheme);
-    expect(requests).toEqual([url]);
+    const { page, requests, complaints, close } = await open(drive, width, scheme);
+    expect(requests).toEqual([urls[drive]]);
     expect(complaints).toEqual([]);
     const seen = await page.evaluate(() => ({
       over: document.documentElement.scrollWidth - document.documentElement.clientWidth,
@@ -91,7 +97,7 @@ describe.each([
   });
 
   it('keeps the words of every cell inside the cell', async () => {
-    const { page, close } = await open(width, scheme);
+    const { page, close } = await open(drive, width, scheme);
     const outside = await page.evaluate(() =>
       [...document.querySelectorAll('td, th')]
         .filter((cell) => cell.scrollWidth > cell.clientWidth + 1)
@@ -102,7 +108,7 @@ describe.each([
   });
 
   it('keeps every word of a chart inside its drawing', async () => {
-    const { page, close } = await open(width, scheme);
+    const { page, close } = await open(drive, width, scheme);
     const outside = await page.evaluate(() =>
       [...document.querySelectorAll('svg[role=img]')].flatMap((svg) => {
         const frame = svg.getBoundingClientRect();
@@ -120,7 +126,7 @@ describe.each([
   });
 
   it('sets no two words of the force chart, the lanes or a hill picture over each other', async () => {
-    const { page, close } = await open(width, scheme);
+    const { page, close } = await open(drive, width, scheme);
     const meeting = await page.evaluate(() =>
       [
         ...document.querySelectorAll('#force svg[role=img], #lanes svg[role=img], .card svg[role=img]'),
@@ -144,7 +150,7 @@ describe.each([
   });
 
   it('shades the edge behind which a table goes on', async () => {
-    const { page, close } = await open(width, scheme);
+    const { page, close } = await open(drive, width, scheme);
     const unshaded = await page.evaluate(() =>
       [...document.querySelectorAll('.scroll')]
         .filter((frame) => frame.scrollWidth > frame.clientWidth + 1)
@@ -157,7 +163,7 @@ describe.each([
 });
 
 it('prints white, without the contents, with the wide charts and no card wider than the sheet', async () => {
-  const { page, close } = await open(1400, 'dark');
+  const { page, close } = await open('engine', 1400, 'dark');
   await page.emulateMedia({ media: 'print' });
   await page.setViewportSize({ width: 690, height: 1000 });
   const seen = await page.evaluate(() => ({

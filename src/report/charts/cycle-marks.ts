@@ -6,11 +6,11 @@ import type { Scale } from './axes.ts';
 import { type Box, type Canvas, tenth } from './canvas.ts';
 
 /** Height and half length of a wave, and from one candidate's row to the next [user units]. */
-const HEIGHT = 5;
+const HEIGHT = 4;
 const HALF = 3;
 const ROW = 8;
 
-/** Limit cycles as small waves above a plot, a row for each candidate that has any, in its colour. */
+/** Limit cycles as small waves along the upper edge of a plot, a row for each candidate that has any, in its colour. */
 export function cycleMarks(view: View, { paint }: Canvas, box: Box, x: Scale): Html {
   const swinging = view.candidates.filter(({ name }) =>
     view.result.cycles.some(({ candidate }) => candidate === name),
@@ -19,7 +19,7 @@ export function cycleMarks(view: View, { paint }: Canvas, box: Box, x: Scale): H
     view.result.cycles
       .filter((cycle) => cycle.candidate === candidate.name)
       .map((cycle) => {
-        const top = box.top - HEIGHT - 2 + row * ROW;
+        const top = box.top - HEIGHT + row * ROW;
         const left = x(toKm(cycle.from));
         const waves = Math.max(2, Math.round((x(toKm(cycle.to)) - left) / HALF));
         const steps = Array.from({ length: waves }, (_, k) => `l${HALF},${k % 2 === 0 ? HEIGHT : -HEIGHT}`);

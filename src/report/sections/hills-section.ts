@@ -50,7 +50,7 @@ export function hillsSection(view: View): Section {
 ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
-<p>Under a candidate: its largest error, and why.</p>
+<p>Under a candidate: its largest error, and why.${outgrown(view) && ` Under a gear that is too high: the speed in ${view.speed.name} that each gear sustains, from the first.`}</p>
 ${allHills(view)}
 ${descents(view)}`;
   return { id: 'hills', number: 6, title: 'Hills', body };
@@ -106,7 +106,7 @@ function gearFacts(view: View, { gears, share }: Hill): string {
   const enough =
     needed === null
       ? 'no gear holds it all the way'
-      : needed === engaged
+      : needed >= engaged
         ? 'which is enough'
         : `${gearName(needed)} would be enough`;
   const each =
@@ -198,6 +198,13 @@ function sentences(view: View, runs: readonly Run[]): Html | null {
   })}</ul>`;
 }
 
+/** On some hill a gear is asked for more than it has. */
+const outgrown = ({ result: { hills } }: View): boolean =>
+  hills.some(
+    ({ gears, share }) =>
+      gears !== null && share > 1 && (gears.needed === null || gears.needed < gears.engaged),
+  );
+
 function allHills(view: View): Html {
   const geared = view.result.hills.some(({ gears }) => gears !== null);
   const rows = view.result.hills.map((hill): HtmlValue[] => [
@@ -209,7 +216,7 @@ function allHills(view: View): Html {
     fixed(hill.requiredForce),
     fixed(hill.availableForce),
     fixedApart(view.speed.of(hill.sustainedSpeed), [view.speed.of(setSpeedAt(view, hill.shareAt))]),
-    ...(geared ? gearCells(view, hill) : []),
+    ...(geared ? [gearCell(view, hill)] : []),
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
       if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
@@ -238,15 +245,12 @@ function allHills(view: View): Html {
   );
 }
 
-/** `6 → 4`, and the speeds that the gears sustain where the one in hand does not. */
-function gearCells(view: View, { gears, share }: Hill): HtmlValue[] {
-  if (gears === null) return [NO_VALUE, NO_VALUE];
+/** `6 → 4`: engaged, and needed where that does not do; below it the speed that each gear sustains. */
+function gearCell({ speed }: View, { gears, share }: Hill): HtmlValue {
+  if (gears === null) return NO_VALUE;
   const { engaged, needed, sustained } = gears;
-  const change =
-    needed === engaged ? `${engaged + 1}` : `${engaged + 1} → ${needed === null ? 'none' : needed + 1}`;
-  const speeds = sustained.map((one) => (one > 0 ? fixed(view.speed.of(one)) : NO_VALUE)).join(' ');
-  return [
-    html`<span class="who">${change}</span>`,
-    share > 1 ? html`<span class="who">${speeds}</span>` : NO_VALUE,
-  ];
+  if (needed !== null && needed >= engaged) return String(engaged + 1);
+  const change = `${engaged + 1} → ${needed === null ? 'none' : needed + 1}`;
+  const speeds = sustained.map((one) => (one > 0 ? fixed(speed.of(one)) : NO_VALUE)).join(' ');
+  return html`<span class="who">${change}</span>${share > 1 && html`<br><span class="small">${speeds}</span>`}`;
 }

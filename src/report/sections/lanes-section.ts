@@ -24,7 +24,7 @@ ${chartFigure(
     ' Brackets with gears: the rider shifts; the clutch is open, then the throttle is in the rider\u2019s hand, and the hold is off until it resumes.'
   }${
     view.result.cycles.length > 0 &&
-    html` Small waves above the first lane: <a href="#limit-cycles">limit cycles</a>.`
+    html` Small waves at the upper edge of the first lane: <a href="#limit-cycles">limit cycles</a>.`
   }${automaticWords(view)}${
     early.length > 0 &&
     ` ${early.map((candidate) => `${candidate.name} ${statusWords(candidate)}`).join('; ')}.`
