@@ -15,8 +15,9 @@ import { chooseBins } from './measure-figure.ts';
 const LEAST_AMPLITUDE = fromKmh(0.5);
 /** Share of its amplitude that an oscillation keeps on a steady road, if the road is not what makes it. */
 const BY_ITSELF = 0.5;
-/** A limit cycle that pauses for no more turns than this is told as one. */
+/** A limit cycle that pauses for no more turns than this, and goes on at a period no further off, is told as one. */
 const PAUSE_TURNS = 4;
+const ALIKE = 0.5;
 /** Bins blur the ends of a chain: it may look two turning points shorter. */
 const SCREENED_TURNINGS = 2 * LEAST_TURNS - 1;
 /** Bins see less of a swing than the samples do when a turning point lies across an edge. */
@@ -76,10 +77,11 @@ function cyclesOfRun(
   return cycles;
 }
 
-/** Of the same cause, after no more than a few turns that were too small or too irregular to count. */
+/** Of the same cause and nearly the same period, after no more than a few turns that were too small or too irregular to count. */
 function goesOn(one: LimitCycle, next: LimitCycle): boolean {
   const turnLength = (one.to - one.from) / one.turns;
-  return one.cause === next.cause && next.from - one.to <= PAUSE_TURNS * turnLength;
+  const alike = Math.abs(next.period - one.period) <= ALIKE * one.period;
+  return one.cause === next.cause && alike && next.from - one.to <= PAUSE_TURNS * turnLength;
 }
 
 function joined(one: LimitCycle, next: LimitCycle): LimitCycle {

@@ -243,6 +243,38 @@ function periodsIn(plan: LoopPlan): number[] {
 }
 
 describe('the search', () => {
+  const slack = vehicleOf({ actuator: { lag: 0.06, slack: 0.1 } });
+
+  it('finds the same under the fast scheme and over a road along time', () => {
+    const over = (road: LoopPlan['road'], scheme: LoopPlan['scheme']) =>
+      cyclesOf(planOf(road, slack, gainsOf(0.2, 0.2), { scheme }));
+    const timed = roadOver(
+      stations(240, 0.5),
+      { grade: (t) => (t > 6 && t < 7.2 ? 0.03 : 0) },
+      { speed: SPEED },
+    );
+    const [exact] = over(kicked(4000), 'exact');
+    for (const found of [over(kicked(4000), 'fast'), over(timed, 'exact')]) {
+      expect(found.map(({ cause }) => cause)).toEqual(['slack']);
+      expectClose(found[0]!.period, exact!.period, 0.1);
+      expectClose(found[0]!.speedAmplitude, exact!.speedAmplitude, 0.01);
+    }
+  });
+
+  it('passes over what a change of set speed sets swinging, and tells the speed that is held', () => {
+    // The sensor shows 5 % too much, so that the true speed is 60 km/h; then 50.
+    const hold = {
+      setSpeed: 63 / 3.6,
+      setSpeedIs: 'indicated',
+      startSpeed: 63 / 3.6,
+      changes: [{ at: { distance: 2500 }, setSpeed: 52.5 / 3.6, ramp: null }],
+    } as const;
+    const shown = { ...slack, sensor: { ...slack.sensor, scaleError: 0.05 } };
+    const found = cyclesOf(planOf(kicked(5000), shown, gainsOf(0.2, 0.2), { hold }));
+    expect(new Set(found.map(({ cause }) => cause))).toEqual(new Set(['slack']));
+    for (const { speedAmplitude } of found) expectClose(speedAmplitude * 3.6, 1, 0.15);
+  });
+
   it('names each candidate, tells its progress, and gives the same from a cold start', () => {
     const plan = planOf(kicked(2000), late, proportional(2));
     const { road, vehicle, hold, rider } = plan;
