@@ -46,7 +46,7 @@ export function runWarnings({
     ...gearWarnings(road, vehicle, rider, demand, replayed),
     ...gripWarnings(replayed, demand),
     ...batteryWarnings(replayed),
-    ...candidates.flatMap((candidate) => candidateWarnings(candidate)),
+    ...candidates.flatMap((candidate) => candidateWarnings(candidate, vehicle)),
   ];
 }
 
@@ -74,8 +74,8 @@ function deratingWarnings(road: Road, drive: Vehicle['drive']): readonly Warning
   ];
 }
 
-function candidateWarnings({ name, result, loop }: CandidateResult): readonly Warning[] {
-  const warnings: Warning[] = loopWarnings(name, loop);
+function candidateWarnings({ name, result, loop }: CandidateResult, { drive }: Vehicle): readonly Warning[] {
+  const warnings: Warning[] = loopWarnings(name, loop, drive.gears.length > 1);
   const { status, endDistance, ledger } = result;
   if (status !== 'completed')
     warnings.push({
@@ -93,9 +93,10 @@ function candidateWarnings({ name, result, loop }: CandidateResult): readonly Wa
 }
 
 /** What the linear loop says of the gains before any road does. */
-function loopWarnings(name: string, loop: CandidateResult['loop']): Warning[] {
+function loopWarnings(name: string, loop: CandidateResult['loop'], geared: boolean): Warning[] {
   if (loop === null) return [];
-  const at = `${toKmh(loop.speed).toFixed(1)} km/h on the level`;
+  const gear = geared ? ` in gear ${loop.gear + 1}` : '';
+  const at = `${toKmh(loop.speed).toFixed(1)} km/h${gear} on the level`;
   if (loop.gainMargin === null || loop.phaseMargin === null)
     return [
       {

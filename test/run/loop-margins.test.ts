@@ -68,3 +68,38 @@ test('every set speed counts, in true speed', () => {
   const worst = high!.gainMargin! < low!.gainMargin! ? high : low;
   expect(both).toEqual(worst);
 });
+
+test('every gear that was driven counts, and the words say which', () => {
+  const run = runCase({
+    file: 'case.yaml',
+    read: () =>
+      new TextEncoder().encode(`track: {profile: [{length_m: 900, grade_pct: 0}]}
+vehicle:
+  mass: {kerb_kg: 125, rider_kg: 75}
+  road_load: {cda_m2: 0.58, crr: 0.014}
+  drive:
+    kind: engine
+    torque: {peak_nm: 12, peak_rpm: 6500, falloff: 0.4}
+    closed_throttle_drag: [{rpm: 500, nm: 1}, {rpm: 9000, nm: 3}]
+    idle_rpm: 1300
+    stall_rpm: 700
+    rev_limit_rpm: 10500
+    engine_inertia_kg_m2: 0.005
+    gear_ratios: [2.8, 1.7, 1.3, 1]
+    primary_ratio: 3
+    final_ratio: 2.5
+    wheel_radius_m: 0.3
+    gearbox: {kind: clutch, open_s: 0.3, resume_s: 0.5}
+    lag_s: 0.15
+  actuator: {lag_s: 0.1}
+hold: {set_speed_kmh: 45, gear: 4, shifts: [{at_km: 0.4, gear: 2}]}
+candidates: [{name: mine, kind: pi, kp_pct_per_kmh: 60, ti_s: 1}]
+`),
+  });
+  const { loop } = run.candidates[0]!;
+  // The lower gear has 1.7 times the force at the wheel for the same throttle.
+  expect(loop!.gear).toBe(1);
+  expect(run.warnings.find(({ code }) => code.startsWith('loop-'))!.message).toContain(
+    'at 45.0 km/h in gear 2 on the level',
+  );
+});
