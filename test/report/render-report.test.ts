@@ -207,6 +207,48 @@ describe('the report', () => {
     expect(words).toContain('The positions of this road are not known');
   });
 
+  it('gives every row of a table as many cells as its head', () => {
+    for (const text of [page, render({ engine: true })]) {
+      const tables = text.match(/<table[\s\S]*?<\/table>/g)!;
+      expect(tables.length).toBeGreaterThan(8);
+      for (const one of tables) {
+        const rows = one.match(/<tr>[\s\S]*?<\/tr>/g)!;
+        const cells = rows.map((row) => row.match(/<t[hd][ >]/g)!.length);
+        expect(new Set(cells).size, one.slice(0, 400)).toBe(1);
+      }
+    }
+  });
+
+  it('tells gears, shifts, limit cycles, braking and fuel of an engine', () => {
+    const words = wordsOf(render({ engine: true })).replaceAll('\u00a0', ' ');
+    for (const told of [
+      'gear 6, engaged',
+      'grip of the tyre, µ 0.6',
+      'In gear 6; gear 4 would be enough',
+      'Speed that each gear sustains, from the first',
+      'hold off, gear 6 to 5',
+      'Limit cycles',
+      '± 0.40 km/h',
+      'the step of the fuel cut',
+      'Descents that need a brake',
+      'Brakes heat',
+      'left in the clutch at shifts',
+      'pulse every 40 mm of way, counted over 100 ms',
+      'ISO 1585',
+    ])
+      expect(words).toContain(told);
+    expect(wordsOf(page)).not.toContain('gear 6');
+  });
+
+  it('names a limit cycle in the answer of a design that meets what was asked', () => {
+    const answer = (requirements: 'met' | 'missed') =>
+      wordsOf(/<p class="sentence">.*?<\/p>/.exec(render({ engine: true, requirements }))![0]);
+    expect(answer('met').replaceAll('\u00a0', ' ')).toMatch(
+      /it swings by itself on km [\d.]+ to [\d.]+ \(and once elsewhere\): ±0\.86 km\/h every 1\.3 s, because of the step of the fuel cut/,
+    );
+    expect(answer('missed')).not.toContain('swings');
+  });
+
   it('gives the same bytes twice', () => {
     expect(render()).toBe(page);
   });

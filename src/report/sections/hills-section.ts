@@ -234,7 +234,7 @@ function allHills(view: View): Html {
       { head: 'asked / N', number: true },
       { head: 'there is / N', number: true },
       { head: `steady speed / ${view.speed.axis}`, number: true },
-      ...(geared ? [{ head: 'gear, needed' }, { head: `sustained by gear / ${view.speed.axis}` }] : []),
+      ...(geared ? [{ head: 'gear, needed' }] : []),
       ...view.candidates.map((candidate) => ({
         head: html`<span class="name">${candidate.name}</span><br>/ ${view.speed.axis}`,
         number: true,
