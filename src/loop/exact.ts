@@ -1,7 +1,6 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { takeUpTime } from './actuator-step.ts';
-import { moveBelt } from './belt.ts';
 import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { drawPower } from './draw-power.ts';
@@ -12,8 +11,7 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { BRAKE_WATCH, riderBrake } from './rider-brake.ts';
 import { integralTo } from './road-table.ts';
-import { senseSpeed } from './sense-speed.ts';
-import { shiftDue } from './shift-due.ts';
+import { beginSample, hasSampleDevices } from './sample-devices.ts';
 
 /**
  * The `exact` kernel. With command u held over a sample, actuator y, throttle x behind the drive's lag:
@@ -68,7 +66,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const delayed = p[at.P_DELAY] > 0;
   const derated = p[at.P_DERATED] === 1;
   const belted = p[at.P_BELT] === 1;
-  const automatic = p[at.P_AUTOMATIC] === 1;
+  const fitted = hasSampleDevices(p);
   const sourced = p[at.P_SOURCE] === 1;
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
@@ -100,19 +98,19 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let event = at.RUNNING;
   let tick = 0;
   while (tick < ticks && q < until && event === at.RUNNING) {
-    if (automatic && shiftDue(machine)) break;
-    if (belted) {
-      moveBelt(machine);
+    if (fitted) {
+      if (!beginSample(machine)) break;
       v = s[at.SPEED];
-      mass = s[at.EFFECTIVE_MASS];
-      stall = stallSpeed(machine);
-      speedCell = s[at.SPEED_CELL] | 0;
-      if (filter === 0) s[at.FILTERED] = z = v;
-      loadedRow = -1;
-      loadedCell = -1;
+      z = s[at.FILTERED];
+      if (belted) {
+        mass = s[at.EFFECTIVE_MASS];
+        stall = stallSpeed(machine);
+        speedCell = s[at.SPEED_CELL] | 0;
+        loadedRow = -1;
+        loadedCell = -1;
+      }
     }
-    if (sensed) senseSpeed(machine);
-    else s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
+    if (!sensed) s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
     if (s[BUS_REFERENCE] !== s[BUS_TARGET]) moveReference(s);
     controller.step(s);
     const u = resolution > 0 ? heldCommand(p, s[BUS_LIMITED]) : s[BUS_LIMITED];
@@ -318,7 +316,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           if (brake1 + brake4 > 0) chunk[at.C_BRAKE_TIME] += h;
         }
         chunk[at.C_DISTANCE] += ds;
-        travelled += ds;
+        if (fitted) travelled += ds;
         if (timed)
           chunk[at.C_CLIMB] +=
             mass * ds * sin0 + weight * sin1 * (v * from + 2 * (v2 * q2 + v3 * q3) + v4 * q4);
@@ -381,18 +379,28 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
-    s[at.SPEED] = v;
-    s[at.STATION] = q;
-    s[at.THROTTLE] = x;
-    s[at.ACTUATOR] = y;
-    s[at.PLATE] = plate;
-    s[at.FILTERED] = z;
-    s[at.ACCELERATION] = acceleration;
-    s[at.TRAVELLED] += travelled;
-    s[at.SPEED_CELL] = speedCell;
-    if (sourced) drawPower(machine, line, elapsed);
+    if (fitted) {
+      s[at.SPEED] = v;
+      s[at.STATION] = q;
+      s[at.THROTTLE] = x;
+      s[at.ACTUATOR] = y;
+      s[at.PLATE] = plate;
+      s[at.FILTERED] = z;
+      s[at.ACCELERATION] = acceleration;
+      s[at.TRAVELLED] += travelled;
+      s[at.SPEED_CELL] = speedCell;
+      if (sourced) drawPower(machine, line, elapsed);
+    }
   }
 
+  s[at.SPEED] = v;
+  s[at.STATION] = q;
+  s[at.THROTTLE] = x;
+  s[at.ACTUATOR] = y;
+  s[at.PLATE] = plate;
+  s[at.FILTERED] = z;
+  s[at.ACCELERATION] = acceleration;
+  s[at.SPEED_CELL] = speedCell;
   s[at.CELL] = row / at.R_STRIDE;
   s[at.THROTTLE_CELL] = throttleCell;
   if (event !== at.RUNNING) s[at.PARTIAL] = elapsed;
