@@ -6,6 +6,7 @@ import { summaryJson } from '../../src/report/data/summary.ts';
 import { renderReport } from '../../src/report/render-report.ts';
 import { runCase } from '../../src/run/run-case.ts';
 import { FIGURES } from '../../src/study/figure-table.ts';
+import { type Draw, randomDrive, randomFittings } from './random-vehicle.ts';
 import { seeded } from './seeded.ts';
 
 /** Small random cases, all of whose keys are in range: whether the vehicle can hold the speed is left to chance. */
@@ -18,6 +19,7 @@ function randomCase(random: () => number): { readonly files: Readonly<Record<str
   const several = <T>(least: number, most: number, item: (i: number) => T): T[] =>
     Array.from({ length: least + Math.floor(random() * (most - least + 1)) }, (_, i) => item(i));
 
+  const draw: Draw = { between, oneOf, maybe };
   const way = oneOf('length', 'time', 'positions', 'distances');
   const wind = random() < 0.5;
   const piece = () => ({
@@ -122,23 +124,12 @@ function randomCase(random: () => number): { readonly files: Readonly<Record<str
         ...maybe({ payload_kg: between(0, 60) }),
       },
       road_load: load,
-      drive: oneOf<object>(
-        { kind: 'force', ...drive, ...maybe({ altitude_derate: 'naturally_aspirated' }) },
-        {
-          kind: 'electric',
-          ...drive,
-          ...maybe({ regeneration_force_n: between(0, 300) }),
-          ...maybe({ efficiency_pct: { drive: between(50, 98), regeneration: between(0, 90) } }),
-        },
-      ),
-      ...maybe({ actuator: { lag_s: between(0, 0.4), ...maybe({ rate_limit_pct_per_s: between(5, 800) }) } }),
-      ...maybe({
-        speed_sensor: {
-          filter_s: between(0, 0.3),
-          delay_s: between(0, 0.3),
-          scale_error_pct: between(-9, 9),
-        },
-      }),
+      drive: oneOf<() => object>(
+        () => ({ kind: 'force', ...drive, ...maybe({ altitude_derate: 'naturally_aspirated' }) }),
+        () => randomDrive(draw),
+        () => randomDrive(draw),
+      )(),
+      ...randomFittings(draw),
     },
     hold: {
       set_speed_kmh: setSpeed,
@@ -163,7 +154,11 @@ function randomCase(random: () => number): { readonly files: Readonly<Record<str
     requirements: several(0, 3, requirement),
     output: { series: oneOf('bins', 'bins', 'full'), bin_m: oneOf(1, 10, 50) },
   };
-  return { files: { 'case.yaml': JSON.stringify(asCase), 'track.csv': csv } };
+  // A plan of shifts is for a clutch, and for a road that is as long.
+  const drawn = asCase.vehicle.drive as { gearbox?: { kind: string } };
+  const shifts = drawn.gearbox?.kind === 'clutch' ? [{ at_km: 0.025, gear: 4 }] : [];
+  const planned = { ...asCase, hold: { ...asCase.hold, shifts } };
+  return { files: { 'case.yaml': JSON.stringify(planned), 'track.csv': csv } };
 }
 
 test.each([1, 2, 3, 4])(
