@@ -3,7 +3,7 @@ import { throttleFor } from '../../vehicle/drive-law.ts';
 import type { View } from './view.ts';
 
 /**
- * Throttle that would hold the set speed steadily at a knot of the road. Beyond the range of the drive its law goes on in a
+ * Throttle that would hold the set speed steadily at a knot of the road, in the gear that is engaged there. Beyond the range of the drive its law goes on in a
  * straight line, so that the value says how far out of reach the hold is.
  *
  * @returns ratio; NaN where no throttle gives the force
@@ -13,5 +13,7 @@ export function holdingThrottle(view: View, knot: number): number {
   const { drive } = vehicle;
   const derate = derateFactor(drive, road.airDensity[knot]!, road.airTemperature[knot]!);
   const force = demand.required[knot]!;
-  return throttleFor(drive, drive.gear, demand.setSpeed[knot]!, force, derate) ?? Number.NaN;
+  return (
+    throttleFor(drive, demand.gear[knot] ?? drive.gear, demand.setSpeed[knot]!, force, derate) ?? Number.NaN
+  );
 }
