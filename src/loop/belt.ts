@@ -1,6 +1,4 @@
-import { beltRatio } from '../vehicle/belt-law.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
-import { decay } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
@@ -14,10 +12,23 @@ export function moveBelt(machine: Machine): void {
   const belt = machine.belt!;
   const before = s[at.EFFECTIVE_MASS];
   const ratio = s[at.RATIO];
-  const rest = beltRatio(belt, s[at.SPEED], s[at.THROTTLE]);
-  loadRatio(machine, rest + (ratio - rest) * decay(belt.lag, p[at.P_SAMPLE]));
-  s[at.SPEED] *= Math.sqrt(before / s[at.EFFECTIVE_MASS]);
+  const v = s[at.SPEED];
+  const line = lineAt(belt.throttle, belt.shaftSpeed, s[at.THROTTLE]);
+  const rest = line >= belt.greatest * v ? belt.greatest : line <= belt.least * v ? belt.least : line / v;
+  loadRatio(machine, rest + (ratio - rest) * p[at.P_BELT_KEPT]);
+  s[at.SPEED] = v * Math.sqrt(before / s[at.EFFECTIVE_MASS]);
   holdCell(machine);
+}
+
+/** The belt's line (see belt-law.ts) without an object for its answer: this is asked at every sample. */
+function lineAt(throttle: Float64Array, shaftSpeed: Float64Array, x: number): number {
+  const last = throttle.length - 1;
+  if (x <= throttle[0]) return shaftSpeed[0];
+  if (x >= throttle[last]) return shaftSpeed[last];
+  let i = 0;
+  while (x >= throttle[i + 1]) i++;
+  const slope = (shaftSpeed[i + 1] - shaftSpeed[i]) / (throttle[i + 1] - throttle[i]);
+  return shaftSpeed[i] + slope * (x - throttle[i]);
 }
 
 /** Puts a ratio of the belt in hand, and the effective mass that goes with it. */

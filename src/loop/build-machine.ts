@@ -3,7 +3,7 @@ import { dragArea } from '../vehicle/road-load.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
 import { fittingsOf } from './fittings.ts';
-import { lagFactors } from './lags.ts';
+import { decay, lagFactors } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
@@ -100,7 +100,9 @@ function writeKinds(p: Float64Array, { drive, sensor }: Vehicle): void {
   p[at.P_SOURCE] = source === null ? 0 : 1;
   p[at.P_SENSED] = sensor.pulses === null && sensor.noise === null ? 0 : 1;
   p[at.P_AUTOMATIC] = drive.gearbox.kind === 'automatic' ? 1 : 0;
+  p[at.P_LAW_STEP] = drive.fuelCutBelow;
   p[at.P_BELT] = drive.belt === null ? 0 : 1;
+  p[at.P_BELT_KEPT] = drive.belt === null ? 0 : decay(drive.belt.lag, p[at.P_SAMPLE]);
 }
 
 function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): void {

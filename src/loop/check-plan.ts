@@ -29,6 +29,10 @@ export function checkPlan(plan: LoopPlan): void {
   above('hold.startSpeed', hold.startSpeed, 0, 'm/s');
   for (const [i, change] of hold.changes.entries())
     above(`hold.changes[${i}].setSpeed`, change.setSpeed, 0, 'm/s');
+  const { gearbox, gears } = plan.vehicle.drive;
+  for (const [i, { gear }] of plan.rider.shifts.entries())
+    if (gearbox.kind === 'clutch' && gears[gear] === undefined)
+      refuse(`rider.shifts[${i}].gear`, `gear ${gear}`, `0 to ${gears.length - 1}`);
   if (plan.timeLimit / sample > MOST_SAMPLES) refuse('timeLimit', `${plan.timeLimit} s`, '1e9 samples');
   if (plan.bands.length > MOST_BANDS) refuse('bands', `${plan.bands.length} bands`, `at most ${MOST_BANDS}`);
 }

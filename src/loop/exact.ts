@@ -26,9 +26,10 @@ import { beginSample, hasSampleDevices } from './sample-devices.ts';
  *     F = f0 + v (f1 + v f2) + f3 / v                f0 = a0 + x b0, f1 = a1 + x b1, f2 = x b2, f3 = x b3
  *     F_aero = w (near + slope w)                    F_roll = r0 + v (r1 + v r2)
  *
- * A step is cut where the right-hand side has a kink: at road knots, where the rate limit lets go, at edges of the
- * drive's cells, at v = 0. The coefficients of a cell are frozen over a piece, so that all stages are evaluated on one
- * side of the kink; where the rider's brake comes on is not cut (a kink of about 1e-5 m/s). Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
+ * A step is cut where the right-hand side has a kink or a step: at road knots, where the rate limit lets go, where the
+ * slack has been taken up, at edges of the drive's cells, at v = 0. The coefficients of a cell are frozen over a piece,
+ * so that all stages are evaluated on one side of the kink; where the rider's brake comes on is not cut (a kink of about
+ * 1e-5 m/s). Density, cos(theta) and derating are taken at the middle of the piece; grade and wind stay linear.
  */
 export function advanceExact(machine: Machine, ticks: number, until: number): number {
   const { s, p, rows, throttleEdges, lags, here, controller, tangent, log, chunk } = machine;

@@ -1,7 +1,7 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { actuatorStep } from './actuator-step.ts';
-import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
+import { enterDriveCell, enterRoadCell, lawStep } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
@@ -16,13 +16,14 @@ import { beginSample, hasSampleDevices } from './sample-devices.ts';
 /**
  * The `fast` kernel: one evaluation of the forces a step of length h, second order. Per unit of effective mass:
  *
- *     x, y         in closed form (see lags.ts); xm the mean of x over the step
+ *     x, y         in closed form (see lags.ts, actuator-step.ts); xm the mean of x over the step
  *     vm           = v + h/2 a, a of the step before
  *     g sin(theta) = (H(q + h vm) - H(q)) / (h vm), H the integral of g sin(theta): no hill is stepped over;
  *                    the headwind in the same way
  *     a            = F(vm, xm) - F_aero(vm) - F_roll(vm) - F_brake - mean slope
  *     v <- v + h a,  q <- q + h (v_old + v_new) / 2
  *
+ * A law that steps over the throttle within the step counts by the time on each side, as if x went in a line.
  * Every work is its force over the same displacement, so that the account of energy closes to rounding.
  */
 export function advanceFast(machine: Machine, ticks: number, until: number): number {
@@ -43,6 +44,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const td = p[at.P_DRIVE_LAG];
   const rate = p[at.P_RATE];
   const rateGap = p[at.P_RATE_GAP];
+  const lawEdge = p[at.P_LAW_STEP];
   const direct = p[at.P_ACTUATOR_LAG] === 0 && rate === Number.POSITIVE_INFINITY;
   const actuatorDecay = lags[at.G_ACTUATOR];
   const driveDecay = lags[at.G_DRIVE];
@@ -201,6 +203,11 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
             xm * here[at.H_LOSS + 2] +
             vm * (here[at.H_LOSS + 1] + xm * (here[at.H_LOSS + 3] + vm * here[at.H_LOSS + 4])) +
             (l3 === 0 ? 0 : (xm * l3) / vm));
+      }
+      if (lawEdge > 0 && (x - lawEdge) * (xe - lawEdge) < 0) {
+        // The law steps within the step: each side has its share of the time.
+        const below = (xe > x ? lawEdge - x : lawEdge - xe) / Math.abs(xe - x);
+        force += (xm < lawEdge ? 1 - below : -below) * lawStep(machine, vm);
       }
       const resist = normal * (c0 + vm * (c1 + vm * c2));
       let a = force - drag - resist - slope;

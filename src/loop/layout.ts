@@ -156,7 +156,11 @@ export const P_SOURCE = 39;
 export const P_SENSED = 40;
 export const P_AUTOMATIC = 41;
 export const P_BELT = 42;
-export const P_SIZE = 43;
+/** What a belt keeps of its ratio's distance from rest over a sample. */
+export const P_BELT_KEPT = 43;
+/** Throttle at which the drive's law steps; 0: nowhere. */
+export const P_LAW_STEP = 44;
+export const P_SIZE = 45;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;

@@ -131,6 +131,12 @@ test('a belt that lets the engine turn faster takes it from the speed', () => {
     expect(Math.abs(energy(series.speed[k]!, series.shaftSpeed[k]!) / first - 1)).toBeLessThan(1e-12);
 });
 
+test.each([-1, 1.5, 3])('a plan that shifts to gear %s of three is refused', (gear) => {
+  const plan = over(vehicles[1]![1], 'exact');
+  const rider = { brakesAbove: null, shifts: [{ distance: 100, gear }] };
+  expect(() => runLoop({ ...plan, rider })).toThrow(expect.objectContaining({ code: 'out-of-range' }));
+});
+
 test('over random vehicles that switch: energy closes, every number is finite', () => {
   const number = (min: number, max: number) => fc.double({ min, max, noNaN: true });
   const anyDrive = fc.constantFrom(

@@ -37,6 +37,7 @@ export function engine(cut: number, more: Partial<Drive> = {}): Drive {
     kind: 'engine',
     speedEdges: Float64Array.of(300),
     throttleEdges: Float64Array.of(0.05, 0.5),
+    fuelCutBelow: cut > 0 ? 0.05 : 0,
     cells: Float64Array.from(cells),
     losses: new Float64Array(cells.length),
     gears,
