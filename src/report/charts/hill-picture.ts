@@ -1,3 +1,4 @@
+import { LIMIT_SHIFT } from '../../loop/plan.ts';
 import type { FullSeries } from '../../loop/result.ts';
 import type { Hill, HillOutcome } from '../../study/findings.ts';
 import { toPct } from '../../units/convert.ts';
@@ -181,7 +182,25 @@ function onTheHill(
   { paint }: Canvas,
 ): Html {
   const [from, to] = [x(0), x(timeAtPlace(picture, hill.to) - foot(picture))];
-  return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}`;
+  return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}${shiftSpans(
+    picture,
+  ).map(([begin, end]) => {
+    const [left, right] = [x(begin - foot(picture)), x(end - foot(picture))];
+    return html`<g><title>a shift: no hold, or no torque</title>${boxes.map((box) => rectangle({ left, top: box.top, width: Math.max(1, right - left), height: box.height }, paint.grid))}</g>`;
+  })}`;
+}
+
+/** Times over which the hold was off for a shift of the rider or the torque for one of the gearbox. */
+function shiftSpans({ size, time, limit }: FullSeries): readonly (readonly [begin: number, end: number])[] {
+  const spans: [number, number][] = [];
+  for (let i = 0; i < size; i++) {
+    if ((limit[i]! & LIMIT_SHIFT) === 0) continue;
+    const end = time[Math.min(i + 1, size - 1)]!;
+    const last = spans[spans.length - 1];
+    if (last !== undefined && last[1] >= time[i]!) last[1] = end;
+    else spans.push([time[i]!, end]);
+  }
+  return spans;
 }
 
 /** Throttle that would hold the set speed where the guide is, sample by sample of its picture. */
