@@ -3,6 +3,7 @@ import { InputError } from '../problems/input-error.ts';
 import { chartFiles } from '../report/chart-files.ts';
 import { dataFiles } from '../report/data/data-files.ts';
 import { summaryJson } from '../report/data/summary.ts';
+import { junitXml } from '../report/junit-xml.ts';
 import { answerOf } from '../report/model/answer.ts';
 import { viewOf } from '../report/model/view.ts';
 import { renderReport } from '../report/render-report.ts';
@@ -12,16 +13,19 @@ import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
+import { checkJunitFile } from './junit-file.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { requirementLines } from './requirement-lines.ts';
 import { checkFolder, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
+import { writeText } from './write-text.ts';
 
 /** `ridgehold run CASE`: replays the case, writes the result whole, tells people the answer. */
 export function runCommand({ operands: [path], values }: Invocation<'run'>): number {
   refuseTrack(path);
   const folder = values.out ?? defaultFolder(path);
   checkFolder(folder, ['report.html', 'summary.json']);
+  if (values.junit !== undefined) checkJunitFile(values.junit);
   const reader = readerOf(path);
   const bar = new ProgressBar(process.stderr);
   const units = values.units ?? 'kmh';
@@ -48,6 +52,7 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
     files.map(({ name }) => name),
   );
   writeResult(folder, [...files, { name: 'summary.json', text: summary }]);
+  if (values.junit !== undefined) writeText(values.junit, junitXml(run, units));
   if (!values.quiet) {
     say(answerOf(viewOf(run, units)).sentence);
     for (const line of requirementLines(run.requirements, units)) say(line);
