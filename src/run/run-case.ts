@@ -1,4 +1,5 @@
 import { atSeaLevel, candidatesOf } from '../case/candidates-of.ts';
+import { givenValues } from '../case/given-values.ts';
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
 import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
@@ -129,6 +130,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
     requirements: findings,
     spread: { roads: spread.roads, seed: spread.seed, words: spreadMethod(spread) },
     defaults: rideDefaults(document, vehicleDocument),
+    given: givenValues(document, vehicleDocument),
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,

@@ -1,3 +1,4 @@
+import type { GivenValue } from '../case/given-values.ts';
 import type { DefaultUsed } from '../case/list-defaults.ts';
 import type { LoopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
@@ -44,6 +45,8 @@ export interface RunResult {
   readonly requirements: readonly RequirementFinding[];
   readonly spread: SpreadMethod;
   readonly defaults: readonly DefaultUsed[];
+  /** What case and vehicle gave. */
+  readonly given: readonly GivenValue[];
   readonly warnings: readonly Warning[];
   /** `requirement_not_met` when any requirement is not met or could not be judged; else `incomplete` when a candidate did not reach the end. */
   readonly status: 'ok' | 'requirement_not_met' | 'incomplete';

@@ -2,5 +2,8 @@ import { version } from '../../package.json' with { type: 'json' };
 
 /** Version of the tool, as results and reports carry it. */
 export const TOOL_VERSION: string = version;
-/** Version of the shape of summary.json: the first number changes when a key is renamed or removed. */
-export const SCHEMA_VERSION = '1.0';
+/**
+ * Version of the shape of summary.json: the first number changes when a key is renamed or removed, the second when
+ * one is added. 1.1 has `given`.
+ */
+export const SCHEMA_VERSION = '1.1';

@@ -130,6 +130,7 @@ function plainResult(wish: FixtureWish): RunResult {
     segments: segmentsOf(road, setups, runs),
     requirements: requirementsOf(wish.requirements ?? 'missed', designs),
     spread: { roads: 8, seed: 7, words: 'The spread is that over 8 invented roads (seed 7).' },
+    given: [{ key: 'hold.set_speed_kmh', value: '60', of: 'case' }],
     defaults: [
       {
         key: 'mass.rotating_kg',

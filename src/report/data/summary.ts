@@ -45,6 +45,7 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),
     warnings: run.warnings.map(warningJson),
     files,
+    given: run.given.map(({ key, value, of }) => ({ key, value, of })),
   };
 }
 
