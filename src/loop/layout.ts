@@ -1,70 +1,73 @@
 // Places of the flat arrays that the kernels work on. SI. Plain literals, because bundlers put those in place of the
 // names, and an engine that reads each place from a module's variable is half as fast.
 
-// --- state: the bus of the controller (14 places, see control/bus.ts), then the plant; a copy of it is a checkpoint ---
+// --- state: the bus of the controller (30 places, see control/bus.ts), then the plant; a copy of it is a checkpoint ---
 /** Samples since the start, and seconds of a last sample that was cut short. */
-export const TICK = 14;
-export const PARTIAL = 15;
+export const TICK = 30;
+export const PARTIAL = 31;
 /** Station [m] or [s], and the road cell it lies in. */
-export const STATION = 16;
-export const CELL = 17;
-export const SPEED = 18;
+export const STATION = 32;
+export const CELL = 33;
+export const SPEED = 34;
 /** Acceleration at the end of the last step. */
-export const ACCELERATION = 19;
+export const ACCELERATION = 35;
 /** Throttle at the actuator, and behind the drive's lag. */
-export const ACTUATOR = 20;
-export const THROTTLE = 21;
+export const ACTUATOR = 36;
+export const THROTTLE = 37;
 /** Output of the sensor's filter, before its scale error. */
-export const FILTERED = 22;
+export const FILTERED = 38;
 /** Indices of the drive's cell over speed and throttle. */
-export const SPEED_CELL = 23;
-export const THROTTLE_CELL = 24;
+export const SPEED_CELL = 39;
+export const THROTTLE_CELL = 40;
 /** Energies since the start [J], the integral of their magnitudes, the distance travelled [m]. */
-export const DRIVE_WORK = 25;
-export const REGENERATION_WORK = 26;
-export const AERO_WORK = 27;
-export const ROLLING_WORK = 28;
-export const CLIMB_WORK = 29;
-export const BRAKE_WORK = 30;
-export const WORK_MAGNITUDE = 31;
-export const START_SPEED = 32;
+export const DRIVE_WORK = 41;
+export const REGENERATION_WORK = 42;
+export const AERO_WORK = 43;
+export const ROLLING_WORK = 44;
+export const CLIMB_WORK = 45;
+export const BRAKE_WORK = 46;
+export const WORK_MAGNITUDE = 47;
+export const START_SPEED = 48;
 /** Air where a throttle was locked `level` the last time: density [kg/m3], temperature [K]. */
-export const LOCK_DENSITY = 33;
-export const LOCK_TEMPERATURE = 34;
+export const LOCK_DENSITY = 49;
+export const LOCK_TEMPERATURE = 50;
 /** Set-speed changes that have happened. */
-export const CHANGES = 35;
+export const CHANGES = 51;
 /** Limited command of the last sample that was recorded. */
-export const LAST_COMMAND = 36;
-/** Gear engaged, index into the drive's gears; -1: the clutch is open. Ratio and effective mass in hand. */
-export const GEAR = 37;
-export const RATIO = 38;
-export const EFFECTIVE_MASS = 39;
+export const LAST_COMMAND = 52;
+/** Gear engaged, index into the drive's gears; -1: the clutch is open. It lies on the bus, where a controller sees it. Ratio and effective mass in hand. */
+export const GEAR = 22;
+export const RATIO = 53;
+export const EFFECTIVE_MASS = 54;
 /** A shift under way: the gear it goes to, 0 none, 1 clutch open, 2 the rider's throttle until hold resumes; tick at which this part ends; planned shifts that have begun. A part of -1: an automatic gearbox rests after a shift. */
-export const NEXT_GEAR = 40;
-export const SHIFT_PART = 41;
-export const SHIFT_UNTIL = 42;
-export const SHIFTS = 43;
+export const NEXT_GEAR = 55;
+export const SHIFT_PART = 56;
+export const SHIFT_UNTIL = 57;
+export const SHIFTS = 58;
 /** Gear for which a throttle was locked `level` the last time. */
-export const LOCK_GEAR = 44;
+export const LOCK_GEAR = 59;
 /** Throttle behind the actuator's slack. */
-export const PLATE = 45;
+export const PLATE = 60;
 /** Distance travelled since the start [m]. */
-export const TRAVELLED = 46;
+export const TRAVELLED = 61;
 /** Battery: energy left [J], heat (see Heating), factors of full-throttle force and of regeneration that follow. */
-export const CHARGE = 47;
-export const HEAT = 48;
-export const DRIVE_FACTOR = 49;
-export const REGENERATION_FACTOR = 50;
+export const CHARGE = 62;
+export const HEAT = 63;
+export const DRIVE_FACTOR = 64;
+export const REGENERATION_FACTOR = 65;
 /** Drawn from fuel or battery [J]; kinetic energy lost in shifts [J]. */
-export const DRAWN = 51;
-export const SHIFT_WORK = 52;
+export const DRAWN = 66;
+export const SHIFT_WORK = 67;
 /** What a sensor with pulses or noise keeps: filtered reading, and one more place. */
-export const SENSED = 53;
-export const SENSED_MORE = 54;
+export const SENSED = 68;
+export const SENSED_MORE = 69;
 /** Effective mass at the start of the run [kg]. */
-export const START_MASS = 55;
+export const START_MASS = 70;
+/** What a sensor of the slope keeps: the row of the road in which it reads, its reading before; see sense-slope.ts. */
+export const SLOPE_ROW = 71;
+export const SLOPE_READING = 72;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 56;
+export const HISTORY = 73;
 export const HISTORY_STRIDE = 3;
 
 // --- chunk: sums over the samples that a kernel has just run, works and energies [J] ---

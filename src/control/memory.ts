@@ -1,0 +1,20 @@
+// Who remembers what at BUS_MEMORY. The plain PI (pi.ts) has the first place alone.
+
+/** Integral for the next sample, in throttle; of the `integer` form its count. */
+export const INTEGRAL = 9;
+/** Gains of the last sample: proportional and derivative. */
+export const LAST_KP = 10;
+export const LAST_KD = 11;
+/** Filtered measurement behind the derivative. */
+export const DERIVATIVE = 12;
+/** Velocity form: parts P and D of the last sample, its increment of the integral that is still to come, its feedforward. */
+export const LAST_PART = 13;
+export const PENDING = 14;
+export const LAST_FEEDFORWARD = 15;
+/** Slope sensed with an accelerometer [m/s2], and the measurement of the last sample. */
+export const SLOPE = 16;
+export const SLOPE_MEASURED = 17;
+/** Observer: filtered force [N] and throttle, and the measurement of the last sample. */
+export const OBSERVED_FORCE = 18;
+export const OBSERVED_THROTTLE = 19;
+export const OBSERVED_MEASURED = 20;
