@@ -10,6 +10,7 @@ const ENGINE = {
     shaftSpeed: rpm(1500, 3000, 4500, 6500, 8500, 10_000),
     torque: row(13, 17, 19, 20, 18, 14),
     shape: 3,
+    shapeSpeed: (5500 * Math.PI) / 30,
   },
   drag: { shaftSpeed: rpm(1500, 5000, 10_000), torque: row(1.6, 2.6, 5) },
   fuelCut: null,

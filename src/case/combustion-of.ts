@@ -15,6 +15,7 @@ import type {
   TorqueSpec,
   VariatorDriveSpec,
 } from '../vehicle/engine-spec.ts';
+import { PLATE_SHAPE } from './combustion-schema.ts';
 import type { DriveFileOf } from './drive-schemas.ts';
 
 type EngineFile = DriveFileOf<'engine'>;
@@ -103,7 +104,7 @@ function torqueOf(file: CombustionFile['torque']): TorqueSpec {
       kind: 'full_load',
       shaftSpeed: column(file.full_load, ({ rpm }) => fromRpm(rpm)),
       torque: column(file.full_load, ({ nm }) => nm),
-      shape: file.part_throttle_shape,
+      ...shapeOf(file.full_load, file.part_throttle),
     };
   return {
     kind: 'parabola',
@@ -111,6 +112,19 @@ function torqueOf(file: CombustionFile['torque']): TorqueSpec {
     peakSpeed: fromRpm(file.peak_rpm),
     falloff: file.falloff,
   };
+}
+
+type FullLoadFile = Extract<CombustionFile['torque'], { full_load: unknown }>;
+
+/** Without a word about it, part throttle is that of a throttle plate at the engine speed of the greatest torque. */
+function shapeOf(
+  rows: FullLoadFile['full_load'],
+  file: FullLoadFile['part_throttle'],
+): { readonly shape: number; readonly shapeSpeed: number | null } {
+  if (file !== undefined)
+    return { shape: file.shape, shapeSpeed: file.at_rpm === undefined ? null : fromRpm(file.at_rpm) };
+  const best = rows.reduce((most, one) => (one.nm > most.nm ? one : most));
+  return { shape: PLATE_SHAPE, shapeSpeed: fromRpm(best.rpm) };
 }
 
 function fuelOf(file: FuelFile): FuelSpec {

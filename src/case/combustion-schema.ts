@@ -2,6 +2,9 @@ import * as z from 'zod';
 import { altitudeDerate, driveLag, list, mapping, number, optional, otherwise } from './fields.ts';
 import { fuelSchema } from './fuel-schema.ts';
 
+/** Shape of part throttle of a throttle plate, from memory. */
+export const PLATE_SHAPE = 3;
+
 const rpm = (words: string) => number('rpm', 50, 30000, words);
 const torqueAtSpeed = (words: string) =>
   list(
@@ -18,10 +21,24 @@ const parabola = mapping('Torque by the textbook parabola, linear in the throttl
 });
 const fullLoad = mapping('Torque by the full-load curve, with a shape for part throttle', {
   full_load: torqueAtSpeed('Torque at full throttle'),
-  part_throttle_shape: otherwise(
-    number('', 0, 20, 'k of s(x) = (1 - e^(-k x)) / (1 - e^(-k)): 0 in proportion to the throttle'),
-    3,
-    'from memory: 3 to 5 is like a butterfly throttle, steep at small opening',
+  part_throttle: optional(
+    mapping('How torque goes from closed to full throttle', {
+      shape: number(
+        '',
+        0,
+        20,
+        'k of s = (1 - e^(-k x)) / (1 - e^(-k)) at throttle x: 0 in proportion to it, 3 to 5 like a throttle plate, steep at small opening',
+      ),
+      at_rpm: optional(
+        rpm(
+          'Engine speed of that shape; at another it is k at_rpm / rpm, so that a small opening lets the same air in and gives less torque the faster the engine turns',
+        ),
+        'no speed',
+        'not given: the same shape at every engine speed, as of a throttle by wire that asks for a share of torque',
+      ),
+    }),
+    `a throttle plate of shape ${PLATE_SHAPE} at the engine speed of the greatest torque`,
+    'from memory: plates are like shapes of 3 to 5',
   ),
 });
 const torqueMap = mapping('Torque by a map over engine speed and throttle', {

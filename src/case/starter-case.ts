@@ -66,7 +66,9 @@ drive:
 # kind: electric (with a battery, if you like).
 # drive:
 #   kind: engine
-#   torque: {full_load: [{rpm: 2000, nm: 9}, {rpm: 6500, nm: 10.5}, {rpm: 9500, nm: 8.5}]}
+#   torque:
+#     full_load: [{rpm: 2000, nm: 9}, {rpm: 6500, nm: 10.5}, {rpm: 9500, nm: 8.5}]
+#     part_throttle: {shape: 3, at_rpm: 6500}   # steep at small opening, and less torque the faster it turns
 #   closed_throttle_drag: [{rpm: 1500, nm: 0.9}, {rpm: 10000, nm: 2.6}]
 #   rev_limit_rpm: 10000
 #   gear_ratios: [2.8, 1.85, 1.4, 1.1, 0.92, 0.81]

@@ -2,10 +2,10 @@ import { InputError, type Problem } from '../problems/input-error.ts';
 import { checkSpec } from './check-spec.ts';
 import { checkTable } from './check-table.ts';
 import { combustionCurves } from './combustion-curves.ts';
-import { GOVERNOR_BAND, governedTorque } from './combustion-table.ts';
+import { GOVERNOR_BAND, governedTorque } from './combustion-row.ts';
 import type { CombustionSpec, TorqueSpec } from './engine-spec.ts';
 
-/** Shape of part throttle beyond which a butterfly is an on-off valve. */
+/** Shape of part throttle beyond which a throttle plate is an on-off valve. */
 const GREATEST_SHAPE = 20;
 
 /**
@@ -63,6 +63,7 @@ function checkTorque(torque: TorqueSpec): void {
       ]);
       checkSpec('torque', [
         { key: 'torque.shape', value: torque.shape, unit: '', least: 0, greatest: GREATEST_SHAPE },
+        { key: 'torque.shapeSpeed', value: torque.shapeSpeed ?? 1, unit: 'rad/s', least: 0, above: true },
       ]);
       return;
     case 'map':
@@ -113,8 +114,9 @@ function checkDrag({ torque, drag }: CombustionSpec): void {
 }
 
 /** All curves are straight between these corners, but for the parabola, which is nowhere below 0. */
-function checkFullAboveClosed({ torque, drag, idle }: CombustionSpec): void {
-  const curves = combustionCurves(torque, drag);
+function checkFullAboveClosed(spec: CombustionSpec): void {
+  const { idle } = spec;
+  const curves = combustionCurves(spec);
   for (const w of [...curves.corners, idle, idle + GOVERNOR_BAND]) {
     const full = curves.full(w);
     const closed = governedTorque(curves, idle, w);

@@ -1,13 +1,7 @@
-import { bracketedRoot } from '../numeric/root.ts';
-import { type CombustionCurves, combustionCurves } from './combustion-curves.ts';
+import { combustionCurves } from './combustion-curves.ts';
+import { combustionNodes } from './combustion-nodes.ts';
+import { combustionRow } from './combustion-row.ts';
 import type { CombustionSpec, FuelCutSpec } from './engine-spec.ts';
-
-/** Above idle, closed-throttle torque falls from 0 to the drag of the engine within this [rad/s], some 290 rpm. */
-export const GOVERNOR_BAND = 30;
-/** Into so many parts the throttles are divided over which the driveline turns from giving to taking. */
-const TURNING_STEPS = 3;
-/** Nodes no further apart are one [rad/s, or throttle]. */
-const SAME = 1e-9;
 
 /**
  * Steady torque of an engine at its nodes, the losses of the driveline in it: T is the wheel force over the ratio.
@@ -29,7 +23,8 @@ export interface CombustionTable {
 }
 
 /**
- * Samples an engine at every corner of its curves, so that nothing is lost in between:
+ * Samples an engine at every corner of its curves, so that nothing is lost in between, and where the shape of part
+ * throttle changes with shaft speed so densely that little is, 0.3 % of full torque:
  *
  * - Idle governor: closed throttle gives its drag down to idle + 30 rad/s, rises in a straight line to 0 at idle, 0 below.
  * - Rev limiter: what the throttle adds to closed throttle falls from its value at `revLimit` to 0 over `limitBand`.
@@ -41,29 +36,18 @@ export interface CombustionTable {
  * @param spec checked (`checkCombustion`)
  */
 export function combustionTable(spec: CombustionSpec): CombustionTable {
-  const curves = combustionCurves(spec.torque, spec.drag);
-  const { efficiency, limitBand, fuelCut } = spec;
+  const curves = combustionCurves(spec);
+  const { efficiency, fuelCut } = spec;
   const limit = spec.revLimit ?? Number.POSITIVE_INFINITY;
-  const shaftSpeed = speedNodes(spec, curves);
-  const throttle = merged([
-    ...curves.throttle,
-    ...(fuelCut === null ? [] : [fuelCut.throttle]),
-    ...turningThrottles(spec, curves, shaftSpeed),
-  ]);
+  const { shaftSpeed, throttle } = combustionNodes(spec, curves);
   const columns = throttle.length;
   const torque = new Float64Array(shaftSpeed.length * columns);
   const loss = new Float64Array(torque.length);
   shaftSpeed.forEach((w, i) => {
-    const within = Math.min(w, limit);
-    const closed = governedTorque(curves, spec.idle, w);
-    const gain = curves.full(within) - governedTorque(curves, spec.idle, within);
-    const left = w <= limit ? gain : gain * Math.max(0, 1 - (w - limit) / limitBand);
+    const at = combustionRow(spec, curves, w);
     throttle.forEach((x, j) => {
-      const share = curves.share(within, x);
-      const at = closed + left * share;
-      const byDriveline = at > 0 ? efficiency : 1 / efficiency;
-      torque[i * columns + j] = byDriveline * at;
-      loss[i * columns + j] = byDriveline * Math.max(0, closed + left) * share;
+      torque[i * columns + j] = at.torque(x);
+      loss[i * columns + j] = at.loss(x);
     });
   });
   return {
@@ -79,57 +63,6 @@ export function combustionTable(spec: CombustionSpec): CombustionTable {
         ? null
         : { throttle: fuelCut.throttle, torque: cutAt(fuelCut, efficiency, shaftSpeed) },
   };
-}
-
-function speedNodes(spec: CombustionSpec, curves: CombustionCurves): Float64Array {
-  const { idle, revLimit, limitBand, fuelCut } = spec;
-  const drags = curves.corners.some((w) => curves.closed(w) < 0);
-  return merged([
-    0,
-    ...curves.corners.filter((w) => w > 0),
-    ...(drags ? [idle, idle + GOVERNOR_BAND] : []),
-    ...(revLimit === null ? [] : [revLimit, revLimit + limitBand]),
-    ...(fuelCut === null ? [] : [fuelCut.above, fuelCut.above + fuelCut.blend]),
-  ]);
-}
-
-/**
- * Throttles at which torque turns from holding back to driving, and the driveline with it: a few between the least and
- * the greatest of all shaft speeds. The parabola is left linear in the throttle.
- */
-function turningThrottles(
-  { torque, idle, efficiency, revLimit }: CombustionSpec,
-  curves: CombustionCurves,
-  shaftSpeed: Float64Array,
-): number[] {
-  if (torque.kind === 'parabola' || efficiency === 1) return [];
-  let [least, greatest] = [1, 0];
-  for (const w of shaftSpeed) {
-    const closed = governedTorque(curves, idle, w);
-    const full = curves.full(w);
-    if (closed >= 0 || full <= 0 || w > (revLimit ?? w)) continue;
-    const turn = bracketedRoot((x) => closed + curves.share(w, x) * (full - closed), 0, 1, SAME).x;
-    least = Math.min(least, turn);
-    greatest = Math.max(greatest, turn);
-  }
-  if (least > greatest) return [];
-  const steps = greatest - least > SAME ? TURNING_STEPS : 0;
-  return Array.from({ length: steps + 1 }, (_, i) => least + ((greatest - least) * i) / Math.max(1, steps));
-}
-
-/** In rising order, what differs by rounding only taken once. */
-function merged(places: readonly number[]): Float64Array {
-  const sorted = [...places].sort((a, b) => a - b);
-  return Float64Array.from(sorted.filter((x, i) => i === 0 || x - sorted[i - 1]! > SAME));
-}
-
-/** Closed-throttle torque as the idle governor leaves it, at the crankshaft [N m]. */
-export function governedTorque(curves: CombustionCurves, idle: number, shaftSpeed: number): number {
-  if (shaftSpeed <= idle) return Math.max(0, curves.closed(shaftSpeed));
-  const end = idle + GOVERNOR_BAND;
-  if (shaftSpeed >= end) return curves.closed(shaftSpeed);
-  const atIdle = Math.max(0, curves.closed(idle));
-  return atIdle + ((curves.closed(end) - atIdle) * (shaftSpeed - idle)) / GOVERNOR_BAND;
 }
 
 function cutAt(cut: FuelCutSpec, efficiency: number, shaftSpeed: Float64Array): Float64Array {

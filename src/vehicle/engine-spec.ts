@@ -5,14 +5,17 @@ export type TorqueSpec =
   /** T = x peak (1 - falloff (w / peakSpeed - 1)^2), not below 0: the textbook parabola, linear in the throttle. */
   | { readonly kind: 'parabola'; readonly peak: number; readonly peakSpeed: number; readonly falloff: number }
   /**
-   * Full-load curve, piecewise linear, with a shape for part throttle: T = -drag(w) + s(x) (full(w) + drag(w)),
-   * s(x) = (1 - e^(-k x)) / (1 - e^(-k)); `shape` k = 0 is linear, 3 to 5 like a butterfly throttle.
+   * Full-load curve, piecewise linear, with a shape for part throttle: T = -drag(w) + s (full(w) + drag(w)),
+   * s = (1 - e^(-k x)) / (1 - e^(-k)), k = shape shapeSpeed / w. A throttle plate meters air: at small opening the flow
+   * hardly depends on w, so that T w is nearly constant and torque falls as the engine turns faster. `shape` 0 is linear,
+   * 3 to 5 like a plate. `shapeSpeed` null: k = shape at every w, as of a throttle that asks for a share of torque.
    */
   | {
       readonly kind: 'full_load';
       readonly shaftSpeed: Float64Array;
       readonly torque: Float64Array;
       readonly shape: number;
+      readonly shapeSpeed: number | null;
     }
   /** Map over shaft speed (rows) and throttle (columns, from 0 to 1), bilinear; its first column is the closed throttle. */
   | {

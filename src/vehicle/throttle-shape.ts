@@ -3,16 +3,21 @@ import { exp, log } from '../numeric/elementary.ts';
 /** Largest part of full torque that a straight line between two nodes may differ from the shape. */
 const TOLERANCE = 0.002;
 
+/** Below it the shape is that of its first order in k: in the closed form the digits cancel. */
+const NEARLY_LINEAR = 1e-5;
+
 /**
  * Share of the torque between closed and full throttle, s(x) = (1 - e^(-k x)) / (1 - e^(-k)), and at k = 0 its limit x:
- * a butterfly valve lets most of the air in over the first part of its way.
+ * a throttle plate lets most of the air in over the first part of its way.
  *
  * @param shape k, >= 0
- * @param throttle x in [0, 1]
+ * @returns s over x in [0, 1]
  */
-export function throttleShape(shape: number, throttle: number): number {
-  if (shape === 0 || throttle === 0 || throttle === 1) return throttle;
-  return (1 - exp(-shape * throttle)) / (1 - exp(-shape));
+export function throttleShape(shape: number): (throttle: number) => number {
+  if (shape === 0) return (x) => x;
+  if (shape < NEARLY_LINEAR) return (x) => x + (shape / 2) * x * (1 - x);
+  const whole = 1 - exp(-shape);
+  return (x) => (x === 1 ? 1 : (1 - exp(-shape * x)) / whole);
 }
 
 /**

@@ -20,7 +20,7 @@ function driveFile<K extends Drive['kind']>(kind: K, keys: string): Extract<Driv
   return drive as Extract<Drive, { kind: K }>;
 }
 
-const ENGINE = `torque: {full_load: [{rpm: 3000, nm: 9}, {rpm: 6000, nm: 11}], part_throttle_shape: 4},
+const ENGINE = `torque: {full_load: [{rpm: 3000, nm: 9}, {rpm: 6000, nm: 11}], part_throttle: {shape: 4, at_rpm: 4500}},
   closed_throttle_drag: [{rpm: 3000, nm: 1.5}, {rpm: 6000, nm: 2}],
   fuel_cut: {above_rpm: 3000, blend_rpm: 300, below_throttle_pct: 2, extra_drag_nm: 0.7},
   idle_rpm: 1500, stall_rpm: 900, rev_limit_rpm: 9000, rev_limit_band_rpm: 300, engine_inertia_kg_m2: 0.006,
@@ -36,6 +36,7 @@ it('brings an engine with gears to SI', () => {
   expectClose(spec.torque.shaftSpeed, [RPM_3000, 2 * RPM_3000], 1e-12);
   expectClose(spec.torque.torque, [9, 11], 0);
   expect(spec.torque.shape).toBe(4);
+  expectClose([spec.torque.shapeSpeed!], [1.5 * RPM_3000], 1e-12);
   expectClose(spec.drag?.shaftSpeed ?? [], [RPM_3000, 2 * RPM_3000], 1e-12);
   expectClose(spec.drag?.torque ?? [], [1.5, 2], 0);
   const { above, blend, throttle, torque } = spec.fuelCut!;
@@ -53,6 +54,21 @@ it('brings an engine with gears to SI', () => {
     wheelRadius: 0.3,
     fuel: null,
   });
+});
+
+it('takes a throttle plate at the speed of the greatest torque, or one shape at every speed where only that is told', () => {
+  const shapeOf = (keys: string) => {
+    const full = '[{rpm: 3000, nm: 9}, {rpm: 6000, nm: 11}, {rpm: 9000, nm: 8}]';
+    const torque = `torque: {full_load: ${full}${keys}}`;
+    const spec = engineSpecOf(
+      driveFile('engine', `${torque}, gear_ratios: [4, 2], wheel_radius_m: 0.5`),
+      null,
+    );
+    if (spec.torque.kind !== 'full_load') throw new Error('another torque');
+    return [spec.torque.shape, spec.torque.shapeSpeed];
+  };
+  expectClose(shapeOf('') as number[], [3, 2 * RPM_3000], 1e-12);
+  expect(shapeOf(', part_throttle: {shape: 4}')).toEqual([4, null]);
 });
 
 it('takes the highest gear, half of the idle speed and no limiter where nothing is said', () => {

@@ -71,6 +71,7 @@ const belted: Vehicle = referenceMotorcycle({
       shaftSpeed: Float64Array.of(300, 600, 900),
       torque: Float64Array.of(18, 22, 20),
       shape: 2,
+      shapeSpeed: null,
     },
     drag: { shaftSpeed: Float64Array.of(0, 900), torque: Float64Array.of(2, 4) },
     fuelCut: null,

@@ -5,7 +5,7 @@ import { expectClose } from '../compare.ts';
 
 const ENGINE = {
   kind: 'engine',
-  torque: { full_load: [1500, 5000, 9000].map((rpm) => ({ rpm, nm: 10 })), part_throttle_shape: 0 },
+  torque: { full_load: [1500, 5000, 9000].map((rpm) => ({ rpm, nm: 10 })), part_throttle: { shape: 0 } },
   closed_throttle_drag: [1500, 9000].map((rpm) => ({ rpm, nm: 1 })),
   idle_rpm: 1400,
   stall_rpm: 900,

@@ -54,6 +54,7 @@ export function engineOf({ fuelCut = 0, automatic = false }): EngineDriveSpec {
       shaftSpeed: rpm(1500, 3000, 4500, 6500, 8500, 10_000),
       torque: row(7.8, 10.2, 11.4, 12, 10.8, 8.4),
       shape: 3,
+      shapeSpeed: null,
     },
     drag: { shaftSpeed: rpm(1500, 5000, 10_000), torque: row(1.6, 2.6, 5) },
     fuelCut: fuelCut > 0 ? { above: 210, blend: 30, throttle: 0.02, torque: fuelCut } : null,

@@ -28,6 +28,7 @@ test.each([
         shaftSpeed: Float64Array.of(600),
         torque: Float64Array.of(torque),
         shape: 4,
+        shapeSpeed: null,
       },
       ratios: [(600 / speed) * 0.31],
       gear: 0,

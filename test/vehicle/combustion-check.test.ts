@@ -60,6 +60,7 @@ describe('the door of an engine', () => {
     ['not-increasing torque.shaftSpeed', { torque: { ...fullLoad, shaftSpeed: f(150, 300, 300, 650, 850) } }],
     ['wrong-length torque.torque', { torque: { ...fullLoad, torque: f(1, 2) } }],
     ['out-of-range torque.shape', { torque: { ...fullLoad, shape: -1 } }],
+    ['out-of-range torque.shapeSpeed', { torque: { ...fullLoad, shapeSpeed: 0 } }],
     ['out-of-range torque.torque', { torque: { ...fullLoad, torque: f(35, 52, Number.NaN, 60, 44) } }],
     ['out-of-range drag.torque', { drag: { shaftSpeed: f(100), torque: f(-3) } }],
     ['conflict torque.torque', { torque: { ...fullLoad, torque: f(35, 52, 62, 60, -20) } }],

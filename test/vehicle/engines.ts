@@ -29,6 +29,7 @@ export const single: CombustionSpec = {
     shaftSpeed: Float64Array.of(150, 300, 500, 650, 850),
     torque: Float64Array.of(35, 52, 62, 60, 44),
     shape: 4,
+    shapeSpeed: null,
   },
   drag: { shaftSpeed: Float64Array.of(150, 450, 900), torque: Float64Array.of(5, 7.5, 13) },
   fuelCut: { above: 220, blend: 30, throttle: 0.03, torque: 3 },

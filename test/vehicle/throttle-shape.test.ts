@@ -14,7 +14,7 @@ test.each([0.1, 1, 3, 4, 5, 12, 20])(
         const x = from + part * (to - from);
         const straight = shape(from) + part * (shape(to) - shape(from));
         worst = Math.max(worst, shape(x) - straight);
-        expectClose(throttleShape(k, x), shape(x), 1e-14);
+        expectClose(throttleShape(k)(x), shape(x), 1e-14);
       }
     }
     expect(worst).toBeLessThan(0.002);
@@ -24,8 +24,8 @@ test.each([0.1, 1, 3, 4, 5, 12, 20])(
   },
 );
 
-test('in proportion it needs one cell, like a butterfly at 5 fifteen', () => {
+test('in proportion it needs one cell, like a plate at 5 fifteen', () => {
   expect(shapeNodes(0)).toEqual(Float64Array.of(0, 1));
   expect(shapeNodes(5).length).toBe(16);
-  expect(throttleShape(0, 0.3)).toBe(0.3);
+  expect(throttleShape(0)(0.3)).toBe(0.3);
 });

@@ -66,6 +66,7 @@ test('a compiled engine with driveline losses and a fuel cut turns from its stal
       shaftSpeed: Float64Array.of(rpm(1500), rpm(6000), rpm(9500)),
       torque: Float64Array.of(8, 11, 8),
       shape: 4,
+      shapeSpeed: null,
     },
     drag: { shaftSpeed: Float64Array.of(rpm(1500), rpm(9000)), torque: Float64Array.of(0.8, 2) },
     fuelCut: { above: rpm(2500), blend: rpm(300), throttle: 0.03, torque: 1.5 },

@@ -18,6 +18,7 @@ const scooter: VariatorDriveSpec = {
     shaftSpeed: Float64Array.of(200, 600, 900),
     torque: Float64Array.of(20, 20, 14),
     shape: 0,
+    shapeSpeed: null,
   },
   drag: { shaftSpeed: Float64Array.of(0), torque: Float64Array.of(2) },
   fuelCut: null,
