@@ -215,7 +215,7 @@ export function answerOf(view: View): Answer {
       ? `${design.name} ${withinClause(view, design)}${asked.words === '' ? '' : `, ${asked.words}`}`
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
     hillClause(view, design),
-    asked.standing === 'not met' ? null : cycleClause(view, design.name),
+    cycleClause(view, design.name),
     ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),
     lockedClause(view, false),
   ].filter((part) => part !== null);

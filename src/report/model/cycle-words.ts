@@ -24,12 +24,21 @@ export const amplitudeText = (amplitude: number, speed: SpeedUnit): string =>
 export const periodText = (period: number): string =>
   period < 9.95 ? withUnit(fixed(period, 1), 's') : timeText(period);
 
-/** The greatest oscillation of a candidate, as a part of a sentence about it; null: its loop is steady. */
-export function cycleClause({ result: { cycles }, speed }: View, candidate: string): string | null {
-  const own = cycles.filter((cycle) => cycle.candidate === candidate);
-  const [first, ...others] = own.toSorted((a, b) => b.speedAmplitude - a.speedAmplitude);
-  if (first === undefined) return null;
-  const more =
-    others.length === 0 ? '' : ` (and ${others.length === 1 ? 'once' : `${others.length} times`} elsewhere)`;
-  return `it swings by itself on ${stretchText(first.from, first.to)}${more}: ${swingText(first, speed)}, because of ${CYCLE_CAUSES[first.cause]}`;
+/**
+ * The greatest oscillation of a design, as a part of a sentence about it; where its own loop is steady, that of the
+ * candidate that swings most: the reader of the one sentence must know that the vehicle can do it. Null: nothing swings.
+ */
+export function cycleClause({ result: { cycles }, speed }: View, design: string): string | null {
+  const own = cycles.filter((cycle) => cycle.candidate === design);
+  const told = own.length > 0 ? own : cycles;
+  const most = told.reduce<LimitCycle | null>(
+    (greatest, cycle) =>
+      greatest === null || cycle.speedAmplitude > greatest.speedAmplitude ? cycle : greatest,
+    null,
+  );
+  if (most === null) return null;
+  const others = told.filter(({ candidate }) => candidate === most.candidate).length - 1;
+  const more = others === 0 ? '' : ` (and ${others === 1 ? 'once' : `${others} times`} elsewhere)`;
+  const subject = own.length > 0 ? 'it' : most.candidate;
+  return `${subject} swings by itself on ${stretchText(most.from, most.to)}${more}: ${swingText(most, speed)}, because of ${CYCLE_CAUSES[most.cause]}`;
 }

@@ -51,6 +51,38 @@ describe('the answer', () => {
     expect(designs[0]!.words).toBe('1 of 2 not judged');
   });
 
+  it('names the limit cycle of another design where its own loop is steady, the greatest first', () => {
+    const base = fixtureResult({
+      lengthKm: 12,
+      requirements: 'met',
+      designs: ['pi-firm', 'pi-soft', 'pi-slow'],
+    });
+    const cycle = (candidate: string, speedAmplitude: number, from: number) => ({
+      candidate,
+      from,
+      to: from + 1500,
+      period: 2.5,
+      turns: 40,
+      speedAmplitude,
+      throttleAmplitude: 0.04,
+      cause: 'fuel_cut' as const,
+      why: '',
+    });
+    const told = (cycles: typeof base.cycles): string =>
+      plain(answerOf(viewOf({ ...base, cycles }, 'kmh')).sentence);
+    const best = answerOf(viewOf(base, 'kmh')).design!;
+    const [second, third] = ['pi-firm', 'pi-soft', 'pi-slow'].filter((name) => name !== best);
+    expect(told([])).not.toContain('swings');
+    // 0.25 m/s are 0.90 km/h.
+    expect(told([cycle(second!, 0.1, 1000), cycle(third!, 0.25, 4000), cycle(third!, 0.2, 7000)])).toContain(
+      `${third} swings by itself on km 4.00 to 5.50 (and once elsewhere): ±0.90 km/h every 2.5 s, because of the step of the fuel cut`,
+    );
+    // Its own come first, however small.
+    expect(told([cycle(second!, 0.25, 1000), cycle(best, 0.1, 4000)])).toContain(
+      'it swings by itself on km 4.00 to 5.50: ±0.36 km/h every 2.5 s',
+    );
+  });
+
   it('says that a hill defeats a design only where the demand leaves the range of the drive', () => {
     const base = fixtureResult({ lengthKm: 28 });
     const within = base.hills.map((hill) => ({ ...hill, share: 0.9, kind: 'level' as const }));
