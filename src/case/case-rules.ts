@@ -2,6 +2,7 @@ import type * as z from 'zod';
 import { FIGURES } from '../study/figure-table.ts';
 import type { caseSchema } from './case-schema.ts';
 import type { Rule, RuleFault } from './check-file.ts';
+import { matrixRules } from './matrix-rules.ts';
 import { nearestKey } from './nearest-key.ts';
 import { increasing } from './order-rules.ts';
 import { isMapping } from './schema-walk.ts';
@@ -38,6 +39,7 @@ export const caseRules: readonly Rule<CaseInput>[] = [
       ),
   },
   { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
+  ...matrixRules,
 ];
 
 /** Checks by name, which hold whatever else is wrong with the items: no item has the number -1, so none stops them. */

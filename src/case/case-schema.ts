@@ -14,6 +14,7 @@ import {
   word,
 } from './fields.ts';
 import { holdSchema } from './hold-schema.ts';
+import { matrixSchema } from './matrix-schema.ts';
 import { requirementSchema } from './requirement-schema.ts';
 import { roadSchema, trackSchema } from './road-schema.ts';
 import { vehicleSchema } from './vehicle-schema.ts';
@@ -57,6 +58,7 @@ export const caseSchema = mapping(
       NOT_GIVEN,
     ),
     requirements: otherwise(list(requirementSchema, 0, 200, 'Written requirements'), [], null),
+    matrix: optional(matrixSchema),
     output: block(
       mapping('What is written', {
         series: otherwise(

@@ -17,12 +17,16 @@ import { placeOf } from './yaml-source.ts';
  *   speeds that the engaged gear cannot turn; for what the compilers of `vehicle/` refuse, with those of the vehicle
  */
 export function vehicleOfCase(document: CaseDocument, vehicle: VehicleDocument): Vehicle {
-  const problems = [...surfaceProblems(document, vehicle), ...gearsOfRide(document, vehicle)];
-  if (problems.length === 0) problems.push(...speedsOfGears(document, vehicle));
-  const [first, ...others] = problems;
+  const [first, ...others] = rideProblems(document, vehicle);
   if (first !== undefined) throw new InputError(first, ...others);
   const { hold, road } = document.file;
   return vehicleOf(vehicle, { gear: hold.gear ?? null, surface: road.surface ?? 'dry' });
+}
+
+/** What a case asks of a vehicle that does not have it: surface, gears, set speeds that a gear cannot turn. */
+export function rideProblems(document: CaseDocument, vehicle: VehicleDocument): readonly Problem[] {
+  const problems = [...surfaceProblems(document, vehicle), ...gearsOfRide(document, vehicle)];
+  return problems.length === 0 ? speedsOfGears(document, vehicle) : problems;
 }
 
 /** Every default that a ride uses: those of case and vehicle that the other does not have the last word on. */

@@ -12,9 +12,11 @@ export const TERRAIN_ROUGHNESS = {
   closed: 1,
 } as const;
 
+export const windSpeed = number('m/s', 0, 60, 'Mean wind speed');
+export const windFrom = number('deg', 0, 360, 'Where it blows from, clockwise from true north');
 const windRest = {
-  speed_m_s: number('m/s', 0, 60, 'Mean wind speed'),
-  from_deg: number('deg', 0, 360, 'Where it blows from, clockwise from true north'),
+  speed_m_s: windSpeed,
+  from_deg: windFrom,
   height_m: otherwise(
     number('m', 0.5, 200, 'Height at which it was measured'),
     10,

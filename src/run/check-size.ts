@@ -25,6 +25,7 @@ function usualTime({ road, hold }: LoopPlan): number {
  * Refuses, before the work begins, what would run for hours or fill the memory.
  *
  * @param plans of the candidates, all over the same road
+ * @param combinations of the matrix, each of which is run as long as the case itself
  * @throws InputError `run-too-long`, `series-too-long`, `too-many-segments`
  */
 export function checkSize(
@@ -32,6 +33,7 @@ export function checkSize(
   plans: readonly LoopPlan[],
   { series, bin }: Output,
   segmenting: Segmenting,
+  combinations = 0,
 ): void {
   const [first] = plans;
   if (first === undefined) return;
@@ -47,6 +49,13 @@ export function checkSize(
       allowed: `at most ${MOST_SAMPLES}: a shorter road, fewer candidates, or a longer sample time`,
     });
   }
+  if (all * (1 + combinations) > MOST_SAMPLES)
+    refuse(document, ['matrix'], {
+      code: 'run-too-long',
+      message: `the runs of ${combinations} combinations over ${toKm(length).toFixed(1)} km would take too many samples`,
+      found: `about ${(all * (1 + combinations)).toPrecision(2)} samples of all candidates`,
+      allowed: `at most ${MOST_SAMPLES}: fewer combinations, a shorter road, fewer candidates, or a longer sample time`,
+    });
   const bins = (plans.length * length) / bin;
   if (bins > MOST_ROWS) refuse(document, ['output', 'bin_m'], tooManyRows(bins, 'wider bins'));
   if (series === 'full') checkFullRows(document, all);

@@ -57,19 +57,32 @@ export function roadOf({ file, read, overrides = [] }: RoadRequest): RoadResult 
  * @param namedAt where the case names the track
  */
 export function roadOfCase(document: CaseDocument, log: InputLog, file: string, namedAt?: Place): Road {
+  return roadMaker(document, log, file, namedAt)(document);
+}
+
+/**
+ * Reads the track of a case once.
+ *
+ * @returns what makes the road over it: of the case, or of the same case in another wind, direction, or set speed
+ */
+export function roadMaker(
+  document: CaseDocument,
+  log: InputLog,
+  file: string,
+  namedAt?: Place,
+): (document: CaseDocument) => Road {
   const profile = profileOf(document);
   const inCase = ({ key = 'track' }: Place): Place => placeOf(document.source, stepsOf(key));
   if (profile !== null) {
-    const options = roadOptionsOf(document, caseNameOf(file));
-    const scale = profile.by === 'time' ? options.nominalSpeed : 1;
+    const { nominalSpeed } = roadOptionsOf(document);
+    const scale = profile.by === 'time' ? nominalSpeed : 1;
     stretchesOnTrack(document, scale * profile.pieces.reduce((sum, { extent }) => sum + extent, 0));
-    return placing(inCase, () => roadOfProfile(profile, options));
+    return (here) => placing(inCase, () => roadOfProfile(profile, roadOptionsOf(here, caseNameOf(file))));
   }
   const name = document.trackFile ?? '';
   const bytes = log.read(name, namedAt);
   const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
   stretchesOnTrack(document, track.distance[track.size - 1] ?? 0);
-  const options = roadOptionsOf(document, track.name ?? caseNameOf(name));
   // What a key asks of the track has its place in the case or the option, what the track is in its file.
   const place = (found: Place): Place => {
     const inFile = { file: name, ...found };
@@ -77,7 +90,8 @@ export function roadOfCase(document: CaseDocument, log: InputLog, file: string, 
     const asked = inCase(found);
     return asked.file === name ? inFile : asked;
   };
-  return placing(place, () => roadOfTrack(track, options));
+  return (here) =>
+    placing(place, () => roadOfTrack(track, roadOptionsOf(here, track.name ?? caseNameOf(name))));
 }
 
 /** `track.profile.3` as a path. */

@@ -28,11 +28,14 @@ import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
+import { type MatrixWork, matrixRides } from './matrix-work.ts';
 import { changesNotReached, placesOnRoad } from './places-on-road.ts';
-import { roadOfCase } from './road-of.ts';
+import { roadMaker } from './road-of.ts';
+import { runCell } from './run-cell.ts';
 import type { CandidateResult, RunResult } from './run-result.ts';
 import { runWarnings } from './run-warnings.ts';
 import { SCHEMA_VERSION, TOOL_VERSION } from './tool-version.ts';
+import { isMissed, matrixWords, shareBeforeMatrix, shareOfMatrix, withMatrix } from './with-matrix.ts';
 
 export interface RunRequest {
   /** Name of the case. */
@@ -60,17 +63,44 @@ const MOST_BANDS = 4;
 
 /**
  * The main job: reads a case and its files, makes the road, replays every candidate over it, and finds what the
- * report and the data files tell.
+ * report and the data files tell; then every combination of its matrix, one after the other.
  *
  * @throws InputError for what the reader or a file refuses; a numerical failure is a status of the candidate
  */
-export function runCase({ file, read, overrides = [], onProgress = () => {} }: RunRequest): RunResult {
+export function runCase(request: RunRequest): RunResult {
+  const { run, matrix } = runWithoutMatrix(request);
+  if (matrix === null) return run;
+  const { onProgress = () => {} } = request;
+  const outcomes = matrix.cells.map((_, i) => {
+    onProgress(shareOfMatrix(matrix, i), matrixWords(matrix, i));
+    return runCell(matrix, i);
+  });
+  return withMatrix(run, matrix, outcomes);
+}
+
+/** The run of a case itself, and the matrix that is left to do; null: it has none. */
+export interface CaseRun {
+  readonly run: RunResult;
+  readonly matrix: MatrixWork | null;
+}
+
+/**
+ * The same without the matrix, for those who run its combinations side by side: `runCell` each, in whatever order and
+ * place, then `withMatrix` of all of them in the order of the cells.
+ */
+export function runWithoutMatrix({
+  file,
+  read,
+  overrides = [],
+  onProgress: onShare = () => {},
+}: RunRequest): CaseRun {
   const log = new InputLog(read);
-  onProgress(0, 'reading');
+  onShare(0, 'reading');
   const document = readCaseFile(decodeText(log.read(file), file), file, overrides);
   const vehicleDocument = vehicleDocumentOf(document, log);
   const vehicle = vehicleOfCase(document, vehicleDocument);
-  const road = roadOfCase(document, log, file, placeOf(document.source, ['track', 'file']));
+  const makeRoad = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']));
+  const road = makeRoad(document);
   const hold = holdOf(document);
   const rider = riderOf(document);
   const requirements = requirementsOf(document);
@@ -83,7 +113,10 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
   const scheme = schemeOf(document);
   const candidates = candidatesOf(document, vehicle);
   const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin: output.bin }, candidates);
-  checkSize(document, plans, output, segmenting);
+  const rides = matrixRides({ document, vehicle: vehicleDocument, road, makeRoad });
+  checkSize(document, plans, output, segmenting, rides?.cells.length);
+  const whole = shareBeforeMatrix(rides?.cells.length ?? 0);
+  const onProgress = (share: number, words: string): void => onShare(whole * share, words);
   const demand = demandOf(road, vehicle, hold, rider);
   const replayed = replayAll(candidates, plans, onProgress);
   if (output.series === 'full') checkFullSeries(document, replayed);
@@ -108,7 +141,7 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
         : null;
     return { ...candidate, result, figures: figures[i]?.all ?? {}, loop, full };
   });
-  return {
+  const run: RunResult = {
     schemaVersion: SCHEMA_VERSION,
     toolVersion: TOOL_VERSION,
     title: titleOf(document) ?? caseNameOf(file),
@@ -137,7 +170,10 @@ export function runCase({ file, read, overrides = [], onProgress = () => {} }: R
       ...changesNotReached(document, hold, results),
     ],
     status: statusOf(results, findings),
+    matrix: null,
   };
+  const { bin } = output;
+  return { run, matrix: rides === null ? null : { ...rides, candidates, scheme, bands, bin, spread } };
 }
 
 /** The true speeds that the set speeds of a run stand for [m/s]. */
@@ -175,8 +211,7 @@ function statusOf(
   candidates: readonly CandidateResult[],
   findings: RunResult['requirements'],
 ): RunResult['status'] {
-  if (findings.some(({ verdict }) => verdict === 'not met' || verdict === 'not judged'))
-    return 'requirement_not_met';
+  if (findings.some(isMissed)) return 'requirement_not_met';
   return candidates.every(({ result }) => result.status === 'completed') ? 'ok' : 'incomplete';
 }
 

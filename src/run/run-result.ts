@@ -15,6 +15,7 @@ import type {
   Segment,
 } from '../study/findings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import type { MatrixResult } from './matrix-result.ts';
 
 /** Everything one run of a case found: what the report, the files and both programs read. Plain data. */
 export interface RunResult {
@@ -48,7 +49,9 @@ export interface RunResult {
   /** What case and vehicle gave. */
   readonly given: readonly GivenValue[];
   readonly warnings: readonly Warning[];
-  /** `requirement_not_met` when any requirement is not met or could not be judged; else `incomplete` when a candidate did not reach the end. */
+  /** Every combination of the case's matrix; null: it has none. */
+  readonly matrix: MatrixResult | null;
+  /** `requirement_not_met` when any requirement is not met or could not be judged, in the run itself or in a combination; else `incomplete` when a candidate did not reach the end. */
   readonly status: 'ok' | 'requirement_not_met' | 'incomplete';
 }
 

@@ -3,7 +3,7 @@ import { seededStream } from '../numeric/random.ts';
 import { perturbRoad } from '../road/perturb-road.ts';
 import type { Recovery } from './figure-measures.ts';
 import { type FigureRow, figureRow } from './figure-table.ts';
-import type { Hill, Replayed, Requirement } from './findings.ts';
+import type { RecoveredHill, Replayed, Requirement } from './findings.ts';
 import { speedsOver } from './hill-series.ts';
 import { courseOfRun, type HoldCourse } from './hold-course.ts';
 import { chooseBins, endedEarly, type FigureContext, recordOf } from './measure-figure.ts';
@@ -121,7 +121,7 @@ function drawnRecoveries(
   band: number,
   course: HoldCourse,
 ): Recovery[] {
-  const slow: { hill: Hill; time: number }[] = [];
+  const slow: { hill: RecoveredHill; time: number }[] = [];
   for (const hill of hills) {
     if (typeof where !== 'string' && !(hill.from < where.to && hill.to > where.from)) continue;
     const outcome = hill.outcomes.find(({ candidate }) => candidate === run.name);

@@ -140,6 +140,11 @@ export interface HillOutcome {
   readonly picture: FullSeries;
 }
 
+/** What the figure of recoveries needs of a hill. */
+export interface RecoveredHill extends Pick<Hill, 'number' | 'from' | 'to' | 'until'> {
+  readonly outcomes: readonly Pick<HillOutcome, 'candidate' | 'affected' | 'recovery'>[];
+}
+
 export interface Remedy {
   readonly lever: 'set_speed' | 'power' | 'load' | 'gear';
   /** Of the lever `gear`: where the rider changes down, horizontal distance [m]; null: nowhere, or another lever. */

@@ -1,13 +1,12 @@
 import { replay } from '../loop/replay.ts';
-import type { FullSeries, LoopResult } from '../loop/result.ts';
+import type { FullSeries } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { fromKmh } from '../units/convert.ts';
 import type { Figure, HillOutcome, Replayed } from './findings.ts';
 import { canTell, causeOnHill } from './hill-cause.ts';
-import { type HillEvents, hillEvents } from './hill-events.ts';
+import type { HillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
-import { type SeriesContext, seriesOver } from './hill-series.ts';
-import { marksBin } from './hill-stretches.ts';
+import { hillPassage, type PassageContext } from './hill-passage.ts';
 import {
   excessOf,
   type HillWindow,
@@ -16,46 +15,28 @@ import {
   planOverWindow,
   windowFrom,
 } from './hill-window.ts';
-import type { HoldCourse } from './hold-course.ts';
 import { lockedCause } from './locked-cause.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
-import { recoveryOf } from './recovery.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
-import { isSettling, passageOf, sampleAt, thinSeries } from './series-measures.ts';
+import { isSettling, passageOf, thinSeries } from './series-measures.ts';
 
-/** Shown before the hill [s at the set speed] and after the recovery [s]; rows of a picture. */
-const LEAD = 10;
+/** Shown after the recovery [s]; rows of a picture. */
 const TAIL = 5;
 const PICTURE_ROWS = 400;
 /** Simulated and predicted loss may differ by this share, or by half a km/h. */
 const AGREES = 0.15;
-const LOCKED: Figure = { none: 'a locked throttle does not regulate' };
 const AGREES_ABSOLUTE = fromKmh(0.5);
-
-export interface OutcomeContext extends SeriesContext {
-  /** Half-width of the band that is left [m/s]. */
-  readonly band: number;
-}
 
 /**
  * What one candidate did on one hill: a replay from the nearest checkpoint with every sample for the figures and the
  * picture, the hand formula from the speed at which it came in, the cause by replays with one limitation less, and
  * what would hold.
  */
-export function hillOutcome(replayed: Replayed, hill: HillFacts, context: OutcomeContext): HillOutcome {
+export function hillOutcome(replayed: Replayed, hill: HillFacts, context: PassageContext): HillOutcome {
   const { name, result } = replayed;
   if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
-  const { band, course } = context;
-  const locked = replayed.plan.controller.kind === 'locked';
-  const regulates = !locked && marks(result, hill, course, band);
-  const { series, whole } = seriesOver(replayed, hill, context, { lead: LEAD, recovers: regulates });
-  const first = Math.min(sampleAt(series, hill.from), series.size - 1);
-  const last = Math.min(Math.max(first + 1, sampleAt(series, hill.until)), series.size);
-  const events = hillEvents(replayed.plan, series, first, last, course.settling, band);
-  const recovery =
-    events.affected && regulates
-      ? recoveryOf(series, first, last, { ...context, settling: course.settling, whole })
-      : { time: locked ? LOCKED : 0, over: last };
+  const { course } = context;
+  const { series, first, last, events, recovery } = hillPassage(replayed, hill, context);
   const over = Math.max(last, recovery.over);
   const passage = passageOf(series, first, last, course.settling);
   const predictedChange = predict(replayed, hill, context, series, first);
@@ -83,18 +64,10 @@ function pictureEnd(series: FullSeries, over: number): number {
   return end;
 }
 
-/** By its record, the candidate left its band or sat on a limit on the hill or in a bin that reaches into it. */
-function marks({ bins }: LoopResult, hill: HillFacts, course: HoldCourse, band: number): boolean {
-  const width = bins.edge[1] - bins.edge[0];
-  for (let i = Math.floor(hill.from / width); i < bins.size && bins.edge[i] < hill.until; i++)
-    if (marksBin(bins, i, band, course.settling)) return true;
-  return false;
-}
-
 function predict(
   { plan }: Replayed,
   hill: HillFacts,
-  { demand, course }: OutcomeContext,
+  { demand, course }: PassageContext,
   series: FullSeries,
   first: number,
 ): Figure {
@@ -138,7 +111,7 @@ function differs(simulated: number, predicted: Figure): boolean {
 function explainOutcome(
   replayed: Replayed,
   hill: HillFacts,
-  { demand, course, band }: OutcomeContext,
+  { demand, course, band }: PassageContext,
   events: HillEvents,
   ideal: Figure,
   command: number,

@@ -1,7 +1,7 @@
 import { InputError } from '../problems/input-error.ts';
 import { candidatesOf, type FigureSpread, figureSpread } from './figure-spread.ts';
 import { FIGURES, type FigureRow, figureRow } from './figure-table.ts';
-import type { Figure, Hill, Replayed, Requirement, RequirementFinding } from './findings.ts';
+import type { Figure, RecoveredHill, Replayed, Requirement, RequirementFinding } from './findings.ts';
 import { endedEarly, type FigureContext, measureFigure } from './measure-figure.ts';
 import { NOT_RECOVERED } from './recovery.ts';
 import { atKm, withUnit } from './wording.ts';
@@ -86,10 +86,10 @@ function judgeOne(
   };
 }
 
-const hillFrom = ({ hills }: FigureContext, at: number | null): Hill | undefined =>
+const hillFrom = ({ hills }: FigureContext, at: number | null): RecoveredHill | undefined =>
   hills.find((hill) => hill.from === at);
 
-function placeWords(at: number | null, hill: Hill | undefined): string {
+function placeWords(at: number | null, hill: RecoveredHill | undefined): string {
   if (hill !== undefined) return `, after hill ${hill.number}`;
   return at === null ? '' : `, worst at ${atKm(at)}`;
 }

@@ -2,7 +2,7 @@ import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
 import type { FigureRecord, Measure, Recovery } from './figure-measures.ts';
 import { FIGURES, type FigureRow } from './figure-table.ts';
-import type { Demand, Figure, FigureValues, Hill, Replayed, Stretch, Where } from './findings.ts';
+import type { Demand, Figure, FigureValues, RecoveredHill, Replayed, Stretch, Where } from './findings.ts';
 import { gripBins } from './grip-places.ts';
 import { courseOfRun } from './hold-course.ts';
 import { withUnit } from './wording.ts';
@@ -11,7 +11,7 @@ import { withUnit } from './wording.ts';
 export interface FigureContext {
   readonly road: Road;
   readonly demand: Demand;
-  readonly hills: readonly Hill[];
+  readonly hills: readonly RecoveredHill[];
 }
 
 /**
@@ -137,7 +137,7 @@ export function chooseBins(
  * Recoveries that count: of the hills that touch the stretch; all of them for `holdable`, because a recovery begins
  * where the road can be held again, whatever the hill was.
  */
-function recoveriesOf(name: string, hills: readonly Hill[], where: Where): Recovery[] {
+function recoveriesOf(name: string, hills: readonly RecoveredHill[], where: Where): Recovery[] {
   return hills
     .filter((hill) => typeof where === 'string' || (hill.from < where.to && hill.to > where.from))
     .flatMap((hill) =>

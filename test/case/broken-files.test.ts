@@ -1,5 +1,6 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
+import { matrixOf } from '../../src/case/matrix-of.ts';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { vehicleOf } from '../../src/case/vehicle-of.ts';
@@ -18,7 +19,9 @@ interface Row {
 const READERS = {
   cases: (text: string, file: string) => {
     const document = readCaseFile(text, file);
-    if (document.vehicle !== null) vehicleOfCase(document, document.vehicle);
+    if (document.vehicle === null) return;
+    vehicleOfCase(document, document.vehicle);
+    matrixOf(document, document.vehicle);
   },
   vehicles: (text: string, file: string) => {
     vehicleOf(readVehicleFile(text, file));

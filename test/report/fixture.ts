@@ -148,6 +148,7 @@ function plainResult(wish: FixtureWish): RunResult {
         to: 9300,
       },
     ],
+    matrix: null,
     status: early
       ? 'incomplete'
       : wish.requirements === 'missed' || wish.requirements === undefined
