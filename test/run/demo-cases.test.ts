@@ -2,7 +2,12 @@
 
 import { readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
+import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { vehicleOf } from '../../src/case/vehicle-of.ts';
 import { runCase } from '../../src/run/run-case.ts';
+import { throttleFor } from '../../src/vehicle/drive-law.ts';
+import { equilibriumSpeeds } from '../../src/vehicle/equilibrium.ts';
+import { requiredForce } from '../../src/vehicle/resistance.ts';
 
 const routes = new URL('../../routes/', import.meta.url);
 const run = (name: string, overrides: readonly string[] = []) =>
@@ -51,4 +56,52 @@ it('shifts where the rider planned it, and the hold resumes', () => {
     // Half a second with the clutch open, two until the rider resumes.
     expect(resumedAt! - time).toBeCloseTo(2.5, 1);
   });
+});
+
+it('settles with a locked throttle at one speed on every hill, lower the steeper it is', () => {
+  const speed = 60 / 3.6;
+  const level = { grade: 0, headwind: 0, crosswind: 0, airDensity: 1.2, airTemperature: 288.15 };
+  for (const name of ['proving-125.yaml', 'proving-125-cable.yaml', 'proving-belt.yaml']) {
+    const text = readFileSync(new URL(`vehicles/${name}`, routes), 'utf8');
+    const vehicle = vehicleOf(readVehicleFile(text, name));
+    const { drive } = vehicle;
+    const throttle = throttleFor(drive, drive.gear, speed, requiredForce(vehicle, speed, level), 1)!;
+    let faster = Number.POSITIVE_INFINITY;
+    for (let grade = -0.05; grade < 0.095; grade += 0.005) {
+      const found = equilibriumSpeeds(vehicle, { ...level, grade }, throttle);
+      expect(found, `${name} at ${grade}`).toMatchObject([{ stable: true }]);
+      expect(found[0]!.speed).toBeLessThan(faster);
+      faster = found[0]!.speed;
+    }
+    expect(faster).toBeGreaterThan(15 / 3.6);
+  }
+});
+
+it('loses speed on a hill of 6 % with a throttle locked in place, and gets over it', () => {
+  const { candidates } = run('one-hill.yaml');
+  const [locked] = candidates;
+  expect(locked!.result.status).toBe('completed');
+  const { bins } = locked!.result;
+  const least = bins.errorMin.subarray(0, bins.size).reduce((worst, error) => Math.min(worst, error), 0);
+  expect(least).toBeLessThan(-15 / 3.6);
+  expect(least).toBeGreaterThan(-35 / 3.6);
+});
+
+it('holds the speed with a belt wherever its drive can, and the gains of another do not', () => {
+  const { candidates, requirements } = run('harrow-belt.yaml');
+  expect(candidates.every(({ result }) => result.status === 'completed')).toBe(true);
+  const verdicts = (name: string) =>
+    requirements.filter(({ candidate }) => candidate === name).map(({ verdict }) => verdict);
+  expect(verdicts('pi-droop')).toEqual(['met', 'met']);
+  expect(verdicts('pi-shipped')).toContain('not met');
+});
+
+it('swings over the slack of a worn cable, and not with a new one', () => {
+  const brisk = (...overrides: string[]) =>
+    run('harrow-cable.yaml', [
+      'candidates=[{name: pi-brisk, kind: pi, sample_s: 0.02, kp_pct_per_kmh: 4, ti_s: 2.5}]',
+      ...overrides,
+    ]).cycles.map(({ cause }) => cause);
+  expect(brisk()).toContain('slack');
+  expect(brisk('vehicle.actuator.slack_pct=0')).not.toContain('slack');
 });
