@@ -1,3 +1,4 @@
+import { cellIndex, lawAt } from './cell-law.ts';
 import type { Drive } from './drive.ts';
 import type { NoteRule } from './validity-note.ts';
 
@@ -16,6 +17,11 @@ export function drivetrainNotes(drive: Drive): readonly NoteRule[] {
       engine,
       'steady-efficiency',
       'The driveline passes on the same share of the torque at every load and speed, and torque is straight between the points that are told.',
+    ],
+    [
+      drive.kind === 'engine' && sharesAlike(drive),
+      'part-throttle-share',
+      'At part throttle the engine gives the same share of its torque at every engine speed, as a throttle by wire may do. Behind a throttle plate torque rises as the engine slows: there a locked throttle settles on hills on which it may find no steady speed here.',
     ],
     [
       engine,
@@ -53,4 +59,24 @@ export function drivetrainNotes(drive: Drive): readonly NoteRule[] {
       'Below the shaft speed at which it locks, the clutch passes on the torque that the engine has there, with no drag once it is open; it neither heats nor grabs.',
     ],
   ];
+}
+
+/** Where the share is looked at, and how far it may move over all engine speeds to be called the same. */
+const PART = 0.3;
+const ALIKE = 0.05;
+
+/** The share of the way from closed to full torque hardly depends on engine speed, from idle up. */
+function sharesAlike(drive: Drive): boolean {
+  const smooth = drive.withoutFuelCut ?? drive;
+  let [least, most] = [1, 0];
+  for (const w of smooth.speedEdges) {
+    const [closed, part, full] = [0, PART, 1].map((x) => {
+      const law = lawAt(smooth, cellIndex(smooth.throttleEdges, x), w, 1);
+      return law.closed + x * law.gain;
+    }) as [number, number, number];
+    if (w < drive.idleSpeed || full <= closed) continue;
+    least = Math.min(least, (part - closed) / (full - closed));
+    most = Math.max(most, (part - closed) / (full - closed));
+  }
+  return most - least < ALIKE;
 }

@@ -1,11 +1,13 @@
 import { expect, test } from 'vitest';
 import { type ElectricDriveSpec, electricDrive } from '../../src/vehicle/electric-drive.ts';
-import type { VariatorDriveSpec } from '../../src/vehicle/engine-spec.ts';
+import { engineDrive } from '../../src/vehicle/engine-drive.ts';
+import type { EngineDriveSpec, VariatorDriveSpec } from '../../src/vehicle/engine-spec.ts';
 import { forceDrive } from '../../src/vehicle/force-drive.ts';
 import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import { validityNotes } from '../../src/vehicle/validity.ts';
 import { variatorDrive } from '../../src/vehicle/variator-drive.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
+import { singleWithGears, textbookEngine } from './engines.ts';
 import { referenceMotorcycle, textbookCar } from './vehicles.ts';
 
 test('a drive known by its force says what a locked throttle loses by that', () => {
@@ -65,7 +67,13 @@ test('known grip changes what is said of slip', () => {
 
 test('an engine speaks of its gearbox, its fuel cut and its fuel where it has them', () => {
   const car = textbookCar().drive;
-  const engine = ['steady-torque', 'steady-efficiency', 'static-governor', 'rigid-clutch'];
+  const engine = [
+    'steady-torque',
+    'steady-efficiency',
+    'part-throttle-share',
+    'static-governor',
+    'rigid-clutch',
+  ];
   expect(more({ drive: car })).toEqual(engine);
   expect(more({ drive: { ...car, gearbox: { kind: 'clutch', open: 0.5, resume: 1 } } })).toEqual([
     ...engine,
@@ -149,4 +157,17 @@ test('an electric drive says what its battery does not do, and no more than that
   expect(codes).toEqual(expect.arrayContaining(['battery-voltage', 'one-heat', 'battery-account']));
   for (const note of notes(all)) expect(note.words).toMatch(/^[A-Z].*\.$/);
   expect(notes({ efficiency: null }).map(({ code }) => code)).not.toContain('battery-account');
+});
+
+test('an engine without a throttle plate says what a locked throttle loses by that', () => {
+  const told = (torque: EngineDriveSpec['torque']): boolean =>
+    codesOf({ drive: engineDrive({ ...singleWithGears, torque }) }).includes('part-throttle-share');
+  const { torque } = singleWithGears;
+  if (torque.kind !== 'full_load') throw new Error('another torque');
+  expect(told({ ...torque, shapeSpeed: null })).toBe(true);
+  expect(told({ ...torque, shape: 0, shapeSpeed: 500 })).toBe(true);
+  expect(told({ ...torque, shapeSpeed: 500 })).toBe(false);
+  expect(told({ ...torque, shape: 1, shapeSpeed: 500 })).toBe(false);
+  expect(codesOf({ drive: engineDrive(textbookEngine) })).toContain('part-throttle-share');
+  expect(codesOf({})).not.toContain('part-throttle-share');
 });
