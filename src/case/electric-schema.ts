@@ -82,7 +82,12 @@ export const electricSchema = mapping(
     efficiency_pct: optional(
       mapping('Efficiencies [%]', {
         drive: number('%', 1, 100, 'Wheel energy over battery energy'),
-        regeneration: number('%', 0, 100, 'Battery energy over wheel energy'),
+        regeneration: number(
+          '%',
+          0,
+          100,
+          'Battery energy over wheel energy, the drag not counted: it charges nothing',
+        ),
       }),
       'none',
       'not given: no constant efficiency',

@@ -24,6 +24,8 @@ export interface BatterySourceSpec {
   readonly greatestForce: number;
   readonly leastForce: number;
   readonly peakPower: number | null;
+  /** Drag at closed throttle [N], >= 0: lost whatever the efficiency. */
+  readonly drag: number;
 }
 
 /**
@@ -60,12 +62,18 @@ export function batterySource(spec: BatterySourceSpec): Battery | null {
 }
 
 /** Power at the terminals: the loss map where there is one, or the constant efficiencies. */
-function terminalMap({ efficiency, lossMap: losses, battery, heating }: BatterySourceSpec): PowerMap | null {
+function terminalMap({
+  efficiency,
+  lossMap: losses,
+  battery,
+  heating,
+  drag,
+}: BatterySourceSpec): PowerMap | null {
   if (losses !== null) {
     checkLosses(losses);
-    return lossMap(losses);
+    return lossMap(losses, drag);
   }
-  if (efficiency !== null) return constantEfficiencyMap(efficiency.drive, efficiency.regeneration);
+  if (efficiency !== null) return constantEfficiencyMap(efficiency.drive, efficiency.regeneration, drag);
   if (battery === null && heating === null) return null;
   throw new InputError({
     code: 'missing-losses',

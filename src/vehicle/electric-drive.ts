@@ -21,7 +21,7 @@ export interface ElectricDriveSpec {
   readonly throttleMin: number;
   /** First-order lag from throttle to force [s]. */
   readonly lag: number;
-  /** Wheel energy over battery energy while driving, battery over wheel energy while regenerating, in (0, 1] and [0, 1]; null: no battery account, unless there is a loss map. */
+  /** Wheel energy over battery energy while driving, battery energy over that of the regeneration without the drag, which charges nothing, in (0, 1] and [0, 1]; null: no battery account, unless there is a loss map. */
   readonly efficiency: { readonly drive: number; readonly regeneration: number } | null;
   /** Losses over speed and force, in the place of the efficiencies. */
   readonly lossMap?: LossMapSpec | null;
@@ -100,6 +100,7 @@ export function electricDrive(spec: ElectricDriveSpec): Drive {
       greatestForce: peakForce,
       leastForce: -drag - regenerationForce,
       peakPower,
+      drag,
     }),
     withoutFuelCut: null,
     fuelCutBelow: 0,

@@ -22,25 +22,30 @@ export function powerDrawn(map: PowerMap, shaftSpeed: number, torque: number): n
 }
 
 /**
- * Constant efficiencies: T w / drive while the shaft drives, T w regeneration while it is driven. The product T w is
- * bilinear, so that the map is exact.
+ * Constant efficiencies: T w / drive while the shaft drives, (T + drag) w regeneration where it is driven by more than
+ * the drag, nothing in between: drag is lost, it charges no battery. The products are bilinear, so that the map is exact.
+ *
+ * @param drag of the closed throttle [N m, or N], >= 0. Where it fades at low speed the whole of it still counts as lost.
  */
-export function constantEfficiencyMap(drive: number, regeneration: number): PowerMap {
+export function constantEfficiencyMap(drive: number, regeneration: number, drag = 0): PowerMap {
+  const torque = Float64Array.of(-drag - 1, ...(drag > 0 ? [-drag] : []), 0, 1);
+  const power = torque.map((t) => (t > 0 ? t / drive : Math.min(0, t + drag) * regeneration));
   return {
     shaftSpeed: Float64Array.of(0, 1),
-    torque: Float64Array.of(-1, 0, 1),
-    power: Float64Array.of(0, 0, 0, -regeneration, 0, 1 / drive),
+    torque,
+    power: Float64Array.of(...torque.map(() => 0), ...power),
     least: Number.NEGATIVE_INFINITY,
   };
 }
 
 /**
  * Power F v + loss of a loss map, exact in its bilinear cells. A map that begins at a force of 0 or above is mirrored
- * for the forces below.
+ * for the forces below. Of what holds back the drag at least is lost: it charges no battery.
  *
  * @param losses checked: increasing, two or more rows and columns
+ * @param drag of the closed throttle [N], >= 0
  */
-export function lossMap({ speed, force, loss }: LossMapSpec): PowerMap {
+export function lossMap({ speed, force, loss }: LossMapSpec, drag = 0): PowerMap {
   const columns = force.length;
   const mirrored = force[0]! >= 0;
   const source = Array.from(force, (_, j) => j);
@@ -48,12 +53,21 @@ export function lossMap({ speed, force, loss }: LossMapSpec): PowerMap {
   const forces = [...back.map((j) => -force[j]!), ...force];
   const from = [...back, ...source];
   const power = Array.from(speed, (v, i) => from.map((j, k) => forces[k]! * v + loss[i * columns + j]!));
-  return {
+  const map = {
     shaftSpeed: speed,
     torque: Float64Array.from(forces),
     power: Float64Array.from(power.flat()),
     least: Number.NEGATIVE_INFINITY,
   };
+  return drag === 0 ? map : withDragLost(map, drag);
+}
+
+function withDragLost(map: PowerMap, drag: number): PowerMap {
+  const torque = Float64Array.from(new Set([...map.torque, -drag, 0])).sort();
+  const rows = Array.from(map.shaftSpeed, (w) =>
+    Array.from(torque, (t) => Math.max(powerDrawn(map, w, t), Math.min(0, t + drag) * w)),
+  );
+  return { ...map, torque, power: Float64Array.from(rows.flat()) };
 }
 
 /**

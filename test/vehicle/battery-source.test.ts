@@ -69,8 +69,8 @@ describe('a battery behind a resistance', () => {
     const { map } = sourceOf({ battery });
     // By hand: 192 N at 20 m/s are 4800 W at the terminals; 52 I - 0.03 I2 = 4800 gives 97.829 A and 5087.1 W.
     expectClose(powerDrawn(map, 20, 192), 5087.1, 3);
-    // -50 N at 20 m/s send 600 W; 52 I - 0.03 I2 = -600 gives -11.4627 A: 596.06 W arrive.
-    expectClose(powerDrawn(map, 20, -50), -596.06, 0.3);
+    // -60 N at 20 m/s, 10 N of them drag, send 600 W; 52 I - 0.03 I2 = -600 gives -11.4627 A: 596.06 W arrive.
+    expectClose(powerDrawn(map, 20, -60), -596.06, 0.3);
     expectClose(powerDrawn(map, 20, 0), 0, 1e-9);
   });
 
@@ -81,7 +81,7 @@ describe('a battery behind a resistance', () => {
       const v = 45 * stream.uniform();
       const most = Math.min(400, 3840 / v);
       const force = (most + 130) * stream.uniform() - 130;
-      const terminals = force > 0 ? (force * v) / 0.8 : Math.max(force * v, -1900) * 0.6;
+      const terminals = force > 0 ? (force * v) / 0.8 : Math.min(0, force + 10) * v * 0.6;
       if (force * v < -1900) continue;
       // The smaller root of 52 I - 0.03 I^2 = P.
       const current = (52 - Math.sqrt(52 * 52 - 4 * 0.03 * terminals)) / (2 * 0.03);
@@ -111,6 +111,29 @@ describe('a battery behind a resistance', () => {
 test('the base speed is peak power over peak force', () => {
   // 3840 W / 400 N = 9.6 m/s.
   expect([...electricDrive(scooter).speedEdges]).toContain(9.6);
+});
+
+describe('drag at closed throttle', () => {
+  // By hand: the work that a battery can get back is that of what holds back beyond the drag.
+  test('charges no battery, and what holds back beyond it does by the efficiency', () => {
+    const { map } = sourceOf({});
+    expectClose(powerDrawn(map, 20, -10), 0, 1e-12, 'drag alone');
+    expectClose(powerDrawn(map, 20, -4), 0, 1e-12, 'part of the drag');
+    expectClose(powerDrawn(map, 20, -130), -120 * 20 * 0.6, 1e-9, 'full regeneration');
+    expectClose(powerDrawn(map, 1, -5), 0, 1e-12, 'drag that fades');
+  });
+
+  test('charges none by a loss map that knows nothing of it either', () => {
+    const speed = Float64Array.of(0, 30);
+    for (const force of [Float64Array.of(0, 300), Float64Array.of(-300, 0, 300), Float64Array.of(20, 300)]) {
+      const loss = new Float64Array(2 * force.length);
+      const { map } = sourceOf({ efficiency: null, lossMap: { speed, force, loss } });
+      expectClose(powerDrawn(map, 20, -10), 0, 1e-9, 'drag alone');
+      expectClose(powerDrawn(map, 20, -4), 0, 1e-9, 'part of the drag');
+      expectClose(powerDrawn(map, 20, -130), -120 * 20, 1e-9, 'beyond the drag');
+      expectClose(powerDrawn(map, 20, 100), 2000, 1e-9, 'driving');
+    }
+  });
 });
 
 describe('heat', () => {
@@ -153,22 +176,24 @@ describe('a loss map', () => {
   });
 
   test('that begins at no force is mirrored for regeneration', () => {
-    const { map } = sourceOf({ efficiency: null, lossMap: losses });
+    const { map } = sourceOf({ efficiency: null, lossMap: losses, closedThrottleForce: 0 });
     expectClose(powerDrawn(map, 10, -100), -1000 + 90, 1e-9);
     expectClose(powerDrawn(map, 20, -150), -3000 + 252.5, 1e-9);
   });
 
   test('of its own for regeneration is taken as it is', () => {
     const own = { speed: losses.speed, force: Float64Array.of(-100, 0, 300), loss: losses.loss };
-    const { map } = sourceOf({ efficiency: null, lossMap: own });
+    const { map } = sourceOf({ efficiency: null, lossMap: own, closedThrottleForce: 0 });
     expectClose(powerDrawn(map, 10, -100), -1000 + 40, 1e-9);
   });
 
   test('of a constant share of the power agrees with the constant efficiency', () => {
     const speed = Float64Array.of(0, 15, 40);
-    const force = Float64Array.of(-200, 0, 500);
+    const force = Float64Array.of(-200, -10, 0, 500);
     const loss = Float64Array.from(
-      [...speed].flatMap((v) => [...force].map((f) => (f > 0 ? f * v * 0.25 : -f * v * 0.4))),
+      [...speed].flatMap((v) =>
+        [...force].map((f) => (f > 0 ? f * v * 0.25 : f < 0 ? (10 + (-f - 10) * 0.4) * v : 0)),
+      ),
     );
     const table = sourceOf({ efficiency: null, lossMap: { speed, force, loss }, battery }).map;
     const formula = sourceOf({ battery }).map;
