@@ -71,6 +71,16 @@ export const COMMANDS = {
     options: ['out', 'set', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold road ride.gpx --set road.elevation_source=gnss --set track.trim_ends_m=300',
   },
+  compare: {
+    operands: ['BEFORE', 'AFTER'],
+    about: 'set two results side by side: inputs, figures, requirements, hills',
+    details: [
+      'BEFORE and AFTER are folders that ridgehold run wrote. Tells what changed in the files by SHA-256 and in the values of case and vehicle, in each figure of the candidates that both have, requirement by requirement, and hill by hill, and writes compare.html and compare.json into a folder: --out, or out/<name of BEFORE>-and-<name of AFTER>.',
+      'Exit status: 0 done; 1 done, but a requirement that was met no longer is, or is no longer asked of a candidate that is still there; 2 a folder was refused; 70 a fault of the program.',
+    ],
+    options: ['out', 'json', 'quiet', 'units', 'help'],
+    example: 'ridgehold compare out/harrow-gap out/at-70 -o out/faster-or-not',
+  },
   new: {
     operands: ['DIR'],
     about: 'write a commented starter case into a new folder',

@@ -11,6 +11,7 @@ type Handler<Name extends CommandName> = (invocation: Invocation<Name>) => numbe
 const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> } = {
   run: async () => (await import('./run-command.ts')).runCommand,
   road: async () => (await import('./road-command.ts')).roadCommand,
+  compare: async () => (await import('./compare-command.ts')).compareCommand,
   new: async () => (await import('./new-command.ts')).newCommand,
   schema: async () => (await import('./schema-command.ts')).schemaCommand,
 };

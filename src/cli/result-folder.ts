@@ -26,7 +26,7 @@ const STAGE = /^\.ridgehold-(\d+)$/;
 const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg)$/i;
 
 /** The marks of whole results of the commands, which may share a folder. */
-const MARKS = ['summary.json', 'road.json'];
+const MARKS = ['summary.json', 'road.json', 'compare.json'];
 
 /**
  * Refuses, before the work begins, a folder that could not be written: nothing is changed.

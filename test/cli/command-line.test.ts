@@ -35,13 +35,14 @@ test('the help names every command, and no command that does not exist', () => {
   const { status, stdout, stderr } = ridgehold(here, ['--help']);
   expect([status, stderr]).toEqual([0, '']);
   const commands = [...stdout.matchAll(/^ {2}([a-z]+) /gm)].map((match) => match[1]);
-  expect(commands).toEqual(['run', 'road', 'new', 'schema']);
+  expect(commands).toEqual(['run', 'road', 'compare', 'new', 'schema']);
   expect(ridgehold(here, ['help']).stdout).toBe(stdout);
 });
 
 test.each([
   ['run', ['--out', '--set', '--junit', '--json', '--quiet', '--units', '--help']],
   ['road', ['--out', '--set', '--json', '--quiet', '--units', '--help']],
+  ['compare', ['--out', '--json', '--quiet', '--units', '--help']],
   ['new', ['--quiet', '--help']],
   ['schema', ['--out', '--help']],
 ])('the help of %s tells all of its options', (command, options) => {

@@ -11,7 +11,8 @@ import { bandText, fixed, NO_VALUE, placeText, stretchText, trimmed, withUnit } 
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
-const STANDING: Readonly<
+/** How a verdict is marked: a sign beside the colour. */
+export const STANDING: Readonly<
   Record<Standing, { readonly mark: string; readonly words: string; readonly look: string }>
 > = {
   met: { mark: '✓', words: 'All requirements met', look: 'good' },
