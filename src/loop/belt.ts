@@ -1,4 +1,5 @@
 import { cellIndex } from '../vehicle/drive-law.ts';
+import { loadRatio } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
@@ -8,15 +9,15 @@ import type { Machine } from './machine.ts';
  * belt is brought to its new speed by the vehicle: the speed changes so that the kinetic energy of both stays.
  */
 export function moveBelt(machine: Machine): void {
-  const { s, p } = machine;
+  const { s, p, here } = machine;
   const belt = machine.belt!;
   const before = s[at.EFFECTIVE_MASS];
   const ratio = s[at.RATIO];
   const v = s[at.SPEED];
   const line = lineAt(belt.throttle, belt.shaftSpeed, s[at.THROTTLE]);
   const rest = line >= belt.greatest * v ? belt.greatest : line <= belt.least * v ? belt.least : line / v;
-  loadRatio(machine, rest + (ratio - rest) * p[at.P_BELT_KEPT]);
-  s[at.SPEED] = v * Math.sqrt(before / s[at.EFFECTIVE_MASS]);
+  loadBelt(machine, rest + (ratio - rest) * p[at.P_BELT_KEPT]);
+  s[at.SPEED] = v * Math.sqrt(before * here[at.H_PER_MASS]);
   holdCell(machine);
 }
 
@@ -32,9 +33,8 @@ function lineAt(throttle: Float64Array, shaftSpeed: Float64Array, x: number): nu
 }
 
 /** Puts a ratio of the belt in hand, and the effective mass that goes with it. */
-export function loadRatio({ s, p, belt }: Machine, ratio: number): void {
-  s[at.RATIO] = ratio;
-  s[at.EFFECTIVE_MASS] = p[at.P_BASE_MASS] + belt!.inertia * ratio * ratio;
+export function loadBelt(machine: Machine, ratio: number): void {
+  loadRatio(machine, ratio, machine.belt!.inertia * ratio * ratio);
 }
 
 /** The cell over speed in which the shaft turns: the one in hand, unless it has been left. */

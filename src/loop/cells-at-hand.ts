@@ -3,19 +3,25 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
 /** Copies a cell of the road to `here`, where a kernel reads it at fixed places; g sin, g cos by mass over effective mass. */
-export function enterRoadCell({ s, p, rows, here }: Machine, row: number): void {
-  const inverse = 1 / s[at.EFFECTIVE_MASS];
-  const share = p[at.P_MASS] * inverse;
+export function enterRoadCell(machine: Machine, row: number): void {
+  const { rows, here } = machine;
   here[at.H_STATION] = rows[row + at.R_STATION];
   here[at.H_LENGTH] = rows[row + at.R_LENGTH];
-  here[at.H_SIN] = share * rows[row + at.R_SIN];
-  here[at.H_SIN + 1] = share * rows[row + at.R_SIN + 1];
-  here[at.H_COS] = share * rows[row + at.R_COS];
-  here[at.H_COS + 1] = share * rows[row + at.R_COS + 1];
   here[at.H_HEADWIND] = rows[row + at.R_HEADWIND];
   here[at.H_HEADWIND + 1] = rows[row + at.R_HEADWIND + 1];
   here[at.H_DERATE] = rows[row + at.R_DERATE];
   here[at.H_DERATE + 1] = rows[row + at.R_DERATE + 1];
+  weighRoadCell(machine, row);
+}
+
+/** What changes of a road cell with the effective mass. */
+export function weighRoadCell({ p, rows, here }: Machine, row: number): void {
+  const inverse = here[at.H_PER_MASS];
+  const share = p[at.P_MASS] * inverse;
+  here[at.H_SIN] = share * rows[row + at.R_SIN];
+  here[at.H_SIN + 1] = share * rows[row + at.R_SIN + 1];
+  here[at.H_COS] = share * rows[row + at.R_COS];
+  here[at.H_COS + 1] = share * rows[row + at.R_COS + 1];
   here[at.H_AIR] = inverse * rows[row + at.R_AIR];
   here[at.H_AIR + 1] = inverse * rows[row + at.R_AIR + 1];
 }
@@ -25,15 +31,16 @@ export function enterDriveCell(machine: Machine, speedCell: number, throttleCell
   const { s, p, cells, losses, speedEdges, throttleEdges, here } = machine;
   const throttleCells = throttleEdges.length + 1;
   const ratio = s[at.RATIO];
-  here[at.H_FLOOR] = speedCell > 0 ? speedEdges[speedCell - 1] / ratio : 0;
+  const perRatio = here[at.H_PER_RATIO];
+  here[at.H_FLOOR] = speedCell > 0 ? speedEdges[speedCell - 1] * perRatio : 0;
   here[at.H_CEILING] =
-    speedCell < speedEdges.length ? speedEdges[speedCell] / ratio : Number.POSITIVE_INFINITY;
+    speedCell < speedEdges.length ? speedEdges[speedCell] * perRatio : Number.POSITIVE_INFINITY;
   here[at.H_LOW] = throttleCell > 0 ? throttleEdges[throttleCell - 1] : Number.NEGATIVE_INFINITY;
   here[at.H_HIGH] =
     throttleCell < throttleEdges.length ? throttleEdges[throttleCell] : Number.POSITIVE_INFINITY;
   // F = r T(r v): the hyperbola b3 / w keeps its power whatever the ratio, but for an open clutch.
   const cell = 6 * (speedCell * throttleCells + throttleCell);
-  const inverse = 1 / s[at.EFFECTIVE_MASS];
+  const inverse = here[at.H_PER_MASS];
   const flat = ratio * inverse;
   const slanted = ratio * flat;
   const bent = ratio * slanted;

@@ -33,9 +33,9 @@ export function drawPower(
       energy = s[at.CHARGE] - left;
       s[at.CHARGE] = left;
     }
-    const continuous = f[fit.F_CONTINUOUS];
-    if (continuous > 0) {
-      const load = (force * speed) / continuous;
+    const perPower = f[fit.F_PER_POWER];
+    if (perPower > 0) {
+      const load = force * speed * perPower;
       const square = load * load;
       s[at.HEAT] = square + (s[at.HEAT] - square) * f[fit.F_COOLED];
     }
@@ -58,12 +58,11 @@ export function settleSource({ s, fittings }: Machine): void {
 }
 
 function writeFactors(s: Float64Array, f: Float64Array): void {
-  const capacity = f[fit.F_CAPACITY];
-  const charge = capacity > 0 ? s[at.CHARGE] / capacity : f[fit.F_CHARGE];
-  const cool = f[fit.F_CONTINUOUS] > 0 ? heatShare(f, s[at.HEAT]) : 1;
-  const empty = capacity > 0 && charge <= 0;
-  s[at.DRIVE_FACTOR] = empty ? 0 : cool * shareAt(f, f[fit.F_SAG], f[fit.F_SAG_COUNT], charge);
-  s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE], f[fit.F_ACCEPTANCE_COUNT], charge);
+  const known = f[fit.F_CAPACITY] > 0;
+  const charge = known ? s[at.CHARGE] * f[fit.F_PER_CAPACITY] : f[fit.F_CHARGE];
+  const cool = f[fit.F_PER_POWER] > 0 ? heatShare(f, s[at.HEAT]) : 1;
+  s[at.DRIVE_FACTOR] = known && charge <= 0 ? 0 : cool * shareAt(f, f[fit.F_SAG] | 0, charge);
+  s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0, charge);
 }
 
 function heatShare(f: Float64Array, heat: number): number {
@@ -73,33 +72,39 @@ function heatShare(f: Float64Array, heat: number): number {
   return heat >= 1 ? least : 1 - ((1 - least) * (heat - onset)) / (1 - onset);
 }
 
-/** A line of so many corners at a charge; its ends hold on; 1 without a line. */
-function shareAt(f: Float64Array, line: number, count: number, charge: number): number {
+// Places are held as numbers among numbers: each is made an integer once, where it is read.
+
+/** A line at a charge; its ends hold on; 1 without a line. */
+function shareAt(f: Float64Array, line: number, charge: number): number {
+  const count = f[line + fit.LINE_COUNT] | 0;
   if (count === 0) return 1;
-  if (charge <= f[line]) return f[line + count];
-  for (let i = 1; i < count; i++) {
-    const next = f[line + i];
-    if (charge > next) continue;
-    const low = f[line + i - 1];
-    const from = f[line + count + i - 1];
-    return from + ((charge - low) / (next - low)) * (f[line + count + i] - from);
-  }
-  return f[line + 2 * count - 1];
+  const corners = line + fit.LINE_CORNERS;
+  const shares = corners + count;
+  if (charge <= f[corners]) return f[shares];
+  if (charge >= f[shares - 1]) return f[shares + count - 1];
+  // The inner corners are the edges of the stretches.
+  const i = cellFrom(f, corners + 1, count - 2, charge, f[line + fit.LINE_CELL] | 0);
+  f[line + fit.LINE_CELL] = i;
+  return f[shares + i] + f[shares + count + i] * (charge - f[corners + i]);
 }
 
 /** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W]. */
 function powerAt(f: Float64Array, shaftSpeed: number, torque: number): number {
-  const columns = f[fit.F_TORQUE_COUNT];
-  const i = cellFrom(f, f[fit.F_SPEEDS], f[fit.F_SPEED_COUNT], shaftSpeed);
-  const j = cellFrom(f, f[fit.F_TORQUES], columns, torque);
-  const cell = f[fit.F_POWER] + 4 * (i * (columns + 1) + j);
+  const columns = f[fit.F_TORQUE_COUNT] | 0;
+  const speeds = f[fit.F_SPEED_COUNT] | 0;
+  const i = cellFrom(f, f[fit.F_SPEEDS] | 0, speeds, shaftSpeed, f[fit.F_SPEED_CELL] | 0);
+  const j = cellFrom(f, f[fit.F_TORQUES] | 0, columns, torque, f[fit.F_TORQUE_CELL] | 0);
+  f[fit.F_SPEED_CELL] = i;
+  f[fit.F_TORQUE_CELL] = j;
+  const cell = (f[fit.F_POWER] | 0) + 4 * (i * (columns + 1) + j);
   const power = f[cell] + f[cell + 1] * shaftSpeed + torque * (f[cell + 2] + f[cell + 3] * shaftSpeed);
   return Math.max(power, f[fit.F_LEAST]);
 }
 
-/** Cell of a value among so many inner edges from a place on. */
-function cellFrom(f: Float64Array, place: number, count: number, value: number): number {
-  let cell = 0;
+/** Cell of a value among so many inner edges from a place on; the search begins at a cell, the answer does not depend on it. */
+function cellFrom(f: Float64Array, place: number, count: number, value: number, begin: number): number {
+  let cell = begin;
+  while (cell > 0 && value < f[place + cell - 1]) cell--;
   while (cell < count && value >= f[place + cell]) cell++;
   return cell;
 }

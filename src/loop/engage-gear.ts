@@ -19,12 +19,21 @@ export function engageGear(machine: Machine, gear: number): void {
 }
 
 /** Puts a gear in hand without an account: ratio, effective mass, cell over speed. */
-export function loadGear({ s, p, gears, speedEdges }: Machine, gear: number): void {
+export function loadGear(machine: Machine, gear: number): void {
+  const { s, gears, speedEdges } = machine;
   const ratio = gear < 0 ? 0 : gears[2 * gear];
   s[at.GEAR] = gear;
-  s[at.RATIO] = ratio;
-  s[at.EFFECTIVE_MASS] = p[at.P_BASE_MASS] + (gear < 0 ? 0 : gears[2 * gear + 1]);
+  loadRatio(machine, ratio, gear < 0 ? 0 : gears[2 * gear + 1]);
   s[at.SPEED_CELL] = ratio > 0 ? cellIndex(speedEdges, ratio * s[at.SPEED]) : 0;
+}
+
+/** Puts a ratio in hand [1/m], and the effective mass with what turns before it [kg]. */
+export function loadRatio({ s, p, here }: Machine, ratio: number, turning: number): void {
+  const mass = p[at.P_BASE_MASS] + turning;
+  s[at.RATIO] = ratio;
+  s[at.EFFECTIVE_MASS] = mass;
+  here[at.H_PER_MASS] = 1 / mass;
+  here[at.H_PER_RATIO] = 1 / ratio;
 }
 
 /** Speed below which the drive stalls as it is engaged [m/s]; 0 with the clutch open. */

@@ -1,7 +1,7 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { actuatorStep } from './actuator-step.ts';
-import { enterDriveCell, enterRoadCell, lawStep } from './cells-at-hand.ts';
+import { enterDriveCell, enterRoadCell, lawStep, weighRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
@@ -102,7 +102,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
         ratio = s[at.RATIO];
         stall = stallSpeed(machine);
         speedCell = s[at.SPEED_CELL] | 0;
-        loadedRow = -1;
+        if (loadedRow >= 0) weighRoadCell(machine, loadedRow);
         loadedDrive = -1;
       }
     }

@@ -3,7 +3,7 @@ import type { Gearbox } from '../vehicle/drive.ts';
 import type { EnergySource, Heating, PowerMap, ShareOverCharge } from '../vehicle/energy-source.ts';
 import type { SpeedSensor } from '../vehicle/vehicle.ts';
 import type { LoopPlan } from './plan.ts';
-import { noiseWords } from './sensor-noise.ts';
+import { NOISE_SIZE, noiseOf } from './sensor-noise.ts';
 
 /**
  * The devices that work once a sample, compiled to flat arrays, because numbers that closures or objects hold are boxed
@@ -26,9 +26,9 @@ export const F_READING = 0;
 export const SPEED_READING = 0;
 export const COUNTED_READING = 1;
 export const TIMED_READING = 2;
-/** Way between two pulses [m]; window in samples; ticks of the clock in a sample. */
+/** Way between two pulses [m], and one over it; ticks of the clock in a sample. */
 export const F_SPACING = 1;
-export const F_WINDOW = 2;
+export const F_PER_WAY = 2;
 export const F_CLOCK_RATE = 3;
 /** Speed of one pulse in the window, or of a period of one tick of the clock [m/s]. */
 export const F_SPEED_RATE = 4;
@@ -41,10 +41,12 @@ export const F_SCALE = 8;
 export const F_KEPT = 9;
 export const F_BEFORE = 10;
 export const F_NOW = 11;
-export const F_NOISE = 12;
-/** Two words of the seed. */
-export const F_SEED = 13;
-export const F_SENSOR_SIZE = 15;
+/** Instants that are read, the delay ago and a window before that: rows back, and the part of a sample after that row. */
+export const F_LATE = 12;
+export const F_EARLY = 14;
+/** Standard deviation of the noise; with one, it follows the rest (see sensor-noise.ts). */
+export const F_SD = 16;
+export const F_NOISE = 17;
 
 // --- gearbox: gears, corners of the lines, then the lines: throttle, up, down ---
 export const F_GEARS = 0;
@@ -61,21 +63,28 @@ export const F_TORQUE_COUNT = 4;
 export const F_POWER = 5;
 export const F_LEAST = 6;
 export const F_IDLE = 7;
-/** [J]; 0: not known, the charge stands still. */
+/** [J], 0: not known, the charge stands still; one over it. */
 export const F_CAPACITY = 8;
-/** Corners of a line over the charge, then its shares; count 0: none. */
-export const F_SAG = 9;
-export const F_SAG_COUNT = 10;
+export const F_PER_CAPACITY = 9;
+/** Lines over the charge: their place, see LINE_. */
+export const F_SAG = 10;
 export const F_ACCEPTANCE = 11;
-export const F_ACCEPTANCE_COUNT = 12;
-/** Continuous power [W], 0: no heat; decay of the heat over a sample, its onset, least share. */
-export const F_CONTINUOUS = 13;
-export const F_COOLED = 14;
-export const F_ONSET = 15;
-export const F_LEAST_SHARE = 16;
+/** One over the continuous power [1/W], 0: no heat; decay of the heat over a sample, its onset, least share. */
+export const F_PER_POWER = 12;
+export const F_COOLED = 13;
+export const F_ONSET = 14;
+export const F_LEAST_SHARE = 15;
 /** Share of charge of a battery at the start. */
-export const F_CHARGE = 17;
-export const F_SOURCE_HEAD = 18;
+export const F_CHARGE = 16;
+/** Cells of the map in which the last sample was: where the next search begins. Answers do not depend on it. */
+export const F_SPEED_CELL = 17;
+export const F_TORQUE_CELL = 18;
+export const F_SOURCE_HEAD = 19;
+
+/** A line over the charge: its corners, the stretch in which the last sample was, then charges, shares, slopes behind them. */
+export const LINE_COUNT = 0;
+export const LINE_CELL = 1;
+export const LINE_CORNERS = 2;
 
 /** Rows before the ring of the history in which a sensor keeps what it remembers. */
 export const SENSOR_ROWS = 2;
@@ -98,19 +107,25 @@ export function fittingsOf(plan: LoopPlan): Fittings {
 function sensorOf(sensor: SpeedSensor, delay: number, sample: number): Float64Array {
   const { pulses, noise, filter } = sensor;
   if (pulses === null && noise === null) return new Float64Array(0);
-  const f = new Float64Array(F_SENSOR_SIZE);
+  const f = new Float64Array(F_NOISE + (noise === null ? 0 : NOISE_SIZE));
+  const instant = (place: number, ago: number): void => {
+    f[place] = Math.ceil(ago);
+    f[place + 1] = Math.ceil(ago) - ago;
+  };
   f[F_DELAY] = delay / sample;
+  instant(F_LATE, f[F_DELAY]);
   f[F_SAMPLE] = sample;
   f[F_SCALE] = 1 + sensor.scaleError;
   let reach = f[F_DELAY];
   if (pulses !== null) {
     const { reading } = pulses;
     f[F_SPACING] = pulses.spacing;
+    f[F_PER_WAY] = 1 / pulses.spacing;
     if (reading.kind === 'counted') {
       f[F_READING] = COUNTED_READING;
-      f[F_WINDOW] = reading.window / sample;
       f[F_SPEED_RATE] = pulses.spacing / reading.window;
-      reach += f[F_WINDOW];
+      reach += reading.window / sample;
+      instant(F_EARLY, reach);
     } else {
       f[F_READING] = TIMED_READING;
       f[F_CLOCK_RATE] = sample / reading.clock;
@@ -126,8 +141,8 @@ function sensorOf(sensor: SpeedSensor, delay: number, sample: number): Float64Ar
   f[F_BEFORE] = mean - kept;
   f[F_NOW] = 1 - mean;
   if (noise !== null) {
-    f[F_NOISE] = noise.sd;
-    f.set(noiseWords(noise.seed), F_SEED);
+    f[F_SD] = noise.sd;
+    f.set(noiseOf(noise.seed), F_NOISE);
   }
   return f;
 }
@@ -157,16 +172,20 @@ function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Floa
   f[F_IDLE] = idleSpeed;
   f[F_CAPACITY] = battery?.capacity ?? 0;
   f[F_CHARGE] = battery?.charge ?? 0;
-  const line = (share: ShareOverCharge | null): readonly [number, number] => {
-    if (share === null) return [0, 0];
-    const place = append(share.charge);
-    append(share.share);
-    return [place, share.charge.length];
-  };
-  [f[F_SAG], f[F_SAG_COUNT]] = line(battery?.sag ?? null);
-  [f[F_ACCEPTANCE], f[F_ACCEPTANCE_COUNT]] = line(battery?.acceptance ?? null);
+  f[F_PER_CAPACITY] = f[F_CAPACITY] > 0 ? 1 / f[F_CAPACITY] : 0;
+  f[F_SAG] = append(lineOver(battery?.sag ?? null));
+  f[F_ACCEPTANCE] = append(lineOver(battery?.acceptance ?? null));
   writeHeating(f, battery?.heating ?? null, sample);
   return Float64Array.from(f);
+}
+
+function lineOver(line: ShareOverCharge | null): Float64Array {
+  if (line === null) return Float64Array.of(0);
+  const { charge, share } = line;
+  const slope = share.map((from, i) =>
+    i + 1 < share.length ? (share[i + 1] - from) / (charge[i + 1] - charge[i]) : 0,
+  );
+  return Float64Array.of(charge.length, 0, ...charge, ...share, ...slope);
 }
 
 /** The bilinear law of every cell, row by row: c0 + c1 w + T (c2 + c3 w). */
@@ -190,7 +209,7 @@ function powerCells({ shaftSpeed: w, torque, power }: PowerMap): Float64Array {
 
 function writeHeating(f: number[], heating: Heating | null, sample: number): void {
   if (heating === null) return;
-  f[F_CONTINUOUS] = heating.continuousPower;
+  f[F_PER_POWER] = 1 / heating.continuousPower;
   f[F_COOLED] = exp(-sample / heating.time);
   f[F_ONSET] = heating.onset;
   f[F_LEAST_SHARE] = heating.least;

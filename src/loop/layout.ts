@@ -215,7 +215,10 @@ export const H_HIGH = 15;
 /** The drive's law over vehicle speed, a0 + a1 v + x (b0 + b1 v + b2 v^2 + b3 / v), and what derating by all of it takes away. */
 export const H_LAW = 16;
 export const H_LOSS = 22;
-export const H_SIZE = 28;
+/** One over the effective mass and over the ratio in hand; Infinity with the clutch open. */
+export const H_PER_MASS = 28;
+export const H_PER_RATIO = 29;
+export const H_SIZE = 30;
 
 // --- what a kernel returns ---
 export const RUNNING = 0;

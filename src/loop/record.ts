@@ -50,12 +50,17 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   const last = ((ticks - 1) * at.L_STRIDE) | 0;
   const lastShare = chunk[at.C_TIME] / sample - (ticks - 1);
   let before = s[at.LAST_COMMAND];
+  // The first band is counted on the way; a width below 0 counts nothing.
+  const bands = p[at.P_BAND_COUNT];
+  const width = bands > 0 ? p[at.P_BANDS] : -1;
+  let share = 1;
   let errors = 0;
   let squares = 0;
   let throttles = 0;
   let travel = 0;
   let upper = 0;
   let lower = 0;
+  let inside = 0;
   let slowest = Number.POSITIVE_INFINITY;
   let fastest = Number.NEGATIVE_INFINITY;
   let least = sums[THROTTLE_MIN];
@@ -64,7 +69,7 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   let strongest = sums[FORCE_MAX];
   if (sums[TIME] === 0) sums[SET_SPEED] = setSpeed;
   for (let i = 0; i <= last; i += at.L_STRIDE) {
-    const share = i < last ? 1 : lastShare;
+    if (i === last) share = lastShare;
     const speed = log[i + at.L_SPEED];
     const throttle = log[i + at.L_ACTUATOR];
     let command = log[i + at.L_COMMAND];
@@ -73,6 +78,7 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
     errors += error * share;
     squares += error * error * share;
     throttles += throttle * share;
+    if (error <= width && error >= -width) inside += share;
     if (speed < slowest) slowest = speed;
     if (speed > fastest) fastest = speed;
     if (throttle < least) least = throttle;
@@ -89,12 +95,13 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
     travel += Math.abs(command - before);
     before = command;
   }
-  for (let b = 0; b < p[at.P_BAND_COUNT]; b++) {
-    const width = p[at.P_BANDS + b];
-    let inside = 0;
+  sums[BAND] += sample * inside;
+  for (let b = 1; b < bands; b++) {
+    const wide = p[at.P_BANDS + b];
+    let samples = 0;
     for (let i = 0; i <= last; i += at.L_STRIDE)
-      if (Math.abs(log[i + at.L_SPEED] - setSpeed) <= width) inside += i < last ? 1 : lastShare;
-    sums[BAND + b] += sample * inside;
+      if (Math.abs(log[i + at.L_SPEED] - setSpeed) <= wide) samples += i < last ? 1 : lastShare;
+    sums[BAND + b] += sample * samples;
   }
   s[at.LAST_COMMAND] = before;
   sums[TIME] += chunk[at.C_TIME];

@@ -1,6 +1,6 @@
 import { cellOf } from '../numeric/interpolate.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
-import { loadRatio } from './belt.ts';
+import { loadBelt } from './belt.ts';
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
 import { loadGear, stallSpeed } from './engage-gear.ts';
@@ -96,7 +96,7 @@ function restore(machine: Machine, { state }: Checkpoint): void {
   const speedCell = s[at.SPEED_CELL];
   const ratio = s[at.RATIO];
   loadGear(machine, Math.min(s[at.GEAR], gears.length / 2 - 1));
-  if (belt !== null) loadRatio(machine, Math.min(Math.max(ratio, belt.least), belt.greatest));
+  if (belt !== null) loadBelt(machine, Math.min(Math.max(ratio, belt.least), belt.greatest));
   if (holds(speedEdges, speedCell, s[at.RATIO] * s[at.SPEED])) s[at.SPEED_CELL] = speedCell;
   if (!holds(throttleEdges, s[at.THROTTLE_CELL], s[at.THROTTLE]))
     s[at.THROTTLE_CELL] = cellIndex(throttleEdges, s[at.THROTTLE]);

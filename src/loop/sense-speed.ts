@@ -35,24 +35,20 @@ export function senseSpeed({ s, fittings }: Machine): void {
   s[LATEST] = row;
   s[row] = s[TRAVELLED];
   s[row + 1] = s[SPEED];
-  const kind = f[fit.F_READING];
-  const delay = f[fit.F_DELAY];
+  const kind = f[fit.F_READING] | 0;
   let reading = 0;
   if (kind === fit.COUNTED_READING) {
-    const spacing = f[fit.F_SPACING];
-    const count =
-      Math.floor(travelledAgo(s, f, delay) / spacing) -
-      Math.floor(travelledAgo(s, f, delay + f[fit.F_WINDOW]) / spacing);
+    const count = pulsesBy(s, f, fit.F_LATE) - pulsesBy(s, f, fit.F_EARLY);
     reading = count * f[fit.F_SPEED_RATE];
   } else if (kind === fit.TIMED_READING) {
     timePulses(s, f, k);
-    const since = Math.floor((k - delay) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
+    const since = Math.floor((k - f[fit.F_DELAY]) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
     reading = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
-  } else reading = speedAgo(s, f, delay);
+  } else reading = speedLate(s, f);
 
   reading *= f[fit.F_SCALE];
-  const sd = f[fit.F_NOISE];
-  if (sd > 0) reading += sd * normalAt(f[fit.F_SEED], f[fit.F_SEED + 1], k);
+  const sd = f[fit.F_SD];
+  if (sd > 0) reading += sd * normalAt(f, fit.F_NOISE, k);
   s[SENSED] = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * s[SENSED_MORE] + f[fit.F_NOW] * reading;
   s[SENSED_MORE] = reading;
   s[BUS_MEASURED] = s[SENSED];
@@ -74,7 +70,7 @@ export function settleSensor({ s, fittings }: Machine): void {
   if (f[fit.F_READING] === fit.TIMED_READING) {
     const spacing = f[fit.F_SPACING];
     const travelled = s[TRAVELLED] - v * (1 + f[fit.F_DELAY]) * sample;
-    s[PULSES] = Math.floor(travelled / spacing);
+    s[PULSES] = Math.floor(travelled * f[fit.F_PER_WAY]);
     const since = (travelled - spacing * s[PULSES]) / (v * sample);
     s[PULSE_STAMP] = Math.floor((s[TICK] - 1 - f[fit.F_DELAY] - since) * f[fit.F_CLOCK_RATE]);
     s[PULSE_PERIOD] = f[fit.F_SPEED_RATE] / v;
@@ -100,22 +96,25 @@ function twistOf(s: Float64Array, old: number, next: number, h: number): number 
   return h * (s[old + 1] + s[next + 1]) - 2 * (s[next] - s[old]);
 }
 
-/** Distance travelled so many samples ago [m]. */
-function travelledAgo(s: Float64Array, f: Float64Array, ago: number): number {
-  const back = Math.ceil(ago);
-  const old = rowBack(s, back);
-  const x = back - ago;
+/** Pulses up to an instant that is read: whole spacings of the distance travelled by then. */
+function pulsesBy(s: Float64Array, f: Float64Array, instant: number): number {
+  return Math.floor(travelledBy(s, f, instant) * f[fit.F_PER_WAY]);
+}
+
+/** Distance travelled by an instant that is read [m]. */
+function travelledBy(s: Float64Array, f: Float64Array, instant: number): number {
+  const old = rowBack(s, f[instant] | 0);
+  const x = f[instant + 1];
   if (x === 0) return s[old];
   const next = rowAfter(s, old);
   const h = f[fit.F_SAMPLE];
   return s[old] + x * (h * s[old + 1] + x * (bendOf(s, old, next, h) + x * twistOf(s, old, next, h)));
 }
 
-/** Speed so many samples ago [m/s]. */
-function speedAgo(s: Float64Array, f: Float64Array, ago: number): number {
-  const back = Math.ceil(ago);
-  const old = rowBack(s, back);
-  const x = back - ago;
+/** Speed as it was the delay ago [m/s]. */
+function speedLate(s: Float64Array, f: Float64Array): number {
+  const old = rowBack(s, f[fit.F_LATE] | 0);
+  const x = f[fit.F_LATE + 1];
   if (x === 0) return s[old + 1];
   const next = rowAfter(s, old);
   const h = f[fit.F_SAMPLE];
@@ -124,35 +123,49 @@ function speedAgo(s: Float64Array, f: Float64Array, ago: number): number {
 
 /** Finds the pulses since the reading before, and keeps the last one and its period. */
 function timePulses(s: Float64Array, f: Float64Array, k: number): void {
-  const spacing = f[fit.F_SPACING];
-  const h = f[fit.F_SAMPLE];
   const before = s[PULSES];
-  const now = Math.floor(travelledAgo(s, f, f[fit.F_DELAY]) / spacing);
+  const now = pulsesBy(s, f, fit.F_LATE);
   if (!(now > before)) return;
   s[PULSES] = now;
-  let distance = now * spacing;
-  let back = Math.max(1, Math.ceil(f[fit.F_DELAY]));
-  let old = rowBack(s, back);
+  const h = f[fit.F_SAMPLE];
+  const spacing = f[fit.F_SPACING];
   const last = s[PULSE_STAMP];
-  // The last pulse, then the one before it, where that is new too.
+  const furthest = (f[fit.F_ROWS] | 0) - 1;
+  let back = Math.max(1, f[fit.F_LATE] | 0);
+  let old = rowBack(s, back);
+  let loaded = -1;
+  let speed = 0;
+  let bend = 0;
+  let twist = 0;
+  let perWay = 0;
+  let distance = now * spacing;
+  // The last pulse, then the one before it, where that is new too: mostly between the same two rows.
   for (let pulse = 0; pulse < 2; pulse++) {
-    while (s[old] > distance && back < f[fit.F_ROWS] - 1) {
+    while (s[old] > distance && back < furthest) {
       back++;
       old = rowBack(s, back);
     }
-    const next = rowAfter(s, old);
-    const speed = h * s[old + 1];
-    const bend = bendOf(s, old, next, h);
-    const twist = twistOf(s, old, next, h);
-    const reach = distance - s[old];
-    const way = s[next] - s[old];
-    let x = way > 0 ? reach / way : 1;
-    // Newton's rule from the secant: speed changes so little within a sample that one step reaches the last digits.
-    for (let step = 0, miss = 1; step < 3 && (miss > 1e-3 || miss < -1e-3); step++) {
-      const slope = speed + x * (2 * bend + 3 * x * twist);
-      miss = slope > 0 ? (reach - x * (speed + x * (bend + x * twist))) / slope : 0;
-      x += miss;
+    if (old !== loaded) {
+      loaded = old;
+      const next = rowAfter(s, old);
+      const way = s[next] - s[old];
+      speed = h * s[old + 1];
+      bend = bendOf(s, old, next, h);
+      twist = twistOf(s, old, next, h);
+      perWay = way > 0 ? 1 / way : 0;
     }
+    const reach = distance - s[old];
+    let x = perWay > 0 ? reach * perWay : 1;
+    // Newton's rule from the secant, 1 / slope to second order by that of the secant: speed changes so little within a
+    // sample that one step reaches the last digits. Where it does not, steps with the slope itself follow.
+    let slope = speed + x * (2 * bend + 3 * x * twist);
+    let miss = (reach - x * (speed + x * (bend + x * twist))) * perWay * (2 - slope * perWay);
+    for (let step = 0; step < 3 && (miss > 1e-3 || miss < -1e-3); step++) {
+      if (step > 0) x += miss;
+      slope = speed + x * (2 * bend + 3 * x * twist);
+      miss = slope > 0 ? (reach - x * (speed + x * (bend + x * twist))) / slope : 0;
+    }
+    x += miss;
     const stamp = Math.floor((k - back + Math.min(1, Math.max(0, x))) * f[fit.F_CLOCK_RATE]);
     if (pulse === 0) {
       s[PULSE_STAMP] = stamp;

@@ -5,7 +5,7 @@ import { derateFactor } from '../vehicle/derating.ts';
 import { cellIndex, throttleFor, wheelForce } from '../vehicle/drive-law.ts';
 import { levelThrottle } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
-import { loadRatio } from './belt.ts';
+import { loadBelt } from './belt.ts';
 import { settleSource } from './draw-power.ts';
 import { gearInHand, loadGear } from './engage-gear.ts';
 import { gearInForce } from './gearbox.ts';
@@ -65,7 +65,7 @@ function settleGear(machine: Machine, plan: LoopPlan, gear: number): void {
     controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
   const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
   loadGear(machine, gear);
-  if (drive.belt !== null) loadRatio(machine, beltRatio(drive.belt, v, throttle));
+  if (drive.belt !== null) loadBelt(machine, beltRatio(drive.belt, v, throttle));
   s[at.START_MASS] = s[at.EFFECTIVE_MASS];
   const push = wheelForce(drive, gear, v, throttle, throttle < 0 ? held : pushed);
   s[at.ACCELERATION] = (push - force) / s[at.EFFECTIVE_MASS];
