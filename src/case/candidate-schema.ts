@@ -1,15 +1,9 @@
 import * as z from 'zod';
-import type { AntiWindup, ControllerSetup } from '../control/setup.ts';
+import type { ControllerSetup } from '../control/setup.ts';
+import { antiWindupSchemas, integerWindupSchemas } from './anti-windup-schema.ts';
 import { fieldNotes, kind, kmh, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
-
-const antiWindupSchemas = {
-  none: mapping('The integral runs on at a limit', { kind: kind('none') }),
-  conditional: mapping('The integral stands still at a limit', { kind: kind('conditional') }),
-  back_calculation: mapping('The integral is pulled back at a limit', {
-    kind: kind('back_calculation'),
-    tracking_s: number('s', 0.01, 1000, 'Tracking time'),
-  }),
-} satisfies Record<AntiWindup['kind'], z.ZodType>;
+import { integerFields } from './integer-schema.ts';
+import { familyFields } from './pid-schema.ts';
 
 /** Lower case, digits, hyphens: a candidate's name becomes part of a file name. */
 export const candidateName = z
@@ -39,32 +33,45 @@ const lockedGiven = mapping('Throttle locked at a given value', {
   throttle_pct: throttle('Throttle; below 0 only where the drive regenerates'),
 });
 
-const piRest = {
-  name,
-  kind: kind('pi'),
+const sampling = {
   sample_s: otherwise(
     number('s', 0.0005, 2, 'Sample time'),
     0.02,
     'a usual period of a speed loop, 10 to 100 ms',
   ),
   computing_delay_s: otherwise(number('s', 0, 2, 'From sample to command'), 0, 'ideal: not given'),
-  integration: otherwise(
-    word(['forward', 'backward'], 'When the integral is added up: after the command, or before'),
-    'forward',
-    NOT_GIVEN,
-  ),
-  setpoint_ramp_m_s2: optional(
-    number('m/s2', 0.01, 20, 'Rate of the reference after a change of set speed'),
-    'step',
-    NOT_GIVEN,
-  ),
-  anti_windup: otherwise(
-    z
-      .union([antiWindupSchemas.none, antiWindupSchemas.conditional, antiWindupSchemas.back_calculation])
-      .meta({ description: 'What the integral does while the command is at a limit' }),
-    { kind: 'conditional' },
-    'needs no figure of its own',
-  ),
+};
+const integration = otherwise(
+  word(['forward', 'backward'], 'When the integral is added up: after the command, or before'),
+  'forward',
+  NOT_GIVEN,
+);
+const setpoint_ramp_m_s2 = optional(
+  number('m/s2', 0.01, 20, 'Rate of the reference after a change of set speed'),
+  'step',
+  NOT_GIVEN,
+);
+const WINDUP = { description: 'What the integral does while the command is at a limit' };
+const conditional = { kind: 'conditional' } as const;
+const NO_FIGURE = 'needs no figure of its own';
+
+const integralRest = {
+  ...sampling,
+  integration,
+  setpoint_ramp_m_s2,
+  anti_windup: otherwise(z.union(antiWindupSchemas).meta(WINDUP), conditional, NO_FIGURE),
+  ...familyFields,
+};
+const piRest = { name, kind: kind('pi'), ...integralRest };
+const pidRest = { name, kind: kind('pid'), ...integralRest };
+const integerRest = {
+  name,
+  kind: kind('integer'),
+  ...sampling,
+  integration,
+  setpoint_ramp_m_s2,
+  ...integerFields,
+  anti_windup: otherwise(z.union(integerWindupSchemas).meta(WINDUP), conditional, NO_FIGURE),
 };
 const weight = number('', 0, 1, 'Weight of the set speed in the proportional part');
 const typedWeight = otherwise(weight, 1, 'the common form: P on the error');
@@ -94,23 +101,62 @@ const piDesigned = mapping('PI with designed gains', {
   }),
   setpoint_weight: otherwise(weight, 0, 'designed gains: the zero of P on the error is left out'),
 });
-const piByTime = mapping('PI by gain and integral time', {
-  ...piRest,
-  kp_pct_per_kmh: kp(0.000001),
-  ti_s: number('s', 0.01, 100000, 'Integral time'),
-  setpoint_weight: typedWeight,
-});
-const piByGain = mapping('PI by two gains', {
-  ...piRest,
+const byTime = { kp_pct_per_kmh: kp(0.000001), ti_s: number('s', 0.01, 100000, 'Integral time') };
+const byGain = {
   kp_pct_per_kmh: kp(0),
   ki_pct_per_kmh_s: number('% per km/h s', 0, 10000, 'Integral gain'),
+};
+const piByTime = mapping('PI by gain and integral time', {
+  ...piRest,
+  ...byTime,
   setpoint_weight: typedWeight,
 });
+const piByGain = mapping('PI by two gains', { ...piRest, ...byGain, setpoint_weight: typedWeight });
+
+const derivativeFilter = optional(
+  number('s', 0, 100, "Time constant of the derivative's filter"),
+  'td_s / 10',
+  'usual: a tenth of the derivative time',
+);
+const pidByTime = mapping('PID by gain, integral and derivative time', {
+  ...pidRest,
+  ...byTime,
+  td_s: number('s', 0, 1000, 'Derivative time'),
+  derivative_filter_s: derivativeFilter,
+  setpoint_weight: typedWeight,
+});
+const pidByGain = mapping('PID by three gains', {
+  ...pidRest,
+  ...byGain,
+  kd_pct_s_per_kmh: number('% s per km/h', 0, 10000, 'Derivative gain'),
+  derivative_filter_s: number('s', 0, 100, "Time constant of the derivative's filter"),
+  setpoint_weight: typedWeight,
+});
+const proportional = mapping('P alone, about the throttle that it takes over', {
+  name,
+  kind: kind('p'),
+  ...sampling,
+  setpoint_ramp_m_s2,
+  ...familyFields,
+  kp_pct_per_kmh: kp(0.000001),
+});
+const integerByTime = mapping('PI in whole numbers, by gain and integral time', {
+  ...integerRest,
+  ...byTime,
+});
+const integerByGain = mapping('PI in whole numbers, by two gains', { ...integerRest, ...byGain });
 
 const candidateSchemas = {
   locked: [lockedLevel, lockedGiven],
   pi: [piDesigned, piByTime, piByGain],
+  pid: [pidByTime, pidByGain, proportional],
+  integer: [integerByTime, integerByGain],
 } as const satisfies Record<ControllerSetup['kind'], readonly z.ZodType[]>;
 
 /** What drives the throttle. */
-export const candidateSchema = z.union([...candidateSchemas.locked, ...candidateSchemas.pi]);
+export const candidateSchema = z.union([
+  ...candidateSchemas.locked,
+  ...candidateSchemas.pi,
+  ...candidateSchemas.pid,
+  ...candidateSchemas.integer,
+]);

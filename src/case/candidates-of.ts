@@ -1,40 +1,73 @@
-import type { AntiWindup, Candidate, ControllerSetup } from '../control/setup.ts';
+import type { Candidate, ControllerSetup } from '../control/setup.ts';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import { airAlong } from '../road/air.ts';
-import { fromPct } from '../units/convert.ts';
+import { fromPct, fromPctPerKmh } from '../units/convert.ts';
 import { type Surroundings, stillAndLevel } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { CandidateFile } from './case-schema.ts';
 import { onlyCoasts } from './drive-of.ts';
 import { type CandidateContext, gainsOf } from './gains-of.ts';
+import { integerOf } from './integer-of.ts';
+import { pidOf, plainAntiWindup } from './pid-of.ts';
+import { FAMILY_KEYS } from './pid-schema.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import { roadOptionsOf } from './road-of.ts';
 import { placeOf } from './yaml-source.ts';
 
-type FileOf<K extends ControllerSetup['kind']> = Extract<CandidateFile, { kind: K }>;
+type FileOf<K extends CandidateFile['kind']> = Extract<CandidateFile, { kind: K }>;
 
 /** A kind of controller without a line here does not compile. */
 const setupOf: {
-  readonly [K in ControllerSetup['kind']]: (file: FileOf<K>, context: CandidateContext) => ControllerSetup;
+  readonly [K in CandidateFile['kind']]: (file: FileOf<K>, context: CandidateContext) => ControllerSetup;
 } = {
   locked: (file, context) => ({ kind: 'locked', throttle: lockedThrottle(file, context) }),
+  p: (file, context) => {
+    needsDrive(context);
+    return pidOf(file, { kp: fromPctPerKmh(file.kp_pct_per_kmh), ki: 0, record: null }, context);
+  },
   pi: (file, context) => {
     needsDrive(context);
-    const { kp, ki, record } = gainsOf(file, context);
+    const gains = gainsOf(file, context);
+    const antiWindup = plainAntiWindup(file.anti_windup);
+    if (antiWindup === null || FAMILY_KEYS.some((key) => file[key] !== undefined))
+      return pidOf(file, gains, context);
     return {
       kind: 'pi',
-      kp,
-      ki,
+      kp: gains.kp,
+      ki: gains.ki,
       setpointWeight: file.setpoint_weight,
       sample: file.sample_s,
       computingDelay: file.computing_delay_s,
       integration: file.integration,
-      antiWindup: antiWindupOf(file.anti_windup),
+      antiWindup,
       ramp: file.setpoint_ramp_m_s2 ?? null,
-      design: record,
+      design: gains.record,
     };
   },
+  pid: (file, context) => {
+    needsDrive(context);
+    return pidOf(file, gainsOf(file, context), context);
+  },
+  integer: (file, context) => {
+    needsDrive(context);
+    return integerOf(file, gainsOf(file, context), context);
+  },
 };
+
+function controllerOf(file: CandidateFile, context: CandidateContext): ControllerSetup {
+  switch (file.kind) {
+    case 'locked':
+      return setupOf.locked(file, context);
+    case 'p':
+      return setupOf.p(file, context);
+    case 'pi':
+      return setupOf.pi(file, context);
+    case 'pid':
+      return setupOf.pid(file, context);
+    case 'integer':
+      return setupOf.integer(file, context);
+  }
+}
 
 /**
  * The candidates in SI, designs worked out to gains.
@@ -53,8 +86,7 @@ export function candidatesOf(
   const candidates = document.file.candidates.flatMap((file, index): Candidate[] => {
     const context = { document, vehicle, surroundings, index };
     try {
-      const controller = file.kind === 'locked' ? setupOf.locked(file, context) : setupOf.pi(file, context);
-      return [{ name: file.name ?? file.kind, controller }];
+      return [{ name: file.name ?? file.kind, controller: controllerOf(file, context) }];
     } catch (error) {
       if (!(error instanceof InputError)) throw error;
       problems.push(...error.problems);
@@ -98,10 +130,4 @@ function needsDrive({ document, vehicle, index }: CandidateContext): void {
     message: 'the vehicle has no drive: it can only coast',
     allowed: 'a locked throttle with throttle_pct, or a drive in the vehicle',
   });
-}
-
-function antiWindupOf(file: FileOf<'pi'>['anti_windup']): AntiWindup {
-  return file.kind === 'back_calculation'
-    ? { kind: 'back_calculation', trackingTime: file.tracking_s }
-    : { kind: file.kind };
 }

@@ -1,5 +1,6 @@
 import type * as z from 'zod';
 import { FIGURES } from '../study/figure-table.ts';
+import { candidateRules } from './candidate-rules.ts';
 import type { caseSchema } from './case-schema.ts';
 import type { Rule, RuleFault } from './check-file.ts';
 import { matrixRules } from './matrix-rules.ts';
@@ -39,6 +40,7 @@ export const caseRules: readonly Rule<CaseInput>[] = [
       ),
   },
   { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
+  ...candidateRules,
   ...matrixRules,
 ];
 

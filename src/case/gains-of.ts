@@ -9,7 +9,7 @@ import type { CandidateFile } from './case-schema.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import { placeOf } from './yaml-source.ts';
 
-type PiFile = Extract<CandidateFile, { kind: 'pi' }>;
+type PiFile = Extract<CandidateFile, { kind: 'pi' | 'pid' | 'integer' }>;
 type DesignedFile = Extract<PiFile, { design: unknown }>;
 
 /** Gains of a PI candidate [1/(m/s)], [1/(m/s)/s], and the design they come from; null: typed. */

@@ -18,9 +18,9 @@ export const BUS_FEEDFORWARD = 8;
 export const BUS_MEMORY = 9;
 /** Throttle at which a locked throttle is held; the loop sets it. */
 export const BUS_LOCK = 21;
-/** Gear engaged, index into the drive's gears; -1: the clutch is open. */
+/** Gear in hand, index into the drive's gears; with the clutch open the one that comes next. The loop sets it. */
 export const BUS_GEAR = 22;
-/** What tells the slope [m/s2]: an accelerometer's reading a + g sin(theta), or g sin(theta) of the known road. */
+/** What tells the slope [m/s2], set by the loop for a controller that asks for it: an accelerometer's reading a + g sin(theta), or g sin(theta) of the known road ahead. */
 export const BUS_SLOPE = 23;
 /** Samples in which something that is wrong in the controller had a say: a place for each of BITES in bites.ts. */
 export const BUS_BITES = 24;

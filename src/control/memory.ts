@@ -1,15 +1,15 @@
 // Who remembers what at BUS_MEMORY. The plain PI (pi.ts) has the first place alone.
 
-/** Integral for the next sample, in throttle; of the `integer` form its count. */
+/** Integral for the next sample, in throttle, or its count; of the velocity form the increment that is still to come. */
 export const INTEGRAL = 9;
-/** Gains of the last sample: proportional and derivative. */
+/** Gains of the last sample, proportional and derivative, and what they multiplied. */
 export const LAST_KP = 10;
 export const LAST_KD = 11;
+export const LAST_SHAPE = 12;
+export const LAST_SLIP = 13;
 /** Filtered measurement behind the derivative. */
-export const DERIVATIVE = 12;
-/** Velocity form: parts P and D of the last sample, its increment of the integral that is still to come, its feedforward. */
-export const LAST_PART = 13;
-export const PENDING = 14;
+export const DERIVATIVE = 14;
+/** Velocity form: feedforward of the last sample. */
 export const LAST_FEEDFORWARD = 15;
 /** Slope sensed with an accelerometer [m/s2], and the measurement of the last sample. */
 export const SLOPE = 16;

@@ -8,6 +8,7 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
 import { roadTable } from './road-table.ts';
+import { writeSlope } from './sense-slope.ts';
 
 /** Longest step of either scheme [s]: a controller slower than 40 Hz is stepped several times a sample. */
 const LONGEST_STEP = 0.025;
@@ -25,7 +26,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   const least = Math.max(drive.throttleMin, actuator.travel?.least ?? drive.throttleMin);
   const greatest = Math.min(drive.throttleMax, actuator.travel?.greatest ?? drive.throttleMax);
   // The controller's range is that of what it moves, so that it does not wind up behind an end stop.
-  const controller = controllerFor(plan.controller, least, greatest);
+  const controller = controllerFor(plan.controller, least, greatest, vehicle);
   const fittings = fittingsOf(plan);
   const p = new Float64Array(at.P_SIZE);
   const sample = controller.sample ?? plan.lockedSample;
@@ -54,6 +55,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
   writeLags(p, vehicle, controller.computingDelay);
   writeKinds(p, vehicle);
+  writeSlope(p, plan.controller, controller.computingDelay + actuator.deadTime);
   if (fittings.history > 0) {
     // Such a sensor has its own filter and delay, and the history to itself.
     p[at.P_FILTER] = 0;

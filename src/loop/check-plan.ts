@@ -12,7 +12,7 @@ const MOST_BANDS = 4;
  */
 export function checkPlan(plan: LoopPlan): void {
   const { road, hold } = plan;
-  const sample = plan.controller.kind === 'pi' ? plan.controller.sample : plan.lockedSample;
+  const sample = plan.controller.kind === 'locked' ? plan.lockedSample : plan.controller.sample;
   if (!(road.size >= 2 && road.station[road.size - 1] > 0)) {
     throw new InputError({
       code: 'road-too-short',

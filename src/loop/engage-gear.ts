@@ -1,3 +1,4 @@
+import { BUS_GEAR } from '../control/bus.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -23,6 +24,7 @@ export function loadGear(machine: Machine, gear: number): void {
   const { s, gears, speedEdges } = machine;
   const ratio = gear < 0 ? 0 : gears[2 * gear];
   s[at.GEAR] = gear;
+  s[BUS_GEAR] = gearInHand(s);
   loadRatio(machine, ratio, gear < 0 ? 0 : gears[2 * gear + 1]);
   s[at.SPEED_CELL] = ratio > 0 ? cellIndex(speedEdges, ratio * s[at.SPEED]) : 0;
 }

@@ -93,8 +93,8 @@ export const SENSOR_ROWS = 2;
 export function fittingsOf(plan: LoopPlan): Fittings {
   const { vehicle, controller } = plan;
   const { drive, actuator } = vehicle;
-  const sample = controller.kind === 'pi' ? controller.sample : plan.lockedSample;
-  const computing = controller.kind === 'pi' ? controller.computingDelay : 0;
+  const sample = controller.kind === 'locked' ? plan.lockedSample : controller.sample;
+  const computing = controller.kind === 'locked' ? 0 : controller.computingDelay;
   const sensor = sensorOf(vehicle.sensor, vehicle.sensor.delay + computing + actuator.deadTime, sample);
   return {
     sensor,

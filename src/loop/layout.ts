@@ -35,8 +35,8 @@ export const LOCK_TEMPERATURE = 50;
 export const CHANGES = 51;
 /** Limited command of the last sample that was recorded. */
 export const LAST_COMMAND = 52;
-/** Gear engaged, index into the drive's gears; -1: the clutch is open. It lies on the bus, where a controller sees it. Ratio and effective mass in hand. */
-export const GEAR = 22;
+/** Gear engaged, index into the drive's gears; -1: the clutch is open. Ratio and effective mass in hand. */
+export const GEAR = 73;
 export const RATIO = 53;
 export const EFFECTIVE_MASS = 54;
 /** A shift under way: the gear it goes to, 0 none, 1 clutch open, 2 the rider's throttle until hold resumes; tick at which this part ends; planned shifts that have begun. A part of -1: an automatic gearbox rests after a shift. */
@@ -67,7 +67,7 @@ export const START_MASS = 70;
 export const SLOPE_ROW = 71;
 export const SLOPE_READING = 72;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 73;
+export const HISTORY = 74;
 export const HISTORY_STRIDE = 3;
 
 // --- chunk: sums over the samples that a kernel has just run, works and energies [J] ---
@@ -163,7 +163,11 @@ export const P_BELT = 42;
 export const P_BELT_KEPT = 43;
 /** Throttle at which the drive's law steps; 0: nowhere. */
 export const P_LAW_STEP = 44;
-export const P_SIZE = 45;
+/** What tells the slope (see sense-slope.ts); how far ahead it looks [s]; what a lag of it keeps over a sample. */
+export const P_SLOPE = 45;
+export const P_AHEAD = 46;
+export const P_SLOPE_KEPT = 47;
+export const P_SIZE = 48;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;

@@ -1,3 +1,4 @@
+import type { Bite } from '../control/bites.ts';
 import type { RunStatus } from './plan.ts';
 
 /** A run over a road: how it ended, the record by bin, the account of energy. */
@@ -12,6 +13,16 @@ export interface LoopResult {
   readonly checkpoints: readonly Checkpoint[];
   /** In order along the way. */
   readonly shifts: readonly ShiftEvent[];
+  /** What is wrong in the controller itself and had a say. */
+  readonly bites: readonly BiteRecord[];
+}
+
+/** A slip in a controller that had a say. */
+export interface BiteRecord {
+  readonly bite: Bite;
+  /** Samples in which it had, and where the bin of the first begins: horizontal distance [m]. */
+  readonly samples: number;
+  readonly distance: number;
 }
 
 /**

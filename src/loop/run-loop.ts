@@ -1,3 +1,4 @@
+import { biteLog } from './bite-log.ts';
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
 import { stallSpeed } from './engage-gear.ts';
@@ -38,6 +39,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
   const edge = binEdges(end, plan.bin);
   const record = recorder(edge, plan.bands.length);
   const run = journey(machine, plan, record.add);
+  const bites = biteLog(s);
   const checkpoints: Checkpoint[] = [checkpoint(0, run.time(), s)];
   const bins = edge.length - 1;
 
@@ -50,6 +52,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     const event = run.advance(until, Number.POSITIVE_INFINITY);
     status = statusOf(event) ?? (run.late() ? 'time_limit' : null);
     record.close(machine, entered);
+    bites.note(edge[bin]);
     if (status === null && edge[bin + 1] >= CHECKPOINT_EVERY * checkpoints.length)
       checkpoints.push(checkpoint(distanceAt(road, s[at.STATION]), run.time(), s));
   }
@@ -61,6 +64,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     ledger: ledgerOf(machine, plan.vehicle),
     checkpoints,
     shifts: run.shifts,
+    bites: bites.finish(),
   };
 }
 

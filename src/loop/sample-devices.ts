@@ -1,16 +1,17 @@
 import { moveBelt } from './belt.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import { senseSlope } from './sense-slope.ts';
 import { senseSpeed } from './sense-speed.ts';
 import { shiftDue } from './shift-due.ts';
 
 /** The machine has something that works once a sample on the state as it stands: then a kernel writes it at every sample. */
 export function hasSampleDevices(p: Float64Array): boolean {
-  return p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SOURCE] > 0;
+  return p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SOURCE] + p[at.P_SLOPE] > 0;
 }
 
 /**
- * What devices do at the start of a sample: the belt moves, a sensor with pulses or noise measures. The state must
+ * What devices do at the start of a sample: the belt moves, a sensor with pulses or noise measures, the slope is told. The state must
  * stand in s; speed, filtered speed, ratio, effective mass and the cell over speed may have changed behind it.
  *
  * @returns false where an automatic gearbox wants to shift first: nothing has been done
@@ -23,5 +24,6 @@ export function beginSample(machine: Machine): boolean {
     if (p[at.P_FILTER] === 0) s[at.FILTERED] = s[at.SPEED];
   }
   if (p[at.P_SENSED] === 1) senseSpeed(machine);
+  if (p[at.P_SLOPE] > 0) senseSlope(machine);
   return true;
 }

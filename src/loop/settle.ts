@@ -13,6 +13,8 @@ import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { distanceAt, surroundingsAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
+
+import { settleSlope } from './sense-slope.ts';
 import { settleSensor } from './sense-speed.ts';
 import { gearDue } from './shift-due.ts';
 
@@ -41,6 +43,7 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   const throttle = s[at.PLATE];
   for (let i = at.HISTORY; i < s.length; i += at.HISTORY_STRIDE) s[i] = v;
   settleSensor(machine);
+  settleSlope(machine);
   s[BUS_MEASURED] = p[at.P_SCALE] * v;
   s[BUS_REFERENCE] = speed;
   s[BUS_LIMITED] = throttle;

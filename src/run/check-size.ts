@@ -12,7 +12,7 @@ const MOST_SAMPLES = 500_000_000;
 const MOST_ROWS = 2_000_000;
 
 const sampleOf = ({ controller, lockedSample }: LoopPlan): number =>
-  controller.kind === 'pi' ? controller.sample : lockedSample;
+  controller.kind === 'locked' ? lockedSample : controller.sample;
 
 /** Time of a run at the lowest set speed [s]. */
 function usualTime({ road, hold }: LoopPlan): number {

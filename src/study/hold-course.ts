@@ -86,7 +86,7 @@ export function courseOfRun({ plan, result }: PlannedRun): HoldCourse {
 }
 
 const rampOf = (controller: ControllerSetup): number | null =>
-  controller.kind === 'pi' ? controller.ramp : null;
+  controller.kind === 'locked' ? null : controller.ramp;
 
 /** Place of a time, and a place that is certainly not behind it: the beginning of its bin. */
 interface TimedPlace {

@@ -29,7 +29,7 @@ export function has(plan: LoopPlan, limitation: Limitation): boolean {
   const { actuator, drive } = vehicle;
   switch (limitation) {
     case 'windup':
-      return controller.kind === 'pi' && controller.ki > 0;
+      return controller.kind !== 'locked' && controller.ki > 0 && windsUp(controller);
     case 'rate':
       return actuator.rateLimit !== null;
     case 'range':
@@ -66,14 +66,7 @@ export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
   const { drive } = vehicle;
   switch (limitation) {
     case 'windup':
-      if (controller.kind !== 'pi') return plan;
-      return {
-        ...plan,
-        controller: {
-          ...controller,
-          antiWindup: { kind: 'back_calculation', trackingTime: TRACKING_SAMPLES * controller.sample },
-        },
-      };
+      return controller.kind === 'locked' ? plan : { ...plan, controller: withoutWindup(controller) };
     case 'rate':
       return withActuator(plan, { rateLimit: null });
     case 'range': {
@@ -109,6 +102,29 @@ export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
       return withVehicle(plan, { drive: { ...drive, gearbox: { kind: 'fixed' } } });
     case 'grip':
       return withVehicle(plan, { traction: null });
+  }
+}
+
+type Feedback = Exclude<LoopPlan['controller'], { readonly kind: 'locked' }>;
+
+/** A velocity form remembers no integral. */
+function windsUp(controller: Feedback): boolean {
+  return !(controller.kind === 'pid' && controller.form.kind === 'velocity');
+}
+
+/** Whole numbers have no back calculation: their integral keeps to what the range leaves it. */
+function withoutWindup(controller: Feedback): Feedback {
+  const antiWindup = {
+    kind: 'back_calculation',
+    trackingTime: TRACKING_SAMPLES * controller.sample,
+  } as const;
+  switch (controller.kind) {
+    case 'pi':
+      return { ...controller, antiWindup };
+    case 'pid':
+      return windsUp(controller) ? { ...controller, form: { kind: 'positional', antiWindup } } : controller;
+    case 'integer':
+      return { ...controller, integralRule: { kind: 'clamping' } };
   }
 }
 

@@ -34,6 +34,10 @@ export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPer
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */
 export const fromNPerKmh2 = (curve: number): number => toKmh(toKmh(curve));
+/** [Hz] -> [rad/s] */
+export const fromHz = (frequency: number): number => 2 * Math.PI * frequency;
+/** [1 per km/h] -> [1/(m/s)] */
+export const fromPerKmh = (perKmh: number): number => toKmh(perKmh);
 /** [rpm] -> [rad/s] */
 export const fromRpm = (rpm: number): number => (rpm * Math.PI) / 30;
 /** [rad/s] -> [rpm] */

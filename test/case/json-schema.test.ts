@@ -128,6 +128,8 @@ function* fields(schema: Schema, name = ''): Generator<[name: string, schema: Sc
 /** Endings of keys, longest first, with the unit that each stands for. */
 const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['_n_per_kmh2', 'N per (km/h)2'],
+  ['_counts_per_kmh', 'counts per km/h'],
+  ['_pct_s_per_kmh', '% s per km/h'],
   ['_pct_per_kmh_s', '% per km/h s'],
   ['_pct_per_kmh', '% per km/h'],
   ['_pct_per_s', '%/s'],
@@ -145,6 +147,7 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['_kg_m2', 'kg m2'],
   ['_ohm', 'ohm'],
   ['_rpm', 'rpm'],
+  ['_hz', 'Hz'],
   ['_kmh', 'km/h'],
   ['_nm', 'N m'],
   ['_wh', 'Wh'],
@@ -165,7 +168,7 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
 ];
 /** Ratios, whose keys carry no unit; efficiencies have theirs in the key around them; limits in the figure's name. */
 const WITHOUT_UNIT =
-  `crr factor setpoint_weight damping at_least at_most falloff shape gear_ratios primary_ratio
+  `crr factor ki_factor setpoint_weight damping at_least at_most falloff shape gear_ratios primary_ratio
 final_ratio high_ratio low_ratio friction_dry friction_wet`.split(/\s/);
 
 it('says for every number its range, and the unit that its key ends in', () => {

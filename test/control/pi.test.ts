@@ -11,6 +11,7 @@ import {
 import { controllerFor } from '../../src/control/controller-for.ts';
 import type { PiSetup } from '../../src/control/setup.ts';
 import { expectClose } from '../compare.ts';
+import { referenceMotorcycle } from '../loop/scenes.ts';
 
 const setup: PiSetup = {
   kind: 'pi',
@@ -30,7 +31,7 @@ function play(
   more: Partial<PiSetup>,
   measured: readonly number[],
 ): { u: number[]; i: number[]; sat: number[] } {
-  const controller = controllerFor({ ...setup, ...more }, 0, 1);
+  const controller = controllerFor({ ...setup, ...more }, 0, 1, referenceMotorcycle);
   const bus = new Float64Array(BUS_SIZE);
   bus[BUS_REFERENCE] = 20;
   bus[BUS_MEASURED] = 20;

@@ -3,6 +3,7 @@ import { BUS_LIMITED, BUS_LOCK, BUS_REFERENCE, BUS_SIZE } from '../../src/contro
 import { controllerFor } from '../../src/control/controller-for.ts';
 import { moveReference, setTarget } from '../../src/control/set-point.ts';
 import { expectClose } from '../compare.ts';
+import { referenceMotorcycle } from '../loop/scenes.ts';
 
 function references(from: number, target: number, rate: number | null, samples: number): number[] {
   const bus = new Float64Array(BUS_SIZE);
@@ -25,7 +26,7 @@ test('without a ramp it steps', () => {
 });
 
 test('a locked throttle is held within the range of the drive and looks at nothing', () => {
-  const controller = controllerFor({ kind: 'locked', throttle: 0.4 }, -0.5, 1);
+  const controller = controllerFor({ kind: 'locked', throttle: 0.4 }, -0.5, 1, referenceMotorcycle);
   const bus = new Float64Array(BUS_SIZE).fill(17);
   for (const [lock, held] of [
     [0.4, 0.4],

@@ -79,6 +79,7 @@ function plainResult(wish: FixtureWish): RunResult {
         ledger: run.ledger,
         checkpoints: [],
         shifts: [],
+        bites: [],
       },
       figures: figuresOf(run),
       loop:

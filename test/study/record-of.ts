@@ -73,6 +73,7 @@ export function resultOf(bins: BinRecord, more: Partial<LoopResult> = {}): LoopR
     },
     checkpoints: [],
     shifts: [],
+    bites: [],
     ...more,
   };
 }

@@ -1,0 +1,62 @@
+import { exp, sin } from '../numeric/elementary.ts';
+import { STANDARD_GRAVITY } from '../units/constants.ts';
+import { BUS_GEAR, BUS_MEASURED, BUS_REFERENCE, BUS_SLOPE } from './bus.ts';
+import { SLOPE, SLOPE_MEASURED } from './memory.ts';
+import type { FeedforwardSetup } from './setup.ts';
+import type { VehicleModel } from './vehicle-model.ts';
+
+/** A part of a controller that works from a model, once a sample before the law. */
+export interface ModelPart {
+  /** Puts its filters at rest, as if all had been steady. */
+  readonly engage: (bus: Float64Array) => void;
+  /** What it adds to the command. */
+  readonly step: (bus: Float64Array) => number;
+}
+
+/**
+ * Feedforward of drag and grade: with T the throttle that gives a force in the gear in hand, at the reference r,
+ *
+ *     drag and grade  T(F(r) + m G)                  G = g sin(theta)
+ *     grade alone     T(F(r) + m G) - T(F(r))        drag alone: T(F(r))
+ *
+ * The accelerometer reads A = a + g sin(theta + pitch error); with z = y(k) - y(k - 1), kept = exp(-Ts / Tf), G is
+ *
+ *     G <- kept G + (1 - kept) (A - z / Ts),
+ *
+ * the usual estimate of the grade from longitudinal acceleration; the pitch error is taken as g sin(pitch error) more.
+ *
+ * The grade that it reckons with stands at SLOPE.
+ */
+export function feedforward(setup: FeedforwardSetup, model: VehicleModel, sample: number): ModelPart {
+  const { drag, grade } = setup;
+  const sensed = grade?.kind === 'accelerometer';
+  const filter = sensed ? grade.filter : 0;
+  const constants = Float64Array.of(
+    filter > 0 ? exp(-sample / filter) : 0,
+    1 / sample,
+    sensed ? STANDARD_GRAVITY * sin(grade.pitchError) : 0,
+    model.mass,
+  );
+
+  const step = (bus: Float64Array): number => {
+    const reference = bus[BUS_REFERENCE];
+    const gear = bus[BUS_GEAR];
+    const force = model.dragAt(reference);
+    if (grade === null) return model.throttleAt(gear, reference, force);
+    let slope = bus[BUS_SLOPE];
+    if (sensed) {
+      const measured = bus[BUS_MEASURED];
+      const reading = slope + constants[2] - (measured - bus[SLOPE_MEASURED]) * constants[1];
+      slope = reading + constants[0] * (bus[SLOPE] - reading);
+      bus[SLOPE_MEASURED] = measured;
+    }
+    bus[SLOPE] = slope;
+    const throttle = model.throttleAt(gear, reference, force + constants[3] * slope);
+    return drag ? throttle : throttle - model.throttleAt(gear, reference, force);
+  };
+  const engage = (bus: Float64Array): void => {
+    bus[SLOPE] = bus[BUS_SLOPE] + constants[2];
+    bus[SLOPE_MEASURED] = bus[BUS_MEASURED];
+  };
+  return { engage, step };
+}
