@@ -345,6 +345,11 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         if (crossed > 0 && xe > high - STOP) throttleCell++;
         else if (crossed < 0 && xe < low + STOP) throttleCell--;
         x = td === 0 ? plate : xe;
+        if (trial === TRIALS) {
+          // The edge was not looked for, or not hit.
+          while (throttleCell > 0 && x < throttleEdges[throttleCell - 1] - STOP) throttleCell--;
+          while (throttleCell < lastThrottleCell && x > throttleEdges[throttleCell] + STOP) throttleCell++;
+        }
         v = ve;
         q += dq;
         acceleration = k4;
@@ -416,11 +421,12 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
 
 /**
  * Where a throttle that runs past an edge within h meets it: Newton's rule from the far side, or along the chord where
- * that leaves the piece.
+ * that leaves the piece, or makes no way in it: from a point that the rule has found, it finds the same one again.
  *
  * @param slope of the throttle at h
  */
 function timeToEdge(h: number, x: number, xe: number, edge: number, slope: number): number {
+  const LEAST_SHARE = 1e-3;
   const met = h + (edge - xe) / slope;
-  return met > 0 && met < h ? met : h * Math.max(0, (edge - x) / (xe - x));
+  return met > LEAST_SHARE * h && met < h ? met : h * Math.min(1, Math.max(0, (edge - x) / (xe - x)));
 }
