@@ -6,8 +6,8 @@ import { toKmh, toPct } from '../units/convert.ts';
 import { type LinearVehicle, linearise } from '../vehicle/linearise.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
-import { commandRange } from './command-range.ts';
 import { type Gains, type SampledLoop, sampledLoop } from './sampled-loop.ts';
 import { sensorDelay } from './sensor-delay.ts';
 import type { DesignRecord } from './setup.ts';
@@ -53,7 +53,7 @@ export interface DesignLoop {
  */
 export function designLoop(point: DesignPoint): DesignLoop {
   const model = linearise(point.vehicle, { speed: point.at, surroundings: point.surroundings });
-  const { least, greatest } = commandRange(point.vehicle);
+  const { least, greatest } = throttleRange(point.vehicle);
   if (model === null)
     throw notFeasible(
       'the throttle has no effect at the operating point',

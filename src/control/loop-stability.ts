@@ -3,8 +3,8 @@ import { sizeOfComplex } from '../numeric/complex.ts';
 import { fromDeg } from '../units/convert.ts';
 import { linearise } from '../vehicle/linearise.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
-import { commandRange } from './command-range.ts';
 import { type Gains, type LoopTiming, type SampledLoop, sampledLoop } from './sampled-loop.ts';
 
 /** How far the linear loop of a candidate is from oscillating. */
@@ -47,7 +47,7 @@ export function loopStability(
   surroundings: Surroundings,
   gears: readonly number[] = [vehicle.drive.gear],
 ): LoopStability | null {
-  const { least, greatest } = commandRange(vehicle);
+  const { least, greatest } = throttleRange(vehicle);
   let worst: LoopStability | null = null;
   const inOrder = [...new Set(speeds)].sort((a, b) => a - b);
   const few = inOrder.length <= MOST_SPEEDS ? inOrder : [inOrder[0]!, inOrder.at(-1)!];

@@ -105,7 +105,7 @@ function demandAlong(road: Road, vehicle: Vehicle, setSpeed: Float64Array, plann
     }
     if (chooses) {
       const shares = gears.map((one) => one.share[i]);
-      gear[i] = chosenGear(drive, speed, shares);
+      gear[i] = chosenGear(vehicle, speed, shares);
     }
     const inForce = gears[gear[i]];
     upper[i] = inForce.upper[i];

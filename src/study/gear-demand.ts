@@ -1,9 +1,8 @@
-import { authority } from '../vehicle/authority.ts';
+import { authority, staysIn } from '../vehicle/authority.ts';
 import { beltRatio } from '../vehicle/belt-law.ts';
-import type { Drive } from '../vehicle/drive.ts';
 import { throttleFor } from '../vehicle/drive-law.ts';
-import { piecewiseLinear } from '../vehicle/piecewise-linear.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { demandShare } from './demand-share.ts';
 
@@ -54,20 +53,15 @@ function shaftSpeedAt(
 
 /**
  * Gear in force where a gearbox chooses: the highest in which the demand is in range, or the one that comes nearest, of
- * those that its up line at full throttle does not leave at once.
+ * those that its up line does not leave at once, at full throttle or, where the demand is to hold back, at the least.
  */
-export function chosenGear(drive: Drive, speed: number, shares: readonly number[]): number {
+export function chosenGear(vehicle: Vehicle, speed: number, shares: readonly number[]): number {
+  const { least, greatest } = throttleRange(vehicle);
   let best = shares.length - 1;
   for (let g = shares.length - 1; g >= 0; g--) {
-    if (!staysIn(drive, g, speed)) continue;
+    if (!staysIn(vehicle.drive, g, speed, shares[g] < 0 ? least : greatest)) continue;
     if (Math.abs(shares[g]) <= 1) return g;
     if (Math.abs(shares[g]) < Math.abs(shares[best])) best = g;
   }
   return best;
-}
-
-/** A gearbox that shifts by itself does not leave the gear upwards at full throttle; true for any other gearbox. */
-export function staysIn({ gearbox, gears, throttleMax }: Drive, gear: number, speed: number): boolean {
-  if (gearbox.kind !== 'automatic' || gear === gears.length - 1) return true;
-  return gears[gear].ratio * speed <= piecewiseLinear(gearbox.throttle, gearbox.upSpeed, throttleMax);
 }

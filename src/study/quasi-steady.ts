@@ -6,9 +6,9 @@ import { wheelForce } from '../vehicle/drive-law.ts';
 import { effectiveMass } from '../vehicle/linearise.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { inGear, keptInGear } from './gear-course.ts';
-import { throttleRange } from './settling-speed.ts';
 
 /** Longest step along the slope [m]. */
 const STEP = 10;

@@ -140,7 +140,7 @@ function extremeDemand(plan: LoopPlan, from: number, to: number, up: boolean, ke
     const gear = kept ?? gears[i];
     const range = chooses
       ? authority(vehicle, gear, speed, at, derate)
-      : { ...gearAt(keptInGear(vehicle, gear), gear, speed, required, at, derate), gear };
+      : { ...gearAt(keptInGear(vehicle, gear), gear, speed, required, at, derate), gear, leastGear: gear };
     const signed = demandShare(required, range.least, range.greatest);
     const share = up ? signed : -signed;
     if (found === null || share > found.share)
@@ -150,7 +150,7 @@ function extremeDemand(plan: LoopPlan, from: number, to: number, up: boolean, ke
         required,
         available: up ? range.greatest : range.least,
         speed,
-        gear: range.gear,
+        gear: up ? range.gear : range.leastGear,
       };
   }
   return found ?? { share: Number.NEGATIVE_INFINITY, at: from, required: 0, available: 0, speed: 0, gear: 0 };

@@ -1,30 +1,18 @@
 import { bracketedRoot } from '../numeric/root.ts';
+import { staysIn } from '../vehicle/authority.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { wheelForce } from '../vehicle/drive-law.ts';
 import { SPEED_CEILING, settledSpeed } from '../vehicle/equilibrium.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import { gripForce } from '../vehicle/traction.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { keptInGear } from './gear-course.ts';
-import { staysIn } from './gear-demand.ts';
 
 /** In the place of standstill [m/s]. */
 const SLOWEST = 1e-9;
 const TOLERANCE = 1e-10;
-
-/** Throttle between the end stops of actuator and drive. */
-export function throttleRange({ actuator, drive }: Pick<Vehicle, 'actuator' | 'drive'>): {
-  readonly least: number;
-  readonly greatest: number;
-} {
-  const { travel } = actuator;
-  if (travel === null) return { least: drive.throttleMin, greatest: drive.throttleMax };
-  return {
-    least: Math.max(drive.throttleMin, travel.least),
-    greatest: Math.min(drive.throttleMax, travel.greatest),
-  };
-}
 
 /**
  * Speed to which full throttle, or what of it the grip of the driven wheel passes on, sinks from a speed that it cannot
@@ -35,17 +23,27 @@ export function throttleRange({ actuator, drive }: Pick<Vehicle, 'actuator' | 'd
  * @returns [m/s]; `from` where it is held; 0 where the vehicle stops or its gear can turn no longer
  */
 export function sustainedFrom(vehicle: Vehicle, at: Surroundings, from: number): number {
+  const { greatest } = throttleRange(vehicle);
   return overGears(vehicle, (kept) => {
-    const speed = settle(kept, at, throttleRange(kept).greatest, from, -1);
-    return staysIn(vehicle.drive, kept.drive.gear, speed) ? speed : 0;
+    const speed = settle(kept, at, greatest, from, -1);
+    return staysIn(vehicle.drive, kept.drive.gear, speed, greatest) ? speed : 0;
   });
 }
 
 /** Speed to which the vehicle runs away from `from` with the least throttle, as far as the grip passes its force on; `from` where that holds it [m/s]. */
 export function runawayFrom(vehicle: Vehicle, at: Surroundings, from: number): number {
-  return overGears(vehicle, (kept) => settle(kept, at, throttleRange(kept).least, from, 1), Math.min);
+  const { least } = throttleRange(vehicle);
+  return overGears(
+    vehicle,
+    (kept) => {
+      const speed = settle(kept, at, least, from, 1);
+      return staysIn(vehicle.drive, kept.drive.gear, speed, least) ? speed : Number.POSITIVE_INFINITY;
+    },
+    Math.min,
+  );
 }
 
+/** Best over the gears of a gearbox that shifts by itself; the highest always stays. */
 function overGears(
   vehicle: Vehicle,
   of: (kept: Vehicle) => number,

@@ -3,6 +3,7 @@ import type { Drive } from './drive.ts';
 import { wheelForce } from './drive-law.ts';
 import { piecewiseLinear } from './piecewise-linear.ts';
 import type { Surroundings } from './surroundings.ts';
+import { throttleRange } from './throttle-range.ts';
 import { type GripForce, gripForce } from './traction.ts';
 import type { Vehicle } from './vehicle.ts';
 
@@ -35,9 +36,8 @@ export function authority(
   at: Surroundings,
   derate: number = derateFactor(vehicle.drive, at.airDensity, at.airTemperature),
 ): Authority {
-  const { drive, actuator } = vehicle;
-  const low = Math.max(drive.throttleMin, actuator.travel?.least ?? drive.throttleMin);
-  const high = Math.min(drive.throttleMax, actuator.travel?.greatest ?? drive.throttleMax);
+  const { drive } = vehicle;
+  const { least: low, greatest: high } = throttleRange(vehicle);
   const force = (throttle: number) => (g: number) => wheelForce(drive, g, speed, throttle, derate);
   const least = best(gearsFor(drive, gear, speed, low), force(low), (a, b) => a < b);
   const greatest = best(gearsFor(drive, gear, speed, high), force(high), (a, b) => a > b);
@@ -52,20 +52,18 @@ export function authority(
 }
 
 /** Gears in which the drive can be at a speed and throttle. */
-function gearsFor(
-  { gearbox, gears, stallSpeed }: Drive,
-  gear: number,
-  speed: number,
-  throttle: number,
-): number[] {
-  if (gearbox.kind !== 'automatic') return [gear];
-  const up = piecewiseLinear(gearbox.throttle, gearbox.upSpeed, throttle);
-  const able = gears.flatMap(({ ratio }, g) => {
-    const shaftSpeed = ratio * speed;
-    const stays = shaftSpeed <= up || g === gears.length - 1;
-    return shaftSpeed >= stallSpeed && stays ? [g] : [];
-  });
+function gearsFor(drive: Drive, gear: number, speed: number, throttle: number): number[] {
+  if (drive.gearbox.kind !== 'automatic') return [gear];
+  const able = drive.gears.flatMap(({ ratio }, g) =>
+    ratio * speed >= drive.stallSpeed && staysIn(drive, g, speed, throttle) ? [g] : [],
+  );
   return able.length === 0 ? [0] : able;
+}
+
+/** A gearbox that shifts by itself does not leave the gear upwards at this throttle; true for any other gearbox. */
+export function staysIn({ gearbox, gears }: Drive, gear: number, speed: number, throttle: number): boolean {
+  if (gearbox.kind !== 'automatic' || gear === gears.length - 1) return true;
+  return gears[gear]!.ratio * speed <= piecewiseLinear(gearbox.throttle, gearbox.upSpeed, throttle);
 }
 
 function best(

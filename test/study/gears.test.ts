@@ -105,6 +105,46 @@ describe('demand in every gear', () => {
   });
 });
 
+describe('demand downhill where the gearbox chooses', () => {
+  const vehicle = gearedVehicle({
+    gearbox: {
+      kind: 'automatic',
+      throttle: Float64Array.of(0, 1),
+      upSpeed: Float64Array.of(250, 450),
+      downSpeed: Float64Array.of(110, 200),
+      gap: 0.3,
+      dwell: 1,
+    },
+  });
+  const speed = 60 / 3.6;
+  /** What pushes at a speed [N]: 215 kg, 1/2 x 1.2 x 0.58 m2 in the air, 0.014 of rolling. */
+  const push = (grade: number, v: number): number =>
+    -215 * G * (sin(grade) + 0.014 * Math.sqrt(1 - sin(grade) ** 2)) - 0.5 * 1.2 * 0.58 * v * v;
+  const demandOn = (grade: number) => demandOf(roadOf([{ length: 100, grade }]), vehicle, HOLD_60);
+
+  it('is that of a gear which the up line of closed throttle does not leave', () => {
+    // Closed, the lowest gear is left above 250 rad/s, 45 km/h: what holds back at 60 km/h is the 70 N of the second.
+    for (const grade of [-0.1, -0.11]) {
+      const demand = demandOn(grade);
+      expect(demand.gear[0]).toBe(1);
+      expectClose(demand.lower[0]!, -70, 1e-9);
+      expectClose(demand.brakePower[0]!, (push(grade, speed) - 70) * speed, 1e-6, 'power of the brake');
+    }
+  });
+
+  it('runs away to where the gear that stays holds it, as the ideal hold does', () => {
+    // On 10 % the air takes the rest of the push in the second gear just below its up line, at 64.1 km/h and 249 rad/s.
+    const held = Math.sqrt((push(-0.1, 0) - 70) / (0.5 * 1.2 * 0.58));
+    expectClose(held * 3.6, 64.1, 0.1);
+    expectClose(demandOn(-0.1).runaway[0]!, held, 1e-6);
+    const long = demandOf(roadOf([{ length: 4000, grade: -0.1 }]), vehicle, HOLD_60);
+    expectClose(long.ideal.at(-1)!, held, 1e-3);
+    // On 11 % the second gear is left on the way: the third holds back 50 N.
+    const third = Math.sqrt((push(-0.11, 0) - 50) / (0.5 * 1.2 * 0.58));
+    expectClose(demandOn(-0.11).runaway[0]!, third, 1e-6);
+  });
+});
+
 describe('demand on a belt', () => {
   it('is that of its line: power over speed, and the shaft speed of the throttle that holds', () => {
     const demand = demandOf(roadOf([{ length: 100, grade: 0.08 }]), beltVehicle(), HOLD_60);

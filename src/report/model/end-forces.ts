@@ -1,17 +1,17 @@
 import { wheelForce } from '../../vehicle/drive-law.ts';
+import { throttleRange } from '../../vehicle/throttle-range.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
 
 /** Steady wheel forces at both end stops of the throttle [N], grip apart: what the drive has in one gear. */
 export function endForces(
-  { drive, actuator: { travel } }: Pick<Vehicle, 'drive' | 'actuator'>,
+  vehicle: Pick<Vehicle, 'drive' | 'actuator'>,
   gear: number,
   speed: number,
   derate: number,
 ): { readonly least: number; readonly greatest: number } {
-  const low = Math.max(drive.throttleMin, travel?.least ?? drive.throttleMin);
-  const high = Math.min(drive.throttleMax, travel?.greatest ?? drive.throttleMax);
+  const { least, greatest } = throttleRange(vehicle);
   return {
-    least: wheelForce(drive, gear, speed, low, derate),
-    greatest: wheelForce(drive, gear, speed, high, derate),
+    least: wheelForce(vehicle.drive, gear, speed, least, derate),
+    greatest: wheelForce(vehicle.drive, gear, speed, greatest, derate),
   };
 }

@@ -1,7 +1,7 @@
-import type { Vehicle } from '../vehicle/vehicle.ts';
+import type { Vehicle } from './vehicle.ts';
 
-/** Range of the command: that of the drive, between the end stops of the actuator. */
-export function commandRange({ drive, actuator }: Vehicle): {
+/** Range of throttle and command: that of the drive, between the end stops of the actuator. */
+export function throttleRange({ drive, actuator }: Pick<Vehicle, 'actuator' | 'drive'>): {
   readonly least: number;
   readonly greatest: number;
 } {
