@@ -7,7 +7,7 @@ import { AT_LIMIT } from './hill-stretches.ts';
 import { excessOf, type HillPassage, type HillWindow, passHill, planOverWindow } from './hill-window.ts';
 import { deratesByItself, has, type Limitation, without } from './limitations.ts';
 import { nameRange } from './range-cause.ts';
-import { demandWords, inKmh, inPct, inSeconds } from './wording.ts';
+import { demandWords, gearName, inKmh, inPct, inSeconds } from './wording.ts';
 
 export interface CauseFinding {
   readonly cause: Cause | None;
@@ -23,7 +23,7 @@ export interface CauseFinding {
  * 2. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
  *    where the drive went beyond the grip of its wheel by itself, else `gains`.
  * 3. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
- *    gearbox that stays in the gear the hill needs (`gear`), a battery that is always cold and full enough
+ *    gearbox that stays in the gear the hill needs (`gear`, also where it never left another), a battery that is always cold and full enough
  *    (`derating`), no throttle range; each only where it was met. The first without which the band is kept is the
  *    cause. Where the worst error lies on the far side of the limit (too fast after full throttle, too slow after
  *    closed), windup need answer for that side only, and is the cause if half of its excess goes with it.
@@ -96,7 +96,7 @@ function causeOfLeaving(scene: Scene, ideal: Figure): CauseFinding {
   const { windowed, window, hill, events, band, excess } = scene;
   const far = farSide(events);
   const removals: Removal[] = [];
-  for (const limitation of triedLimitations(windowed, events)) {
+  for (const limitation of triedLimitations(windowed, hill, events)) {
     const passage = passHill(withoutIt(windowed, hill, limitation), window);
     const overshot = limitation === 'windup' && far !== 0;
     const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
@@ -136,13 +136,13 @@ interface Removal {
 }
 
 /** What is tried, in order: what was met and is there to be taken away. */
-function triedLimitations(plan: LoopPlan, events: HillEvents): Limitation[] {
+function triedLimitations(plan: LoopPlan, { gears }: HillFacts, events: HillEvents): Limitation[] {
   const atLimit = events.timeUpper + events.timeLower > 0;
   const met: readonly [Limitation, boolean][] = [
     ['windup', atLimit],
     ['rate', events.timeRate > 0],
     ['slack', true],
-    ['shifting', events.shifts > 0],
+    ['shifting', events.shifts > 0 || [...events.gears].some((gear) => gear !== (gears?.needed ?? gear))],
     ['derating', atLimit && deratesByItself(plan.vehicle.drive.source)],
     ['range', atLimit],
   ];
@@ -150,16 +150,23 @@ function triedLimitations(plan: LoopPlan, events: HillEvents): Limitation[] {
 }
 
 /** True where a replay with one limitation less can tell something. */
-export const canTell = (plan: LoopPlan, events: HillEvents): boolean =>
-  triedLimitations(plan, events).length > 0;
+export const canTell = (plan: LoopPlan, hill: HillFacts, events: HillEvents): boolean =>
+  triedLimitations(plan, hill, events).length > 0;
 
 const metAnyLimit = ({ timeUpper, timeLower, timeRate }: HillEvents): boolean =>
   timeUpper + timeLower + timeRate > 0;
 
 /** A gearbox that may not shift is kept in the gear that the hill needs. */
-function withoutIt(windowed: LoopPlan, { gears }: HillFacts, limitation: Limitation): LoopPlan {
-  if (limitation !== 'shifting' || gears === null) return without(windowed, limitation);
-  return { ...windowed, vehicle: keptInGear(windowed.vehicle, gears.needed ?? gears.engaged) };
+function withoutIt(windowed: LoopPlan, hill: HillFacts, limitation: Limitation): LoopPlan {
+  if (limitation !== 'shifting' || hill.gears === null) return without(windowed, limitation);
+  return { ...windowed, vehicle: keptInGear(windowed.vehicle, keptGear(hill)) };
+}
+
+const keptGear = ({ gears }: HillFacts): number => gears?.needed ?? gears?.engaged ?? 0;
+
+function shiftWords({ shifts, gears }: HillEvents): string {
+  if (shifts === 0) return `stayed in ${gearName([...gears][0] ?? 0)} here`;
+  return `shifted ${shifts === 1 ? 'once' : `${shifts} times`} here`;
 }
 
 function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFinding | null {
@@ -181,7 +188,7 @@ function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFin
     case 'shifting':
       return {
         cause: 'gear',
-        why: `The gearbox shifted ${events.shifts === 1 ? 'once' : `${events.shifts} times`} here (${errorRange(events)}); kept in one gear: ${rest}.`,
+        why: `The gearbox ${shiftWords(events)} (${errorRange(events)}); kept in ${gearName(keptGear(hill))}: ${rest}.`,
       };
     case 'derating':
       return {

@@ -22,8 +22,9 @@ export interface HillEvents {
   readonly timeBrake: number;
   /** Time with the drive beyond the grip of its wheel; 0 where that is not known [s]. */
   readonly timeBeyondGrip: number;
-  /** Shifts of gear. */
+  /** Shifts of gear, and the gears that were driven in. */
   readonly shifts: number;
+  readonly gears: ReadonlySet<number>;
 }
 
 /** Over samples [first, last), where no change of set speed is being followed and no shift is being got over. */
@@ -37,11 +38,13 @@ export function hillEvents(
 ): HillEvents {
   const times = { timeUpper: 0, timeLower: 0, timeRate: 0, timeBrake: 0, timeBeyondGrip: 0 };
   let shifts = 0;
+  const gears = new Set<number>();
   let low = 0;
   let high = 0;
   for (let i = first; i < last; i++) {
     if (isSettling(series.distance[i], settling)) continue;
     if (i > first && series.gear[i] !== series.gear[i - 1]) shifts++;
+    gears.add(series.gear[i]);
     const error = errorAt(series, i);
     low = Math.min(low, error);
     high = Math.max(high, error);
@@ -63,5 +66,6 @@ export function hillEvents(
     high,
     ...times,
     shifts,
+    gears,
   };
 }

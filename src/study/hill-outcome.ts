@@ -123,7 +123,7 @@ function explainOutcome(
   const nearest = hillWindow(hill, road, demand, course);
   const near = windowFrom(nearest, nearest.start, replayed);
   // Where no limit was met there is nothing to take away, and no replay can say more.
-  if (!events.leftBand || !canTell(plan, events))
+  if (!events.leftBand || !canTell(plan, hill, events))
     return { ...causeOnHill(plan, hill, near, events, band, 0, ideal), wouldHold: [] };
   const shown = windowThatShows(replayed, near, band);
   if (shown === null)

@@ -123,6 +123,26 @@ describe('the cause of a hill that a real drive meets', () => {
     expect(gear.words).toBe('The gearbox chooses its gear by itself.');
   });
 
+  it('is the gear where an automatic gearbox stays in one that is too high', () => {
+    // 7 % asks 273 N: the third gear has 300 N, the fourth 240 N, and at full throttle it goes down only below
+    // 100 rad/s, 45 km/h, which the fourth never comes to: it settles where the air takes 33 N less, at 48.6 km/h.
+    const lazy = gearedVehicle({
+      gearbox: {
+        kind: 'automatic',
+        throttle: Float64Array.of(0, 1),
+        upSpeed: Float64Array.of(250, 250),
+        downSpeed: Float64Array.of(100, 100),
+        gap: 0.3,
+        dwell: 1,
+      },
+    });
+    const { hill, outcome } = firstOutcome(planOf(oneHill(0.07, 1500), lazy, STIFF));
+    expect(hill.gears!.needed).toBe(2);
+    expect(outcome.cause).toBe('gear');
+    expect(outcome.why).toContain('The gearbox stayed in 4th gear here');
+    expect(outcome.why).toContain('kept in 3rd gear');
+  });
+
   it('is traction where the wheel cannot pass on what the drive has', () => {
     // mu 0.2, mass centre in the middle: 0.2 x 2105 x 0.65 / (1.3 - 0.2 x 0.6) = 232 N of the 252 N that 6 % asks.
     const traction = { friction: 0.2, wheelbase: 1.3, massCentreAhead: 0.65, massCentreHeight: 0.6 };
