@@ -1,4 +1,5 @@
 import { BITES, bitesSoFar } from '../control/bites.ts';
+import { BUS_BITES } from '../control/bus.ts';
 import type { BiteRecord } from './result.ts';
 
 /** Finds where something that is wrong in a controller first had a say. */
@@ -13,9 +14,9 @@ export function biteLog(s: Float64Array): BiteLog {
   const first = new Map<number, number>();
   return {
     note: (distance) => {
-      bitesSoFar(s).forEach((count, i) => {
-        if (count > 0 && !first.has(i)) first.set(i, distance);
-      });
+      // Asked at every bin: without a copy of the counts.
+      for (let i = 0; i < BITES.length; i++)
+        if (s[BUS_BITES + i] > 0 && !first.has(i)) first.set(i, distance);
     },
     finish: () => {
       const counts = bitesSoFar(s);

@@ -220,21 +220,22 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     r.throttleMin[i] = sums[THROTTLE_MIN];
     r.throttleMax[i] = sums[THROTTLE_MAX];
     r.throttleTravel[i] = sums[TRAVEL];
-    r.timeUpper[i] = sums[UPPER];
-    r.timeLower[i] = sums[LOWER];
-    r.timeRate[i] = sums[RATE];
-    r.timeBrake[i] = sums[BRAKE];
+    // Most bins have none of these: a column that nothing is written to takes no memory.
+    if (sums[UPPER] > 0) r.timeUpper[i] = sums[UPPER];
+    if (sums[LOWER] > 0) r.timeLower[i] = sums[LOWER];
+    if (sums[RATE] > 0) r.timeRate[i] = sums[RATE];
+    if (sums[BRAKE] > 0) r.timeBrake[i] = sums[BRAKE];
+    if (sums[SHIFT] > 0) r.timeShift[i] = sums[SHIFT];
+    if (sums[HOLD] < 0) r.regenerationWork[i] = sums[HOLD];
+    if (sums[BRAKE_WORK] !== 0) r.brakeWork[i] = sums[BRAKE_WORK];
+    if (sums[DRAWN] !== 0) r.drawn[i] = sums[DRAWN];
     for (let b = 0; b < bands; b++) r.timeInBand[i * bands + b] = sums[BAND + b];
     const work = sums[PUSH] + sums[HOLD];
     r.driveForce[i] = sums[DISTANCE] > 0 ? work / sums[DISTANCE] : force;
     r.wheelPower[i] = work / time;
     r.driveWork[i] = sums[PUSH];
-    r.regenerationWork[i] = sums[HOLD];
-    r.brakeWork[i] = sums[BRAKE_WORK];
     r.driveForceMin[i] = sums[FORCE_MIN];
     r.driveForceMax[i] = sums[FORCE_MAX];
-    r.timeShift[i] = sums[SHIFT];
-    r.drawn[i] = sums[DRAWN];
     clearSums(sums);
   };
 
