@@ -2,13 +2,19 @@ import * as fit from './fittings.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
+/** Share of its capacity to which an empty battery must be charged before it drives again. */
+const RESTORED = 0.005;
+
 /**
  * What a sample takes from tank or battery. The power of the source's map at the shaft's speed and torque at the start
  * of the sample is drawn all through it (with the clutch open: of idling). Then, for a battery, over a sample of length h:
  *
  *   charge  <- charge - power h, between empty and full: what would overfill it is lost
  *   heat    <- r + (heat - r) e^(-h / time), r = (wheel power / continuous power)^2
- *   factor of force = sag(charge) heatShare, of regeneration = acceptance(charge) heatShare; an empty battery gives nothing
+ *   factor of force = sag(charge) heatShare, of regeneration = acceptance(charge) heatShare
+ *
+ * A battery that has no more than the last sample took is empty: it gives nothing until RESTORED of its capacity has
+ * been charged again. Where the power jumps in its last sample, what is asked for beyond the charge is not drawn.
  *
  * Strictly sample by sample, so that it is the same whatever the chunks are.
  *
@@ -27,6 +33,7 @@ export function drawPower(
   let energy =
     elapsed * powerAt(f, open ? f[fit.F_IDLE] : s[at.RATIO] * speed, open ? 0 : force / s[at.RATIO]);
   if (f[fit.F_BATTERY] === 1) {
+    const asked = energy;
     const capacity = f[fit.F_CAPACITY];
     if (capacity > 0) {
       const left = Math.min(Math.max(0, s[at.CHARGE] - energy), capacity);
@@ -39,7 +46,7 @@ export function drawPower(
       const square = load * load;
       s[at.HEAT] = square + (s[at.HEAT] - square) * f[fit.F_COOLED];
     }
-    writeFactors(s, f);
+    writeFactors(s, f, asked);
   }
   s[at.DRAWN] = s[at.DRAWN] + energy;
   chunk[at.C_DRAWN] = chunk[at.C_DRAWN] + energy;
@@ -54,14 +61,17 @@ export function settleSource({ s, fittings }: Machine): void {
   s[at.REGENERATION_FACTOR] = 1;
   if (f.length === 0 || f[fit.F_BATTERY] !== 1) return;
   s[at.CHARGE] = f[fit.F_CHARGE] * f[fit.F_CAPACITY];
-  writeFactors(s, f);
+  writeFactors(s, f, 0);
 }
 
-function writeFactors(s: Float64Array, f: Float64Array): void {
+/** @param asked energy that the sample before asked for [J] */
+function writeFactors(s: Float64Array, f: Float64Array, asked: number): void {
   const known = f[fit.F_CAPACITY] > 0;
   const charge = known ? s[at.CHARGE] * f[fit.F_PER_CAPACITY] : f[fit.F_CHARGE];
   const cool = f[fit.F_PER_POWER] > 0 ? heatShare(f, s[at.HEAT]) : 1;
-  s[at.DRIVE_FACTOR] = known && charge <= 0 ? 0 : cool * shareAt(f, f[fit.F_SAG] | 0, charge);
+  const share = cool * shareAt(f, f[fit.F_SAG] | 0, charge);
+  const empty = known && (s[at.DRIVE_FACTOR] === 0 ? charge < RESTORED : s[at.CHARGE] <= Math.max(0, asked));
+  s[at.DRIVE_FACTOR] = empty ? 0 : share;
   s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0, charge);
 }
 

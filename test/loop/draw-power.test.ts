@@ -18,6 +18,7 @@ import {
   REGENERATION_FACTOR,
 } from '../../src/loop/layout.ts';
 import type { Machine } from '../../src/loop/machine.ts';
+import { runLoop } from '../../src/loop/run-loop.ts';
 import type { Battery, EnergySource, Heating, PowerMap } from '../../src/vehicle/energy-source.ts';
 import { powerDrawn } from '../../src/vehicle/power-map.ts';
 import { expectClose } from '../compare.ts';
@@ -109,16 +110,64 @@ describe('a tank', () => {
 });
 
 describe('a battery', () => {
-  it('is empty when the closed form says, and then gives nothing', () => {
+  it('is empty when the closed form says, to a sample, and then gives nothing', () => {
     // 1 MJ, from half of it on, at 200 N 20 m/s / 0.8 = 5 kW: 100 s.
     const machine = machineWith(battery({ charge: 0.5 }));
-    ride(machine, 20, 200, 4999);
-    expectClose(machine.s[CHARGE]!, 100, 1e-4);
+    ride(machine, 20, 200, 4997);
+    expectClose(machine.s[CHARGE]!, 300, 1e-4);
     expect(machine.s[DRIVE_FACTOR]).toBe(1);
-    ride(machine, 20, 200, 3);
-    expect(machine.s[CHARGE]).toBe(0);
+    ride(machine, 20, 240, 1);
+    expect(machine.s[DRIVE_FACTOR]).toBe(1);
+    // 180 J are left: one more sample of 100 J, but no second one.
+    ride(machine, 20, 200, 1);
+    expectClose(machine.s[CHARGE]!, 80, 1e-4);
     expect(machine.s[DRIVE_FACTOR]).toBe(0);
-    expectClose(machine.s[DRAWN]!, 5e5, 1e-4, 'no more than was in it');
+    ride(machine, 20, 0, 100);
+    expect(machine.s[DRIVE_FACTOR]).toBe(0);
+    expectClose(machine.s[DRAWN]!, 5e5 - 80, 1e-4);
+  });
+
+  it('once empty drives again only when 0.5 % of it has been charged', () => {
+    // 5 kJ of 1 MJ, at 0.6 x 1000 W: 8.33 s; the first sample asks for 20 J more than the 100 J that are in it.
+    const machine = machineWith(battery({ charge: 1e-4 }));
+    ride(machine, 20, 240, 1);
+    expect(machine.s[DRIVE_FACTOR]).toBe(0);
+    ride(machine, 20, -50, 416);
+    expectClose(machine.s[CHARGE]!, 4992, 1e-6);
+    expect(machine.s[DRIVE_FACTOR]).toBe(0);
+    ride(machine, 20, -50, 1);
+    expect(machine.s[DRIVE_FACTOR]).toBe(1);
+  });
+
+  it('gives no more work to a run than was in it', () => {
+    // 40 Wh of 5 % is 7.2 kJ; 6 km on the level at 60 km/h take 30 times that. Drag charges through the same map.
+    const drag = 40;
+    const cells = [-drag, 0, 200, 0, 0, 0, -drag, 0, 500 + drag, 0, 0, 0];
+    const losses = [0, 0, 200, 0, 0, 0, 0, 0, 500, 0, 0, 0];
+    for (const scheme of ['exact', 'fast'] as const) {
+      const drive = {
+        ...referenceMotorcycle.drive,
+        throttleEdges: Float64Array.of(0),
+        throttleMin: -1,
+        cells: Float64Array.from(cells),
+        losses: Float64Array.from(losses),
+        source: battery({ capacity: 144_000, charge: 0.05 }),
+      };
+      const setSpeed = 60 / 3.6;
+      const { status, ledger } = runLoop(
+        planOver(
+          roadOver(stations(6000, 100)),
+          { ...referenceMotorcycle, drive },
+          {
+            scheme,
+            hold: { setSpeed, setSpeedIs: 'true_speed', startSpeed: setSpeed, changes: [] },
+          },
+        ),
+      );
+      expect(status).toBe('stopped');
+      expectClose(ledger.drawn!, ledger.drive / 0.8 + 0.6 * ledger.regeneration, 0.002 * 7200);
+      expectClose(ledger.drawn!, 7200, 720, 'between empty and driving again');
+    }
   });
 
   it('takes back what regeneration leaves, up to full', () => {

@@ -19,7 +19,7 @@ const battery: Battery = {
     power: Float64Array.of(40, 40, 40, 40 - 0.7, 40, 40 + 1.2),
     least: Number.NEGATIVE_INFINITY,
   },
-  capacity: 3e5,
+  capacity: 6e5,
   charge: 0.9,
   reserve: 0.1,
   sag: { charge: Float64Array.of(0.2, 0.8), share: Float64Array.of(0.7, 1) },
