@@ -1,5 +1,5 @@
 import { exp } from '../numeric/elementary.ts';
-import { BUS_GEAR, BUS_LIMITED, BUS_MEASURED } from './bus.ts';
+import { BUS_FEEDFORWARD, BUS_GEAR, BUS_LIMITED, BUS_MEASURED } from './bus.ts';
 import type { ModelPart } from './feedforward.ts';
 import { OBSERVED_FORCE, OBSERVED_MEASURED, OBSERVED_THROTTLE, SLOPE } from './memory.ts';
 import type { VehicleModel } from './vehicle-model.ts';
@@ -23,24 +23,29 @@ export function disturbanceObserver(
 ): ModelPart {
   const constants = Float64Array.of(exp(-sample / filter), 1 / sample, knowsGrade ? model.mass : 0);
 
-  const step = (bus: Float64Array): number => {
+  const { out, movedMass } = model;
+
+  const step = (bus: Float64Array): void => {
     const gear = bus[BUS_GEAR];
     const measured = bus[BUS_MEASURED];
-    const pull = model.movedMass(gear) * (measured - bus[OBSERVED_MEASURED]) * constants[1];
-    const force = pull + model.dragAt(measured) + constants[2] * bus[SLOPE];
     const kept = constants[0];
+    model.drag(measured);
+    const pull = movedMass[gear | 0] * (measured - bus[OBSERVED_MEASURED]) * constants[1];
+    const force = pull + out[0] + constants[2] * bus[SLOPE];
     const filtered = force + kept * (bus[OBSERVED_FORCE] - force);
     const given = bus[BUS_LIMITED];
     const throttle = given + kept * (bus[OBSERVED_THROTTLE] - given);
     bus[OBSERVED_MEASURED] = measured;
     bus[OBSERVED_FORCE] = filtered;
     bus[OBSERVED_THROTTLE] = throttle;
-    return throttle - model.throttleAt(gear, measured, filtered);
+    model.throttle(gear, measured, filtered);
+    bus[BUS_FEEDFORWARD] += throttle - out[0];
   };
   const engage = (bus: Float64Array): void => {
     const measured = bus[BUS_MEASURED];
+    model.drag(measured);
     bus[OBSERVED_MEASURED] = measured;
-    bus[OBSERVED_FORCE] = model.dragAt(measured) + constants[2] * bus[SLOPE];
+    bus[OBSERVED_FORCE] = out[0] + constants[2] * bus[SLOPE];
     bus[OBSERVED_THROTTLE] = bus[BUS_LIMITED];
   };
   return { engage, step };

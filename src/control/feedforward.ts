@@ -1,6 +1,6 @@
 import { exp, sin } from '../numeric/elementary.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
-import { BUS_GEAR, BUS_MEASURED, BUS_REFERENCE, BUS_SLOPE } from './bus.ts';
+import { BUS_FEEDFORWARD, BUS_GEAR, BUS_MEASURED, BUS_REFERENCE, BUS_SLOPE } from './bus.ts';
 import { SLOPE, SLOPE_MEASURED } from './memory.ts';
 import type { FeedforwardSetup } from './setup.ts';
 import type { VehicleModel } from './vehicle-model.ts';
@@ -9,8 +9,8 @@ import type { VehicleModel } from './vehicle-model.ts';
 export interface ModelPart {
   /** Puts its filters at rest, as if all had been steady. */
   readonly engage: (bus: Float64Array) => void;
-  /** What it adds to the command. */
-  readonly step: (bus: Float64Array) => number;
+  /** Adds its part of the command to BUS_FEEDFORWARD. */
+  readonly step: (bus: Float64Array) => void;
 }
 
 /**
@@ -30,6 +30,7 @@ export interface ModelPart {
 export function feedforward(setup: FeedforwardSetup, model: VehicleModel, sample: number): ModelPart {
   const { drag, grade } = setup;
   const sensed = grade?.kind === 'accelerometer';
+  const graded = grade !== null;
   const filter = sensed ? grade.filter : 0;
   const constants = Float64Array.of(
     filter > 0 ? exp(-sample / filter) : 0,
@@ -38,11 +39,25 @@ export function feedforward(setup: FeedforwardSetup, model: VehicleModel, sample
     model.mass,
   );
 
-  const step = (bus: Float64Array): number => {
+  // Drag and its throttle at the reference, which seldom moves: a table looked up once.
+  const known = Float64Array.of(Number.NaN, Number.NaN, 0, 0);
+  const { out } = model;
+
+  const step = (bus: Float64Array): void => {
     const reference = bus[BUS_REFERENCE];
     const gear = bus[BUS_GEAR];
-    const force = model.dragAt(reference);
-    if (grade === null) return model.throttleAt(gear, reference, force);
+    if (reference !== known[0] || gear !== known[1]) {
+      known[0] = reference;
+      known[1] = gear;
+      model.drag(reference);
+      known[2] = out[0];
+      model.throttle(gear, reference, known[2]);
+      known[3] = out[0];
+    }
+    if (!graded) {
+      bus[BUS_FEEDFORWARD] += known[3];
+      return;
+    }
     let slope = bus[BUS_SLOPE];
     if (sensed) {
       const measured = bus[BUS_MEASURED];
@@ -51,8 +66,8 @@ export function feedforward(setup: FeedforwardSetup, model: VehicleModel, sample
       bus[SLOPE_MEASURED] = measured;
     }
     bus[SLOPE] = slope;
-    const throttle = model.throttleAt(gear, reference, force + constants[3] * slope);
-    return drag ? throttle : throttle - model.throttleAt(gear, reference, force);
+    model.throttle(gear, reference, known[2] + constants[3] * slope);
+    bus[BUS_FEEDFORWARD] += drag ? out[0] : out[0] - known[3];
   };
   const engage = (bus: Float64Array): void => {
     bus[SLOPE] = bus[BUS_SLOPE] + constants[2];

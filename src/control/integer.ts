@@ -12,7 +12,7 @@ import type { Controller } from './controller.ts';
 import { integerGains } from './integer-gains.ts';
 import { INTEGRAL } from './memory.ts';
 import type { IntegerSetup } from './setup.ts';
-import { isBeyond, saturateTo, scaleDown, wrappedProduct, wrapTo } from './whole-numbers.ts';
+import { powerOfTwo, saturateTo, scaleDown, wrappedProduct, wrapTo } from './whole-numbers.ts';
 
 // Places of the constants and of what a sample works with.
 const KP = 0;
@@ -21,14 +21,16 @@ const LOW = 2;
 const HIGH = 3;
 const SPEED_SCALE = 4;
 const PER_COUNT = 5;
+/** A divisor, then what is added before. */
 const GAIN_DIVISOR = 6;
-const INTEGRAL_DIVISOR = 7;
-const WORD = 8;
-const PRODUCT = 9;
-const CAP = 10;
+const INTEGRAL_DIVISOR = 8;
+/** Halves of the ranges of words and products. */
+const WORD_HALF = 10;
+const PRODUCT_HALF = 11;
+const CAP = 12;
 /** 1: a word has overflowed in this sample. */
-const OVERFLOWN = 11;
-const SIZE = 12;
+const OVERFLOWN = 13;
+const SIZE = 14;
 
 /**
  * The PI controller in whole numbers (see IntegerSetup): every word is fitted, by wrapping around or by staying at its
@@ -40,7 +42,7 @@ const SIZE = 12;
  * wrong unit holds (BUS_BITES).
  */
 export function integerController(setup: IntegerSetup, low: number, high: number): Controller {
-  const { wordBits, integralRule: rule, throttleScale, sample, computingDelay, ramp } = setup;
+  const { wordBits, productBits, integralRule: rule, throttleScale, sample, computingDelay, ramp } = setup;
   const gains = integerGains(setup);
   const shifts = setup.scaling === 'shift';
   const nearest = setup.rounding === 'nearest';
@@ -60,36 +62,42 @@ export function integerController(setup: IntegerSetup, low: number, high: number
   n[SPEED_SCALE] = setup.speedScale;
   n[PER_COUNT] = 1 / throttleScale;
   n[GAIN_DIVISOR] = setup.gainDivisor;
+  n[GAIN_DIVISOR + 1] = nearest ? Math.floor(setup.gainDivisor / 2) : 0;
   n[INTEGRAL_DIVISOR] = setup.integralDivisor;
-  n[WORD] = wordBits;
-  n[PRODUCT] = setup.productBits;
+  n[INTEGRAL_DIVISOR + 1] = nearest ? Math.floor(setup.integralDivisor / 2) : 0;
+  n[WORD_HALF] = powerOfTwo(wordBits - 1);
+  n[PRODUCT_HALF] = powerOfTwo(productBits - 1);
 
-  const inWord = (value: number, bits: number): number => {
-    if (!isBeyond(value, bits)) return value;
+  const beyond = (value: number, bits: number): number => {
     n[OVERFLOWN] = 1;
     return wraps ? wrapTo(value, bits) : saturateTo(value, bits);
   };
+  const inWord = (value: number): number =>
+    value < n[WORD_HALF] && value >= -n[WORD_HALF] ? value : beyond(value, wordBits);
   const product = (a: number, b: number): number => {
-    if (!isBeyond(a * b, n[PRODUCT])) return a * b + 0;
+    // Adding 0 makes a negative zero, which no word has, a plain one.
+    const exact = a * b + 0;
+    if (exact < n[PRODUCT_HALF] && exact >= -n[PRODUCT_HALF]) return exact;
     n[OVERFLOWN] = 1;
-    return wraps ? wrappedProduct(a, b, n[PRODUCT]) : saturateTo(a * b, n[PRODUCT]);
+    return wraps ? wrappedProduct(a, b, productBits) : saturateTo(exact, productBits);
   };
+  /** A product, or an integral, scaled down by the divisor at a place. */
   const scaled = (value: number, divisor: number): number => {
-    const half = nearest ? Math.floor(divisor / 2) : 0;
-    const sum = half === 0 ? value : inWord(value + (shifts || value >= 0 ? half : -half), n[PRODUCT]);
-    return inWord(scaleDown(sum, divisor, shifts), n[WORD]);
+    let sum = shifts || value >= 0 ? value + n[divisor + 1] : value - n[divisor + 1];
+    if (sum >= n[PRODUCT_HALF] || sum < -n[PRODUCT_HALF]) sum = beyond(sum, productBits);
+    return inWord(scaleDown(sum, n[divisor], shifts));
   };
-  const countOf = (speed: number): number => inWord(nearestCount(speed * n[SPEED_SCALE]), n[WORD]);
+  const countOf = (speed: number): number => inWord(nearestCount(speed * n[SPEED_SCALE]));
   /** Part of the command that an integral stands for. */
   const termOf = (integral: number): number =>
-    sums ? scaled(product(n[KI], integral), n[GAIN_DIVISOR]) : scaled(integral, n[INTEGRAL_DIVISOR]);
+    sums ? scaled(product(n[KI], integral), GAIN_DIVISOR) : scaled(integral, INTEGRAL_DIVISOR);
   /** Integral that stands for a part of the command, towards 0. */
   const integralFor = (term: number): number =>
     sums
       ? n[KI] === 0
         ? 0
-        : inWord(scaleDown(term * n[GAIN_DIVISOR], n[KI], false), n[WORD])
-      : inWord(term * n[INTEGRAL_DIVISOR], n[WORD]);
+        : inWord(scaleDown(term * n[GAIN_DIVISOR], n[KI], false))
+      : inWord(term * n[INTEGRAL_DIVISOR]);
   if (rule.kind === 'cap')
     n[CAP] = wrongUnit
       ? saturateTo(nearestCount((rule.cap * setup.speedScale) / sample), wordBits)
@@ -97,14 +105,16 @@ export function integerController(setup: IntegerSetup, low: number, high: number
 
   const step = (bus: Float64Array): void => {
     n[OVERFLOWN] = 0;
-    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]), n[WORD]);
-    const proportional = scaled(product(n[KP], error), n[GAIN_DIVISOR]);
-    const increment = sums ? error : scaled(product(n[KI], error), n[GAIN_DIVISOR]);
+    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]));
+    const proportional = scaled(product(n[KP], error), GAIN_DIVISOR);
+    const increment = sums ? error : scaled(product(n[KI], error), GAIN_DIVISOR);
     if (increment === 0 && error !== 0) bus[BITE_INCREMENT_LOST] += 1;
     let integral = bus[INTEGRAL];
-    let next = inWord(integral + increment, n[WORD]);
+    let next = inWord(integral + increment);
+    const free = next;
+    let term = termOf(backward ? next : integral);
     if (conditional || bySign) {
-      const trial = proportional + termOf(backward ? next : integral);
+      const trial = proportional + term;
       const outwards = (trial >= n[HIGH] && error > 0) || (trial <= n[LOW] && error < 0);
       if (conditional) {
         if (outwards) next = integral;
@@ -119,14 +129,15 @@ export function integerController(setup: IntegerSetup, low: number, high: number
       if (next > most) next = most;
       if (next < least) next = least;
     } else if (capped) {
-      const free = next;
       if (next > n[CAP]) next = n[CAP];
       if (next < -n[CAP]) next = -n[CAP];
       if (wrongUnit && next !== free) bus[BITE_INTEGRAL_CAP] += 1;
     }
-    if (backward) integral = next;
-    const term = termOf(integral);
-    const command = inWord(proportional + term, n[WORD]);
+    if (backward) {
+      integral = next;
+      if (next !== free) term = termOf(integral);
+    }
+    const command = inWord(proportional + term);
     let limited = command;
     if (command > n[HIGH]) limited = n[HIGH];
     if (command < n[LOW]) limited = n[LOW];
@@ -139,8 +150,8 @@ export function integerController(setup: IntegerSetup, low: number, high: number
     bus[BUS_LIMITED] = limited * n[PER_COUNT];
   };
   const engage = (bus: Float64Array): void => {
-    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]), n[WORD]);
-    const proportional = scaled(product(n[KP], error), n[GAIN_DIVISOR]);
+    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]));
+    const proportional = scaled(product(n[KP], error), GAIN_DIVISOR);
     bus[INTEGRAL] = integralFor(nearestCount(bus[BUS_LIMITED] * throttleScale) - proportional);
   };
   return { sample, computingDelay, ramp, engage, step };

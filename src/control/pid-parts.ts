@@ -87,8 +87,9 @@ export function pidParts(setup: PidSetup, low: number, high: number, vehicle: Ve
     const reference = bus[BUS_REFERENCE];
     const measured = bus[BUS_MEASURED];
     if (scheduled) gains(bus[BUS_GEAR], measured, work);
-    let added = feed === null ? 0 : feed.step(bus);
-    if (observer !== null) added += observer.step(bus);
+    bus[BUS_FEEDFORWARD] = 0;
+    if (feed !== null) feed.step(bus);
+    if (observer !== null) observer.step(bus);
     const error = reference - measured;
     let seen = measured;
     work[W_ERROR] = error;
@@ -107,7 +108,7 @@ export function pidParts(setup: PidSetup, low: number, high: number, vehicle: Ve
       proportional -= work[W_KD] * work[W_SLIP];
     }
     work[W_SHAPE] = shape;
-    work[W_REST] = proportional + added;
+    work[W_REST] = proportional + bus[BUS_FEEDFORWARD];
     work[W_LEAST] = constants[0];
     work[W_MOST] = constants[1];
     if (limited) {
@@ -116,7 +117,6 @@ export function pidParts(setup: PidSetup, low: number, high: number, vehicle: Ve
       if (last + constants[2] < work[W_MOST]) work[W_MOST] = last + constants[2];
     }
     bus[BUS_PROPORTIONAL] = proportional;
-    bus[BUS_FEEDFORWARD] = added;
   };
   const keep = (bus: Float64Array): void => {
     bus[LAST_KP] = work[W_KP];

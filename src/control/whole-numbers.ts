@@ -15,12 +15,6 @@ export function saturateTo(value: number, bits: number): number {
   return value < -half ? -half : value >= half ? half - 1 : value;
 }
 
-/** True where a word of so many bits cannot hold the number. */
-export function isBeyond(value: number, bits: number): boolean {
-  const half = powerOfTwo(bits - 1);
-  return value < -half || value >= half;
-}
-
 /**
  * The low `bits` of a product of two words of up to 32 bits, as two's complement. Where the product is beyond 2^53 the
  * second factor is taken in two halves.
