@@ -30,7 +30,9 @@ const FORCE_MIN = 24;
 const FORCE_MAX = 25;
 const SHIFT = 26;
 const DRAWN = 27;
-const SUMS = 28;
+const DRIVE_LOST = 28;
+const REGENERATION_LOST = 29;
+const SUMS = 30;
 
 function clearSums(sums: Float64Array): void {
   sums.fill(0);
@@ -119,6 +121,11 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   sums[BRAKE_WORK] += chunk[at.C_BRAKE];
   sums[DRAWN] += chunk[at.C_DRAWN];
   if (s[at.SHIFT_PART] > 0) sums[SHIFT] += chunk[at.C_TIME];
+  if (p[at.P_SOURCE] === 1) {
+    // Once for all samples of the chunk: charge and heat move slowly, and an empty battery stays empty.
+    sums[DRIVE_LOST] = Math.max(sums[DRIVE_LOST], 1 - s[at.DRIVE_FACTOR]);
+    sums[REGENERATION_LOST] = Math.max(sums[REGENERATION_LOST], 1 - s[at.REGENERATION_FACTOR]);
+  }
   sums[FORCE_MIN] = weakest;
   sums[FORCE_MAX] = strongest;
   sums[THROTTLE_MIN] = least;
@@ -183,6 +190,8 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     driveForceMin: column(),
     timeShift: column(),
     drawn: column(),
+    driveLost: column(),
+    regenerationLost: column(),
   };
 
   const sums = new Float64Array(SUMS);
@@ -195,6 +204,8 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     const force = chunk[at.C_DRIVE_FORCE];
     r.timeAt[i] = timeAt;
     r.gear[i] = gearInHand(s);
+    if (sums[DRIVE_LOST] > 0) r.driveLost[i] = sums[DRIVE_LOST];
+    if (sums[REGENERATION_LOST] > 0) r.regenerationLost[i] = sums[REGENERATION_LOST];
     if (!(time > 0)) {
       // No sample starts in this bin: what holds while it is passed over.
       const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];

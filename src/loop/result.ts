@@ -78,6 +78,12 @@ export interface BinRecord {
   readonly timeShift: Float64Array;
   /** Drawn from fuel or battery [J]; 0 without a source. */
   readonly drawn: Float64Array;
+  /**
+   * Greatest share of the full-throttle force, and of full regeneration, that voltage, heat and charge of a battery took
+   * away: 0 for all that there is, 1 of the force for an empty battery. 0 without a battery.
+   */
+  readonly driveLost: Float64Array;
+  readonly regenerationLost: Float64Array;
 }
 
 /** A shift of gear that happened. Indices into the drive's gears. */

@@ -81,6 +81,8 @@ export function fixtureRun(
     driveForceMin: column(),
     timeShift: column(),
     drawn: column(),
+    driveLost: column(),
+    regenerationLost: column(),
   };
   const ledger = { drive: 0, regeneration: 0, aero: 0, rolling: 0, climb: 0, brake: 0, kinetic: 0 };
   const rows: number[][] = [];

@@ -47,6 +47,8 @@ export function recordOf(width: number, rows: readonly BinRow[], bands = 1): Bin
     driveForceMin: column('driveForceMin'),
     timeShift: column('timeShift'),
     drawn: column('drawn'),
+    driveLost: column('driveLost'),
+    regenerationLost: column('regenerationLost'),
   };
 }
 
