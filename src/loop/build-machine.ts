@@ -12,7 +12,7 @@ import { writeSlope } from './sense-slope.ts';
 
 /** Longest step of either scheme [s]: a controller slower than 40 Hz is stepped several times a sample. */
 const LONGEST_STEP = 0.025;
-/** RK4 must see a lag as something smooth: no step above this share of the shortest lag, and none below a time [s]. */
+/** RK4 must see a lag, or a steep law, as something smooth: no step above this share of the shortest, and for a lag none below a time [s]. */
 const SHARE_OF_LAG = 0.4;
 const SHORTEST_STEP = 0.001;
 /** Lags closer to each other than this, relatively, are taken as equal. */
@@ -84,9 +84,35 @@ export function buildMachine(plan: LoopPlan): Machine {
 }
 
 function longestStep({ scheme, vehicle }: LoopPlan): number {
-  if (scheme === 'fast') return LONGEST_STEP;
+  const settles = SHARE_OF_LAG / quickest(vehicle);
+  if (scheme === 'fast') return Math.min(LONGEST_STEP, settles);
   const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
-  return Math.min(LONGEST_STEP, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
+  return Math.min(LONGEST_STEP, settles, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
+}
+
+/**
+ * The greatest rate at which the drive's law alone takes a deviation of speed away [1/s]: a rev limiter's band is steep.
+ * Over the gears that can be in hand, at the corners of the cells.
+ */
+function quickest({ mass, rotatingMass, drive }: Vehicle): number {
+  const { speedEdges, throttleEdges, cells, throttleMin, throttleMax } = drive;
+  const across = throttleEdges.length + 1;
+  let steepest = 0;
+  for (let i = 0; i <= speedEdges.length; i++)
+    for (let j = 0; j < across; j++) {
+      const cell = 6 * (i * across + j);
+      for (const w of [speedEdges[i - 1], speedEdges[i]])
+        for (const edge of [throttleEdges[j - 1] ?? throttleMin, throttleEdges[j] ?? throttleMax]) {
+          if (w === undefined) continue;
+          const x = Math.min(Math.max(edge, throttleMin), throttleMax);
+          const slope =
+            cells[cell + 1] + x * (cells[cell + 3] + 2 * w * cells[cell + 4] - cells[cell + 5] / (w * w));
+          steepest = Math.max(steepest, Math.abs(slope));
+        }
+    }
+  const inHand = drive.gearbox.kind === 'fixed' ? drive.gears.slice(drive.gear, drive.gear + 1) : drive.gears;
+  const geared = inHand.map(({ ratio, inertia }) => (ratio * ratio) / (mass + rotatingMass + inertia));
+  return steepest * geared.reduce((most, share) => Math.max(most, share), 0);
 }
 
 /** Which of the sample's devices this vehicle has. */
