@@ -15,10 +15,16 @@ export { formatProblem, InputError, type Problem } from './problems/input-error.
 export { formatPlace, type Place } from './problems/place.ts';
 export type { Warning } from './problems/warning.ts';
 export { type ChartFile, chartFiles } from './report/chart-files.ts';
+export { type Comparison, compareResults } from './report/compare/compare-results.ts';
+export { comparisonJson, type Folders } from './report/compare/comparison-json.ts';
+export { readSeries, type Series, type SeriesPair } from './report/compare/read-series.ts';
+export { type ResultSummary, readSummary } from './report/compare/read-summary.ts';
+export { type ComparisonOptions, renderComparison } from './report/compare/render-comparison.ts';
 export { dataFiles, roadFiles, type TextFile } from './report/data/data-files.ts';
 export { NotFiniteError } from './report/data/fixed.ts';
 export { roadJson } from './report/data/road-json.ts';
 export { summaryJson } from './report/data/summary.ts';
+export { junitXml } from './report/junit-xml.ts';
 export { renderReport } from './report/render-report.ts';
 export type { ProfileOptions, RoadOptions } from './road/options.ts';
 export type { Road } from './road/road.ts';

@@ -1,6 +1,7 @@
 import { fromKmh } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { figureLabel, marginText } from '../model/figure-text.ts';
+import { inReaderUnit } from '../model/reader-unit.ts';
 import { bandText, NO_VALUE, type SpeedUnit } from '../quantity.ts';
 import { STANDING } from '../sections/answer-section.ts';
 import type { Section } from '../sections/section.ts';
@@ -106,7 +107,7 @@ function measuredCell(
 ): Html | string {
   if (asked === null) return NO_VALUE;
   if (asked.measured !== null) return valueText(asked, other, speed);
-  return html`<span class="wrap reason small">${asked.measured_reason ?? 'no figure'}</span>`;
+  return html`<span class="wrap reason small">${inReaderUnit(asked.measured_reason ?? 'no figure', speed)}</span>`;
 }
 
 function differenceText({ before, after }: RequirementChange, speed: SpeedUnit): string {

@@ -1,6 +1,7 @@
 import { isNone } from '../../study/findings.ts';
 import { type Html, html } from '../html.ts';
 import { figureText, figureTextBeside, marginText } from '../model/figure-text.ts';
+import { inReaderUnit } from '../model/reader-unit.ts';
 import { NO_VALUE, placeText, type SpeedUnit, significant } from '../quantity.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
@@ -65,7 +66,7 @@ function figureTable(name: string, changes: readonly FigureChange[], speed: Spee
     valueCell(before, after, unit, speed),
     valueCell(after, before, unit, speed),
     isNone(difference) ? NO_VALUE : marginText(difference, unit, speed),
-    html`${changeMark(change)}${isNone(difference) && html`<br><span class="wrap small">${difference.none}</span>`}`,
+    html`${changeMark(change)}${isNone(difference) && html`<br><span class="wrap small">${inReaderUnit(difference.none, speed)}</span>`}`,
   ]);
   return table(
     `Figures of ${name}`,

@@ -53,7 +53,7 @@ function factsTable(before: ResultSummary, after: ResultSummary, speed: SpeedUni
   });
   return table(
     'The two results',
-    [{ head: '' }, { head: 'before' }, { head: 'after' }, { head: 'change' }],
+    [{ head: 'what' }, { head: 'before' }, { head: 'after' }, { head: 'change' }],
     rows,
   );
 }
