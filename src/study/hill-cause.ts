@@ -14,12 +14,18 @@ export interface CauseFinding {
   readonly why: string;
 }
 
+/** Change of speed of the ideal hold on a hill [m/s]: with any grip, as the loop has it, and with that of the wheel. */
+export interface IdealChange {
+  readonly change: Figure;
+  readonly gripped: number;
+}
+
 /**
  * Why a candidate that regulates left its band or sat on a limit on a hill: by replays over the hill's window that take
  * one limitation away at a time, gains untouched.
  *
- * 1. The set speed asks for more than the grip of the driven wheel passes on, and the drive has it: `traction`. The loop
- *    has no slip, so that nothing in it can be to blame before that.
+ * 1. The set speed asks for more than the grip of the driven wheel passes on, and the drive has it: `traction`, if the
+ *    band was kept or the ideal hold with that grip makes more than half of the worst error too. The loop has no slip.
  * 2. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
  *    where the drive went beyond the grip of its wheel by itself, else `gains`.
  * 3. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
@@ -34,7 +40,7 @@ export interface CauseFinding {
  *    `power`, `torque`. A demand in range throughout: `gains`, the controller went there itself.
  *
  * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
- * @param ideal change of speed of the ideal hold on the hill [m/s]
+ * @param ideal what the ideal hold does on the hill
  * @returns the cause, and why with what is left of the error without it
  */
 export function causeOnHill(
@@ -44,18 +50,22 @@ export function causeOnHill(
   events: HillEvents,
   band: number,
   excess: number,
-  ideal: Figure,
+  ideal: IdealChange,
 ): CauseFinding {
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
   const gripped = plan.vehicle.traction === null ? null : nameRange(windowed, window, hill, hill.share >= 0);
-  if (gripped?.cause === 'traction') {
+  if (gripped?.cause === 'traction' && (!events.leftBand || makesHalf(ideal.gripped, events))) {
     const kept = events.leftBand ? `the error grew to ${inKmh(worstOf(events))}` : 'the band was kept';
     return { ...gripped, why: `${gripped.why} In it ${kept}.` };
   }
   if (!events.leftBand) return causeInBand(windowed, window, hill, events);
-  const { cause, why } = causeOfLeaving({ windowed, window, hill, events, band, excess }, ideal);
-  const beyond = cause === 'traction' ? '' : beyondGripWords(events);
-  return { cause, why: `${why}${beyond}${brakeWords(plan, events)}` };
+  // The replays have no slip, and here grip is not what is asked about.
+  const slipless = without(windowed, 'grip');
+  const { cause, why } = causeOfLeaving(
+    { windowed: slipless, window, hill, events, band, excess },
+    ideal.change,
+  );
+  return { cause, why: `${why}${beyondGripWords(events)}${brakeWords(plan, events)}` };
 }
 
 function causeInBand(
@@ -207,13 +217,19 @@ function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFin
 function idealCause(scene: Scene, ideal: Figure, free: Removal | null): CauseFinding | null {
   const { windowed, window, hill, events } = scene;
   const worst = worstOf(events);
-  if (typeof ideal !== 'number' || ideal * worst <= 0 || Math.abs(ideal) <= Math.abs(worst) / 2) return null;
+  if (typeof ideal !== 'number' || !makesHalf(ideal, events)) return null;
   const named = nameRange(windowed, window, hill, ideal < 0);
   if (named === null) return null;
   const share = `An ideal hold would ${ideal < 0 ? 'lose' : 'gain'} ${inKmh(Math.abs(ideal))} of the ${inKmh(Math.abs(worst))}`;
   const second = free === null ? 'the rest is for the gains to answer' : aloneWords(free.passage);
   return { ...named, why: `${named.why} ${share}; ${second}.` };
 }
+
+/** The ideal hold goes the same way, and more than half as far. */
+const makesHalf = (ideal: number, events: HillEvents): boolean => {
+  const worst = worstOf(events);
+  return ideal * worst > 0 && Math.abs(ideal) > Math.abs(worst) / 2;
+};
 
 const worstOf = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): number => (-low > high ? low : high);
 

@@ -1,8 +1,9 @@
 import { replay } from '../loop/replay.ts';
 import type { FullSeries } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
+import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
-import type { Figure, HillOutcome, Replayed } from './findings.ts';
+import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
 import { canTell, causeOnHill } from './hill-cause.ts';
 import type { HillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
@@ -15,6 +16,7 @@ import {
   planOverWindow,
   windowFrom,
 } from './hill-window.ts';
+import type { HoldCourse } from './hold-course.ts';
 import { lockedCause } from './locked-cause.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
@@ -102,6 +104,22 @@ function predict(
   return extreme;
 }
 
+/** Largest departure of the ideal hold, grip in it, from the set speed on the hill [m/s]. */
+function idealChange(
+  road: Road,
+  demand: Demand,
+  { from, until }: HillFacts,
+  { settling }: HoldCourse,
+): number {
+  let extreme = 0;
+  for (let i = cellOf(road.distance, from); i < road.size && road.distance[i] <= until; i++) {
+    if (isSettling(road.distance[i], settling)) continue;
+    const change = demand.ideal[i] - demand.setSpeed[i];
+    if (Math.abs(change) > Math.abs(extreme)) extreme = change;
+  }
+  return extreme;
+}
+
 function differs(simulated: number, predicted: Figure): boolean {
   if (typeof predicted !== 'number') return false;
   const gap = Math.abs(simulated - predicted);
@@ -113,13 +131,14 @@ function explainOutcome(
   hill: HillFacts,
   { demand, course, band }: PassageContext,
   events: HillEvents,
-  ideal: Figure,
+  predicted: Figure,
   command: number,
 ): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
   const { plan } = replayed;
   const { road } = plan;
   if (plan.controller.kind === 'locked')
     return { ...lockedCause(plan, hill, demand, command), wouldHold: [] };
+  const ideal = { change: predicted, gripped: idealChange(road, demand, hill, course) };
   const nearest = hillWindow(hill, road, demand, course);
   const near = windowFrom(nearest, nearest.start, replayed);
   // Where no limit was met there is nothing to take away, and no replay can say more.

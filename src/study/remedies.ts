@@ -62,7 +62,10 @@ export function remediesFor(
     return [...inGear, speedRemedy(windowed, search, aside), loadRemedy(windowed, search)];
   }
   const sustained = hill.sustainedSpeed / trueSpeedFactor(windowed.hold, windowed.vehicle);
-  const full = `full throttle sustains ${sustained > 0 ? speedWords(windowed, sustained, 1) : 'no speed'}`;
+  const full =
+    sustained > 0
+      ? `full throttle sustains ${speedWords(windowed, sustained, 1)}`
+      : 'even with full throttle it would come to a stop';
   return [
     ...inGear,
     speedRemedy(windowed, search, hill.share > 1 ? full : null),
@@ -91,7 +94,7 @@ function speedRemedy(windowed: LoopPlan, { steps, unlimited }: Search, aside: st
   if (n === null)
     return noRemedy(
       'set_speed',
-      `No set speed down to ${speedWords(windowed, least * SPEED_STEP)} holds${unlimited()}${also}.`,
+      `No set speed down to ${speedWords(windowed, least * SPEED_STEP)} holds${also}${unlimited()}.`,
     );
   return {
     lever: 'set_speed',
