@@ -40,10 +40,20 @@ candidates:
   - {name: settles-in-30s, kind: pi, design: {settling_s: 30, overshoot_pct: 2}}
   # Gains as they are in a unit of yours.
   - {name: typed, kind: pi, sample_s: 0.02, kp_pct_per_kmh: 4, ti_s: 8, anti_windup: {kind: back_calculation, tracking_s: 4}}
+  # There are also kind: p, pid and integer, and beside the gains dead_band, rate_limit_pct_per_s, schedule and observer. This one knows the road:
+  # - {name: knows-the-road, kind: pi, kp_pct_per_kmh: 4, ti_s: 8, feedforward: {of: drag_and_grade, grade_from: {kind: known_road, preview_s: 0.3}}}
 
 requirements:
   - {id: R-01, figure: within_band_pct, band_kmh: 2, at_least: 95}    # of the time, where the drive can hold the speed
   - {id: R-02, figure: worst_high_kmh, at_most: 5}
+
+# Every combination of these lists is judged by the requirements too; each list may be left out:
+# matrix:
+#   loads: [solo, own, two_up, {name: with bags, payload_kg: 30}]
+#   winds: [none, {speed_m_s: 6, from_deg: 240}]          # need positions or a heading in the track
+#   directions: [there, back]
+#   gears: [4, 5]                                         # of an engine with gears
+#   set_speeds_kmh: [50, 60]
 `;
 
 const VEHICLE = `# An invented light motorcycle: put your own figures in their place.

@@ -5,6 +5,7 @@ import { linearise } from '../vehicle/linearise.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import type { LinearController } from './linear-controller.ts';
 import { type Gains, type LoopTiming, type SampledLoop, sampledLoop } from './sampled-loop.ts';
 
 /** How far the linear loop of a candidate is from oscillating. */
@@ -36,13 +37,14 @@ const STANDS = 1e-9;
  * the given surroundings: at the set speed and in the gear where it stands worst. Gains whose loop is unstable cannot hold a speed whatever
  * the road: the run swings between the limits.
  *
+ * @param controller gains that hold everywhere, or as they are at a place
  * @param speeds true set speeds of the case [m/s]
  * @param gears in which it is driven, indices into the drive's gears
  * @returns null where the drive can hold none of these speeds on the level in any of these gears, or has no effect
  */
 export function loopStability(
   vehicle: Vehicle,
-  controller: Gains & LoopTiming,
+  controller: (Gains & LoopTiming) | LinearController,
   speeds: readonly number[],
   surroundings: Surroundings,
   gears: readonly number[] = [vehicle.drive.gear],
@@ -57,10 +59,12 @@ export function loopStability(
       if (vehicle.drive.gears[gear]!.ratio * speed < vehicle.drive.stallSpeed) continue;
       const model = linearise(inGear, { speed, surroundings });
       if (model === null || !model.feasible || model.throttle < least || model.throttle > greatest) continue;
+      const shown = speed * (1 + vehicle.sensor.scaleError);
+      const gains = 'gainsAt' in controller ? controller.gainsAt(gear, shown) : controller;
       const found = {
         speed,
         gear,
-        ...stabilityOf(sampledLoop(inGear, model, controller), controller, controller.sample),
+        ...stabilityOf(sampledLoop(inGear, model, controller), gains, controller.sample),
       };
       if (worst === null || reserveOf(found) < reserveOf(worst)) worst = found;
     }

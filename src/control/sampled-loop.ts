@@ -30,6 +30,9 @@ export interface Gains {
   readonly kp: number;
   /** [1/(m/s)/s] */
   readonly ki: number;
+  /** A derivative on the measurement [1/(m/s2)], and its filter [s]; left out: none. */
+  readonly kd?: number;
+  readonly derivativeFilter?: number;
 }
 
 /** What pushes the loop out of its rest: deviations that begin at time 0 and stay. */
@@ -42,7 +45,7 @@ export interface Push {
 }
 
 /**
- * The small-signal loop of a vehicle under a sampled PI controller, with every lag that the replay has: zero-order hold,
+ * The small-signal loop of a vehicle under a sampled P, PI or PID controller, with every lag that the replay has: zero-order hold,
  * dead time and lag of the actuator, drive lag, the vehicle, sensor filter, sensor and computing delay; a sensor that
  * counts or times pulses by the mean age of what it shows. Limits of range and rate, slack and steps are left out.
  *
@@ -110,6 +113,8 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     const samples = Math.ceil(duration / sample);
     const values = new Float64Array(samples * parts + 1);
     const reference = scale * push.reference;
+    const { gain: slipGain, kept } = derivativeOf(gains);
+    let filtered = 0;
     const disturbanceSeen = scale * late.gamma.get(measured, 1) * push.disturbance;
     const queue = new Float64Array(Math.max(back, 1));
     let x = new Float64Array(order);
@@ -119,7 +124,9 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
       const seen = back === 0 ? scale * x[measured]! : queue[k % back]!;
       const increment = gains.ki * sample * (reference - seen);
       if (backward) integral += increment;
-      const u = gains.kp * (push.setpointWeight * reference - seen) + integral;
+      const slip = slipGain === 0 ? 0 : seen - filtered;
+      filtered += (1 - kept) * slip;
+      const u = gains.kp * (push.setpointWeight * reference - seen) - slipGain * slip + integral;
       if (!backward) integral += increment;
       if (back > 0) {
         let sum = direct * u + disturbanceSeen;
@@ -139,21 +146,35 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     return { speed: values, spacing: sample / parts };
   }
 
-  /** State, measurements on their way (the newest first), integral. */
+  /** kd / (Tf + Ts), and what the filter keeps over a sample: D(z) = gain (z - 1) / (z - kept). */
+  function derivativeOf({ kd = 0, derivativeFilter = 0 }: Gains): {
+    readonly gain: number;
+    readonly kept: number;
+  } {
+    const spread = derivativeFilter + sample;
+    return { gain: kd / spread, kept: derivativeFilter / spread };
+  }
+
+  /** State, measurements on their way (the newest first), filtered measurement of a derivative, integral. */
   function closedLoop(gains: Gains): Matrix {
-    const size = order + back + 1;
+    const { gain: slipGain, kept } = derivativeOf(gains);
+    const derives = slipGain !== 0;
+    const size = order + back + (derives ? 2 : 1);
+    const filtered = size - 2;
     const matrix = Matrix.zeros(size, size);
     const last = size - 1;
     const seen = new Float64Array(size);
     if (back === 0) seen[measured] = scale;
     else seen[order + back - 1] = 1;
-    const command = seen.map((value) => -(gains.kp + (backward ? gains.ki * sample : 0)) * value);
+    const command = seen.map((value) => -(gains.kp + (backward ? gains.ki * sample : 0) + slipGain) * value);
     command[last] = 1;
+    if (derives) command[filtered] = slipGain;
     for (let j = 0; j < size; j++) {
       for (let i = 0; i < order; i++)
         matrix.set(i, j, (j < order ? whole.phi.get(i, j) : 0) + whole.gamma.get(i, 0) * command[j]!);
       if (back > 0) matrix.set(order, j, (j < order ? row[j]! : 0) + direct * command[j]!);
       matrix.set(last, j, (j === last ? 1 : 0) - gains.ki * sample * seen[j]!);
+      if (derives) matrix.set(filtered, j, (j === filtered ? kept : 0) + (1 - kept) * seen[j]!);
     }
     for (let i = 1; i < back; i++) matrix.set(order + i, order + i - 1, 1);
     return matrix;
@@ -169,7 +190,11 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
       computingDelay: timing.computingDelay - more,
       integration,
     });
-    return twin.poles({ kp: gains.kp + (backward ? -more : more) * gains.ki, ki: gains.ki });
+    return twin.poles({
+      ...gains,
+      kp: gains.kp + (backward ? -more : more) * gains.ki,
+      derivativeFilter: Math.max(0, (gains.derivativeFilter ?? 0) - 2 * more),
+    });
   }
 
   const throttleInput = whole.gamma.getColumn(0);
@@ -191,7 +216,18 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
   }
   function openLoop(gains: Gains, frequency: number): Complex {
     const z = expComplex(complex(0, frequency * sample));
-    const controller = addComplex(complex(gains.kp), multiplyComplex(complex(gains.ki), integrator(z)));
+    const { gain: slipGain, kept } = derivativeOf(gains);
+    const slip =
+      slipGain === 0
+        ? complex(0)
+        : divideComplex(
+            multiplyComplex(complex(slipGain), subtractComplex(z, complex(1))),
+            subtractComplex(z, complex(kept)),
+          );
+    const controller = addComplex(
+      addComplex(complex(gains.kp), slip),
+      multiplyComplex(complex(gains.ki), integrator(z)),
+    );
     const path = measurement(z);
     return path === null ? complex(Number.POSITIVE_INFINITY) : multiplyComplex(controller, path);
   }

@@ -5,6 +5,7 @@ import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file
 import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
 import { rideDefaults, vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
+import { linearController } from '../control/linear-controller.ts';
 import { loopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
 import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
@@ -135,10 +136,11 @@ export function runWithoutMatrix({
   const results = replayed.map(({ plan, result }, i): CandidateResult => {
     const full = output.series === 'full' ? fullSeries(plan, result) : null;
     const candidate = candidates[i] as Candidate;
+    const linear = linearController(candidate.controller);
     const loop =
-      candidate.controller.kind === 'pi'
-        ? loopStability(vehicle, candidate.controller, speeds, atSeaLevel(document), gearsDriven(result))
-        : null;
+      'none' in linear
+        ? null
+        : loopStability(vehicle, linear, speeds, atSeaLevel(document), gearsDriven(result));
     return { ...candidate, result, figures: figures[i]?.all ?? {}, loop, full };
   });
   const run: RunResult = {

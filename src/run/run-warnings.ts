@@ -7,6 +7,7 @@ import { toDeg, toKm, toKmh } from '../units/convert.ts';
 import { CORRECTION_RANGE, correctionFactor, deratingExtrapolates } from '../vehicle/derating.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { batteryWarnings } from './battery-warnings.ts';
+import { biteWarnings } from './bite-warnings.ts';
 import { gearWarnings } from './gear-warnings.ts';
 import { gripWarnings } from './grip-warnings.ts';
 import type { CandidateResult } from './run-result.ts';
@@ -46,7 +47,10 @@ export function runWarnings({
     ...gearWarnings(road, vehicle, rider, demand, replayed),
     ...gripWarnings(replayed, demand),
     ...batteryWarnings(replayed),
-    ...candidates.flatMap((candidate) => candidateWarnings(candidate, vehicle)),
+    ...candidates.flatMap((candidate) => [
+      ...candidateWarnings(candidate, vehicle),
+      ...biteWarnings(candidate),
+    ]),
   ];
 }
 

@@ -1,7 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { linearController } from '../../src/control/linear-controller.ts';
 import { loopStability, stabilityOf } from '../../src/control/loop-stability.ts';
 import { sampledLoop } from '../../src/control/sampled-loop.ts';
+import type { ControllerSetup, PidSetup } from '../../src/control/setup.ts';
 import type { Drive } from '../../src/vehicle/drive.ts';
 import { IDEAL_ACTUATOR, IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { LinearVehicle } from '../../src/vehicle/linearise.ts';
@@ -10,6 +12,7 @@ import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { readReference } from '../read-reference.ts';
 import { referenceMotorcycle } from '../vehicle/vehicles.ts';
+import { plainInteger, plainPid } from './players.ts';
 
 interface Margins {
   readonly gain_margin: number;
@@ -160,5 +163,95 @@ describe('the stability of a candidate', () => {
     const gains = { ...timing, kp: 0.4, ki: 0.2 };
     expect(loopStability(stopped(0.31), gains, [25], air)).not.toBeNull();
     expect(loopStability(stopped(0.28), gains, [25], air)).toBeNull();
+  });
+});
+
+describe('a PID loop', () => {
+  const ideal = withLags(0, 0);
+  const pid = { kp: 0.08, ki: 0, kd: 0.004, derivativeFilter: 0.1 };
+
+  it('has the poles of its characteristic polynomial', () => {
+    // dv/dt = b u with b = 5, h = 0.1, so G = b h / (z - 1) = 0.5 / (z - 1). Without a filter D = (kd / h) (z - 1) / z:
+    // z (z - 1) + 0.5 kp z + 0.5 (kd / h) (z - 1) = 0. With kp = 0.4, kd = 0.02: z^2 - 0.7 z - 0.1 = 0,
+    // z = (0.7 +- sqrt(0.89)) / 2 = 0.821699, -0.121699; s = ln(z) / h = -1.963812 for the first.
+    const integrator = { ...model, a: 0, b: 5 };
+    const loop = sampledLoop(ideal, integrator, { ...timing, sample: 0.1 });
+    const poles = loop.poles({ kp: 0.4, ki: 0, kd: 0.02, derivativeFilter: 0 });
+    expect(poles.some(({ re, im }) => Math.abs(re + 1.963812) < 1e-5 && Math.abs(im) < 1e-9)).toBe(true);
+    expect(poles.some(({ re }) => Math.abs(re - Math.log(0.121699) / 0.1) < 1e-3)).toBe(true);
+  });
+
+  it('becomes unstable at its gain margin: poles, response and open loop say the same', () => {
+    for (const delay of [0, 0.13]) {
+      const lagged = withLags(0.1, 0.2, delay);
+      const loop = sampledLoop(lagged, model, timing);
+      const gains = { ...pid, ki: 0.02 };
+      const { gainMargin } = stabilityOf(loop, gains, timing.sample);
+      const times = (factor: number) => ({
+        ...gains,
+        kp: factor * gains.kp,
+        ki: factor * gains.ki,
+        kd: factor * gains.kd,
+      });
+      for (const [share, stable] of [
+        [0.99, true],
+        [1.01, false],
+      ] as const) {
+        const scaled = times(share * gainMargin!);
+        expect(loop.poles(scaled).every(({ re }) => re < 0)).toBe(stable);
+        const push = { reference: 1, setpointWeight: 1, disturbance: 0 };
+        const { speed } = loop.respond(scaled, push, 400, timing.sample);
+        const size = (from: number, to: number): number =>
+          speed.slice(from, to).reduce((most, v) => Math.max(most, Math.abs(v - 1)), 0);
+        const late = Math.floor(speed.length / 2);
+        expect(size(late, speed.length) < size(100, late)).toBe(stable);
+      }
+    }
+  });
+
+  it('has more phase with a derivative than without, where lags take it', () => {
+    const loop = sampledLoop(withLags(0.3, 0.5), model, timing);
+    const phase = (kd: number) =>
+      stabilityOf(loop, { kp: 0.4, ki: 0.1, kd, derivativeFilter: 0.02 }, timing.sample).phaseMargin!;
+    expect(phase(0.1)).toBeGreaterThan(phase(0) + 0.1);
+  });
+});
+
+describe('what is linear', () => {
+  it('is a scheduled loop, by the gains of its place', () => {
+    const vehicle = withLags(0.1, 0.2, 0.05);
+    const air = stillAndLevel(1.2, 288.15);
+    const scheduled: PidSetup = {
+      ...plainPid,
+      kp: 0.4,
+      ki: 0.2,
+      sample: 0.1,
+      schedule: {
+        speed: Float64Array.of(10, 30),
+        rows: [{ gear: null, proportional: Float64Array.of(1, 0.5), integral: Float64Array.of(1, 0.5) }],
+      },
+    };
+    const linear = linearController(scheduled);
+    if ('none' in linear) throw new Error(linear.none);
+    const { gainMargin } = loopStability(vehicle, linear, [20], air)!;
+    const plain = loopStability(vehicle, { ...timing, kp: 0.3, ki: 0.15, sample: 0.1 }, [20], air)!;
+    expectClose(gainMargin!, plain.gainMargin!, 1e-9);
+  });
+
+  it('is no loop whose rounding, dead band, observer or accelerometer counts, and it says so', () => {
+    const model = { mass: null, surroundings: stillAndLevel(1.2, 288.15) };
+    const none = (setup: ControllerSetup): string => {
+      const linear = linearController(setup);
+      return 'none' in linear ? linear.none : '';
+    };
+    expect(none(plainInteger)).toContain('rounding');
+    expect(none({ ...plainPid, deadBand: { halfWidth: 0.1, integratesInside: false } })).toContain(
+      'dead band',
+    );
+    expect(none({ ...plainPid, model, observerFilter: 1 })).toContain('observer');
+    const grade = { kind: 'accelerometer', filter: 0.3, pitchError: 0 } as const;
+    expect(none({ ...plainPid, model, feedforward: { drag: true, grade } })).toContain('accelerometer');
+    const known = { kind: 'known_road', preview: 1 } as const;
+    expect(none({ ...plainPid, model, feedforward: { drag: true, grade: known } })).toBe('');
   });
 });
