@@ -12,7 +12,6 @@ import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
 import { type Json, numbers, warningJson } from './json-parts.ts';
 import { jsonText } from './json-text.ts';
-import { matrixJson } from './matrix-table.ts';
 import { routeSummary } from './route-summary.ts';
 
 /**
@@ -44,7 +43,6 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     hills: hillRows(run.hills),
     cycles: cycleRows(run.cycles),
     requirements: run.requirements.map(requirementOf),
-    ...(run.matrix === null ? {} : { matrix: matrixJson(run.matrix) }),
     spread: { roads: run.spread.roads, seed: run.spread.seed },
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),
     warnings: run.warnings.map(warningJson),
