@@ -2,6 +2,7 @@ import { surroundingsBetween } from '../loop/places.ts';
 import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
 import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
+import { atCharge } from '../vehicle/at-charge.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -25,21 +26,23 @@ const SETTLING = 10;
  * power that holds the set speed.
  *
  * The gear in force is the one engaged, or that of the rider's plan; a gearbox that shifts by itself is taken to be in
- * the highest gear that holds, wherever its shift lines would have it. Voltage and heat of a battery are those of a
- * run, not of the road: here the drive has all of its force.
+ * the highest gear that holds, wherever its shift lines would have it. Of a battery it is taken what it gives and accepts
+ * cold, at the charge of the start: for regeneration the worst case, since a full battery accepts more once it has been
+ * driven on; of the force what heat and the falling voltage take on the way is a run's, not the road's.
  *
  * @param road the road
- * @param vehicle with the gear engaged at the start
+ * @param rated vehicle with the gear engaged and the charge at the start
  * @param hold set speed and its changes; a change at a time is placed by the set speeds before it
  * @param rider the plan of shifts, and whether a brake stands by, for the ideal hold
  * @returns one value a knot, SI; `setSpeed` is true speed also where the plan's means the indicated one
  */
 export function demandOf(
   road: Road,
-  vehicle: Vehicle,
+  rated: Vehicle,
   hold: HoldPlan,
   rider: RiderPlan = { brakesAbove: null, shifts: [] },
 ): Demand {
+  const vehicle = atCharge(rated);
   const course = nominalCourse(road, hold, vehicle, rider.shifts);
   const setSpeed = setSpeedAt(road, course);
   const along = demandAlong(road, vehicle, setSpeed, plannedGears(road, vehicle.drive, rider.shifts));

@@ -1,6 +1,5 @@
 import type { LoopPlan } from '../loop/plan.ts';
-import { CELL_SIZE } from '../vehicle/cell-law.ts';
-import type { Drive } from '../vehicle/drive.ts';
+import { scaledDrive } from '../vehicle/scaled-drive.ts';
 import { inGear } from './gear-course.ts';
 
 /** The plan at another set speed [m/s]: lower ones of the plan stay, higher ones come down to it. */
@@ -38,33 +37,8 @@ export function withShift(plan: LoopPlan, distance: number, gear: number): LoopP
 /** The plan with a drive of `1 + more` times the full-throttle force at every speed; closed throttle and regeneration stay. */
 export function withMoreForce(plan: LoopPlan, more: number): LoopPlan {
   const { vehicle } = plan;
-  return { ...plan, vehicle: { ...vehicle, drive: strongerDrive(vehicle.drive, more) } };
-}
-
-/**
- * T' = T + more L, with the drive's own losses L: they are what derating takes away for each unit, so that this is
- * derating the other way: full throttle gives (1 + more) times its torque at every shaft speed, closed throttle what it
- * did, and part throttle keeps its shape.
- */
-function strongerDrive(drive: Drive, more: number): Drive {
-  const cells = drive.cells.slice();
-  const losses = drive.losses.slice();
-  const { throttleEdges } = drive;
-  for (let at = 0; at < cells.length; at += CELL_SIZE) {
-    const column = (at / CELL_SIZE) % (throttleEdges.length + 1);
-    // The cell that ends at or below x = 0 is the regeneration side.
-    if (column < throttleEdges.length && throttleEdges[column] <= 0) continue;
-    for (let k = at; k < at + CELL_SIZE; k++) {
-      cells[k] += more * drive.losses[k];
-      losses[k] *= 1 + more;
-    }
-  }
   return {
-    ...drive,
-    cells,
-    losses,
-    withoutFuelCut: drive.withoutFuelCut === null ? null : strongerDrive(drive.withoutFuelCut, more),
-    peakForce: (1 + more) * drive.peakForce,
-    peakPower: drive.peakPower === null ? null : (1 + more) * drive.peakPower,
+    ...plan,
+    vehicle: { ...vehicle, drive: scaledDrive(vehicle.drive, { force: 1 + more, regeneration: 1 }) },
   };
 }
