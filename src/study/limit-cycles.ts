@@ -11,8 +11,8 @@ import type { CycleCause, Demand, LimitCycle, Replayed, Stretch } from './findin
 import { courseOfRun } from './hold-course.ts';
 import { chooseBins } from './measure-figure.ts';
 
-/** Amplitude from which a limit cycle is told [m/s]. */
-const LEAST_AMPLITUDE = fromKmh(0.5);
+/** Amplitude from which a limit cycle is told, half of peak to peak [m/s]. */
+export const LEAST_AMPLITUDE = fromKmh(0.5);
 /** Share of its amplitude that an oscillation keeps on a steady road, if the road is not what makes it. */
 const BY_ITSELF = 0.5;
 /** A limit cycle that pauses for no more turns than this, and goes on at a period no further off, is told as one. */

@@ -238,6 +238,10 @@ describe('the report', () => {
     ])
       expect(words).toContain(told);
     expect(wordsOf(page)).not.toContain('gear 6');
+    for (const one of [page, render({ engine: true })])
+      expect(wordsOf(one).replaceAll('\u00a0', ' ')).toContain(
+        'Looked for: ± 0.50 km/h or more in at least 4 turns',
+      );
   });
 
   it('names a limit cycle in the answer, whether or not the design meets what was asked', () => {

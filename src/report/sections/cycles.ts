@@ -1,3 +1,5 @@
+import { LEAST_TURNS } from '../../study/cycle-shape.ts';
+import { LEAST_AMPLITUDE } from '../../study/limit-cycles.ts';
 import { toPct } from '../../units/convert.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
@@ -15,8 +17,9 @@ const MOST_ROWS = 40;
 export function cycles(view: View): Html {
   const { speed, result } = view;
   const heading = html`<h3 id="limit-cycles">Limit cycles</h3>`;
+  const smallest = `Looked for: ±\u00a0${amplitudeText(LEAST_AMPLITUDE, speed)} or more in at least ${LEAST_TURNS} turns; smaller ones are not told.`;
   if (result.cycles.length === 0)
-    return html`${heading}<p>No candidate was found to swing by itself: no oscillation of the speed error that the road does not ask for.</p>`;
+    return html`${heading}<p>No candidate was found to swing by itself: no oscillation of the speed error that the road does not ask for. ${smallest}</p>`;
   const rows = result.cycles.slice(0, MOST_ROWS).map((cycle): HtmlValue[] => {
     const candidate = view.candidates.find(({ name }) => name === cycle.candidate);
     return [
@@ -30,7 +33,7 @@ export function cycles(view: View): Html {
     ];
   });
   const more = result.cycles.length - rows.length;
-  return html`${heading}<p>Oscillations that a loop keeps going by itself, found in the speed error and not asked for by the road. Each was replayed with one thing taken away at a time: what makes it die down is its cause.</p>
+  return html`${heading}<p>Oscillations that a loop keeps going by itself, found in the speed error and not asked for by the road. Each was replayed with one thing taken away at a time: what makes it die down is its cause. ${smallest}</p>
 ${table(
   'Limit cycles',
   [
