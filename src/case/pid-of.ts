@@ -44,7 +44,9 @@ export function pidOf(file: FamilyFile, gains: GainsOfCandidate, context: Candid
           },
     rateLimit: file.rate_limit_pct_per_s === undefined ? null : fromPct(file.rate_limit_pct_per_s),
     schedule: file.schedule === undefined ? null : scheduleOf(file.schedule, context),
-    model: modelled ? { mass: file.model_mass_kg ?? null, surroundings: context.surroundings } : null,
+    model: modelled
+      ? { mass: file.model_mass_kg ?? context.vehicle.mass, surroundings: context.surroundings }
+      : null,
     feedforward: feedforward === undefined ? null : feedforwardOf(feedforward),
     observerFilter: observer === undefined ? null : 1 / fromHz(observer.filter_hz),
     ramp: file.setpoint_ramp_m_s2 ?? null,

@@ -80,7 +80,12 @@ export const familyFields = {
     }),
   ),
   model_mass_kg: optional(
-    number('kg', 20, 5000, "Mass that feedforward and observer reckon with; left out: the vehicle's own"),
+    number(
+      'kg',
+      20,
+      5000,
+      'Mass that feedforward and observer reckon with, whatever is loaded; left out: that of the vehicle in its file',
+    ),
   ),
 } as const;
 

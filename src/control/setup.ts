@@ -137,10 +137,10 @@ export interface ScheduleRow {
   readonly integral: Float64Array;
 }
 
-/** What a controller takes for the vehicle and the air: the vehicle itself but for its mass. */
+/** What a controller takes for the vehicle and the air: the vehicle that it runs on, but with a mass of its own, which no load changes. */
 export interface ModelSetup {
-  /** [kg]; null: the vehicle's own. */
-  readonly mass: number | null;
+  /** [kg] */
+  readonly mass: number;
   readonly surroundings: Surroundings;
 }
 

@@ -36,8 +36,7 @@ export interface VehicleModel {
  */
 export function vehicleModel(setup: ModelSetup, vehicle: Vehicle, low: number, high: number): VehicleModel {
   const { drive } = vehicle;
-  const { surroundings } = setup;
-  const mass = setup.mass ?? vehicle.mass;
+  const { surroundings, mass } = setup;
   const derate = derateFactor(drive, surroundings.airDensity, surroundings.airTemperature);
   const drags = Float64Array.from({ length: SPEEDS }, (_, i) =>
     requiredForce({ ...vehicle, mass }, SPEED_STEP * i, surroundings),

@@ -239,7 +239,7 @@ describe('what is linear', () => {
   });
 
   it('is no loop whose rounding, dead band, observer or accelerometer counts, and it says so', () => {
-    const model = { mass: null, surroundings: stillAndLevel(1.2, 288.15) };
+    const model = { mass: 260, surroundings: stillAndLevel(1.2, 288.15) };
     const none = (setup: ControllerSetup): string => {
       const linear = linearController(setup);
       return 'none' in linear ? linear.none : '';

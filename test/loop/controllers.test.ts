@@ -23,7 +23,7 @@ const at50Hz: PidSetup = {
 };
 const knowing = (feedforward: FeedforwardSetup): PidSetup => ({
   ...at50Hz,
-  model: { mass: null, surroundings: AIR },
+  model: { mass: 260, surroundings: AIR },
   feedforward,
 });
 const hold = { setSpeed: 25, setSpeedIs: 'true_speed', startSpeed: 25, changes: [] } as const;
@@ -95,7 +95,7 @@ describe('the disturbance observer', () => {
       kp: 0,
       ki: 0,
       sample: 0.001,
-      model: { mass: null, surroundings: { ...AIR, headwind: 0 } },
+      model: { mass: 200, surroundings: { ...AIR, headwind: 0 } },
       observerFilter: tq,
     };
     const grade = 0.02;
@@ -114,7 +114,7 @@ describe('the disturbance observer', () => {
   test('halves what a hill costs, and its closed form says by how much more with a shorter filter', () => {
     const observing = (observerFilter: number): PidSetup => ({
       ...at50Hz,
-      model: { mass: null, surroundings: AIR },
+      model: { mass: 260, surroundings: AIR },
       observerFilter,
     });
     expect(worst(observing(1))).toBeLessThan(0.5 * worst(at50Hz));
@@ -153,7 +153,7 @@ test('both schemes agree about every kind, within what the fast one is good for'
   for (const controller of [
     { ...at50Hz, form: { kind: 'velocity' } } as PidSetup,
     knowing({ drag: true, grade: { kind: 'accelerometer', filter: 0.3, pitchError: 0 } }),
-    { ...at50Hz, model: { mass: null, surroundings: AIR }, observerFilter: 1 } as PidSetup,
+    { ...at50Hz, model: { mass: 260, surroundings: AIR }, observerFilter: 1 } as PidSetup,
   ]) {
     const run = (scheme: 'exact' | 'fast') =>
       runLoop(planOver(road, referenceMotorcycle, { controller, hold, scheme }));

@@ -26,7 +26,8 @@ function integralWords(rule: IntegralRule, speed: SpeedUnit): string {
 const percent = (ratio: number): string => withUnit(significant(toPct(ratio), 3), '%');
 const seconds = (time: number): string => withUnit(significant(time, 3), 's');
 const kilograms = (mass: number): string => withUnit(significant(mass, 4), 'kg');
-const every = (sample: number): string => `every ${withUnit(significant(sample * 1000, 3), 'ms')}`;
+const every = (sample: number): string =>
+  `every ${withUnit(fixed(sample * 1000, Number.isInteger(Math.round(sample * 1e6) / 1000) ? 0 : 1), 'ms')}`;
 
 /** A design ends with its gains, which stand before it here. */
 const GAINS_AGAIN = /: kp \S+ % per km\/h, ki \S+ % per km\/h s/;
@@ -89,7 +90,7 @@ function familyWords(setup: PidSetup, speed: SpeedUnit): readonly string[] {
     );
   words.push(...feedforwardWords(setup));
   if (observerFilter !== null) words.push(`disturbance observer with a filter of ${seconds(observerFilter)}`);
-  if (model !== null && model.mass !== null) words.push(`reckoning with ${kilograms(model.mass)}`);
+  if (model !== null) words.push(`reckoning with ${kilograms(model.mass)}`);
   return words;
 }
 
