@@ -15,7 +15,11 @@ export default defineConfig({
     emptyOutDir: false,
     minify: false,
     rolldownOptions: {
-      input: { cli: `${root}src/cli/main.ts`, index: `${root}src/index.ts` },
+      input: {
+        cli: `${root}src/cli/main.ts`,
+        'cell-worker': `${root}src/cli/cell-worker.ts`,
+        index: `${root}src/index.ts`,
+      },
       output: { entryFileNames: '[name].js', chunkFileNames: 'chunks/[name]-[hash].js' },
     },
   },

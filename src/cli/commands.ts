@@ -27,6 +27,11 @@ export const OPTIONS = {
     choices: ['kmh', 'mph'],
     about: 'speeds that people read, in km/h (the default) or mph; data files stay metric',
   },
+  threads: {
+    type: 'string',
+    value: 'N',
+    about: 'threads for the combinations of a matrix; as many as cores where it is left out',
+  },
   junit: {
     type: 'string',
     value: 'FILE',
@@ -54,11 +59,12 @@ export const COMMANDS = {
     details: [
       'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name> (for a file called case.yaml, out/<name of its folder>).',
       'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are replaced or removed: a file that no run wrote is refused.',
+      'A matrix in the case (loads, winds, directions, gears, set speeds) is replayed in every combination, side by side where there are cores; the results are the same for any number of threads.',
       'Refused for its size: a road of more than 2,000,000 knots; runs of more than 500,000,000 controller samples, or tables of more than 2,000,000 rows, over all candidates.',
       'JUnit XML has one test suite a candidate and one test case a requirement: not met is a failure, not judged an error, too close to call is skipped. Of files that are there already only an earlier one of ridgehold is written over.',
-      'Exit status: 0 done; 1 done, but a requirement is not met; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
+      'Exit status: 0 done; 1 done, but a requirement is not met, in the run itself or in a combination; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
     ],
-    options: ['out', 'set', 'junit', 'json', 'quiet', 'units', 'help'],
+    options: ['out', 'set', 'junit', 'threads', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold run night-post.yaml --set hold.set_speed_kmh=70 -o out/at-70',
   },
   road: {

@@ -9,7 +9,7 @@ if (major < REQUIRED[0] || (major === REQUIRED[0] && minor < REQUIRED[1])) {
   process.exitCode = 2;
 } else {
   const { main } = await import('./program.ts');
-  process.exitCode = await main(process.argv.slice(2));
+  process.exitCode = await main(process.argv.slice(2), import.meta.url);
 }
 
 export {};

@@ -5,7 +5,11 @@ import { commandHelp, programHelp } from './help.ts';
 import { parseCommandLine } from './parse-command-line.ts';
 import { tellFailure } from './tell-failure.ts';
 
-type Handler<Name extends CommandName> = (invocation: Invocation<Name>) => number;
+/** @param program where the program stands */
+type Handler<Name extends CommandName> = (
+  invocation: Invocation<Name>,
+  program: string,
+) => number | Promise<number>;
 
 // Loaded when they are called for: --version does not wait for the parsers of XML and YAML.
 const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> } = {
@@ -16,18 +20,22 @@ const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> }
   schema: async () => (await import('./schema-command.ts')).schemaCommand,
 };
 
-async function perform<Name extends CommandName>(invocation: Invocation<Name>): Promise<number> {
+async function perform<Name extends CommandName>(
+  invocation: Invocation<Name>,
+  program: string,
+): Promise<number> {
   const handler = await HANDLERS[invocation.command]();
-  return handler(invocation);
+  return handler(invocation, program);
 }
 
 /**
  * The program: reads the command line, does what it says, tells people what went wrong.
  *
  * @param argv what stands behind the program's name
+ * @param program URL of the file that was started
  * @returns the exit status
  */
-export async function main(argv: readonly string[]): Promise<number> {
+export async function main(argv: readonly string[], program: string): Promise<number> {
   // `ridgehold ... --json | head` closes the pipe early: that is no fault.
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {
     if (error.code !== 'EPIPE') throw error;
@@ -42,7 +50,7 @@ export async function main(argv: readonly string[]): Promise<number> {
         process.stdout.write(request.command === null ? programHelp() : commandHelp(request.command));
         return DONE;
       case 'command':
-        return await perform(request.invocation);
+        return await perform(request.invocation, program);
     }
   } catch (error) {
     return tellFailure(error);

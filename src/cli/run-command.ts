@@ -7,22 +7,31 @@ import { junitXml } from '../report/junit-xml.ts';
 import { answerOf } from '../report/model/answer.ts';
 import { viewOf } from '../report/model/view.ts';
 import { renderReport } from '../report/render-report.ts';
-import { runCase } from '../run/run-case.ts';
+import { runWithoutMatrix } from '../run/run-case.ts';
 import type { RunResult } from '../run/run-result.ts';
+import { matrixWords, shareOfMatrix, withMatrix } from '../run/with-matrix.ts';
 import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
 import { checkJunitFile } from './junit-file.ts';
+import { matrixLines } from './matrix-lines.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { requirementLines } from './requirement-lines.ts';
 import { checkFolder, writeResult } from './result-folder.ts';
+import { runCells } from './run-cells.ts';
 import { say, tellWarnings } from './tell.ts';
 import { writeText } from './write-text.ts';
 
+const MOST_THREADS = 256;
+
 /** `ridgehold run CASE`: replays the case, writes the result whole, tells people the answer. */
-export function runCommand({ operands: [path], values }: Invocation<'run'>): number {
+export async function runCommand(
+  { operands: [path], values }: Invocation<'run'>,
+  program: string,
+): Promise<number> {
   refuseTrack(path);
+  const threads = threadsOf(values.threads);
   const folder = values.out ?? defaultFolder(path);
   checkFolder(folder, ['report.html', 'summary.json']);
   if (values.junit !== undefined) checkJunitFile(values.junit);
@@ -31,14 +40,16 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
   const units = values.units ?? 'kmh';
   let run: RunResult;
   try {
-    run = reader.telling(() =>
-      runCase({
-        file: reader.file,
-        read: reader.read,
-        overrides: values.set,
-        ...(values.quiet ? {} : { onProgress: bar.show }),
-      }),
+    const onProgress = values.quiet ? () => {} : bar.show;
+    const { run: alone, matrix } = reader.telling(() =>
+      runWithoutMatrix({ file: reader.file, read: reader.read, overrides: values.set, onProgress }),
     );
+    run = alone;
+    if (matrix !== null) {
+      const onDone = (done: number): void =>
+        onProgress(shareOfMatrix(matrix, done), matrixWords(matrix, done));
+      run = withMatrix(alone, matrix, await runCells(matrix, { program, threads, onDone }));
+    }
   } finally {
     bar.clear();
   }
@@ -56,11 +67,26 @@ export function runCommand({ operands: [path], values }: Invocation<'run'>): num
   if (!values.quiet) {
     say(answerOf(viewOf(run, units)).sentence);
     for (const line of requirementLines(run.requirements, units)) say(line);
+    if (run.matrix !== null) for (const line of matrixLines(run.matrix, units)) say(line);
     tellWarnings(run.warnings, reader.seen);
     say(`The report is at ${join(folder, 'report.html')}`);
   }
   if (values.json) process.stdout.write(summary);
   return statusOf(run);
+}
+
+/** null: not said. */
+function threadsOf(text: string | undefined): number | null {
+  if (text === undefined) return null;
+  const count = /^\d{1,3}$/.test(text) ? Number(text) : 0;
+  if (count < 1 || count > MOST_THREADS)
+    throw new InputError({
+      code: 'option-value',
+      place: {},
+      message: `--threads cannot be '${text}'`,
+      allowed: `a whole number from 1 to ${MOST_THREADS}`,
+    });
+  return count;
 }
 
 function refuseTrack(path: string): void {

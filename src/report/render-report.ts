@@ -9,6 +9,7 @@ import { energySection } from './sections/energy-section.ts';
 import { forceSection } from './sections/force-section.ts';
 import { hillsSection } from './sections/hills-section.ts';
 import { lanesSection } from './sections/lanes-section.ts';
+import { matrixSection } from './sections/matrix-section.ts';
 import { methodSection } from './sections/method-section.ts';
 import { roadSection } from './sections/road-section.ts';
 import type { Section } from './sections/section.ts';
@@ -19,10 +20,12 @@ export interface ReportOptions {
   readonly units: Units;
 }
 
-/** All sections of the page in order, each by its id. */
+/** All sections of the page in order, each by its id, numbered from 1. */
 export function reportSections(view: View): readonly Section[] {
+  const { matrix } = view.result;
   return [
     answerSection(view),
+    ...(matrix === null ? [] : [matrixSection(view, matrix)]),
     roadSection(view),
     candidatesSection(view),
     forceSection(view),
@@ -31,7 +34,7 @@ export function reportSections(view: View): readonly Section[] {
     whereSection(view),
     energySection(view),
     methodSection(view),
-  ];
+  ].map((section, i) => ({ ...section, number: i + 1 }));
 }
 
 /**

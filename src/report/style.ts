@@ -65,6 +65,10 @@ table .small{font-size:.94em}
 .wrap.what{min-width:13rem}.wrap.reason{max-width:9rem}
 .verdict{font-weight:700;white-space:nowrap}
 .verdict.good{color:var(--good)}.verdict.bad{color:var(--bad)}.verdict.open{color:var(--open)}
+.matrix th,.matrix td{padding:.3rem .28rem;vertical-align:top}.matrix thead th{border-bottom:1px solid var(--grid);border-left:1px solid var(--grid);text-align:center}.matrix thead th.head{border-left:0;text-align:right;font-weight:400;color:var(--muted)}.matrix thead tr:last-child th{border-bottom:2px solid var(--muted)}.matrix tbody th{min-width:8.5rem;white-space:normal}.matrix tbody th .small{font-weight:400}.matrix td{border-left:1px solid var(--grid);text-align:center;line-height:1.3}.matrix td .verdict{white-space:normal}.matrix td .small{color:var(--ink)}.matrix td a{color:inherit}
+.wash.good{background:color-mix(in srgb,var(--good) 9%,var(--page))}.wash.bad{background:color-mix(in srgb,var(--bad) 22%,var(--page))}.wash.open{background:repeating-linear-gradient(45deg,color-mix(in srgb,var(--open) 22%,var(--page)) 0 3px,color-mix(in srgb,var(--open) 8%,var(--page)) 3px 9px)}
+.matrix-line{max-width:52rem}
+.card h4{margin:0 0 .2rem;font-size:.92rem}.card:target{border-color:var(--accent)}
 .cards{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,25rem),1fr));gap:1.2rem;margin:1rem 0}
 .card{border:1px solid var(--grid);border-top:4px solid var(--muted);padding:.7rem .9rem;min-width:0}
 .card h3{margin:0 0 .2rem}

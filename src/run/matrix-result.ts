@@ -6,6 +6,8 @@ import type { FigureValues, RequirementFinding } from '../study/findings.ts';
 export interface MatrixResult {
   /** The lists that the case gives, in the order of the combinations: the last one changes fastest. */
   readonly lists: readonly MatrixList[];
+  /** Which way the case itself drives the road. */
+  readonly direction: Combination['direction'];
   readonly cells: readonly MatrixCell[];
 }
 
@@ -41,7 +43,10 @@ export interface CellRun {
 
 /** Speed error around a place, by distance bin. */
 export interface CellPicture {
-  /** Where the figure was worst; of a figure without a place where the error was greatest. Horizontal distance [m]. */
+  /**
+   * Where the figure was worst; of a figure without a place where the error was greatest, of a run that ended before
+   * the end of what is asked where it ended. Horizontal distance [m].
+   */
   readonly at: number;
   /** Middles of the bins [m]; least, mean and greatest error in each [m/s]. */
   readonly distance: Float64Array;

@@ -26,6 +26,8 @@ import type { Vehicle } from '../vehicle/vehicle.ts';
  */
 export interface MatrixWork {
   readonly lists: readonly MatrixList[];
+  /** Which way the case itself drives the road. */
+  readonly direction: Combination['direction'];
   readonly roads: readonly Road[];
   readonly vehicles: readonly Vehicle[];
   /** With the gains of the case itself: a design is not made anew for each combination. */
@@ -72,7 +74,7 @@ export interface MatrixBase {
 }
 
 /** The matrix of a case with its roads, vehicles and rides; the rest of the work is added once the run itself is done. */
-export type MatrixRides = Pick<MatrixWork, 'lists' | 'roads' | 'vehicles' | 'cells'>;
+export type MatrixRides = Pick<MatrixWork, 'lists' | 'direction' | 'roads' | 'vehicles' | 'cells'>;
 
 /**
  * Makes roads, vehicles and rides of every combination; null where the case has no matrix. A combination that the
@@ -118,7 +120,8 @@ export function matrixRides(base: MatrixBase): MatrixRides | null {
     }
   });
   refuseIdleWinds(base, matrix, roads.all, cells);
-  return { lists: matrix.lists, roads: roads.all, vehicles: vehicles.all, cells };
+  const { direction } = document.file.track;
+  return { lists: matrix.lists, direction, roads: roads.all, vehicles: vehicles.all, cells };
 }
 
 const isOfMatrix = (key: string | undefined): boolean => key?.startsWith('matrix') === true;

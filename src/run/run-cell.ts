@@ -6,7 +6,7 @@ import { demandOf } from '../study/demand.ts';
 import { figureRow } from '../study/figure-table.ts';
 import type { Replayed, Requirement, RequirementFinding } from '../study/findings.ts';
 import { judge } from '../study/judge.ts';
-import { measureFigure } from '../study/measure-figure.ts';
+import { endedEarly, measureFigure } from '../study/measure-figure.ts';
 import { slowestRecoveries } from '../study/slowest-recoveries.ts';
 import { loopPlans, type Setting } from './loop-plans.ts';
 import type { CellOutcome, CellPicture, CellRun } from './matrix-result.ts';
@@ -74,9 +74,11 @@ function ridden(work: MatrixWork, { requirements }: CellPlan, ride: CellRide): C
     });
     return { candidate: candidate.name, status, endDistance, figures: Object.fromEntries(figures) };
   });
-  const pictures = findings.map(({ candidate, worstAt }) => {
+  const pictures = findings.map(({ requirement, candidate, worstAt }) => {
     const run = replayed.find(({ name }) => name === candidate);
-    return run === undefined ? null : pictureOf(run.result.bins, worstAt);
+    if (run === undefined) return null;
+    const { bins, endDistance } = run.result;
+    return pictureOf(bins, endedEarly(run, requirement.where) ? endDistance : worstAt);
   });
   return { reason: null, findings, pictures, runs };
 }

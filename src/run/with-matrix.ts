@@ -12,11 +12,12 @@ import type { RunResult } from './run-result.ts';
  */
 export function withMatrix(
   run: RunResult,
-  { lists, cells }: MatrixWork,
+  { lists, direction, cells }: MatrixWork,
   outcomes: readonly CellOutcome[],
 ): RunResult {
   const matrix: MatrixResult = {
     lists,
+    direction,
     cells: cells.map(({ combination, own }, i) => {
       const outcome = outcomes[i];
       if (outcome === undefined) throw new RangeError(`combination ${i + 1} was not run`);

@@ -105,3 +105,14 @@ it('swings over the slack of a worn cable, and not with a new one', () => {
   expect(brisk()).toContain('slack');
   expect(brisk('vehicle.actuator.slack_pct=0')).not.toContain('slack');
 });
+
+it('loses two up what it holds alone', () => {
+  const { matrix } = run('harrow-matrix.yaml', ['matrix={loads: [solo, two_up], directions: [there, back]}']);
+  const verdicts = (load: string) =>
+    matrix!.cells
+      .filter(({ combination }) => combination.load.label === load)
+      .flatMap(({ findings }) => findings.map(({ verdict }) => verdict));
+  expect(verdicts('solo')).toHaveLength(6);
+  expect(verdicts('solo')).not.toContain('not met');
+  expect(verdicts('two up').filter((verdict) => verdict === 'not met').length).toBeGreaterThanOrEqual(3);
+});

@@ -5,6 +5,7 @@ import { cyclesCsv } from './cycle-table.ts';
 import { disturbanceCsv } from './disturbance.ts';
 import { fullSeriesCsv } from './full-series.ts';
 import { hillsCsv } from './hill-table.ts';
+import { matrixCsv } from './matrix-table.ts';
 import { routeGeoJson } from './route.ts';
 import { segmentsCsv } from './segment-table.ts';
 
@@ -25,6 +26,7 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
     { name: 'segments.csv', text: segmentsCsv(run.segments) },
     { name: 'hills.csv', text: hillsCsv(run.hills) },
     { name: 'cycles.csv', text: cyclesCsv(run.cycles) },
+    ...(run.matrix === null ? [] : [{ name: 'matrix.csv', text: matrixCsv(run.matrix) }]),
     ...run.candidates.map((candidate) => ({
       name: `series-${candidate.name}.csv`,
       text:

@@ -1,5 +1,6 @@
 import type { Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
+import { toPct } from '../../units/convert.ts';
 import {
   bandText,
   changeText,
@@ -15,11 +16,15 @@ import { CAUSE_WORDS } from './cause-words.ts';
 import { cycleClause } from './cycle-words.ts';
 import { figureText } from './figure-text.ts';
 import { hillNoun } from './hill-words.ts';
+import { isUnstable } from './loop-words.ts';
+import { matrixStandings } from './matrix-standing.ts';
+import { combinationText, listWords } from './matrix-words.ts';
 import { settledRange } from './settled-range.ts';
 import { VERDICTS, type Verdict } from './verdicts.ts';
 import type { CandidateView, View } from './view.ts';
 
-export type Standing = Verdict | 'none asked' | 'incomplete';
+/** `met in part`: met where the drive can hold, while the demand beyond it was asked of nobody. */
+export type Standing = Verdict | 'met in part' | 'unstable' | 'none asked' | 'incomplete';
 
 export interface DesignStanding {
   readonly name: string;
@@ -62,7 +67,7 @@ function findingsOf(view: View, name: string): readonly RequirementFinding[] {
   return view.result.requirements.filter((finding) => finding.candidate === name);
 }
 
-/** Best first: reached the end, fewest requirements missed, most time within the band, least rms error, order of the case. */
+/** Best first: reached the end, a loop that is stable, fewest requirements missed, most time within the band, least rms error, order of the case. */
 function bestDesign(view: View): CandidateView | null {
   const score = (candidate: CandidateView): readonly number[] => {
     const cost = findingsOf(view, candidate.name).reduce((sum, one) => sum + VERDICT_COST[one.verdict], 0);
@@ -70,6 +75,7 @@ function bestDesign(view: View): CandidateView | null {
     const rms = candidate.figures.rms_error_kmh;
     return [
       candidate.result.status === 'completed' ? 0 : 1,
+      isUnstable(candidate) ? 1 : 0,
       cost,
       typeof within === 'number' ? -within : 0,
       typeof rms === 'number' ? rms : 0,
@@ -153,7 +159,20 @@ function lockedClause(view: View, alone: boolean): string | null {
 const allOf = (count: number): string =>
   count === 1 ? 'its one requirement' : count === 2 ? 'both requirements' : `all ${count} requirements`;
 
-function requirementClause(findings: readonly RequirementFinding[]): { words: string; standing: Standing } {
+/** Share of the road, as `on the holdable 74 % of the road`, where nothing was asked beyond it; null where something was, or all of it can be held. */
+function holdableOnly(
+  { result: { demand }, speed }: View,
+  findings: readonly RequirementFinding[],
+): string | null {
+  if (demand.holdableShare >= 1 || findings.some(({ requirement }) => requirement.where !== 'holdable'))
+    return null;
+  return `on the holdable ${percent(toPct(demand.holdableShare), speed)} of the road`;
+}
+
+function requirementClause(
+  view: View,
+  findings: readonly RequirementFinding[],
+): { words: string; standing: Standing } {
   if (findings.length === 0) return { words: '', standing: 'none asked' };
   const standing = VERDICTS.find((verdict) => findings.some((one) => one.verdict === verdict))!;
   const some = findings.filter((one) => one.verdict === standing);
@@ -161,15 +180,22 @@ function requirementClause(findings: readonly RequirementFinding[]): { words: st
   const are = some.length === 1 ? 'is' : 'are';
   switch (standing) {
     case 'not met':
-      return { standing, words: `but misses ${some.length} of ${findings.length} requirements (${ids})` };
+      return { standing, words: `but misses ${missed(some.length, findings.length)} (${ids})` };
     case 'too close to call':
       return { standing, words: `and misses no requirement, but ${ids} ${are} too close to call` };
     case 'not judged':
       return { standing, words: `and misses no requirement, but ${ids} cannot be judged on this road` };
-    case 'met':
-      return { standing, words: `and meets ${allOf(findings.length)}` };
+    case 'met': {
+      const where = holdableOnly(view, findings);
+      if (where === null) return { standing, words: `and meets ${allOf(findings.length)}` };
+      return { standing: 'met in part', words: `and meets ${allOf(findings.length)} ${where}` };
+    }
   }
 }
+
+/** `its one requirement`, `1 of 2 requirements`. */
+const missed = (count: number, of: number): string =>
+  of === 1 ? allOf(1) : `${count} of ${of} requirements`;
 
 /** How a design stands against what was asked of it. */
 function designStanding(view: View, design: CandidateView): DesignStanding {
@@ -177,19 +203,39 @@ function designStanding(view: View, design: CandidateView): DesignStanding {
   const { name } = design;
   if (design.result.status !== 'completed')
     return { name, standing: 'incomplete', words: statusWords(design) };
-  const { standing } = requirementClause(findings);
-  if (standing === 'none asked') return { name, standing, words: 'nothing asked' };
+  const { standing } = requirementClause(view, findings);
+  const unstable = isUnstable(design);
+  const told = (words: string): DesignStanding => ({
+    name,
+    standing: standingOf(standing, unstable),
+    words: unstable ? `${words}; its linear loop is unstable` : words,
+  });
+  if (standing === 'none asked') return told('nothing asked');
   const { length } = findings;
-  const count = findings.filter((one) => one.verdict === standing).length;
-  const words =
-    standing !== 'met'
-      ? `${count} of ${length} ${standing}`
-      : length === 1
-        ? 'its one met'
-        : length === 2
-          ? 'both met'
-          : `all ${length} met`;
-  return { name, standing, words };
+  if (standing === 'met' || standing === 'met in part') {
+    const all = length === 1 ? 'its one met' : length === 2 ? 'both met' : `all ${length} met`;
+    const words = standing === 'met' ? all : `${all} where it can be held`;
+    return told(words);
+  }
+  return told(`${findings.filter((one) => one.verdict === standing).length} of ${length} ${standing}`);
+}
+
+/** Nothing that an unstable loop meets is a reason to be pleased. */
+const standingOf = (standing: Standing, unstable: boolean): Standing =>
+  unstable && standing !== 'not met' ? 'unstable' : standing;
+
+/** How the design stands over the matrix; null without one, or where nothing is asked of it. */
+function matrixClause({ result: { matrix }, speed }: View, name: string): string | null {
+  if (matrix === null) return null;
+  const standing = matrixStandings(matrix).find(({ candidate }) => candidate === name);
+  if (standing === undefined) return null;
+  const { counts, combinations, worst } = standing;
+  const lists = listWords(matrix.lists);
+  const where =
+    counts.met === combinations
+      ? ''
+      : `, and is worst at ${combinationText(worst.cell, matrix.lists, speed)}`;
+  return `over ${combinations === 1 ? 'one combination' : `${combinations} combinations`} of ${lists} it meets every requirement in ${counts.met}${where}`;
 }
 
 /** The sentence that opens the page. */
@@ -197,7 +243,7 @@ export function answerOf(view: View): Answer {
   const design = bestDesign(view);
   const designs = view.candidates.filter((one) => !one.locked).map((one) => designStanding(view, one));
   if (design === null) {
-    const asked = requirementClause(view.result.requirements);
+    const asked = requirementClause(view, view.result.requirements);
     const words = lockedClause(view, true) ?? 'Nothing was replayed';
     const within = view.candidates[0] === undefined ? '' : ` and ${withinClause(view, view.candidates[0])}`;
     return {
@@ -207,21 +253,24 @@ export function answerOf(view: View): Answer {
       design: null,
     };
   }
-  const asked = requirementClause(findingsOf(view, design.name));
+  const asked = requirementClause(view, findingsOf(view, design.name));
+  const unstable = isUnstable(design);
   const early = view.candidates.filter((candidate) => candidate.result.status !== 'completed');
   const others = early.filter((candidate) => candidate !== design && !candidate.locked);
   const parts = [
     design.result.status === 'completed'
       ? `${design.name} ${withinClause(view, design)}${asked.words === '' ? '' : `, ${asked.words}`}`
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
+    unstable ? 'its linear loop is unstable, so that it swings on any road' : null,
     hillClause(view, design),
     cycleClause(view, design.name),
     ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),
     lockedClause(view, false),
+    matrixClause(view, design.name),
   ].filter((part) => part !== null);
   return {
     sentence: `${parts.join('; ')}.`,
-    standing: design.result.status === 'completed' ? asked.standing : 'incomplete',
+    standing: design.result.status !== 'completed' ? 'incomplete' : standingOf(asked.standing, unstable),
     designs,
     design: design.name,
   };

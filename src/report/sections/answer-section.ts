@@ -7,7 +7,16 @@ import { figureLabel, figureTextBeside, marginText, readable } from '../model/fi
 import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { bandText, fixed, NO_VALUE, placeText, stretchText, trimmed, withUnit } from '../quantity.ts';
+import {
+  bandText,
+  fixed,
+  NO_VALUE,
+  placeText,
+  type SpeedUnit,
+  stretchText,
+  trimmed,
+  withUnit,
+} from '../quantity.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
 
@@ -16,6 +25,8 @@ export const STANDING: Readonly<
   Record<Standing, { readonly mark: string; readonly words: string; readonly look: string }>
 > = {
   met: { mark: '✓', words: 'All requirements met', look: 'good' },
+  'met in part': { mark: '◐', words: 'Met where the drive can hold, not asked of the rest', look: 'open' },
+  unstable: { mark: '✗', words: 'The loop is unstable', look: 'bad' },
   'not met': { mark: '✗', words: 'A requirement is not met', look: 'bad' },
   'too close to call': { mark: '≈', words: 'Too close to call', look: 'open' },
   'not judged': { mark: '○', words: 'Not all of it can be judged', look: 'open' },
@@ -61,7 +72,7 @@ function requirementTable(view: View): Html {
       html`<span class="who">${candidate !== undefined && lineKey(candidate, PAGE_PAINT)} ${finding.candidate}</span>${ended !== null && html`<br><span class="who small">ended at ${placeText(ended)}</span>`}`,
       asked(view, finding),
       measured(view, finding, unit, ended),
-      limit(view, finding, unit),
+      limitText(finding, view.speed),
       ended === null ? marginText(finding.margin, unit, view.speed) : NO_VALUE,
       finding.worstAt === null ? NO_VALUE : placeText(Math.min(finding.worstAt, ended ?? finding.worstAt)),
     ];
@@ -124,9 +135,11 @@ function spreadText(view: View, { measured: value, spread, requirement }: Requir
   return `± ${fixed(wide, wide >= 1 ? 0 : wide >= 0.05 ? 1 : 2)}`;
 }
 
-function limit(view: View, { requirement }: RequirementFinding, unit: string): string {
+/** What a requirement allows: `≥ 95 %`. */
+export function limitText({ requirement }: RequirementFinding, speed: SpeedUnit): string {
+  const { unit } = figureLabel(requirement.figure);
   const text = (value: number): string => {
-    const shown = readable(value, unit, view.speed);
+    const shown = readable(value, unit, speed);
     return withUnit(trimmed(shown.value, shown.unit === 'mph' ? 1 : 3), shown.unit);
   };
   const bounds = [

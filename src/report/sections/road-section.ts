@@ -61,8 +61,8 @@ function windWords(view: View): string {
 function caption(view: View): Html {
   const { smoothing, rawElevation } = view.result.road;
   if (smoothing === null)
-    return html`Elevation as given, without smoothing${rawElevation === null && ', from a written profile'}. Brackets: hills of section 6; bold: more, or less, than the drive has.`;
-  return html`Strong: smoothed (${smoothing.source} source, half gain at ${lengthText(smoothing.wavelength)})${rawElevation !== null && '; faint: as measured'}. A hill shorter than ${lengthText(smoothing.shortestHill)} is not resolved. Elevation noise ${fixed(smoothing.residualSd, 1)} m, grade of the source uncertain by ${gradeText(smoothing.sourceGradeSd).replace('+', '')} (one s.d.). Brackets: hills of section 6; bold: more, or less, than the drive has.`;
+    return html`Elevation as given, without smoothing${rawElevation === null && ', from a written profile'}. Brackets: <a href="#hills">hills</a>; bold: more, or less, than the drive has.`;
+  return html`Strong: smoothed (${smoothing.source} source, half gain at ${lengthText(smoothing.wavelength)})${rawElevation !== null && '; faint: as measured'}. A hill shorter than ${lengthText(smoothing.shortestHill)} is not resolved. Elevation noise ${fixed(smoothing.residualSd, 1)} m, grade of the source uncertain by ${gradeText(smoothing.sourceGradeSd).replace('+', '')} (one s.d.). Brackets: <a href="#hills">hills</a>; bold: more, or less, than the drive has.`;
 }
 
 function gradeCaption(view: View): Html {
