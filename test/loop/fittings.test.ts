@@ -189,10 +189,13 @@ describe.each(['exact', 'fast'] as const)('energy drawn in the loop (%s)', (sche
     const road = roadOver(stations(4000, 50), { grade: () => 0.06 });
     const { ledger, status, endDistance } = runLoop({ ...ridden({ ...battery, charge: 0.3 }), road });
     expect(status).toBe('stopped');
-    expectClose(ledger.drawn!, 300_000, 1e-6);
-    expect(ledger.chargeAtEnd).toBe(0);
+    // It ends with what one sample more would take: less than 900 N over 17 m/s.
+    const left = 300_000 - ledger.drawn!;
+    expect(left).toBeGreaterThanOrEqual(0);
+    expect(left).toBeLessThan(900 * 17 * SAMPLE);
+    expectClose(ledger.chargeAtEnd!, left / 1e6, 1e-12);
     // Charge and kinetic energy go into the hill, the tyres and the air.
-    expectClose(ledger.drive, 300_000, 200);
+    expectClose(ledger.drive, 300_000 - left, 200);
     expect(endDistance).toBeLessThan((300_000 + 0.5 * 260 * 17 * 17) / (260 * 9.80665 * 0.075));
   });
 
