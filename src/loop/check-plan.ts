@@ -30,7 +30,13 @@ export function checkPlan(plan: LoopPlan): void {
   for (const [i, change] of hold.changes.entries())
     above(`hold.changes[${i}].setSpeed`, change.setSpeed, 0, 'm/s');
   const { gearbox, gears } = plan.vehicle.drive;
-  for (const [i, { gear }] of plan.rider.shifts.entries())
+  const { shifts } = plan.rider;
+  for (const [i, { distance }] of shifts.entries()) {
+    const before = shifts[i - 1]?.distance ?? Number.NEGATIVE_INFINITY;
+    if (!(Number.isFinite(distance) && distance >= before))
+      refuse(`rider.shifts[${i}].distance`, `${distance} m`, i === 0 ? 'a distance' : `at least ${before} m`);
+  }
+  for (const [i, { gear }] of shifts.entries())
     if (gearbox.kind === 'clutch' && gears[gear] === undefined)
       refuse(`rider.shifts[${i}].gear`, `gear ${gear}`, `0 to ${gears.length - 1}`);
   if (plan.timeLimit / sample > MOST_SAMPLES) refuse('timeLimit', `${plan.timeLimit} s`, '1e9 samples');

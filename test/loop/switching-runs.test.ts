@@ -137,6 +137,19 @@ test.each([-1, 1.5, 3])('a plan that shifts to gear %s of three is refused', (ge
   expect(() => runLoop({ ...plan, rider })).toThrow(expect.objectContaining({ code: 'out-of-range' }));
 });
 
+test.each([[[Number.NaN]], [[Number.POSITIVE_INFINITY]], [[100, 400, 300]]])(
+  'a plan whose shifts have no places in order along the way is refused: %s',
+  (places) => {
+    const rider = { brakesAbove: null, shifts: places.map((distance) => ({ distance, gear: 0 })) };
+    const key = `rider.shifts[${places.length - 1}].distance`;
+    expect(() => runLoop({ ...over(vehicles[1]![1], 'exact'), rider })).toThrow(
+      expect.objectContaining({
+        problems: [expect.objectContaining({ code: 'out-of-range', place: { key } })],
+      }),
+    );
+  },
+);
+
 test('over random vehicles that switch: energy closes, every number is finite', () => {
   const number = (min: number, max: number) => fc.double({ min, max, noNaN: true });
   const anyDrive = fc.constantFrom(
