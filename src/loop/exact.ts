@@ -126,7 +126,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     log[line + at.L_COMMAND] = s[BUS_COMMAND];
     tick++;
 
-    const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
+    const brakeSpeed = Math.min(s[BUS_REFERENCE], s[at.BRAKE_REFERENCE]) * toTrue + brakesAbove;
     let limited = false;
     let slope0 = 0;
     let travelled = 0;

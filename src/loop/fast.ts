@@ -119,7 +119,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     log[line + at.L_COMMAND] = s[BUS_COMMAND];
     tick++;
 
-    const brakeSpeed = s[BUS_REFERENCE] * toTrue + brakesAbove;
+    const brakeSpeed = Math.min(s[BUS_REFERENCE], s[at.BRAKE_REFERENCE]) * toTrue + brakesAbove;
     const limited = u - y - rateGap > NO_GAP || y - u - rateGap > NO_GAP;
     let slope0 = 0;
     let travelled = 0;

@@ -6,6 +6,7 @@ import {
   BUS_MEASURED,
   BUS_PROPORTIONAL,
   BUS_REFERENCE,
+  BUS_REFERENCE_STEP,
   BUS_TARGET,
 } from '../control/bus.ts';
 import type { Controller } from '../control/controller.ts';
@@ -52,7 +53,8 @@ export interface Gearbox {
  *
  * Clutch: at the place of a planned shift hold is cancelled, the clutch opened and the command 0 for `open`. Then the
  * new gear is engaged with the throttle that holds the speed there, for `resume`; then hold resumes without a bump, the
- * reference from the measured speed to the set speed at the controller's ramp or at 0.5 m/s2. A shift whose place is
+ * reference from the measured speed to the set speed, at the rate of a change that is still under way, or else at the
+ * controller's ramp or at 0.5 m/s2. The rider's brake goes by no more than the reference before. A shift whose place is
  * passed while another is under way follows it.
  *
  * Planned shifts that lie at or before the start of a run are taken as made. Where a plan with fixed gears or a clutch has
@@ -108,8 +110,7 @@ export function gearbox(machine: Machine, plan: LoopPlan, lock: () => void): Gea
     }
     if (s[at.SHIFT_PART] === RIDERS_THROTTLE && ended(s)) {
       s[at.SHIFT_PART] = NONE;
-      s[BUS_REFERENCE] = s[BUS_MEASURED];
-      setTarget(s, s[BUS_TARGET], machine.controller.ramp ?? RESUME_RAMP, sample);
+      resumeReference(s, machine.controller.ramp ?? RESUME_RAMP, sample);
       machine.controller.engage(s);
       lock();
     }
@@ -166,6 +167,16 @@ export function gearInForce(plan: LoopPlan, distance: number): number {
 
 function ended(s: Float64Array): boolean {
   return s[at.TICK] >= s[at.SHIFT_UNTIL];
+}
+
+/** The reference starts at the measured speed again; what the rider brakes for does not rise with it. */
+function resumeReference(s: Float64Array, ramp: number, sample: number): void {
+  const target = s[BUS_TARGET];
+  const before = s[BUS_REFERENCE];
+  const changes = before !== target && Number.isFinite(s[BUS_REFERENCE_STEP]);
+  s[at.BRAKE_REFERENCE] = Math.max(Math.min(before, s[at.BRAKE_REFERENCE]), target);
+  s[BUS_REFERENCE] = s[BUS_MEASURED];
+  if (!changes) setTarget(s, target, ramp, sample);
 }
 
 /** Counts the planned shifts that have been made, and engages the gear in force where the machine has another. */

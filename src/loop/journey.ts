@@ -54,6 +54,7 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
   };
   const change = (setSpeed: number, made: SetSpeedChange | null): void => {
     setTarget(s, setSpeed, made?.ramp ?? machine.controller.ramp, sample);
+    s[at.BRAKE_REFERENCE] = Math.max(s[at.BRAKE_REFERENCE], setSpeed);
     markLock(machine, plan);
   };
   const makeChanges = (): void => {

@@ -66,8 +66,10 @@ export const START_MASS = 70;
 /** What a sensor of the slope keeps: the row of the road in which it reads, its reading before; see sense-slope.ts. */
 export const SLOPE_ROW = 71;
 export const SLOPE_READING = 72;
+/** Reference beyond which the rider's brake does not go, in the units of the set speed; Infinity: that of the hold. */
+export const BRAKE_REFERENCE = 74;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 74;
+export const HISTORY = 75;
 export const HISTORY_STRIDE = 3;
 
 // --- chunk: sums over the samples that a kernel has just run, works and energies [J] ---

@@ -35,6 +35,7 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   s[at.SPEED] = v;
   s[at.START_SPEED] = v;
   s[at.FILTERED] = v;
+  s[at.BRAKE_REFERENCE] = Number.POSITIVE_INFINITY;
   settleSource(machine);
   settleGear(machine, plan, gearInForce(plan, distanceAt(plan.road, station)));
   // An automatic gearbox has shifted up or down as far as its lines ask, a gear at a time.

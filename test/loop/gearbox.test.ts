@@ -248,6 +248,53 @@ describe.each(['exact', 'fast'] as const)('a planned shift on a clutch gearbox (
     expectClose(seen.speed[seen.size - 1]!, 14, 0.01);
   });
 
+  it('goes on with the rate of a change of set speed that is under way', () => {
+    const slow = whole(
+      down({
+        hold: {
+          setSpeed: 17,
+          setSpeedIs: 'true_speed',
+          startSpeed: 17,
+          changes: [{ at: { distance: 300 }, setSpeed: 12, ramp: 0.1 }],
+        },
+      }),
+    );
+    const end = shifting(slow).at(-1)! + 1;
+    const start = slow.speed[end]!;
+    const ticks = Math.floor((start - 12) / (0.1 * SAMPLE)) - 1;
+    expect(ticks * SAMPLE).toBeGreaterThan(30);
+    for (let i = 0; i < ticks; i += 50)
+      expectClose(slow.reference[end + i]!, start - 0.1 * SAMPLE * (i + 1), 1e-5);
+  });
+
+  it('lets the rider brake for no more overspeed than before', () => {
+    // The hold resumes at the overspeed itself, but the rider still brakes above the set speed.
+    const steep = down({
+      road: roadOver(stations(2000, 50), { grade: () => -0.14 }),
+      rider: { brakesAbove: 2, shifts: [500, 900].map((distance, i) => ({ distance, gear: [1, 2][i]! })) },
+    });
+    const run = runLoop(steep);
+    expect(run.shifts).toHaveLength(2);
+    const fastest = run.bins.errorMax.reduce((most, e) => Math.max(most, e), 0);
+    expectClose(fastest, 2, 0.001);
+    expect(run.ledger.residual).toBeLessThan(1e-6);
+  });
+
+  it('lets the rider follow a set speed that rises after the shift', () => {
+    const rising = down({
+      road: roadOver(stations(3000, 50), { grade: () => -0.14 }),
+      rider: { brakesAbove: 2, shifts: [{ distance: 500, gear: 1 }] },
+      hold: {
+        setSpeed: 17,
+        setSpeedIs: 'true_speed',
+        startSpeed: 17,
+        changes: [{ at: { distance: 1200 }, setSpeed: 20, ramp: null }],
+      },
+    });
+    const { bins } = runLoop(rising);
+    expectClose(bins.speedMax[bins.size - 1]!, 22, 0.001);
+  });
+
   it('is followed by the next whose place has been passed meanwhile; the gear in hand needs none', () => {
     const shifts = [500, 505, 510].map((distance, i) => ({ distance, gear: [1, 1, 0][i]! }));
     const run = runLoop(down({ rider: { brakesAbove: null, shifts } }));
