@@ -14,6 +14,11 @@ export function engageGear(machine: Machine, gear: number): void {
   const { s } = machine;
   const before = s[at.EFFECTIVE_MASS];
   loadGear(machine, gear);
+  bookTurning(s, before);
+}
+
+/** Books the kinetic energy that a change of effective mass at one speed has taken away. */
+export function bookTurning(s: Float64Array, before: number): void {
   const lost = 0.5 * (before - s[at.EFFECTIVE_MASS]) * s[at.SPEED] * s[at.SPEED];
   s[at.SHIFT_WORK] += lost;
   s[at.WORK_MAGNITUDE] += Math.abs(lost);

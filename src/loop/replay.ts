@@ -1,6 +1,6 @@
 import { cellOf } from '../numeric/interpolate.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
-import { loadBelt } from './belt.ts';
+import { loadBelt, turnsAlong } from './belt.ts';
 import { buildMachine } from './build-machine.ts';
 import { checkPlan } from './check-plan.ts';
 import { loadGear, stallSpeed } from './engage-gear.ts';
@@ -95,8 +95,9 @@ function restore(machine: Machine, { state }: Checkpoint): void {
   // Another vehicle has other gears, masses and cells; at an edge of the same one, either side is right and must stay.
   const speedCell = s[at.SPEED_CELL];
   const ratio = s[at.RATIO];
+  const turns = turnsAlong(machine);
   loadGear(machine, Math.min(s[at.GEAR], gears.length / 2 - 1));
-  if (belt !== null) loadBelt(machine, Math.min(Math.max(ratio, belt.least), belt.greatest));
+  if (belt !== null) loadBelt(machine, Math.min(Math.max(ratio, belt.least), belt.greatest), turns);
   if (holds(speedEdges, speedCell, s[at.RATIO] * s[at.SPEED])) s[at.SPEED_CELL] = speedCell;
   if (!holds(throttleEdges, s[at.THROTTLE_CELL], s[at.THROTTLE]))
     s[at.THROTTLE_CELL] = cellIndex(throttleEdges, s[at.THROTTLE]);

@@ -69,7 +69,10 @@ function settleGear(machine: Machine, plan: LoopPlan, gear: number): void {
     controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
   const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
   loadGear(machine, gear);
-  if (drive.belt !== null) loadBelt(machine, beltRatio(drive.belt, v, throttle));
+  if (drive.belt !== null) {
+    const ratio = beltRatio(drive.belt, v, throttle);
+    loadBelt(machine, ratio, ratio * v >= drive.belt.locked);
+  }
   s[at.START_MASS] = s[at.EFFECTIVE_MASS];
   const push = wheelForce(drive, gear, v, throttle, throttle < 0 ? held : pushed);
   s[at.ACCELERATION] = (push - force) / s[at.EFFECTIVE_MASS];

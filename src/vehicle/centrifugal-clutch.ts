@@ -50,13 +50,31 @@ export function throughClutch(table: CombustionTable, begins: number, locked: nu
   };
 }
 
-/** What the engine burns while the clutch slips is what it burns at the locked speed. */
-export function burntThroughClutch(map: PowerMap, locked: number): PowerMap {
+/** A clutch that passes on less than this is open [N m]: at closed throttle the engine idles behind it. */
+const NEXT_TO_NOTHING = 0.2;
+
+/**
+ * What the engine burns while the clutch slips: at the locked speed, where it has the torque that is passed on. Where the
+ * clutch is open and passes on nothing it idles; between the two, and from where the clutch begins to close at closed
+ * throttle to where it is locked, on straight lines.
+ *
+ * @param map of the engine
+ * @param clutch shaft speeds between which it closes [rad/s]
+ * @param idle [rad/s]
+ */
+export function burntThroughClutch(
+  map: PowerMap,
+  { begins, locked }: { readonly begins: number; readonly locked: number },
+  idle: number,
+): PowerMap {
   const speeds = [...map.shaftSpeed.filter((w) => w > locked)];
-  const shaftSpeed = Float64Array.of(0, locked, ...speeds, 2 * (speeds.at(-1) ?? locked));
+  const shaftSpeed = Float64Array.of(0, begins, locked, ...speeds, 2 * (speeds.at(-1) ?? locked));
+  const torque = Float64Array.from(new Set([...map.torque, 0, NEXT_TO_NOTHING])).sort();
   const free = { ...map, least: Number.NEGATIVE_INFINITY };
   const rows = Array.from(shaftSpeed, (w) =>
-    Array.from(map.torque, (torque) => powerDrawn(free, Math.max(w, locked), torque)),
+    Array.from(torque, (t) =>
+      w <= begins && t <= 0 ? powerDrawn(map, idle, 0) : powerDrawn(free, Math.max(w, locked), t),
+    ),
   );
-  return { ...map, shaftSpeed, power: Float64Array.from(rows.flat()) };
+  return { ...map, shaftSpeed, torque, power: Float64Array.from(rows.flat()) };
 }

@@ -95,4 +95,6 @@ export interface Belt {
   readonly lag: number;
   /** Of what turns before the belt [kg m2]. */
   readonly inertia: number;
+  /** Shaft speed [rad/s] below which the clutch slips: the engine keeps its own speed there, and its inertia plays no part. 0: never. */
+  readonly locked: number;
 }

@@ -43,7 +43,7 @@ export interface LinearVehicle {
  * Mass that the wheel force must accelerate: mass, turning wheels, and what turns before the gear [kg]. A belt between its
  * limits keeps the engine's speed whatever the vehicle does, so that the engine's inertia then plays no part: with
  * m_e = m + J r^2 and w = r v kept, the energy that the belt takes from the engine is J r^2 v dv/dt. Faster than the
- * belt's lag the ratio stands, and m + J r^2 counts.
+ * belt's lag the ratio stands, and m + J r^2 counts. Where the clutch slips the engine keeps its own speed: m alone.
  *
  * @param speed [m/s] and
  * @param throttle for the ratio of a belt; without them a belt is at its greatest ratio
@@ -59,7 +59,8 @@ export function effectiveMass(
   const mass = vehicle.mass + vehicle.rotatingMass;
   if (belt === null || speed === undefined || throttle === undefined) return mass + gears[gear]!.inertia;
   const ratio = beltRatio(belt, speed, throttle);
-  return ratio > belt.least && ratio < belt.greatest ? mass : mass + belt.inertia * ratio * ratio;
+  const turnsAlong = ratio * speed >= belt.locked && (ratio <= belt.least || ratio >= belt.greatest);
+  return turnsAlong ? mass + belt.inertia * ratio * ratio : mass;
 }
 
 /**

@@ -33,6 +33,7 @@ export function variatorDrive(spec: VariatorDriveSpec): Drive {
     shaftSpeed: spec.line.shaftSpeed,
     lag: spec.ratioLag,
     inertia: spec.inertia,
+    locked: spec.clutch.locked,
   };
   const table = throughClutch(combustionTable(spec), spec.clutch.begins, spec.clutch.locked);
   const smooth = driveOf(spec, belt, combustionCells(table, false));
@@ -61,7 +62,8 @@ function driveOf(spec: VariatorDriveSpec, belt: Belt, law: ReturnType<typeof com
     derate: spec.derate,
     stallSpeed: 0,
     idleSpeed: spec.idle,
-    source: source === null ? null : { ...source, map: burntThroughClutch(source.map, spec.clutch.locked) },
+    source:
+      source === null ? null : { ...source, map: burntThroughClutch(source.map, spec.clutch, spec.idle) },
     withoutFuelCut: null,
     fuelCutBelow: 0,
     peakForce: belt.greatest * peakFigures(law, 0, onLine(1)).torque,

@@ -68,4 +68,5 @@ export const belt = {
   shaftSpeed: Float64Array.of(250, 420),
   lag: 0.3,
   inertia: 0.02,
+  locked: 0,
 };

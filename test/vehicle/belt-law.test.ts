@@ -11,6 +11,7 @@ const belt: Belt = {
   shaftSpeed: Float64Array.of(400, 500, 900),
   lag: 0.4,
   inertia: 0.003,
+  locked: 0,
 };
 
 // By hand: line(0.2) = 500, line(0.6) = 500 + 400 x 0.5 = 700, line(1) = 900 rad/s.

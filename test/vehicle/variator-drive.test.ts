@@ -4,9 +4,11 @@ import { InputError } from '../../src/problems/input-error.ts';
 import { beltRatio } from '../../src/vehicle/belt-law.ts';
 import { throttleFor, wheelForce } from '../../src/vehicle/drive-law.ts';
 import type { VariatorDriveSpec } from '../../src/vehicle/engine-spec.ts';
+import { effectiveMass } from '../../src/vehicle/linearise.ts';
 import { powerDrawn } from '../../src/vehicle/power-map.ts';
 import { variatorDrive } from '../../src/vehicle/variator-drive.ts';
 import { expectClose } from '../compare.ts';
+import { vehicleOf } from '../study/vehicle-of.ts';
 
 /**
  * Torque in proportion to the throttle, 20 N m up to 600 rad/s, falling to 14 N m at 900, with a drag of 2 N m; ratios
@@ -121,6 +123,26 @@ describe('below the locked speed of the clutch', () => {
     expectClose([powerDrawn(map, 100, 20), powerDrawn(map, 400, 20)], [23_000, 23_000], 1e-8);
     expectClose([powerDrawn(map, 600, 20), powerDrawn(map, 1200, 20)], [34_500, 69_000], 1e-8);
     expect(powerDrawn(map, 600, -4)).toBe(0);
+  });
+
+  test('the engine idles where the clutch is open and passes on nothing', () => {
+    // 3 N m of friction at 150 rad/s by a slope of 0.4: 1125 W; at the locked speed of 400 rad/s they were 3000 W.
+    const { map } = drive.source!;
+    expectClose(
+      [powerDrawn(map, 0, 0), powerDrawn(map, 100, 0), powerDrawn(map, 300, 0)],
+      [1125, 1125, 1125],
+      1e-9,
+    );
+    // At the locked speed 2 N m of drag are in the torque: (3 - 2) 400 / 0.4, on a straight line from idling.
+    expectClose([powerDrawn(map, 400, 0), powerDrawn(map, 400, -2)], [3000, 1000], 1e-9);
+    expectClose(powerDrawn(map, 350, 0), (1125 + 3000) / 2, 1e-9);
+  });
+
+  test('nothing turns along with the vehicle', () => {
+    // 0.002 kg m2 x 100^2 = 20 kg from the locked speed, 4 m/s at the greatest ratio.
+    const vehicle = { ...vehicleOf({ mass: 200, rotatingMass: 8 }), drive };
+    const masses = [0, 2, 3.99, 4.01, 5].map((v) => effectiveMass(vehicle, v, 1));
+    expectClose(masses, [208, 208, 208, 228, 228], 1e-9);
   });
 });
 
