@@ -40,7 +40,7 @@ test('the help names every command, and no command that does not exist', () => {
 });
 
 test.each([
-  ['run', ['--out', '--set', '--junit', '--json', '--quiet', '--units', '--help']],
+  ['run', ['--out', '--set', '--junit', '--threads', '--json', '--quiet', '--units', '--help']],
   ['road', ['--out', '--set', '--json', '--quiet', '--units', '--help']],
   ['compare', ['--out', '--json', '--quiet', '--units', '--help']],
   ['new', ['--quiet', '--help']],
