@@ -30,7 +30,10 @@ const PRODUCT_HALF = 11;
 const CAP = 12;
 /** 1: a word has overflowed in this sample. */
 const OVERFLOWN = 13;
-const SIZE = 14;
+/** Answers of the functions. */
+const ERROR = 14;
+const RESULT = 15;
+const SIZE = 16;
 
 /**
  * The PI controller in whole numbers (see IntegerSetup): every word is fitted, by wrapping around or by staying at its
@@ -48,6 +51,7 @@ export function integerController(setup: IntegerSetup, low: number, high: number
   const nearest = setup.rounding === 'nearest';
   const wraps = setup.overflow === 'wrap';
   const sums = setup.integralOf === 'errors';
+  const integrates = setup.ki > 0;
   const backward = setup.integration === 'backward';
   const conditional = rule.kind === 'conditional';
   const bySign = rule.kind === 'sign_test';
@@ -74,23 +78,37 @@ export function integerController(setup: IntegerSetup, low: number, high: number
   };
   const inWord = (value: number): number =>
     value < n[WORD_HALF] && value >= -n[WORD_HALF] ? value : beyond(value, wordBits);
-  const product = (a: number, b: number): number => {
-    // Adding 0 makes a negative zero, which no word has, a plain one.
-    const exact = a * b + 0;
-    if (exact < n[PRODUCT_HALF] && exact >= -n[PRODUCT_HALF]) return exact;
+  const longProduct = (a: number, b: number, rounded: number): number => {
     n[OVERFLOWN] = 1;
-    return wraps ? wrappedProduct(a, b, productBits) : saturateTo(exact, productBits);
+    return wraps ? wrappedProduct(a, b, productBits) : saturateTo(rounded, productBits);
   };
-  /** A product, or an integral, scaled down by the divisor at a place. */
-  const scaled = (value: number, divisor: number): number => {
-    let sum = shifts || value >= 0 ? value + n[divisor + 1] : value - n[divisor + 1];
-    if (sum >= n[PRODUCT_HALF] || sum < -n[PRODUCT_HALF]) sum = beyond(sum, productBits);
-    return inWord(scaleDown(sum, n[divisor], shifts));
+  /** A product scaled down by the divisor at a place, to RESULT: numbers that functions return are boxed. */
+  const scaleProduct = (a: number, b: number, divisor: number): void => {
+    // Adding 0 makes a negative zero, which no word has, a plain one.
+    let value = a * b + 0;
+    if (value >= n[PRODUCT_HALF] || value < -n[PRODUCT_HALF]) value = longProduct(a, b, value);
+    value += shifts || value >= 0 ? n[divisor + 1] : -n[divisor + 1];
+    if (value >= n[PRODUCT_HALF] || value < -n[PRODUCT_HALF]) value = beyond(value, productBits);
+    value = scaleDown(value, n[divisor], shifts);
+    if (value >= n[WORD_HALF] || value < -n[WORD_HALF]) value = beyond(value, wordBits);
+    n[RESULT] = value;
   };
-  const countOf = (speed: number): number => inWord(nearestCount(speed * n[SPEED_SCALE]));
-  /** Part of the command that an integral stands for. */
-  const termOf = (integral: number): number =>
-    sums ? scaled(product(n[KI], integral), GAIN_DIVISOR) : scaled(integral, INTEGRAL_DIVISOR);
+  /** Counts of reference and measurement, and their difference: the error, to ERROR. */
+  const takeError = (bus: Float64Array): void => {
+    const half = n[WORD_HALF];
+    let reference = Math.floor(bus[BUS_REFERENCE] * n[SPEED_SCALE] + 0.5);
+    let measured = Math.floor(bus[BUS_MEASURED] * n[SPEED_SCALE] + 0.5);
+    if (reference >= half || reference < -half) reference = beyond(reference, wordBits);
+    if (measured >= half || measured < -half) measured = beyond(measured, wordBits);
+    let error = reference - measured;
+    if (error >= half || error < -half) error = beyond(error, wordBits);
+    n[ERROR] = error;
+  };
+  /** Part of the command that an integral stands for, to RESULT. */
+  const takeTerm = (integral: number): void => {
+    if (sums) scaleProduct(n[KI], integral, GAIN_DIVISOR);
+    else scaleProduct(integral, 1, INTEGRAL_DIVISOR);
+  };
   /** Integral that stands for a part of the command, towards 0. */
   const integralFor = (term: number): number =>
     sums
@@ -105,14 +123,21 @@ export function integerController(setup: IntegerSetup, low: number, high: number
 
   const step = (bus: Float64Array): void => {
     n[OVERFLOWN] = 0;
-    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]));
-    const proportional = scaled(product(n[KP], error), GAIN_DIVISOR);
-    const increment = sums ? error : scaled(product(n[KI], error), GAIN_DIVISOR);
-    if (increment === 0 && error !== 0) bus[BITE_INCREMENT_LOST] += 1;
+    takeError(bus);
+    const error = n[ERROR];
+    scaleProduct(n[KP], error, GAIN_DIVISOR);
+    const proportional = n[RESULT];
+    let increment = error;
+    if (!sums) {
+      scaleProduct(n[KI], error, GAIN_DIVISOR);
+      increment = n[RESULT];
+      if (integrates && increment === 0 && error !== 0) bus[BITE_INCREMENT_LOST] += 1;
+    }
     let integral = bus[INTEGRAL];
     let next = inWord(integral + increment);
     const free = next;
-    let term = termOf(backward ? next : integral);
+    takeTerm(backward ? next : integral);
+    let term = n[RESULT];
     if (conditional || bySign) {
       const trial = proportional + term;
       const outwards = (trial >= n[HIGH] && error > 0) || (trial <= n[LOW] && error < 0);
@@ -120,7 +145,7 @@ export function integerController(setup: IntegerSetup, low: number, high: number
         if (outwards) next = integral;
       } else if (trial >= n[HIGH] || trial <= n[LOW]) {
         const stops = error !== 0 && trial * error >= 0;
-        if (stops !== outwards) bus[BITE_SIGN_TEST] += 1;
+        if (integrates && stops !== outwards) bus[BITE_SIGN_TEST] += 1;
         if (stops) next = integral;
       }
     } else if (clamped) {
@@ -135,7 +160,10 @@ export function integerController(setup: IntegerSetup, low: number, high: number
     }
     if (backward) {
       integral = next;
-      if (next !== free) term = termOf(integral);
+      if (next !== free) {
+        takeTerm(integral);
+        term = n[RESULT];
+      }
     }
     const command = inWord(proportional + term);
     let limited = command;
@@ -150,9 +178,9 @@ export function integerController(setup: IntegerSetup, low: number, high: number
     bus[BUS_LIMITED] = limited * n[PER_COUNT];
   };
   const engage = (bus: Float64Array): void => {
-    const error = inWord(countOf(bus[BUS_REFERENCE]) - countOf(bus[BUS_MEASURED]));
-    const proportional = scaled(product(n[KP], error), GAIN_DIVISOR);
-    bus[INTEGRAL] = integralFor(nearestCount(bus[BUS_LIMITED] * throttleScale) - proportional);
+    takeError(bus);
+    scaleProduct(n[KP], n[ERROR], GAIN_DIVISOR);
+    bus[INTEGRAL] = integralFor(nearestCount(bus[BUS_LIMITED] * throttleScale) - n[RESULT]);
   };
   return { sample, computingDelay, ramp, engage, step };
 }

@@ -42,8 +42,8 @@ export function pidController(setup: PidSetup, low: number, high: number, vehicl
 type Law = Pick<Controller, 'engage' | 'step'>;
 
 /** True where the dead band does not keep the integral still, though it should. */
-const runsInside = ({ deadBand }: PidSetup): number =>
-  deadBand?.integratesInside === true ? deadBand.halfWidth : 0;
+const runsInside = ({ deadBand, ki }: PidSetup): number =>
+  deadBand?.integratesInside === true && ki > 0 ? deadBand.halfWidth : 0;
 
 /** Counts a sample in which the integral runs on inside the dead band. */
 function countInside(bus: Float64Array, halfWidth: number): void {
