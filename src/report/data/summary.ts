@@ -1,3 +1,5 @@
+import { integerGains } from '../../control/integer-gains.ts';
+import { linearController } from '../../control/linear-controller.ts';
 import type { ShiftEvent } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
 import { type Figure, isNone, type RequirementFinding } from '../../study/findings.ts';
@@ -77,17 +79,33 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
       ...usedOf(energyUse(drive.source, result)),
     }),
     ...(result.shifts.length === 0 ? {} : { shifts: result.shifts.map(shiftOf) }),
-    gains:
-      controller.kind === 'pi'
-        ? {
-            kp_pct_per_kmh: significant(toPct(controller.kp) / toKmh(1), 7, 'kp'),
-            ki_pct_per_kmh_s: significant(toPct(controller.ki) / toKmh(1), 7, 'ki'),
-            setpoint_weight: controller.setpointWeight,
-            sample_s: controller.sample,
-            design: controller.design === null ? null : controller.design.words,
-          }
-        : null,
-    ...marginsOf(loop),
+    gains: gainsOf(controller),
+    ...marginsOf(loop, controller),
+  };
+}
+
+function gainsOf(controller: CandidateResult['controller']): Json {
+  if (controller.kind === 'locked') return null;
+  const perKmh = (gain: number, name: string): number => significant(toPct(gain) / toKmh(1), 7, name);
+  const gains = {
+    kp_pct_per_kmh: perKmh(controller.kp, 'kp'),
+    ki_pct_per_kmh_s: perKmh(controller.ki, 'ki'),
+  };
+  if (controller.kind === 'integer') {
+    const counts = integerGains(controller);
+    return { ...gains, kp_count: counts.kp, ki_count: counts.ki, sample_s: controller.sample };
+  }
+  return {
+    ...gains,
+    ...(controller.kind === 'pid' && controller.kd > 0
+      ? {
+          kd_pct_s_per_kmh: perKmh(controller.kd, 'kd'),
+          derivative_filter_s: controller.derivativeFilter,
+        }
+      : {}),
+    setpoint_weight: controller.setpointWeight,
+    sample_s: controller.sample,
+    design: controller.design === null ? null : controller.design.words,
   };
 }
 
@@ -109,8 +127,13 @@ const shiftOf = ({ time, distance, from, to, resumedAt }: ShiftEvent): Json => (
   ...(resumedAt === null ? {} : numbers({ hold_resumed_s: resumedAt })),
 });
 
-function marginsOf(loop: CandidateResult['loop']): Record<string, Json> {
-  const none = loop === null ? 'no feedback, or no set speed that the drive holds on the level' : null;
+function marginsOf(
+  loop: CandidateResult['loop'],
+  controller: CandidateResult['controller'],
+): Record<string, Json> {
+  const linear = linearController(controller);
+  const reason = 'none' in linear ? linear.none : 'no set speed that the drive holds on the level';
+  const none = loop === null ? reason : null;
   const figure = (value: number | null | undefined): Figure =>
     value === null || value === undefined
       ? { none: none ?? 'the linear loop is unstable' }
