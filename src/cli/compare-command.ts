@@ -3,12 +3,14 @@ import {
   type Comparison,
   candidatesInBoth,
   compareResults,
-  lostOf,
+  isWorse,
+  lostInMatrix,
 } from '../report/compare/compare-results.ts';
 import { comparisonAnswer, described } from '../report/compare/comparison-answer.ts';
 import { comparisonJson } from '../report/compare/comparison-json.ts';
 import { renderComparison } from '../report/compare/render-comparison.ts';
 import type { RequirementFate } from '../report/compare/requirement-changes.ts';
+import { inReaderUnit } from '../report/model/reader-unit.ts';
 import { SPEED_UNITS, type Units } from '../report/quantity.ts';
 import type { Invocation } from './commands.ts';
 import { DONE, NOT_MET } from './exit-status.ts';
@@ -44,7 +46,7 @@ export function compareCommand({ operands: [a, b], values }: Invocation<'compare
     say(`The comparison is at ${join(folder, PAGE)}`);
   }
   if (values.json) process.stdout.write(mark);
-  return lostOf(comparison).length > 0 ? NOT_MET : DONE;
+  return isWorse(comparison) ? NOT_MET : DONE;
 }
 
 const FATES: Readonly<Record<RequirementFate, string | null>> = {
@@ -56,6 +58,9 @@ const FATES: Readonly<Record<RequirementFate, string | null>> = {
   same: null,
 };
 
+/** Cells of the matrix that are told one by one. */
+const MOST_CELLS = 12;
+
 function tellComparison(comparison: Comparison, units: Units): void {
   const speed = SPEED_UNITS[units];
   say(comparisonAnswer(comparison, speed).sentence);
@@ -63,6 +68,11 @@ function tellComparison(comparison: Comparison, units: Units): void {
     const words = FATES[change.fate];
     if (words !== null) say(`  ${words}: ${described(change, speed)}`);
   }
+  const lost = lostInMatrix(comparison);
+  for (const { combination, id, candidate, after } of lost.slice(0, MOST_CELLS))
+    say(`  no longer met: ${id} of ${candidate} with ${inReaderUnit(combination, speed)} (${after})`);
+  if (lost.length > MOST_CELLS)
+    say(`  and ${lost.length - MOST_CELLS} more of the matrix, which ${MARK} lists`);
   const { files, values } = comparison.inputs;
   for (const { change, before, after } of files)
     if (change !== 'same') say(`  ${change}: ${(after ?? before)?.name}`);

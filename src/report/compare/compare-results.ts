@@ -1,6 +1,7 @@
 import { bandOf, type FigureChange, figureChanges } from './figure-changes.ts';
 import { type HillChanges, hillChanges } from './hill-changes.ts';
 import { type InputChanges, inputChanges } from './input-changes.ts';
+import { type MatrixChange, type MatrixChanges, matrixChanges } from './matrix-changes.ts';
 import type { SeriesPair } from './read-series.ts';
 import type { ResultSummary, SummaryCandidate } from './read-summary.ts';
 import { type RequirementChange, requirementChanges } from './requirement-changes.ts';
@@ -16,6 +17,7 @@ export interface Comparison {
   readonly onlyAfter: readonly string[];
   readonly requirements: readonly RequirementChange[];
   readonly hills: HillChanges;
+  readonly matrix: MatrixChanges | null;
 }
 
 export interface CandidateChange {
@@ -71,6 +73,7 @@ export function compareResults(
     onlyAfter: missingFrom(after, before),
     requirements: requirementChanges(before, after),
     hills: hillChanges(before, after, series),
+    matrix: matrixChanges(before, after),
   };
 }
 
@@ -90,6 +93,14 @@ export const candidatesInBoth = (before: ResultSummary, after: ResultSummary): r
     .map(({ name }) => name)
     .filter((name) => before.candidates.some((one) => one.name === name));
 
-/** Requirements that were met and no longer are: what makes a comparison end with status 1. */
+/** Requirements that were met and no longer are. */
 export const lostOf = ({ requirements }: Comparison): readonly RequirementChange[] =>
   requirements.filter(({ fate }) => fate === 'lost');
+
+/** The same in the combinations of the matrix. */
+export const lostInMatrix = ({ matrix }: Comparison): readonly MatrixChange[] =>
+  matrix === null ? [] : matrix.changes.filter(({ fate }) => fate === 'lost');
+
+/** Something that was met no longer is: what makes a comparison end with status 1. */
+export const isWorse = (comparison: Comparison): boolean =>
+  lostOf(comparison).length > 0 || lostInMatrix(comparison).length > 0;

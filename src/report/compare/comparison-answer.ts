@@ -1,13 +1,17 @@
 import { figureLabel, figureText, figureTextBeside } from '../model/figure-text.ts';
 import type { SpeedUnit } from '../quantity.ts';
-import { type Comparison, lostOf } from './compare-results.ts';
+import { type Comparison, isWorse, lostOf } from './compare-results.ts';
 import type { Change } from './figure-changes.ts';
+import type { MatrixChange } from './matrix-changes.ts';
 import type { SummaryRequirement } from './read-summary.ts';
 import type { RequirementChange } from './requirement-changes.ts';
 
-/** `worse`: something that was met no longer is. `better`: something more is met, and nothing lost. */
+/**
+ * `worse`: something that was met no longer is. `better`: something more is met, and nothing lost. `apart`: no
+ * requirement is asked of the same candidate in both.
+ */
 export interface ComparisonAnswer {
-  readonly standing: 'worse' | 'better' | 'even';
+  readonly standing: 'worse' | 'better' | 'even' | 'apart';
   readonly sentence: string;
 }
 
@@ -18,9 +22,12 @@ const NAMED = 2;
 export function comparisonAnswer(comparison: Comparison, speed: SpeedUnit): ComparisonAnswer {
   const lost = lostOf(comparison);
   const gained = comparison.requirements.filter(({ fate }) => fate === 'gained');
-  const standing = lost.length > 0 ? 'worse' : gained.length > 0 ? 'better' : 'even';
+  const inBoth = comparison.requirements.some(({ before, after }) => before !== null && after !== null);
+  const more = gained.length > 0 || comparison.matrix?.changes.some(({ fate }) => fate === 'gained');
+  const standing = isWorse(comparison) ? 'worse' : more ? 'better' : inBoth ? 'even' : 'apart';
   const parts = [
     requirementClause(comparison, lost, gained, speed),
+    ...matrixClauses(comparison),
     ...endClauses(comparison),
     figureClause(comparison),
   ];
@@ -47,6 +54,8 @@ function requirementClause(
   if (gained.length > 0)
     return `All that was met still is, and ${gained.length === 1 ? 'one requirement' : `${gained.length} requirements`} more: ${listed(gained, speed)}`;
   if (before.requirements.length + after.requirements.length === 0) return 'Neither result has a requirement';
+  if (requirements.every((one) => one.before === null || one.after === null))
+    return 'No requirement is asked of the same candidate in both results';
   const met = requirements.filter((one) => one.after?.verdict === 'met').length;
   const asked = after.requirements.length;
   const stands = requirements.every(({ fate }) => fate === 'same')
@@ -95,6 +104,16 @@ export function valueText(
 
 export const limitText = ({ sense, limit, figure }: SummaryRequirement, speed: SpeedUnit): string =>
   `${sense} ${figureText(limit, figureLabel(figure).unit, speed)}`;
+
+/** Verdicts of the matrix that changed, of those that both have. */
+function matrixClauses({ matrix }: Comparison): string[] {
+  if (matrix === null) return [];
+  const count = (fate: MatrixChange['fate']) => matrix.changes.filter((one) => one.fate === fate).length;
+  const [lost, gained] = [count('lost'), count('gained')];
+  const of = `of ${matrix.verdicts} verdicts in the ${matrix.combinations} combinations that both have`;
+  if (lost + gained === 0) return [`none ${of} is lost or won`];
+  return [`${of} ${lost} ${lost === 1 ? 'is' : 'are'} lost and ${gained} won`];
+}
 
 /** Candidates that end on the way in one run only. */
 function endClauses({ candidates }: Comparison): string[] {

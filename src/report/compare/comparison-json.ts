@@ -54,6 +54,10 @@ export function comparisonJson(comparison: Comparison, folders: Folders, files: 
     candidates_only_after: comparison.onlyAfter,
     candidates: candidates.map(candidateJson),
     requirements: requirements.map(requirementJson),
+    matrix:
+      comparison.matrix === null
+        ? null
+        : { ...comparison.matrix, changes: comparison.matrix.changes.map((change) => ({ ...change })) },
     hills: hills.hills.map(hillJson),
     ...(hills.unmatched === null ? {} : { hills_reason: hills.unmatched }),
     files,

@@ -45,6 +45,16 @@ const requirement = z.object({
   words: text,
 });
 
+/** One combination of loads, winds, directions, gears and set speeds, with its verdicts. */
+const combination = z.object({
+  load: text,
+  wind: text,
+  direction: text,
+  gear: figure,
+  set_speed_kmh: number,
+  requirements: z.array(z.object({ id: text, candidate: text, verdict: z.enum(VERDICTS) })),
+});
+
 const value = z.object({ key: text, value: text, of: z.enum(['vehicle', 'case']) });
 
 const summarySchema = z.object({
@@ -64,6 +74,8 @@ const summarySchema = z.object({
   requirements: z.array(requirement),
   defaults: z.array(value),
   files: z.array(text),
+  /** Only of a case that has one. */
+  matrix: z.object({ combinations: z.array(combination) }).optional(),
   /** Not before schema 1.1. */
   given: z.array(value).optional(),
 });
@@ -72,6 +84,7 @@ const summarySchema = z.object({
 export type ResultSummary = z.infer<typeof summarySchema>;
 export type SummaryCandidate = ResultSummary['candidates'][number];
 export type SummaryRequirement = ResultSummary['requirements'][number];
+export type MatrixCombination = z.infer<typeof combination>;
 export type SummaryHillRow = ResultSummary['hills'][number];
 
 /** Name of a candidate's series below the folder of a result. */

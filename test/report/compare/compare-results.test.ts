@@ -219,6 +219,15 @@ describe('the answer', () => {
     );
   });
 
+  test('says so where no requirement is in both, whatever was met', () => {
+    const other = summaryWith({ candidates: { 'pi-b': {} }, requirements: [{ candidate: 'pi-b' }] });
+    expect(sentence(asked('met'), other, new Map())).toEqual({
+      standing: 'apart',
+      sentence: 'No requirement is asked of the same candidate in both results; no candidate is in both.',
+    });
+    expect(sentence(one({}), one({}), new Map()).standing).toBe('apart');
+  });
+
   test('tells a candidate that no longer ends, and that nothing can be compared', () => {
     const stalled = one({ status: 'stalled', end_m: 4000 });
     expect(sentence(one({}), stalled, new Map()).sentence).toContain(

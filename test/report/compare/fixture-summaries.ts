@@ -16,6 +16,7 @@ interface SummaryWish {
   readonly lengthM?: number;
   readonly bandKmh?: number;
   readonly title?: string;
+  readonly matrix?: ResultSummary['matrix'];
 }
 
 /** A summary.json as a run would write it, with what is wished for, read back. */
@@ -73,6 +74,7 @@ export function summaryWith(wish: SummaryWish = {}): ResultSummary {
         ...one,
       })),
       defaults: values(wish.defaults ?? []),
+      matrix: wish.matrix,
       given: values(wish.given ?? []),
       files: candidates.map(({ name }) => `series-${name}.csv`),
     }),
