@@ -5,7 +5,14 @@ export { caseJsonSchema, vehicleJsonSchema } from './case/json-schema.ts';
 export { starterCase } from './case/starter-case.ts';
 export { designDroop } from './control/design-droop.ts';
 export { designSettling } from './control/design-settling.ts';
-export type { Candidate, ControllerSetup, LockedSetup, PiSetup } from './control/setup.ts';
+export type {
+  Candidate,
+  ControllerSetup,
+  IntegerSetup,
+  LockedSetup,
+  PidSetup,
+  PiSetup,
+} from './control/setup.ts';
 export { solveContinuous } from './loop/continuous.ts';
 export type { HoldPlan, LoopPlan, RiderPlan, RunStatus } from './loop/plan.ts';
 export { replay } from './loop/replay.ts';
