@@ -112,8 +112,10 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   sums[SQUARE] += sample * squares;
   sums[THROTTLE] += sample * throttles;
   sums[TRAVEL] += travel;
-  sums[UPPER] += sample * upper;
-  sums[LOWER] += sample * lower;
+  // While a shift keeps the drive from the hold, its command is at no limit of the drive.
+  const held = s[at.SHIFT_PART] > 0 ? 0 : sample;
+  sums[UPPER] += held * upper;
+  sums[LOWER] += held * lower;
   sums[RATE] += chunk[at.C_RATED_TIME];
   sums[BRAKE] += chunk[at.C_BRAKE_TIME];
   sums[PUSH] += chunk[at.C_PUSH];

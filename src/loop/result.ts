@@ -56,7 +56,7 @@ export interface BinRecord {
   readonly throttleMax: Float64Array;
   /** Sum of |change of command| over the samples. */
   readonly throttleTravel: Float64Array;
-  /** Time with the command at the upper, at the lower limit, with the actuator at its rate limit, with the brake on [s]. */
+  /** Time with the command at the upper, at the lower limit (a shift apart), with the actuator at its rate limit, with the brake on [s]. */
   readonly timeUpper: Float64Array;
   readonly timeLower: Float64Array;
   readonly timeRate: Float64Array;
@@ -93,7 +93,7 @@ export interface ShiftEvent {
   readonly distance: number;
   readonly from: number;
   readonly to: number;
-  /** The rider shifted: hold was off from here to `resumedAt` [s]; null: the gearbox shifted by itself. */
+  /** The rider shifted: hold is off from here to `resumedAt` [s], which a run may not live to see; null: the gearbox shifted by itself. */
   readonly resumedAt: number | null;
 }
 

@@ -40,12 +40,13 @@ export interface SampleColumns {
 
 /** LIMIT_ bits of the one sample in the log. */
 function limitBits({ s, p, chunk }: Machine): number {
+  const shifting = s[at.SHIFT_PART] > 0;
   return (
-    (s[BUS_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
-    (s[BUS_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
+    (!shifting && s[BUS_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
+    (!shifting && s[BUS_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
     (chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
     (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0) |
-    (s[at.SHIFT_PART] > 0 ? LIMIT_SHIFT : 0)
+    (shifting ? LIMIT_SHIFT : 0)
   );
 }
 

@@ -61,16 +61,25 @@ function nearEnds(road: Road, drive: Vehicle['drive'], demand: Demand): readonly
 function cancelled(number: number, replayed: readonly Replayed[]): readonly Warning[] {
   const made = replayed.flatMap(({ name, result }) => {
     const shift = result.shifts.filter(({ resumedAt }) => resumedAt !== null)[number];
-    return shift === undefined ? [] : [{ name, shift, seconds: (shift.resumedAt ?? 0) - shift.time }];
+    if (shift === undefined) return [];
+    const resumedAt = shift.resumedAt ?? 0;
+    return [{ name, shift, seconds: resumedAt - shift.time, resumed: resumedAt < result.endTime }];
   });
   const [first] = made;
   if (first === undefined) return [];
   const { shift } = first;
-  const longest = made.reduce((most, { seconds }) => Math.max(most, seconds), 0);
+  const resumed = made.filter((hold) => hold.resumed);
+  const ended = made.filter((hold) => !hold.resumed).map(({ name }) => name);
+  const longest = resumed.reduce((most, { seconds }) => Math.max(most, seconds), 0);
+  const exceptions = ended.length === 0 ? '' : `, but the run of ${ended.join(', ')} ends before`;
+  const after =
+    resumed.length === 0
+      ? 'the run ends before hold resumes'
+      : `hold resumes ${longest.toFixed(1)} s later${exceptions}`;
   return [
     {
       code: 'hold-cancelled',
-      message: `Hold is cancelled at ${km(shift.distance)}: the rider shifts there from gear ${shift.from + 1} to ${shift.to + 1}, and hold resumes ${longest.toFixed(1)} s later.`,
+      message: `Hold is cancelled at ${km(shift.distance)}: the rider shifts there from gear ${shift.from + 1} to ${shift.to + 1}, and ${after}.`,
       from: shift.distance,
       to: shift.distance,
     },

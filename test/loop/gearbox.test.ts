@@ -231,6 +231,11 @@ describe.each(['exact', 'fast'] as const)('a planned shift on a clutch gearbox (
     expect(result.ledger.shifts).not.toBe(0);
   });
 
+  it('tells of a shift, not of a command at its lower limit', () => {
+    for (const i of samples) expect(series.limit[i]).toBe(LIMIT_SHIFT);
+    expect(result.bins.timeLower.every((time) => time === 0)).toBe(true);
+  });
+
   it('learns of a change of set speed while hold is off', () => {
     const changed = down({
       hold: {

@@ -59,6 +59,16 @@ test('a shift of the rider cancels hold at its place, for as long as clutch and 
   expectClose(first!.from!, 1250, 1, 'place [m]');
 });
 
+test('a shift of the rider so late that hold does not resume says so', () => {
+  // 2.5 s at 60 km/h are 42 m.
+  const [late] = warningsOf({ drive: ENGINE, hold: { shifts: [{ at_km: 2.98, gear: 3 }] } }).filter(
+    ({ code }) => code === 'hold-cancelled',
+  );
+  expect(late!.message).toMatch(
+    /^Hold is cancelled at km 2\.98: .*, and the run ends before hold resumes\.$/,
+  );
+});
+
 test('a set speed near to the rev limit or the stall of its gear is told with the speed of that end', () => {
   // 9000 rpm over 3 x 9 / 0.3 a metre is 37.7 km/h, over 18 / 0.3 it is 56.5 km/h, over 13.5 / 0.3 it is 75.4 km/h
   const near = warningsOf({ drive: { ...ENGINE, gear: 3 }, hold: { set_speed_kmh: 70 } });

@@ -78,7 +78,9 @@ function candidateOf({ name, controller, result, figures, loop }: CandidateResul
       ...(drive.gears.length > 1 ? { shifts_wh: toWh(ledger.shifts) } : {}),
       ...usedOf(energyUse(drive.source, result)),
     }),
-    ...(result.shifts.length === 0 ? {} : { shifts: result.shifts.map(shiftOf) }),
+    ...(result.shifts.length === 0
+      ? {}
+      : { shifts: result.shifts.map((shift) => shiftOf(shift, result.endTime)) }),
     gains: gainsOf(controller),
     ...marginsOf(loop, controller),
   };
@@ -120,11 +122,13 @@ function usedOf(use: EnergyUse | null): Record<string, Figure> {
 }
 
 /** Gears from 1. */
-const shiftOf = ({ time, distance, from, to, resumedAt }: ShiftEvent): Json => ({
+const shiftOf = ({ time, distance, from, to, resumedAt }: ShiftEvent, endTime: number): Json => ({
   ...numbers({ at_km: toKm(distance), time_s: time }),
   from_gear: from + 1,
   to_gear: to + 1,
-  ...(resumedAt === null ? {} : numbers({ hold_resumed_s: resumedAt })),
+  ...(resumedAt === null
+    ? {}
+    : numbers({ hold_resumed_s: resumedAt < endTime ? resumedAt : { none: 'the run ended before' } })),
 });
 
 function marginsOf(
