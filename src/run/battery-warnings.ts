@@ -7,6 +7,8 @@ import type { Battery, Heating } from '../vehicle/energy-source.ts';
 const km = (distance: number): string => `km ${toKm(distance).toFixed(2)}`;
 /** Derating below this is no news. */
 const NOTICED = 0.01;
+/** Charge below which no force means an empty battery, not heat or a voltage that sags to nothing. */
+const NEARLY_EMPTY = 0.01;
 
 /** Where a battery comes down to its reserve or runs empty, and where heat takes force away, run by run. */
 export function batteryWarnings(replayed: readonly Replayed[]): readonly Warning[] {
@@ -30,8 +32,8 @@ function chargeWarnings(name: string, { capacity, charge, reserve }: Battery, bi
   for (let i = 0; i < bins.size; i++) {
     left -= bins.drawn[i] ?? 0;
     const at = bins.edge[i + 1] ?? 0;
-    // Energies are sums over samples: empty is empty to their rounding.
-    if (left <= 1e-9 * capacity) {
+    // An empty battery gives no force, with what is left of a last sample in it.
+    if (bins.driveLost[i] === 1 && left <= NEARLY_EMPTY * capacity) {
       warnings.push({
         code: 'battery-empty',
         message: `${name} runs its battery empty at ${km(at)}: from there on it has no force.`,
