@@ -76,6 +76,9 @@ export type Cause =
   | 'gear'
   | 'traction';
 
+/** What takes the force under the cause `derating`: thin air; heat, voltage or emptiness of a battery; a battery too full to take regeneration. */
+export type Derating = 'altitude' | 'heat' | 'voltage' | 'empty' | 'full';
+
 /** A stretch of the road where demand leaves the range, or a candidate leaves its band or sits on a limit. Shared by all candidates. */
 export interface Hill {
   /** From 1, in order along the way. */
@@ -90,12 +93,14 @@ export interface Hill {
   readonly meanGradeSd: number;
   /** Steepest grade, with its sign. */
   readonly maxGrade: number;
-  /** Extreme share of demand (see Demand.share), with the forces there [N] and the sustained (or runaway) speed [m/s]. */
+  /** Extreme share of demand (see Demand.share), of a descent the least unless more than full force is asked for; with the forces there [N] and the sustained (or runaway) speed [m/s]. */
   readonly share: number;
   /** Where that is [m]. */
   readonly shareAt: number;
   readonly requiredForce: number;
   readonly availableForce: number;
+  /** What the drive itself has there, where the grip of its wheel passes on less [N]. */
+  readonly beforeGrip?: number;
   readonly sustainedSpeed: number;
   /** Shorter than the smoothing can resolve. */
   readonly unresolved: boolean;
@@ -133,6 +138,8 @@ export interface HillOutcome {
   /** From where the demand comes back into range, or where it stays there from leaving the band, to within 1 km/h for 3 s [s] (see recoveryOf). */
   readonly recovery: Figure;
   readonly cause: Cause | None;
+  /** Of the cause `derating`. */
+  readonly derating?: Derating;
   /** One sentence: why. */
   readonly why: string;
   readonly wouldHold: readonly Remedy[];

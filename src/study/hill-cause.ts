@@ -1,5 +1,6 @@
 import type { LoopPlan } from '../loop/plan.ts';
-import type { Cause, Figure, None } from './findings.ts';
+import { batteryRange, type TiredBattery, tiredIdeal } from './battery-cause.ts';
+import type { Cause, Derating, Figure, None } from './findings.ts';
 import { keptInGear } from './gear-course.ts';
 import type { HillEvents } from './hill-events.ts';
 import type { HillFacts } from './hill-facts.ts';
@@ -11,6 +12,8 @@ import { demandWords, gearName, inKmh, inPct, inSeconds } from './wording.ts';
 
 export interface CauseFinding {
   readonly cause: Cause | None;
+  /** Of the cause `derating`. */
+  readonly derating?: Derating;
   readonly why: string;
 }
 
@@ -26,6 +29,8 @@ export interface IdealChange {
  *
  * 1. The set speed asks for more than the grip of the driven wheel passes on, and the drive has it: `traction`, if the
  *    band was kept or the ideal hold with that grip makes more than half of the worst error too. The loop has no slip.
+ *    In the same way `derating`: what the battery left of the force in the run is not enough, and the ideal hold with it
+ *    makes more than half of the worst error, or half of the excess goes with a battery that is cold and full enough.
  * 2. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
  *    where the drive went beyond the grip of its wheel by itself, else `gains`.
  * 3. Limitations are tried in this order: an integrator that does not wind up, no rate limit, no slack, an automatic
@@ -41,6 +46,7 @@ export interface IdealChange {
  *
  * @param excess of the replay over the window with all limitations: how far outside of the band it went [m/s]
  * @param ideal what the ideal hold does on the hill
+ * @param battery what a battery took of the drive there in the candidate's run
  * @returns the cause, and why with what is left of the error without it
  */
 export function causeOnHill(
@@ -51,6 +57,7 @@ export function causeOnHill(
   band: number,
   excess: number,
   ideal: IdealChange,
+  battery: TiredBattery | null = null,
 ): CauseFinding {
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
   const gripped = plan.vehicle.traction === null ? null : nameRange(windowed, window, hill, hill.share >= 0);
@@ -58,14 +65,33 @@ export function causeOnHill(
     const kept = events.leftBand ? `the error grew to ${inKmh(worstOf(events))}` : 'the band was kept';
     return { ...gripped, why: `${gripped.why} In it ${kept}.` };
   }
-  if (!events.leftBand) return causeInBand(windowed, window, hill, events);
-  // The replays have no slip, and here grip is not what is asked about.
+  // The replays have no slip, and from here on grip is not what is asked about.
   const slipless = without(windowed, 'grip');
-  const { cause, why } = causeOfLeaving(
-    { windowed: slipless, window, hill, events, band, excess },
-    ideal.change,
-  );
-  return { cause, why: `${why}${beyondGripWords(events)}${brakeWords(plan, events)}` };
+  const scene = { windowed: slipless, window, hill, events, band, excess, battery };
+  const tired = batteryCause(scene);
+  if (tired !== null) return { ...tired, why: `${tired.why}${brakeWords(plan, events)}` };
+  if (!events.leftBand) return causeInBand(windowed, window, hill, events);
+  const { why, ...cause } = causeOfLeaving(scene, ideal.change);
+  return { ...cause, why: `${why}${beyondGripWords(events)}${brakeWords(plan, events)}` };
+}
+
+/** The battery, where what it left is not enough and that accounts for at least half of what went wrong. */
+function batteryCause(scene: Scene): CauseFinding | null {
+  const { windowed, window, hill, events, band, excess, battery } = scene;
+  if (battery === null) return null;
+  const atLimit = events.timeUpper + events.timeLower > 0;
+  const up = events.leftBand || !atLimit ? -events.low >= events.high : events.timeUpper >= events.timeLower;
+  const range = batteryRange(windowed, window, hill, up, battery);
+  if (range === null) return null;
+  if (!events.leftBand) return { ...range, why: `${range.why} The band was kept.` };
+  const fresh = passHill(without(windowed, 'derating'), window);
+  const ideal = tiredIdeal(windowed, window, hill, up, battery);
+  if (!takesHalf(excessOf(fresh, band), excess) && !makesHalf(ideal, events)) return null;
+  const rest = fresh.status === 'completed' ? errorRange(fresh) : 'the run would still end here';
+  return {
+    ...range,
+    why: `${range.why} In it the error grew to ${inKmh(worstOf(events))}; with a battery that is cold and full enough: ${rest}.`,
+  };
 }
 
 function causeInBand(
@@ -100,13 +126,14 @@ interface Scene {
   readonly events: HillEvents;
   readonly band: number;
   readonly excess: number;
+  readonly battery: TiredBattery | null;
 }
 
 function causeOfLeaving(scene: Scene, ideal: Figure): CauseFinding {
-  const { windowed, window, hill, events, band, excess } = scene;
+  const { windowed, window, hill, events, band, excess, battery } = scene;
   const far = farSide(events);
   const removals: Removal[] = [];
-  for (const limitation of triedLimitations(windowed, hill, events)) {
+  for (const limitation of triedLimitations(windowed, hill, events, battery)) {
     const passage = passHill(withoutIt(windowed, hill, limitation), window);
     const overshot = limitation === 'windup' && far !== 0;
     const left = overshot ? excessOf(onSide(passage, far), band) : excessOf(passage, band);
@@ -146,22 +173,31 @@ interface Removal {
 }
 
 /** What is tried, in order: what was met and is there to be taken away. */
-function triedLimitations(plan: LoopPlan, { gears }: HillFacts, events: HillEvents): Limitation[] {
+function triedLimitations(
+  plan: LoopPlan,
+  { gears }: HillFacts,
+  events: HillEvents,
+  battery: TiredBattery | null,
+): Limitation[] {
   const atLimit = events.timeUpper + events.timeLower > 0;
   const met: readonly [Limitation, boolean][] = [
     ['windup', atLimit],
     ['rate', events.timeRate > 0],
     ['slack', true],
     ['shifting', events.shifts > 0 || [...events.gears].some((gear) => gear !== (gears?.needed ?? gear))],
-    ['derating', atLimit && deratesByItself(plan.vehicle.drive.source)],
+    ['derating', (atLimit || battery !== null) && deratesByItself(plan.vehicle.drive.source)],
     ['range', atLimit],
   ];
   return met.filter(([limitation, was]) => was && has(plan, limitation)).map(([limitation]) => limitation);
 }
 
 /** True where a replay with one limitation less can tell something. */
-export const canTell = (plan: LoopPlan, hill: HillFacts, events: HillEvents): boolean =>
-  triedLimitations(plan, hill, events).length > 0;
+export const canTell = (
+  plan: LoopPlan,
+  hill: HillFacts,
+  events: HillEvents,
+  battery: TiredBattery | null,
+): boolean => triedLimitations(plan, hill, events, battery).length > 0;
 
 const metAnyLimit = ({ timeUpper, timeLower, timeRate }: HillEvents): boolean =>
   timeUpper + timeLower + timeRate > 0;
@@ -180,7 +216,7 @@ function shiftWords({ shifts, gears }: HillEvents): string {
 }
 
 function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFinding | null {
-  const { windowed, window, hill, events } = scene;
+  const { windowed, window, hill, events, battery } = scene;
   if (limitation === 'range') {
     const named = nameRange(windowed, window, hill, events.timeUpper >= events.timeLower);
     if (named === null || left === 0) return named;
@@ -203,6 +239,7 @@ function explain({ limitation, left, passage }: Removal, scene: Scene): CauseFin
     case 'derating':
       return {
         cause: 'derating',
+        derating: (-events.low >= events.high ? battery?.force.why : battery?.regeneration.why) ?? 'voltage',
         why: `The command was at its limit for ${inSeconds(events.timeUpper + events.timeLower)} (${errorRange(events)}); with a battery that is cold and full enough: ${rest}.`,
       };
     default:

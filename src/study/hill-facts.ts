@@ -3,8 +3,10 @@ import { cellOf } from '../numeric/interpolate.ts';
 import { meanGradeSd } from '../road/error-scales.ts';
 import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
+import { atCharge } from '../vehicle/at-charge.ts';
+import { authority } from '../vehicle/authority.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
-import type { Demand, Hill, HillGears, Stretch } from './findings.ts';
+import type { Demand, Hill, HillGears, HillKind, Stretch } from './findings.ts';
 import { keptInGear } from './gear-course.ts';
 import type { HillStretch } from './hill-stretches.ts';
 import { runawayFrom, sustainedFrom } from './settling-speed.ts';
@@ -32,7 +34,7 @@ export function hillFacts(
   for (let i = steepest; i < road.size && road.distance[i] <= to; i++) {
     if (road.distance[i] < from) continue;
     if (Math.abs(road.grade[i]) > Math.abs(road.grade[steepest])) steepest = i;
-    if (Math.abs(demand.share[i]) > Math.abs(demand.share[extreme])) extreme = i;
+    if (moreExtreme(kind, demand.share[i], demand.share[extreme])) extreme = i;
   }
   const short = demand.share[extreme] >= 0;
   return {
@@ -48,11 +50,34 @@ export function hillFacts(
     shareAt: road.distance[extreme],
     requiredForce: demand.required[extreme],
     availableForce: short ? demand.upper[extreme] : demand.lower[extreme],
+    ...beforeGrip(road, vehicle, demand, extreme, short),
     sustainedSpeed: short ? demand.sustained[extreme] : demand.runaway[extreme],
     gears: vehicle === null ? null : hillGears(road, vehicle, demand, { from, to }, extreme),
     ...brakeNeeded(road, demand, { from, to }),
     unresolved: road.smoothing !== null && length < road.smoothing.shortestHill,
   };
+}
+
+/** Farther out; on a descent further down, so that its brow does not stand for it, unless more than there is is asked. */
+function moreExtreme(kind: HillKind, share: number, than: number): boolean {
+  if (kind !== 'descent' || share > 1 || than > 1) return Math.abs(share) > Math.abs(than);
+  return share < than;
+}
+
+/** What the drive has where the grip of its wheel passes on less [N]; nothing where grip is no limit. */
+function beforeGrip(
+  road: Road,
+  vehicle: Vehicle | null,
+  demand: Demand,
+  knot: number,
+  short: boolean,
+): Pick<HillFacts, 'beforeGrip'> {
+  if (vehicle === null || vehicle.traction === null) return {};
+  const kept = { ...keptInGear(atCharge(vehicle), demand.gear[knot]), traction: null };
+  const at = surroundingsBetween(road, knot, 0);
+  const { least, greatest } = authority(kept, demand.gear[knot], demand.setSpeed[knot], at);
+  const [has, passed] = short ? [greatest, demand.upper[knot]] : [least, demand.lower[knot]];
+  return Math.abs(has) > Math.abs(passed) * (1 + 1e-9) ? { beforeGrip: has } : {};
 }
 
 /** Braking that holds the set speed beside the least throttle: greatest power [W], work over the stretch [J]. */

@@ -3,6 +3,8 @@ import type { FullSeries } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
+import { atCharge } from '../vehicle/at-charge.ts';
+import { tiredBattery } from './battery-cause.ts';
 import type { Demand, Figure, HillOutcome, Replayed } from './findings.ts';
 import { canTell, causeOnHill } from './hill-cause.ts';
 import type { HillEvents } from './hill-events.ts';
@@ -84,7 +86,7 @@ function predict(
     {
       road,
       // The loop has no slip, so the formula that checks it has none either.
-      vehicle: { ...vehicle, traction: null },
+      vehicle: { ...atCharge(vehicle), traction: null },
       setSpeed: demand.setSpeed,
       gear: demand.gear,
       brakesAbove: rider.brakesAbove,
@@ -133,7 +135,7 @@ function explainOutcome(
   events: HillEvents,
   predicted: Figure,
   command: number,
-): Pick<HillOutcome, 'cause' | 'why' | 'wouldHold'> {
+): Pick<HillOutcome, 'cause' | 'derating' | 'why' | 'wouldHold'> {
   const { plan } = replayed;
   const { road } = plan;
   if (plan.controller.kind === 'locked')
@@ -141,9 +143,10 @@ function explainOutcome(
   const ideal = { change: predicted, gripped: idealChange(road, demand, hill, course) };
   const nearest = hillWindow(hill, road, demand, course);
   const near = windowFrom(nearest, nearest.start, replayed);
+  const battery = tiredBattery(replayed, hill);
   // Where no limit was met there is nothing to take away, and no replay can say more.
-  if (!events.leftBand || !canTell(plan, hill, events))
-    return { ...causeOnHill(plan, hill, near, events, band, 0, ideal), wouldHold: [] };
+  if (!events.leftBand || !canTell(plan, hill, events, battery))
+    return { ...causeOnHill(plan, hill, near, events, band, 0, ideal, battery), wouldHold: [] };
   const shown = windowThatShows(replayed, near, band);
   if (shown === null)
     return {
@@ -152,11 +155,12 @@ function explainOutcome(
       wouldHold: [],
     };
   const { window, excess } = shown;
-  const { cause, why } = causeOnHill(plan, hill, window, events, band, excess, ideal);
-  if (typeof cause !== 'string' || !leversHelp(cause)) return { cause, why, wouldHold: [] };
+  const found = causeOnHill(plan, hill, window, events, band, excess, ideal, battery);
+  const { cause } = found;
+  if (typeof cause !== 'string' || !leversHelp(cause)) return { ...found, wouldHold: [] };
   const speed = demand.setSpeed[cellOf(road.distance, hill.shareAt)];
   const brakePower = (hill.availableForce - hill.requiredForce) * speed;
-  return { cause, why, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
+  return { ...found, wouldHold: remediesFor(plan, hill, window, band, cause, brakePower) };
 }
 
 /**

@@ -81,7 +81,7 @@ export function windowFrom(window: HillWindow, start: number, { plan, result }: 
 }
 
 /** Charge at the beginning of a bin; null: no battery, or its capacity is not known. */
-function chargeAt(source: EnergySource | null, { drawn }: BinRecord, bin: number): number | null {
+export function chargeAt(source: EnergySource | null, { drawn }: BinRecord, bin: number): number | null {
   if (source?.kind !== 'battery' || source.capacity === null) return null;
   let left = source.charge * source.capacity;
   for (let i = 0; i < bin; i++) left -= drawn[i];

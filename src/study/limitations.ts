@@ -57,7 +57,7 @@ export function has(plan: LoopPlan, limitation: Limitation): boolean {
 
 /**
  * Takes the limitation away: an integrator that follows the limited command at once; no rate limit; no throttle range
- * or end stops; sea-level force and a battery that is always cold and full enough; still air; no lost motion; a sensor
+ * or end stops, whatever the battery; sea-level force and a battery that is always cold and full enough, also of room; still air; no lost motion; a sensor
  * that sees the speed itself; commands of any fineness; no step of a fuel cut; no dead time; an automatic gearbox that
  * stays in the gear it starts in; unbounded grip.
  */
@@ -72,7 +72,12 @@ export function without(plan: LoopPlan, limitation: Limitation): LoopPlan {
     case 'range': {
       const free = withActuator(plan, { travel: null });
       return withVehicle(free, {
-        drive: { ...drive, throttleMin: -UNLIMITED, throttleMax: UNLIMITED },
+        drive: {
+          ...drive,
+          throttleMin: -UNLIMITED,
+          throttleMax: UNLIMITED,
+          source: atItsBest(drive.source),
+        },
       });
     }
     case 'derating':
@@ -136,15 +141,16 @@ const withVehicle = (plan: LoopPlan, change: Partial<Vehicle>): LoopPlan => ({
 const withActuator = (plan: LoopPlan, change: Partial<Actuator>): LoopPlan =>
   withVehicle(plan, { actuator: { ...plan.vehicle.actuator, ...change } });
 
-/** Voltage or heat takes force away, or a full battery regeneration. */
+/** Voltage, heat or emptiness takes force away, or a full battery regeneration. */
 export function deratesByItself(source: EnergySource | null): boolean {
   if (source === null || source.kind !== 'battery') return false;
-  return source.sag !== null || source.acceptance !== null || source.heating !== null;
+  const { capacity, sag, acceptance, heating } = source;
+  return capacity !== null || sag !== null || acceptance !== null || heating !== null;
 }
 
 function atItsBest(source: EnergySource | null): EnergySource | null {
   if (source === null || source.kind !== 'battery') return source;
-  return { ...source, sag: null, acceptance: null, heating: null };
+  return { ...source, capacity: null, sag: null, acceptance: null, heating: null };
 }
 
 /** The law alone is exchanged: gear, range and what else a study has changed stay. */
