@@ -8,6 +8,7 @@ import { CORRECTION_RANGE, correctionFactor, deratingExtrapolates } from '../veh
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { batteryWarnings } from './battery-warnings.ts';
 import { biteWarnings } from './bite-warnings.ts';
+import { chatterWarnings } from './chatter-warnings.ts';
 import { gearWarnings } from './gear-warnings.ts';
 import { gripWarnings } from './grip-warnings.ts';
 import type { CandidateResult } from './run-result.ts';
@@ -50,6 +51,7 @@ export function runWarnings({
     ...candidates.flatMap((candidate) => [
       ...candidateWarnings(candidate, vehicle),
       ...biteWarnings(candidate),
+      ...chatterWarnings(candidate, vehicle, demand),
     ]),
   ];
 }
