@@ -83,6 +83,54 @@ describe('the answer', () => {
     );
   });
 
+  it('crowns no design whose linear loop is unstable before a stable one, and says so where it has no other', () => {
+    const shaky = (names: readonly string[], wish: FixtureWish): ReturnType<typeof answerOf> => {
+      const base = fixtureResult({ lengthKm: 12, ...wish });
+      const candidates = base.candidates.map((one) =>
+        names.includes(one.name) && one.loop !== null
+          ? { ...one, loop: { ...one.loop, stable: false, gainMargin: null, phaseMargin: null } }
+          : one,
+      );
+      return answerOf(viewOf({ ...base, candidates }, 'kmh'));
+    };
+    const first = answer({ requirements: 'met' }).design!;
+    const other = shaky([first], { requirements: 'met' });
+    expect(other.design).not.toBe(first);
+    expect(other.designs.find(({ name }) => name === first)).toMatchObject({
+      standing: 'unstable',
+      words: 'both met; its linear loop is unstable',
+    });
+    const alone = shaky(['pi-firm'], { requirements: 'met', designs: ['pi-firm'] });
+    expect(alone.standing).toBe('unstable');
+    expect(alone.sentence).toContain('its linear loop is unstable, so that it swings on any road');
+    expect(shaky(['pi-firm'], { designs: ['pi-firm'], lengthKm: 28 }).standing).toBe('not met');
+    expect(alone.design).toBe('pi-firm');
+  });
+
+  it('is no green light where requirements were asked of the holdable road alone and that is not all of it', () => {
+    const base = fixtureResult({ lengthKm: 12, requirements: 'met', designs: ['pi-firm'] });
+    const told = (where: 'holdable' | 'all', holdableShare: number) =>
+      answerOf(
+        viewOf(
+          {
+            ...base,
+            demand: { ...base.demand, holdableShare },
+            requirements: base.requirements.map((one, i) => ({
+              ...one,
+              requirement: { ...one.requirement, where: i === 0 ? ('holdable' as const) : where },
+            })),
+          },
+          'kmh',
+        ),
+      );
+    const part = told('holdable', 0.742);
+    expect(part.standing).toBe('met in part');
+    expect(plain(part.sentence)).toContain('and meets both requirements on the holdable 74 % of the road');
+    expect(part.designs[0]!.words).toBe('both met where it can be held');
+    expect(told('holdable', 1).standing).toBe('met');
+    expect(told('all', 0.742).standing).toBe('met');
+  });
+
   it('says that a hill defeats a design only where the demand leaves the range of the drive', () => {
     const base = fixtureResult({ lengthKm: 28 });
     const within = base.hills.map((hill) => ({ ...hill, share: 0.9, kind: 'level' as const }));
