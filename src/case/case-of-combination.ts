@@ -76,7 +76,9 @@ function loaded(vehicle: VehicleDocument, load: Combination['load']): VehicleDoc
       ...vehicle.file,
       mass: { ...mass, rider_kg: load.riderKg, payload_kg: load.payloadKg + load.pillionKg },
       road_load:
-        'f0_n' in road_load ? { ...road_load, test_mass_kg: road_load.test_mass_kg ?? own } : road_load,
+        'f0_n' in road_load || 'published' in road_load
+          ? { ...road_load, test_mass_kg: road_load.test_mass_kg ?? own }
+          : road_load,
     },
   };
 }

@@ -42,6 +42,7 @@ type Unit =
   | 'deg'
   | 'deg C'
   | 'hPa'
+  | 'bar'
   | 'kg/m3'
   | 'm2'
   | '1/rad2'

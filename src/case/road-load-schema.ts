@@ -1,5 +1,6 @@
 import * as z from 'zod';
-import { IDEAL, list, mapping, number, optional, otherwise } from './fields.ts';
+import { PUBLISHED_ROAD_LOADS } from '../vehicle/published-road-load.ts';
+import { IDEAL, list, mapping, number, optional, otherwise, word } from './fields.ts';
 
 const yaw = {
   cda_yaw_per_rad2: otherwise(
@@ -26,6 +27,16 @@ const coefficientRoadLoad = mapping('Road load by coefficients', {
   cda_m2: number('m2', 0, 5, 'Drag area without yaw'),
   ...yaw,
   ...rolling,
+});
+const tyreRoadLoad = mapping('Road load by drag area and the pressure of motorcycle tyres', {
+  cda_m2: number('m2', 0, 5, 'Drag area without yaw'),
+  ...yaw,
+  tyre_pressure_bar: number(
+    'bar',
+    1,
+    4,
+    'Pressure of both tyres; rolling coefficient 0.0085 + 0.018 / p + 1.59e-6 V2 / p (J. Bradley, The Racing Motorcycle, 1996), below 165 km/h',
+  ),
 });
 const tableRoadLoad = mapping('Road load by coefficients, the drag area by a table over yaw', {
   cda_table: list(
@@ -63,7 +74,20 @@ const regulationRoadLoad = mapping(
   },
 );
 
-/** Road load: by coefficients, with a table over yaw, or as regulations publish it. */
+const publishedRoadLoad = mapping('Road load that a regulation publishes for a motorcycle of a mass', {
+  published: word(
+    PUBLISHED_ROAD_LOADS,
+    'Table of the regulation; that of UN GTR 2, for a roller on which the driven tyre adds its own loss, is on the low side',
+  ),
+  test_mass_kg: optional(
+    number('kg', 20, 3000, 'Mass of the row that is taken'),
+    'mass of the vehicle',
+    'not given: the row of this vehicle as loaded',
+  ),
+  ...yaw,
+});
+
+/** Road load: by coefficients, by tyre pressure, with a table over yaw, as measured in the form of regulations, or as one publishes it. */
 export const roadLoadSchema = z
-  .union([coefficientRoadLoad, tableRoadLoad, regulationRoadLoad])
+  .union([coefficientRoadLoad, tyreRoadLoad, tableRoadLoad, regulationRoadLoad, publishedRoadLoad])
   .meta({ description: 'Road load' });

@@ -64,6 +64,9 @@ mass: {kerb_kg: 130, rider_kg: 75}  # payload_kg and rotating_kg may follow
 road_load: {cda_m2: 0.55, crr: 0.014}
 # ... or as regulations publish it:
 # road_load: {f0_n: 9.1, f2_n_per_kmh2: 0.0253, test_mass_kg: 205}
+# ... or with the rolling resistance of motorcycle tyres at a pressure, or from a regulation's table by mass:
+# road_load: {cda_m2: 0.55, tyre_pressure_bar: 2.25}
+# road_load: {published: 40 CFR 86.529-98}
 
 # Force at the wheel in the gear that is ridden ...
 drive:

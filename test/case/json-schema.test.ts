@@ -154,6 +154,7 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['_pct', '%'],
   ['_deg', 'deg'],
   ['_hpa', 'hPa'],
+  ['_bar', 'bar'],
   ['_m2', 'm2'],
   ['_km', 'km'],
   ['_kg', 'kg'],

@@ -246,3 +246,28 @@ it('refuses what the vehicle cannot do', () => {
   expect(code(one('{kind: pi, kp_pct_per_kmh: 4, ti_s: 6}'), coasting)).toBe('no-drive');
   expect(code(one('{kind: locked, throttle_pct: -20}'), vehicle)).toBe('out-of-range');
 });
+
+const loadOf = (load: string) =>
+  vehicleOf(
+    readVehicleFile(
+      `mass: {kerb_kg: 125, rider_kg: 78}\nroad_load: ${load}\ndrive: {kind: force, peak_force_n: 260}\n`,
+      'v.yaml',
+    ),
+  ).roadLoad;
+
+it('takes rolling resistance by tyre pressure from the published formula', () => {
+  // At 2.5 bar 0.0085 + 0.018 / 2.5 = 0.0157, and 1.59e-6 / 2.5 per (km/h)2, 3.6^2 = 12.96 times as much per (m/s)2.
+  const load = loadOf('{cda_m2: 0.5, cda_yaw_per_rad2: 1, tyre_pressure_bar: 2.5}');
+  expect(load).toMatchObject({ cda: 0.5, yawGain: 1, yawTable: null, c1: 0 });
+  expectClose([load.c0, load.c2 * 1e6], [0.0157, 8.24256], 1e-9);
+});
+
+it("takes a road load from a regulation's table by the mass as loaded, or by one that is given", () => {
+  // 203 kg belong to the row of 200 kg: 40 CFR 86.529-98 has 8.69 N and 0.0252 N/(km/h)2 at 200 kg; its air 1.17 kg/m3.
+  const cfr = loadOf('{published: 40 CFR 86.529-98}');
+  expectClose([cfr.cda, cfr.c0], [(2 * 0.0252 * 12.96) / 1.17, 8.69 / (200 * 9.80665)], 1e-9);
+  // UN GTR 2: 0.088 x 300 = 26.4 N and 0.000015 x 300 + 0.02 = 0.0245; its air 1.189 kg/m3.
+  const gtr = loadOf('{published: UN GTR 2, test_mass_kg: 300, cda_yaw_per_rad2: 2}');
+  expectClose([gtr.cda, gtr.c0], [(2 * 0.0245 * 12.96) / 1.189, 26.4 / (300 * 9.80665)], 1e-9);
+  expect(gtr.yawGain).toBe(2);
+});
