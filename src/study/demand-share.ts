@@ -1,5 +1,5 @@
 /** Beyond this a share says no more [1]. */
-export const GREATEST_SHARE = 9.99;
+const GREATEST_SHARE = 9.99;
 
 /** Share of the range in use (Demand.share). */
 export function demandShare(required: number, lower: number, upper: number): number {

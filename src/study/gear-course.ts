@@ -14,10 +14,6 @@ export function plannedGears(road: Road, drive: Drive, shifts: readonly PlannedS
   return gears;
 }
 
-/** True where the gearbox, or a belt, chooses by itself. */
-export const choosesItself = ({ gearbox, belt }: Drive): boolean =>
-  gearbox.kind === 'automatic' || belt !== null;
-
 /** The same vehicle with another gear engaged; what is said of its forces at the wheel goes with the ratio. */
 export function inGear<V extends { readonly drive: Drive }>(vehicle: V, gear: number): V {
   const { drive } = vehicle;

@@ -10,7 +10,7 @@ export { CELL_SIZE, cellIndex } from './cell-law.ts';
  *
  * @param speed of the wheel [m/s], >= 0; without a belt it does not count, nor does the throttle
  */
-export function shaftRatio(drive: Drive, gear: number, speed: number, throttle: number): number {
+function shaftRatio(drive: Drive, gear: number, speed: number, throttle: number): number {
   return drive.belt === null ? drive.gears[gear]!.ratio : beltRatio(drive.belt, speed, throttle);
 }
 

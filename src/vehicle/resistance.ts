@@ -29,7 +29,7 @@ export function aeroForce(
 }
 
 /** Derivatives of the force of the air [N/(m/s)] by speed, which is also that by headwind, and by crosswind. */
-export function aeroSlopes(
+function aeroSlopes(
   roadLoad: RoadLoad,
   airDensity: number,
   speed: number,
