@@ -1,6 +1,9 @@
+import { loopStability } from '../control/loop-stability.ts';
 import type { LoopPlan } from '../loop/plan.ts';
+import { stillAndLevel } from '../vehicle/surroundings.ts';
 import { type SteadyReplay, whatIsLeft } from './cycle-replay.ts';
 import type { CycleCause } from './findings.ts';
+import { trueSpeedFactor } from './hold-course.ts';
 import { has, type Limitation, without } from './limitations.ts';
 import { inKmh } from './wording.ts';
 
@@ -48,6 +51,8 @@ interface Trial extends SteadyReplay {
 /**
  * Why a loop keeps swinging: replays over the steady road (see SteadyReplay) with one thing taken away at a time.
  *
+ * 0. `gains` where the linear loop, the speed itself seen, is unstable on the level at the speed and in the gear of the
+ *    stretch: whatever else is in it, it could not stand still.
  * 1. Without all that is not linear at once (slack, step of the fuel cut, pulses, steps of the throttle, shifts), at
  *    least half of the amplitude is left: none of them is to blame (3).
  * 2. One by one: that without which least of the amplitude is left, if that is less than half.
@@ -58,6 +63,11 @@ interface Trial extends SteadyReplay {
  * @param before cause found on another stretch of the same run, tried first; null: none
  */
 export function causeOfCycle(trial: Trial, before: CycleCause | null): CycleFinding {
+  if (isUnstable(trial.plan))
+    return {
+      cause: 'gains',
+      why: `The linear loop is unstable by its gains, even on the level. ${gainsOrUnknown(trial).why}`,
+    };
   const suspects = SUSPECTS.filter(({ limitation }) => has(trial.plan, limitation));
   const restWithout = ({ limitation }: Suspect): number => leftOf(trial, without(trial.plan, limitation));
   const known = suspects.find(({ cause }) => cause === before);
@@ -81,6 +91,15 @@ const named = (trial: Trial, { cause, words }: Suspect, rest: number): CycleFind
   cause,
   why: whyWords(trial, `without ${words}`, rest),
 });
+
+/** The linear loop is unstable on the level, at the set speed and in the gear of the plan, were the speed itself seen. */
+function isUnstable({ controller, hold, road, vehicle }: LoopPlan): boolean {
+  if (controller.kind !== 'pi') return false;
+  const speed = hold.setSpeed * trueSpeedFactor(hold, vehicle);
+  const air = stillAndLevel(road.airDensity[0], road.airTemperature[0]);
+  const seen = { ...vehicle, sensor: { ...vehicle.sensor, pulses: null } };
+  return loopStability(seen, controller, [speed], air)?.stable === false;
+}
 
 function gainsOrUnknown(trial: Trial): CycleFinding {
   const { controller } = trial.plan;

@@ -240,7 +240,7 @@ describe('the report', () => {
     expect(wordsOf(page)).not.toContain('gear 6');
     for (const one of [page, render({ engine: true })])
       expect(wordsOf(one).replaceAll('\u00a0', ' ')).toContain(
-        'Looked for: ± 0.50 km/h or more in at least 4 turns',
+        'Looked for: ± 0.50 km/h or more, with a period of 2 to 25 s, in at least 4 turns',
       );
   });
 

@@ -43,6 +43,22 @@ const gainsOf = (kp: number, ki: number) => piOf({ kp, ki, setpointWeight: 1 });
 const proportional = (kp: number) => piOf({ kp, ki: 0, setpointWeight: 1, antiWindup: { kind: 'none' } });
 
 describe('a limit cycle', () => {
+  it('is laid to the gains where the linear loop is unstable, whatever else is in it', () => {
+    const pulses = { spacing: 0.04, reading: { kind: 'counted', window: 0.1 } } as const;
+    const counted = { ...late, sensor: { ...late.sensor, pulses } };
+    const plan = planOf(kicked(3000), counted, proportional(1.6));
+    const level = { grade: 0, headwind: 0, crosswind: 0, airDensity: 1.2, airTemperature: 288.15 };
+    expect(
+      loopStability(counted, plan.controller as ReturnType<typeof proportional>, [SPEED], level)!.stable,
+    ).toBe(false);
+    const cycles = cyclesOf(plan);
+    expect(cycles.length).toBeGreaterThan(0);
+    for (const { cause, why } of cycles) {
+      expect(cause).toBe('gains');
+      expect(why).toContain('The linear loop is unstable');
+    }
+  });
+
   it('of gains beyond the stability limit has the period and amplitude of the describing function', () => {
     // The throttle has half of its range on either side of what the level needs.
     const loop = loopOf({ kp: 1.6, ki: 0, actuatorLag: 1.5, delay: 0.61, forceGain: 332 });

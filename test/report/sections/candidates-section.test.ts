@@ -40,3 +40,17 @@ it('the best time lost is the one nearest to zero', () => {
   const figures = { a: { time_lost_s: -20 }, b: { time_lost_s: 3 } };
   expect(rowOf('Time lost', {}, figures)).toEqual(['\u221220 s', '*3.0 s*']);
 });
+
+it('tells what swings are looked for, and whose linear loop swings anyway', () => {
+  const base = fixtureResult({ lengthKm: 12, designs: ['a', 'b'] });
+  const told = (stable: boolean): string => {
+    const candidates = base.candidates.map((one) =>
+      one.name === 'b' && one.loop !== null ? { ...one, loop: { ...one.loop, stable } } : one,
+    );
+    const page = candidatesSection(viewOf({ ...base, candidates }, 'kmh')).body.toString();
+    return page.replace(/<[^>]*>/g, '').replace(/\u00a0/g, ' ');
+  };
+  expect(told(true)).toContain('± 0.50 km/h or more, with a period of 2 to 25 s, in at least 4 turns');
+  expect(told(true)).not.toContain('unstable');
+  expect(told(false)).toContain('The linear loop of b is unstable and swings on any road, told here or not.');
+});
