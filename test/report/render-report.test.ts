@@ -52,6 +52,32 @@ describe('the report', () => {
     expect(told({ scheme: 'fast' })).toMatch(/2 × 10⁻⁵ m\/s.*10⁻⁴ m\/s where the rider brakes/);
   });
 
+  it('says what moves once a sample, where there is such a thing', () => {
+    const result = fixtureResult({});
+    const { vehicle } = result;
+    const told = (drive: Partial<typeof vehicle.drive>) =>
+      wordsOf(
+        renderReport(
+          { ...result, vehicle: { ...vehicle, drive: { ...vehicle.drive, ...drive } } },
+          { units: 'kmh' },
+        ),
+      );
+    const power = Float64Array.of(0, 0, 1, 1);
+    const battery = {
+      kind: 'battery',
+      map: { shaftSpeed: Float64Array.of(0, 1), torque: Float64Array.of(0, 1), power, least: 0 },
+      capacity: 1e6,
+      charge: 1,
+      reserve: 0,
+      sag: null,
+      acceptance: null,
+      heating: null,
+    } as const;
+    expect(told({ source: battery })).toContain('once a sample: charge and heat of the battery, within 3 ×');
+    expect(told({ source: { ...battery, capacity: null } })).not.toContain('once a sample');
+    expect(told({})).not.toContain('once a sample');
+  });
+
   it('asks for nothing from outside: no script, no address, no source but itself', () => {
     expect(page).not.toMatch(/<script|<link|<iframe|<img|<object|@import|javascript:/i);
     expect(page).not.toMatch(/\s(src|srcset|action|formaction|background|poster)=/i);

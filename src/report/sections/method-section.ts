@@ -67,7 +67,7 @@ function solver(view: View): Html {
       : `, and within ${exact ? '2 × 10⁻⁵' : '10⁻⁴'} m/s where the rider brakes, since the onset of the brake is not cut`;
   const accuracy = `At 50 Hz the tests of the program hold its speed within ${plain} m/s${why} of a far finer solution of the same equations${braked}.`;
   return html`<h3>Solver</h3>
-<p>${method} ${accuracy} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay.</p>
+<p>${method} ${accuracy}${onceASample(view.result.vehicle)} Time is the independent variable; the controller runs at its sample time with zero-order hold and its own computing delay.</p>
 <p>${view.result.spread.words}</p>
 <p>The energy account closes to: ${view.candidates
     .map(
@@ -75,6 +75,17 @@ function solver(view: View): Html {
         `${candidate.name} ${Number.isFinite(candidate.result.ledger.residual) ? scientific(Math.abs(candidate.result.ledger.residual)) : 'not closed'}`,
     )
     .join(', ')} (sum of all terms over the sum of their magnitudes; 10⁻⁶ is allowed).</p>`;
+}
+
+/** Devices whose equations themselves are of first order in the sample (see run-loop.ts; test/loop/once-a-sample.test.ts). */
+function onceASample({ drive: { belt, source } }: View['result']['vehicle']): string {
+  const belted = belt === null ? '' : 'the ratio of the belt, within 10⁻³ m/s';
+  const follows =
+    source?.kind === 'battery' && (source.capacity !== null || source.heating !== null)
+      ? 'charge and heat of the battery, within 3 × 10⁻³ m/s'
+      : '';
+  const moved = [belted, follows].filter((words) => words !== '').join('; ');
+  return moved === '' ? '' : ` Those equations move once a sample: ${moved} of one that moves all the time.`;
 }
 
 /** Definitions of the figures that this page shows. */
