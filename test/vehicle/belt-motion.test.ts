@@ -23,6 +23,7 @@ function belted(lag: number, inertia = 0.02): Vehicle {
       shaftSpeed: Float64Array.of(500, 800),
       lag,
       inertia,
+      locked: 0,
     },
   };
   return { ...plain, drive };

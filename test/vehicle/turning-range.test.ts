@@ -49,6 +49,7 @@ test('a belt stands still with its clutch open, and turns fastest at its least r
     shaftSpeed: Float64Array.of(400, 700),
     lag: 0.3,
     inertia: 0,
+    locked: 0,
   };
   const { least, greatest } = turningRange(
     { ...fixtureEngine(), belt, gears: [{ ratio: 70, inertia: 0 }], gear: 0 },
