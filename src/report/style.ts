@@ -87,7 +87,8 @@ td .hash{font-size:.8em;white-space:normal}
 summary{cursor:pointer;padding:.4rem 0;font-weight:600}
 footer{grid-column:1/-1;border-top:1px solid var(--grid);padding:1rem 0 2rem;font-size:.86rem;color:var(--muted)}
 @media (max-width:1000px){.sheet{grid-template-columns:minmax(0,1fr)}nav ol{position:static;display:flex;flex-wrap:wrap;gap:0 1.1rem;margin-bottom:1.5rem}nav .n{min-width:0}}
-@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}.wrap,.wrap.what{min-width:9rem}tbody th{position:sticky;left:0;background:var(--page)}}
+@media (max-width:640px){body{font-size:15px}.sheet{padding:0 .9rem}.wide{display:none}.narrow{display:block}header h1{font-size:1.35rem}.sentence{font-size:1.08rem}.answer{padding-left:.7rem}.wrap,.wrap.what{min-width:9rem}tbody th{position:sticky;left:0;background:var(--page)}
+.asked table,.asked tbody{display:block}.asked thead{display:none}.asked tr{display:flex;flex-wrap:wrap;gap:.05rem .9rem;padding:.45rem 0;border-bottom:1px solid var(--grid)}.asked th,.asked td{border:0;padding:0;text-align:left}.asked td:nth-child(4){flex-basis:100%}.asked .wrap{max-width:none}.asked td:nth-child(n+5)::before{color:var(--muted)}.asked td:nth-child(5)::before{content:'measured '}.asked td:nth-child(6)::before{content:'limit '}.asked td:nth-child(7)::before{content:'margin '}.asked td:nth-child(8)::before{content:'worst at '}}
 @media print{
 @page{margin:14mm}
 :root{color-scheme:light;--good:#00614a;--bad:#a02c00;--open:#5b4a00;--accent:#005a8c;${paintVariables('light')}}
@@ -104,7 +105,7 @@ h2,h3,.keyline{break-after:avoid}
 figure,.card,tr,.answer,.caution{break-inside:avoid}
 thead{display:table-header-group}
 .cards{display:block}
-.card{padding:1.5mm 3mm;margin-bottom:3.5mm;display:grid;grid-template-columns:7cm minmax(0,1fr);column-gap:5mm}
+.card{padding:1.5mm 3mm;margin-bottom:3.5mm;display:grid;grid-template-columns:5.8cm minmax(0,1fr);column-gap:5mm}
 .card h3{font-size:10.5pt}
 .card h3,.card .facts,.card .why{grid-column:1/-1;margin:.2rem 0}
 .card .scroll{margin:0}
@@ -115,7 +116,7 @@ thead{display:table-header-group}
 section>p:has(+figure),section>p:has(+.scroll),section>p:has(+.keys),section>p:has(+p+.keys){break-after:avoid}
 #force svg{max-height:58mm}
 #force:has(tbody tr:nth-child(2)) svg{max-height:96mm}
-#lanes svg:not(.key){max-height:106mm}
+#lanes svg:not(.key){max-height:222mm}
 .card p,.card ul{font-size:7.6pt;line-height:1.35}
 .card table{font-size:7pt}
 .keys,.keyline,.facts{break-after:avoid}

@@ -78,7 +78,7 @@ function requirementTable(view: View): Html {
     ];
   });
   const uncertain = view.result.requirements.some((finding) => spreadText(view, finding) !== '');
-  return html`${table(
+  return html`<div class="asked">${table(
     'Requirements',
     [
       { head: 'id' },
@@ -91,7 +91,7 @@ function requirementTable(view: View): Html {
       { head: 'worst at', number: true },
     ],
     rows,
-  )}${uncertain && html`<p class="note">± one standard deviation, from the grade's uncertainty. A margin within two of them is too close to call.</p>`}`;
+  )}</div>${uncertain && html`<p class="note">± one standard deviation, from the grade's uncertainty. A margin within two of them is too close to call.</p>`}`;
 }
 
 /** Where a run ended before the end of what is asked [m]; null where it did not. */

@@ -31,7 +31,8 @@ const DEFINED =
 
 /** Cards are for the hills that matter most; the table has all. */
 const MOST_CARDS = 12;
-const PICTURE_WIDTH = 420;
+/** As wide as a card on a small screen, so that its words keep their size there. */
+const PICTURE_WIDTH = 340;
 
 /** 6: the hills, in order along the road: a card for each of the worst, a table for all. */
 export function hillsSection(view: View): Section {
