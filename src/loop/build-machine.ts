@@ -1,5 +1,6 @@
 import { controllerFor } from '../control/controller-for.ts';
 import { dragArea } from '../vehicle/road-load.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
 import { fittingsOf } from './fittings.ts';
@@ -23,8 +24,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   const { vehicle } = plan;
   const { drive, actuator } = vehicle;
   const table = roadTable(plan.road, drive.derate);
-  const least = Math.max(drive.throttleMin, actuator.travel?.least ?? drive.throttleMin);
-  const greatest = Math.min(drive.throttleMax, actuator.travel?.greatest ?? drive.throttleMax);
+  const { least, greatest } = throttleRange(vehicle);
   // The controller's range is that of what it moves, so that it does not wind up behind an end stop.
   const controller = controllerFor(plan.controller, least, greatest, vehicle);
   const fittings = fittingsOf(plan);
@@ -43,8 +43,8 @@ export function buildMachine(plan: LoopPlan): Machine {
   p[at.P_C1] = vehicle.roadLoad.c1;
   p[at.P_C2] = vehicle.roadLoad.c2;
   p[at.P_STALL_SPEED] = drive.stallSpeed;
-  p[at.P_LOW] = p[at.P_LEAST] = least;
-  p[at.P_HIGH] = p[at.P_GREATEST] = greatest;
+  p[at.P_LEAST] = least;
+  p[at.P_GREATEST] = greatest;
   p[at.P_RESOLUTION] = actuator.resolution;
   p[at.P_PLAY] = 0.5 * actuator.slack;
   p[at.P_CROSSWIND] = table.crosswind ? 1 : 0;

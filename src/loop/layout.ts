@@ -139,8 +139,9 @@ export const P_DELAY = 20;
 export const P_HISTORY = 21;
 /** Shaft speed below which the drive stalls. */
 export const P_STALL_SPEED = 22;
-export const P_LOW = 23;
-export const P_HIGH = 24;
+/** Range of the command, between the actuator's end stops. */
+export const P_LEAST = 23;
+export const P_GREATEST = 24;
 /** 1: there is crosswind somewhere. */
 export const P_CROSSWIND = 25;
 /** Half-widths of the bands: four places. */
@@ -150,11 +151,9 @@ export const P_TO_TRUE = 30;
 export const P_BRAKES_ABOVE = 31;
 export const P_BAND_COUNT = 32;
 export const P_CDA_BEHIND = 33;
-/** Step of the command, 0: none; the command's range between the actuator's end stops; half of the slack. */
+/** Step of the command, 0: none; half of the slack. */
 export const P_RESOLUTION = 34;
-export const P_LEAST = 35;
-export const P_GREATEST = 36;
-export const P_PLAY = 37;
+export const P_PLAY = 35;
 /** 1: the drive can be derated; there is a fuel tank or battery; a sensor with pulses or noise; an automatic gearbox; a belt. */
 export const P_DERATED = 38;
 export const P_SOURCE = 39;
@@ -166,10 +165,10 @@ export const P_BELT_KEPT = 43;
 /** Throttle at which the drive's law steps; 0: nowhere. */
 export const P_LAW_STEP = 44;
 /** What tells the slope (see sense-slope.ts); how far ahead it looks [s]; what a lag of it keeps over a sample. */
-export const P_SLOPE = 45;
-export const P_AHEAD = 46;
-export const P_SLOPE_KEPT = 47;
-export const P_SIZE = 48;
+export const P_SLOPE = 36;
+export const P_AHEAD = 37;
+export const P_SLOPE_KEPT = 45;
+export const P_SIZE = 46;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;

@@ -45,8 +45,8 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   const ticks = chunk[at.C_TICKS];
   if (ticks === 0) return;
   const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
-  const highest = p[at.P_HIGH];
-  const lowest = p[at.P_LOW];
+  const highest = p[at.P_GREATEST];
+  const lowest = p[at.P_LEAST];
   const sample = p[at.P_SAMPLE];
   // Samples are whole but for the last one of the run: everything is summed in samples.
   const last = ((ticks - 1) * at.L_STRIDE) | 0;

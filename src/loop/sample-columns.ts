@@ -42,8 +42,8 @@ export interface SampleColumns {
 function limitBits({ s, p, chunk }: Machine): number {
   const shifting = s[at.SHIFT_PART] > 0;
   return (
-    (!shifting && s[BUS_COMMAND] >= p[at.P_HIGH] ? LIMIT_UPPER : 0) |
-    (!shifting && s[BUS_COMMAND] <= p[at.P_LOW] ? LIMIT_LOWER : 0) |
+    (!shifting && s[BUS_COMMAND] >= p[at.P_GREATEST] ? LIMIT_UPPER : 0) |
+    (!shifting && s[BUS_COMMAND] <= p[at.P_LEAST] ? LIMIT_LOWER : 0) |
     (chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
     (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0) |
     (shifting ? LIMIT_SHIFT : 0)
