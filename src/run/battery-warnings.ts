@@ -1,5 +1,6 @@
 import { exp } from '../numeric/elementary.ts';
 import type { Warning } from '../problems/warning.ts';
+import { batteryPlaces } from '../study/battery-places.ts';
 import type { Replayed } from '../study/findings.ts';
 import { toKm, toPct } from '../units/convert.ts';
 import type { Battery, Heating } from '../vehicle/energy-source.ts';
@@ -7,16 +8,15 @@ import type { Battery, Heating } from '../vehicle/energy-source.ts';
 const km = (distance: number): string => `km ${toKm(distance).toFixed(2)}`;
 /** Derating below this is no news. */
 const NOTICED = 0.01;
-/** Charge below which no force means an empty battery, not heat or a voltage that sags to nothing. */
-const NEARLY_EMPTY = 0.01;
 
-/** Where a battery comes down to its reserve or runs empty, and where heat takes force away, run by run. */
+/** Where a battery comes down to its reserve or runs empty, takes no regeneration, and where heat takes force away, run by run. */
 export function batteryWarnings(replayed: readonly Replayed[]): readonly Warning[] {
   return replayed.flatMap(({ name, plan, result: { bins, ledger } }) => {
     const { source } = plan.vehicle.drive;
     if (source?.kind !== 'battery' || ledger.drawn === null) return [];
     return [
       ...chargeWarnings(name, source, bins),
+      ...fullWarnings(name, bins),
       ...(source.heating === null ? [] : heatWarnings(name, source.heating, bins)),
     ];
   });
@@ -24,35 +24,45 @@ export function batteryWarnings(replayed: readonly Replayed[]): readonly Warning
 
 type Bins = Replayed['result']['bins'];
 
-function chargeWarnings(name: string, { capacity, charge, reserve }: Battery, bins: Bins): Warning[] {
-  if (capacity === null) return [];
-  let left = charge * capacity;
-  let reserved = reserve > 0 && charge > reserve;
+function chargeWarnings(name: string, source: Battery, bins: Bins): Warning[] {
+  const { reserve, empty } = batteryPlaces(source, bins);
   const warnings: Warning[] = [];
-  for (let i = 0; i < bins.size; i++) {
-    left -= bins.drawn[i] ?? 0;
-    const at = bins.edge[i + 1] ?? 0;
-    // An empty battery gives no force, with what is left of a last sample in it.
-    if (bins.driveLost[i] === 1 && left <= NEARLY_EMPTY * capacity) {
-      warnings.push({
-        code: 'battery-empty',
-        message: `${name} runs its battery empty at ${km(at)}: from there on it has no force.`,
-        from: at,
-        to: at,
-      });
-      return warnings;
-    }
-    if (reserved && left <= reserve * capacity) {
-      reserved = false;
-      warnings.push({
-        code: 'battery-reserve',
-        message: `${name} comes down to the reserve of ${toPct(reserve).toFixed(0)} % of its battery at ${km(at)}.`,
-        from: at,
-        to: at,
-      });
-    }
-  }
+  if (reserve !== null)
+    warnings.push({
+      code: 'battery-reserve',
+      message: `${name} comes down to the reserve of ${toPct(source.reserve).toFixed(0)} % of its battery at ${km(reserve)}.`,
+      from: reserve,
+      to: reserve,
+    });
+  if (empty !== null)
+    warnings.push({
+      code: 'battery-empty',
+      message: `${name} runs its battery empty at ${km(empty)}: from there on it has no force.`,
+      from: empty,
+      to: empty,
+    });
   return warnings;
+}
+
+/** Where a run asks for all of the regeneration, and the battery takes less. */
+function fullWarnings(name: string, bins: Bins): Warning[] {
+  let [lost, from, to] = [NOTICED, -1, 0];
+  for (let i = 0; i < bins.size; i++) {
+    const here = bins.regenerationLost[i] ?? 0;
+    if (here <= NOTICED || !((bins.timeLower[i] ?? 0) > 0)) continue;
+    if (from < 0) from = bins.edge[i] ?? 0;
+    to = bins.edge[i + 1] ?? 0;
+    lost = Math.max(lost, here);
+  }
+  if (from < 0) return [];
+  return [
+    {
+      code: 'regeneration-refused',
+      message: `Between ${km(from)} and ${toKm(to).toFixed(2)} ${name} asks for full regeneration and has as little as ${toPct(1 - lost).toFixed(0)} % of it: what is missing is left to the rider's brake.`,
+      from,
+      to,
+    },
+  ];
 }
 
 /** Heat by the mean wheel power of each bin: near enough for a place. */

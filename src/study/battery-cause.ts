@@ -3,6 +3,7 @@ import type { BinRecord } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { type SharesLeft, sharesAtCharge } from '../vehicle/at-charge.ts';
 import { scaledDrive } from '../vehicle/scaled-drive.ts';
+import { NEARLY_EMPTY } from './battery-places.ts';
 import type { Derating, Hill, Replayed, Stretch } from './findings.ts';
 import { chargeAt, type HillWindow } from './hill-window.ts';
 import { nominalCourse, setSpeedAt } from './hold-course.ts';
@@ -25,7 +26,7 @@ interface TiredSide {
   /** Share left where it was least, and the mean from where any is lost to the end of the hill. */
   readonly least: number;
   readonly mean: number;
-  /** Where any is lost first, and where it is least. */
+  /** Where any is lost first, and the end of the bin where it is least. */
   readonly since: number;
   readonly at: number;
   /** Charge there; null: not known. */
@@ -47,9 +48,10 @@ export function tiredBattery(
     const cold = sharesAtCharge({ ...source, charge: charge ?? source.charge })[side];
     // Both factors multiply: the smaller one is what to name.
     const heat = cold > 0 ? least / cold : 1;
-    const byCharge = side === 'force' ? (least === 0 ? 'empty' : 'voltage') : 'full';
+    const empty = least === 0 && charge !== null && charge <= NEARLY_EMPTY;
+    const byCharge = side === 'force' ? (empty ? 'empty' : 'voltage') : 'full';
     const why = byCharge !== 'empty' && heat < cold ? 'heat' : byCharge;
-    return { least, mean, since: bins.edge[since], at: bins.edge[worst], charge, why };
+    return { least, mean, since: bins.edge[since], at: bins.edge[worst + 1], charge, why };
   };
   const force = sideOf(bins.driveLost, 'force');
   const regeneration = sideOf(bins.regenerationLost, 'regeneration');

@@ -34,7 +34,7 @@ export function hillFacts(
   for (let i = steepest; i < road.size && road.distance[i] <= to; i++) {
     if (road.distance[i] < from) continue;
     if (Math.abs(road.grade[i]) > Math.abs(road.grade[steepest])) steepest = i;
-    if (moreExtreme(kind, demand.share[i], demand.share[extreme])) extreme = i;
+    if (moreExtreme(kind, demand, i, extreme)) extreme = i;
   }
   const short = demand.share[extreme] >= 0;
   return {
@@ -59,7 +59,10 @@ export function hillFacts(
 }
 
 /** Farther out; on a descent further down, so that its brow does not stand for it, unless more than there is is asked. */
-function moreExtreme(kind: HillKind, share: number, than: number): boolean {
+function moreExtreme(kind: HillKind, { share: shares, required }: Demand, i: number, other: number): boolean {
+  const [share, than] = [shares[i], shares[other]];
+  // Where there is no force at all the share says no more.
+  if (share === than) return Math.abs(required[i]) > Math.abs(required[other]);
   if (kind !== 'descent' || share > 1 || than > 1) return Math.abs(share) > Math.abs(than);
   return share < than;
 }

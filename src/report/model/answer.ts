@@ -12,7 +12,8 @@ import {
   stretchText,
   withUnit,
 } from '../quantity.ts';
-import { CAUSE_WORDS } from './cause-words.ts';
+import { batteryClause, emptyWords } from './battery-words.ts';
+import { causeWords } from './cause-words.ts';
 import { cycleClause } from './cycle-words.ts';
 import { figureText } from './figure-text.ts';
 import { hillNoun } from './hill-words.ts';
@@ -54,7 +55,7 @@ const STATUS_WORDS = {
 export const statusWords = (candidate: CandidateView): string =>
   candidate.result.status === 'completed'
     ? STATUS_WORDS.completed
-    : `${STATUS_WORDS[candidate.result.status]} at ${placeText(candidate.result.endDistance)}`;
+    : `${emptyWords(candidate)}${STATUS_WORDS[candidate.result.status]} at ${placeText(candidate.result.endDistance)}`;
 
 const VERDICT_COST: Readonly<Record<Verdict, number>> = {
   met: 0,
@@ -133,6 +134,12 @@ function worstHill(view: View, name: string): Defeat | null {
   return worst;
 }
 
+/** An error against the slope is made when the slope is over. */
+function behind({ kind }: Hill, { speedChange }: HillOutcome): string {
+  if (kind === 'climb' && speedChange > 0) return ' behind its crest';
+  return kind === 'descent' && speedChange < 0 ? ' behind its foot' : '';
+}
+
 function hillClause(view: View, design: CandidateView): string {
   const worst = worstHill(view, design.name);
   if (worst === null) return 'no hill takes it out of its band';
@@ -141,8 +148,9 @@ function hillClause(view: View, design: CandidateView): string {
   const { hill, outcome } = worst;
   const verb = outcome.speedChange < 0 ? 'loses' : 'gains';
   const amount = changeText(Math.abs(outcome.speedChange), view.speed).replace('+', '');
-  const why = typeof outcome.cause === 'string' ? ` because ${CAUSE_WORDS[outcome.cause]}` : '';
-  return `${hillNoun(hill)} ${hill.number} (${stretchText(hill.from, hill.to)}, mean grade ${gradeText(hill.meanGrade)}) ${verdict}: it ${verb} ${amount}${why}`;
+  const cause = causeWords(outcome);
+  const why = cause === null ? '' : ` because ${cause}`;
+  return `${hillNoun(hill)} ${hill.number} (${stretchText(hill.from, hill.to)}, mean grade ${gradeText(hill.meanGrade)}) ${verdict}: it ${verb} ${amount}${behind(hill, outcome)}${why}`;
 }
 
 function lockedClause(view: View, alone: boolean): string | null {
@@ -263,6 +271,7 @@ export function answerOf(view: View): Answer {
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
     unstable ? 'its linear loop is unstable, so that it swings on any road' : null,
     hillClause(view, design),
+    batteryClause(view, design),
     cycleClause(view, design.name),
     ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),
     lockedClause(view, false),

@@ -1,7 +1,7 @@
-import type { Cause } from '../../study/findings.ts';
+import type { Cause, Derating, HillOutcome } from '../../study/findings.ts';
 
 /** Why a hill defeats a design, as the end of `because ...`. */
-export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
+const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
   torque: 'full throttle gives too little force',
   power: 'there is too little power',
   closed_throttle: 'closed throttle holds back too little',
@@ -29,3 +29,33 @@ export const CAUSE_NAMES: Readonly<Record<Cause, string>> = {
   gear: 'gear too high',
   traction: 'grip',
 };
+
+const DERATING_WORDS: Readonly<Record<Derating, string>> = {
+  altitude: CAUSE_WORDS.derating,
+  heat: 'heat leaves the drive too little force',
+  voltage: 'the voltage of its battery leaves too little force',
+  empty: 'its battery is empty',
+  full: 'its battery takes too little regeneration',
+};
+
+const DERATING_NAMES: Readonly<Record<Derating, string>> = {
+  altitude: CAUSE_NAMES.derating,
+  heat: 'heat',
+  voltage: 'voltage',
+  empty: 'battery empty',
+  full: 'battery takes no more',
+};
+
+type Reason = Pick<HillOutcome, 'cause' | 'derating'>;
+
+/** The same for one outcome: a derating by what derates. Null where there is no cause. */
+export function causeWords({ cause, derating }: Reason): string | null {
+  if (typeof cause !== 'string') return null;
+  return cause === 'derating' ? DERATING_WORDS[derating ?? 'altitude'] : CAUSE_WORDS[cause];
+}
+
+/** In as few words as it takes. */
+export function causeName({ cause, derating }: Reason): string | null {
+  if (typeof cause !== 'string') return null;
+  return cause === 'derating' ? DERATING_NAMES[derating ?? 'altitude'] : CAUSE_NAMES[cause];
+}

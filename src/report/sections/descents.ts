@@ -1,5 +1,6 @@
 import type { Hill } from '../../study/findings.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
+import { startingCharge } from '../model/battery-words.ts';
 import type { View } from '../model/view.ts';
 import { energyText, gradeText, NO_VALUE, powerText, speedText, stretchText } from '../quantity.ts';
 import { table } from './table.ts';
@@ -20,8 +21,9 @@ export function descents(view: View): Html | null {
     ...(geared ? [neededGear(hill)] : []),
   ]);
   const { throttleMin } = view.result.vehicle.drive;
+  const charge = startingCharge(view);
   return html`<h3>Descents that need a brake</h3>
-<p>Here even ${throttleMin < 0 ? 'full regeneration' : 'closed throttle'} holds back too little for the set speed. The brake power and energy are what would be left to the brakes at a steady set speed, in the gear engaged.</p>
+<p>Here even ${throttleMin < 0 ? 'full regeneration' : 'closed throttle'} holds back too little for the set speed. The brake power and energy are what would be left to the brakes at a steady set speed, in the gear engaged${charge === null ? '' : ` and with the battery ${charge.state}${charge.left}`}.</p>
 ${table(
   'Descents that need a brake',
   [

@@ -3,7 +3,8 @@ import { toPct } from '../../units/convert.ts';
 import { hillPicture } from '../charts/hill-picture.ts';
 import { candidateKey, lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
-import { CAUSE_NAMES } from '../model/cause-words.ts';
+import { startingCharge } from '../model/battery-words.ts';
+import { causeName } from '../model/cause-words.ts';
 import { gearName } from '../model/gear-words.ts';
 import { hillNoun } from '../model/hill-words.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
@@ -47,7 +48,7 @@ export function hillsSection(view: View): Section {
   const body = html`<p>A hill is every stretch where the demand leaves the range of the drive, or a candidate leaves its band or meets a limit; all candidates share them. ${
     rest > 0 && `Cards: the ${shown.length} worst of ${hills.length}; the table at the end has all.`
   } In the pictures time counts from the foot of the hill, and the hill is shaded${view.candidates.some(({ result }) => result.shifts.length > 0) && ', darker where a shift is made'}. Above: speed, the set speed dotted. Below: the command as lines, and as an area the throttle that would hold the set speed steadily; beyond the dashed lines the drive has no more. A line that swings too fast to be drawn is a band from least to greatest.</p>
-<p>${DEFINED}</p>
+<p>${DEFINED}${chargeWords(view)}</p>
 ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
@@ -55,6 +56,13 @@ ${candidateKey(view.candidates, PAGE_PAINT)}
 ${allHills(view)}
 ${descents(view)}`;
   return { id: 'hills', number: 6, title: 'Hills', body };
+}
+
+function chargeWords(view: View): string {
+  const charge = startingCharge(view);
+  return charge === null
+    ? ''
+    : ` What the drive has is that of its battery ${charge.state}${charge.left}; what it lost on the way stands under the causes.`;
 }
 
 /** How much a hill matters: what it does to the designs, then how far the demand is out of range. */
@@ -86,7 +94,7 @@ function facts(view: View, hill: Hill): string {
   const above = hill.share > 0;
   const share = `${fixedApart(toPct(Math.abs(hill.share)), [100])}\u00a0%`;
   const needs = above
-    ? `Asks ${forceText(hill.requiredForce)}, full throttle has ${forceText(hill.availableForce)} (${share}).`
+    ? `Asks ${forceText(hill.requiredForce)}, ${hasWords(hill)} (${share}).`
     : `Asks the drive to hold back ${forceText(-hill.requiredForce)}; it can hold back ${forceText(-hill.availableForce)} (${share}).`;
   const set = view.speed.of(setSpeedAt(view, hill.shareAt));
   const steadySpeed = withUnit(fixedApart(view.speed.of(hill.sustainedSpeed), [set]), view.speed.name);
@@ -94,11 +102,17 @@ function facts(view: View, hill: Hill): string {
     Math.abs(hill.share) <= 1
       ? ''
       : above
-        ? ` Full throttle would hold ${steadySpeed}.`
+        ? ` ${hill.beforeGrip === undefined ? 'Full throttle' : 'Within the grip it'} would hold ${hill.sustainedSpeed > 0 ? steadySpeed : 'no speed'}.`
         : ` It would run away to ${steadySpeed}.`;
   const grade = `${lengthText(hill.to - hill.from)} at ${gradeWords(hill)}, steepest ${gradeText(hill.maxGrade)}.`;
   return `${grade} ${needs}${steady}${gearFacts(view, hill)}${brakeFacts(hill)}${hill.unresolved ? ' Shorter than the smoothing resolves: the true hill may be steeper.' : ''}`;
 }
+
+/** What there is against it: full throttle, or what of it the grip passes on. */
+const hasWords = ({ availableForce, beforeGrip }: Hill): string =>
+  beforeGrip === undefined
+    ? `full throttle has ${forceText(availableForce)}`
+    : `grip passes ${forceText(availableForce)} of the ${forceText(beforeGrip)} that full throttle gives`;
 
 /** Gear engaged and needed, and what each gear would sustain. */
 function gearFacts(view: View, { gears, share }: Hill): string {
@@ -185,16 +199,17 @@ function sentences(view: View, runs: readonly Run[]): Html | null {
   const groups = new Map<string, Run[]>();
   for (const run of touched) {
     const key = JSON.stringify([
-      run.outcome.cause,
+      causeName(run.outcome),
       run.outcome.why,
       run.outcome.wouldHold.map((one) => one.words),
     ]);
     groups.set(key, [...(groups.get(key) ?? []), run]);
   }
   return html`<ul class="why">${[...groups.values()].map((group) => {
-    const { cause, why, wouldHold } = group[0]!.outcome;
+    const { why, wouldHold } = group[0]!.outcome;
+    const cause = causeName(group[0]!.outcome);
     const names = group.map(({ candidate }) => candidate.name).join(', ');
-    const tag = typeof cause === 'string' ? ` (${CAUSE_NAMES[cause]})` : '';
+    const tag = cause === null ? '' : ` (${cause})`;
     return html`<li><strong>${names}</strong>${tag}: ${inReaderUnit(why, view.speed)}${wouldHold.length > 0 && html`<br><span class="hold">What would hold: ${inReaderUnit(wouldHold.map((remedy) => remedy.words).join(' '), view.speed)}</span>`}</li>`;
   })}</ul>`;
 }
@@ -221,7 +236,8 @@ function allHills(view: View): Html {
     ...view.candidates.map((candidate) => {
       const outcome = hill.outcomes.find((one) => one.candidate === candidate.name);
       if (outcome === undefined || endedBefore(candidate, hill)) return NO_VALUE;
-      return html`${errorText(view, outcome.speedChange)}${typeof outcome.cause === 'string' && html`<br><span class="small">${CAUSE_NAMES[outcome.cause]}</span>`}`;
+      const cause = causeName(outcome);
+      return html`${errorText(view, outcome.speedChange)}${cause !== null && html`<br><span class="small">${cause}</span>`}`;
     }),
   ]);
   return table(
