@@ -9,7 +9,7 @@ export interface CombustionCurves {
   readonly corners: readonly number[];
   /** Throttles between which the share is straight, from 0 to 1; where it changes with shaft speed, the ends alone. */
   readonly throttle: Float64Array;
-  /** The share changes with shaft speed, and is straight between no nodes. */
+  /** Torque is straight between no nodes: the share changes with shaft speed, or a parabola is bent once more where the driveline turns. */
   readonly bends: boolean;
   /** Torque at closed throttle, negative where it holds back; at full throttle. */
   readonly closed: (shaftSpeed: number) => number;
@@ -28,7 +28,8 @@ export function combustionCurves({
   torque,
   drag,
   idle,
-}: Pick<CombustionSpec, 'torque' | 'drag' | 'idle'>): CombustionCurves {
+  efficiency,
+}: Pick<CombustionSpec, 'torque' | 'drag' | 'idle' | 'efficiency'>): CombustionCurves {
   const closed = (w: number): number =>
     drag === null ? 0 : -piecewiseLinear(drag.shaftSpeed, drag.torque, w);
   const dragCorners = drag === null ? [] : [...drag.shaftSpeed];
@@ -36,11 +37,13 @@ export function combustionCurves({
     case 'parabola': {
       const { peak, peakSpeed, falloff } = torque;
       const reach = falloff === 0 ? Number.POSITIVE_INFINITY : 1 / Math.sqrt(falloff);
+      // What holds back goes through the driveline the other way: that is no parabola any more, and nodes stand for it.
+      const bends = efficiency < 1 && dragCorners.some((w) => closed(w) < 0);
       const zeros = [peakSpeed * (1 - reach), peakSpeed * (1 + reach)] as const;
       return {
         corners: [...dragCorners, ...zeros.filter((w) => w > 0 && Number.isFinite(w))],
         throttle: Float64Array.of(0, 1),
-        bends: false,
+        bends,
         closed,
         full: (w) => {
           const away = w / peakSpeed - 1;
@@ -48,7 +51,7 @@ export function combustionCurves({
         },
         share: () => (throttle) => throttle,
         curvature: (from, to) =>
-          to > zeros[0] && from < zeros[1] ? (-peak * falloff) / (peakSpeed * peakSpeed) : 0,
+          !bends && to > zeros[0] && from < zeros[1] ? (-peak * falloff) / (peakSpeed * peakSpeed) : 0,
       };
     }
     case 'full_load': {

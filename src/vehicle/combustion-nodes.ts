@@ -11,12 +11,14 @@ const SAME = 1e-9;
 /** How far straight lines over throttle, and over shaft speed, may be from an engine whose share bends [of full torque]. */
 const GAP_OVER_THROTTLE = 0.0014;
 const GAP_OVER_SPEED = 0.001;
+/** Shaft speeds at which the throttles are looked at lie no further apart [rad/s]. */
+const SEEN_EVERY = 25;
 /** Where between two nodes the gap is looked for. */
 const PROBES = [0.25, 0.5, 0.75] as const;
 
 /**
- * Nodes of an engine's table: the corners of its curves, with the throttles at which its driveline turns; where the share
- * changes with shaft speed, as few more as keep bilinear torque within 0.3 % of full torque of it, up to the limiter.
+ * Nodes of an engine's table: the corners of its curves, with a few throttles at which its driveline turns; where it turns,
+ * or the share changes with shaft speed, as few more as keep bilinear torque within 0.3 % of full torque, up to the limiter.
  *
  * @returns shaft speeds from 0 [rad/s] and throttles from 0 to 1, both increasing
  */
@@ -26,16 +28,19 @@ export function combustionNodes(
 ): { readonly shaftSpeed: Float64Array; readonly throttle: Float64Array } {
   const corners = speedNodes(spec, curves);
   const edges = [...curves.throttle, ...(spec.fuelCut === null ? [] : [spec.fuelCut.throttle])];
-  if (!curves.bends)
-    return {
-      shaftSpeed: corners,
-      throttle: merged([...edges, ...turningThrottles(spec, curves, corners)]),
-    };
+  const turning = curves.bends ? [] : turningThrottles(spec, curves, corners);
+  if (!curves.bends && turning.length === 0) return { shaftSpeed: corners, throttle: merged(edges) };
   const row = (w: number): CombustionRow => combustionRow(spec, curves, w);
   const limit = spec.revLimit ?? Number.POSITIVE_INFINITY;
   const within = corners.filter((w) => w <= limit);
-  const throttle = fittedThrottles(row, within, merged(edges));
+  const throttle = fittedThrottles(row, within, merged([...edges, ...turning]));
   return { shaftSpeed: merged([...fittedSpeeds(row, within, throttle), ...corners]), throttle };
+}
+
+/** Shaft speeds to an end, close enough to see where the driveline turns. */
+function between(from: number, to: number): number[] {
+  const parts = Math.max(2, Math.ceil((to - from) / SEEN_EVERY));
+  return Array.from({ length: parts }, (_, k) => from + ((to - from) * (k + 1)) / parts);
 }
 
 /** Throttles between which the torque is nearly straight, at all shaft speeds. */
@@ -44,8 +49,7 @@ function fittedThrottles(
   corners: Float64Array,
   throttle: Float64Array,
 ): Float64Array {
-  const speeds = merged([...corners].flatMap((w, i) => (i === 0 ? [w] : [(corners[i - 1]! + w) / 2, w])));
-  const rows = Array.from(speeds, row);
+  const rows = Array.from(merged([...corners].flatMap((w, i) => between(corners[i - 1] ?? w, w))), row);
   const least = leastAllowed(rows);
   return fittedNodes(throttle, (from, to) =>
     rows.reduce((worst, { torque, span }) => {
@@ -105,14 +109,14 @@ function speedNodes(spec: CombustionSpec, curves: CombustionCurves): Float64Arra
 
 /**
  * Throttles at which torque turns from holding back to driving, and the driveline with it: a few between the least and
- * the greatest of all shaft speeds. The parabola is left linear in the throttle.
+ * the greatest of all shaft speeds.
  */
 function turningThrottles(
-  { torque, idle, efficiency, revLimit }: CombustionSpec,
+  { idle, efficiency, revLimit }: CombustionSpec,
   curves: CombustionCurves,
   shaftSpeed: Float64Array,
 ): number[] {
-  if (torque.kind === 'parabola' || efficiency === 1) return [];
+  if (efficiency === 1) return [];
   let [least, greatest] = [1, 0];
   for (const w of shaftSpeed) {
     const closed = governedTorque(curves, idle, w);

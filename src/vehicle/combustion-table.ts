@@ -24,12 +24,12 @@ export interface CombustionTable {
 
 /**
  * Samples an engine at every corner of its curves, so that nothing is lost in between, and where the shape of part
- * throttle changes with shaft speed so densely that little is, 0.3 % of full torque:
+ * throttle changes with shaft speed or the driveline turns so densely that little is, 0.3 % of full torque:
  *
  * - Idle governor: closed throttle gives its drag down to idle + 30 rad/s, rises in a straight line to 0 at idle, 0 below.
  * - Rev limiter: what the throttle adds to closed throttle falls from its value at `revLimit` to 0 over `limitBand`.
  * - Driveline: at the nodes, torque times efficiency where it drives, over efficiency where it holds back. Nodes stand
- *   close where it turns from one to the other; the parabola, linear in the throttle, is straight over that corner.
+ *   close where it turns from one to the other; a parabola with such a turn is sampled too, without its own term.
  * - Altitude: the loss at a node is f (T - c) / (f - c) with full and closed torque f and c there, by the driveline like
  *   T, so that full throttle is d f exactly (ISO 1585 corrects full-load torque) and closed throttle is unchanged.
  *
