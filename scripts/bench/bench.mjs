@@ -6,6 +6,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { must, root } from '../run.mjs';
 import { benchKinds } from './kinds.mjs';
+import { benchMatrix, cellsOfMatrix, runsOfMatrix } from './matrix.mjs';
 import { benchBytes, benchPlan, benchRoad } from './scenario.mjs';
 
 if (!existsSync(join(root, 'dist/index.js'))) must('npm', ['run', '-s', 'build']);
@@ -96,6 +97,20 @@ try {
   for (const { label, ratios } of kinds)
     show(`  ${label}`, factor(median(ratios)), `(best ${factor(Math.min(...ratios))}; goal 1.5)`);
   console.log('');
+
+  for (const [what, recovers, goal] of [
+    ['', false, '(goal 1.1)'],
+    [', a recovery among what is judged', true, ''],
+  ]) {
+    const work = benchMatrix(library, recovers);
+    const ratios = [];
+    for (let i = 0; i < ROUNDS; i++) {
+      const runs = cpu(() => runsOfMatrix(library, work)).seconds;
+      const cells = cpu(() => cellsOfMatrix(library, work)).seconds;
+      if (i > 0) ratios.push(cells / runs);
+    }
+    show(`matrix of 24 combinations / its runs alone${what}`, factor(median(ratios)), goal);
+  }
 
   const long = benchRoad(1000 * KM);
   const short = benchRoad(20 * KM);

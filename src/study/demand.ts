@@ -16,6 +16,8 @@ import { runawayFrom, sustainedFrom } from './settling-speed.ts';
 
 /** An ideal hold this close to the set speed has it back [m/s]. */
 const BACK = fromKmh(0.5);
+/** Share of demand up to which a cell between two knots needs no look at what lies between. */
+const WELL_IN_RANGE = 0.9;
 /** Granted after that for settling [s]. */
 const SETTLING = 10;
 
@@ -47,7 +49,15 @@ export function demandOf(
   const setSpeed = setSpeedAt(road, course);
   const along = demandAlong(road, vehicle, setSpeed, plannedGears(road, vehicle.drive, rider.shifts));
   const ideal = quasiSteadySpeeds(
-    { road, vehicle, setSpeed, gear: along.gear, brakesAbove: rider.brakesAbove, throttle: null },
+    {
+      road,
+      vehicle,
+      setSpeed,
+      gear: along.gear,
+      brakesAbove: rider.brakesAbove,
+      throttle: null,
+      held: surelyHeld(setSpeed, along.share),
+    },
     0,
     road.size - 1,
     course.startSpeed,
@@ -122,6 +132,19 @@ function demandAlong(road: Road, vehicle: Vehicle, setSpeed: Float64Array, plann
     }
   }
   return { required, upper, lower, grip, gears, gear, share, sustained, runaway, brakePower };
+}
+
+/** Cells at one set speed whose demand is well in range at both ends: a hold at the set speed loses nothing there. */
+function surelyHeld(setSpeed: Float64Array, share: Float64Array): Uint8Array {
+  const held = new Uint8Array(share.length);
+  for (let i = 0; i + 1 < share.length; i++)
+    if (
+      setSpeed[i] === setSpeed[i + 1] &&
+      Math.abs(share[i]) <= WELL_IN_RANGE &&
+      Math.abs(share[i + 1]) <= WELL_IN_RANGE
+    )
+      held[i] = 1;
+  return held;
 }
 
 function holdableKnots(

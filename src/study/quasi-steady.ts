@@ -26,6 +26,8 @@ export interface QuasiSteadyPlan {
   readonly throttle: number | null;
   /** Gear in force, knot by knot; the engaged one all the way where it is left out. An ideal hold with a gearbox that shifts by itself has the best of all gears at every speed. */
   readonly gear?: Uint8Array;
+  /** 1 for each cell, by its first knot, in which an ideal hold that is at the set speed surely stays there. */
+  readonly held?: Uint8Array;
 }
 
 /**
@@ -56,7 +58,7 @@ export function quasiSteadySpeeds(
   to: number,
   entrySpeed: number,
 ): Float64Array {
-  const { road, vehicle, setSpeed, gear } = plan;
+  const { road, vehicle, setSpeed, gear, held } = plan;
   const inGears = vehicle.drive.gears.map((_, g) =>
     (plan.throttle === null ? inGear : keptInGear)(vehicle, g),
   );
@@ -65,6 +67,10 @@ export function quasiSteadySpeeds(
   speeds[0] = v;
   let stalled = false;
   for (let i = from; i < to; i++) {
+    if (held?.[i] === 1 && v === setSpeed[i]) {
+      speeds[i + 1 - from] = v;
+      continue;
+    }
     const geared = inGears[gear?.[i] ?? vehicle.drive.gear];
     const slowest = slowestOf(geared);
     const timed = road.along === 'time';

@@ -1,22 +1,23 @@
+import type { BinRecord } from '../loop/result.ts';
+import type { SpeedTrace } from '../loop/trace-speeds.ts';
 import type { Road } from '../road/road.ts';
-import type { Demand, Figure, RecoveredHill, Replayed } from './findings.ts';
+import type { Demand, RecoveredHill, Replayed, Stretch } from './findings.ts';
 import { type HillPlace, hillPassage, marksHill, type PassageContext } from './hill-passage.ts';
-import { speedsOver } from './hill-series.ts';
 import { hillStretches } from './hill-stretches.ts';
 import { courseOfRun } from './hold-course.ts';
 import { outOfRange } from './out-of-range.ts';
-import { RECOVERED_BAND, recoveryOf } from './recovery.ts';
-import { sampleAt } from './series-measures.ts';
+import { NOT_RECOVERED, RECOVERED_BAND, recoveryOf } from './recovery.ts';
 
-/** Recoveries by speeds alone lie within this of those by every sample: a sample or two of any controller [s]. */
-const NEAR = 0.5;
+/** Slower ones are looked at sample for sample whatever the others are: they may be none within the time that is waited [s]. */
+const SLOW = 90;
 
 type Outcome = RecoveredHill['outcomes'][number];
 
 /**
- * The hills of a road with nothing but what the figure of recoveries needs, for a part of the time of `findHills`:
- * every hill is looked at by its speeds alone, and those that may be the slowest again sample for sample. The worst
- * recovery is that of `findHills` bit for bit; the others are right to a sample or two.
+ * The hills of a road with nothing but what the figure of recoveries needs, for a small part of the time of `findHills`:
+ * the record by bins bounds every recovery from above, and from the slowest bound on hills are replayed sample for
+ * sample until no other can be slower. The worst recovery is that of `findHills` bit for bit; for the others their
+ * bounds stand, a bin or two above.
  *
  * @param replayed candidates after their runs over this road
  * @param band half-width of the band that a hill defeats [m/s]
@@ -52,25 +53,61 @@ function outcomesOf(replayed: Replayed, hills: readonly HillPlace[], context: Pa
   const { name: candidate, plan, result } = replayed;
   const { band, course } = context;
   const none: Outcome = { candidate, affected: false, recovery: 0 };
-  if (plan.controller.kind === 'locked') return hills.map(() => none);
-  const marked = hills.map((hill) => result.endDistance > hill.from && marksHill(result, hill, course, band));
-  const near = hills.map((hill, k): Figure => (marked[k] ? bySpeeds(replayed, hill, context) : 0));
-  const slowest = near.reduce<number>(
-    (most, time) => (typeof time === 'number' ? Math.max(most, time) : most),
-    0,
-  );
-  return hills.map((hill, k) => {
-    const time = near[k];
-    if (!marked[k]) return none;
-    if (typeof time === 'number' && time < slowest - NEAR)
-      return { candidate, affected: true, recovery: time };
+  const outcomes = hills.map(() => none);
+  if (plan.controller.kind === 'locked') return outcomes;
+  const bounds = boundsByBins(result.bins, context);
+  const marked = hills
+    .map((hill, k) => ({ hill, k }))
+    .filter(({ hill }) => result.endDistance > hill.from && marksHill(result, hill, course, band))
+    .map((one) => ({ ...one, bound: bounds(one.hill) }));
+  for (const { k, bound } of marked) outcomes[k] = { candidate, affected: true, recovery: bound };
+  let slowest = 0;
+  const look = ({ hill, k }: { hill: HillPlace; k: number }): Outcome => {
     const { events, recovery } = hillPassage(replayed, hill, context);
-    return { candidate, affected: events.affected, recovery: recovery.time };
-  });
+    if (typeof recovery.time === 'number') slowest = Math.max(slowest, recovery.time);
+    outcomes[k] = { candidate, affected: events.affected, recovery: recovery.time };
+    return outcomes[k];
+  };
+  // One that never came, the first along the way, is before any other: nothing else needs to be known then.
+  for (const one of marked.filter(({ bound }) => bound >= SLOW)) {
+    const { affected, recovery } = look(one);
+    if (affected && typeof recovery !== 'number' && recovery.none === NOT_RECOVERED)
+      return outcomes.map((outcome) => (outcome.recovery === Number.POSITIVE_INFINITY ? none : outcome));
+  }
+  for (const one of marked
+    .filter(({ bound }) => bound < SLOW)
+    .sort((a, b) => b.bound - a.bound || a.k - b.k)) {
+    if (one.bound < slowest) break;
+    look(one);
+  }
+  return outcomes;
 }
 
-function bySpeeds(replayed: Replayed, hill: HillPlace, context: PassageContext): Figure {
-  const { series, whole } = speedsOver(replayed, hill, context);
-  const rule = { ...context, settling: context.course.settling, whole };
-  return recoveryOf(series, sampleAt(series, hill.from), sampleAt(series, hill.until), rule).time;
+/**
+ * What a recovery from a hill takes at most [s]: the same rule over bins in the place of samples, each at its beginning
+ * with its greatest error, and out of range or following only where the whole bin is; infinite where it never ends.
+ */
+function boundsByBins(bins: BinRecord, context: PassageContext): (hill: HillPlace) => number {
+  const { size, edge, timeAt, errorMin, errorMax } = bins;
+  const series: SpeedTrace = {
+    size,
+    time: timeAt,
+    distance: edge,
+    setSpeed: new Float64Array(size),
+    speed: Float64Array.from({ length: size }, (_, i) => Math.max(errorMax[i], -errorMin[i])),
+  };
+  const width = edge[1] - edge[0];
+  const whole = (stretches: readonly Stretch[]): Stretch[] =>
+    stretches.map(({ from, to }) => ({ from, to: to - width })).filter(({ from, to }) => to > from);
+  const rule = {
+    ...context,
+    outOfRange: whole(context.outOfRange),
+    settling: whole(context.course.settling),
+    whole: true,
+  };
+  return ({ from, until }) => {
+    const first = Math.min(Math.floor(from / width), size - 1);
+    const { time } = recoveryOf(series, first, Math.min(size, Math.ceil(until / width) + 1), rule);
+    return typeof time === 'number' ? time : Number.POSITIVE_INFINITY;
+  };
 }
