@@ -58,7 +58,7 @@ export const COMMANDS = {
     about: 'replay a case: road, loops, study, report',
     details: [
       'Reads the case (YAML or JSON) and the files that it names, replays every candidate over the road, and writes report.html, summary.json, the data files and the charts into a folder: --out, or out/<case name> (for a file called case.yaml, out/<name of its folder>).',
-      'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are replaced or removed: a file that no run wrote is refused.',
+      'The folder is changed only when the whole run succeeded, and of what was there only the files of an earlier run are replaced or removed: a file that no run wrote stays, and one in the way of the report or the summary is refused.',
       'A matrix in the case (loads, winds, directions, gears, set speeds) is replayed in every combination, side by side where there are cores; the results are the same for any number of threads.',
       'Refused for its size: a road of more than 2,000,000 knots; runs of more than 500,000,000 controller samples, or tables of more than 2,000,000 rows, over all candidates.',
       'JUnit XML has one test suite a candidate and one test case a requirement: not met is a failure, not judged an error, too close to call is skipped. Of files that are there already only an earlier one of ridgehold is written over.',

@@ -121,7 +121,7 @@ function sourceWords(source: EnergySource): string {
       source.capacity === null
         ? 'tank not given'
         : `tank of ${withUnit(significant((1000 * source.capacity) / source.heat), 'l')}`;
-    return `fuel of ${withUnit(significant(source.heat / 1e9), 'MJ/l')}, ${tank}; its use a map over shaft speed and torque`;
+    return `fuel of ${withUnit(significant(source.heat / 1e9), 'MJ/l')}, ${tank}; its use goes by shaft speed and torque`;
   }
   const { capacity, charge, reserve, sag, acceptance, heating } = source;
   const energy =

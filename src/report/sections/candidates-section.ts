@@ -106,8 +106,16 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
   const whole = values.filter((value, i) => value !== null && !endedEarly(view.candidates[i]!));
   const [low, high] = [Math.min(0, ...whole.map(Number)), Math.max(0, ...whole.map(Number))];
   const merits = name === BEST_IS_NONE ? values.map((value) => value && Math.abs(value)) : values;
-  const best = bestOf(view.candidates, merits, row.better);
   const beside = row.unit === 'km/h' ? [toKmh(view.result.band)] : [];
+  const texts = values.map((value) =>
+    value === null ? NO_VALUE : figureTextBeside(value, beside, row.unit, view.speed),
+  );
+  // What all tell as nothing gets no bar: it would show what stands behind the last digit.
+  const bars =
+    high > low &&
+    view.candidates.length > 1 &&
+    texts.some((text, i) => !endedEarly(view.candidates[i]!) && /[1-9]/.test(text.split('\u00a0')[0]!));
+  const best = bestOf(view.candidates, merits, row.better, texts);
   const head = row.takesBand ? `${row.label}, ${bandText(view.result.band, view.speed)}` : row.label;
   return [
     [
@@ -115,9 +123,9 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
       ...view.candidates.map((candidate, i) => {
         const value = values[i]!;
         if (value === null) return NO_VALUE;
-        const text = figureTextBeside(value, beside, row.unit, view.speed);
+        const text = texts[i]!;
         if (endedEarly(candidate)) return html`${text}${UP_TO_THERE}`;
-        return html`${i === best ? html`<strong>${text}</strong>` : text}${high > low && view.candidates.length > 1 && bar(value, low, high, candidate)}`;
+        return html`${i === best ? html`<strong>${text}</strong>` : text}${bars && bar(value, low, high, candidate)}`;
       }),
     ],
   ];
@@ -128,6 +136,7 @@ function bestOf(
   candidates: readonly CandidateView[],
   values: readonly (number | null)[],
   better: 'lower' | 'higher' | null,
+  texts: readonly string[],
 ): number | null {
   if (better === null) return null;
   const designs = candidates.flatMap((candidate, i) => {
@@ -139,7 +148,10 @@ function bestOf(
   if (designs.length < 2) return null;
   const order = designs.sort((a, b) => (better === 'lower' ? a.value - b.value : b.value - a.value));
   const [first, second] = [order[0]!, order[1]!];
-  return Math.abs(first.value - second.value) <= 0.005 * Math.abs(second.value) ? null : first.i;
+  return Math.abs(first.value - second.value) <= 0.005 * Math.abs(second.value) ||
+    texts[first.i] === texts[second.i]
+    ? null
+    : first.i;
 }
 
 function bar(value: number, low: number, high: number, candidate: CandidateView): Html {

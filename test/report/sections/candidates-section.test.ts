@@ -54,3 +54,23 @@ it('tells what swings are looked for, and whose linear loop swings anyway', () =
   expect(told(true)).not.toContain('unstable');
   expect(told(false)).toContain('The linear loop of b is unstable and swings on any road, told here or not.');
 });
+
+it('what is told alike is not better, and what all tell as nothing has no bar', () => {
+  const near = { a: { mean_error_kmh: 0.01 }, b: { mean_error_kmh: -0.04 } };
+  expect(rowOf('Mean error', {}, near)).toEqual(['0.0 km/h', '0.0 km/h']);
+  const bars = (figures: Readonly<Record<string, Readonly<Record<string, Figure>>>>): number => {
+    const result = fixtureResult({ lengthKm: 12, designs: ['a', 'b'], locked: false });
+    const candidates = result.candidates.map((one) => ({
+      ...one,
+      figures: { ...one.figures, ...figures[one.name] },
+    }));
+    const page = candidatesSection(viewOf({ ...result, candidates }, 'kmh')).body.toString();
+    const row = page.split('<tr>').find((text) => text.includes('>Mean error'))!;
+    return row.split('class="bar"').length - 1;
+  };
+  expect(bars(near)).toBe(0);
+  expect(bars({ ...near, b: { mean_error_kmh: -0.4 } })).toBe(2);
+  // A hundredth of a second is no better time lost.
+  const lost = { a: { time_lost_s: 0.01 }, b: { time_lost_s: 0.03 } };
+  expect(rowOf('Time lost', {}, lost)).toEqual(['0.0 s', '0.0 s']);
+});
