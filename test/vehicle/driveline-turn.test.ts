@@ -37,7 +37,7 @@ const cases: readonly (readonly [string, EngineDriveSpec['torque'], number])[] =
   ['a full load in proportion to the throttle, 80 %', pointed, 0.8],
 ];
 
-test.each(cases)('%s, is within 0.3 %% of the definition', (_name, torque, efficiency) => {
+test.each(cases)('%s, is the definition to 0.3 per cent of full torque', (_name, torque, efficiency) => {
   const spec = { ...singleWithGears, torque, efficiency, fuelCut: null, revLimit: null };
   const drive = engineDrive(spec);
   const ratio = 5.3 / 0.31;
