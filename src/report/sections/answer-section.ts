@@ -40,7 +40,7 @@ export function answerSection(view: View): Section {
   const standing = STANDING[answer.standing];
   const { defaults, requirements, overrides, warnings } = view.result;
   const ofVehicle = defaults.filter((one) => one.of === 'vehicle').length;
-  const body = html`<div class="answer ${standing.look}"><p class="standing"><span aria-hidden="true">${standing.mark}</span> ${standing.words}${answer.design !== null && html` <span class="of">(${answer.design})</span>`}</p><p class="sentence">${sentenceOf(answer)}</p>${answer.designs.length > 1 && requirements.length > 0 && standings(answer.designs)}</div>
+  const body = html`<div class="answer ${standing.look}"><p class="standing"><span aria-hidden="true">${standing.mark}</span> ${standing.words}${answer.design !== null && html` <span class="of">(${answer.design}${view.result.matrix !== null && ', the case itself'})</span>`}</p><p class="sentence">${sentenceOf(answer)}</p>${answer.designs.length > 1 && requirements.length > 0 && standings(answer.designs)}</div>
 ${requirements.length === 0 ? html`<p>The case gives no requirement; the figures below stand by themselves.</p>` : requirementTable(view)}
 <p class="note">${defaultsWords(ofVehicle)}${overrides.length > 0 && html` Changed beside the case: ${overrides.join('; ')}.`}${warnings.length > 0 && html` <a href="#method-cautions">${warnings.length === 1 ? 'One warning' : `${warnings.length} warnings`}</a> came with the run.`}</p>
 <p class="caution"><strong>A simulation is no approval to ride.</strong> Speed hold can hide a slide, a bend or a stop ahead. Local rules, type approval and qualified people come first: <a href="#method-cautions">all cautions</a>.</p>`;

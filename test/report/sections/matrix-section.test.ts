@@ -157,6 +157,8 @@ describe('the matrix in the report', () => {
       '; over 6 combinations of load and wind it meets every requirement in 5, and is worst at two up, head.',
     );
     expect(standing).toBe('met');
+    expect(render(wish)).toContain('(pi-firm, the case itself)');
+    expect(renderReport(RUN, { units: 'kmh' })).toContain('(pi-firm)');
   });
 
   it('speaks the unit of the reader', () => {
