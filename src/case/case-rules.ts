@@ -224,11 +224,35 @@ function unknownFigures(file: unknown): RuleFault[] {
   });
 }
 
+/** A limit that no share can reach. */
+function shareBeyondAll(
+  unit: string,
+  requirement: Readonly<Record<string, unknown>>,
+  i: number,
+): RuleFault[] {
+  if (unit !== '%') return [];
+  return ['at_least', 'at_most'].flatMap((key): RuleFault[] => {
+    const limit = requirement[key];
+    if (typeof limit !== 'number' || Math.abs(limit) <= 100) return [];
+    return [
+      {
+        path: ['requirements', i, key],
+        code: 'out-of-range',
+        message: `is more than all of it: ${String(requirement.figure)} is a share`,
+        found: `${limit} %`,
+        allowed: 'up to 100 %',
+      },
+    ];
+  });
+}
+
 /** A limit on the side where every run meets it, or none does, is a slip of the pen. */
 function limitsInWrongSense(file: unknown): RuleFault[] {
   return items(file, 'requirements').flatMap((requirement, i): RuleFault[] => {
     const row = FIGURES.find(({ name }) => name === requirement.figure);
-    if (row === undefined || row.better === null) return [];
+    if (row === undefined) return [];
+    const beyond = shareBeyondAll(row.unit, requirement, i);
+    if (beyond.length > 0 || row.better === null) return beyond;
     const [right, wrong] = row.better === 'higher' ? ['at_least', 'at_most'] : ['at_most', 'at_least'];
     const below = row.name === 'worst_low_kmh';
     const hint = below ? `: it is 0 or negative, -3 is 3 ${row.unit} below the set speed` : '';

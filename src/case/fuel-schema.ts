@@ -22,7 +22,7 @@ const energyContent = {
 const willansFuel = mapping('Fuel by a straight line over work: P_fuel = (P + friction w) / slope', {
   willans: mapping('Willans line', {
     friction_nm: number('N m', 0, 500, 'Friction torque that the line cuts off'),
-    slope_pct: number('%', 1, 100, 'Work at the crankshaft gained for more fuel energy'),
+    slope_pct: number('%', 10, 100, 'Work at the crankshaft gained for more fuel energy'),
   }),
   ...energyContent,
 });

@@ -2,7 +2,7 @@ import { loopMargins } from '../linear/margins.ts';
 import { type StepFigures, stepFigures } from '../linear/step-figures.ts';
 import { type Complex, complex, sizeOfComplex } from '../numeric/complex.ts';
 import { InputError } from '../problems/input-error.ts';
-import { toKmh, toPct } from '../units/convert.ts';
+import { fromRpm, toKmh, toPct } from '../units/convert.ts';
 import { type LinearVehicle, linearise } from '../vehicle/linearise.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
@@ -64,12 +64,19 @@ export function designLoop(point: DesignPoint): DesignLoop {
     throw notFeasible(
       `the drive cannot hold the operating point of ${speedWords(point.at)}`,
       `a throttle of ${figure(toPct(model.throttle))} %`,
-      `${toPct(least)} to ${toPct(greatest)} %`,
+      `${toPct(least)} to ${toPct(greatest)} %${gearHint(point.vehicle)}`,
     );
   const { actuator, drive, sensor } = point.vehicle;
   const delays = actuator.deadTime + sensorDelay(sensor, point.at) + point.computingDelay + point.sample / 2;
   const lags = actuator.lag + drive.lag + (model.belt?.lag ?? 0) + sensor.filter + delays;
   return { point, model, loop: sampledLoop(point.vehicle, model, point), careful: 0.3 / lags };
+}
+
+/** Too long or too short a ratio is the usual slip behind such a throttle: how fast the engaged gear is. */
+function gearHint({ drive: { gear, gears } }: Vehicle): string {
+  if (gears.length < 2) return '';
+  const speed = fromRpm(1000) / gears[gear]!.ratio;
+  return `; gear ${gear + 1} goes ${speedWords(speed)} at 1000 rpm: are gear and ratios right?`;
 }
 
 /** Acceleration lost at once when the road steps from the grade of the point by `step` [m/s2], positive uphill. */

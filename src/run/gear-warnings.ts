@@ -2,7 +2,7 @@ import type { RiderPlan } from '../loop/plan.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Demand, Replayed } from '../study/findings.ts';
-import { toKm, toKmh } from '../units/convert.ts';
+import { fromRpm, toKm, toKmh, toRpm } from '../units/convert.ts';
 import { turningRange } from '../vehicle/turning-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 
@@ -20,7 +20,9 @@ export function gearWarnings(
   replayed: readonly Replayed[],
 ): readonly Warning[] {
   return [
-    ...(drive.gearbox.kind === 'automatic' ? [] : nearEnds(road, drive, demand)),
+    ...(drive.gearbox.kind === 'automatic'
+      ? []
+      : [...nearEnds(road, drive, demand), ...belowIdle(road, drive, demand)]),
     ...rider.shifts.flatMap((_, i) => cancelled(i, replayed)),
     ...automatic(replayed),
   ];
@@ -57,6 +59,35 @@ function nearEnds(road: Road, drive: Vehicle['drive'], demand: Demand): readonly
   return [...found.values()].map(({ code, words, from, to }) => ({ code, message: words, from, to }));
 }
 
+/** Where the set speed first turns the engine more slowly than it idles, in which gear, and how fast that gear is. */
+function belowIdle(
+  road: Road,
+  { belt, gears, idleSpeed }: Vehicle['drive'],
+  demand: Demand,
+): readonly Warning[] {
+  if (belt !== null || gears.length < 2) return [];
+  for (let i = 0; i < road.size; i++) {
+    const gear = demand.gear[i] ?? 0;
+    const ratio = gears[gear]?.ratio ?? 0;
+    const speed = demand.setSpeed[i] ?? 0;
+    const turns = ratio * speed;
+    if (turns >= idleSpeed) continue;
+    const from = road.distance[i] ?? 0;
+    return [
+      {
+        code: 'below-idle',
+        message: `The set speed of ${toKmh(speed).toFixed(1)} km/h from ${km(from)} on turns the engine at ${toRpm(turns).toFixed(0)} rpm in gear ${gear + 1}, below its idle of ${toRpm(idleSpeed).toFixed(0)} rpm: that gear goes ${toKmh(fromRpm(1000) / ratio).toFixed(1)} km/h at 1000 rpm.`,
+        from,
+        to: from,
+      },
+    ];
+  }
+  return [];
+}
+
+/** A shift this much further than it was planned waited for the one before [m]. */
+const MOVED = 5;
+
 /** What the planned shift of this number did to the holds. */
 function cancelled(number: number, replayed: readonly Replayed[]): readonly Warning[] {
   const made = replayed.flatMap(({ name, result }) => {
@@ -68,6 +99,11 @@ function cancelled(number: number, replayed: readonly Replayed[]): readonly Warn
   const [first] = made;
   if (first === undefined) return [];
   const { shift } = first;
+  const planned = replayed[0]?.plan.rider.shifts[number]?.distance ?? shift.distance;
+  const moved =
+    shift.distance - planned > MOVED
+      ? ` It was planned at ${km(planned)}, where the shift before was still being made.`
+      : '';
   const resumed = made.filter((hold) => hold.resumed);
   const ended = made.filter((hold) => !hold.resumed).map(({ name }) => name);
   const longest = resumed.reduce((most, { seconds }) => Math.max(most, seconds), 0);
@@ -79,7 +115,7 @@ function cancelled(number: number, replayed: readonly Replayed[]): readonly Warn
   return [
     {
       code: 'hold-cancelled',
-      message: `Hold is cancelled at ${km(shift.distance)}: the rider shifts there from gear ${shift.from + 1} to ${shift.to + 1}, and ${after}.`,
+      message: `Hold is cancelled at ${km(shift.distance)}: the rider shifts there from gear ${shift.from + 1} to ${shift.to + 1}, and ${after}.${moved}`,
       from: shift.distance,
       to: shift.distance,
     },

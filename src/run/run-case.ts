@@ -30,6 +30,7 @@ import { checkFullSeries, checkSize } from './check-size.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
 import { type MatrixWork, matrixRides } from './matrix-work.ts';
+import { overrideWarnings } from './override-warnings.ts';
 import { changesNotReached, placesOnRoad } from './places-on-road.ts';
 import { roadMaker } from './road-of.ts';
 import { runCell } from './run-cell.ts';
@@ -169,6 +170,7 @@ export function runWithoutMatrix({
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,
+      ...overrideWarnings(document, overrides),
       ...changesNotReached(document, hold, results),
     ],
     status: statusOf(results, findings),
