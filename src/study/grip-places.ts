@@ -1,3 +1,5 @@
+import type { LoopPlan } from '../loop/plan.ts';
+import type { LoopResult } from '../loop/result.ts';
 import { cellOf } from '../numeric/interpolate.ts';
 import { valueAt } from '../road/lookup.ts';
 import { type GripForce, gripForce } from '../vehicle/traction.ts';
@@ -28,7 +30,13 @@ export interface GripPlace extends Stretch {
  * @param demand of the same road and vehicle
  * @returns in order along the way, gaps of up to 5 s bridged; empty where the grip is not known or never reached
  */
-export function gripPlaces({ plan, result }: Replayed, demand: Demand): GripPlace[] {
+export function gripPlaces(
+  {
+    plan,
+    result,
+  }: { readonly plan: Pick<LoopPlan, 'road' | 'vehicle'>; readonly result: Pick<LoopResult, 'bins'> },
+  demand: Demand,
+): GripPlace[] {
   const { road, vehicle } = plan;
   const { bins } = result;
   const places: GripPlace[] = [];

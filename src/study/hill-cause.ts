@@ -28,7 +28,8 @@ export interface IdealChange {
  * one limitation away at a time, gains untouched.
  *
  * 1. The set speed asks for more than the grip of the driven wheel passes on, and the drive has it: `traction`, if the
- *    band was kept or the ideal hold with that grip makes more than half of the worst error too. The loop has no slip.
+ *    band was kept or the ideal hold with that grip goes more than half as far from the set speed as the worst error,
+ *    to whichever side: the loop has no slip, so that what it does beyond the grip is not to be relied on.
  *    In the same way `derating`: what the battery left of the force in the run is not enough, and the ideal hold with it
  *    makes more than half of the worst error, or half of the excess goes with a battery that is cold and full enough.
  * 2. A limit was met but the band was kept: the demand alone decides (nameRange). If it is in range too, `traction`
@@ -61,7 +62,10 @@ export function causeOnHill(
 ): CauseFinding {
   const windowed = planOverWindow({ ...plan, scheme: 'fast' }, window);
   const gripped = plan.vehicle.traction === null ? null : nameRange(windowed, window, hill, hill.share >= 0);
-  if (gripped?.cause === 'traction' && (!events.leftBand || makesHalf(ideal.gripped, events))) {
+  if (
+    gripped?.cause === 'traction' &&
+    (!events.leftBand || Math.abs(ideal.gripped) > Math.abs(worstOf(events)) / 2)
+  ) {
     const kept = events.leftBand ? `the error grew to ${inKmh(worstOf(events))}` : 'the band was kept';
     return { ...gripped, why: `${gripped.why} In it ${kept}.` };
   }

@@ -1,5 +1,6 @@
 import type { Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
+import { gripPlaces } from '../../study/grip-places.ts';
 import { toPct } from '../../units/convert.ts';
 import {
   bandText,
@@ -24,7 +25,7 @@ import { settledRange } from './settled-range.ts';
 import { VERDICTS, type Verdict } from './verdicts.ts';
 import type { CandidateView, View } from './view.ts';
 
-/** `met in part`: met where the drive can hold, while the demand beyond it was asked of nobody. */
+/** `met in part`: met where the drive can hold, and a hill where it cannot, of which nothing was asked, defeats the design. */
 export type Standing = Verdict | 'met in part' | 'unstable' | 'none asked' | 'incomplete';
 
 export interface DesignStanding {
@@ -153,6 +154,18 @@ function hillClause(view: View, design: CandidateView): string {
   return `${hillNoun(hill)} ${hill.number} (${stretchText(hill.from, hill.to)}, mean grade ${gradeText(hill.meanGrade)}) ${verdict}: it ${verb} ${amount}${behind(hill, outcome)}${why}`;
 }
 
+/** At how many places its drive asks more of the tyre than that passes on; null where at none, or the grip is not known. */
+function gripClause({ result: { road, vehicle, demand } }: View, { result }: CandidateView): string | null {
+  if (vehicle.traction === null) return null;
+  const places = gripPlaces({ plan: { road, vehicle }, result }, demand);
+  if (places.length === 0) return null;
+  const count =
+    places.length === 1
+      ? `at ${placeText(places[0]!.from)}`
+      : `at ${places.length} places, first at ${placeText(places[0]!.from)},`;
+  return `${count} its tyre would lose its grip: the model has no slip`;
+}
+
 function lockedClause(view: View, alone: boolean): string | null {
   const locked = view.candidates.find((candidate) => candidate.locked);
   if (locked === undefined) return null;
@@ -166,6 +179,14 @@ function lockedClause(view: View, alone: boolean): string | null {
 /** `both requirements`, `all 3 requirements`. */
 const allOf = (count: number): string =>
   count === 1 ? 'its one requirement' : count === 2 ? 'both requirements' : `all ${count} requirements`;
+
+/** A hill beyond the drive takes it out of its band. */
+const isDefeated = ({ result: { band, hills } }: View, name: string): boolean =>
+  hills.some(
+    ({ share, outcomes }) =>
+      Math.abs(share) > 1 &&
+      outcomes.some((one) => one.candidate === name && one.affected && Math.abs(one.speedChange) > band),
+  );
 
 /** Share of the road, as `on the holdable 74 % of the road`, where nothing was asked beyond it; null where something was, or all of it can be held. */
 function holdableOnly(
@@ -196,7 +217,11 @@ function requirementClause(
     case 'met': {
       const where = holdableOnly(view, findings);
       if (where === null) return { standing, words: `and meets ${allOf(findings.length)}` };
-      return { standing: 'met in part', words: `and meets ${allOf(findings.length)} ${where}` };
+      const lost = findings.some(({ candidate }) => isDefeated(view, candidate));
+      return {
+        standing: lost ? 'met in part' : standing,
+        words: `and meets ${allOf(findings.length)} ${where}`,
+      };
     }
   }
 }
@@ -271,6 +296,7 @@ export function answerOf(view: View): Answer {
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
     unstable ? 'its linear loop is unstable, so that it swings on any road' : null,
     hillClause(view, design),
+    gripClause(view, design),
     batteryClause(view, design),
     cycleClause(view, design.name),
     ...(others.length === 0 ? [] : [others.map((one) => `${one.name} ${statusWords(one)}`).join(', ')]),

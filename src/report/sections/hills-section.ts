@@ -30,6 +30,8 @@ import { table } from './table.ts';
 const DEFINED =
   'In the tables, largest error: the speed furthest from the set speed, less the set speed, on the hill and for 15 s behind it, or to the end of an overshoot begun there; negative is too slow. Changes of set speed do not count. By hand: the same by the hand formula of the last section, without any controller.';
 
+/** Share of the demand from which it is told that grip is what limits it. */
+const NEAR_GRIP = 0.6;
 /** Cards are for the hills that matter most; the table has all. */
 const MOST_CARDS = 12;
 /** As wide as a card on a small screen, so that its words keep their size there. */
@@ -109,10 +111,11 @@ function facts(view: View, hill: Hill): string {
 }
 
 /** What there is against it: full throttle, or what of it the grip passes on. */
-const hasWords = ({ availableForce, beforeGrip }: Hill): string =>
-  beforeGrip === undefined
-    ? `full throttle has ${forceText(availableForce)}`
-    : `grip passes ${forceText(availableForce)} of the ${forceText(beforeGrip)} that full throttle gives`;
+const hasWords = ({ availableForce, beforeGrip, share }: Hill): string => {
+  if (beforeGrip === undefined) return `full throttle has ${forceText(availableForce)}`;
+  if (share < NEAR_GRIP) return `there is ${forceText(availableForce)}`;
+  return `grip passes ${forceText(availableForce)} of the ${forceText(beforeGrip)} that full throttle gives`;
+};
 
 /** Gear engaged and needed, and what each gear would sustain. */
 function gearFacts(view: View, { gears, share }: Hill): string {

@@ -87,3 +87,24 @@ describe('what is said of a battery', () => {
     expect(causeWords({ cause: { none: 'it kept its band' } })).toBeNull();
   });
 });
+
+describe('grip in the answer', () => {
+  const withFriction = (friction: number): string => {
+    const base = fixtureResult({ lengthKm: 12, designs: ['pi-firm'] });
+    const traction = { friction, wheelbase: 1.3, massCentreAhead: 0.65, massCentreHeight: 0.6 };
+    const candidates = base.candidates.map((candidate) => {
+      // Once 400 N at the wheel, where a friction of 0.1 passes on a twentieth of the weight.
+      const { bins } = candidate.result;
+      const driveForceMax = bins.driveForceMax.map((_, i) => (i === 10 ? 400 : 0));
+      return { ...candidate, result: { ...candidate.result, bins: { ...bins, driveForceMax } } };
+    });
+    return sentenceOf({ ...base, candidates, vehicle: { ...base.vehicle, traction } });
+  };
+
+  it('is told where the tyre would lose it, and not where it never would', () => {
+    expect(withFriction(0.1)).toMatch(
+      /(at km \d+\.\d\d|at \d+ places, first at km \d+\.\d\d,) its tyre would lose/,
+    );
+    expect(withFriction(1)).not.toContain('grip');
+  });
+});
