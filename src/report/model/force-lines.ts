@@ -1,5 +1,6 @@
 import type { Road } from '../../road/road.ts';
 import { fromPct } from '../../units/convert.ts';
+import { atCharge } from '../../vehicle/at-charge.ts';
 import { derateFactor } from '../../vehicle/derating.ts';
 import type { Drive } from '../../vehicle/drive.ts';
 import { requiredForce } from '../../vehicle/resistance.ts';
@@ -63,7 +64,8 @@ const heldAt = (drive: Drive, ratio: number): Drive => ({
  * and end at its rev limit.
  */
 export function forceLines(view: View): ForceLines {
-  const { vehicle, road, hold } = view.result;
+  const { road, hold } = view.result;
+  const vehicle = atCharge(view.result.vehicle);
   const { drive } = vehicle;
   const speeds = [hold.setSpeed, hold.startSpeed, ...hold.changes.map((change) => change.setSpeed)];
   const topSpeed = Math.max(...speeds) * 1.6;

@@ -1,5 +1,6 @@
 import { asin, atan, tan } from '../../numeric/elementary.ts';
 import { STANDARD_GRAVITY } from '../../units/constants.ts';
+import { atCharge } from '../../vehicle/at-charge.ts';
 import { beltRatio } from '../../vehicle/belt-law.ts';
 import { derateFactor } from '../../vehicle/derating.ts';
 import { requiredForce, rollingForce } from '../../vehicle/resistance.ts';
@@ -34,8 +35,10 @@ export interface GearAuthority {
   } | null;
 }
 
-/** Every gear of the vehicle at a speed [m/s], first gear first. */
-export function gearAuthority({ result: { vehicle, road } }: View, speed: number): readonly GearAuthority[] {
+/** Every gear of the vehicle at a speed [m/s], first gear first; of a battery cold and at its charge at the start. */
+export function gearAuthority({ result }: View, speed: number): readonly GearAuthority[] {
+  const { road } = result;
+  const vehicle = atCharge(result.vehicle);
   const { drive } = vehicle;
   const { belt } = drive;
   const [thick, thin] = airExtremes(road);

@@ -3,6 +3,7 @@ import { gripForce } from '../../vehicle/traction.ts';
 import { turningRange } from '../../vehicle/turning-range.ts';
 import { forceSpeedChart } from '../charts/force-speed.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
+import { startingCharge } from '../model/battery-words.ts';
 import { forceLines } from '../model/force-lines.ts';
 import { type GearAuthority, gearAuthority } from '../model/gear-authority.ts';
 import { gearName, hasGears, turns } from '../model/gear-words.ts';
@@ -60,7 +61,13 @@ function caption(view: View): Html {
       : many
         ? ` Below each line of full throttle, as a ribbon: what the air at ${withUnit(fixed(airs[1]), 'm')} takes from that at ${withUnit(fixed(airs[0]), 'm')}.`
         : ' Full throttle is drawn for the lowest and the highest place of the route: thin air takes force away.';
-  return html`${own}${ends} Thin grey lines: what steady speed asks on a grade in still air. Where such a line leaves the shade at the set speed, that grade cannot be held${many && ' in the engaged gear'}.${derated}${gripWords(view)}`;
+  return html`${own}${ends} Thin grey lines: what steady speed asks on a grade in still air. Where such a line leaves the shade at the set speed, that grade cannot be held${many && ' in the engaged gear'}.${derated}${gripWords(view)}${chargeWords(view)}`;
+}
+
+/** Heat and the charge used up on the way are a run's, not the plot's. */
+function chargeWords(view: View): string {
+  const charge = startingCharge(view);
+  return charge === null ? '' : ` Of the battery: ${charge.state}${charge.left}.`;
 }
 
 /** Where the grip is, when the plot does not show it. */
@@ -112,8 +119,9 @@ function gearTable(view: View): Html {
           ]),
     ];
   };
+  const charge = startingCharge(view);
   const place = airs === null ? '' : ` at ${withUnit(fixed(airs[0]), 'm')}`;
-  return html`<h3>At ${speedText(setSpeed, speed, 0)}, in still air</h3>
+  return html`<h3>At ${speedText(setSpeed, speed, 0)}, in still air${charge === null ? '' : `; ${charge.state}`}</h3>
 ${table(
   'Authority by gear',
   [
