@@ -108,12 +108,19 @@ describe('the answer', () => {
   });
 
   it('is no green light where requirements were asked of the holdable road alone and that is not all of it', () => {
-    const base = fixtureResult({ lengthKm: 12, requirements: 'met', designs: ['pi-firm'] });
-    const told = (where: 'holdable' | 'all', holdableShare: number) =>
+    const base = fixtureResult({ lengthKm: 28, requirements: 'met', designs: ['pi-firm'] });
+    const hillsOf = (share: number) =>
+      base.hills.map((hill) => ({
+        ...hill,
+        share,
+        outcomes: hill.outcomes.map((one) => ({ ...one, affected: true, speedChange: -5 })),
+      }));
+    const told = (where: 'holdable' | 'all', holdableShare: number, share = 1.2) =>
       answerOf(
         viewOf(
           {
             ...base,
+            hills: hillsOf(share),
             demand: { ...base.demand, holdableShare },
             requirements: base.requirements.map((one, i) => ({
               ...one,
@@ -127,6 +134,9 @@ describe('the answer', () => {
     expect(part.standing).toBe('met in part');
     expect(plain(part.sentence)).toContain('and meets both requirements on the holdable 74 % of the road');
     expect(part.designs[0]!.words).toBe('both met where it can be held');
+    // Where no hill is beyond the drive the road is told, and the light is green.
+    expect(told('holdable', 0.98, 0.9).standing).toBe('met');
+    expect(plain(told('holdable', 0.98, 0.9).sentence)).toContain('on the holdable 98 % of the road');
     expect(told('holdable', 1).standing).toBe('met');
     expect(told('all', 0.742).standing).toBe('met');
   });
