@@ -20,7 +20,7 @@ export interface Demand {
   readonly setSpeed: Float64Array;
   /** Wheel force that holds the set speed steadily [N]. */
   readonly required: Float64Array;
-  /** Greatest and least wheel force there [N]: full throttle; closed throttle or full regeneration. */
+  /** Greatest and least wheel force there [N]: full throttle; closed throttle or full regeneration; of a battery cold and at its charge at the start. */
   readonly upper: Float64Array;
   readonly lower: Float64Array;
   /** Greatest wheel force that the driven wheel passes on with the front wheel on the road [N], `upper` and `lower` kept within the grip; null: grip not known. */

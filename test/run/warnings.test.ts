@@ -129,6 +129,27 @@ test('a battery comes to its reserve and runs empty where its energy says', () =
   );
 });
 
+test('a descent on which a full battery refuses the regeneration is warned of, with what it takes', () => {
+  const drive = (charge_pct: number) => ({
+    ...ELECTRIC,
+    regeneration_force_n: 300,
+    battery: {
+      capacity_wh: 4000,
+      charge_pct,
+      full_fade: [
+        { charge_pct: 90, accepts_pct: 100 },
+        { charge_pct: 100, accepts_pct: 0 },
+      ],
+    },
+  });
+  // 10 % pushes with 195 N less 124 N.
+  const told = warningsOf({ drive: drive(100), grade: -10 }).find(
+    ({ code }) => code === 'regeneration-refused',
+  )!;
+  expect(told.message).toContain('as little as 0 % of it');
+  expect(codes(warningsOf({ drive: drive(60), grade: -10 }))).not.toContain('regeneration-refused');
+});
+
 test('heat takes force away from where the first-order law says', () => {
   const power = LEVEL * V;
   const peak = 2 * power;

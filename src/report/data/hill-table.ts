@@ -58,7 +58,7 @@ export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
   {
     name: 'demand_pct',
     decimals: 2,
-    about: 'demand of greatest magnitude: force needed over force there',
+    about: 'demand of greatest magnitude, of a descent the least: force needed over force there',
     value: (rows, i) => toPct(rows[i]!.hill.share),
   },
   {

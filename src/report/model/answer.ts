@@ -144,9 +144,10 @@ function behind({ kind }: Hill, { speedChange }: HillOutcome): string {
 function hillClause(view: View, design: CandidateView): string {
   const worst = worstHill(view, design.name);
   if (worst === null) return 'no hill takes it out of its band';
-  // Beyond its range the drive cannot hold, whatever the design; within it the design alone lets the speed go.
-  const verdict = Math.abs(worst.hill.share) > 1 ? 'defeats it' : 'takes it out of its band';
   const { hill, outcome } = worst;
+  // Beyond what drive or battery have nothing holds, whatever the design; within it the design alone lets the speed go.
+  const beyond = Math.abs(hill.share) > 1 || outcome.cause === 'derating';
+  const verdict = beyond ? 'defeats it' : 'takes it out of its band';
   const verb = outcome.speedChange < 0 ? 'loses' : 'gains';
   const amount = changeText(Math.abs(outcome.speedChange), view.speed).replace('+', '');
   const cause = causeWords(outcome);
