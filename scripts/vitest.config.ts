@@ -8,6 +8,8 @@ export default defineConfig({
   root,
   test: {
     reporters: ['default'],
+    // All cores: by itself one is kept free, which on two cores is half of them.
+    maxWorkers: '100%',
     projects: [
       {
         extends: true,
