@@ -1,3 +1,4 @@
+import { heatShare } from '../vehicle/heat-share.ts';
 import * as fit from './fittings.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
@@ -68,18 +69,11 @@ export function settleSource({ s, fittings }: Machine): void {
 function writeFactors(s: Float64Array, f: Float64Array, asked: number): void {
   const known = f[fit.F_CAPACITY] > 0;
   const charge = known ? s[at.CHARGE] * f[fit.F_PER_CAPACITY] : f[fit.F_CHARGE];
-  const cool = f[fit.F_PER_POWER] > 0 ? heatShare(f, s[at.HEAT]) : 1;
+  const cool = f[fit.F_PER_POWER] > 0 ? heatShare(s[at.HEAT], f[fit.F_ONSET], f[fit.F_LEAST_SHARE]) : 1;
   const share = cool * shareAt(f, f[fit.F_SAG] | 0, charge);
   const empty = known && (s[at.DRIVE_FACTOR] === 0 ? charge < RESTORED : s[at.CHARGE] <= Math.max(0, asked));
   s[at.DRIVE_FACTOR] = empty ? 0 : share;
   s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0, charge);
-}
-
-function heatShare(f: Float64Array, heat: number): number {
-  const onset = f[fit.F_ONSET];
-  const least = f[fit.F_LEAST_SHARE];
-  if (heat <= onset) return 1;
-  return heat >= 1 ? least : 1 - ((1 - least) * (heat - onset)) / (1 - onset);
 }
 
 // Places are held as numbers among numbers: each is made an integer once, where it is read.

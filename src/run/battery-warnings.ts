@@ -4,6 +4,7 @@ import { batteryPlaces } from '../study/battery-places.ts';
 import type { Replayed } from '../study/findings.ts';
 import { toKm, toPct } from '../units/convert.ts';
 import type { Battery, Heating } from '../vehicle/energy-source.ts';
+import { heatShare } from '../vehicle/heat-share.ts';
 
 const km = (distance: number): string => `km ${toKm(distance).toFixed(2)}`;
 /** Derating below this is no news. */
@@ -72,7 +73,7 @@ function heatWarnings(name: string, { continuousPower, time, onset, least }: Hea
     const load = (bins.wheelPower[i] ?? 0) / continuousPower;
     const steady = load * load;
     heat = steady + (heat - steady) * exp(-(bins.time[i] ?? 0) / time);
-    const here = heat <= onset ? 1 : Math.max(least, 1 - ((1 - least) * (heat - onset)) / (1 - onset));
+    const here = heatShare(heat, onset, least);
     if (here > 1 - NOTICED) continue;
     if (from < 0) from = bins.edge[i] ?? 0;
     to = bins.edge[i + 1] ?? 0;

@@ -134,7 +134,7 @@ test('columns are those of the contract', () => {
     'candidate,segment,from_km,to_km,mean_grade_pct,mean_headwind_m_s,mean_error_kmh,rms_error_kmh,worst_error_kmh,mean_throttle_pct,at_limit_pct,wheel_energy_wh,time_s',
   );
   expect(header('hills.csv')).toBe(
-    'hill,candidate,kind,from_km,to_km,length_m,mean_grade_pct,mean_grade_sd_pct,max_grade_pct,demand_pct,required_force_n,available_force_n,sustained_speed_kmh,speed_change_kmh,predicted_change_kmh,time_at_limit_s,recovery_s,cause,would_hold,gear_engaged,gear_needed,sustained_by_gear_kmh,brake_power_kw,brake_energy_wh',
+    'hill,candidate,kind,from_km,to_km,length_m,mean_grade_pct,mean_grade_sd_pct,max_grade_pct,demand_pct,required_force_n,available_force_n,sustained_speed_kmh,speed_change_kmh,predicted_change_kmh,time_at_limit_s,recovery_s,cause,would_hold,gear_engaged,gear_needed,sustained_by_gear_kmh,brake_power_kw,brake_energy_wh,derating',
   );
 });
 

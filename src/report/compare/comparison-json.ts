@@ -148,8 +148,9 @@ const placeJson = ({ hill, kind, fromKm, toKm, meanGradePct }: HillPlace): Json 
   mean_grade_pct: meanGradePct,
 });
 
-const outcomeJson = ({ speedChangeKmh, recovery, timeAtLimit, cause }: HillOutcome): Json => ({
+const outcomeJson = ({ speedChangeKmh, recovery, timeAtLimit, cause, derating }: HillOutcome): Json => ({
   ...numbers({ speed_change_kmh: speedChangeKmh, time_at_limit_s: timeAtLimit }),
   recovery_s: recovery,
   cause,
+  derating,
 });

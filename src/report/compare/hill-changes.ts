@@ -38,6 +38,8 @@ export interface HillOutcome {
   readonly timeAtLimit: number;
   /** Where the speed strayed furthest. */
   readonly cause: string | null;
+  /** What derates, of the cause `derating`; null: another cause, or a result that does not tell. */
+  readonly derating: string | null;
 }
 
 /** `unmatched`: why hills of the two runs cannot be matched by place; null where they can. */
@@ -167,6 +169,7 @@ function outcomeOf(
     recovery: recoveries.reduce((a, b) => (a === null || b === null ? null : Math.max(a, b))),
     timeAtLimit: rows.reduce((sum, row) => sum + row.time_at_limit_s, 0),
     cause: far.cause,
+    derating: far.derating ?? null,
   };
 }
 

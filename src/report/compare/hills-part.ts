@@ -1,6 +1,6 @@
 import { fromKm, fromKmh, fromPct } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { CAUSE_NAMES } from '../model/cause-words.ts';
+import { causeNameOf } from '../model/cause-words.ts';
 import { figureText } from '../model/figure-text.ts';
 import { changeText, gradeText, NO_VALUE, type SpeedUnit, speedText, stretchText } from '../quantity.ts';
 import type { Section } from '../sections/section.ts';
@@ -43,7 +43,8 @@ const TOLD = 0.5;
 
 const isTold = ({ before, after }: HillOutcomeChange): boolean =>
   Math.abs(Math.abs(after.speedChangeKmh) - Math.abs(before.speedChangeKmh)) >= TOLD ||
-  before.cause !== after.cause;
+  before.cause !== after.cause ||
+  before.derating !== after.derating;
 
 function hillTable(rows: Parameters<typeof table>[2]): Html {
   return table(
@@ -94,12 +95,8 @@ function placesWords(places: readonly HillPlace[]): string {
   return `${places.map(({ hill }) => hill).join(', ')}: ${stretchText(fromKm(from), fromKm(to))}`;
 }
 
-const causeText = ({ cause }: HillOutcome): string =>
-  cause === null
-    ? NO_VALUE
-    : Object.hasOwn(CAUSE_NAMES, cause)
-      ? CAUSE_NAMES[cause as keyof typeof CAUSE_NAMES]
-      : cause;
+const causeText = ({ cause, derating }: HillOutcome): string =>
+  cause === null ? NO_VALUE : causeNameOf(cause, derating);
 
 function single(side: string, places: readonly HillPlace[]): Html | null {
   if (places.length === 0) return null;

@@ -27,6 +27,8 @@ const hillRow = z.looseObject({
   time_at_limit_s: number,
   recovery_s: figure,
   cause: text.nullable(),
+  /** Not in results of earlier versions. */
+  derating: text.nullable().optional(),
 });
 
 const requirement = z.object({

@@ -145,6 +145,15 @@ export const HILL_COLUMNS: readonly Column<readonly HillRow[]>[] = [
     about: 'energy of that braking over the hill',
     value: (rows, i) => toWh(rows[i]!.hill.brakeEnergy),
   },
+  {
+    name: 'derating',
+    decimals: 0,
+    about: 'of the cause derating what takes the force: altitude, heat, voltage, empty or full; else empty',
+    value: (rows, i) => {
+      const { cause, derating } = rows[i]!.outcome;
+      return cause === 'derating' ? (derating ?? 'altitude') : null;
+    },
+  },
 ];
 
 const gearNumber = (gear: number | null | undefined): number | null =>

@@ -1,38 +1,27 @@
-import type { Hill, HillOutcome, RequirementFinding } from '../../study/findings.ts';
+import type { Hill, HillOutcome } from '../../study/findings.ts';
 import { isNone } from '../../study/findings.ts';
 import { gripPlaces } from '../../study/grip-places.ts';
-import { toPct } from '../../units/convert.ts';
-import {
-  bandText,
-  changeText,
-  fixed,
-  gradeText,
-  placeText,
-  type SpeedUnit,
-  speedText,
-  stretchText,
-  withUnit,
-} from '../quantity.ts';
-import { batteryClause, emptyWords } from './battery-words.ts';
+import { bandText, changeText, gradeText, placeText, speedText, stretchText } from '../quantity.ts';
+import { batteryClause } from './battery-words.ts';
 import { causeWords } from './cause-words.ts';
 import { cycleClause } from './cycle-words.ts';
-import { figureText } from './figure-text.ts';
+import {
+  type DesignStanding,
+  designStanding,
+  findingsOf,
+  percent,
+  requirementClause,
+  type Standing,
+  standingOf,
+  statusWords,
+} from './design-standing.ts';
 import { hillNoun } from './hill-words.ts';
 import { isUnstable } from './loop-words.ts';
 import { matrixStandings } from './matrix-standing.ts';
 import { combinationText, listWords } from './matrix-words.ts';
 import { settledRange } from './settled-range.ts';
-import { VERDICTS, type Verdict } from './verdicts.ts';
+import type { Verdict } from './verdicts.ts';
 import type { CandidateView, View } from './view.ts';
-
-/** `met in part`: met where the drive can hold, and a hill where it cannot, of which nothing was asked, defeats the design. */
-export type Standing = Verdict | 'met in part' | 'unstable' | 'none asked' | 'incomplete';
-
-export interface DesignStanding {
-  readonly name: string;
-  readonly standing: Standing;
-  readonly words: string;
-}
 
 /** The run in one sentence, and how the design it speaks of stands against what was asked. */
 export interface Answer {
@@ -44,30 +33,12 @@ export interface Answer {
   readonly design: string | null;
 }
 
-const STATUS_WORDS = {
-  completed: 'reached the end',
-  stalled: 'stalled',
-  stopped: 'came to a stop',
-  time_limit: 'ran out of time',
-  non_finite: 'failed numerically',
-} as const;
-
-/** How a run ended, in words. */
-export const statusWords = (candidate: CandidateView): string =>
-  candidate.result.status === 'completed'
-    ? STATUS_WORDS.completed
-    : `${emptyWords(candidate)}${STATUS_WORDS[candidate.result.status]} at ${placeText(candidate.result.endDistance)}`;
-
 const VERDICT_COST: Readonly<Record<Verdict, number>> = {
   met: 0,
   'not judged': 2,
   'too close to call': 1,
   'not met': 3,
 };
-
-function findingsOf(view: View, name: string): readonly RequirementFinding[] {
-  return view.result.requirements.filter((finding) => finding.candidate === name);
-}
 
 /** Best first: reached the end, a loop that is stable, fewest requirements missed, most time within the band, least rms error, order of the case. */
 function bestDesign(view: View): CandidateView | null {
@@ -108,12 +79,6 @@ function withinClause(view: View, candidate: CandidateView): string {
   const place = judged ? 'of the time on the holdable road' : 'of the time';
   return `holds ${target} within ${band} for ${percent(figure, speed)} ${place}`;
 }
-
-/** Whole per cent; as the table says it where that would make 100 % of a little less, or 0 % of a little more. */
-export const percent = (value: number, speed: SpeedUnit): string =>
-  (value > 99 && value < 100) || (value > 0 && value < 1)
-    ? figureText(value, '%', speed)
-    : withUnit(fixed(value), '%');
 
 interface Defeat {
   readonly hill: Hill;
@@ -176,87 +141,6 @@ function lockedClause(view: View, alone: boolean): string | null {
   if (range === null) return `${subject} reached the end`;
   return `${subject} strays from ${speedText(-range.low, view.speed, 0)} below the set speed to ${speedText(range.high, view.speed, 0)} above it`;
 }
-
-/** `both requirements`, `all 3 requirements`. */
-const allOf = (count: number): string =>
-  count === 1 ? 'its one requirement' : count === 2 ? 'both requirements' : `all ${count} requirements`;
-
-/** A hill beyond the drive takes it out of its band. */
-const isDefeated = ({ result: { band, hills } }: View, name: string): boolean =>
-  hills.some(
-    ({ share, outcomes }) =>
-      Math.abs(share) > 1 &&
-      outcomes.some((one) => one.candidate === name && one.affected && Math.abs(one.speedChange) > band),
-  );
-
-/** Share of the road, as `on the holdable 74 % of the road`, where nothing was asked beyond it; null where something was, or all of it can be held. */
-function holdableOnly(
-  { result: { demand }, speed }: View,
-  findings: readonly RequirementFinding[],
-): string | null {
-  if (demand.holdableShare >= 1 || findings.some(({ requirement }) => requirement.where !== 'holdable'))
-    return null;
-  return `on the holdable ${percent(toPct(demand.holdableShare), speed)} of the road`;
-}
-
-function requirementClause(
-  view: View,
-  findings: readonly RequirementFinding[],
-): { words: string; standing: Standing } {
-  if (findings.length === 0) return { words: '', standing: 'none asked' };
-  const standing = VERDICTS.find((verdict) => findings.some((one) => one.verdict === verdict))!;
-  const some = findings.filter((one) => one.verdict === standing);
-  const ids = [...new Set(some.map((one) => one.requirement.id))].join(', ');
-  const are = some.length === 1 ? 'is' : 'are';
-  switch (standing) {
-    case 'not met':
-      return { standing, words: `but misses ${missed(some.length, findings.length)} (${ids})` };
-    case 'too close to call':
-      return { standing, words: `and misses no requirement, but ${ids} ${are} too close to call` };
-    case 'not judged':
-      return { standing, words: `and misses no requirement, but ${ids} cannot be judged on this road` };
-    case 'met': {
-      const where = holdableOnly(view, findings);
-      if (where === null) return { standing, words: `and meets ${allOf(findings.length)}` };
-      const lost = findings.some(({ candidate }) => isDefeated(view, candidate));
-      return {
-        standing: lost ? 'met in part' : standing,
-        words: `and meets ${allOf(findings.length)} ${where}`,
-      };
-    }
-  }
-}
-
-/** `its one requirement`, `1 of 2 requirements`. */
-const missed = (count: number, of: number): string =>
-  of === 1 ? allOf(1) : `${count} of ${of} requirements`;
-
-/** How a design stands against what was asked of it. */
-function designStanding(view: View, design: CandidateView): DesignStanding {
-  const findings = findingsOf(view, design.name);
-  const { name } = design;
-  if (design.result.status !== 'completed')
-    return { name, standing: 'incomplete', words: statusWords(design) };
-  const { standing } = requirementClause(view, findings);
-  const unstable = isUnstable(design);
-  const told = (words: string): DesignStanding => ({
-    name,
-    standing: standingOf(standing, unstable),
-    words: unstable ? `${words}; its linear loop is unstable` : words,
-  });
-  if (standing === 'none asked') return told('nothing asked');
-  const { length } = findings;
-  if (standing === 'met' || standing === 'met in part') {
-    const all = length === 1 ? 'its one met' : length === 2 ? 'both met' : `all ${length} met`;
-    const words = standing === 'met' ? all : `${all} where it can be held`;
-    return told(words);
-  }
-  return told(`${findings.filter((one) => one.verdict === standing).length} of ${length} ${standing}`);
-}
-
-/** Nothing that an unstable loop meets is a reason to be pleased. */
-const standingOf = (standing: Standing, unstable: boolean): Standing =>
-  unstable && standing !== 'not met' ? 'unstable' : standing;
 
 /** How the design stands over the matrix; null without one, or where nothing is asked of it. */
 function matrixClause({ result: { matrix }, speed }: View, name: string): string | null {

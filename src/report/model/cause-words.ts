@@ -16,7 +16,7 @@ const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
 };
 
 /** A cause in a table, in as few words as it takes. */
-export const CAUSE_NAMES: Readonly<Record<Cause, string>> = {
+const CAUSE_NAMES: Readonly<Record<Cause, string>> = {
   torque: 'torque',
   power: 'power',
   closed_throttle: 'closed throttle',
@@ -58,4 +58,12 @@ export function causeWords({ cause, derating }: Reason): string | null {
 export function causeName({ cause, derating }: Reason): string | null {
   if (typeof cause !== 'string') return null;
   return cause === 'derating' ? DERATING_NAMES[derating ?? 'altitude'] : CAUSE_NAMES[cause];
+}
+
+/** The same for a cause that is read from a file; one that is not known is told as it stands. */
+export function causeNameOf(cause: string, derating: string | null): string {
+  const names: Readonly<Record<string, string>> =
+    cause === 'derating' && derating !== null ? DERATING_NAMES : CAUSE_NAMES;
+  const key = names === DERATING_NAMES ? (derating ?? cause) : cause;
+  return Object.hasOwn(names, key) ? names[key]! : key;
 }

@@ -2,7 +2,8 @@ import { isNone, type RequirementFinding, type Where } from '../../study/finding
 import { toKmh } from '../../units/convert.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, html } from '../html.ts';
-import { type Answer, answerOf, type DesignStanding, type Standing } from '../model/answer.ts';
+import { type Answer, answerOf } from '../model/answer.ts';
+import type { DesignStanding, Standing } from '../model/design-standing.ts';
 import { figureLabel, figureTextBeside, marginText, readable } from '../model/figure-text.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
 import type { CandidateView, View } from '../model/view.ts';

@@ -1,7 +1,7 @@
 import { lanesChart } from '../charts/lanes.ts';
 import { candidateKey } from '../charts/line-key.ts';
 import { html } from '../html.ts';
-import { statusWords } from '../model/answer.ts';
+import { statusWords } from '../model/design-standing.ts';
 import { automaticShifts, shiftMarks } from '../model/hold-marks.ts';
 import { setSpeedMarks } from '../model/settling.ts';
 import type { View } from '../model/view.ts';

@@ -133,8 +133,8 @@ describe('a place tells of a candidate', () => {
       ],
     );
     expect(outcome).toMatchObject({
-      before: { speedChangeKmh: -4, recovery: 8, cause: 'power' },
-      after: { speedChangeKmh: 6, recovery: 20, cause: 'windup' },
+      before: { speedChangeKmh: -4, recovery: 8, cause: 'power', derating: null },
+      after: { speedChangeKmh: 6, recovery: 20, cause: 'windup', derating: null },
       change: 'worse',
     });
   });

@@ -3,6 +3,7 @@ import { expect, test } from 'vitest';
 import { dataFiles } from '../../../src/report/data/data-files.ts';
 import { fullSeriesCsv } from '../../../src/report/data/full-series.ts';
 import { summaryJson } from '../../../src/report/data/summary.ts';
+import { causeNameOf } from '../../../src/report/model/cause-words.ts';
 import { expectClose } from '../../compare.ts';
 import { fixtureResult } from '../fixture.ts';
 import { cutSeries, fixtureRun } from '../fixture-run.ts';
@@ -26,6 +27,26 @@ test('hills tell gears from 1, the speed that each sustains, and the braking', (
   expect(Number(descent.brake_power_kw)).toBeGreaterThan(1);
   const hill = run.hills.find(({ number }) => String(number) === descent.hill)!;
   expectClose(Number(descent.brake_energy_wh), hill.brakeEnergy / 3600, 1e-3, 'Wh');
+});
+
+test('a hill lost to a battery says so, and is not laid to thin air', () => {
+  const hills = run.hills.map((hill, i) => ({
+    ...hill,
+    outcomes: hill.outcomes.map((outcome) => ({
+      ...outcome,
+      cause: i === 0 ? ('derating' as const) : ('gains' as const),
+      derating: 'heat' as const,
+    })),
+  }));
+  const [first, ...others] = rowsOf(
+    new Map(dataFiles({ ...run, hills }).map((file) => [file.name, file.text])).get('hills.csv')!,
+  );
+  expect([first!.cause, first!.derating]).toEqual(['derating', 'heat']);
+  expect(others.find(({ hill }) => hill !== first!.hill)!.derating).toBe('');
+  expect(causeNameOf('derating', 'heat')).toBe('heat');
+  // Results of earlier versions tell no more than the cause.
+  expect(causeNameOf('derating', null)).toBe('thin air');
+  expect(causeNameOf('of a later version', null)).toBe('of a later version');
 });
 
 test('a hill of a drive without gears leaves those fields empty', () => {
