@@ -194,6 +194,8 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
     drawn: column(),
     driveLost: column(),
     regenerationLost: column(),
+    timeOff: column(),
+    detail: null,
   };
 
   const sums = new Float64Array(SUMS);

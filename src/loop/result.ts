@@ -15,7 +15,44 @@ export interface LoopResult {
   readonly shifts: readonly ShiftEvent[];
   /** What is wrong in the controller itself and had a say. */
   readonly bites: readonly BiteRecord[];
+  /** What became of hold, in order along the way; left out: nothing was asked of it. */
+  readonly holdEvents?: readonly HoldEvent[];
 }
+
+/** Hold took over, ended, or was changed by the rider. */
+export interface HoldEvent {
+  /** [s], horizontal distance [m]. */
+  readonly time: number;
+  readonly distance: number;
+  readonly kind: HoldEventKind;
+  readonly cause: HoldEventCause;
+  /** In force from here, in its own units [m/s]; of an `ended` the one that a resume goes back to. */
+  readonly setSpeed: number;
+  /** Measured speed [m/s] and command at the sample before. */
+  readonly measured: number;
+  readonly command: number;
+}
+export type HoldEventKind =
+  | 'engaged'
+  | 'resumed'
+  | 'tapped'
+  | 'override_began'
+  /** The grip was let go; hold comes back at `reentered`. */
+  | 'override_ended'
+  | 'reentered'
+  | 'ended'
+  /** The rider asked for hold and a rule refused it. */
+  | 'refused';
+export type HoldEventCause =
+  | 'rider'
+  | 'bend'
+  | 'brake'
+  | 'clutch'
+  | 'gear_change'
+  | 'too_slow'
+  | 'too_fast'
+  | 'below_lowest_speed'
+  | 'sensor_not_believed';
 
 /** A slip in a controller that had a say. */
 export interface BiteRecord {
@@ -84,6 +121,24 @@ export interface BinRecord {
    */
   readonly driveLost: Float64Array;
   readonly regenerationLost: Float64Array;
+  /**
+   * Time with hold off [s]. Sums, extremes and bands of the error, and the times at limits, are taken over the time with hold
+   * on (an override counts as on): divide by `time - timeOff`.
+   */
+  readonly timeOff: Float64Array;
+  /** Only where the plan asks for it; null: it did not. */
+  readonly detail: BinDetail | null;
+}
+
+/** By bin, over the time with hold on: what figures of comfort and of the throttle need. SI. */
+export interface BinDetail {
+  /** Time integral of |e| [m]. */
+  readonly errorAbsolute: Float64Array;
+  /** Time integrals of a^2 [m2/s3] and |a| [m/s]. */
+  readonly accelerationSquare: Float64Array;
+  readonly accelerationAbsolute: Float64Array;
+  /** Changes of direction of the command. */
+  readonly reversals: Uint32Array;
 }
 
 /** A shift of gear that happened. Indices into the drive's gears. */

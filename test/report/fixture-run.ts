@@ -83,6 +83,8 @@ export function fixtureRun(
     drawn: column(),
     driveLost: column(),
     regenerationLost: column(),
+    timeOff: column(),
+    detail: null,
   };
   const ledger = { drive: 0, regeneration: 0, aero: 0, rolling: 0, climb: 0, brake: 0, kinetic: 0 };
   const rows: number[][] = [];

@@ -1,7 +1,7 @@
 // A record for tests, written out by hand: rows of bins with the columns that matter, the rest zero.
 import type { BinRecord, LoopResult } from '../../src/loop/result.ts';
 
-export type BinColumn = Exclude<keyof BinRecord, 'size' | 'edge' | 'gear'>;
+export type BinColumn = Exclude<keyof BinRecord, 'size' | 'edge' | 'gear' | 'detail'>;
 export type BinRow = Partial<Record<Exclude<BinColumn, 'timeInBand'>, number>> & { timeInBand?: number[] };
 
 /** Bins of `width` metres from 0. */
@@ -49,6 +49,8 @@ export function recordOf(width: number, rows: readonly BinRow[], bands = 1): Bin
     drawn: column('drawn'),
     driveLost: column('driveLost'),
     regenerationLost: column('regenerationLost'),
+    timeOff: column('timeOff'),
+    detail: null,
   };
 }
 
