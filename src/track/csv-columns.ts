@@ -1,28 +1,47 @@
+import { InputError } from '../problems/input-error.ts';
+import type { Place } from '../problems/place.ts';
 import { fromDeg, fromKm, fromKmh, fromPct } from '../units/convert.ts';
 
-/** Where a column of a CSV track goes, and what its cells may be. */
-export interface CsvColumn {
-  readonly field:
-    | 'distance'
-    | 'latitudeDeg'
-    | 'longitudeDeg'
-    | 'elevation'
-    | 'grade'
-    | 'heading'
-    | 'headwind'
-    | 'time'
-    | 'speed';
+/** Where a column goes, and what its cells may be. */
+export interface CsvColumn<Field extends string = string> {
+  readonly field: Field;
   /** Range of a cell, in the column's own unit. */
   readonly least: number;
   readonly most: number;
   readonly convert: (value: number) => number;
 }
 
+/** The columns that a kind of CSV file may have. */
+export interface CsvVocabulary<Field extends string = string> {
+  /** By name: quantity and unit. */
+  readonly columns: Readonly<Record<string, CsvColumn<Field>>>;
+  /** Columns of words, by name: a number of a run, a direction. */
+  readonly words: Readonly<Record<string, { readonly field: Field }>>;
+  /** Columns whose empty cells are read, as NaN; elsewhere an empty cell is refused. */
+  readonly mayBeEmpty: ReadonlySet<Field>;
+  /** Names that people write without a unit, or with another one, and the columns they mean. */
+  readonly meant: readonly (readonly [RegExp, readonly string[]])[];
+  /** Refuses a header that lacks something; `seen` has the name of the column by its field. */
+  readonly check: (seen: ReadonlyMap<Field, string>, place: Place) => void;
+}
+
+/** What a column of a track says. */
+export type TrackField =
+  | 'distance'
+  | 'latitudeDeg'
+  | 'longitudeDeg'
+  | 'elevation'
+  | 'grade'
+  | 'heading'
+  | 'headwind'
+  | 'time'
+  | 'speed';
+
 const same = (value: number): number => value;
 const ANY = Number.MAX_VALUE;
 
 /** The columns a CSV track may have, by name. */
-export const CSV_COLUMNS: Readonly<Record<string, CsvColumn>> = {
+export const CSV_COLUMNS: Readonly<Record<string, CsvColumn<TrackField>>> = {
   distance_m: { field: 'distance', least: -ANY, most: ANY, convert: same },
   distance_km: { field: 'distance', least: -ANY, most: ANY, convert: fromKm },
   lat_deg: { field: 'latitudeDeg', least: -90, most: 90, convert: same },
@@ -40,8 +59,7 @@ export const CSV_COLUMNS: Readonly<Record<string, CsvColumn>> = {
   speed_kmh: { field: 'speed', least: 0, most: 1000, convert: fromKmh },
 };
 
-/** Names that people write without a unit, or with another one, and the columns they mean. */
-const MEANT: readonly (readonly [RegExp, readonly string[]])[] = [
+export const MEANT_TRACK_COLUMNS: readonly (readonly [RegExp, readonly string[]])[] = [
   [/^(distance|dist|chainage|station|length|km|x)(_|$)/, ['distance_m', 'distance_km']],
   [/^(lat|latitude)(_|$)/, ['lat_deg']],
   [/^(lon|lng|long|longitude)(_|$)/, ['lon_deg']],
@@ -53,11 +71,24 @@ const MEANT: readonly (readonly [RegExp, readonly string[]])[] = [
   [/^(speed|velocity|v)(_|$)/, ['speed_kmh']],
 ];
 
-/** The allowed names that a wrong one probably means; empty when none is near. */
-export function meantColumns(name: string): readonly string[] {
-  const plain = name
-    .toLowerCase()
-    .replace(/[\s([/-]+/g, '_')
-    .replace(/[)\]]/g, '');
-  return MEANT.find(([pattern]) => pattern.test(plain))?.[1] ?? [];
+function checkTrackColumns(seen: ReadonlyMap<TrackField, string>, place: Place): void {
+  const found = [...seen.values()].join(', ');
+  const refuse = (message: string, allowed: string): never => {
+    throw new InputError({ code: 'missing-column', place, message, found, allowed });
+  };
+  if (seen.has('latitudeDeg') !== seen.has('longitudeDeg'))
+    refuse('a latitude needs a longitude', 'lat_deg, lon_deg');
+  if (!seen.has('distance') && !seen.has('latitudeDeg'))
+    refuse('the file does not say where its points are', 'distance_m or distance_km, or lat_deg and lon_deg');
+  if (!seen.has('elevation') && !seen.has('grade'))
+    refuse('the file has neither elevation nor grade', 'elevation_m or grade_pct');
 }
+
+/** What a CSV track may say. Its empty cells are filled by the cleaning. */
+export const TRACK_VOCABULARY: CsvVocabulary<TrackField> = {
+  columns: CSV_COLUMNS,
+  words: {},
+  mayBeEmpty: new Set(['elevation', 'grade', 'heading', 'headwind', 'speed']),
+  meant: MEANT_TRACK_COLUMNS,
+  check: checkTrackColumns,
+};

@@ -1,44 +1,56 @@
 import { InputError } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
-import { CSV_COLUMNS, type CsvColumn, meantColumns } from './csv-columns.ts';
+import type { CsvColumn, CsvVocabulary } from './csv-columns.ts';
 import { parseNumber } from './parse-number.ts';
 
-/** The first line of a CSV track, understood. */
-export interface CsvHeader {
+/** A column of a header: of numbers with their range, or of words. */
+export type NamedColumn<Field extends string> = {
+  readonly name: string;
+  readonly field: Field;
+  readonly number: CsvColumn<Field> | null;
+};
+
+/** The first line of a CSV file, understood. */
+export interface CsvHeader<Field extends string> {
   readonly delimiter: ',' | ';' | '\t';
-  readonly columns: readonly (CsvColumn & { readonly name: string })[];
+  readonly columns: readonly NamedColumn<Field>[];
 }
 
-const ALLOWED = Object.keys(CSV_COLUMNS).join(', ');
 const DELIMITERS = [';', '\t', ','] as const;
 
 /**
- * Understands the header line of a CSV track: its delimiter and its columns, whose names carry the units.
+ * Understands the header line of a CSV file: its delimiter and its columns, whose names carry the units.
  *
  * @param line the first line that is not blank
  * @param number its number in the file
  * @param file name for messages
+ * @param vocabulary columns that there may be
  * @throws InputError with line and column: `missing-header`, `unknown-column`, `column-without-unit`, `duplicate-column`,
  *   `missing-column`
  */
-export function readCsvHeader(line: string, number: number, file: string): CsvHeader {
+export function readCsvHeader<Field extends string>(
+  line: string,
+  number: number,
+  file: string,
+  vocabulary: CsvVocabulary<Field>,
+): CsvHeader<Field> {
   const delimiter = DELIMITERS.find((mark) => line.includes(mark)) ?? ',';
   let at = 1;
-  const seen = new Map<string, string>();
+  const seen = new Map<Field, string>();
   if (line.split(delimiter).every((cell) => parseNumber(cell.trim().replace(',', '.')) !== null))
     throw new InputError({
       code: 'missing-header',
       place: { file, line: number },
       message: 'the first line has only numbers; it must name the columns',
       found: `'${line.trim().slice(0, 40)}'`,
-      allowed: ALLOWED,
+      allowed: allNames(vocabulary),
     });
   const columns = line.split(delimiter).map((cell) => {
     const name = cell.trim().replace(/^"(.*)"$/, '$1');
     const place = { file, line: number, column: at + cell.length - cell.trimStart().length };
     at += cell.length + 1;
-    const column = Object.hasOwn(CSV_COLUMNS, name) ? CSV_COLUMNS[name] : undefined;
-    if (column === undefined) throw unknownColumn(name, place);
+    const column = columnOf(name, vocabulary);
+    if (column === null) throw unknownColumn(name, place, vocabulary);
     const before = seen.get(column.field);
     if (before !== undefined)
       throw new InputError({
@@ -49,14 +61,27 @@ export function readCsvHeader(line: string, number: number, file: string): CsvHe
         allowed: 'each column once',
       });
     seen.set(column.field, name);
-    return { ...column, name };
+    return column;
   });
-  requireColumns(seen, { file, line: number });
+  vocabulary.check(seen, { file, line: number });
   return { delimiter, columns };
 }
 
-function unknownColumn(name: string, place: Place): InputError {
-  const meant = meantColumns(name);
+function columnOf<Field extends string>(
+  name: string,
+  { columns, words }: CsvVocabulary<Field>,
+): NamedColumn<Field> | null {
+  const number = Object.hasOwn(columns, name) ? (columns[name] ?? null) : null;
+  if (number !== null) return { name, field: number.field, number };
+  const word = Object.hasOwn(words, name) ? words[name] : undefined;
+  return word === undefined ? null : { name, field: word.field, number: null };
+}
+
+const allNames = ({ columns, words }: CsvVocabulary): string =>
+  [...Object.keys(columns), ...Object.keys(words)].join(', ');
+
+function unknownColumn(name: string, place: Place, vocabulary: CsvVocabulary): InputError {
+  const meant = meantColumns(name, vocabulary);
   const found = name === '' ? 'an empty name' : `'${name}'`;
   if (meant.length > 0)
     return new InputError({
@@ -71,19 +96,15 @@ function unknownColumn(name: string, place: Place): InputError {
     place,
     message: 'the column is not known',
     found,
-    allowed: ALLOWED,
+    allowed: allNames(vocabulary),
   });
 }
 
-function requireColumns(seen: ReadonlyMap<string, string>, place: Place): void {
-  const found = [...seen.values()].join(', ');
-  const refuse = (message: string, allowed: string): never => {
-    throw new InputError({ code: 'missing-column', place, message, found, allowed });
-  };
-  if (seen.has('latitudeDeg') !== seen.has('longitudeDeg'))
-    refuse('a latitude needs a longitude', 'lat_deg, lon_deg');
-  if (!seen.has('distance') && !seen.has('latitudeDeg'))
-    refuse('the file does not say where its points are', 'distance_m or distance_km, or lat_deg and lon_deg');
-  if (!seen.has('elevation') && !seen.has('grade'))
-    refuse('the file has neither elevation nor grade', 'elevation_m or grade_pct');
+/** The allowed names that a wrong one probably means; empty when none is near. */
+function meantColumns(name: string, { meant }: CsvVocabulary): readonly string[] {
+  const plain = name
+    .toLowerCase()
+    .replace(/[\s([/-]+/g, '_')
+    .replace(/[)\]]/g, '');
+  return meant.find(([pattern]) => pattern.test(plain))?.[1] ?? [];
 }
