@@ -1,4 +1,4 @@
-import { IDEAL, list, mapping, number, optional, otherwise } from './fields.ts';
+import { IDEAL, list, mapping, number, optional, otherwise, word } from './fields.ts';
 
 /** From command to throttle. */
 export const actuatorSchema = mapping('From command to throttle', {
@@ -14,6 +14,12 @@ export const actuatorSchema = mapping('From command to throttle', {
     number('%/s', 0.1, 100000, 'Fastest movement of the throttle'),
     'none',
     IDEAL,
+  ),
+  engages_from: optional(
+    word(
+      ['rider', 'rest'],
+      "Where the actuator stands as hold takes over: where the rider's hand has the throttle, or at rest",
+    ),
   ),
   slack_pct: otherwise(number('%', 0, 50, 'Whole width of the lost motion'), 0, IDEAL),
 });

@@ -6,6 +6,8 @@ import type { Rule, RuleFault } from './check-file.ts';
 import { matrixRules } from './matrix-rules.ts';
 import { nearestKey } from './nearest-key.ts';
 import { increasing } from './order-rules.ts';
+import { oneWay, placesInOrder } from './place-rules.ts';
+import { riderRules } from './rider-rules.ts';
 import { isMapping } from './schema-walk.ts';
 import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
 import type { Path } from './yaml-source.ts';
@@ -29,7 +31,11 @@ export const caseRules: readonly Rule<CaseInput>[] = [
       (road?.shelter ?? []).flatMap((shelter, i) => upwards(shelter, ['road', 'shelter', i])),
   },
   { about: ['wind'], check: ({ wind }) => (wind === undefined ? [] : aboveRoughness(wind)) },
-  { about: ['hold', 'changes'], check: ({ hold }) => changesInOrder(hold.changes ?? []) },
+  {
+    about: ['hold', 'changes'],
+    check: ({ hold }) =>
+      placesInOrder(hold.changes ?? [], ['hold', 'changes'], 'the changes are not in order'),
+  },
   {
     about: ['hold', 'shifts'],
     check: ({ hold }) =>
@@ -41,6 +47,7 @@ export const caseRules: readonly Rule<CaseInput>[] = [
   },
   { about: ['requirements'], check: ({ requirements }) => (requirements ?? []).flatMap(requirementWhere) },
   ...candidateRules,
+  ...riderRules,
   ...matrixRules,
 ];
 
@@ -122,43 +129,6 @@ function upwards(stretch: { from_km: number; to_km: number }, path: Path): RuleF
       allowed: `more than ${stretch.from_km} km`,
     },
   ];
-}
-
-/** All items of a list say where they are in the same of two ways. */
-function oneWay(list: readonly object[], path: Path, one: string, other: string): RuleFault[] {
-  const first = list[0] !== undefined && one in list[0] ? one : other;
-  const odd = list.findIndex((item) => !(first in item));
-  if (odd < 0) return [];
-  return [
-    {
-      path: [...path, odd],
-      code: 'mixed-list',
-      message: `${one} and ${other} are mixed in one list`,
-      found: `${first} before, ${first === one ? other : one} here`,
-      allowed: `all by ${one}, or all by ${other}`,
-    },
-  ];
-}
-
-function changesInOrder(changes: readonly ({ at_km: number } | { at_s: number })[]): RuleFault[] {
-  const path = ['hold', 'changes'];
-  const mixed = oneWay(changes, path, 'at_km', 'at_s');
-  if (mixed.length > 0) return mixed;
-  return changes.flatMap((change, i) => {
-    const key = 'at_km' in change ? 'at_km' : 'at_s';
-    const at = (c: { at_km: number } | { at_s: number }): number => ('at_km' in c ? c.at_km : c.at_s);
-    const before = i === 0 ? Number.NEGATIVE_INFINITY : at(changes[i - 1]!);
-    if (at(change) > before) return [];
-    return [
-      {
-        path: [...path, i, key],
-        code: 'not-in-order',
-        message: 'the changes are not in order',
-        found: `${at(change)} after ${before}`,
-        allowed: `more than ${before}`,
-      },
-    ];
-  });
 }
 
 /** The log law has no wind at or below the roughness length. */

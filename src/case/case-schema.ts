@@ -1,5 +1,6 @@
 import * as z from 'zod';
 import { candidateSchema } from './candidate-schema.ts';
+import { faultsSchema } from './fault-schema.ts';
 import {
   block,
   fileName,
@@ -16,7 +17,9 @@ import {
 import { holdSchema } from './hold-schema.ts';
 import { matrixSchema } from './matrix-schema.ts';
 import { requirementSchema } from './requirement-schema.ts';
+import { riderSchema } from './rider-schema.ts';
 import { roadSchema, trackSchema } from './road-schema.ts';
+import { supervisorSchema } from './supervisor-schema.ts';
 import { vehicleSchema } from './vehicle-schema.ts';
 import { airSchema, windSchema } from './weather-schema.ts';
 
@@ -33,15 +36,9 @@ export const caseSchema = mapping(
       .union([fileName, vehicleSchema])
       .meta({ description: 'File name of a vehicle, or the vehicle itself' }),
     hold: holdSchema,
-    rider: block(
-      mapping('The rider who stands by', {
-        brakes_above_kmh: optional(
-          number('km/h', 0.1, 200, 'Overspeed that the rider holds with the brake'),
-          'none',
-          'not given: the rider does not brake',
-        ),
-      }),
-    ),
+    rider: block(riderSchema),
+    supervisor: optional(supervisorSchema),
+    faults: faultsSchema,
     scheme: otherwise(word(['exact', 'fast'], 'How the plant is stepped'), 'exact', NOT_GIVEN),
     candidates: list(candidateSchema, 1, 50, 'What drives the throttle'),
     segments: otherwise(
@@ -75,3 +72,4 @@ export const caseSchema = mapping(
 export type CaseFile = z.output<typeof caseSchema>;
 export type CandidateFile = CaseFile['candidates'][number];
 export type RequirementFile = CaseFile['requirements'][number];
+export type ActFile = CaseFile['rider']['does'][number];

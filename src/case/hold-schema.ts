@@ -18,6 +18,14 @@ export const holdSchema = mapping('The speed to hold', {
     'set_speed_kmh',
     'the run starts at the set speed',
   ),
+  starts: otherwise(
+    word(
+      ['engaged', 'by_hand'],
+      'Whether hold is on at the first point, or the rider rides there by hand until it is engaged',
+    ),
+    'engaged',
+    null,
+  ),
   gear: optional(integer(1, 20, 'Gear at the start, from 1, in place of the gear of the vehicle file')),
   shifts: otherwise(
     list(

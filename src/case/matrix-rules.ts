@@ -37,6 +37,16 @@ export const matrixRules: readonly Rule<CaseInput>[] = [
     check: ({ matrix, track, hold }) =>
       matrix === undefined ? [] : turnedByTime(matrix, track, hold.changes ?? []),
   },
+  {
+    about: [],
+    check: ({ matrix, track, rider, faults }) =>
+      matrix === undefined
+        ? []
+        : turnedActs(matrix, track, [
+            ['rider.does', rider?.does ?? []],
+            ['faults', faults ?? []],
+          ]),
+  },
 ];
 
 function size(matrix: MatrixInput): RuleFault[] {
@@ -118,6 +128,26 @@ function turnedByTime(
       message: 'is the other way than the case goes, and its set speed changes at a time, not at a place',
       found: String(directions[other]),
       allowed: `${direction}, or hold.changes with at_km`,
+    },
+  ];
+}
+
+/** Driven the other way, what the rider does in an order, and what befalls the sensor, has no order to be done in. */
+function turnedActs(
+  { directions = [] }: MatrixInput,
+  { direction = 'there' }: CaseInput['track'],
+  lists: readonly (readonly [key: string, items: readonly object[]])[],
+): RuleFault[] {
+  const other = directions.findIndex((one) => one !== direction);
+  const written = lists.find(([, items]) => items.length > 0);
+  if (other < 0 || written === undefined) return [];
+  return [
+    {
+      path: ['matrix', 'directions', other],
+      code: 'keys-exclude',
+      message: `is the other way than the case goes, and ${written[0]} is written for one way`,
+      found: String(directions[other]),
+      allowed: `${direction}, or no ${written[0]}`,
     },
   ];
 }

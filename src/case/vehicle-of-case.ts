@@ -6,6 +6,8 @@ import type { DefaultUsed } from './list-defaults.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
 import { speedsOfGears } from './speeds-of-gears.ts';
+import { speedsOfUnit } from './speeds-of-unit.ts';
+import { unitDefaults } from './unit-of.ts';
 import { vehicleOf } from './vehicle-of.ts';
 import { placeOf } from './yaml-source.ts';
 
@@ -14,7 +16,7 @@ import { placeOf } from './yaml-source.ts';
  *
  * @throws InputError for what the case asks of a vehicle that does not have it, with the places of the case:
  *   `no-traction`, `no-gears`, `no-clutch`, `out-of-range` (gear), `gear-engaged-already`, and `beyond-the-gear` for set
- *   speeds that the engaged gear cannot turn; for what the compilers of `vehicle/` refuse, with those of the vehicle
+ *   speeds that the engaged gear cannot turn, `not-in-order` for those that a rule of the unit does not allow; for what the compilers of `vehicle/` refuse, with those of the vehicle
  */
 export function vehicleOfCase(document: CaseDocument, vehicle: VehicleDocument): Vehicle {
   const [first, ...others] = rideProblems(document, vehicle);
@@ -25,7 +27,11 @@ export function vehicleOfCase(document: CaseDocument, vehicle: VehicleDocument):
 
 /** What a case asks of a vehicle that does not have it: surface, gears, set speeds that a gear cannot turn. */
 export function rideProblems(document: CaseDocument, vehicle: VehicleDocument): readonly Problem[] {
-  const problems = [...surfaceProblems(document, vehicle), ...gearsOfRide(document, vehicle)];
+  const problems = [
+    ...surfaceProblems(document, vehicle),
+    ...gearsOfRide(document, vehicle),
+    ...speedsOfUnit(document),
+  ];
   return problems.length === 0 ? speedsOfGears(document, vehicle) : problems;
 }
 
@@ -36,6 +42,7 @@ export function rideDefaults(document: CaseDocument, vehicle: VehicleDocument): 
   const slips = vehicle.file.traction !== undefined && road.surface === undefined;
   return [
     ...document.defaults,
+    ...unitDefaults(document),
     ...(slips ? [dry] : []),
     ...vehicle.defaults.filter(({ key }) => hold.gear === undefined || key !== 'drive.gear'),
   ];
