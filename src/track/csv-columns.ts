@@ -35,7 +35,8 @@ export type TrackField =
   | 'heading'
   | 'headwind'
   | 'time'
-  | 'speed';
+  | 'speed'
+  | 'throttle';
 
 const same = (value: number): number => value;
 const ANY = Number.MAX_VALUE;
@@ -57,6 +58,7 @@ export const CSV_COLUMNS: Readonly<Record<string, CsvColumn<TrackField>>> = {
   headwind_m_s: { field: 'headwind', least: -100, most: 100, convert: same },
   time_s: { field: 'time', least: -ANY, most: ANY, convert: same },
   speed_kmh: { field: 'speed', least: 0, most: 1000, convert: fromKmh },
+  throttle_pct: { field: 'throttle', least: -100, most: 100, convert: fromPct },
 };
 
 export const MEANT_TRACK_COLUMNS: readonly (readonly [RegExp, readonly string[]])[] = [
@@ -69,26 +71,52 @@ export const MEANT_TRACK_COLUMNS: readonly (readonly [RegExp, readonly string[]]
   [/^(headwind|wind)(_|$)/, ['headwind_m_s']],
   [/^(time|t)(_|$)/, ['time_s']],
   [/^(speed|velocity|v)(_|$)/, ['speed_kmh']],
+  [/^(throttle|tps|grip)(_|$)/, ['throttle_pct']],
 ];
 
-function checkTrackColumns(seen: ReadonlyMap<TrackField, string>, place: Place): void {
-  const found = [...seen.values()].join(', ');
-  const refuse = (message: string, allowed: string): never => {
-    throw new InputError({ code: 'missing-column', place, message, found, allowed });
-  };
+type Seen = ReadonlyMap<TrackField, string>;
+
+function missing(seen: Seen, place: Place, message: string, allowed: string): InputError {
+  return new InputError({
+    code: 'missing-column',
+    place,
+    message,
+    found: [...seen.values()].join(', '),
+    allowed,
+  });
+}
+
+function checkPlaces(seen: Seen, place: Place): void {
   if (seen.has('latitudeDeg') !== seen.has('longitudeDeg'))
-    refuse('a latitude needs a longitude', 'lat_deg, lon_deg');
+    throw missing(seen, place, 'a latitude needs a longitude', 'lat_deg, lon_deg');
   if (!seen.has('distance') && !seen.has('latitudeDeg'))
-    refuse('the file does not say where its points are', 'distance_m or distance_km, or lat_deg and lon_deg');
+    throw missing(
+      seen,
+      place,
+      'the file does not say where its points are',
+      'distance_m or distance_km, or lat_deg and lon_deg',
+    );
+}
+
+function checkTrackColumns(seen: Seen, place: Place): void {
+  checkPlaces(seen, place);
   if (!seen.has('elevation') && !seen.has('grade'))
-    refuse('the file has neither elevation nor grade', 'elevation_m or grade_pct');
+    throw missing(seen, place, 'the file has neither elevation nor grade', 'elevation_m or grade_pct');
+}
+
+function checkRideColumns(seen: Seen, place: Place): void {
+  checkPlaces(seen, place);
+  if (!seen.has('time')) throw missing(seen, place, 'a logged ride needs times', 'time_s');
 }
 
 /** What a CSV track may say. Its empty cells are filled by the cleaning. */
 export const TRACK_VOCABULARY: CsvVocabulary<TrackField> = {
   columns: CSV_COLUMNS,
   words: {},
-  mayBeEmpty: new Set(['elevation', 'grade', 'heading', 'headwind', 'speed']),
+  mayBeEmpty: new Set(['elevation', 'grade', 'heading', 'headwind', 'speed', 'throttle']),
   meant: MEANT_TRACK_COLUMNS,
   check: checkTrackColumns,
 };
+
+/** The same columns of a ride that was logged: it needs times, and no height. */
+export const RIDE_VOCABULARY: CsvVocabulary<TrackField> = { ...TRACK_VOCABULARY, check: checkRideColumns };

@@ -31,4 +31,6 @@ export interface RawTrack {
   readonly time: Float64Array | null;
   /** [m/s] */
   readonly speed: Float64Array | null;
+  /** As a ratio: 1 is full, below 0 regenerates. */
+  readonly throttle: Float64Array | null;
 }

@@ -1,4 +1,4 @@
-import { TRACK_VOCABULARY } from './csv-columns.ts';
+import { type CsvVocabulary, TRACK_VOCABULARY, type TrackField } from './csv-columns.ts';
 import { readCsvTable } from './csv-table.ts';
 import type { RawTrack } from './raw-track.ts';
 
@@ -7,11 +7,16 @@ import type { RawTrack } from './raw-track.ts';
  *
  * @param text the decoded file
  * @param file name for messages
+ * @param vocabulary of a track, or of a ride
  * @returns the points as the file gives them; empty cells NaN, words for no number Infinity
  * @throws InputError of readCsvTable
  */
-export function readCsv(text: string, file: string): RawTrack {
-  const { size, line, numbers } = readCsvTable(text, file, TRACK_VOCABULARY);
+export function readCsv(
+  text: string,
+  file: string,
+  vocabulary: CsvVocabulary<TrackField> = TRACK_VOCABULARY,
+): RawTrack {
+  const { size, line, numbers } = readCsvTable(text, file, vocabulary);
   return {
     file,
     name: null,
@@ -28,5 +33,6 @@ export function readCsv(text: string, file: string): RawTrack {
     headwind: numbers('headwind'),
     time: numbers('time'),
     speed: numbers('speed'),
+    throttle: numbers('throttle'),
   };
 }

@@ -141,6 +141,7 @@ function columns(line: Line, file: string): RawTrack {
     headwind: null,
     time: null,
     speed: null,
+    throttle: null,
   };
 }
 

@@ -82,6 +82,7 @@ function columns(path: GpxPath, nodes: readonly XmlNode[], file: string): RawTra
     headwind: null,
     time: times > 0 ? time : null,
     speed: null,
+    throttle: null,
   };
 }
 
