@@ -192,10 +192,13 @@ export interface IntegerSetup {
 
 /** What was asked of a design, at which operating point, and what the linear loop promises. */
 export interface DesignRecord {
-  readonly method: 'settling_overshoot' | 'droop';
+  readonly method: 'settling_overshoot' | 'droop' | 'simc' | 'lambda' | 'load_rejection';
   /** Set speed of the operating point [m/s]. */
   readonly speed: number;
-  /** Asked: settling time [s] and overshoot (ratio), or droop [m/s], grade step (ratio) and damping ratio. */
+  /**
+   * Asked: settling time [s] and overshoot (ratio); droop [m/s], grade step (ratio) and damping ratio; time constant of
+   * the closed loop [s]; or the greatest sensitivity.
+   */
   readonly asked: Readonly<Record<string, number>>;
   /** Promised by the linear loop with all its lags, same keys and more, SI. */
   readonly promised: Readonly<Record<string, number>>;
