@@ -2,6 +2,7 @@ import { BUS_TARGET } from '../control/bus.ts';
 import { gearInHand } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
+import type { DetailRecorder } from './record-detail.ts';
 import type { BinRecord } from './result.ts';
 
 // Places of the open bin's sums. Speed and error: extremes over the samples.
@@ -155,8 +156,9 @@ export interface Recorder {
  *
  * @param edge edges of all bins of the road [m]
  * @param bands number of bands, at most 4
+ * @param detail takes the same samples; null: the record has no detail
  */
-export function recorder(edge: Float64Array, bands: number): Recorder {
+export function recorder(edge: Float64Array, bands: number, detail: DetailRecorder | null = null): Recorder {
   const all = edge.length - 1;
   const column = (): Float64Array => new Float64Array(all);
   let size = 0;
@@ -200,10 +202,17 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
 
   const sums = new Float64Array(SUMS);
   clearSums(sums);
-  const add = (machine: Machine): void => addSamples(machine, sums);
+  const add =
+    detail === null
+      ? (machine: Machine): void => addSamples(machine, sums)
+      : (machine: Machine): void => {
+          addSamples(machine, sums);
+          detail.add(machine);
+        };
 
   const close: Recorder['close'] = ({ s, p, chunk }, timeAt) => {
     const i = size++;
+    detail?.close();
     const time = sums[TIME];
     const force = chunk[at.C_DRIVE_FORCE];
     r.timeAt[i] = timeAt;
@@ -255,6 +264,7 @@ export function recorder(edge: Float64Array, bands: number): Recorder {
   };
 
   const finish = (): BinRecord => {
+    r.detail = detail === null ? null : detail.finish();
     if (size === all) return { ...r, size };
     const cut: Record<string, unknown> = {};
     for (const [key, value] of Object.entries(r)) {

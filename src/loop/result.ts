@@ -130,15 +130,47 @@ export interface BinRecord {
   readonly detail: BinDetail | null;
 }
 
-/** By bin, over the time with hold on: what figures of comfort and of the throttle need. SI. */
+/**
+ * By bin, over the time with hold on: what figures of comfort and of the throttle need. SI. Accelerations are mean ones
+ * over a sample, (v at its end - v at its start) / its time. What is the command's own (rate, reversals, distribution)
+ * leaves out the shifts, in which it is not the controller's.
+ */
 export interface BinDetail {
-  /** Time integral of |e| [m]. */
+  /** Time integral of |e| [m], and of |e| times the time since the start of the bin [m s]. */
   readonly errorAbsolute: Float64Array;
+  readonly errorMoment: Float64Array;
   /** Time integrals of a^2 [m2/s3] and |a| [m/s]. */
   readonly accelerationSquare: Float64Array;
   readonly accelerationAbsolute: Float64Array;
-  /** Changes of direction of the command. */
+  /** Work that went into a rising speed: the sum over the samples of what is above 0 of m_e (v_end^2 - v_start^2) / 2 [J]. */
+  readonly inertialWork: Float64Array;
+  /** Greatest |change of the limited command| from one sample to the next over the sample's time [1/s]. */
+  readonly commandRate: Float64Array;
+  /** Turns of the limited command, each told once it has come back from its extreme by more than 0.005. */
   readonly reversals: Uint32Array;
+  /** Speed error in classes of 0.01 km/h, limited command of 0.001, acceleration of 0.01 m/s2, jerk of 0.02 m/s3. */
+  readonly error: Distribution;
+  readonly command: Distribution;
+  readonly acceleration: Distribution;
+  /**
+   * Change of the mean acceleration from one window of 0.2 s (in whole samples, one at least) to the next, over the
+   * window; told at the end of the second window, and not before two have passed.
+   */
+  readonly jerk: Distribution;
+}
+
+/**
+ * Samples by class of a quantity, bin by bin: bin i has the entries [start[i], start[i + 1]), one a class that it met.
+ * Class k covers [k width, (k + 1) width); values beyond the last class are in it.
+ */
+export interface Distribution {
+  readonly width: number;
+  /** Time of a sample [s]. */
+  readonly sample: number;
+  readonly start: Uint32Array;
+  readonly index: Int16Array;
+  /** Samples in the class: whole, but for the last sample of a run. */
+  readonly samples: Float32Array;
 }
 
 /** A shift of gear that happened. Indices into the drive's gears. */

@@ -8,6 +8,7 @@ import { ledgerOf } from './ledger.ts';
 import { distanceAt } from './places.ts';
 import type { LoopPlan, RunStatus } from './plan.ts';
 import { recorder } from './record.ts';
+import { detailRecorder } from './record-detail.ts';
 import type { Checkpoint, LoopResult } from './result.ts';
 import { settle } from './settle.ts';
 import { statusOf } from './status.ts';
@@ -41,7 +42,8 @@ export function runLoop(plan: LoopPlan): LoopResult {
   settle(machine, plan, 0, plan.hold.startSpeed);
   const end = road.distance[road.size - 1];
   const edge = binEdges(end, plan.bin);
-  const record = recorder(edge, plan.bands.length);
+  const detail = plan.detail === true ? detailRecorder(edge.length - 1, machine.p[at.P_SAMPLE]) : null;
+  const record = recorder(edge, plan.bands.length, detail);
   const run = journey(machine, plan, record.add);
   const bites = biteLog(s);
   const checkpoints: Checkpoint[] = [checkpoint(0, run.time(), s)];
