@@ -1,7 +1,7 @@
 import { Matrix } from 'ml-matrix';
 import { continuousPoles, eigenvalues } from '../linear/eigenvalues.ts';
 import { holdInput } from '../linear/hold-input.ts';
-import { resolvent } from '../linear/resolvent.ts';
+import { resolventOf } from '../linear/resolvent.ts';
 import {
   addComplex,
   type Complex,
@@ -10,31 +10,21 @@ import {
   expComplex,
   multiplyComplex,
   powerOfComplex,
-  subtractComplex,
 } from '../numeric/complex.ts';
 import type { LinearVehicle } from '../vehicle/linearise.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import {
+  controllerAt,
+  derivativeOf,
+  type Gains,
+  integratorAt,
+  type LoopTiming,
+  onCircle,
+} from './controller-response.ts';
 import { linearPlant } from './linear-plant.ts';
 import { sensorDelay } from './sensor-delay.ts';
 
-/** When and how a PI controller works in the loop. */
-export interface LoopTiming {
-  /** [s] */
-  readonly sample: number;
-  /** From sample to command [s]. */
-  readonly computingDelay: number;
-  readonly integration: 'forward' | 'backward';
-}
-
-export interface Gains {
-  /** [1/(m/s)] */
-  readonly kp: number;
-  /** [1/(m/s)/s] */
-  readonly ki: number;
-  /** A derivative on the measurement [1/(m/s2)], and its filter [s]; left out: none. */
-  readonly kd?: number;
-  readonly derivativeFilter?: number;
-}
+export type { Gains, LoopTiming };
 
 /** What pushes the loop out of its rest: deviations that begin at time 0 and stay. */
 export interface Push {
@@ -64,6 +54,11 @@ export interface SampledLoop {
    * a loop with a coarser sample and the same lag in all, whose slow poles agree to a few thousandths.
    */
   poles(gains: Gains): readonly Complex[];
+  readonly timing: LoopTiming;
+  /** Poles of the vehicle with its lags, in the s plane [1/s]. */
+  readonly plantPoles: readonly Complex[];
+  /** From command to measurement at a complex frequency z [m/s]; Infinity at a pole. */
+  plantAt(z: Complex): Complex;
   /** Gain around the open loop at z = e^(j w h). */
   openLoop(gains: Gains, frequency: number): Complex;
   /** The gains with which both s values, a conjugate pair or two real ones, are poles of the closed loop. */
@@ -114,7 +109,7 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     const samples = Math.ceil(duration / sample);
     const values = new Float64Array(samples * parts + 1);
     const reference = scale * push.reference;
-    const { gain: slipGain, kept } = derivativeOf(gains);
+    const { gain: slipGain, kept } = derivativeOf(gains, sample);
     let filtered = 0;
     const disturbanceSeen = scale * late.gamma.get(measured, 1) * push.disturbance;
     const queue = new Float64Array(Math.max(back, 1));
@@ -147,18 +142,9 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     return { speed: values, spacing: sample / parts };
   }
 
-  /** kd / (Tf + Ts), and what the filter keeps over a sample: D(z) = gain (z - 1) / (z - kept). */
-  function derivativeOf({ kd = 0, derivativeFilter = 0 }: Gains): {
-    readonly gain: number;
-    readonly kept: number;
-  } {
-    const spread = derivativeFilter + sample;
-    return { gain: kd / spread, kept: derivativeFilter / spread };
-  }
-
   /** State, measurements on their way (the newest first), filtered measurement of a derivative, integral. */
   function closedLoop(gains: Gains): Matrix {
-    const { gain: slipGain, kept } = derivativeOf(gains);
+    const { gain: slipGain, kept } = derivativeOf(gains, sample);
     const derives = slipGain !== 0;
     const size = order + back + (derives ? 2 : 1);
     const filtered = size - 2;
@@ -198,10 +184,10 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     });
   }
 
-  const throttleInput = whole.gamma.getColumn(0);
+  const stateAt = resolventOf(whole.phi, whole.gamma.getColumn(0));
   /** From command to measurement; null at a pole. */
   function measurement(z: Complex): Complex | null {
-    const state = resolvent(whole.phi, throttleInput, z);
+    const state = stateAt(z);
     if (state === null) return null;
     if (back === 0) return multiplyComplex(complex(scale), state[measured]!);
     const now = state.reduce(
@@ -210,27 +196,13 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     );
     return divideComplex(now, powerOfComplex(z, back));
   }
-  /** C(z) = kp + ki integrator(z). */
-  function integrator(z: Complex): Complex {
-    const forward = divideComplex(complex(sample), subtractComplex(z, complex(1)));
-    return backward ? multiplyComplex(forward, z) : forward;
-  }
+  const plantAt = (z: Complex): Complex => measurement(z) ?? complex(Number.POSITIVE_INFINITY);
   function openLoop(gains: Gains, frequency: number): Complex {
-    const z = expComplex(complex(0, frequency * sample));
-    const { gain: slipGain, kept } = derivativeOf(gains);
-    const slip =
-      slipGain === 0
-        ? complex(0)
-        : divideComplex(
-            multiplyComplex(complex(slipGain), subtractComplex(z, complex(1))),
-            subtractComplex(z, complex(kept)),
-          );
-    const controller = addComplex(
-      addComplex(complex(gains.kp), slip),
-      multiplyComplex(complex(gains.ki), integrator(z)),
-    );
+    const z = onCircle(frequency, sample);
     const path = measurement(z);
-    return path === null ? complex(Number.POSITIVE_INFINITY) : multiplyComplex(controller, path);
+    return path === null
+      ? complex(Number.POSITIVE_INFINITY)
+      : multiplyComplex(controllerAt(gains, timing, z), path);
   }
 
   // 1 + C(z) G(z) = 0 at both poles: two equations, linear in the gains.
@@ -241,7 +213,7 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
       const z = expComplex(complex(s.re * sample, s.im * sample));
       const path = measurement(z);
       return {
-        left: integrator(z),
+        left: integratorAt(timing, z),
         right: path === null ? complex(0) : divideComplex(complex(-1), path),
       };
     };
@@ -258,5 +230,13 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
     return { kp: slow.right.re - ki * slow.left.re, ki };
   }
 
-  return { respond, poles, openLoop, placePair };
+  return {
+    timing,
+    plantPoles: eigenvalues(plant.a),
+    respond,
+    poles,
+    plantAt,
+    openLoop,
+    placePair,
+  };
 }
