@@ -5,8 +5,8 @@ const GREATEST = 32767;
 
 /** A distribution while it grows, bin by bin. */
 export interface DistributionRecorder {
-  /** Adds a value to the open bin, for so many samples (a share of one at the end of a run). */
-  readonly add: (value: number, samples: number) => void;
+  /** Adds the first `count` of some values to the open bin, a sample each; the last may be a share of a sample. */
+  readonly add: (values: Float64Array, count: number, lastShare: number) => void;
   readonly close: () => void;
   readonly finish: () => Distribution;
 }
@@ -19,31 +19,48 @@ export interface DistributionRecorder {
  * @param sample time of a sample [s]
  */
 export function distributionRecorder(bins: number, width: number, sample: number): DistributionRecorder {
+  const perWidth = 1 / width;
   const start = new Uint32Array(bins + 1);
   const open = new Float32Array(GREATEST - LEAST + 1);
-  const met: number[] = [];
-  let index = new Int16Array(8 * bins + 64);
+  const met = new Uint16Array(open.length);
+  let meets = 0;
+  let index = new Int16Array(4 * bins + 64);
   let samples = new Float32Array(index.length);
   let closed = 0;
   let entries = 0;
-  const add = (value: number, count: number): void => {
-    const k = Math.min(Math.max(Math.floor(value / width), LEAST), GREATEST) - LEAST;
-    if (open[k] === 0) met.push(k);
+  const meet = (k: number, count: number): void => {
+    if (open[k] === 0) met[meets++] = k;
     open[k] += count;
   };
+  const add: DistributionRecorder['add'] = (values, count, lastShare) => {
+    // Neighbours are mostly of one class: they are counted together.
+    let here = -1;
+    let alike = 0;
+    for (let i = 0; i < count; i++) {
+      const k = Math.min(Math.max(Math.floor(values[i] * perWidth), LEAST), GREATEST) - LEAST;
+      if (k !== here) {
+        if (alike > 0) meet(here, alike);
+        here = k;
+        alike = 0;
+      }
+      alike += i < count - 1 ? 1 : lastShare;
+    }
+    if (alike > 0) meet(here, alike);
+  };
   const close = (): void => {
-    if (entries + met.length > index.length) {
-      const size = Math.max(2 * index.length, entries + met.length);
+    if (entries + meets > index.length) {
+      const size = Math.max(2 * index.length, entries + meets);
       index = enlarged(index, new Int16Array(size));
       samples = enlarged(samples, new Float32Array(size));
     }
-    for (const k of met) {
+    for (let m = 0; m < meets; m++) {
+      const k = met[m];
       index[entries] = k + LEAST;
       samples[entries] = open[k];
       open[k] = 0;
       entries++;
     }
-    met.length = 0;
+    meets = 0;
     start[++closed] = entries;
   };
   const finish = (): Distribution => ({

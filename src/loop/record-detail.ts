@@ -52,12 +52,70 @@ export function detailRecorder(bins: number, sample: number): DetailRecorder {
   const command = distributionRecorder(bins, COMMAND_CLASS, sample);
   const acceleration = distributionRecorder(bins, ACCELERATION_CLASS, sample);
   const jerk = distributionRecorder(bins, JERK_CLASS, sample);
-  const speeds = speedMemory(sample);
+  const window = Math.max(1, Math.round(JERK_WINDOW / sample));
+  const perWindowSquare = 1 / (window * sample * window * sample);
+  // Speeds of the last two windows, then those of the chunk, then that at its end; values of a quantity in the chunk.
+  const reach = 2 * window;
+  const speeds = new Float64Array(reach + at.LOG_ROWS + 1);
+  const values = new Float64Array(at.LOG_ROWS);
+  let kept = 0;
   const turns = turnCounter();
   let bin = 0;
   /** Samples since the start of the bin. */
   let passed = 0;
   let before = Number.NaN;
+
+  const takeSpeeds = ({ s, log }: Heard, rows: number): void => {
+    for (let row = 0; row < rows; row++) speeds[reach + row] = log[row * at.L_STRIDE + at.L_SPEED];
+    speeds[reach + rows] = s[at.SPEED];
+  };
+  const keepSpeeds = (rows: number): void => {
+    speeds.copyWithin(0, rows, rows + reach);
+    kept = Math.min(reach, kept + rows);
+  };
+
+  const addErrors = (setSpeed: number, rows: number, lastShare: number): void => {
+    let absolute = 0;
+    let moment = 0;
+    for (let row = 0; row < rows; row++) {
+      const share = row < rows - 1 ? 1 : lastShare;
+      const e = speeds[reach + row] - setSpeed;
+      const size = Math.abs(e) * share;
+      values[row] = e;
+      absolute += size;
+      moment += size * (passed + row + 0.5 * share);
+    }
+    error.add(values, rows, lastShare);
+    columns.errorAbsolute[bin] += sample * absolute;
+    columns.errorMoment[bin] += sample * sample * moment;
+  };
+
+  const addAccelerations = (mass: number, rows: number, lastShare: number): void => {
+    let squares = 0;
+    let changes = 0;
+    let rises = 0;
+    for (let row = 0; row < rows; row++) {
+      const time = row < rows - 1 ? sample : lastShare * sample;
+      const speed = speeds[reach + row];
+      const change = speeds[reach + row + 1] - speed;
+      const a = time > 0 ? change / time : 0;
+      values[row] = a;
+      squares += a * change;
+      changes += Math.abs(change);
+      if (change > 0) rises += change * (speed + speed + change);
+    }
+    acceleration.add(values, rows, lastShare);
+    columns.accelerationSquare[bin] += squares;
+    columns.accelerationAbsolute[bin] += changes;
+    columns.inertialWork[bin] += 0.5 * mass * rises;
+  };
+
+  const addJerks = (rows: number, lastShare: number): void => {
+    let count = 0;
+    for (let row = Math.max(0, reach - kept); row < rows; row++)
+      values[count++] = (speeds[row + reach] - 2 * speeds[row + window] + speeds[row]) * perWindowSquare;
+    jerk.add(values, count, lastShare);
+  };
 
   const addCommands = ({ p, log }: Heard, rows: number, lastShare: number): void => {
     const highest = p[at.P_GREATEST];
@@ -65,12 +123,13 @@ export function detailRecorder(bins: number, sample: number): DetailRecorder {
     let steepest = 0;
     for (let row = 0; row < rows; row++) {
       const u = Math.min(Math.max(log[row * at.L_STRIDE + at.L_COMMAND], lowest), highest);
-      command.add(u, row < rows - 1 ? 1 : lastShare);
+      values[row] = u;
       const step = Math.abs(u - before);
       if (step > steepest) steepest = step;
       before = u;
       if (turns.turned(u)) columns.reversals[bin]++;
     }
+    command.add(values, rows, lastShare);
     columns.commandRate[bin] = Math.max(columns.commandRate[bin], steepest / sample);
   };
   const forgetCommand = (): void => {
@@ -79,53 +138,26 @@ export function detailRecorder(bins: number, sample: number): DetailRecorder {
   };
 
   const add: DetailRecorder['add'] = (machine) => {
-    const { s, p, log, chunk } = machine;
+    const { s, p, chunk } = machine;
     const rows = chunk[at.C_TICKS];
     if (rows === 0) return;
     const lastShare = chunk[at.C_TIME] / sample - (rows - 1);
-    const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
-    let absolute = 0;
-    let moment = 0;
-    let squares = 0;
-    let changes = 0;
-    let rises = 0;
-    let speed = log[at.L_SPEED];
-    for (let row = 0; row < rows; row++) {
-      const whole = row < rows - 1;
-      const share = whole ? 1 : lastShare;
-      const next = whole ? log[(row + 1) * at.L_STRIDE + at.L_SPEED] : s[at.SPEED];
-      const e = speed - setSpeed;
-      const size = Math.abs(e) * share;
-      absolute += size;
-      moment += size * (passed + 0.5 * share);
-      error.add(e, share);
-      speeds.keep(speed);
-      if (speeds.full()) jerk.add(speeds.jerk(), share);
-      if (share > 0) {
-        const change = next - speed;
-        const a = change / (share * sample);
-        squares += a * change;
-        changes += Math.abs(change);
-        if (change > 0) rises += change * (next + speed);
-        acceleration.add(a, share);
-      }
-      passed += share;
-      speed = next;
-    }
-    columns.errorAbsolute[bin] += sample * absolute;
-    columns.errorMoment[bin] += sample * sample * moment;
-    columns.accelerationSquare[bin] += squares;
-    columns.accelerationAbsolute[bin] += changes;
-    columns.inertialWork[bin] += 0.5 * s[at.EFFECTIVE_MASS] * rises;
+    takeSpeeds(machine, rows);
+    addErrors(s[BUS_TARGET] * p[at.P_TO_TRUE], rows, lastShare);
+    addAccelerations(s[at.EFFECTIVE_MASS], rows, lastShare);
+    addJerks(rows, lastShare);
+    keepSpeeds(rows);
+    passed += rows - 1 + lastShare;
     if (s[at.SHIFT_PART] > 0) forgetCommand();
     else addCommands(machine, rows, lastShare);
   };
 
-  const skip: DetailRecorder['skip'] = ({ log, chunk }) => {
-    const rows = chunk[at.C_TICKS];
+  const skip: DetailRecorder['skip'] = (machine) => {
+    const rows = machine.chunk[at.C_TICKS];
     if (rows === 0) return;
-    for (let row = 0; row < rows; row++) speeds.keep(log[row * at.L_STRIDE + at.L_SPEED]);
-    passed += chunk[at.C_TIME] / sample;
+    takeSpeeds(machine, rows);
+    keepSpeeds(rows);
+    passed += machine.chunk[at.C_TIME] / sample;
     forgetCommand();
   };
 
@@ -148,27 +180,6 @@ export function detailRecorder(bins: number, sample: number): DetailRecorder {
     jerk: jerk.finish(),
   });
   return { add, skip, close, finish };
-}
-
-/** Speeds of the last two windows of the jerk. */
-function speedMemory(sample: number) {
-  const window = Math.max(1, Math.round(JERK_WINDOW / sample));
-  const size = 2 * window + 1;
-  const kept = new Float64Array(size);
-  const perSquare = 1 / (window * sample * window * sample);
-  let count = 0;
-  let newest = size - 1;
-  const ago = (samples: number): number =>
-    kept[newest >= samples ? newest - samples : newest - samples + size];
-  return {
-    keep: (speed: number): void => {
-      newest = newest + 1 < size ? newest + 1 : 0;
-      kept[newest] = speed;
-      count++;
-    },
-    full: (): boolean => count >= size,
-    jerk: (): number => (ago(0) - 2 * ago(window) + ago(2 * window)) * perSquare,
-  };
 }
 
 /** Turns of a command with a dead zone: it has turned once it is that far from its last extreme, on the other side. */
