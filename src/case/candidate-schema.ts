@@ -93,9 +93,25 @@ const droopDesign = mapping('Gains from the hill', {
   damping: number('', 0.1, 5, 'Damping ratio'),
   at_kmh: designSpeed,
 });
+const simcDesign = mapping('Gains from the delay of the loop', {
+  closed_loop_s: number('s', 0.01, 1000, 'Time constant of the closed loop beside its delay'),
+  rule: otherwise(
+    word(
+      ['simc', 'lambda'],
+      'Integral time: by SIMC, at most four times closed loop and delay; or the lag of the vehicle',
+    ),
+    'simc',
+    'the better one against hills: a lag as integral time is slow to take a load',
+  ),
+  at_kmh: designSpeed,
+});
+const rejectionDesign = mapping('Gains that take a load best under a bound', {
+  max_sensitivity: number('', 1.05, 10, 'Greatest sensitivity of the loop'),
+  at_kmh: designSpeed,
+});
 const piDesigned = mapping('PI with designed gains', {
   ...piRest,
-  design: z.union([settlingDesign, droopDesign]).meta({
+  design: z.union([settlingDesign, droopDesign, simcDesign, rejectionDesign]).meta({
     description:
       'What the gains are worked out from, for the vehicle on the level in the still air of the case at sea level',
   }),

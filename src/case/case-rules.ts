@@ -9,6 +9,7 @@ import { increasing } from './order-rules.ts';
 import { oneWay, placesInOrder } from './place-rules.ts';
 import { riderRules } from './rider-rules.ts';
 import { isMapping } from './schema-walk.ts';
+import { tuneRules } from './tune-rules.ts';
 import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
 import type { Path } from './yaml-source.ts';
 
@@ -49,6 +50,7 @@ export const caseRules: readonly Rule<CaseInput>[] = [
   ...candidateRules,
   ...riderRules,
   ...matrixRules,
+  ...tuneRules,
 ];
 
 /** Checks by name, which hold whatever else is wrong with the items: no item has the number -1, so none stops them. */

@@ -20,6 +20,7 @@ import { requirementSchema } from './requirement-schema.ts';
 import { riderSchema } from './rider-schema.ts';
 import { roadSchema, trackSchema } from './road-schema.ts';
 import { supervisorSchema } from './supervisor-schema.ts';
+import { tuneSchema } from './tune-schema.ts';
 import { vehicleSchema } from './vehicle-schema.ts';
 import { airSchema, windSchema } from './weather-schema.ts';
 
@@ -56,6 +57,7 @@ export const caseSchema = mapping(
     ),
     requirements: otherwise(list(requirementSchema, 0, 200, 'Written requirements'), [], null),
     matrix: optional(matrixSchema),
+    tune: optional(tuneSchema),
     output: block(
       mapping('What is written', {
         series: otherwise(

@@ -1,5 +1,7 @@
 import { designDroop } from '../control/design-droop.ts';
+import { designRejection } from '../control/design-rejection.ts';
 import { designSettling } from '../control/design-settling.ts';
+import { designSimc } from '../control/design-simc.ts';
 import type { DesignRecord } from '../control/setup.ts';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import { fromKmh, fromPct, fromPctPerKmh } from '../units/convert.ts';
@@ -62,6 +64,9 @@ function designed(
       gradeStep: fromPct(design.grade_step_pct),
       damping: design.damping,
     });
+  if ('closed_loop_s' in design)
+    return designSimc({ ...point, closedLoop: design.closed_loop_s, rule: design.rule });
+  if ('max_sensitivity' in design) return designRejection({ ...point, sensitivity: design.max_sensitivity });
   return designSettling({ ...point, settling: design.settling_s, overshoot: fromPct(design.overshoot_pct) });
 }
 

@@ -84,7 +84,7 @@ export function ownCombination({ file }: CaseDocument, vehicle: VehicleDocument)
 
 type MatrixFile = NonNullable<CaseFile['matrix']>;
 
-function loadOf(file: NonNullable<MatrixFile['loads']>[number], own: CombinedLoad): CombinedLoad {
+export function loadOf(file: NonNullable<MatrixFile['loads']>[number], own: CombinedLoad): CombinedLoad {
   if (file === 'own') return own;
   if (file === 'solo') return { ...own, label: 'solo', payloadKg: 0 };
   if (file === 'two_up') return { ...own, label: 'two up', pillionKg: PILLION_KG };

@@ -7,7 +7,7 @@ const name = optional(line('Name in tables', 40));
 /** Mass of one more person where nothing else is written: that of the rider in motorcycle regulations, from memory [kg]. */
 export const PILLION_KG = 75;
 
-const loadSchema = z
+export const loadSchema = z
   .union([
     word(['own', 'solo', 'two_up'], 'A load by its name'),
     mapping('A load by its masses', {

@@ -82,13 +82,17 @@ function inlineVehicle(source: YamlSource, file: Exclude<CaseFile['vehicle'], st
   return { source, at: ['vehicle'], file, defaults: vehicleDefaults(value, file) };
 }
 
-/** The defaults of the case alone, without those of a vehicle written in it, and with figures where they are worked out. */
+/** The defaults of the case alone, without those of a vehicle written in it and of `tune`, and with figures where they are worked out. */
 function caseDefaults(value: unknown, file: CaseFile): DefaultUsed[] {
   const setSpeed = String(file.hold.set_speed_kmh);
   // A design is made at a true speed, which takes the sensor of a vehicle that may stand in another file.
   const designSpeed = file.hold.set_speed_is === 'indicated' ? `${setSpeed} as indicated` : setSpeed;
   const written = 'profile' in file.track;
-  return listDefaults(caseSchema.omit({ vehicle: true }).extend({ vehicle: z.unknown() }), value, 'case')
+  return listDefaults(
+    caseSchema.omit({ vehicle: true, tune: true }).extend({ vehicle: z.unknown() }),
+    value,
+    'case',
+  )
     .filter(
       ({ key }) => !(written && (key === 'road.elevation_source' || key === 'road.smoothing_wavelength_m')),
     )

@@ -3,6 +3,7 @@ import { expect, it } from 'vitest';
 import { matrixOf } from '../../src/case/matrix-of.ts';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { tuneOf } from '../../src/case/tune-of.ts';
 import { vehicleOf } from '../../src/case/vehicle-of.ts';
 import { vehicleOfCase } from '../../src/case/vehicle-of-case.ts';
 import { InputError } from '../../src/problems/input-error.ts';
@@ -22,6 +23,7 @@ const READERS = {
     if (document.vehicle === null) return;
     vehicleOfCase(document, document.vehicle);
     matrixOf(document, document.vehicle);
+    tuneOf(document, document.vehicle);
   },
   vehicles: (text: string, file: string) => {
     vehicleOf(readVehicleFile(text, file));

@@ -170,7 +170,7 @@ const ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
 /** Ratios, whose keys carry no unit; efficiencies have theirs in the key around them; limits in the figure's name. */
 const WITHOUT_UNIT =
   `crr factor ki_factor setpoint_weight damping at_least at_most falloff shape gear_ratios primary_ratio
-final_ratio high_ratio low_ratio friction_dry friction_wet`.split(/\s/);
+final_ratio high_ratio low_ratio friction_dry friction_wet max_sensitivity weight`.split(/\s/);
 
 it('says for every number its range, and the unit that its key ends in', () => {
   for (const schema of Object.values(schemas))
