@@ -1,0 +1,146 @@
+import { type LeastSquares, leastSquares } from '../numeric/least-squares.ts';
+import { type ClusteredErrors, clusteredErrors } from './clustered-errors.ts';
+import type { CoastDownFit, CoastRun, CoastSetting, FittedRun } from './coast-down.ts';
+import { type CoastRows, coastRows } from './coast-rows.ts';
+import { type Estimate, estimateOf } from './estimate.ts';
+
+const MOST_ROUNDS = 30;
+/** A change of the wind that is none [m/s]. */
+const SETTLED = 1e-9;
+
+/**
+ * Drag area and rolling coefficient of a coast-down, together, by linear least squares over the balance of energy
+ *
+ *     m_e (v1^2 - v2^2) / 2 - m g dz = Crr m g ds cos(theta) + CdA 1/2 rho int va ax ds
+ *
+ * between the pieces of all runs (the integral form of SAE J1263 and ISO 10521-1, from memory; G. D. Thompson, The Vehicle
+ * Road Load Problem, US EPA, for the law of motion). Where runs went both ways, a steady wind along the road and a
+ * steady grade that were not logged are estimated as well, from the difference between the ways; the wind by
+ * Gauss-Newton steps, because its square stays behind in the mean of both ways. Standard errors take each run as one
+ * independent piece of evidence: see `clusteredErrors`.
+ *
+ * @param runs that `coastDownFaults` has nothing against
+ * @returns null where the data do not determine the unknowns, or the wind does not settle
+ */
+export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): CoastDownFit | null {
+  const estimatesWind = runs.some(({ headwind }) => headwind === null);
+  const estimatesGrade = runs.some(({ elevation, grade }) => elevation === null && grade === null);
+  const rowsAt = (along: number): Pooled => pooled(runs.map((run) => coastRows(run, setting, along)));
+  let wind = 0;
+  let rows = rowsAt(wind);
+  let fit: LeastSquares;
+  for (let round = 0; ; round++) {
+    fit = leastSquares(columnsOf(rows, estimatesWind, estimatesGrade), rows.lost);
+    if (fit.status === 'dependent' || round === MOST_ROUNDS) return null;
+    const step = estimatesWind ? fit.coefficients[2]! / fit.coefficients[1]! : 0;
+    if (Math.abs(step) <= SETTLED) break;
+    wind += step;
+    rows = rowsAt(wind);
+  }
+  const columns = columnsOf(rows, estimatesWind, estimatesGrade);
+  const taken = estimatesWind || estimatesGrade ? 2 : 1;
+  const errors = clusteredErrors(columns, fit, rows.run, taken);
+  const [crr, cda] = fit.coefficients as unknown as readonly [number, number];
+  const { inverse } = fit;
+  return {
+    setting,
+    crr: estimateAt(0, crr, errors),
+    cda: estimateAt(1, cda, errors),
+    correlation: inverse[0]![1]! / Math.sqrt(inverse[0]![0]! * inverse[1]![1]!),
+    wind: estimatesWind ? estimateAt(2, wind, errors, cda) : null,
+    grade: estimatesGrade
+      ? estimateAt(columns.length - 1, fit.coefficients[columns.length - 1]!, errors)
+      : null,
+    growth: growthOf(columns, rows, taken),
+    degrees: errors.degrees,
+    ...residualsOf(runs, rows, fit, calmRows(runs, setting), { crr, cda }),
+  };
+}
+
+/** The rows as they would be in still air. */
+const calmRows = (runs: readonly CoastRun[], setting: CoastSetting): Pooled =>
+  pooled(runs.map((run) => coastRows({ ...run, headwind: null }, setting, 0)));
+
+interface Pooled extends CoastRows {
+  /** Index of the run of each row. */
+  readonly run: Int32Array;
+}
+
+function pooled(runs: readonly CoastRows[]): Pooled {
+  const all = (name: keyof CoastRows): Float64Array =>
+    Float64Array.from(runs.flatMap((rows) => [...rows[name]]));
+  return {
+    lost: all('lost'),
+    rolling: all('rolling'),
+    rollingGrowth: all('rollingGrowth'),
+    air: all('air'),
+    airByWind: all('airByWind'),
+    slope: all('slope'),
+    way: all('way'),
+    speed: all('speed'),
+    run: Int32Array.from(runs.flatMap(({ way }, i) => Array.from(way, () => i))),
+  };
+}
+
+const columnsOf = (rows: Pooled, wind: boolean, grade: boolean): readonly Float64Array[] => [
+  rows.rolling,
+  rows.air,
+  ...(wind ? [rows.airByWind] : []),
+  ...(grade ? [rows.slope] : []),
+];
+
+function estimateAt(
+  i: number,
+  value: number,
+  { covariance, degrees }: ClusteredErrors,
+  divisor = 1,
+): Estimate {
+  return estimateOf(value, Math.sqrt(covariance[i]![i]!) / Math.abs(divisor), degrees);
+}
+
+/** The same fit with a rolling coefficient that grows with speed: where its growth is nothing, the model is enough. */
+function growthOf(columns: readonly Float64Array[], rows: Pooled, taken: number): Estimate | null {
+  const more = [...columns, rows.rollingGrowth];
+  const fit = leastSquares(more, rows.lost);
+  if (fit.status === 'dependent') return null;
+  const last = columns.length;
+  return estimateAt(last, fit.coefficients[last]!, clusteredErrors(more, fit, rows.run, taken));
+}
+
+function residualsOf(
+  runs: readonly CoastRun[],
+  rows: Pooled,
+  fit: LeastSquares,
+  still: Pooled,
+  { crr, cda }: { readonly crr: number; readonly cda: number },
+): Pick<CoastDownFit, 'runs' | 'residuals' | 'rmsForce'> {
+  const residual = fit.residuals.map((energy, i) => energy / rows.way[i]!);
+  // What the coefficients give in still air on the level.
+  const calm = still.speed.map((_, i) => (crr * still.rolling[i]! + cda * still.air[i]!) / still.way[i]!);
+  return {
+    residuals: {
+      run: rows.run,
+      speed: rows.speed,
+      force: calm.map((force, i) => force + residual[i]!),
+      residual,
+    },
+    rmsForce: rootMeanSquare([...residual]),
+    runs: runs.map((run, r): FittedRun => {
+      const own = [...residual].filter((_, i) => rows.run[i] === r);
+      const { time, speed } = run;
+      return {
+        name: run.name,
+        direction: run.direction,
+        from: speed.reduce((a, b) => Math.max(a, b)),
+        to: speed.reduce((a, b) => Math.min(a, b)),
+        duration: time[time.length - 1]! - time[0]!,
+        samples: time.length,
+        rmsForce: rootMeanSquare(own),
+        meanForce: own.reduce((sum, force) => sum + force, 0) / own.length,
+      };
+    }),
+  };
+}
+
+const rootMeanSquare = (values: readonly number[]): number =>
+  Math.sqrt(values.reduce((sum, x) => sum + x * x, 0) / values.length);
