@@ -1,5 +1,6 @@
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, LoopPlan, RiderPlan } from '../loop/plan.ts';
+import type { SupervisorSetup } from '../control/supervisor-setup.ts';
+import type { HoldPlan, LoopPlan, RiderPlan, SensorFault } from '../loop/plan.ts';
 import type { Road } from '../road/road.ts';
 import type { Requirement } from '../study/findings.ts';
 import { fromKmh } from '../units/convert.ts';
@@ -29,6 +30,8 @@ export interface Setting {
   readonly vehicle: Vehicle;
   readonly hold: HoldPlan;
   readonly rider: RiderPlan;
+  readonly supervisor?: SupervisorSetup;
+  readonly faults?: readonly SensorFault[];
   readonly scheme: 'exact' | 'fast';
   readonly bands: readonly number[];
   /** Width of the record's bins [m]. */

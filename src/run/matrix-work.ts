@@ -8,17 +8,19 @@ import {
 } from '../case/matrix-of.ts';
 import type { CaseDocument } from '../case/read-case-file.ts';
 import type { VehicleDocument } from '../case/read-vehicle-file.ts';
-import { holdOf, requirementsOf, riderOf } from '../case/run-of.ts';
+import { requirementsOf } from '../case/run-of.ts';
 import { rideProblems, vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
+import type { SupervisorSetup } from '../control/supervisor-setup.ts';
+import type { HoldPlan, RiderPlan, SensorFault } from '../loop/plan.ts';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import type { Road } from '../road/road.ts';
 import type { FigureSpread } from '../study/figure-spread.ts';
 import type { Requirement } from '../study/findings.ts';
 import { toKm } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { rideOf } from './ride-of.ts';
 
 /**
  * Everything that the combinations of a matrix are run from. Plain data, so that it can be posted to a worker; what
@@ -61,6 +63,8 @@ export interface CellRide {
   readonly vehicle: number;
   readonly hold: HoldPlan;
   readonly rider: RiderPlan;
+  readonly supervisor?: SupervisorSetup;
+  readonly faults?: readonly SensorFault[];
 }
 
 /** What combinations and the run of the case itself have in common. */
@@ -106,13 +110,17 @@ export function matrixRides(base: MatrixBase): MatrixRides | null {
     const problems = rideProblems(here.document, here.vehicle);
     if (problems.length > 0) return unable(problems);
     try {
-      const ride = {
+      const places = {
         road: roads.at(roadKey(combination, road), () => roadHere(base, here, matrix, combination)),
         vehicle: vehicles.at(vehicleKey(here, combination), () => vehicleOfCase(here.document, here.vehicle)),
-        hold: holdOf(here.document),
-        rider: riderOf(here.document),
       };
-      return { ...cell, ride, reason: null };
+      // Bends are taken as this load, direction and set speed meet them.
+      const { bends: _, ...ridden } = rideOf(
+        here.document,
+        vehicles.all[places.vehicle]!,
+        roads.all[places.road]!,
+      );
+      return { ...cell, ride: { ...places, ...ridden }, reason: null };
     } catch (error) {
       if (!(error instanceof InputError) || error.problems.some(({ place }) => isOfMatrix(place.key)))
         throw error;

@@ -1,14 +1,18 @@
 import type { CaseDocument } from '../case/read-case-file.ts';
 import { roadOptionsOf } from '../case/road-of.ts';
-import { placeOf } from '../case/yaml-source.ts';
-import type { HoldPlan } from '../loop/plan.ts';
+import { type Path, placeOf } from '../case/yaml-source.ts';
+import type { RiderAct, RiderPlan, RoutePlace } from '../loop/plan.ts';
 import { InputError, type Problem } from '../problems/input-error.ts';
 import type { Place } from '../problems/place.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Requirement } from '../study/findings.ts';
 import { fromKm, toKm } from '../units/convert.ts';
+import type { Ride } from './ride-of.ts';
 import type { CandidateResult } from './run-result.ts';
+
+/** What a ride does at places and times that its case writes. */
+type PlacedRide = Pick<Ride, 'hold' | 'rider' | 'faults'>;
 
 /** A stretch may run over the end by this much without a word: places are written in km, to a metre [m]. */
 const OVERRUN = 1;
@@ -29,23 +33,23 @@ const km = (distance: number): string => `${Number(toKm(distance).toFixed(3))} k
 export function placesOnRoad(
   { source, file }: CaseDocument,
   requirements: readonly Requirement[],
-  hold: HoldPlan,
+  { hold, rider, faults = [] }: PlacedRide,
   road: Road,
 ): readonly Warning[] {
   const length = lengthOf(road);
   const beyond = (place: Place, message: string, found: number): Problem =>
     beyondTheRoad(place, message, found, `${km(length)}, the length of the road`);
-  const problems = hold.changes.flatMap(({ at }, i): Problem[] =>
-    'distance' in at && at.distance >= length - AT_END
-      ? [
-          beyond(
-            placeOf(source, ['hold', 'changes', i, 'at_km']),
-            'the set speed would change beyond the end of the road',
-            at.distance,
-          ),
-        ]
-      : [],
-  );
+  const outside = (list: Path, items: readonly { readonly at: RoutePlace }[], message: string): Problem[] =>
+    items.flatMap(({ at }, i) =>
+      'distance' in at && at.distance >= length - AT_END
+        ? [beyond(placeOf(source, [...list, i, 'at_km']), message, at.distance)]
+        : [],
+    );
+  const problems = [
+    ...outside(['hold', 'changes'], hold.changes, 'the set speed would change beyond the end of the road'),
+    ...outside(['rider', 'does'], writtenActs(rider), 'the rider would do this beyond the end of the road'),
+    ...outside(['faults'], faults, 'the fault would begin beyond the end of the road'),
+  ];
   file.hold.shifts.forEach(({ at_km }, i) => {
     const at = fromKm(at_km);
     if (at >= length - AT_END)
@@ -112,23 +116,38 @@ export function stretchesOnTrack(document: CaseDocument, length: number): void {
   if (first !== undefined) throw new InputError(first, ...others);
 }
 
-/** A warning for each change of the set speed at a time that a run had not reached when it ended. */
-export function changesNotReached(
+/** A warning for each change, act and fault at a time that a run had not reached when it ended. */
+export function timesNotReached(
   { source }: CaseDocument,
-  hold: HoldPlan,
+  { hold, rider, faults = [] }: PlacedRide,
   candidates: readonly Pick<CandidateResult, 'name' | 'result'>[],
 ): readonly Warning[] {
-  return hold.changes.flatMap(({ at }, i): Warning[] => {
-    if (!('time' in at)) return [];
-    const ended = candidates.filter(({ result }) => result.endTime <= at.time);
-    if (ended.length === 0) return [];
-    const names = ended.map(({ name, result }) => `${name} after ${result.endTime.toFixed(1)} s`);
-    return [
-      {
-        code: 'change-not-reached',
-        message: `The set speed did not change at ${at.time} s: the run had ended before it (${names.join(', ')}).`,
-        place: placeOf(source, ['hold', 'changes', i, 'at_s']),
-      },
-    ];
-  });
+  const notReached = (
+    list: Path,
+    items: readonly { readonly at: RoutePlace }[],
+    code: string,
+    words: string,
+  ): Warning[] =>
+    items.flatMap(({ at }, i): Warning[] => {
+      if (!('time' in at)) return [];
+      const ended = candidates.filter(({ result }) => result.endTime <= at.time);
+      if (ended.length === 0) return [];
+      const names = ended.map(({ name, result }) => `${name} after ${result.endTime.toFixed(1)} s`);
+      return [
+        {
+          code,
+          message: `${words} at ${at.time} s: the run had ended before it (${names.join(', ')}).`,
+          place: placeOf(source, [...list, i, 'at_s']),
+        },
+      ];
+    });
+  return [
+    ...notReached(['hold', 'changes'], hold.changes, 'change-not-reached', 'The set speed did not change'),
+    ...notReached(['rider', 'does'], writtenActs(rider), 'act-not-reached', 'The rider did nothing'),
+    ...notReached(['faults'], faults, 'fault-not-reached', 'The sensor had no fault'),
+  ];
 }
+
+/** In the order of the file: acts for bends stand among them, and never out of their order. */
+const writtenActs = ({ acts = [] }: RiderPlan): readonly RiderAct[] =>
+  acts.filter(({ reason }) => reason === 'written');

@@ -2,7 +2,7 @@ import { atSeaLevel, candidatesOf } from '../case/candidates-of.ts';
 import { givenValues } from '../case/given-values.ts';
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
-import { holdOf, outputOf, requirementsOf, riderOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
+import { outputOf, requirementsOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
 import { rideDefaults, vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import { linearController } from '../control/linear-controller.ts';
@@ -18,6 +18,7 @@ import { demandOf } from '../study/demand.ts';
 import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
 import type { Replayed } from '../study/findings.ts';
+import { holdTransients } from '../study/hold-transients.ts';
 import { judge } from '../study/judge.ts';
 import { findLimitCycles } from '../study/limit-cycles.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
@@ -27,11 +28,13 @@ import { toKmh } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
+import { holdWarnings } from './hold-warnings.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
 import { type MatrixWork, matrixRides } from './matrix-work.ts';
 import { overrideWarnings } from './override-warnings.ts';
-import { changesNotReached, placesOnRoad } from './places-on-road.ts';
+import { placesOnRoad, timesNotReached } from './places-on-road.ts';
+import { rideOf } from './ride-of.ts';
 import { roadMaker } from './road-of.ts';
 import { runCell } from './run-cell.ts';
 import type { CandidateResult, RunResult } from './run-result.ts';
@@ -103,18 +106,18 @@ export function runWithoutMatrix({
   const vehicle = vehicleOfCase(document, vehicleDocument);
   const makeRoad = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']));
   const road = makeRoad(document);
-  const hold = holdOf(document);
-  const rider = riderOf(document);
+  const { bends: bendPlan, ...ride } = rideOf(document, vehicle, road);
+  const { hold, rider } = ride;
   const requirements = requirementsOf(document);
   const band = bandOf(requirements);
   const bands = bandsOf(requirements);
   if (bands.length > MOST_BANDS) throw tooManyBands(document, bands);
-  const placeWarnings = placesOnRoad(document, requirements, hold, road);
+  const placeWarnings = placesOnRoad(document, requirements, ride, road);
   const output = outputOf(document);
   const segmenting = segmentsOf(document);
   const scheme = schemeOf(document);
   const candidates = candidatesOf(document, vehicle);
-  const plans = loopPlans({ road, vehicle, hold, rider, scheme, bands, bin: output.bin }, candidates);
+  const plans = loopPlans({ road, vehicle, ...ride, scheme, bands, bin: output.bin }, candidates);
   const rides = matrixRides({ document, vehicle: vehicleDocument, road, makeRoad });
   checkSize(document, plans, output, segmenting, rides?.cells.length);
   const whole = shareBeforeMatrix(rides?.cells.length ?? 0);
@@ -155,12 +158,16 @@ export function runWithoutMatrix({
     vehicle,
     hold,
     rider,
+    supervisor: ride.supervisor ?? null,
+    faults: ride.faults ?? [],
+    bends: bendPlan,
     scheme,
     band,
     candidates: results,
     demand,
     hills,
     cycles,
+    transients: holdTransients(replayed),
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),
     requirements: findings,
@@ -170,8 +177,9 @@ export function runWithoutMatrix({
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,
+      ...holdWarnings(document, bendPlan, replayed),
       ...overrideWarnings(document, overrides),
-      ...changesNotReached(document, hold, results),
+      ...timesNotReached(document, ride, results),
     ],
     status: statusOf(results, findings),
     matrix: null,

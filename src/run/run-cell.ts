@@ -46,11 +46,11 @@ export function plansOfCell(work: MatrixWork, index: number): readonly LoopPlan[
 }
 
 function settingOf({ roads, vehicles, scheme, bands, bin }: MatrixWork, ride: CellRide): Setting {
-  const { hold, rider } = ride;
-  const road = roads[ride.road];
-  const vehicle = vehicles[ride.vehicle];
+  const { road: roadIndex, vehicle: vehicleIndex, ...ridden } = ride;
+  const road = roads[roadIndex];
+  const vehicle = vehicles[vehicleIndex];
   if (road === undefined || vehicle === undefined) throw new RangeError('a ride without road or vehicle');
-  return { road, vehicle, hold, rider, scheme, bands, bin };
+  return { road, vehicle, ...ridden, scheme, bands, bin };
 }
 
 function ridden(work: MatrixWork, { requirements }: CellPlan, ride: CellRide): CellOutcome {

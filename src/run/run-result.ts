@@ -2,10 +2,12 @@ import type { GivenValue } from '../case/given-values.ts';
 import type { DefaultUsed } from '../case/list-defaults.ts';
 import type { LoopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, RiderPlan } from '../loop/plan.ts';
+import type { SupervisorSetup } from '../control/supervisor-setup.ts';
+import type { HoldPlan, RiderPlan, SensorFault } from '../loop/plan.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
+import type { BendPlan } from '../study/bend-plan.ts';
 import type {
   Demand,
   FigureValues,
@@ -14,6 +16,7 @@ import type {
   RequirementFinding,
   Segment,
 } from '../study/findings.ts';
+import type { HoldTransients } from '../study/hold-transient.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { MatrixResult } from './matrix-result.ts';
 
@@ -32,7 +35,13 @@ export interface RunResult {
   readonly road: Road;
   readonly vehicle: Vehicle;
   readonly hold: HoldPlan;
+  /** What is written and what bends ask for, in order along the way. */
   readonly rider: RiderPlan;
+  /** Rules of the speed-hold unit; null: nothing in the case asks anything of it. */
+  readonly supervisor: SupervisorSetup | null;
+  readonly faults: readonly SensorFault[];
+  /** Bends, what the rider does for them, and where speed hold does not belong; null: the case does not ask for bends. */
+  readonly bends: BendPlan | null;
   readonly scheme: 'exact' | 'fast';
   /** Half-width of the band that the figures and charts use [m/s]. */
   readonly band: number;
@@ -41,6 +50,8 @@ export interface RunResult {
   readonly hills: readonly Hill[];
   /** Oscillations that loops sustain by themselves, by candidate and place. */
   readonly cycles: readonly LimitCycle[];
+  /** What followed each event of the hold: engaging, resuming, taps, overrides, ends. */
+  readonly transients: HoldTransients;
   readonly segmentsBy: 'length' | 'terrain';
   readonly segments: readonly Segment[];
   readonly requirements: readonly RequirementFinding[];

@@ -6,6 +6,7 @@ import { meanAlong } from './along-road.ts';
 import type { Oscillation } from './cycle-shape.ts';
 import type { Stretch } from './findings.ts';
 import { trueSpeedFactor } from './hold-course.ts';
+import { heldThroughout } from './hold-off.ts';
 
 /** Turns that a replay is given, and those at its end over which the amplitude is taken, twice: to see whether it dies away. */
 const TURNS = 24;
@@ -31,6 +32,7 @@ export interface SteadyReplay {
  */
 export function steadyReplay(plan: LoopPlan, bins: BinRecord, oscillation: Oscillation): SteadyReplay {
   const { period, amplitude, from, to } = oscillation;
+  const held = heldThroughout(plan);
   const { hold, vehicle } = plan;
   let middle = 0;
   while (middle < bins.size - 1 && bins.edge[middle + 1] <= (from + to) / 2) middle++;
@@ -43,7 +45,7 @@ export function steadyReplay(plan: LoopPlan, bins: BinRecord, oscillation: Oscil
   return {
     period,
     plan: {
-      ...plan,
+      ...held,
       road: steadyRoad(plan.road, oscillation, length),
       vehicle: {
         ...vehicle,
@@ -51,12 +53,12 @@ export function steadyReplay(plan: LoopPlan, bins: BinRecord, oscillation: Oscil
         sensor: { ...vehicle.sensor, noise: null },
       },
       hold: {
-        ...hold,
+        ...held.hold,
         setSpeed,
         startSpeed: Math.max(setSpeed - amplitude, DEEPEST_START * setSpeed),
         changes: [],
       },
-      rider: { ...plan.rider, shifts: [] },
+      rider: { ...held.rider, shifts: [] },
       bin: (speed * period) / BINS,
       timeLimit: TURNS * period,
     },

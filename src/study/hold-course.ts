@@ -1,11 +1,12 @@
 import type { ControllerSetup } from '../control/setup.ts';
 import type { HoldPlan, LoopPlan, RiderPlan } from '../loop/plan.ts';
-import type { BinRecord, LoopResult } from '../loop/result.ts';
+import type { BinRecord, HoldEvent, LoopResult } from '../loop/result.ts';
 import { intervalOf } from '../numeric/interpolate.ts';
 import { distanceAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Stretch } from './findings.ts';
+import { holdOff } from './hold-off.ts';
 
 /** Rate at which a change of set speed is granted to be followed when neither it nor the controller says one [m/s2]. */
 const GRANTED_RATE = 0.5;
@@ -23,7 +24,8 @@ export interface HoldCourse {
   /**
    * From each change, and from a start at another speed: |change| / ramp and 10 s for settling, at the higher of the
    * two speeds. The ramp is the change's own, or the controller's, or 0.5 m/s2. And from each shift of the rider's,
-   * which cancels hold, to 10 s after hold resumes. In order along the way.
+   * which cancels hold, to 10 s after hold resumes. Of a run also where hold was off, or overridden by the grip, to 10 s
+   * after it is back at the set speed by its ramp, and 10 s and the ramp behind taps. In order along the way.
    */
   readonly settling: readonly Stretch[];
   /** Of those the changes of set speed alone, a start at another speed first. */
@@ -51,7 +53,7 @@ export function nominalCourse(
   const gearbox = vehicle.drive?.gearbox;
   if (gearbox?.kind !== 'clutch') return course;
   const seconds = gearbox.open + gearbox.resume + GRANTED_SETTLING;
-  return withShifts(
+  return withStretches(
     course,
     shifts.map(({ distance }) => ({ from: distance, to: distance + seconds * speedAt(course, distance) })),
   );
@@ -61,19 +63,20 @@ export function nominalCourse(
 const speedAt = ({ setSpeed, changes }: HoldCourse, place: number): number =>
   changes.findLast(({ at }) => at <= place)?.setSpeed ?? setSpeed;
 
-const withShifts = (course: HoldCourse, shifts: readonly Stretch[]): HoldCourse => ({
+const withStretches = (course: HoldCourse, more: readonly Stretch[]): HoldCourse => ({
   ...course,
-  settling: [...course.settling, ...shifts].sort((a, b) => a.from - b.from),
+  settling: [...course.settling, ...more].sort((a, b) => a.from - b.from),
 });
 
 /** What the course of a run is told by. */
 interface PlannedRun {
-  readonly plan: Pick<LoopPlan, 'hold' | 'vehicle' | 'controller'>;
+  readonly plan: Pick<LoopPlan, 'hold' | 'vehicle' | 'controller' | 'supervisor'>;
   readonly result: LoopResult;
 }
 
-/** The course of one candidate: a change at a time stands where its run made it, its controller's ramp is granted, and hold resumes after a shift when it did. */
-export function courseOfRun({ plan, result }: PlannedRun): HoldCourse {
+/** The course of one candidate: a change at a time stands where its run made it, its controller's ramp is granted, and hold resumes when it did. */
+export function courseOfRun(run: PlannedRun): HoldCourse {
+  const { plan, result } = run;
   const ramp = rampOf(plan.controller);
   const course = courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
   const shifts = result.shifts.flatMap(({ distance, resumedAt }) => {
@@ -82,7 +85,34 @@ export function courseOfRun({ plan, result }: PlannedRun): HoldCourse {
     const resumed = Number.isFinite(at) ? at : result.endDistance;
     return [{ from: distance, to: resumed + GRANTED_SETTLING * speedAt(course, distance) }];
   });
-  return shifts.length === 0 ? course : withShifts(course, shifts);
+  const apart = [...shifts, ...withoutHold(run)];
+  return apart.length === 0 ? course : withStretches(course, apart);
+}
+
+/** Where hold was off or overridden, and what it takes to be back; taps, and what they take. */
+function withoutHold({ plan, result }: PlannedRun): Stretch[] {
+  const toTrue = trueSpeedFactor(plan.hold, plan.vehicle);
+  const own = rampOf(plan.controller) ?? GRANTED_RATE;
+  const followed = ({ distance, setSpeed, measured }: HoldEvent, ramp: number): Stretch => {
+    const seconds = Math.abs(setSpeed - measured) / ramp + GRANTED_SETTLING;
+    return { from: distance, to: distance + seconds * Math.max(setSpeed, measured) * toTrue };
+  };
+  const { holdEvents = [] } = result;
+  const stretches: Stretch[] = holdOff(plan, result).map(({ from, to }) => ({ from, to }));
+  let grip: number | null = null;
+  for (const event of holdEvents) {
+    if (event.kind === 'tapped') stretches.push(followed(event, plan.supervisor?.tapRamp ?? own));
+    else if (event.kind === 'engaged' || event.kind === 'resumed')
+      stretches.push(followed(event, plan.supervisor?.resumeRamp ?? own));
+    else if (event.kind === 'override_began') grip = event.distance;
+    else if (grip !== null && (event.kind === 'reentered' || event.kind === 'ended')) {
+      const behind = event.kind === 'ended' ? event.distance : followed(event, own).to;
+      stretches.push({ from: grip, to: behind });
+      grip = null;
+    }
+  }
+  if (grip !== null) stretches.push({ from: grip, to: result.endDistance });
+  return stretches;
 }
 
 const rampOf = (controller: ControllerSetup): number | null =>

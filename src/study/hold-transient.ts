@@ -1,21 +1,39 @@
-import type { FullSeries, HoldEvent } from '../loop/result.ts';
+import type { FullSeries, HoldEvent, HoldEventKind } from '../loop/result.ts';
 import type { Figure } from './findings.ts';
 
-/** What follows an event of the hold, from a few seconds before it to where the speed has settled or the next one comes. */
-export interface HoldTransient {
+/** What follows an event of the hold, from the event to where the speed has settled or the next one comes. */
+export interface HoldMeasure {
   readonly candidate: string;
   readonly event: HoldEvent;
-  /** Jump of the command at the event, without its sign: 0 is bumpless. */
+  /** Jump of the command at the event, as the actuator takes it, without its sign: 0 is bumpless. */
   readonly commandStep: number;
-  /** Furthest below and above the set speed on the way, in true speed [m/s], signed; of a resume: from where the reference has arrived. */
+  /**
+   * Furthest below and above the set speed on the way, in true speed [m/s], signed: 0 where it never was on that side. Of
+   * a resume, and of taps, from where the reference has arrived; behind an override from where hold is back.
+   */
   readonly lowest: Figure;
   readonly highest: Figure;
   /** From the event to the start of 3 s within 1 km/h of the set speed [s]. */
   readonly settling: Figure;
   /** Greatest |da/dt| on the way, over 0.2 s [m/s3]. */
   readonly jerk: Figure;
+}
+
+/** The same with what people look at. */
+export interface HoldTransient extends HoldMeasure {
   /** One sentence. */
   readonly words: string;
-  /** Every sample, thinned to at most 400 rows, extremes kept. */
+  /** Every sample from a few seconds before the event, thinned to at most 400 rows, extremes kept. */
   readonly picture: FullSeries;
+}
+
+/** The transients of all candidates, by candidate, in order along the way. */
+export interface HoldTransients {
+  readonly shown: readonly HoldTransient[];
+  /** Those of a kind beyond the worst few, which have figures and no picture. */
+  readonly leftOut: readonly {
+    readonly candidate: string;
+    readonly kind: HoldEventKind;
+    readonly count: number;
+  }[];
 }

@@ -4,6 +4,7 @@ import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
 import { inGear } from './gear-course.ts';
 import { type HoldCourse, nominalCourse } from './hold-course.ts';
+import { heldThroughout } from './hold-off.ts';
 
 /**
  * Part of a road as a road of its own: distances and stations start at 0 again, ends are interpolated.
@@ -62,8 +63,8 @@ export function cutRoad(road: Road, from: number, to: number): Road {
 }
 
 /**
- * The plan over part of its road, started settled at the set speed and in the gear that the plan has at its beginning;
- * changes of set speed and shifts inside come along.
+ * The plan over part of its road, started settled at the set speed and in the gear that the plan has at its beginning,
+ * with hold on throughout; changes of set speed and shifts inside come along.
  *
  * @param course where the changes of the plan stand; the road's own places where it is left out
  */
@@ -73,12 +74,13 @@ export function windowPlan(
   to: number,
   course: HoldCourse = nominalCourse(plan.road, plan.hold, plan.vehicle),
 ): LoopPlan {
-  const { road, vehicle, rider } = plan;
+  const held = heldThroughout(plan);
+  const { road, vehicle, rider } = held;
   return {
-    ...plan,
+    ...held,
     road: cutRoad(road, from, to),
     vehicle: inGear(vehicle, gearInForce(plan, from)),
-    hold: windowHold(plan, from, to, course),
+    hold: windowHold(held, from, to, course),
     rider: { ...rider, shifts: windowShifts(rider.shifts, from, to) },
   };
 }

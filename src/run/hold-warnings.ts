@@ -1,0 +1,107 @@
+import type { CaseDocument } from '../case/read-case-file.ts';
+import { placeOf } from '../case/yaml-source.ts';
+import type { HoldEvent } from '../loop/result.ts';
+import type { Warning } from '../problems/warning.ts';
+import type { BendPlan, UnfitPlace } from '../study/bend-plan.ts';
+import type { Replayed } from '../study/findings.ts';
+import { holdOff, isByRule } from '../study/hold-off.ts';
+import { causeWords } from '../study/transient-words.ts';
+import { atKm, inKmh, inSeconds } from '../study/wording.ts';
+
+/** So many ends of one kind are told one by one; the rest is counted. */
+const TOLD = 3;
+
+/** Bends where hold does not belong, acts that are written within bends; holds that rules ended or refused, and that nobody resumed. */
+export function holdWarnings(
+  { source }: CaseDocument,
+  bends: BendPlan | null,
+  replayed: readonly Replayed[],
+): readonly Warning[] {
+  const inBends = (bends?.written ?? []).map((i): Warning => {
+    const place = placeOf(source, ['rider', 'does', i]);
+    return {
+      code: 'act-in-bend',
+      message: `What rider.does has at number ${i + 1} is done as written, where the rider rides a bend by hand.`,
+      place,
+    };
+  });
+  return [
+    ...(bends?.unfit ?? []).map(unfitWarning),
+    ...(bends === null ? [] : tooNearToStart(bends)),
+    ...inBends,
+    ...replayed.flatMap(rulesOf),
+    ...replayed.flatMap(notResumed),
+  ];
+}
+
+function unfitWarning({ from, to, reason, bends, lowestSpeed }: UnfitPlace): Warning {
+  const many = bends === 1 ? 'a bend' : `${bends} bends`;
+  const why =
+    reason === 'below_lowest'
+      ? `${many} down to ${inKmh(lowestSpeed)}, slower than the unit holds`
+      : `${many} down to ${inKmh(lowestSpeed)}, so near to each other that hold would not be worth resuming`;
+  return {
+    code: 'hold-does-not-belong',
+    message: `Speed hold does not belong between ${atKm(from)} and ${atKm(to)}: ${why}.`,
+    from,
+    to,
+  };
+}
+
+/** Braking for a bend cannot begin before the road. */
+function tooNearToStart({ stops, bends }: BendPlan): Warning[] {
+  const [first] = stops;
+  if (first === undefined || first.from > 0) return [];
+  const bend = bends[first.first];
+  if (bend === undefined) return [];
+  return [
+    {
+      code: 'bend-at-start',
+      message: `The bend at ${atKm(bend.from)} is nearer to the start than the way to brake for it: the rider comes to it faster than it allows.`,
+      from: 0,
+      to: bend.to,
+    },
+  ];
+}
+
+/** Holds that a rule of the unit ended, or refused to begin. */
+function rulesOf({ name, result }: Replayed): Warning[] {
+  const events = result.holdEvents ?? [];
+  const ended = events.filter((event) => event.kind === 'ended' && isByRule(event));
+  const refused = events.filter(({ kind }) => kind === 'refused');
+  return [
+    ...told(
+      ended,
+      'hold-ended',
+      ({ distance, measured, setSpeed, ...event }) =>
+        `Hold of ${name} ends by itself at ${atKm(distance)}, at ${inKmh(measured)} with ${inKmh(setSpeed)} set: ${causeWords(event)}.`,
+    ),
+    ...told(
+      refused,
+      'hold-refused',
+      ({ distance, measured }) =>
+        `${name} refuses to take over at ${atKm(distance)}: a rule of the unit does not allow it at ${inKmh(measured)}.`,
+    ),
+  ];
+}
+
+function told(events: readonly HoldEvent[], code: string, words: (event: HoldEvent) => string): Warning[] {
+  return events.slice(0, TOLD).map((event, i) => {
+    const more = i === TOLD - 1 && events.length > TOLD ? ` So ${events.length - TOLD} times more.` : '';
+    return { code, message: `${words(event)}${more}`, from: event.distance, to: event.distance };
+  });
+}
+
+function notResumed({ name, plan, result }: Replayed): Warning[] {
+  const last = holdOff(plan, result).at(-1);
+  if (last === undefined || last.back) return [];
+  const since = last.ended === null ? 'from the start' : `from ${atKm(last.from)}`;
+  return [
+    {
+      code: 'hold-not-resumed',
+      message: `Hold of ${name} is off ${since} to the end of the run, ${inSeconds(last.until - last.since)}: nobody resumes it.`,
+      from: last.from,
+      to: last.to,
+    },
+  ];
+}
