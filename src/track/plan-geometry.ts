@@ -33,17 +33,19 @@ export function boundingBox(latitudeDeg: Float64Array, longitudeDeg: Float64Arra
 }
 
 /**
- * Lays a line on a flat map: an equirectangular projection, true to scale on the ellipsoid along the middle
+ * A flat map about the middle of a line: an equirectangular projection, true to scale on the ellipsoid along the middle
  * latitude. Over a route of 100 km the scale at its northern and southern ends is about 1 % off: for pictures and
  * tolerances, never for distances or headings (see legBetween).
  *
- * @param latitudeDeg at least one point [degree]
+ * @param latitudeDeg of the line, at least one point [degree]
  * @param longitudeDeg of the same points [degree], also over the antimeridian
- * @returns metres from the middle of the bounding box
+ * @returns lays any line on that map, in metres from the middle of the first one's bounding box
  */
-export function planLine(latitudeDeg: Float64Array, longitudeDeg: Float64Array): PlanLine {
-  const longitudes = unwindLongitudes(longitudeDeg);
-  const [west, east] = rangeOf(longitudes);
+export function flatMapOf(
+  latitudeDeg: Float64Array,
+  longitudeDeg: Float64Array,
+): (latitudeDeg: Float64Array, longitudeDeg: Float64Array) => PlanLine {
+  const [west, east] = rangeOf(unwindLongitudes(longitudeDeg));
   const [south, north] = rangeOf(latitudeDeg);
   const [lat, lon] = [(south + north) / 2, (west + east) / 2];
   // Metres for a degree, from a leg about the middle; beyond 85 degrees there are no roads, but still finite numbers.
@@ -51,11 +53,20 @@ export function planLine(latitudeDeg: Float64Array, longitudeDeg: Float64Array):
   const toNorth = legBetween(Math.max(lat - side, -90), 0, Math.min(lat + side, 90), 0).north / (2 * side);
   const toEast =
     Math.abs(lat) < 85 ? legBetween(lat, 0, lat, 2 * side).east / (2 * side) : toNorth * cos(fromDeg(lat));
-  return {
-    x: longitudes.map((longitude) => (longitude - lon) * toEast),
-    y: latitudeDeg.map((latitude) => (latitude - lat) * toNorth),
+  return (latitudes, longitudes) => {
+    const unwound = unwindLongitudes(longitudes);
+    // The turn that begins nearest to the middle of the map.
+    const turn = unwound.length === 0 ? 0 : 360 * Math.round((unwound[0]! - lon) / 360);
+    return {
+      x: unwound.map((longitude) => (longitude - turn - lon) * toEast),
+      y: latitudes.map((latitude) => (latitude - lat) * toNorth),
+    };
   };
 }
+
+/** Lays a line of at least one point [degree] on its own flat map: see flatMapOf. */
+export const planLine = (latitudeDeg: Float64Array, longitudeDeg: Float64Array): PlanLine =>
+  flatMapOf(latitudeDeg, longitudeDeg)(latitudeDeg, longitudeDeg);
 
 /** Points that are thinned at a time: the method goes down by recursion, in the worst case as deep as the line is long. */
 const BLOCK = 1024;
