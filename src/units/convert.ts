@@ -34,6 +34,14 @@ export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPer
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */
 export const fromNPerKmh2 = (curve: number): number => toKmh(toKmh(curve));
+/** [N/(m/s)] -> [N per km/h] */
+export const toNPerKmh = (slope: number): number => fromKmh(slope);
+/** [N/(m/s)2] -> [N per (km/h)2] */
+export const toNPerKmh2 = (curve: number): number => fromKmh(fromKmh(curve));
+/** [K] -> [degree Celsius] */
+export const toCelsius = (temperature: number): number => temperature - 273.15;
+/** [Pa] -> [hPa] */
+export const toHpa = (pressure: number): number => pressure / 100;
 /** [Hz] -> [rad/s] */
 export const fromHz = (frequency: number): number => 2 * Math.PI * frequency;
 /** [1 per km/h] -> [1/(m/s)] */
