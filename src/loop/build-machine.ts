@@ -4,7 +4,7 @@ import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { dragTangent } from './crosswind.ts';
 import { fittingsOf } from './fittings.ts';
-import { decay, lagFactors } from './lags.ts';
+import { decay } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
@@ -32,8 +32,6 @@ export function buildMachine(plan: LoopPlan): Machine {
   const sample = controller.sample ?? plan.lockedSample;
 
   p[at.P_SAMPLE] = sample;
-  p[at.P_STEPS] = Math.ceil(sample / longestStep(plan) - 1e-9);
-  p[at.P_STEP] = sample / p[at.P_STEPS];
   p[at.P_TIMED] = plan.road.along === 'time' ? 1 : 0;
   p[at.P_MASS] = vehicle.mass;
   p[at.P_BASE_MASS] = vehicle.mass + vehicle.rotatingMass;
@@ -76,25 +74,28 @@ export function buildMachine(plan: LoopPlan): Machine {
     fittings,
     controller,
     tangent: dragTangent(vehicle.roadLoad),
-    lags: decays(p),
+    stepsInGear: stepsInGear(plan, sample),
+    lags: new Float64Array(at.G_SIZE),
     here: new Float64Array(at.H_SIZE),
     log: new Float64Array(at.LOG_ROWS * at.L_STRIDE),
     chunk: new Float64Array(at.C_SIZE),
   };
 }
 
-function longestStep({ scheme, vehicle }: LoopPlan): number {
-  const settles = SHARE_OF_LAG / quickest(vehicle);
-  if (scheme === 'fast') return Math.min(LONGEST_STEP, settles);
-  const lags = [vehicle.actuator.lag, vehicle.drive.lag].filter((lag) => lag > 0);
-  return Math.min(LONGEST_STEP, settles, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
+/** Steps a sample: with the clutch open, where nothing but the lags can be too quick for a long step, then in every gear. */
+function stepsInGear({ scheme, vehicle }: LoopPlan, sample: number): Float64Array {
+  const { drive, actuator } = vehicle;
+  const lags = scheme === 'fast' ? [] : [actuator.lag, drive.lag].filter((lag) => lag > 0);
+  const longest = Math.min(LONGEST_STEP, ...lags.map((lag) => Math.max(SHARE_OF_LAG * lag, SHORTEST_STEP)));
+  const stepsAt = (rate: number): number => Math.ceil(sample / Math.min(longest, SHARE_OF_LAG / rate) - 1e-9);
+  return Float64Array.of(0, ...quickest(vehicle)).map(stepsAt);
 }
 
 /**
- * The greatest rate at which the drive's law alone takes a deviation of speed away [1/s]: a rev limiter's band is steep.
- * Over the gears that can be in hand, at the corners of the cells.
+ * The greatest rate in every gear at which the drive's law alone takes a deviation of speed away [1/s]: a rev limiter's
+ * band is steep. At the corners of the cells.
  */
-function quickest({ mass, rotatingMass, drive }: Vehicle): number {
+function quickest({ mass, rotatingMass, drive }: Vehicle): number[] {
   const { speedEdges, throttleEdges, cells, throttleMin, throttleMax } = drive;
   const across = throttleEdges.length + 1;
   let steepest = 0;
@@ -110,9 +111,9 @@ function quickest({ mass, rotatingMass, drive }: Vehicle): number {
           steepest = Math.max(steepest, Math.abs(slope));
         }
     }
-  const inHand = drive.gearbox.kind === 'fixed' ? drive.gears.slice(drive.gear, drive.gear + 1) : drive.gears;
-  const geared = inHand.map(({ ratio, inertia }) => (ratio * ratio) / (mass + rotatingMass + inertia));
-  return steepest * geared.reduce((most, share) => Math.max(most, share), 0);
+  return drive.gears.map(
+    ({ ratio, inertia }) => steepest * ((ratio * ratio) / (mass + rotatingMass + inertia)),
+  );
 }
 
 /** Which of the sample's devices this vehicle has. */
@@ -151,19 +152,4 @@ function writeLags(p: Float64Array, vehicle: Vehicle, computingDelay: number): v
   // A command that is late by computing delay and dead time is the command of a measurement that is older by them.
   p[at.P_DELAY] = (delay + computingDelay + vehicle.actuator.deadTime) / p[at.P_SAMPLE];
   p[at.P_HISTORY] = p[at.P_DELAY] > 0 ? Math.ceil(p[at.P_DELAY]) + 1 : 0;
-}
-
-/** Decays over a whole step, and their means over it. */
-function decays(p: Float64Array): Float64Array {
-  const lags = new Float64Array(at.G_SIZE);
-  const step = p[at.P_STEP];
-  lagFactors(p, lags, 0, step);
-  const ta = p[at.P_ACTUATOR_LAG];
-  const td = p[at.P_DRIVE_LAG];
-  const actuator = (ta * (1 - lags[at.G_ACTUATOR])) / step;
-  const drive = (td * (1 - lags[at.G_DRIVE])) / step;
-  p[at.P_DRIVE_MEAN] = drive;
-  p[at.P_PULL_MEAN] =
-    p[at.P_LAG_WEIGHT] * (actuator - drive) + p[at.P_LAG_EQUAL] * td * (drive - lags[at.G_DRIVE]);
-  return lags;
 }

@@ -1,5 +1,6 @@
 import { BUS_GEAR } from '../control/bus.ts';
 import { cellIndex } from '../vehicle/drive-law.ts';
+import { loadSteps } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
@@ -24,13 +25,14 @@ export function bookTurning(s: Float64Array, before: number): void {
   s[at.WORK_MAGNITUDE] += Math.abs(lost);
 }
 
-/** Puts a gear in hand without an account: ratio, effective mass, cell over speed. */
+/** Puts a gear in hand without an account: ratio, effective mass, steps a sample, cell over speed. */
 export function loadGear(machine: Machine, gear: number): void {
-  const { s, gears, speedEdges } = machine;
+  const { s, p, lags, gears, stepsInGear, speedEdges } = machine;
   const ratio = gear < 0 ? 0 : gears[2 * gear];
   s[at.GEAR] = gear;
   s[BUS_GEAR] = gearInHand(s);
   loadRatio(machine, ratio, gear < 0 ? 0 : gears[2 * gear + 1]);
+  loadSteps(p, lags, stepsInGear[1 + gear]);
   s[at.SPEED_CELL] = ratio > 0 ? cellIndex(speedEdges, ratio * s[at.SPEED]) : 0;
 }
 

@@ -11,9 +11,14 @@ import {
   G_PULL_HALF,
   P_ACTUATOR_LAG,
   P_DRIVE_LAG,
+  P_DRIVE_MEAN,
   P_FILTER,
   P_LAG_EQUAL,
   P_LAG_WEIGHT,
+  P_PULL_MEAN,
+  P_SAMPLE,
+  P_STEP,
+  P_STEPS,
 } from './layout.ts';
 
 /** Filter's lag over step beyond which the speed over the step is taken as a line. */
@@ -83,4 +88,18 @@ function filterFactors(tf: number, lags: Float64Array, row: number, h: number): 
 /** e^(-time / lag), 0 without a lag. */
 export function decay(lag: number, time: number): number {
   return lag > 0 ? exp(-time / lag) : 0;
+}
+
+/** Puts a number of steps a sample in hand: the step, decays over a whole one, and their means over it. */
+export function loadSteps(p: Float64Array, lags: Float64Array, steps: number): void {
+  if (p[P_STEPS] === steps) return;
+  const step = p[P_SAMPLE] / steps;
+  p[P_STEPS] = steps;
+  p[P_STEP] = step;
+  lagFactors(p, lags, 0, step);
+  const td = p[P_DRIVE_LAG];
+  const actuator = (p[P_ACTUATOR_LAG] * (1 - lags[G_ACTUATOR])) / step;
+  const drive = (td * (1 - lags[G_DRIVE])) / step;
+  p[P_DRIVE_MEAN] = drive;
+  p[P_PULL_MEAN] = p[P_LAG_WEIGHT] * (actuator - drive) + p[P_LAG_EQUAL] * td * (drive - lags[G_DRIVE]);
 }

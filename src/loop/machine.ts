@@ -16,6 +16,8 @@ export interface Machine {
   readonly throttleEdges: Float64Array;
   /** Ratio [1/m] and equivalent mass before the gear [kg] of every gear. */
   readonly gears: Float64Array;
+  /** Steps a sample, with the clutch open and in every gear. */
+  readonly stepsInGear: Float64Array;
   readonly belt: Belt | null;
   /** Devices that work once a sample. */
   readonly fittings: Fittings;

@@ -5,7 +5,7 @@
 import { describe, expect, it } from 'vitest';
 import { replay } from '../../src/loop/replay.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
-import type { Drive } from '../../src/vehicle/drive.ts';
+import type { Drive, Gearbox } from '../../src/vehicle/drive.ts';
 import { expectClose } from '../compare.ts';
 import { forceOf, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
 
@@ -62,5 +62,22 @@ describe.each(['exact', 'fast'] as const)('full throttle against the rev limiter
     expect(ledger.residual).toBeLessThan(1e-6);
     const { speed } = replay(plan, { settledAt: 0 }, 1000).series;
     for (const v of speed.subarray(500)) expectClose(v, balance(band), 1e-7);
+  });
+
+  it('takes the steps of the gear in hand: an automatic gearbox that never shifts is that gear, bit for bit', () => {
+    const gears = [50, 20].map((ratio) => ({ ratio, inertia: 0 }));
+    const across = Float64Array.of(0, 1);
+    const run = (gearbox: Gearbox) =>
+      runLoop(
+        planOver(
+          roadOver(stations(1000, 100), { grade: (s) => 0.03 * Math.sin(s / 100) }),
+          { ...referenceMotorcycle, drive: { ...limited(50), gears, gear: 1, gearbox } },
+          { scheme },
+        ),
+      );
+    const never = { throttle: across, upSpeed: Float64Array.of(1e6, 1e6), downSpeed: Float64Array.of(0, 0) };
+    const automatic = run({ kind: 'automatic', ...never, gap: 0.3, dwell: 1 });
+    expect(automatic.shifts).toEqual([]);
+    expect(automatic.bins).toEqual(run({ kind: 'fixed' }).bins);
   });
 });
