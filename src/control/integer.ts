@@ -182,7 +182,7 @@ export function integerController(setup: IntegerSetup, low: number, high: number
     scaleProduct(n[KP], n[ERROR], GAIN_DIVISOR);
     bus[INTEGRAL] = integralFor(nearestCount(bus[BUS_LIMITED] * throttleScale) - n[RESULT]);
   };
-  return { sample, computingDelay, ramp, engage, step };
+  return { sample, computingDelay, ramp, integralAt: [INTEGRAL], engage, step };
 }
 
 const nearestCount = (value: number): number => Math.floor(value + 0.5);

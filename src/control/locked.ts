@@ -14,6 +14,7 @@ export function lockedController(low: number, high: number): Controller {
     sample: null,
     computingDelay: 0,
     ramp: null,
+    integralAt: [],
     engage: () => undefined,
     step: (bus) => {
       const command = bus[BUS_LOCK];

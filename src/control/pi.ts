@@ -68,5 +68,6 @@ export function piController(setup: PiSetup, low: number, high: number): Control
     const proportional = setup.kp * (setup.setpointWeight * bus[BUS_REFERENCE] - bus[BUS_MEASURED]);
     bus[BUS_MEMORY] = bus[BUS_LIMITED] - proportional;
   };
-  return { sample: setup.sample, computingDelay: setup.computingDelay, ramp: setup.ramp, engage, step };
+  const { computingDelay, ramp } = setup;
+  return { sample: setup.sample, computingDelay, ramp, integralAt: [BUS_MEMORY], engage, step };
 }

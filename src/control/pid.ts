@@ -10,7 +10,16 @@ import {
   BUS_REFERENCE,
 } from './bus.ts';
 import type { Controller } from './controller.ts';
-import { INTEGRAL, LAST_FEEDFORWARD, LAST_KD, LAST_KP, LAST_SHAPE, LAST_SLIP } from './memory.ts';
+import {
+  INTEGRAL,
+  LAST_FEEDFORWARD,
+  LAST_KD,
+  LAST_KP,
+  LAST_SHAPE,
+  LAST_SLIP,
+  OBSERVED_FORCE,
+  OBSERVED_THROTTLE,
+} from './memory.ts';
 import {
   pidParts,
   W_ERROR,
@@ -39,7 +48,11 @@ export function pidController(setup: PidSetup, low: number, high: number, vehicl
     : { ...timing, ...positionalForm(setup, setup.form.antiWindup, low, high, vehicle) };
 }
 
-type Law = Pick<Controller, 'engage' | 'step'>;
+type Law = Pick<Controller, 'engage' | 'integralAt' | 'step'>;
+
+/** An observer sums up too; what a schedule makes of the integral hangs on the gains of the sample before. */
+const OBSERVED = [OBSERVED_FORCE, OBSERVED_THROTTLE];
+const LAST_GAINS = [LAST_KP, LAST_KD, LAST_SHAPE, LAST_SLIP];
 
 /** True where the dead band does not keep the integral still, though it should. */
 const runsInside = ({ deadBand, ki }: PidSetup): number =>
@@ -133,7 +146,8 @@ function positionalForm(
     parts.engage(bus);
     bus[INTEGRAL] = bus[BUS_LIMITED] - work[W_REST];
   };
-  return { engage, step };
+  const integralAt = [INTEGRAL, ...(scheduled ? LAST_GAINS : []), ...OBSERVED];
+  return { integralAt, engage, step };
 }
 
 /**
@@ -172,5 +186,7 @@ function velocityForm(setup: PidSetup, low: number, high: number, vehicle: Vehic
     bus[INTEGRAL] = 0;
     bus[LAST_FEEDFORWARD] = bus[BUS_FEEDFORWARD];
   };
-  return { engage, step };
+  // The command of the sample before is its integral, with what has been added to it since.
+  const integralAt = [BUS_LIMITED, INTEGRAL, LAST_FEEDFORWARD, ...LAST_GAINS, ...OBSERVED];
+  return { integralAt, engage, step };
 }

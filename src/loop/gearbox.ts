@@ -11,19 +11,17 @@ import {
 } from '../control/bus.ts';
 import type { Controller } from '../control/controller.ts';
 import { setTarget } from '../control/set-point.ts';
-import { derateFactor } from '../vehicle/derating.ts';
-import { throttleFor } from '../vehicle/drive-law.ts';
-import { requiredForce } from '../vehicle/resistance.ts';
 import { engageGear, gearInHand } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { distanceAt, stationAt, surroundingsAt } from './places.ts';
+import { distanceAt, stationAt } from './places.ts';
 import type { LoopPlan } from './plan.ts';
 import type { ShiftEvent } from './result.ts';
 import { gearDue } from './shift-due.ts';
+import { closedThrottle, throttleInHand } from './throttle-in-hand.ts';
 
-/** Rate at which the reference comes back to the set speed after a shift, where the controller has no ramp [m/s2]. */
-const RESUME_RAMP = 0.5;
+/** Rate at which the reference comes back to the set speed, where nobody has written one [m/s2]. */
+export const RESUME_RAMP = 0.5;
 
 /** Parts of a shift, s[SHIFT_PART]: above 0 hold is off or the drive without torque; below 0 an automatic gearbox rests. */
 const RESTS = -1;
@@ -60,9 +58,17 @@ export interface Gearbox {
  * Planned shifts that lie at or before the start of a run are taken as made. Where a plan with fixed gears or a clutch has
  * another gear in force than the machine (a replay with another plan), it is engaged now.
  *
+ * Hold that is off stays off through a shift.
+ *
  * @param lock locks a locked throttle again, for the gear in hand
+ * @param told is told what a shift does to hold
  */
-export function gearbox(machine: Machine, plan: LoopPlan, lock: () => void): Gearbox {
+export function gearbox(
+  machine: Machine,
+  plan: LoopPlan,
+  lock: () => void,
+  told: (kind: 'ended' | 'resumed') => void,
+): Gearbox {
   const { s, p } = machine;
   const box = plan.vehicle.drive.gearbox;
   const sample = p[at.P_SAMPLE];
@@ -105,21 +111,25 @@ export function gearbox(machine: Machine, plan: LoopPlan, lock: () => void): Gea
   const shiftByClutch = (open: number, resume: number): void => {
     if (s[at.SHIFT_PART] === CLUTCH_OPEN && ended(s)) {
       engageGear(machine, s[at.NEXT_GEAR]);
-      s[BUS_LIMITED] = holdingThrottle(machine, plan);
+      s[BUS_LIMITED] = throttleInHand(machine, plan, 0);
       enter(RIDERS_THROTTLE, resume);
     }
     if (s[at.SHIFT_PART] === RIDERS_THROTTLE && ended(s)) {
       s[at.SHIFT_PART] = NONE;
-      resumeReference(s, machine.controller.ramp ?? RESUME_RAMP, sample);
-      machine.controller.engage(s);
-      lock();
+      if (holdIsOn(s)) {
+        told('resumed');
+        resumeReference(s, machine.controller.ramp ?? RESUME_RAMP, sample);
+        machine.controller.engage(s);
+        lock();
+      }
     }
     const next = s[at.SHIFTS];
     if (s[at.SHIFT_PART] !== NONE || next >= planned.length || s[at.STATION] < places[next]!) return;
     s[at.SHIFTS] = next + 1;
     if (planned[next]!.gear !== s[at.GEAR]) {
+      if (holdIsOn(s)) told('ended');
       openClutch(planned[next]!.gear, open, resume);
-      s[BUS_LIMITED] = Math.min(Math.max(0, p[at.P_LEAST]), p[at.P_GREATEST]);
+      s[BUS_LIMITED] = closedThrottle(p);
     }
     shiftByClutch(open, resume);
   };
@@ -165,6 +175,10 @@ export function gearInForce(plan: LoopPlan, distance: number): number {
   return plan.rider.shifts.findLast((shift) => shift.distance <= distance)?.gear ?? drive.gear;
 }
 
+function holdIsOn(s: Float64Array): boolean {
+  return s[at.HOLD_MODE] < at.BY_HAND;
+}
+
 function ended(s: Float64Array): boolean {
   return s[at.TICK] >= s[at.SHIFT_UNTIL];
 }
@@ -195,15 +209,4 @@ function takePlan(machine: Machine, plan: LoopPlan, places: readonly number[]): 
   if (gear === s[at.GEAR]) return;
   engageGear(machine, gear);
   s[at.LOCK_GEAR] = gear;
-}
-
-/** Throttle that holds the present speed in the gear in hand, within the range of the command. */
-function holdingThrottle({ s, p }: Machine, plan: LoopPlan): number {
-  const { vehicle } = plan;
-  const { drive } = vehicle;
-  const here = surroundingsAt(plan.road, s[at.STATION]);
-  const derate = derateFactor(drive, here.airDensity, here.airTemperature) * s[at.DRIVE_FACTOR];
-  const needed = requiredForce(vehicle, s[at.SPEED], here);
-  const throttle = throttleFor(drive, s[at.GEAR], s[at.SPEED], needed, derate) ?? 0;
-  return Math.min(Math.max(throttle, p[at.P_LEAST]), p[at.P_GREATEST]);
 }

@@ -3,19 +3,21 @@ import { setTarget } from '../control/set-point.ts';
 import { advanceExact } from './exact.ts';
 import { advanceFast } from './fast.ts';
 import { gearbox, restingController } from './gearbox.ts';
+import { holdOf } from './hold.ts';
+import { holdLog } from './hold-log.ts';
 import * as at from './layout.ts';
 import { addWorks } from './ledger.ts';
 import type { Kernel, Machine } from './machine.ts';
 import { stationAt } from './places.ts';
-import type { LoopPlan, SetSpeedChange } from './plan.ts';
-import type { ShiftEvent } from './result.ts';
+import { asksOfHold, type LoopPlan, type SetSpeedChange } from './plan.ts';
+import type { HoldEvent, ShiftEvent } from './result.ts';
 import { lockThrottle, markLock } from './settle.ts';
 
 /** Ticks that reach a time [s] from a tick count; a hair early counts as reached. */
 const ticksTo = (time: number, sample: number, tick: number): number =>
   Math.max(0, Math.ceil(time / sample - 1e-9) - tick);
 
-/** A run under way: chunks of the kernel, cut where the set speed changes and where gears are shifted. */
+/** A run under way: chunks of the kernel, cut where the set speed changes, gears are shifted, and hold changes hands. */
 export interface Journey {
   /** Runs samples until one would start at or beyond a station [m] or [s], or `ticks` have run. Returns the event. */
   readonly advance: (until: number, ticks: number) => number;
@@ -25,6 +27,8 @@ export interface Journey {
   readonly late: () => boolean;
   /** Shifts that have begun in this journey, in order along the way. */
   readonly shifts: readonly ShiftEvent[];
+  /** What has become of hold in this journey, in order along the way. */
+  readonly holdEvents: readonly HoldEvent[];
 }
 
 /**
@@ -53,6 +57,7 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
       : s[at.STATION] >= places[i]!;
   };
   const change = (setSpeed: number, made: SetSpeedChange | null): void => {
+    s[at.PLANNED_SPEED] = setSpeed;
     setTarget(s, setSpeed, made?.ramp ?? machine.controller.ramp, sample);
     s[at.BRAKE_REFERENCE] = Math.max(s[at.BRAKE_REFERENCE], setSpeed);
     markLock(machine, plan);
@@ -66,38 +71,49 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
     }
   };
 
-  const setSpeedInForce = (): number =>
-    s[at.CHANGES] > 0 ? changes[s[at.CHANGES] - 1]!.setSpeed : plan.hold.setSpeed;
-
-  // Set speed and gear in force here, by this plan.
+  // Set speed and gear in force here, by this plan; what taps and engaging have made of the set speed stays.
   s[at.CHANGES] = 0;
   while (s[at.CHANGES] < changes.length && due(s[at.CHANGES])) s[at.CHANGES] += 1;
   const last = s[at.CHANGES] > 0 ? changes[s[at.CHANGES] - 1]! : null;
-  const gears = gearbox(machine, plan, () => {
-    markLock(machine, plan);
-    lockThrottle(machine, plan, setSpeedInForce());
-  });
-  const inForce = setSpeedInForce();
-  if (s[BUS_TARGET] !== inForce) change(inForce, last);
-  lockThrottle(machine, plan, inForce);
+  const log = holdLog(machine, plan);
+  const gears = gearbox(
+    machine,
+    plan,
+    () => {
+      markLock(machine, plan);
+      lockThrottle(machine, plan, s[BUS_TARGET]);
+    },
+    (kind) => log.note(kind, 'gear_change'),
+  );
+  const inForce = last?.setSpeed ?? plan.hold.setSpeed;
+  if (s[at.PLANNED_SPEED] !== inForce) change(inForce, last);
+  lockThrottle(machine, plan, s[BUS_TARGET]);
   const ridden: Machine = { ...machine, controller: restingController(machine.controller) };
+  const hold = asksOfHold(plan) ? holdOf(machine, ridden, plan, log) : null;
 
   const advance = (until: number, ticks: number): number => {
     let left = Math.min(ticks, lastTick - s[at.TICK]);
     let event = at.RUNNING;
     while (left > 0 && s[at.STATION] < until && event === at.RUNNING) {
       makeChanges();
-      gears.shift();
+      hold?.takeFound();
+      if (!(hold?.declutched() ?? false)) gears.shift();
+      const shifting = gears.holdIsOff();
+      hold?.act(shifting);
       const next = s[at.CHANGES] < changes.length ? changes[s[at.CHANGES]]! : null;
       const place = next === null ? Number.POSITIVE_INFINITY : places[s[at.CHANGES]]!;
       const run =
         next !== null && 'time' in next.at ? ticksTo(next.at.time + late, sample, s[at.TICK]) : at.LOG_ROWS;
       const before = s[at.TICK];
-      event = kernel(
-        gears.holdIsOff() ? ridden : machine,
-        Math.min(run, left, at.LOG_ROWS, gears.ticksLeft()),
-        Math.min(until, place, gears.nextPlace()),
-      );
+      let most = Math.min(run, left, at.LOG_ROWS, gears.ticksLeft());
+      let end = Math.min(until, place);
+      if (!(hold?.declutched() ?? false)) end = Math.min(end, gears.nextPlace());
+      if (hold !== null) {
+        most = Math.min(most, hold.ticksLeft(shifting));
+        end = Math.min(end, hold.nextPlace(shifting));
+      }
+      event = kernel(hold?.machine(shifting) ?? (shifting ? ridden : machine), most, end);
+      hold?.tell();
       addWorks(machine);
       heard(machine);
       left -= s[at.TICK] - before;
@@ -109,5 +125,6 @@ export function journey(machine: Machine, plan: LoopPlan, heard: (machine: Machi
     time: () => s[at.TICK] * sample + s[at.PARTIAL],
     late: () => s[at.TICK] >= lastTick,
     shifts: gears.shifts,
+    holdEvents: log.events,
   };
 }

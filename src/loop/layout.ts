@@ -68,9 +68,50 @@ export const SLOPE_ROW = 71;
 export const SLOPE_READING = 72;
 /** Reference beyond which the rider's brake does not go, in the units of the set speed; Infinity: that of the hold. */
 export const BRAKE_REFERENCE = 74;
+/** Who has the throttle (HOLD_ below), and the tick at which the grip or the clutch lever is let go. */
+export const HOLD_MODE = 75;
+export const HOLD_UNTIL = 76;
+/** Acts of the rider that have been done. */
+export const HOLD_ACTS = 77;
+/** Found by the controller's step, for the next sample: a rule that ends hold (1 + its place in RULES), or RE_ENTERS; 0: nothing. */
+export const HOLD_FOUND = 78;
+/** Hold takes over in the controller's next step: ENGAGES or RESUMES; 0: no. */
+export const HOLD_TAKES = 79;
+/** Tick at which the rider resumes a hold that a rule has ended; 0: not by themselves. */
+export const HOLD_RESUMES = 80;
+/** Plan's set speed in force, which taps and engaging leave behind. */
+export const PLANNED_SPEED = 81;
+/** Speed that the rider holds by hand [m/s], true, and the deceleration at which they brake down to it; 0: they have it. */
+export const HAND_SPEED = 82;
+export const HAND_RATE = 83;
+/** Throttle of the grip in an override, and the command of the controller behind it. */
+export const GRIP = 84;
+export const OWN_COMMAND = 85;
+/** What the rules of the unit remember: measured speed of the sample before, samples too slow, samples too fast. */
+export const RULES_MEMORY = 86;
+/** Faults of the sensor that have begun; the kind that is on (1 + its place in FAULTS), 0: none; the tick at which it ends; what it holds on to. */
+export const FAULTS_BEGUN = 89;
+export const FAULT = 90;
+export const FAULT_UNTIL = 91;
+export const FAULT_VALUE = 92;
 /** History for delayed measurement, to the end of the state: rows of [value, slopes], see delayed-speed.ts. */
-export const HISTORY = 75;
+export const HISTORY = 93;
 export const HISTORY_STRIDE = 3;
+
+// --- who has the throttle: s[HOLD_MODE]; from BY_HAND on hold is off ---
+export const ENGAGED = 0;
+/** The controller, or the grip where that asks for more; then until the speed is back. */
+export const OVERRIDDEN = 1;
+export const RE_ENTERING = 2;
+/** Hold is off: the rider holds a speed, lets it coast, has pulled the clutch. */
+export const BY_HAND = 3;
+export const COASTING = 4;
+export const DECLUTCHED = 5;
+/** s[HOLD_TAKES]: the present speed becomes the set speed, or the set speed is that of before. */
+export const ENGAGES = 1;
+export const RESUMES = 2;
+/** s[HOLD_FOUND]: the speed is back after an override. */
+export const RE_ENTERS = -1;
 
 // --- chunk: sums over the samples that a kernel has just run, works and energies [J] ---
 export const C_TICKS = 0;
@@ -168,7 +209,9 @@ export const P_LAW_STEP = 44;
 export const P_SLOPE = 36;
 export const P_AHEAD = 37;
 export const P_SLOPE_KEPT = 45;
-export const P_SIZE = 46;
+/** 1: hold can change hands: rules of the unit, acts of the rider, faults of the sensor. */
+export const P_HOLD = 46;
+export const P_SIZE = 47;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;

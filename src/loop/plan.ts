@@ -115,3 +115,13 @@ export const LIMIT_SHIFT = 16;
 export const LIMIT_OFF = 32;
 /** The rider's grip asks for more than the controller. */
 export const LIMIT_OVERRIDE = 64;
+
+/** True where hold can change hands, or its sensor fail, in a plan. */
+export function asksOfHold({ supervisor, faults = [], hold, rider }: LoopPlan): boolean {
+  return (
+    supervisor !== undefined ||
+    faults.length > 0 ||
+    hold.starts === 'by_hand' ||
+    (rider.acts?.length ?? 0) > 0
+  );
+}

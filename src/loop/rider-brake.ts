@@ -1,3 +1,5 @@
+import { exp } from '../numeric/elementary.ts';
+
 /** Time constant with which the rider's brake takes overspeed away [s], and its strongest deceleration [m/s2]. */
 const TIME = 0.5;
 const STRONGEST = 3;
@@ -16,4 +18,15 @@ export const BRAKE_WATCH = 5;
 export function riderBrake(acceleration: number, over: number): number {
   const wanted = acceleration + over / TIME;
   return wanted > 0 ? Math.min(wanted, STRONGEST) : 0;
+}
+
+/**
+ * Speed to hold over a sample so that the brake takes `drop` off in it: dv/dt = -(v - held) / TIME, held constant.
+ *
+ * @param speed at the start of the sample [m/s]
+ * @param drop [m/s], >= 0
+ * @param sample [s]
+ */
+export function heldForDrop(speed: number, drop: number, sample: number): number {
+  return speed - drop / (1 - exp(-sample / TIME));
 }

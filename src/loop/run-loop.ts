@@ -6,7 +6,7 @@ import { journey } from './journey.ts';
 import * as at from './layout.ts';
 import { ledgerOf } from './ledger.ts';
 import { distanceAt } from './places.ts';
-import type { LoopPlan, RunStatus } from './plan.ts';
+import { asksOfHold, type LoopPlan, type RunStatus } from './plan.ts';
 import { recorder } from './record.ts';
 import { detailRecorder } from './record-detail.ts';
 import type { Checkpoint, LoopResult } from './result.ts';
@@ -71,6 +71,7 @@ export function runLoop(plan: LoopPlan): LoopResult {
     checkpoints,
     shifts: run.shifts,
     bites: bites.finish(),
+    ...(run.holdEvents.length > 0 || asksOfHold(plan) ? { holdEvents: run.holdEvents } : {}),
   };
 }
 

@@ -7,17 +7,20 @@ import { shiftDue } from './shift-due.ts';
 
 /** The machine has something that works once a sample on the state as it stands: then a kernel writes it at every sample. */
 export function hasSampleDevices(p: Float64Array): boolean {
-  return p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SOURCE] + p[at.P_SLOPE] > 0;
+  return (
+    p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SOURCE] + p[at.P_SLOPE] + p[at.P_HOLD] > 0
+  );
 }
 
 /**
  * What devices do at the start of a sample: the belt moves, a sensor with pulses or noise measures, the slope is told. The state must
  * stand in s; speed, filtered speed, ratio, effective mass and the cell over speed may have changed behind it.
  *
- * @returns false where an automatic gearbox wants to shift first: nothing has been done
+ * @returns false where hold changes hands or an automatic gearbox wants to shift first: nothing has been done
  */
 export function beginSample(machine: Machine): boolean {
   const { s, p } = machine;
+  if (s[at.HOLD_FOUND] !== 0) return false;
   if (p[at.P_AUTOMATIC] === 1 && shiftDue(machine)) return false;
   if (p[at.P_BELT] === 1) {
     moveBelt(machine);

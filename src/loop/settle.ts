@@ -11,9 +11,8 @@ import { gearInHand, loadGear } from './engage-gear.ts';
 import { gearInForce } from './gearbox.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { distanceAt, surroundingsAt } from './places.ts';
-import type { LoopPlan } from './plan.ts';
-
+import { distanceAt, stationAt, surroundingsAt } from './places.ts';
+import type { LoopPlan, RoutePlace } from './plan.ts';
 import { settleSlope } from './sense-slope.ts';
 import { settleSensor } from './sense-speed.ts';
 import { gearDue } from './shift-due.ts';
@@ -50,6 +49,30 @@ export function settle(machine: Machine, plan: LoopPlan, station: number, speed:
   s[BUS_LIMITED] = throttle;
   machine.controller.engage(s);
   markLock(machine, plan);
+  settleHold(machine, plan);
+}
+
+/**
+ * Hold as it is at this place where every act of the rider up to it has been done: on, or off with the rider at this
+ * speed. Acts by time, and what the run itself does to hold, are not known here.
+ */
+function settleHold({ s }: Machine, plan: LoopPlan): void {
+  const { acts = [] } = plan.rider;
+  const passed = ({ at: place }: { readonly at: RoutePlace }): boolean =>
+    'distance' in place && stationAt(plan.road, place.distance) < s[at.STATION];
+  const countOf = (of: readonly { readonly at: RoutePlace }[]): number => {
+    const next = of.findIndex((one) => !passed(one));
+    return next < 0 ? of.length : next;
+  };
+  s[at.HOLD_ACTS] = countOf(acts);
+  s[at.FAULTS_BEGUN] = countOf(plan.faults ?? []);
+  const last = acts
+    .slice(0, s[at.HOLD_ACTS])
+    .findLast(({ does }) => does.kind !== 'tap' && does.kind !== 'override')?.does.kind;
+  const on = last === undefined ? plan.hold.starts !== 'by_hand' : last === 'engage' || last === 'resume';
+  s[at.HOLD_MODE] = on ? at.ENGAGED : at.BY_HAND;
+  s[at.HAND_SPEED] = s[at.SPEED];
+  s[at.RULES_MEMORY] = s[BUS_MEASURED];
 }
 
 /** Puts a gear in hand, with the throttle that holds the speed at this place, and what follows from it. */
@@ -66,7 +89,9 @@ function settleGear(machine: Machine, plan: LoopPlan, gear: number): void {
   let needed = throttleFor(drive, gear, v, force, pushed) ?? 0;
   if (needed < 0) needed = throttleFor(drive, gear, v, force, held) ?? 0;
   const given =
-    controller.kind === 'locked' && controller.throttle !== 'level' ? controller.throttle : needed;
+    controller.kind === 'locked' && controller.throttle !== 'level' && plan.hold.starts !== 'by_hand'
+      ? controller.throttle
+      : needed;
   const throttle = Math.min(Math.max(given, p[at.P_LEAST]), p[at.P_GREATEST]);
   loadGear(machine, gear);
   if (drive.belt !== null) {

@@ -51,6 +51,12 @@ export interface Actuator {
   readonly rateLimit: number | null;
   /** Full width of the lost motion, in throttle: the play operator out = min(max(out, y - slack / 2), y + slack / 2); 0: none. */
   readonly slack: number;
+  /**
+   * What hold takes the throttle over from: `rider`, the actuator stands where the rider has it (throttle by wire); `rest`,
+   * a servo beside the grip waits at its lower stop with all of the slack before it, and must wind in both while the rider
+   * lets the grip go at once. Left out: `rider`.
+   */
+  readonly engagesFrom?: 'rider' | 'rest';
 }
 
 /** True speed to measured speed: pulses (or none), scale error, noise, first-order filter, transport delay. */
