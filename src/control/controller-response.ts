@@ -46,18 +46,18 @@ export function integratorAt({ sample, integration }: LoopTiming, z: Complex): C
   return integration === 'backward' ? multiplyComplex(forward, z) : forward;
 }
 
+/** From measurement to command of a derivative on the measurement, with its sign turned: what it adds to C(z). */
+export function derivativeAt(gains: Gains, sample: number, z: Complex): Complex {
+  const { gain, kept } = derivativeOf(gains, sample);
+  if (gain === 0) return complex(0);
+  const above = multiplyComplex(complex(gain), subtractComplex(z, complex(1)));
+  return divideComplex(above, subtractComplex(z, complex(kept)));
+}
+
 /** C(z) from measurement, with its sign turned, to command. */
 export function controllerAt(gains: Gains, timing: LoopTiming, z: Complex): Complex {
-  const { gain, kept } = derivativeOf(gains, timing.sample);
-  const slip =
-    gain === 0
-      ? complex(0)
-      : divideComplex(
-          multiplyComplex(complex(gain), subtractComplex(z, complex(1))),
-          subtractComplex(z, complex(kept)),
-        );
   return addComplex(
-    addComplex(complex(gains.kp), slip),
+    addComplex(complex(gains.kp), derivativeAt(gains, timing.sample, z)),
     multiplyComplex(complex(gains.ki), integratorAt(timing, z)),
   );
 }

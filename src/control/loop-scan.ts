@@ -3,8 +3,24 @@ import { closedPolesOutside } from '../linear/nyquist.ts';
 import { logarithmicGrid } from '../linear/response-scan.ts';
 import { type Complex, complex, sizeOfComplex } from '../numeric/complex.ts';
 import { cos, sin } from '../numeric/elementary.ts';
-import { derivativeOf, type Gains, integratorAt, onCircle } from './controller-response.ts';
-import type { SampledLoop } from './sampled-loop.ts';
+import type { Gains } from './controller-response.ts';
+
+/** A loop whose response along the border of stability can be scanned: sampled or continuous. */
+export interface ScannableLoop {
+  /** Poles of the vehicle with its lags, in the s plane [1/s]. */
+  readonly plantPoles: readonly Complex[];
+  /** Highest frequency that is scanned [rad/s]. */
+  readonly highest: number;
+  /** Place in the plane of the loop that belongs to a place of the s plane: z = e^(s h), or s. */
+  placeAt(s: Complex): Complex;
+  /** From command to measurement at such a place; Infinity at a pole. */
+  plantAt(place: Complex): Complex;
+  /** From error to integral for ki = 1, and from measurement to command of a derivative, there. */
+  integratorAt(place: Complex): Complex;
+  derivativeAt(gains: Gains, place: Complex): Complex;
+  /** Gain around the open loop [rad/s]. */
+  openLoop(gains: Gains, frequency: number): Complex;
+}
 
 /** How one loop stands: figures of a stable loop are those of linear/margins.ts, else null. */
 export interface LoopMargins {
@@ -14,8 +30,8 @@ export interface LoopMargins {
 }
 
 /** A loop whose vehicle has been scanned once, so that many gains can be tried on it. */
-export interface LoopScan {
-  readonly loop: SampledLoop;
+export interface LoopScan<L extends ScannableLoop> {
+  readonly loop: L;
   /** Margins under these gains: about a millisecond. */
   margins(gains: Gains): LoopMargins;
   /**
@@ -28,21 +44,18 @@ export interface LoopScan {
 /** Lowest frequency that is scanned [rad/s]: a third of a day for a turn. */
 const SLOWEST = 3e-4;
 const STEPS = 800;
-/** Steps of the quarter circle around z = 1, on which an integrator is passed. */
+/** Steps of the quarter circle around rest, s = 0, on which an integrator is passed. */
 const ARC = 16;
 
-/** Scans a loop from 3e-4 rad/s to its Nyquist frequency. */
-export function loopScan(loop: SampledLoop): LoopScan {
-  const { timing } = loop;
-  const { sample } = timing;
-  const frequency = logarithmicGrid(SLOWEST, Math.PI / sample, STEPS);
-  const radius = SLOWEST * sample;
+/** Scans a loop from 3e-4 rad/s to the highest frequency that it has. */
+export function loopScan<L extends ScannableLoop>(loop: L): LoopScan<L> {
+  const frequency = logarithmicGrid(SLOWEST, loop.highest, STEPS);
   const places: Complex[] = [];
   for (let i = 0; i < ARC; i++) {
     const angle = (i * Math.PI) / 2 / ARC;
-    places.push(complex(1 + radius * cos(angle), radius * sin(angle)));
+    places.push(loop.placeAt(complex(SLOWEST * cos(angle), SLOWEST * sin(angle))));
   }
-  for (const w of frequency) places.push(onCircle(w, sample));
+  for (const w of frequency) places.push(loop.placeAt(complex(0, w)));
   const size = places.length;
   const column = (of: (z: Complex) => Complex): { re: Float64Array; im: Float64Array } => {
     const values = places.map(of);
@@ -51,9 +64,8 @@ export function loopScan(loop: SampledLoop): LoopScan {
       im: Float64Array.from(values, ({ im }) => im),
     };
   };
-  const z = column((place) => place);
   const plant = column((place) => loop.plantAt(place));
-  const integrator = column((place) => integratorAt(timing, place));
+  const integrator = column((place) => loop.integratorAt(place));
   const openOutside = loop.plantPoles.filter((pole) => pole.re > 0 && sizeOfComplex(pole) > SLOWEST).length;
   const re = new Float64Array(size);
   const im = new Float64Array(size);
@@ -61,17 +73,14 @@ export function loopScan(loop: SampledLoop): LoopScan {
   /** L along the whole curve, into `re` and `im`. */
   function scan(gains: Gains): void {
     const { kp, ki } = gains;
-    const { gain, kept } = derivativeOf(gains, sample);
+    const derives = (gains.kd ?? 0) !== 0;
     for (let i = 0; i < size; i++) {
       let cRe = kp + ki * integrator.re[i]!;
       let cIm = ki * integrator.im[i]!;
-      if (gain !== 0) {
-        // gain (z - 1) / (z - kept)
-        const x = z.re[i]! - kept;
-        const y = z.im[i]!;
-        const square = x * x + y * y;
-        cRe += (gain * ((z.re[i]! - 1) * x + y * y)) / square;
-        cIm += (gain * (y * x - (z.re[i]! - 1) * y)) / square;
+      if (derives) {
+        const slope = loop.derivativeAt(gains, places[i]!);
+        cRe += slope.re;
+        cIm += slope.im;
       }
       re[i] = cRe * plant.re[i]! - cIm * plant.im[i]!;
       im[i] = cRe * plant.im[i]! + cIm * plant.re[i]!;

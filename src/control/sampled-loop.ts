@@ -15,6 +15,7 @@ import type { LinearVehicle } from '../vehicle/linearise.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import {
   controllerAt,
+  derivativeAt,
   derivativeOf,
   type Gains,
   integratorAt,
@@ -22,6 +23,7 @@ import {
   onCircle,
 } from './controller-response.ts';
 import { linearPlant } from './linear-plant.ts';
+import type { ScannableLoop } from './loop-scan.ts';
 import { sensorDelay } from './sensor-delay.ts';
 
 export type { Gains, LoopTiming };
@@ -46,7 +48,7 @@ export interface Push {
  * scale z(t - delay), all delays in one; a delay that is no whole number of samples is met by the state at the instant
  * within the sample.
  */
-export interface SampledLoop {
+export interface SampledLoop extends ScannableLoop {
   /** Speed at every `spacing` from time 0 for a whole number of samples [m/s], all starting from rest. */
   respond(gains: Gains, push: Push, duration: number, spacing: number): SpeedResponse;
   /**
@@ -55,12 +57,6 @@ export interface SampledLoop {
    */
   poles(gains: Gains): readonly Complex[];
   readonly timing: LoopTiming;
-  /** Poles of the vehicle with its lags, in the s plane [1/s]. */
-  readonly plantPoles: readonly Complex[];
-  /** From command to measurement at a complex frequency z [m/s]; Infinity at a pole. */
-  plantAt(z: Complex): Complex;
-  /** Gain around the open loop at z = e^(j w h). */
-  openLoop(gains: Gains, frequency: number): Complex;
   /** The gains with which both s values, a conjugate pair or two real ones, are poles of the closed loop. */
   placePair(frequency: number, damping: number): Gains;
 }
@@ -233,9 +229,13 @@ export function sampledLoop(vehicle: Vehicle, model: LinearVehicle, timing: Loop
   return {
     timing,
     plantPoles: eigenvalues(plant.a),
+    highest: Math.PI / sample,
+    placeAt: (s) => expComplex(complex(s.re * sample, s.im * sample)),
+    plantAt,
+    integratorAt: (z) => integratorAt(timing, z),
+    derivativeAt: (gains, z) => derivativeAt(gains, sample, z),
     respond,
     poles,
-    plantAt,
     openLoop,
     placePair,
   };

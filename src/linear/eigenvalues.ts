@@ -1,12 +1,13 @@
 import { EigenvalueDecomposition, type Matrix } from 'ml-matrix';
 import { type Complex, complex, logComplex } from '../numeric/complex.ts';
+import { balance } from './balance.ts';
 
 /**
- * Eigenvalues of a real square matrix (Hessenberg form and QR steps), conjugates next to each other. An m-fold
- * eigenvalue is only good to the m-th root of the rounding error.
+ * Eigenvalues of a real square matrix (balanced, then Hessenberg form and QR steps), conjugates next to each other. An
+ * m-fold eigenvalue is only good to the m-th root of the rounding error; the mean of the m is good.
  */
 export function eigenvalues(matrix: Matrix): readonly Complex[] {
-  const { realEigenvalues, imaginaryEigenvalues } = new EigenvalueDecomposition(matrix);
+  const { realEigenvalues, imaginaryEigenvalues } = new EigenvalueDecomposition(balance(matrix));
   return realEigenvalues.map((re, i) => complex(re, imaginaryEigenvalues[i]!));
 }
 

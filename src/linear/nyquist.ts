@@ -5,8 +5,8 @@
  * so that they count as inside; it must be sampled so finely that L turns by less than half a turn between two samples
  * wherever it is not small.
  *
- * In the z plane the border is the unit circle, and the curve ends at z = -1. In the s plane it is the imaginary axis,
- * and `turning` has the other sign: up along it the outside lies to the right.
+ * In the z plane the border is the unit circle, from z = 1 to z = -1; in the s plane the imaginary axis, from s = 0 up to
+ * where L has gone to a real value, 0 as a rule.
  *
  * @param re real part of L along the curve, and
  * @param im its imaginary part; first and last count as real

@@ -1,7 +1,7 @@
 import type { Gains, LoopTiming } from '../control/controller-response.ts';
 import type { LinearController } from '../control/linear-controller.ts';
 import { type LoopMargins, type LoopScan, loopScan } from '../control/loop-scan.ts';
-import { sampledLoop } from '../control/sampled-loop.ts';
+import { type SampledLoop, sampledLoop } from '../control/sampled-loop.ts';
 import { type LinearVehicle, linearise } from '../vehicle/linearise.ts';
 import { keptInGear } from './gear-course.ts';
 import type { OperatingPoint, PointMargins } from './operating-point.ts';
@@ -27,7 +27,7 @@ export function gainsAtPoint(point: OperatingPoint, controller: LinearController
  *
  * @throws RangeError where the throttle has no effect at the point
  */
-export function pointLoop(point: OperatingPoint, timing: LoopTiming): LoopScan {
+export function pointLoop(point: OperatingPoint, timing: LoopTiming): LoopScan<SampledLoop> {
   return loopScan(sampledLoop(vehicleAt(point), linearAt(point), timing));
 }
 
