@@ -59,6 +59,11 @@ export const caseNameRules: readonly Rule<unknown>[] = [
     about: ['candidates', -1],
     check: (file) => doubled(file, 'candidates', (item) => item.name ?? item.kind, 'name'),
   },
+  {
+    about: ['logged_rides', -1],
+    check: (file) => doubled(file, 'logged_rides', (item) => item.name, 'name'),
+  },
+  { about: ['logged_rides', -1], check: ridesCalledAsCandidates },
   { about: ['requirements', -1], check: (file) => doubled(file, 'requirements', (item) => item.id, 'id') },
   { about: ['requirements', -1], check: unknownCandidates },
   { about: ['requirements', -1], check: unknownFigures },
@@ -99,6 +104,24 @@ function doubled(
 /** The names of the candidates as written; a candidate without one is called by its kind. */
 export const candidateNames = (file: unknown): string[] =>
   items(file, 'candidates').map((item) => String(item.name ?? item.kind));
+
+/** A ride stands beside the candidates, in their charts and tables. */
+function ridesCalledAsCandidates(file: unknown): RuleFault[] {
+  const taken = candidateNames(file);
+  return items(file, 'logged_rides').flatMap(({ name }, i): RuleFault[] =>
+    typeof name === 'string' && taken.includes(name)
+      ? [
+          {
+            path: ['logged_rides', i, 'name'],
+            code: 'doubled-name',
+            message: 'the name is that of a candidate',
+            found: name,
+            allowed: 'a name of its own',
+          },
+        ]
+      : [],
+  );
+}
 
 function unknownCandidates(file: unknown): RuleFault[] {
   const known = candidateNames(file);

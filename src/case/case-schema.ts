@@ -15,6 +15,7 @@ import {
   word,
 } from './fields.ts';
 import { holdSchema } from './hold-schema.ts';
+import { loggedRidesSchema } from './logged-ride-schema.ts';
 import { matrixSchema } from './matrix-schema.ts';
 import { requirementSchema } from './requirement-schema.ts';
 import { riderSchema } from './rider-schema.ts';
@@ -56,6 +57,7 @@ export const caseSchema = mapping(
       NOT_GIVEN,
     ),
     requirements: otherwise(list(requirementSchema, 0, 200, 'Written requirements'), [], null),
+    logged_rides: otherwise(loggedRidesSchema, [], null),
     matrix: optional(matrixSchema),
     tune: optional(tuneSchema),
     output: block(

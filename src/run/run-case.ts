@@ -30,6 +30,7 @@ import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
 import { holdWarnings } from './hold-warnings.ts';
 import { InputLog, type Reader } from './input-log.ts';
+import { loggedRidesOf, rideResults, rideWarnings } from './logged-rides.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
 import { type MatrixWork, matrixRides } from './matrix-work.ts';
 import { overrideWarnings } from './override-warnings.ts';
@@ -106,6 +107,7 @@ export function runWithoutMatrix({
   const vehicle = vehicleOfCase(document, vehicleDocument);
   const makeRoad = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']));
   const road = makeRoad(document);
+  const loggedRides = loggedRidesOf(document, log, road);
   const { bends: bendPlan, ...ride } = rideOf(document, vehicle, road);
   const { hold, rider } = ride;
   const requirements = requirementsOf(document);
@@ -168,6 +170,7 @@ export function runWithoutMatrix({
     hills,
     cycles,
     transients: holdTransients(replayed),
+    loggedRides: rideResults(loggedRides, { ...context, vehicle, hold, rider, band, replayed }),
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),
     requirements: findings,
@@ -177,6 +180,7 @@ export function runWithoutMatrix({
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
       ...placeWarnings,
+      ...rideWarnings(loggedRides, road),
       ...holdWarnings(document, bendPlan, replayed),
       ...overrideWarnings(document, overrides),
       ...timesNotReached(document, ride, results),

@@ -17,6 +17,7 @@ import type {
   Segment,
 } from '../study/findings.ts';
 import type { HoldTransients } from '../study/hold-transient.ts';
+import type { RideResult } from '../study/ride-figures.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { MatrixResult } from './matrix-result.ts';
 
@@ -52,6 +53,8 @@ export interface RunResult {
   readonly cycles: readonly LimitCycle[];
   /** What followed each event of the hold: engaging, resuming, taps, overrides, ends. */
   readonly transients: HoldTransients;
+  /** Rides that were logged on the same road, laid along it; no candidates: nothing is asked of them. */
+  readonly loggedRides: readonly RideResult[];
   readonly segmentsBy: 'length' | 'terrain';
   readonly segments: readonly Segment[];
   readonly requirements: readonly RequirementFinding[];

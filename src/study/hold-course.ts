@@ -175,8 +175,11 @@ function courseOf(
   return { setSpeed, startSpeed, changes, settling, following: settling };
 }
 
-/** Set speed at each knot; at the place of a change the new one [m/s]. */
-export function setSpeedAt(road: Road, { setSpeed, changes }: HoldCourse): Float64Array {
+/** Set speed at each knot, or at each place of another list; at the place of a change the new one [m/s]. */
+export function setSpeedAt(
+  road: Pick<Road, 'size' | 'distance'>,
+  { setSpeed, changes }: HoldCourse,
+): Float64Array {
   const column = new Float64Array(road.size);
   let k = -1;
   for (let i = 0; i < road.size; i++) {

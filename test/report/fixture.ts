@@ -130,6 +130,7 @@ function plainResult(wish: FixtureWish): RunResult {
     demand,
     hills,
     cycles: [],
+    loggedRides: [],
     transients: { shown: [], leftOut: [] },
     segmentsBy: 'length',
     segments: segmentsOf(road, setups, runs),
