@@ -15,6 +15,7 @@ export function actuatorOf(file: VehicleFile['actuator']): Actuator {
     lag: file.lag_s,
     rateLimit: file.rate_limit_pct_per_s === undefined ? null : fromPct(file.rate_limit_pct_per_s),
     slack: fromPct(file.slack_pct),
+    ...(file.engages_from === undefined ? {} : { engagesFrom: file.engages_from }),
   };
 }
 
