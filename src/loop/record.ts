@@ -33,7 +33,8 @@ const SHIFT = 26;
 const DRAWN = 27;
 const DRIVE_LOST = 28;
 const REGENERATION_LOST = 29;
-const SUMS = 30;
+const OFF = 30;
+const SUMS = 31;
 
 function clearSums(sums: Float64Array): void {
   sums.fill(0);
@@ -41,8 +42,9 @@ function clearSums(sums: Float64Array): void {
   sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = sums[FORCE_MAX] = Number.NEGATIVE_INFINITY;
 }
 
-/** Adds the samples that a kernel has just run to the sums of the open bin. The set speed is the same for all of them. */
-function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
+/** Adds the samples with hold on that a kernel has just run to the sums of the open bin. The set speed is the same for all of them. */
+function addSamples(machine: Machine, sums: Float64Array): void {
+  const { s, p, log, chunk } = machine;
   const ticks = chunk[at.C_TICKS];
   if (ticks === 0) return;
   const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
@@ -107,8 +109,6 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
     sums[BAND + b] += sample * samples;
   }
   s[at.LAST_COMMAND] = before;
-  sums[TIME] += chunk[at.C_TIME];
-  sums[DISTANCE] += chunk[at.C_DISTANCE];
   sums[ERROR] += sample * errors;
   sums[SQUARE] += sample * squares;
   sums[THROTTLE] += sample * throttles;
@@ -119,6 +119,46 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
   sums[LOWER] += held * lower;
   sums[RATE] += chunk[at.C_RATED_TIME];
   sums[BRAKE] += chunk[at.C_BRAKE_TIME];
+  sums[FORCE_MIN] = weakest;
+  sums[FORCE_MAX] = strongest;
+  sums[THROTTLE_MIN] = least;
+  sums[THROTTLE_MAX] = most;
+  if (slowest < sums[SPEED_MIN]) sums[SPEED_MIN] = slowest;
+  if (fastest > sums[SPEED_MAX]) sums[SPEED_MAX] = fastest;
+  if (slowest - setSpeed < sums[ERROR_MIN]) sums[ERROR_MIN] = slowest - setSpeed;
+  if (fastest - setSpeed > sums[ERROR_MAX]) sums[ERROR_MAX] = fastest - setSpeed;
+  addChunk(machine, sums);
+}
+
+/** The same of samples with hold off: what the rider does is no error and no limit of the hold. */
+function addByHand(machine: Machine, sums: Float64Array): void {
+  const { s, p, log, chunk } = machine;
+  const ticks = chunk[at.C_TICKS];
+  if (ticks === 0) return;
+  if (sums[TIME] === 0) sums[SET_SPEED] = s[BUS_TARGET] * p[at.P_TO_TRUE];
+  const lastShare = chunk[at.C_TIME] / p[at.P_SAMPLE] - (ticks - 1);
+  for (let row = 0; row < ticks; row++) {
+    const i = row * at.L_STRIDE;
+    const speed = log[i + at.L_SPEED];
+    const throttle = log[i + at.L_ACTUATOR];
+    const force = log[i + at.L_FORCE];
+    sums[THROTTLE] += p[at.P_SAMPLE] * throttle * (row < ticks - 1 ? 1 : lastShare);
+    sums[SPEED_MIN] = Math.min(sums[SPEED_MIN], speed);
+    sums[SPEED_MAX] = Math.max(sums[SPEED_MAX], speed);
+    sums[THROTTLE_MIN] = Math.min(sums[THROTTLE_MIN], throttle);
+    sums[THROTTLE_MAX] = Math.max(sums[THROTTLE_MAX], throttle);
+    sums[FORCE_MIN] = Math.min(sums[FORCE_MIN], force);
+    sums[FORCE_MAX] = Math.max(sums[FORCE_MAX], force);
+  }
+  s[at.LAST_COMMAND] = log[(ticks - 1) * at.L_STRIDE + at.L_COMMAND];
+  sums[OFF] += chunk[at.C_TIME];
+  addChunk(machine, sums);
+}
+
+/** What counts with hold on and off. */
+function addChunk({ s, p, chunk }: Machine, sums: Float64Array): void {
+  sums[TIME] += chunk[at.C_TIME];
+  sums[DISTANCE] += chunk[at.C_DISTANCE];
   sums[PUSH] += chunk[at.C_PUSH];
   sums[HOLD] += chunk[at.C_HOLD];
   sums[BRAKE_WORK] += chunk[at.C_BRAKE];
@@ -129,14 +169,6 @@ function addSamples({ s, p, log, chunk }: Machine, sums: Float64Array): void {
     sums[DRIVE_LOST] = Math.max(sums[DRIVE_LOST], 1 - s[at.DRIVE_FACTOR]);
     sums[REGENERATION_LOST] = Math.max(sums[REGENERATION_LOST], 1 - s[at.REGENERATION_FACTOR]);
   }
-  sums[FORCE_MIN] = weakest;
-  sums[FORCE_MAX] = strongest;
-  sums[THROTTLE_MIN] = least;
-  sums[THROTTLE_MAX] = most;
-  if (slowest < sums[SPEED_MIN]) sums[SPEED_MIN] = slowest;
-  if (fastest > sums[SPEED_MAX]) sums[SPEED_MAX] = fastest;
-  if (slowest - setSpeed < sums[ERROR_MIN]) sums[ERROR_MIN] = slowest - setSpeed;
-  if (fastest - setSpeed > sums[ERROR_MAX]) sums[ERROR_MAX] = fastest - setSpeed;
 }
 
 type Writable<T> = { -readonly [K in keyof T]: T[K] };
@@ -202,13 +234,15 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
 
   const sums = new Float64Array(SUMS);
   clearSums(sums);
-  const add =
-    detail === null
-      ? (machine: Machine): void => addSamples(machine, sums)
-      : (machine: Machine): void => {
-          addSamples(machine, sums);
-          detail.add(machine);
-        };
+  const add = (machine: Machine): void => {
+    if (machine.s[at.HOLD_MODE] >= at.BY_HAND) {
+      addByHand(machine, sums);
+      detail?.skip(machine);
+    } else {
+      addSamples(machine, sums);
+      detail?.add(machine);
+    }
+  };
 
   const close: Recorder['close'] = ({ s, p, chunk }, timeAt) => {
     const i = size++;
@@ -224,7 +258,7 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
       const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
       r.setSpeed[i] = setSpeed;
       r.speedMean[i] = r.speedMin[i] = r.speedMax[i] = s[at.SPEED];
-      r.errorMin[i] = r.errorMax[i] = s[at.SPEED] - setSpeed;
+      if (s[at.HOLD_MODE] < at.BY_HAND) r.errorMin[i] = r.errorMax[i] = s[at.SPEED] - setSpeed;
       r.throttleMean[i] = r.throttleMin[i] = r.throttleMax[i] = s[at.PLATE];
       r.driveForce[i] = r.driveForceMin[i] = r.driveForceMax[i] = force;
       r.wheelPower[i] = force * s[at.SPEED];
@@ -238,8 +272,10 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
     r.speedMax[i] = sums[SPEED_MAX];
     r.errorMean[i] = sums[ERROR];
     r.errorSquare[i] = sums[SQUARE];
-    r.errorMin[i] = sums[ERROR_MIN];
-    r.errorMax[i] = sums[ERROR_MAX];
+    if (sums[ERROR_MIN] <= sums[ERROR_MAX]) {
+      r.errorMin[i] = sums[ERROR_MIN];
+      r.errorMax[i] = sums[ERROR_MAX];
+    }
     r.throttleMean[i] = sums[THROTTLE] / time;
     r.throttleMin[i] = sums[THROTTLE_MIN];
     r.throttleMax[i] = sums[THROTTLE_MAX];
@@ -249,6 +285,7 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
     if (sums[LOWER] > 0) r.timeLower[i] = sums[LOWER];
     if (sums[RATE] > 0) r.timeRate[i] = sums[RATE];
     if (sums[BRAKE] > 0) r.timeBrake[i] = sums[BRAKE];
+    if (sums[OFF] > 0) r.timeOff[i] = sums[OFF];
     if (sums[SHIFT] > 0) r.timeShift[i] = sums[SHIFT];
     if (sums[HOLD] < 0) r.regenerationWork[i] = sums[HOLD];
     if (sums[BRAKE_WORK] !== 0) r.brakeWork[i] = sums[BRAKE_WORK];

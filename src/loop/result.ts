@@ -122,8 +122,9 @@ export interface BinRecord {
   readonly driveLost: Float64Array;
   readonly regenerationLost: Float64Array;
   /**
-   * Time with hold off [s]. Sums, extremes and bands of the error, and the times at limits, are taken over the time with hold
-   * on (an override counts as on): divide by `time - timeOff`.
+   * Time with hold off [s]. Sums, extremes and bands of the error, the times at limits (the brake's too) and the travel of
+   * the command are taken over the time with hold on (an override counts as on): divide by `time - timeOff`. A bin without
+   * such time has 0 in all of them, the extremes of the error too.
    */
   readonly timeOff: Float64Array;
   /** Only where the plan asks for it; null: it did not. */

@@ -2,6 +2,7 @@ import {
   BUS_COMMAND,
   BUS_FEEDFORWARD,
   BUS_INTEGRAL,
+  BUS_LIMITED,
   BUS_MEASURED,
   BUS_PROPORTIONAL,
   BUS_REFERENCE,
@@ -10,7 +11,15 @@ import {
 import { gearInHand } from './engage-gear.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
-import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_SHIFT, LIMIT_UPPER } from './plan.ts';
+import {
+  LIMIT_BRAKE,
+  LIMIT_LOWER,
+  LIMIT_OFF,
+  LIMIT_OVERRIDE,
+  LIMIT_RATE,
+  LIMIT_SHIFT,
+  LIMIT_UPPER,
+} from './plan.ts';
 import type { FullSeries } from './result.ts';
 
 const NUMBERS = [
@@ -38,20 +47,26 @@ export interface SampleColumns {
   readonly finish: () => FullSeries;
 }
 
-/** LIMIT_ bits of the one sample in the log. */
+/** LIMIT_ bits of the one sample in the log. With hold off no limit holds it back; the brake is on all the same. */
 function limitBits({ s, p, chunk }: Machine): number {
   const shifting = s[at.SHIFT_PART] > 0;
+  const off = s[at.HOLD_MODE] >= at.BY_HAND;
+  const held = !(shifting || off);
+  const overridden = s[at.HOLD_MODE] === at.OVERRIDDEN && s[BUS_LIMITED] > s[at.OWN_COMMAND];
   return (
-    (!shifting && s[BUS_COMMAND] >= p[at.P_GREATEST] ? LIMIT_UPPER : 0) |
-    (!shifting && s[BUS_COMMAND] <= p[at.P_LEAST] ? LIMIT_LOWER : 0) |
-    (chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
+    (held && s[BUS_COMMAND] >= p[at.P_GREATEST] ? LIMIT_UPPER : 0) |
+    (held && s[BUS_COMMAND] <= p[at.P_LEAST] ? LIMIT_LOWER : 0) |
+    (!off && chunk[at.C_RATED_TIME] > 0 ? LIMIT_RATE : 0) |
     (chunk[at.C_BRAKE_FORCE] > 0 ? LIMIT_BRAKE : 0) |
-    (shifting ? LIMIT_SHIFT : 0)
+    (shifting ? LIMIT_SHIFT : 0) |
+    (off ? LIMIT_OFF : 0) |
+    (held && overridden ? LIMIT_OVERRIDE : 0)
   );
 }
 
 /**
- * Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read.
+ * With hold off the set speed is the one that a resume goes back to, and the reference the speed that the rider holds or
+ * brakes to. Reference, set speed and error are in true speed, like `speed`; `measured` is what the controller read.
  *
  * @param expected number of samples, about
  */
@@ -80,7 +95,7 @@ export function sampleColumns(expected: number): SampleColumns {
     columns[0]![size] = time;
     columns[1]![size] = distance;
     columns[2]![size] = s[BUS_TARGET] * p[at.P_TO_TRUE];
-    columns[3]![size] = s[BUS_REFERENCE] * p[at.P_TO_TRUE];
+    columns[3]![size] = s[at.HOLD_MODE] >= at.BY_HAND ? s[at.HAND_SPEED] : s[BUS_REFERENCE] * p[at.P_TO_TRUE];
     columns[4]![size] = log[at.L_SPEED];
     columns[5]![size] = s[BUS_MEASURED];
     columns[6]![size] = s[BUS_COMMAND];
