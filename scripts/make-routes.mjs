@@ -2,27 +2,11 @@
 // Atlantic on purpose, so that nobody takes them for a real road. Seeded: the same files each time.
 import { writeFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { normal, stream } from './random.mjs';
 import { root } from './run.mjs';
 
 const EARTH_RADIUS_M = 6371000; // good enough to lay out an invented road
 const STEP_M = 2;
-
-/** Uniform numbers in [0, 1): sfc32 (Doty-Humphrey, PractRand). */
-function stream(seed) {
-  let [a, b, c, d] = [seed, 0x9e3779b9, 0x243f6a88, 1];
-  const next = () => {
-    const t = (((a + b) | 0) + d) | 0;
-    d = (d + 1) | 0;
-    a = b ^ (b >>> 9);
-    b = (c + (c << 3)) | 0;
-    c = (c << 21) | (c >>> 11);
-    c = (c + t) | 0;
-    return (t >>> 0) / 4294967296;
-  };
-  for (let i = 0; i < 20; i++) next();
-  return next;
-}
-const normal = (random) => Math.sqrt(-2 * Math.log(1 - random())) * Math.cos(2 * Math.PI * random());
 
 /** Pieces [length_m, value] laid end to end each STEP_M, then averaged over `window_m`: straight pieces and smooth joints. */
 function lay(pieces, window_m) {
