@@ -149,8 +149,8 @@ const HARROW_HEADINGS = [
   [1500, 100],
 ];
 
-function harrowGap() {
-  const random = stream(20417);
+/** The road itself, without the errors of a planner: grade, elevation and positions each STEP_M. */
+function harrowRoad() {
   const grade = lay(
     HARROW_GRADES.map(([length, pct]) => [length, pct / 100]),
     110,
@@ -158,7 +158,11 @@ function harrowGap() {
   const elevation = integrate(grade, 96);
   const headings = [...HARROW_HEADINGS, [4000, 92]];
   const way = plan(headings, 90, { lat: 51.9, lon: -14.6 });
-  const total_m = grade.length * STEP_M;
+  return { grade, elevation, way, total_m: grade.length * STEP_M };
+}
+
+function harrowGap({ elevation, way, total_m }) {
+  const random = stream(20417);
   const viaduct = { from: 9300, to: 9560, depth: 31 };
   const gap = { from: 23150, to: 23830 };
 
@@ -211,6 +215,69 @@ ${segment(rows.slice(split))}
 `;
 }
 
+/**
+ * The same road ridden by hand, and logged once a second: an invented rider on an invented 125, who looks at the speedometer now
+ * and then, runs out of power on the pass, waits at the crossing of Nether Tarrow, and whose receiver sees nothing in the wood.
+ */
+function harrowRidden({ grade, way, total_m }) {
+  const random = stream(5113);
+  const [step_s, mass_kg, gravity] = [0.1, 226, 9.81];
+  const wood = { from: 10900, to: 11420 };
+  const crossing = { at: 20860, wait_s: 25 };
+  const gust = coloured(random, 40000, step_s, 0.55, 18); // what the rider feels like, m/s
+  const east = coloured(random, 4000, 1, 1.1, 45);
+  const north = coloured(random, 4000, 1, 1.1, 45);
+  const metresPerDeg = (EARTH_RADIUS_M * Math.PI) / 180;
+  const rows = ['time_s,lat_deg,lon_deg,throttle_pct'];
+  let [at, speed, throttle, wanted, change, waited, time] = [30, 9, 0.3, 0.3, 0, 0, 0];
+  for (let tick = 0; at < total_m - 60; tick++) {
+    const index = Math.min(Math.floor(at / STEP_M), grade.length - 1);
+    const turn_deg =
+      way.heading[Math.min(index + 15, grade.length - 1)] - way.heading[Math.max(index - 5, 0)];
+    const radius = (20 * STEP_M) / Math.max(1e-6, Math.abs((turn_deg * Math.PI) / 180));
+    const posted = at > 25360 ? 50 / 3.6 : 60 / 3.6;
+    const fast = Math.min(posted + gust[tick % gust.length], Math.sqrt(2.6 * radius));
+    const ahead = crossing.at - at;
+    const stopping = waited < crossing.wait_s && ahead > -9 && speed * speed >= 2 * 1.4 * Math.max(0, ahead);
+    // a hand moves each 0.7 s, for where the speed is going, and not at all for a small error
+    if (tick % 7 === 0) {
+      const error = fast - (speed + 1.8 * change);
+      if (Math.abs(error) > 0.3) wanted = Math.min(1, Math.max(0, wanted + 0.045 * error));
+      if (speed > fast + 2) wanted = 0;
+    }
+    if (stopping) wanted = 0;
+    throttle += (wanted - throttle) * 0.25;
+    const slope = Math.atan(grade[index]);
+    const most = Math.min(430, 7900 / Math.max(speed, 3));
+    const push = -55 + throttle * (most + 55);
+    const drag = 0.36 * speed * speed + mass_kg * gravity * (0.014 * Math.cos(slope) + Math.sin(slope));
+    const brake = stopping ? 1.4 : speed > fast + 1.5 ? Math.min(2.5, 0.8 * (speed - fast - 1.5)) : 0;
+    change = (push - drag) / (mass_kg + 12);
+    if (brake > 0) change = Math.min(change, 0) - brake;
+    speed = Math.max(0, speed + change * step_s);
+    if (stopping && speed < 0.3) {
+      speed = 0;
+      waited += step_s;
+      change = 0;
+      if (waited >= crossing.wait_s) [wanted, throttle, speed] = [0.35, 0.3, 0.5];
+    }
+    if (tick % 10 === 0 && !(at > wood.from && at < wood.to)) {
+      const share = at / STEP_M - index;
+      const place = (values) => values[index] + share * (values[index + 1] - values[index]);
+      const k = tick / 10;
+      const lat = place(way.lat) + (north[k] + 0.35 * normal(random)) / metresPerDeg;
+      const lon =
+        place(way.lon) +
+        (east[k] + 0.35 * normal(random)) / (metresPerDeg * Math.cos((51.9 * Math.PI) / 180));
+      rows.push(`${time},${lat.toFixed(6)},${lon.toFixed(6)},${(100 * throttle).toFixed(1)}`);
+    }
+    if (tick % 10 === 9) time++;
+    at += speed * step_s;
+  }
+  rows.splice(700, 0, rows[700]); // a doubled row, as when a logger stutters
+  return rows;
+}
+
 // Tarrow Saltings: a causeway road round the marsh, flat, in the wind from the sea.
 function tarrowSaltings() {
   const random = stream(7731);
@@ -261,7 +328,12 @@ function tarrowSaltings() {
 
 const invented =
   'Invented road in the made-up county of Tarrow; the coordinates lie in the open sea. Not a real place.';
-const harrow = harrowGap();
+const harrowAsBuilt = harrowRoad();
+const harrow = harrowGap(harrowAsBuilt);
+const ridden = harrowRidden(harrowAsBuilt);
 writeFileSync(join(root, 'routes/harrow-gap.gpx'), gpx('Harrow Gap', invented, harrow, 1180));
 writeFileSync(join(root, 'routes/tarrow-saltings.csv'), tarrowSaltings());
-console.log(`routes/harrow-gap.gpx: ${harrow.length} points; routes/tarrow-saltings.csv`);
+writeFileSync(join(root, 'routes/harrow-gap-ridden.csv'), `${ridden.join('\n')}\n`);
+console.log(
+  `routes/harrow-gap.gpx: ${harrow.length} points; routes/harrow-gap-ridden.csv: ${ridden.length - 1}; routes/tarrow-saltings.csv`,
+);
