@@ -37,13 +37,52 @@ export const OPTIONS = {
     value: 'FILE',
     about: 'also write the requirements as JUnit XML, for build servers; the name ends in .xml',
   },
+  kind: {
+    type: 'string',
+    value: 'KIND',
+    choices: ['coast-down', 'step', 'ride'],
+    about: 'what the logs are of: coast-down, step or ride; left out, their columns tell',
+  },
+  vehicle: {
+    type: 'string',
+    value: 'FILE',
+    about: 'vehicle file that gives what is not measured and takes what is, in a copy',
+  },
+  case: {
+    type: 'string',
+    value: 'CASE',
+    about: 'case whose road and vehicle a ride is held against',
+  },
+  fit: {
+    type: 'string',
+    value: 'NAMES',
+    about:
+      'numbers to fit to a ride, with commas between: cda_m2, crr, mass_kg; cda_m2,crr where it is left out',
+  },
+  'mass-kg': { type: 'string', value: 'KG', about: 'mass of vehicle, rider and load in the logs' },
+  'rotating-kg': {
+    type: 'string',
+    value: 'KG',
+    about: 'equivalent mass of what turns with the wheels',
+  },
+  'air-temperature-c': { type: 'string', value: 'C', about: 'temperature of the air at the road' },
+  'air-pressure-hpa': {
+    type: 'string',
+    value: 'HPA',
+    about: 'pressure of the air at the road, not brought to sea level',
+  },
+  'air-density-kg-m3': {
+    type: 'string',
+    value: 'KG/M3',
+    about: 'density of the air, in place of temperature and pressure',
+  },
   help: { type: 'boolean', short: 'h', about: 'print this help' },
 } as const satisfies Readonly<Record<string, OptionRow>>;
 
 export type OptionName = keyof typeof OPTIONS;
 
 interface CommandRow {
-  /** Names of its operands in the help; all are required. */
+  /** Names of its operands in the help; all are required. The last one may be given more than once where it ends in three dots. */
   readonly operands: readonly string[];
   readonly about: string;
   /** What more there is to know: paragraphs of the command's own help. */
@@ -87,6 +126,34 @@ export const COMMANDS = {
     options: ['out', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold compare out/harrow-gap out/at-70 -o out/faster-or-not',
   },
+  identify: {
+    operands: ['LOG...'],
+    about: 'turn logs of a coast-down, a step test or a ride into numbers of the vehicle',
+    details: [
+      'A log is a CSV file whose header names the units: time_s and speed_kmh or speed_m_s; then elevation_m or grade_pct, headwind_m_s, distance_m where they were measured; run and direction (there or back) where a file holds several runs. throttle_pct makes it a step test, and with a place (distance_m, elevation_m, lat_deg and lon_deg) or with wheel_power_kw a ride.',
+      'Coast-downs, runs both ways from high speed to below half of it, give the drag area and the rolling coefficient with their 95 % intervals; a step of the throttle gives gain, time constant and delay; a ride with its power or throttle is held against the vehicle, segment by segment, and corrects it. Logs that are too thin are refused, with what to measure.',
+      'Writes the file that --out names (out/<name of the log>/vehicle.yaml where it is left out), a vehicle file that ridgehold run takes, each number with where it is from, and beside it identify.html and identify.json. Only a file that ridgehold wrote, and nobody changed since, is written over.',
+      'Exit status: 0 done; 2 the input was refused; 70 a fault of the program.',
+    ],
+    options: [
+      'out',
+      'kind',
+      'vehicle',
+      'case',
+      'fit',
+      'mass-kg',
+      'rotating-kg',
+      'air-temperature-c',
+      'air-pressure-hpa',
+      'air-density-kg-m3',
+      'json',
+      'quiet',
+      'units',
+      'help',
+    ],
+    example:
+      'ridgehold identify there.csv back.csv --vehicle proving-125.yaml --air-temperature-c 12 --air-pressure-hpa 1004 -o measured/proving-125.yaml',
+  },
   new: {
     operands: ['DIR'],
     about: 'write a commented starter case into a new folder',
@@ -122,7 +189,9 @@ export type Values<Name extends CommandName> = {
   readonly [Option in (typeof COMMANDS)[Name]['options'][number]]: ValueOf<Option>;
 };
 
-type Texts<Operands extends readonly unknown[]> = { readonly [Index in keyof Operands]: string };
+type Texts<Operands extends readonly unknown[]> = Operands extends readonly [`${string}...`]
+  ? readonly [string, ...string[]]
+  : { readonly [Index in keyof Operands]: string };
 
 /** A command line that was understood. */
 export interface Invocation<Name extends CommandName> {

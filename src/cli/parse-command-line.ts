@@ -57,7 +57,7 @@ function parseCommand(command: CommandName, argv: readonly string[]): Request {
       `${operands[positionals.length]} is missing`,
       `ridgehold ${command} ${operands.join(' ')}`,
     );
-  if (positionals.length > operands.length)
+  if (positionals.length > operands.length && !operands.at(-1)?.endsWith('...'))
     throw refuse(
       'extra-operand',
       `'${positionals[operands.length]}' is one too many`,

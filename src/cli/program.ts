@@ -16,6 +16,7 @@ const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> }
   run: async () => (await import('./run-command.ts')).runCommand,
   road: async () => (await import('./road-command.ts')).roadCommand,
   compare: async () => (await import('./compare-command.ts')).compareCommand,
+  identify: async () => (await import('./identify-command.ts')).identifyCommand,
   new: async () => (await import('./new-command.ts')).newCommand,
   schema: async () => (await import('./schema-command.ts')).schemaCommand,
 };

@@ -26,7 +26,7 @@ const STAGE = /^\.ridgehold-(\d+)$/;
 const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg)$/i;
 
 /** The marks of whole results of the commands, which may share a folder. */
-const MARKS = ['summary.json', 'road.json', 'compare.json'];
+const MARKS = ['summary.json', 'road.json', 'compare.json', 'identify.json'];
 
 /**
  * Refuses, before the work begins, a folder that could not be written: nothing is changed.
@@ -84,9 +84,14 @@ const notFolder = (here: string, folder: string): string =>
  * Then the files that a former mark lists, and the new one does not, are removed.
  *
  * @param files the mark last
+ * @param cleared names of those that the caller has found to be ours, or that are not there
  * @throws InputError `disk-full`, `not-permitted`, `not-a-folder`, `not-a-file`, `foreign-file`
  */
-export function writeResult(folder: string, files: readonly TextFile[]): void {
+export function writeResult(
+  folder: string,
+  files: readonly TextFile[],
+  cleared: readonly string[] = [],
+): void {
   let made: string | undefined;
   within(folder, () => {
     made = makeFolder(folder);
@@ -96,7 +101,7 @@ export function writeResult(folder: string, files: readonly TextFile[]): void {
     for (const { name } of files) refuseFolder(folder, name);
     refuseForeign(
       folder,
-      files.map(({ name }) => name),
+      files.map(({ name }) => name).filter((name) => !cleared.includes(name)),
     );
     const mark = files.at(-1)?.name ?? '';
     const abandoned = abandonedStages(folder);

@@ -63,7 +63,7 @@ function coasting(log: LoggedRun, direction: Direction): CoastRun {
 
 function faultsOfRun({ file, name, time, speed, elevation, grade }: CoastRun): Problem[] {
   const place = { file };
-  const which = name === file ? 'the run' : name.slice(file.length + 1);
+  const which = / run (.+)$/.exec(name)?.[0].trim() ?? 'the run';
   if (time.length < FEWEST_SAMPLES)
     return [
       {

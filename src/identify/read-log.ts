@@ -10,7 +10,7 @@ const MOST_ROWS = 1_000_000;
 /** A stretch of a log without a break, in SI. Null columns: the log has none. */
 export interface LoggedRun {
   readonly file: string;
-  /** The file's name, and the run's where the file has several. */
+  /** The file's name without its folders, and the run's where the file has several. */
   readonly name: string;
   /** Line of each row in the file. */
   readonly line: Int32Array;
@@ -54,6 +54,7 @@ export function readLog(text: string, file: string): readonly LoggedRun[] {
       allowed: `up to ${MOST_ROWS}; thinned to some 10 rows a second it is as good`,
     });
   const columns = columnsOf(table, file);
+  const base = file.split(/[\\/]/).at(-1) ?? file;
   const runs = boundsOf(table, file).map(({ from, to, name }): LoggedRun => {
     if (to - from < 2) throw tooShort(file, table.line[from], to - from, name);
     const part = (field: LogField): Float64Array | null => columns(field)?.slice(from, to) ?? null;
@@ -61,7 +62,7 @@ export function readLog(text: string, file: string): readonly LoggedRun[] {
     const time = part('time')!;
     const run: LoggedRun = {
       file,
-      name: name === null ? file : `${file} run ${name}`,
+      name: name === null ? base : `${base} run ${name}`,
       line,
       direction: directionOf(table, from, to, file),
       heading: meanHeading(part('heading')),

@@ -16,6 +16,8 @@ export interface GivenNumber {
 
 interface Whole {
   readonly toolVersion: string;
+  /** Names of the logs, without their folders. */
+  readonly logs: readonly string[];
   /** Logs first, then the vehicle or the case with its vehicle. */
   readonly inputs: readonly InputFile[];
   readonly given: readonly GivenNumber[];

@@ -78,7 +78,7 @@ function identifyCoastDown(
   );
   const measured = measuredForm(fit);
   const provenance = [
-    `Measured by ridgehold identify from ${counted(fit.runs.length, 'coast-down run')} in ${fileNames(log, request)}:`,
+    `Measured by ridgehold identify from ${counted(fit.runs.length, 'coast-down run')} in ${logNames(request).join(', ')}:`,
     `cda_m2 ${numberWords(fit.cda, 'm2')}`,
     `crr ${numberWords(fit.crr, '')}`,
     `correlation ${fit.correlation.toFixed(2)}; air ${air.air.density.toFixed(3)} kg/m3 (${air.words}), loaded mass ${masses.mass.value} kg (${masses.mass.from})`,
@@ -88,6 +88,7 @@ function identifyCoastDown(
   return {
     kind: 'coast-down',
     toolVersion: TOOL_VERSION,
+    logs: logNames(request),
     inputs: log.files,
     given: [masses.mass, masses.rotating, ...air.given],
     warnings,
@@ -109,12 +110,8 @@ function identifyCoastDown(
   };
 }
 
-/** Names without the folders that an absolute path would tell. */
-const fileNames = (log: InputLog, { logs }: IdentifyRequest): string =>
-  log.files
-    .slice(0, logs.length)
-    .map(({ name }) => name.split(/[\\/]/).at(-1) ?? name)
-    .join(', ');
+const logNames = ({ logs }: IdentifyRequest): readonly string[] =>
+  logs.map((name) => name.split(/[\\/]/).at(-1) ?? name);
 
 function numberWords({ value, standardError, low, high }: Estimate, unit: string): string {
   const digits = (x: number): string => String(Number(x.toPrecision(4)));

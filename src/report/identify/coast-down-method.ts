@@ -1,0 +1,20 @@
+import { type Html, html } from '../html.ts';
+
+/** 6: how a coast-down is turned into numbers, and what that cannot say. */
+export const coastDownMethod = (): Html => html`<dl class="equations">
+<dt>(m + m<sub>r</sub>) (v₁² − v₂²) / 2 − m g Δz = Crr m g ∫ cos θ ds + CdA ½ ρ ∫ v<sub>a</sub> (v + w) ds</dt>
+<dd>The balance of energy between two moments of a run; m all that rolls, m<sub>r</sub> the equivalent mass of what turns, w the headwind. It is linear in CdA and Crr, and nothing is differentiated (integral form of SAE J1263 and ISO 10521-1, from memory; law of motion: G. D. Thompson, The Vehicle Road Load Problem, US EPA).</dd>
+<dt>pieces</dt>
+<dd>Each run is cut into up to twelve pieces; both sides are averaged over a piece and neighbours subtracted, which keeps the equation exact and averages the noise of the speed. Slower than 9 km/h is left out. Integrals by parabolas through three samples.</dd>
+<dt>wind and grade</dt>
+<dd>Where they were not logged, one steady wind along the road and one steady grade are estimated from the difference between the ways; the square of the wind, which stays behind in the mean of both ways, is in the air term by Gauss-Newton steps. Crosswind is not seen: it adds to CdA.</dd>
+<dt>standard errors</dt>
+<dd>Each run is one piece of evidence, whatever the colour of its residuals: covariance by runs (K.-Y. Liang, S. L. Zeger, Biometrika 73 (1986) 13-22, with the small-sample factor), intervals by Student's t with as many degrees of freedom as there are runs, less one, or less two where wind or grade came from the difference of the ways. Of 1000 simulated coast-downs with noise, 93 to 97 % of the intervals hold the truth: a test of the program. The correlation is that of the least-squares fit.</dd>
+</dl>
+<h3 id="method-cautions">Cautions</h3>
+<ul>
+<li>An interval has the scatter of these runs in it, and no error that they share: mass, density, scale of the speed sensor, posture, tyre pressure and temperature.</li>
+<li>CdA is that of the air as it came, wind axis: with crosswind it is more than in still air.</li>
+<li>In neutral, bearings and output drag are in Crr, and are not to be counted again in the driveline.</li>
+<li>A simulation with these numbers is no approval to ride. Type-approval rules, local law and a qualified person's judgement come first.</li>
+</ul>`;

@@ -1,0 +1,180 @@
+import type { Estimate } from '../../identify/estimate.ts';
+import { scaledEstimate } from '../../identify/estimate.ts';
+import type { RoadLoadForm } from '../../identify/reference-conditions.ts';
+import type { CoastDownIdentification } from '../../run/identification.ts';
+import { STANDARD_GRAVITY } from '../../units/constants.ts';
+import { toNPerKmh2, toPct } from '../../units/convert.ts';
+import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
+import { type Html, html } from '../html.ts';
+import { estimateCells } from '../model/estimate-words.ts';
+import { PAGE_PAINT } from '../paint.ts';
+import { fixed, type SpeedUnit, signed, speedText, timeText } from '../quantity.ts';
+import { chartFigure } from '../sections/chart-figure.ts';
+import type { Section } from '../sections/section.ts';
+import { table } from '../sections/table.ts';
+import { coastDownMethod } from './coast-down-method.ts';
+import { givenTable } from './given-table.ts';
+
+/** Sections 2 to 6 of a coast-down. */
+export function coastDownSections(result: CoastDownIdentification, speed: SpeedUnit): readonly Section[] {
+  return [
+    { id: 'estimates', number: 2, title: 'The estimates', body: estimatesBody(result) },
+    { id: 'residuals', number: 3, title: 'What the fit leaves', body: residualsBody(result, speed) },
+    { id: 'forms', number: 4, title: 'As regulations write it', body: formsBody(result) },
+    { id: 'next', number: 5, title: 'What to measure next', body: nextBody(result, speed) },
+    { id: 'method', number: 6, title: 'How it was computed', body: coastDownMethod() },
+  ];
+}
+
+const COLUMNS = [
+  { head: 'quantity' },
+  { head: 'value', number: true },
+  { head: 'standard error', number: true },
+  { head: '95 % interval', number: true },
+  { head: 'unit' },
+];
+
+function estimatesBody(result: CoastDownIdentification): Html {
+  const { fit } = result;
+  const row = (
+    name: string,
+    estimate: Estimate | null,
+    unit: string,
+    isSigned = false,
+  ): readonly string[][] => (estimate === null ? [] : [[name, ...estimateCells(estimate, isSigned), unit]]);
+  return html`${table('Estimates', COLUMNS, [
+    ...row('drag area CdA', fit.cda, 'm²'),
+    ...row('rolling coefficient Crr', fit.crr, '1'),
+    ...row('wind along the road', fit.wind, 'm/s', true),
+    ...row('grade of the road', fit.grade === null ? null : scaledEstimate(fit.grade, toPct(1)), '%', true),
+    ...row('growth of Crr with speed', fit.growth, 's/m', true),
+  ])}
+<p class="note">CdA and Crr are tied with a correlation of ${fixed(fit.correlation, 2)}; the intervals have ${fit.degrees} degrees of freedom.${fit.wind !== null && ' The wind counts against the way there, the grade uphill on it: both come from the difference between the ways.'} The growth of Crr is a check alone: it is not in the model, and its interval should take in zero.</p>
+<h3>Taken for granted</h3>
+${givenTable(result.given)}
+<p class="note">No interval above has an error of these in it. CdA goes with the mass over the density, Crr hardly with either: 1 % of mass is 1 % of CdA.</p>`;
+}
+
+function residualsBody({ fit, logs }: CoastDownIdentification, speed: SpeedUnit): Html {
+  const { residuals, runs, setting } = fit;
+  const pointsOf = (direction: string, of: Float64Array) =>
+    Array.from(of, (force, i) => [speed.of(residuals.speed[i]!), force] as const).filter(
+      (_, i) => runs[residuals.run[i]!]!.direction === direction,
+    );
+  const measured = (of: Float64Array): XySeries[] => [
+    { name: 'there', mark: 'dot', colour: 1, points: pointsOf('there', of) },
+    { name: 'back', mark: 'ring', colour: 2, points: pointsOf('back', of) },
+  ];
+  const fastest = residuals.speed.reduce((a, b) => Math.max(a, b), 0);
+  const slowest = residuals.speed.reduce((a, b) => Math.min(a, b), fastest);
+  const line: XySeries = {
+    name: 'fitted: m g Crr + ½ ρ CdA v²',
+    mark: 'line',
+    colour: 0,
+    points: Array.from({ length: 41 }, (_, i) => {
+      const v = slowest + ((fastest - slowest) * i) / 40;
+      const air = (setting.airDensity / 2) * fit.cda.value * v * v;
+      return [speed.of(v), fit.crr.value * setting.mass * STANDARD_GRAVITY + air] as const;
+    }),
+  };
+  const x = `speed / ${speed.axis}`;
+  const force = [line, ...measured(residuals.force)];
+  return html`${xyKey(force, PAGE_PAINT)}
+${chartFigure(
+  'force',
+  (canvas) =>
+    xyChart(
+      {
+        title: 'Road load over speed: measured and fitted',
+        desc: `${residuals.force.length} measured forces between ${speedText(slowest, speed, 0)} and ${speedText(fastest, speed, 0)}, with the fitted curve.`,
+      },
+      { x, y: 'road load / N', series: force, height: 240, fromZero: true },
+      canvas,
+    ),
+  'Mean force that slowed the vehicle over each piece of a run, in still air on the level: what was measured, less the wind and the slope.',
+)}
+${chartFigure(
+  'left',
+  (canvas) =>
+    xyChart(
+      {
+        title: 'Residuals over speed',
+        desc: `Measured less fitted force, root mean square ${fixed(fit.rmsForce, 1)} N.`,
+      },
+      { x, y: 'measured less fitted / N', series: measured(residuals.residual), height: 170, fromZero: true },
+      canvas,
+    ),
+  `A cloud around zero without a bend is what should be here; root mean square ${fixed(fit.rmsForce, 1)} N. One way above the other means a wind or a slope that changed.`,
+)}
+${table(
+  'Runs',
+  [
+    { head: 'run' },
+    { head: 'way' },
+    { head: 'from', number: true },
+    { head: 'to', number: true },
+    { head: 'time', number: true },
+    { head: 'samples', number: true },
+    { head: 'rms left / N', number: true },
+    { head: 'mean left / N', number: true },
+  ],
+  runs.map((run) => [
+    shortName(run.name, logs),
+    run.direction,
+    speedText(run.from, speed, 0),
+    speedText(run.to, speed, 0),
+    timeText(run.duration),
+    String(run.samples),
+    fixed(run.rmsForce, 1),
+    signed(run.meanForce, 1),
+  ]),
+)}`;
+}
+
+/** Of a single log the runs alone. */
+const shortName = (name: string, logs: readonly string[]): string =>
+  logs.length === 1 && name.startsWith(`${logs[0]} `) ? name.slice(logs[0]!.length + 1) : name;
+
+function formsBody({ measured, atReference, air }: CoastDownIdentification): Html {
+  const row = (name: string, { f0, f2, airDensity }: RoadLoadForm): readonly string[] => {
+    const curve = scaledEstimate(f2, toNPerKmh2(1));
+    const [first, firstError] = estimateCells(f0);
+    const [second, secondError] = estimateCells(curve);
+    return [name, first, firstError, '0', second, secondError, fixed(airDensity, 3)];
+  };
+  return html`<p>F = f0 + f1 V + f2 V², V in km/h, in still air on the level, at the mass that rolled; f1 is nothing in the two-term form of motorcycle regulations.</p>
+${table(
+  'Road load as regulations write it',
+  [
+    { head: 'air' },
+    { head: 'f0 / N', number: true },
+    { head: 'standard error', number: true },
+    { head: 'f1 / (N per km/h)', number: true },
+    { head: 'f2 / (N per (km/h)²)', number: true },
+    { head: 'standard error', number: true },
+    { head: 'density / (kg/m³)', number: true },
+  ],
+  [row('as measured', measured), row('at 293 K and 100 kPa', atReference)],
+)}
+<p class="note">Reference conditions and correction of UN GTR No. 2, annex 7 (also Regulation (EU) 134/2014), from memory: f0 (1 + 0.006 (T − 293 K)), f2 (T / 293 K) (100 kPa / p). ${air.temperature === null ? 'Only the density was given: f0 is not corrected.' : 'Dry air.'} The vehicle file has CdA and Crr as measured: the air of a case makes its own density from them.</p>`;
+}
+
+function nextBody({ fit, warnings }: CoastDownIdentification, speed: SpeedUnit): Html {
+  const fastest = fit.runs.reduce((most, { from }) => Math.max(most, from), 0);
+  const slowest = fit.runs.reduce((least, { to }) => Math.min(least, to), fastest);
+  const has = (code: string) => warnings.some((warning) => warning.code === code);
+  const items = [
+    has('few-runs') &&
+      `Runs until there are five each way: with n runs the intervals go about as 1 / √n, and faster at the start, where Student's t is large (now ${fit.degrees} degrees of freedom).`,
+    fastest < 3 * slowest &&
+      `A wider range of speeds than ${speedText(slowest, speed, 0)} to ${speedText(fastest, speed, 0)}: a ratio of three or more unties CdA from Crr.`,
+    fit.wind !== null &&
+      `A logged wind (headwind_m_s) or calmer air: here one steady wind of ${signed(fit.wind.value, 1)} m/s along the road was estimated, and what it changed from run to run is in the intervals.`,
+    fit.grade !== null &&
+      'The height of the road (elevation_m), where it is not an even slope: one steady grade was estimated.',
+    has('air-assumed') && 'Temperature and pressure of the air at the road.',
+    'The mass as ridden, on a scale, and the rotating mass of wheels, sprocket and disc, by their inertia over the radius squared.',
+    'A second day: the scatter between days is not in these intervals.',
+  ].filter((item) => item !== false);
+  return html`<ul>${items.map((item) => html`<li>${item}</li>`)}</ul>`;
+}
