@@ -1,4 +1,5 @@
 import { InputError } from '../problems/input-error.ts';
+import { checkHold } from './check-hold.ts';
 import type { LoopPlan } from './plan.ts';
 
 /** Greatest number of samples of one run. */
@@ -8,7 +9,7 @@ const MOST_BANDS = 4;
 /**
  * Refuses a plan that cannot be run at all. Values of road and vehicle are the matter of those who made them.
  *
- * @throws InputError `road-too-short`, `out-of-range`
+ * @throws InputError `road-too-short`, `out-of-range`, and what `checkHold` throws
  */
 export function checkPlan(plan: LoopPlan): void {
   const { road, hold } = plan;
@@ -40,6 +41,7 @@ export function checkPlan(plan: LoopPlan): void {
     if (gearbox.kind === 'clutch' && gears[gear] === undefined)
       refuse(`rider.shifts[${i}].gear`, `gear ${gear}`, `0 to ${gears.length - 1}`);
   if (plan.timeLimit / sample > MOST_SAMPLES) refuse('timeLimit', `${plan.timeLimit} s`, '1e9 samples');
+  checkHold(plan);
   if (plan.bands.length > MOST_BANDS) refuse('bands', `${plan.bands.length} bands`, `at most ${MOST_BANDS}`);
 }
 

@@ -1,23 +1,18 @@
 import { BUS_LIMITED, BUS_MEASURED, BUS_TARGET } from '../control/bus.ts';
 import { holdRules, RULES } from '../control/hold-rules.ts';
 import { setTarget } from '../control/set-point.ts';
-import type { OverrideRule } from '../control/supervisor-setup.ts';
 import { engageGear } from './engage-gear.ts';
-import { FAULTS, withFaultySensor } from './faulty-sensor.ts';
+import { FAULTS } from './faulty-sensor.ts';
 import { RESUME_RAMP } from './gearbox.ts';
 import type { HoldLog } from './hold-log.ts';
+import { holdMachines } from './hold-machines.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import { stationAt } from './places.ts';
 import type { LoopPlan, RiderAct, RoutePlace } from './plan.ts';
 import type { HoldEventCause } from './result.ts';
-import { handController } from './ride-by-hand.ts';
 import { lockThrottle, markLock } from './settle.ts';
-import { supervisedController } from './supervised-controller.ts';
 import { closedThrottle } from './throttle-in-hand.ts';
-
-/** A controller without a unit knows nothing of the grip. */
-const NO_OVERRIDE_RULE: OverrideRule = { integral: 'runs', reentry: 0 };
 
 /** Who has the throttle, in a run under way: what happens to hold between two chunks of the kernel. */
 export interface Hold {
@@ -40,8 +35,8 @@ export interface Hold {
 /**
  * The supervisor and the rider of a journey that begins at the machine's present state.
  *
- * At one sample things happen in this order: planned changes of the set speed; the rider's shifts; what the controller's
- * step of the sample before has found (a rule that ends hold, the speed back after an override); the end of a fault, and
+ * At one sample things happen in this order: planned changes of the set speed; what the controller's step of the sample
+ * before has found (a rule that ends hold, the speed back after an override); the rider's shifts; the end of a fault, and
  * its beginning; grip or clutch let go; acts that are due, in the order of the plan; the rider's own resume. Then the
  * sensor measures, and what has the throttle steps. An act is taken where the command that answers it moves the
  * throttle; while the rider shifts, acts wait, and a shift ends an override.
@@ -52,6 +47,7 @@ export interface Hold {
  *   override while hold is on
  *   cancel   while hold is off: nothing happens
  *   brake    while hold is off: brakes to the new speed
+ *   ride     while hold is off: goes on at the new speed
  *   clutch   pulled while hold is off too
  *
  * What is asked of hold in another state is an event `refused` by the rider, and has no effect. After a rule has ended
@@ -65,25 +61,11 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
   const { acts = [], resumesAfter = null } = plan.rider;
   const sample = p[at.P_SAMPLE];
   const locked = plan.controller.kind === 'locked';
-  const winds = plan.vehicle.actuator.engagesFrom === 'rest';
+  const servo = plan.vehicle.actuator.engagesFrom === 'rest' ? servoAt(machine) : null;
   const rules = supervisor === null || locked ? null : holdRules(supervisor, sample, at.RULES_MEMORY);
   const resumeRamp = supervisor === null ? (machine.controller.ramp ?? RESUME_RAMP) : supervisor.resumeRamp;
-  const sees = (of: Machine): Machine =>
-    faults.length === 0 ? of : { ...of, controller: withFaultySensor(of.controller) };
-  const held = sees({
-    ...machine,
-    controller: supervisedController(machine.controller, rules, supervisor?.override ?? NO_OVERRIDE_RULE),
-  });
-  // Under the rider's hand the brake is for what the hand holds.
-  const handP = p.slice();
-  const byHand = sees({ ...machine, p: handP, controller: handController(machine, plan) });
-  const shifted = sees(ridden);
-  const inHand = (): Machine => {
-    handP.set(p);
-    handP[at.P_BRAKES_ABOVE] = 0;
-    return byHand;
-  };
   p[at.P_HOLD] = 1;
+  const inForce = holdMachines(machine, ridden, plan, rules);
 
   const ticksOf = (time: number): number => Math.ceil(time / sample - 1e-9);
   const placesOf = (of: readonly { readonly at: RoutePlace }[]): number[] =>
@@ -109,7 +91,7 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
     s[at.HAND_RATE] = 0;
   };
   const takeOver = (takes: number, cause: HoldEventCause): void => {
-    if (isOff() && winds) wind(machine);
+    if (isOff() && servo !== null) servo(closedThrottle(p), -1);
     s[at.HOLD_MODE] = at.ENGAGED;
     s[at.HOLD_TAKES] = takes;
     s[at.HOLD_RESUMES] = 0;
@@ -122,7 +104,10 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
     log.open(takes === at.ENGAGES ? 'engaged' : 'resumed', cause);
   };
   const endOverride = (cause: HoldEventCause): void => {
-    if (s[at.HOLD_MODE] === at.OVERRIDDEN) log.note('override_ended', cause);
+    if (s[at.HOLD_MODE] === at.OVERRIDDEN) {
+      log.note('override_ended', cause);
+      servo?.(s[at.OWN_COMMAND], 1);
+    }
     s[at.HOLD_MODE] = at.ENGAGED;
   };
 
@@ -157,6 +142,7 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
     if (s[at.HOLD_MODE] === at.OVERRIDDEN) {
       log.note('override_ended', 'rider');
       s[at.HOLD_MODE] = at.RE_ENTERING;
+      servo?.(s[at.OWN_COMMAND], 1);
     } else if (s[at.HOLD_MODE] === at.DECLUTCHED) {
       engageGear(machine, s[at.NEXT_GEAR]);
       s[at.HOLD_MODE] = at.BY_HAND;
@@ -231,6 +217,11 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
         s[at.HAND_SPEED] = Math.min(does.to, s[at.SPEED]);
         s[at.HAND_RATE] = does.deceleration;
         return;
+      case 'ride':
+        end(at.BY_HAND, by('rider'));
+        s[at.HAND_SPEED] = does.to;
+        s[at.HAND_RATE] = -does.acceleration;
+        return;
       case 'clutch':
         pullClutch(does.for, by('clutch'));
         return;
@@ -277,7 +268,7 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
   return {
     takeFound,
     act,
-    machine: (shifting) => (isOff() ? inHand() : shifting ? shifted : held),
+    machine: inForce,
     declutched: () => s[at.HOLD_MODE] === at.DECLUTCHED,
     ticksLeft,
     nextPlace,
@@ -287,9 +278,10 @@ export function holdOf(machine: Machine, ridden: Machine, plan: LoopPlan, log: H
   };
 }
 
-/** The servo at its lower stop, all of its slack before it, and the throttle as the grip leaves it: closed. */
-function wind({ s, p }: Machine): void {
-  const closed = closedThrottle(p);
-  s[at.ACTUATOR] = closed - p[at.P_PLAY];
-  s[at.PLATE] = closed;
+/** Puts the servo beside the grip where it holds a throttle: 1, pulling at it; -1, all of its slack before it. */
+function servoAt({ s, p }: Machine): (throttle: number, side: number) => void {
+  return (throttle, side) => {
+    s[at.ACTUATOR] = throttle + side * p[at.P_PLAY];
+    s[at.PLATE] = throttle;
+  };
 }
