@@ -117,9 +117,54 @@ it.each<[string, Path, Editable, string]>([
   ['a:\n  x: 1 # one\n# after\nb: 2\n', ['a', 'y'], 2, 'a:\n  x: 1 # one\n  y: 2\n# after\nb: 2\n'],
   ['- {a: 1}\n- {a: 2}\n', [1, 'a'], 3, '- {a: 1}\n- {a: 3}\n'],
   ['a: old\n', ['a'], 'x: y', 'a: "x: y"\n'],
+  ['a: [1, 2] # two\nb: 3\n', ['a', 2], 3, 'a: [1, 2, 3] # two\nb: 3\n'],
+  [
+    'a: [\n  {n: x},\n  {n: y}, # last\n]\n',
+    ['a', 2],
+    { n: 'z' },
+    'a: [\n  {n: x},\n  {n: y}, {n: z}, # last\n]\n',
+  ],
+  [
+    'a:\n- n: x\n  k: 1   # one\n\n# end\nb: 3',
+    ['a', 1],
+    { n: 'y' },
+    'a:\n- n: x\n  k: 1   # one\n- {n: y}\n\n# end\nb: 3',
+  ],
+  ['a:\r\n    - {n: x}', ['a', 1], { n: 'y' }, 'a:\r\n    - {n: x}\r\n    - {n: y}'],
+  ['{"a": [{"n": "x"}]}', ['a', 1], { n: 'y', k: [1] }, '{"a": [{"n": "x"}, {"n":"y","k":[1]}]}'],
+  ['{"a": {"n": "x"}}', ['a', 'k'], 'y', '{"a": {"n": "x", "k": "y"}}'],
   ['a: {b: {c: 1}}\n', ['a', 'b'], { d: [1, 'two'] }, 'a: {b: {d: [1, two]}}\n'],
 ])('edits %j at %j', (text, path, value, expected) => {
   expect(editCase(text, path, value)).toBe(expected);
+});
+
+it('appends to any list, keeping all that was written', () => {
+  const lists = (value: unknown, path: Path = []): Path[] =>
+    typeof value !== 'object' || value === null
+      ? []
+      : [
+          ...(Array.isArray(value) ? [[...path, value.length]] : []),
+          ...Object.entries(value).flatMap(([key, inner]) =>
+            lists(inner, [...path, Array.isArray(value) ? Number(key) : key]),
+          ),
+        ];
+  fc.assert(
+    fc.property(
+      fc.constantFrom(...TEXTS.filter((text) => lists(parse(text)).length > 0)),
+      fc.nat(),
+      scalar,
+      (text, pick, value) => {
+        const paths = lists(parse(text));
+        const path = paths[pick % paths.length]!;
+        const edited = editCase(text, path, { added: value as Editable });
+        expect(parse(edited)).toEqual(set(parse(text), path, { added: value }));
+        let start = 0;
+        while (start < text.length && text[start] === edited[start]) start++;
+        expect(text.slice(start)).toBe(edited.slice(edited.length - (text.length - start)));
+      },
+    ),
+    { seed: 4, numRuns: 100 },
+  );
 });
 
 it('undoes by editing back', () => {
@@ -130,7 +175,10 @@ it('undoes by editing back', () => {
 it.each<[string, Path, string]>([
   ['a: &x 5\nb: *x\n', ['a'], 'edit-shared'],
   ['a: &x {c: 5}\nb: *x\n', ['b', 'c'], 'edit-no-place'],
-  ['a: [1, 2]\n', ['a', 2], 'edit-no-place'],
+  ['a: [1, 2]\n', ['a', 3], 'edit-no-place'],
+  ['a: []\n', ['a', 0], 'edit-no-place'],
+  ['a: &x [1, 2]\nb: *x\n', ['a', 2], 'edit-shared'],
+  ['a: &x [1, 2]\nb: *x\n', ['b', 2], 'edit-no-place'],
   ['a: 1\n', ['a', 'b'], 'edit-no-place'],
 ])('refuses %j at %j', (text, path, code) => {
   let error: unknown;
