@@ -53,6 +53,18 @@ export function drawPower(
   chunk[at.C_DRAWN] = chunk[at.C_DRAWN] + energy;
 }
 
+/**
+ * Draws for all samples of a chunk at once, where nothing that is drawn from comes back into the motion: a tank, with the
+ * ratio held.
+ *
+ * @param elapsed length of the last sample [s]
+ */
+export function drawOverChunk(machine: Machine, ticks: number, elapsed: number): void {
+  const last = (ticks - 1) * at.L_STRIDE;
+  for (let row = 0; row < last; row += at.L_STRIDE) drawPower(machine, row);
+  if (last >= 0) drawPower(machine, last, elapsed);
+}
+
 /** Puts charge and heat at their start: cold, charged as the plan says, factors to match. */
 export function settleSource({ s, fittings }: Machine): void {
   const f = fittings.source;
@@ -76,39 +88,63 @@ function writeFactors(s: Float64Array, f: Float64Array, asked: number): void {
   s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0, charge);
 }
 
-// Places are held as numbers among numbers: each is made an integer once, where it is read.
+// Places are held as numbers among numbers: each is made an integer once, where it is read. The cell in which the last
+// sample was stands at fixed places with its edges, since the next is mostly in the same one.
 
 /** A line at a charge; its ends hold on; 1 without a line. */
 function shareAt(f: Float64Array, line: number, charge: number): number {
+  if (!(charge >= f[line + fit.LINE_LOW] && charge < f[line + fit.LINE_HIGH])) enterStretch(f, line, charge);
+  return f[line + fit.LINE_SHARE] + f[line + fit.LINE_SLOPE] * (charge - f[line + fit.LINE_CORNER]);
+}
+
+function enterStretch(f: Float64Array, line: number, charge: number): void {
   const count = f[line + fit.LINE_COUNT] | 0;
-  if (count === 0) return 1;
   const corners = line + fit.LINE_CORNERS;
   const shares = corners + count;
-  if (charge <= f[corners]) return f[shares];
-  if (charge >= f[shares - 1]) return f[shares + count - 1];
-  // The inner corners are the edges of the stretches.
-  const i = cellFrom(f, corners + 1, count - 2, charge, f[line + fit.LINE_CELL] | 0);
-  f[line + fit.LINE_CELL] = i;
-  return f[shares + i] + f[shares + count + i] * (charge - f[corners + i]);
+  const slopes = shares + count;
+  let i = 0;
+  while (i < count && charge >= f[corners + i]) i++;
+  // Before the first corner and behind the last one the share of that corner holds on.
+  const corner = Math.max(0, i - 1);
+  f[line + fit.LINE_LOW] = i > 0 ? f[corners + i - 1] : Number.NEGATIVE_INFINITY;
+  f[line + fit.LINE_HIGH] = i < count ? f[corners + i] : Number.POSITIVE_INFINITY;
+  f[line + fit.LINE_CORNER] = f[corners + corner];
+  f[line + fit.LINE_SHARE] = f[shares + corner];
+  f[line + fit.LINE_SLOPE] = i > 0 && i < count ? f[slopes + corner] : 0;
 }
 
 /** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W]. */
 function powerAt(f: Float64Array, shaftSpeed: number, torque: number): number {
-  const columns = f[fit.F_TORQUE_COUNT] | 0;
-  const speeds = f[fit.F_SPEED_COUNT] | 0;
-  const i = cellFrom(f, f[fit.F_SPEEDS] | 0, speeds, shaftSpeed, f[fit.F_SPEED_CELL] | 0);
-  const j = cellFrom(f, f[fit.F_TORQUES] | 0, columns, torque, f[fit.F_TORQUE_CELL] | 0);
-  f[fit.F_SPEED_CELL] = i;
-  f[fit.F_TORQUE_CELL] = j;
-  const cell = (f[fit.F_POWER] | 0) + 4 * (i * (columns + 1) + j);
-  const power = f[cell] + f[cell + 1] * shaftSpeed + torque * (f[cell + 2] + f[cell + 3] * shaftSpeed);
+  if (
+    !(
+      shaftSpeed >= f[fit.F_CELL] &&
+      shaftSpeed < f[fit.F_CELL + 1] &&
+      torque >= f[fit.F_CELL + 2] &&
+      torque < f[fit.F_CELL + 3]
+    )
+  )
+    enterPowerCell(f, shaftSpeed, torque);
+  const power =
+    f[fit.F_LAW] +
+    f[fit.F_LAW + 1] * shaftSpeed +
+    torque * (f[fit.F_LAW + 2] + f[fit.F_LAW + 3] * shaftSpeed);
   return Math.max(power, f[fit.F_LEAST]);
 }
 
-/** Cell of a value among so many inner edges from a place on; the search begins at a cell, the answer does not depend on it. */
-function cellFrom(f: Float64Array, place: number, count: number, value: number, begin: number): number {
-  let cell = begin;
-  while (cell > 0 && value < f[place + cell - 1]) cell--;
-  while (cell < count && value >= f[place + cell]) cell++;
-  return cell;
+function enterPowerCell(f: Float64Array, shaftSpeed: number, torque: number): void {
+  const rows = f[fit.F_SPEED_COUNT] | 0;
+  const columns = f[fit.F_TORQUE_COUNT] | 0;
+  const i = enterInterval(f, fit.F_CELL, f[fit.F_SPEEDS] | 0, rows, shaftSpeed);
+  const j = enterInterval(f, fit.F_CELL + 2, f[fit.F_TORQUES] | 0, columns, torque);
+  const cell = (f[fit.F_POWER] | 0) + 4 * (i * (columns + 1) + j);
+  for (let k = 0; k < 4; k++) f[fit.F_LAW + k] = f[cell + k];
+}
+
+/** Finds a value among so many inner edges from a place on, and notes the two around it; returns how many lie at or below it. */
+function enterInterval(f: Float64Array, noted: number, edges: number, count: number, value: number): number {
+  let i = 0;
+  while (i < count && value >= f[edges + i]) i++;
+  f[noted] = i > 0 ? f[edges + i - 1] : Number.NEGATIVE_INFINITY;
+  f[noted + 1] = i < count ? f[edges + i] : Number.POSITIVE_INFINITY;
+  return i;
 }

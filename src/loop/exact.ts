@@ -3,7 +3,7 @@ import { moveReference } from '../control/set-point.ts';
 import { takeUpTime } from './actuator-step.ts';
 import { enterDriveCell, enterRoadCell, weighRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
-import { drawPower } from './draw-power.ts';
+import { drawOverChunk, drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
 import { heldCommand } from './held-command.ts';
 import { lagFactors } from './lags.ts';
@@ -68,7 +68,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const derated = p[at.P_DERATED] === 1;
   const belted = p[at.P_BELT] === 1;
   const fitted = hasSampleDevices(p);
-  const sourced = p[at.P_SOURCE] === 1;
+  const drains = p[at.P_SOURCE] === at.DRAWN_BY_SAMPLE;
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastRow = rows.length - at.R_STRIDE;
@@ -395,7 +395,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       s[at.ACCELERATION] = acceleration;
       s[at.TRAVELLED] += travelled;
       s[at.SPEED_CELL] = speedCell;
-      if (sourced) drawPower(machine, line, elapsed);
+      if (drains) drawPower(machine, line, elapsed);
     }
   }
 
@@ -410,6 +410,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   s[at.CELL] = row / at.R_STRIDE;
   s[at.THROTTLE_CELL] = throttleCell;
   if (event !== at.RUNNING) s[at.PARTIAL] = elapsed;
+  if (p[at.P_SOURCE] === at.DRAWN_BY_CHUNK) drawOverChunk(machine, tick, elapsed);
   const whole = event === at.RUNNING ? tick : tick - 1;
   s[at.TICK] += whole;
   chunk[at.C_TICKS] = tick;

@@ -76,15 +76,19 @@ export const F_ONSET = 14;
 export const F_LEAST_SHARE = 15;
 /** Share of charge of a battery at the start. */
 export const F_CHARGE = 16;
-/** Cells of the map in which the last sample was: where the next search begins. Answers do not depend on it. */
-export const F_SPEED_CELL = 17;
-export const F_TORQUE_CELL = 18;
-export const F_SOURCE_HEAD = 19;
+/** Cell of the map in which the last sample was, none at first: its edges over shaft speed and torque, its law. */
+export const F_CELL = 17;
+export const F_LAW = 21;
+export const F_SOURCE_HEAD = 25;
 
-/** A line over the charge: its corners, the stretch in which the last sample was, then charges, shares, slopes behind them. */
+/** A line over the charge: the stretch in which the last sample was, none at first; corners, then charges, shares, slopes behind them. */
 export const LINE_COUNT = 0;
-export const LINE_CELL = 1;
-export const LINE_CORNERS = 2;
+export const LINE_LOW = 1;
+export const LINE_HIGH = 2;
+export const LINE_CORNER = 3;
+export const LINE_SHARE = 4;
+export const LINE_SLOPE = 5;
+export const LINE_CORNERS = 6;
 
 /** Rows before the ring of the history in which a sensor keeps what it remembers. */
 export const SENSOR_ROWS = 2;
@@ -180,12 +184,12 @@ function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Floa
 }
 
 function lineOver(line: ShareOverCharge | null): Float64Array {
-  if (line === null) return Float64Array.of(0);
+  if (line === null) return Float64Array.of(0, Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY, 0, 1, 0);
   const { charge, share } = line;
   const slope = share.map((from, i) =>
     i + 1 < share.length ? (share[i + 1] - from) / (charge[i + 1] - charge[i]) : 0,
   );
-  return Float64Array.of(charge.length, 0, ...charge, ...share, ...slope);
+  return Float64Array.of(charge.length, 0, 0, 0, 0, 0, ...charge, ...share, ...slope);
 }
 
 /** The bilinear law of every cell, row by row: c0 + c1 w + T (c2 + c3 w). */

@@ -81,7 +81,7 @@ export const HOLD_TAKES = 79;
 export const HOLD_RESUMES = 80;
 /** Plan's set speed in force, which taps and engaging leave behind. */
 export const PLANNED_SPEED = 81;
-/** Speed that the rider holds by hand [m/s], true, and the deceleration at which they brake down to it; 0: they have it. */
+/** Speed that the rider holds by hand [m/s], true, and the deceleration at which they brake down to it; negative: the acceleration at which they gain it; 0: they have it. */
 export const HAND_SPEED = 82;
 export const HAND_RATE = 83;
 /** Throttle of the grip in an override, and the command of the controller behind it. */
@@ -195,7 +195,7 @@ export const P_CDA_BEHIND = 33;
 /** Step of the command, 0: none; half of the slack. */
 export const P_RESOLUTION = 34;
 export const P_PLAY = 35;
-/** 1: the drive can be derated; there is a fuel tank or battery; a sensor with pulses or noise; an automatic gearbox; a belt. */
+/** 1: the drive can be derated; there is a fuel tank or battery (see below); a sensor with pulses or noise; an automatic gearbox; a belt. */
 export const P_DERATED = 38;
 export const P_SOURCE = 39;
 export const P_SENSED = 40;
@@ -212,6 +212,10 @@ export const P_SLOPE_KEPT = 45;
 /** 1: hold can change hands: rules of the unit, acts of the rider, faults of the sensor. */
 export const P_HOLD = 46;
 export const P_SIZE = 47;
+
+// --- p[P_SOURCE]: when tank or battery is drawn from; 0: there is none ---
+export const DRAWN_BY_SAMPLE = 1;
+export const DRAWN_BY_CHUNK = 2;
 
 // --- lags: a row of decays over a whole step, and one over a part of it; see lags.ts ---
 export const G_DRIVE_HALF = 0;

@@ -164,7 +164,7 @@ function addChunk({ s, p, chunk }: Machine, sums: Float64Array): void {
   sums[BRAKE_WORK] += chunk[at.C_BRAKE];
   sums[DRAWN] += chunk[at.C_DRAWN];
   if (s[at.SHIFT_PART] > 0) sums[SHIFT] += chunk[at.C_TIME];
-  if (p[at.P_SOURCE] === 1) {
+  if (p[at.P_SOURCE] === at.DRAWN_BY_SAMPLE) {
     // Once for all samples of the chunk: charge and heat move slowly, and an empty battery stays empty.
     sums[DRIVE_LOST] = Math.max(sums[DRIVE_LOST], 1 - s[at.DRIVE_FACTOR]);
     sums[REGENERATION_LOST] = Math.max(sums[REGENERATION_LOST], 1 - s[at.REGENERATION_FACTOR]);

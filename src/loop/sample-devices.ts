@@ -7,9 +7,8 @@ import { shiftDue } from './shift-due.ts';
 
 /** The machine has something that works once a sample on the state as it stands: then a kernel writes it at every sample. */
 export function hasSampleDevices(p: Float64Array): boolean {
-  return (
-    p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SOURCE] + p[at.P_SLOPE] + p[at.P_HOLD] > 0
-  );
+  const drains = p[at.P_SOURCE] === at.DRAWN_BY_SAMPLE;
+  return drains || p[at.P_AUTOMATIC] + p[at.P_BELT] + p[at.P_SENSED] + p[at.P_SLOPE] + p[at.P_HOLD] > 0;
 }
 
 /**
