@@ -77,10 +77,14 @@ function columnOf<Field extends string>(
   return word === undefined ? null : { name, field: word.field, number: null };
 }
 
-const allNames = ({ columns, words }: CsvVocabulary): string =>
+const allNames = ({ columns, words }: Pick<CsvVocabulary, 'columns' | 'words'>): string =>
   [...Object.keys(columns), ...Object.keys(words)].join(', ');
 
-function unknownColumn(name: string, place: Place, vocabulary: CsvVocabulary): InputError {
+function unknownColumn<Field extends string>(
+  name: string,
+  place: Place,
+  vocabulary: CsvVocabulary<Field>,
+): InputError {
   const meant = meantColumns(name, vocabulary);
   const found = name === '' ? 'an empty name' : `'${name}'`;
   if (meant.length > 0)
@@ -101,7 +105,7 @@ function unknownColumn(name: string, place: Place, vocabulary: CsvVocabulary): I
 }
 
 /** The allowed names that a wrong one probably means; empty when none is near. */
-function meantColumns(name: string, { meant }: CsvVocabulary): readonly string[] {
+function meantColumns(name: string, { meant }: Pick<CsvVocabulary, 'meant'>): readonly string[] {
   const plain = name
     .toLowerCase()
     .replace(/[\s([/-]+/g, '_')
