@@ -51,6 +51,14 @@ const actSchema = z
       to_kmh: kmh('True speed that the rider brakes to, and goes on at by hand'),
       brake_m_s2: braking('How hard'),
     }),
+    ...act('ride', 'The switch ends hold, if it is on, and the rider goes on by hand at another speed', {
+      to_kmh: kmh('True speed that the rider goes on at'),
+      gains_m_s2: otherwise(
+        number('m/s2', 0.05, 10, 'Greatest acceleration on the way there'),
+        1,
+        'unhurried riding, an assumption',
+      ),
+    }),
     ...act('clutch', 'The clutch is pulled without a change of gear: hold ends', {
       for_s: number('s', 0.1, 60, 'For how long'),
     }),

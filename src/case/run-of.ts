@@ -51,6 +51,8 @@ function deedOf(one: ActFile): RiderDeed {
       return { kind: 'cancel', then: one.then };
     case 'brake':
       return { kind: 'brake', to: fromKmh(one.to_kmh), deceleration: one.brake_m_s2 };
+    case 'ride':
+      return { kind: 'ride', to: fromKmh(one.to_kmh), acceleration: one.gains_m_s2 };
     case 'clutch':
       return { kind: 'clutch', for: one.for_s };
   }

@@ -99,6 +99,8 @@ export type RiderDeed =
   | { readonly kind: 'cancel'; readonly then: 'holds_speed' | 'coasts' }
   /** The brake ends hold and takes the speed down to [m/s], true, at [m/s2]. */
   | { readonly kind: 'brake'; readonly to: number; readonly deceleration: number }
+  /** The switch ends hold; the rider goes on at [m/s], true, by hand, and gains speed at no more than [m/s2]. */
+  | { readonly kind: 'ride'; readonly to: number; readonly acceleration: number }
   /** The clutch is pulled for so long [s], without a change of gear: hold ends. */
   | { readonly kind: 'clutch'; readonly for: number };
 

@@ -24,7 +24,7 @@ const REACHED = 1e-9;
  *
  *     a = (vh - v) / 2 s           or, braking at b down to vh,           a = -b
  *
- * and use the brake only where the throttle is closed and that is not enough; with it, the speed falls by b Ts in every
+ * no more than b where they gain speed at b, and use the brake only where the throttle is closed and that is not enough; with it, the speed falls by b Ts in every
  * sample, within the brake's greatest deceleration. Coasting, or with the clutch open, the throttle is closed. What the
  * rider's hand cannot know are the lags of actuator and drive.
  *
@@ -48,7 +48,7 @@ export function handController(machine: Machine, plan: LoopPlan): Controller {
         acceleration = -drop / sample;
         held = heldForDrop(v, drop, sample);
       } else s[at.HAND_RATE] = 0;
-    }
+    } else if (s[at.HAND_RATE] < 0) acceleration = Math.min(acceleration, -s[at.HAND_RATE]);
     const closed = mode !== at.BY_HAND || s[at.GEAR] < 0;
     const throttle = closed ? closedThrottle(p) : throttleInHand(machine, plan, acceleration);
     const brakes = mode !== at.COASTING && (closed || throttle <= p[at.P_LEAST]);

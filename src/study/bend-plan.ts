@@ -12,6 +12,9 @@ const SPARE = fromKmh(5);
 /** Slower by less than this is no reason to brake again [m/s]. */
 const SAME = fromKmh(0.5);
 
+/** Behind a bend that is slower than the unit holds the rider gains speed by hand at this [m/s2]: an assumption. */
+const GAINS = 1;
+
 /** How the rider rides bends. SI. */
 export interface BendRiding {
   /** Greatest lateral acceleration [m/s2]. */
@@ -31,6 +34,8 @@ export interface BendStop extends Stretch {
   readonly last: number;
   /** True speed to which the rider brakes for each of them, not above what it allows [m/s]. */
   readonly speeds: readonly number[];
+  /** Where the rider, too slow for the unit to take over, gains the set speed by hand [m]; null: hold can be resumed from the bend's speed. */
+  readonly gainsFrom: number | null;
   /** The rider resumes at `to`; false: the road ends, or what is written says otherwise. */
   readonly resumes: boolean;
 }
@@ -77,7 +82,8 @@ export interface BendRide {
  *    rider's deceleration from the end of this one.
  * 3. Bends with less than the shortest hold between resuming and braking again are one stop: the rider stays on the
  *    throttle, at the lowest speed so far, and brakes again where a bend asks for less.
- * 4. Braking begins so early that a vehicle 5 km/h above the set speed is slow enough at the beginning of the bend.
+ * 4. Behind a bend slower than the unit holds the rider first gains the set speed by hand.
+ * 5. Braking begins so early that a vehicle 5 km/h above the set speed is slow enough at the beginning of the bend.
  *
  * Written acts come first: they stay where they are, inside of a stop too. A bend's resume is left out where hold was
  * off by what is written before the stop, or something written within it ends hold.
@@ -95,20 +101,17 @@ export function planBends(
   const bends = bendsOf(road, riding.maxLateral, speedAt);
   const speeds = reachable(bends, riding.deceleration);
   const end = road.distance[road.size - 1]!;
-  const groups = grouped(bends, speeds, riding, speedAt, end);
+  const lowest = ride.lowestSpeed / (1 + vehicle.sensor.scaleError);
+  const groups = grouped(bends, speeds, { ...riding, speedAt, lowest, end });
   const written = rider.acts ?? [];
   const stops = groups.map((group): BendStop => {
-    const { from, to, first, last } = group;
+    const { to, first, last } = group;
     return {
-      from,
-      to,
-      first,
-      last,
+      ...group,
       speeds: speeds.slice(first, last + 1),
       resumes: to < end && resumesHold(written, hold.starts !== 'by_hand', group),
     };
   });
-  const lowest = ride.lowestSpeed / (1 + vehicle.sensor.scaleError);
   const plan: BendPlan = {
     riding,
     resolution: BEND_RESOLUTION,
@@ -155,15 +158,19 @@ function approach(bend: Bend, speed: number, deceleration: number, speedAt: (x: 
   return Math.max(near, speedAt(from)) + SPARE;
 }
 
-type Group = Stretch & Pick<BendStop, 'first' | 'last'>;
+type Group = Stretch & Pick<BendStop, 'first' | 'last' | 'gainsFrom'>;
 
-function grouped(
-  bends: readonly Bend[],
-  speeds: readonly number[],
-  { deceleration, resumesAfter, shortestHold }: BendRiding,
-  speedAt: (x: number) => number,
-  end: number,
-): Group[] {
+/** What decides which bends are one stop. */
+interface Grouping extends BendRiding {
+  readonly speedAt: (distance: number) => number;
+  /** That the unit holds, true [m/s]. */
+  readonly lowest: number;
+  /** Of the road [m]. */
+  readonly end: number;
+}
+
+function grouped(bends: readonly Bend[], speeds: readonly number[], grouping: Grouping): Group[] {
+  const { deceleration, shortestHold, speedAt } = grouping;
   const groups: Group[] = [];
   let inHand = Number.POSITIVE_INFINITY;
   bends.forEach((bend, i) => {
@@ -172,11 +179,24 @@ function grouped(
     const before = groups.at(-1);
     const joins = before !== undefined && from - before.to < shortestHold * speedAt(before.to);
     inHand = joins ? Math.min(inHand, speed) : speed;
-    const to = Math.min(end, bend.to + resumesAfter * inHand);
-    if (joins) groups[groups.length - 1] = { ...before, to, last: i };
-    else groups.push({ from, to, first: i, last: i });
+    const behind = { ...resumeBehind(bend, inHand, grouping), last: i };
+    if (joins) groups[groups.length - 1] = { ...before, ...behind };
+    else groups.push({ from, first: i, ...behind });
   });
   return groups;
+}
+
+/** Where the rider resumes behind a bend with a speed in hand, and where they gain speed for it. */
+function resumeBehind(
+  bend: Bend,
+  inHand: number,
+  { resumesAfter, lowest, speedAt, end }: Grouping,
+): Pick<Group, 'to' | 'gainsFrom'> {
+  const place = bend.to + resumesAfter * inHand;
+  if (inHand >= lowest + SAME) return { to: Math.min(end, place), gainsFrom: null };
+  const goal = speedAt(place);
+  const way = Math.max(0, goal * goal - inHand * inHand) / (2 * GAINS);
+  return { to: Math.min(end, place + way), gainsFrom: Math.min(end, place) };
 }
 
 /** Whether hold was on before a stop by what is written, and nothing written in it ends hold. */
@@ -193,7 +213,7 @@ function resumesHold(written: readonly RiderAct[], startsOn: boolean, { from, to
 
 /** Brakings of a stop, each for a bend that asks for less than before, and the resume. */
 function actsOf(
-  { to, first, speeds, resumes }: BendStop,
+  { to, first, speeds, gainsFrom, resumes }: BendStop,
   bends: readonly Bend[],
   { deceleration }: BendRiding,
   speedAt: (x: number) => number,
@@ -211,6 +231,12 @@ function actsOf(
     });
     inHand = speed;
   });
+  if (resumes && gainsFrom !== null)
+    acts.push({
+      at: { distance: gainsFrom },
+      does: { kind: 'ride', to: speedAt(to), acceleration: GAINS },
+      reason: 'bend',
+    });
   if (resumes) acts.push({ at: { distance: to }, does: { kind: 'resume' }, reason: 'bend' });
   return acts;
 }

@@ -88,13 +88,14 @@ rider:
     - {at_km: 3, act: cancel, then: coasts}
     - {at_km: 3.5, act: brake, to_kmh: 36}
     - {at_km: 4, act: clutch, for_s: 1.5}
+    - {at_km: 4.5, act: ride, to_kmh: 54, gains_m_s2: 0.8}
 supervisor: {too_slow: {}}
 `);
   const { acts = [], resumesAfter } = riderOf(document);
   expect(resumesAfter).toBe(4);
   expect(holdOf(document).starts).toBe('by_hand');
   expect(acts.map(({ at }) => at)).toEqual(
-    [500, 1000, 1500, 2000, 2500, 3000, 3500, 4000].map((distance) => ({ distance })),
+    [500, 1000, 1500, 2000, 2500, 3000, 3500, 4000, 4500].map((distance) => ({ distance })),
   );
   expect(acts.map(({ does }) => JSON.stringify(does))).toEqual([
     '{"kind":"engage"}',
@@ -105,6 +106,7 @@ supervisor: {too_slow: {}}
     '{"kind":"cancel","then":"coasts"}',
     '{"kind":"brake","to":10,"deceleration":2}',
     '{"kind":"clutch","for":1.5}',
+    '{"kind":"ride","to":15,"acceleration":0.8}',
   ]);
 });
 

@@ -105,6 +105,16 @@ describe('the plan of bends', () => {
     expect(bends.stops[0]!.speeds[0]).toBeLessThan(allowed(200));
   });
 
+  it('gains the set speed by hand behind a bend that is slower than the unit holds', () => {
+    const bend = [{ at: 2000, length: 100, radius: 40 }];
+    const { plan: bends, acts } = plan(bend, { lowest: 12 });
+    expect(acts.map(({ does }) => does.kind)).toEqual(['brake', 'ride', 'resume']);
+    expect(acts[1]?.does).toEqual({ kind: 'ride', to: SET, acceleration: 1 });
+    expectClose(place(acts[2]!) - place(acts[1]!), (SET ** 2 - allowed(40) ** 2) / 2, 1e-9);
+    expect(bends.unfit).toMatchObject([{ reason: 'below_lowest', bends: 1 }]);
+    expect(plan(bend, { lowest: 9 }).acts.map(({ does }) => does.kind)).toEqual(['brake', 'resume']);
+  });
+
   it('resumes between bends that are far enough apart, at the set speed', () => {
     const gap = (metres: number) =>
       plan([
