@@ -3,8 +3,9 @@ import type { BinRecord } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import { demandOf } from '../study/demand.ts';
-import { figureRow } from '../study/figure-table.ts';
+import { askDetail, figureRow } from '../study/figure-table.ts';
 import type { Replayed, Requirement, RequirementFinding } from '../study/findings.ts';
+import { meanErrorIn } from '../study/held-time.ts';
 import { judge } from '../study/judge.ts';
 import { endedEarly, measureFigure } from '../study/measure-figure.ts';
 import { slowestRecoveries } from '../study/slowest-recoveries.ts';
@@ -57,8 +58,13 @@ function ridden(work: MatrixWork, { requirements }: CellPlan, ride: CellRide): C
   const { candidates, bands, spread } = work;
   const setting = settingOf(work, ride);
   const { road, vehicle, hold, rider } = setting;
+  const detail = askDetail(requirements.map(({ figure }) => figure));
   const replayed = loopPlans(setting, candidates).map(
-    (plan, i): Replayed => ({ name: candidates[i]?.name ?? '', plan, result: runLoop(plan) }),
+    (plan, i): Replayed => ({
+      name: candidates[i]?.name ?? '',
+      plan,
+      result: runLoop({ ...plan, detail }),
+    }),
   );
   const demand = demandOf(road, vehicle, hold, rider);
   const recovers = requirements.some(({ figure }) => figure === 'recovery_s');
@@ -124,10 +130,7 @@ function pictureOf(bins: BinRecord, place: number | null): CellPicture | null {
     at,
     distance: column((i) => (bins.edge[i]! + bins.edge[i + 1]!) / 2),
     low: column((i) => bins.errorMin[i]!),
-    // A bin in which no sample starts has time 0 and the values of the sample that passes over it.
-    mean: column((i) =>
-      bins.time[i]! > 0 ? bins.errorMean[i]! / bins.time[i]! : (bins.errorMin[i]! + bins.errorMax[i]!) / 2,
-    ),
+    mean: column((i) => meanErrorIn(bins, i) ?? Number.NaN),
     high: column((i) => bins.errorMax[i]!),
   };
 }

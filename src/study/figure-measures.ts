@@ -3,7 +3,9 @@ import { cellOf } from '../numeric/interpolate.ts';
 import type { Road } from '../road/road.ts';
 import { toKm, toKmh, toKw, toLitre, toPct, toWh } from '../units/convert.ts';
 import type { EnergySource } from '../vehicle/energy-source.ts';
+import type { DriveQuality } from './drive-quality.ts';
 import type { Figure, None } from './findings.ts';
+import { heldTime } from './held-time.ts';
 import { NOT_RECOVERED } from './recovery.ts';
 
 /** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
@@ -39,6 +41,13 @@ export interface FigureRecord {
   readonly brakeNeeded: Float64Array;
   /** Of the whole run. */
   readonly ledgerResidual: number;
+  readonly road: Road;
+  /** Upper end of the command. */
+  readonly greatestCommand: number;
+  /** Where the clock of the time-weighted error begins anew, in order along the way [m]. */
+  readonly events: readonly number[];
+  /** Ratings over the bins that count; worked out when it is first asked for. */
+  readonly quality: () => DriveQuality;
 }
 
 export interface Measure {
@@ -72,8 +81,31 @@ export function driven(record: FigureRecord, of: (time: number) => Figure): Meas
   return time > 0 ? placeless(of(time)) : NOTHING;
 }
 
+const OFF: Measure = { value: { none: 'hold was on nowhere there' }, at: null };
+
+/** A figure that exists wherever hold was on in any chosen time; `time` is that with hold on [s]. */
+export function held(record: FigureRecord, of: (time: number) => Figure): Measure {
+  if (!(timeOf(record) > 0)) return NOTHING;
+  const time = sum(record, (i) => heldTime(record.bins, i));
+  return time > 0 ? placeless(of(time)) : OFF;
+}
+
+/** Distance driven with hold on [m]: of a bin its share of the time. */
+export const heldLength = (record: FigureRecord): number =>
+  sum(record, (i) => {
+    const { time } = record.bins;
+    return time[i] > 0 ? (binLength(record, i) * heldTime(record.bins, i)) / time[i] : 0;
+  });
+
+/** Greatest |e| in a bin [m/s]; 0 where hold was off in all of it. */
+export const worstError = ({ bins }: FigureRecord, i: number): number =>
+  bins.time[i] > 0 && !(heldTime(bins, i) > 0) ? 0 : Math.max(bins.errorMax[i], -bins.errorMin[i]);
+
 /** Chosen bin with the greatest score above 0, with its middle. */
-function worstBin(record: FigureRecord, score: (i: number) => number): { value: number; at: number } | null {
+export function worstBin(
+  record: FigureRecord,
+  score: (i: number) => number,
+): { value: number; at: number } | null {
   const { bins, chosen } = record;
   let worst: { value: number; at: number } | null = null;
   for (let i = 0; i < bins.size; i++) {
@@ -89,37 +121,22 @@ export function withinBand(record: FigureRecord): Measure {
   // Bands pass through files in km/h: equal to a nanometre a second is equal.
   const k = band === null ? -1 : bands.findIndex((b) => Math.abs(b - band) < 1e-9);
   if (k < 0) return placeless({ none: 'the run did not count the time within this band' });
-  const time = timeOf(record);
-  if (!(time > 0)) return NOTHING;
   const inside = (i: number): number => bins.timeInBand[i * bands.length + k];
   const outside = worstBin(record, (i) =>
-    bins.time[i] - inside(i) > 1e-9 ? Math.max(bins.errorMax[i], -bins.errorMin[i]) : 0,
+    heldTime(bins, i) - inside(i) > 1e-9 ? Math.max(bins.errorMax[i], -bins.errorMin[i]) : 0,
   );
-  return { value: toPct(Math.min(1, sum(record, inside) / time)), at: outside?.at ?? null };
+  const { value } = held(record, (time) => toPct(Math.min(1, sum(record, inside) / time)));
+  return { value, at: typeof value === 'number' ? (outside?.at ?? null) : null };
 }
 
 export function worstSide(record: FigureRecord, side: 1 | -1): Measure {
-  if (!(timeOf(record) > 0)) return NOTHING;
   const { errorMin, errorMax } = record.bins;
-  const worst = worstBin(record, (i) => (side > 0 ? errorMax[i] : -errorMin[i]));
+  const { value } = held(record, () => 0);
+  if (typeof value !== 'number') return placeless(value);
+  const worst = worstBin(record, (i) =>
+    worstError(record, i) > 0 ? (side > 0 ? errorMax[i] : -errorMin[i]) : 0,
+  );
   return worst === null ? placeless(0) : { value: toKmh(side * worst.value), at: worst.at };
-}
-
-export function absoluteErrorQuantile(record: FigureRecord, share: number): Measure {
-  const { bins, chosen } = record;
-  const rows: { error: number; time: number }[] = [];
-  for (let i = 0; i < bins.size; i++)
-    if (chosen[i] === 1 && bins.time[i] > 0)
-      rows.push({ error: Math.sqrt(Math.max(0, bins.errorSquare[i] / bins.time[i])), time: bins.time[i] });
-  if (rows.length === 0) return NOTHING;
-  rows.sort((a, b) => a.error - b.error);
-  const target = share * rows.reduce((total, row) => total + row.time, 0);
-  let passed = 0;
-  for (const row of rows) {
-    passed += row.time;
-    if (passed >= target) return placeless(toKmh(row.error));
-  }
-  return placeless(toKmh(rows[rows.length - 1].error));
 }
 
 /**

@@ -2,7 +2,7 @@ import { runLoop } from '../loop/run-loop.ts';
 import { seededStream } from '../numeric/random.ts';
 import { perturbRoad } from '../road/perturb-road.ts';
 import type { Recovery } from './figure-measures.ts';
-import { type FigureRow, figureRow } from './figure-table.ts';
+import { askDetail, type FigureRow, figureRow } from './figure-table.ts';
 import type { RecoveredHill, Replayed, Requirement } from './findings.ts';
 import { speedsOver } from './hill-series.ts';
 import { courseOfRun, type HoldCourse } from './hold-course.ts';
@@ -74,6 +74,7 @@ export function figureSpread(
   const uncertain = context.road.smoothing !== null && context.road.gradeSd.some((sd) => sd > 0);
   const draws = uncertain && asked.length > 0 ? roads : 0;
   const values: number[][] = asked.map(() => []);
+  const detail = askDetail(asked.map(({ row: { name } }) => name));
   const stream = seededStream(seed);
   for (let n = 0; n < draws; n++) {
     onRoad?.(n, draws);
@@ -82,7 +83,7 @@ export function figureSpread(
     asked.forEach(({ requirement, row, candidate }, k) => {
       let run = runs.get(candidate.name);
       if (run === undefined) {
-        const plan = { ...candidate.plan, road, scheme: 'fast' as const };
+        const plan = { ...candidate.plan, road, scheme: 'fast' as const, detail };
         run = { name: candidate.name, plan, result: runLoop(plan) };
         runs.set(candidate.name, run);
       }

@@ -1,15 +1,16 @@
 import type { BinRecord } from '../loop/result.ts';
 import { toKmh, toPct, toWh } from '../units/convert.ts';
+import { COMFORT_ROWS, THROTTLE_ROWS } from './comfort-rows.ts';
+import { DRIVE_QUALITY_ROWS } from './drive-quality-rows.ts';
+import { ERROR_ROWS } from './error-rows.ts';
 import {
-  absoluteErrorQuantile,
   batteryEnergy,
   brakeDistance,
   brakePowerNeeded,
   drawnPerKm,
   driven,
-  type FigureRecord,
   fuelPer100Km,
-  type Measure,
+  held,
   perKm,
   placeless,
   range,
@@ -20,24 +21,10 @@ import {
   worstRecovery,
   worstSide,
 } from './figure-measures.ts';
+import { DEFINED_HERE, type FigureRow } from './figure-row.ts';
 
-/** One row of the table of figures. */
-export interface FigureRow {
-  /** The unit is its ending. */
-  readonly name: string;
-  readonly label: string;
-  readonly unit: string;
-  /** What the figure is weighted with. */
-  readonly weight: 'time' | 'distance' | 'event';
-  readonly takesBand: boolean;
-  /** The better direction; null where neither is. */
-  readonly better: 'lower' | 'higher' | null;
-  readonly definition: string;
-  readonly source: string;
-  readonly measure: (record: FigureRecord) => Measure;
-}
+export type { FigureRow } from './figure-row.ts';
 
-const DEFINED_HERE = 'defined here';
 const timed = (
   name: string,
   label: string,
@@ -69,7 +56,7 @@ export const FIGURES: readonly FigureRow[] = [
     takesBand: true,
     better: 'higher',
     definition:
-      'Share of the time, controller sample by sample, with |e| inside the band. Its place is where |e| was greatest outside of it.',
+      'Share of the time with hold on, controller sample by sample, with |e| inside the band. Its place is where |e| was greatest outside of it.',
     source: DEFINED_HERE,
     measure: withinBand,
   },
@@ -80,10 +67,10 @@ export const FIGURES: readonly FigureRow[] = [
     weight: 'time',
     takesBand: false,
     better: 'lower',
-    definition: 'Root of the time mean of e squared.',
-    source: 'the root mean square speed error of driving-cycle metrics (SAE J2951, from memory)',
+    definition: 'Root of the time mean of e squared, over the time with hold on.',
+    source: 'RMSSE, the root mean squared speed error of SAE J2951, formula from memory',
     measure: (record) =>
-      driven(record, (time) =>
+      held(record, (time) =>
         toKmh(Math.sqrt(Math.max(0, sum(record, (i) => record.bins.errorSquare[i]) / time))),
       ),
   },
@@ -94,9 +81,9 @@ export const FIGURES: readonly FigureRow[] = [
     weight: 'time',
     takesBand: false,
     better: null,
-    definition: 'Time mean of e, with its sign.',
+    definition: 'Time mean of e, with its sign, over the time with hold on.',
     source: DEFINED_HERE,
-    measure: (record) => driven(record, (time) => toKmh(sum(record, (i) => record.bins.errorMean[i]) / time)),
+    measure: (record) => held(record, (time) => toKmh(sum(record, (i) => record.bins.errorMean[i]) / time)),
   },
   {
     name: 'worst_low_kmh',
@@ -120,17 +107,7 @@ export const FIGURES: readonly FigureRow[] = [
     source: DEFINED_HERE,
     measure: (record) => worstSide(record, 1),
   },
-  {
-    name: 'p95_abs_error_kmh',
-    label: '95 % of |e|',
-    unit: 'km/h',
-    weight: 'time',
-    takesBand: false,
-    better: 'lower',
-    definition: 'The value that |e| (its rms over each bin of distance) stays within for 95 % of the time.',
-    source: DEFINED_HERE,
-    measure: (record) => absoluteErrorQuantile(record, 0.95),
-  },
+  ...ERROR_ROWS,
   {
     name: 'recovery_s',
     label: 'Longest recovery',
@@ -152,10 +129,10 @@ export const FIGURES: readonly FigureRow[] = [
     takesBand: false,
     better: 'lower',
     definition:
-      'Driving time less the time at the set speed over the same distance: the time integral of -e / set speed. Negative where time is gained.',
+      'Driving time with hold on less the time at the set speed over the same distance: the time integral of -e / set speed. Negative where time is gained.',
     source: DEFINED_HERE,
     measure: (record) =>
-      driven(record, () => sum(record, (i) => -record.bins.errorMean[i] / record.bins.setSpeed[i])),
+      held(record, () => sum(record, (i) => -record.bins.errorMean[i] / record.bins.setSpeed[i])),
   },
   {
     name: 'wheel_energy_wh',
@@ -266,6 +243,7 @@ export const FIGURES: readonly FigureRow[] = [
     source: 'total variation of the control signal (Skogestad, J. Process Control 13 (2003), from memory)',
     measure: (record) => placeless(perKm(record, toPct(sum(record, (i) => record.bins.throttleTravel[i])))),
   },
+  ...THROTTLE_ROWS,
   timed(
     'at_upper_limit_s',
     'At full throttle',
@@ -291,13 +269,15 @@ export const FIGURES: readonly FigureRow[] = [
     weight: 'time',
     takesBand: false,
     better: 'lower',
-    definition: 'Share of the time with the command at its upper or lower limit.',
+    definition: 'Share of the time with hold on with the command at its upper or lower limit.',
     source: DEFINED_HERE,
     measure: (record) =>
-      driven(record, (time) =>
+      held(record, (time) =>
         toPct(sum(record, (i) => record.bins.timeUpper[i] + record.bins.timeLower[i]) / time),
       ),
   },
+  ...COMFORT_ROWS,
+  ...DRIVE_QUALITY_ROWS,
   {
     name: 'brake_energy_wh',
     label: 'Brake energy',
@@ -385,3 +365,7 @@ export const FIGURES: readonly FigureRow[] = [
 
 /** Row by name; undefined for a name that the table does not have. */
 export const figureRow = (name: string): FigureRow | undefined => FIGURES.find((row) => row.name === name);
+
+/** Some of these figures are in the record only where the plan asks for `detail`. */
+export const askDetail = (figures: readonly string[]): boolean =>
+  figures.some((name) => figureRow(name)?.detail === true);

@@ -1,10 +1,12 @@
 import type { BinRecord } from '../loop/result.ts';
 import type { Road } from '../road/road.ts';
+import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { FigureRecord, Measure, Recovery } from './figure-measures.ts';
 import { FIGURES, type FigureRow } from './figure-table.ts';
 import type { Demand, Figure, FigureValues, RecoveredHill, Replayed, Stretch, Where } from './findings.ts';
 import { gripBins } from './grip-places.ts';
 import { courseOfRun } from './hold-course.ts';
+import { qualityOfRun } from './run-quality.ts';
 import { withUnit } from './wording.ts';
 
 /** What figures are taken from, beside the run itself. */
@@ -40,7 +42,7 @@ export function measureFigure(
 /** What a figure is taken over, but for its band: given bins and recoveries of a run. */
 export function recordOf(
   replayed: Replayed,
-  { road, demand }: Pick<FigureContext, 'road' | 'demand'>,
+  { road, demand, hills }: FigureContext,
   chosen: Uint8Array,
   recoveries: readonly Recovery[],
 ): Omit<FigureRecord, 'band'> {
@@ -59,6 +61,29 @@ export function recordOf(
     beyondGrip: traction === null ? null : gripBins(replayed),
     brakeNeeded: greatestByBin(result.bins, road, demand.brakePower),
     ledgerResidual: result.ledger.residual,
+    road,
+    greatestCommand: throttleRange(plan.vehicle).greatest,
+    events: eventsOf(replayed, hills),
+    quality: once(() => qualityOfRun(road, plan.vehicle, result.bins, chosen)),
+  };
+}
+
+/** Where something ends that an error may be left from: hills, changes of set speed, events of hold, shifts of the rider. */
+function eventsOf(replayed: Replayed, hills: readonly RecoveredHill[]): number[] {
+  const { shifts, holdEvents = [] } = replayed.result;
+  return [
+    ...hills.map(({ to }) => to),
+    ...courseOfRun(replayed).changes.map(({ at }) => at),
+    ...holdEvents.map(({ distance }) => distance),
+    ...shifts.filter(({ resumedAt }) => resumedAt !== null).map(({ distance }) => distance),
+  ].sort((a, b) => a - b);
+}
+
+function once<T>(make: () => T): () => T {
+  let made: { readonly value: T } | null = null;
+  return () => {
+    made ??= { value: make() };
+    return made.value;
   };
 }
 

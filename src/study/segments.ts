@@ -3,6 +3,7 @@ import { valueAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
 import { meanAlong } from './along-road.ts';
 import type { Figure, Replayed, RoadSegment, Segment, SegmentRun, Stretch } from './findings.ts';
+import { heldTime } from './held-time.ts';
 
 /**
  * Cuts the road into stretches of equal length; the last one takes the rest, and joins its neighbour when it is
@@ -53,17 +54,19 @@ function runsOf({ name, result }: Replayed, segments: readonly RoadSegment[]): S
   let first = 0;
   return segments.map(({ from, to }) => {
     while (first < bins.size && bins.edge[first + 1] <= from) first++;
-    const sum = { time: 0, error: 0, square: 0, throttle: 0, limit: 0, energy: 0, worst: 0 };
+    const sum = { time: 0, held: 0, error: 0, square: 0, throttle: 0, limit: 0, energy: 0, worst: 0 };
     for (let i = first; i < bins.size && bins.edge[i] < to; i++) addBin(sum, bins, i, from, to);
     const per = (x: number): Figure => (sum.time > 0 ? x / sum.time : ENDED);
+    const whileHeld = (x: () => number): Figure =>
+      sum.time > 0 ? (sum.held > 0 ? x() : { none: 'hold was on nowhere there' }) : ENDED;
     const all = (x: number): Figure => (sum.time > 0 ? x : ENDED);
     return {
       candidate: name,
-      meanError: per(sum.error),
-      rmsError: sum.time > 0 ? Math.sqrt(Math.max(0, sum.square / sum.time)) : ENDED,
-      worstError: all(sum.worst),
+      meanError: whileHeld(() => sum.error / sum.held),
+      rmsError: whileHeld(() => Math.sqrt(Math.max(0, sum.square / sum.held))),
+      worstError: whileHeld(() => sum.worst),
       meanThrottle: per(sum.throttle),
-      atLimit: per(sum.limit),
+      atLimit: whileHeld(() => sum.limit / sum.held),
       wheelEnergy: all(sum.energy),
       time: all(sum.time),
     };
@@ -72,6 +75,8 @@ function runsOf({ name, result }: Replayed, segments: readonly RoadSegment[]): S
 
 interface Sums {
   time: number;
+  /** With hold on. */
+  held: number;
   error: number;
   square: number;
   throttle: number;
@@ -85,6 +90,7 @@ function addBin(sum: Sums, bins: BinRecord, i: number, from: number, to: number)
   const share = (Math.min(to, bins.edge[i + 1]) - Math.max(from, bins.edge[i])) / width;
   if (!(share > 0)) return;
   sum.time += share * bins.time[i];
+  sum.held += share * heldTime(bins, i);
   sum.error += share * bins.errorMean[i];
   sum.square += share * bins.errorSquare[i];
   sum.throttle += share * bins.throttleMean[i] * bins.time[i];

@@ -1,6 +1,7 @@
 import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_SHIFT, LIMIT_UPPER } from '../../loop/plan.ts';
 import type { BinRecord } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
+import { meanErrorIn } from '../../study/held-time.ts';
 import { toKmh, toKw, toPct, toWh } from '../../units/convert.ts';
 import { ShareAlong } from './share-along.ts';
 import { type Column, csvText } from './table.ts';
@@ -43,12 +44,6 @@ function bits(bins: BinRecord, i: number): number {
   );
 }
 
-/** Mean over time [m/s]; a bin in which no sample starts has the values of the one that passes over it. */
-function meanError(bins: BinRecord, i: number): number {
-  const time = bins.time[i]!;
-  return time > 0 ? bins.errorMean[i]! / time : bins.speedMean[i]! - bins.setSpeed[i]!;
-}
-
 /** What `mode` says, in both series. */
 export const MODE_ABOUT =
   "hold or locked; brake where the rider brakes; shift with the clutch open or the throttle in the rider's hand";
@@ -85,7 +80,10 @@ export const BIN_COLUMNS: readonly Column<BinSource>[] = [
     name: 'speed_error_kmh',
     decimals: 4,
     about: 'speed minus set speed, mean over time, negative is too slow',
-    value: (s, i) => toKmh(meanError(s.bins, i)),
+    value: (s, i) => {
+      const error = meanErrorIn(s.bins, i);
+      return error === null ? null : toKmh(error);
+    },
   },
   {
     name: 'throttle_pct',

@@ -1,4 +1,5 @@
 import type { BinRecord } from '../../loop/result.ts';
+import { meanErrorIn } from '../../study/held-time.ts';
 import type { Curve } from './columns.ts';
 
 /** The lanes that a record by bin can fill. */
@@ -17,10 +18,8 @@ export function binCurve(bins: BinRecord, lane: Lane): Curve {
   const at = middles(bins);
   if (lane === 'error') {
     const mean = new Float64Array(size);
-    // A bin in which no sample starts has time 0 and the values of the sample that passes over it.
-    for (let i = 0; i < size; i++)
-      mean[i] =
-        bins.time[i]! > 0 ? bins.errorMean[i]! / bins.time[i]! : (bins.errorMin[i]! + bins.errorMax[i]!) / 2;
+    // Where hold was off there is no error: the curve has a gap.
+    for (let i = 0; i < size; i++) mean[i] = meanErrorIn(bins, i) ?? Number.NaN;
     return { size, at, low: bins.errorMin, mean, high: bins.errorMax };
   }
   if (lane === 'throttle')
