@@ -70,6 +70,16 @@ function controllerOf(file: CandidateFile, context: CandidateContext): Controlle
 }
 
 /**
+ * One candidate in SI, its design worked out to gains.
+ *
+ * @throws InputError as `candidatesOf`
+ */
+export const candidateOf = (file: CandidateFile, context: CandidateContext): Candidate => ({
+  name: file.name ?? file.kind,
+  controller: controllerOf(file, context),
+});
+
+/**
  * The candidates in SI, designs worked out to gains.
  *
  * @param vehicle that they drive, as loaded
@@ -86,7 +96,7 @@ export function candidatesOf(
   const candidates = document.file.candidates.flatMap((file, index): Candidate[] => {
     const context = { document, vehicle, surroundings, index };
     try {
-      return [{ name: file.name ?? file.kind, controller: controllerOf(file, context) }];
+      return [candidateOf(file, context)];
     } catch (error) {
       if (!(error instanceof InputError)) throw error;
       problems.push(...error.problems);

@@ -30,6 +30,8 @@ export const fromCelsius = (celsius: number): number => celsius + 273.15;
 export const fromHpa = (hpa: number): number => hpa * 100;
 /** [% per km/h] -> [1/(m/s)]: a gain, or with another 1/s an integral gain. */
 export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPerKmh));
+/** [1/(m/s)] -> [% per km/h] */
+export const toPctPerKmh = (gain: number): number => fromKmh(toPct(gain));
 /** [N per km/h] -> [N/(m/s)] */
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */
