@@ -18,7 +18,7 @@ import { demandOf } from '../study/demand.ts';
 import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
 import type { Replayed } from '../study/findings.ts';
-import { holdTransients } from '../study/hold-transients.ts';
+import { followHolds } from '../study/hold-transients.ts';
 import { judge } from '../study/judge.ts';
 import { findLimitCycles } from '../study/limit-cycles.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
@@ -133,7 +133,8 @@ export function runWithoutMatrix({
   const cycles = findLimitCycles({ road, demand, replayed, onCandidate: within(CYCLES) });
   const segments =
     segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
-  const context = { road, demand, hills };
+  const followed = followHolds(replayed);
+  const context = { road, demand, hills, holds: followed.measures };
   const figures = compareCandidates(replayed, context, band);
   const spread = figureSpread(requirements, replayed, context, { onRoad: within(SPREAD) });
   const findings = judge(requirements, replayed, context, spread);
@@ -169,7 +170,7 @@ export function runWithoutMatrix({
     demand,
     hills,
     cycles,
-    transients: holdTransients(replayed),
+    transients: followed.transients,
     loggedRides: rideResults(loggedRides, { ...context, vehicle, hold, rider, band, replayed }),
     segmentsBy: segmenting.by,
     segments: segmentRuns(segments, replayed),

@@ -6,6 +6,7 @@ import type { EnergySource } from '../vehicle/energy-source.ts';
 import type { DriveQuality } from './drive-quality.ts';
 import type { Figure, None } from './findings.ts';
 import { heldTime } from './held-time.ts';
+import type { HoldRecord } from './hold-transient.ts';
 import { NOT_RECOVERED } from './recovery.ts';
 
 /** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
@@ -48,6 +49,8 @@ export interface FigureRecord {
   readonly events: readonly number[];
   /** Ratings over the bins that count; worked out when it is first asked for. */
   readonly quality: () => DriveQuality;
+  /** What became of the hold where it counts; worked out when it is first asked for. */
+  readonly hold: () => HoldRecord;
 }
 
 export interface Measure {

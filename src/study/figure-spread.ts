@@ -110,7 +110,7 @@ function measureDrawn(row: FigureRow, requirement: Requirement, run: Replayed, c
   const band = requirement.band ?? run.plan.bands[0];
   const recoveries =
     row.name === 'recovery_s' ? drawnRecoveries(requirement, run, context, band, course) : [];
-  const record = recordOf(run, context, chosen, recoveries);
+  const record = recordOf(run, context, chosen, recoveries, requirement.where);
   return row.measure({ ...record, band: row.takesBand ? requirement.band : null }).value;
 }
 

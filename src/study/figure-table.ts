@@ -22,6 +22,7 @@ import {
   worstSide,
 } from './figure-measures.ts';
 import { DEFINED_HERE, type FigureRow } from './figure-row.ts';
+import { HOLD_ROWS } from './hold-rows.ts';
 
 export type { FigureRow } from './figure-row.ts';
 
@@ -337,6 +338,7 @@ export const FIGURES: readonly FigureRow[] = [
     measure: (record) =>
       driven(record, () => (record.shiftsCancel ? sum(record, (i) => record.bins.timeShift[i]) : 0)),
   },
+  ...HOLD_ROWS,
   {
     name: 'beyond_grip_s',
     label: 'Beyond grip',

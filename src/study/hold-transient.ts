@@ -1,12 +1,16 @@
 import type { FullSeries, HoldEvent, HoldEventKind } from '../loop/result.ts';
 import type { Figure } from './findings.ts';
+import type { HoldOff } from './hold-off.ts';
+
+/** Said of a settling that something on the way, such as the next event or a change of set speed, cut short. */
+export const NEXT_CAME = 'what came next on the way came first';
 
 /** What follows an event of the hold, from the event to where the speed has settled or the next one comes. */
 export interface HoldMeasure {
   readonly candidate: string;
   readonly event: HoldEvent;
-  /** Jump of the command at the event, as the actuator takes it, without its sign: 0 is bumpless. */
-  readonly commandStep: number;
+  /** Jump of the command at the event, within its limits, without its sign: 0 is bumpless. Of an override at the sample at which hold is back. */
+  readonly commandStep: Figure;
   /**
    * Furthest below and above the set speed on the way, in true speed [m/s], signed: 0 where it never was on that side. Of
    * a resume, and of taps, from where the reference has arrived; behind an override from where hold is back.
@@ -36,4 +40,13 @@ export interface HoldTransients {
     readonly kind: HoldEventKind;
     readonly count: number;
   }[];
+}
+
+/** What became of the hold, as far as a figure counts it. */
+export interface HoldRecord {
+  readonly measures: readonly HoldMeasure[];
+  /** Where hold was off. */
+  readonly off: readonly HoldOff[];
+  /** Where a rule of the unit ended it [m]. */
+  readonly endedByRule: readonly number[];
 }

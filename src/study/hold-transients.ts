@@ -1,9 +1,9 @@
 import type { LoopPlan } from '../loop/plan.ts';
 import { nearestCheckpoint, replay } from '../loop/replay.ts';
-import type { FullSeries, HoldEvent, HoldEventKind } from '../loop/result.ts';
+import type { FullSeries, HoldEvent, HoldEventKind, LoopResult } from '../loop/result.ts';
 import type { Figure, Replayed } from './findings.ts';
 import { courseOfRun, type HoldCourse, trueSpeedFactor } from './hold-course.ts';
-import type { HoldMeasure, HoldTransient, HoldTransients } from './hold-transient.ts';
+import { type HoldMeasure, type HoldTransient, type HoldTransients, NEXT_CAME } from './hold-transient.ts';
 import { RECOVERED_BAND, RECOVERED_FOR } from './recovery.ts';
 import { errorAt, sampleAt, thinSeries } from './series-measures.ts';
 import { transientWords } from './transient-words.ts';
@@ -25,7 +25,6 @@ const ARRIVED = 1e-6;
 /** Kinds that are followed by a transient. An override's is told from where the grip is let go. */
 const FOLLOWED: readonly HoldEventKind[] = ['engaged', 'resumed', 'tapped', 'override_ended', 'ended'];
 
-const NEXT_CAME = 'what came next on the way came first';
 const NOT_SETTLED = 'it was not within 1 km/h for 3 s in a minute';
 const RUN_ENDED = 'the run ended first';
 const HOLD_OFF = 'hold is off';
@@ -48,12 +47,24 @@ interface Followed {
 export const holdMeasures = (replayed: Replayed): readonly HoldMeasure[] =>
   eventsOf(replayed).map((at) => follow(replayed, at).measure);
 
-/** The transients of all candidates with their pictures: of one kind and candidate the worst few. */
-export function holdTransients(candidates: readonly Replayed[]): HoldTransients {
+/** What follows the events of all candidates. */
+export interface FollowedHolds {
+  readonly transients: HoldTransients;
+  /** Of all events, by the run. */
+  readonly measures: ReadonlyMap<LoopResult, readonly HoldMeasure[]>;
+}
+
+/** The transients of all candidates: figures of all, pictures of the worst few of one kind and candidate. */
+export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
+  const measures = new Map<LoopResult, readonly HoldMeasure[]>();
   const shown: HoldTransient[] = [];
   const leftOut: HoldTransients['leftOut'][number][] = [];
   for (const replayed of candidates) {
     const followed = eventsOf(replayed).map((at) => ({ at, ...follow(replayed, at) }));
+    measures.set(
+      replayed.result,
+      followed.map(({ measure }) => measure),
+    );
     const kept = new Set<number>();
     for (const kind of FOLLOWED) {
       const alike = followed.filter(({ measure }) => measure.event.kind === kind);
@@ -68,7 +79,7 @@ export function holdTransients(candidates: readonly Replayed[]): HoldTransients 
       shown.push({ ...measure, words: transientWords(measure), picture });
     }
   }
-  return { shown, leftOut };
+  return { transients: { shown, leftOut }, measures };
 }
 
 /** Indices of the events that are followed. */
@@ -138,8 +149,7 @@ function measured(
     measure: {
       candidate,
       event,
-      commandStep:
-        series.size === 0 ? 0 : Math.abs(withinRange(plan, series.command[first]!) - event.command),
+      commandStep: stepAt(plan, events, at, series, first),
       ...extremes(series, from, last),
       settling: settled === null ? { none: off ? HOLD_OFF : why } : series.time[settled]! - event.time,
       jerk: greatestJerk(series, first, last),
@@ -150,6 +160,23 @@ function measured(
 /** First sample at or behind a time. */
 const sampleAtTime = (series: FullSeries, time: number): number =>
   sampleAt({ ...series, distance: series.time }, time - 1e-9);
+
+/** Jump of the command where hold takes over or ends. */
+function stepAt(
+  plan: LoopPlan,
+  events: readonly HoldEvent[],
+  at: number,
+  series: FullSeries,
+  first: number,
+): Figure {
+  const override = events[at]!.kind === 'override_ended';
+  const event = override ? events[at + 1] : events[at]!;
+  if (event === undefined || (override && event.kind !== 'reentered')) return { none: NOT_BACK };
+  const i = override ? sampleAtTime(series, event.time) : first;
+  return i < series.size
+    ? Math.abs(withinRange(plan, series.command[i]!) - event.command)
+    : { none: NOT_BACK };
+}
 
 /** The command as the actuator takes it: within the range of the drive and the end stops. */
 function withinRange({ vehicle: { actuator, drive } }: LoopPlan, command: number): number {

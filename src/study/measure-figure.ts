@@ -6,6 +6,9 @@ import { FIGURES, type FigureRow } from './figure-table.ts';
 import type { Demand, Figure, FigureValues, RecoveredHill, Replayed, Stretch, Where } from './findings.ts';
 import { gripBins } from './grip-places.ts';
 import { courseOfRun } from './hold-course.ts';
+import { holdOff, isByRule } from './hold-off.ts';
+import type { HoldMeasure, HoldRecord } from './hold-transient.ts';
+import { type FollowedHolds, holdMeasures } from './hold-transients.ts';
 import { qualityOfRun } from './run-quality.ts';
 import { withUnit } from './wording.ts';
 
@@ -14,6 +17,8 @@ export interface FigureContext {
   readonly road: Road;
   readonly demand: Demand;
   readonly hills: readonly RecoveredHill[];
+  /** What followed the events of the hold, of the runs for which that is known already. */
+  readonly holds?: FollowedHolds['measures'];
 }
 
 /**
@@ -34,7 +39,7 @@ export function measureFigure(
   const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
   const recoveries = recoveriesOf(replayed.name, context.hills, where);
   return row.measure({
-    ...recordOf(replayed, context, chosen, recoveries),
+    ...recordOf(replayed, context, chosen, recoveries, where),
     band: row.takesBand ? band : null,
   });
 }
@@ -42,9 +47,10 @@ export function measureFigure(
 /** What a figure is taken over, but for its band: given bins and recoveries of a run. */
 export function recordOf(
   replayed: Replayed,
-  { road, demand, hills }: FigureContext,
+  { road, demand, hills, holds }: FigureContext,
   chosen: Uint8Array,
   recoveries: readonly Recovery[],
+  where: Where = 'all',
 ): Omit<FigureRecord, 'band'> {
   const { plan, result } = replayed;
   const { drive, traction } = plan.vehicle;
@@ -65,6 +71,7 @@ export function recordOf(
     greatestCommand: throttleRange(plan.vehicle).greatest,
     events: eventsOf(replayed, hills),
     quality: once(() => qualityOfRun(road, plan.vehicle, result.bins, chosen)),
+    hold: once(() => holdRecordOf(replayed, where, holds?.get(result))),
   };
 }
 
@@ -77,6 +84,24 @@ function eventsOf(replayed: Replayed, hills: readonly RecoveredHill[]): number[]
     ...holdEvents.map(({ distance }) => distance),
     ...shifts.filter(({ resumedAt }) => resumedAt !== null).map(({ distance }) => distance),
   ].sort((a, b) => a - b);
+}
+
+/** Events in the stretch; all of them for `holdable`: where hold is off or coming back, nothing is holdable. */
+function holdRecordOf(
+  replayed: Replayed,
+  where: Where,
+  known: readonly HoldMeasure[] | undefined,
+): HoldRecord {
+  const inside = (place: number): boolean =>
+    typeof where === 'string' || (place >= where.from && place < where.to);
+  const { plan, result } = replayed;
+  return {
+    measures: (known ?? holdMeasures(replayed)).filter(({ event }) => inside(event.distance)),
+    off: holdOff(plan, result).filter(({ from }) => inside(from)),
+    endedByRule: (result.holdEvents ?? [])
+      .filter((event) => event.kind === 'ended' && isByRule(event) && inside(event.distance))
+      .map(({ distance }) => distance),
+  };
 }
 
 function once<T>(make: () => T): () => T {
@@ -107,7 +132,8 @@ export function figureValues(
   band: number,
 ): FigureValues {
   const chosen = chooseBins(replayed.result.bins, where, context, courseOfRun(replayed).settling);
-  const record = recordOf(replayed, context, chosen, recoveriesOf(replayed.name, context.hills, where));
+  const recoveries = recoveriesOf(replayed.name, context.hills, where);
+  const record = recordOf(replayed, context, chosen, recoveries, where);
   return Object.fromEntries(
     FIGURES.map((row) => [
       row.name,

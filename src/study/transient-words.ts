@@ -19,16 +19,20 @@ export const causeWords = ({ cause }: Pick<HoldEvent, 'cause'>): string => CAUSE
 
 /** A transient in one sentence. */
 export function transientWords(measure: HoldMeasure): string {
-  const { candidate, event, commandStep, jerk } = measure;
-  const step =
-    commandStep < 5e-4 ? 'without a step of the command' : `the command steps by ${inPct(commandStep, 1)}`;
+  const { candidate, event, commandStep, jerk, settling } = measure;
   const place = atKm(event.distance);
   if (event.kind === 'ended') {
     const jerks = typeof jerk === 'number' ? `, jerk up to ${jerk.toFixed(1)} m/s3` : '';
-    return `Hold of ${candidate} ends at ${place}, at ${inKmh(event.measured)}: ${causeWords(event)}; ${step}${jerks}.`;
+    return `Hold of ${candidate} ends at ${place}, at ${inKmh(event.measured)}: ${causeWords(event)}${jerks}.`;
   }
-  return `${openingWords(measure)}: ${step}, ${wayWords(measure)}${settlingWords(measure.settling)}.`;
+  const parts = [stepWords(commandStep), wayWords(measure), settlingWords(settling)];
+  return `${openingWords(measure)}: ${parts.filter((part) => part !== '').join(', ')}.`;
 }
+
+const stepWords = (step: Figure): string => {
+  if (typeof step !== 'number') return step.none;
+  return step < 5e-4 ? 'no step of the command' : `the command steps by ${inPct(step, 1)}`;
+};
 
 function openingWords({ candidate, event }: HoldMeasure): string {
   const place = atKm(event.distance);
@@ -49,15 +53,14 @@ function openingWords({ candidate, event }: HoldMeasure): string {
 const AT_SET_SPEED = 0.014;
 
 function wayWords({ lowest, highest }: HoldMeasure): string {
-  if (typeof lowest !== 'number' || typeof highest !== 'number')
-    return typeof lowest === 'number' ? '' : `${lowest.none}, `;
+  if (typeof lowest !== 'number' || typeof highest !== 'number') return '';
   const below = lowest < -AT_SET_SPEED ? `${inKmh(-lowest)} below` : '';
   const above = highest > AT_SET_SPEED ? `${inKmh(highest)} above` : '';
-  if (below === '' && above === '') return 'the speed stays at the set speed, ';
-  return `the speed goes ${[below, above].filter((side) => side !== '').join(' and ')} the set speed, `;
+  if (below === '' && above === '') return 'the speed stays at the set speed';
+  return `the speed goes ${[below, above].filter((side) => side !== '').join(' and ')} the set speed`;
 }
 
 const settlingWords = (settling: Figure): string =>
   typeof settling === 'number'
-    ? `within 1 km/h of it for good after ${inSeconds(settling)}`
-    : `and is not seen to settle: ${settling.none}`;
+    ? `within 1 km/h of it from ${inSeconds(settling)} on`
+    : `its settling is not seen: ${settling.none}`;

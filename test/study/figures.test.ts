@@ -61,6 +61,7 @@ const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecor
   greatestCommand: 1,
   events: [],
   quality: () => qualityOfRun(ROAD, vehicleOf(), more.bins ?? BINS, Uint8Array.from(chosen)),
+  hold: () => ({ measures: [], off: [], endedByRule: [] }),
   ...more,
 });
 const MAP = {
@@ -245,6 +246,7 @@ describe('the table of figures', () => {
       kW: '_kw',
       'l/100 km': '_l_per_100km',
       shifts: 'shifts',
+      events: '_events',
       '1': 'residual',
       'km/h·s': '_kmh_s',
       '(km/h)²·s': '_kmh2_s',
