@@ -4,12 +4,15 @@ import type { Canvas } from './charts/canvas.ts';
 import { energyChart } from './charts/energy.ts';
 import { forceSpeedChart } from './charts/force-speed.ts';
 import { hillPicture } from './charts/hill-picture.ts';
-import { laneChart, laneLooks } from './charts/lanes.ts';
+import { histogramChart } from './charts/histogram.ts';
+import { laneLooks } from './charts/lane-looks.ts';
+import { laneChart } from './charts/lanes.ts';
 import { planChart } from './charts/plan.ts';
 import { profileChart } from './charts/profile.ts';
 import { roadLanesChart } from './charts/road-lanes.ts';
 import { segmentStrip } from './charts/segment-strip.ts';
 import type { Html } from './html.ts';
+import { errorBand, spreadsOf } from './model/histograms.ts';
 import { planMap } from './model/plan-map.ts';
 import { viewOf } from './model/view.ts';
 import { FILE_PAINT } from './paint.ts';
@@ -45,6 +48,10 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
     ...laneLooks(view).map((look) => {
       const name = `lane-${look.title.replaceAll(' ', '-')}`;
       return file(name, laneChart(view, canvas(name), look));
+    }),
+    ...spreadsOf(view).map((spread) => {
+      const name = `histogram-${spread.quantity.chart}`;
+      return file(name, histogramChart(spread, errorBand(view, spread), canvas(name, 480)));
     }),
     ...result.hills.map((hill) => {
       const name = `hill-${hill.number}`;

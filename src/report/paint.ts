@@ -12,6 +12,8 @@ export interface Paint {
   readonly band: string;
   readonly ground: string;
   readonly warn: string;
+  /** Logged rides; their marks tell one from another. */
+  readonly ride: string;
   /** Candidates: 0 is the locked throttle. */
   readonly series: readonly string[];
   /** Demand on the drive, from little to all that there is. */
@@ -36,6 +38,7 @@ const SHADES = {
   band: shade('#e3edf3', '#22323c'),
   ground: shade('#f1f3f4', '#1d2226'),
   warn: shade('#b34700', '#f0a35e'),
+  ride: shade('#5b3b9e', '#c3b1f5'),
 } as const;
 
 const SERIES = [
@@ -89,6 +92,7 @@ function paintFrom(colour: (name: string, shade: Shade) => string): Paint {
     band: one('band'),
     ground: one('ground'),
     warn: one('warn'),
+    ride: one('ride'),
     series: list('series'),
     demand: list('demand'),
     diverging: list('diverging'),

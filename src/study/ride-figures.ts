@@ -31,7 +31,14 @@ export interface RideResult extends LoggedRide {
   readonly worstLowAt: number | null;
   readonly worstHighAt: number | null;
   /** The candidates over the same stretches: bins of distance whose middle it covers. */
-  readonly beside: readonly { readonly candidate: string; readonly figures: FigureValues }[];
+  readonly beside: readonly CandidateBeside[];
+}
+
+export interface CandidateBeside {
+  readonly candidate: string;
+  readonly figures: FigureValues;
+  /** [m/s]; 0: it did not come so far. */
+  readonly meanSpeed: number;
 }
 
 /** Pieces of the way between two rows whose errors stand for it in the quantile. */
@@ -76,7 +83,7 @@ export function rideResult(
     meanSpeed: time > 0 ? sums.speed / time : 0,
     worstLowAt: sums.lowAt,
     worstHighAt: sums.highAt,
-    beside: replayed.map((one) => ({ candidate: one.name, figures: besideOf(ride, one, band, context) })),
+    beside: replayed.map((one) => besideOf(ride, one, band, context)),
   };
 }
 
@@ -162,16 +169,32 @@ function quantile(errors: Sums['errors'], share: number): number {
   return rows.at(-1)?.error ?? 0;
 }
 
-function besideOf(ride: LoggedRide, replayed: Replayed, band: number, context: FigureContext): FigureValues {
-  const record = recordOf(replayed, context, binsCovered(ride, replayed), []);
-  return Object.fromEntries(
-    RIDE_FIGURES.flatMap((name) => {
-      const row = figureRow(name);
-      return row === undefined
-        ? []
-        : [[name, row.measure({ ...record, band: row.takesBand ? band : null }).value]];
-    }),
-  );
+function besideOf(
+  ride: LoggedRide,
+  replayed: Replayed,
+  band: number,
+  context: FigureContext,
+): CandidateBeside {
+  const chosen = binsCovered(ride, replayed);
+  const record = recordOf(replayed, context, chosen, []);
+  const figures = RIDE_FIGURES.flatMap((name) => {
+    const row = figureRow(name);
+    return row === undefined
+      ? []
+      : [[name, row.measure({ ...record, band: row.takesBand ? band : null }).value]];
+  });
+  const { bins } = replayed.result;
+  let [way, time] = [0, 0];
+  for (let i = 0; i < bins.size; i++)
+    if (chosen[i] === 1) {
+      way += bins.speedMean[i]! * bins.time[i]!;
+      time += bins.time[i]!;
+    }
+  return {
+    candidate: replayed.name,
+    figures: Object.fromEntries(figures),
+    meanSpeed: time > 0 ? way / time : 0,
+  };
 }
 
 /** Marks the bins whose middle lies between two rows without a gap. */

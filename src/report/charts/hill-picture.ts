@@ -4,7 +4,8 @@ import type { Hill, HillOutcome } from '../../study/findings.ts';
 import { toPct } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { holdingThrottle } from '../model/holding-throttle.ts';
-import type { CandidateView, View } from '../model/view.ts';
+import { rideStretches } from '../model/ride-curves.ts';
+import type { CandidateView, RideView, View } from '../model/view.ts';
 import { changeText } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
 import {
@@ -19,6 +20,7 @@ import {
   stroked,
 } from './canvas.ts';
 import { areaPath, linePath, type Point } from './paths.ts';
+import { rideLine } from './ride-line.ts';
 import { trace } from './trace.ts';
 
 /** A candidate on a hill, with its record. */
@@ -40,7 +42,8 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   const foot = (picture: FullSeries): number => timeAtPlace(picture, hill.from);
   const [start, end] = timeDomain(hill, shown, foot);
   const x = scaleOf([start, end], upper.left, upper.left + width);
-  const speeds = scaleOf(speedDomain(view, shown), upper.top + upper.height, upper.top);
+  const ridden = view.rides.flatMap((ride) => rideOn(ride, hill, start, end));
+  const speeds = scaleOf(speedDomain(view, shown, ridden), upper.top + upper.height, upper.top);
   const guide = guideOf(shown);
   const { throttleMin, throttleMax } = view.result.vehicle.drive;
   const holding = guide === undefined ? [] : holdingAlong(view, guide.outcome.picture);
@@ -59,6 +62,19 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       x(picture.time[i]! - foot(picture)),
       scale(of(values[i]!)),
     ]);
+  const linesOf = (
+    { view: ride, stretches, foot }: RideOnHill,
+    scale: Scale,
+    values: Float64Array,
+    of: (v: number) => number,
+  ) =>
+    stretches.map((rows) =>
+      rideLine(
+        rows.map((row): Point => [x(ride.time[row]! - foot), scale(of(values[row]!))]),
+        ride,
+        canvas,
+      ),
+    );
   const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}</defs>${
     guide !== undefined && onTheHill(guide.outcome.picture, hill, x, [upper, lower], foot, canvas)
   }${leftAxis(canvas, upper, speeds, `speed / ${view.speed.axis}`, 4)}${clipped(
@@ -72,7 +88,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       })
     }${shown.map(({ candidate, outcome }) =>
       trace(over(speeds, outcome.picture.speed, view.speed.of, outcome.picture), candidate, upper, canvas),
-    )}`,
+    )}${ridden.map((ride) => html`${linesOf(ride, speeds, ride.view.speed, view.speed.of)}`)}`,
   )}${leftAxis(canvas, lower, throttles, 'command, and throttle that would hold / %', 3)}${clipped(
     `${id}-l`,
     html`${
@@ -89,7 +105,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       }),
     )}${shown.map(({ candidate, outcome }) =>
       trace(over(throttles, outcome.picture.command, toPct, outcome.picture), candidate, lower, canvas),
-    )}`,
+    )}${ridden.map((ride) => ride.view.throttle !== null && html`${linesOf(ride, throttles, ride.view.throttle, toPct)}`)}`,
   )}${bottomAxis({ ...canvas, narrow: true }, upper, x, null)}${bottomAxis({ ...canvas, narrow: true }, lower, x, 'time from the foot / s')}`;
   const words = {
     title: `Hill ${hill.number}: speed, command and the throttle that would hold, over time`,
@@ -98,6 +114,29 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       .join(' '),
   };
   return drawing(canvas, lower.top + lower.height + BOTTOM_AXIS_HEIGHT, words, body);
+}
+
+/** A logged ride while a hill is shown: its rows from gap to gap, and its time at the foot [s]. */
+interface RideOnHill {
+  readonly view: RideView;
+  readonly stretches: readonly (readonly number[])[];
+  readonly foot: number;
+}
+
+/** The rows of a ride within the picture; none where the log has no time at the foot. */
+function rideOn(ride: RideView, hill: Hill, start: number, end: number): readonly RideOnHill[] {
+  const { distance, time } = ride;
+  const all = rideStretches(ride);
+  if (!all.some(([from, to]) => distance[from]! <= hill.from && distance[to - 1]! > hill.from)) return [];
+  const foot = timeAtPlace(ride, hill.from);
+  // A row on either side of the picture, so that the line reaches its edges.
+  const stretches = all.map(([from, to]) =>
+    Array.from({ length: to - from }, (_, i) => from + i).filter(
+      (row) =>
+        time[Math.min(row + 1, to - 1)]! - foot >= start && time[Math.max(row - 1, from)]! - foot <= end,
+    ),
+  );
+  return [{ view: ride, stretches: stretches.filter(({ length }) => length > 1), foot }];
 }
 
 /** The run that gives set speed, holding throttle and hill their times: of the designs that reached the end the one that is shown longest. */
@@ -143,8 +182,12 @@ function timeDomain(
   return [start, Math.min(end, over + Math.max(40, over))];
 }
 
-/** The designs decide the scale; a locked throttle that strays further leaves it at the edge. */
-function speedDomain(view: View, shown: readonly Shown[]): readonly [number, number] {
+/** The designs and the logged rides decide the scale; a locked throttle that strays further leaves it at the edge. */
+function speedDomain(
+  view: View,
+  shown: readonly Shown[],
+  ridden: readonly RideOnHill[],
+): readonly [number, number] {
   const { of } = view.speed;
   const designs = shown.filter(({ candidate }) => !candidate.locked);
   let low = Number.POSITIVE_INFINITY;
@@ -157,13 +200,21 @@ function speedDomain(view: View, shown: readonly Shown[]): readonly [number, num
         high = Math.max(high, v);
       }
     }
+  for (const { view: ride, stretches } of ridden)
+    for (const row of stretches.flat()) {
+      low = Math.min(low, of(ride.speed[row]!));
+      high = Math.max(high, of(ride.speed[row]!));
+    }
   if (low > high) return [0, 1];
   const room = Math.max(of(view.result.band), (high - low) * 0.15);
   return [low - room, high + room];
 }
 
 /** Time at which a picture passes a place; its ends where it does not. */
-function timeAtPlace({ distance, time, size }: FullSeries, place: number): number {
+function timeAtPlace(
+  { distance, time, size }: Pick<FullSeries, 'distance' | 'time' | 'size'>,
+  place: number,
+): number {
   for (let i = 1; i < size; i++) {
     if (distance[i]! < place) continue;
     const step = distance[i]! - distance[i - 1]!;

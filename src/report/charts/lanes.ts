@@ -1,9 +1,9 @@
-import { toKm, toKw, toPct, toWh } from '../../units/convert.ts';
+import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { binCurve, type Lane } from '../model/bin-curves.ts';
+import { binCurve } from '../model/bin-curves.ts';
 import { type Curve, columnsOf, extentOf } from '../model/columns.ts';
-import { gearsChange } from '../model/hold-marks.ts';
-import type { CandidateView, View } from '../model/view.ts';
+import { rideCurves } from '../model/ride-curves.ts';
+import type { CandidateView, RideView, View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
 import { bandText, changeText, placeText } from '../quantity.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
@@ -22,89 +22,12 @@ import {
 } from './canvas.ts';
 import { cycleMarks } from './cycle-marks.ts';
 import { holdBrackets, holdColumns, holdHead } from './hold-brackets.ts';
+import { curveOf, curvesOfRide, type LaneLook, laneLooks } from './lane-looks.ts';
 import { envelopePath, linePath, type Point } from './paths.ts';
+import { rideLine, rideSign } from './ride-line.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
-
-interface LaneLook {
-  readonly lane: Lane;
-  readonly name: string;
-  readonly title: string;
-  readonly of: (value: number) => number;
-  readonly height: number;
-  /** Fixed ends of the scale; the curves widen it where it is not `closed`. */
-  readonly domain: readonly [number, number];
-  readonly closed: boolean;
-  /** Figures at the left axis; as many as fit where it is not given. */
-  readonly ticks?: number;
-}
-
-/** The lanes of a view, from above: what the rider feels, what the throttle does, what it costs. */
-export function laneLooks(view: View): readonly LaneLook[] {
-  const { speed, result } = view;
-  const band = speed.of(result.band);
-  const drive = result.vehicle.drive;
-  const error = (height: number, reach: number | null): LaneLook => ({
-    lane: 'error',
-    name: `speed error / ${speed.axis}`,
-    title: reach === null ? 'speed error' : 'speed error near the band',
-    of: speed.of,
-    height,
-    domain: reach === null ? [-band * 1.5, band * 1.5] : [-reach, reach],
-    closed: reach !== null,
-  });
-  const all = extentOf(view.candidates.map((c) => binCurve(c.result.bins, 'error')));
-  const reach = all === null ? 0 : Math.max(-speed.of(all[0]), speed.of(all[1]));
-  return [
-    error(150, null),
-    // Where a candidate strays far, the band would be a line: it gets a lane of its own, at its own scale.
-    ...(reach > 4 * band ? [error(130, band * 2.5)] : []),
-    {
-      lane: 'throttle',
-      name: 'throttle / %',
-      title: 'throttle',
-      of: toPct,
-      height: 110,
-      domain: [toPct(drive.throttleMin), toPct(drive.throttleMax)],
-      closed: true,
-    },
-    ...(gearsChange(view) ? [gearLook(view)] : []),
-    {
-      lane: 'power',
-      name: 'wheel power / kW',
-      title: 'wheel power',
-      of: toKw,
-      height: 110,
-      domain: [0, 1],
-      closed: false,
-    },
-    {
-      lane: 'energy',
-      name: 'wheel energy / Wh',
-      title: 'wheel energy',
-      of: toWh,
-      height: 90,
-      domain: [0, 1],
-      closed: false,
-    },
-  ];
-}
-
-/** The gears that were engaged, a step from one to the next. */
-function gearLook(view: View): LaneLook {
-  const [low, high] = extentOf(view.candidates.map((c) => binCurve(c.result.bins, 'gear'))) ?? [1, 1];
-  return {
-    lane: 'gear',
-    name: 'gear',
-    title: 'gear',
-    of: (gear) => gear,
-    height: 26 + 14 * Math.min(5, high - low + 1),
-    domain: [low - 0.5, high + 0.5],
-    closed: true,
-    ticks: Math.min(6, high - low + 1),
-  };
-}
 
 /** All lanes under one another over the same distance. */
 export function lanesChart(view: View, canvas: Canvas): Html {
@@ -121,7 +44,10 @@ export function lanesChart(view: View, canvas: Canvas): Html {
   });
   const words = {
     title: `${looks[0]!.name} and what drives it over ${view.distanceName}`,
-    desc: view.candidates.map((candidate) => extremes(view, candidate)).join(' '),
+    desc: [
+      ...view.candidates.map((c) => extremes(view, c)),
+      ...view.rides.map((r) => extremesOfRide(view, r)),
+    ].join(' '),
   };
   return drawing(canvas, top - gap + BOTTOM_AXIS_HEIGHT, words, html`${parts}`);
 }
@@ -147,15 +73,31 @@ function extremes(view: View, candidate: CandidateView): string {
   return `${candidate.name}: speed error from ${changeText(extent[0], view.speed)} to ${changeText(extent[1], view.speed)}.`;
 }
 
+function extremesOfRide(view: View, ride: RideView): string {
+  const [low, high] = extentOf(rideCurves(ride, 'error')) ?? [0, 0];
+  return `${ride.name}, logged: speed error from ${changeText(low, view.speed)} to ${changeText(high, view.speed)}.`;
+}
+
 function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: boolean, last: boolean): Html {
   const { paint, id } = canvas;
-  const curves = view.candidates.map((candidate) => binCurve(candidate.result.bins, look.lane));
+  const curves = view.candidates.map((candidate) => curveOf(candidate, look.lane));
+  const ridden = view.rides.map((ride) => curvesOfRide(ride, look.lane));
   const x = scaleOf([0, toKm(view.length)], box.left, box.left + box.width);
-  const y = scaleOf(domainOf(look, curves), box.top + box.height, box.top);
+  const y = scaleOf(domainOf(look, [...curves, ...ridden.flat()]), box.top + box.height, box.top);
   const band = view.speed.of(view.result.band);
   const inBand = { ...box, top: y(band), height: y(-band) - y(band) };
   const drawn = view.candidates.map((candidate, i) =>
     curveMarks(candidate, curves[i]!, look, canvas, x, y, view.length / (box.width / COLUMN)),
+  );
+  const logged = view.rides.flatMap((ride, i) =>
+    ridden[i]!.map((curve) => {
+      const columns = columnsOf(curve, 0, view.length / (box.width / COLUMN));
+      return rideLine(
+        columns.map((c): Point => [x(toKm(c.at)), y(look.of(c.mean))]),
+        ride,
+        canvas,
+      );
+    }),
   );
   return html`<defs>${clip(`${id}-c`, box)}</defs>${holdColumns(view, canvas, box, x)}${first && holdBrackets(view, canvas, { ...box, top: box.top - 20 }, x)}${look.lane === 'error' && rectangle(inBand, paint.band)}${leftAxis(
     canvas,
@@ -163,12 +105,23 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: bo
     y,
     look.closed && look.lane === 'error' ? `${look.name}, near the band` : look.name,
     look.ticks,
-  )}${clipped(`${id}-c`, drawn)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${first && cycleMarks(view, canvas, box, x)}${endMarks(view, canvas, x, box, first)}${!canvas.narrow && endLabels(view, curves, look, canvas, box, y)}${bottomAxis(
+  )}${clipped(`${id}-c`, html`${look.lane === 'speed' && setSpeedLine(view, canvas, x, y)}${drawn}${logged}`)}${look.closed && look.lane === 'error' && bandLabel(view, canvas, box, y(band))}${first && cycleMarks(view, canvas, box, x)}${endMarks(view, canvas, x, box, first)}${!canvas.narrow && endLabels(view, curves, ridden, look, canvas, box, y)}${bottomAxis(
     canvas,
     box,
     x,
     last ? `${view.distanceName} / km` : null,
   )}`;
+}
+
+/** The set speed by the road's own reckoning, dotted. */
+function setSpeedLine(
+  { result: { road, demand }, speed }: View,
+  { paint }: Canvas,
+  x: Scale,
+  y: Scale,
+): Html | null {
+  const points = Array.from(demand.setSpeed, (v, i): Point => [x(toKm(road.distance[i]!)), y(speed.of(v))]);
+  return stroked(linePath(points), { stroke: paint.ink, width: 1, dash: '1 2' });
 }
 
 function domainOf(look: LaneLook, curves: readonly Curve[]): readonly [number, number] {
@@ -226,29 +179,39 @@ function endName(name: string, at: number, box: Box, paint: Paint): Html {
 function endLabels(
   view: View,
   curves: readonly Curve[],
+  ridden: readonly (readonly Curve[])[],
   look: LaneLook,
   { paint }: Canvas,
   box: Box,
   y: Scale,
 ): Html {
-  const wanted = view.candidates
-    .map((candidate, i) => ({ candidate, i }))
-    .filter(({ candidate }) => candidate.result.status === 'completed')
-    .map(({ candidate, i }) => {
-      const curve = curves[i]!;
-      const value = curve.size > 0 ? look.of(curve.mean[curve.size - 1]!) : 0;
-      const at = Number.isFinite(value) ? y(value) : box.top;
-      return { candidate, at: Math.min(box.top + box.height, Math.max(box.top, at)) };
-    })
-    .sort((a, b) => a.at - b.at || a.candidate.colour - b.candidate.colour);
+  const atEnd = (curve: Curve | undefined): number => {
+    const value = curve !== undefined && curve.size > 0 ? look.of(curve.mean[curve.size - 1]!) : 0;
+    const at = Number.isFinite(value) ? y(value) : box.top;
+    return Math.min(box.top + box.height, Math.max(box.top, at));
+  };
+  const left = box.left + box.width + 6;
+  const wanted = [
+    ...view.candidates.flatMap((candidate, i) => {
+      const { result, name, colour, dash } = candidate;
+      if (result.status !== 'completed') return [];
+      const look = { stroke: paint.series[colour]!, width: 2, dash };
+      const sign = (place: number) => segment(left, place, left + 20, place, look);
+      return [{ name, at: atEnd(curves[i]), rank: colour, sign }];
+    }),
+    ...view.rides.flatMap((ride, i) => {
+      if (ridden[i]!.length === 0) return [];
+      const sign = (place: number) => rideSign(left, place, 20, ride, paint);
+      return [{ name: ride.name, at: atEnd(ridden[i]!.at(-1)), rank: view.candidates.length + i, sign }];
+    }),
+  ].sort((a, b) => a.at - b.at || a.rank - b.rank);
   const step = 14;
   const most = box.top + box.height - (wanted.length - 1) * step;
   let free = Number.NEGATIVE_INFINITY;
-  return html`${wanted.map(({ candidate, at }, i) => {
+  return html`${wanted.map(({ name, at, sign }, i) => {
     const place = Math.max(free, Math.min(at, most + i * step));
     free = place + step;
-    const left = box.left + box.width + 6;
-    const name = candidate.name.length > 13 ? `${candidate.name.slice(0, 12)}…` : candidate.name;
-    return html`${segment(left, place, left + 20, place, { stroke: paint.series[candidate.colour]!, width: 2, dash: candidate.dash })}${label(left + 24, place + 4, name, { size: 11, fill: paint.ink })}`;
+    const short = name.length > 13 ? `${name.slice(0, 12)}…` : name;
+    return html`${sign(place)}${label(left + 24, place + 4, short, { size: 11, fill: paint.ink })}`;
   })}`;
 }

@@ -5,7 +5,9 @@ import { cyclesCsv } from './cycle-table.ts';
 import { disturbanceCsv } from './disturbance.ts';
 import { fullSeriesCsv } from './full-series.ts';
 import { hillsCsv } from './hill-table.ts';
+import { histogramsCsv } from './histogram-table.ts';
 import { matrixCsv } from './matrix-table.ts';
+import { rideCsv } from './ride-series.ts';
 import { routeGeoJson } from './route.ts';
 import { segmentsCsv } from './segment-table.ts';
 
@@ -26,7 +28,9 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
     { name: 'segments.csv', text: segmentsCsv(run.segments) },
     { name: 'hills.csv', text: hillsCsv(run.hills) },
     { name: 'cycles.csv', text: cyclesCsv(run.cycles) },
+    { name: 'histograms.csv', text: histogramsCsv(run.candidates) },
     ...(run.matrix === null ? [] : [{ name: 'matrix.csv', text: matrixCsv(run.matrix) }]),
+    ...run.loggedRides.map((ride) => ({ name: `ride-${ride.name}.csv`, text: rideCsv(ride) })),
     ...run.candidates.map((candidate) => ({
       name: `series-${candidate.name}.csv`,
       text:

@@ -13,6 +13,7 @@ import { hillRows } from './hill-table.ts';
 import { type Json, numbers, warningJson } from './json-parts.ts';
 import { jsonText } from './json-text.ts';
 import { matrixJson } from './matrix-table.ts';
+import { rideJson } from './ride-summary.ts';
 import { routeSummary } from './route-summary.ts';
 
 /**
@@ -44,6 +45,7 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     hills: hillRows(run.hills),
     cycles: cycleRows(run.cycles),
     requirements: run.requirements.map(requirementOf),
+    ...(run.loggedRides.length === 0 ? {} : { logged_rides: run.loggedRides.map(rideJson) }),
     ...(run.matrix === null ? {} : { matrix: matrixJson(run.matrix) }),
     spread: { roads: run.spread.roads, seed: run.spread.seed },
     defaults: run.defaults.map(({ key, value, of, source }) => ({ key, value, of, source })),

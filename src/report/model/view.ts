@@ -1,4 +1,5 @@
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
+import type { RideResult } from '../../study/ride-figures.ts';
 import { DASHES } from '../paint.ts';
 import { SPEED_UNITS, type SpeedUnit, type Units } from '../quantity.ts';
 import { distanceNameOf, lengthOf } from './road-words.ts';
@@ -10,6 +11,8 @@ export interface View {
   readonly speed: SpeedUnit;
   /** Locked throttles first, then the designs as the case lists them. */
   readonly candidates: readonly CandidateView[];
+  /** Logged rides, as the case lists them. */
+  readonly rides: readonly RideView[];
   /** `distance`, or `nominal distance` for a road along time. */
   readonly distanceName: string;
   /** Length of the road [m]. */
@@ -21,6 +24,13 @@ export interface CandidateView extends CandidateResult {
   /** Index into Paint.series, and the dash pattern that goes with it. */
   readonly colour: number;
   readonly dash: string;
+}
+
+/** Marks that tell the lines of rides apart. */
+export const RIDE_MARKS = ['ring', 'square', 'diamond', 'triangle'] as const;
+
+export interface RideView extends RideResult {
+  readonly mark: (typeof RIDE_MARKS)[number];
 }
 
 /** Orders the candidates and gives each a look of its own; past the palette's end looks come again. */
@@ -40,6 +50,7 @@ export function viewOf(result: RunResult, units: Units): View {
       ...locked.map((candidate, i) => looked(candidate, i === 0 ? -1 : designs.length + i - 1)),
       ...designs.map((candidate, i) => looked(candidate, i)),
     ],
+    rides: result.loggedRides.map((ride, i) => ({ ...ride, mark: RIDE_MARKS[i % RIDE_MARKS.length]! })),
     distanceName: distanceNameOf(result.road),
     length: lengthOf(result.road),
   };

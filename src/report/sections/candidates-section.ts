@@ -14,6 +14,7 @@ import type { CandidateView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { bandText, changeText, NO_VALUE, placeText } from '../quantity.ts';
 import { cycles } from './cycles.ts';
+import { loggedRides } from './logged-rides.ts';
 import { loopMarginRows } from './loop-margin-rows.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
@@ -91,6 +92,7 @@ export function candidatesSection(view: View): Section {
   const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
 ${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
 ${(early || planned !== null) && html`<p class="note">${early && '† Up to where that run ended, not over the whole road. '}${planned !== null && changesNote(planned)}</p>`}
+${view.rides.map((ride) => loggedRides(view, ride))}
 ${cycles(view)}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
 }

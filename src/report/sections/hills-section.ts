@@ -49,9 +49,9 @@ export function hillsSection(view: View): Section {
   const rest = hills.length - shown.length;
   const body = html`<p>A hill is every stretch where the demand leaves the range of the drive, or a candidate leaves its band or meets a limit; all candidates share them. ${
     rest > 0 && `Cards: the ${shown.length} worst of ${hills.length}; the table at the end has all.`
-  } In the pictures time counts from the foot of the hill, and the hill is shaded${view.candidates.some(({ result }) => result.shifts.length > 0) && ', darker where a shift is made'}. Above: speed, the set speed dotted. Below: the command as lines, and as an area the throttle that would hold the set speed steadily; beyond the dashed lines the drive has no more. A line that swings too fast to be drawn is a band from least to greatest.</p>
+  } In the pictures time counts from the foot of the hill, and the hill is shaded${view.candidates.some(({ result }) => result.shifts.length > 0) && ', darker where a shift is made'}. Above: speed, the set speed dotted. Below: the command as lines, and as an area the throttle that would hold the set speed steadily; beyond the dashed lines the drive has no more. A line that swings too fast to be drawn is a band from least to greatest.${view.rides.length > 0 && ' A logged ride is drawn beside them from its own time at the foot, its throttle as the log has it; no hill is explained by it.'}</p>
 <p>${DEFINED}${chargeWords(view)}</p>
-${candidateKey(view.candidates, PAGE_PAINT)}
+${candidateKey(view.candidates, PAGE_PAINT, view.rides)}
 <div class="cards">${shown.map((hill) => card(view, hill))}</div>
 <h3>All hills</h3>
 <p>Under a candidate: its largest error, and why.${outgrown(view) && ` Under a gear that is too high: the speed in ${view.speed.name} that each gear sustains, from the first.`}</p>

@@ -12,11 +12,14 @@ import type { Section } from './section.ts';
 /** 5: what every candidate did, over the same distance. */
 export function lanesSection(view: View): Section {
   const early = view.candidates.filter((candidate) => candidate.result.status !== 'completed');
-  const body = html`${candidateKey(view.candidates, PAGE_PAINT)}
+  const body = html`${candidateKey(view.candidates, PAGE_PAINT, view.rides)}
 ${chartFigure(
   'lanes',
   (canvas) => lanesChart(view, canvas),
   html`Lines: mean of each stretch that is one line of the picture wide; shade around them: least to greatest in it, so that no peak is lost.${
+    view.rides.length > 0 &&
+    ' With marks on it: a logged ride, broken where the log has a gap; speed, with the set speed dotted, speed error, and throttle where the log has it.'
+  }${
     setSpeedMarks(view).length > 0 &&
     ' Brackets: a change of set speed is being followed, and the error there is planned.'
   }${
