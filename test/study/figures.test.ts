@@ -1,12 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import type { FigureRecord } from '../../src/study/figure-measures.ts';
 import { FIGURES, figureRow } from '../../src/study/figure-table.ts';
-import { qualityOfRun } from '../../src/study/run-quality.ts';
 import type { EnergySource } from '../../src/vehicle/energy-source.ts';
 import { expectClose } from '../compare.ts';
-import { recordOf } from './record-of.ts';
-import { roadOf } from './road-of.ts';
-import { vehicleOf } from './vehicle-of.ts';
+import { figureRecord, recordOf } from './record-of.ts';
 
 /**
  * Four bins of 100 m at a set speed of 20 m/s, worked out by hand. Errors are constant within a bin:
@@ -42,28 +39,15 @@ const BINS = recordOf(
   2,
 );
 
-const ROAD = roadOf([{ length: 400, grade: 0 }]);
-const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecord => ({
-  bins: BINS,
-  chosen: Uint8Array.from(chosen),
-  end: 400,
-  along: 'distance',
-  bands: [1.5, 2.5],
-  band: 1.5,
-  recoveries: [],
-  source: null,
-  shifts: [],
-  shiftsCancel: false,
-  beyondGrip: null,
-  brakeNeeded: Float64Array.of(0, 0, 500, 2400),
-  ledgerResidual: -3e-9,
-  road: ROAD,
-  greatestCommand: 1,
-  events: [],
-  quality: () => qualityOfRun(ROAD, vehicleOf(), more.bins ?? BINS, Uint8Array.from(chosen)),
-  hold: () => ({ measures: [], off: [], endedByRule: [] }),
-  ...more,
-});
+const record = (chosen: number[], more: Partial<FigureRecord> = {}): FigureRecord =>
+  figureRecord(more.bins ?? BINS, {
+    chosen: Uint8Array.from(chosen),
+    bands: [1.5, 2.5],
+    band: 1.5,
+    brakeNeeded: Float64Array.of(0, 0, 500, 2400),
+    ledgerResidual: -3e-9,
+    ...more,
+  });
 const MAP = {
   shaftSpeed: Float64Array.of(0, 1),
   torque: Float64Array.of(0, 1),

@@ -1,5 +1,9 @@
 // A record for tests, written out by hand: rows of bins with the columns that matter, the rest zero.
 import type { BinRecord, LoopResult } from '../../src/loop/result.ts';
+import type { FigureRecord } from '../../src/study/figure-measures.ts';
+import { qualityOfRun } from '../../src/study/run-quality.ts';
+import { roadOf } from './road-of.ts';
+import { vehicleOf } from './vehicle-of.ts';
 
 export type BinColumn = Exclude<keyof BinRecord, 'size' | 'edge' | 'gear' | 'detail'>;
 export type BinRow = Partial<Record<Exclude<BinColumn, 'timeInBand'>, number>> & { timeInBand?: number[] };
@@ -78,6 +82,34 @@ export function resultOf(bins: BinRecord, more: Partial<LoopResult> = {}): LoopR
     checkpoints: [],
     shifts: [],
     bites: [],
+    ...more,
+  };
+}
+
+/** What figures are taken over: all bins of a record of a level road, of a run to which nothing happened. */
+export function figureRecord(bins: BinRecord, more: Partial<FigureRecord> = {}): FigureRecord {
+  const end = bins.edge[bins.size]!;
+  const road = roadOf([{ length: end, grade: 0 }]);
+  const chosen = new Uint8Array(bins.size).fill(1);
+  return {
+    bins,
+    chosen,
+    end,
+    along: 'distance',
+    bands: [2 / 3.6],
+    band: null,
+    recoveries: [],
+    source: null,
+    shifts: [],
+    shiftsCancel: false,
+    beyondGrip: null,
+    brakeNeeded: new Float64Array(bins.size),
+    ledgerResidual: 0,
+    road,
+    greatestCommand: 1,
+    events: [],
+    quality: () => qualityOfRun(road, vehicleOf(), bins, more.chosen ?? chosen),
+    hold: () => ({ measures: [], off: [], endedByRule: [] }),
     ...more,
   };
 }
