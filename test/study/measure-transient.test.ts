@@ -1,0 +1,139 @@
+import { describe, expect, it } from 'vitest';
+import type { FullSeries, HoldEvent, HoldEventKind } from '../../src/loop/result.ts';
+import { measureTransient } from '../../src/study/measure-transient.ts';
+import { expectClose } from '../compare.ts';
+import { seriesOf } from './series-of.ts';
+
+/** The event at 5 s, 100 m on, at a set speed of 20 m/s. */
+const event = (kind: HoldEventKind, time = 5): HoldEvent => ({
+  time,
+  distance: 20 * time,
+  kind,
+  cause: 'rider',
+  setSpeed: 20,
+  measured: 20,
+  command: 0.3,
+});
+
+interface Course {
+  readonly error: (t: number) => number;
+  readonly reference?: (t: number) => number;
+  readonly acceleration?: (t: number) => number;
+  readonly command?: (t: number) => number;
+}
+
+/** A minute, ten samples a second; times count from the event. */
+function course({
+  error,
+  reference = () => 20,
+  acceleration = () => 0,
+  command = () => 0.3,
+}: Course): FullSeries {
+  const series = seriesOf(
+    65,
+    (t) => error(t - 5),
+    () => 0,
+  );
+  const column = (of: (t: number) => number) => series.time.map((t) => of(t - 5));
+  return {
+    ...series,
+    reference: column(reference),
+    acceleration: column(acceleration),
+    command: column(command),
+  };
+}
+
+function measure(series: FullSeries, events: readonly HoldEvent[]) {
+  return measureTransient(series, {
+    candidate: 'pi',
+    range: { least: 0, greatest: 1 },
+    events,
+    at: 0,
+    longest: 60,
+    unsettled: 'the road came first',
+  }).measure;
+}
+
+describe('a transient', () => {
+  it('sags, comes back as an exponential does, and settles when that says', () => {
+    // e = -2 exp(-t / 4 s) is within 1 km/h from 4 s ln(2 x 3.6) = 7.896 s on: the sample at 7.9 s.
+    const found = measure(course({ error: (t) => (t < 0 ? 0 : -2 * Math.exp(-t / 4)) }), [event('engaged')]);
+    expectClose(found.settling as number, 7.9, 1e-9);
+    expectClose(found.lowest as number, -2, 1e-9);
+    expect(found.highest).toBe(0);
+  });
+
+  it('takes the step of the command from the sample before to that of the event, within its limits', () => {
+    const step = (command: (t: number) => number) =>
+      measure(course({ error: () => 0, command }), [event('engaged')]).commandStep;
+    expectClose(step((t) => (t < 0 ? 0.3 : 0.37)) as number, 0.07, 1e-12);
+    expectClose(step((t) => (t < 0 ? 0.3 : -0.4)) as number, 0.3, 1e-12);
+    expectClose(step((t) => (t < 0 ? 0.3 : 2)) as number, 0.7, 1e-12);
+    expectClose(step((t) => (t <= 0 ? 0.3 : 0.9)) as number, 0, 1e-12);
+  });
+
+  it('counts a resume from where the reference has arrived at the set speed', () => {
+    const error = (t: number): number => (t < 10 ? t - 10 : t < 12 ? 0.8 : 0);
+    const reference = (t: number): number => 20 + Math.min(0, t - 10);
+    const found = measure(course({ error, reference }), [event('resumed')]);
+    expectClose([found.lowest as number, found.highest as number], [0, 0.8], 1e-9);
+    // Within 1 km/h for less than a second before the overshoot, and again from 12 s on.
+    expectClose(found.settling as number, 12, 1e-9);
+    const never = measure(course({ error, reference: () => 19 }), [event('resumed')]);
+    expect(never.lowest).toHaveProperty('none');
+  });
+
+  it('counts an override from where hold is back, and its step there', () => {
+    const error = (t: number): number => (t < 3 ? 4 - t : t < 6 ? -0.5 : 0);
+    const command = (t: number): number => (t < 3 ? 0.3 : 0.26);
+    const events = [event('override_ended'), event('reentered', 8)];
+    const found = measure(course({ error, command }), events);
+    expectClose([found.lowest as number, found.highest as number], [-0.5, 0], 1e-9);
+    expectClose(found.commandStep as number, 0.04, 1e-12);
+    expectClose(found.settling as number, 6, 1e-9);
+    const lost = measure(course({ error, command }), [event('override_ended'), event('ended', 8)]);
+    expect(lost.commandStep).toHaveProperty('none');
+    expect(lost.highest).toHaveProperty('none');
+  });
+
+  it('takes the jerk over 0.2 s', () => {
+    // a = t^2 / 2 until 3 s, then still: over the last 0.2 s (4.5 - 3.92) / 0.2.
+    const acceleration = (t: number): number => (t < 0 ? 0 : Math.min(t, 3) ** 2 / 2);
+    expectClose(
+      measure(course({ error: () => -1, acceleration }), [event('tapped')]).jerk as number,
+      2.9,
+      1e-9,
+    );
+    const sudden = (t: number): number => (t < 0 ? 0 : -2);
+    expectClose(
+      measure(course({ error: () => 0, acceleration: sudden }), [event('ended')]).jerk as number,
+      10,
+      1e-9,
+    );
+  });
+
+  it('has no settling where it was not seen, and says why', () => {
+    expect(measure(course({ error: () => -1 }), [event('engaged')]).settling).toEqual({
+      none: 'the road came first',
+    });
+    expect(measure(course({ error: () => 0 }), [event('ended')])).toMatchObject({
+      settling: { none: 'hold is off' },
+      lowest: { none: 'hold is off' },
+    });
+  });
+
+  it('has no figure that is no number, however short its window', () => {
+    for (const kind of ['engaged', 'resumed', 'tapped', 'override_ended', 'ended'] as const)
+      for (const size of [0, 1, 2, 50, 51, 53]) {
+        const whole = course({ error: () => -1 });
+        const columns = Object.entries(whole).map(([name, column]) => [
+          name,
+          typeof column === 'number' ? size : column.slice(0, size),
+        ]);
+        const found = measure(Object.fromEntries(columns) as FullSeries, [event(kind)]);
+        for (const figure of [found.commandStep, found.lowest, found.highest, found.settling, found.jerk])
+          if (typeof figure === 'number') expect(figure).not.toBeNaN();
+          else expect(figure.none).not.toBe('');
+      }
+  });
+});
