@@ -13,6 +13,7 @@ import { replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
+import type { Road } from '../road/road.ts';
 import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
 import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
@@ -21,8 +22,11 @@ import type { Replayed } from '../study/findings.ts';
 import { followHolds } from '../study/hold-transients.ts';
 import { judge } from '../study/judge.ts';
 import { findLimitCycles } from '../study/limit-cycles.ts';
+import { type LoopSheet, loopSheet } from '../study/loop-sheet.ts';
+import { operatingPoints } from '../study/operating-points.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
+import { visitsOfRecord } from '../study/visited-points.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { toKmh } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -170,6 +174,7 @@ export function runWithoutMatrix({
     demand,
     hills,
     cycles,
+    loops: loopsOnPaper(road, vehicle, results),
     transients: followed.transients,
     loggedRides: rideResults(loggedRides, { ...context, vehicle, hold, rider, band, replayed }),
     segmentsBy: segmenting.by,
@@ -191,6 +196,14 @@ export function runWithoutMatrix({
   };
   const { bin } = output;
   return { run, matrix: rides === null ? null : { ...rides, candidates, scheme, bands, bin, spread } };
+}
+
+/** The linear loops of all candidates at the operating points that those with one visit. */
+function loopsOnPaper(road: Road, vehicle: Vehicle, candidates: readonly CandidateResult[]): LoopSheet {
+  const linear = candidates.filter(({ controller }) => !('none' in linearController(controller)));
+  const visits = linear.flatMap(({ result }) => visitsOfRecord(road, result.bins));
+  const rides = [{ vehicle, load: null, visits }];
+  return loopSheet(operatingPoints({ rides, grid: null }), candidates);
 }
 
 /** The true speeds that the set speeds of a run stand for [m/s]. */

@@ -17,6 +17,7 @@ import type {
   Segment,
 } from '../study/findings.ts';
 import type { HoldTransients } from '../study/hold-transient.ts';
+import type { LoopSheet } from '../study/loop-sheet.ts';
 import type { RideResult } from '../study/ride-figures.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { MatrixResult } from './matrix-result.ts';
@@ -55,6 +56,8 @@ export interface RunResult {
   readonly transients: HoldTransients;
   /** Rides that were logged on the same road, laid along it; no candidates: nothing is asked of them. */
   readonly loggedRides: readonly RideResult[];
+  /** The linear loops at the operating points that the runs visit. */
+  readonly loops: LoopSheet;
   readonly segmentsBy: 'length' | 'terrain';
   readonly segments: readonly Segment[];
   readonly requirements: readonly RequirementFinding[];

@@ -154,6 +154,7 @@ function plainResult(wish: FixtureWish): RunResult {
         to: 9300,
       },
     ],
+    loops: { points: [], notHeld: [], loops: [] },
     matrix: null,
     status: early
       ? 'incomplete'
