@@ -1,7 +1,9 @@
+import { InputError } from '../problems/input-error.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
 import { toNPerKmh2 } from '../units/convert.ts';
 import { editCase } from './edit-case.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
+import { placeOf } from './yaml-source.ts';
 
 /** Numbers that a measurement puts into a vehicle file, and what is said of each. */
 export interface IdentifiedVehicle {
@@ -25,7 +27,7 @@ const written = (value: number): number => Number(value.toPrecision(5));
  * regulations stays in it, at the mass and the air that the file states; a table over yaw, a tyre pressure or a
  * published table, which have no place for the numbers, give way to coefficients.
  *
- * @throws InputError of editCase: a number that aliases share with other places
+ * @throws InputError `no-place-for-number`, and of editCase: a number that aliases share with other places
  */
 export function withIdentified(vehicle: VehicleDocument, found: IdentifiedVehicle): string {
   const { file, source } = vehicle;
@@ -56,6 +58,14 @@ export function withIdentified(vehicle: VehicleDocument, found: IdentifiedVehicl
       cda_m2: written(found.cda),
       ...('cda_yaw_per_rad2' in load ? { cda_yaw_per_rad2: load.cda_yaw_per_rad2 } : {}),
       crr: written(found.crr),
+    });
+  else if (found.cda !== null || found.crr !== null)
+    throw new InputError({
+      code: 'no-place-for-number',
+      place: placeOf(source, ['road_load']),
+      message: 'this form of road load has no place for one of the two numbers alone',
+      found: found.cda === null ? 'a rolling coefficient' : 'a drag area',
+      allowed: 'cda_m2 with crr, or f0_n with f2_n_per_kmh2; or both numbers fitted',
     });
   const comment = marked(found.provenance);
   const at = text.search(/^["']?road_load["']?\s*:/m);

@@ -1,9 +1,11 @@
 import { join } from 'node:path';
+import { RIDE_UNKNOWNS, type RideUnknown } from '../identify/ride.ts';
+import { InputError } from '../problems/input-error.ts';
 import { identificationAnswer } from '../report/identify/identification-answer.ts';
 import { identificationJson } from '../report/identify/identification-json.ts';
 import { renderIdentification } from '../report/identify/render-identification.ts';
-import { SPEED_UNITS } from '../report/quantity.ts';
 import { identifyLogs } from '../run/identify-logs.ts';
+import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE } from './exit-status.ts';
@@ -19,50 +21,76 @@ const MARK = 'identify.json';
 /** `ridgehold identify LOG...`: logs become numbers of a vehicle, its file, and a page that says how good they are. */
 export function identifyCommand({ operands, values }: Invocation<'identify'>): number {
   const path = values.out ?? join(defaultFolder(operands[0]), 'vehicle.yaml');
+  const ofCase = values.case === undefined ? null : readerOf(values.case);
   const { folder, name } = targetOf(path, MARK);
   checkFolder(folder, [PAGE, MARK]);
-  const result = identifyLogs({
-    logs: operands,
-    read: (file) => readBytes(file),
-    kind: values.kind,
-    vehicle: values.vehicle,
-    massKg: numberOption(values['mass-kg'], { name: 'mass-kg', unit: 'kg', least: 20, most: 5000 }),
-    rotatingKg: numberOption(values['rotating-kg'], { name: 'rotating-kg', unit: 'kg', least: 0, most: 300 }),
-    airTemperatureC: numberOption(values['air-temperature-c'], {
-      name: 'air-temperature-c',
-      unit: 'deg C',
-      least: -40,
-      most: 55,
-    }),
-    airPressureHpa: numberOption(values['air-pressure-hpa'], {
-      name: 'air-pressure-hpa',
-      unit: 'hPa',
-      least: 500,
-      most: 1090,
-    }),
-    airDensityKgM3: numberOption(values['air-density-kg-m3'], {
-      name: 'air-density-kg-m3',
-      unit: 'kg/m3',
-      least: 0.5,
-      most: 2,
-    }),
-  });
+  const work = () =>
+    identifyLogs({
+      logs: operands,
+      read: (file) => readBytes(file),
+      kind: values.kind,
+      vehicle: values.vehicle,
+      case: ofCase ?? undefined,
+      fit: unknownsOf(values.fit),
+      massKg: numberOption(values['mass-kg'], { name: 'mass-kg', unit: 'kg', least: 20, most: 5000 }),
+      rotatingKg: numberOption(values['rotating-kg'], {
+        name: 'rotating-kg',
+        unit: 'kg',
+        least: 0,
+        most: 300,
+      }),
+      airTemperatureC: numberOption(values['air-temperature-c'], {
+        name: 'air-temperature-c',
+        unit: 'deg C',
+        least: -40,
+        most: 55,
+      }),
+      airPressureHpa: numberOption(values['air-pressure-hpa'], {
+        name: 'air-pressure-hpa',
+        unit: 'hPa',
+        least: 500,
+        most: 1090,
+      }),
+      airDensityKgM3: numberOption(values['air-density-kg-m3'], {
+        name: 'air-density-kg-m3',
+        unit: 'kg/m3',
+        least: 0.5,
+        most: 2,
+      }),
+    });
+  const result = ofCase === null ? work() : ofCase.telling(work);
   const units = values.units ?? 'kmh';
   const mark = identificationJson(result, name, [PAGE]);
   writeResult(
     folder,
     [
-      { name, text: result.vehicle },
+      { name, text: result.text },
       { name: PAGE, text: renderIdentification(result, { units, output: name }) },
       { name: MARK, text: mark },
     ],
     [name],
   );
   if (!values.quiet) {
-    say(identificationAnswer(result, SPEED_UNITS[units]).sentence);
+    say(identificationAnswer(result).sentence);
     tellWarnings(result.warnings, (place) => place);
-    say(`The vehicle is at ${join(folder, name)}, how good it is at ${join(folder, PAGE)}`);
+    say(
+      `The ${result.kind === 'step' ? 'candidates are' : 'vehicle is'} at ${join(folder, name)}, how good the numbers are at ${join(folder, PAGE)}`,
+    );
   }
   if (values.json) process.stdout.write(mark);
   return DONE;
+}
+
+/** Names of numbers to fit, as typed. */
+function unknownsOf(text: string | undefined): readonly RideUnknown[] | undefined {
+  const names = text?.split(',').map((name) => name.trim());
+  const known = names?.flatMap((name) => RIDE_UNKNOWNS.filter((one) => one === name));
+  if (known?.length === names?.length && new Set(known).size === known?.length) return known;
+  if (text === undefined) return undefined;
+  throw new InputError({
+    code: 'option-value',
+    place: {},
+    message: `--fit cannot be '${text}'`,
+    allowed: `one or more of ${RIDE_UNKNOWNS.join(', ')}, each once, with commas between`,
+  });
 }

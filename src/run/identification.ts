@@ -1,5 +1,7 @@
 import type { CoastDownFit } from '../identify/coast-down.ts';
 import type { RoadLoadForm, TestAir } from '../identify/reference-conditions.ts';
+import type { RideFit } from '../identify/ride.ts';
+import type { StepTestFit } from '../identify/step-test.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { InputFile } from './run-result.ts';
 
@@ -22,6 +24,8 @@ interface Whole {
   readonly inputs: readonly InputFile[];
   readonly given: readonly GivenNumber[];
   readonly warnings: readonly Warning[];
+  /** Text of the file that was asked for: a vehicle, or candidates of a case. */
+  readonly text: string;
 }
 
 /** A coast-down: drag area and rolling coefficient, and a vehicle file with them. */
@@ -31,9 +35,35 @@ export interface CoastDownIdentification extends Whole {
   readonly air: TestAir;
   readonly measured: RoadLoadForm;
   readonly atReference: RoadLoadForm;
-  /** Text of the vehicle file. */
-  readonly vehicle: string;
+}
+
+/** Gains of PI that follow from a step test, for one wanted closed loop. */
+export interface StepDesign {
+  readonly name: string;
+  /** Time constant of the closed loop beside its delay [s]. */
+  readonly closedLoop: number;
+  /** Throttle per speed error [1/(m/s)], and integral time [s]. */
+  readonly kp: number;
+  readonly integralTime: number;
+}
+
+/** A step test: gain, time constant and delay, and candidates designed from them. */
+export interface StepIdentification extends Whole {
+  readonly kind: 'step';
+  readonly fit: StepTestFit;
+  readonly designs: readonly StepDesign[];
+}
+
+/** A ride beside a vehicle. */
+export interface RideIdentification extends Whole {
+  readonly kind: 'ride';
+  readonly fit: RideFit;
+  readonly vehicleName: string;
+  /** Where height and wind are from, in words. */
+  readonly roadWords: string;
+  /** Where the force at the wheel is from, in words. */
+  readonly driveWords: string;
 }
 
 /** What logs told. */
-export type Identification = CoastDownIdentification;
+export type Identification = CoastDownIdentification | StepIdentification | RideIdentification;

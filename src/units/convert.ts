@@ -32,6 +32,8 @@ export const fromHpa = (hpa: number): number => hpa * 100;
 export const fromPctPerKmh = (pctPerKmh: number): number => toKmh(fromPct(pctPerKmh));
 /** [1/(m/s)] -> [% per km/h] */
 export const toPctPerKmh = (gain: number): number => fromKmh(toPct(gain));
+/** [m/s per whole throttle] -> [km/h per %] */
+export const toKmhPerPct = (gain: number): number => toKmh(fromPct(gain));
 /** [N per km/h] -> [N/(m/s)] */
 export const fromNPerKmh = (slope: number): number => toKmh(slope);
 /** [N per (km/h)2] -> [N/(m/s)2] */

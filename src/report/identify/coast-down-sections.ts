@@ -13,6 +13,7 @@ import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { coastDownMethod } from './coast-down-method.ts';
+import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
 import { givenTable } from './given-table.ts';
 
 /** Sections 2 to 6 of a coast-down. */
@@ -26,14 +27,6 @@ export function coastDownSections(result: CoastDownIdentification, speed: SpeedU
   ];
 }
 
-const COLUMNS = [
-  { head: 'quantity' },
-  { head: 'value', number: true },
-  { head: 'standard error', number: true },
-  { head: '95 % interval', number: true },
-  { head: 'unit' },
-];
-
 function estimatesBody(result: CoastDownIdentification): Html {
   const { fit } = result;
   const row = (
@@ -42,7 +35,7 @@ function estimatesBody(result: CoastDownIdentification): Html {
     unit: string,
     isSigned = false,
   ): readonly string[][] => (estimate === null ? [] : [[name, ...estimateCells(estimate, isSigned), unit]]);
-  return html`${table('Estimates', COLUMNS, [
+  return html`${table('Estimates', ESTIMATE_COLUMNS, [
     ...row('drag area CdA', fit.cda, 'm²'),
     ...row('rolling coefficient Crr', fit.crr, '1'),
     ...row('wind along the road', fit.wind, 'm/s', true),

@@ -1,6 +1,14 @@
-import type { CoastDownIdentification, Identification } from '../../run/identification.ts';
+import { scaledEstimate } from '../../identify/estimate.ts';
+import type {
+  CoastDownIdentification,
+  Identification,
+  RideIdentification,
+  StepIdentification,
+} from '../../run/identification.ts';
+import { toKm, toKmhPerPct } from '../../units/convert.ts';
 import { plusMinus } from '../model/estimate-words.ts';
-import { fixed, type SpeedUnit } from '../quantity.ts';
+import { UNKNOWN_WORDS } from '../model/unknown-words.ts';
+import { fixed } from '../quantity.ts';
 
 /** The answer in one sentence, and how it looks. */
 export interface IdentificationAnswer {
@@ -10,19 +18,48 @@ export interface IdentificationAnswer {
 }
 
 /** Warnings that leave the numbers as they are. */
-const HARMLESS: ReadonlySet<string> = new Set(['few-runs']);
+const HARMLESS: ReadonlySet<string> = new Set(['few-runs', 'few-steps', 'drive-in-the-fit']);
 
 /** What the logs told, in one sentence. */
-export function identificationAnswer(result: Identification, _speed: SpeedUnit): IdentificationAnswer {
+export function identificationAnswer(result: Identification): IdentificationAnswer {
   const open = result.warnings.some(({ code }) => !HARMLESS.has(code));
   return {
     standing: open ? 'open' : 'good',
     words: open ? 'Identified, with reservations' : 'Identified',
-    sentence: coastDownSentence(result),
+    sentence: sentenceOf(result),
   };
+}
+
+function sentenceOf(result: Identification): string {
+  switch (result.kind) {
+    case 'coast-down':
+      return coastDownSentence(result);
+    case 'step':
+      return stepSentence(result);
+    case 'ride':
+      return rideSentence(result);
+  }
 }
 
 function coastDownSentence({ fit }: CoastDownIdentification): string {
   const count = fit.runs.length;
   return `CdA ${plusMinus(fit.cda, 'm²')} and Crr ${plusMinus(fit.crr, '')} from ${count} runs (95 % intervals), correlation ${fixed(fit.correlation, 2)}.`;
+}
+
+function stepSentence({ fit }: StepIdentification): string {
+  const { gain, timeConstant, delay } = fit.all;
+  const count = fit.steps.length;
+  return `The speed answers the throttle with a gain of ${plusMinus(scaledEstimate(gain, toKmhPerPct(1)), 'km/h per %')}, a time constant of ${plusMinus(timeConstant, 's')} and a delay of ${plusMinus(delay, 's')}, from ${count} step${count === 1 ? '' : 's'} (95 % intervals).`;
+}
+
+function rideSentence({ fit }: RideIdentification): string {
+  const numbers = fit.unknowns.map(({ name, estimate }) => {
+    const { name: words, unit } = UNKNOWN_WORDS[name];
+    return `${words} ${plusMinus(estimate, unit)}`;
+  });
+  const list = numbers.length < 2 ? numbers[0]! : `${numbers.slice(0, -1).join(', ')} and ${numbers.at(-1)!}`;
+  return `${list} make ${fixed(toKm(fit.fitted), 1)} km of the ride agree with the vehicle to ${fixed(fit.rmsForce, 1)} N, where it was ${fixed(fit.rmsForceBefore, 1)} N off (95 % intervals).`.replace(
+    /^./,
+    (first) => first.toUpperCase(),
+  );
 }
