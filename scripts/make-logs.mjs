@@ -74,20 +74,20 @@ function steps() {
   return rows;
 }
 
-/** A ride over invented hills at about 60 km/h, with a power meter in the wheel. */
+/** A ride over invented hills at about 50 and then 80 km/h, with a power meter in the wheel. */
 function ride() {
   const random = stream(2202);
-  const gust = wandering(random, 0.8, 6);
-  const wish = wandering(random, 1.2, 25);
+  const gust = wandering(random, 0.5, 6);
+  const wish = wandering(random, 0.8, 40);
   const height = (x) => 120 + 18 * Math.sin(x / 620) + 7 * Math.sin(x / 210 + 1) + 0.006 * x;
   const slope = (x) => (height(x + 1) - height(x - 1)) / 2;
-  const drift = wandering(random, 0.3, 120);
+  const drift = wandering(random, 0.2, 120);
   const rows = ['time_s,distance_m,speed_kmh,elevation_m,wheel_power_kw'];
-  let [speed, distance, held] = [60 / 3.6, 0, 100];
-  for (let i = 0; distance < 9000; i++) {
-    const error = 60 / 3.6 + wish() - speed;
+  let [speed, distance, held] = [50 / 3.6, 0, 100];
+  for (let i = 0; distance < 14000; i++) {
+    const error = (distance < 6000 ? 50 : 80) / 3.6 + wish() - speed;
     held += 12 * error * STEP_S;
-    const power = Math.max(-1500, Math.min(7800, (held + 90 * error) * speed));
+    const power = Math.max(-1500, Math.min(9800, (held + 90 * error) * speed));
     const baro = drift();
     if (i % 50 === 0)
       rows.push(

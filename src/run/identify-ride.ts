@@ -7,17 +7,17 @@ import { vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import { FEWEST_PIECES, fitRide } from '../identify/fit-ride.ts';
 import type { LoggedRun } from '../identify/read-log.ts';
-import type { RideFit, RideStretch, RideVehicle } from '../identify/ride.ts';
+import type { FittedUnknown, RideFit, RideStretch, RideUnknown, RideVehicle } from '../identify/ride.ts';
 import { InputError } from '../problems/input-error.ts';
 import { layRide } from '../study/lay-ride.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { readRide } from '../track/read-ride.ts';
+import { toKm } from '../units/convert.ts';
 import { dragArea } from '../vehicle/road-load.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { GivenNumber, RideIdentification } from './identification.ts';
 import type { IdentifyRequest } from './identify-request.ts';
-import type { InputLog } from './input-log.ts';
-import { InputLog as CaseLog } from './input-log.ts';
+import { InputLog } from './input-log.ts';
 import { airOf } from './known-quantities.ts';
 import { logNames, numberWords } from './provenance.ts';
 import { rideFitWarnings } from './ride-fit-warnings.ts';
@@ -57,14 +57,15 @@ export function identifyRide(
   const fit = fitRide(stretches, rideVehicleOf(vehicle), unknowns, held.segment);
   if (fit === null) throw tooShort(request, stretches);
   refuseImpossible(fit, request);
-  const value = (name: string): number | null =>
-    fit.unknowns.find((one) => one.name === name)?.estimate.value ?? null;
+  const told = toldBy(fit, document);
+  const value = (name: RideUnknown): number | null =>
+    told.find((one) => one.name === name)?.estimate.value ?? null;
   const provenance = [
-    `Fitted by ridgehold identify to the ride in ${logNames(request).join(', ')}, ${(fit.fitted / 1000).toFixed(1)} km of it:`,
-    ...fit.unknowns.map(
-      ({ name, estimate, was }) =>
-        `${name} ${numberWords(estimate, UNITS[name])}; it was ${Number(was.toPrecision(5))}`,
-    ),
+    `Fitted by ridgehold identify to the ride in ${logNames(request).join(', ')}, ${toKm(fit.fitted).toFixed(1)} km of it:`,
+    ...fit.unknowns.map((one) => {
+      const left = told.includes(one) ? '' : '; too uncertain, so it is left as it was';
+      return `${one.name} ${numberWords(one.estimate, UNITS[one.name])}; it was ${Number(one.was.toPrecision(5))}${left}`;
+    }),
   ];
   const byPower = runs?.[0]?.wheelPower !== undefined && runs[0].wheelPower !== null;
   return {
@@ -89,6 +90,18 @@ export function identifyRide(
   };
 }
 
+/**
+ * The numbers that the ride tells: those whose interval does not take in zero. A road load whose form has no place for one
+ * of drag area and rolling coefficient alone takes both or neither.
+ */
+function toldBy({ unknowns }: RideFit, { file }: VehicleDocument): readonly FittedUnknown[] {
+  const told = unknowns.filter(({ estimate }) => estimate.low > 0);
+  const load = file.road_load;
+  if ('f0_n' in load || ('cda_m2' in load && 'crr' in load)) return told;
+  const both = (['cda_m2', 'crr'] as const).every((name) => told.some((one) => one.name === name));
+  return both ? told : told.filter(({ name }) => name === 'mass_kg');
+}
+
 function onRoadOfCase(request: IdentifyRequest, log: InputLog): Held {
   const { file, read } = request.case!;
   const name = request.logs[0]!;
@@ -101,7 +114,7 @@ function onRoadOfCase(request: IdentifyRequest, log: InputLog): Held {
       allowed: '1',
     });
   const bytes = log.read(name);
-  const files = new CaseLog(read);
+  const files = new InputLog(read);
   const document = readCaseFile(decodeText(files.read(file), file), file);
   const vehicleDocument = vehicleDocumentOf(request, document, files, log);
   const vehicle = vehicleOfCase(document, vehicleDocument);

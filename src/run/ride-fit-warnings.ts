@@ -30,7 +30,12 @@ export function rideFitWarnings(
     );
   for (const { name, estimate } of fit.unknowns) {
     const half = (estimate.high - estimate.low) / 2 / estimate.value;
-    if (half > WIDE)
+    if (half >= 1)
+      add(
+        'not-told',
+        `${name} is not told by this ride: its interval takes in zero, and the file keeps what it had.`,
+      );
+    else if (half > WIDE)
       add(
         'wide-interval',
         `${name} is known to ±${toPct(half).toFixed(0)} % only: a longer ride at more than one speed makes it better, or a coast-down.`,
