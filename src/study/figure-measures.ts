@@ -7,7 +7,7 @@ import type { DriveQuality } from './drive-quality.ts';
 import type { Figure, None } from './findings.ts';
 import { heldTime } from './held-time.ts';
 import type { HoldRecord } from './hold-transient.ts';
-import { NOT_RECOVERED } from './recovery.ts';
+import { isLost } from './recovery.ts';
 
 /** How a hill's recovery went for one candidate: where the hill is, and the time or why there is none. */
 export interface Recovery {
@@ -152,7 +152,7 @@ export function worstRecovery({ recoveries }: FigureRecord): Measure {
   for (const { at, time } of recoveries) {
     if (typeof time === 'number') {
       if (time > (worst?.value ?? -1)) worst = { value: time, at };
-    } else if (time.none === NOT_RECOVERED) return { value: time, at };
+    } else if (isLost(time)) return { value: time, at };
     else unknown ??= { value: time, at };
   }
   if (unknown === null) return worst ?? placeless(0);

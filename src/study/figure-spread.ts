@@ -137,7 +137,12 @@ function drawnRecoveries(
     const last = sampleAt(series, hill.until);
     return {
       at: hill.from,
-      time: recoveryOf(series, first, last, { ...rule, settling: course.settling, whole }).time,
+      time: recoveryOf(series, first, last, {
+        ...rule,
+        settling: course.settling,
+        gaveUp: course.gaveUp,
+        whole,
+      }).time,
     };
   });
 }

@@ -20,6 +20,7 @@ import {
 } from './hill-window.ts';
 import type { HoldCourse } from './hold-course.ts';
 import { lockedCause } from './locked-cause.ts';
+import { offOnHill } from './off-on-hill.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
 import { isSettling, passageOf, thinSeries } from './series-measures.ts';
@@ -39,6 +40,7 @@ const AGREES_ABSOLUTE = fromKmh(0.5);
 export function hillOutcome(replayed: Replayed, hill: HillFacts, context: PassageContext): HillOutcome {
   const { name, result } = replayed;
   if (result.endDistance <= hill.from) return neverReached(name, replayed, hill);
+  const off = offOnHill(replayed, hill);
   const { course } = context;
   const { series, first, last, events, recovery } = hillPassage(replayed, hill, context);
   const over = Math.max(last, recovery.over);
@@ -46,7 +48,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Passag
   const predictedChange = predict(replayed, hill, context, series, first);
   const reasons = events.affected
     ? explainOutcome(replayed, hill, context, events, predictedChange, series.command[first])
-    : { cause: { none: 'it kept its band and met no limit' }, why: 'It kept its band.', wouldHold: [] };
+    : { ...off.unaffected, wouldHold: [] };
   return {
     candidate: name,
     affected: events.affected,
@@ -57,6 +59,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Passag
     timeAtLimit: passage.timeAtLimit,
     recovery: recovery.time,
     ...reasons,
+    why: `${reasons.why}${off.words}`,
     picture: thinSeries(series, 0, pictureEnd(series, over), PICTURE_ROWS),
   };
 }

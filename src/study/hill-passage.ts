@@ -40,7 +40,12 @@ export function hillPassage(replayed: Replayed, hill: HillPlace, context: Passag
   const events = hillEvents(replayed.plan, series, first, last, course.settling, band);
   const recovery =
     events.affected && regulates
-      ? recoveryOf(series, first, last, { ...context, settling: course.settling, whole })
+      ? recoveryOf(series, first, last, {
+          ...context,
+          settling: course.settling,
+          gaveUp: course.gaveUp,
+          whole,
+        })
       : { time: locked ? LOCKED : 0, over: last };
   return { series, first, last, events, recovery };
 }

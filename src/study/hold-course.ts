@@ -6,7 +6,7 @@ import { distanceAt } from '../road/lookup.ts';
 import type { Road } from '../road/road.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import type { Stretch } from './findings.ts';
-import { holdOff } from './hold-off.ts';
+import { holdOff, isByRule } from './hold-off.ts';
 
 /** Rate at which a change of set speed is granted to be followed when neither it nor the controller says one [m/s2]. */
 const GRANTED_RATE = 0.5;
@@ -30,6 +30,8 @@ export interface HoldCourse {
   readonly settling: readonly Stretch[];
   /** Of those the changes of set speed alone, a start at another speed first. */
   readonly following: readonly Stretch[];
+  /** Of a run: where a rule of the unit ended hold, in order [m]. */
+  readonly gaveUp?: readonly number[];
 }
 
 /** Factor from speeds of the plan's set speed to true ones: measured = (1 + scale error) true. */
@@ -86,7 +88,9 @@ export function courseOfRun(run: PlannedRun): HoldCourse {
     return [{ from: distance, to: resumed + GRANTED_SETTLING * speedAt(course, distance) }];
   });
   const apart = [...shifts, ...withoutHold(run)];
-  return apart.length === 0 ? course : withStretches(course, apart);
+  if (apart.length === 0) return course;
+  const gaveUp = (result.holdEvents ?? []).filter((event) => event.kind === 'ended' && isByRule(event));
+  return { ...withStretches(course, apart), gaveUp: gaveUp.map(({ distance }) => distance) };
 }
 
 /** Where hold was off or overridden, and what it takes to be back; taps, and what they take. */

@@ -6,7 +6,7 @@ import { type HillPlace, hillPassage, marksHill, type PassageContext } from './h
 import { hillStretches } from './hill-stretches.ts';
 import { courseOfRun } from './hold-course.ts';
 import { outOfRange } from './out-of-range.ts';
-import { NOT_RECOVERED, RECOVERED_BAND, recoveryOf } from './recovery.ts';
+import { isLost, RECOVERED_BAND, recoveryOf } from './recovery.ts';
 
 /** Slower ones are looked at sample for sample whatever the others are: they may be none within the time that is waited [s]. */
 const SLOW = 90;
@@ -71,7 +71,7 @@ function outcomesOf(replayed: Replayed, hills: readonly HillPlace[], context: Pa
   // One that never came, the first along the way, is before any other: nothing else needs to be known then.
   for (const one of marked.filter(({ bound }) => bound >= SLOW)) {
     const { affected, recovery } = look(one);
-    if (affected && typeof recovery !== 'number' && recovery.none === NOT_RECOVERED)
+    if (affected && isLost(recovery))
       return outcomes.map((outcome) => (outcome.recovery === Number.POSITIVE_INFINITY ? none : outcome));
   }
   for (const one of marked
@@ -103,6 +103,7 @@ function boundsByBins(bins: BinRecord, context: PassageContext): (hill: HillPlac
     ...context,
     outOfRange: whole(context.outOfRange),
     settling: whole(context.course.settling),
+    gaveUp: context.course.gaveUp,
     whole: true,
   };
   return ({ from, until }) => {

@@ -55,6 +55,17 @@ describe('recovery', () => {
     expectClose(recover(series, [8, 60], out).time as number, 9, 0.051);
   });
 
+  it('is none where a rule of the unit ended hold while it was waited for, and not where the rider did', () => {
+    const series = seriesOf(90, (t) => (t >= 10 && t < 30 ? -1 : 0), NO_LIMIT);
+    const off = { settling: [seconds(20, 60)] };
+    expect(recover(series, [0, 40], { ...off, gaveUp: [400] }).time).toHaveProperty('none');
+    expectClose(recover(series, [0, 40], off).time as number, 10, 0.051);
+    expectClose(recover(series, [0, 40], { gaveUp: [1500] }).time as number, 20, 0.051);
+    // Out of range when the rule ended hold: the road had asked for more than there is.
+    const out = { ...off, gaveUp: [400], outOfRange: [seconds(8, 25)] };
+    expect(recover(series, [0, 40], out).time).toBe(0);
+  });
+
   it('counts up to where the demand leaves the range again, on the hill and behind it', () => {
     const series = seriesOf(120, (t) => (t >= 10 && t < 70 ? -1 : 0), NO_LIMIT);
     const out = { outOfRange: [seconds(10, 20), seconds(50, 65)] };
