@@ -1,5 +1,6 @@
 import { cellIndex } from '../vehicle/drive-law.ts';
 import { bookTurning, loadRatio } from './engage-gear.ts';
+import * as fit from './fittings.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 
@@ -11,31 +12,32 @@ import type { Machine } from './machine.ts';
  * the kinetic energy that joins or leaves is booked like that of a shift.
  */
 export function moveBelt(machine: Machine): void {
-  const { s, p, here } = machine;
-  const belt = machine.belt!;
+  const { s, p, here, fittings } = machine;
+  const f = fittings.belt;
   const before = s[at.EFFECTIVE_MASS];
   const ratio = s[at.RATIO];
   const v = s[at.SPEED];
-  const line = lineAt(belt.throttle, belt.shaftSpeed, s[at.THROTTLE]);
-  const rest = line >= belt.greatest * v ? belt.greatest : line <= belt.least * v ? belt.least : line / v;
+  const x = s[at.THROTTLE];
+  // The belt's line (see belt-law.ts), its ends hold on.
+  const corners = f[fit.F_BELT_CORNERS] | 0;
+  const line = fit.F_BELT_LINE + corners;
+  let shaftSpeed = f[line + corners - 1];
+  if (x <= f[fit.F_BELT_LINE]) shaftSpeed = f[line];
+  else if (x < f[line - 1]) {
+    let i = fit.F_BELT_LINE;
+    while (x >= f[i + 1]) i++;
+    shaftSpeed = f[i + corners] + f[i + 2 * corners] * (x - f[i]);
+  }
+  let rest = shaftSpeed / v;
+  if (shaftSpeed >= f[fit.F_GREATEST] * v) rest = f[fit.F_GREATEST];
+  else if (shaftSpeed <= f[fit.F_LEAST_RATIO] * v) rest = f[fit.F_LEAST_RATIO];
   const moved = rest + (ratio - rest) * p[at.P_BELT_KEPT];
   const turned = turnsAlong(machine);
-  const turns = moved * v >= belt.locked;
-  loadBelt(machine, moved, turns);
+  const turns = moved * v >= f[fit.F_LOCKED];
+  loadRatio(machine, moved, turns ? f[fit.F_INERTIA] * moved * moved : 0);
   if (turned === turns) s[at.SPEED] = v * Math.sqrt(before * here[at.H_PER_MASS]);
   else bookTurning(s, before);
   holdCell(machine);
-}
-
-/** The belt's line (see belt-law.ts) without an object for its answer: this is asked at every sample. */
-function lineAt(throttle: Float64Array, shaftSpeed: Float64Array, x: number): number {
-  const last = throttle.length - 1;
-  if (x <= throttle[0]) return shaftSpeed[0];
-  if (x >= throttle[last]) return shaftSpeed[last];
-  let i = 0;
-  while (x >= throttle[i + 1]) i++;
-  const slope = (shaftSpeed[i + 1] - shaftSpeed[i]) / (throttle[i + 1] - throttle[i]);
-  return shaftSpeed[i] + slope * (x - throttle[i]);
 }
 
 /** Puts a ratio of the belt in hand, and the effective mass that goes with it. */
@@ -48,7 +50,7 @@ export const turnsAlong = ({ s, p }: Machine): boolean => s[at.EFFECTIVE_MASS] >
 
 /** The cell over speed in which the shaft turns: the one in hand, unless it has been left. */
 function holdCell({ s, speedEdges }: Machine): void {
-  const cell = s[at.SPEED_CELL];
+  const cell = s[at.SPEED_CELL] | 0;
   const w = s[at.RATIO] * s[at.SPEED];
   if ((cell > 0 && w < speedEdges[cell - 1]) || (cell < speedEdges.length && w > speedEdges[cell]))
     s[at.SPEED_CELL] = cellIndex(speedEdges, w);

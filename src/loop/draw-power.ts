@@ -20,21 +20,18 @@ const RESTORED = 0.005;
  * Strictly sample by sample, so that it is the same whatever the chunks are.
  *
  * @param row place of the sample's row in the log, a multiple of L_STRIDE
- * @param elapsed length of the sample [s], where it was cut short
  */
-export function drawPower(
-  { s, p, log, chunk, fittings }: Machine,
-  row: number,
-  elapsed = p[at.P_SAMPLE],
-): void {
+export function drawPower({ s, log, chunk, fittings }: Machine, row: number): void {
   const f = fittings.source;
   const speed = log[row + at.L_SPEED];
   const force = log[row + at.L_FORCE];
   const open = s[at.GEAR] < 0;
-  let energy =
-    elapsed * powerAt(f, open ? f[fit.F_IDLE] : s[at.RATIO] * speed, open ? 0 : force / s[at.RATIO]);
+  f[fit.F_SHAFT_SPEED] = open ? f[fit.F_IDLE] : s[at.RATIO] * speed;
+  f[fit.F_TORQUE] = open ? 0 : force / s[at.RATIO];
+  askPower(f);
+  let energy = f[fit.F_LENGTH] * f[fit.F_POWER_ASKED];
   if (f[fit.F_BATTERY] === 1) {
-    const asked = energy;
+    f[fit.F_ENERGY_ASKED] = energy;
     const capacity = f[fit.F_CAPACITY];
     if (capacity > 0) {
       const left = Math.min(Math.max(0, s[at.CHARGE] - energy), capacity);
@@ -47,10 +44,10 @@ export function drawPower(
       const square = load * load;
       s[at.HEAT] = square + (s[at.HEAT] - square) * f[fit.F_COOLED];
     }
-    writeFactors(s, f, asked);
+    writeFactors(s, f);
   }
-  s[at.DRAWN] = s[at.DRAWN] + energy;
-  chunk[at.C_DRAWN] = chunk[at.C_DRAWN] + energy;
+  s[at.DRAWN] += energy;
+  chunk[at.C_DRAWN] += energy;
 }
 
 /**
@@ -62,7 +59,13 @@ export function drawPower(
 export function drawOverChunk(machine: Machine, ticks: number, elapsed: number): void {
   const last = (ticks - 1) * at.L_STRIDE;
   for (let row = 0; row < last; row += at.L_STRIDE) drawPower(machine, row);
-  if (last >= 0) drawPower(machine, last, elapsed);
+  if (last >= 0) drawLast(machine, last, elapsed);
+}
+
+/** The same for the last sample of a run, which is cut short. @param elapsed its length [s] */
+export function drawLast(machine: Machine, row: number, elapsed: number): void {
+  machine.fittings.source[fit.F_LENGTH] = elapsed;
+  drawPower(machine, row);
 }
 
 /** Puts charge and heat at their start: cold, charged as the plan says, factors to match. */
@@ -74,30 +77,37 @@ export function settleSource({ s, fittings }: Machine): void {
   s[at.REGENERATION_FACTOR] = 1;
   if (f.length === 0 || f[fit.F_BATTERY] !== 1) return;
   s[at.CHARGE] = f[fit.F_CHARGE] * f[fit.F_CAPACITY];
-  writeFactors(s, f, 0);
+  f[fit.F_ENERGY_ASKED] = 0;
+  writeFactors(s, f);
 }
 
-/** @param asked energy that the sample before asked for [J] */
-function writeFactors(s: Float64Array, f: Float64Array, asked: number): void {
+// What follows reads and writes the arrays: numbers given to a function and taken from it are boxed at every sample,
+// where an engine does not put the function in the place of its call. Places are held as numbers among numbers: each is
+// made an integer once, where it is read. The cell in which the last sample was stands at fixed places with its edges,
+// since the next is mostly in the same one.
+
+function writeFactors(s: Float64Array, f: Float64Array): void {
   const known = f[fit.F_CAPACITY] > 0;
   const charge = known ? s[at.CHARGE] * f[fit.F_PER_CAPACITY] : f[fit.F_CHARGE];
+  f[fit.F_CHARGE_SHARE] = charge;
   const cool = f[fit.F_PER_POWER] > 0 ? heatShare(s[at.HEAT], f[fit.F_ONSET], f[fit.F_LEAST_SHARE]) : 1;
-  const share = cool * shareAt(f, f[fit.F_SAG] | 0, charge);
-  const empty = known && (s[at.DRIVE_FACTOR] === 0 ? charge < RESTORED : s[at.CHARGE] <= Math.max(0, asked));
+  const share = cool * shareAt(f, f[fit.F_SAG] | 0);
+  const empty =
+    known &&
+    (s[at.DRIVE_FACTOR] === 0 ? charge < RESTORED : s[at.CHARGE] <= Math.max(0, f[fit.F_ENERGY_ASKED]));
   s[at.DRIVE_FACTOR] = empty ? 0 : share;
-  s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0, charge);
+  s[at.REGENERATION_FACTOR] = cool * shareAt(f, f[fit.F_ACCEPTANCE] | 0);
 }
 
-// Places are held as numbers among numbers: each is made an integer once, where it is read. The cell in which the last
-// sample was stands at fixed places with its edges, since the next is mostly in the same one.
-
-/** A line at a charge; its ends hold on; 1 without a line. */
-function shareAt(f: Float64Array, line: number, charge: number): number {
-  if (!(charge >= f[line + fit.LINE_LOW] && charge < f[line + fit.LINE_HIGH])) enterStretch(f, line, charge);
+/** A line at the charge in hand; its ends hold on; 1 without a line. */
+function shareAt(f: Float64Array, line: number): number {
+  const charge = f[fit.F_CHARGE_SHARE];
+  if (!(charge >= f[line + fit.LINE_LOW] && charge < f[line + fit.LINE_HIGH])) enterStretch(f, line);
   return f[line + fit.LINE_SHARE] + f[line + fit.LINE_SLOPE] * (charge - f[line + fit.LINE_CORNER]);
 }
 
-function enterStretch(f: Float64Array, line: number, charge: number): void {
+function enterStretch(f: Float64Array, line: number): void {
+  const charge = f[fit.F_CHARGE_SHARE];
   const count = f[line + fit.LINE_COUNT] | 0;
   const corners = line + fit.LINE_CORNERS;
   const shares = corners + count;
@@ -113,29 +123,22 @@ function enterStretch(f: Float64Array, line: number, charge: number): void {
   f[line + fit.LINE_SLOPE] = i > 0 && i < count ? f[slopes + corner] : 0;
 }
 
-/** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W]. */
-function powerAt(f: Float64Array, shaftSpeed: number, torque: number): number {
-  if (
-    !(
-      shaftSpeed >= f[fit.F_CELL] &&
-      shaftSpeed < f[fit.F_CELL + 1] &&
-      torque >= f[fit.F_CELL + 2] &&
-      torque < f[fit.F_CELL + 3]
-    )
-  )
-    enterPowerCell(f, shaftSpeed, torque);
-  const power =
-    f[fit.F_LAW] +
-    f[fit.F_LAW + 1] * shaftSpeed +
-    torque * (f[fit.F_LAW + 2] + f[fit.F_LAW + 3] * shaftSpeed);
-  return Math.max(power, f[fit.F_LEAST]);
+/** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W], at F_SHAFT_SPEED and F_TORQUE. */
+function askPower(f: Float64Array): void {
+  const w = f[fit.F_SHAFT_SPEED];
+  const torque = f[fit.F_TORQUE];
+  const within =
+    w >= f[fit.F_CELL] && w < f[fit.F_CELL + 1] && torque >= f[fit.F_CELL + 2] && torque < f[fit.F_CELL + 3];
+  if (!within) enterPowerCell(f);
+  const power = f[fit.F_LAW] + f[fit.F_LAW + 1] * w + torque * (f[fit.F_LAW + 2] + f[fit.F_LAW + 3] * w);
+  f[fit.F_POWER_ASKED] = Math.max(power, f[fit.F_LEAST]);
 }
 
-function enterPowerCell(f: Float64Array, shaftSpeed: number, torque: number): void {
+function enterPowerCell(f: Float64Array): void {
   const rows = f[fit.F_SPEED_COUNT] | 0;
   const columns = f[fit.F_TORQUE_COUNT] | 0;
-  const i = enterInterval(f, fit.F_CELL, f[fit.F_SPEEDS] | 0, rows, shaftSpeed);
-  const j = enterInterval(f, fit.F_CELL + 2, f[fit.F_TORQUES] | 0, columns, torque);
+  const i = enterInterval(f, fit.F_CELL, f[fit.F_SPEEDS] | 0, rows, f[fit.F_SHAFT_SPEED]);
+  const j = enterInterval(f, fit.F_CELL + 2, f[fit.F_TORQUES] | 0, columns, f[fit.F_TORQUE]);
   const cell = (f[fit.F_POWER] | 0) + 4 * (i * (columns + 1) + j);
   for (let k = 0; k < 4; k++) f[fit.F_LAW + k] = f[cell + k];
 }

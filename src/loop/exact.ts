@@ -3,7 +3,7 @@ import { moveReference } from '../control/set-point.ts';
 import { takeUpTime } from './actuator-step.ts';
 import { enterDriveCell, enterRoadCell, weighRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
-import { drawOverChunk, drawPower } from './draw-power.ts';
+import { drawLast, drawOverChunk, drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
 import { heldCommand } from './held-command.ts';
 import { lagFactors } from './lags.ts';
@@ -41,6 +41,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const STOP = 1e-13;
   // Trials to hit a kink; pieces of one step after which kinks are no longer looked for (a drive that chatters).
   const TRIALS = 6;
+  // A kink over throttle is not looked for closer to the start of a piece than this share of it.
+  const LEAST_SHARE = 1e-3;
   const PIECES = 40;
 
   // A gap of the actuator, or a play of its slack, smaller than this is none.
@@ -160,7 +162,10 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const free = play + (u < y ? y - plate : plate - y);
         rests = free > NO_GAP;
         if (rests) {
-          takenUp = takeUpTime(p[at.P_ACTUATOR_LAG], Math.abs(u - y), free, rated ? rate : 0);
+          // By its lag alone the actuator makes no more way than this in a step: mostly the play outlasts it. Math.max, which
+          // changes nothing, makes a plain number of what comes from a call: as it comes it would be boxed.
+          if (rated || Math.abs(gap) * (1 - lags[at.G_ACTUATOR]) > (1 - NO_GAP) * free)
+            takenUp = Math.max(0, takeUpTime(p[at.P_ACTUATOR_LAG], Math.abs(u - y), free, rated ? rate : 0));
           if (takenUp < most) most = takenUp;
           l0 = plate;
           x1 = 0;
@@ -210,7 +215,12 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
           const ye = rated ? y + l1 * h : u + gap * lags[decay + at.G_ACTUATOR];
           const slope = rated ? l1 : (u - ye) / p[at.P_ACTUATOR_LAG];
           const target = rests ? plate : ye - lead;
-          h = timeToEdge(h, x, xe, crossed > 0 ? high : low, td > 0 ? (target - xe) / td : slope);
+          // Newton's rule from the far side, or along the chord where that leaves the piece, or makes no way in it: from a
+          // point that the rule has found, it finds the same one again.
+          const edge = crossed > 0 ? high : low;
+          const met = h + (edge - xe) / (td > 0 ? (target - xe) / td : slope);
+          if (met > LEAST_SHARE * h && met < h) h = met;
+          else h *= Math.min(1, Math.max(0, (edge - x) / (xe - x)));
           continue;
         }
 
@@ -395,7 +405,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       s[at.ACCELERATION] = acceleration;
       s[at.TRAVELLED] += travelled;
       s[at.SPEED_CELL] = speedCell;
-      if (drains) drawPower(machine, line, elapsed);
+      if (drains && event === at.RUNNING) drawPower(machine, line);
+      else if (drains) drawLast(machine, line, elapsed);
     }
   }
 
@@ -418,16 +429,4 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   if (!timed) chunk[at.C_CLIMB] = p[at.P_MASS] * (integralTo(rows, row, at.R_SIN, q) - height0);
   chunk[at.C_KINETIC] = 0.5 * mass * v * v - kinetic0;
   return event;
-}
-
-/**
- * Where a throttle that runs past an edge within h meets it: Newton's rule from the far side, or along the chord where
- * that leaves the piece, or makes no way in it: from a point that the rule has found, it finds the same one again.
- *
- * @param slope of the throttle at h
- */
-function timeToEdge(h: number, x: number, xe: number, edge: number, slope: number): number {
-  const LEAST_SHARE = 1e-3;
-  const met = h + (edge - xe) / slope;
-  return met > LEAST_SHARE * h && met < h ? met : h * Math.min(1, Math.max(0, (edge - x) / (xe - x)));
 }

@@ -3,7 +3,7 @@ import { moveReference } from '../control/set-point.ts';
 import { actuatorStep } from './actuator-step.ts';
 import { enterDriveCell, enterRoadCell, lawStep, weighRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
-import { drawOverChunk, drawPower } from './draw-power.ts';
+import { drawLast, drawOverChunk, drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
 import { heldCommand } from './held-command.ts';
 import { decay } from './lags.ts';
@@ -289,7 +289,8 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       s[at.ACCELERATION] = acceleration;
       s[at.TRAVELLED] += travelled;
       s[at.SPEED_CELL] = speedCell;
-      if (drains) drawPower(machine, line, elapsed);
+      if (drains && event === at.RUNNING) drawPower(machine, line);
+      else if (drains) drawLast(machine, line, elapsed);
     }
   }
 

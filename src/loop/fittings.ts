@@ -1,5 +1,5 @@
 import { exp } from '../numeric/elementary.ts';
-import type { Gearbox } from '../vehicle/drive.ts';
+import type { Belt, Gearbox } from '../vehicle/drive.ts';
 import type { EnergySource, Heating, PowerMap, ShareOverCharge } from '../vehicle/energy-source.ts';
 import type { SpeedSensor } from '../vehicle/vehicle.ts';
 import type { LoopPlan } from './plan.ts';
@@ -16,6 +16,8 @@ export interface Fittings {
   readonly history: number;
   /** Shift lines of an automatic gearbox: `shiftDue` looks at them. */
   readonly gearbox: Float64Array;
+  /** Belt: `moveBelt` moves it. */
+  readonly belt: Float64Array;
   /** Tank or battery: `drawPower` draws from it. */
   readonly source: Float64Array;
 }
@@ -53,6 +55,15 @@ export const F_GEARS = 0;
 export const F_CORNERS = 1;
 export const F_LINES = 2;
 
+// --- belt: limits of the ratio [1/m], inertia before it [kg m2], shaft speed from which the clutch is locked [rad/s] ---
+export const F_LEAST_RATIO = 0;
+export const F_GREATEST = 1;
+export const F_INERTIA = 2;
+export const F_LOCKED = 3;
+/** Corners of its line, then their throttles, shaft speeds, and the slopes between them. */
+export const F_BELT_CORNERS = 4;
+export const F_BELT_LINE = 5;
+
 // --- source: a head, then the arrays whose places and lengths it holds ---
 export const F_BATTERY = 0;
 /** Inner edges of the map's cells over shaft speed and torque, then the cells: power c0 + c1 w + T (c2 + c3 w). */
@@ -79,7 +90,16 @@ export const F_CHARGE = 16;
 /** Cell of the map in which the last sample was, none at first: its edges over shaft speed and torque, its law. */
 export const F_CELL = 17;
 export const F_LAW = 21;
-export const F_SOURCE_HEAD = 25;
+/** At the start of the sample: shaft speed and torque; what is asked for there: power, and energy over the sample. */
+export const F_SHAFT_SPEED = 25;
+export const F_TORQUE = 26;
+export const F_POWER_ASKED = 27;
+export const F_ENERGY_ASKED = 28;
+/** Length of a sample [s]. */
+export const F_LENGTH = 29;
+/** Charge in hand, as a share of the capacity. */
+export const F_CHARGE_SHARE = 30;
+export const F_SOURCE_HEAD = 31;
 
 /** A line over the charge: the stretch in which the last sample was, none at first; corners, then charges, shares, slopes behind them. */
 export const LINE_COUNT = 0;
@@ -104,6 +124,7 @@ export function fittingsOf(plan: LoopPlan): Fittings {
     sensor,
     history: sensor.length > 0 ? SENSOR_ROWS + sensor[F_ROWS] : 0,
     gearbox: gearboxOf(drive.gearbox, drive.gears.length),
+    belt: drive.belt === null ? new Float64Array(0) : beltOf(drive.belt),
     source: drive.source === null ? new Float64Array(0) : sourceOf(drive.source, drive.idleSpeed, sample),
   };
 }
@@ -157,6 +178,16 @@ function gearboxOf(gearbox: Gearbox, gears: number): Float64Array {
   return Float64Array.of(gears, throttle.length, ...throttle, ...upSpeed, ...downSpeed);
 }
 
+function beltOf({ least, greatest, inertia, locked, throttle, shaftSpeed }: Belt): Float64Array {
+  const slopes = shaftSpeed
+    .subarray(1)
+    .map((speed, i) => (speed - shaftSpeed[i]) / (throttle[i + 1] - throttle[i]));
+  return Float64Array.of(
+    ...[least, greatest, inertia, locked],
+    ...[throttle.length, ...throttle, ...shaftSpeed, ...slopes],
+  );
+}
+
 function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Float64Array {
   const { map } = source;
   const battery = source.kind === 'battery' ? source : null;
@@ -174,6 +205,7 @@ function sourceOf(source: EnergySource, idleSpeed: number, sample: number): Floa
   f[F_POWER] = append(powerCells(map));
   f[F_LEAST] = map.least;
   f[F_IDLE] = idleSpeed;
+  f[F_LENGTH] = sample;
   f[F_CAPACITY] = battery?.capacity ?? 0;
   f[F_CHARGE] = battery?.charge ?? 0;
   f[F_PER_CAPACITY] = f[F_CAPACITY] > 0 ? 1 / f[F_CAPACITY] : 0;

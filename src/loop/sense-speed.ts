@@ -29,30 +29,40 @@ const RING = HISTORY + fit.SENSOR_ROWS * HISTORY_STRIDE;
  */
 export function senseSpeed({ s, fittings }: Machine): void {
   const f = fittings.sensor;
-  const k = s[SAMPLES];
   const next = (s[LATEST] + HISTORY_STRIDE) | 0;
   const row = next < s.length ? next : RING;
   s[LATEST] = row;
   s[row] = s[TRAVELLED];
   s[row + 1] = s[SPEED];
+  const before = s[SENSED_MORE];
   const kind = f[fit.F_READING] | 0;
-  let reading = 0;
-  if (kind === fit.COUNTED_READING) {
-    const count = pulsesBy(s, f, fit.F_LATE) - pulsesBy(s, f, fit.F_EARLY);
-    reading = count * f[fit.F_SPEED_RATE];
-  } else if (kind === fit.TIMED_READING) {
-    timePulses(s, f, k);
-    const since = Math.floor((k - f[fit.F_DELAY]) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
-    reading = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
-  } else reading = speedLate(s, f);
-
-  reading *= f[fit.F_SCALE];
-  const sd = f[fit.F_SD];
-  if (sd > 0) reading += sd * normalAt(f, fit.F_NOISE, k);
-  s[SENSED] = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * s[SENSED_MORE] + f[fit.F_NOW] * reading;
-  s[SENSED_MORE] = reading;
+  if (kind === fit.COUNTED_READING) countPulses(s, f);
+  else if (kind === fit.TIMED_READING) timePulses(s, f);
+  else s[SENSED_MORE] = speedLate(s, f);
+  s[SENSED_MORE] *= f[fit.F_SCALE];
+  if (f[fit.F_SD] > 0) addNoise(s, f);
+  const reading = s[SENSED_MORE];
+  s[SENSED] = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * before + f[fit.F_NOW] * reading;
   s[BUS_MEASURED] = s[SENSED];
-  s[SAMPLES] = k + 1;
+  s[SAMPLES] += 1;
+}
+
+// What follows reads and writes the arrays: numbers given to a function and taken from it are boxed at every sample,
+// where an engine does not put the function in the place of its call.
+
+function countPulses(s: Float64Array, f: Float64Array): void {
+  const count = pulsesBy(s, f, fit.F_LATE) - pulsesBy(s, f, fit.F_EARLY);
+  s[SENSED_MORE] = count * f[fit.F_SPEED_RATE];
+}
+
+function timePulses(s: Float64Array, f: Float64Array): void {
+  findPulses(s, f);
+  const since = Math.floor((s[SAMPLES] - f[fit.F_DELAY]) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
+  s[SENSED_MORE] = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
+}
+
+function addNoise(s: Float64Array, f: Float64Array): void {
+  s[SENSED_MORE] += f[fit.F_SD] * normalAt(f, fit.F_NOISE, s[SAMPLES]);
 }
 
 /** Puts the sensor at rest at the speed and place at which the vehicle is, as if it had come there at that speed. */
@@ -122,7 +132,8 @@ function speedLate(s: Float64Array, f: Float64Array): number {
 }
 
 /** Finds the pulses since the reading before, and keeps the last one and its period. */
-function timePulses(s: Float64Array, f: Float64Array, k: number): void {
+function findPulses(s: Float64Array, f: Float64Array): void {
+  const k = s[SAMPLES];
   const before = s[PULSES];
   const now = pulsesBy(s, f, fit.F_LATE);
   if (!(now > before)) return;

@@ -6,8 +6,16 @@ const TAIL = 16;
 /** Bits of a word within a cell. */
 const BITS = 22;
 
-/** Places of a noise: two words of its seed, then the inverse of the normal law at the edges of the cells. */
-export const NOISE_SIZE = 2 + CELLS + 1;
+/** Numbers that are made at a time: one by one, each waits for its own mixing. */
+const BLOCK = 32;
+
+// Places of a noise: two words of its seed; the inverse of the normal law at the edges of the cells; the ticks of a block,
+// first and one behind the last, and its numbers.
+const EDGES = 2;
+const FIRST = EDGES + CELLS + 1;
+const BEHIND = FIRST + 1;
+const NUMBERS = BEHIND + 1;
+export const NOISE_SIZE = NUMBERS + BLOCK;
 
 /**
  * What `normalAt` reads.
@@ -20,7 +28,7 @@ export function noiseOf(seed: number): Float64Array {
   const noise = new Float64Array(NOISE_SIZE);
   noise[0] = (whole % 4294967296) | 0;
   noise[1] = mix(high ^ 0x5bd1e995);
-  for (let cell = TAIL; cell <= CELLS - TAIL; cell++) noise[2 + cell] = normalQuantile(cell / CELLS);
+  for (let cell = TAIL; cell <= CELLS - TAIL; cell++) noise[EDGES + cell] = normalQuantile(cell / CELLS);
   return noise;
 }
 
@@ -34,12 +42,25 @@ export function noiseOf(seed: number): Float64Array {
  * @param tick whole, in [0, 2^32)
  */
 export function normalAt(f: Float64Array, place: number, tick: number): number {
-  const word = mix(mix(Math.imul(tick, 0x9e3779b9) + f[place]) ^ f[place + 1]);
-  const cell = word >>> BITS;
-  if (cell < TAIL || cell >= CELLS - TAIL) return normalQuantile(((word >>> 0) + 0.5) * (1 / 4294967296));
-  const below = f[place + 2 + cell];
-  const share = ((word & ((1 << BITS) - 1)) + 0.5) * (1 / (1 << BITS));
-  return below + share * (f[place + 3 + cell] - below);
+  if (!(tick >= f[place + FIRST] && tick < f[place + BEHIND])) makeBlock(f, place, tick);
+  return f[place + NUMBERS + ((tick - f[place + FIRST]) | 0)];
+}
+
+function makeBlock(f: Float64Array, place: number, tick: number): void {
+  const first = tick - (tick % BLOCK);
+  f[place + FIRST] = first;
+  f[place + BEHIND] = first + BLOCK;
+  for (let i = 0; i < BLOCK; i++) {
+    const word = mix(mix(Math.imul(first + i, 0x9e3779b9) + f[place]) ^ f[place + 1]);
+    const cell = word >>> BITS;
+    const out = place + NUMBERS + i;
+    if (cell < TAIL || cell >= CELLS - TAIL) f[out] = normalQuantile(((word >>> 0) + 0.5) * (1 / 4294967296));
+    else {
+      const below = f[place + EDGES + cell];
+      const share = ((word & ((1 << BITS) - 1)) + 0.5) * (1 / (1 << BITS));
+      f[out] = below + share * (f[place + EDGES + 1 + cell] - below);
+    }
+  }
 }
 
 /**

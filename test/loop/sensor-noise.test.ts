@@ -41,6 +41,12 @@ it('gives the same number for the same seed and tick, and others for others', ()
   expect(new Set(some).size).toBe(some.length);
 });
 
+it('gives the same numbers in whatever order the ticks are asked for', () => {
+  const noise = noiseOf(5);
+  for (const tick of [0, 40, 31, 32, 2 ** 32 - 1, 33, 33, 64, 63, 1, 2 ** 31, 95])
+    expect(normalAt(noise, 0, tick)).toBe(normalAt(noiseOf(5), 0, tick));
+});
+
 it.each([3, 2 ** 45 + 11])('is distributed as the normal law over the ticks, with seed %d', (seed) => {
   const noise = noiseOf(seed);
   const ticks = 200_000;
