@@ -17,6 +17,8 @@ import { planMap } from './model/plan-map.ts';
 import { viewOf } from './model/view.ts';
 import { FILE_PAINT } from './paint.ts';
 import type { ReportOptions } from './render-report.ts';
+import { loopPageOf } from './sections/loop-page.ts';
+import { pageLoopChart } from './sections/loop-section.ts';
 
 export interface ChartFile {
   /** File name, with its ending. */
@@ -62,5 +64,11 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
       : [file('plan', planChart(view, design, map, canvas('plan')))]),
     file('segments', segmentStrip(view, canvas('segments'))),
     file('energy', energyChart(view, canvas('energy'))),
+    ...result.loops.loops
+      .filter(({ worst }) => worst !== null)
+      .map((loop) => {
+        const name = `loop-${loop.name}`;
+        return file(name, pageLoopChart(loopPageOf(view), loop, canvas(name)));
+      }),
   ];
 }

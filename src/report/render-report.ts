@@ -1,9 +1,7 @@
 import type { RunResult } from '../run/run-result.ts';
-import { lineKey } from './charts/line-key.ts';
 import { html } from './html.ts';
-import { type CandidateView, type View, viewOf } from './model/view.ts';
+import { type View, viewOf } from './model/view.ts';
 import { type Page, renderPage } from './page.ts';
-import { PAGE_PAINT } from './paint.ts';
 import { lengthText, type Units } from './quantity.ts';
 import { answerSection } from './sections/answer-section.ts';
 import { candidatesSection } from './sections/candidates-section.ts';
@@ -11,7 +9,8 @@ import { energySection } from './sections/energy-section.ts';
 import { forceSection } from './sections/force-section.ts';
 import { hillsSection } from './sections/hills-section.ts';
 import { lanesSection } from './sections/lanes-section.ts';
-import { type LoopPage, loopSection } from './sections/loop-section.ts';
+import { loopPageOf } from './sections/loop-page.ts';
+import { loopSection } from './sections/loop-section.ts';
 import { matrixSection } from './sections/matrix-section.ts';
 import { methodSection } from './sections/method-section.ts';
 import { roadSection } from './sections/road-section.ts';
@@ -39,7 +38,7 @@ export function reportSections(view: View): readonly Section[] {
     hillsSection(view),
     whereSection(view),
     energySection(view),
-    ...(view.result.loops.points.length === 0 ? [] : [loopSection(loopPage(view))]),
+    ...(view.result.loops.points.length === 0 ? [] : [loopSection(loopPageOf(view))]),
     methodSection(view),
   ].map((section, i) => ({ ...section, number: i + 1 }));
 }
@@ -61,20 +60,6 @@ export function renderReport(result: RunResult, options: ReportOptions): string 
     sections: reportSections(view),
     foot: html`Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the <a href="#method-inputs">inputs</a>. A simulation is no approval to ride.`,
   });
-}
-
-function loopPage({ result, speed, candidates }: View): LoopPage {
-  const look = (name: string): CandidateView | undefined => candidates.find((one) => one.name === name);
-  return {
-    sheet: result.loops,
-    speed,
-    colourOf: (name) => look(name)?.colour ?? 1,
-    keyOf: (name) => {
-      const candidate = look(name);
-      return candidate === undefined ? null : lineKey(candidate, PAGE_PAINT);
-    },
-    file: 'margins.csv',
-  };
 }
 
 function memo({ result, length, candidates, speed }: View): Page['memo'] {

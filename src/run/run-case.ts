@@ -18,7 +18,7 @@ import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
 import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
 import { findHills } from '../study/find-hills.ts';
-import type { Replayed } from '../study/findings.ts';
+import type { Demand, Replayed } from '../study/findings.ts';
 import { followHolds } from '../study/hold-transients.ts';
 import { judge } from '../study/judge.ts';
 import { findLimitCycles } from '../study/limit-cycles.ts';
@@ -26,7 +26,7 @@ import { type LoopSheet, loopSheet } from '../study/loop-sheet.ts';
 import { operatingPoints } from '../study/operating-points.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
-import { visitsOfRecord } from '../study/visited-points.ts';
+import { visitsOfDemand, visitsOfRecord } from '../study/visited-points.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { toKmh } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -174,7 +174,7 @@ export function runWithoutMatrix({
     demand,
     hills,
     cycles,
-    loops: loopsOnPaper(road, vehicle, results),
+    loops: loopsOnPaper(road, vehicle, demand, results),
     transients: followed.transients,
     loggedRides: rideResults(loggedRides, { ...context, vehicle, hold, rider, band, replayed }),
     segmentsBy: segmenting.by,
@@ -198,12 +198,23 @@ export function runWithoutMatrix({
   return { run, matrix: rides === null ? null : { ...rides, candidates, scheme, bands, bin, spread } };
 }
 
-/** The linear loops of all candidates at the operating points that those with one visit. */
-function loopsOnPaper(road: Road, vehicle: Vehicle, candidates: readonly CandidateResult[]): LoopSheet {
-  const linear = candidates.filter(({ controller }) => !('none' in linearController(controller)));
-  const visits = linear.flatMap(({ result }) => visitsOfRecord(road, result.bins));
-  const rides = [{ vehicle, load: null, visits }];
-  return loopSheet(operatingPoints({ rides, grid: null }), candidates);
+/**
+ * The linear loops of all candidates at the operating points of the route: where an ideal hold is, so that no candidate
+ * changes what is told of another; of a gearbox that shifts by itself, where the runs were, since they know its gears.
+ */
+function loopsOnPaper(
+  road: Road,
+  vehicle: Vehicle,
+  demand: Demand,
+  runs: readonly CandidateResult[],
+): LoopSheet {
+  const linear = runs.filter(({ controller }) => !('none' in linearController(controller)));
+  if (linear.length === 0) return { points: [], notHeld: [], loops: [] };
+  const visits =
+    vehicle.drive.gearbox.kind === 'automatic'
+      ? linear.flatMap(({ result }) => visitsOfRecord(road, result.bins))
+      : visitsOfDemand(road, demand);
+  return loopSheet(operatingPoints({ rides: [{ vehicle, load: null, visits }], grid: null }), runs);
 }
 
 /** The true speeds that the set speeds of a run stand for [m/s]. */

@@ -29,7 +29,7 @@ export interface CandidateLoop {
   readonly sample: number | null;
   /** At each point. */
   readonly figures: readonly PointFigures[];
-  /** Points with the greatest sensitivity first, unstable ones before all. */
+  /** Points, the worst first: unstable ones by falling growth, then by falling sensitivity. */
   readonly order: readonly number[];
   /** At the first of them, and at the point that stands for the most time; null: no points. */
   readonly worst: PointCurves | null;
@@ -86,10 +86,17 @@ export function loopSheet({ points, notHeld }: OperatingPoints, candidates: read
   return { points, notHeld, loops };
 }
 
-/** Numbers of the points, the greatest sensitivity first; of unstable ones the order is theirs. */
+/** Numbers of the points: unstable ones first, the fastest growth before all, then by falling sensitivity. */
 function worstFirst(figures: readonly PointFigures[]): readonly number[] {
-  const rank = (i: number): number => figures[i].margins.sensitivity ?? Number.POSITIVE_INFINITY;
-  return figures.map((_, i) => i).sort((i, j) => (rank(i) === rank(j) ? i - j : rank(j) - rank(i)));
+  const growth = ({ margins, poles }: PointFigures): number =>
+    margins.stable ? Number.NEGATIVE_INFINITY : poles.reduce((most, { re }) => Math.max(most, re), 0);
+  const ranks = figures.map((one) => ({ growth: growth(one), sensitivity: one.margins.sensitivity ?? 0 }));
+  const before = (i: number, j: number): number => {
+    const [a, b] = [ranks[i], ranks[j]];
+    if (a.growth !== b.growth) return a.growth > b.growth ? -1 : 1;
+    return b.sensitivity - a.sensitivity || i - j;
+  };
+  return figures.map((_, i) => i).sort(before);
 }
 
 function curvesAt(

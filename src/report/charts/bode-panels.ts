@@ -4,12 +4,12 @@ import { fixed, withUnit } from '../quantity.ts';
 import { leftAxis, type Scale, scaleOf } from './axes.ts';
 import { type Box, type Canvas, clip, clipped, label, segment, stroked, textWidth } from './canvas.ts';
 import { decadesOf, logarithmicAxis } from './log-axis.ts';
-import { strokeOf } from './loop-curve-stroke.ts';
+import { panelName, strokeOf } from './loop-panel.ts';
 import { linePath, type Point } from './paths.ts';
 
-/** A magnitude or a phase further off says nothing about the margins. */
-const DECIBELS = [-40, 40] as const;
-const DEGREES = [-360, 0] as const;
+/** Magnitudes [dB] and phases [deg] further off say nothing about the margins; the lower end makes room for a gain margin. */
+const DECIBELS = { high: 40, low: -40, lowest: -80 } as const;
+const LOWEST_PHASE = -360;
 
 /**
  * Magnitude and phase of open loops over frequency, one panel above the other. The margins of the first, strong curve are
@@ -23,23 +23,17 @@ export function bodePanels(
   const { id } = canvas;
   const [from, to] = frequencyRange(curves);
   const x = scaleOf([decadesOf(from), decadesOf(to)], above.left, above.left + above.width);
-  const decibels = scaleOf(DECIBELS, above.top + above.height, above.top);
+  const decibels = scaleOf(magnitudeRange(curves), above.top + above.height, above.top);
   const degrees = scaleOf(phaseRange(curves, from, to), below.top + below.height, below.top);
   const lines = (values: (one: LoopCurves) => readonly number[], y: Scale): Html =>
     html`${curves.toReversed().map((one) => {
       const points = values(one).map((value, i): Point => [x(decadesOf(one.frequency[i]!)), y(value)]);
       return stroked(linePath(points), strokeOf(one.look, canvas));
     })}`;
-  return html`<defs>${clip(`${id}-m`, above)}${clip(`${id}-p`, below)}</defs>${leftAxis(
-    canvas,
-    above,
-    decibels,
-    'open loop: magnitude / dB',
-    4,
-  )}${logarithmicAxis(canvas, above, x, null)}${clipped(
+  return html`<defs>${clip(`${id}-m`, above)}${clip(`${id}-p`, below)}</defs>${panelName(above, 'open loop: magnitude / dB', canvas)}${leftAxis(canvas, above, decibels, '', 5)}${logarithmicAxis(canvas, above, x, null)}${clipped(
     `${id}-m`,
     lines((one) => one.magnitudeDb, decibels),
-  )}${leftAxis(canvas, below, degrees, 'phase / °', 4)}${logarithmicAxis(
+  )}${panelName(below, 'open loop: phase / °', canvas)}${phaseAxis(below, degrees, canvas)}${logarithmicAxis(
     canvas,
     below,
     x,
@@ -81,7 +75,7 @@ function marginMarks({ crossings }: LoopCurves, plot: Plot, canvas: Canvas): Htm
       segment(at, decibels(0), at, above.top + above.height, thin),
       segment(at, below.top, at, tip, thin),
       segment(at, degrees(-180), at, tip, look),
-      words(at, (degrees(-180) + tip) / 2 + 4, withUnit(fixed(gain.phaseMarginDeg), '°'), below),
+      words(at, (degrees(-180) + tip) / 2 + 4, `${fixed(gain.phaseMarginDeg)}°`, below),
     );
   }
   if (phase !== null) {
@@ -101,7 +95,10 @@ function marginMarks({ crossings }: LoopCurves, plot: Plot, canvas: Canvas): Htm
 function frequencyRange(curves: readonly LoopCurves[]): readonly [number, number] {
   const firsts = curves.map(({ frequency }) => frequency[0] ?? 1);
   const lasts = curves.map(({ frequency }) => frequency.at(-1) ?? 1);
-  const gains = curves.flatMap(({ crossings }) => (crossings.gain === null ? [] : [crossings.gain.at]));
+  const gains = curves.flatMap(({ frequency, magnitudeDb }) => {
+    const i = magnitudeDb.findIndex((value, k) => k > 0 && value < 0 && magnitudeDb[k - 1]! >= 0);
+    return i < 0 ? [] : [frequency[i]!];
+  });
   const phases = curves.flatMap(({ crossings }) => (crossings.phase === null ? [] : [crossings.phase.at]));
   const low = gains.reduce((a, b) => Math.min(a, b / 10), Number.POSITIVE_INFINITY);
   const high = [...gains.map((at) => at * 10), ...phases.map((at) => at * 3)].reduce(
@@ -116,13 +113,31 @@ function frequencyRange(curves: readonly LoopCurves[]): readonly [number, number
   ];
 }
 
+/** Down to below the gain margins, in steps of 20 dB. */
+function magnitudeRange(curves: readonly LoopCurves[]): readonly [number, number] {
+  const most = curves.reduce((sum, { crossings }) => Math.max(sum, crossings.phase?.gainMarginDb ?? 0), 0);
+  const low = Math.min(DECIBELS.low, -20 * Math.ceil((most + 5) / 20));
+  return [Math.max(DECIBELS.lowest, low), DECIBELS.high];
+}
+
+/** Lines at multiples of 45 degrees, or of 90 where there are many. */
+function phaseAxis(box: Box, y: Scale, { paint }: Canvas): Html {
+  const [low, high] = y.domain() as [number, number];
+  const step = high - low > 270 ? 90 : 45;
+  const ticks = Array.from({ length: Math.round((high - low) / step) + 1 }, (_, i) => low + i * step);
+  return html`<g>${ticks.map(
+    (tick) =>
+      html`${segment(box.left, y(tick), box.left + box.width, y(tick), { stroke: paint.grid })}${label(box.left - 6, y(tick) + 4, fixed(tick), { anchor: 'end', size: 11, fill: paint.muted })}`,
+  )}</g>`;
+}
+
 /** In steps of 90 degrees around what the curves do there. */
 function phaseRange(curves: readonly LoopCurves[], from: number, to: number): readonly [number, number] {
   let [low, high] = [-180, -180];
   for (const { frequency, phaseDeg } of curves)
     phaseDeg.forEach((phase, i) => {
       if (frequency[i]! < from || frequency[i]! > to) return;
-      low = Math.min(low, Math.max(phase, DEGREES[0]));
+      low = Math.min(low, Math.max(phase, LOWEST_PHASE));
       high = Math.max(high, phase);
     });
   return [90 * Math.floor(low / 90), 90 * Math.ceil(high / 90)];

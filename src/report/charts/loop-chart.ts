@@ -5,11 +5,11 @@ import { BOTTOM_AXIS_HEIGHT } from './axes.ts';
 import { bodePanels } from './bode-panels.ts';
 import { type Box, type Canvas, drawing, segment } from './canvas.ts';
 import { keyRows } from './key-row.ts';
-import { strokeOf } from './loop-curve-stroke.ts';
+import { strokeOf } from './loop-panel.ts';
 import { stepPanels } from './step-panels.ts';
 
 const HEIGHT = 150;
-const GAP = 34;
+const GAP = 36;
 const TOP = 30;
 
 /**

@@ -3,7 +3,7 @@ import type { LoopCurves } from '../model/loop-curves.ts';
 import type { SpeedUnit } from '../quantity.ts';
 import { bottomAxis, leftAxis, scaleOf } from './axes.ts';
 import { type Box, type Canvas, clip, clipped, label, segment, stroked } from './canvas.ts';
-import { strokeOf } from './loop-curve-stroke.ts';
+import { panelName, strokeOf } from './loop-panel.ts';
 import { linePath, type Point } from './paths.ts';
 
 /** A response is drawn until it stays within this share of its greatest value. */
@@ -37,7 +37,7 @@ export function stepPanels(
       return stroked(linePath(points), strokeOf(one.look, canvas));
     });
     const clipId = `${id}-${which}`;
-    return html`<defs>${clip(clipId, box)}</defs>${leftAxis(canvas, box, y, name, 4)}${
+    return html`<defs>${clip(clipId, box)}</defs>${panelName(box, name, canvas)}${leftAxis(canvas, box, y, '', 4)}${
       which === 'setSpeed' &&
       segment(box.left, y(1), box.left + box.width, y(1), { stroke: paint.ink, dash: '2 3' })
     }${clipped(clipId, html`${marks}`)}${bottomAxis(canvas, box, x, axis)}${
@@ -49,11 +49,11 @@ export function stepPanels(
       })
     }`;
   };
-  return html`${panel('setSpeed', 1, above, `set speed up by 1 ${speed.name} / ${speed.axis}`, null, [0, 1])}${panel(
+  return html`${panel('setSpeed', 1, above, `speed after 1 ${speed.name} of set speed / ${speed.axis}`, null, [0, 1])}${panel(
     'load',
     1 / perUnit,
     below,
-    `1 % more grade / ${speed.axis}`,
+    `speed after 1 % more grade / ${speed.axis}`,
     'time / s',
     [0, 0],
   )}`;

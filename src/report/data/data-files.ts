@@ -6,6 +6,7 @@ import { disturbanceCsv } from './disturbance.ts';
 import { fullSeriesCsv } from './full-series.ts';
 import { hillsCsv } from './hill-table.ts';
 import { histogramsCsv } from './histogram-table.ts';
+import { marginsCsv } from './margin-table.ts';
 import { matrixCsv } from './matrix-table.ts';
 import { rideCsv } from './ride-series.ts';
 import { routeGeoJson } from './route.ts';
@@ -28,6 +29,7 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
     { name: 'segments.csv', text: segmentsCsv(run.segments) },
     { name: 'hills.csv', text: hillsCsv(run.hills) },
     { name: 'cycles.csv', text: cyclesCsv(run.cycles) },
+    { name: 'margins.csv', text: marginsCsv(run.loops) },
     { name: 'histograms.csv', text: histogramsCsv(run.candidates) },
     ...(run.matrix === null ? [] : [{ name: 'matrix.csv', text: matrixCsv(run.matrix) }]),
     ...run.loggedRides.map((ride) => ({ name: `ride-${ride.name}.csv`, text: rideCsv(ride) })),

@@ -12,6 +12,7 @@ import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
 import { type Json, numbers, warningJson } from './json-parts.ts';
 import { jsonText } from './json-text.ts';
+import { worstPoints } from './margin-table.ts';
 import { matrixJson } from './matrix-table.ts';
 import { rideJson } from './ride-summary.ts';
 import { routeSummary } from './route-summary.ts';
@@ -29,6 +30,7 @@ export function summaryJson(run: RunResult, files: readonly string[]): string {
 }
 
 function summaryOf(run: RunResult, files: readonly string[]): Json {
+  const worst = worstPoints(run.loops);
   return {
     schema_version: run.schemaVersion,
     tool: { name: 'ridgehold', version: run.toolVersion },
@@ -41,7 +43,10 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     route: routeSummary(run.road, run.demand),
     vehicle: { name: run.vehicle.name, ...numbers({ mass_kg: run.vehicle.mass }) },
     hold: numbers({ set_speed_kmh: toKmh(run.hold.setSpeed), band_kmh: toKmh(run.band) }),
-    candidates: run.candidates.map((candidate) => candidateOf(candidate, run.vehicle)),
+    candidates: run.candidates.map((candidate) => ({
+      ...candidateOf(candidate, run.vehicle),
+      ...(worst.has(candidate.name) ? { worst_point: worst.get(candidate.name) ?? null } : {}),
+    })),
     hills: hillRows(run.hills),
     cycles: cycleRows(run.cycles),
     requirements: run.requirements.map(requirementOf),
@@ -60,7 +65,10 @@ function significant(value: number, digits: number, what: string): number {
   return rounded(value, 0, what) === value ? value : Number(value.toPrecision(digits));
 }
 
-function candidateOf({ name, controller, result, figures, loop }: CandidateResult, { drive }: Vehicle): Json {
+function candidateOf(
+  { name, controller, result, figures, loop }: CandidateResult,
+  { drive }: Vehicle,
+): Record<string, Json> {
   const { ledger } = result;
   return {
     name,

@@ -44,7 +44,7 @@ export function atPoint(point: Place, speed: SpeedUnit): string {
 }
 
 export const phaseText = (margin: number | null): string =>
-  margin === null ? '' : Number.isFinite(margin) ? withUnit(fixed(toDeg(margin)), '°') : 'no limit';
+  margin === null ? '' : Number.isFinite(margin) ? `${fixed(toDeg(margin))}°` : 'no limit';
 export const factorText = (margin: number | null): string =>
   margin === null ? '' : Number.isFinite(margin) ? fixed(margin, margin < 100 ? 1 : 0) : 'no limit';
 export const sensitivityText = (sensitivity: number | null): string =>
@@ -80,7 +80,7 @@ export function worstPointWords({ points }: LoopSheet, loop: CandidateLoop, spee
       : 'the gain never reaches 1, so that no lag makes it oscillate';
   const gain =
     gainMargin !== null && Number.isFinite(gainMargin)
-      ? `the gain may grow ${significant(gainMargin, 2)} times before it oscillates`
+      ? `the gain may grow ${significant(gainMargin, 2)}-fold before it oscillates`
       : 'no gain makes it oscillate';
   const elsewhere =
     least === worst

@@ -1,4 +1,5 @@
 import type { CandidateLoop, LoopSheet } from '../../study/loop-sheet.ts';
+import type { Canvas } from '../charts/canvas.ts';
 import { loopChart } from '../charts/loop-chart.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { gearName, hasGears } from '../model/gear-words.ts';
@@ -37,7 +38,7 @@ export function loopSection(page: LoopPage): Section {
   const linear = sheet.loops.filter(({ notLinear }) => notLinear === null);
   const others = sheet.loops.filter(({ notLinear }) => notLinear !== null);
   const body = html`<p>${introduction(sheet)}</p>
-${sheet.points.length > 0 && linear.map((loop) => loopPart(page, loop))}
+${sheet.points.length > 0 && linear.map((loop, i) => loopPart(page, loop, i === 0 ? CAPTION : ''))}
 ${others.length > 0 && html`<p class="note">Without margins: ${others.map(({ name, notLinear }) => `${name} (${notLinear})`).join('; ')}.</p>`}
 ${notHeldWords(page)}`;
   return { id: 'loop', number: 0, title: 'The loop on paper', body };
@@ -59,23 +60,29 @@ function introduction({ points }: LoopSheet): string {
 }
 
 /** One candidate: its worst point in words, the table, the chart. */
-function loopPart(page: LoopPage, loop: CandidateLoop): Html {
+function loopPart(page: LoopPage, loop: CandidateLoop, caption: string): Html {
   const { sheet, speed } = page;
   const id = `loop-${loop.name}`;
-  const curves = loopCurves(sheet, loop, { colour: page.colourOf(loop.name) }, speed);
+  const more = loop.order.length - MOST_ROWS;
+  return html`<h3 id="${id}">${page.keyOf(loop.name)} ${loop.name}</h3>
+<p>${worstPointWords(sheet, loop, speed)}</p>
+${marginTable(page, loop)}${more > 0 && html`<p class="note">${more} more points stand in ${page.file}, with the figures of the loop as it would be without a sampler.</p>`}
+${chartFigure(id, (canvas) => pageLoopChart(page, loop, canvas), caption)}`;
+}
+
+/** Open loop and steps of a candidate at its worst and at the usual point. */
+export function pageLoopChart(page: LoopPage, loop: CandidateLoop, canvas: Canvas): Html {
+  const { sheet, speed } = page;
   const words = {
     title: `Open loop and step responses of ${loop.name}`,
     desc: worstPointWords(sheet, loop, speed),
   };
-  const more = loop.order.length - MOST_ROWS;
-  return html`<h3 id="${id}">${page.keyOf(loop.name)} ${loop.name}</h3>
-<p>${words.desc}</p>
-${marginTable(page, loop)}${more > 0 && html`<p class="note">${more} more points stand in ${page.file}, with the figures of the loop as it would be without a sampler.</p>`}
-${chartFigure(id, (canvas) => loopChart(words, curves, speed, canvas), CAPTION)}`;
+  const curves = loopCurves(sheet, loop, { colour: page.colourOf(loop.name) }, speed);
+  return loopChart(words, curves, speed, canvas);
 }
 
 const CAPTION =
-  'Left: the open loop; thick uprights are its margins at the worst point, the phase above −180° where the magnitude is 0 dB, the magnitude below 0 dB where the phase is −180°. Right: what the true speed does after a small step of the set speed, and after one per cent more of grade.';
+  'Thick uprights on the open loop are its margins at the worst point: the phase above −180° where the magnitude is 0 dB, the magnitude below 0 dB where the phase is −180°. The speed is the true one, after a small step of the set speed and after one per cent more of grade.';
 
 /** Margins, the worst first. */
 export function marginTable({ sheet, speed }: LoopPage, loop: CandidateLoop): Html {
@@ -95,7 +102,7 @@ export function marginTable({ sheet, speed }: LoopPage, loop: CandidateLoop): Ht
       ...(geared ? [gearName(point.gear)] : []),
       html`<span class="who">${placeOfPoint({ ...point, load: null }, speed).replace(/^gear.\d+, /, '')}</span>`,
       ...(loaded ? [point.load ?? 'own'] : []),
-      point.weight > 0 ? shareText(point.weight) : 'grid',
+      point.weight > 0 ? timeShare(point.weight) : 'grid',
       margins.stable ? flagged(sensitivityText(sensitivity)) : html`<span class="flag">unstable</span>`,
       none(phaseMargin, phaseText(phaseMargin)),
       none(gainMargin, factorText(gainMargin)),
@@ -130,6 +137,9 @@ export function marginTable({ sheet, speed }: LoopPage, loop: CandidateLoop): Ht
 const timeLeft = (time: number | null): string =>
   time === null || !Number.isFinite(time) ? 'no limit' : timeText(time);
 
+const timeShare = (share: number): string =>
+  share < 0.01 ? `below\u00a0${shareText(0.01)}` : shareText(share);
+
 const settlingText = (time: number): string => (Number.isFinite(time) ? timeText(time) : 'over 10\u00a0min');
 
 /** Where there is no loop, by reason. */
@@ -139,7 +149,7 @@ function notHeldWords({ sheet: { notHeld, points }, speed }: LoopPage): Html | n
   const grid = notHeld.filter(({ from }) => from === 'grid');
   const reasons = [...new Set(route.map(({ reason }) => reason))].map((reason) => {
     const share = route.filter((one) => one.reason === reason).reduce((sum, one) => sum + one.share, 0);
-    return `${NOT_HELD_WORDS[reason]} for ${share < 0.005 ? 'less than 1\u00a0%' : shareText(share)} of the time`;
+    return `${NOT_HELD_WORDS[reason]} for ${timeShare(share)} of the time`;
   });
   const vehicle = points[0]?.vehicle;
   const onGrid = grid.map((one) => {
