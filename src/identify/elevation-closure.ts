@@ -5,14 +5,18 @@ import { type Estimate, estimateOf } from './estimate.ts';
 import type { ElevationClosure, RideStretch, RideVehicle } from './ride.ts';
 import { rideLevels } from './ride-rows.ts';
 
+/** Drag area, rolling coefficient and offset. */
+const UNKNOWNS = 3;
 /** Samples of a stretch whose mean is one point of the closure [s]. */
 const CLOSURE_POINT = 5;
 
 /**
  * Elevation closure: the height that the account of energy gives, z_v = (work - m_e v^2 / 2 - tyres - air) / (m g), held
- * against the height of the road; drag area, rolling coefficient, an offset and a drift of each stretch by least squares
- * of z_v - z (R. Chung, Estimating CdA with a power meter, 2012; J. C. Martin et al., J. Appl. Biomech. 14 (1998)
- * 276-291). Of a single stretch, the longest.
+ * against the height of the road; drag area, rolling coefficient and an offset by least squares of z_v - z (R. Chung,
+ * Estimating CdA with a power meter, 2012; J. C. Martin et al., J. Appl. Biomech. 14 (1998) 276-291). Of the longest
+ * stretch. A drift of the height is not fitted: at a steady speed it would be the rolling coefficient.
+ *
+ * @returns null where the stretch is too short, or does not tell the two apart
  */
 export function elevationClosure(
   stretches: readonly RideStretch[],
@@ -41,19 +45,23 @@ export function elevationClosure(
   );
   const byRolling = thin((i) => rolling[i]! / STANDARD_GRAVITY);
   const byAir = thin((i) => air[i]! / weight);
-  const fixed = [excess.map(() => 1), thin((i) => time[i]! - time[0]!)];
-  if (points < 3 * (fixed.length + 2)) return null;
+  const fixed = [excess.map(() => 1)];
+  if (points < 4 * UNKNOWNS) return null;
   const fit = leastSquares([byRolling, byAir, ...fixed], excess);
   if (fit.status === 'dependent') return null;
   const was = leastSquares(
     fixed,
     excess.map((z, i) => z - vehicle.crr * byRolling[i]! - vehicle.cda * byAir[i]!),
   );
-  const { factor, independent } = colourOf(fit.residuals, 4);
+  const { factor, independent } = colourOf(fit.residuals, UNKNOWNS);
   const squares = (values: Float64Array): number => values.reduce((sum, z) => sum + z * z, 0);
-  const variance = (squares(fit.residuals) / (points - 4)) * factor;
+  const variance = (squares(fit.residuals) / (points - UNKNOWNS)) * factor;
   const of = (i: number): Estimate =>
-    estimateOf(fit.coefficients[i]!, Math.sqrt(variance * fit.inverse[i]![i]!), Math.max(1, independent - 4));
+    estimateOf(
+      fit.coefficients[i]!,
+      Math.sqrt(variance * fit.inverse[i]![i]!),
+      Math.max(1, independent - UNKNOWNS),
+    );
   return {
     crr: of(0),
     cda: of(1),

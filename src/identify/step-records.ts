@@ -2,6 +2,7 @@ import { InputError, type Problem } from '../problems/input-error.ts';
 import { toKmh, toPct } from '../units/convert.ts';
 import type { LoggedRun } from './read-log.ts';
 import type { FittedStep, StepRecord } from './step-test.ts';
+import { stepLevels } from './two-point-step.ts';
 
 /** A change of the throttle that is no step but the noise of its sensor. */
 const LEAST_STEP = 0.01;
@@ -12,7 +13,7 @@ const QUIET = 2;
 const FEWEST_SAMPLES = 30;
 /** Time constants that a record must last. */
 const LEAST_CONSTANTS = 2.5;
-/** Change of speed over its scatter below which there is nothing to fit. */
+/** Change of speed over its scatter before the step, below which there is nothing to fit. */
 const LEAST_CHANGE = 5;
 
 const MEASURE =
@@ -21,7 +22,7 @@ const MEASURE =
 /**
  * The steps of the throttle in logs: each from the quiet before it to the next change.
  *
- * @throws InputError `missing-column`, `no-step`, `step-too-short`, `not-quiet`: what was found, and what to measure
+ * @throws InputError `missing-column`, `no-step`: what was found, and what to measure
  */
 export function stepRecordsOf(logs: readonly LoggedRun[]): readonly StepRecord[] {
   const records = logs.flatMap(stepsOf);
@@ -97,7 +98,7 @@ function changesOf(
  * Refuses steps that are too short or too small for their fit.
  *
  * @param fits null where a record has none
- * @throws InputError with every fault
+ * @throws InputError with every fault: `too-few-samples`, `step-too-small`, `step-too-short`
  */
 export function checkSteps(
   records: readonly StepRecord[],
@@ -123,27 +124,28 @@ function faultsOf(record: StepRecord, fit: FittedStep | null): Problem[] {
         allowed: `${FEWEST_SAMPLES} or more; ${MEASURE}`,
       },
     ];
-  if (fit === null || fit.fit.timeConstant.value * LEAST_CONSTANTS > lasts) {
-    const found = fit === null ? 'no end' : `a time constant of ${fit.fit.timeConstant.value.toFixed(1)} s`;
+  const { before, after } = stepLevels(record);
+  const quiet = record.speed.filter((_, i) => record.time[i]! < 0);
+  const scatter = Math.sqrt(quiet.reduce((sum, v) => sum + (v - before) * (v - before), 0) / quiet.length);
+  if (Math.abs(after - before) < LEAST_CHANGE * scatter)
     return [
       {
-        code: 'step-too-short',
+        code: 'step-too-small',
         place,
-        message: `${which} was not held until the speed settled`,
-        found: `${found} in ${lasts.toFixed(1)} s`,
-        allowed: `${LEAST_CONSTANTS} time constants or more; ${MEASURE}`,
+        message: `the speed hardly answers ${which}`,
+        found: `${toKmh(Math.abs(after - before)).toFixed(2)} km/h, where it scatters by ${toKmh(scatter).toFixed(2)} km/h before the step`,
+        allowed: `${LEAST_CHANGE} times the scatter or more: a larger step, or a smoother speed; ${MEASURE}`,
       },
     ];
-  }
-  const change = Math.abs(fit.settled - fit.before);
-  if (change >= LEAST_CHANGE * fit.rmsSpeed) return [];
+  if (fit !== null && fit.fit.timeConstant.value * LEAST_CONSTANTS <= lasts) return [];
+  const found = fit === null ? 'no end' : `a time constant of ${fit.fit.timeConstant.value.toFixed(1)} s`;
   return [
     {
-      code: 'step-too-small',
+      code: 'step-too-short',
       place,
-      message: `the speed hardly answers ${which}`,
-      found: `${toKmh(change).toFixed(2)} km/h in a scatter of ${toKmh(fit.rmsSpeed).toFixed(2)} km/h`,
-      allowed: `${LEAST_CHANGE} times the scatter or more: a larger step, or a smoother speed; ${MEASURE}`,
+      message: `${which} was not held until the speed settled`,
+      found: `${found} in ${lasts.toFixed(1)} s`,
+      allowed: `${LEAST_CONSTANTS} time constants or more; ${MEASURE}`,
     },
   ];
 }

@@ -7,7 +7,7 @@ export const rideMethod = (): Html => html`<dl class="equations">
 <dt>left out</dt>
 <dd>Pieces in which the drive gave nothing for more than a tenth of the time (a brake may have been on), rows slower than 9 km/h, and what lies beside a pause of more than 5 s or a gap of the track.</dd>
 <dt>z<sub>v</sub> = ∫ [(F<sub>drive</sub> − F<sub>air</sub> − m<sub>e</sub> dv/dt) / (m g) − Crr] ds</dt>
-<dd>Elevation closure: CdA and Crr that make this height follow the road's, with an offset and a drift (R. Chung, Estimating CdA with a power meter, 2012; J. C. Martin et al., J. Appl. Biomech. 14 (1998) 276-291). Integrated, not differentiated.</dd>
+<dd>Elevation closure: CdA and Crr that make this height follow the road's, with an offset (R. Chung, Estimating CdA with a power meter, 2012; J. C. Martin et al., J. Appl. Biomech. 14 (1998) 276-291). Integrated, not differentiated; a height that drifts goes into Crr.</dd>
 <dt>speed residual</dt>
 <dd>Each segment is simulated from its logged starting speed with the logged drive, midpoint rule, at most 0.25 s a step. Drive lag and shifts are not in it.</dd>
 <dt>standard errors</dt>

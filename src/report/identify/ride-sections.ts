@@ -56,7 +56,7 @@ ${table('Elevation closure', ESTIMATE_COLUMNS, [
   ['drag area CdA', ...estimateCells(closure.cda), 'm²'],
   ['rolling coefficient Crr', ...estimateCells(closure.crr), '1'],
 ])}
-<p class="note">The height that the account of energy gives, held against the height of the road: with the vehicle as it was it misses by ${withUnit(fixed(closure.before, 2), 'm')} (root mean square, after an offset and a drift), with these two numbers by ${withUnit(fixed(closure.after, 2), 'm')}. A second look at the same ride, not a second ride: it is not what the file has.</p>`
+<p class="note">The height that the account of energy gives, held against the height of the road: with the vehicle as it was it misses by ${withUnit(fixed(closure.before, 2), 'm')} (root mean square, after an offset), with these two numbers by ${withUnit(fixed(closure.after, 2), 'm')}. A second look at the same ride, not a second ride: it is not what the file has.</p>`
 }
 <h3>Taken for granted</h3>
 ${givenTable(given)}`;
