@@ -44,8 +44,8 @@ export function supervisedController(
     inner.engage(bus);
   };
   const stepOverridden = (bus: Float64Array): void => {
-    for (let i = 0; i < integralAt.length; i++) kept[i] = bus[integralAt[i]!];
     bus[BUS_LIMITED] = bus[at.OWN_COMMAND];
+    for (let i = 0; i < integralAt.length; i++) kept[i] = bus[integralAt[i]!];
     inner.step(bus);
     const own = bus[BUS_LIMITED];
     const returns = bus[at.HOLD_MODE] === at.RE_ENTERING;
