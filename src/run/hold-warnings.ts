@@ -64,11 +64,17 @@ function tooNearToStart({ stops, bends }: BendPlan): Warning[] {
   ];
 }
 
-/** Holds that a rule of the unit ended, or refused to begin. */
-function rulesOf({ name, result }: Replayed): Warning[] {
+/** Why the unit refuses what the rider asks. */
+const REFUSALS: Readonly<Partial<Record<HoldEvent['cause'], string>>> = {
+  below_lowest_speed: 'the unit holds no speed so low',
+  clutch: 'the clutch is pulled',
+};
+
+/** Holds that a rule of the unit ended, and what the unit refused. A locked throttle, which has none, refuses without a word. */
+function rulesOf({ name, plan, result }: Replayed): Warning[] {
   const events = result.holdEvents ?? [];
   const ended = events.filter((event) => event.kind === 'ended' && isByRule(event));
-  const refused = events.filter(({ kind }) => kind === 'refused');
+  const refused = events.filter(({ kind }) => kind === 'refused' && plan.controller.kind !== 'locked');
   return [
     ...told(
       ended,
@@ -79,8 +85,8 @@ function rulesOf({ name, result }: Replayed): Warning[] {
     ...told(
       refused,
       'hold-refused',
-      ({ distance, measured }) =>
-        `${name} refuses to take over at ${atKm(distance)}: a rule of the unit does not allow it at ${inKmh(measured)}.`,
+      ({ distance, measured, cause }) =>
+        `${name} refuses what the rider asks at ${atKm(distance)}, at ${inKmh(measured)}: ${REFUSALS[cause] ?? 'hold is not in a state for it'}.`,
     ),
   ];
 }

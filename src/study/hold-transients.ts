@@ -34,8 +34,10 @@ interface Followed extends MeasuredTransient {
  *
  * @returns in order along the way; empty for a run without events
  */
-export const holdMeasures = (replayed: Replayed): readonly HoldMeasure[] =>
-  eventsOf(replayed).map((at) => follow(replayed, at).measure);
+export function holdMeasures(replayed: Replayed): readonly HoldMeasure[] {
+  const course = courseOfRun(replayed);
+  return eventsOf(replayed).map((at) => follow(replayed, course, at).measure);
+}
 
 /** What follows the events of all candidates. */
 export interface FollowedHolds {
@@ -51,7 +53,8 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
   const leftOut: HoldTransients['leftOut'][number][] = [];
   for (const replayed of candidates) {
     // Samples of all windows at once would be a run's and more: those that are shown are replayed again.
-    const followed = eventsOf(replayed).map((at) => ({ at, measure: follow(replayed, at).measure }));
+    const course = courseOfRun(replayed);
+    const followed = eventsOf(replayed).map((at) => ({ at, measure: follow(replayed, course, at).measure }));
     measures.set(
       replayed.result,
       followed.map(({ measure }) => measure),
@@ -66,7 +69,7 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
     }
     for (const { at, measure } of followed) {
       if (!kept.has(at)) continue;
-      const { series, last } = follow(replayed, at);
+      const { series, last } = follow(replayed, course, at);
       const picture = thinSeries(series, 0, endOfTail(series, last), PICTURE_ROWS);
       shown.push({ ...measure, words: transientWords(measure), picture });
     }
@@ -86,14 +89,14 @@ function badness({ event, settling, lowest, highest, jerk }: HoldMeasure): numbe
   return unsettled + Math.max(size(lowest), size(highest));
 }
 
-function follow(replayed: Replayed, at: number): Followed {
+function follow(replayed: Replayed, course: HoldCourse, at: number): Followed {
   const { plan, result } = replayed;
   const events = result.holdEvents ?? [];
   const event = events[at]!;
   const toTrue = trueSpeedFactor(plan.hold, plan.vehicle);
   const speed = Math.max(event.measured, event.setSpeed) * toTrue;
   const off = event.kind === 'ended';
-  const next = endedBy(events, at, courseOfRun(replayed));
+  const next = endedBy(events, at, course);
   const longest = off ? LONGEST_OFF : LONGEST;
   const horizon = event.distance + (longest + TAIL) * speed;
   const to = Math.min(next.place, horizon, result.endDistance);
