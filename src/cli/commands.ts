@@ -76,6 +76,15 @@ export const OPTIONS = {
     value: 'KG/M3',
     about: 'density of the air, in place of temperature and pressure',
   },
+  png: {
+    type: 'boolean',
+    about: 'also write each picture as PNG, for slides and build servers',
+  },
+  'png-width': {
+    type: 'string',
+    value: 'PIXELS',
+    about: 'width of those pictures, 1600 where it is left out; means --png',
+  },
   help: { type: 'boolean', short: 'h', about: 'print this help' },
 } as const satisfies Readonly<Record<string, OptionRow>>;
 
@@ -103,7 +112,7 @@ export const COMMANDS = {
       'JUnit XML has one test suite a candidate and one test case a requirement: not met is a failure, not judged an error, too close to call is skipped. Of files that are there already only an earlier one of ridgehold is written over.',
       'Exit status: 0 done; 1 done, but a requirement is not met, in the run itself or in a combination; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
     ],
-    options: ['out', 'set', 'junit', 'threads', 'json', 'quiet', 'units', 'help'],
+    options: ['out', 'set', 'junit', 'png', 'png-width', 'threads', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold run night-post.yaml --set hold.set_speed_kmh=70 -o out/at-70',
   },
   road: {
@@ -113,7 +122,7 @@ export const COMMANDS = {
       'Reads a track (.gpx, .csv, .geojson) with the default road options, or the track of a case, and writes disturbance.csv, route.geojson, road.svg (elevation, grade with its uncertainty, wind) and road.json into a folder: --out, or out/<name> (for a file called case.yaml, out/<name of its folder>).',
       'Repairs, warnings and the uncertainty of the grade are told on standard error. For a bare track, --set takes the keys of a case that concern the road: track.*, road.*, wind.*, air.*.',
     ],
-    options: ['out', 'set', 'json', 'quiet', 'units', 'help'],
+    options: ['out', 'set', 'png', 'png-width', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold road ride.gpx --set road.elevation_source=gnss --set track.trim_ends_m=300',
   },
   compare: {

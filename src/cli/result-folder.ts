@@ -15,15 +15,14 @@ import { InputError } from '../problems/input-error.ts';
 import { fileProblem } from './file-problem.ts';
 import { makeFolder } from './make-folder.ts';
 
-export interface TextFile {
-  /** Below the folder, with `/`. */
-  readonly name: string;
-  readonly text: string;
-}
+/** A file to be written: its name below the folder, with `/`, and what is in it. */
+export type ResultFile =
+  | { readonly name: string; readonly text: string }
+  | { readonly name: string; readonly bytes: Uint8Array };
 
 const STAGE = /^\.ridgehold-(\d+)$/;
 /** Names that a run writes; a summary that lists anything else is not believed. */
-const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg)$/i;
+const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg|png)$/i;
 
 /** The marks of whole results of the commands, which may share a folder. */
 const MARKS = ['summary.json', 'road.json', 'compare.json', 'identify.json'];
@@ -89,7 +88,7 @@ const notFolder = (here: string, folder: string): string =>
  */
 export function writeResult(
   folder: string,
-  files: readonly TextFile[],
+  files: readonly ResultFile[],
   cleared: readonly string[] = [],
 ): void {
   let made: string | undefined;
@@ -109,11 +108,12 @@ export function writeResult(
       ...formerFiles(join(folder, mark)),
       ...abandoned.flatMap((path) => filesOfKilledRun(path, mark)),
     ];
-    for (const { name, text } of files) {
+    for (const file of files) {
+      const { name } = file;
       const path = join(stage, 'new', name);
       within(join(folder, name), () => {
         makeFolder(dirname(path));
-        writeFileSync(path, text, { flag: 'wx' });
+        writeFileSync(path, 'text' in file ? file.text : file.bytes, { flag: 'wx' });
       });
     }
     swap(folder, stage, files);
@@ -147,7 +147,7 @@ function refuseFolder(folder: string, name: string): void {
 }
 
 /** Moves the old files aside, the mark first, and the new ones into place, the mark last; undoes all of it when a step fails. */
-function swap(folder: string, stage: string, files: readonly TextFile[]): void {
+function swap(folder: string, stage: string, files: readonly ResultFile[]): void {
   const undo: (() => void)[] = [];
   const folderFor = (path: string): void => {
     const made = makeFolder(dirname(path));

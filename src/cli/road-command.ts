@@ -11,20 +11,25 @@ import { readerOf } from './case-reader.ts';
 import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE } from './exit-status.ts';
-import { checkFolder, writeResult } from './result-folder.ts';
+import { pngRenderer, pngWidthOf } from './png-renderer.ts';
+import { checkFolder, type ResultFile, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
 
 /** `ridgehold road TRACK|CASE`: writes the disturbances along a road, tells people what was repaired. */
-export function roadCommand({ operands: [path], values }: Invocation<'road'>): number {
+export async function roadCommand({ operands: [path], values }: Invocation<'road'>): Promise<number> {
+  const width = pngWidthOf(values);
   const folder = values.out ?? defaultFolder(path);
   checkFolder(folder, ['disturbance.csv', 'road.svg', 'road.json']);
+  const draw = width === null ? null : await pngRenderer(width);
   const reader = readerOf(path);
   const result = reader.telling(() =>
     roadOf({ file: reader.file, read: reader.read, overrides: values.set }),
   );
-  const files = [
+  const picture = roadPicture(result.road, { units: values.units ?? 'kmh' });
+  const files: ResultFile[] = [
     ...roadFiles(result.road),
-    { name: 'road.svg', text: roadPicture(result.road, { units: values.units ?? 'kmh' }) },
+    { name: 'road.svg', text: picture },
+    ...(draw === null ? [] : [{ name: 'road.png', bytes: draw(picture) }]),
   ];
   const mark = roadJson(
     result,

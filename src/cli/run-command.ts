@@ -16,9 +16,10 @@ import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
 import { checkJunitFile } from './junit-file.ts';
 import { matrixLines } from './matrix-lines.ts';
+import { pngRenderer, pngWidthOf } from './png-renderer.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { requirementLines } from './requirement-lines.ts';
-import { checkFolder, writeResult } from './result-folder.ts';
+import { checkFolder, type ResultFile, writeResult } from './result-folder.ts';
 import { runCells } from './run-cells.ts';
 import { say, tellWarnings } from './tell.ts';
 import { writeText } from './write-text.ts';
@@ -32,9 +33,11 @@ export async function runCommand(
 ): Promise<number> {
   refuseTrack(path);
   const threads = threadsOf(values.threads);
+  const width = pngWidthOf(values);
   const folder = values.out ?? defaultFolder(path);
   checkFolder(folder, ['report.html', 'summary.json']);
   if (values.junit !== undefined) checkJunitFile(values.junit);
+  const draw = width === null ? null : await pngRenderer(width);
   const reader = readerOf(path);
   const bar = new ProgressBar(process.stderr);
   const units = values.units ?? 'kmh';
@@ -53,10 +56,14 @@ export async function runCommand(
   } finally {
     bar.clear();
   }
-  const files = [
+  const files: ResultFile[] = [
     { name: 'report.html', text: renderReport(run, { units }) },
     ...dataFiles(run),
-    ...chartFiles(run, { units }).map(({ name, svg }) => ({ name: `charts/${name}`, text: svg })),
+    ...chartFiles(run, { units }).flatMap(({ name, svg }): ResultFile[] => {
+      const picture = { name: `charts/${name}`, text: svg };
+      if (draw === null) return [picture];
+      return [picture, { name: picture.name.replace(/svg$/, 'png'), bytes: draw(svg) }];
+    }),
   ];
   const summary = summaryJson(
     run,
