@@ -31,12 +31,25 @@ export { dataFiles, roadFiles, type TextFile } from './report/data/data-files.ts
 export { NotFiniteError } from './report/data/fixed.ts';
 export { roadJson } from './report/data/road-json.ts';
 export { summaryJson } from './report/data/summary.ts';
+export { identificationJson } from './report/identify/identification-json.ts';
+export {
+  type IdentificationOptions,
+  renderIdentification,
+} from './report/identify/render-identification.ts';
 export { junitXml } from './report/junit-xml.ts';
 export { renderReport } from './report/render-report.ts';
 export type { ProfileOptions, RoadOptions } from './road/options.ts';
 export type { Road } from './road/road.ts';
 export { roadOfProfile } from './road/road-of-profile.ts';
 export { roadOfTrack } from './road/road-of-track.ts';
+export type {
+  CoastDownIdentification,
+  Identification,
+  RideIdentification,
+  StepIdentification,
+} from './run/identification.ts';
+export { identifyLogs } from './run/identify-logs.ts';
+export type { IdentifyRequest } from './run/identify-request.ts';
 export type { CellOutcome, CellPicture, MatrixCell, MatrixResult } from './run/matrix-result.ts';
 export type { MatrixWork } from './run/matrix-work.ts';
 export { type RoadRequest, roadOf } from './run/road-of.ts';

@@ -1,0 +1,156 @@
+import { readFileSync } from 'node:fs';
+import { describe, expect, test } from 'vitest';
+import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { identificationJson } from '../../src/report/identify/identification-json.ts';
+import { renderIdentification } from '../../src/report/identify/render-identification.ts';
+import { identifyLogs } from '../../src/run/identify-logs.ts';
+import type { IdentifyRequest } from '../../src/run/identify-request.ts';
+import { expectClose } from '../compare.ts';
+
+const routes = new URL('../../routes/', import.meta.url);
+const read = (name: string) => readFileSync(new URL(name, routes));
+const WEATHER = { airTemperatureC: 12, airPressureHpa: 1004 };
+const identified = (log: string, more: Partial<IdentifyRequest> = {}) =>
+  identifyLogs({ logs: [`logs/gallop-field-${log}.csv`], read, ...more });
+const vehicle = 'vehicles/proving-125.yaml';
+// What the demo logs were made with: see MACHINE in scripts/make-logs.mjs.
+const TRUTH = { cda: 0.61, crr: 0.0152, mass: 215 };
+const holds = ({ low, high }: { low: number; high: number }, truth: number) => low <= truth && truth <= high;
+
+describe('the demo coast-down', () => {
+  const result = identified('coast-down', { vehicle, ...WEATHER });
+  if (result.kind !== 'coast-down') throw new Error(result.kind);
+
+  test('is told by its columns, and gives back what it was made with', () => {
+    expect(holds(result.fit.cda, TRUTH.cda)).toBe(true);
+    expect(holds(result.fit.crr, TRUTH.crr)).toBe(true);
+    expect(result.fit.runs.map(({ direction }) => direction).slice(0, 2)).toEqual(['there', 'back']);
+    expect(result.warnings).toEqual([]);
+  });
+
+  test('puts the numbers and their errors into a copy of the vehicle', () => {
+    const load = readVehicleFile(result.text, 'v.yaml').file.road_load;
+    expect(load).toMatchObject({ cda_yaw_per_rad2: 1 });
+    if (!('cda_m2' in load && 'crr' in load)) throw new Error('another form');
+    expectClose(load.cda_m2, result.fit.cda.value, 5e-5);
+    expect(result.text).toMatch(
+      /# cda_m2 0\.6\d+ m2: standard error 0\.0\d+, 95 % interval 0\.\d+ to 0\.\d+\n/,
+    );
+    expect(result.text).toContain('10 coast-down runs in gallop-field-coast-down.csv');
+  });
+
+  test('needs a mass, and takes it by itself', () => {
+    expect(() => identified('coast-down')).toThrow('the mass that rolled is not known');
+    const alone = identified('coast-down', { massKg: 215, rotatingKg: 9, ...WEATHER });
+    if (alone.kind !== 'coast-down') throw new Error(alone.kind);
+    expect(alone.fit.cda).toEqual(result.fit.cda);
+    expect(alone.text).toContain('(--mass-kg)');
+  });
+
+  test('warns where the air is assumed, and counts a heavier vehicle for more drag', () => {
+    const assumed = identified('coast-down', { massKg: 430, rotatingKg: 18 });
+    if (assumed.kind !== 'coast-down') throw new Error(assumed.kind);
+    expect(assumed.warnings.map(({ code }) => code)).toContain('air-assumed');
+    const density = (1013.25 * (273.15 + 12)) / (1004 * (273.15 + 15));
+    expectClose(assumed.fit.cda.value / result.fit.cda.value, 2 / density, 1e-9);
+  });
+
+  test('refuses the air twice', () => {
+    expect(() => identified('coast-down', { vehicle, ...WEATHER, airDensityKgM3: 1.2 })).toThrow(
+      'given twice',
+    );
+  });
+});
+
+describe('the demo steps', () => {
+  const result = identified('steps');
+  if (result.kind !== 'step') throw new Error(result.kind);
+
+  test('give back gain, time constant and delay', () => {
+    // 1.35 km/h per % is 37.5 m/s for the whole throttle
+    expect(holds(result.fit.all.gain, 37.5)).toBe(true);
+    expect(holds(result.fit.all.timeConstant, 8)).toBe(true);
+    expect(holds(result.fit.all.delay, 0.4)).toBe(true);
+    expect(result.fit.steps.map(({ record }) => record.to > record.from)).toEqual([
+      true,
+      false,
+      false,
+      true,
+      true,
+      false,
+    ]);
+  });
+
+  test('become PI gains by the rule of Skogestad', () => {
+    const { gain, timeConstant, delay } = result.fit.all;
+    const [tight, calm] = result.designs;
+    // Kc = T / (K (tc + L)), Ti = min(T, 4 (tc + L)), tc = L and 4 L
+    expectClose(tight!.kp, timeConstant.value / (gain.value * 2 * delay.value), 1e-9);
+    expectClose(tight!.integralTime, 8 * delay.value, 1e-9);
+    expectClose(calm!.kp, timeConstant.value / (gain.value * 5 * delay.value), 1e-9);
+    expect(result.text).toMatch(
+      /^candidates:\n {2}- \{name: simc-tight, kind: pi, kp_pct_per_kmh: [\d.]+, ti_s:/m,
+    );
+  });
+});
+
+describe('the demo ride', () => {
+  const result = identified('ride', { vehicle, ...WEATHER });
+  if (result.kind !== 'ride') throw new Error(result.kind);
+
+  test('gives back what it was made with, better than the vehicle that it is held against', () => {
+    const [cda, crr] = result.fit.unknowns;
+    expect(holds(cda!.estimate, TRUTH.cda)).toBe(true);
+    expect(holds(crr!.estimate, TRUTH.crr)).toBe(true);
+    expect(cda!.was).toBe(0.58);
+    expect(result.fit.rmsForce).toBeLessThan(result.fit.rmsForceBefore / 1.5);
+    expect(result.fit.segments).toHaveLength(28);
+  });
+
+  test('tells the mass where it is asked for', () => {
+    const three = identified('ride', { vehicle, ...WEATHER, fit: ['mass_kg', 'cda_m2', 'crr'] });
+    if (three.kind !== 'ride') throw new Error(three.kind);
+    expect(holds(three.fit.unknowns[0]!.estimate, TRUTH.mass)).toBe(true);
+    const { mass } = readVehicleFile(three.text, 'v.yaml').file;
+    expectClose(mass.kerb_kg + mass.rider_kg + mass.payload_kg, three.fit.unknowns[0]!.estimate.value, 0.01);
+  });
+});
+
+describe('a ride along the road of a case', () => {
+  test('is held against its vehicle, and a number that it does not tell stays as it was', () => {
+    const result = identifyLogs({
+      logs: ['harrow-gap-ridden.csv'],
+      read,
+      case: { file: 'harrow-gap-ridden.yaml', read },
+    });
+    if (result.kind !== 'ride') throw new Error(result.kind);
+    expect(result.fit.segments.length).toBeGreaterThan(50);
+    expect(result.roadWords).toContain('harrow-gap-ridden.yaml');
+    for (const { name, estimate, was } of result.fit.unknowns) {
+      const load = readVehicleFile(result.text, 'v.yaml').file.road_load as unknown as Record<string, number>;
+      if (estimate.low <= 0) expect(load[name]).toBe(was);
+      else expectClose(load[name]!, estimate.value, 1e-4);
+    }
+  });
+});
+
+describe('page and data of every kind', () => {
+  const results = [
+    identified('coast-down', { vehicle, ...WEATHER }),
+    identified('steps'),
+    identified('ride', { vehicle, ...WEATHER }),
+  ];
+
+  test.each(results.map((result) => [result.kind, result] as const))('are whole: %s', (kind, result) => {
+    const page = renderIdentification(result, { units: 'mph', output: 'v.yaml' });
+    expect(page).toMatch(/95 % intervals/);
+    expect(page).toContain('mph');
+    expect(page).not.toMatch(/undefined|NaN|\[object|Infinity/);
+    expect(renderIdentification(result, { units: 'mph', output: 'v.yaml' })).toBe(page);
+    const json = JSON.parse(identificationJson(result, 'v.yaml', ['identify.html']));
+    expect(json.kind).toBe(kind);
+    expect(json.answer).toContain('±');
+    expect(json.output).toMatchObject({ name: 'v.yaml', sha256: expect.stringMatching(/^[0-9a-f]{64}$/) });
+    expect(json.inputs[0].name).toBe(`logs/gallop-field-${kind === 'step' ? 'steps' : kind}.csv`);
+  });
+});
