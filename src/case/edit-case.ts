@@ -98,8 +98,8 @@ function nested(path: Path, value: Editable): Editable {
   return path.reduceRight<Editable>((inner, step) => ({ [String(step)]: inner }), value);
 }
 
-/** On one line, safe inside of brackets too. */
-function written(value: Editable): string {
+/** A value as an edit writes it: on one line, safe inside of brackets too. */
+export function written(value: Editable): string {
   if (typeof value === 'string') {
     const plain = stringify(value, { lineWidth: 0 }).trimEnd();
     return /^[\w./][\w ./+-]*$/.test(value) && plain === value ? value : JSON.stringify(value);

@@ -139,6 +139,7 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
     road,
     vehicle,
     hold: ride.hold,
+    rider: ride.rider,
     scheme,
     band,
     plan,

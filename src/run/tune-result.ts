@@ -3,7 +3,7 @@ import type { GivenValue } from '../case/given-values.ts';
 import type { DefaultUsed } from '../case/list-defaults.ts';
 import type { TuneDesign, TunePlan } from '../case/tune-of.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, RunStatus } from '../loop/plan.ts';
+import type { HoldPlan, RiderPlan, RunStatus } from '../loop/plan.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Figure, FigureValues } from '../study/findings.ts';
@@ -23,6 +23,7 @@ export interface TuneResult {
   readonly road: Road;
   readonly vehicle: Vehicle;
   readonly hold: HoldPlan;
+  readonly rider: RiderPlan;
   readonly scheme: 'exact' | 'fast';
   /** Half-width of the band of the figures [m/s]. */
   readonly band: number;

@@ -1,8 +1,13 @@
-import type { View } from '../model/view.ts';
+import type { RiderPlan } from '../../loop/plan.ts';
+import type { Vehicle } from '../../vehicle/vehicle.ts';
+
+/** A result about a ride of a vehicle. */
+export interface Ridden {
+  readonly result: { readonly rider: RiderPlan; readonly vehicle: Vehicle };
+}
 
 /** What every reader must know, whatever the figures say. */
-export function cautions(view: View): readonly string[] {
-  const { rider, vehicle } = view.result;
+export function cautions({ result: { rider, vehicle } }: Ridden): readonly string[] {
   const brake = rider.brakesAbove !== null;
   const grip =
     vehicle.traction === null

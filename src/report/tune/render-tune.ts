@@ -1,0 +1,56 @@
+import type { TuneResult } from '../../run/tune-result.ts';
+import { html } from '../html.ts';
+import { lengthOf } from '../model/road-words.ts';
+import { renderPage } from '../page.ts';
+import { PAGE_PAINT } from '../paint.ts';
+import { lengthText, significant, type Units } from '../quantity.ts';
+import { loopSection } from '../sections/loop-section.ts';
+import { answerPart } from './answer-part.ts';
+import { gainMapPart } from './gain-map-part.ts';
+import { proposalsPart } from './proposals-part.ts';
+import { tuneMethodPart } from './tune-method-part.ts';
+import { tunedKey, tuneView } from './tune-view.ts';
+
+export interface TuneOptions {
+  /** Unit of speeds for people; all else is metric. */
+  readonly units: Units;
+}
+
+/**
+ * A tuning as one page, in the look of the report and under the same policy: it asks for nothing. The same result gives
+ * the same bytes.
+ */
+export function renderTune(result: TuneResult, { units }: TuneOptions): string {
+  const view = tuneView(result, units);
+  const named = (name: string) => view.tuned.find((one) => one.name === name);
+  const loop = {
+    sheet: result.sheet,
+    speed: view.speed,
+    colourOf: (name: string) => named(name)?.colour ?? 0,
+    keyOf: (name: string) => {
+      const one = named(name);
+      return one === undefined ? null : tunedKey(one, PAGE_PAINT);
+    },
+    file: 'margins.csv',
+  };
+  const sections = [
+    answerPart(view),
+    proposalsPart(view),
+    ...(result.border.length === 0 ? [] : [gainMapPart(view)]),
+    loopSection(loop),
+    tuneMethodPart(view),
+  ].map((section, i) => ({ ...section, number: i + 1 }));
+  return renderPage({
+    title: `${result.title}: gains and margins`,
+    heading: `${result.title}: gains and margins`,
+    memo: [
+      ['Case', result.caseName],
+      ['Road', `${result.road.name}, ${lengthText(lengthOf(result.road))}`],
+      ['Vehicle', result.vehicle.name],
+      ['Greatest sensitivity allowed', significant(result.plan.sensitivity)],
+      ['Speeds in', view.speed.name],
+    ],
+    sections,
+    foot: html`Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the <a href="#method-inputs">inputs</a>. A simulation is no approval to ride.`,
+  });
+}

@@ -1,0 +1,82 @@
+import type { TuneResult } from '../../run/tune-result.ts';
+import { isNone } from '../../study/findings.ts';
+import { isThin, placeOfPoint, sensitivityText } from '../model/point-words.ts';
+import { type SpeedUnit, significant, withUnit } from '../quantity.ts';
+import type { TunedView, TuneView } from './tune-view.ts';
+
+export interface TuneAnswer {
+  /** `exceeded`: there are gains to take, and a candidate of the case exceeds the bound. */
+  readonly standing: 'found' | 'kept' | 'exceeded' | 'nothing';
+  readonly sentence: string;
+}
+
+/** Which gains to take, and why, in one sentence. */
+export function tuneAnswer(view: TuneView): TuneAnswer {
+  const { result, chosen, tuned } = view;
+  const ofCase = tuned.filter(({ proposal }) => proposal === null);
+  const exceeds = ofCase.filter(({ keeps }) => keeps === false);
+  const others =
+    exceeds.length === 0
+      ? ''
+      : ` ${exceeds.map(({ name }) => name).join(' and ')} of the case ${exceeds.length === 1 ? 'exceeds' : 'exceed'} the bound: ${worstWords(exceeds[0]!, view)}.`;
+  if (chosen === null)
+    return {
+      standing: 'nothing',
+      sentence: `No gains that could be proposed keep a sensitivity of ${bound(result)} at every operating point: ${reasons(result)}.${others}`,
+    };
+  const best = cheapest(ofCase.filter(({ keeps }) => keeps === true));
+  const points = result.sheet.points.length;
+  const cost = costOf(chosen);
+  const keeping =
+    points === 1
+      ? 'at the one operating point'
+      : `at all ${points} operating points, the worst being ${worstWords(chosen, view)}`;
+  if (best !== null && costOf(best) <= cost)
+    return {
+      standing: exceeds.length === 0 ? 'kept' : 'exceeded',
+      sentence: `Keep ${best.name}: no proposal costs less on this road (${significant(costOf(best))} against ${significant(cost)} of ${chosen.name}), and it keeps the bound of ${bound(result)} everywhere.${others}`,
+    };
+  const against =
+    best === null ? '' : `, against ${significant(costOf(best))} of ${best.name}, the best of the case`;
+  return {
+    standing: exceeds.length === 0 ? 'found' : 'exceeded',
+    sentence: `Take ${chosen.name}, ${gainsText(chosen, view.speed)}: of ${proposals(view)} it costs least on this road (${significant(cost)}${against}), and its sensitivity keeps the bound of ${bound(result)} ${keeping}.${others}`,
+  };
+}
+
+const bound = ({ plan }: TuneResult): string => significant(plan.sensitivity);
+const costOf = ({ cost }: TunedView): number => (isNone(cost) ? Number.POSITIVE_INFINITY : cost);
+const reasons = ({ notProposed }: TuneResult): string =>
+  [...new Set(notProposed.map(({ reason }) => reason))].join('; ');
+
+function proposals({ tuned }: TuneView): string {
+  const count = tuned.filter(({ proposal }) => proposal !== null).length;
+  return count === 1 ? 'one proposal' : `${count} proposals`;
+}
+
+function cheapest(tuned: readonly TunedView[]): TunedView | null {
+  return tuned.reduce<TunedView | null>(
+    (best, one) => (costOf(one) < (best === null ? Number.POSITIVE_INFINITY : costOf(best)) ? one : best),
+    null,
+  );
+}
+
+/** Greatest sensitivity and where: `1.68 at 60 km/h, level`; or that the loop is unstable there. */
+export function worstWords({ loop }: Pick<TunedView, 'loop'>, { result, speed }: TuneView): string {
+  const [worst] = loop.order;
+  if (worst === undefined) return '';
+  const { margins } = loop.figures[worst]!;
+  const place = placeOfPoint(result.sheet.points[worst]!, speed);
+  return margins.stable
+    ? `${sensitivityText(margins.sensitivity)}${isThin(margins) ? ', thin,' : ''} at ${place}`
+    : `unstable at ${place}`;
+}
+
+/** `Kp 12.1 % per km/h, Ti 4.1 s`. */
+export function gainsText({ controller }: Pick<TunedView, 'controller'>, speed: SpeedUnit): string {
+  if (controller.kind === 'locked') return 'locked';
+  const kp = withUnit(significant((100 * controller.kp) / speed.of(1)), `% per ${speed.name}`);
+  if (!(controller.ki > 0)) return `Kp ${kp}, no integral`;
+  const scheduled = controller.kind === 'pid' && controller.schedule !== null ? ', scheduled' : '';
+  return `Kp ${kp}, Ti ${withUnit(significant(controller.kp / controller.ki), 's')}${scheduled}`;
+}
