@@ -70,7 +70,7 @@ async function loaded() {
     throw new InputError({
       code: 'missing-package',
       place: {},
-      message: `--png needs the packages @resvg/resvg-wasm and dejavu-fonts-ttf beside the program: ${error instanceof Error ? error.message.split('\n')[0] : String(error)}`,
+      message: `--png needs the packages @resvg/resvg-wasm and dejavu-fonts-ttf beside the program: ${error instanceof Error ? error.message.split(/ imported from|\n/)[0] : String(error)}`,
       allowed: 'an installation with its dependencies, as npm ci makes it',
     });
   }
