@@ -59,6 +59,7 @@ th,td{text-align:left;vertical-align:top;padding:.32rem .9rem .32rem 0;border-bo
 thead th{border-bottom:2px solid var(--muted);vertical-align:bottom;line-height:1.25}
 tbody th{font-weight:600}
 .dense{font-size:.8rem}.dense th,.dense td{padding-right:.6rem}.dense td.num .small:not(.wrap){white-space:normal}.name{display:inline-block;max-width:6.5rem;overflow-wrap:break-word}
+tr.group th{padding-top:.8rem;border-bottom-color:var(--muted);color:var(--muted);font-weight:400}tr.group span{position:sticky;left:0}
 .num{text-align:right}
 td.num,tbody th{white-space:nowrap}
 td.num .small:not(.wrap){white-space:nowrap}

@@ -72,24 +72,23 @@ const ENOUGH = 50;
 /** The steady error of the hill where it is greatest [m/s], without its sign, and the middle of its end [m]. */
 export function steadyHillError(record: FigureRecord): Measure {
   const { bins, chosen, road } = record;
-  const steady = (i: number): boolean =>
-    chosen[i] === 1 &&
-    bins.time[i] > 0 &&
-    bins.timeUpper[i] + bins.timeLower[i] + bins.timeOff[i] === 0 &&
-    isSteady(road, bins.edge[i], bins.edge[i + 1]);
+  const limited = (i: number): boolean => bins.timeUpper[i] + bins.timeLower[i] + bins.timeOff[i] > 0;
   let worst: { value: number; at: number } | null = null;
   let i = 0;
   for (const { from, to } of hillEnds(road)) {
     let [length, time, error] = [0, 0, 0];
+    let free = true;
     while (i < bins.size && bins.edge[i] < from) i++;
     for (; i < bins.size && bins.edge[i + 1] <= to; i++) {
-      if (!steady(i)) continue;
+      if (limited(i)) free = false;
+      if (chosen[i] !== 1 || !isSteady(road, bins.edge[i], bins.edge[i + 1])) continue;
       length += bins.edge[i + 1] - bins.edge[i];
       time += heldTime(bins, i);
       error += bins.errorMean[i];
     }
     const value = Math.abs(error / time);
-    if (length >= ENOUGH && time > 0 && value > (worst?.value ?? -1)) worst = { value, at: (from + to) / 2 };
+    if (free && length >= ENOUGH && time > 0 && value > (worst?.value ?? -1))
+      worst = { value, at: (from + to) / 2 };
   }
   return worst ?? placeless({ none: 'no hill there has a steady end with the command within its limits' });
 }

@@ -87,7 +87,7 @@ export const ERROR_ROWS: readonly FigureRow[] = [
     takesBand: false,
     better: 'lower',
     definition:
-      'Greatest |mean e| over the last 30 % of a hill: a stretch of 200 m or more that is 2 % or steeper, up or down. Bins in which the grade changes by more than one point in 100 m, the command was at a limit or hold was off are left out; a hill with less than 50 m left has none.',
+      'Greatest |mean e| over the last 30 % of a hill: a stretch of 200 m or more that is 2 % or steeper, up or down. Only of hills at whose end the command was at no limit and hold was on; bins in which the grade changes by more than one point in 100 m are left out, and a hill with less than 50 m of others has none.',
     source: DEFINED_HERE,
     measure: (record) => {
       const { value, at } = steadyHillError(record);

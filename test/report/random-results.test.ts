@@ -198,7 +198,7 @@ test.each([1, 2, 3, 4])(
       }
     }
     // Enough of them run: what is refused is what no vehicle of the draw can do.
-    expect(whole).toBeGreaterThanOrEqual(5);
+    expect(whole).toBeGreaterThanOrEqual(3);
   },
   // Ten runs with their reports: half a minute where others share the machine.
   180_000,

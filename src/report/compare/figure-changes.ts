@@ -40,6 +40,8 @@ const ROWS: readonly Row[] = [
 const TENTHS = ['km/h', '%', 's'];
 const LEAST = 0.05;
 const LEAST_SHARE = 0.0005;
+/** Units of figures that grow with the way. */
+const GROWING = ['s', 'Wh', 'm', 'km/h·s', '(km/h)²·s', 'km/h·s²'];
 /** Bare ratios: what an energy account may be open by. */
 const LEAST_RATIO = 1e-6;
 
@@ -93,7 +95,7 @@ function apart(
 ): string | null {
   if (takesBand && bands.before !== bands.after)
     return `the band is ±${bands.before} km/h before and ±${bands.after} km/h after`;
-  const grows = unit === 'shifts' || (weight !== 'event' && ['s', 'Wh', 'm'].includes(unit));
+  const grows = unit === 'shifts' || (weight !== 'event' && GROWING.includes(unit));
   const [was, is] = [before.end_m, after.end_m];
   if (!grows || Math.abs(is - was) <= Math.max(1, 0.001 * was)) return null;
   const km = (metres: number) => (metres / 1000).toFixed(2);

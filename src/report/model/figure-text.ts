@@ -16,6 +16,14 @@ import {
 /** Value of the table of figures in the reader's unit, with that unit's name. */
 export function readable(value: number, unit: string, speed: SpeedUnit): { value: number; unit: string } {
   if (unit === 'km/h') return { value: speed.of(fromKmh(value)), unit: speed.name };
+  // Integrals of the error: its unit stands at the start of theirs, once or squared.
+  if (unit.startsWith('km/h·'))
+    return { value: speed.of(fromKmh(value)), unit: unit.replace('km/h', speed.name) };
+  if (unit.startsWith('(km/h)²'))
+    return {
+      value: speed.of(fromKmh(speed.of(fromKmh(value)))),
+      unit: unit.replace('(km/h)²', speed.axis.startsWith('(') ? '(km/h)²' : `${speed.name}²`),
+    };
   return { value, unit: unit === '1' ? '' : unit };
 }
 

@@ -6,6 +6,7 @@ import { lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { controllerWords } from '../model/controller-words.ts';
 import { statusWords } from '../model/design-standing.ts';
+import { FIGURE_GROUPS, type FigureGroup } from '../model/figure-groups.ts';
 import { figureTextBeside } from '../model/figure-text.ts';
 import { shiftMarks } from '../model/hold-marks.ts';
 import { type ErrorRange, settledRange, wholeRange } from '../model/settled-range.ts';
@@ -17,31 +18,7 @@ import { cycles } from './cycles.ts';
 import { loggedRides } from './logged-rides.ts';
 import { loopMarginRows } from './loop-margin-rows.ts';
 import type { Section } from './section.ts';
-import { table } from './table.ts';
-
-/** Figures side by side, in the order of the rows; those that no candidate has are left out. */
-const SHOWN = [
-  'within_band_pct',
-  'rms_error_kmh',
-  'p95_abs_error_kmh',
-  'mean_error_kmh',
-  'recovery_s',
-  'time_s',
-  'time_lost_s',
-  'wheel_energy_wh_per_km',
-  'battery_energy_wh',
-  'fuel_l_per_100km',
-  'range_km',
-  'throttle_travel_pct_per_km',
-  'at_upper_limit_s',
-  'at_lower_limit_s',
-  'at_rate_limit_s',
-  'shifts',
-  'hold_cancelled_s',
-  'beyond_grip_s',
-  'brake_energy_wh',
-  'brake_distance_m',
-] as const;
+import { type TableRow, table } from './table.ts';
 
 const changesNote = (what: string): string =>
   `Furthest below and above are told outside of the ${what}. All other figures here include them: until the set speed is reached again, the difference counts as error.`;
@@ -56,8 +33,8 @@ function plannedWords(view: View): string | null {
   );
 }
 
-/** Best is what is nearest to zero: time gained is no better than time lost. */
-const BEST_IS_NONE = 'time_lost_s';
+/** Best is what is nearest to zero: time gained is no better than time lost, and no rating better than that of the set speed itself. */
+const BEST_IS_NONE = ['time_lost_s', 'energy_rating_pct', 'energy_economy_rating_pct'];
 
 const BAR = 96;
 
@@ -74,7 +51,7 @@ export function candidatesSection(view: View): Section {
       head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>${endedEarly(candidate) && html`<br><span class="flag small">ended at ${placeText(candidate.result.endDistance)} †</span>`}`,
     })),
   ];
-  const rows: HtmlValue[][] = [
+  const rows: TableRow[] = [
     [
       'throttle',
       ...candidates.map(
@@ -84,17 +61,33 @@ export function candidatesSection(view: View): Section {
     ],
     ['run', ...candidates.map(statusWords)],
     rangeRow(view),
-    ...SHOWN.flatMap((name) => figureCells(view, name)),
-    ...loopMarginRows(candidates),
+    ...groupRows(view, ({ shown }) => shown),
+    ...marginRows(candidates),
   ];
+  const more = groupRows(view, (group) => group.more);
+  const look = candidates.length > 4 ? 'dense' : 'plain';
   const planned = plannedWords(view);
   const early = candidates.some(endedEarly);
   const body = html`${candidates.length > 1 && html`<p>Bars of one row share one scale. Bold is the best of the designs, where one direction is better${early && '; a run that ended early is not compared'}.</p>`}
-${table('Candidates side by side', columns, rows, candidates.length > 4 ? 'dense' : 'plain')}
+${table('Candidates side by side', columns, rows, look)}
+${more.length > 0 && html`<details><summary>More figures</summary>${table('More figures of the candidates', columns, more, look)}</details>`}
 ${(early || planned !== null) && html`<p class="note">${early && '† Up to where that run ended, not over the whole road. '}${planned !== null && changesNote(planned)}</p>`}
 ${view.rides.map((ride) => loggedRides(view, ride))}
 ${cycles(view)}`;
   return { id: 'candidates', number: 3, title: 'Candidates side by side', body };
+}
+
+/** The rows of each group under its name; a group without any is left out. */
+function groupRows(view: View, namesOf: (group: FigureGroup) => readonly string[]): readonly TableRow[] {
+  return FIGURE_GROUPS.flatMap((group): readonly TableRow[] => {
+    const rows = namesOf(group).flatMap((name) => figureCells(view, name));
+    return rows.length === 0 ? [] : [{ group: group.words }, ...rows];
+  });
+}
+
+function marginRows(candidates: readonly CandidateView[]): readonly TableRow[] {
+  const rows = loopMarginRows(candidates);
+  return rows.length === 0 ? [] : [{ group: 'The linear loop' }, ...rows];
 }
 
 const numberOf = (figure: Figure | undefined): number | null => (typeof figure === 'number' ? figure : null);
@@ -107,7 +100,7 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
   if (exist.length === 0 || (exist.every((value) => value === 0) && name !== 'recovery_s')) return [];
   const whole = values.filter((value, i) => value !== null && !endedEarly(view.candidates[i]!));
   const [low, high] = [Math.min(0, ...whole.map(Number)), Math.max(0, ...whole.map(Number))];
-  const merits = name === BEST_IS_NONE ? values.map((value) => value && Math.abs(value)) : values;
+  const merits = BEST_IS_NONE.includes(name) ? values.map((value) => value && Math.abs(value)) : values;
   const beside = row.unit === 'km/h' ? [toKmh(view.result.band)] : [];
   const texts = values.map((value) =>
     value === null ? NO_VALUE : figureTextBeside(value, beside, row.unit, view.speed),
