@@ -4,6 +4,7 @@ import { layRide } from '../../src/study/lay-ride.ts';
 import type { LoggedRide } from '../../src/study/logged-ride.ts';
 import type { RideLog } from '../../src/track/read-ride.ts';
 import { expectClose } from '../compare.ts';
+import { randomness } from '../road/synthetic-road.ts';
 import { logOf, roadOver, seconds, speedAt, wayAt, winding } from './ridden-road.ts';
 
 const ground = winding();
@@ -224,5 +225,31 @@ describe('a ride without positions, or over a road that has none', () => {
     expect(ride.laidBy).toBe('distance');
     // Legs of a second cut the bends.
     expect(Math.abs(ride.distance.at(-1)! - wayAt(496))).toBeLessThan(60);
+  });
+});
+
+describe('any ride', () => {
+  it('comes out in order, finite, on the road, at any rate and with any scatter', () => {
+    const random = randomness(91);
+    for (let k = 0; k < 24; k++) {
+      const step = [0.1, 0.5, 1, 3, 10][k % 5]!;
+      const all = Float64Array.from({ length: Math.floor(480 / step) }, (_, i) => i * step);
+      const kept = all.filter((_, i) => i < 2 || random.uniform() > 0.15);
+      const direction = (['there', 'both'] as const)[k % 2]!;
+      const on = roadOver(ground, { direction, trimEnds: k % 3 === 0 ? 300 : 0 });
+      const ride = lay(logOf(ground, kept, wayAt, { noise: [0, 0.5, 3, 8][k % 4]!, seed: k }), on);
+      expect(increases(ride.distance), `ride ${k}`).toBe(true);
+      expect(ride.time.every((t, i) => i === 0 || t >= ride.time[i - 1]!)).toBe(true);
+      expect([...ride.distance, ...ride.time, ...ride.speed].every(Number.isFinite)).toBe(true);
+      expect(Math.min(...ride.speed)).toBeGreaterThanOrEqual(0);
+      expect(ride.distance.at(-1)).toBeLessThanOrEqual(on.distance.at(-1)!);
+      expect(ride.covered).toBeLessThanOrEqual(on.distance.at(-1)!);
+      let gap = -1;
+      for (const { from, to } of ride.gaps) {
+        expect(from).toBeGreaterThanOrEqual(gap);
+        expect(to).toBeGreaterThan(from);
+        gap = to;
+      }
+    }
   });
 });
