@@ -40,7 +40,7 @@ export function rideOf(document: CaseDocument, vehicle: Vehicle, road: Road): Ri
   if (riding === null) return { hold, rider: written, ...unit, bends: null };
   refuseWithoutBends(document, road);
   const { plan, acts } = planBends(
-    { road, vehicle, hold, rider: written, lowestSpeed: supervisor?.lowestSpeed ?? 0 },
+    { road, vehicle, hold, rider: written, ...(supervisor === undefined ? {} : { unit: supervisor }) },
     riding,
   );
   return { hold, rider: acts.length === 0 ? written : { ...written, acts }, ...unit, bends: plan };

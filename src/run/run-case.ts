@@ -14,6 +14,7 @@ import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Road } from '../road/road.ts';
+import { askedHold } from '../study/asked-hold.ts';
 import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
 import { figureSpread, spreadMethod } from '../study/figure-spread.ts';
@@ -128,7 +129,7 @@ export function runWithoutMatrix({
   checkSize(document, plans, output, segmenting, rides?.cells.length);
   const whole = shareBeforeMatrix(rides?.cells.length ?? 0);
   const onProgress = (share: number, words: string): void => onShare(whole * share, words);
-  const demand = demandOf(road, vehicle, hold, rider);
+  const demand = demandOf(road, vehicle, askedHold(hold, rider, ride.supervisor ?? {}, vehicle), rider);
   const replayed = replayAll(candidates, plans, onProgress);
   if (output.series === 'full') checkFullSeries(document, replayed);
   const within = (stage: Stage) => (done: number, of: number) =>

@@ -2,6 +2,7 @@ import type { LoopPlan } from '../loop/plan.ts';
 import type { BinRecord } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
+import { askedHold } from '../study/asked-hold.ts';
 import { demandOf } from '../study/demand.ts';
 import { askDetail, figureRow } from '../study/figure-table.ts';
 import type { Replayed, Requirement, RequirementFinding } from '../study/findings.ts';
@@ -66,7 +67,7 @@ function ridden(work: MatrixWork, { requirements }: CellPlan, ride: CellRide): C
       result: runLoop({ ...plan, detail }),
     }),
   );
-  const demand = demandOf(road, vehicle, hold, rider);
+  const demand = demandOf(road, vehicle, askedHold(hold, rider, setting.supervisor ?? {}, vehicle), rider);
   const recovers = requirements.some(({ figure }) => figure === 'recovery_s');
   const band = bands[0] ?? 0;
   const hills = recovers ? slowestRecoveries(road, demand, replayed, band) : [];

@@ -1,9 +1,11 @@
+import type { SupervisorSetup } from '../control/supervisor-setup.ts';
 import type { HoldPlan, RiderAct, RiderPlan } from '../loop/plan.ts';
 import type { Bend } from '../road/bend.ts';
 import { BEND_RESOLUTION, bendsOf } from '../road/bends.ts';
 import type { Road } from '../road/road.ts';
 import { fromKmh } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { askedHold } from './asked-hold.ts';
 import type { Stretch } from './findings.ts';
 import { type HoldCourse, nominalCourse } from './hold-course.ts';
 
@@ -69,8 +71,8 @@ export interface BendRide {
   readonly hold: HoldPlan;
   /** With what is written, and not yet with bends. */
   readonly rider: RiderPlan;
-  /** Of the unit, as it is measured [m/s]; 0: none. */
-  readonly lowestSpeed: number;
+  /** Left out: a unit without rules and taps. */
+  readonly unit?: Pick<SupervisorSetup, 'lowestSpeed' | 'tap' | 'tapRamp'>;
 }
 
 /**
@@ -96,12 +98,13 @@ export function planBends(
   riding: BendRiding,
 ): { readonly plan: BendPlan; readonly acts: readonly RiderAct[] } {
   const { road, vehicle, hold, rider } = ride;
-  const course = nominalCourse(road, hold, vehicle, rider.shifts);
+  const asked = askedHold(hold, rider, ride.unit ?? {}, vehicle);
+  const course = nominalCourse(road, asked, vehicle, rider.shifts);
   const speedAt = speedOf(course);
   const bends = bendsOf(road, riding.maxLateral, speedAt);
   const speeds = reachable(bends, riding.deceleration);
   const end = road.distance[road.size - 1]!;
-  const lowest = ride.lowestSpeed / (1 + vehicle.sensor.scaleError);
+  const lowest = (ride.unit?.lowestSpeed ?? 0) / (1 + vehicle.sensor.scaleError);
   const groups = grouped(bends, speeds, { ...riding, speedAt, lowest, end });
   const written = rider.acts ?? [];
   const stops = groups.map((group): BendStop => {

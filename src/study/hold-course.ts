@@ -1,5 +1,5 @@
 import type { ControllerSetup } from '../control/setup.ts';
-import type { HoldPlan, LoopPlan, RiderPlan } from '../loop/plan.ts';
+import type { HoldPlan, LoopPlan, RiderPlan, SetSpeedChange } from '../loop/plan.ts';
 import type { BinRecord, HoldEvent, LoopResult } from '../loop/result.ts';
 import { intervalOf } from '../numeric/interpolate.ts';
 import { distanceAt } from '../road/lookup.ts';
@@ -25,11 +25,13 @@ export interface HoldCourse {
    * From each change, and from a start at another speed: |change| / ramp and 10 s for settling, at the higher of the
    * two speeds. The ramp is the change's own, or the controller's, or 0.5 m/s2. And from each shift of the rider's,
    * which cancels hold, to 10 s after hold resumes. Of a run also where hold was off, or overridden by the grip, to 10 s
-   * after it is back at the set speed by its ramp, and 10 s and the ramp behind taps. In order along the way.
+   * after it is back at the set speed by its ramp. In order along the way.
    */
   readonly settling: readonly Stretch[];
   /** Of those the changes of set speed alone, a start at another speed first. */
   readonly following: readonly Stretch[];
+  /** Of a run in which the rider changed the set speed: the plan's hold with those changes among its own. */
+  readonly hold?: HoldPlan;
   /** Of a run: where a rule of the unit ended hold, in order [m]. */
   readonly gaveUp?: readonly number[];
 }
@@ -80,7 +82,11 @@ interface PlannedRun {
 export function courseOfRun(run: PlannedRun): HoldCourse {
   const { plan, result } = run;
   const ramp = rampOf(plan.controller);
-  const course = courseOf(plan.hold, plan.vehicle, ramp, (time) => placeInRun(result, time));
+  const hold = riddenHold(run);
+  const course = {
+    ...courseOf(hold, plan.vehicle, ramp, (time) => placeInRun(result, time)),
+    ...(hold === plan.hold ? {} : { hold }),
+  };
   const shifts = result.shifts.flatMap(({ distance, resumedAt }) => {
     if (resumedAt === null) return [];
     const { at } = placeInRun(result, resumedAt);
@@ -93,7 +99,41 @@ export function courseOfRun(run: PlannedRun): HoldCourse {
   return { ...withStretches(course, apart), gaveUp: gaveUp.map(({ distance }) => distance) };
 }
 
-/** Where hold was off or overridden, and what it takes to be back; taps, and what they take. */
+/** The hold of the plan with the set speeds that taps and engaging made on the way; the plan's own where there are none. */
+function riddenHold({ plan, result }: PlannedRun): HoldPlan {
+  const { hold, supervisor } = plan;
+  const { holdEvents = [] } = result;
+  const placeOf = ({ at }: SetSpeedChange): number =>
+    'distance' in at ? at.distance : placeInRun(result, at.time).at;
+  let inForce = hold.setSpeed;
+  let next = 0;
+  const made: SetSpeedChange[] = [];
+  for (const { kind, distance, setSpeed } of holdEvents) {
+    if (kind !== 'tapped' && kind !== 'engaged' && kind !== 'resumed') continue;
+    while (next < hold.changes.length && placeOf(hold.changes[next]) <= distance)
+      inForce = hold.changes[next++].setSpeed;
+    if (setSpeed !== inForce) made.push({ at: { distance }, setSpeed, ramp: supervisor?.tapRamp ?? null });
+    inForce = setSpeed;
+  }
+  return made.length === 0 ? hold : { ...hold, changes: changesInOrder(hold.changes, made, placeOf) };
+}
+
+/** Changes of a plan and those made on the way, along the way: of a plan's by time the place is told by `placeOf`. */
+export function changesInOrder(
+  planned: readonly SetSpeedChange[],
+  made: readonly SetSpeedChange[],
+  placeOf: (change: SetSpeedChange) => number,
+): SetSpeedChange[] {
+  const all: SetSpeedChange[] = [];
+  let next = 0;
+  for (const change of planned) {
+    while (next < made.length && placeOf(made[next]) < placeOf(change)) all.push(made[next++]);
+    all.push(change);
+  }
+  return [...all, ...made.slice(next)];
+}
+
+/** Where hold was off or overridden, and what it takes to be back. */
 function withoutHold({ plan, result }: PlannedRun): Stretch[] {
   const toTrue = trueSpeedFactor(plan.hold, plan.vehicle);
   const own = rampOf(plan.controller) ?? GRANTED_RATE;
@@ -105,8 +145,7 @@ function withoutHold({ plan, result }: PlannedRun): Stretch[] {
   const stretches: Stretch[] = holdOff(plan, result).map(({ from, to }) => ({ from, to }));
   let grip: number | null = null;
   for (const event of holdEvents) {
-    if (event.kind === 'tapped') stretches.push(followed(event, plan.supervisor?.tapRamp ?? own));
-    else if (event.kind === 'engaged' || event.kind === 'resumed')
+    if (event.kind === 'engaged' || event.kind === 'resumed')
       stretches.push(followed(event, plan.supervisor?.resumeRamp ?? own));
     else if (event.kind === 'override_began') grip = event.distance;
     else if (grip !== null && (event.kind === 'reentered' || event.kind === 'ended')) {

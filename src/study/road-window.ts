@@ -80,7 +80,7 @@ export function windowPlan(
     ...held,
     road: cutRoad(road, from, to),
     vehicle: inGear(vehicle, gearInForce(plan, from)),
-    hold: windowHold(held, from, to, course),
+    hold: windowHold(course.hold ?? held.hold, from, to, course),
     rider: { ...rider, shifts: windowShifts(rider.shifts, from, to) },
   };
 }
@@ -90,7 +90,12 @@ const windowShifts = (shifts: readonly PlannedShift[], from: number, to: number)
     .filter(({ distance }) => distance > from && distance < to)
     .map((shift) => ({ ...shift, distance: shift.distance - from }));
 
-function windowHold({ hold }: LoopPlan, from: number, to: number, { changes }: HoldCourse): HoldPlan {
+function windowHold(
+  { starts: _, ...hold }: HoldPlan,
+  from: number,
+  to: number,
+  { changes }: HoldCourse,
+): HoldPlan {
   const before = changes.findLastIndex((change) => change.at <= from);
   const setSpeed = before < 0 ? hold.setSpeed : hold.changes[before].setSpeed;
   return {

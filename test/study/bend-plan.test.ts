@@ -41,7 +41,7 @@ function plan(
       vehicle: vehicleOf(),
       hold,
       rider: { brakesAbove: null, shifts: [], ...(acts.length > 0 ? { acts } : {}) },
-      lowestSpeed: lowest,
+      unit: { lowestSpeed: lowest, tap: 1, tapRamp: null },
     },
     { ...RIDING, ...riding },
   );
