@@ -74,7 +74,11 @@ export type {
   RequirementFinding,
   Segment,
 } from './study/findings.ts';
+export { layRide } from './study/lay-ride.ts';
 export { type CycleSearch, findLimitCycles } from './study/limit-cycles.ts';
+export type { LoggedRide, RidePause } from './study/logged-ride.ts';
+export type { CandidateBeside, RideResult } from './study/ride-figures.ts';
+export { type RideLog, readRide } from './track/read-ride.ts';
 export { readTrack } from './track/read-track.ts';
 export type { Profile, Repair, Track } from './track/track.ts';
 export type { Belt, Drive, Gear, Gearbox } from './vehicle/drive.ts';
