@@ -20,10 +20,7 @@ const MARK = 'identify.json';
 
 /** `ridgehold identify LOG...`: logs become numbers of a vehicle, its file, and a page that says how good they are. */
 export function identifyCommand({ operands, values }: Invocation<'identify'>): number {
-  const path = values.out ?? join(defaultFolder(operands[0]), 'vehicle.yaml');
   const ofCase = values.case === undefined ? null : readerOf(values.case);
-  const { folder, name } = targetOf(path, MARK);
-  checkFolder(folder, [PAGE, MARK]);
   const work = () =>
     identifyLogs({
       logs: operands,
@@ -59,6 +56,12 @@ export function identifyCommand({ operands, values }: Invocation<'identify'>): n
       }),
     });
   const result = ofCase === null ? work() : ofCase.telling(work);
+  const fallback = join(
+    defaultFolder(operands[0]),
+    result.kind === 'step' ? 'candidates.yaml' : 'vehicle.yaml',
+  );
+  const { folder, name } = targetOf(values.out ?? fallback, MARK);
+  checkFolder(folder, [PAGE, MARK]);
   const units = values.units ?? 'kmh';
   const mark = identificationJson(result, name, [PAGE]);
   writeResult(

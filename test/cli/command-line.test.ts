@@ -35,7 +35,7 @@ test('the help names every command, and no command that does not exist', () => {
   const { status, stdout, stderr } = ridgehold(here, ['--help']);
   expect([status, stderr]).toEqual([0, '']);
   const commands = [...stdout.matchAll(/^ {2}([a-z]+) /gm)].map((match) => match[1]);
-  expect(commands).toEqual(['run', 'road', 'compare', 'new', 'schema']);
+  expect(commands).toEqual(['run', 'road', 'compare', 'identify', 'new', 'schema']);
   expect(ridgehold(here, ['help']).stdout).toBe(stdout);
 });
 
@@ -43,12 +43,33 @@ test.each([
   ['run', ['--out', '--set', '--junit', '--threads', '--json', '--quiet', '--units', '--help']],
   ['road', ['--out', '--set', '--json', '--quiet', '--units', '--help']],
   ['compare', ['--out', '--json', '--quiet', '--units', '--help']],
+  [
+    'identify',
+    [
+      '--out',
+      '--kind',
+      '--vehicle',
+      '--case',
+      '--fit',
+      '--mass-kg',
+      '--rotating-kg',
+      '--air-temperature-c',
+      '--air-pressure-hpa',
+      '--air-density-kg-m3',
+      '--json',
+      '--quiet',
+      '--units',
+      '--help',
+    ],
+  ],
   ['new', ['--quiet', '--help']],
   ['schema', ['--out', '--help']],
 ])('the help of %s tells all of its options', (command, options) => {
   const { status, stdout } = ridgehold(here, [command, '--help']);
   expect(status).toBe(0);
-  expect([...stdout.matchAll(/^ {2}(?:-\w, | {4})(--[a-z]+)/gm)].map((match) => match[1])).toEqual(options);
+  expect([...stdout.matchAll(/^ {2}(?:-\w, | {4})(--[a-z0-9-]+)/gm)].map((match) => match[1])).toEqual(
+    options,
+  );
   expect(stdout).toContain(`Usage: ridgehold ${command} `);
   expect(Math.max(...stdout.split('\n').map((line) => line.length))).toBeLessThanOrEqual(100);
   expect(ridgehold(here, ['help', command]).stdout).toBe(stdout);

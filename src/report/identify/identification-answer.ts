@@ -58,7 +58,7 @@ function rideSentence({ fit }: RideIdentification): string {
     return `${words} ${plusMinus(estimate, unit)}`;
   });
   const list = numbers.length < 2 ? numbers[0]! : `${numbers.slice(0, -1).join(', ')} and ${numbers.at(-1)!}`;
-  return `${list} make ${fixed(toKm(fit.fitted), 1)} km of the ride agree with the vehicle to ${fixed(fit.rmsForce, 1)} N, where it was ${fixed(fit.rmsForceBefore, 1)} N off (95 % intervals).`.replace(
+  return `${list} ${numbers.length === 1 ? 'makes' : 'make'} ${fixed(toKm(fit.fitted), 1)} km of the ride agree with the vehicle to ${fixed(fit.rmsForce, 1)} N, where it was ${fixed(fit.rmsForceBefore, 1)} N off (95 % intervals).`.replace(
     /^./,
     (first) => first.toUpperCase(),
   );
