@@ -49,6 +49,10 @@ function checkDeed(key: string, does: RiderDeed): void {
       above(`${key}.to`, does.to, 'm/s');
       above(`${key}.deceleration`, does.deceleration, 'm/s2');
       return;
+    case 'ride':
+      above(`${key}.to`, does.to, 'm/s');
+      above(`${key}.acceleration`, does.acceleration, 'm/s2');
+      return;
     case 'clutch':
       above(`${key}.for`, does.for, 's');
       return;

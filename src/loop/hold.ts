@@ -46,7 +46,7 @@ export interface Hold {
  *   tap      while hold is on; refused where it would lead below the lowest speed
  *   override while hold is on
  *   cancel   while hold is off: nothing happens
- *   brake    while hold is off: brakes to the new speed
+ *   brake    while hold is off: brakes to the new speed; so does ride, with the throttle
  *   ride     while hold is off: goes on at the new speed
  *   clutch   pulled while hold is off too
  *

@@ -24,9 +24,9 @@ const REACHED = 1e-9;
  *
  *     a = (vh - v) / 2 s           or, braking at b down to vh,           a = -b
  *
- * no more than b where they gain speed at b, and use the brake only where the throttle is closed and that is not enough; with it, the speed falls by b Ts in every
- * sample, within the brake's greatest deceleration. Coasting, or with the clutch open, the throttle is closed. What the
- * rider's hand cannot know are the lags of actuator and drive.
+ * the first no more than b where they gain speed at b. They use the brake only where the throttle is closed and that is
+ * not enough; with it, the speed falls by b Ts in every sample, within the brake's greatest deceleration. Coasting, or with
+ * the clutch open, the throttle is closed. What the rider's hand cannot know are the lags of actuator and drive.
  *
  * The command stands as feedforward. BUS_REFERENCE is what the brake holds: Infinity where it is not used.
  *

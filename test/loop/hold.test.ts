@@ -185,6 +185,21 @@ both('the rider by hand (%s)', (scheme) => {
     expect(series.reference[series.size - 1]).toBe(12);
   });
 
+  it('gains speed by hand as fast as the rider will, and comes to the new one with 2 s', () => {
+    const { series, only, sampleOf } = ride(
+      planOver(level(1500), free, {
+        scheme,
+        rider: rider(at(200, { kind: 'ride', to: 22, acceleration: 1.5 })),
+      }),
+    );
+    expect(only('ended').cause).toBe('rider');
+    const i = sampleOf(only('ended'));
+    // (22 - v) / 2 s is 1.5 m/s2 at 19 m/s: a line up to there, then an exponential; the throttle is held over a sample.
+    for (let k = 0; k < 66; k++) expectClose(series.speed[i + k]!, 17 + 1.5 * SAMPLE * k, 1e-3);
+    for (let k = 70; i + k < series.size; k += 40)
+      expectClose(series.speed[i + k]!, 22 - 3 * Math.exp(-(SAMPLE * k - 4 / 3) / 2), 0.02);
+  });
+
   it('holds the speed of the moment up and down, with the brake where a closed throttle is not enough', () => {
     const { result, series, only, sampleOf } = ride(
       planOver(hilly(2500, 0.06), referenceMotorcycle, { scheme, rider: rider(at(300, CANCEL)) }),
