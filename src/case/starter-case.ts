@@ -29,7 +29,14 @@ hold:
   # gear: 4                         # of an engine with gears; the rider may change it on the way:
   # shifts: [{at_km: 1.2, gear: 3}, {at_km: 2.6, gear: 4}]
 
-rider: {brakes_above_kmh: 8}        # the rider holds this overspeed with the brake
+rider:
+  brakes_above_kmh: 8               # the rider holds this overspeed with the brake
+  # bends: {max_lateral_m_s2: 2.5}  # the rider brakes for bends, and resumes behind them; needs positions or a heading in the track
+  # does: [{at_km: 0.5, act: tap, taps: 3}, {at_km: 1, act: override, throttle_pct: 80, for_s: 5}, {at_km: 2, act: cancel}, {at_km: 2.3, act: resume}]
+
+# The unit's own rules; without them only the rider ends hold:
+# supervisor: {lowest_speed_kmh: 30, too_slow: {below_set_kmh: 20, for_s: 1}, resume_ramp_m_s2: 0.7}
+# faults: [{at_km: 1.5, speed_sensor: last_value, for_s: 3}]
 
 candidates:
   # The rider's alternative: a throttle locked in place.

@@ -13,7 +13,7 @@ export interface HoldMeasure {
   readonly commandStep: Figure;
   /**
    * Furthest below and above the set speed on the way, in true speed [m/s], signed: 0 where it never was on that side. Of
-   * a resume, and of taps, from where the reference has arrived; behind an override from where hold is back.
+   * a resume from where the reference has arrived, of taps from where the speed has, behind an override from where hold is back.
    */
   readonly lowest: Figure;
   readonly highest: Figure;

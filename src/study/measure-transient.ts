@@ -11,6 +11,7 @@ const ARRIVED = 1e-6;
 
 const HOLD_OFF = 'hold is off';
 const NOT_BACK = 'hold did not come back first';
+const NOT_BEYOND = 'it does not go beyond the new set speed';
 const NOT_ARRIVED = 'the reference did not arrive at the set speed first';
 
 /** What a window is about. */
@@ -112,6 +113,11 @@ function countedFrom(
     return i < series.size ? i : { none: NOT_BACK };
   }
   if (kind === 'engaged') return first;
+  if (kind === 'tapped') {
+    for (let i = first + 1; i < series.size; i++)
+      if (errorAt(series, i) * errorAt(series, first) <= 0) return i;
+    return { none: NOT_BEYOND };
+  }
   for (let i = first; i < series.size; i++)
     if (Math.abs(series.reference[i]! - series.setSpeed[i]!) <= ARRIVED) return i;
   return { none: NOT_ARRIVED };

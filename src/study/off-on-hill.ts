@@ -6,6 +6,8 @@ import { atKm } from './wording.ts';
 
 /** What there is to say of a hold that was off on a hill. */
 export interface OffOnHill {
+  /** Hold was off on some of it: no formula of the whole hill tells what was done. */
+  readonly any: boolean;
   /** To follow on why the outcome is what it is; empty where hold was on throughout. */
   readonly words: string;
   /** Cause and why of a candidate that was not affected while hold was on. */
@@ -21,11 +23,16 @@ export function offOnHill(
   const words = off.map(offWords).join('');
   if (off.some((stretch) => stretch.from <= from && stretch.to >= Math.min(until, result.endDistance)))
     return {
+      any: true,
       words,
       unaffected: { cause: { none: 'hold was off here' }, why: 'Hold was off here.' },
     };
   const kept = off.length === 0 ? 'It kept its band.' : 'It kept its band while hold was on.';
-  return { words, unaffected: { cause: { none: 'it kept its band and met no limit' }, why: kept } };
+  return {
+    any: off.length > 0,
+    words,
+    unaffected: { cause: { none: 'it kept its band and met no limit' }, why: kept },
+  };
 }
 
 function offWords({ ended, from, to, back }: HoldOff): string {

@@ -83,6 +83,17 @@ describe('a transient', () => {
     expect(never.lowest).toHaveProperty('none');
   });
 
+  it('counts taps from where the speed has reached the new set speed', () => {
+    const overshoots = (t: number): number =>
+      t < 0 ? 0 : t < 4 ? -2 + t / 2 : t < 6 ? 0.6 : t < 8 ? -0.2 : 0;
+    const found = measure(course({ error: overshoots }), [event('tapped')]);
+    expectClose([found.lowest as number, found.highest as number], [0, 0.6], 1e-9);
+    const creeps = measure(course({ error: (t) => (t < 0 ? 0 : -2 * Math.exp(-t)) }), [event('tapped')]);
+    expect(creeps.lowest).toHaveProperty('none');
+    // exp(-t) from 1 / 7.2 on: after 1.97 s.
+    expectClose(creeps.settling as number, 2, 1e-9);
+  });
+
   it('counts an override from where hold is back, and its step there', () => {
     const error = (t: number): number => (t < 3 ? 4 - t : t < 6 ? -0.5 : 0);
     const command = (t: number): number => (t < 3 ? 0.3 : 0.26);
