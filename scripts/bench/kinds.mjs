@@ -1,4 +1,9 @@
-// Vehicles of every kind for the bench, with all that belongs to them; the road load is that of the plain one.
+// Vehicles of every kind for the bench, with all that belongs to them; the road load is that of the plain one. As a
+// program: one kind over the plain force, in a process of its own, so that no other kind has had a say in how the engine
+// compiles the loop.
+import { fileURLToPath } from 'node:url';
+import { cpu } from './cpu.mjs';
+import { benchPlan, benchRoad } from './scenario.mjs';
 
 const rpm = (...values) => Float64Array.from(values, (value) => (value * Math.PI) / 30);
 const row = (...values) => Float64Array.from(values);
@@ -32,10 +37,10 @@ const GEARED = {
   gearbox: { kind: 'fixed' },
 };
 const CUT = { above: 210, blend: 30, throttle: 0.02, torque: 1.5 };
-/** Between 4th and 6th gear on this road. */
+/** On this road some thirty shifts between 5th and 6th gear in 50 km. */
 const LINES = {
   kind: 'automatic',
-  throttle: row(0.2, 0.8),
+  throttle: row(0.1, 0.25),
   upSpeed: rpm(5000, 7500),
   downSpeed: rpm(3000, 4900),
   gap: 0.3,
@@ -74,9 +79,11 @@ const ELECTRIC = {
   heating: { continuousPower: 4000, peakPowerTime: 300, onset: 0.8 },
 };
 
-/** Label and what is changed of the plain vehicle, kind by kind; drives are compiled by the library. */
-export function benchKinds(library, plain) {
+/** Label, and what of the plain plan a kind changes, kind by kind; drives are compiled by the library. */
+export function benchKinds(library, plan) {
+  const plain = plan.vehicle;
   const { actuator, sensor } = plain;
+  const windy = { ...plan.road, crosswind: plan.road.distance.map((x) => 4 * Math.sin(x / 700)) };
   return [
     { label: 'engine, six gears, fuel', vehicle: { ...plain, drive: library.engineDrive(GEARED) } },
     {
@@ -121,5 +128,35 @@ export function benchKinds(library, plain) {
       label: 'automatic gearbox',
       vehicle: { ...plain, drive: library.engineDrive({ ...GEARED, gearbox: LINES }) },
     },
+    {
+      label: 'crosswind, drag by yaw',
+      vehicle: { ...plain, roadLoad: { ...plain.roadLoad, yawGain: 1 } },
+      road: windy,
+    },
   ];
+}
+
+const ROUNDS = 9;
+const WARM_UP = 3;
+
+/** Ratios of CPU time a sample of a kind over the plain force, alternating. */
+function ratiosOf(library, label) {
+  const plain = benchPlan(library, benchRoad(50_000), 'exact');
+  const { vehicle, road = plain.road } = benchKinds(library, plain).find((kind) => kind.label === label);
+  const perTick = (plan) => {
+    const { seconds, result } = cpu(() => library.runLoop(plan));
+    if (result.status !== 'completed') throw new Error(`a run of the bench ended: ${result.status}`);
+    return seconds / result.endTime;
+  };
+  const ratios = [];
+  for (let i = 0; i < WARM_UP + ROUNDS; i++) {
+    const ratio = perTick({ ...plain, vehicle, road }) / perTick(plain);
+    if (i >= WARM_UP) ratios.push(ratio);
+  }
+  return ratios;
+}
+
+if (process.argv[1] === fileURLToPath(import.meta.url)) {
+  const [index, label] = process.argv.slice(2);
+  console.log(JSON.stringify(ratiosOf(await import(index), label)));
 }
