@@ -22,9 +22,11 @@ candidates:
   - {name: locked, kind: locked, throttle: level}
   - {name: droop, kind: pi, design: {droop_kmh: 2, grade_step_pct: 6, damping: 0.8}, anti_windup: {kind: back_calculation, tracking_s: 4}}
   - {name: settling, kind: pi, design: {settling_s: 30, overshoot_pct: 2}}
+logged_rides: [{name: ridden, file: ride.csv}]
 requirements: [{id: T-1, figure: within_band_pct, band_kmh: 2, at_least: 95}]
 `,
   'track.csv': track(),
+  'ride.csv': ride(),
 };
 
 /** Four kilometres of positions over a hill, with some noise that repeats. */
@@ -35,6 +37,16 @@ function track(): string {
     return `${(50 + x / 111200).toFixed(7)},${(-5 + 0.001 * Math.sin(x / 300)).toFixed(7)},${elevation.toFixed(2)}`;
   });
   return `lat_deg,lon_deg,elevation_m\n${rows.join('\n')}\n`;
+}
+
+/** A ride over them at some 15 m/s, a fix a second, with some scatter that repeats. */
+function ride(): string {
+  const rows = Array.from({ length: 265 }, (_, t) => {
+    const x = 15 * t + 20 * Math.sin(t / 15);
+    const off = (((t * 7919) % 13) - 6) / 4;
+    return `${t},${(50 + (x + off) / 111200).toFixed(7)},${(-5 + 0.001 * Math.sin(x / 300) + off / 71500).toFixed(7)},${20 + (t % 9)}`;
+  });
+  return `time_s,lat_deg,lon_deg,throttle_pct\n${rows.join('\n')}\n`;
 }
 
 interface Library {
@@ -50,7 +62,8 @@ function figures(ridgehold: Library, files: Readonly<Record<string, string>>): R
     file: 'case.yaml',
     read: (name) => new TextEncoder().encode(files[name] ?? ''),
   });
-  const bits = JSON.stringify((run as { candidates: unknown }).candidates, (_, value) => {
+  const { candidates, loggedRides } = run as { candidates: unknown; loggedRides: unknown };
+  const bits = JSON.stringify({ candidates, loggedRides }, (_, value) => {
     if (ArrayBuffer.isView(value))
       return new Uint8Array(value.buffer, value.byteOffset, value.byteLength).join(' ');
     return typeof value === 'number' ? new Uint32Array(new Float64Array([value]).buffer).join(' ') : value;
