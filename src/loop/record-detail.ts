@@ -8,7 +8,7 @@ import type { BinDetail } from './result.ts';
 const ERROR_CLASS = fromKmh(0.01);
 const COMMAND_CLASS = 0.001;
 const ACCELERATION_CLASS = 0.01;
-const JERK_CLASS = 0.02;
+const JERK_CLASS = 0.005;
 /**
  * Window of the jerk [s]: about the shortest change of acceleration that a rider tells from a jolt, and as long as any
  * usual sample, so that loops of different sample times are measured alike; from one sample to the next, jerk is that

@@ -149,7 +149,7 @@ export interface BinDetail {
   readonly commandRate: Float64Array;
   /** Turns of the limited command, each told once it has come back from its extreme by more than 0.005. */
   readonly reversals: Uint32Array;
-  /** Speed error in classes of 0.01 km/h, limited command of 0.001, acceleration of 0.01 m/s2, jerk of 0.02 m/s3. */
+  /** Speed error in classes of 0.01 km/h, limited command of 0.001, acceleration of 0.01 m/s2, jerk of 0.005 m/s3. */
   readonly error: Distribution;
   readonly command: Distribution;
   readonly acceleration: Distribution;

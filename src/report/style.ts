@@ -45,7 +45,7 @@ figure svg{display:block;width:100%;height:auto}
 figcaption{margin-top:.3rem;max-width:52rem}
 .narrow{display:none}
 .pair{display:grid;grid-template-columns:repeat(auto-fit,minmax(min(100%,24rem),1fr));gap:0 2rem}
-.pair figure{min-width:0}
+.pair>*{min-width:0}
 .keys{list-style:none;padding:0;display:flex;flex-wrap:wrap;gap:.25rem 1.2rem;font-size:.86rem;max-width:none}
 .keys li{display:inline-flex;align-items:center;gap:.4rem}
 .keyline{margin-bottom:0}

@@ -114,7 +114,7 @@ export const COMFORT_ROWS: readonly FigureRow[] = [
     takesBand: false,
     better: 'lower',
     definition:
-      'The value that |jerk| stays within for 95 % of the time with hold on, to 0.02 m/s³. Jerk is the change of the mean acceleration from one window of 0.2 s to the next, over 0.2 s: about the shortest change that a rider tells from a jolt, and the same for any sample time up to it. Its place is where |jerk| was greatest. For scale: 0.5 to 1 m/s³ is often named as comfortable (from memory).',
+      'The value that |jerk| stays within for 95 % of the time with hold on, to 0.005 m/s³. Jerk is the change of the mean acceleration from one window of 0.2 s to the next, over 0.2 s: about the shortest change that a rider tells from a jolt, and the same for any sample time up to it. Its place is where |jerk| was greatest. For scale: 0.5 to 1 m/s³ is often named as comfortable (from memory).',
     source: DEFINED_HERE,
     detail: true,
     measure: (record) =>

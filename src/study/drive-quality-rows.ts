@@ -34,7 +34,7 @@ export const DRIVE_QUALITY_ROWS: readonly FigureRow[] = [
     'Energy rating',
     `ER = 100 (E driven - E target) / E target, ${OVER}. E is the work of the wheel force while it pushes: as the drive gave it, and as the set speed asks for it by air, rolling, slope and the rise of speed at a change.`,
     'energy',
-    'lower',
+    null,
   ),
   rating(
     'distance_rating_pct',
@@ -48,7 +48,7 @@ export const DRIVE_QUALITY_ROWS: readonly FigureRow[] = [
     'Energy economy rating',
     `EER = 100 (1 - (1 + DR / 100) / (1 + ER / 100)), ${OVER}: how much of the energy per distance is above that of the target.`,
     'energyEconomy',
-    'lower',
+    null,
   ),
   rating(
     'speed_change_rating_pct',

@@ -42,13 +42,21 @@ const LEAST = 0.05;
 const LEAST_SHARE = 0.0005;
 /** Units of figures that grow with the way. */
 const GROWING = ['s', 'Wh', 'm', 'km/h·s', '(km/h)²·s', 'km/h·s²'];
+/** The record tells jerk to so much. */
+const LEAST_JERK = 0.005;
 /** Bare ratios: what an energy account may be open by. */
 const LEAST_RATIO = 1e-6;
 
 /** A difference that no reader would see is none. */
 export function isSame(before: number, after: number, unit: string): boolean {
   const largest = Math.max(Math.abs(before), Math.abs(after));
-  const least = TENTHS.includes(unit) ? LEAST : unit === '1' ? LEAST_RATIO : LEAST_SHARE * largest;
+  const least = TENTHS.includes(unit)
+    ? LEAST
+    : unit === '1'
+      ? LEAST_RATIO
+      : unit === 'm/s³'
+        ? LEAST_JERK
+        : LEAST_SHARE * largest;
   return Math.abs(after - before) <= least;
 }
 

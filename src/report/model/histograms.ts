@@ -57,7 +57,7 @@ export const SPREAD_QUANTITIES: readonly SpreadQuantity[] = [
     chart: 'jerk',
     words: 'Jerk',
     width: 0.2,
-    widths: [0.04, 0.1, 0.2, 0.4, 1, 2],
+    widths: [0.01, 0.02, 0.04, 0.1, 0.2, 0.4, 1, 2],
     of: ({ jerk }) => jerk,
     toUnit: same,
   },

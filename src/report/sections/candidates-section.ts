@@ -33,8 +33,8 @@ function plannedWords(view: View): string | null {
   );
 }
 
-/** Best is what is nearest to zero: time gained is no better than time lost, and no rating better than that of the set speed itself. */
-const BEST_IS_NONE = ['time_lost_s', 'energy_rating_pct', 'energy_economy_rating_pct'];
+/** Best is what is nearest to zero: time gained is no better than time lost. */
+const BEST_IS_NONE = 'time_lost_s';
 
 const BAR = 96;
 
@@ -100,7 +100,7 @@ function figureCells(view: View, name: string): readonly HtmlValue[][] {
   if (exist.length === 0 || (exist.every((value) => value === 0) && name !== 'recovery_s')) return [];
   const whole = values.filter((value, i) => value !== null && !endedEarly(view.candidates[i]!));
   const [low, high] = [Math.min(0, ...whole.map(Number)), Math.max(0, ...whole.map(Number))];
-  const merits = BEST_IS_NONE.includes(name) ? values.map((value) => value && Math.abs(value)) : values;
+  const merits = name === BEST_IS_NONE ? values.map((value) => value && Math.abs(value)) : values;
   const beside = row.unit === 'km/h' ? [toKmh(view.result.band)] : [];
   const texts = values.map((value) =>
     value === null ? NO_VALUE : figureTextBeside(value, beside, row.unit, view.speed),

@@ -14,8 +14,9 @@ import { table } from './table.ts';
 export function spreadSection(view: View): Section | null {
   const spreads = spreadsOf(view);
   if (spreads.length === 0) return null;
+  const early = view.candidates.some(({ result }) => result.status !== 'completed');
   const cut = spreads.some(({ cut: { low, high } }) => low || high);
-  const body = html`<p>How much of the time with hold on each candidate spent where, over the whole road. All candidates of a chart share both axes; heights go with the square root of the share, so that what is rare can be seen. The band of ${bandText(view.result.band, view.speed)} is shaded${cut && '; a hatched class has all that lies beyond it'}.</p>
+  const body = html`<p>How much of the time with hold on each candidate spent where, over the whole road${early && ', or up to where its run ended'}. All candidates of a chart share both axes; heights go with the square root of the share, so that what is rare can be seen. The band of ${bandText(view.result.band, view.speed)} is shaded${cut && '; a hatched class has all that lies beyond it'}.</p>
 <div class="pair">${spreads.map((spread) =>
     chartFigure(
       `histogram-${spread.quantity.chart}`,
@@ -24,18 +25,18 @@ export function spreadSection(view: View): Section | null {
       { wide: HALF, narrow: NARROW },
     ),
   )}</div>
-<details><summary>The same as tables</summary>${spreads.map(spreadTable)}</details>
+<details><summary>The same as tables</summary><div class="pair">${spreads.map((spread) => html`<div>${spreadTable(spread)}</div>`)}</div></details>
 <p class="note">histograms.csv has finer classes. Acceleration is the mean over a controller sample, jerk its change from one window of 0.2 s to the next, over 0.2 s.</p>`;
   return { id: 'spread', number: 4, title: 'How the error is spread', body };
 }
 
 function spreadTable(spread: Spread): Html {
-  const { quantity, unit, rows, from, to } = spread;
+  const { quantity, rows, from, to } = spread;
   const classes = Array.from({ length: to - from + 1 }, (_, k) => k);
   return table(
     `${quantity.words}, share of the time`,
     [
-      { head: `${quantity.words.toLowerCase()} / ${spread.axis === unit ? unit : spread.axis}` },
+      { head: `${quantity.words.toLowerCase()} / ${spread.axis}` },
       ...rows.map(({ candidate }) => ({
         head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
         number: true,
