@@ -8,6 +8,7 @@ import { replay } from '../../src/loop/replay.ts';
 import type { Distribution } from '../../src/loop/result.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
 import { expectClose } from '../compare.ts';
+import { at as actAt, brakeTo, CANCEL, ENGAGE, patientUnit, RESUME, rider } from './hold-scenes.ts';
 import { laggedVehicle, planOver, roadOver, stations } from './scenes.ts';
 
 const SET_SPEED = 20;
@@ -216,5 +217,23 @@ describe('a run with detail', () => {
         samples += detail.error.samples[k]!;
       expectClose(0.02 * samples, bins.time[i]!, 1e-6, `bin ${i}`);
     }
+  });
+
+  it('counts nothing of the time with hold off', () => {
+    const acts = [actAt(400, CANCEL), actAt(750, RESUME), actAt(1200, brakeTo(12)), actAt(1500, ENGAGE)];
+    const { bins, holdEvents } = runLoop(
+      plan({ detail: true, bin: 20, supervisor: patientUnit, rider: rider(...acts) }),
+    );
+    expect(holdEvents!.map(({ kind }) => kind)).toEqual(['ended', 'resumed', 'ended', 'engaged']);
+    const { error, command, acceleration } = bins.detail!;
+    expect(total(bins.timeOff)).toBeGreaterThan(20);
+    for (const { start, samples } of [error, command, acceleration])
+      for (let i = 0; i < bins.size; i++)
+        expectClose(
+          0.02 * total(samples.subarray(start[i]!, start[i + 1]!)),
+          bins.time[i]! - bins.timeOff[i]!,
+          1e-6,
+          `bin ${i}`,
+        );
   });
 });
