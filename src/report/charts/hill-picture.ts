@@ -64,6 +64,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
     ]);
   const linesOf = (
     { view: ride, stretches, foot }: RideOnHill,
+    box: Box,
     scale: Scale,
     values: Float64Array,
     of: (v: number) => number,
@@ -72,6 +73,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       rideLine(
         rows.map((row): Point => [x(ride.time[row]! - foot), scale(of(values[row]!))]),
         ride,
+        box,
         canvas,
       ),
     );
@@ -88,7 +90,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       })
     }${shown.map(({ candidate, outcome }) =>
       trace(over(speeds, outcome.picture.speed, view.speed.of, outcome.picture), candidate, upper, canvas),
-    )}${ridden.map((ride) => html`${linesOf(ride, speeds, ride.view.speed, view.speed.of)}`)}`,
+    )}${ridden.map((ride) => html`${linesOf(ride, upper, speeds, ride.view.speed, view.speed.of)}`)}`,
   )}${leftAxis(canvas, lower, throttles, 'command, and throttle that would hold / %', 3)}${clipped(
     `${id}-l`,
     html`${
@@ -105,7 +107,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
       }),
     )}${shown.map(({ candidate, outcome }) =>
       trace(over(throttles, outcome.picture.command, toPct, outcome.picture), candidate, lower, canvas),
-    )}${ridden.map((ride) => ride.view.throttle !== null && html`${linesOf(ride, throttles, ride.view.throttle, toPct)}`)}`,
+    )}${ridden.map((ride) => ride.view.throttle !== null && html`${linesOf(ride, lower, throttles, ride.view.throttle, toPct)}`)}`,
   )}${bottomAxis({ ...canvas, narrow: true }, upper, x, null)}${bottomAxis({ ...canvas, narrow: true }, lower, x, 'time from the foot / s')}`;
   const words = {
     title: `Hill ${hill.number}: speed, command and the throttle that would hold, over time`,

@@ -95,6 +95,7 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: bo
       return rideLine(
         columns.map((c): Point => [x(toKm(c.at)), y(look.of(c.mean))]),
         ride,
+        box,
         canvas,
       );
     }),

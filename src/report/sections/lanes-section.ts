@@ -18,7 +18,7 @@ ${chartFigure(
   (canvas) => lanesChart(view, canvas),
   html`Lines: mean of each stretch that is one line of the picture wide; shade around them: least to greatest in it, so that no peak is lost.${
     view.rides.length > 0 &&
-    ' With marks on it: a logged ride, broken where the log has a gap; speed, with the set speed dotted, speed error, and throttle where the log has it.'
+    ' In fine dashes with marks: a logged ride, broken where the log has a gap; speed, with the set speed dotted, speed error, and throttle where the log has it.'
   }${
     setSpeedMarks(view).length > 0 &&
     ' Brackets: a change of set speed is being followed, and the error there is planned.'
