@@ -2,14 +2,14 @@ import { toKmh, toPct } from '../units/convert.ts';
 import { driven, type FigureRecord, type Measure } from './figure-measures.ts';
 import type { Figure } from './findings.ts';
 import type { HoldOff } from './hold-off.ts';
-import { type HoldMeasure, NEXT_CAME } from './hold-transient.ts';
+import { type HoldMeasure, NOT_SETTLED } from './hold-transient.ts';
 
 type Kind = HoldMeasure['event']['kind'];
 
 /**
  * Greatest of a figure over the transients of some kinds. One that is not there although there was time for it is
- * before any other; one that something else on the way cut short leaves the figure open, or without a value where
- * there is no other.
+ * before any other; one that something else on the way, or the end of the run, cut short leaves the figure open, or
+ * without a value where there is no other.
  */
 function worstOver(
   { hold }: FigureRecord,
@@ -25,7 +25,7 @@ function worstOver(
     const at = measure.event.distance;
     if (typeof value === 'number') {
       if (worst === null || value > worst.value) worst = { value, at };
-    } else if (value.none !== NEXT_CAME) return { value, at };
+    } else if (value.none === NOT_SETTLED) return { value, at };
     else unknown ??= { value, at };
   }
   if (worst === null) return unknown ?? { value: { none }, at: null };

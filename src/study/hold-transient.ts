@@ -5,6 +5,9 @@ import type { HoldOff } from './hold-off.ts';
 /** Said of a settling that something on the way, such as the next event or a change of set speed, cut short. */
 export const NEXT_CAME = 'what came next on the way came first';
 
+/** Said of one that had the time and the road for it. */
+export const NOT_SETTLED = 'it was not within 1 km/h for 3 s in a minute';
+
 /** What follows an event of the hold, from the event to where the speed has settled or the next one comes. */
 export interface HoldMeasure {
   readonly candidate: string;

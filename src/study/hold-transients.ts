@@ -3,7 +3,13 @@ import type { FullSeries, HoldEvent, HoldEventKind, LoopResult } from '../loop/r
 import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Figure, Replayed } from './findings.ts';
 import { courseOfRun, type HoldCourse, trueSpeedFactor } from './hold-course.ts';
-import { type HoldMeasure, type HoldTransient, type HoldTransients, NEXT_CAME } from './hold-transient.ts';
+import {
+  type HoldMeasure,
+  type HoldTransient,
+  type HoldTransients,
+  NEXT_CAME,
+  NOT_SETTLED,
+} from './hold-transient.ts';
 import { type MeasuredTransient, measureTransient, sampleAtTime } from './measure-transient.ts';
 import { thinSeries } from './series-measures.ts';
 import { transientWords } from './transient-words.ts';
@@ -21,7 +27,6 @@ const PICTURE_ROWS = 400;
 /** Kinds that are followed by a transient. An override's is told from where the grip is let go. */
 const FOLLOWED: readonly HoldEventKind[] = ['engaged', 'resumed', 'tapped', 'override_ended', 'ended'];
 
-const NOT_SETTLED = 'it was not within 1 km/h for 3 s in a minute';
 const RUN_ENDED = 'the run ended first';
 
 /** A transient with every sample of its window. */
@@ -85,7 +90,7 @@ const eventsOf = ({ result }: Replayed): number[] =>
 function badness({ event, settling, lowest, highest, jerk }: HoldMeasure): number {
   const size = (figure: Figure): number => (typeof figure === 'number' ? Math.abs(figure) : 0);
   if (event.kind === 'ended') return size(jerk);
-  const unsettled = typeof settling === 'number' || settling.none === NEXT_CAME ? 0 : 1000;
+  const unsettled = typeof settling !== 'number' && settling.none === NOT_SETTLED ? 1000 : 0;
   return unsettled + Math.max(size(lowest), size(highest));
 }
 

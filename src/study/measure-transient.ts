@@ -115,7 +115,7 @@ function countedFrom(
   if (kind === 'engaged') return first;
   if (kind === 'tapped') {
     for (let i = first + 1; i < series.size; i++)
-      if (errorAt(series, i) * errorAt(series, first) <= 0) return i;
+      if (errorAt(series, i) * errorAt(series, first) < 0) return i;
     return { none: NOT_BEYOND };
   }
   for (let i = first; i < series.size; i++)
