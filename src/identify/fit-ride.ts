@@ -2,6 +2,7 @@ import { type LeastSquares, leastSquares } from '../numeric/least-squares.ts';
 import { clusteredErrors } from './clustered-errors.ts';
 import { elevationClosure } from './elevation-closure.ts';
 import { estimateOf } from './estimate.ts';
+import { firstRowFrom } from './first-row-from.ts';
 import type { FittedUnknown, RideFit, RideStretch, RideUnknown, RideVehicle } from './ride.ts';
 import { rideLevels } from './ride-rows.ts';
 import { rideSegments } from './ride-segments.ts';
@@ -82,7 +83,7 @@ function piecesOf(stretches: readonly RideStretch[], vehicle: RideVehicle): read
     const last = time.length - 1;
     const count = Math.floor((time[last]! - time[0]!) / PIECE);
     const edges = Array.from({ length: count + 1 }, (_, k) =>
-      k === count ? last : time.findIndex((t) => t >= time[0]! + (k * (time[last]! - time[0]!)) / count),
+      k === count ? last : firstRowFrom(time, time[0]! + (k * (time[last]! - time[0]!)) / count),
     );
     return edges.slice(1).flatMap((to, k): Piece[] => {
       const from = edges[k]!;

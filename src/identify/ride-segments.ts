@@ -1,3 +1,4 @@
+import { firstRowFrom } from './first-row-from.ts';
 import type { RideSegment, RideStretch, RideVehicle } from './ride.ts';
 import { type RideLevels, resistanceAt, rideLevels } from './ride-rows.ts';
 
@@ -65,8 +66,7 @@ function boundsOf({ place }: RideStretch, length: number): readonly (readonly [n
   const count = Math.max(1, Math.round((place[last]! - place[0]!) / length));
   const edges = Array.from({ length: count + 1 }, (_, k) => {
     const at = place[0]! + (k * (place[last]! - place[0]!)) / count;
-    const i = place.findIndex((x) => x >= at - 1e-9);
-    return k === count || i < 0 ? last : i;
+    return k === count ? last : firstRowFrom(place, at);
   });
   return edges.slice(1).flatMap((to, k) => (to > edges[k]! ? [[edges[k]!, to] as const] : []));
 }

@@ -6,6 +6,10 @@ const WIDE = 0.15;
 const TIED = 0.95;
 /** Share of a ride that is left out, beyond which it should be told. */
 const LARGE_PART = 0.3;
+/** Closed share of a segment below which it counts as driven. */
+const MOSTLY_DRIVEN = 0.1;
+/** Share of the work of the drive that no drag explains. */
+const UNLIKE = 0.2;
 /** Disagreement of two estimates, in half-widths of their intervals together. */
 const APART = 1;
 
@@ -27,6 +31,17 @@ export function rideFitWarnings(
     add(
       'drive-in-the-fit',
       "The force at the wheel is that of the vehicle's drive at the logged throttle: what the drive is wrong by goes into the fitted numbers. A logged power at the wheel has no such error.",
+    );
+  const driven = fit.segments.filter(({ closed }) => closed < MOSTLY_DRIVEN);
+  const length = driven.reduce((sum, { from, to }) => sum + to - from, 0);
+  const [given, over] = driven.reduce(
+    ([all, rest], one) => [all! + one.given, rest! + one.given - one.needed],
+    [0, 0],
+  );
+  if (!byPower && Math.abs(over!) > UNLIKE * Math.abs(given!))
+    add(
+      'drive-apart',
+      `Where it was driven, the logged throttle gave ${Math.abs(over! / length).toFixed(0)} N ${over! > 0 ? 'more' : 'less'} than the vehicle needed, of ${(given! / length).toFixed(0)} N: look at the drive of the file (its curves, its throttle plate, the gear) before its drag.`,
     );
   for (const { name, estimate } of fit.unknowns) {
     const half = (estimate.high - estimate.low) / 2 / estimate.value;

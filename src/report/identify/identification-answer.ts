@@ -53,13 +53,20 @@ function stepSentence({ fit }: StepIdentification): string {
 }
 
 function rideSentence({ fit }: RideIdentification): string {
-  const numbers = fit.unknowns.map(({ name, estimate }) => {
-    const { name: words, unit } = UNKNOWN_WORDS[name];
-    return `${words} ${plusMinus(estimate, unit)}`;
-  });
-  const list = numbers.length < 2 ? numbers[0]! : `${numbers.slice(0, -1).join(', ')} and ${numbers.at(-1)!}`;
-  return `${list} ${numbers.length === 1 ? 'makes' : 'make'} ${fixed(toKm(fit.fitted), 1)} km of the ride agree with the vehicle to ${fixed(fit.rmsForce, 1)} N, where it was ${fixed(fit.rmsForceBefore, 1)} N off (95 % intervals).`.replace(
-    /^./,
-    (first) => first.toUpperCase(),
+  const told = fit.unknowns.filter(({ estimate }) => estimate.low > 0);
+  const names = fit.unknowns.filter((one) => !told.includes(one)).map(({ name }) => UNKNOWN_WORDS[name].name);
+  const numbers = told.map(
+    ({ name, estimate }) => `${UNKNOWN_WORDS[name].name} ${plusMinus(estimate, UNKNOWN_WORDS[name].unit)}`,
   );
+  const length = `${fixed(toKm(fit.fitted), 1)} km of the ride`;
+  const before = `${fixed(fit.rmsForceBefore, 1)} N`;
+  const untold = `${listed(names)} ${names.length === 1 ? 'is' : 'are'} not told by it`;
+  const sentence =
+    numbers.length === 0
+      ? `over ${length} what its drive gave and what the vehicle needs are ${before} apart, and ${untold}.`
+      : `${listed(numbers)} ${numbers.length === 1 ? 'makes' : 'make'} ${length} agree with the vehicle to ${fixed(fit.rmsForce, 1)} N, where it was ${before} off (95 % intervals)${names.length === 0 ? '' : `; ${untold}`}.`;
+  return sentence.replace(/^./, (first) => first.toUpperCase());
 }
+
+const listed = (words: readonly string[]): string =>
+  words.length < 2 ? (words[0] ?? '') : `${words.slice(0, -1).join(', ')} and ${words.at(-1)!}`;

@@ -75,6 +75,8 @@ ${table(
 
 /** More steps than this are in the table alone. */
 const MOST_FIGURES = 8;
+/** More marks than this run into each other. */
+const MOST_MARKS = 300;
 
 function stepFigure(step: FittedStep, i: number, speed: SpeedUnit): Html | null {
   if (i >= MOST_FIGURES) return null;
@@ -94,7 +96,9 @@ function stepFigure(step: FittedStep, i: number, speed: SpeedUnit): Html | null 
     name: 'measured',
     mark: 'dot',
     colour: 1,
-    points: Array.from(record.time, (t, k) => [t, speed.of(record.speed[k]!)] as const),
+    points: Array.from(record.time, (t, k) => [t, speed.of(record.speed[k]!)] as const).filter(
+      (_, k) => k % Math.ceil(record.time.length / MOST_MARKS) === 0,
+    ),
   };
   const change = signed(toPct(record.to - record.from), 1);
   return html`${i === 0 && xyKey([measured, curve], PAGE_PAINT)}
