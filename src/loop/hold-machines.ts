@@ -1,12 +1,12 @@
 import type { HoldRules } from '../control/hold-rules.ts';
 import type { OverrideRule } from '../control/supervisor-setup.ts';
 import { buildMachine } from './build-machine.ts';
-import { withFaultySensor } from './faulty-sensor.ts';
 import { loadSteps } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
 import { handController } from './ride-by-hand.ts';
+import { withFaultySensor } from './sensor-faults.ts';
 import { supervisedController } from './supervised-controller.ts';
 
 /** A controller without a unit knows nothing of the grip. */

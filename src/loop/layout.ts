@@ -89,7 +89,7 @@ export const GRIP = 84;
 export const OWN_COMMAND = 85;
 /** What the rules of the unit remember: measured speed of the sample before, samples too slow, samples too fast. */
 export const RULES_MEMORY = 86;
-/** Faults of the sensor that have begun; the kind that is on (1 + its place in FAULTS), 0: none; the tick at which it ends; what it holds on to. */
+/** Faults of the sensor that have begun; the kind that is on (see sensor-faults.ts), 0: none; the tick at which it ends; what it holds on to. */
 export const FAULTS_BEGUN = 89;
 export const FAULT = 90;
 export const FAULT_UNTIL = 91;

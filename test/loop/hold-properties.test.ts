@@ -8,6 +8,7 @@ import type { LoopPlan, RiderAct, RiderDeed, RoutePlace, SensorFault } from '../
 import { LIMIT_OFF, LIMIT_OVERRIDE } from '../../src/loop/plan.ts';
 import { replay } from '../../src/loop/replay.ts';
 import { runLoop } from '../../src/loop/run-loop.ts';
+import { traceSpeeds } from '../../src/loop/trace-speeds.ts';
 import { IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
@@ -122,8 +123,12 @@ const unit: fc.Arbitrary<SupervisorSetup> = fc.record({
   }),
 });
 const road = fc
-  .record({ grade: number(0, 0.05), wave: number(60, 300) })
-  .map(({ grade, wave }) => roadOver(stations(LENGTH, 20), { grade: (s) => grade * Math.sin(s / wave) }));
+  .record({ grade: number(0, 0.05), wave: number(60, 300), timed: fc.boolean() })
+  .map(({ grade, wave, timed }) =>
+    timed
+      ? roadOver(stations(LENGTH / 15, 2), { grade: (t) => grade * Math.sin((15 * t) / wave) }, { speed: 15 })
+      : roadOver(stations(LENGTH, 20), { grade: (s) => grade * Math.sin(s / wave) }),
+  );
 const plan = (of: readonly Vehicle[], most: number): fc.Arbitrary<LoopPlan> =>
   fc
     .record({
@@ -198,6 +203,11 @@ test('the account closes, time is on or off, events are in order, and any checkp
         if (kind === 'resumed' || kind === 'engaged') on = true;
       }
 
+      const traced = traceSpeeds(asked, result.checkpoints[0]!, Number.POSITIVE_INFINITY, 0);
+      expect(traced.size).toBe(series.size);
+      expect(series.speed.findIndex((v, k) => v !== traced.speed[k])).toBe(-1);
+      expect(series.setSpeed.findIndex((v, k) => v !== traced.setSpeed[k])).toBe(-1);
+
       const names = ['speed', 'command', 'measured', 'reference', 'setSpeed', 'brakeForce', 'limit'] as const;
       for (const checkpoint of result.checkpoints.slice(1)) {
         const later = replay(asked, checkpoint, Number.POSITIVE_INFINITY).series;
@@ -209,7 +219,7 @@ test('the account closes, time is on or off, events are in order, and any checkp
           ).toBe(-1);
       }
     }),
-    { numRuns: 50, seed: 20 },
+    { numRuns: 30, seed: 20 },
   );
 });
 
