@@ -95,7 +95,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let loadedCell = -1;
 
   const kinetic0 = 0.5 * mass * v * v;
-  chunk.fill(0, 0, at.C_DRIVE_FORCE);
+  for (let term = 0; term < at.C_DRIVE_FORCE; term++) chunk[term] = 0;
   const height0 = integralTo(rows, row, at.R_SIN, q);
   let elapsed = 0;
   let event = at.RUNNING;

@@ -88,7 +88,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let loadedDrive = -1;
 
   const kinetic0 = 0.5 * mass * v * v;
-  chunk.fill(0, 0, at.C_DRIVE_FORCE);
+  for (let term = 0; term < at.C_DRIVE_FORCE; term++) chunk[term] = 0;
   let elapsed = 0;
   let event = at.RUNNING;
   let tick = 0;

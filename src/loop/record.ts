@@ -37,7 +37,8 @@ const OFF = 30;
 const SUMS = 31;
 
 function clearSums(sums: Float64Array): void {
-  sums.fill(0);
+  // Not by `fill`, which costs as much as a sample of the kernel: a bin is some thirty.
+  for (let i = 0; i < SUMS; i++) sums[i] = 0;
   sums[SPEED_MIN] = sums[ERROR_MIN] = sums[THROTTLE_MIN] = sums[FORCE_MIN] = Number.POSITIVE_INFINITY;
   sums[SPEED_MAX] = sums[ERROR_MAX] = sums[THROTTLE_MAX] = sums[FORCE_MAX] = Number.NEGATIVE_INFINITY;
 }
@@ -173,6 +174,20 @@ function addChunk({ s, p, chunk }: Machine, sums: Float64Array): void {
 
 type Writable<T> = { -readonly [K in keyof T]: T[K] };
 
+/** Columns to which nothing is written in most runs. */
+type RareColumn =
+  | 'timeUpper'
+  | 'timeLower'
+  | 'timeRate'
+  | 'timeBrake'
+  | 'regenerationWork'
+  | 'brakeWork'
+  | 'timeShift'
+  | 'drawn'
+  | 'driveLost'
+  | 'regenerationLost'
+  | 'timeOff';
+
 /** The record of a run while it grows. */
 export interface Recorder {
   /** Adds the samples that the kernel has just run to the open bin. */
@@ -194,6 +209,8 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
   const all = edge.length - 1;
   const column = (): Float64Array => new Float64Array(all);
   let size = 0;
+  // Most runs have none of some columns: those are one and the same array of zeros until something is written to them.
+  const none = column();
   const r: Writable<BinRecord> = {
     size,
     edge,
@@ -211,25 +228,30 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
     throttleMin: column(),
     throttleMax: column(),
     throttleTravel: column(),
-    timeUpper: column(),
-    timeLower: column(),
-    timeRate: column(),
-    timeBrake: column(),
+    timeUpper: none,
+    timeLower: none,
+    timeRate: none,
+    timeBrake: none,
     timeInBand: new Float64Array(all * bands),
     gear: new Uint8Array(all),
     driveForce: column(),
     wheelPower: column(),
     driveWork: column(),
-    regenerationWork: column(),
-    brakeWork: column(),
+    regenerationWork: none,
+    brakeWork: none,
     driveForceMax: column(),
     driveForceMin: column(),
-    timeShift: column(),
-    drawn: column(),
-    driveLost: column(),
-    regenerationLost: column(),
-    timeOff: column(),
+    timeShift: none,
+    drawn: none,
+    driveLost: none,
+    regenerationLost: none,
+    timeOff: none,
     detail: null,
+  };
+
+  const write = (key: RareColumn, i: number, value: number): void => {
+    if (r[key] === none) r[key] = column();
+    r[key][i] = value;
   };
 
   const sums = new Float64Array(SUMS);
@@ -251,8 +273,8 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
     const force = chunk[at.C_DRIVE_FORCE];
     r.timeAt[i] = timeAt;
     r.gear[i] = gearInHand(s);
-    if (sums[DRIVE_LOST] > 0) r.driveLost[i] = sums[DRIVE_LOST];
-    if (sums[REGENERATION_LOST] > 0) r.regenerationLost[i] = sums[REGENERATION_LOST];
+    if (sums[DRIVE_LOST] > 0) write('driveLost', i, sums[DRIVE_LOST]);
+    if (sums[REGENERATION_LOST] > 0) write('regenerationLost', i, sums[REGENERATION_LOST]);
     if (!(time > 0)) {
       // No sample starts in this bin: what holds while it is passed over.
       const setSpeed = s[BUS_TARGET] * p[at.P_TO_TRUE];
@@ -280,16 +302,15 @@ export function recorder(edge: Float64Array, bands: number, detail: DetailRecord
     r.throttleMin[i] = sums[THROTTLE_MIN];
     r.throttleMax[i] = sums[THROTTLE_MAX];
     r.throttleTravel[i] = sums[TRAVEL];
-    // Most bins have none of these: a column that nothing is written to takes no memory.
-    if (sums[UPPER] > 0) r.timeUpper[i] = sums[UPPER];
-    if (sums[LOWER] > 0) r.timeLower[i] = sums[LOWER];
-    if (sums[RATE] > 0) r.timeRate[i] = sums[RATE];
-    if (sums[BRAKE] > 0) r.timeBrake[i] = sums[BRAKE];
-    if (sums[OFF] > 0) r.timeOff[i] = sums[OFF];
-    if (sums[SHIFT] > 0) r.timeShift[i] = sums[SHIFT];
-    if (sums[HOLD] < 0) r.regenerationWork[i] = sums[HOLD];
-    if (sums[BRAKE_WORK] !== 0) r.brakeWork[i] = sums[BRAKE_WORK];
-    if (sums[DRAWN] !== 0) r.drawn[i] = sums[DRAWN];
+    if (sums[UPPER] > 0) write('timeUpper', i, sums[UPPER]);
+    if (sums[LOWER] > 0) write('timeLower', i, sums[LOWER]);
+    if (sums[RATE] > 0) write('timeRate', i, sums[RATE]);
+    if (sums[BRAKE] > 0) write('timeBrake', i, sums[BRAKE]);
+    if (sums[OFF] > 0) write('timeOff', i, sums[OFF]);
+    if (sums[SHIFT] > 0) write('timeShift', i, sums[SHIFT]);
+    if (sums[HOLD] < 0) write('regenerationWork', i, sums[HOLD]);
+    if (sums[BRAKE_WORK] !== 0) write('brakeWork', i, sums[BRAKE_WORK]);
+    if (sums[DRAWN] !== 0) write('drawn', i, sums[DRAWN]);
     for (let b = 0; b < bands; b++) r.timeInBand[i * bands + b] = sums[BAND + b];
     const work = sums[PUSH] + sums[HOLD];
     r.driveForce[i] = sums[DISTANCE] > 0 ? work / sums[DISTANCE] : force;
