@@ -58,8 +58,8 @@ export const supervisorSchema = mapping(
     ),
     tap_ramp_m_s2: optional(
       number('m/s2', 0.01, 20, 'Rate at which the reference goes there'),
-      "the candidate's own",
-      'not given: as for any change of the set speed',
+      'none',
+      "not given: the candidate's own, as for any change of the set speed",
     ),
     override: block(
       mapping('While the grip asks for more than the controller', {

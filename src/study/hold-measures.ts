@@ -9,12 +9,12 @@ type Kind = HoldMeasure['event']['kind'];
 /**
  * Greatest of a figure over the transients of some kinds. One that is not there although there was time for it is
  * before any other; one that something else on the way, or the end of the run, cut short leaves the figure open, or
- * without a value where there is no other.
+ * without a value where there is no other; null is none of them.
  */
 function worstOver(
   { hold }: FigureRecord,
   kinds: readonly Kind[],
-  of: (measure: HoldMeasure) => Figure,
+  of: (measure: HoldMeasure) => Figure | null,
   none: string,
 ): Measure {
   let worst: { value: number; at: number } | null = null;
@@ -22,6 +22,7 @@ function worstOver(
   for (const measure of hold().measures) {
     if (!kinds.includes(measure.event.kind)) continue;
     const value = of(measure);
+    if (value === null) continue;
     const at = measure.event.distance;
     if (typeof value === 'number') {
       if (worst === null || value > worst.value) worst = { value, at };
@@ -50,7 +51,7 @@ export const commandStep = (record: FigureRecord): Measure =>
   worstOver(
     record,
     ['engaged', 'resumed', 'override_ended'],
-    ({ commandStep: step }) => (typeof step === 'number' ? toPct(step) : step),
+    ({ commandStep: step }) => (typeof step === 'number' ? toPct(step) : null),
     'hold did not take over on the way',
   );
 

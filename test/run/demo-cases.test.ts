@@ -116,3 +116,26 @@ it('loses two up what it holds alone', () => {
   expect(verdicts('solo')).not.toContain('not met');
   expect(verdicts('two up').filter((verdict) => verdict === 'not met').length).toBeGreaterThanOrEqual(3);
 });
+
+it('is ridden by hand through the bends of the pass, and hold comes back behind them', () => {
+  const { bends, candidates, transients, warnings } = run('harrow-rider.yaml', [
+    'candidates=[{name: pi-droop2, kind: pi, design: {droop_kmh: 2, grade_step_pct: 6, damping: 0.8, at_kmh: 60}}]',
+    'requirements=[]',
+    'scheme=fast',
+  ]);
+  const [{ result, figures }] = candidates as [(typeof candidates)[number]];
+  expect(result.status).toBe('completed');
+  expect(figures.command_step_pct).toBeLessThan(0.5);
+  expect(figures.engage_sag_kmh).toBeLessThan(0.1);
+  const ends = result.holdEvents!.filter(({ kind, cause }) => kind === 'ended' && cause === 'bend');
+  expect(ends).toHaveLength(bends!.stops.length);
+  // The stops on the climb, each braked for at 2 m/s2, at no more than 2.5 m/s2 to the side.
+  for (const { from, to, curvature } of bends!.bends) {
+    const { edge, size, speedMax } = result.bins;
+    for (let i = 0; i < size; i++)
+      if (edge[i]! >= from && edge[i + 1]! <= to)
+        expect(speedMax[i]! * speedMax[i]! * curvature).toBeLessThan(2.5 * 1.05);
+  }
+  expect(warnings.filter(({ code }) => code === 'hold-does-not-belong')).toHaveLength(bends!.unfit.length);
+  expect(transients.shown.map(({ event }) => event.kind)).toContain('override_ended');
+});

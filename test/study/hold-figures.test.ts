@@ -76,10 +76,12 @@ describe('figures of the hold', () => {
       measure('engaged', 100, { commandStep: 0.02 }),
       measure('override_ended', 200, { commandStep: 0.05 }),
       measure('ended', 300, { commandStep: 0.8 }),
+      measure('override_ended', 400, { commandStep: { none: 'hold did not come back first' } }),
     ];
     const step = figure('command_step_pct', { measures });
     expectClose(step.value as number, 5, 1e-12);
     expect(step.at).toBe(200);
+    expect(step.open).toBeUndefined();
   });
 
   it('add up the time with hold off, and count what rules ended', () => {
