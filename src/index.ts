@@ -38,10 +38,13 @@ export {
 } from './report/identify/render-identification.ts';
 export { junitXml } from './report/junit-xml.ts';
 export { renderReport } from './report/render-report.ts';
+export { renderTune } from './report/tune/render-tune.ts';
+export { tuneJson } from './report/tune/tune-json.ts';
 export type { ProfileOptions, RoadOptions } from './road/options.ts';
 export type { Road } from './road/road.ts';
 export { roadOfProfile } from './road/road-of-profile.ts';
 export { roadOfTrack } from './road/road-of-track.ts';
+export { addProposals } from './run/add-proposals.ts';
 export type {
   CoastDownIdentification,
   Identification,
@@ -58,6 +61,8 @@ export { type CaseRun, type RunRequest, runCase, runWithoutMatrix } from './run/
 export { plansOfCell, runCell } from './run/run-cell.ts';
 export type { CandidateResult, InputFile, RunResult } from './run/run-result.ts';
 export { SCHEMA_VERSION, TOOL_VERSION } from './run/tool-version.ts';
+export { tuneCase } from './run/tune-case.ts';
+export type { TunedCandidate, TuneResult } from './run/tune-result.ts';
 export { withMatrix } from './run/with-matrix.ts';
 export { demandOf } from './study/demand.ts';
 export { FIGURES, type FigureRow } from './study/figure-table.ts';

@@ -17,6 +17,7 @@ const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> }
   road: async () => (await import('./road-command.ts')).roadCommand,
   compare: async () => (await import('./compare-command.ts')).compareCommand,
   identify: async () => (await import('./identify-command.ts')).identifyCommand,
+  tune: async () => (await import('./tune-command.ts')).tuneCommand,
   new: async () => (await import('./new-command.ts')).newCommand,
   schema: async () => (await import('./schema-command.ts')).schemaCommand,
 };

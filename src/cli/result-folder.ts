@@ -25,7 +25,7 @@ const STAGE = /^\.ridgehold-(\d+)$/;
 const OURS = /^(?:charts\/)?[a-z0-9][a-z0-9._-]*\.(?:html|json|csv|geojson|svg|png)$/i;
 
 /** The marks of whole results of the commands, which may share a folder. */
-const MARKS = ['summary.json', 'road.json', 'compare.json', 'identify.json'];
+const MARKS = ['summary.json', 'road.json', 'compare.json', 'identify.json', 'tune.json'];
 
 /**
  * Refuses, before the work begins, a folder that could not be written: nothing is changed.

@@ -18,6 +18,7 @@ import { checkJunitFile } from './junit-file.ts';
 import { matrixLines } from './matrix-lines.ts';
 import { pngRenderer, pngWidthOf } from './png-renderer.ts';
 import { ProgressBar } from './progress-bar.ts';
+import { refuseTrack } from './refuse-track.ts';
 import { requirementLines } from './requirement-lines.ts';
 import { checkFolder, type ResultFile, writeResult } from './result-folder.ts';
 import { runCells } from './run-cells.ts';
@@ -94,16 +95,6 @@ function threadsOf(text: string | undefined): number | null {
       allowed: `a whole number from 1 to ${MOST_THREADS}`,
     });
   return count;
-}
-
-function refuseTrack(path: string): void {
-  if (!/\.(?:gpx|csv|geojson)$/i.test(path)) return;
-  throw new InputError({
-    code: 'not-a-case',
-    place: { file: path },
-    message: `is a track, not a case; a track alone goes to: ridgehold road ${path}`,
-    allowed: 'a case in YAML or JSON that names the track',
-  });
 }
 
 function statusOf(run: RunResult): number {

@@ -17,7 +17,7 @@ export function answerPart(view: TuneView): Section {
   const ofCase = view.tuned.filter(({ proposal, keeps }) => proposal === null && keeps !== null);
   const { chosen, result } = view;
   const body = html`<div class="answer ${look}"><p class="standing"><span aria-hidden="true">${mark}</span> ${words}</p><p class="sentence">${sentence}</p>${ofCase.length > 0 && html`<ul class="keys">${ofCase.map((one) => standingOf(one, view))}</ul>`}</div>
-${chosen !== null && html`<p class="note"><code>ridgehold tune ${result.caseName}.yaml --add ${chosen.name}</code> puts ${chosen.name} into the case as a candidate; no other byte of the file changes. <code>ridgehold run</code> then finds the figures that stand here.</p>`}
+${chosen !== null && html`<p class="note"><code>ridgehold tune ${result.caseName}.yaml --add best</code> puts ${chosen.name} into the case as a candidate; no other byte of the file changes. <code>ridgehold run</code> then finds the figures that stand here.</p>`}
 <p class="caution"><strong>A simulation is no approval to ride.</strong> Margins are those of a linear loop with the vehicle as its file has it: noise, slack, limits and a vehicle that differs take from them. Local rules, type approval and qualified people come first: <a href="#method-cautions">all cautions</a>.</p>`;
   return { id: 'answer', number: 1, title: 'The answer', body };
 }
