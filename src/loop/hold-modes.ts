@@ -36,6 +36,7 @@ export function holdModes(machine: Machine, plan: LoopPlan, log: HoldLog): HoldM
   const resumeRamp =
     supervisor === undefined ? (machine.controller.ramp ?? RESUME_RAMP) : supervisor.resumeRamp;
   const resumesAfter = plan.rider.resumesAfter ?? null;
+  const locked = plan.controller.kind === 'locked';
   const servo = plan.vehicle.actuator.engagesFrom === 'rest';
   const isOff = (): boolean => s[at.HOLD_MODE] >= at.BY_HAND;
   const from = (time: number): number => s[at.TICK] + Math.max(1, ticksOf(machine, time));
@@ -48,14 +49,16 @@ export function holdModes(machine: Machine, plan: LoopPlan, log: HoldLog): HoldM
   };
   const takeOver: HoldModes['takeOver'] = (takes, cause) => {
     if (isOff()) setServo(closedThrottle(p), -1);
+    // A locked throttle is locked now, for the speed that was measured last; a controller engages at that of its next step.
+    const target = locked && takes === at.ENGAGES ? s[BUS_MEASURED] : s[BUS_TARGET];
     s[at.HOLD_MODE] = at.ENGAGED;
-    s[at.HOLD_TAKES] = takes;
+    s[at.HOLD_TAKES] = locked ? at.RESUMES : takes;
     s[at.HOLD_RESUMES] = 0;
     s[at.BRAKE_REFERENCE] = Number.POSITIVE_INFINITY;
-    setTarget(s, s[BUS_TARGET], takes === at.RESUMES ? resumeRamp : null, p[at.P_SAMPLE]);
-    if (plan.controller.kind === 'locked') {
+    setTarget(s, target, takes === at.RESUMES ? resumeRamp : null, p[at.P_SAMPLE]);
+    if (locked) {
       markLock(machine, plan);
-      lockThrottle(machine, plan, takes === at.ENGAGES ? s[BUS_MEASURED] : s[BUS_TARGET]);
+      lockThrottle(machine, plan, target);
     }
     log.open(takes === at.ENGAGES ? 'engaged' : 'resumed', cause);
   };

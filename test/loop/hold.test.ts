@@ -454,5 +454,6 @@ both('a locked throttle (%s)', (scheme) => {
     const i = sampleOf(only('engaged'));
     expectClose(series.command[i]!, series.command[i - 1]!, 1e-9);
     expectClose(series.speed[series.size - 1]!, 14, 1e-6);
+    expectClose(only('engaged').setSpeed, 14, 1e-9);
   });
 });
