@@ -41,7 +41,7 @@ export interface LoopScan<L extends ScannableLoop> {
   sensitivity(gains: Gains): number;
 }
 
-/** Lowest frequency that is scanned [rad/s]: a third of a day for a turn. */
+/** Lowest frequency that is scanned [rad/s]: a quarter of a day for a turn. What an integral lets grow more slowly counts as still. */
 const SLOWEST = 3e-4;
 const STEPS = 800;
 /** Steps of the quarter circle around rest, s = 0, on which an integrator is passed. */
@@ -66,7 +66,10 @@ export function loopScan<L extends ScannableLoop>(loop: L): LoopScan<L> {
   };
   const plant = column((place) => loop.plantAt(place));
   const integrator = column((place) => loop.integratorAt(place));
-  const openOutside = loop.plantPoles.filter((pole) => pole.re > 0 && sizeOfComplex(pole) > SLOWEST).length;
+  const rest = loop.plantAt(loop.placeAt(complex(0))).re;
+  const running = loop.plantPoles.filter((pole) => pole.re > 0);
+  const openOutside = running.filter((pole) => sizeOfComplex(pole) > SLOWEST).length;
+  const slowOutside = running.length - openOutside;
   const re = new Float64Array(size);
   const im = new Float64Array(size);
 
@@ -86,14 +89,20 @@ export function loopScan<L extends ScannableLoop>(loop: L): LoopScan<L> {
       im[i] = cRe * plant.im[i]! + cIm * plant.re[i]!;
     }
   }
-  const stable = (): boolean => closedPolesOutside(re, im, openOutside) === 0;
+  function stable({ kp, ki }: Gains): boolean {
+    if (closedPolesOutside(re, im, openOutside) !== 0) return false;
+    if (ki !== 0) return true;
+    // Without an integral, one pole may run away more slowly than the curve passes rest: 1 + L changes sign there.
+    const turns = 1 + kp * rest < 0 !== 1 + re[0]! < 0;
+    return turns === (slowOutside % 2 === 1);
+  }
 
   return {
     loop,
     margins(gains) {
       scan(gains);
-      if (!stable()) return { stable: false, figures: null };
-      const atRest = re[0]!;
+      if (!stable(gains)) return { stable: false, figures: null };
+      const atRest = gains.kp * rest;
       const onBorder = { frequency, re: re.slice(ARC), im: im.slice(ARC) };
       const figures = marginsOfScan(onBorder, (w) => loop.openLoop(gains, w));
       // Without an integral, a vehicle that runs away by itself is held only from this gain on.
@@ -105,7 +114,7 @@ export function loopScan<L extends ScannableLoop>(loop: L): LoopScan<L> {
     },
     sensitivity(gains) {
       scan(gains);
-      if (!stable()) return Number.POSITIVE_INFINITY;
+      if (!stable(gains)) return Number.POSITIVE_INFINITY;
       let greatest = 1;
       for (let i = ARC; i < size; i++) greatest = Math.max(greatest, sensitivityOf(re[i]!, im[i]!));
       return greatest;
