@@ -57,7 +57,7 @@ export function identifyCoastDown(
             mass: masses.mass.value,
             rotatingMass: masses.rotating.value,
             provenance,
-            massWords: `Given: ${masses.mass.value} kg loaded (${masses.mass.from}), ${masses.rotating.value} kg of it as if it turned with the wheels (${masses.rotating.from}).`,
+            massWords: `Given: ${masses.mass.value} kg loaded (${masses.mass.from}); what turns with the wheels counts for ${masses.rotating.value} kg more (${masses.rotating.from}).`,
           })
         : withIdentified(vehicle, { cda: fit.cda.value, crr: fit.crr.value, mass: null, provenance }),
   };

@@ -6,7 +6,7 @@ import { vehicleOf } from '../case/vehicle-of.ts';
 import { vehicleOfCase } from '../case/vehicle-of-case.ts';
 import { placeOf } from '../case/yaml-source.ts';
 import { FEWEST_PIECES, fitRide } from '../identify/fit-ride.ts';
-import type { LoggedRun } from '../identify/read-log.ts';
+import { type LoggedRun, readLog } from '../identify/read-log.ts';
 import type { FittedUnknown, RideFit, RideStretch, RideUnknown, RideVehicle } from '../identify/ride.ts';
 import { InputError } from '../problems/input-error.ts';
 import { layRide } from '../study/lay-ride.ts';
@@ -21,7 +21,7 @@ import { InputLog } from './input-log.ts';
 import { airOf } from './known-quantities.ts';
 import { logNames, numberWords } from './provenance.ts';
 import { rideFitWarnings } from './ride-fit-warnings.ts';
-import { stretchesOfLog, stretchesOnRoad } from './ride-stretches.ts';
+import { stretchesOfLog, stretchesOfLogOnRoad, stretchesOnRoad } from './ride-stretches.ts';
 import { roadOfCase } from './road-of.ts';
 import { TOOL_VERSION } from './tool-version.ts';
 
@@ -38,6 +38,8 @@ interface Held {
   readonly given: readonly GivenNumber[];
   readonly roadWords: string;
   readonly airAssumed: boolean;
+  /** The log has the power at the wheel. */
+  readonly byPower: boolean;
 }
 
 /**
@@ -67,7 +69,7 @@ export function identifyRide(
       return `${one.name} ${numberWords(one.estimate, UNITS[one.name])}; it was ${Number(one.was.toPrecision(5))}${left}`;
     }),
   ];
-  const byPower = runs?.[0]?.wheelPower !== undefined && runs[0].wheelPower !== null;
+  const { byPower } = held;
   return {
     kind: 'ride',
     toolVersion: TOOL_VERSION,
@@ -118,18 +120,24 @@ function onRoadOfCase(request: IdentifyRequest, log: InputLog): Held {
   const document = readCaseFile(decodeText(files.read(file), file), file);
   const vehicleDocument = vehicleDocumentOf(request, document, files, log);
   const vehicle = vehicleOfCase(document, vehicleDocument);
-  refuseShifts(document);
   const road = roadOfCase(document, files, file, placeOf(document.source, ['track', 'file']));
-  const ride = layRide(readRide({ name, bytes }), road, name, name);
+  const text = decodeText(bytes, name);
+  const powered = hasWheelPower(text) ? readLog(text, name) : null;
+  if (powered === null) refuseShifts(document);
+  const laid = powered === null ? layRide(readRide({ name, bytes }), road, name, name) : null;
   log.files.push(...files.files);
   const segments = segmentsOf(document);
   return {
     document: vehicleDocument,
     vehicle,
-    stretches: stretchesOnRoad(ride, road, vehicle, name),
+    stretches:
+      laid === null
+        ? powered!.flatMap((run) => stretchesOfLogOnRoad(run, road, vehicle))
+        : stretchesOnRoad(laid, road, vehicle, name),
+    byPower: powered !== null,
     segment: segments.by === 'length' ? segments.length : SEGMENT,
     given: massesGiven(vehicle, vehicleDocument),
-    roadWords: `the road of ${file.split(/[\\/]/).at(-1)}, the ride laid on it by ${ride.laidBy}`,
+    roadWords: `the road of ${file.split(/[\\/]/).at(-1)}${laid === null ? '' : `, the ride laid on it by ${laid.laidBy}`}`,
     airAssumed: false,
   };
 }
@@ -152,6 +160,10 @@ function vehicleDocumentOf(
   const bytes = files.read(vehicleFile, placeOf(source, ['vehicle']));
   return readVehicleFile(decodeText(bytes, vehicleFile), vehicleFile);
 }
+
+/** Whether the header names a power at the wheel, which the readers of tracks do not know. */
+const hasWheelPower = (text: string): boolean =>
+  /\bwheel_power_kw\b/.test(text.trimStart().split(/[\r\n]/, 1)[0]!);
 
 /** Between shifts nobody logged the gear. */
 function refuseShifts({ file, source }: CaseDocument): void {
@@ -196,6 +208,7 @@ function byItsColumns(request: IdentifyRequest, runs: readonly LoggedRun[], log:
     given: [...massesGiven(vehicle, document), ...air.given],
     roadWords: `the log's own ${runs[0]!.grade === null ? 'elevation' : 'grade'}${windy ? ' and headwind' : ', in still air'}`,
     airAssumed: air.assumed,
+    byPower: runs.every(({ wheelPower }) => wheelPower !== null),
   };
 }
 

@@ -110,10 +110,11 @@ export function airOf({ airTemperatureC, airPressureHpa, airDensityKgM3 }: Ident
     isDefault: airPressureHpa === undefined,
   };
   const assumed = temperature.isDefault || pressure.isDefault;
+  const both = temperature.isDefault && pressure.isDefault;
   return {
     air: airOfWeather(fromCelsius(temperature.value), fromHpa(pressure.value)),
     given: [temperature, pressure],
-    words: `${temperature.value} deg C, ${pressure.value} hPa${assumed ? ', assumed in part' : ''}`,
+    words: `${temperature.value} deg C, ${pressure.value} hPa${assumed ? (both ? ', assumed' : ', assumed in part') : ''}`,
     assumed,
   };
 }

@@ -4,7 +4,8 @@ import type { RideStretch } from '../identify/ride.ts';
 import { localRegression } from '../numeric/local-regression.ts';
 import { runningIntegral } from '../numeric/running-integral.ts';
 import { InputError } from '../problems/input-error.ts';
-import { valueAt } from '../road/lookup.ts';
+import { type RoadColumn, valueAt } from '../road/lookup.ts';
+import { matchPositions } from '../road/match-positions.ts';
 import type { Road } from '../road/road.ts';
 import type { LoggedRide } from '../study/logged-ride.ts';
 import { derateFactor } from '../vehicle/derating.ts';
@@ -48,19 +49,11 @@ export function stretchesOnRoad(
   file: string,
 ): readonly RideStretch[] {
   if (ride.throttle === null) throw noDrive(file, 'throttle_pct beside the places');
-  const along = (
-    column: 'elevation' | 'grade' | 'headwind' | 'crosswind' | 'airDensity' | 'airTemperature',
-  ) => ride.distance.map((x) => valueAt(road, column, x));
   const rows: RideRows = {
+    ...roadAlong(road, ride.distance),
     time: ride.time,
     speed: ride.speed,
     place: ride.distance,
-    elevation: along('elevation'),
-    grade: along('grade'),
-    headwind: along('headwind'),
-    crosswind: along('crosswind'),
-    airDensity: along('airDensity'),
-    airTemperature: along('airTemperature'),
     throttle: ride.throttle,
     wheelPower: null,
   };
@@ -68,6 +61,66 @@ export function stretchesOnRoad(
     ride.gaps.some(({ from, to }) => ride.distance[i]! < to && ride.distance[i + 1]! > from) ||
     ride.pauses.some(({ at }) => ride.distance[i]! <= at && ride.distance[i + 1]! >= at);
   return cut(rows, vehicle, inGap);
+}
+
+/**
+ * A ride with its own speed and its power at the wheel on the road of a case: by position where both have positions, else
+ * by the distances of the log from the start of the driven road.
+ *
+ * @throws InputError `ride-off-the-road` where the log does not say its place, or hardly any of it lies on the road
+ */
+export function stretchesOfLogOnRoad(run: LoggedRun, road: Road, vehicle: Vehicle): readonly RideStretch[] {
+  const place = placesOnRoad(run, road);
+  const on = Int32Array.from(place.keys()).filter((i) => !Number.isNaN(place[i]!));
+  if (on.length < FEWEST_ROWS)
+    throw new InputError({
+      code: 'ride-off-the-road',
+      place: { file: run.file },
+      message: 'the logged ride covers too little of the road',
+      found: `${on.length} of ${place.length} rows on it`,
+      allowed: 'distance_m from the start of the driven road, or lat_deg and lon_deg along it',
+    });
+  const pick = (values: Float64Array): Float64Array => Float64Array.from(on, (i) => values[i]!);
+  const along = pick(place);
+  const rows: RideRows = {
+    ...roadAlong(road, along),
+    time: pick(run.time),
+    speed: pick(run.speed),
+    place: along,
+    throttle: run.throttle === null ? null : pick(run.throttle),
+    wheelPower: run.wheelPower === null ? null : pick(run.wheelPower),
+  };
+  return cut(rows, vehicle, (i) => along[i + 1]! < along[i]!);
+}
+
+function placesOnRoad({ distance, latitudeDeg, longitudeDeg, time }: LoggedRun, road: Road): Float64Array {
+  const end = road.distance[road.size - 1]!;
+  if (
+    latitudeDeg !== null &&
+    longitudeDeg !== null &&
+    road.latitudeDeg !== null &&
+    road.longitudeDeg !== null
+  ) {
+    const line = { ...road, latitudeDeg: road.latitudeDeg, longitudeDeg: road.longitudeDeg };
+    return matchPositions(line, latitudeDeg, longitudeDeg).along;
+  }
+  return distance?.map((x) => (x >= 0 && x <= end ? x : Number.NaN)) ?? time.map(() => Number.NaN);
+}
+
+/** What a road has at places. */
+function roadAlong(
+  road: Road,
+  place: Float64Array,
+): Pick<RideRows, 'elevation' | 'grade' | 'headwind' | 'crosswind' | 'airDensity' | 'airTemperature'> {
+  const along = (column: RoadColumn): Float64Array => place.map((x) => valueAt(road, column, x));
+  return {
+    elevation: along('elevation'),
+    grade: along('grade'),
+    headwind: along('headwind'),
+    crosswind: along('crosswind'),
+    airDensity: along('airDensity'),
+    airTemperature: along('airTemperature'),
+  };
 }
 
 /**

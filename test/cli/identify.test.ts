@@ -119,6 +119,7 @@ test.each([
   [['--air-temperature-c', '200'], "--air-temperature-c cannot be '200'", '-40 to 55 deg C'],
   [['--kind', 'crash'], "--kind cannot be 'crash'", 'coast-down, step, ride'],
   [['--fit', 'cda_m2,colour'], "--fit cannot be 'cda_m2,colour'", 'cda_m2, crr, mass_kg'],
+  [['--fit', 'crr'], '--fit has no use for a coast-down', '--mass-kg'],
   [['-o', 'vehicle.json'], "--out cannot be 'vehicle.json'", '.yaml or .yml'],
 ])('an option that is none is refused: %j', (options, says, allowed) => {
   const ended = identify(log('coast-down'), '--rotating-kg', '9', '--mass-kg', '215', ...options);

@@ -154,3 +154,52 @@ describe('page and data of every kind', () => {
     expect(json.inputs[0].name).toBe(`logs/gallop-field-${kind === 'step' ? 'steps' : kind}.csv`);
   });
 });
+
+describe('what a kind of log has no use for', () => {
+  test.each<[string, Partial<IdentifyRequest>, string]>([
+    ['steps', { vehicle }, '--vehicle has no use for a step test (found --vehicle; allowed: the logs alone)'],
+    ['coast-down', { massKg: 215, fit: ['crr'] }, '--fit has no use for a coast-down'],
+    [
+      'ride',
+      { vehicle, massKg: 230 },
+      '--mass-kg has no use for a ride, whose masses are those of the vehicle',
+    ],
+    [
+      'ride',
+      { case: { file: 'harrow-gap-ridden.yaml', read }, airTemperatureC: 3 },
+      '--air-temperature-c has no use beside a case',
+    ],
+  ])('is refused: %s', (log, more, words) => {
+    expect(() => identified(log, more)).toThrow(words);
+  });
+});
+
+test('a ride with its power lies on the road of a case by its distances', () => {
+  const rows = new TextDecoder().decode(read('logs/gallop-field-ride.csv')).trim().split('\n');
+  const points = rows.slice(1).map((row) => row.split(','));
+  // The road as surveyed: the logged heights are those of the road but for a drift of 0.2 m.
+  const track = `distance_m,elevation_m\n${points.map(([, x, , z]) => `${x},${z}`).join('\n')}\n`;
+  const files: Record<string, string> = {
+    'case.yaml': `track: {file: track.csv}
+road: {elevation_source: barometric}
+air: {density_kg_m3: 1.2266}
+vehicle: vehicle.yaml
+hold: {set_speed_kmh: 60}
+candidates: [{name: locked, kind: locked, throttle: level}]
+`,
+    'track.csv': track,
+    'vehicle.yaml':
+      'mass: {kerb_kg: 140, rider_kg: 75, rotating_kg: 9}\nroad_load: {cda_m2: 0.5, crr: 0.02}\n',
+    'log.csv': `${[
+      'time_s,distance_m,speed_kmh,wheel_power_kw',
+      ...points.map(([t, x, v, , p]) => [t, x, v, p].join(',')),
+    ].join('\n')}\n`,
+  };
+  const text = (name: string) => new TextEncoder().encode(files[name]);
+  const result = identifyLogs({ logs: ['log.csv'], read: text, case: { file: 'case.yaml', read: text } });
+  if (result.kind !== 'ride') throw new Error(result.kind);
+  const [cda, crr] = result.fit.unknowns;
+  expectClose(cda!.estimate.value, TRUTH.cda, 0.03);
+  expectClose(crr!.estimate.value, TRUTH.crr, 0.003);
+  expect(result.driveWords).toContain('power at the wheel');
+});

@@ -15,6 +15,7 @@ import { table } from '../sections/table.ts';
 import { coastDownMethod } from './coast-down-method.ts';
 import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
 import { givenTable } from './given-table.ts';
+import { shortName } from './short-name.ts';
 
 /** Sections 2 to 6 of a coast-down. */
 export function coastDownSections(result: CoastDownIdentification, speed: SpeedUnit): readonly Section[] {
@@ -123,10 +124,6 @@ ${table(
   ]),
 )}`;
 }
-
-/** Of a single log the runs alone. */
-const shortName = (name: string, logs: readonly string[]): string =>
-  logs.length === 1 && name.startsWith(`${logs[0]} `) ? name.slice(logs[0]!.length + 1) : name;
 
 function formsBody({ measured, atReference, air }: CoastDownIdentification): Html {
   const row = (name: string, { f0, f2, airDensity }: RoadLoadForm): readonly string[] => {

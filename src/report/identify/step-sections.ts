@@ -13,6 +13,7 @@ import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
+import { shortName } from './short-name.ts';
 import { stepMethod } from './step-method.ts';
 
 /** Sections 2 to 6 of a step test. */
@@ -43,7 +44,7 @@ function estimatesBody({ fit }: StepIdentification): Html {
 <p class="note">Of several steps the mean, its interval from their scatter; of a single step its own. The numbers are those of the whole chain from throttle to measured speed, at the speed, gear, load and slope of the test.</p>`;
 }
 
-function stepsBody({ fit }: StepIdentification, speed: SpeedUnit): Html {
+function stepsBody({ fit, logs }: StepIdentification, speed: SpeedUnit): Html {
   return html`${fit.steps.map((step, i) => stepFigure(step, i, speed))}
 ${table(
   'Steps',
@@ -59,7 +60,7 @@ ${table(
     { head: `rms left / ${speed.axis}`, number: true },
   ],
   fit.steps.map((step) => [
-    step.record.name,
+    shortName(step.record.name, logs),
     `${fixed(toPct(step.record.from), 1)} to ${fixed(toPct(step.record.to), 1)} %`,
     speedText(step.before, speed),
     speedText(step.settled, speed),
