@@ -29,7 +29,37 @@ const geared: Vehicle = {
     gearbox: { kind: 'clutch', open: 0.3, resume: 0.5 },
   },
 };
+const automatic: Vehicle = {
+  ...geared,
+  drive: {
+    ...geared.drive,
+    gear: 1,
+    gearbox: {
+      kind: 'automatic',
+      throttle: Float64Array.of(0, 1),
+      upSpeed: Float64Array.of(230, 320),
+      downSpeed: Float64Array.of(140, 190),
+      gap: 0.3,
+      dwell: 1.5,
+    },
+  },
+};
+/** Regenerates below throttle 0 with up to 200 N. */
+const electric: Vehicle = {
+  ...laggedVehicle,
+  drive: {
+    ...forceOf({ peakForce: 500, lag: 0.1 }),
+    kind: 'electric',
+    throttleEdges: Float64Array.of(0),
+    cells: Float64Array.of(0, 0, 200, 0, 0, 0, 0, 0, 500, 0, 0, 0),
+    losses: new Float64Array(12),
+    throttleMin: -1,
+    regenerationForce: 200,
+  },
+};
 const vehicles: readonly Vehicle[] = [
+  automatic,
+  electric,
   referenceMotorcycle,
   laggedVehicle,
   geared,
@@ -167,7 +197,7 @@ const plan = (of: readonly Vehicle[], most: number): fc.Arbitrary<LoopPlan> =>
                 { distance: 1400, gear: 2 },
               ]
             : [],
-          acts: does,
+          acts: vehicle === automatic ? does.filter(({ does: deed }) => deed.kind !== 'clutch') : does,
           resumesAfter,
         },
         timeLimit: 400,
