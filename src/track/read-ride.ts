@@ -65,8 +65,11 @@ export function readRide(
     });
   const pick = (values: Float64Array | null): Float64Array | null =>
     values === null ? null : pickPoints(values, kept);
-  const finite = (values: Float64Array | null): Float64Array | null =>
-    values?.map((value) => (Number.isFinite(value) ? value : Number.NaN)) ?? null;
+  // A column that is there and empty is none.
+  const known = (values: Float64Array | null): Float64Array | null =>
+    values?.some(Number.isFinite) === true
+      ? values.map((value) => (Number.isFinite(value) ? value : Number.NaN))
+      : null;
   const start = time[kept[0]!]!;
   return {
     name: raw.name,
@@ -76,8 +79,8 @@ export function readRide(
     distance: pick(raw.distance),
     latitudeDeg: pick(raw.latitudeDeg),
     longitudeDeg: pick(raw.longitudeDeg),
-    speed: finite(pick(raw.speed)),
-    throttle: finite(pick(raw.throttle)),
+    speed: known(pick(raw.speed)),
+    throttle: known(pick(raw.throttle)),
     leftOut: raw.size - kept.length,
   };
 }

@@ -121,6 +121,47 @@ describe('a case with a logged ride', () => {
   });
 });
 
+describe('a ride that a candidate itself would have logged', () => {
+  const hill = {
+    track: {
+      profile: [900, 500, 1400].map((length_m, i) => ({ length_m, grade_pct: i === 1 ? 9 : 0 })),
+      vertical_curve_m: 60,
+    },
+    candidates: [{ name: 'pi', kind: 'pi', kp_pct_per_kmh: 3, ti_s: 9 }],
+    logged_rides: [],
+  };
+  const { full } = run('', { ...hill, output: { series: 'full' } }).candidates[0]!;
+  const samples = [...full!.time.keys()].filter((i) => i % 10 === 0);
+  const rows = samples.map((i) =>
+    [full!.time[i], full!.distance[i], 3.6 * full!.speed[i]!, 100 * full!.actuator[i]!].join(','),
+  );
+  const result = run(`time_s,distance_m,speed_kmh,throttle_pct\n${rows.join('\n')}\n`, {
+    ...hill,
+    logged_rides: [{ name: 'ridden', file: 'ride.csv' }],
+  });
+  const [ride] = result.loggedRides;
+
+  it.each([
+    ['time_s', 0.5],
+    ['within_band_pct', 0.5],
+    ['rms_error_kmh', 0.02],
+    ['p95_abs_error_kmh', 0.05],
+    ['mean_error_kmh', 0.01],
+    ['worst_low_kmh', 0.01],
+    ['worst_high_kmh', 0.01],
+    ['time_lost_s', 0.02],
+    ['throttle_mean_pct', 0.2],
+  ])('has its %s', (name, tolerance) => {
+    const own = ride!.beside[0]!.figures[name] as number;
+    expectClose(ride!.figures[name] as number, own, tolerance);
+  });
+
+  it('is off its set speed on the hill, or these figures would say nothing', () => {
+    expect(ride!.figures.worst_low_kmh as number).toBeLessThan(-3);
+    expectClose(ride!.meanSpeed, ride!.beside[0]!.meanSpeed, 0.01);
+  });
+});
+
 describe('the demo of a ride', () => {
   const routes = new URL('../../routes/', import.meta.url);
   const result = runCase({

@@ -36,6 +36,12 @@ describe('a logged ride', () => {
     expectClose(ride.speed![5]!, 40 / 3.6, 1e-12);
   });
 
+  it('has no speed or throttle where the column is empty throughout', () => {
+    const rows = Array.from({ length: 10 }, (_, i) => `${i},${20 * i},,nan`);
+    const ride = read(`time_s,distance_m,speed_kmh,throttle_pct\n${rows.join('\n')}\n`);
+    expect([ride.speed, ride.throttle]).toEqual([null, null]);
+  });
+
   it('is read from GPX with times', () => {
     const points = Array.from(
       { length: 10 },

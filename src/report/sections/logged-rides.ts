@@ -7,7 +7,7 @@ import { rideKey } from '../charts/ride-line.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { figureTextBeside } from '../model/figure-text.ts';
 import { gapWords, laidWords, pauseWords } from '../model/ride-words.ts';
-import type { RideView, View } from '../model/view.ts';
+import type { CandidateView, RideView, View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { bandText, NO_VALUE, placeText, speedText } from '../quantity.ts';
 import { table } from './table.ts';
@@ -18,7 +18,7 @@ export function loggedRides(view: View, ride: RideView): Html {
     { head: 'over the stretches of the log' },
     { head: html`<span class="who">${rideKey(ride, PAGE_PAINT)} ${ride.name}, logged</span>` },
     ...view.candidates.map((candidate) => ({
-      head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>`,
+      head: html`<span class="who">${lineKey(candidate, PAGE_PAINT)} ${candidate.name}</span>${endedEarly(candidate) && ' †'}`,
     })),
   ];
   const beside = view.candidates.map(
@@ -31,8 +31,10 @@ export function loggedRides(view: View, ride: RideView): Html {
   return html`<h3 id="ride-${ride.name}">Logged ride ${ride.name}</h3>
 <p>${laidWords(view, ride)}${pauseWords(ride)}${gapWords(ride)}</p>
 ${table(`Logged ride ${ride.name} beside the candidates`, columns, rows, view.candidates.length > 3 ? 'dense' : 'plain')}
-<p class="note">A logged ride is no candidate: no requirement applies to it, and no hill is explained by it. Figures of the candidates here are those over the same stretches, so that they differ from the table above.</p>`;
+<p class="note">A logged ride is no candidate: no requirement applies to it, and no hill is explained by it. Figures of the candidates here are those over the same stretches, so that they differ from the table above${view.candidates.some(endedEarly) && ', and, behind †, up to where that run ended'}.${ride.laidBy === 'position' && ' Laid by the most likely sequence of places on the road, a hidden Markov model over those within 30\u00a0m of each position (Newson and Krumm 2009, from memory).'}${ride.speedFrom === 'way' && ' Local regression: Cleveland (1979), from memory, with Cauchy weights.'}</p>`;
 }
+
+const endedEarly = ({ result }: CandidateView): boolean => result.status !== 'completed';
 
 function meanSpeedRow(view: View, ride: RideView): HtmlValue[] {
   const text = (speed: number): string => (speed > 0 ? speedText(speed, view.speed) : NO_VALUE);
