@@ -54,6 +54,9 @@ requirements:
   - {id: R-01, figure: within_band_pct, band_kmh: 2, at_least: 95}    # of the time, where the drive can hold the speed
   - {id: R-02, figure: worst_high_kmh, at_most: 5}
 
+# A ride that was logged on this road, beside the candidates: GPX with times, or CSV with time_s, places, and throttle_pct if you like.
+# logged_rides: [{name: monday, file: monday.csv}]
+
 # Every combination of these lists is judged by the requirements too; each list may be left out:
 # matrix:
 #   loads: [solo, own, two_up, {name: with bags, payload_kg: 30}]

@@ -24,11 +24,12 @@ it('says that it is invented', () => {
 it('works with every line that is commented out', () => {
   const uncommented = files
     .get('case.yaml')!
-    .replaceAll(/^( *)# (masks|wind|air|changes|bends|does|supervisor|faults): /gm, '$1$2: ')
+    .replaceAll(/^( *)# (masks|wind|air|changes|bends|does|supervisor|faults|logged_rides): /gm, '$1$2: ')
     .replaceAll(/^# (track: \{profile.*)$/gm, '# $1');
   expect(uncommented).toContain('\nwind: ');
   expect(uncommented).toContain('\n  masks: ');
   expect(uncommented).toContain('\nsupervisor: ');
+  expect(uncommented).toContain('\nlogged_rides: ');
   expect(() => readCaseFile(uncommented, 'case.yaml')).not.toThrow();
   const profile = /^# (track: \{profile.*\})$/m.exec(files.get('case.yaml')!)![1]!;
   expect(() =>
