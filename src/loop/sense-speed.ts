@@ -39,11 +39,13 @@ export function senseSpeed({ s, fittings }: Machine): void {
   if (kind === fit.COUNTED_READING) countPulses(s, f);
   else if (kind === fit.TIMED_READING) timePulses(s, f);
   else s[SENSED_MORE] = speedLate(s, f);
-  s[SENSED_MORE] *= f[fit.F_SCALE];
-  if (f[fit.F_SD] > 0) addNoise(s, f);
-  const reading = s[SENSED_MORE];
-  s[SENSED] = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * before + f[fit.F_NOW] * reading;
-  s[BUS_MEASURED] = s[SENSED];
+  let reading = s[SENSED_MORE] * f[fit.F_SCALE];
+  const sd = f[fit.F_SD];
+  if (sd > 0) reading += sd * normalAt(f, fit.F_NOISE, s[SAMPLES]);
+  const filtered = f[fit.F_KEPT] * s[SENSED] + f[fit.F_BEFORE] * before + f[fit.F_NOW] * reading;
+  s[SENSED] = filtered;
+  s[SENSED_MORE] = reading;
+  s[BUS_MEASURED] = filtered;
   s[SAMPLES] += 1;
 }
 
@@ -59,10 +61,6 @@ function timePulses(s: Float64Array, f: Float64Array): void {
   findPulses(s, f);
   const since = Math.floor((s[SAMPLES] - f[fit.F_DELAY]) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
   s[SENSED_MORE] = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
-}
-
-function addNoise(s: Float64Array, f: Float64Array): void {
-  s[SENSED_MORE] += f[fit.F_SD] * normalAt(f, fit.F_NOISE, s[SAMPLES]);
 }
 
 /** Puts the sensor at rest at the speed and place at which the vehicle is, as if it had come there at that speed. */
