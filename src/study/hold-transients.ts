@@ -34,6 +34,11 @@ interface Followed extends MeasuredTransient {
   readonly series: FullSeries;
 }
 
+/** With its number among the events of its run. */
+interface Kept extends Followed {
+  readonly at: number;
+}
+
 /**
  * What follows every event of the hold of a run, by replay from the nearest checkpoint, every sample looked at.
  *
@@ -57,24 +62,28 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
   const shown: HoldTransient[] = [];
   const leftOut: HoldTransients['leftOut'][number][] = [];
   for (const replayed of candidates) {
-    // Samples of all windows at once would be a run's and more: those that are shown are replayed again.
     const course = courseOfRun(replayed);
-    const followed = eventsOf(replayed).map((at) => ({ at, measure: follow(replayed, course, at).measure }));
-    measures.set(
-      replayed.result,
-      followed.map(({ measure }) => measure),
-    );
-    const kept = new Set<number>();
-    for (const kind of FOLLOWED) {
-      const alike = followed.filter(({ measure }) => measure.event.kind === kind);
-      const worst = alike.toSorted((a, b) => badness(b.measure) - badness(a.measure) || a.at - b.at);
-      for (const { at } of worst.slice(0, MOST_SHOWN)) kept.add(at);
-      if (alike.length > MOST_SHOWN)
-        leftOut.push({ candidate: replayed.name, kind, count: alike.length - MOST_SHOWN });
+    const all: HoldMeasure[] = [];
+    // Samples of all windows at once would be a run's and more: only those of the worst are kept.
+    const worst = new Map(FOLLOWED.map((kind): [HoldEventKind, Kept[]] => [kind, []]));
+    const dropped = new Map<HoldEventKind, number>();
+    for (const at of eventsOf(replayed)) {
+      const followed = { ...follow(replayed, course, at), at };
+      all.push(followed.measure);
+      const { kind } = followed.measure.event;
+      const alike = worst.get(kind) ?? [];
+      alike.push(followed);
+      alike.sort((a, b) => badness(b.measure) - badness(a.measure) || a.at - b.at);
+      if (alike.length <= MOST_SHOWN) continue;
+      alike.pop();
+      dropped.set(kind, (dropped.get(kind) ?? 0) + 1);
     }
-    for (const { at, measure } of followed) {
-      if (!kept.has(at)) continue;
-      const { series, last } = follow(replayed, course, at);
+    measures.set(replayed.result, all);
+    for (const kind of FOLLOWED) {
+      const count = dropped.get(kind);
+      if (count !== undefined) leftOut.push({ candidate: replayed.name, kind, count });
+    }
+    for (const { measure, series, last } of [...worst.values()].flat().sort((a, b) => a.at - b.at)) {
       const picture = thinSeries(series, 0, endOfTail(series, last), PICTURE_ROWS);
       shown.push({ ...measure, words: transientWords(measure), picture });
     }
