@@ -82,6 +82,11 @@ export type {
 export { layRide } from './study/lay-ride.ts';
 export { type CycleSearch, findLimitCycles } from './study/limit-cycles.ts';
 export type { LoggedRide, RidePause } from './study/logged-ride.ts';
+export { type CandidateLoop, type LoopSheet, loopSheet } from './study/loop-sheet.ts';
+export type { OperatingPoint, PointMargins, PointNotHeld } from './study/operating-point.ts';
+export { type OperatingPoints, operatingPoints, type PointGrid } from './study/operating-points.ts';
+export { type PointFigures, pointFigures } from './study/point-figures.ts';
+export { pointMargins } from './study/point-margins.ts';
 export type { CandidateBeside, RideResult } from './study/ride-figures.ts';
 export { type RideLog, readRide } from './track/read-ride.ts';
 export { readTrack } from './track/read-track.ts';

@@ -32,8 +32,10 @@ ${
 <dd>the sensor, in this order: pulses, scale error ${i('ε')}, noise, first-order filter, delay. ${pulseWords(sensor)}</dd>
 <dt>${i('u')} = ${sub('K', 'p')} (${i('b')} ${i('s')} − ${i('y')}) + ${i('I')}, ${i('I')} += ${sub('K', 'i')} ${sub('T', 's')} (${i('s')} − ${i('y')})</dt>
 <dd>the PI law on measured speed ${i('y')} and reference ${i('s')}, set-point weight ${i('b')}, sample time ${sub('T', 's')}, command cut to the range of the throttle; anti-windup as each candidate says</dd>
+<dt>${i('S')} = 1 / (1 + ${i('L')}), ${sub('M', 's')} = max |${i('S')}|, ${i('L')} = ${i('C')}(${i('z')}) ${i('P')}(${i('z')})</dt>
+<dd>the loop on paper: ${i('P')} the exact derivatives of all above at an operating point, with every lag, held over a sample (zero-order hold), dead times exact to parts of a sample; ${i('C')} the law of the candidate. Gain margin: the factor on the gain with which the loop oscillates; phase margin: the lag where |${i('L')}| = 1 with which it does; stability by the turns of 1 + ${i('L')} round 0 (Nyquist). Limits of range and rate, slack and steps have no part in it</dd>
 </dl>
-<p class="small">Sources: longitudinal dynamics as in J. C. Martin et al., J. Appl. Biomech. 14 (1998) 276, with the wind of both directions; ISA air by ISO 2533; anti-windup as in K. J. Åström and T. Hägglund, Advanced PID Control (2006), from memory${traction !== null && '; load transfer as in V. Cossalter, Motorcycle Dynamics, from memory'}.</p>`;
+<p class="small">Sources: longitudinal dynamics as in J. C. Martin et al., J. Appl. Biomech. 14 (1998) 276, with the wind of both directions; ISA air by ISO 2533; anti-windup and margins as in K. J. Åström and T. Hägglund, Advanced PID Control (2006), the sampled loop as in K. J. Åström and B. Wittenmark, Computer-Controlled Systems, both from memory${traction !== null && '; load transfer as in V. Cossalter, Motorcycle Dynamics, from memory'}.</p>`;
 }
 
 /** What the cells of a drive are made from. */
