@@ -5,6 +5,7 @@ import type { TuneDesign, TunePlan } from '../case/tune-of.ts';
 import { type DesignLoop, designLoop } from '../control/design-point.ts';
 import { greatestIntegralGain, trimmed } from '../control/design-rejection.ts';
 import { equalGainSchedule } from '../control/design-schedule.ts';
+import { delayedLag } from '../control/design-simc.ts';
 import { type GainRegion, gainRegion } from '../control/gain-region.ts';
 import { gainsAt } from '../control/gain-schedule.ts';
 import { type LinearController, linearController } from '../control/linear-controller.ts';
@@ -54,6 +55,9 @@ const BETWEEN = 5e-4;
 /** A design that does not come out as it was foreseen is asked for less, in steps of this. */
 const EASE = 1.03;
 const EASES = 25;
+/** A design that does is asked for more, in steps that begin with this. */
+const TIGHTEN = 1.13;
+const NONE_KEEPS = 'no gains of this kind keep the bound at every operating point';
 /** Trials on the road that are looked at with all exactness. */
 const CONFIRMED = 3;
 const BORDER_POINTS = 120;
@@ -85,27 +89,45 @@ export function proposalsOf(context: ProposalContext): Proposals {
   const design = designOf(context, timing);
   let trials: readonly RoadTrial[] = [];
 
-  /** The least value from a foreseen one on whose design keeps the bound. */
-  const eased = (foreseen: number | null, words: string, fileOf: (value: number) => CandidateText): Found => {
+  /** The least value whose design keeps the bound, to a few per cent, sought from a foreseen one. */
+  const tightest = (
+    foreseen: number | null,
+    words: string,
+    fileOf: (value: number) => CandidateText,
+    least = 0,
+  ): Found => {
     if ('none' in design) return design;
-    if (foreseen === null) return { none: 'no gains of this kind keep the bound at every operating point' };
-    let reason = 'no gains of this kind keep the bound at every operating point';
-    for (let i = 0, value = foreseen; i < EASES; i++, value *= EASE) {
+    let reason = NONE_KEEPS;
+    const at = (value: number): CandidateText | null => {
       try {
         const file = fileOf(roundedUp(value));
-        if (keeps(file)) return { file, words: `${words} ${designWords(controllerOf(context, file))}` };
+        return keeps(file) ? file : null;
       } catch (error) {
         if (!(error instanceof InputError)) throw error;
         reason = error.problems.map(({ message }) => message).join('; ');
+        return null;
       }
+    };
+    if (foreseen === null) return { none: reason };
+    let value = foreseen;
+    let file = at(value);
+    for (let i = 1; file === null && i < EASES; i++) {
+      value *= EASE;
+      file = at(value);
     }
-    return { none: reason };
+    if (file === null) return { none: reason };
+    for (let ratio = TIGHTEN; ratio > EASE; ) {
+      const tighter = value / ratio < least ? null : at(value / ratio);
+      if (tighter === null) ratio = Math.sqrt(ratio);
+      else [file, value] = [tighter, value / ratio];
+    }
+    return { file, words: `${words} ${designWords(controllerOf(context, file))}` };
   };
   const name = (way: TuneDesign): string => freeName(`tuned-${way}`, taken);
 
   const ways: Readonly<Record<TuneDesign, () => Found>> = {
     settling: () =>
-      eased(
+      tightest(
         'none' in design ? null : tightestSettling(design, atPoints, plan.overshoot),
         'The shortest settling time that keeps the bound at every operating point.',
         (settling_s) =>
@@ -113,7 +135,7 @@ export function proposalsOf(context: ProposalContext): Proposals {
       ),
     droop: () => {
       const droop = 'none' in design ? null : tightestDroop(design, atPoints, plan.gradeStep, plan.damping);
-      return eased(
+      return tightest(
         droop === null ? null : toKmh(droop),
         'The least droop that keeps the bound at every operating point.',
         (droop_kmh) =>
@@ -125,10 +147,11 @@ export function proposalsOf(context: ProposalContext): Proposals {
       );
     },
     simc: () =>
-      eased(
+      tightest(
         'none' in design ? null : tightestClosedLoop(design, atPoints),
         'The fastest closed loop, no faster than its delay, that keeps the bound at every operating point.',
         (closed_loop_s) => textOfDesign(name('simc'), like, { closed_loop_s }),
+        'none' in design ? 0 : delayedLag(design).delay,
       ),
     rejection: () => {
       const greatest = greatestIntegralGain(region);

@@ -39,7 +39,7 @@ export interface GainMap {
 }
 
 /** Decades below the greatest values that are drawn at most. */
-const DECADES = 3;
+const DECADES = 2;
 const SIGN = 5;
 
 /**
@@ -55,8 +55,8 @@ export function gainMap(map: GainMap, words: Words, canvas: Canvas): Html {
     height: narrow ? 280 : 380,
   };
   const all = [...map.border, ...map.marked, ...map.trials].filter(({ kp, ki }) => kp > 0 && ki > 0);
-  const x = scaleOf(domainOf(all.map(({ kp }) => decadesOf(kp))), box.left, box.left + box.width);
-  const y = scaleOf(domainOf(all.map(({ ki }) => decadesOf(ki))), box.top + box.height, box.top);
+  const x = scaleOf(domainOf(decades(all, 'kp'), decades(map.marked, 'kp')), box.left, box.left + box.width);
+  const y = scaleOf(domainOf(decades(all, 'ki'), decades(map.marked, 'ki')), box.top + box.height, box.top);
   const at = ({ kp, ki }: Gains): Point => [x(decadesOf(kp)), y(decadesOf(ki))];
   const edge = map.border.map(at);
   const floor = box.top + box.height;
@@ -72,12 +72,16 @@ export function gainMap(map: GainMap, words: Words, canvas: Canvas): Html {
   return drawing(canvas, box.top + box.height + BOTTOM_AXIS_HEIGHT, words, body);
 }
 
-/** A little around all values, no more than some decades. */
-function domainOf(values: readonly number[]): [number, number] {
+const decades = (gains: readonly Gains[], of: 'kp' | 'ki'): number[] =>
+  gains.map((one) => decadesOf(one[of]));
+
+/** A little around all values, no more than some decades but for those that are marked. */
+function domainOf(values: readonly number[], marked: readonly number[]): [number, number] {
   const most = values.reduce((a, b) => Math.max(a, b), Number.NEGATIVE_INFINITY);
   const least = values.reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY);
   if (!Number.isFinite(most)) return [-1, 1];
-  return [Math.max(least, most - DECADES) - 0.1, most + 0.12];
+  const lowest = marked.reduce((a, b) => Math.min(a, b), most - DECADES);
+  return [Math.max(least, lowest) - 0.1, most + 0.12];
 }
 
 /** The cheaper the larger. */
@@ -114,7 +118,10 @@ function names(
 ): Html {
   const size = narrow ? 10 : 11;
   const row = size + 3;
-  const placed: { left: number; right: number; y: number }[] = [];
+  const placed = marked.map((one) => {
+    const [cx, cy] = at(one);
+    return { left: cx - 8, right: cx + 8, y: cy };
+  });
   const inside = marked
     .map((one) => ({ one, place: at(one) }))
     .filter(({ place: [cx, cy] }) => cx >= box.left && cy <= box.top + box.height)

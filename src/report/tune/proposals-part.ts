@@ -6,7 +6,7 @@ import { figureLabel, figureText } from '../model/figure-text.ts';
 import { placeOfPoint, sensitivityText } from '../model/point-words.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { NO_VALUE, significant } from '../quantity.ts';
+import { NO_VALUE, significant, trimmed } from '../quantity.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { gainsText } from './tune-answer.ts';
@@ -35,7 +35,7 @@ function costWords({ result: { plan } }: TuneView): string {
   const terms = plan.cost.map(({ figure, weight }) => {
     const { label, unit } = figureLabel(figure);
     const sign = figureRow(figure)?.better === 'higher' ? '\u2212' : '';
-    return `${sign}${significant(weight)} for each ${unit === '1' ? 'unit' : unit} of ${label.toLowerCase()}`;
+    return `${sign}${trimmed(weight, 6)} for each ${unit === '1' ? 'unit' : unit} of ${label.toLowerCase()}`;
   });
   return `The cost is the sum of ${terms.join(' and ')}; less is better.`;
 }
@@ -44,7 +44,7 @@ function figuresTable(view: TuneView): Html {
   const { result, tuned, speed } = view;
   const figures = [...new Set([...result.plan.cost.map(({ figure }) => figure), ...TOLD])];
   const row = (one: TunedView): HtmlValue[] => [
-    html`<span class="who">${tunedKey(one, PAGE_PAINT)} ${one.name === result.chosen ? html`<strong>${one.name}</strong>` : one.name}</span>`,
+    html`<span class="who">${tunedKey(one, PAGE_PAINT)} ${one.name}</span>${one.name === result.chosen && html`<br><span class="small">costs least of the proposals</span>`}`,
     gainsText(one, speed),
     sensitivityCell(one, view),
     isNone(one.cost) ? html`<span title="${one.cost.none}">${NO_VALUE}</span>` : significant(one.cost),

@@ -5,6 +5,7 @@ import { renderPage } from '../page.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { lengthText, significant, type Units } from '../quantity.ts';
 import { loopSection } from '../sections/loop-section.ts';
+import type { Section } from '../sections/section.ts';
 import { answerPart } from './answer-part.ts';
 import { gainMapPart } from './gain-map-part.ts';
 import { proposalsPart } from './proposals-part.ts';
@@ -23,8 +24,11 @@ export interface TuneOptions {
 export function renderTune(result: TuneResult, { units }: TuneOptions): string {
   const view = tuneView(result, units);
   const named = (name: string) => view.tuned.find((one) => one.name === name);
+  const shown = result.sheet.loops.filter(
+    ({ name }) => name === result.chosen || named(name)?.proposal === null,
+  );
   const loop = {
-    sheet: result.sheet,
+    sheet: { ...result.sheet, loops: shown },
     speed: view.speed,
     colourOf: (name: string) => named(name)?.colour ?? 0,
     keyOf: (name: string) => {
@@ -37,7 +41,7 @@ export function renderTune(result: TuneResult, { units }: TuneOptions): string {
     answerPart(view),
     proposalsPart(view),
     ...(result.border.length === 0 ? [] : [gainMapPart(view)]),
-    loopSection(loop),
+    withOthers(loopSection(loop), result.tuned.length - shown.length),
     tuneMethodPart(view),
   ].map((section, i) => ({ ...section, number: i + 1 }));
   return renderPage({
@@ -54,3 +58,12 @@ export function renderTune(result: TuneResult, { units }: TuneOptions): string {
     foot: html`Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the <a href="#method-inputs">inputs</a>. A simulation is no approval to ride.`,
   });
 }
+
+/** Proposals that cost more are told by their margins in the table and in the file alone. */
+const withOthers = (section: Section, count: number): Section =>
+  count === 0
+    ? section
+    : {
+        ...section,
+        body: html`<p>The loops of the case and of the proposal that costs least; those of the other proposals stand in margins.csv.</p>${section.body}`,
+      };

@@ -1,6 +1,6 @@
 import type { TuneResult } from '../../run/tune-result.ts';
 import { isNone } from '../../study/findings.ts';
-import { isThin, placeOfPoint, sensitivityText } from '../model/point-words.ts';
+import { placeOfPoint, sensitivityText } from '../model/point-words.ts';
 import { type SpeedUnit, significant, withUnit } from '../quantity.ts';
 import type { TunedView, TuneView } from './tune-view.ts';
 
@@ -67,9 +67,7 @@ export function worstWords({ loop }: Pick<TunedView, 'loop'>, { result, speed }:
   if (worst === undefined) return '';
   const { margins } = loop.figures[worst]!;
   const place = placeOfPoint(result.sheet.points[worst]!, speed);
-  return margins.stable
-    ? `${sensitivityText(margins.sensitivity)}${isThin(margins) ? ', thin,' : ''} at ${place}`
-    : `unstable at ${place}`;
+  return margins.stable ? `${sensitivityText(margins.sensitivity)} at ${place}` : `unstable at ${place}`;
 }
 
 /** `Kp 12.1 % per km/h, Ti 4.1 s`. */

@@ -19,12 +19,16 @@ export interface TunedView extends TunedCandidate {
   readonly dash: string;
 }
 
-/** Gives each a look of its own, locked throttles that of locked throttles; past the palette's end looks come again. */
+/** Gives each a look of its own, locked throttles that of locked throttles. */
 export function tuneView(result: TuneResult, units: Units): TuneView {
-  let place = 0;
+  const looks = DASHES.length - 1;
+  let place = -1;
   const tuned = result.tuned.map((one): TunedView => {
-    const colour = one.controller.kind === 'locked' ? 0 : 1 + (place++ % (DASHES.length - 1));
-    return { ...one, colour, dash: DASHES[colour]! };
+    if (one.controller.kind === 'locked') return { ...one, colour: 0, dash: DASHES[0] };
+    place++;
+    // Past the palette's end a colour comes again with another dash.
+    const dash = DASHES[1 + ((place + Math.floor(place / looks)) % looks)]!;
+    return { ...one, colour: 1 + (place % looks), dash };
   });
   const chosen = tuned.find(({ name }) => name === result.chosen) ?? null;
   return { result, speed: SPEED_UNITS[units], tuned, chosen };
