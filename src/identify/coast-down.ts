@@ -71,7 +71,7 @@ export interface CoastDownFit {
   readonly grade: Estimate | null;
   /** What a part of the rolling coefficient that grows with speed would be [s/m]; a check of the model, not in it. Null: the speeds do not tell. */
   readonly growth: Estimate | null;
-  /** Degrees of freedom of the intervals. */
+  /** Degrees of freedom of the drag area's interval. */
   readonly degrees: number;
   readonly runs: readonly FittedRun[];
   readonly residuals: CoastResiduals;

@@ -38,8 +38,9 @@ export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): 
     rows = rowsAt(wind);
   }
   const columns = columnsOf(rows, estimatesWind, estimatesGrade);
-  const taken = estimatesWind || estimatesGrade ? 2 : 1;
-  const errors = clusteredErrors(columns, fit, rows.run, taken);
+  const apart = estimatesWind || estimatesGrade;
+  const kinds = Int32Array.from(runs, ({ direction }) => (apart && direction === 'back' ? 1 : 0));
+  const errors = clusteredErrors(columns, fit, rows.run, kinds);
   const [crr, cda] = fit.coefficients as unknown as readonly [number, number];
   const { inverse } = fit;
   return {
@@ -51,8 +52,8 @@ export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): 
     grade: estimatesGrade
       ? estimateAt(columns.length - 1, fit.coefficients[columns.length - 1]!, errors)
       : null,
-    growth: growthOf(columns, rows, taken),
-    degrees: errors.degrees,
+    growth: growthOf(columns, rows, kinds),
+    degrees: errors.degrees[1]!,
     ...residualsOf(runs, rows, fit, calmRows(runs, setting), { crr, cda }),
   };
 }
@@ -95,16 +96,16 @@ function estimateAt(
   { covariance, degrees }: ClusteredErrors,
   divisor = 1,
 ): Estimate {
-  return estimateOf(value, Math.sqrt(covariance[i]![i]!) / Math.abs(divisor), degrees);
+  return estimateOf(value, Math.sqrt(covariance[i]![i]!) / Math.abs(divisor), degrees[i]!);
 }
 
 /** The same fit with a rolling coefficient that grows with speed: where its growth is nothing, the model is enough. */
-function growthOf(columns: readonly Float64Array[], rows: Pooled, taken: number): Estimate | null {
+function growthOf(columns: readonly Float64Array[], rows: Pooled, kinds: Int32Array): Estimate | null {
   const more = [...columns, rows.rollingGrowth];
   const fit = leastSquares(more, rows.lost);
   if (fit.status === 'dependent') return null;
   const last = columns.length;
-  return estimateAt(last, fit.coefficients[last]!, clusteredErrors(more, fit, rows.run, taken));
+  return estimateAt(last, fit.coefficients[last]!, clusteredErrors(more, fit, rows.run, kinds));
 }
 
 function residualsOf(

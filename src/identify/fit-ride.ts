@@ -42,8 +42,8 @@ export function fitRide(
   if (fit.status === 'dependent') return null;
   const count = Math.min(GROUPS, Math.floor(driven.length / 2));
   const groups = Int32Array.from(driven, (_, i) => Math.floor((i * count) / driven.length));
-  const { covariance, degrees } = clusteredErrors(columns, fit, groups, 1);
-  const found = unknowns.map((name, i) => unknownOf(name, i, unknowns, fit, covariance, degrees, vehicle));
+  const { covariance } = clusteredErrors(columns, fit, groups, new Int32Array(count));
+  const found = unknowns.map((name, i) => unknownOf(name, i, unknowns, fit, covariance, count - 1, vehicle));
   const after = withUnknowns(vehicle, found);
   const rms = (residual: ArrayLike<number>): number =>
     Math.sqrt(
@@ -54,7 +54,7 @@ export function fitRide(
   return {
     unknowns: found,
     correlation: unknowns.length < 2 ? null : inverse[0]![1]! / Math.sqrt(inverse[0]![0]! * inverse[1]![1]!),
-    degrees,
+    degrees: count - 1,
     fitted: driven.reduce((sum, { way }) => sum + way, 0),
     length: stretches.reduce((sum, { place }) => sum + place[place.length - 1]! - place[0]!, 0),
     rmsForce: rms(fit.residuals),

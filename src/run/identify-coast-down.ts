@@ -37,6 +37,7 @@ export function identifyCoastDown(
     `cda_m2 ${numberWords(fit.cda, 'm2')}`,
     `crr ${numberWords(fit.crr, '')}`,
     `correlation ${fit.correlation.toFixed(2)}; air ${air.air.density.toFixed(3)} kg/m3 (${air.words}), loaded mass ${masses.mass.value} kg (${masses.mass.from})`,
+    ...(vehicle === null ? [] : [`everything else is as in ${vehicle.source.file.split(/[\\/]/).at(-1)}`]),
   ];
   return {
     kind: 'coast-down',

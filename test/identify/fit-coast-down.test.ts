@@ -223,4 +223,34 @@ describe('the 95 % interval', () => {
       expect(hit).toBeLessThanOrEqual(970);
     }
   });
+
+  test.each([
+    [2, 2],
+    [3, 3],
+    [2, 5],
+  ])('is honest for few and unequal runs too: %i there, %i back', (there, back) => {
+    const random = seededStream(100 * there + back);
+    const few = 150;
+    let hits = 0;
+    for (let trial = 0; trial < few; trial++) {
+      const runs = Array.from({ length: there + back }, (_, i) => {
+        const plan = {
+          from: 24 + 4 * random.uniform(),
+          to: 8,
+          step: 0.5,
+          wind: 1 + 0.4 * random.normal(),
+          grade: 0.001,
+        };
+        return coastingRun(
+          vehicle,
+          { direction: i < there ? 'there' : 'back', ...plan },
+          () => 0.05 * random.normal(),
+        );
+      });
+      hits += inside(fitted(runs).cda, 0.58) ? 1 : 0;
+    }
+    // 95 %, less what small samples cost and three standard errors of a share of 150
+    expect(hits / few).toBeGreaterThan(0.87);
+    expect(hits / few).toBeLessThan(0.995);
+  });
 });

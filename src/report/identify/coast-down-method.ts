@@ -9,7 +9,7 @@ export const coastDownMethod = (): Html => html`<dl class="equations">
 <dt>wind and grade</dt>
 <dd>Where they were not logged, one steady wind along the road and one steady grade are estimated from the difference between the ways; the square of the wind, which stays behind in the mean of both ways, is in the air term by Gauss-Newton steps. Crosswind is not seen: it adds to CdA.</dd>
 <dt>standard errors</dt>
-<dd>Each run is one piece of evidence, whatever the colour of its residuals: covariance by runs (K.-Y. Liang, S. L. Zeger, Biometrika 73 (1986) 13-22, with the small-sample factor), intervals by Student's t with as many degrees of freedom as there are runs, less one, or less two where wind or grade came from the difference of the ways. Of 1000 simulated coast-downs with noise, 93 to 97 % of the intervals hold the truth: a test of the program. The correlation is that of the least-squares fit.</dd>
+<dd>Each run is one piece of evidence, whatever the colour of its residuals: covariance by runs (K.-Y. Liang, S. L. Zeger, Biometrika 73 (1986) 13-22, from memory), each way by itself where the ways differ by a wind or a grade that is not known, widened by n / (n − 1) for n runs of a way; intervals by Student's t with the degrees of freedom of B. L. Welch, Biometrika 34 (1947) 28-35 (from memory). Of 1000 simulated coast-downs with noise, 93 to 97 % of the intervals hold the truth: a test of the program. The correlation is that of the least-squares fit.</dd>
 </dl>
 <h3 id="method-cautions">Cautions</h3>
 <ul>

@@ -8,7 +8,7 @@ import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
 import { type Html, html } from '../html.ts';
 import { estimateCells } from '../model/estimate-words.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { fixed, type SpeedUnit, signed, speedText, timeText } from '../quantity.ts';
+import { fixed, type SpeedUnit, signed, speedText, timeText, trimmed } from '../quantity.ts';
 import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
@@ -43,7 +43,7 @@ function estimatesBody(result: CoastDownIdentification): Html {
     ...row('grade of the road', fit.grade === null ? null : scaledEstimate(fit.grade, toPct(1)), '%', true),
     ...row('growth of Crr with speed', fit.growth, 's/m', true),
   ])}
-<p class="note">CdA and Crr are tied with a correlation of ${fixed(fit.correlation, 2)}; the intervals have ${fit.degrees} degrees of freedom.${fit.wind !== null && ' The wind counts against the way there, the grade uphill on it: both come from the difference between the ways.'} The growth of Crr is a check alone: it is not in the model, and its interval should take in zero.</p>
+<p class="note">CdA and Crr are tied with a correlation of ${fixed(fit.correlation, 2)}; the interval of CdA has ${trimmed(fit.degrees, 1)} degrees of freedom.${fit.wind !== null && ' The wind counts against the way there, the grade uphill on it: both come from the difference between the ways.'} The growth of Crr is a check alone: it is not in the model, and its interval should take in zero.</p>
 <h3>Taken for granted</h3>
 ${givenTable(result.given)}
 <p class="note">No interval above has an error of these in it. CdA goes with the mass over the density, Crr hardly with either: 1 % of mass is 1 % of CdA.</p>`;
@@ -155,7 +155,7 @@ function nextBody({ fit, warnings }: CoastDownIdentification, speed: SpeedUnit):
   const has = (code: string) => warnings.some((warning) => warning.code === code);
   const items = [
     has('few-runs') &&
-      `Runs until there are five each way: with n runs the intervals go about as 1 / √n, and faster at the start, where Student's t is large (now ${fit.degrees} degrees of freedom).`,
+      `Runs until there are five each way: with n runs the intervals go about as 1 / √n, and faster at the start, where Student's t is large (now ${trimmed(fit.degrees, 1)} degrees of freedom).`,
     fastest < 3 * slowest &&
       `A wider range of speeds than ${speedText(slowest, speed, 0)} to ${speedText(fastest, speed, 0)}: a ratio of three or more unties CdA from Crr.`,
     fit.wind !== null &&
