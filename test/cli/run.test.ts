@@ -59,6 +59,7 @@ test('the folder holds what the summary lists, and nothing else', () => {
       'disturbance.csv',
       'cycles.csv',
       'hills.csv',
+      'margins.csv',
       'report.html',
       'route.geojson',
       'segments.csv',

@@ -5,7 +5,7 @@ import { loopMargins } from '../../src/linear/margins.ts';
 import { closedPolesOutside } from '../../src/linear/nyquist.ts';
 import { logarithmicGrid, scanResponse } from '../../src/linear/response-scan.ts';
 import { rootLocus } from '../../src/linear/root-locus.ts';
-import { holdSystem, stateSpaceOf } from '../../src/linear/state-space.ts';
+import { holdSystem, stateSpaceOf, transferFunctionOf } from '../../src/linear/state-space.ts';
 import { stepFigures } from '../../src/linear/step-figures.ts';
 import {
   closedPoles,
@@ -237,6 +237,63 @@ describe.each(loops)('the reference loop $id', (loop) => {
       expectClose(values[Math.round(t / spacing)]!, y[i]!, 2e-9, `at ${t} s`);
     });
   });
+});
+
+interface Sampled {
+  readonly id: string;
+  readonly Ts_s: number;
+  readonly pulse_tf_without_delay: { readonly num_z: number[]; readonly den_z: number[] };
+  readonly discrete_zeros: Pair[];
+  readonly loops: Readonly<
+    Record<string, { readonly closed_loop_poles: Pair[]; readonly unit_step_first_41_samples?: number[] }>
+  >;
+}
+const sampled = readReference<{ plants: Sampled[] }>('linear/linear_discrete.json').plants;
+
+describe.each(sampled)('the sampled loop $id', (expected) => {
+  const { plant, controller } = loops.find(({ id }) => id === expected.id)!;
+  const held = holdSystem(
+    stateSpaceOf({ numerator: plant.num, denominator: plant.den, delay: plant.delay_s }),
+    expected.Ts_s,
+  );
+
+  test.runIf(plant.delay_s === 0)('has the pulse transfer function and the zeros of the reference', () => {
+    const { numerator, denominator } = transferFunctionOf({
+      a: held.phi,
+      b: held.gamma,
+      c: held.c,
+      d: held.d,
+      delay: 0,
+    });
+    const { num_z, den_z } = expected.pulse_tf_without_delay;
+    expectClose(denominator, den_z, 1e-10);
+    expectClose(numerator.slice(-num_z.length), num_z, 1e-10);
+    const zeros = zerosOf({ numerator: numerator.slice(-num_z.length), denominator: [1], delay: 0 });
+    expectRoots(zeros, expected.discrete_zeros, 1e-7);
+  });
+
+  // The trapezoidal rule is none of the controller's; an unstable loop has no samples there.
+  const answered = Object.entries(expected.loops).flatMap(([rule, { unit_step_first_41_samples: steps }]) =>
+    rule === 'tustin' || steps === undefined ? [] : [{ rule, steps }],
+  );
+  test.each(answered)(
+    'answers a step of its reference as the reference does, $rule rule',
+    ({ rule, steps }) => {
+      const { kp, ki } = controller;
+      let x = Matrix.zeros(held.phi.rows, 1);
+      let integral = 0;
+      const seen = steps.map(() => {
+        const y = held.c.reduce((sum, value, i) => sum + value * x.get(i, 0), 0);
+        const increment = ki * expected.Ts_s * (1 - y);
+        if (rule === 'backward') integral += increment;
+        const u = kp * (1 - y) + integral;
+        if (rule === 'forward') integral += increment;
+        x = held.phi.mmul(x).add(Matrix.columnVector(held.gamma).mul(u));
+        return y;
+      });
+      expectClose(seen, steps, 1e-9);
+    },
+  );
 });
 
 test('the dead time of two and a half samples splits the input as the reference says', () => {
