@@ -14,15 +14,19 @@ export interface CoastRows {
   readonly rolling: Float64Array;
   /** The same with the speed in it: times the growth of the coefficient [J m/s]. */
   readonly rollingGrowth: Float64Array;
-  /** 1/2 rho times the integral of va ax ds: times the drag area the work of the air [J/m2]. */
-  readonly air: Float64Array;
-  /** Derivative of `air` by a wind along the road, against the way there [J s/m3]. */
-  readonly airByWind: Float64Array;
   /** m g ds, negative on the way back: times the grade of the road the work against it [J]. */
   readonly slope: Float64Array;
   /** Way [m] and mean speed [m/s]. */
   readonly way: Float64Array;
   readonly speed: Float64Array;
+}
+
+/** What of them hangs on the wind. */
+export interface AirRows {
+  /** 1/2 rho times the integral of va ax ds: times the drag area the work of the air [J/m2]. */
+  readonly air: Float64Array;
+  /** Derivative of `air` by a wind along the road, against the way there [J s/m3]. */
+  readonly airByWind: Float64Array;
 }
 
 /**
@@ -31,14 +35,8 @@ export interface CoastRows {
  * the run is cut into up to 12 pieces, each piece averaged, and neighbours subtracted. Nothing is differentiated, the
  * noise of the speed is averaged over a piece, and on data without noise the equations are exact but for the rule of
  * integration.
- *
- * @param wind along the road, against the way there [m/s], beside what the run has logged
  */
-export function coastRows(
-  run: CoastRun,
-  { mass, rotatingMass, airDensity }: CoastSetting,
-  wind: number,
-): CoastRows {
+export function coastRows(run: CoastRun, { mass, rotatingMass }: CoastSetting): CoastRows {
   const { time, speed } = run;
   const forth = run.direction === 'there' ? 1 : -1;
   const weight = mass * STANDARD_GRAVITY;
@@ -50,7 +48,6 @@ export function coastRows(
       ? run.elevation
       : integral((v, i) => (v * grade[i]!) / Math.sqrt(1 + grade[i]! * grade[i]!));
   const across = (i: number): number => (grade === null ? 1 : 1 / Math.sqrt(1 + grade[i]! * grade[i]!));
-  const ahead = (v: number, i: number): number => v + (run.headwind?.[i] ?? 0) + forth * wind;
   const way = integral((v) => v);
   const energy = speed.map((v, i) => ((mass + rotatingMass) * v * v) / 2 + weight * (height?.[i] ?? 0));
   const steps = (levels: Float64Array, factor = 1): Float64Array => stepsBetweenPieces(levels, factor);
@@ -62,17 +59,32 @@ export function coastRows(
       integral((v, i) => v * v * across(i)),
       weight,
     ),
-    air: steps(
-      integral((v, i) => ahead(v, i) * Math.abs(ahead(v, i)) * v),
-      airDensity / 2,
-    ),
-    airByWind: steps(
-      integral((v, i) => Math.abs(ahead(v, i)) * v),
-      airDensity * forth,
-    ),
     slope: steps(way, weight * forth),
     way: steps(way),
     speed: Float64Array.from({ length: means.length - 1 }, (_, k) => (means[k]! + means[k + 1]!) / 2),
+  };
+}
+
+/**
+ * The part of the rows that the air has.
+ *
+ * @param wind along the road, against the way there [m/s], beside what the run has logged
+ */
+export function airRows(run: CoastRun, { airDensity }: CoastSetting, wind: number): AirRows {
+  const { time, speed, headwind } = run;
+  const forth = run.direction === 'there' ? 1 : -1;
+  const ahead = speed.map((v, i) => v + (headwind?.[i] ?? 0) + forth * wind);
+  const work = runningIntegral(
+    time,
+    speed.map((v, i) => ahead[i]! * Math.abs(ahead[i]!) * v),
+  );
+  const byWind = runningIntegral(
+    time,
+    speed.map((v, i) => Math.abs(ahead[i]!) * v),
+  );
+  return {
+    air: stepsBetweenPieces(work, airDensity / 2),
+    airByWind: stepsBetweenPieces(byWind, airDensity * forth),
   };
 }
 

@@ -1,7 +1,7 @@
 import { type LeastSquares, leastSquares } from '../numeric/least-squares.ts';
 import { type ClusteredErrors, clusteredErrors } from './clustered-errors.ts';
 import type { CoastDownFit, CoastRun, CoastSetting, FittedRun } from './coast-down.ts';
-import { type CoastRows, coastRows } from './coast-rows.ts';
+import { type AirRows, airRows, type CoastRows, coastRows } from './coast-rows.ts';
 import { type Estimate, estimateOf } from './estimate.ts';
 
 const MOST_ROUNDS = 30;
@@ -25,7 +25,12 @@ const SETTLED = 1e-9;
 export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): CoastDownFit | null {
   const estimatesWind = runs.some(({ headwind }) => headwind === null);
   const estimatesGrade = runs.some(({ elevation, grade }) => elevation === null && grade === null);
-  const rowsAt = (along: number): Pooled => pooled(runs.map((run) => coastRows(run, setting, along)));
+  const ofRuns = runs.map((run) => coastRows(run, setting));
+  const rowsAt = (along: number): Pooled =>
+    pooled(
+      ofRuns,
+      runs.map((run) => airRows(run, setting, along)),
+    );
   let wind = 0;
   let rows = rowsAt(wind);
   let fit: LeastSquares;
@@ -54,34 +59,43 @@ export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): 
       : null,
     growth: growthOf(columns, rows, kinds),
     degrees: errors.degrees[1]!,
-    ...residualsOf(runs, rows, fit, calmRows(runs, setting), { crr, cda }),
+    ...residualsOf(runs, rows, fit, calmAir(runs, setting), { crr, cda }),
   };
 }
 
-/** The rows as they would be in still air. */
-const calmRows = (runs: readonly CoastRun[], setting: CoastSetting): Pooled =>
-  pooled(runs.map((run) => coastRows({ ...run, headwind: null }, setting, 0)));
-
-interface Pooled extends CoastRows {
+interface Pooled extends CoastRows, AirRows {
   /** Index of the run of each row. */
   readonly run: Int32Array;
 }
 
-function pooled(runs: readonly CoastRows[]): Pooled {
-  const all = (name: keyof CoastRows): Float64Array =>
-    Float64Array.from(runs.flatMap((rows) => [...rows[name]]));
+function pooled(runs: readonly CoastRows[], air: readonly AirRows[]): Pooled {
+  const all = (name: keyof CoastRows): Float64Array => joined(runs.map((rows) => rows[name]));
   return {
     lost: all('lost'),
     rolling: all('rolling'),
     rollingGrowth: all('rollingGrowth'),
-    air: all('air'),
-    airByWind: all('airByWind'),
     slope: all('slope'),
     way: all('way'),
     speed: all('speed'),
+    air: joined(air.map((rows) => rows.air)),
+    airByWind: joined(air.map((rows) => rows.airByWind)),
     run: Int32Array.from(runs.flatMap(({ way }, i) => Array.from(way, () => i))),
   };
 }
+
+function joined(parts: readonly Float64Array[]): Float64Array {
+  const whole = new Float64Array(parts.reduce((sum, { length }) => sum + length, 0));
+  let at = 0;
+  for (const part of parts) {
+    whole.set(part, at);
+    at += part.length;
+  }
+  return whole;
+}
+
+/** What the air would take from a drag area of 1 m2 if there were no wind [J/m2]. */
+const calmAir = (runs: readonly CoastRun[], setting: CoastSetting): Float64Array =>
+  joined(runs.map((run) => airRows({ ...run, headwind: null }, setting, 0).air));
 
 const columnsOf = (rows: Pooled, wind: boolean, grade: boolean): readonly Float64Array[] => [
   rows.rolling,
@@ -112,12 +126,12 @@ function residualsOf(
   runs: readonly CoastRun[],
   rows: Pooled,
   fit: LeastSquares,
-  still: Pooled,
+  calmAir: Float64Array,
   { crr, cda }: { readonly crr: number; readonly cda: number },
 ): Pick<CoastDownFit, 'runs' | 'residuals' | 'rmsForce'> {
   const residual = fit.residuals.map((energy, i) => energy / rows.way[i]!);
   // What the coefficients give in still air on the level.
-  const calm = still.speed.map((_, i) => (crr * still.rolling[i]! + cda * still.air[i]!) / still.way[i]!);
+  const calm = rows.way.map((way, i) => (crr * rows.rolling[i]! + cda * calmAir[i]!) / way);
   return {
     residuals: {
       run: rows.run,
