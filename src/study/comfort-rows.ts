@@ -14,7 +14,7 @@ export const THROTTLE_ROWS: readonly FigureRow[] = [
   {
     name: 'reversals_per_km',
     label: 'Throttle reversals',
-    unit: '1/km',
+    unit: 'per km',
     weight: 'distance',
     takesBand: false,
     better: 'lower',

@@ -235,7 +235,7 @@ describe('the table of figures', () => {
       'km/h·s': '_kmh_s',
       '(km/h)²·s': '_kmh2_s',
       'km/h·s²': '_kmh_s2',
-      '1/km': '_per_km',
+      'per km': '_per_km',
       '%/s': '_pct_per_s',
       'm/s²': '_m_s2',
       'm/s³': '_m_s3',

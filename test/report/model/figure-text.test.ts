@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { figureTextBeside, marginText } from '../../../src/report/model/figure-text.ts';
+import { figureText, figureTextBeside, marginText } from '../../../src/report/model/figure-text.ts';
 import { SPEED_UNITS } from '../../../src/report/quantity.ts';
 
 const { kmh } = SPEED_UNITS;
@@ -17,4 +17,13 @@ it('a figure that rounding would set on its limit has as many digits as tell the
 it('a margin between shares is told in points', () => {
   expect(plain(marginText(4.9, '%', kmh))).toBe('+4.9 points');
   expect(plain(marginText(-4.21, 'km/h', kmh))).toBe('\u22124.2 km/h');
+});
+
+it('integrals of the error are told in the unit of the speed, once or squared', () => {
+  const { mph } = SPEED_UNITS;
+  // 1.609344 km/h are 1 mph.
+  expect(plain(figureText(160.9344, 'km/h·s', mph))).toBe('100 mph·s');
+  expect(plain(figureText(160.9344 * 1.609344, '(km/h)²·s', mph))).toBe('100 mph²·s');
+  expect(plain(figureText(16.09344, 'km/h·s²', mph))).toBe('10.0 mph·s²');
+  expect(plain(figureText(250, '(km/h)²·s', kmh))).toBe('250 (km/h)²·s');
 });
