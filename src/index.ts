@@ -16,7 +16,15 @@ export type {
 export { solveContinuous } from './loop/continuous.ts';
 export type { HoldPlan, LoopPlan, RiderPlan, RunStatus } from './loop/plan.ts';
 export { replay } from './loop/replay.ts';
-export type { BinRecord, Checkpoint, FullSeries, Ledger, LoopResult } from './loop/result.ts';
+export type {
+  BinDetail,
+  BinRecord,
+  Checkpoint,
+  Distribution,
+  FullSeries,
+  Ledger,
+  LoopResult,
+} from './loop/result.ts';
 export { runLoop } from './loop/run-loop.ts';
 export { formatProblem, InputError, type Problem } from './problems/input-error.ts';
 export { formatPlace, type Place } from './problems/place.ts';
