@@ -1,3 +1,4 @@
+import type { Controller } from '../control/controller.ts';
 import type { HoldRules } from '../control/hold-rules.ts';
 import type { OverrideRule } from '../control/supervisor-setup.ts';
 import { buildMachine } from './build-machine.ts';
@@ -36,7 +37,7 @@ export function holdMachines(
     plan.supervisor?.override ?? NO_OVERRIDE_RULE,
   );
   const held = sees({ ...machine, controller: supervised });
-  const shifted = sees(ridden);
+  const shifted = sees(rules === null ? ridden : { ...ridden, controller: anew(ridden.controller, rules) });
   const byHand = sees({ ...underGrip(machine, plan), controller: handController(machine, plan) });
   const gripped = besides ? { ...underGrip(machine, plan), controller: held.controller } : held;
 
@@ -52,6 +53,15 @@ export function holdMachines(
     if (shifting) return shifted;
     return besides && s[at.HOLD_MODE] === at.OVERRIDDEN ? taken(gripped, p[at.P_BRAKES_ABOVE]) : held;
   };
+}
+
+/** While the rider shifts nothing is held to the rules, and what they remember is that of the last sample of the shift. */
+function anew(inner: Controller, rules: HoldRules): Controller {
+  const step = (bus: Float64Array): void => {
+    rules.begin(bus);
+    inner.step(bus);
+  };
+  return { ...inner, step };
 }
 
 /** Parameters and lags of the grip's own way to the throttle. */

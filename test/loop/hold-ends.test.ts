@@ -7,7 +7,7 @@ import { IDEAL_SENSOR } from '../../src/vehicle/ideal.ts';
 import type { Vehicle } from '../../src/vehicle/vehicle.ts';
 import { expectClose } from '../compare.ts';
 import { at, patientUnit, RESUME, ride, rider, SAMPLE } from './hold-scenes.ts';
-import { laggedVehicle, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
+import { forceOf, laggedVehicle, planOver, referenceMotorcycle, roadOver, stations } from './scenes.ts';
 
 const level = (length: number) => roadOver(stations(length, 50));
 /** Level, then a climb that comes too quickly for the controller: 0.13 m g is 330 N. */
@@ -79,6 +79,32 @@ both('rules of the unit (%s)', (scheme) => {
     );
     expect(resumed).toBe(allowed);
     expect(resumed! - ended!).toBeGreaterThan(200);
+  });
+
+  it('do not look at a shift of the rider, nor across it', () => {
+    const drive: Vehicle['drive'] = {
+      ...forceOf({ peakForce: 60, closedThrottleForce: 8 }),
+      kind: 'engine',
+      gears: [20, 14].map((ratio) => ({ ratio, inertia: 0 })),
+      gearbox: { kind: 'clutch', open: 0.8, resume: 0.2 },
+    };
+    const { series, events } = ride(
+      planOver(
+        roadOver(stations(600, 50), { grade: () => 0.03 }),
+        { ...referenceMotorcycle, drive },
+        {
+          scheme,
+          // With the clutch open it slows by some 0.7 m/s2: 0.5 m/s in a shift, which in one sample would be 27 m/s2.
+          supervisor: { ...patientUnit, believable: 5, tooSlow: { by: 0.45, for: 0.5 } },
+          rider: { brakesAbove: null, shifts: [{ distance: 200, gear: 1 }] },
+        },
+      ),
+    );
+    expect(events.map(({ kind, cause }) => `${kind} ${cause}`)).toEqual([
+      'ended gear_change',
+      'resumed gear_change',
+    ]);
+    expect(series.speed.reduce((least, v) => Math.min(least, v), 17)).toBeLessThan(16.6);
   });
 
   it('leave the rider to resume at the very time where nothing refuses', () => {
