@@ -1,6 +1,9 @@
 import { Matrix } from 'ml-matrix';
+import { transferFunctionOf } from '../linear/state-space.ts';
+import type { TransferFunction } from '../linear/transfer-function.ts';
 import type { LinearVehicle } from '../vehicle/linearise.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
+import { sensorDelay } from './sensor-delay.ts';
 
 /** A vehicle with its lags as a state-space system. */
 export interface LinearPlant {
@@ -51,4 +54,17 @@ export function linearPlant(vehicle: Vehicle, model: LinearVehicle): LinearPlant
     drivenBy(ratio, speed - 1, belt.byThrottle / belt.lag);
   }
   return { a, b, order, speed, measured };
+}
+
+/** From command to measured speed, every lag and dead time but the computing delay in it: what has poles and zeros. */
+export function plantTransfer(vehicle: Vehicle, model: LinearVehicle): TransferFunction {
+  const { a, b, order, measured } = linearPlant(vehicle, model);
+  const scale = 1 + vehicle.sensor.scaleError;
+  return transferFunctionOf({
+    a,
+    b: b.getColumn(0),
+    c: Array.from({ length: order }, (_, i) => (i === measured ? scale : 0)),
+    d: 0,
+    delay: vehicle.actuator.deadTime + sensorDelay(vehicle.sensor, model.speed),
+  });
 }

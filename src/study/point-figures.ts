@@ -1,9 +1,11 @@
 import { continuousLoop } from '../control/continuous-loop.ts';
 import type { LinearController } from '../control/linear-controller.ts';
+import { plantTransfer } from '../control/linear-plant.ts';
 import { loopScan } from '../control/loop-scan.ts';
 import { type Push, type SpeedResponse, sampledLoop } from '../control/sampled-loop.ts';
 import type { ControllerSetup } from '../control/setup.ts';
 import { type StepFigures, stepFigures } from '../linear/step-figures.ts';
+import { polesOf, zerosOf } from '../linear/transfer-function.ts';
 import { type Complex, sizeOfComplex } from '../numeric/complex.ts';
 import { requiredForce } from '../vehicle/resistance.ts';
 import type { OperatingPoint, PointMargins } from './operating-point.ts';
@@ -14,6 +16,9 @@ export interface PointFigures {
   readonly margins: PointMargins;
   /** As it would be without a sampler: what shorter and shorter sample times come to. */
   readonly continuous: PointMargins;
+  /** Poles and zeros of the vehicle from command to measured speed [1/s], dead time apart. */
+  readonly plantPoles: readonly Complex[];
+  readonly plantZeros: readonly Complex[];
   /** Poles of the closed sampled loop in the s plane [1/s], slowest first. */
   readonly poles: readonly Complex[];
   /** A small step of the set speed; null: unstable, or nothing brings the speed to the set speed (P alone). */
@@ -49,6 +54,7 @@ export function pointFigures(
   const vehicle = vehicleAt(point);
   const model = linearAt(point);
   const gains = gainsAtPoint(point, controller);
+  const transfer = plantTransfer(vehicle, model);
   const sampled = sampledLoop(vehicle, model, controller);
   const margins = pointMarginsOf(loopScan(sampled).margins(gains));
   const smooth = loopScan(continuousLoop(vehicle, model, controller));
@@ -61,6 +67,8 @@ export function pointFigures(
   return {
     margins,
     continuous: pointMarginsOf(smooth.margins(gains)),
+    plantPoles: polesOf(transfer),
+    plantZeros: zerosOf(transfer),
     poles,
     setSpeed: steps === null || gains.ki === 0 ? null : setSpeedFigures(steps.setSpeed),
     load: steps === null ? null : loadFigures(steps.load),

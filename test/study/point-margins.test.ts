@@ -99,6 +99,23 @@ describe.each(SCENES)('at %s', (_, point) => {
     );
   });
 
+  test('poles and zeros of the vehicle make its response', () => {
+    const linear = linearController(piOf());
+    if ('none' in linear) throw new Error(linear.none);
+    const { plantPoles, plantZeros } = pointFigures(point, linear);
+    const smooth = continuousLoop(vehicle, linearAt(point), { computingDelay: 0 });
+    // Up to one factor the response is the product of (s - zero) over that of (s - pole): a ratio at two places.
+    const size = (w: number): number =>
+      plantZeros.reduce((product, { re, im }) => product * Math.hypot(re, w - im), 1) /
+      plantPoles.reduce((product, { re, im }) => product * Math.hypot(re, w - im), 1);
+    const seen = (w: number): number => {
+      const { re, im } = smooth.plantAt({ re: 0, im: w });
+      return Math.hypot(re, im);
+    };
+    for (const w of [0.001, 0.1, 2, 30]) expectClose(seen(w) / seen(1) / (size(w) / size(1)), 1, 1e-8);
+    expect(plantZeros.length).toBe(vehicle.drive.belt === null ? 0 : 1);
+  });
+
   test('a step of 0.1 km/h in the replay is the step of the linear loop to a thousandth', () => {
     const step = 0.1 * KMH;
     const start = 200;
