@@ -53,7 +53,9 @@ export function xyChart(words: Words, plot: XyPlot, canvas: Canvas): Html {
     const points = series.points.map(([a, b]): Point => [x(a), y(b)]);
     if (series.mark === 'line')
       return html`<g>${stroked(linePath(points), { stroke, width: 1.8, dash: series.dash ?? '' })}</g>`;
-    return html`<g>${points.map((point) => markAt(point, series.mark, stroke))}</g>`;
+    return series.mark === 'dot'
+      ? dots(points, stroke)
+      : html`<g>${points.map((point) => markAt(point, series.mark, stroke))}</g>`;
   });
   const body = html`<defs>${clip(`${id}-c`, box)}</defs>${leftAxis(canvas, box, y, plot.y)}${clipped(`${id}-c`, html`${marks}`)}${bottomAxis(canvas, box, x, plot.x)}`;
   return drawing(canvas, box.top + box.height + BOTTOM_AXIS_HEIGHT, words, body);
@@ -70,6 +72,10 @@ function rangeOf({ series }: XyPlot, axis: 0 | 1, fromZero: boolean): readonly [
   const margin = 0.04 * (high - low);
   return [low === 0 ? low : low - margin, high === 0 ? high : high + margin];
 }
+
+/** Many dots as one path of round caps: a record has hundreds. */
+const dots = (points: readonly Point[], colour: string): Html =>
+  html`<path d="${points.map(([x, y]) => `M${tenth(x)},${tenth(y)}h0`).join('')}" fill="none" stroke="${colour}" stroke-width="5.2" stroke-linecap="round"/>`;
 
 /** A mark of three user units around a point; the shape is the second cue beside the colour. */
 function markAt([x, y]: Point, mark: XySeries['mark'], colour: string): Html {
