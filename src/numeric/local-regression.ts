@@ -21,7 +21,8 @@ const HALF = 2.385 * 1.4826;
  *
  * @param x strictly increasing
  * @param y as long as x, finite
- * @param reach half-width of the window, in the unit of x, above 0: it grows where fewer than five points are within
+ * @param reach half-width of the window, in the unit of x, above 0: it grows where fewer than five points are within, and at
+ *   the ends to the whole width on the one side that is left
  * @param grain least residual that may have half the weight, in the unit of y, 0 or more: exact values bend as well
  * @returns one value and slope a point; a single point has slope 0; two points the line through them
  */
@@ -44,7 +45,7 @@ export function localRegression(x: Float64Array, y: Float64Array, reach: number,
   }
 }
 
-/** Half-width of the window of each point: wide enough for five of them, the outermost with a weight above 0. */
+/** Half-width of the window of each point: wide enough for five of them, the outermost with a weight above 0; at the ends as wide in all as elsewhere. */
 function widths(x: Float64Array, reach: number): Float64Array {
   const size = x.length;
   const most = Math.min(FEWEST, size);
@@ -53,7 +54,8 @@ function widths(x: Float64Array, reach: number): Float64Array {
     // The window of the nearest points moves forward with the point.
     while (first + most < size && (first + most <= i || x[first + most]! - at < at - x[first]!)) first++;
     const span = Math.max(at - x[first]!, x[first + most - 1]! - at);
-    return Math.max(reach, span * 1.001);
+    const toEnd = Math.min(at - x[0]!, x[size - 1]! - at);
+    return Math.max(reach, 2 * reach - toEnd, span * 1.001);
   });
 }
 

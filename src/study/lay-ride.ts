@@ -14,6 +14,9 @@ import { breakAfter, rowsOf } from './ride-rows.ts';
 export const SPEED_WINDOW = 4;
 /** A fix this far from the curve through its neighbours has half their weight, however little they scatter [m]. */
 const GRAIN = 3;
+/** Beside fixes off the road a fix farther off than this is on its way there [m], if it is within so long of them [s]. */
+const LEAVING = 8;
+const LEAVING_TIME = 10;
 /** A ride over less of the road tells nothing about it. */
 export const LEAST_COVER = 0.1;
 
@@ -64,15 +67,36 @@ interface Places {
   readonly laidBy: LoggedRide['laidBy'];
 }
 
-function placesOf({ distance, latitudeDeg, longitudeDeg }: RideLog, road: Road): Places {
+function placesOf({ time, distance, latitudeDeg, longitudeDeg }: RideLog, road: Road): Places {
   if (latitudeDeg !== null && longitudeDeg !== null) {
     if (road.latitudeDeg !== null && road.longitudeDeg !== null) {
       const line = { ...road, latitudeDeg: road.latitudeDeg, longitudeDeg: road.longitudeDeg };
-      return { ...matchPositions(line, latitudeDeg, longitudeDeg), laidBy: 'position' };
+      const { along, off } = matchPositions(line, latitudeDeg, longitudeDeg);
+      return { along: withoutLeaving(time, along, off), off, laidBy: 'position' };
     }
     if (distance === null) return byDistance(wayAlong(latitudeDeg, longitudeDeg), road);
   }
   return byDistance(distance ?? new Float64Array(0), road);
+}
+
+/**
+ * Where a ride leaves the road at a slant, its way along the road is shorter than its own: fixes on the way there or back
+ * are taken as off the road too.
+ */
+function withoutLeaving(time: Float64Array, along: Float64Array, off: Float64Array): Float64Array {
+  const kept = along.slice();
+  const drop = (edge: number, step: 1 | -1): void => {
+    for (let i = edge + step; i >= 0 && i < time.length; i += step) {
+      if (!(off[i]! > LEAVING) || Math.abs(time[i]! - time[edge]!) > LEAVING_TIME) return;
+      kept[i] = Number.NaN;
+    }
+  };
+  for (let i = 0; i < along.length; i++)
+    if (Number.isNaN(along[i]!)) {
+      drop(i, -1);
+      drop(i, 1);
+    }
+  return kept;
 }
 
 function byDistance(way: Float64Array, road: Road): Places {

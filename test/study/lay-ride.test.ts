@@ -1,9 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import type { Road } from '../../src/road/road.ts';
+import { roadOfTrack } from '../../src/road/road-of-track.ts';
 import { layRide } from '../../src/study/lay-ride.ts';
 import type { LoggedRide } from '../../src/study/logged-ride.ts';
 import type { RideLog } from '../../src/track/read-ride.ts';
 import { expectClose } from '../compare.ts';
+import { roadOptions, trackOf } from '../road/road-fixtures.ts';
 import { randomness } from '../road/synthetic-road.ts';
 import { logOf, roadOver, seconds, speedAt, wayAt, winding } from './ridden-road.ts';
 
@@ -171,6 +173,32 @@ describe('what is odd in a ride', () => {
     };
     const off = lay(aside);
     expect(off.gaps.map(({ reason }) => reason)).toEqual(['29 fixes off the road']);
+  });
+
+  it('keeps its speed where it leaves the road at a slant, and comes back to it', () => {
+    // East along the equator at 16 m/s; a detour of 40 s out and 40 s back at 30 degrees, as where a plan cuts a bend off.
+    const degree = (Math.PI * 6378137) / 180;
+    const east = (t: number): number =>
+      16 * (t - (1 - Math.cos(Math.PI / 6)) * Math.min(80, Math.max(0, t - 100)));
+    const north = (t: number): number => 8 * Math.max(0, 40 - Math.abs(t - 140));
+    const distance = Float64Array.from({ length: 401 }, (_, i) => 10 * i);
+    const straight = roadOfTrack(
+      trackOf(distance, {
+        latitudeDeg: new Float64Array(401),
+        longitudeDeg: distance.map((x) => x / degree),
+        grade: new Float64Array(401),
+      }),
+      roadOptions({ elevationSource: 'exact' }),
+    );
+    const random = randomness(17);
+    const log = logOf(ground, seconds(240), () => 0, {
+      latitudeDeg: seconds(240).map((t) => (north(t) + 0.7 * random.normal()) / degree),
+      longitudeDeg: seconds(240).map((t) => (east(t) + 0.7 * random.normal()) / degree),
+    });
+    const ride = lay(log, straight);
+    expect(ride.gaps[0]!.reason).toMatch(/^\d+ fixes off the road$/);
+    expect(ride.size).toBeGreaterThan(140);
+    for (const speed of ride.speed) expect(Math.abs(speed - 16)).toBeLessThan(1.4);
   });
 
   it('changes nothing where a ride is silent at its stop, as loggers are that rest', () => {
