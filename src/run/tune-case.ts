@@ -14,6 +14,7 @@ import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Road } from '../road/road.ts';
 import { demandOf } from '../study/demand.ts';
+import { askDetail } from '../study/figure-table.ts';
 import { isNone, type Replayed } from '../study/findings.ts';
 import { trueSpeedFactor } from '../study/hold-course.ts';
 import { loopSheet } from '../study/loop-sheet.ts';
@@ -77,12 +78,13 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
   const { points, notHeld } = pointsOf({ document, vehicle: vehicleDocument, road, plan });
   if (points.length === 0) throw nothingToTune(document);
   const demand = demandOf(road, vehicle, ride.hold, ride.rider);
-  const replay = ({ name }: Pick<Candidate, 'name'>, planned: LoopPlan): Replayed => ({
-    name,
-    plan: planned,
-    result: runLoop(planned),
-  });
+  const replay = (
+    { name }: Pick<Candidate, 'name'>,
+    planned: LoopPlan,
+    how: Partial<LoopPlan> = { detail: true },
+  ): Replayed => ({ name, plan: planned, result: runLoop({ ...planned, ...how }) });
   const replayed = candidates.map((candidate, i) => replay(candidate, plans[i]!));
+  const detail = askDetail(plan.cost.map(({ figure }) => figure));
   const recovers = plan.cost.some(({ figure }) => figure === 'recovery_s');
   const planOf = (controller: ControllerSetup): LoopPlan =>
     loopPlans(setting, [{ name: 'tuned', controller }])[0]!;
@@ -94,8 +96,8 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
     plan,
     points,
     costOf: (controller, purpose) => {
-      const planned = planOf(controller);
-      const run = replay({ name: 'tuned' }, purpose === 'search' ? { ...planned, scheme: 'fast' } : planned);
+      const how: Partial<LoopPlan> = purpose === 'search' ? { scheme: 'fast', detail } : { detail };
+      const run = replay({ name: 'tuned' }, planOf(controller), how);
       const hills = recovers ? slowestRecoveries(road, demand, [...replayed, run], band) : [];
       return costOfRun(plan.cost, run, { road, demand, hills }, band);
     },

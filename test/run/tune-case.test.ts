@@ -1,0 +1,199 @@
+import { beforeAll, describe, expect, test } from 'vitest';
+import { linearController } from '../../src/control/linear-controller.ts';
+import { sampledLoop } from '../../src/control/sampled-loop.ts';
+import { InputError } from '../../src/problems/input-error.ts';
+import { marginsCsv } from '../../src/report/data/margin-table.ts';
+import { proposalsCsv } from '../../src/report/tune/proposal-table.ts';
+import { renderTune } from '../../src/report/tune/render-tune.ts';
+import { tuneJson } from '../../src/report/tune/tune-json.ts';
+import { addProposals, checkAdditions, readAddition } from '../../src/run/add-proposals.ts';
+import { runCase } from '../../src/run/run-case.ts';
+import { tuneCase } from '../../src/run/tune-case.ts';
+import type { TuneResult } from '../../src/run/tune-result.ts';
+import { gainsAtPoint, linearAt, vehicleAt } from '../../src/study/point-margins.ts';
+
+const TEXT = `# A short road for two loads, invented.
+track: {profile: [{length_m: 300, grade_pct: 0}, {length_m: 300, grade_pct: 4}, {length_m: 400, grade_pct: -2}], vertical_curve_m: 60}
+vehicle:
+  mass: {kerb_kg: 130, rider_kg: 75, payload_kg: 10}
+  road_load: {cda_m2: 0.55, crr: 0.014}
+  drive: {kind: force, peak_force_n: 480, peak_power_kw: 7, closed_throttle_force_n: 60, lag_s: 0.2}
+  actuator: {lag_s: 0.15, dead_time_s: 0.05}
+  speed_sensor: {filter_s: 0.1, delay_s: 0.05}
+hold: {set_speed_kmh: 50}
+candidates:
+  - {name: shipped, kind: pi, sample_s: 0.05, kp_pct_per_kmh: 25, ti_s: 1.5, setpoint_weight: 0.5}   # too stiff
+  - {name: calm, kind: pi, design: {settling_s: 40, overshoot_pct: 1}}
+requirements: [{id: R-1, figure: recovery_s, at_most: 60}]
+tune:
+  cost: [{figure: rms_error_kmh, weight: 1}, {figure: within_band_pct, weight: 0.01}, {figure: throttle_travel_pct_per_km, weight: 0.01}]
+  speeds_kmh: [30, 50, 70]
+  grades_pct: [0, 3]
+  loads: [own, two_up]
+  most_replays: 45
+# The end.
+`;
+const read = (text: string) => ({ file: 'road.yaml', read: () => new TextEncoder().encode(text) });
+
+let result: TuneResult;
+beforeAll(() => {
+  result = tuneCase(read(TEXT));
+}, 60_000);
+
+/** Greatest |1 / (1 + L)| by plain scanning over five decades; Infinity with a pole that does not decay. */
+function scanned({ controller }: TuneResult['tuned'][number], i: number): number {
+  const point = result.sheet.points[i]!;
+  const linear = linearController(controller);
+  if ('none' in linear) throw new Error(linear.none);
+  const gains = gainsAtPoint(point, linear);
+  const loop = sampledLoop(vehicleAt(point), linearAt(point), linear);
+  if (loop.poles(gains).some(({ re }) => re >= 0)) return Number.POSITIVE_INFINITY;
+  let peak = 0;
+  for (let k = 0; k <= 900; k++) {
+    const { re, im } = loop.openLoop(
+      gains,
+      10 ** (-3 + (k / 900) * Math.log10((1000 * Math.PI) / linear.sample)),
+    );
+    peak = Math.max(peak, 1 / Math.hypot(1 + re, im));
+  }
+  return peak;
+}
+
+describe('tuneCase', () => {
+  test('proposes gains by every way, under the names of the ways', () => {
+    expect(result.notProposed).toEqual([]);
+    expect(result.tuned.map(({ name }) => name)).toEqual([
+      'shipped',
+      'calm',
+      'tuned-settling',
+      'tuned-droop',
+      'tuned-simc',
+      'tuned-rejection',
+      'tuned-schedule',
+      'tuned-road',
+    ]);
+    expect(result.trials.length).toBeLessThanOrEqual(45);
+  });
+
+  test('every proposal keeps the bound at every operating point, by its poles and a scan of its own', () => {
+    expect(result.sheet.points.length).toBeGreaterThan(12);
+    for (const one of result.tuned.filter(({ proposal }) => proposal !== null)) {
+      expect(one.keeps).toBe(true);
+      const peaks = result.sheet.points.map((_, i) => scanned(one, i));
+      // The scan looks at 180 frequencies a decade.
+      expect(Math.max(...peaks), one.name).toBeLessThanOrEqual(1.7);
+      // And all but the droop, which is rounded to three digits, come near to it.
+      expect(Math.max(...peaks), one.name).toBeGreaterThan(1.55);
+    }
+  });
+
+  test('the greatest integral gain is that of rejection, and the least cost that of the road', () => {
+    const proposed = result.tuned.filter(
+      ({ proposal, controller }) => proposal !== null && controller.kind === 'pi',
+    );
+    const ki = (name: string): number => {
+      const controller = proposed.find((one) => one.name === name)?.controller;
+      return controller?.kind === 'pi' ? controller.ki : Number.NaN;
+    };
+    for (const { name } of proposed) expect(ki('tuned-rejection')).toBeGreaterThanOrEqual(ki(name) * 0.999);
+    const cost = (name: string) => result.tuned.find((one) => one.name === name)!.cost as number;
+    for (const { name } of proposed) expect(cost('tuned-road')).toBeLessThanOrEqual(cost(name) + 1e-3);
+    // 1 per km/h, less 0.01 per cent within the band, and 0.01 per %/km, by hand from the figures.
+    const { figures } = result.tuned.find(({ name }) => name === 'tuned-road')!;
+    const [rms, within, travel] = ['rms_error_kmh', 'within_band_pct', 'throttle_travel_pct_per_km'].map(
+      (name) => figures[name] as number,
+    );
+    expect(cost('tuned-road')).toBeCloseTo(rms! - 0.01 * within! + 0.01 * travel!, 12);
+  });
+
+  test('tells which candidate of the case exceeds the bound', () => {
+    expect(result.tuned.map(({ keeps }) => keeps).slice(0, 2)).toEqual([false, true]);
+    expect(result.status).toBe('bound_not_kept');
+  });
+
+  test('proposals have the sampling and the weight of the first PI candidate', () => {
+    for (const { controller, proposal } of result.tuned) {
+      if (proposal === null || (controller.kind !== 'pi' && controller.kind !== 'pid')) continue;
+      expect([controller.sample, controller.setpointWeight]).toEqual([0.05, 0.5]);
+    }
+  });
+
+  test('a proposal goes into the case, no other byte of which changes, and a run finds the same figures', () => {
+    for (const { name, figures, proposal } of result.tuned) {
+      if (proposal === null) continue;
+      const edited = addProposals(TEXT, 'road.yaml', result, [{ design: proposal.design, name: 'chosen' }]);
+      const start = [...TEXT].findIndex((c, i) => c !== edited[i]);
+      expect(TEXT.slice(start)).toBe(edited.slice(edited.length - (TEXT.length - start)));
+      const run = runCase(read(edited));
+      const again = run.candidates.find((one) => one.name === 'chosen')!;
+      expect(again.figures, name).toEqual(figures);
+    }
+  }, 60_000);
+
+  test('the same case gives the same bytes', () => {
+    const bytes = (one: TuneResult): readonly string[] => [
+      renderTune(one, { units: 'kmh' }),
+      tuneJson(one, []),
+      proposalsCsv(one),
+      marginsCsv(one.sheet),
+    ];
+    const again = () =>
+      tuneCase({ ...read(TEXT), overrides: ['tune.designs=[rejection, road]', 'tune.most_replays=20'] });
+    expect(bytes(again())).toEqual(bytes(again()));
+  }, 60_000);
+
+  test('takes another name where one is taken, and the defaults of a case without tune', () => {
+    const text = TEXT.slice(0, TEXT.indexOf('tune:')).replace('name: calm', 'name: tuned-simc');
+    const found = tuneCase({ ...read(text), overrides: ['tune.designs=[simc]'] });
+    expect(found.tuned.map(({ name }) => name)).toEqual(['shipped', 'tuned-simc', 'tuned-simc-2']);
+    expect(found.plan.cost.map(({ figure }) => figure)).toEqual([
+      'rms_error_kmh',
+      'throttle_travel_pct_per_km',
+    ]);
+    expect(found.defaults.some(({ key }) => key === 'tune.max_sensitivity')).toBe(true);
+  });
+
+  test('refuses a case whose speed is held nowhere', () => {
+    const text = TEXT.replace('peak_force_n: 480', 'peak_force_n: 10')
+      .replace(/tune:[^#]*/, 'tune: {speeds_kmh: [50], grades_pct: [4]}\n')
+      .replace('design: {settling_s: 40, overshoot_pct: 1}', 'kp_pct_per_kmh: 2, ti_s: 9')
+      .replaceAll('grade_pct: 0', 'grade_pct: 2')
+      .replaceAll('grade_pct: -2', 'grade_pct: 2');
+    expect(codeOf(() => tuneCase(read(text)))).toBe('nothing-to-tune');
+  });
+});
+
+const codeOf = (work: () => unknown): string => {
+  try {
+    work();
+  } catch (error) {
+    if (error instanceof InputError) return error.problems[0]!.code;
+    throw error;
+  }
+  return '';
+};
+
+describe('additions', () => {
+  test('are a design, and another name behind it', () => {
+    expect(readAddition('road')).toEqual({ design: 'road', name: null });
+    expect(readAddition('best=pi-2')).toEqual({ design: 'best', name: 'pi-2' });
+    expect(codeOf(() => readAddition('luck'))).toBe('unknown-design');
+    expect(codeOf(() => readAddition('road=My PI'))).toBe('bad-name');
+  });
+
+  test('are refused before the work where the name is taken or the gains would be those of another case', () => {
+    const check = (overrides: string[], ...additions: string[]) =>
+      codeOf(() => checkAdditions(TEXT, 'road.yaml', additions.map(readAddition), overrides));
+    expect(check([], 'road=calm')).toBe('doubled-name');
+    expect(check([], 'road=a', 'simc=a')).toBe('doubled-name');
+    expect(check(['hold.set_speed_kmh=60'], 'road')).toBe('added-to-another-case');
+    expect(check(['tune.max_sensitivity=1.5'], 'road', 'best=b')).toBe('');
+  });
+
+  test('are refused where there is no such proposal', () => {
+    const none = { ...result, tuned: result.tuned.filter(({ proposal }) => proposal === null), chosen: null };
+    expect(codeOf(() => addProposals(TEXT, 'road.yaml', none, [{ design: 'best', name: null }]))).toBe(
+      'not-proposed',
+    );
+  });
+});
