@@ -1,7 +1,7 @@
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { binCurve } from '../model/bin-curves.ts';
-import { type Curve, columnsOf, extentOf } from '../model/columns.ts';
+import { type Curve, columnsOf, extentOf, peaksOf } from '../model/columns.ts';
 import { rideCurves } from '../model/ride-curves.ts';
 import type { CandidateView, RideView, View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
@@ -28,6 +28,8 @@ import { rideLine, rideSign } from './ride-line.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
+/** Columns in a user unit of a line without a shade around it. */
+const FINE = 2;
 
 /** All lanes under one another over the same distance. */
 export function lanesChart(view: View, canvas: Canvas): Html {
@@ -91,9 +93,9 @@ function oneLane(view: View, canvas: Canvas, look: LaneLook, box: Box, first: bo
   );
   const logged = view.rides.flatMap((ride, i) =>
     ridden[i]!.map((curve) => {
-      const columns = columnsOf(curve, 0, view.length / (box.width / COLUMN));
+      const peaks = peaksOf(curve, view.length / (box.width * FINE));
       return rideLine(
-        columns.map((c): Point => [x(toKm(c.at)), y(look.of(c.mean))]),
+        peaks.map(([at, value]): Point => [x(toKm(at)), y(look.of(value))]),
         ride,
         box,
         canvas,

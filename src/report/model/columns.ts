@@ -57,6 +57,18 @@ export function columnsOf(curve: Curve, from: number, width: number): readonly C
   return columns;
 }
 
+/** Places and values of a line that keeps every peak: of each column its least and greatest value, the nearer to the one before first. */
+export function peaksOf(curve: Curve, width: number): readonly (readonly [at: number, value: number])[] {
+  const peaks: (readonly [number, number])[] = [];
+  for (const { at, low, high } of columnsOf(curve, 0, width)) {
+    const last = peaks.at(-1)?.[1] ?? low;
+    const [first, second] = Math.abs(low - last) <= Math.abs(high - last) ? [low, high] : [high, low];
+    peaks.push([at, first]);
+    if (second !== first) peaks.push([at, second]);
+  }
+  return peaks;
+}
+
 /** Every value of a curve as a column of its own, but for those that are not finite: for a picture finer than they are. */
 export function everyValue(curve: Curve): readonly Column[] {
   const columns: Column[] = [];

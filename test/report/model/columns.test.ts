@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { columnsOf, extentOf, plainCurve } from '../../../src/report/model/columns.ts';
+import { columnsOf, extentOf, peaksOf, plainCurve } from '../../../src/report/model/columns.ts';
 
 describe('columns of a curve', () => {
   it('hold least, mean and greatest of what falls into them', () => {
@@ -42,5 +42,18 @@ describe('columns of a curve', () => {
     expect(columnsOf(curve, 0, 10)).toEqual([{ at: 1, low: 1, mean: 2, high: 3 }]);
     expect(extentOf([curve])).toEqual([1, 3]);
     expect(extentOf([plainCurve([0], [Number.NaN])])).toBeNull();
+  });
+});
+
+describe('the peaks of a line', () => {
+  it('are the least and greatest value of each column, the nearer to the one before first', () => {
+    const curve = plainCurve([0, 1, 2, 3, 4], [5, 9, 8, 1, 4]);
+    expect(peaksOf(curve, 2)).toEqual([
+      [0.5, 5],
+      [0.5, 9],
+      [2.5, 8],
+      [2.5, 1],
+      [4, 4],
+    ]);
   });
 });
