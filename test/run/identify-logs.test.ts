@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
+import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { identificationJson } from '../../src/report/identify/identification-json.ts';
 import { renderIdentification } from '../../src/report/identify/render-identification.ts';
@@ -202,4 +203,13 @@ candidates: [{name: locked, kind: locked, throttle: level}]
   expectClose(cda!.estimate.value, TRUTH.cda, 0.03);
   expectClose(crr!.estimate.value, TRUTH.crr, 0.003);
   expect(result.driveWords).toContain('power at the wheel');
+});
+
+test('the candidates of a step test are those of a case', () => {
+  const { text } = identified('steps');
+  const document = readCaseFile(
+    `track: {profile: [{length_m: 600, grade_pct: 0}]}\nvehicle: v.yaml\nhold: {set_speed_kmh: 60}\n${text}`,
+    'case.yaml',
+  );
+  expect(document.file.candidates.map(({ name }) => name)).toEqual(['simc-tight', 'simc-calm']);
 });
