@@ -249,7 +249,7 @@ test('the account closes, time is on or off, events are in order, and any checkp
           ).toBe(-1);
       }
     }),
-    { numRuns: 30, seed: 20 },
+    { numRuns: 20, seed: 20 },
   );
 });
 
@@ -260,7 +260,7 @@ test('a run leaves nothing behind for the next', () => {
       runLoop(other);
       expect(runLoop(one)).toEqual(alone);
     }),
-    { numRuns: 10, seed: 21 },
+    { numRuns: 5, seed: 21 },
   );
 });
 
@@ -281,6 +281,6 @@ test('both schemes see the same events and speeds', () => {
       expect(kinds(fast!)).toEqual(kinds(exact!));
       expectClose(fast!.bins.speedMean, exact!.bins.speedMean, 0.1);
     }),
-    { numRuns: 30, seed: 22 },
+    { numRuns: 20, seed: 22 },
   );
 });
