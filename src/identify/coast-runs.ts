@@ -14,6 +14,8 @@ export const FEWEST_EACH_WAY = 2;
 export const FEWEST_LOGGED = 3;
 /** Highest over lowest speed below which air and tyres cannot be told apart. */
 export const LEAST_RATIO = 2;
+/** Longest time between rows over which a speed may be interpolated [s]. */
+const LONGEST_GAP = 3;
 /** A rise of the speed that is no noise, on a road whose slope is not known [m/s]. */
 const RISE = 0.5;
 
@@ -24,7 +26,7 @@ const MEASURE =
  * The runs of a coast-down, cut to where the vehicle coasts: behind the last row of an open throttle, where a throttle
  * was logged, and down to 9 km/h.
  *
- * @throws InputError with every fault: `too-few-samples`, `not-coasting`, `mixed-columns`, `one-direction`,
+ * @throws InputError with every fault: `too-few-samples`, `gap-in-run`, `not-coasting`, `mixed-columns`, `one-direction`,
  *   `direction-unknown`, `too-few-runs`, `speed-range-too-narrow`; each says what was found and what to measure
  */
 export function coastRunsOf(logs: readonly LoggedRun[]): readonly CoastRun[] {
@@ -72,6 +74,17 @@ function faultsOfRun({ file, name, time, speed, elevation, grade }: CoastRun): P
         message: `${which} has too few samples of coasting above ${kmh(SLOWEST)}`,
         found: `${time.length}`,
         allowed: `${FEWEST_SAMPLES} or more; log 5 a second or more`,
+      },
+    ];
+  const gap = time.findIndex((t, i) => i > 0 && t - time[i - 1]! > LONGEST_GAP);
+  if (gap > 0)
+    return [
+      {
+        code: 'gap-in-run',
+        place,
+        message: `${which} has a gap`,
+        found: `${(time[gap]! - time[gap - 1]!).toFixed(1)} s without a row, from ${time[gap - 1]!.toFixed(1)} s after its first row`,
+        allowed: `rows up to ${LONGEST_GAP} s apart; two runs instead of one, told apart by a column run`,
       },
     ];
   const means = pieceMeans(speed);
