@@ -10,6 +10,7 @@ import { cpu } from './cpu.mjs';
 import { benchKinds } from './kinds.mjs';
 import { benchMatrix, cellsOfMatrix, runsOfMatrix } from './matrix.mjs';
 import { benchBytes, benchPlan, benchRoad } from './scenario.mjs';
+import { benchTune } from './tune.mjs';
 
 if (process.argv[2] === undefined && !existsSync(join(root, 'dist/index.js')))
   must('npm', ['run', '-s', 'build']);
@@ -158,6 +159,17 @@ try {
     `reading ${read.points} GPX points`,
     `${read.seconds.toFixed(1)} s`,
     `${read.peakMb.toFixed(0)} MB at peak (goal 5 s, 1,000 MB)`,
+  );
+
+  const tuning = benchTune(library);
+  show(
+    `gains under a bound at ${tuning.points} operating points, one of them`,
+    `${tuning.pointMs.toFixed(1)} ms`,
+  );
+  show(
+    `tuning on 20 km of road in ${tuning.replays} replays`,
+    `${tuning.roadSeconds.toFixed(1)} s`,
+    `(${tuning.replayMs.toFixed(0)} ms a replay with its figures)`,
   );
 } finally {
   rmSync(folder, { recursive: true, force: true });
