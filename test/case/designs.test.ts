@@ -116,3 +116,31 @@ candidates:
     ['out-of-range', 'c.yaml', 6, 'candidates.b.throttle_pct'],
   ]);
 });
+
+it('works out gains from the delay and from a bound, and says so', () => {
+  const text = `track: {profile: [{length_m: 1000, grade_pct: 0}]}
+vehicle: v.yaml
+hold: {set_speed_kmh: 60}
+candidates:
+  - {name: simc, kind: pi, design: {closed_loop_s: 1.5}}
+  - {name: lambda, kind: pi, design: {closed_loop_s: 1.5, rule: lambda}}
+  - {name: bound, kind: pi, design: {max_sensitivity: 1.4, at_kmh: 50}}
+`;
+  const setups = candidatesOf(readCaseFile(text, 'c.yaml'), vehicle('proving-e.yaml')).map(
+    ({ controller }) => controller as PiSetup,
+  );
+  const [simc, lambda, bound] = setups.map(({ design }) => design!);
+  expect(setups.map(({ design, setpointWeight }) => [design?.method, setpointWeight])).toEqual([
+    ['simc', 0],
+    ['lambda', 0],
+    ['load_rejection', 0],
+  ]);
+  // The same gain, and under SIMC an integral time of four times closed loop and delay.
+  expectClose(setups[0]!.kp, setups[1]!.kp, 1e-12);
+  expectClose(setups[0]!.kp / setups[0]!.ki, 4 * (1.5 + simc!.promised.delay!), 1e-9);
+  expect(setups[1]!.kp / setups[1]!.ki).toBeGreaterThan(setups[0]!.kp / setups[0]!.ki);
+  expect(lambda!.words).toContain('lambda tuning for a closed loop of 1.5 s');
+  expectClose(bound!.speed, 50 / 3.6, 1e-12);
+  expect(bound!.promised.sensitivity).toBeGreaterThan(1.38);
+  expect(bound!.promised.sensitivity).toBeLessThanOrEqual(1.4);
+});
