@@ -33,7 +33,7 @@ export interface TunePlan {
 /**
  * What a case asks of the tuning; a case without `tune` asks for the defaults.
  *
- * @throws InputError `no-gears`, `out-of-range` for gears that the vehicle does not have
+ * @throws InputError `no-gears`, `out-of-range` for gears that the vehicle does not have; `too-many-points`
  */
 export function tuneOf(document: CaseDocument, vehicle: VehicleDocument): TunePlan {
   const { file } = document;
@@ -42,12 +42,19 @@ export function tuneOf(document: CaseDocument, vehicle: VehicleDocument): TunePl
   const own = ownCombination(document, vehicle);
   const loads = asked.loads ?? file.matrix?.loads ?? ['own'];
   const speeds = asked.speeds_kmh?.map(fromKmh) ?? setSpeeds(file, vehicle);
+  const gears = inOrder((asked.gears ?? gearsOf(file, own.gear)).map((gear) => gear - 1));
+  refuseSize(document, {
+    speeds: inOrder(speeds).length,
+    grades: asked.grades_pct.length,
+    gears: gears.length,
+    loads: loads.length,
+  });
   return {
     sensitivity: asked.max_sensitivity,
     cost: asked.cost,
     speeds: inOrder(speeds),
     grades: inOrder(asked.grades_pct.map(fromPct)),
-    gears: inOrder((asked.gears ?? gearsOf(file, own.gear)).map((gear) => gear - 1)),
+    gears,
     loads: loads.map((load) => loadOf(load, own.load)),
     like: likeOf(file, asked.like),
     designs: asked.designs,
@@ -67,6 +74,22 @@ export function tuneDefaults({ source, file }: CaseDocument): readonly DefaultUs
     key: `tune.${used.key}`,
     value: used.value + (used.key === 'speeds_kmh' ? designSpeeds : ''),
   }));
+}
+
+/** Every point takes some tens of milliseconds. */
+const MOST_POINTS = 500;
+
+function refuseSize({ source }: CaseDocument, counts: Readonly<Record<string, number>>): void {
+  const points = Object.values(counts).reduce((product, count) => product * count, 1);
+  if (points <= MOST_POINTS) return;
+  const words = Object.entries(counts).map(([name, count]) => `${count} ${name}`);
+  throw new InputError({
+    code: 'too-many-points',
+    place: placeOf(source, ['tune']),
+    message: 'the grid has too many operating points',
+    found: `${words.join(' x ')} = ${points}`,
+    allowed: `at most ${MOST_POINTS}, beside those of the route`,
+  });
 }
 
 const inOrder = (values: readonly number[]): readonly number[] => [...new Set(values)].sort((a, b) => a - b);
