@@ -1,44 +1,28 @@
-import { candidateSchema } from '../case/candidate-schema.ts';
-import { candidateOf } from '../case/candidates-of.ts';
-import type { CaseDocument } from '../case/read-case-file.ts';
-import type { TuneDesign, TunePlan } from '../case/tune-of.ts';
+import type { TuneDesign } from '../case/tune-of.ts';
 import { type DesignLoop, designLoop } from '../control/design-point.ts';
 import { greatestIntegralGain, trimmed } from '../control/design-rejection.ts';
-import { equalGainSchedule } from '../control/design-schedule.ts';
 import { delayedLag } from '../control/design-simc.ts';
 import { type GainRegion, gainRegion } from '../control/gain-region.ts';
-import { gainsAt } from '../control/gain-schedule.ts';
 import { type LinearController, linearController } from '../control/linear-controller.ts';
 import type { Gains } from '../control/sampled-loop.ts';
-import type { Candidate, ControllerSetup, GainSchedule } from '../control/setup.ts';
+import type { Candidate, ControllerSetup } from '../control/setup.ts';
 import { exp, log } from '../numeric/elementary.ts';
 import { InputError } from '../problems/input-error.ts';
-import { keptInGear } from '../study/gear-course.ts';
-import type { OperatingPoint } from '../study/operating-point.ts';
-import { gainsAtPoint, pointLoop } from '../study/point-margins.ts';
+import { pointLoop } from '../study/point-margins.ts';
 import { type RoadTrial, searchOnRoad } from '../study/tune-search.ts';
 import { type Keeps, tightestClosedLoop, tightestDroop, tightestSettling } from '../study/tune-tightest.ts';
 import { toKmh, toPct } from '../units/convert.ts';
-import { linearise } from '../vehicle/linearise.ts';
-import type { Surroundings } from '../vehicle/surroundings.ts';
-import type { Vehicle } from '../vehicle/vehicle.ts';
-import { keysLike, textOfDesign, textOfGains, textOfSchedule, writtenGains } from './candidate-text.ts';
+import { keysLike, textOfDesign, textOfGains, writtenGains } from './candidate-text.ts';
+import {
+  controllerOf,
+  type Found,
+  gainWords,
+  keepsBound,
+  NONE_KEEPS,
+  type ProposalContext,
+} from './proposal-context.ts';
+import { scheduleProposal } from './schedule-proposal.ts';
 import type { CandidateText, NotProposed, Proposal } from './tune-result.ts';
-
-/** What proposals are made from. */
-export interface ProposalContext {
-  readonly document: CaseDocument;
-  readonly vehicle: Vehicle;
-  /** Where designs are made: level, still, at sea level, at the true speed of the set speed [m/s]. */
-  readonly surroundings: Surroundings;
-  readonly speed: number;
-  readonly plan: TunePlan;
-  /** At least one. */
-  readonly points: readonly OperatingPoint[];
-  /** Cost of a run over the road; Infinity: it did not get to its end. `search`: fast is good enough. */
-  readonly costOf: (controller: ControllerSetup, purpose: 'search' | 'confirm') => number;
-  readonly onProgress: (share: number, words: string) => void;
-}
 
 export interface Proposals {
   readonly proposed: readonly Proposed[];
@@ -57,12 +41,9 @@ const EASE = 1.03;
 const EASES = 25;
 /** A design that does is asked for more, in steps that begin with this. */
 const TIGHTEN = 1.13;
-const NONE_KEEPS = 'no gains of this kind keep the bound at every operating point';
 /** Trials on the road that are looked at with all exactness. */
 const CONFIRMED = 3;
 const BORDER_POINTS = 120;
-
-type Found = { readonly file: CandidateText; readonly words: string } | { readonly none: string };
 
 /**
  * Gains by every way that the case asks for, each the tightest that keeps the bound at all operating points: the ways
@@ -156,14 +137,14 @@ export function proposalsOf(context: ProposalContext): Proposals {
     rejection: () => {
       const greatest = greatestIntegralGain(region);
       const gains = greatest === null ? null : settle(greatest);
-      if (gains === null) return { none: 'no gains keep the bound at every operating point' };
+      if (gains === null) return { none: NONE_KEEPS };
       return trimmedText(
         gains,
         (one) => textOfGains(name('rejection'), like, one),
         `The greatest integral gain that keeps the bound at every operating point: ${gainWords(gains)}.`,
       );
     },
-    schedule: () => scheduleFound(context, scans, timing.sample, name('schedule'), like, keeps),
+    schedule: () => scheduleProposal(context, scans, timing.sample, name('schedule'), like, keeps),
     road: () => {
       const setupOf = (gains: Gains): ControllerSetup =>
         controllerOf(context, textOfGains(name('road'), like, gains));
@@ -183,7 +164,7 @@ export function proposalsOf(context: ProposalContext): Proposals {
         return {
           none:
             trials.length === 0
-              ? 'no gains keep the bound at every operating point'
+              ? NONE_KEEPS
               : 'no replay has a cost: none comes to the end of the road with every figure of it',
         };
       return trimmedText(
@@ -197,9 +178,7 @@ export function proposalsOf(context: ProposalContext): Proposals {
   /** What the scan let pass between two of its frequencies is taken back. */
   const trimmedText = (gains: Gains, fileOf: (gains: Gains) => CandidateText, words: string): Found => {
     const kept = trimmed(gains, (one) => keeps(fileOf(one)));
-    return kept === null
-      ? { none: 'no gains keep the bound at every operating point' }
-      : { file: fileOf(kept), words };
+    return kept === null ? { none: NONE_KEEPS } : { file: fileOf(kept), words };
   };
 
   const proposed: Proposed[] = [];
@@ -217,29 +196,10 @@ export function proposalsOf(context: ProposalContext): Proposals {
   return { proposed, notProposed, trials, border: borderOf(region) };
 }
 
-/** A controller as `run` makes it of its text. */
-function controllerOf(
-  { document, vehicle, surroundings }: ProposalContext,
-  file: CandidateText,
-): ControllerSetup {
-  const index = document.file.candidates.length;
-  return candidateOf(candidateSchema.parse(file), { document, vehicle, surroundings, index }).controller;
-}
-
 function timingOf(context: ProposalContext, file: CandidateText): LinearController {
   const linear = linearController(controllerOf(context, file));
   if ('none' in linear) throw new RangeError('a PI controller is linear');
   return linear;
-}
-
-/** By the margins themselves, at every point. */
-function keepsBound({ points, plan }: ProposalContext, controller: ControllerSetup): boolean {
-  const linear = linearController(controller);
-  if ('none' in linear) return false;
-  return points.every((point) => {
-    const { figures } = pointLoop(point, linear).margins(gainsAtPoint(point, linear));
-    return figures !== null && figures.sensitivity <= plan.sensitivity;
-  });
 }
 
 /** The loop that designs are made on; or why there is none. */
@@ -263,66 +223,8 @@ function designOf(
   }
 }
 
-function scheduleFound(
-  context: ProposalContext,
-  scans: readonly ReturnType<typeof pointLoop>[],
-  sample: number,
-  name: string,
-  like: ReturnType<typeof keysLike>,
-  keeps: (file: CandidateText) => boolean,
-): Found {
-  const { vehicle, surroundings, speed, plan, points } = context;
-  const shown = 1 + vehicle.sensor.scaleError;
-  const gainOf = (gear: number, at: number): number | null => {
-    const model = linearise(keptInGear(vehicle, gear), { speed: at, surroundings });
-    return model?.feasible === true ? model.b : null;
-  };
-  const base = gainOf(vehicle.drive.gear, speed);
-  const gears = [...new Set([...plan.gears, ...points.map(({ gear }) => gear)])];
-  const speeds = [...new Set([...plan.speeds, speed])];
-  if (base === null) return { none: 'the drive does not hold the set speed on the level' };
-  const schedule = equalGainSchedule(
-    gears.flatMap((gear) => speeds.map((at) => ({ gear, speed: at * shown, gain: gainOf(gear, at) }))),
-    base,
-  );
-  if (schedule === null)
-    return {
-      none: 'the gain of the vehicle is the same in every gear and at every speed that was asked for',
-    };
-  const factors = factorsOf(schedule, points, vehicle.drive.gears.length);
-  const region = gainRegion(
-    scans.map(({ loop }, i) => ({ loop, sample, factors: factors[i]! })),
-    plan.sensitivity,
-  );
-  const greatest = greatestIntegralGain(region);
-  const fileOf = (gains: Gains): CandidateText => ({
-    ...textOfGains(name, like, gains),
-    schedule: textOfSchedule(schedule),
-  });
-  const kept = greatest === null ? null : trimmed(greatest, (gains) => keeps(fileOf(gains)));
-  if (kept === null) return { none: 'no gains keep the bound at every operating point' };
-  return {
-    file: fileOf(kept),
-    words: `The greatest integral gain that keeps the bound at every operating point, scheduled over ${gears.length > 1 ? 'gear and ' : ''}speed so that the gain of the loop is the same everywhere: ${gainWords(kept)} at the set speed.`,
-  };
-}
-
-function factorsOf(schedule: GainSchedule, points: readonly OperatingPoint[], gears: number) {
-  const gainsIn = gainsAt({ kp: 1, ki: 1, kd: 0 }, schedule, gears);
-  return points.map(({ gear, speed, vehicle }) => {
-    const out = new Float64Array(3);
-    gainsIn(gear, speed * (1 + vehicle.sensor.scaleError), out);
-    return { proportional: out[0]!, integral: out[1]! };
-  });
-}
-
 const designWords = (controller: ControllerSetup): string =>
   (controller.kind === 'pi' || controller.kind === 'pid' ? controller.design?.words : undefined) ?? '';
-
-function gainWords(gains: Gains): string {
-  const { kp_pct_per_kmh: kp, ti_s: ti } = textOfGains('words', {}, gains);
-  return `kp ${kp} % per km/h, Ti ${ti} s`;
-}
 
 /** A name that no candidate has, with a number where it must. */
 function freeName(name: string, taken: ReadonlySet<string>): string {
