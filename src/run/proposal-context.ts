@@ -6,7 +6,7 @@ import { linearController } from '../control/linear-controller.ts';
 import type { Gains } from '../control/sampled-loop.ts';
 import type { ControllerSetup } from '../control/setup.ts';
 import type { OperatingPoint } from '../study/operating-point.ts';
-import { gainsAtPoint, pointLoop } from '../study/point-margins.ts';
+import { gainsAtPoint, type pointLoop } from '../study/point-margins.ts';
 import type { Surroundings } from '../vehicle/surroundings.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { textOfGains } from './candidate-text.ts';
@@ -41,12 +41,20 @@ export function controllerOf(
   return candidateOf(candidateSchema.parse(file), { document, vehicle, surroundings, index }).controller;
 }
 
-/** By the margins themselves, at every point. */
-export function keepsBound({ points, plan }: ProposalContext, controller: ControllerSetup): boolean {
+/**
+ * By the margins themselves, at every point.
+ *
+ * @param scans of the points, under the timing of the controller
+ */
+export function keepsBound(
+  { points, plan }: ProposalContext,
+  scans: readonly ReturnType<typeof pointLoop>[],
+  controller: ControllerSetup,
+): boolean {
   const linear = linearController(controller);
   if ('none' in linear) return false;
-  return points.every((point) => {
-    const { figures } = pointLoop(point, linear).margins(gainsAtPoint(point, linear));
+  return points.every((point, i) => {
+    const { figures } = scans[i]!.margins(gainsAtPoint(point, linear));
     return figures !== null && figures.sensitivity <= plan.sensitivity;
   });
 }

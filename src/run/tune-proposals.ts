@@ -66,7 +66,7 @@ export function proposalsOf(context: ProposalContext): Proposals {
     const kept = trimmed(gains, (one) => atPoints(writtenGains(one)));
     return kept === null ? null : writtenGains(kept);
   };
-  const keeps = (file: CandidateText): boolean => keepsBound(context, controllerOf(context, file));
+  const keeps = (file: CandidateText): boolean => keepsBound(context, scans, controllerOf(context, file));
   const design = designOf(context, timing);
   let trials: readonly RoadTrial[] = [];
 
