@@ -84,6 +84,7 @@ export const candidateOf = (file: CandidateFile, context: CandidateContext): Can
  *
  * @param vehicle that they drive, as loaded
  * @param surroundings of the operating points of designs; by default level, still, the air of the case at sea level
+ * @param one what works out one of them
  * @throws InputError with a problem for every candidate whose design cannot be met, whose throttle lies outside the
  *   drive's range, or that needs a drive where there is none
  */
@@ -91,12 +92,13 @@ export function candidatesOf(
   document: CaseDocument,
   vehicle: Vehicle,
   surroundings: Surroundings = atSeaLevel(document),
+  one: typeof candidateOf = candidateOf,
 ): Candidate[] {
   const problems: Problem[] = [];
   const candidates = document.file.candidates.flatMap((file, index): Candidate[] => {
     const context = { document, vehicle, surroundings, index };
     try {
-      return [candidateOf(file, context)];
+      return [one(file, context)];
     } catch (error) {
       if (!(error instanceof InputError)) throw error;
       problems.push(...error.problems);

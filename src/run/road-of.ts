@@ -63,6 +63,7 @@ export function roadOfCase(document: CaseDocument, log: InputLog, file: string, 
 /**
  * Reads the track of a case once.
  *
+ * @param tracks what reads it
  * @returns what makes the road over it: of the case, or of the same case in another wind, direction, or set speed
  */
 export function roadMaker(
@@ -70,6 +71,7 @@ export function roadMaker(
   log: InputLog,
   file: string,
   namedAt?: Place,
+  tracks: typeof readTrack = readTrack,
 ): (document: CaseDocument) => Road {
   const profile = profileOf(document);
   const inCase = ({ key = 'track' }: Place): Place => placeOf(document.source, stepsOf(key));
@@ -81,7 +83,7 @@ export function roadMaker(
   }
   const name = document.trackFile ?? '';
   const bytes = log.read(name, namedAt);
-  const track = readTrack({ name, bytes }, trackChoiceOf(document) ?? undefined);
+  const track = tracks({ name, bytes }, trackChoiceOf(document) ?? undefined);
   stretchesOnTrack(document, track.distance[track.size - 1] ?? 0);
   // What a key asks of the track has its place in the case or the option, what the track is in its file.
   const place = (found: Place): Place => {

@@ -1,18 +1,12 @@
-import { atSeaLevel, candidatesOf } from '../case/candidates-of.ts';
 import { givenValues } from '../case/given-values.ts';
-import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
-import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
-import { outputOf, requirementsOf, schemeOf, segmentsOf, titleOf } from '../case/run-of.ts';
-import { rideDefaults, vehicleOfCase } from '../case/vehicle-of-case.ts';
-import { placeOf } from '../case/yaml-source.ts';
+import { segmentsOf, titleOf } from '../case/run-of.ts';
+import { rideDefaults } from '../case/vehicle-of-case.ts';
 import { linearController } from '../control/linear-controller.ts';
-import { loopStability } from '../control/loop-stability.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, LoopPlan } from '../loop/plan.ts';
+import type { LoopPlan } from '../loop/plan.ts';
 import { replay } from '../loop/replay.ts';
 import type { FullSeries, LoopResult } from '../loop/result.ts';
 import { runLoop } from '../loop/run-loop.ts';
-import { InputError } from '../problems/input-error.ts';
 import type { Road } from '../road/road.ts';
 import { askedHold } from '../study/asked-hold.ts';
 import { compareCandidates } from '../study/compare-candidates.ts';
@@ -28,20 +22,17 @@ import { operatingPoints } from '../study/operating-points.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
 import { visitsOfDemand, visitsOfRecord } from '../study/visited-points.ts';
-import { decodeText } from '../track/decode-text.ts';
-import { toKmh } from '../units/convert.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
 import { holdWarnings } from './hold-warnings.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { loggedRidesOf, rideResults, rideWarnings } from './logged-rides.ts';
-import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
+import { loopOfRun } from './loop-of-run.ts';
 import { type MatrixWork, matrixRides } from './matrix-work.ts';
 import { overrideWarnings } from './override-warnings.ts';
-import { placesOnRoad, timesNotReached } from './places-on-road.ts';
-import { rideOf } from './ride-of.ts';
-import { roadMaker } from './road-of.ts';
+import { timesNotReached } from './places-on-road.ts';
+import { prepareRun } from './prepare-run.ts';
 import { runCell } from './run-cell.ts';
 import type { CandidateResult, RunResult } from './run-result.ts';
 import { runWarnings } from './run-warnings.ts';
@@ -68,9 +59,6 @@ interface Stage {
 const HILLS: Stage = { from: 0.15, to: 0.47, words: 'hills' };
 const CYCLES: Stage = { from: 0.47, to: 0.5, words: 'limit cycles' };
 const SPREAD: Stage = { from: 0.5, to: 0.95, words: "roads drawn from the grade's uncertainty" };
-
-/** Bands that one run can count in. */
-const MOST_BANDS = 4;
 
 /**
  * The main job: reads a case and its files, makes the road, replays every candidate over it, and finds what the
@@ -107,24 +95,12 @@ export function runWithoutMatrix({
 }: RunRequest): CaseRun {
   const log = new InputLog(read);
   onShare(0, 'reading');
-  const document = readCaseFile(decodeText(log.read(file), file), file, overrides);
-  const vehicleDocument = vehicleDocumentOf(document, log);
-  const vehicle = vehicleOfCase(document, vehicleDocument);
-  const makeRoad = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']));
-  const road = makeRoad(document);
-  const loggedRides = loggedRidesOf(document, log, road);
-  const { bends: bendPlan, ...ride } = rideOf(document, vehicle, road);
+  const prepared = prepareRun({ file, log, overrides });
+  const { document, vehicleDocument, vehicle, makeRoad, road, ride, requirements } = prepared;
+  const { band, bands, output, scheme, candidates, plans } = prepared;
   const { hold, rider } = ride;
-  const requirements = requirementsOf(document);
-  const band = bandOf(requirements);
-  const bands = bandsOf(requirements);
-  if (bands.length > MOST_BANDS) throw tooManyBands(document, bands);
-  const placeWarnings = placesOnRoad(document, requirements, ride, road);
-  const output = outputOf(document);
+  const loggedRides = loggedRidesOf(document, log, road);
   const segmenting = segmentsOf(document);
-  const scheme = schemeOf(document);
-  const candidates = candidatesOf(document, vehicle);
-  const plans = loopPlans({ road, vehicle, ...ride, scheme, bands, bin: output.bin }, candidates);
   const rides = matrixRides({ document, vehicle: vehicleDocument, road, makeRoad });
   checkSize(document, plans, output, segmenting, rides?.cells.length);
   const whole = shareBeforeMatrix(rides?.cells.length ?? 0);
@@ -144,15 +120,10 @@ export function runWithoutMatrix({
   const spread = figureSpread(requirements, replayed, context, { onRoad: within(SPREAD) });
   const findings = judge(requirements, replayed, context, spread);
   onProgress(SPREAD.to, 'series');
-  const speeds = trueSetSpeeds(hold, vehicle);
   const results = replayed.map(({ plan, result }, i): CandidateResult => {
     const full = output.series === 'full' ? fullSeries(plan, result) : null;
     const candidate = candidates[i] as Candidate;
-    const linear = linearController(candidate.controller);
-    const loop =
-      'none' in linear
-        ? null
-        : loopStability(vehicle, linear, speeds, atSeaLevel(document), gearsDriven(result));
+    const loop = loopOfRun(document, vehicle, hold, candidate, result);
     return { ...candidate, result, figures: figures[i]?.all ?? {}, loop, full };
   });
   const run: RunResult = {
@@ -168,7 +139,7 @@ export function runWithoutMatrix({
     rider,
     supervisor: ride.supervisor ?? null,
     faults: ride.faults ?? [],
-    bends: bendPlan,
+    bends: prepared.bends,
     scheme,
     band,
     candidates: results,
@@ -186,9 +157,9 @@ export function runWithoutMatrix({
     given: givenValues(document, vehicleDocument),
     warnings: [
       ...runWarnings({ road, vehicle, rider, demand, replayed, candidates: results }),
-      ...placeWarnings,
+      ...prepared.warnings,
       ...rideWarnings(loggedRides, road),
-      ...holdWarnings(document, bendPlan, replayed),
+      ...holdWarnings(document, prepared.bends, replayed),
       ...overrideWarnings(document, overrides),
       ...timesNotReached(document, ride, results),
     ],
@@ -218,19 +189,6 @@ function loopsOnPaper(
   return loopSheet(operatingPoints({ rides: [{ vehicle, load: null, visits }], grid: null }), runs);
 }
 
-/** The true speeds that the set speeds of a run stand for [m/s]. */
-function trueSetSpeeds(hold: HoldPlan, { sensor }: Vehicle): readonly number[] {
-  const shown = hold.setSpeedIs === 'indicated' ? 1 + sensor.scaleError : 1;
-  return [hold.setSpeed, ...hold.changes.map(({ setSpeed }) => setSpeed)].map((speed) => speed / shown);
-}
-
-function vehicleDocumentOf(document: CaseDocument, log: InputLog): VehicleDocument {
-  if (document.vehicle !== null) return document.vehicle;
-  const name = document.vehicleFile ?? '';
-  const bytes = log.read(name, placeOf(document.source, ['vehicle']));
-  return readVehicleFile(decodeText(bytes, name), name, document.vehicleOverrides);
-}
-
 function replayAll(
   candidates: readonly Candidate[],
   plans: readonly LoopPlan[],
@@ -256,19 +214,4 @@ function statusOf(
 ): RunResult['status'] {
   if (findings.some(isMissed)) return 'requirement_not_met';
   return candidates.every(({ result }) => result.status === 'completed') ? 'ok' : 'incomplete';
-}
-
-function tooManyBands(document: CaseDocument, bands: readonly number[]): InputError {
-  return new InputError({
-    code: 'too-many-bands',
-    place: { ...placeOf(document.source, ['requirements']), key: 'requirements' },
-    message: 'the requirements count time in too many different bands',
-    found: bands.map((one) => `${toKmh(one).toFixed(2)} km/h`).join(', '),
-    allowed: `at most ${MOST_BANDS} bands`,
-  });
-}
-
-/** Gears in which a run was driven, indices into the drive's gears. */
-function gearsDriven({ bins }: LoopResult): number[] {
-  return [...new Set(bins.gear.subarray(0, bins.size))];
 }
