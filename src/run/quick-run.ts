@@ -111,7 +111,7 @@ export class QuickRuns {
       demand,
       hills: [],
       cycles: [],
-      transients: { shown: [], leftOut: [] },
+      transients: { shown: [], measures: [], leftOut: [] },
       loggedRides: [],
       loops: { points: [], notHeld: [], loops: [] },
       segmentsBy: segmentsOf(document).by,

@@ -37,6 +37,8 @@ export interface HoldTransient extends HoldMeasure {
 /** The transients of all candidates, by candidate, in order along the way. */
 export interface HoldTransients {
   readonly shown: readonly HoldTransient[];
+  /** Figures of all of them, shown or not. */
+  readonly measures: readonly HoldMeasure[];
   /** Those of a kind beyond the worst few, which have figures and no picture. */
   readonly leftOut: readonly {
     readonly candidate: string;

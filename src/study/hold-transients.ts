@@ -88,7 +88,7 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
       shown.push({ ...measure, words: transientWords(measure), picture });
     }
   }
-  return { transients: { shown, leftOut }, measures };
+  return { transients: { shown, measures: [...measures.values()].flat(), leftOut }, measures };
 }
 
 /** Indices of the events that are followed. */

@@ -131,7 +131,7 @@ function plainResult(wish: FixtureWish): RunResult {
     hills,
     cycles: [],
     loggedRides: [],
-    transients: { shown: [], leftOut: [] },
+    transients: { shown: [], measures: [], leftOut: [] },
     segmentsBy: 'length',
     segments: segmentsOf(road, setups, runs),
     requirements: requirementsOf(wish.requirements ?? 'missed', designs),

@@ -1,8 +1,18 @@
-import { LIMIT_BRAKE, LIMIT_LOWER, LIMIT_RATE, LIMIT_SHIFT, LIMIT_UPPER } from '../../loop/plan.ts';
+import {
+  LIMIT_BRAKE,
+  LIMIT_LOWER,
+  LIMIT_OFF,
+  LIMIT_OVERRIDE,
+  LIMIT_RATE,
+  LIMIT_SHIFT,
+  LIMIT_UPPER,
+} from '../../loop/plan.ts';
 import type { BinRecord } from '../../loop/result.ts';
 import type { CandidateResult, RunResult } from '../../run/run-result.ts';
+import type { Stretch } from '../../study/findings.ts';
 import { meanErrorIn } from '../../study/held-time.ts';
 import { toKmh, toKw, toPct, toWh } from '../../units/convert.ts';
+import { overridesOf } from '../model/hold-away.ts';
 import { ShareAlong } from './share-along.ts';
 import { type Column, csvText } from './table.ts';
 
@@ -16,6 +26,8 @@ export interface BinSource {
   /** Drawn from fuel or battery so far [J]; null: no source. */
   readonly drawn: Float64Array | null;
   readonly locked: boolean;
+  /** Where the rider's grip had the throttle, in order along the way. */
+  readonly overrides: readonly Stretch[];
 }
 
 /** `upper`, `lower`, `rate`, joined by `+`; empty when nothing limited the throttle. */
@@ -27,26 +39,35 @@ export function limitWords(bits: number): string {
   return words.join('+');
 }
 
-/** `shift` with the clutch open or the throttle in the rider's hand, `brake` while the rider brakes, else `locked` or `hold`. */
+/**
+ * `shift` with the clutch open or the throttle in the rider's hand, `off` while hold is off, `override` while the grip has
+ * the throttle, `brake` while the rider brakes, else `locked` or `hold`.
+ */
 export function modeWord(bits: number, locked: boolean): string {
   if (bits & LIMIT_SHIFT) return 'shift';
+  if (bits & LIMIT_OFF) return 'off';
+  if (bits & LIMIT_OVERRIDE) return 'override';
   if (bits & LIMIT_BRAKE) return 'brake';
   return locked ? 'locked' : 'hold';
 }
 
-function bits(bins: BinRecord, i: number): number {
+function bits({ bins, overrides }: BinSource, i: number): number {
+  const [from, to] = [bins.edge[i]!, bins.edge[i + 1]!];
+  const gripped = overrides.some((grip) => grip.from < to && grip.to > from);
   return (
     (bins.timeUpper[i]! > 0 ? LIMIT_UPPER : 0) |
     (bins.timeLower[i]! > 0 ? LIMIT_LOWER : 0) |
     (bins.timeRate[i]! > 0 ? LIMIT_RATE : 0) |
     (bins.timeBrake[i]! > 0 ? LIMIT_BRAKE : 0) |
-    (bins.timeShift[i]! > 0 ? LIMIT_SHIFT : 0)
+    (bins.timeShift[i]! > 0 ? LIMIT_SHIFT : 0) |
+    (bins.timeOff[i]! > 0 ? LIMIT_OFF : 0) |
+    (gripped ? LIMIT_OVERRIDE : 0)
   );
 }
 
 /** What `mode` says, in both series. */
 export const MODE_ABOUT =
-  "hold or locked; brake where the rider brakes; shift with the clutch open or the throttle in the rider's hand";
+  "hold or locked; brake where the rider holds an overspeed; shift with the clutch open or the throttle in the rider's hand for it; off where hold is off and the rider rides by hand; override where the rider's grip has the throttle";
 
 /** The columns of series-<candidate>.csv by bin: one row a distance bin. */
 export const BIN_COLUMNS: readonly Column<BinSource>[] = [
@@ -133,13 +154,13 @@ export const BIN_COLUMNS: readonly Column<BinSource>[] = [
     name: 'limit',
     decimals: 0,
     about: 'upper, lower, rate: what limited the throttle somewhere in the bin, joined by +',
-    value: (s, i) => limitWords(bits(s.bins, i)),
+    value: (s, i) => limitWords(bits(s, i)),
   },
   {
     name: 'mode',
     decimals: 0,
     about: MODE_ABOUT,
-    value: (s, i) => modeWord(bits(s.bins, i), s.locked),
+    value: (s, i) => modeWord(bits(s, i), s.locked),
   },
   {
     name: 'drawn_energy_wh',
@@ -174,6 +195,7 @@ export function binSeriesCsv(run: RunResult, candidate: CandidateResult): string
     work,
     drawn: ledger.drawn === null ? null : drawn,
     locked: candidate.controller.kind === 'locked',
+    overrides: overridesOf(candidate.result),
   };
   return csvText(BIN_COLUMNS, source, bins.size);
 }

@@ -1,11 +1,14 @@
 import type { Road } from '../../road/road.ts';
 import type { RunResult } from '../../run/run-result.ts';
+import { asksOfHold } from '../model/hold-away.ts';
+import { bendsCsv } from './bend-table.ts';
 import { binSeriesCsv } from './bin-series.ts';
 import { cyclesCsv } from './cycle-table.ts';
 import { disturbanceCsv } from './disturbance.ts';
 import { fullSeriesCsv } from './full-series.ts';
 import { hillsCsv } from './hill-table.ts';
 import { histogramsCsv } from './histogram-table.ts';
+import { holdEventsCsv } from './hold-event-table.ts';
 import { marginsCsv } from './margin-table.ts';
 import { matrixCsv } from './matrix-table.ts';
 import { rideCsv } from './ride-series.ts';
@@ -31,6 +34,8 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
     { name: 'cycles.csv', text: cyclesCsv(run.cycles) },
     { name: 'margins.csv', text: marginsCsv(run.loops) },
     { name: 'histograms.csv', text: histogramsCsv(run.candidates) },
+    ...(asksOfHold(run) ? [{ name: 'hold-events.csv', text: holdEventsCsv(run) }] : []),
+    ...(run.bends === null ? [] : [{ name: 'bends.csv', text: bendsCsv(run.bends) }]),
     ...(run.matrix === null ? [] : [{ name: 'matrix.csv', text: matrixCsv(run.matrix) }]),
     ...run.loggedRides.map((ride) => ({ name: `ride-${ride.name}.csv`, text: rideCsv(ride) })),
     ...run.candidates.map((candidate) => ({
@@ -46,10 +51,10 @@ export function dataFiles(run: RunResult): readonly TextFile[] {
 /** The data files of a road alone: disturbance.csv and route.geojson. */
 export function roadFiles(
   road: Road,
-  { hills }: Pick<RunResult, 'hills'> = { hills: [] },
+  { hills, bends }: Pick<RunResult, 'hills' | 'bends'> = { hills: [], bends: null },
 ): readonly TextFile[] {
   return [
     { name: 'disturbance.csv', text: disturbanceCsv(road) },
-    { name: 'route.geojson', text: routeGeoJson(road, hills) },
+    { name: 'route.geojson', text: routeGeoJson(road, hills, bends?.unfit) },
   ];
 }

@@ -1,7 +1,8 @@
 import type { Road } from '../../road/road.ts';
-import type { Hill } from '../../study/findings.ts';
+import type { UnfitPlace } from '../../study/bend-plan.ts';
+import type { Hill, Stretch } from '../../study/findings.ts';
 import { boundingBox, simplifyLine } from '../../track/plan-geometry.ts';
-import { toKm, toPct } from '../../units/convert.ts';
+import { toKm, toKmh, toPct } from '../../units/convert.ts';
 import { rounded } from './fixed.ts';
 import { jsonText } from './json-text.ts';
 
@@ -19,12 +20,13 @@ interface Line {
 }
 
 /**
- * route.geojson by RFC 7946: the driven (trimmed) road as a line with its figures, then a line for each hill.
+ * route.geojson by RFC 7946: the driven (trimmed) road as a line with its figures, then a line for each hill, then
+ * one for each place where speed hold does not belong.
  * Simplified to 1 m; positions to 1e-6 degree (about 0.1 m). A line over the antimeridian is cut there
  * (section 3.1.9), and the bounding box of such a road has its west east of its east (section 5.2). A road without
  * positions is one feature without a geometry (section 3.2), and no bounding box.
  */
-export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
+export function routeGeoJson(road: Road, hills: readonly Hill[], unfit: readonly UnfitPlace[] = []): string {
   const { longitudeDeg, latitudeDeg, elevation, distance, size } = road;
   const line =
     longitudeDeg === null || latitudeDeg === null
@@ -43,7 +45,13 @@ export function routeGeoJson(road: Road, hills: readonly Hill[]): string {
       simplified_to_m: TOLERANCE,
     },
   };
-  const located = line === null ? [] : hills.map((hill) => hillFeature(road, line, hill));
+  const located =
+    line === null
+      ? []
+      : [
+          ...hills.map((hill) => hillFeature(road, line, hill)),
+          ...unfit.map((place) => unfitFeature(road, line, place)),
+        ];
   return jsonText({
     type: 'FeatureCollection',
     ...(line === null ? {} : { bbox: boxAround(line) }),
@@ -78,14 +86,19 @@ export function climbOf(road: Road): { readonly up: number; readonly down: numbe
   return { up, down };
 }
 
-function hillFeature(road: Road, line: Line, hill: Hill): object {
+/** The line of a stretch, from the knot before it to the knot behind it. */
+function stretchGeometry(road: Road, line: Line, stretch: Stretch): object {
   let from = 0;
-  while (from < road.size - 2 && road.distance[from + 1]! <= hill.from) from++;
+  while (from < road.size - 2 && road.distance[from + 1]! <= stretch.from) from++;
   let to = from + 1;
-  while (to < road.size - 1 && road.distance[to]! < hill.to) to++;
+  while (to < road.size - 1 && road.distance[to]! < stretch.to) to++;
+  return geometryOf(line, from, to);
+}
+
+function hillFeature(road: Road, line: Line, hill: Hill): object {
   return {
     type: 'Feature',
-    geometry: geometryOf(line, from, to),
+    geometry: stretchGeometry(road, line, hill),
     properties: {
       kind: 'hill',
       hill: hill.number,
@@ -94,6 +107,21 @@ function hillFeature(road: Road, line: Line, hill: Hill): object {
       to_km: rounded(toKm(hill.to), 4),
       mean_grade_pct: rounded(toPct(hill.meanGrade), 3),
       demand_pct: rounded(toPct(hill.share), 2),
+    },
+  };
+}
+
+function unfitFeature(road: Road, line: Line, place: UnfitPlace): object {
+  return {
+    type: 'Feature',
+    geometry: stretchGeometry(road, line, place),
+    properties: {
+      kind: 'no_hold',
+      reason: place.reason,
+      from_km: rounded(toKm(place.from), 4),
+      to_km: rounded(toKm(place.to), 4),
+      bends: place.bends,
+      lowest_kmh: rounded(toKmh(place.lowestSpeed), 3),
     },
   };
 }

@@ -6,10 +6,13 @@ import { type Figure, isNone, type RequirementFinding } from '../../study/findin
 import { toDeg, toKm, toKmh, toLitre, toPct, toWh } from '../../units/convert.ts';
 import type { Vehicle } from '../../vehicle/vehicle.ts';
 import { type EnergyUse, energyUse } from '../model/energy-use.ts';
+import { asksOfHold } from '../model/hold-away.ts';
+import { bendsJson } from './bend-table.ts';
 import { cycleRows } from './cycle-table.ts';
 import { decimalsOf } from './decimals-of.ts';
 import { rounded } from './fixed.ts';
 import { hillRows } from './hill-table.ts';
+import { holdEventRows } from './hold-event-table.ts';
 import { type Json, numbers, warningJson } from './json-parts.ts';
 import { jsonText } from './json-text.ts';
 import { worstPoints } from './margin-table.ts';
@@ -50,6 +53,8 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     hills: hillRows(run.hills),
     cycles: cycleRows(run.cycles),
     requirements: run.requirements.map(requirementOf),
+    ...(asksOfHold(run) ? { hold_events: holdEventRows(run) } : {}),
+    ...(run.bends === null ? {} : { bends: bendsJson(run.bends) }),
     ...(run.loggedRides.length === 0 ? {} : { logged_rides: run.loggedRides.map(rideJson) }),
     ...(run.matrix === null ? {} : { matrix: matrixJson(run.matrix) }),
     spread: { roads: run.spread.roads, seed: run.spread.seed },
