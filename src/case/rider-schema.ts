@@ -49,7 +49,7 @@ const actSchema = z
     }),
     ...act('brake', 'The brake ends hold', {
       to_kmh: kmh('True speed that the rider brakes to, and goes on at by hand'),
-      brake_m_s2: braking('How hard'),
+      brake_m_s2: braking('How hard, drag and slope included; whether the tyres carry it is not asked'),
     }),
     ...act('ride', 'The switch ends hold, if it is on, and the rider goes on by hand at another speed', {
       to_kmh: kmh('True speed that the rider goes on at'),
@@ -83,7 +83,7 @@ export const riderSchema = mapping('The rider who stands by', {
         2.5,
         'the middle of unhurried riding, 2 to 3 m/s2, from memory',
       ),
-      brake_m_s2: braking('How hard the rider brakes for a bend'),
+      brake_m_s2: braking('How hard the rider brakes for a bend, drag and slope included'),
       resumes_after_s: otherwise(
         number('s', 0, 600, 'From the end of a bend to where the rider resumes, at the speed of the bend'),
         2,

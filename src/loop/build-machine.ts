@@ -8,6 +8,7 @@ import { decay } from './lags.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
+import { WATCHFUL_BRAKE } from './rider-brake.ts';
 import { roadTable } from './road-table.ts';
 import { writeSlope } from './sense-slope.ts';
 
@@ -51,6 +52,7 @@ export function buildMachine(plan: LoopPlan): Machine {
   const { scaleError } = vehicle.sensor;
   p[at.P_TO_TRUE] = plan.hold.setSpeedIs === 'indicated' ? 1 / (1 + scaleError) : 1;
   p[at.P_BRAKES_ABOVE] = plan.rider.brakesAbove ?? Number.POSITIVE_INFINITY;
+  p[at.P_STRONGEST_BRAKE] = WATCHFUL_BRAKE;
   writeLags(p, vehicle, controller.computingDelay);
   writeKinds(p, vehicle);
   writeSlope(p, plan.controller, controller.computingDelay + actuator.deadTime);

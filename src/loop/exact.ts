@@ -76,6 +76,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const lastRow = rows.length - at.R_STRIDE;
   const toTrue = p[at.P_TO_TRUE];
   const brakesAbove = p[at.P_BRAKES_ABOVE];
+  const strongest = p[at.P_STRONGEST_BRAKE];
 
   let v = s[at.SPEED];
   let q = s[at.STATION];
@@ -261,7 +262,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const rolling1 = r0 + v * (r1 + v * r2);
         const watched = v > brakeSpeed - BRAKE_WATCH;
         let k1 = drive1 - aero1 - (rolling1 + (sin0 + sin1 * from));
-        const brake1 = watched ? riderBrake(k1, v - brakeSpeed) : 0;
+        const brake1 = watched ? riderBrake(k1, v - brakeSpeed, strongest) : 0;
         k1 -= brake1;
 
         const f0 = a0 + xh * b0;
@@ -275,7 +276,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const aero2 = w2 * (near + slope * w2);
         const rolling2 = r0 + v2 * (r1 + v2 * r2);
         let k2 = drive2 - aero2 - (rolling2 + (sin0 + sin1 * q2));
-        const brake2 = watched ? riderBrake(k2, v2 - brakeSpeed) : 0;
+        const brake2 = watched ? riderBrake(k2, v2 - brakeSpeed, strongest) : 0;
         k2 -= brake2;
 
         const v3 = v + half * k2;
@@ -285,7 +286,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const aero3 = w3 * (near + slope * w3);
         const rolling3 = r0 + v3 * (r1 + v3 * r2);
         let k3 = drive3 - aero3 - (rolling3 + (sin0 + sin1 * q3));
-        const brake3 = watched ? riderBrake(k3, v3 - brakeSpeed) : 0;
+        const brake3 = watched ? riderBrake(k3, v3 - brakeSpeed, strongest) : 0;
         k3 -= brake3;
 
         const v4 = v + h * k3;
@@ -295,7 +296,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
         const aero4 = w4 * (near + slope * w4);
         const rolling4 = r0 + v4 * (r1 + v4 * r2);
         let k4 = drive4 - aero4 - (rolling4 + (sin0 + sin1 * q4));
-        const brake4 = watched ? riderBrake(k4, v4 - brakeSpeed) : 0;
+        const brake4 = watched ? riderBrake(k4, v4 - brakeSpeed, strongest) : 0;
         k4 -= brake4;
 
         const sixth = h * (1 / 6);

@@ -68,6 +68,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   const end = rows[lastRow + at.R_STATION] + rows[lastRow + at.R_LENGTH];
   const toTrue = p[at.P_TO_TRUE];
   const brakesAbove = p[at.P_BRAKES_ABOVE];
+  const strongest = p[at.P_STRONGEST_BRAKE];
 
   let v = s[at.SPEED];
   let q = s[at.STATION];
@@ -211,7 +212,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
       }
       const resist = normal * (c0 + vm * (c1 + vm * c2));
       let a = force - drag - resist - slope;
-      const brake = v > brakeSpeed - BRAKE_WATCH ? riderBrake(a, vm - brakeSpeed) : 0;
+      const brake = v > brakeSpeed - BRAKE_WATCH ? riderBrake(a, vm - brakeSpeed, strongest) : 0;
       a -= brake;
       if (part === 0) {
         chunk[at.C_DRIVE_FORCE] = mass * force;

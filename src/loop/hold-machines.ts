@@ -42,16 +42,22 @@ export function holdMachines(
   const gripped = besides ? { ...underGrip(machine, plan), controller: held.controller } : held;
 
   // What a gear changes of the parameters, and what the brake is for, is brought up to date where a machine is taken.
-  const taken = (of: Machine, brakesAbove: number): Machine => {
+  const taken = (of: Machine): Machine => {
     if (besides) loadSteps(of.p, of.lags, of.stepsInGear[1 + s[at.GEAR]]);
     else of.p.set(p);
-    of.p[at.P_BRAKES_ABOVE] = brakesAbove;
     return of;
   };
+  const takenByHand = (): Machine => {
+    const { p: by } = taken(byHand);
+    // By hand the speed to brake to says how hard.
+    by[at.P_BRAKES_ABOVE] = 0;
+    by[at.P_STRONGEST_BRAKE] = Number.POSITIVE_INFINITY;
+    return byHand;
+  };
   return (shifting) => {
-    if (s[at.HOLD_MODE] >= at.BY_HAND) return taken(byHand, 0);
+    if (s[at.HOLD_MODE] >= at.BY_HAND) return takenByHand();
     if (shifting) return shifted;
-    return besides && s[at.HOLD_MODE] === at.OVERRIDDEN ? taken(gripped, p[at.P_BRAKES_ABOVE]) : held;
+    return besides && s[at.HOLD_MODE] === at.OVERRIDDEN ? taken(gripped) : held;
   };
 }
 

@@ -211,7 +211,9 @@ export const P_AHEAD = 37;
 export const P_SLOPE_KEPT = 45;
 /** 1: hold can change hands: rules of the unit, acts of the rider, faults of the sensor. */
 export const P_HOLD = 46;
-export const P_SIZE = 47;
+/** The rider's brake takes off no more than this [m/s2]. */
+export const P_STRONGEST_BRAKE = 47;
+export const P_SIZE = 48;
 
 // --- p[P_SOURCE]: when tank or battery is drawn from; 0: there is none ---
 export const DRAWN_BY_SAMPLE = 1;

@@ -97,7 +97,7 @@ export type RiderDeed =
   | { readonly kind: 'override'; readonly throttle: number; readonly for: number }
   /** The switch ends hold. */
   | { readonly kind: 'cancel'; readonly then: 'holds_speed' | 'coasts' }
-  /** The brake ends hold and takes the speed down to [m/s], true, at [m/s2], of which the brake itself gives no more than 3. */
+  /** The brake ends hold and takes the speed down to [m/s], true, at [m/s2]: whether the tyres carry that nobody asks. */
   | { readonly kind: 'brake'; readonly to: number; readonly deceleration: number }
   /** The switch ends hold; the rider goes on at [m/s], true, by hand, and gains speed at no more than [m/s2]. */
   | { readonly kind: 'ride'; readonly to: number; readonly acceleration: number }

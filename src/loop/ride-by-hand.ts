@@ -10,7 +10,7 @@ import type { Controller } from '../control/controller.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan } from './plan.ts';
-import { heldForDrop } from './rider-brake.ts';
+import { heldForDrop, WATCHFUL_BRAKE } from './rider-brake.ts';
 import { closedThrottle, throttleInHand } from './throttle-in-hand.ts';
 
 /** Time constant with which the hand brings the speed back to the one that the rider holds [s]. */
@@ -25,8 +25,8 @@ const REACHED = 1e-9;
  *     a = (vh - v) / 2 s           or, braking at b down to vh,           a = -b
  *
  * the first no more than b where they gain speed at b. They use the brake only where the throttle is closed and that is
- * not enough; with it, the speed falls by b Ts in every sample, within the brake's greatest deceleration. Coasting, or with
- * the clutch open, the throttle is closed. What the rider's hand cannot know are the lags of actuator and drive.
+ * not enough; with it, the speed falls by b Ts in every sample, and where no b is asked for by no more than
+ * WATCHFUL_BRAKE Ts. Coasting, or with the clutch open, the throttle is closed. What the rider's hand cannot know are the lags of actuator and drive.
  *
  * The command stands as feedforward. BUS_REFERENCE is what the brake holds: Infinity where it is not used.
  *
@@ -48,7 +48,10 @@ export function handController(machine: Machine, plan: LoopPlan): Controller {
         acceleration = -drop / sample;
         held = heldForDrop(v, drop, sample);
       } else s[at.HAND_RATE] = 0;
-    } else if (s[at.HAND_RATE] < 0) acceleration = Math.min(acceleration, -s[at.HAND_RATE]);
+    } else {
+      if (s[at.HAND_RATE] < 0) acceleration = Math.min(acceleration, -s[at.HAND_RATE]);
+      if (held < v) held = Math.max(held, heldForDrop(v, WATCHFUL_BRAKE * sample, sample));
+    }
     const closed = mode !== at.BY_HAND || s[at.GEAR] < 0;
     const throttle = closed ? closedThrottle(p) : throttleInHand(machine, plan, acceleration);
     const brakes = mode !== at.COASTING && (closed || throttle <= p[at.P_LEAST]);

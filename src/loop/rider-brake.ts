@@ -1,23 +1,25 @@
 import { exp } from '../numeric/elementary.ts';
 
-/** Time constant with which the rider's brake takes overspeed away [s], and its strongest deceleration [m/s2]. */
+/** Time constant with which the rider's brake takes overspeed away [s]. */
 const TIME = 0.5;
-const STRONGEST = 3;
+/** Deceleration that a rider who only watches the speed does not go beyond [m/s2]; one who brakes for a place has their own. */
+export const WATCHFUL_BRAKE = 3;
 
 /** Closer to the speed that the rider holds than this, a stage asks for the brake [m/s]: TIME times any acceleration of a vehicle. */
 export const BRAKE_WATCH = 5;
 
 /**
- * Deceleration by the rider's brake: it lets the vehicle gain no more than dv/dt = -over / TIME, and brakes by at most
- * STRONGEST. Continuous in speed and acceleration, so that both schemes meet the same solution.
+ * Deceleration by the rider's brake: it lets the vehicle gain no more than dv/dt = -over / TIME, and brakes by no more than
+ * its strongest. Continuous in speed and acceleration, so that both schemes meet the same solution.
  *
  * @param acceleration without the brake [m/s2]
  * @param over speed less the speed that the rider holds [m/s]; before it negative
+ * @param strongest [m/s2], > 0; Infinity: as hard as it takes
  * @returns [m/s2], >= 0
  */
-export function riderBrake(acceleration: number, over: number): number {
+export function riderBrake(acceleration: number, over: number, strongest: number): number {
   const wanted = acceleration + over / TIME;
-  return wanted > 0 ? Math.min(wanted, STRONGEST) : 0;
+  return wanted > 0 ? Math.min(wanted, strongest) : 0;
 }
 
 /**
