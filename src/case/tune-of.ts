@@ -16,9 +16,10 @@ export interface TunePlan {
   readonly sensitivity: number;
   /** Figures of the table and their weights, in the unit of the table. */
   readonly cost: readonly { readonly figure: string; readonly weight: number }[];
-  /** The grid: true speeds [m/s], rise over run, indices of gears, loads. */
+  /** The grid: true speeds [m/s], rise over run, headwinds [m/s], indices of gears, loads. */
   readonly speeds: readonly number[];
   readonly grades: readonly number[];
+  readonly headwinds: readonly number[];
   readonly gears: readonly number[];
   readonly loads: readonly CombinedLoad[];
   /** Number of the candidate in the file whose sampling and anti-windup the proposals have; null: the defaults of a PI. */
@@ -46,6 +47,7 @@ export function tuneOf(document: CaseDocument, vehicle: VehicleDocument): TunePl
   refuseSize(document, {
     speeds: inOrder(speeds).length,
     grades: asked.grades_pct.length,
+    headwinds: asked.headwinds_m_s.length,
     gears: gears.length,
     loads: loads.length,
   });
@@ -54,6 +56,7 @@ export function tuneOf(document: CaseDocument, vehicle: VehicleDocument): TunePl
     cost: asked.cost,
     speeds: inOrder(speeds),
     grades: inOrder(asked.grades_pct.map(fromPct)),
+    headwinds: inOrder(asked.headwinds_m_s),
     gears,
     loads: loads.map((load) => loadOf(load, own.load)),
     like: likeOf(file, asked.like),
@@ -82,7 +85,7 @@ const MOST_POINTS = 500;
 function refuseSize({ source }: CaseDocument, counts: Readonly<Record<string, number>>): void {
   const points = Object.values(counts).reduce((product, count) => product * count, 1);
   if (points <= MOST_POINTS) return;
-  const words = Object.entries(counts).map(([name, count]) => `${count} ${name}`);
+  const words = Object.entries(counts).flatMap(([name, count]) => (count > 1 ? [`${count} ${name}`] : []));
   throw new InputError({
     code: 'too-many-points',
     place: placeOf(source, ['tune']),

@@ -5,7 +5,7 @@ import type { Path } from './yaml-source.ts';
 
 type CaseInput = z.input<typeof caseSchema>;
 
-const LISTS = ['speeds_kmh', 'grades_pct', 'gears', 'designs'] as const;
+const LISTS = ['speeds_kmh', 'grades_pct', 'headwinds_m_s', 'gears', 'designs'] as const;
 
 /** What no single field of `tune` can say. */
 export const tuneRules: readonly Rule<CaseInput>[] = [

@@ -41,6 +41,16 @@ export const tuneSchema = mapping('What ridgehold tune looks for; a run does not
     [-4, 0, 4],
     'level, and a hill to both sides',
   ),
+  headwinds_m_s: otherwise(
+    list(
+      number('m/s', -30, 30, 'Headwind at the height of the rider; negative: from behind'),
+      1,
+      12,
+      'Winds of the grid',
+    ),
+    [0],
+    'still air: the points of the route have the wind of the case as it is there',
+  ),
   gears: optional(
     list(integer(1, 20, 'Gear, from 1'), 1, 20, 'Gears of the grid'),
     'those of the case and of its matrix',

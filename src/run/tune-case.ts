@@ -187,10 +187,10 @@ function pointsOf({ document, vehicle, road, plan }: PointsBase): OperatingPoint
     const { hold, rider }: Ride = rideOf(document, loaded, road);
     return { vehicle: loaded, load, visits: visitsOfDemand(road, demandOf(road, loaded, hold, rider)) };
   });
-  const { speeds, grades, gears } = plan;
+  const { speeds, grades, headwinds, gears } = plan;
   return operatingPoints({
     rides,
-    grid: { speeds, grades, headwinds: [0], gears, loads, air: atSeaLevel(document) },
+    grid: { speeds, grades, headwinds, gears, loads, air: atSeaLevel(document) },
   });
 }
 

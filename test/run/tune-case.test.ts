@@ -153,6 +153,26 @@ describe('tuneCase', () => {
     expect(found.defaults.some(({ key }) => key === 'tune.max_sensitivity')).toBe(true);
   });
 
+  test('the grid has each of its winds, and what a wind makes too hard is told with it', () => {
+    const overrides = ['tune.designs=[rejection]', 'tune.headwinds_m_s=[10, 0]', 'tune.loads=[own]'];
+    const { sheet } = tuneCase({ ...read(TEXT), overrides });
+    const winds = (all: readonly { from: string; surroundings: { headwind: number } }[]): readonly number[] =>
+      all.flatMap(({ from, surroundings }) => (from === 'grid' ? [surroundings.headwind] : []));
+    const [held, notHeld] = [winds(sheet.points), winds(sheet.notHeld)];
+    // Three speeds and two grades in still air, and as many against 10 m/s; the default air has 1.225 kg/m3. At 70 km/h
+    // on 3 % against the wind it takes 215 kg x 9.80665 x (0.014 x 0.99955 + 0.0299865) = 92.7 N and 0.5 x 1.225 x 0.55 x 29.444^2 = 292 N
+    // of the 360 N that 7 kW are at that speed.
+    expect([...held, ...notHeld].sort((a, b) => a - b)).toEqual([0, 0, 0, 0, 0, 0, 10, 10, 10, 10, 10, 10]);
+    expect(notHeld).toEqual([10]);
+    const throttle = (headwind: number): number =>
+      sheet.points.find(
+        ({ from, surroundings, speed }) =>
+          from === 'grid' && surroundings.headwind === headwind && surroundings.grade === 0 && speed > 19,
+      )!.throttle;
+    // 0.5 x 1.225 x 0.55 x (29.444^2 - 19.444^2) N over the range of the drive there, 360 N and 60 N of closed throttle.
+    expect(throttle(10) - throttle(0)).toBeCloseTo(164.7 / 420, 2);
+  });
+
   test('refuses a case whose speed is held nowhere', () => {
     const text = TEXT.replace('peak_force_n: 480', 'peak_force_n: 10')
       .replace(/tune:[^#]*/, 'tune: {speeds_kmh: [50], grades_pct: [4]}\n')

@@ -84,6 +84,12 @@ export const PROPOSAL_COLUMNS: readonly Column<Tuned>[] = [
     value: atWorst(({ surroundings }) => toPct(surroundings.grade)),
   },
   {
+    name: 'worst_headwind_m_s',
+    decimals: 2,
+    about: 'headwind there, positive against travel',
+    value: atWorst(({ surroundings }) => surroundings.headwind),
+  },
+  {
     name: 'worst_gear',
     decimals: 0,
     about: 'gear there, from 1',

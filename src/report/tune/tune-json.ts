@@ -35,7 +35,12 @@ export function tuneJson(result: TuneResult, files: readonly string[]): string {
     operating_points: sheet.points.map(pointJson),
     not_held: sheet.notHeld.map(({ speed, gear, surroundings, load, reason, share, from }) => ({
       from,
-      ...numbers({ speed_kmh: toKmh(speed), grade_pct: toPct(surroundings.grade), share_pct: toPct(share) }),
+      ...numbers({
+        speed_kmh: toKmh(speed),
+        grade_pct: toPct(surroundings.grade),
+        headwind_m_s: surroundings.headwind,
+        share_pct: toPct(share),
+      }),
       gear: gear + 1,
       load: load ?? 'own',
       reason,

@@ -17,7 +17,7 @@ export function tuneMethodPart(view: TuneView): Section {
 <ul class="cautions">${[...cautions(view), ...OF_GAINS].map((words) => html`<li>${words}</li>`)}</ul>
 ${warningList(view)}
 <h3>Operating points</h3>
-<p>An ideal hold drives the road with each load, and the gears, speeds and throttles that it meets are sorted into classes; each class is stood for by a place that was really there, with its share of the time. To them come every speed, grade, gear and load of the grid. At each point the vehicle is linearised by exact derivatives; the loop has every lag and delay of the replay, and the sampler exactly.</p>
+<p>An ideal hold drives the road with each load, and the gears, speeds and throttles that it meets are sorted into classes; each class is stood for by a place that was really there, with its share of the time. To them come every speed, grade, headwind, gear and load of the grid. At each point the vehicle is linearised by exact derivatives; the loop has every lag and delay of the replay, and the sampler exactly.</p>
 <h3>The bound</h3>
 <p>S = 1 / (1 + L) tells how much a loop enlarges what disturbs it at a frequency; 1 / Ms is the least distance of L from −1. With Ms of ${bound} the gain margin is at least ${significant(leastGainMargin(result.plan.sensitivity))} and the phase margin at least ${significant(leastPhaseMarginDeg(result.plan.sensitivity))}° (K. J. Åström, T. Hägglund, Advanced PID Control, 2006, from memory). For a given kp, |1 + L|² is at each frequency a quadratic in ki: the greatest ki of all points is known in closed form, and is checked by the margins of each proposal at each point.</p>
 <h3>Designs</h3>
