@@ -3,8 +3,18 @@ import { courseOfRun, type HoldCourse, nominalCourse } from '../../study/hold-co
 import { fixed, withUnit } from '../quantity.ts';
 import type { CandidateView, View } from './view.ts';
 
-const courseOf = ({ result: { hold, vehicle } }: View, candidate: CandidateView): HoldCourse =>
-  courseOfRun({ plan: { hold, vehicle, controller: candidate.controller }, result: candidate.result });
+function courseOf({ result: { hold, vehicle, supervisor } }: View, candidate: CandidateView): HoldCourse {
+  const unit = supervisor === null ? {} : { supervisor };
+  return courseOfRun({
+    plan: { hold, vehicle, controller: candidate.controller, ...unit },
+    result: candidate.result,
+  });
+}
+
+/** Where a candidate follows the changes that the plan has, without those that the rider makes on the way. */
+function followingOfPlan(view: View, candidate: CandidateView): readonly Stretch[] {
+  return courseOf(view, { ...candidate, result: { ...candidate.result, holdEvents: [] } }).following;
+}
 
 /** Where a candidate follows changes of its set speed or gets over a shift of the rider's, in order along the way. */
 export const settlingOf = (view: View, candidate: CandidateView): readonly Stretch[] =>
@@ -19,7 +29,7 @@ export interface SetSpeedMark extends Stretch {
 export function setSpeedMarks(view: View): readonly SetSpeedMark[] {
   const { road, hold, vehicle } = view.result;
   const { of, name } = view.speed;
-  const designs = view.candidates.filter(({ locked }) => !locked).map((one) => courseOf(view, one).following);
+  const designs = view.candidates.filter(({ locked }) => !locked).map((one) => followingOfPlan(view, one));
   const { following } = nominalCourse(road, hold, vehicle);
   const start = following.length > hold.changes.length ? [hold.startSpeed] : [];
   const steps = [...start, hold.setSpeed, ...hold.changes.map(({ setSpeed }) => setSpeed)];
