@@ -1,12 +1,21 @@
 import { cpSync, existsSync, readFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
-import { describe, expect, test } from 'vitest';
-import { ridgehold, temporaryFolder, VEHICLE, writeFiles } from './start-program.ts';
+import { beforeAll, describe, expect, test } from 'vitest';
+import {
+  type Ended,
+  ridgehold,
+  ridgeholdMany,
+  temporaryFolder,
+  VEHICLE,
+  writeFiles,
+} from './start-program.ts';
 
 interface Row {
   readonly file: string;
   readonly code: string;
   readonly says: readonly string[];
+  /** What refuses it; left out: a run. */
+  readonly command?: 'tune';
 }
 const broken = resolve(import.meta.dirname, '../broken');
 const rowsOf = (kind: string): Row[] => JSON.parse(readFileSync(join(broken, kind, 'table.json'), 'utf8'));
@@ -30,15 +39,30 @@ function caseWith(track: string, vehicle: string): string {
 }
 
 describe.each(['cases', 'vehicles', 'tracks'])('broken %s', (kind) => {
-  test.each(rowsOf(kind))('$file is refused with its place and its words', ({ file, says }) => {
-    cpSync(join(broken, kind, file), join(here, file), { recursive: true });
-    const result = `result-of-${file}`;
-    const { status, stdout, stderr } = ridgehold(here, ['run', around[kind]!(file), '-o', result]);
-    expect(stderr.startsWith(`error: ${file}`), stderr).toBe(true);
-    for (const words of says) expect(stderr).toContain(words);
-    expect(stderr).not.toMatch(/fault of ridgehold| at .*\.js:\d+/);
-    expect([status, stdout]).toEqual([2, '']);
-    expect(existsSync(join(here, result))).toBe(false);
+  const rows = rowsOf(kind);
+  const resultOf = (file: string): string => `result-of-${file}`;
+  const calls = rows.map(({ file, command = 'run' }) => [command, around[kind]!(file), '-o', resultOf(file)]);
+  let endings: readonly Ended[];
+  beforeAll(() => {
+    for (const { file } of rows) cpSync(join(broken, kind, file), join(here, file), { recursive: true });
+    endings = ridgeholdMany(here, calls);
+  });
+
+  test.each(rows.map((row, i) => ({ ...row, i })))(
+    '$file is refused with its place and its words',
+    ({ file, says, i }) => {
+      const { status, stdout, stderr } = endings[i]!;
+      expect(stderr.startsWith(`error: ${file}`), stderr).toBe(true);
+      for (const words of says) expect(stderr).toContain(words);
+      expect(stderr).not.toMatch(/fault of ridgehold| at .*\.js:\d+/);
+      expect([status, stdout]).toEqual([2, '']);
+      expect(existsSync(join(here, resultOf(file)))).toBe(false);
+    },
+  );
+
+  test('a process of its own ends as the call among the others did', () => {
+    for (const i of [0, rows.length >> 1, rows.length - 1])
+      expect(ridgehold(here, calls[i]!)).toEqual(endings[i]);
   });
 });
 

@@ -6,6 +6,7 @@ import { dirname, join, resolve } from 'node:path';
 import { afterAll } from 'vitest';
 
 export const PROGRAM = resolve(import.meta.dirname, '../../dist/cli.js');
+const MANY_RUNS = resolve(import.meta.dirname, 'many-runs.mjs');
 
 export interface Ended {
   readonly status: number | null;
@@ -28,6 +29,20 @@ export function ridgehold(folder: string, args: readonly string[], shell?: strin
       ? spawnSync(process.execPath, [PROGRAM, ...args], options)
       : spawnSync('bash', ['-c', `${shell}; exec "$0" "$@"`, process.execPath, PROGRAM, ...args], options);
   return { status: done.status, stdout: done.stdout, stderr: done.stderr };
+}
+
+/** Runs `ridgehold ...args` for each of many, one after the other in one process. */
+export function ridgeholdMany(folder: string, calls: readonly (readonly string[])[]): readonly Ended[] {
+  const { status, stdout, stderr } = spawnSync(process.execPath, [MANY_RUNS, PROGRAM], {
+    cwd: folder,
+    encoding: 'utf8',
+    env: { ...process.env, NO_COLOR: '1' },
+    input: JSON.stringify(calls),
+    maxBuffer: 256 * 1024 * 1024,
+    timeout: 110_000,
+  });
+  if (status !== 0) throw new Error(`the runs ended with status ${status}: ${stderr}`);
+  return JSON.parse(stdout);
 }
 
 /** A folder that goes away after the tests of the file. */
