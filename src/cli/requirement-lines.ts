@@ -1,6 +1,7 @@
 import { figureLabel, figureText } from '../report/model/figure-text.ts';
 import { bandText, placeText, SPEED_UNITS, type Units } from '../report/quantity.ts';
 import { isNone, type RequirementFinding } from '../study/findings.ts';
+import { whereMeasured } from '../study/where-measured.ts';
 
 /** A line for each requirement and candidate, in columns: verdict, id, candidate, figure, limit, place. */
 export function requirementLines(findings: readonly RequirementFinding[], units: Units): readonly string[] {
@@ -14,8 +15,8 @@ export function requirementLines(findings: readonly RequirementFinding[], units:
     const place = worstAt === null ? '' : `, worst ${worst}`;
     // Why there is no figure, or no margin: the run ended on the way, or nothing could be measured.
     const reason = isNone(margin) ? `: ${margin.none}` : '';
-    const scope =
-      where === 'holdable' ? 'on holdable road' : where === 'all' ? 'everywhere' : 'on its stretch';
+    const over = whereMeasured(figure, where);
+    const scope = over === 'holdable' ? 'on holdable road' : over === 'all' ? 'everywhere' : 'on its stretch';
     return [
       verdict,
       id,

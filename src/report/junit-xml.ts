@@ -92,7 +92,7 @@ function testCase(run: RunResult, { finding, combination }: Judged, speed: Speed
   const { requirement, candidate, verdict } = finding;
   const { label } = figureLabel(requirement.figure);
   const band = requirement.band === null ? '' : ` ${bandText(requirement.band, speed)}`;
-  const head = html`    <testcase classname="${`${run.caseName}.${candidate}`}" name="${`${requirement.id} ${label}${band}, ${whereWords(requirement.where)}${combination === null ? '' : `; ${combination}`}`}"`;
+  const head = html`    <testcase classname="${`${run.caseName}.${candidate}`}" name="${`${requirement.id} ${label}${band}, ${whereWords(requirement)}${combination === null ? '' : `; ${combination}`}`}"`;
   const outcome = OUTCOMES[verdict];
   if (outcome === 'passed') return html`${head}/>\n`;
   const message = `${verdict}: ${messageOf(finding, speed)}`;

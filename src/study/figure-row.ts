@@ -15,6 +15,8 @@ export interface FigureRow {
   readonly source: string;
   /** True: only a run whose plan asks for `detail` has it. */
   readonly detail?: true;
+  /** True: for `holdable` it is taken over all of the road too. */
+  readonly wholeRoad?: true;
   readonly measure: (record: FigureRecord) => Measure;
 }
 

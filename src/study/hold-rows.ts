@@ -24,6 +24,7 @@ const row = (
   better: 'lower',
   definition,
   source: DEFINED_HERE,
+  wholeRoad: true,
   measure,
 });
 

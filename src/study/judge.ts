@@ -4,6 +4,7 @@ import { FIGURES, type FigureRow, figureRow } from './figure-table.ts';
 import type { Figure, RecoveredHill, Replayed, Requirement, RequirementFinding } from './findings.ts';
 import { endedEarly, type FigureContext, measureFigure } from './measure-figure.ts';
 import { NOT_RECOVERED } from './recovery.ts';
+import { whereMeasured } from './where-measured.ts';
 import { atKm, withUnit } from './wording.ts';
 
 /** A limit within this many standard deviations of the measured figure cannot be told apart from it. */
@@ -55,7 +56,7 @@ function judgeOne(
 ): RequirementFinding {
   const measure = measureFigure(row, candidate, context, requirement.where, requirement.band);
   const measured =
-    requirement.where === 'holdable' &&
+    whereMeasured(row.name, requirement.where) === 'holdable' &&
     typeof measure.value !== 'number' &&
     context.demand.holdableShare === 0
       ? { none: 'the drive can hold the set speed on no part of the road' }

@@ -1,3 +1,4 @@
+import { whereMeasured } from '../../study/where-measured.ts';
 import { fromKmh } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { figureLabel, marginText } from '../model/figure-text.ts';
@@ -113,12 +114,10 @@ function askedText(
 ): Html {
   const label = (one: SummaryRequirement) =>
     `${figureLabel(one.figure).label}${one.band_kmh === undefined ? '' : ` ${bandText(fromKmh(one.band_kmh), speed)}`}`;
-  const where = (one: SummaryRequirement) =>
-    one.where === 'holdable'
-      ? 'where the drive can hold it'
-      : one.where === 'all'
-        ? 'on the whole road'
-        : one.where;
+  const where = (one: SummaryRequirement) => {
+    const over = whereMeasured(one.figure, one.where);
+    return over === 'holdable' ? 'where the drive can hold it' : over === 'all' ? 'on the whole road' : over;
+  };
   const both = (of: (one: SummaryRequirement) => string) =>
     before === null || after === null || of(before) === of(after) ? of(is) : `${of(before)} → ${of(after)}`;
   return html`<span class="wrap">${both(label)}<br><span class="small">${both(where)}${askedDifferently && ', asked differently'}</span></span>`;

@@ -1,4 +1,5 @@
-import { isNone, type RequirementFinding, type Where } from '../../study/findings.ts';
+import { isNone, type Requirement, type RequirementFinding } from '../../study/findings.ts';
+import { whereMeasured } from '../../study/where-measured.ts';
 import { toKmh } from '../../units/convert.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, html } from '../html.ts';
@@ -116,10 +117,12 @@ function endedAt(
 function asked(view: View, { requirement, words }: RequirementFinding): Html {
   const { label } = figureLabel(requirement.figure);
   const band = requirement.band === null ? '' : ` ${bandText(requirement.band, view.speed)}`;
-  return html`<span class="wrap what"><span title="${inReaderUnit(words, view.speed)}">${label}${band}</span><br><span class="small">${whereWords(requirement.where)}</span></span>`;
+  return html`<span class="wrap what"><span title="${inReaderUnit(words, view.speed)}">${label}${band}</span><br><span class="small">${whereWords(requirement)}</span></span>`;
 }
 
-export function whereWords(where: Where): string {
+/** Where what a requirement asks is measured. */
+export function whereWords({ figure, where: asked }: Pick<Requirement, 'figure' | 'where'>): string {
+  const where = whereMeasured(figure, asked);
   if (where === 'holdable') return 'where the drive can hold it';
   if (where === 'all') return 'on the whole road';
   return stretchText(where.from, where.to);

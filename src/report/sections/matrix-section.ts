@@ -1,6 +1,6 @@
 import type { MatrixList } from '../../case/matrix-of.ts';
 import type { MatrixResult } from '../../run/matrix-result.ts';
-import { isNone } from '../../study/findings.ts';
+import { isNone, type Requirement } from '../../study/findings.ts';
 import { lineKey } from '../charts/line-key.ts';
 import { type Html, html } from '../html.ts';
 import { figureLabel, figureTextBeside } from '../model/figure-text.ts';
@@ -77,7 +77,7 @@ function matrixTable(
   const body = rows.map((row) => {
     const { requirement, candidate } = row.findings[0]!.finding;
     const look = view.candidates.find(({ name }) => name === candidate);
-    return html`<tr><th scope="row"><span class="who">${requirement.id} ${look !== undefined && lineKey(look, PAGE_PAINT)} ${candidate}</span><br><span class="small">${figureLabel(requirement.figure).label} ${limitText(row.findings[0]!.finding, view.speed)}, ${ownWhere(requirement.where)}</span></th>${columns.columns.map(
+    return html`<tr><th scope="row"><span class="who">${requirement.id} ${look !== undefined && lineKey(look, PAGE_PAINT)} ${candidate}</span><br><span class="small">${figureLabel(requirement.figure).label} ${limitText(row.findings[0]!.finding, view.speed)}, ${ownWhere(requirement)}</span></th>${columns.columns.map(
       ({ cells }) =>
         tableCell(
           view,
@@ -92,8 +92,8 @@ function matrixTable(
 }
 
 /** A stretch has other kilometres on the way back: here it is only said that it is one. */
-const ownWhere = (where: Parameters<typeof whereWords>[0]): string =>
-  typeof where === 'string' ? whereWords(where) : 'on its stretch';
+const ownWhere = (requirement: Requirement): string =>
+  typeof requirement.where === 'string' ? whereWords(requirement) : 'on its stretch';
 
 /** Neighbours with the same head, and the same heads above, share it. */
 function spans({ columns }: MatrixColumns, level: number): readonly { text: string; count: number }[] {
