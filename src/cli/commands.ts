@@ -174,11 +174,11 @@ export const COMMANDS = {
     about: 'find gains: operating points, margins, designs, and the best on the road',
     details: [
       'Finds where the loop of the case will run (the places of the route with each load, and a grid), tells the margins of every candidate there, and proposes gains by six ways, each the tightest whose greatest sensitivity keeps tune.max_sensitivity at every operating point: settling and droop (a pair of poles), simc (from the delay), rejection (the greatest integral gain), schedule (the same over gears and speeds), and road: those that make tune.cost least over replays of the road.',
-      'Writes tune.html, margins.csv, proposals.csv and tune.json into a folder: --out, or out/<case name>-tune. Without tune in the case the defaults stand; ridgehold schema case tells them.',
+      'Writes tune.html, margins.csv, proposals.csv, tune.json and the charts into a folder: --out, or out/<case name>-tune. Without tune in the case the defaults stand; ridgehold schema case tells them.',
       'With --add a proposal goes into the case file as a candidate, under its own name (tuned-road) or another; no other byte of the file changes, a name that is there already is refused, and ridgehold run on that case finds the figures that were told. Beside --add, --set may only change what stands under tune.',
       'Exit status: 0 done; 1 done, but a candidate of the case exceeds the bound at an operating point, or nothing could be proposed; 2 the input was refused; 3 a numerical failure; 70 a fault of the program.',
     ],
-    options: ['out', 'set', 'add', 'json', 'quiet', 'units', 'help'],
+    options: ['out', 'set', 'add', 'png', 'png-width', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold tune night-post.yaml --set tune.max_sensitivity=1.5 --add road=pi-night',
   },
   new: {

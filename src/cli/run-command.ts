@@ -16,6 +16,7 @@ import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
 import { checkJunitFile } from './junit-file.ts';
 import { matrixLines } from './matrix-lines.ts';
+import { pictureFiles } from './picture-files.ts';
 import { pngRenderer, pngWidthOf } from './png-renderer.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { refuseTrack } from './refuse-track.ts';
@@ -60,11 +61,7 @@ export async function runCommand(
   const files: ResultFile[] = [
     { name: 'report.html', text: renderReport(run, { units }) },
     ...dataFiles(run),
-    ...chartFiles(run, { units }).flatMap(({ name, svg }): ResultFile[] => {
-      const picture = { name: `charts/${name}`, text: svg };
-      if (draw === null) return [picture];
-      return [picture, { name: picture.name.replace(/svg$/, 'png'), bytes: draw(svg) }];
-    }),
+    ...pictureFiles(chartFiles(run, { units }), draw),
   ];
   const summary = summaryJson(
     run,

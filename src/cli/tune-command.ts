@@ -3,6 +3,7 @@ import { marginsCsv } from '../report/data/margin-table.ts';
 import { proposalsCsv } from '../report/tune/proposal-table.ts';
 import { renderTune } from '../report/tune/render-tune.ts';
 import { tuneAnswer } from '../report/tune/tune-answer.ts';
+import { tuneChartFiles } from '../report/tune/tune-chart-files.ts';
 import { tuneJson } from '../report/tune/tune-json.ts';
 import { tuneLines } from '../report/tune/tune-lines.ts';
 import { tuneView } from '../report/tune/tune-view.ts';
@@ -14,30 +15,35 @@ import { type EditedFile, fileToEdit } from './case-text.ts';
 import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE, NOT_MET, NUMERICAL_FAILURE } from './exit-status.ts';
+import { pictureFiles } from './picture-files.ts';
+import { pngRenderer, pngWidthOf } from './png-renderer.ts';
 import { ProgressBar } from './progress-bar.ts';
 import { refuseTrack } from './refuse-track.ts';
-import { checkFolder, writeResult } from './result-folder.ts';
+import { checkFolder, type ResultFile, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
 
 const PAGE = 'tune.html';
 const MARK = 'tune.json';
 
 /** `ridgehold tune CASE`: operating points, margins and gains; with --add, gains go into the case. */
-export function tuneCommand({ operands: [path], values }: Invocation<'tune'>): number {
+export async function tuneCommand({ operands: [path], values }: Invocation<'tune'>): Promise<number> {
   refuseTrack(path);
   const additions = values.add.map(readAddition);
+  const width = pngWidthOf(values);
   const folder = values.out ?? `${defaultFolder(path)}-tune`;
   checkFolder(folder, [PAGE, MARK]);
+  const draw = width === null ? null : await pngRenderer(width);
   const reader = readerOf(path);
   const target = additions.length === 0 ? null : fileToEdit(path);
   if (target !== null) reader.telling(() => checkAdditions(target.text, reader.file, additions, values.set));
   const result = tuned(reader, values.set, values.quiet);
   const edited = target === null ? null : reader.telling(() => added(target, reader, result, additions));
   const units = values.units ?? 'kmh';
-  const files = [
+  const files: readonly ResultFile[] = [
     { name: PAGE, text: renderTune(result, { units }) },
     { name: 'margins.csv', text: marginsCsv(result.sheet) },
     { name: 'proposals.csv', text: proposalsCsv(result) },
+    ...pictureFiles(tuneChartFiles(result, { units }), draw),
   ];
   const mark = tuneJson(
     result,

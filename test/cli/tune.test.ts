@@ -18,7 +18,17 @@ const at = (name: string): string => readFileSync(join(here, name), 'utf8');
 
 let ended: Ended;
 beforeAll(() => {
-  ended = ridgehold(here, ['tune', 'hill.yaml', '--add', 'road', '--add', 'simc=pi-delay', '--json']);
+  ended = ridgehold(here, [
+    'tune',
+    'hill.yaml',
+    '--add',
+    'road',
+    '--add',
+    'simc=pi-delay',
+    '--json',
+    '--png-width',
+    '400',
+  ]);
 });
 
 describe('ridgehold tune', () => {
@@ -26,7 +36,14 @@ describe('ridgehold tune', () => {
     expect(ended.stderr).toMatch(/^Take tuned-(road|simc), Kp /);
     expect(ended.status).toBe(0);
     const folder = 'out/hill-tune';
+    const { chosen } = JSON.parse(ended.stdout);
     expect(Object.keys(filesBelow(join(here, folder))).sort()).toEqual([
+      'charts/gain-map.png',
+      'charts/gain-map.svg',
+      'charts/loop-pi-20s.png',
+      'charts/loop-pi-20s.svg',
+      `charts/loop-${chosen}.png`,
+      `charts/loop-${chosen}.svg`,
       'margins.csv',
       'proposals.csv',
       'tune.html',
@@ -35,7 +52,21 @@ describe('ridgehold tune', () => {
     const found = JSON.parse(ended.stdout);
     expect(at(`${folder}/tune.json`)).toBe(ended.stdout);
     expect(found.status).toBe('ok');
-    expect(found.files).toEqual(['tune.html', 'margins.csv', 'proposals.csv']);
+    expect(found.files.filter((name: string) => !name.startsWith('charts/'))).toEqual([
+      'tune.html',
+      'margins.csv',
+      'proposals.csv',
+    ]);
+    expect(found.files).toHaveLength(9);
+    const map = at(`${folder}/charts/gain-map.svg`);
+    expect(map).toMatch(/^<(\?xml|svg)/);
+    expect(map).toContain(chosen);
+    // No colour of a page: a file stands alone.
+    expect(map).not.toContain('var(--');
+    // PNG (ISO/IEC 15948): the signature, then the width, big-endian.
+    const png = readFileSync(join(here, folder, 'charts/gain-map.png'));
+    expect(png.subarray(1, 4).toString('latin1')).toBe('PNG');
+    expect(png.readUInt32BE(16)).toBe(400);
     expect(found.proposals.map(({ name }: { name: string }) => name)).toEqual(['tuned-simc', 'tuned-road']);
     expect(ended.stdout).not.toContain(here);
   });

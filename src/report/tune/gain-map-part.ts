@@ -1,7 +1,8 @@
 import { linearController } from '../../control/linear-controller.ts';
 import type { Gains } from '../../control/sampled-loop.ts';
+import type { Canvas } from '../charts/canvas.ts';
 import { gainMap, type MarkedGains } from '../charts/gain-map.ts';
-import { html } from '../html.ts';
+import { type Html, html } from '../html.ts';
 import { significant } from '../quantity.ts';
 import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
@@ -9,7 +10,20 @@ import type { TuneView } from './tune-view.ts';
 
 /** 3: where the gains lie, and which keep the bound. */
 export function gainMapPart(view: TuneView): Section {
-  const { result, speed, tuned } = view;
+  const { result } = view;
+  const tried =
+    result.trials.length === 0
+      ? ''
+      : ` Dots: the ${result.trials.length} gains that were tried on the road, the cheaper the larger.`;
+  const sampling =
+    ' The curve is that of the sampling of the proposals; a schedule is drawn by its gains at the set speed.';
+  const body = html`<p>Under the curve every loop keeps a greatest sensitivity of ${significant(result.plan.sensitivity)} at all ${result.sheet.points.length} operating points; above it, or to the right, one of them does not.</p>
+${chartFigure('gain-map', (canvas) => gainMapOf(view, canvas), `Squares: candidates of the case; diamonds: proposals; ringed: the one that costs least.${tried}${sampling}`)}`;
+  return { id: 'gains', number: 3, title: 'Where the gains lie', body };
+}
+
+/** The map of a tuning, in the reader's unit of speed. */
+export function gainMapOf({ result, speed, tuned }: TuneView, canvas: Canvas): Html {
   // Per cent of throttle per unit of the reader's speed.
   const inUnit = ({ kp, ki }: Gains): Gains => ({
     kp: (100 * kp) / speed.of(1),
@@ -36,20 +50,11 @@ export function gainMapPart(view: TuneView): Section {
     marked,
     axes: { kp: `kp / (% per ${speed.name})`, ki: `ki / (% per ${speed.name} s)` },
   };
-  const bound = significant(result.plan.sensitivity);
   const words = {
     title: 'Gains that keep the bound, and those of candidates and proposals',
     desc: marked
       .map(({ name, kp, ki }) => `${name}: kp ${significant(kp)}, ki ${significant(ki)}`)
       .join('; '),
   };
-  const tried =
-    result.trials.length === 0
-      ? ''
-      : ` Dots: the ${result.trials.length} gains that were tried on the road, the cheaper the larger.`;
-  const sampling =
-    ' The curve is that of the sampling of the proposals; a schedule is drawn by its gains at the set speed.';
-  const body = html`<p>Under the curve every loop keeps a greatest sensitivity of ${bound} at all ${result.sheet.points.length} operating points; above it, or to the right, one of them does not.</p>
-${chartFigure('gain-map', (canvas) => gainMap(map, words, canvas), `Squares: candidates of the case; diamonds: proposals; ringed: the one that costs least.${tried}${sampling}`)}`;
-  return { id: 'gains', number: 3, title: 'Where the gains lie', body };
+  return gainMap(map, words, canvas);
 }

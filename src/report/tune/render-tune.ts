@@ -2,15 +2,15 @@ import type { TuneResult } from '../../run/tune-result.ts';
 import { html } from '../html.ts';
 import { lengthOf } from '../model/road-words.ts';
 import { renderPage } from '../page.ts';
-import { PAGE_PAINT } from '../paint.ts';
 import { lengthText, significant, type Units } from '../quantity.ts';
 import { loopSection } from '../sections/loop-section.ts';
 import type { Section } from '../sections/section.ts';
 import { answerPart } from './answer-part.ts';
 import { gainMapPart } from './gain-map-part.ts';
 import { proposalsPart } from './proposals-part.ts';
+import { tuneLoopPage } from './tune-loop-page.ts';
 import { tuneMethodPart } from './tune-method-part.ts';
-import { tunedKey, tuneView } from './tune-view.ts';
+import { tuneView } from './tune-view.ts';
 
 export interface TuneOptions {
   /** Unit of speeds for people; all else is metric. */
@@ -23,25 +23,12 @@ export interface TuneOptions {
  */
 export function renderTune(result: TuneResult, { units }: TuneOptions): string {
   const view = tuneView(result, units);
-  const named = (name: string) => view.tuned.find((one) => one.name === name);
-  const shown = result.sheet.loops.filter(
-    ({ name }) => name === result.chosen || named(name)?.proposal === null,
-  );
-  const loop = {
-    sheet: { ...result.sheet, loops: shown },
-    speed: view.speed,
-    colourOf: (name: string) => named(name)?.colour ?? 0,
-    keyOf: (name: string) => {
-      const one = named(name);
-      return one === undefined ? null : tunedKey(one, PAGE_PAINT);
-    },
-    file: 'margins.csv',
-  };
+  const loop = tuneLoopPage(view);
   const sections = [
     answerPart(view),
     proposalsPart(view),
     ...(result.border.length === 0 ? [] : [gainMapPart(view)]),
-    withOthers(loopSection(loop), result.tuned.length - shown.length),
+    withOthers(loopSection(loop), result.tuned.length - loop.sheet.loops.length),
     tuneMethodPart(view),
   ].map((section, i) => ({ ...section, number: i + 1 }));
   return renderPage({
