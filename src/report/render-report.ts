@@ -13,6 +13,7 @@ import { loopPageOf } from './sections/loop-page.ts';
 import { loopSection } from './sections/loop-section.ts';
 import { matrixSection } from './sections/matrix-section.ts';
 import { methodSection } from './sections/method-section.ts';
+import { riderSection } from './sections/rider-section.ts';
 import { roadSection } from './sections/road-section.ts';
 import type { Section } from './sections/section.ts';
 import { spreadSection } from './sections/spread-section.ts';
@@ -27,6 +28,7 @@ export interface ReportOptions {
 export function reportSections(view: View): readonly Section[] {
   const { matrix } = view.result;
   const spread = spreadSection(view);
+  const rider = riderSection(view);
   return [
     answerSection(view),
     ...(matrix === null ? [] : [matrixSection(view, matrix)]),
@@ -35,6 +37,7 @@ export function reportSections(view: View): readonly Section[] {
     ...(spread === null ? [] : [spread]),
     forceSection(view),
     lanesSection(view),
+    ...(rider === null ? [] : [rider]),
     hillsSection(view),
     whereSection(view),
     energySection(view),
@@ -56,13 +59,14 @@ export function renderReport(result: RunResult, options: ReportOptions): string 
   return renderPage({
     title: `${result.title}: speed-hold replay`,
     heading: result.title,
-    memo: memo(view),
+    memo: reportMemo(view),
     sections: reportSections(view),
     foot: html`Ridgehold ${result.toolVersion}. Invented or real, the road and vehicle are those of the <a href="#method-inputs">inputs</a>. A simulation is no approval to ride.`,
   });
 }
 
-function memo({ result, length, candidates, speed }: View): Page['memo'] {
+/** Names and values under the heading. */
+export function reportMemo({ result, length, candidates, speed }: View): Page['memo'] {
   return [
     ['Case', result.caseName],
     ['Road', `${result.road.name}, ${lengthText(length)}`],

@@ -95,8 +95,8 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
 const eventsOf = ({ result }: Replayed): number[] =>
   (result.holdEvents ?? []).flatMap(({ kind }, i) => (FOLLOWED.includes(kind) ? [i] : []));
 
-/** What is not over is worst, then what goes furthest from the set speed or, with hold off, jerks most. */
-function badness({ event, settling, lowest, highest, jerk }: HoldMeasure): number {
+/** How bad a transient is, beside others of its kind: what is not over is worst, then what goes furthest from the set speed or, with hold off, jerks most. */
+export function badness({ event, settling, lowest, highest, jerk }: HoldMeasure): number {
   const size = (figure: Figure): number => (typeof figure === 'number' ? Math.abs(figure) : 0);
   if (event.kind === 'ended') return size(jerk);
   const unsettled = typeof settling !== 'number' && settling.none === NOT_SETTLED ? 1000 : 0;

@@ -1,4 +1,4 @@
-import { LIMIT_SHIFT } from '../../loop/plan.ts';
+import { LIMIT_OFF, LIMIT_SHIFT } from '../../loop/plan.ts';
 import type { FullSeries } from '../../loop/result.ts';
 import type { Hill, HillOutcome } from '../../study/findings.ts';
 import { toPct } from '../../units/convert.ts';
@@ -15,10 +15,12 @@ import {
   clipped,
   drawing,
   filled,
+  hatch,
   rectangle,
   segment,
   stroked,
 } from './canvas.ts';
+import { spans } from './limit-spans.ts';
 import { areaPath, linePath, type Point } from './paths.ts';
 import { rideLine } from './ride-line.ts';
 import { trace } from './trace.ts';
@@ -77,7 +79,7 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
         canvas,
       ),
     );
-  const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}</defs>${
+  const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}${isOff(guide) && hatch(`${id}-off`, 'rising', paint.muted, 7)}</defs>${
     guide !== undefined && onTheHill(guide.outcome.picture, hill, x, [upper, lower], foot, canvas)
   }${leftAxis(canvas, upper, speeds, `speed / ${view.speed.axis}`, 4)}${clipped(
     `${id}-u`,
@@ -117,6 +119,10 @@ export function hillPicture(view: View, hill: Hill, canvas: Canvas): Html {
   };
   return drawing(canvas, lower.top + lower.height + BOTTOM_AXIS_HEIGHT, words, body);
 }
+
+/** Hold of the guide is off somewhere in its picture. */
+const isOff = (guide: Shown | undefined): boolean =>
+  guide?.outcome.picture.limit.some((bits) => (bits & LIMIT_OFF) !== 0) === true;
 
 /** A logged ride while a hill is shown: its rows from gap to gap, and its time at the foot [s]. */
 interface RideOnHill {
@@ -232,28 +238,19 @@ function onTheHill(
   x: Scale,
   boxes: readonly Box[],
   foot: (picture: FullSeries) => number,
-  { paint }: Canvas,
+  { paint, id }: Canvas,
 ): Html {
   const [from, to] = [x(0), x(timeAtPlace(picture, hill.to) - foot(picture))];
-  return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}${shiftSpans(
+  return html`${boxes.map((box) => rectangle({ left: from, top: box.top, width: to - from, height: box.height }, paint.ground))}${spans(
     picture,
+    LIMIT_SHIFT,
   ).map(([begin, end]) => {
     const [left, right] = [x(begin - foot(picture)), x(end - foot(picture))];
     return html`<g><title>a shift: no hold, or no torque</title>${boxes.map((box) => rectangle({ left, top: box.top, width: Math.max(1, right - left), height: box.height }, paint.grid))}</g>`;
+  })}${spans(picture, LIMIT_OFF).map(([begin, end]) => {
+    const [left, right] = [x(begin - foot(picture)), x(end - foot(picture))];
+    return html`<g><title>hold is off</title>${boxes.map((box) => rectangle({ left, top: box.top, width: Math.max(1, right - left), height: box.height }, `url(#${id}-off)`, 0.35))}</g>`;
   })}`;
-}
-
-/** Times over which the hold was off for a shift of the rider or the torque for one of the gearbox. */
-function shiftSpans({ size, time, limit }: FullSeries): readonly (readonly [begin: number, end: number])[] {
-  const spans: [number, number][] = [];
-  for (let i = 0; i < size; i++) {
-    if ((limit[i]! & LIMIT_SHIFT) === 0) continue;
-    const end = time[Math.min(i + 1, size - 1)]!;
-    const last = spans[spans.length - 1];
-    if (last !== undefined && last[1] >= time[i]!) last[1] = end;
-    else spans.push([time[i]!, end]);
-  }
-  return spans;
 }
 
 /** Throttle that would hold the set speed where the guide is, sample by sample of its picture. */

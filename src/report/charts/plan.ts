@@ -7,7 +7,7 @@ import { errorClass, errorClasses } from '../model/error-classes.ts';
 import type { PlanMap } from '../model/plan-map.ts';
 import type { CandidateView, View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
-import { fixed, lengthText } from '../quantity.ts';
+import { fixed, lengthText, stretchText } from '../quantity.ts';
 import {
   type Box,
   type Canvas,
@@ -23,6 +23,8 @@ import type { Point } from './paths.ts';
 
 /** Line widths by class: what is far off is thick, what is too fast beyond the band has a casing; so the classes differ without colour. */
 const WIDTHS = [6, 4.5, 3, 2.2, 3, 4.5, 6] as const;
+
+const UNFIT_DASH = '2 3';
 
 /** The route from above, coloured by the speed error of one candidate: worst of each stretch of the drawing. */
 export function planChart(view: View, candidate: CandidateView, map: PlanMap, canvas: Canvas): Html {
@@ -77,13 +79,25 @@ export function planChart(view: View, candidate: CandidateView, map: PlanMap, ca
     canvas,
     height,
     words,
-    html`${stroked(d(all), { stroke: paint.muted, width: 1 })}${order}${places(view, place, canvas)}${northArrow(canvas, box)}${scaleBar(canvas, box, place.scale)}${!narrow && key(view, canvas)}`,
+    html`${stroked(d(all), { stroke: paint.muted, width: 1 })}${order}${unfitStretches(view, place, canvas)}${places(view, place, canvas)}${northArrow(canvas, box)}${scaleBar(canvas, box, place.scale)}${!narrow && key(view, canvas)}`,
   );
 }
 
 /** A thin line on both sides, apart from the colour by a gap: seen on light and dark. */
 const edges = (draw: (look: LineLook) => Html | null, index: number, paint: Paint): Html =>
   html`${draw({ stroke: paint.ink, width: WIDTHS[index]! + 4.4 })}${draw({ stroke: paint.page, width: WIDTHS[index]! + 2.4 })}`;
+
+/** Where speed hold does not belong: a dotted line over the route. */
+function unfitStretches({ result: { road, bends } }: View, { point }: Placed, { paint }: Canvas): Html {
+  return html`${(bends?.unfit ?? []).map((stretch) => {
+    const points: Point[] = [];
+    for (let i = cellOf(road.distance, stretch.from); i < road.size; i++) {
+      points.push(point(i));
+      if (road.distance[i]! >= stretch.to) break;
+    }
+    return html`<g><title>${`speed hold does not belong, ${stretchText(stretch.from, stretch.to)}`}</title>${stroked(planPath(points), { stroke: paint.page, width: 3.2 })}${stroked(planPath(points), { stroke: paint.ink, width: 2.6, dash: UNFIT_DASH })}</g>`;
+  })}`;
+}
 
 interface Placed {
   readonly point: (knot: number) => Point;
@@ -162,10 +176,13 @@ function scaleBar({ paint }: Canvas, box: Box, scale: number): Html {
 
 function key(view: View, { paint, width }: Canvas): Html {
   const left = width - 222;
-  return html`${label(left, 26, `speed error / ${view.speed.axis}`, { bold: true, fill: paint.ink })}${errorClasses(
-    view,
-  ).map(({ index, words }) => {
-    const y = 48 + index * 22;
-    return html`${index > 4 && edges((look) => segment(left, y - 4, left + 30, y - 4, look), index, paint)}${segment(left, y - 4, left + 30, y - 4, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}${label(left + 38, y, words, { size: 11, fill: paint.ink })}`;
-  })}`;
+  const classes = errorClasses(view);
+  const unfit = (view.result.bends?.unfit.length ?? 0) > 0;
+  const below = 48 + classes.length * 22;
+  return html`${label(left, 26, `speed error / ${view.speed.axis}`, { bold: true, fill: paint.ink })}${classes.map(
+    ({ index, words }) => {
+      const y = 48 + index * 22;
+      return html`${index > 4 && edges((look) => segment(left, y - 4, left + 30, y - 4, look), index, paint)}${segment(left, y - 4, left + 30, y - 4, { stroke: paint.diverging[index]!, width: WIDTHS[index]! })}${label(left + 38, y, words, { size: 11, fill: paint.ink })}`;
+    },
+  )}${unfit && html`${segment(left, below - 4, left + 30, below - 4, { stroke: paint.ink, width: 2.6, dash: UNFIT_DASH })}${label(left + 38, below, 'speed hold does not belong', { size: 11, fill: paint.ink })}`}`;
 }

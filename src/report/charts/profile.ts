@@ -2,14 +2,17 @@ import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { extentOf, plainCurve } from '../model/columns.ts';
 import { DEMAND_CLASSES, type DemandClass, demandRuns } from '../model/demand-classes.ts';
+import { unfitWords } from '../model/hold-words.ts';
 import type { View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
-import { fixed, lengthText, placeText } from '../quantity.ts';
-import { BOTTOM_AXIS_HEIGHT, bottomAxis } from './axes.ts';
-import { type Box, type Canvas, drawing, filled, hatch } from './canvas.ts';
+import { fixed, lengthText, placeText, stretchText } from '../quantity.ts';
+import { BOTTOM_AXIS_HEIGHT, bottomAxis, type Scale } from './axes.ts';
+import { type Box, type Canvas, drawing, filled, hatch, rectangle } from './canvas.ts';
 import { distanceScale, ELEVATION_HEAD, elevationPlot, roadSpan } from './elevation-plot.ts';
 import { areaPath, type Point } from './paths.ts';
 import { brackets } from './stretches.ts';
+
+const UNFIT_HEIGHT = 10;
 
 /** Fill of a class of demand; the two that cannot be held have a hatch over it. */
 export function demandFill(name: DemandClass, paint: Paint): string {
@@ -35,7 +38,7 @@ export function profileChart(view: View, canvas: Canvas): Html {
     });
   const body = html`<defs>${hatch(`${id}-up`, 'rising', paint.ink, 5)}${hatch(`${id}-down`, 'falling', paint.warn, 5)}</defs>
 ${elevationPlot(road, canvas, box, x, shaded)}
-${brackets(
+${unfitStrip(view, canvas, box, x)}${brackets(
   hills.map(({ from, to, number, share }) => ({
     from,
     to,
@@ -57,9 +60,30 @@ ${bottomAxis(canvas, box, x, `${view.distanceName} / km`)}`;
         (run) =>
           `${run.name === 'above' ? 'More than there is' : 'Below the least force'} near ${placeText(run.from)}.`,
       )
-      .join(' ')}`,
+      .join(
+        ' ',
+      )}${(view.result.bends?.unfit ?? []).map(({ from, to }) => ` Speed hold does not belong at ${stretchText(from, to)}.`).join('')}`,
   };
   return drawing(canvas, box.top + box.height + BOTTOM_AXIS_HEIGHT, words, body);
+}
+
+/** Along the lower edge: where speed hold does not belong, cross-hatched. */
+function unfitStrip(
+  { result: { bends }, speed }: View,
+  { paint, id }: Canvas,
+  box: Box,
+  x: Scale,
+): Html | null {
+  const places = bends?.unfit ?? [];
+  if (places.length === 0) return null;
+  const top = box.top + box.height - UNFIT_HEIGHT;
+  return html`<defs>${hatch(`${id}-no`, 'rising', paint.warn, 4)}${hatch(`${id}-no2`, 'falling', paint.warn, 4)}</defs>${places.map(
+    (place) => {
+      const left = x(toKm(place.from));
+      const strip = { left, top, width: Math.max(3, x(toKm(place.to)) - left), height: UNFIT_HEIGHT };
+      return html`<g><title>${`speed hold does not belong, ${stretchText(place.from, place.to)}: ${unfitWords(place, speed)}`}</title>${rectangle(strip, paint.page)}${rectangle(strip, `url(#${id}-no)`)}${rectangle(strip, `url(#${id}-no2)`)}</g>`;
+    },
+  )}`;
 }
 
 /** The part of a line between two places, its ends interpolated; x increases. */

@@ -16,6 +16,7 @@ import {
   statusWords,
 } from './design-standing.ts';
 import { hillNoun } from './hill-words.ts';
+import { holdClause } from './hold-tally.ts';
 import { isUnstable } from './loop-words.ts';
 import { matrixStandings } from './matrix-standing.ts';
 import { combinationText, listWords } from './matrix-words.ts';
@@ -41,7 +42,7 @@ const VERDICT_COST: Readonly<Record<Verdict, number>> = {
 };
 
 /** Best first: reached the end, a loop that is stable, fewest requirements missed, most time within the band, least rms error, order of the case. */
-function bestDesign(view: View): CandidateView | null {
+export function bestDesign(view: View): CandidateView | null {
   const score = (candidate: CandidateView): readonly number[] => {
     const cost = findingsOf(view, candidate.name).reduce((sum, one) => sum + VERDICT_COST[one.verdict], 0);
     const within = candidate.figures.within_band_pct;
@@ -65,7 +66,7 @@ function bestDesign(view: View): CandidateView | null {
 }
 
 /** What share of the time a candidate is within the band, and of what: the holdable stretches where a requirement asks that. */
-function withinClause(view: View, candidate: CandidateView): string {
+export function withinClause(view: View, candidate: CandidateView): string {
   const { result, speed } = view;
   const target =
     result.hold.changes.length > 0 ? 'its set speeds' : speedText(result.hold.setSpeed, speed, 0);
@@ -132,7 +133,7 @@ function gripClause({ result: { road, vehicle, demand } }: View, { result }: Can
   return `${count} its tyre would lose its grip: the model has no slip`;
 }
 
-function lockedClause(view: View, alone: boolean): string | null {
+export function lockedClause(view: View, alone: boolean): string | null {
   const locked = view.candidates.find((candidate) => candidate.locked);
   if (locked === undefined) return null;
   const subject = alone ? `The throttle locked in place` : 'a throttle locked in place';
@@ -180,6 +181,7 @@ export function answerOf(view: View): Answer {
       ? `${design.name} ${withinClause(view, design)}${asked.words === '' ? '' : `, ${asked.words}`}`
       : `${design.name} ${statusWords(design)} and does not finish the road; up to there it ${withinClause(view, design)}`,
     unstable ? 'its linear loop is unstable, so that it swings on any road' : null,
+    holdClause(view, design),
     hillClause(view, design),
     gripClause(view, design),
     batteryClause(view, design),

@@ -1,10 +1,31 @@
 import type { BinRecord, ShiftEvent } from '../../loop/result.ts';
+import { offOf } from './hold-away.ts';
 import { type SetSpeedMark, setSpeedMarks } from './settling.ts';
 import type { CandidateView, View } from './view.ts';
 
-/** Stretches of the road, in order, on which the hold is not asked to keep its speed: changes of set speed, and shifts of the rider. */
-export function holdMarks(view: View): readonly SetSpeedMark[] {
-  return [...setSpeedMarks(view), ...shiftMarks(view)].sort((a, b) => a.from - b.from);
+/** A stretch on which the hold is not asked to keep its speed; `off`: the rider rides by hand. */
+export interface HoldMark extends SetSpeedMark {
+  readonly off?: boolean;
+}
+
+/** Those stretches of the road, in order: changes of set speed, shifts of the rider, and where hold is off. */
+export function holdMarks(view: View): readonly HoldMark[] {
+  return [...setSpeedMarks(view), ...shiftMarks(view), ...offMarks(view)].sort((a, b) => a.from - b.from);
+}
+
+/** Where hold of any design is off, or of any candidate where there is no design: where they meet, one mark. */
+export function offMarks({ result, candidates }: View): readonly HoldMark[] {
+  const designs = candidates.filter(({ locked }) => !locked);
+  const all = (designs.length > 0 ? designs : candidates)
+    .flatMap((candidate) => offOf(result, candidate.result))
+    .sort((a, b) => a.from - b.from);
+  const marks: { from: number; to: number; text: string; off: true }[] = [];
+  for (const { from, to } of all) {
+    const last = marks.at(-1);
+    if (last !== undefined && from <= last.to) last.to = Math.max(last.to, to);
+    else marks.push({ from, to, text: 'off', off: true });
+  }
+  return marks;
 }
 
 /** Shifts of the rider, each from where the first candidate opens the clutch to where the hold of the last resumes. */

@@ -2,7 +2,7 @@ import { lanesChart } from '../charts/lanes.ts';
 import { candidateKey } from '../charts/line-key.ts';
 import { html } from '../html.ts';
 import { statusWords } from '../model/design-standing.ts';
-import { automaticShifts, shiftMarks } from '../model/hold-marks.ts';
+import { automaticShifts, offMarks, shiftMarks } from '../model/hold-marks.ts';
 import { setSpeedMarks } from '../model/settling.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
@@ -25,6 +25,9 @@ ${chartFigure(
   }${
     shiftMarks(view).length > 0 &&
     ' Brackets with gears: the rider shifts; the clutch is open, then the throttle is in the rider\u2019s hand, and the hold is off until it resumes.'
+  }${
+    offMarks(view).length > 0 &&
+    html` Hatched, with brackets: <a href="#rider">hold is off</a> in one of the designs at least; the rider rides by hand, and there is no speed error.`
   }${
     view.result.cycles.length > 0 &&
     html` Small waves at the upper edge of the first lane: <a href="#limit-cycles">limit cycles</a>.`

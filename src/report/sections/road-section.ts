@@ -16,7 +16,7 @@ import type { Section } from './section.ts';
 export function roadSection(view: View): Section {
   const body = html`<p>${roadWords(view)}</p>
 ${chartFigure('profile', (canvas) => profileChart(view, canvas), caption(view))}
-${demandKey()}${repairKeys(view)}
+${demandKey()}${unfitKey(view)}${repairKeys(view)}
 ${chartFigure('road-grade', (canvas) => roadLanesChart(view.result.road, view.speed, canvas), gradeCaption(view))}`;
   return { id: 'road', number: 2, title: 'The road', body };
 }
@@ -90,6 +90,14 @@ function demandKey(): Html {
   return html`<p class="keyline">Demand on the drive at the set speed:</p><ul class="keys">${DEMAND_CLASSES.map(
     ({ words }, index) => html`<li>${swatch(index)} ${words}</li>`,
   )}</ul>`;
+}
+
+function unfitKey({ result: { bends } }: View): Html | null {
+  const count = bends?.unfit.length ?? 0;
+  if (count === 0) return null;
+  const box = { left: 0, top: 0, width: 26, height: 10 };
+  const { warn } = PAGE_PAINT;
+  return html`<p class="keyline">By its bends:</p><ul class="keys"><li><svg class="key" viewBox="0 0 26 10" width="26" height="10" aria-hidden="true">${hatch('unfit-key-1', 'rising', warn, 4)}${hatch('unfit-key-2', 'falling', warn, 4)}${rectangle(box, 'url(#unfit-key-1)')}${rectangle(box, 'url(#unfit-key-2)')}</svg> <a href="#no-hold">speed hold does not belong</a> (${count})</li></ul>`;
 }
 
 function repairKeys(view: View): Html | null {

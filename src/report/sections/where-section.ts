@@ -5,7 +5,7 @@ import { planChart } from '../charts/plan.ts';
 import { segmentStrip } from '../charts/segment-strip.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { errorClasses } from '../model/error-classes.ts';
-import { holdMarks } from '../model/hold-marks.ts';
+import { holdMarks, offMarks } from '../model/hold-marks.ts';
 import { planMap } from '../model/plan-map.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
@@ -25,7 +25,7 @@ export function whereSection(view: View): Section {
 <h3>Segments</h3>
 <p>${segments.length} segments ${how}; each has the worst error of the candidate in it. A wedge that points up: too fast by more than the band; down: too slow.</p>
 ${classKey(view)}
-${chartFigure('segments', (canvas) => segmentStrip(view, canvas), `Worst speed error by segment, one row a candidate.${holdMarks(view).length > 0 ? ' Brackets: a change of set speed is being followed, or the rider shifts, and the error there is planned.' : ''}`)}
+${chartFigure('segments', (canvas) => segmentStrip(view, canvas), `Worst speed error by segment, one row a candidate.${holdMarks(view).length > 0 ? ' Brackets: a change of set speed is being followed, or the rider shifts, and the error there is planned.' : ''}${offMarks(view).length > 0 ? ' Where the bracket says off, hold is, and there is no error.' : ''}`)}
 <details><summary>Table of the segments</summary>${segmentTable(view)}</details>`;
   return { id: 'where', number: 7, title: 'Where', body };
 }
@@ -34,12 +34,12 @@ function plan(view: View): Html {
   const candidate = view.candidates.find((one) => !one.locked) ?? view.candidates[0];
   const map = planMap(view.result.road);
   if (map === null || candidate === undefined)
-    return html`<p>The positions of this road are not known: there is no plan to draw. Sections 2 and 5 show it along the distance.</p>`;
+    return html`<p>The positions of this road are not known: there is no plan to draw. <a href="#road">The road</a> and <a href="#lanes">the lanes</a> show it along the distance.</p>`;
   return html`<h3>In plan</h3>
 ${chartFigure(
   'plan',
   (canvas) => planChart(view, candidate, map, canvas),
-  html`Worst speed error of ${candidate.name} along the route, north up. The thicker, the further from the set speed; with edges: too fast. Numbers: hills.`,
+  html`Worst speed error of ${candidate.name} along the route, north up. The thicker, the further from the set speed; with edges: too fast. Numbers: hills.${(view.result.bends?.unfit.length ?? 0) > 0 && html` Dotted: <a href="#no-hold">speed hold does not belong</a>.`}`,
 )}<div class="narrow">${classKey(view)}</div>`;
 }
 
