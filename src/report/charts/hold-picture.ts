@@ -57,7 +57,7 @@ export function holdPicture(view: View, moment: HoldMoment, canvas: Canvas): Htm
   ): Point[] =>
     Array.from({ length: picture.size }, (_, i) => [x(picture.time[i]! - event.time), scale(of(values[i]!))]);
   const aims = guide !== undefined && aimLines(guide.transient, along, speeds, view, canvas);
-  const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}${hatch(`${id}-h`, 'rising', paint.muted, 7)}</defs>${
+  const body = html`<defs>${clip(`${id}-u`, upper)}${clip(`${id}-l`, lower)}${hatch(`${id}-off`, 'rising', paint.muted, 7)}</defs>${
     guide !== undefined && spansOf(guide.transient, x, [upper, lower], canvas)
   }${leftAxis(canvas, upper, speeds, '', 4)}${label(0, 13, `speed / ${view.speed.axis}`, { bold: true, fill: paint.ink })}${clipped(
     `${id}-u`,
@@ -150,7 +150,7 @@ function spansOf(
         rectangle({ ...box, left, width: Math.max(1, right - left) }, fill, opacity),
       )}</g>`;
     });
-  return html`${columns(LIMIT_OFF, `url(#${id}-h)`, 0.35, 'hold is off')}${columns(LIMIT_OVERRIDE, paint.grid, 0.7, 'the grip has the throttle')}`;
+  return html`${columns(LIMIT_OFF, `url(#${id}-off)`, 0.35, 'hold is off')}${columns(LIMIT_OVERRIDE, paint.grid, 0.7, 'the grip has the throttle')}`;
 }
 
 /** The moment itself, through both plots, with its word. */

@@ -1,7 +1,7 @@
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
 import { binCurve } from '../model/bin-curves.ts';
-import { type Curve, columnsOf, extentOf, peaksOf } from '../model/columns.ts';
+import { type Curve, columnsOf, extentOf, peaksOf, unbrokenRuns } from '../model/columns.ts';
 import { rideCurves } from '../model/ride-curves.ts';
 import type { CandidateView, RideView, View } from '../model/view.ts';
 import type { Paint } from '../paint.ts';
@@ -28,6 +28,8 @@ import { rideLine, rideSign } from './ride-line.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
+/** Between two parts of a line: nothing is drawn. */
+const BREAK: Point = [Number.NaN, Number.NaN];
 /** Columns in a user unit of a line without a shade around it. */
 const FINE = 2;
 
@@ -143,9 +145,13 @@ function curveMarks(
   y: Scale,
   column: number,
 ): Html {
-  const columns = columnsOf(curve, 0, column);
+  const runs = unbrokenRuns(curve).map((run) => columnsOf(run, 0, column));
+  const columns = runs.flat();
   const points = (pick: 'low' | 'mean' | 'high'): Point[] =>
-    columns.map((c) => [x(toKm(c.at)), y(look.of(c[pick]))]);
+    runs.flatMap((run, i): Point[] => [
+      ...(i === 0 ? [] : [BREAK]),
+      ...run.map((c): Point => [x(toKm(c.at)), y(look.of(c[pick]))]),
+    ]);
   const stroke = paint.series[candidate.colour]!;
   const spread = columns.some((c) => c.high > c.low);
   return html`<g>${spread && filled(envelopePath(points('low'), points('high')), stroke, 0.28)}${stroked(

@@ -77,7 +77,8 @@ export function withinClause(view: View, candidate: CandidateView): string {
   const figure = judged ? asked.measured : candidate.figures.within_band_pct;
   if (figure === undefined || isNone(figure)) return `keeps ${target} on no part of the road`;
   const band = bandText(asked?.requirement.band ?? result.band, speed);
-  const place = judged ? 'of the time on the holdable road' : 'of the time';
+  const held = holdClause(view, candidate) === null ? '' : ' with hold on';
+  const place = `of the time${held}${judged ? `${held && ','} on the holdable road` : ''}`;
   return `holds ${target} within ${band} for ${percent(figure, speed)} ${place}`;
 }
 

@@ -57,6 +57,25 @@ export function columnsOf(curve: Curve, from: number, width: number): readonly C
   return columns;
 }
 
+/** The parts of a curve between values whose mean is not finite. */
+export function unbrokenRuns({ size, at, low, mean, high }: Curve): readonly Curve[] {
+  const runs: Curve[] = [];
+  let from = 0;
+  const part = (values: ArrayLike<number>, to: number) =>
+    Array.from({ length: to - from }, (_, i) => values[from + i]!);
+  for (let i = 0; i <= size; i++) {
+    if (i < size && Number.isFinite(mean[i]!)) continue;
+    if (i > from)
+      runs.push(
+        from === 0 && i === size
+          ? { size, at, low, mean, high }
+          : { size: i - from, at: part(at, i), low: part(low, i), mean: part(mean, i), high: part(high, i) },
+      );
+    from = i + 1;
+  }
+  return runs;
+}
+
 /** Places and values of a line that keeps every peak: of each column its least and greatest value, the nearer to the one before first. */
 export function peaksOf(curve: Curve, width: number): readonly (readonly [at: number, value: number])[] {
   const peaks: (readonly [number, number])[] = [];

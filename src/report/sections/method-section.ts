@@ -11,6 +11,7 @@ import { cautions } from './cautions.ts';
 import { equations } from './equations.ts';
 import type { Section } from './section.ts';
 import { table } from './table.ts';
+import { unitRules } from './unit-rules.ts';
 
 /** 9: how everything above was computed, from what, and what it does not say. */
 export function methodSection(view: View): Section {
@@ -20,7 +21,7 @@ ${vehicleTable(view)}
 ${equations(view.result.vehicle)}
 <h3>Validity: what is left out</h3>
 <ul>${validityNotes(view.result.vehicle).map((note) => html`<li>${note.words}</li>`)}</ul>
-${solver(view)}
+${unitRules(view)}${solver(view)}
 ${definitions(view)}
 ${roadSources(view)}
 ${defaultsTable(view)}
