@@ -116,10 +116,16 @@ function demandParts(road: Road, demand: Demand): Part[] {
   return parts;
 }
 
+/** Bins that make hills. What is left of a settling that took longer than is granted, without a break, is its aftermath and makes none. */
 function recordRuns(bins: BinRecord, band: number, settling: readonly Stretch[]): Stretch[] {
   const runs: Stretch[] = [];
-  for (let i = 0; i < bins.size; i++)
-    if (marksBin(bins, i, band, settling)) runs.push({ from: bins.edge[i], to: bins.edge[i + 1] });
+  let aftermath = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < bins.size; i++) {
+    const [from, to] = [bins.edge[i], bins.edge[i + 1]];
+    if (settling.some((one) => from < one.to && to > one.from)) aftermath = to + AFTERMATH * bins.setSpeed[i];
+    else if (!marksBin(bins, i, band, [])) aftermath = Number.NEGATIVE_INFINITY;
+    else if (from >= aftermath) runs.push({ from, to });
+  }
   return runs;
 }
 

@@ -72,6 +72,21 @@ describe('the cause of a hill', () => {
     expect(study({ pi: planOf(oneHill(0.05), vehicleOf(), STIFF) }).hills).toEqual([]);
   });
 
+  it('is no hill where a design swings for longer than a change of set speed is granted', () => {
+    const changes = [{ at: { distance: 1000 }, setSpeed: 45 / 3.6, ramp: null }];
+    // Mass 215 kg, 260 N: 0.13 rad/s, damping 0.3: a third of 15 km/h beyond the new speed, half a minute behind the change.
+    const swinging = piOf({ kp: 0.065, ki: 0.014 });
+    const plan = planOf(roadOf([{ length: 3000, grade: 0 }]), vehicleOf(), swinging, {
+      hold: { ...HOLD_60, changes },
+    });
+    const { hills, replayed } = study({ pi: plan });
+    const { bins } = replayed[0]!.result;
+    // (15 km/h) / (0.5 m/s2) and 10 s are granted, at 60 km/h: it is out of its band of 2 km/h behind them.
+    const granted = 1000 + (15 / 3.6 / 0.5 + 10) * (60 / 3.6);
+    expect(Math.min(...bins.errorMin.filter((_, i) => bins.edge[i]! > granted))).toBeLessThan(-2 / 3.6);
+    expect(hills).toEqual([]);
+  });
+
   it('is windup where the speed is held but the integral must be paid back behind the hill', () => {
     // 264 N are needed and 260 N there: hardly any speed is lost, but the error stays for the whole hill.
     const road = oneHill(0.0655, 400);
