@@ -1,4 +1,5 @@
 import type { RequirementFinding } from '../../study/findings.ts';
+import { whereMeasured } from '../../study/where-measured.ts';
 import { toPct } from '../../units/convert.ts';
 import { fixed, placeText, type SpeedUnit, withUnit } from '../quantity.ts';
 import { emptyWords } from './battery-words.ts';
@@ -58,8 +59,11 @@ function holdableOnly(
   { result: { demand }, speed }: View,
   findings: readonly RequirementFinding[],
 ): string | null {
-  if (demand.holdableShare >= 1 || findings.some(({ requirement }) => requirement.where !== 'holdable'))
-    return null;
+  const beyond = findings.some(({ requirement }) => requirement.where !== 'holdable');
+  const of = findings.some(
+    ({ requirement: { figure, where } }) => whereMeasured(figure, where) === 'holdable',
+  );
+  if (demand.holdableShare >= 1 || beyond || !of) return null;
   return `on the holdable ${percent(toPct(demand.holdableShare), speed)} of the road`;
 }
 

@@ -107,6 +107,28 @@ describe('the answer', () => {
     expect(alone.design).toBe('pi-firm');
   });
 
+  it('says nothing of the holdable road where all figures are of the whole road', () => {
+    const base = fixtureResult({ lengthKm: 28, requirements: 'met', designs: ['pi-firm'] });
+    const told = (figure: string) =>
+      plain(
+        answerOf(
+          viewOf(
+            {
+              ...base,
+              demand: { ...base.demand, holdableShare: 0.98 },
+              requirements: base.requirements.map((one) => ({
+                ...one,
+                requirement: { ...one.requirement, figure, where: 'holdable' as const },
+              })),
+            },
+            'kmh',
+          ),
+        ).sentence,
+      );
+    expect(told('rms_error_kmh')).toContain('on the holdable 98 % of the road');
+    expect(told('hold_off_events')).not.toContain('98 % of the road');
+  });
+
   it('is no green light where requirements were asked of the holdable road alone and that is not all of it', () => {
     const base = fixtureResult({ lengthKm: 28, requirements: 'met', designs: ['pi-firm'] });
     const hillsOf = (share: number) =>
