@@ -6,12 +6,11 @@ import type { Rule, RuleFault } from './check-file.ts';
 import { matrixRules } from './matrix-rules.ts';
 import { nearestKey } from './nearest-key.ts';
 import { increasing } from './order-rules.ts';
-import { oneWay, placesInOrder } from './place-rules.ts';
+import { oneWay, placesInOrder, upwards } from './place-rules.ts';
 import { riderRules } from './rider-rules.ts';
 import { isMapping } from './schema-walk.ts';
 import { tuneRules } from './tune-rules.ts';
 import { TERRAIN_ROUGHNESS } from './weather-schema.ts';
-import type { Path } from './yaml-source.ts';
 
 type CaseInput = z.input<typeof caseSchema>;
 
@@ -141,19 +140,6 @@ function unknownCandidates(file: unknown): RuleFault[] {
             ],
     ),
   );
-}
-
-function upwards(stretch: { from_km: number; to_km: number }, path: Path): RuleFault[] {
-  if (stretch.from_km < stretch.to_km) return [];
-  return [
-    {
-      path: [...path, 'to_km'],
-      code: 'not-in-order',
-      message: 'the stretch ends before it starts',
-      found: `${stretch.from_km} km to ${stretch.to_km} km`,
-      allowed: `more than ${stretch.from_km} km`,
-    },
-  ];
 }
 
 /** The log law has no wind at or below the roughness length. */

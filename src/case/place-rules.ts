@@ -39,3 +39,17 @@ export function placesInOrder(list: readonly Placed[], path: Path, message: stri
     ];
   });
 }
+
+/** A fault where a stretch does not go forwards. */
+export function upwards(stretch: { from_km: number; to_km: number }, path: Path): RuleFault[] {
+  if (stretch.from_km < stretch.to_km) return [];
+  return [
+    {
+      path: [...path, 'to_km'],
+      code: 'not-in-order',
+      message: 'the stretch ends before it starts',
+      found: `${stretch.from_km} km to ${stretch.to_km} km`,
+      allowed: `more than ${stretch.from_km} km`,
+    },
+  ];
+}

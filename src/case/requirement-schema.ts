@@ -2,7 +2,8 @@ import * as z from 'zod';
 import { candidateName } from './candidate-schema.ts';
 import { fieldNotes, km, line, list, mapping, number, optional, otherwise, word } from './fields.ts';
 
-const where = z
+/** Part of the road that a figure is taken over. */
+export const whereSchema = z
   .union([
     word(['holdable', 'all'], 'The stretches that the drive can hold, or the whole road'),
     mapping('A stretch', {
@@ -21,7 +22,7 @@ const requirementRest = {
     }),
   figure: line('Name in the table of figures', 60),
   band_kmh: optional(number('km/h', 0.05, 50, 'Half-width of the band of a figure that has one')),
-  where: otherwise(where, 'holdable', 'a hill beyond the drive is no fault of the design'),
+  where: otherwise(whereSchema, 'holdable', 'a hill beyond the drive is no fault of the design'),
   candidates: optional(list(candidateName, 1, 50, 'Names of the candidates it is for')),
 };
 const limit = (words: string) => number('', -1000000, 1000000, words);

@@ -83,7 +83,8 @@ export function requirementsOf({ file }: CaseDocument): Requirement[] {
   }));
 }
 
-function whereOf(where: RequirementFile['where']): Where {
+/** Stretches become m. */
+export function whereOf(where: RequirementFile['where']): Where {
   return typeof where === 'string' ? where : { from: fromKm(where.from_km), to: fromKm(where.to_km) };
 }
 

@@ -1,10 +1,12 @@
 import { InputError, type Problem } from '../problems/input-error.ts';
+import type { CostTerm } from '../study/tune-cost.ts';
 import { fromKmh, fromPct } from '../units/convert.ts';
 import type { CaseFile } from './case-schema.ts';
 import { type DefaultUsed, listDefaults } from './list-defaults.ts';
 import { type CombinedLoad, loadOf, ownCombination } from './matrix-of.ts';
 import type { CaseDocument } from './read-case-file.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
+import { whereOf } from './run-of.ts';
 import { type TUNE_DESIGNS, tuneSchema } from './tune-schema.ts';
 import { placeOf } from './yaml-source.ts';
 
@@ -14,8 +16,7 @@ export type TuneDesign = (typeof TUNE_DESIGNS)[number];
 export interface TunePlan {
   /** Greatest sensitivity at any operating point. */
   readonly sensitivity: number;
-  /** Figures of the table and their weights, in the unit of the table. */
-  readonly cost: readonly { readonly figure: string; readonly weight: number }[];
+  readonly cost: readonly CostTerm[];
   /** The grid: true speeds [m/s], rise over run, headwinds [m/s], indices of gears, loads. */
   readonly speeds: readonly number[];
   readonly grades: readonly number[];
@@ -53,7 +54,7 @@ export function tuneOf(document: CaseDocument, vehicle: VehicleDocument): TunePl
   });
   return {
     sensitivity: asked.max_sensitivity,
-    cost: asked.cost,
+    cost: asked.cost.map(({ figure, where, weight }) => ({ figure, where: whereOf(where), weight })),
     speeds: inOrder(speeds),
     grades: inOrder(asked.grades_pct.map(fromPct)),
     headwinds: inOrder(asked.headwinds_m_s),

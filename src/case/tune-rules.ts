@@ -1,6 +1,7 @@
 import type * as z from 'zod';
 import type { caseSchema } from './case-schema.ts';
 import type { Rule, RuleFault } from './check-file.ts';
+import { upwards } from './place-rules.ts';
 import type { Path } from './yaml-source.ts';
 
 type CaseInput = z.input<typeof caseSchema>;
@@ -18,8 +19,13 @@ export const tuneRules: readonly Rule<CaseInput>[] = [
             ...LISTS.flatMap((list) => doubled<string | number>(tune[list] ?? [], ['tune', list])),
             ...doubled((tune.loads ?? []).map(loadKey), ['tune', 'loads']),
             ...doubled(
-              (tune.cost ?? []).map(({ figure }) => figure),
+              (tune.cost ?? []).map(({ figure, where = 'all' }) =>
+                where === 'all' ? figure : `${figure} ${whereKey(where)}`,
+              ),
               ['tune', 'cost'],
+            ),
+            ...(tune.cost ?? []).flatMap(({ where }, i) =>
+              typeof where === 'object' ? upwards(where, ['tune', 'cost', i, 'where']) : [],
             ),
           ],
   },
@@ -28,6 +34,9 @@ export const tuneRules: readonly Rule<CaseInput>[] = [
 
 const loadKey = (load: string | object): string =>
   typeof load === 'string' ? load : JSON.stringify(Object.entries(load).sort(([a], [b]) => (a < b ? -1 : 1)));
+
+const whereKey = (where: string | { readonly from_km: number; readonly to_km: number }): string =>
+  typeof where === 'string' ? where : `from ${where.from_km} to ${where.to_km} km`;
 
 function doubled<T extends string | number>(items: readonly T[], path: Path): RuleFault[] {
   return items.flatMap((item, i): RuleFault[] =>

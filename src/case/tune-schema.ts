@@ -2,6 +2,7 @@ import { FIGURES } from '../study/figure-table.ts';
 import { candidateName } from './candidate-schema.ts';
 import { integer, kmh, list, mapping, NOT_GIVEN, number, optional, otherwise, word } from './fields.ts';
 import { loadSchema } from './matrix-schema.ts';
+import { whereSchema } from './requirement-schema.ts';
 
 /** Ways to gains that are proposed, in the order of the proposals. */
 export const TUNE_DESIGNS = ['settling', 'droop', 'simc', 'rejection', 'schedule', 'road'] as const;
@@ -12,7 +13,8 @@ const COST_FIGURES = FIGURES.filter(({ better, name }) => better !== null && nam
 ) as [string, ...string[]];
 
 const costTerm = mapping('A figure and what it weighs', {
-  figure: word(COST_FIGURES, 'Figure over the whole road; one of which more is better counts negatively'),
+  figure: word(COST_FIGURES, 'Figure of the table; one of which more is better counts negatively'),
+  where: otherwise(whereSchema, 'all', 'a hold is lived with on the whole road'),
   weight: number('', 0.000001, 1000000, 'Weight of one unit of the figure'),
 });
 
@@ -26,8 +28,8 @@ export const tuneSchema = mapping('What ridgehold tune looks for; a run does not
   cost: otherwise(
     list(costTerm, 1, 20, 'What gains shall make small on the road: the sum of these'),
     [
-      { figure: 'rms_error_kmh', weight: 1 },
-      { figure: 'throttle_travel_pct_per_km', weight: 0.02 },
+      { figure: 'rms_error_kmh', where: 'all', weight: 1 },
+      { figure: 'throttle_travel_pct_per_km', where: 'all', weight: 0.02 },
     ],
     'a start, chosen here: 50 %/km of throttle travel weigh as much as 1 km/h',
   ),

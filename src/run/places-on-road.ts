@@ -7,6 +7,7 @@ import type { Place } from '../problems/place.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
 import type { Requirement } from '../study/findings.ts';
+import type { CostTerm } from '../study/tune-cost.ts';
 import { fromKm, toKm } from '../units/convert.ts';
 import type { Ride } from './ride-of.ts';
 import type { CandidateResult } from './run-result.ts';
@@ -27,6 +28,7 @@ const km = (distance: number): string => `${Number(toKm(distance).toFixed(3))} k
  * What a case says by its kilometres must lie on the road: a requirement that begins beyond the end would be judged on
  * nothing, and a change there would never happen.
  *
+ * @param cost terms of a tuning, where there is one
  * @returns a warning for each stretch that runs over the end
  * @throws InputError `beyond-the-road`, for all of them, each at its key
  */
@@ -35,6 +37,7 @@ export function placesOnRoad(
   requirements: readonly Requirement[],
   { hold, rider, faults = [] }: PlacedRide,
   road: Road,
+  cost: readonly CostTerm[] = [],
 ): readonly Warning[] {
   const length = lengthOf(road);
   const beyond = (place: Place, message: string, found: number): Problem =>
@@ -62,9 +65,17 @@ export function placesOnRoad(
       );
   });
   const warnings: Warning[] = [];
-  requirements.forEach(({ id, where }, i) => {
+  const judged = [
+    ...requirements.map(({ id, where }, i) => ({ name: id, where, path: ['requirements', i] })),
+    ...cost.map(({ figure, where }, i) => ({
+      name: `The cost of ${figure}`,
+      where,
+      path: ['tune', 'cost', i],
+    })),
+  ];
+  judged.forEach(({ name, where, path }) => {
     if (typeof where === 'string') return;
-    const place = (key: string) => placeOf(source, ['requirements', i, 'where', key]);
+    const place = (key: string) => placeOf(source, [...path, 'where', key]);
     if (where.from >= length - AT_END)
       problems.push(
         beyond(place('from_km'), 'the stretch would begin beyond the end of the road', where.from),
@@ -72,7 +83,7 @@ export function placesOnRoad(
     else if (where.to > length + OVERRUN)
       warnings.push({
         code: 'stretch-cut-at-end',
-        message: `${id} is judged to the end of the road, ${km(length)}: its stretch would go on to ${km(where.to)}.`,
+        message: `${name} is judged to the end of the road, ${km(length)}: its stretch would go on to ${km(where.to)}.`,
         place: place('to_km'),
         from: where.from,
         to: length,

@@ -21,7 +21,7 @@ import { loopSheet } from '../study/loop-sheet.ts';
 import { figureValues } from '../study/measure-figure.ts';
 import { type OperatingPoints, operatingPoints } from '../study/operating-points.ts';
 import { slowestRecoveries } from '../study/slowest-recoveries.ts';
-import { costOf, costOfRun } from '../study/tune-cost.ts';
+import { costOf } from '../study/tune-cost.ts';
 import { visitsOfDemand } from '../study/visited-points.ts';
 import { decodeText } from '../track/decode-text.ts';
 import { toKm } from '../units/convert.ts';
@@ -60,7 +60,7 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
   const road = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']))(document);
   const { bends: _, ...ride } = rideOf(document, vehicle, road);
   const requirements = requirementsOf(document);
-  const warnings = placesOnRoad(document, requirements, ride, road);
+  const warnings = placesOnRoad(document, requirements, ride, road, plan.cost);
   const scheme = schemeOf(document);
   const band = bandOf(requirements);
   const output = outputOf(document);
@@ -99,7 +99,8 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
       const how: Partial<LoopPlan> = purpose === 'search' ? { scheme: 'fast', detail } : { detail };
       const run = replay({ name: 'tuned' }, planOf(controller), how);
       const hills = recovers ? slowestRecoveries(road, demand, [...replayed, run], band) : [];
-      return costOfRun(plan.cost, run, { road, demand, hills }, band);
+      const cost = costOf(plan.cost, run, { road, demand, hills }, band);
+      return isNone(cost) ? Number.POSITIVE_INFINITY : cost;
     },
     onProgress: (share, words) => onProgress(POINTS + (PROPOSED - POINTS) * share, words),
   });
@@ -126,7 +127,7 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
       loop,
       keeps: loop.notLinear === null ? within : null,
       figures,
-      cost: run.result.status === 'completed' ? costOf(plan.cost, figures) : { none: 'the run ended early' },
+      cost: costOf(plan.cost, run, context, band),
       runStatus: run.result.status,
     };
   });

@@ -44,6 +44,17 @@ export function measureFigure(
   });
 }
 
+/** The value of one figure, as `figureValues` has it of many. */
+export function figureValue(
+  row: FigureRow,
+  replayed: Replayed,
+  context: FigureContext,
+  where: Where,
+  band: number,
+): Figure {
+  return figureOf(row, measureFigure(row, replayed, context, where, band));
+}
+
 /** What a figure is taken over, but for its band: given bins and recoveries of a run. */
 export function recordOf(
   replayed: Replayed,

@@ -173,6 +173,34 @@ describe('tuneCase', () => {
     expect(throttle(10) - throttle(0)).toBeCloseTo(164.7 / 420, 2);
   });
 
+  test('a cost may be that of a stretch, of which a requirement finds the same figure', () => {
+    const stretch = '{from_km: 0.3, to_km: 0.6}';
+    const text = TEXT.replace(
+      'requirements: [',
+      `requirements: [{id: R-2, figure: rms_error_kmh, where: ${stretch}, at_most: 9}, `,
+    );
+    const costing = (cost: string) =>
+      tuneCase({
+        ...read(text),
+        overrides: [
+          'tune.designs=[simc]',
+          'tune.speeds_kmh=[50]',
+          'tune.grades_pct=[0]',
+          'tune.loads=[own]',
+          `tune.cost=[${cost}]`,
+        ],
+      }).tuned;
+    const figure = 'figure: rms_error_kmh, weight: 2';
+    const [shipped] = costing(`{${figure}, where: ${stretch}}`);
+    const judged = runCase(read(text)).requirements.find(
+      ({ requirement, candidate }) => requirement.id === 'R-2' && candidate === 'shipped',
+    )!;
+    expect(shipped!.cost).toBeCloseTo(2 * (judged.measured as number), 12);
+    // The hill lies there: it costs more than the whole road does.
+    expect(shipped!.cost).toBeGreaterThan(1.1 * (costing(`{${figure}}`)[0]!.cost as number));
+    expect(codeOf(() => costing(`{${figure}, where: {from_km: 1.2, to_km: 2}}`))).toBe('beyond-the-road');
+  });
+
   test('refuses a case whose speed is held nowhere', () => {
     const text = TEXT.replace('peak_force_n: 480', 'peak_force_n: 10')
       .replace(/tune:[^#]*/, 'tune: {speeds_kmh: [50], grades_pct: [4]}\n')

@@ -7,6 +7,7 @@ import { placeOfPoint, sensitivityText } from '../model/point-words.ts';
 import { inReaderUnit } from '../model/reader-unit.ts';
 import { PAGE_PAINT } from '../paint.ts';
 import { NO_VALUE, significant, trimmed } from '../quantity.ts';
+import { whereWords } from '../sections/answer-section.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { gainsText } from './tune-answer.ts';
@@ -32,10 +33,10 @@ ${result.notProposed.length > 0 && html`<h3>Not proposed</h3><ul>${result.notPro
 
 /** `The cost is 1 x rms error / (km/h) + ...`. */
 function costWords({ result: { plan } }: TuneView): string {
-  const terms = plan.cost.map(({ figure, weight }) => {
+  const terms = plan.cost.map(({ figure, where, weight }) => {
     const { label, unit } = figureLabel(figure);
     const sign = figureRow(figure)?.better === 'higher' ? '\u2212' : '';
-    return `${sign}${trimmed(weight, 6)} for each ${unit === '1' ? 'unit' : unit} of ${label.toLowerCase()}`;
+    return `${sign}${trimmed(weight, 6)} for each ${unit === '1' ? 'unit' : unit} of ${label.toLowerCase()}${where === 'all' ? '' : ` ${whereWords({ figure, where })}`}`;
   });
   return `The cost is the sum of ${terms.join(' and ')}; less is better.`;
 }

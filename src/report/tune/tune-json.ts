@@ -1,7 +1,7 @@
 import type { TunedCandidate, TuneResult } from '../../run/tune-result.ts';
 import { isNone } from '../../study/findings.ts';
 import type { OperatingPoint, PointMargins } from '../../study/operating-point.ts';
-import { toDeg, toKmh, toPct, toPctPerKmh } from '../../units/convert.ts';
+import { toDeg, toKm, toKmh, toPct, toPctPerKmh } from '../../units/convert.ts';
 import { type Json, numbers, warningJson } from '../data/json-parts.ts';
 import { jsonText } from '../data/json-text.ts';
 import { tuneAnswer } from './tune-answer.ts';
@@ -31,7 +31,11 @@ export function tuneJson(result: TuneResult, files: readonly string[]): string {
     overrides: result.overrides,
     scheme: result.scheme,
     max_sensitivity: plan.sensitivity,
-    cost: plan.cost.map(({ figure, weight }) => ({ figure, weight })),
+    cost: plan.cost.map(({ figure, where, weight }) => ({
+      figure,
+      where: typeof where === 'string' ? where : { from_km: toKm(where.from), to_km: toKm(where.to) },
+      weight,
+    })),
     operating_points: sheet.points.map(pointJson),
     not_held: sheet.notHeld.map(({ speed, gear, surroundings, load, reason, share, from }) => ({
       from,
