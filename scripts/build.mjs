@@ -1,4 +1,4 @@
-// The command line, the library and its types, into dist/.
+// The command line, the library and its types, and the workbench, into dist/.
 import { chmodSync, cpSync, existsSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
 import { bin, must, root } from './run.mjs';
@@ -12,3 +12,6 @@ must(...bin('vite/bin/vite.js', ['build', '--config', 'scripts/vite.node.config.
 chmodSync(join(root, 'dist/cli.js'), 0o755);
 must(...bin('typescript/bin/tsc', ['-b', 'scripts/tsconfig/core.json']));
 cpSync(join(root, 'dist/.types/src'), join(root, 'dist/types'), { recursive: true });
+// Loaded behind the installation of what it needs.
+const { buildPage } = await import('./build-page.mjs');
+await buildPage(join(root, 'dist', 'workbench.html'));
