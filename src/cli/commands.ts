@@ -98,7 +98,10 @@ export const OPTIONS = {
 export type OptionName = keyof typeof OPTIONS;
 
 interface CommandRow {
-  /** Names of its operands in the help; all are required. The last one may be given more than once where it ends in three dots. */
+  /**
+   * Names of its operands in the help. The last one may be given more than once where it ends in three dots, and left
+   * out where it stands in brackets; all others are required.
+   */
   readonly operands: readonly string[];
   readonly about: string;
   /** What more there is to know: paragraphs of the command's own help. */
@@ -181,6 +184,16 @@ export const COMMANDS = {
     options: ['out', 'set', 'add', 'png', 'png-width', 'json', 'quiet', 'units', 'help'],
     example: 'ridgehold tune night-post.yaml --set tune.max_sensitivity=1.5 --add road=pi-night',
   },
+  workbench: {
+    operands: ['[CASE]'],
+    about: 'write the page in which values are changed and the whole route answers',
+    details: [
+      'Writes one HTML file that carries the case and the files that it names: --out, or out/<case name>/workbench.html; without a case one that begins with a demo, out/workbench.html. It needs no server and asks for nothing: open it in a browser, send it to a colleague.',
+      'What is changed in the page stays in the page. It saves the case as the same YAML with its comments, and the report and the data files that ridgehold run writes for it.',
+    ],
+    options: ['out', 'quiet', 'help'],
+    example: 'ridgehold workbench night-post.yaml -o night-post.html',
+  },
   new: {
     operands: ['DIR'],
     about: 'write a commented starter case into a new folder',
@@ -218,7 +231,9 @@ export type Values<Name extends CommandName> = {
 
 type Texts<Operands extends readonly unknown[]> = Operands extends readonly [`${string}...`]
   ? readonly [string, ...string[]]
-  : { readonly [Index in keyof Operands]: string };
+  : Operands extends readonly [`[${string}]`]
+    ? readonly [string?]
+    : { readonly [Index in keyof Operands]: string };
 
 /** A command line that was understood. */
 export interface Invocation<Name extends CommandName> {

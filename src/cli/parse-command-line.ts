@@ -51,10 +51,11 @@ function parseCommand(command: CommandName, argv: readonly string[]): Request {
   }
   const { values, positionals } = strictly(command, { args: [...argv], options, allowPositionals: true });
   if (values.help === true) return { kind: 'help', command };
-  if (positionals.length < operands.length)
+  const required = operands.filter((name) => !name.startsWith('['));
+  if (positionals.length < required.length)
     throw refuse(
       'missing-operand',
-      `${operands[positionals.length]} is missing`,
+      `${required[positionals.length]} is missing`,
       `ridgehold ${command} ${operands.join(' ')}`,
     );
   if (positionals.length > operands.length && !operands.at(-1)?.endsWith('...'))

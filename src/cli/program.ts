@@ -18,6 +18,7 @@ const HANDLERS: { readonly [Name in CommandName]: () => Promise<Handler<Name>> }
   compare: async () => (await import('./compare-command.ts')).compareCommand,
   identify: async () => (await import('./identify-command.ts')).identifyCommand,
   tune: async () => (await import('./tune-command.ts')).tuneCommand,
+  workbench: async () => (await import('./workbench-command.ts')).workbenchCommand,
   new: async () => (await import('./new-command.ts')).newCommand,
   schema: async () => (await import('./schema-command.ts')).schemaCommand,
 };

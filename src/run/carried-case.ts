@@ -60,12 +60,15 @@ export type Start = { readonly study: CarriedCase } | { readonly demo: number } 
 /** The element of the page that holds it. */
 const START = /(<script type="application\/json" id="start">)[^<]*(<\/script>)/;
 
+/** Whether a text is a page that a case can be put into. */
+export const takesStart = (page: string): boolean => START.test(page);
+
 /**
  * The page that begins with something else.
  *
  * @throws RangeError for a text that is no such page
  */
 export function withStart(page: string, start: Start): string {
-  if (!START.test(page)) throw new RangeError('this is no page that a case can be put into');
+  if (!takesStart(page)) throw new RangeError('this is no page that a case can be put into');
   return page.replace(START, (_, before: string, after: string) => before + jsonInPage(start) + after);
 }
