@@ -1,4 +1,5 @@
 import { cellIndex } from '../vehicle/drive-law.ts';
+import { enterDriveCell, weighRoadCell } from './cells-at-hand.ts';
 import { bookTurning, loadRatio } from './engage-gear.ts';
 import * as fit from './fittings.ts';
 import * as at from './layout.ts';
@@ -11,23 +12,20 @@ import type { Machine } from './machine.ts';
  * clutch slips nothing turns along; as it locks the engine has the speed of the shaft, so that the vehicle's stays, and
  * the kinetic energy that joins or leaves is booked like that of a shift.
  */
-export function moveBelt(machine: Machine): void {
+export function moveBelt(machine: Machine, row: number, throttleCell: number): void {
   const { s, p, here, fittings } = machine;
+  // Relative change of the mass below which the series of its root ends in the last digit.
+  const SERIES = 1e-4;
+
   const f = fittings.belt;
   const before = s[at.EFFECTIVE_MASS];
+  const perBefore = here[at.H_PER_MASS];
   const ratio = s[at.RATIO];
   const v = s[at.SPEED];
   const x = s[at.THROTTLE];
-  // The belt's line (see belt-law.ts), its ends hold on.
-  const corners = f[fit.F_BELT_CORNERS] | 0;
-  const line = fit.F_BELT_LINE + corners;
-  let shaftSpeed = f[line + corners - 1];
-  if (x <= f[fit.F_BELT_LINE]) shaftSpeed = f[line];
-  else if (x < f[line - 1]) {
-    let i = fit.F_BELT_LINE;
-    while (x >= f[i + 1]) i++;
-    shaftSpeed = f[i + corners] + f[i + 2 * corners] * (x - f[i]);
-  }
+  // The belt's line (see belt-law.ts).
+  if (!(x >= f[fit.F_STRETCH] && x < f[fit.F_STRETCH + 1])) enterStretch(f, x);
+  const shaftSpeed = f[fit.F_STRETCH + 2] + f[fit.F_STRETCH + 3] * (x - f[fit.F_STRETCH + 4]);
   let rest = shaftSpeed / v;
   if (shaftSpeed >= f[fit.F_GREATEST] * v) rest = f[fit.F_GREATEST];
   else if (shaftSpeed <= f[fit.F_LEAST_RATIO] * v) rest = f[fit.F_LEAST_RATIO];
@@ -35,9 +33,29 @@ export function moveBelt(machine: Machine): void {
   const turned = turnsAlong(machine);
   const turns = moved * v >= f[fit.F_LOCKED];
   loadRatio(machine, moved, turns ? f[fit.F_INERTIA] * moved * moved : 0);
-  if (turned === turns) s[at.SPEED] = v * Math.sqrt(before * here[at.H_PER_MASS]);
-  else bookTurning(s, before);
+  if (turned === turns) {
+    // Root of the mass before over that after it: where they differ little, by its series, which is right to the last
+    // digit and does not wait for a division and a root.
+    const d = (s[at.EFFECTIVE_MASS] - before) * perBefore;
+    if (d < SERIES && d > -SERIES) s[at.SPEED] = v - v * d * (0.5 - d * (0.375 - d * 0.3125));
+    else s[at.SPEED] = v * Math.sqrt(before * here[at.H_PER_MASS]);
+  } else bookTurning(s, before);
   holdCell(machine);
+  weighRoadCell(machine, row);
+  enterDriveCell(machine, s[at.SPEED_CELL] | 0, throttleCell);
+}
+
+/** Puts the stretch of the line in which a throttle lies in hand; the ends of the line hold on. */
+function enterStretch(f: Float64Array, x: number): void {
+  const corners = f[fit.F_BELT_CORNERS] | 0;
+  let i = 0;
+  while (i < corners && x >= f[fit.F_BELT_LINE + i]) i++;
+  const corner = fit.F_BELT_LINE + Math.max(0, i - 1);
+  f[fit.F_STRETCH] = i > 0 ? f[corner] : Number.NEGATIVE_INFINITY;
+  f[fit.F_STRETCH + 1] = i < corners ? f[fit.F_BELT_LINE + i] : Number.POSITIVE_INFINITY;
+  f[fit.F_STRETCH + 2] = f[corner + corners];
+  f[fit.F_STRETCH + 3] = i > 0 && i < corners ? f[corner + 2 * corners] : 0;
+  f[fit.F_STRETCH + 4] = f[corner];
 }
 
 /** Puts a ratio of the belt in hand, and the effective mass that goes with it. */

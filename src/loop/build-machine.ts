@@ -128,9 +128,7 @@ function writeKinds(p: Float64Array, { drive, sensor }: Vehicle): void {
       source.acceptance !== null ||
       source.heating !== null);
   p[at.P_DERATED] = drive.derate !== 'none' || tiring ? 1 : 0;
-  if (source !== null)
-    p[at.P_SOURCE] =
-      source.kind === 'battery' || drive.belt !== null ? at.DRAWN_BY_SAMPLE : at.DRAWN_BY_CHUNK;
+  if (source !== null) p[at.P_SOURCE] = source.kind === 'battery' ? at.DRAWN_BY_SAMPLE : at.DRAWN_BY_CHUNK;
   p[at.P_SENSED] = sensor.pulses === null && sensor.noise === null ? 0 : 1;
   p[at.P_AUTOMATIC] = drive.gearbox.kind === 'automatic' ? 1 : 0;
   p[at.P_LAW_STEP] = drive.fuelCutBelow;

@@ -25,9 +25,7 @@ export function drawPower({ s, log, chunk, fittings }: Machine, row: number): vo
   const f = fittings.source;
   const speed = log[row + at.L_SPEED];
   const force = log[row + at.L_FORCE];
-  const open = s[at.GEAR] < 0;
-  f[fit.F_SHAFT_SPEED] = open ? f[fit.F_IDLE] : s[at.RATIO] * speed;
-  f[fit.F_TORQUE] = open ? 0 : force / s[at.RATIO];
+  lookAtShaft(s, log, row, f);
   askPower(f);
   let energy = f[fit.F_LENGTH] * f[fit.F_POWER_ASKED];
   if (f[fit.F_BATTERY] === 1) {
@@ -50,22 +48,32 @@ export function drawPower({ s, log, chunk, fittings }: Machine, row: number): vo
   chunk[at.C_DRAWN] += energy;
 }
 
-/**
- * Draws for all samples of a chunk at once, where nothing that is drawn from comes back into the motion: a tank, with the
- * ratio held.
- *
- * @param elapsed length of the last sample [s]
- */
-export function drawOverChunk(machine: Machine, ticks: number, elapsed: number): void {
-  const last = (ticks - 1) * at.L_STRIDE;
-  for (let row = 0; row < last; row += at.L_STRIDE) drawPower(machine, row);
-  if (last >= 0) drawLast(machine, last, elapsed);
-}
-
-/** The same for the last sample of a run, which is cut short. @param elapsed its length [s] */
+/** The same for a last sample that is cut short. @param elapsed its length [s] */
 export function drawLast(machine: Machine, row: number, elapsed: number): void {
   machine.fittings.source[fit.F_LENGTH] = elapsed;
   drawPower(machine, row);
+}
+
+/**
+ * Draws for all samples of a chunk at once, where nothing that is drawn from comes back into the motion: a tank.
+ *
+ * @param elapsed length of the last sample [s]
+ */
+export function drawOverChunk({ s, log, chunk, fittings }: Machine, ticks: number, elapsed: number): void {
+  const f = fittings.source;
+  const length = f[fit.F_LENGTH];
+  const last = ((ticks - 1) * at.L_STRIDE) | 0;
+  let drawn = s[at.DRAWN];
+  let sum = chunk[at.C_DRAWN];
+  for (let row = 0; row <= last; row += at.L_STRIDE) {
+    lookAtShaft(s, log, row, f);
+    askPower(f);
+    const energy = (row < last ? length : elapsed) * f[fit.F_POWER_ASKED];
+    drawn += energy;
+    sum += energy;
+  }
+  s[at.DRAWN] = drawn;
+  chunk[at.C_DRAWN] = sum;
 }
 
 /** Puts charge and heat at their start: cold, charged as the plan says, factors to match. */
@@ -121,6 +129,14 @@ function enterStretch(f: Float64Array, line: number): void {
   f[line + fit.LINE_CORNER] = f[corners + corner];
   f[line + fit.LINE_SHARE] = f[shares + corner];
   f[line + fit.LINE_SLOPE] = i > 0 && i < count ? f[slopes + corner] : 0;
+}
+
+/** Shaft speed and torque of a sample. */
+function lookAtShaft(s: Float64Array, log: Float64Array, row: number, f: Float64Array): void {
+  const ratio = log[row + at.L_RATIO];
+  const open = s[at.GEAR] < 0;
+  f[fit.F_SHAFT_SPEED] = open ? f[fit.F_IDLE] : ratio * log[row + at.L_SPEED];
+  f[fit.F_TORQUE] = open ? 0 : log[row + at.L_FORCE] / ratio;
 }
 
 /** The law of `powerDrawn` (vehicle/power-map.ts) over the compiled map [W], at F_SHAFT_SPEED and F_TORQUE. */

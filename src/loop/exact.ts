@@ -1,7 +1,7 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { takeUpTime } from './actuator-step.ts';
-import { enterDriveCell, enterRoadCell, weighRoadCell } from './cells-at-hand.ts';
+import { enterDriveCell, enterRoadCell } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { drawLast, drawOverChunk, drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
@@ -86,7 +86,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let plate = s[at.PLATE];
   let acceleration = s[at.ACCELERATION];
   let mass = s[at.EFFECTIVE_MASS];
-  let stall = stallSpeed(machine);
+  let ratio = s[at.RATIO];
+  const stall = stallSpeed(machine);
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
@@ -103,15 +104,14 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   let tick = 0;
   while (tick < ticks && q < until && event === at.RUNNING) {
     if (fitted) {
-      if (!beginSample(machine)) break;
+      if (!beginSample(machine, row, throttleCell)) break;
       v = s[at.SPEED];
       z = s[at.FILTERED];
       if (belted) {
         mass = s[at.EFFECTIVE_MASS];
-        stall = stallSpeed(machine);
+        ratio = s[at.RATIO];
         speedCell = s[at.SPEED_CELL] | 0;
-        if (loadedRow >= 0) weighRoadCell(machine, loadedRow);
-        loadedCell = -1;
+        loadedCell = speedCell * (lastThrottleCell + 1) + throttleCell;
       }
     }
     if (!sensed) s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
@@ -127,6 +127,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     log[line + at.L_SPEED] = v;
     log[line + at.L_ACTUATOR] = plate;
     log[line + at.L_COMMAND] = s[BUS_COMMAND];
+    log[line + at.L_RATIO] = ratio;
     tick++;
 
     const brakeSpeed = Math.min(s[BUS_REFERENCE], s[at.BRAKE_REFERENCE]) * toTrue + brakesAbove;

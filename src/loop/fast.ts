@@ -1,7 +1,7 @@
 import { BUS_COMMAND, BUS_LIMITED, BUS_MEASURED, BUS_REFERENCE, BUS_TARGET } from '../control/bus.ts';
 import { moveReference } from '../control/set-point.ts';
 import { actuatorStep } from './actuator-step.ts';
-import { enterDriveCell, enterRoadCell, lawStep, weighRoadCell } from './cells-at-hand.ts';
+import { enterDriveCell, enterRoadCell, lawStep } from './cells-at-hand.ts';
 import { keepHistory, latestRow, readDelayed } from './delayed-speed.ts';
 import { drawLast, drawOverChunk, drawPower } from './draw-power.ts';
 import { stallSpeed } from './engage-gear.ts';
@@ -79,7 +79,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let acceleration = s[at.ACCELERATION];
   let mass = s[at.EFFECTIVE_MASS];
   let ratio = s[at.RATIO];
-  let stall = stallSpeed(machine);
+  const stall = stallSpeed(machine);
   let row = (s[at.CELL] * at.R_STRIDE) | 0;
   let speedCell = s[at.SPEED_CELL] | 0;
   let throttleCell = s[at.THROTTLE_CELL] | 0;
@@ -95,16 +95,14 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
   let tick = 0;
   while (tick < ticks && q < until && event === at.RUNNING) {
     if (fitted) {
-      if (!beginSample(machine)) break;
+      if (!beginSample(machine, row, throttleCell)) break;
       v = s[at.SPEED];
       z = s[at.FILTERED];
       if (belted) {
         mass = s[at.EFFECTIVE_MASS];
         ratio = s[at.RATIO];
-        stall = stallSpeed(machine);
         speedCell = s[at.SPEED_CELL] | 0;
-        if (loadedRow >= 0) weighRoadCell(machine, loadedRow);
-        loadedDrive = -1;
+        loadedDrive = speedCell * (lastThrottleCell + 1) + throttleCell;
       }
     }
     if (!sensed) s[BUS_MEASURED] = scale * (delayed ? readDelayed(s, p, past, z) : z);
@@ -118,6 +116,7 @@ export function advanceFast(machine: Machine, ticks: number, until: number): num
     log[line + at.L_SPEED] = v;
     log[line + at.L_ACTUATOR] = plate;
     log[line + at.L_COMMAND] = s[BUS_COMMAND];
+    log[line + at.L_RATIO] = ratio;
     tick++;
 
     const brakeSpeed = Math.min(s[BUS_REFERENCE], s[at.BRAKE_REFERENCE]) * toTrue + brakesAbove;

@@ -62,7 +62,9 @@ export const F_INERTIA = 2;
 export const F_LOCKED = 3;
 /** Corners of its line, then their throttles, shaft speeds, and the slopes between them. */
 export const F_BELT_CORNERS = 4;
-export const F_BELT_LINE = 5;
+export const F_BELT_LINE = 10;
+/** Stretch of the line in which the last sample was, none at first: from a throttle to a throttle, shaft speed and slope at a corner, the corner. */
+export const F_STRETCH = 5;
 
 // --- source: a head, then the arrays whose places and lengths it holds ---
 export const F_BATTERY = 0;
@@ -184,7 +186,8 @@ function beltOf({ least, greatest, inertia, locked, throttle, shaftSpeed }: Belt
     .map((speed, i) => (speed - shaftSpeed[i]) / (throttle[i + 1] - throttle[i]));
   return Float64Array.of(
     ...[least, greatest, inertia, locked],
-    ...[throttle.length, ...throttle, ...shaftSpeed, ...slopes],
+    ...[throttle.length, 0, 0, 0, 0, 0],
+    ...[...throttle, ...shaftSpeed, ...slopes],
   );
 }
 

@@ -138,12 +138,13 @@ export const C_BRAKE_FORCE = 14;
 export const C_ACCELERATION = 15;
 export const C_SIZE = 16;
 
-// --- log: a row a sample of the chunk, at its start: speed, throttle behind the slack, command before it is limited, wheel force of the drive ---
+// --- log: a row a sample of the chunk, at its start: speed, throttle behind the slack, command before it is limited, wheel force of the drive, ratio ---
 export const L_SPEED = 0;
 export const L_ACTUATOR = 1;
 export const L_COMMAND = 2;
 export const L_FORCE = 3;
-export const L_STRIDE = 4;
+export const L_RATIO = 4;
+export const L_STRIDE = 5;
 export const LOG_ROWS = 128;
 
 // --- parameters: constant over a run ---

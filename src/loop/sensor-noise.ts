@@ -6,7 +6,7 @@ const TAIL = 16;
 /** Bits of a word within a cell. */
 const BITS = 22;
 
-/** Numbers that are made at a time: one by one, each waits for its own mixing. */
+/** Numbers that are made at a time, a power of 2: one by one, each waits for its own mixing. */
 const BLOCK = 32;
 
 // Places of a noise: two words of its seed; the inverse of the normal law at the edges of the cells; the ticks of a block,
@@ -47,11 +47,14 @@ export function normalAt(f: Float64Array, place: number, tick: number): number {
 }
 
 function makeBlock(f: Float64Array, place: number, tick: number): void {
-  const first = tick - (tick % BLOCK);
+  const first = tick - (tick & (BLOCK - 1));
   f[place + FIRST] = first;
   f[place + BEHIND] = first + BLOCK;
+  const start = first | 0;
+  const low = f[place] | 0;
+  const high = f[place + 1] | 0;
   for (let i = 0; i < BLOCK; i++) {
-    const word = mix(mix(Math.imul(first + i, 0x9e3779b9) + f[place]) ^ f[place + 1]);
+    const word = mix(mix((Math.imul(start + i, 0x9e3779b9) + low) | 0) ^ high);
     const cell = word >>> BITS;
     const out = place + NUMBERS + i;
     if (cell < TAIL || cell >= CELLS - TAIL) f[out] = normalQuantile(((word >>> 0) + 0.5) * (1 / 4294967296));

@@ -12,6 +12,7 @@ import {
   GEAR,
   HEAT,
   L_FORCE,
+  L_RATIO,
   L_SPEED,
   L_STRIDE,
   RATIO,
@@ -57,6 +58,7 @@ function machineWith(source: EnergySource, ratio = 1, idleSpeed = 0): Machine {
 function ride(machine: Machine, speed: number, force: number, samples: number): void {
   machine.log[L_STRIDE + L_SPEED] = speed;
   machine.log[L_STRIDE + L_FORCE] = force;
+  machine.log[L_STRIDE + L_RATIO] = machine.s[RATIO]!;
   for (let i = 0; i < samples; i++) drawPower(machine, L_STRIDE);
 }
 
