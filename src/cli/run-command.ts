@@ -5,7 +5,9 @@ import { dataFiles } from '../report/data/data-files.ts';
 import { summaryJson } from '../report/data/summary.ts';
 import { junitXml } from '../report/junit-xml.ts';
 import { answerOf } from '../report/model/answer.ts';
+import { inReaderUnit } from '../report/model/reader-unit.ts';
 import { viewOf } from '../report/model/view.ts';
+import { SPEED_UNITS } from '../report/quantity.ts';
 import { renderReport } from '../report/render-report.ts';
 import { runWithoutMatrix } from '../run/run-case.ts';
 import type { RunResult } from '../run/run-result.ts';
@@ -73,7 +75,10 @@ export async function runCommand(
     say(answerOf(viewOf(run, units)).sentence);
     for (const line of requirementLines(run.requirements, units)) say(line);
     if (run.matrix !== null) for (const line of matrixLines(run.matrix, units)) say(line);
-    tellWarnings(run.warnings, reader.seen);
+    tellWarnings(
+      run.warnings.map((one) => ({ ...one, message: inReaderUnit(one.message, SPEED_UNITS[units]) })),
+      reader.seen,
+    );
     say(`The report is at ${join(folder, 'report.html')}`);
   }
   if (values.json) process.stdout.write(summary);

@@ -18,7 +18,7 @@ export const inKg = (mass: number): string => `${fixed(mass, 0)} kg`;
 /** A number with a unit of its own; decimals by size. */
 export const withUnit = (x: number, unit: string): string => {
   const size = Math.abs(x);
-  if (unit === 'shifts' || unit === 'events') return `${fixed(x, 0)} ${unit}`;
+  if (unit === 'shifts' || unit === 'events') return `${fixed(x, 0)} ${x === 1 ? unit.slice(0, -1) : unit}`;
   const decimals = size >= 100 ? 0 : size >= 0.005 || size === 0 ? (size >= 20 ? 1 : 2) : -1;
   const text = decimals < 0 ? x.toExponential(1) : fixed(x, decimals);
   return unit === '1' ? text : `${text} ${unit}`;

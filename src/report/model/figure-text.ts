@@ -24,14 +24,19 @@ export function readable(value: number, unit: string, speed: SpeedUnit): { value
       value: speed.of(fromKmh(speed.of(fromKmh(value)))),
       unit: unit.replace('(km/h)²', speed.axis.startsWith('(') ? '(km/h)²' : `${speed.name}²`),
     };
+  if (isCount(unit)) return { value, unit: Math.abs(value) === 1 ? unit.slice(0, -1) : unit };
   return { value, unit: unit === '1' ? '' : unit };
 }
+
+const isCount = (unit: string): boolean => unit === 'events' || unit === 'shifts';
 
 /** Digits after the point that such a figure supports; more where fewer would make 100 % of a little less. */
 function digitsOf(value: number, unit: string): number {
   if (unit === '%') return value < 100 && value >= 99.95 ? (value >= 99.995 ? 3 : 2) : 1;
   if (unit === 'km/h') return 1;
   if (unit === 's') return Math.abs(value) < 9.95 ? 1 : 0;
+  // A spread of counts is no whole number.
+  if (isCount(unit) && Number.isInteger(value)) return 0;
   return digitsFor(value, 3);
 }
 

@@ -27,3 +27,10 @@ it('integrals of the error are told in the unit of the speed, once or squared', 
   expect(plain(figureText(16.09344, 'km/h·s²', mph))).toBe('10.0 mph·s²');
   expect(plain(figureText(250, '(km/h)²·s', kmh))).toBe('250 (km/h)²·s');
 });
+
+it('a count is a whole number of things, and one is one thing', () => {
+  expect(plain(figureText(0, 'events', kmh))).toBe('0 events');
+  expect(plain(figureText(1, 'events', kmh))).toBe('1 event');
+  expect(plain(figureTextBeside(3, [2], 'shifts', kmh))).toBe('3 shifts');
+  expect(plain(marginText(-1, 'shifts', kmh))).toBe('\u22121 shift');
+});
