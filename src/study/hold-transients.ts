@@ -3,6 +3,7 @@ import type { FullSeries, HoldEvent, HoldEventKind, LoopResult } from '../loop/r
 import { throttleRange } from '../vehicle/throttle-range.ts';
 import type { Figure, Replayed } from './findings.ts';
 import { courseOfRun, type HoldCourse, trueSpeedFactor } from './hold-course.ts';
+import { isByRule } from './hold-off.ts';
 import {
   type HoldMeasure,
   type HoldTransient,
@@ -95,10 +96,10 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
 const eventsOf = ({ result }: Replayed): number[] =>
   (result.holdEvents ?? []).flatMap(({ kind }, i) => (FOLLOWED.includes(kind) ? [i] : []));
 
-/** How bad a transient is, beside others of its kind: what is not over is worst, then what goes furthest from the set speed or, with hold off, jerks most. */
+/** How bad a transient is, beside others of its kind: what is not over is worst, then what goes furthest from the set speed; of ends those by a rule of the unit, then what jerks most. */
 export function badness({ event, settling, lowest, highest, jerk }: HoldMeasure): number {
   const size = (figure: Figure): number => (typeof figure === 'number' ? Math.abs(figure) : 0);
-  if (event.kind === 'ended') return size(jerk);
+  if (event.kind === 'ended') return size(jerk) + (isByRule(event) ? 1000 : 0);
   const unsettled = typeof settling !== 'number' && settling.none === NOT_SETTLED ? 1000 : 0;
   return unsettled + Math.max(size(lowest), size(highest));
 }

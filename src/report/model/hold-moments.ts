@@ -1,5 +1,4 @@
 import type { HoldEventKind } from '../../loop/result.ts';
-import { isByRule } from '../../study/hold-off.ts';
 import type { HoldMeasure, HoldTransient, HoldTransients } from '../../study/hold-transient.ts';
 import { badness } from '../../study/hold-transients.ts';
 import type { View } from './view.ts';
@@ -61,14 +60,10 @@ const isSame = (a: HoldMeasure, b: HoldMeasure): boolean =>
 /** The moments of a kind that the page has pictures of: the worst of the designs, in order along the way. */
 export function shownMoments({ result, candidates }: View, kind: HoldEventKind): readonly HoldMoment[] {
   const designs = new Set(candidates.filter(({ locked }) => !locked).map(({ name }) => name));
-  // What the unit itself did comes before what the rider did, and designs before a throttle locked in place.
+  // Designs come before a throttle locked in place.
   const worst = ({ shown }: HoldMoment): number =>
     shown.reduce(
-      (most, one) =>
-        Math.max(
-          most,
-          badness(one) + (designs.has(one.candidate) ? 1e6 : 0) + (isByRule(one.event) ? 1e7 : 0),
-        ),
+      (most, one) => Math.max(most, badness(one) + (designs.has(one.candidate) ? 1e6 : 0)),
       Number.NEGATIVE_INFINITY,
     );
   return momentsOf(result.transients, kind)

@@ -1,5 +1,6 @@
 import type { Figure } from '../../study/findings.ts';
 import type { HoldMeasure } from '../../study/hold-transient.ts';
+import { causeWords } from '../../study/transient-words.ts';
 import { toPct } from '../../units/convert.ts';
 import { hatch, rectangle } from '../charts/canvas.ts';
 import { holdPicture } from '../charts/hold-picture.ts';
@@ -118,7 +119,7 @@ function ruleList(view: View): Html | null {
     .slice(0, MOST_TOLD)
     .map(
       ({ name, event }) =>
-        html`<li><strong>${name}</strong> at ${placeText(event.distance)}, at ${speedText(event.measured, view.speed)} with ${speedText(event.setSpeed, view.speed)} set: ${CAUSE_NAMES[event.cause]}.</li>`,
+        html`<li><strong>${name}</strong> at ${placeText(event.distance)}, at ${speedText(event.measured, view.speed)} measured, with ${speedText(event.setSpeed, view.speed)} set: ${causeWords(event)}.</li>`,
     )}${ends.length > MOST_TOLD && html`<li>and ${fixed(ends.length - MOST_TOLD)} more in the table of events.</li>`}</ul>`;
 }
 
