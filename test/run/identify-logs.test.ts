@@ -133,6 +133,27 @@ describe('a ride along the road of a case', () => {
       else expectClose(load[name]!, estimate.value, 1e-4);
     }
   });
+
+  test('gives back the numbers with which the demo ride was made by another program', () => {
+    const result = identifyLogs({
+      logs: ['harrow-gap-ridden.csv'],
+      read,
+      case: { file: 'harrow-gap-ridden.yaml', read },
+    });
+    if (result.kind !== 'ride') throw new Error(result.kind);
+    // scripts/make-routes.mjs has its own engine, plate and law of motion: CdA 0.58 m2, Crr 0.014.
+    for (const [name, truth] of [
+      ['cda_m2', 0.58],
+      ['crr', 0.014],
+    ] as const) {
+      const { low, high } = result.fit.unknowns.find((one) => one.name === name)!.estimate;
+      expect(low).toBeLessThan(truth);
+      expect(high).toBeGreaterThan(truth);
+      expect(high - low).toBeLessThan(0.6 * truth);
+    }
+    expect(result.fit.rmsForceBefore).toBeLessThan(6);
+    expect(result.warnings.map(({ code }) => code)).not.toContain('drive-apart');
+  });
 });
 
 describe('page and data of every kind', () => {
