@@ -7,10 +7,11 @@ import { type Browser, chromium, type Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { renderReport } from '../../src/report/render-report.ts';
 import { fixtureResult } from '../report/fixture.ts';
+import { withRider } from '../report/fixture-rider.ts';
 
 let browser: Browser;
 let folder: string;
-/** Of a plain drive, and of an engine with gears, shifts and limit cycles. */
+/** Of a plain drive with a rider, and of an engine with gears, shifts and limit cycles. */
 const urls = { plain: '', engine: '' };
 type Drive = keyof typeof urls;
 
@@ -18,7 +19,8 @@ beforeAll(async () => {
   folder = mkdtempSync(join(tmpdir(), 'report-'));
   for (const drive of ['plain', 'engine'] as const) {
     const file = join(folder, `${drive}.html`);
-    const result = fixtureResult(drive === 'engine' ? { engine: true } : { lengthKm: 18 });
+    const result =
+      drive === 'engine' ? fixtureResult({ engine: true }) : withRider(fixtureResult({ lengthKm: 18 }));
     const none = { none: 'it was not back within 1 km/h for 3 s in two minutes' };
     const unmeasured = { ...result.requirements[0]!, measured: none, margin: none };
     const requirements = [...result.requirements, unmeasured];

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { columnsOf, extentOf, peaksOf, plainCurve } from '../../../src/report/model/columns.ts';
+import { columnsOf, extentOf, peaksOf, plainCurve, unbrokenRuns } from '../../../src/report/model/columns.ts';
 
 describe('columns of a curve', () => {
   it('hold least, mean and greatest of what falls into them', () => {
@@ -15,6 +15,21 @@ describe('columns of a curve', () => {
       { at: 0.5, low: -5, mean: 1, high: 3 },
       { at: 2.5, low: 0, mean: 2.5, high: 9 },
     ]);
+  });
+
+  it('do not go over a gap', () => {
+    const nan = Number.NaN;
+    const curve = plainCurve([0, 1, 2, 3, 4, 5], [nan, 7, 8, nan, nan, 9]);
+    const runs = unbrokenRuns(curve).map((run) => columnsOf(run, 0, 1).map(({ at, mean }) => [at, mean]));
+    expect(runs).toEqual([
+      [
+        [1, 7],
+        [2, 8],
+      ],
+      [[5, 9]],
+    ]);
+    expect(unbrokenRuns(plainCurve([0, 1], [1, 2]))).toHaveLength(1);
+    expect(unbrokenRuns(plainCurve([0], [nan]))).toEqual([]);
   });
 
   it('lose no peak however wide they are', () => {
