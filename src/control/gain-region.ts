@@ -32,6 +32,8 @@ const KP_A_DECADE = 40;
 /** Of the gain at which the loop's own lags would set in. */
 const LEAST_KP = 1e-5;
 const DECADES_OF_KP = 7;
+/** Bring the end of a range of kp to 1e-5. */
+const HALVINGS = 13;
 
 /**
  * The region of (kp, ki) in which |1 / (1 + L)| <= bound for every loop and frequency. With G = P at kp 1 and Q at ki 1,
@@ -112,6 +114,7 @@ function rangesOf(
     const kp = unit * LEAST_KP * exp((i / KP_A_DECADE) * log(10));
     const free = greatestIntegral(kp) > 0;
     if (free && open) ranges.at(-1)!.high = kp;
+    else if (open) ranges.at(-1)!.high = lastFree(greatestIntegral, ranges.at(-1)!.high, kp);
     else if (free) ranges.push({ low: kp, high: kp });
     open = free;
   }
@@ -124,6 +127,17 @@ function rangesOf(
         .every((pole) => pole.re < 0),
     );
   });
+}
+
+/** The greatest kp that still has an integral gain, between one that has and one that has not. */
+function lastFree(greatestIntegral: (kp: number) => number, free: number, beyond: number): number {
+  let [low, high] = [free, beyond];
+  for (let i = 0; i < HALVINGS; i++) {
+    const middle = (low + high) / 2;
+    if (greatestIntegral(middle) > 0) low = middle;
+    else high = middle;
+  }
+  return low;
 }
 
 /** Factor that brings the loop of P alone to a gain of 1 where its phase passes -180 deg, or at the Nyquist frequency. */

@@ -1,3 +1,4 @@
+import { candidateSchema } from '../case/candidate-schema.ts';
 import type { Editable } from '../case/edit-case.ts';
 import type { CaseDocument } from '../case/read-case-file.ts';
 import { isMapping } from '../case/schema-walk.ts';
@@ -34,6 +35,10 @@ export const textOfGains = (name: string, like: Keys, { kp, ki }: Gains): Candid
   kp_pct_per_kmh: digits(toPctPerKmh(kp)),
   ti_s: digits(kp / ki),
 });
+
+/** A case may have these gains: neither is out of its range. */
+export const isWritable = (gains: Gains): boolean =>
+  candidateSchema.safeParse(textOfGains('written', {}, gains)).success;
 
 /** PI by a design. */
 export const textOfDesign = (name: string, like: Keys, design: Keys): CandidateText => ({

@@ -12,7 +12,7 @@ import { pointLoop } from '../study/point-margins.ts';
 import { type RoadTrial, searchOnRoad } from '../study/tune-search.ts';
 import { type Keeps, tightestClosedLoop, tightestDroop, tightestSettling } from '../study/tune-tightest.ts';
 import { toKmh, toPct } from '../units/convert.ts';
-import { keysLike, textOfDesign, textOfGains, writtenGains } from './candidate-text.ts';
+import { isWritable, keysLike, textOfDesign, textOfGains, writtenGains } from './candidate-text.ts';
 import {
   controllerOf,
   type Found,
@@ -64,11 +64,13 @@ export function proposalsOf(context: ProposalContext): Proposals {
   );
   const settle = (gains: Gains): Gains | null => {
     const kept = trimmed(gains, (one) => atPoints(writtenGains(one)));
-    return kept === null ? null : writtenGains(kept);
+    return kept === null || !isWritable(kept) ? null : writtenGains(kept);
   };
   const keeps = (file: CandidateText): boolean => keepsBound(context, scans, controllerOf(context, file));
   const design = designOf(context, timing);
   let trials: readonly RoadTrial[] = [];
+  const proposed: Proposed[] = [];
+  const notProposed: NotProposed[] = [];
 
   /** The least value whose design keeps the bound, to a few per cent, sought from a foreseen one. */
   const tightest = (
@@ -153,6 +155,7 @@ export function proposalsOf(context: ProposalContext): Proposals {
         settle,
         costAt: (gains) => context.costOf(setupOf(gains), 'search'),
         mostReplays: plan.mostReplays,
+        starts: proposed.flatMap(({ controller }) => (controller.kind === 'pi' ? [controller] : [])),
         onReplay: (done) =>
           context.onProgress(done / plan.mostReplays, `replay ${done} of the tuning on the road`),
       });
@@ -181,9 +184,8 @@ export function proposalsOf(context: ProposalContext): Proposals {
     return kept === null ? { none: NONE_KEEPS } : { file: fileOf(kept), words };
   };
 
-  const proposed: Proposed[] = [];
-  const notProposed: NotProposed[] = [];
-  for (const way of plan.designs) {
+  // The road comes last, whatever the order: it begins with what the other ways have found.
+  for (const way of plan.designs.toSorted((a, b) => Number(a === 'road') - Number(b === 'road'))) {
     if (way !== 'road') context.onProgress(0, `design: ${way}`);
     const found = ways[way]();
     if ('none' in found) notProposed.push({ design: way, reason: found.none });

@@ -12,6 +12,8 @@ export interface RoadSearch {
   readonly costAt: (gains: Gains) => number;
   /** Replays that the search may take, at least 20. */
   readonly mostReplays: number;
+  /** Gains that are known already: the search ends with none that cost more. */
+  readonly starts?: readonly Gains[];
   readonly onReplay?: (done: number) => void;
 }
 
@@ -20,8 +22,10 @@ export interface RoadTrial extends Gains {
   readonly cost: number;
 }
 
-/** Grid at the start: below the greatest kp, and of the greatest ki at each. */
-const DECADES_OF_KP = 2.5;
+/** Grid at the start: steps of kp below the greatest, and shares of the greatest ki at each; half of the replays at most. */
+const STEP_OF_KP = (2.5 / 7) * log(10);
+/** At the greatest kp itself there is no ki left. */
+const BELOW_EDGE = 0.03;
 const KP_COUNT = 8;
 const SHARES = [1, 0.3, 0.1, 0.03];
 /** The search ends when its step is less: 1 % of the gains. */
@@ -41,7 +45,7 @@ const DIRECTIONS = [
 /**
  * Gains of the least cost on a road among those that keep the bound. The greatest ki at a kp is known in closed form, so
  * the search goes over the logarithms of kp and of ki as a share of that: the bound is then an edge of the field, and a
- * point beyond it is set onto it. A grid over the whole field is followed by a pattern search from its best point (R. Hooke, T. A. Jeeves, J. ACM 8 (1961) 212-229, from
+ * point beyond it is set onto it. A grid over the field and the gains that are known already are followed by a pattern search from its best point (R. Hooke, T. A. Jeeves, J. ACM 8 (1961) 212-229, from
  * memory), whose step is halved where none of eight neighbours is better. Nothing in it is random.
  *
  * @returns every trial in its order; empty where the region is
@@ -51,6 +55,7 @@ export function searchOnRoad({
   settle,
   costAt,
   mostReplays,
+  starts = [],
   onReplay = () => {},
 }: RoadSearch): readonly RoadTrial[] {
   const trials: RoadTrial[] = [];
@@ -72,20 +77,14 @@ export function searchOnRoad({
   };
 
   let best: { readonly place: Place; readonly cost: number } | null = null;
-  for (const { low, high } of region.ranges)
-    for (let i = 0; i < KP_COUNT; i++) {
-      const x = log(high) - (i * DECADES_OF_KP * log(10)) / (KP_COUNT - 1);
-      if (x < log(low)) break;
-      for (const share of SHARES) {
-        const place = { x, y: log(share) };
-        const trial = at(place);
-        if (trial !== null && trial.cost < (best?.cost ?? Number.POSITIVE_INFINITY))
-          best = { place, cost: trial.cost };
-      }
-    }
+  for (const place of [...placesOf(starts, region), ...gridOf(region, mostReplays / 2)]) {
+    const trial = at(place);
+    if (trial !== null && trial.cost < (best?.cost ?? Number.POSITIVE_INFINITY))
+      best = { place, cost: trial.cost };
+  }
   if (best === null) return trials;
 
-  let step: Place = { x: (DECADES_OF_KP * log(10)) / (KP_COUNT - 1) / 2, y: -log(SHARES[1]!) / 2 };
+  let step: Place = { x: STEP_OF_KP / 2, y: -log(SHARES[1]!) / 2 };
   let { place, cost } = best;
   while (Math.max(step.x, step.y) > LEAST_STEP && trials.length < mostReplays) {
     const from = place;
@@ -103,6 +102,24 @@ export function searchOnRoad({
     if (place === from) step = { x: step.x / 2, y: step.y / 2 };
   }
   return trials;
+}
+
+/** Where gains lie in the field; those outside are left out. */
+function placesOf(gains: readonly Gains[], region: GainRegion): readonly Place[] {
+  return gains.flatMap(({ kp, ki }) => {
+    const greatest = region.greatestIntegral(kp);
+    return greatest > 0 && ki > 0 ? [{ x: log(kp), y: Math.min(0, log(ki / greatest)) }] : [];
+  });
+}
+
+/** The whole field, from its greatest kp down; in each range no more than so many places. */
+function gridOf({ ranges }: GainRegion, most: number): readonly Place[] {
+  const count = Math.min(KP_COUNT, Math.floor(most / SHARES.length));
+  return ranges.flatMap(({ low, high }) =>
+    Array.from({ length: count }, (_, i) => log(high) - BELOW_EDGE - i * STEP_OF_KP)
+      .filter((x) => x >= log(low))
+      .flatMap((x) => SHARES.map((share) => ({ x, y: log(share) }))),
+  );
 }
 
 /** Logarithms of kp and of the share of the greatest ki, 0 or less. */

@@ -96,6 +96,52 @@ describe('searchOnRoad', () => {
     expect(search(bowl, 400)).toEqual(trials);
   });
 
+  test('ends with nothing that costs more than the gains that it begins with', () => {
+    const start = {
+      kp: region.ranges[0]!.high / 40,
+      ki: region.greatestIntegral(region.ranges[0]!.high / 40) / 7,
+    };
+    // A hole as wide as a hundredth of the gains, far from the hill that the rest of the field slopes to.
+    const cost = ({ kp, ki }: Gains): number =>
+      Math.abs(Math.log(kp / start.kp)) + Math.abs(Math.log(ki / start.ki)) < 0.01
+        ? -5
+        : -Math.log(kp / region.ranges[0]!.high) / -10;
+    const least = (starts: readonly Gains[]): number =>
+      searchOnRoad({ region, settle: (gains) => gains, costAt: cost, mostReplays: 40, starts }).reduce(
+        (best, trial) => Math.min(best, trial.cost),
+        Number.POSITIVE_INFINITY,
+      );
+    expect(least([])).toBeGreaterThan(-5);
+    expect(least([start])).toBe(-5);
+  });
+
+  test('leaves half of few replays to the way down from the grid', () => {
+    const seen: Gains[] = [];
+    const [kp, ki] = [region.ranges[0]!.high / 30, region.greatestIntegral(region.ranges[0]!.high / 30) / 3];
+    searchOnRoad({
+      region,
+      settle: (gains) => gains,
+      costAt: (gains) => {
+        seen.push(gains);
+        return Math.log(gains.kp / kp) ** 2 + Math.log(gains.ki / ki) ** 2;
+      },
+      mostReplays: 20,
+    });
+    expect(seen).toHaveLength(20);
+    const away = (gains: Gains): number => Math.log(gains.kp / kp) ** 2 + Math.log(gains.ki / ki) ** 2;
+    // The least of the second half, on the way, is well below that of the first.
+    expect(Math.min(...seen.slice(10).map(away))).toBeLessThan(
+      0.5 * Math.min(...seen.slice(0, 10).map(away)),
+    );
+  });
+
+  test('the field reaches to the greatest gain that P alone may have', () => {
+    const { high } = region.ranges[0]!;
+    expect(sensitivity({ kp: high, ki: 1e-7 })).toBeGreaterThan(0.998 * BOUND);
+    expect(sensitivity({ kp: high, ki: 1e-7 })).toBeLessThan(1.001 * BOUND);
+    expect(sensitivity({ kp: 1.005 * high, ki: 1e-7 })).toBeGreaterThan(BOUND);
+  });
+
   test('keeps to its number of replays, and tells them', () => {
     const told: number[] = [];
     const trials = searchOnRoad({

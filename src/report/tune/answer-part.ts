@@ -7,7 +7,7 @@ const LOOKS: Readonly<Record<TuneAnswer['standing'], { mark: string; words: stri
   found: { mark: '✓', words: 'Gains that keep the bound', look: 'good' },
   kept: { mark: '✓', words: 'The case has them already', look: 'good' },
   exceeded: { mark: '✗', words: 'A candidate of the case exceeds the bound', look: 'bad' },
-  nothing: { mark: '✗', words: 'No gains keep the bound', look: 'bad' },
+  nothing: { mark: '✗', words: 'Nothing to propose', look: 'bad' },
 };
 
 /** 1: the answer in one sentence, then how the candidates of the case stand. */

@@ -18,11 +18,11 @@ export function tuneAnswer(view: TuneView): TuneAnswer {
   const others =
     exceeds.length === 0
       ? ''
-      : ` ${exceeds.map(({ name }) => name).join(' and ')} of the case ${exceeds.length === 1 ? 'exceeds' : 'exceed'} the bound: ${worstWords(exceeds[0]!, view)}.`;
+      : ` ${exceeds.map(({ name }) => name).join(' and ')} of the case ${exceeds.length === 1 ? 'exceeds' : 'exceed'} the bound: ${exceeds.map((one) => `${worstWords(one, view)}${costWords(one)}`).join('; ')}.`;
   if (chosen === null)
     return {
       standing: 'nothing',
-      sentence: `No gains that could be proposed keep a sensitivity of ${bound(result)} at every operating point: ${reasons(result)}.${others}`,
+      sentence: `Nothing can be proposed under the bound of ${bound(result)}: ${reasons(result)}.${keptWords(ofCase)}${others}`,
     };
   const best = cheapest(ofCase.filter(({ keeps }) => keeps === true));
   const points = result.sheet.points.length;
@@ -42,6 +42,16 @@ export function tuneAnswer(view: TuneView): TuneAnswer {
     standing: exceeds.length === 0 ? 'found' : 'exceeded',
     sentence: `Take ${chosen.name}, ${gainsText(chosen, view.speed)}: of ${proposals(view)} it costs least on this road (${significant(cost)}${against}), and its sensitivity keeps the bound of ${bound(result)} ${keeping}.${others}`,
   };
+}
+
+const costWords = ({ cost }: TunedView): string =>
+  isNone(cost) ? `, ${cost.none}` : `, at a cost of ${significant(cost)}`;
+
+function keptWords(ofCase: readonly TunedView[]): string {
+  const kept = ofCase.filter(({ keeps }) => keeps === true).map(({ name }) => name);
+  return kept.length === 0
+    ? ''
+    : ` ${kept.join(' and ')} of the case ${kept.length === 1 ? 'keeps' : 'keep'} it.`;
 }
 
 const bound = ({ plan }: TuneResult): string => significant(plan.sensitivity);

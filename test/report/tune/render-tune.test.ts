@@ -77,6 +77,28 @@ test('proposals.csv has a row for each candidate and each proposal, in order', (
   ]);
 });
 
+test('says what a candidate costs that exceeds the bound, and what stands in the way of a proposal', () => {
+  const beyond = result.tuned.map((one, i) => (i === 1 ? { ...one, cost: 0.25 } : one));
+  const { sentence } = tuneAnswer(tuneView({ ...result, tuned: beyond }, 'kmh'));
+  expect(sentence).toMatch(
+    /shipped of the case exceeds the bound: unstable at 50.km\/h, [^:]*, at a cost of 0\.250\.$/,
+  );
+  const none = tuneAnswer(
+    tuneView(
+      {
+        ...result,
+        tuned: result.tuned.slice(0, 2).map((one, i) => (i === 1 ? { ...one, keeps: true } : one)),
+        chosen: null,
+        notProposed: [{ design: 'simc', reason: 'the drive cannot hold the operating point of 50 km/h' }],
+      },
+      'kmh',
+    ),
+  );
+  expect(none.sentence).toBe(
+    'Nothing can be proposed under the bound of 1.70: the drive cannot hold the operating point of 50 km/h. shipped of the case keeps it.',
+  );
+});
+
 test('a candidate of the case that costs less than every proposal is kept', () => {
   const cheap = result.tuned.map((one, i) => (i === 1 ? { ...one, keeps: true, cost: 0.0001 } : one));
   const { standing, sentence } = tuneAnswer(tuneView({ ...result, tuned: cheap }, 'kmh'));
