@@ -1,11 +1,13 @@
 import { fileURLToPath } from 'node:url';
 import { defineConfig } from 'vitest/config';
+import { nativeSource } from './native-source.ts';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 
 // unit: the core, room by room. program: the built command line, started as a process. browser: pages in Chromium.
 export default defineConfig({
   root,
+  plugins: [nativeSource(root)],
   test: {
     reporters: ['default'],
     // All cores: by itself one is kept free, which on two cores is half of them.
