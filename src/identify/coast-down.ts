@@ -56,6 +56,14 @@ export interface CoastResiduals {
   readonly residual: Float64Array;
 }
 
+/** A fit with a rolling coefficient that is Crr + growth v: a check of the model of two terms, and the form of three. */
+export interface ThreeTermFit {
+  readonly crr: Estimate;
+  readonly cda: Estimate;
+  /** [s/m] */
+  readonly growth: Estimate;
+}
+
 /** Drag area and rolling coefficient of a coast-down. */
 export interface CoastDownFit {
   readonly setting: CoastSetting;
@@ -69,8 +77,8 @@ export interface CoastDownFit {
   readonly wind: Estimate | null;
   /** Steady grade of the road, uphill on the way there; null: it was logged. */
   readonly grade: Estimate | null;
-  /** What a part of the rolling coefficient that grows with speed would be [s/m]; a check of the model, not in it. Null: the speeds do not tell. */
-  readonly growth: Estimate | null;
+  /** The same runs with a third term; null: the speeds do not tell the three apart. */
+  readonly threeTerms: ThreeTermFit | null;
   /** Degrees of freedom of the drag area's interval. */
   readonly degrees: number;
   readonly runs: readonly FittedRun[];

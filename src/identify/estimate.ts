@@ -21,6 +21,9 @@ export function estimateOf(value: number, standardError: number, degrees: number
   return { value, standardError, low: value - half, high: value + half };
 }
 
+/** True where zero lies outside of the interval: the data tell the number from nothing. */
+export const isTold = ({ low, high }: Estimate): boolean => low > 0 || high < 0;
+
 /** An estimate in another unit. */
 export const scaledEstimate = (estimate: Estimate, factor: number): Estimate => ({
   value: estimate.value * factor,

@@ -1,6 +1,6 @@
 import { type LeastSquares, leastSquares } from '../numeric/least-squares.ts';
 import { type ClusteredErrors, clusteredErrors } from './clustered-errors.ts';
-import type { CoastDownFit, CoastRun, CoastSetting, FittedRun } from './coast-down.ts';
+import type { CoastDownFit, CoastRun, CoastSetting, FittedRun, ThreeTermFit } from './coast-down.ts';
 import { type AirRows, airRows, type CoastRows, coastRows } from './coast-rows.ts';
 import { type Estimate, estimateOf } from './estimate.ts';
 
@@ -57,7 +57,7 @@ export function fitCoastDown(runs: readonly CoastRun[], setting: CoastSetting): 
     grade: estimatesGrade
       ? estimateAt(columns.length - 1, fit.coefficients[columns.length - 1]!, errors)
       : null,
-    growth: growthOf(columns, rows, kinds),
+    threeTerms: threeTermsOf(columns, rows, kinds),
     degrees: errors.degrees[1]!,
     ...residualsOf(runs, rows, fit, calmAir(runs, setting), { crr, cda }),
   };
@@ -114,12 +114,17 @@ function estimateAt(
 }
 
 /** The same fit with a rolling coefficient that grows with speed: where its growth is nothing, the model is enough. */
-function growthOf(columns: readonly Float64Array[], rows: Pooled, kinds: Int32Array): Estimate | null {
+function threeTermsOf(
+  columns: readonly Float64Array[],
+  rows: Pooled,
+  kinds: Int32Array,
+): ThreeTermFit | null {
   const more = [...columns, rows.rollingGrowth];
   const fit = leastSquares(more, rows.lost);
   if (fit.status === 'dependent') return null;
-  const last = columns.length;
-  return estimateAt(last, fit.coefficients[last]!, clusteredErrors(more, fit, rows.run, kinds));
+  const errors = clusteredErrors(more, fit, rows.run, kinds);
+  const at = (i: number): Estimate => estimateAt(i, fit.coefficients[i]!, errors);
+  return { crr: at(0), cda: at(1), growth: at(columns.length) };
 }
 
 function residualsOf(

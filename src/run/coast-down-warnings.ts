@@ -1,4 +1,5 @@
 import type { CoastDownFit } from '../identify/coast-down.ts';
+import { isTold } from '../identify/estimate.ts';
 import type { LoggedRun } from '../identify/read-log.ts';
 import { runningIntegral } from '../numeric/running-integral.ts';
 import type { Warning } from '../problems/warning.ts';
@@ -60,10 +61,11 @@ export function coastDownWarnings(
       'windy',
       `The wind along the road was ${Math.abs(fit.wind.value).toFixed(1)} m/s: coast-down standards stop at ${MOST_WIND} m/s (ISO 10521-1, from memory), because gusts and yaw are in the drag area then.`,
     );
-  if (fit.growth !== null && (fit.growth.low > 0 || fit.growth.high < 0))
+  const growth = fit.threeTerms?.growth;
+  if (growth !== undefined && isTold(growth))
     add(
       'curved-residuals',
-      `The rolling resistance seems to ${fit.growth.value > 0 ? 'grow' : 'fall'} with speed, which the model does not have: look at the residuals over speed; a gear or a brake that drags, or a speed with a zero error, looks like this.`,
+      `The rolling resistance seems to ${growth.value > 0 ? 'grow' : 'fall'} with speed, which CdA and Crr alone do not have: beside them stand three terms, f0, f1 and f2. Look at the residuals over speed; a gear or a brake that drags, or a speed with a zero error, looks like this.`,
     );
   const scatter = fit.rmsForce;
   for (const run of fit.runs)

@@ -33,8 +33,11 @@ export interface CoastDownIdentification extends Whole {
   readonly kind: 'coast-down';
   readonly fit: CoastDownFit;
   readonly air: TestAir;
+  /** With two terms, as the vehicle file has it. */
   readonly measured: RoadLoadForm;
   readonly atReference: RoadLoadForm;
+  /** With three; null: the runs do not tell the second from nothing. */
+  readonly withThreeTerms: { readonly measured: RoadLoadForm; readonly atReference: RoadLoadForm } | null;
 }
 
 /** Gains of PI that follow from a step test, for one wanted closed loop. */

@@ -2,6 +2,7 @@ import { newIdentifiedVehicle, withIdentified } from '../case/identified-vehicle
 import type { VehicleDocument } from '../case/read-vehicle-file.ts';
 import { checkCoastDown } from '../identify/check-fit.ts';
 import { coastRunsOf } from '../identify/coast-runs.ts';
+import { isTold } from '../identify/estimate.ts';
 import { fitCoastDown } from '../identify/fit-coast-down.ts';
 import type { LoggedRun } from '../identify/read-log.ts';
 import { formAtReference, measuredForm } from '../identify/reference-conditions.ts';
@@ -31,7 +32,10 @@ export function identifyCoastDown(
     }),
     request.logs.join(', '),
   );
-  const measured = measuredForm(fit);
+  const measured = measuredForm(fit, fit.setting);
+  const { threeTerms } = fit;
+  const three =
+    threeTerms !== null && isTold(threeTerms.growth) ? measuredForm(threeTerms, fit.setting) : null;
   const provenance = [
     `Measured by ridgehold identify from ${counted(fit.runs.length, 'coast-down run')} in ${logNames(request).join(', ')}:`,
     `cda_m2 ${numberWords(fit.cda, 'm2')}`,
@@ -50,6 +54,7 @@ export function identifyCoastDown(
     air: air.air,
     measured,
     atReference: formAtReference(measured, air.air),
+    withThreeTerms: three === null ? null : { measured: three, atReference: formAtReference(three, air.air) },
     text:
       vehicle === null
         ? newIdentifiedVehicle({

@@ -157,7 +157,7 @@ describe('the fit', () => {
   test('sees a rolling resistance that grows with speed, which the model does not have', () => {
     const random = seededStream(8);
     const plain = fitted(bothWays({}, () => 0.03 * random.normal(), 4));
-    expect(inside(plain.growth!, 0)).toBe(true);
+    expect(inside(plain.threeTerms!.growth, 0)).toBe(true);
     // a linear term of 0.8 N/(m/s) beside 30 N and 0.35 N/(m/s)2: the published solution with one
     const { cases } = readReference<{
       cases: { case: string; t_s: number[]; v_m_s: number[] }[];
@@ -170,8 +170,12 @@ describe('the fit', () => {
       speed: Float64Array.from(solution.v_m_s.slice(0, moving), (v) => v + 0.01 * random.normal()),
     }));
     const fit = fitted(runs, { mass: 250, rotatingMass: 0, airDensity: 1.2 });
-    expect(inside(fit.growth!, 0)).toBe(false);
-    expectClose(fit.growth!.value * 250 * GRAVITY, 0.8, 0.05);
+    expect(inside(fit.threeTerms!.growth, 0)).toBe(false);
+    expectClose(fit.threeTerms!.growth.value * 250 * GRAVITY, 0.8, 0.05);
+    expectClose(fit.threeTerms!.crr.value * 250 * GRAVITY, 30, 0.4);
+    expectClose(fit.threeTerms!.cda.value * 0.6, 0.35, 0.004);
+    // Two terms alone put half of it into each.
+    expect(fit.cda.value * 0.6).toBeGreaterThan(0.36);
   });
 
   test('is none where nothing tells the unknowns apart', () => {
@@ -191,7 +195,7 @@ describe('the 95 % interval', () => {
 
   test('holds the coefficients of the regulation in 93 to 97 % of 1000 seeded coast-downs', () => {
     const random = seededStream(86529);
-    const hits = { cda: 0, crr: 0 };
+    const hits = { cda: 0, crr: 0, growth: 0 };
     for (let trial = 0; trial < TRIALS; trial++) {
       const row = rows[trial % rows.length]!;
       const mass = row.inertia_kg;
@@ -217,11 +221,15 @@ describe('the 95 % interval', () => {
       const fit = fitted(runs, { mass, rotatingMass: 0, airDensity: 1.189 });
       hits.cda += inside(fit.cda, truth.cda) ? 1 : 0;
       hits.crr += inside(fit.crr, truth.crr) ? 1 : 0;
+      hits.growth += inside(fit.threeTerms!.growth, 0) ? 1 : 0;
     }
     for (const hit of [hits.cda, hits.crr]) {
       expect(hit).toBeGreaterThanOrEqual(930);
       expect(hit).toBeLessThanOrEqual(970);
     }
+    // Of a third term that is not there: seldom told falsely, if a little too seldom.
+    expect(hits.growth).toBeGreaterThanOrEqual(940);
+    expect(hits.growth).toBeLessThanOrEqual(985);
   });
 
   test.each([

@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
 import { readCaseFile } from '../../src/case/read-case-file.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
+import { seededStream } from '../../src/numeric/random.ts';
 import { identificationJson } from '../../src/report/identify/identification-json.ts';
 import { renderIdentification } from '../../src/report/identify/render-identification.ts';
 import { identifyLogs } from '../../src/run/identify-logs.ts';
@@ -27,6 +28,52 @@ describe('the demo coast-down', () => {
     expect(holds(result.fit.crr, TRUTH.crr)).toBe(true);
     expect(result.fit.runs.map(({ direction }) => direction).slice(0, 2)).toEqual(['there', 'back']);
     expect(result.warnings).toEqual([]);
+  });
+
+  test('has no third term where the runs do not tell it from zero, and says so', () => {
+    // The demo machine has none: see MACHINE in scripts/make-logs.mjs.
+    expect(result.withThreeTerms).toBe(null);
+    const page = renderIdentification(result, { units: 'kmh', output: 'v.yaml' });
+    expect(page).toContain('Three terms are not given: f1 would lie at −');
+    expect(JSON.parse(identificationJson(result, 'v.yaml', [])).road_load_three_terms).toBe(null);
+  });
+
+  test('has three terms with their errors where a third is in the log', () => {
+    // 250 kg, F = 30 N + 0.8 N/(m/s) v + 0.35 N/(m/s)2 v2: solved in small steps here, five runs each way.
+    const random = seededStream(3);
+    const rows = Array.from({ length: 10 }, (_, run) => {
+      const lines: string[] = [];
+      for (let t = 0, v = 26; v > 5; t++) {
+        const read = 3.6 * (v + 0.02 * random.normal());
+        lines.push(`${run},${run % 2 === 0 ? 'there' : 'back'},${t},${read.toFixed(3)}`);
+        for (let k = 0; k < 100; k++) v -= ((30 + 0.8 * v + 0.35 * v * v) / 250) * 0.01;
+      }
+      return lines;
+    });
+    const log = `run,direction,time_s,speed_kmh\n${rows.flat().join('\n')}\n`;
+    const three = identifyLogs({
+      logs: ['three.csv'],
+      read: () => new TextEncoder().encode(log),
+      massKg: 250,
+      rotatingKg: 0,
+      airTemperatureC: 12,
+      airPressureHpa: 1004,
+    });
+    const { road_load_three_terms: f, road_load_three_terms_at_reference: at } = JSON.parse(
+      identificationJson(three, 'v.yaml', []),
+    );
+    for (const [estimate, truth, near] of [
+      [f.f0_n, 30, 0.5],
+      [f.f1_n_per_kmh, 0.8 / 3.6, 0.02],
+      [f.f2_n_per_kmh2, 0.35 / 3.6 ** 2, 0.0003],
+    ] as const) {
+      expectClose(estimate.value, truth, near);
+      expect(holds(estimate, truth)).toBe(true);
+    }
+    expectClose(at.f1_n_per_kmh.value / f.f1_n_per_kmh.value, 1 + 0.006 * (285.15 - 293), 1e-5);
+    const page = renderIdentification(three, { units: 'kmh', output: 'v.yaml' });
+    expect(page).toContain('three terms, as measured');
+    expect(page).toMatch(/tell f1 from zero: \+0\.\d+ to \+0\.\d+ N per km\/h/);
   });
 
   test('puts the numbers and their errors into a copy of the vehicle', () => {

@@ -6,6 +6,8 @@ export const coastDownMethod = (): Html => html`<dl class="equations">
 <dd>The balance of energy between two moments of a run; m all that rolls, m<sub>r</sub> the equivalent mass of what turns, w the headwind. It is linear in CdA and Crr, and nothing is differentiated (integral form of SAE J1263 and ISO 10521-1, from memory; law of motion: G. D. Thompson, The Vehicle Road Load Problem, US EPA).</dd>
 <dt>pieces</dt>
 <dd>Each run is cut into up to twelve pieces; both sides are averaged over a piece and neighbours subtracted, which keeps the equation exact and averages the noise of the speed. Slower than 9 km/h is left out. Integrals by parabolas through three samples.</dd>
+<dt>three terms</dt>
+<dd>The same balance with a rolling coefficient Crr + c v beside, so that f1 = m g c; by the same least squares and with the same intervals. They are given where zero lies outside of the interval of f1: else two terms say as much, and say it better. f1 is corrected to reference conditions as f0 is (form of ISO 10521-1, from memory).</dd>
 <dt>wind and grade</dt>
 <dd>Where they were not logged, one steady wind along the road and one steady grade are estimated from the difference between the ways; the square of the wind, which stays behind in the mean of both ways, is in the air term by Gauss-Newton steps. Crosswind is not seen: it adds to CdA.</dd>
 <dt>standard errors</dt>

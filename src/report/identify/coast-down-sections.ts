@@ -1,9 +1,10 @@
+import type { CoastDownFit } from '../../identify/coast-down.ts';
 import type { Estimate } from '../../identify/estimate.ts';
 import { scaledEstimate } from '../../identify/estimate.ts';
 import type { RoadLoadForm } from '../../identify/reference-conditions.ts';
 import type { CoastDownIdentification } from '../../run/identification.ts';
 import { STANDARD_GRAVITY } from '../../units/constants.ts';
-import { toNPerKmh2, toPct } from '../../units/convert.ts';
+import { toNPerKmh, toNPerKmh2, toPct } from '../../units/convert.ts';
 import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
 import { type Html, html } from '../html.ts';
 import { estimateCells } from '../model/estimate-words.ts';
@@ -41,9 +42,9 @@ function estimatesBody(result: CoastDownIdentification): Html {
     ...row('rolling coefficient Crr', fit.crr, '1'),
     ...row('wind along the road', fit.wind, 'm/s', true),
     ...row('grade of the road', fit.grade === null ? null : scaledEstimate(fit.grade, toPct(1)), '%', true),
-    ...row('growth of Crr with speed', fit.growth, 's/m', true),
+    ...row('growth of Crr with speed', fit.threeTerms?.growth ?? null, 's/m', true),
   ])}
-<p class="note">CdA and Crr are tied with a correlation of ${fixed(fit.correlation, 2)}; the interval of CdA has ${trimmed(fit.degrees, 1)} degrees of freedom.${fit.wind !== null && ' The wind counts against the way there, the grade uphill on it: both come from the difference between the ways.'} The growth of Crr is a check alone: it is not in the model, and its interval should take in zero.</p>
+<p class="note">CdA and Crr are tied with a correlation of ${fixed(fit.correlation, 2)}; the interval of CdA has ${trimmed(fit.degrees, 1)} degrees of freedom.${fit.wind !== null && ' The wind counts against the way there, the grade uphill on it: both come from the difference between the ways.'} The growth of Crr is of another fit, with three terms: it is not in CdA and Crr here, and where its interval takes in zero they are enough.</p>
 <h3>Taken for granted</h3>
 ${givenTable(result.given)}
 <p class="note">No interval above has an error of these in it. CdA goes with the mass over the density, Crr hardly with either: 1 % of mass is 1 % of CdA.</p>`;
@@ -125,12 +126,17 @@ ${table(
 )}`;
 }
 
-function formsBody({ measured, atReference, air }: CoastDownIdentification): Html {
-  const row = (name: string, { f0, f2, airDensity }: RoadLoadForm): readonly string[] => {
-    const curve = scaledEstimate(f2, toNPerKmh2(1));
-    const [first, firstError] = estimateCells(f0);
-    const [second, secondError] = estimateCells(curve);
-    return [name, first, firstError, '0', second, secondError, fixed(airDensity, 3)];
+function formsBody({ measured, atReference, withThreeTerms, fit, air }: CoastDownIdentification): Html {
+  const row = (name: string, { f0, f1, f2, airDensity }: RoadLoadForm): readonly string[] => {
+    const cells = (estimate: Estimate | null, factor = 1): readonly string[] =>
+      estimate === null ? ['0', ''] : estimateCells(scaledEstimate(estimate, factor)).slice(0, 2);
+    return [
+      name,
+      ...cells(f0),
+      ...cells(f1, toNPerKmh(1)),
+      ...cells(f2, toNPerKmh2(1)),
+      fixed(airDensity, 3),
+    ];
   };
   return html`<p>F = f0 + f1 V + f2 V², V in km/h, in still air on the level, at the mass that rolled; f1 is nothing in the two-term form of motorcycle regulations.</p>
 ${table(
@@ -140,13 +146,34 @@ ${table(
     { head: 'f0 / N', number: true },
     { head: 'standard error', number: true },
     { head: 'f1 / (N per km/h)', number: true },
+    { head: 'standard error', number: true },
     { head: 'f2 / (N per (km/h)²)', number: true },
     { head: 'standard error', number: true },
     { head: 'density / (kg/m³)', number: true },
   ],
-  [row('as measured', measured), row('at 293 K and 100 kPa', atReference)],
+  [
+    row('as measured', measured),
+    row('at 293 K and 100 kPa', atReference),
+    ...(withThreeTerms === null
+      ? []
+      : [
+          row('three terms, as measured', withThreeTerms.measured),
+          row('three terms, at 293 K and 100 kPa', withThreeTerms.atReference),
+        ]),
+  ],
 )}
-<p class="note">Reference conditions and correction of UN GTR No. 2, annex 7 (also Regulation (EU) 134/2014), from memory: f0 (1 + 0.006 (T − 293 K)), f2 (T / 293 K) (100 kPa / p). ${air.temperature === null ? 'Only the density was given: f0 is not corrected.' : 'Dry air.'} The vehicle file has CdA and Crr as measured: the air of a case makes its own density from them.</p>`;
+<p class="note">${thirdTerm(fit, withThreeTerms?.measured.f1 ?? null)}</p>
+<p class="note">Reference conditions and correction of UN GTR No. 2, annex 7 (also Regulation (EU) 134/2014), from memory: f0 (1 + 0.006 (T − 293 K)), f1 likewise, f2 (T / 293 K) (100 kPa / p). ${air.temperature === null ? 'Only the density was given: f2 alone is corrected.' : 'Dry air.'} The vehicle file has CdA and Crr as measured: the air of a case makes its own density from them.</p>`;
+}
+
+/** Whether the runs tell a term that is linear in speed. */
+function thirdTerm({ threeTerms, setting }: CoastDownFit, f1: Estimate | null): string {
+  if (threeTerms === null) return 'The speeds of these runs do not tell three terms apart.';
+  const linear = scaledEstimate(threeTerms.growth, toNPerKmh(setting.mass * STANDARD_GRAVITY));
+  const [, , interval] = estimateCells(linear, true);
+  if (f1 === null)
+    return `Three terms are not given: f1 would lie at ${interval} N per km/h (95 %), which these runs do not tell from zero. More runs over a wider range of speeds may.`;
+  return `The runs tell f1 from zero: ${interval} N per km/h (95 %). The three terms belong together and stand for the speeds driven alone; a vehicle file takes them as f0_n, f1_n_per_kmh and f2_n_per_kmh2, in place of cda_m2 and crr.`;
 }
 
 function nextBody({ fit, warnings }: CoastDownIdentification, speed: SpeedUnit): Html {

@@ -17,6 +17,7 @@ import {
   toKm,
   toKmh,
   toKmhPerPct,
+  toNPerKmh,
   toNPerKmh2,
   toPct,
   toPctPerKmh,
@@ -27,7 +28,7 @@ import { jsonText } from '../data/json-text.ts';
 import { identificationAnswer } from './identification-answer.ts';
 
 /** Version of the shape of identify.json, by the rule of SCHEMA_VERSION. */
-const IDENTIFICATION_VERSION = '1.0';
+const IDENTIFICATION_VERSION = '1.1';
 
 /**
  * identify.json: what logs told, for programs. No clock and no absolute path is in it.
@@ -80,21 +81,27 @@ const estimateJson = ({ value, standardError, low, high }: Estimate): Json => ({
 const orNull = (estimate: Estimate | null, factor = 1): Json =>
   estimate === null ? null : estimateJson(scaledEstimate(estimate, factor));
 
-const formJson = ({ f0, f2, airDensity }: RoadLoadForm): Json => ({
+const formJson = ({ f0, f1, f2, airDensity }: RoadLoadForm): Json => ({
   f0_n: estimateJson(f0),
-  f1_n_per_kmh: 0,
+  f1_n_per_kmh: f1 === null ? 0 : estimateJson(scaledEstimate(f1, toNPerKmh(1))),
   f2_n_per_kmh2: estimateJson(scaledEstimate(f2, toNPerKmh2(1))),
   air_density_kg_m3: short(airDensity),
 });
 
-function coastDownJson({ fit, air, measured, atReference }: CoastDownIdentification): Record<string, Json> {
+function coastDownJson({
+  fit,
+  air,
+  measured,
+  atReference,
+  withThreeTerms,
+}: CoastDownIdentification): Record<string, Json> {
   return {
     estimates: {
       cda_m2: estimateJson(fit.cda),
       crr: estimateJson(fit.crr),
       wind_m_s: orNull(fit.wind),
       grade_pct: orNull(fit.grade, toPct(1)),
-      crr_v_s_per_m: orNull(fit.growth),
+      crr_v_s_per_m: orNull(fit.threeTerms?.growth ?? null),
     },
     correlation_cda_crr: short(fit.correlation),
     degrees_of_freedom: fit.degrees,
@@ -105,6 +112,8 @@ function coastDownJson({ fit, air, measured, atReference }: CoastDownIdentificat
     },
     road_load: formJson(measured),
     road_load_at_reference: formJson(atReference),
+    road_load_three_terms: withThreeTerms === null ? null : formJson(withThreeTerms.measured),
+    road_load_three_terms_at_reference: withThreeTerms === null ? null : formJson(withThreeTerms.atReference),
     rms_residual_n: short(fit.rmsForce),
     runs: fit.runs.map((run) => ({
       name: run.name,
