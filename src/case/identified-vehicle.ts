@@ -1,6 +1,6 @@
 import { InputError } from '../problems/input-error.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
-import { toNPerKmh2 } from '../units/convert.ts';
+import { toNPerKmh, toNPerKmh2 } from '../units/convert.ts';
 import { editCase } from './edit-case.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
 import { placeOf } from './yaml-source.ts';
@@ -10,6 +10,8 @@ export interface IdentifiedVehicle {
   /** Null: it was not fitted. */
   readonly cda: number | null;
   readonly crr: number | null;
+  /** Growth of the rolling coefficient that the fit had in it, c1 v + c2 v^2 [s/m, s2/m2]: `crr` is what is left of it. */
+  readonly growth: { readonly c1: number; readonly c2: number };
   /** Loaded mass [kg]. */
   readonly mass: number | null;
   /** Lines of comment, without the mark: what was measured, how, and how well. */
@@ -39,25 +41,34 @@ export function withIdentified(vehicle: VehicleDocument, found: IdentifiedVehicl
   const loaded = file.mass.kerb_kg + file.mass.rider_kg + file.mass.payload_kg;
   if (found.mass !== null) put(['mass', 'kerb_kg'], file.mass.kerb_kg + found.mass - loaded);
   const mass = found.mass ?? loaded;
+  const { c1, c2 } = found.growth;
   if ('f0_n' in load) {
-    if (found.crr !== null) {
-      put(['road_load', 'f0_n'], found.crr * STANDARD_GRAVITY * (load.test_mass_kg ?? mass));
-      if (load.f1_n_per_kmh !== 0) put(['road_load', 'f1_n_per_kmh'], 0);
-    }
+    const weight = STANDARD_GRAVITY * (load.test_mass_kg ?? mass);
+    // Without a mass of its own the form belongs to the loaded mass: with another one it is another for the same tyres.
+    const rescaled = load.test_mass_kg === undefined ? mass / loaded : 1;
+    if (found.crr !== null) put(['road_load', 'f0_n'], found.crr * weight);
+    else if (rescaled !== 1) put(['road_load', 'f0_n'], load.f0_n * rescaled);
+    const linear = found.crr !== null ? toNPerKmh(c1 * weight) : load.f1_n_per_kmh * rescaled;
+    if (written(linear) !== written(load.f1_n_per_kmh)) put(['road_load', 'f1_n_per_kmh'], linear);
     if (found.cda !== null)
       put(['road_load', 'f2_n_per_kmh2'], toNPerKmh2((load.air_density_kg_m3 / 2) * found.cda));
   } else if ('cda_m2' in load && 'crr' in load) {
     if (found.cda !== null) put(['road_load', 'cda_m2'], found.cda);
     if (found.crr !== null) {
       put(['road_load', 'crr'], found.crr);
-      for (const growth of ['crr_v_s_per_m', 'crr_v2_s2_per_m2'] as const)
-        if (load[growth] !== 0) put(['road_load', growth], 0);
+      for (const [key, value] of [
+        ['crr_v_s_per_m', c1],
+        ['crr_v2_s2_per_m2', c2],
+      ] as const)
+        if (load[key] !== value) put(['road_load', key], value);
     }
   } else if (found.cda !== null && found.crr !== null)
     text = editCase(text, ['road_load'], {
       cda_m2: written(found.cda),
       ...('cda_yaw_per_rad2' in load ? { cda_yaw_per_rad2: load.cda_yaw_per_rad2 } : {}),
       crr: written(found.crr),
+      ...(c1 === 0 ? {} : { crr_v_s_per_m: written(c1) }),
+      ...(c2 === 0 ? {} : { crr_v2_s2_per_m2: written(c2) }),
     });
   else if (found.cda !== null || found.crr !== null)
     throw new InputError({

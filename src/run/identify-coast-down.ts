@@ -65,6 +65,12 @@ export function identifyCoastDown(
             provenance,
             massWords: `Given: ${masses.mass.value} kg loaded (${masses.mass.from}); what turns with the wheels counts for ${masses.rotating.value} kg more (${masses.rotating.from}).`,
           })
-        : withIdentified(vehicle, { cda: fit.cda.value, crr: fit.crr.value, mass: null, provenance }),
+        : withIdentified(vehicle, {
+            cda: fit.cda.value,
+            crr: fit.crr.value,
+            growth: { c1: 0, c2: 0 },
+            mass: null,
+            provenance,
+          }),
   };
 }

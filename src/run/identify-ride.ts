@@ -75,7 +75,7 @@ export function identifyRide(
     toolVersion: TOOL_VERSION,
     logs: logNames(request),
     inputs: log.files,
-    given: held.given,
+    given: held.given.filter(({ name }) => name !== LOADED_MASS || !unknowns.includes('mass_kg')),
     warnings: rideFitWarnings(fit, { byPower, airAssumed: held.airAssumed }),
     fit,
     vehicleName: vehicle.name,
@@ -86,6 +86,7 @@ export function identifyRide(
     text: withIdentified(document, {
       cda: value('cda_m2'),
       crr: value('crr'),
+      growth: vehicle.roadLoad,
       mass: value('mass_kg'),
       provenance,
     }),
@@ -212,6 +213,8 @@ function byItsColumns(request: IdentifyRequest, runs: readonly LoggedRun[], log:
   };
 }
 
+const LOADED_MASS = 'loaded mass';
+
 function massesGiven(
   { mass, rotatingMass, drive }: Vehicle,
   { source }: VehicleDocument,
@@ -219,7 +222,7 @@ function massesGiven(
   const from = `vehicle file ${source.file.split(/[\\/]/).at(-1) ?? ''}`;
   const turning = rotatingMass + drive.gears[drive.gear]!.inertia;
   return [
-    { name: 'loaded mass', value: mass, unit: 'kg', from, isDefault: false },
+    { name: LOADED_MASS, value: mass, unit: 'kg', from, isDefault: false },
     {
       name: 'rotating mass in gear',
       value: Number(turning.toPrecision(4)),

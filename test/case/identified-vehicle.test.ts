@@ -8,6 +8,7 @@ import { expectClose } from '../compare.ts';
 const found = {
   cda: 0.61234567,
   crr: 0.01523456,
+  growth: { c1: 0, c2: 0 },
   mass: null,
   provenance: ['cda_m2 measured', 'crr measured'],
 };
@@ -61,6 +62,40 @@ road_load:
     const text = 'mass: {kerb_kg: 140, rider_kg: 75, payload_kg: 5}\nroad_load: {cda_m2: 0.5, crr: 0.01}\n';
     const { file } = readVehicleFile(edited(text, { ...found, mass: 226.5 }), 'v.yaml');
     expect(file.mass).toMatchObject({ kerb_kg: 146.5, rider_kg: 75, payload_kg: 5 });
+  });
+
+  test('keeps a growth of the rolling coefficient that the fit had in it, in each form', () => {
+    const growth = { c1: 1e-4, c2: 2e-6 };
+    const filed =
+      'mass: {kerb_kg: 200}\nroad_load: {cda_m2: 0.5, crr: 0.01, crr_v_s_per_m: 1.0e-4, crr_v2_s2_per_m2: 2e-6}\n';
+    expect(withoutComments(edited(filed, { ...found, growth }))).toBe(
+      filed.replace('0.5', '0.61235').replace('0.01,', '0.015235,'),
+    );
+    expect(edited(filed)).toContain('crr_v_s_per_m: 0, crr_v2_s2_per_m2: 0');
+    const regulated =
+      'mass: {kerb_kg: 200}\nroad_load: {f0_n: 20, f1_n_per_kmh: 0.0545, f2_n_per_kmh2: 0.025}\n';
+    const load = readVehicleFile(edited(regulated, { ...found, growth: { c1: 1e-4, c2: 0 } }), 'v.yaml').file
+      .road_load;
+    // 1e-4 s/m times 200 kg times 9.80665 m/s2, over 3.6
+    expect(load).toMatchObject({ f1_n_per_kmh: 0.054481 });
+    expect(
+      edited('mass: {kerb_kg: 200}\nroad_load: {cda_m2: 0.5, tyre_pressure_bar: 2.2}\n', {
+        ...found,
+        growth,
+      }),
+    ).toContain('crr: 0.015235, crr_v_s_per_m: 0.0001, crr_v2_s2_per_m2: 0.000002');
+  });
+
+  test('changes a form that belongs to the loaded mass with that mass', () => {
+    const text = 'mass: {kerb_kg: 200}\nroad_load: {f0_n: 20, f1_n_per_kmh: 0.05, f2_n_per_kmh2: 0.025}\n';
+    const massAlone = { ...found, cda: null, crr: null, mass: 220 };
+    expect(readVehicleFile(edited(text, massAlone), 'v.yaml').file.road_load).toMatchObject({
+      f0_n: 22,
+      f1_n_per_kmh: 0.055,
+      f2_n_per_kmh2: 0.025,
+    });
+    const own = text.replace('f0_n', 'test_mass_kg: 190, f0_n');
+    expect(readVehicleFile(edited(own, massAlone), 'v.yaml').file.road_load).toMatchObject({ f0_n: 20 });
   });
 
   test('can be a new one, which says what is a stand-in', () => {
