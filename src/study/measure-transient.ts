@@ -1,6 +1,6 @@
 import type { FullSeries, HoldEvent } from '../loop/result.ts';
 import type { Figure } from './findings.ts';
-import type { HoldMeasure } from './hold-transient.ts';
+import { type HoldMeasure, NOT_SETTLED } from './hold-transient.ts';
 import { RECOVERED_BAND, RECOVERED_FOR } from './recovery.ts';
 import { errorAt, sampleAt } from './series-measures.ts';
 
@@ -24,7 +24,7 @@ export interface TransientWindow {
   readonly at: number;
   /** It is followed for so long [s]. */
   readonly longest: number;
-  /** Why it has no settling where it has none. */
+  /** Why it has no settling where the series ends before `longest` has passed. */
   readonly unsettled: string;
 }
 
@@ -46,7 +46,9 @@ export function measureTransient(
   const event = events[at]!;
   const first = Math.min(sampleAtTime(series, event.time), Math.max(0, series.size - 1));
   const off = event.kind === 'ended';
-  const settled = off ? null : settledAt(series, first);
+  const settled = off ? null : settledAt(series, first, event.time + longest);
+  const seen = series.time[series.size - 1] ?? 0;
+  const why = seen >= event.time + longest + RECOVERED_FOR ? NOT_SETTLED : unsettled;
   const lastTime = Math.min(
     settled === null ? Number.POSITIVE_INFINITY : series.time[settled]! + RECOVERED_FOR,
     event.time + longest,
@@ -60,7 +62,7 @@ export function measureTransient(
       event,
       commandStep: stepAt(range, events, at, series, first),
       ...extremes(series, from, last),
-      settling: settled === null ? { none: off ? HOLD_OFF : unsettled } : series.time[settled]! - event.time,
+      settling: settled === null ? { none: off ? HOLD_OFF : why } : series.time[settled]! - event.time,
       jerk: greatestJerk(series, first, last),
     },
   };
@@ -87,10 +89,11 @@ function stepAt(
     : { none: NOT_BACK };
 }
 
-/** Sample at which 3 s within 1 km/h of the set speed begin; null: none do. */
-function settledAt(series: FullSeries, first: number): number | null {
+/** Sample at which 3 s within 1 km/h of the set speed begin, up to a time [s]; null: none do. */
+function settledAt(series: FullSeries, first: number, latest: number): number | null {
   let inside = -1;
   for (let i = first; i < series.size; i++) {
+    if (inside < 0 && series.time[i]! > latest) return null;
     if (Math.abs(errorAt(series, i)) > RECOVERED_BAND) inside = -1;
     else if (inside < 0) inside = i;
     if (inside >= 0 && series.time[i]! - series.time[inside]! >= RECOVERED_FOR - 1e-9) return inside;

@@ -43,13 +43,13 @@ function course({
   };
 }
 
-function measure(series: FullSeries, events: readonly HoldEvent[]) {
+function measure(series: FullSeries, events: readonly HoldEvent[], longest = 60) {
   return measureTransient(series, {
     candidate: 'pi',
     range: { least: 0, greatest: 1 },
     events,
     at: 0,
-    longest: 60,
+    longest,
     unsettled: 'the road came first',
   }).measure;
 }
@@ -121,6 +121,13 @@ describe('a transient', () => {
       10,
       1e-9,
     );
+  });
+
+  it('has no settling that began later than it is followed, though the series goes on', () => {
+    const late = course({ error: (t) => (t < 30 ? -1 : 0) });
+    const never = { none: 'it was not within 1 km/h for 3 s in a minute' };
+    expectClose(measure(late, [event('resumed')], 30).settling as number, 30, 1e-9);
+    expect(measure(late, [event('resumed')], 29).settling).toEqual(never);
   });
 
   it('has no settling where it was not seen, and says why', () => {
