@@ -1,4 +1,4 @@
-import { readFileSync, writeFileSync } from 'node:fs';
+import { chmodSync, lstatSync, readFileSync, statSync, symlinkSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
 import {
@@ -104,6 +104,24 @@ describe('ridgehold tune', () => {
     expect(refused.stderr).toContain(words);
     expect(at('other.yaml')).toBe(asked);
     expect(filesBelow(join(here, 'out'))['refused/tune.json']).toBeUndefined();
+  });
+
+  test('a read-only case stays as it is; one behind a link is edited where it lies, under its permissions', () => {
+    writeFiles(here, { 'shut.yaml': asked, 'kept/real.yaml': asked, 'kept/vehicle.yaml': VEHICLE });
+    chmodSync(join(here, 'shut.yaml'), 0o444);
+    chmodSync(join(here, 'kept/real.yaml'), 0o640);
+    symlinkSync('kept/real.yaml', join(here, 'link.yaml'));
+    const add = (name: string) => [
+      ...['tune', name, '--add', 'simc', '--set', 'tune.designs=[simc]', '-o', `out/${name}`, '--quiet'],
+    ];
+    const shut = ridgehold(here, add('shut.yaml'));
+    expect(shut.stderr).toContain('shut.yaml: is read-only');
+    expect([shut.status, at('shut.yaml')]).toEqual([2, asked]);
+    const linked = ridgehold(here, add('link.yaml'));
+    expect([linked.stderr, linked.status]).toEqual(['', 0]);
+    expect(lstatSync(join(here, 'link.yaml')).isSymbolicLink()).toBe(true);
+    expect(at('kept/real.yaml')).toContain('name: tuned-simc');
+    expect(statSync(join(here, 'kept/real.yaml')).mode & 0o777).toBe(0o640);
   });
 
   test('ends with 1 where a candidate of the case exceeds the bound, and refuses to edit what is not UTF-8', () => {
