@@ -1,9 +1,9 @@
 import { readFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { parse } from 'csv-parse/sync';
-import { expect, test } from 'vitest';
+import { beforeAll, expect, test } from 'vitest';
 import { expectClose } from '../compare.ts';
-import { ridgehold, temporaryFolder, writeFiles } from './start-program.ts';
+import { type Ended, ridgeholdMany, temporaryFolder, writeFiles } from './start-program.ts';
 
 interface Row {
   readonly inertia_kg: number;
@@ -44,15 +44,23 @@ function timeAt(records: readonly Record<string, string>[], speedKmh: number): n
   return Number(a.time_s) + share * (Number(b.time_s) - Number(a.time_s));
 }
 
+const nameOf = (row: Row): string => `coast-${row.inertia_kg}`;
+let runs: readonly Ended[];
+beforeAll(() => {
+  for (const row of TABLE) writeFiles(here, { [`${nameOf(row)}.yaml`]: caseOf(row) });
+  runs = ridgeholdMany(
+    here,
+    TABLE.map((row) => ['run', `${nameOf(row)}.yaml`]),
+  );
+});
+
 test.each(TABLE)(
   'coasting at $inertia_kg kg takes the published time from 70 to 60 km/h, through the command line',
   (row) => {
-    const name = `coast-${row.inertia_kg}`;
-    writeFiles(here, { [`${name}.yaml`]: caseOf(row) });
-    const run = ridgehold(here, ['run', `${name}.yaml`]);
+    const run = runs[TABLE.indexOf(row)]!;
     expect(run.stderr).not.toContain('error:');
     expect(run.status).toBe(0);
-    const text = readFileSync(join(here, 'out', name, 'series-coast.csv'), 'utf8');
+    const text = readFileSync(join(here, 'out', nameOf(row), 'series-coast.csv'), 'utf8');
     const records = parse(text, { columns: true }) as Record<string, string>[];
     const time = timeAt(records, 60) - timeAt(records, 70);
     if (row.inertia_kg === MISPRINT) {

@@ -1,8 +1,15 @@
 import { spawnSync } from 'node:child_process';
 import { readFileSync, statSync } from 'node:fs';
 import { join, resolve } from 'node:path';
-import { expect, test } from 'vitest';
-import { PROGRAM, ridgehold, temporaryFolder, writeFiles } from './start-program.ts';
+import { beforeAll, expect, test } from 'vitest';
+import {
+  type Ended,
+  PROGRAM,
+  ridgehold,
+  ridgeholdMany,
+  temporaryFolder,
+  writeFiles,
+} from './start-program.ts';
 
 const here = temporaryFolder();
 const version = JSON.parse(readFileSync(resolve(import.meta.dirname, '../../package.json'), 'utf8')).version;
@@ -35,13 +42,28 @@ test('the help names every command, and no command that does not exist', () => {
   const { status, stdout, stderr } = ridgehold(here, ['--help']);
   expect([status, stderr]).toEqual([0, '']);
   const commands = [...stdout.matchAll(/^ {2}([a-z]+) /gm)].map((match) => match[1]);
-  expect(commands).toEqual(['run', 'road', 'compare', 'identify', 'new', 'schema']);
+  expect(commands).toEqual(['run', 'road', 'compare', 'identify', 'tune', 'new', 'schema']);
   expect(ridgehold(here, ['help']).stdout).toBe(stdout);
 });
 
 test.each([
-  ['run', ['--out', '--set', '--junit', '--threads', '--json', '--quiet', '--units', '--help']],
-  ['road', ['--out', '--set', '--json', '--quiet', '--units', '--help']],
+  [
+    'run',
+    [
+      '--out',
+      '--set',
+      '--junit',
+      '--png',
+      '--png-width',
+      '--threads',
+      '--json',
+      '--quiet',
+      '--units',
+      '--help',
+    ],
+  ],
+  ['road', ['--out', '--set', '--png', '--png-width', '--json', '--quiet', '--units', '--help']],
+  ['tune', ['--out', '--set', '--add', '--json', '--quiet', '--units', '--help']],
   ['compare', ['--out', '--json', '--quiet', '--units', '--help']],
   [
     'identify',
@@ -75,7 +97,7 @@ test.each([
   expect(ridgehold(here, ['help', command]).stdout).toBe(stdout);
 });
 
-test.each([
+const REFUSED: readonly (readonly [args: readonly string[], words: string])[] = [
   [[], 'no command was given'],
   [['fly'], "'fly' is no command"],
   [['--fast'], "'--fast' is no option"],
@@ -91,12 +113,24 @@ test.each([
   [['run', 'a.yaml'], 'a.yaml: cannot be read: there is no such file'],
   [['run', '.'], 'found a folder'],
   [['road', 'nowhere.gpx'], 'nowhere.gpx: cannot be read'],
-])('%j is refused with status 2 and one line', (args, words) => {
-  const { status, stdout, stderr } = ridgehold(here, args);
-  expect(stderr).toContain(words);
-  expect(stderr).toMatch(/^error: [^\n]+\n$/);
-  expect([status, stdout]).toEqual([2, '']);
+];
+let refusals: readonly Ended[];
+beforeAll(() => {
+  refusals = ridgeholdMany(
+    here,
+    REFUSED.map(([args]) => args),
+  );
 });
+
+test.each(REFUSED.map(([args, words], i) => [args, words, i] as const))(
+  '%j is refused with status 2 and one line',
+  (_, words, i) => {
+    const { status, stdout, stderr } = refusals[i]!;
+    expect(stderr).toContain(words);
+    expect(stderr).toMatch(/^error: [^\n]+\n$/);
+    expect([status, stdout]).toEqual([2, '']);
+  },
+);
 
 test('a starter case is written into a new folder and runs', () => {
   const made = ridgehold(here, ['new', 'starter']);

@@ -60,9 +60,11 @@ test('people are told in how many combinations everything is met', () => {
 });
 
 test('a later run without a matrix takes its file away', () => {
-  run('matrix.yaml', '-o', 'again');
+  const first = run('matrix.yaml', '-o', 'again');
+  expect(first.status, first.stderr).toBe(ended.status);
   expect(existsSync(join(here, 'again/matrix.csv'))).toBe(true);
-  run('alone.yaml', '-o', 'again');
+  const later = run('alone.yaml', '-o', 'again');
+  expect(later.status, later.stderr).toBe(0);
   expect(existsSync(join(here, 'again/matrix.csv'))).toBe(false);
 });
 
