@@ -6,7 +6,7 @@ import { build } from 'vite';
 import { root } from './run.mjs';
 
 const DEMOS = [
-  ['harrow-gap.yaml', 'Night post over Harrow Gap: 30 km, a pass, four throttles'],
+  ['harrow-gap.yaml', 'Night post over Harrow Gap: a pass, a locked throttle and three designs'],
   ['tarrow-saltings.yaml', 'Round the Saltings: an electric scooter in the wind from the sea'],
   ['one-hill.yaml', 'One hill: the smallest case'],
 ];

@@ -10,6 +10,8 @@ export interface DragRange {
 /** A range this many times as wide as its value is dragged over whole. */
 const WIDE = 12;
 const STEPS = 200;
+/** A value below this share of its range says nothing of how far it may go. */
+const NOTHING = 1e-9;
 
 /**
  * The whole range where it is of the value's own size; else from 0, or from as far below, to three times the value,
@@ -21,7 +23,8 @@ export function dragRange(
 ): DragRange {
   const span = most - least;
   const size = Math.abs(value);
-  const reach = 2 * size + (size === 0 || least < 0 ? span / 20 : 0);
+  const isNothing = size < NOTHING * span;
+  const reach = 2 * size + (isNothing || least < 0 ? span / 20 : 0);
   const [from, to] =
     span <= WIDE * size || (whole && span <= STEPS)
       ? [least, most]

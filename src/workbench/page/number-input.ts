@@ -62,7 +62,7 @@ export class NumberInput {
       this.fault,
     );
     this.typed.addEventListener('input', () => events.onValue(numberIn(this.typed.value)));
-    this.typed.addEventListener('change', events.onRest);
+    this.typed.addEventListener('blur', events.onRest);
     this.typed.addEventListener('keydown', (event) => {
       const steps = event.key === 'ArrowUp' ? 1 : event.key === 'ArrowDown' ? -1 : 0;
       if (steps === 0) return;
@@ -71,7 +71,9 @@ export class NumberInput {
       events.onValue(Math.min(this.field.most, Math.max(this.field.least, next)));
     });
     this.dragged.addEventListener('input', () => events.onValue(rounded(this.dragged.valueAsNumber)));
-    this.dragged.addEventListener('change', events.onRest);
+    // By keys every step is a change of its own: a movement ends where the hand leaves the slider.
+    this.dragged.addEventListener('blur', events.onRest);
+    this.dragged.addEventListener('pointerup', events.onRest);
     this.back.addEventListener('click', () => {
       events.onValue(this.given);
       events.onRest();

@@ -57,14 +57,14 @@ export function workbenchPage({ code, demos }: ShellParts): string {
 <label class="of-study">Speeds in <select id="units"><option value="kmh">km/h</option><option value="mph">mph</option></select></label>
 </div>
 </header>
-<div class="welcome">
+<main class="welcome">
 <p class="sentence">${LEAD}</p>
 <p>Drop a case with its track and vehicle here, or a GPX, CSV or GeoJSON track alone. Nothing leaves this page. Or begin with a demo; all of it is invented:</p>
 <ul id="demos">${demos.map(({ words }, i) => html`<li><button type="button" data-demo="${i}">${words}</button></li>`)}</ul>
 <p class="caution"><strong>A simulation is no approval to ride.</strong> Local rules, type approval and qualified people come first.</p>
 <ul class="fault-list" id="welcome-faults"></ul>
 <noscript><p class="fault">This page works things out by itself and needs scripts allowed to do so.</p></noscript>
-</div>
+</main>
 <aside id="values" aria-labelledby="values-h" tabindex="-1">
 <h2 id="values-h">Values</h2>
 <div id="fields"></div>
@@ -73,8 +73,8 @@ export function workbenchPage({ code, demos }: ShellParts): string {
 <button type="button" id="apply">Take over</button><p class="fault" id="source-fault" hidden></p></details>
 </aside>
 <div class="results">
-<div id="live">
-<div id="state"><span id="words"></span><progress id="progress" max="1" aria-label="Share of the work that is done" hidden></progress><button type="button" id="stop" hidden>Stop</button><button type="button" id="again" hidden>Work it out</button><button type="button" id="matrix" hidden></button></div>
+<div id="live" role="region" aria-label="State of the work">
+<div id="state"><span id="words"></span><progress id="progress" max="1" aria-label="Share of the work that is done" hidden></progress><button type="button" id="stop" hidden>Stop</button><button type="button" id="again" hidden>Work it out</button><button type="button" id="matrix" hidden></button><a class="to-answer" href="#answer">To the answer</a></div>
 <p id="quick" hidden></p>
 <ul id="faults"></ul>
 <ul class="taken" id="taken" aria-label="Files to save" hidden></ul>
