@@ -32,8 +32,11 @@ export function drawPower({ s, log, chunk, fittings }: Machine, row: number): vo
     f[fit.F_ENERGY_ASKED] = energy;
     const capacity = f[fit.F_CAPACITY];
     if (capacity > 0) {
-      const left = Math.min(Math.max(0, s[at.CHARGE] - energy), capacity);
-      energy = s[at.CHARGE] - left;
+      const charge = s[at.CHARGE];
+      let left = charge - energy;
+      if (left < 0) left = 0;
+      else if (left > capacity) left = capacity;
+      energy = charge - left;
       s[at.CHARGE] = left;
     }
     const perPower = f[fit.F_PER_POWER];

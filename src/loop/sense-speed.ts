@@ -36,9 +36,10 @@ export function senseSpeed({ s, fittings }: Machine): void {
   s[row + 1] = s[SPEED];
   const before = s[SENSED_MORE];
   const kind = f[fit.F_READING] | 0;
-  if (kind === fit.COUNTED_READING) countPulses(s, f);
-  else if (kind === fit.TIMED_READING) timePulses(s, f);
-  else s[SENSED_MORE] = speedLate(s, f);
+  if (kind === fit.COUNTED_READING) countPulses(s, f, row);
+  else if (kind === fit.TIMED_READING) timePulses(s, f, row);
+  else if (f[fit.F_DELAY] > 0) readLate(s, f, row);
+  else s[SENSED_MORE] = s[SPEED];
   let reading = s[SENSED_MORE] * f[fit.F_SCALE];
   const sd = f[fit.F_SD];
   if (sd > 0) reading += sd * normalAt(f, fit.F_NOISE, s[SAMPLES]);
@@ -52,13 +53,27 @@ export function senseSpeed({ s, fittings }: Machine): void {
 // What follows reads and writes the arrays: numbers given to a function and taken from it are boxed at every sample,
 // where an engine does not put the function in the place of its call.
 
-function countPulses(s: Float64Array, f: Float64Array): void {
-  const count = pulsesBy(s, f, fit.F_LATE) - pulsesBy(s, f, fit.F_EARLY);
+/** Speed as it was the delay ago [m/s]. */
+function readLate(s: Float64Array, f: Float64Array, row: number): void {
+  const old = rowBack(s, row, f[fit.F_LATE] | 0);
+  const x = f[fit.F_LATE + 1];
+  const before = s[old + 1];
+  if (x === 0) {
+    s[SENSED_MORE] = before;
+    return;
+  }
+  const next = rowAfter(s, old);
+  const h = f[fit.F_SAMPLE];
+  s[SENSED_MORE] = before + (x * (2 * bendOf(s, old, next, h) + 3 * x * twistOf(s, old, next, h))) / h;
+}
+
+function countPulses(s: Float64Array, f: Float64Array, row: number): void {
+  const count = pulsesBy(s, f, row, fit.F_LATE) - pulsesBy(s, f, row, fit.F_EARLY);
   s[SENSED_MORE] = count * f[fit.F_SPEED_RATE];
 }
 
-function timePulses(s: Float64Array, f: Float64Array): void {
-  findPulses(s, f);
+function timePulses(s: Float64Array, f: Float64Array, row: number): void {
+  findPulses(s, f, row);
   const since = Math.floor((s[SAMPLES] - f[fit.F_DELAY]) * f[fit.F_CLOCK_RATE]) - s[PULSE_STAMP];
   s[SENSED_MORE] = f[fit.F_SPEED_RATE] / Math.max(s[PULSE_PERIOD], since);
 }
@@ -86,10 +101,10 @@ export function settleSensor({ s, fittings }: Machine): void {
   s[SENSED] = s[SENSED_MORE] = f[fit.F_SCALE] * v;
 }
 
-/** Row so many samples before the latest. */
-function rowBack(s: Float64Array, back: number): number {
-  const row = (s[LATEST] - HISTORY_STRIDE * back) | 0;
-  return row >= RING ? row : row + s.length - RING;
+/** Row so many samples before another. */
+function rowBack(s: Float64Array, row: number, back: number): number {
+  const old = (row - HISTORY_STRIDE * back) | 0;
+  return old >= RING ? old : old + s.length - RING;
 }
 
 function rowAfter(s: Float64Array, row: number): number {
@@ -105,13 +120,13 @@ function twistOf(s: Float64Array, old: number, next: number, h: number): number 
 }
 
 /** Pulses up to an instant that is read: whole spacings of the distance travelled by then. */
-function pulsesBy(s: Float64Array, f: Float64Array, instant: number): number {
-  return Math.floor(travelledBy(s, f, instant) * f[fit.F_PER_WAY]);
+function pulsesBy(s: Float64Array, f: Float64Array, row: number, instant: number): number {
+  return Math.floor(travelledBy(s, f, row, instant) * f[fit.F_PER_WAY]);
 }
 
 /** Distance travelled by an instant that is read [m]. */
-function travelledBy(s: Float64Array, f: Float64Array, instant: number): number {
-  const old = rowBack(s, f[instant] | 0);
+function travelledBy(s: Float64Array, f: Float64Array, row: number, instant: number): number {
+  const old = rowBack(s, row, f[instant] | 0);
   const x = f[instant + 1];
   if (x === 0) return s[old];
   const next = rowAfter(s, old);
@@ -119,51 +134,48 @@ function travelledBy(s: Float64Array, f: Float64Array, instant: number): number 
   return s[old] + x * (h * s[old + 1] + x * (bendOf(s, old, next, h) + x * twistOf(s, old, next, h)));
 }
 
-/** Speed as it was the delay ago [m/s]. */
-function speedLate(s: Float64Array, f: Float64Array): number {
-  const old = rowBack(s, f[fit.F_LATE] | 0);
-  const x = f[fit.F_LATE + 1];
-  if (x === 0) return s[old + 1];
-  const next = rowAfter(s, old);
-  const h = f[fit.F_SAMPLE];
-  return s[old + 1] + (x * (2 * bendOf(s, old, next, h) + 3 * x * twistOf(s, old, next, h))) / h;
-}
-
 /** Finds the pulses since the reading before, and keeps the last one and its period. */
-function findPulses(s: Float64Array, f: Float64Array): void {
-  const k = s[SAMPLES];
+function findPulses(s: Float64Array, f: Float64Array, row: number): void {
   const before = s[PULSES];
-  const now = pulsesBy(s, f, fit.F_LATE);
+  const now = pulsesBy(s, f, row, fit.F_LATE);
   if (!(now > before)) return;
   s[PULSES] = now;
   const h = f[fit.F_SAMPLE];
   const spacing = f[fit.F_SPACING];
-  const last = s[PULSE_STAMP];
+  const rate = f[fit.F_CLOCK_RATE];
   const furthest = (f[fit.F_ROWS] | 0) - 1;
-  let back = Math.max(1, f[fit.F_LATE] | 0);
-  let old = rowBack(s, back);
-  let loaded = -1;
+  let back = Math.max(1, f[fit.F_LATE] | 0) | 0;
+  let old = rowBack(s, row, back);
+  let next = rowAfter(s, old);
+  let distance = now * spacing;
+  const last = s[PULSE_STAMP];
+  // The rows around the pulse: at first those before the instant. From there the distance is cubic, see bendOf.
+  let start = Number.POSITIVE_INFINITY;
+  let tick = 0;
   let speed = 0;
   let bend = 0;
   let twist = 0;
   let perWay = 0;
-  let distance = now * spacing;
   // The last pulse, then the one before it, where that is new too: mostly between the same two rows.
   for (let pulse = 0; pulse < 2; pulse++) {
-    while (s[old] > distance && back < furthest) {
-      back++;
-      old = rowBack(s, back);
-    }
-    if (old !== loaded) {
-      loaded = old;
-      const next = rowAfter(s, old);
-      const way = s[next] - s[old];
-      speed = h * s[old + 1];
-      bend = bendOf(s, old, next, h);
-      twist = twistOf(s, old, next, h);
+    if (start > distance) {
+      start = s[old];
+      while (start > distance && back < furthest) {
+        back++;
+        next = old;
+        old = rowBack(s, old, 1);
+        start = s[old];
+      }
+      tick = s[SAMPLES] - back;
+      const way = s[next] - start;
+      const speed0 = s[old + 1];
+      const speed1 = s[next + 1];
+      speed = h * speed0;
+      bend = 3 * way - h * (2 * speed0 + speed1);
+      twist = h * (speed0 + speed1) - 2 * way;
       perWay = way > 0 ? 1 / way : 0;
     }
-    const reach = distance - s[old];
+    const reach = distance - start;
     let x = perWay > 0 ? reach * perWay : 1;
     // Newton's rule from the secant, 1 / slope to second order by that of the secant: speed changes so little within a
     // sample that one step reaches the last digits. Where it does not, steps with the slope itself follow.
@@ -175,15 +187,18 @@ function findPulses(s: Float64Array, f: Float64Array): void {
       miss = slope > 0 ? (reach - x * (speed + x * (bend + x * twist))) / slope : 0;
     }
     x += miss;
-    const stamp = Math.floor((k - back + Math.min(1, Math.max(0, x))) * f[fit.F_CLOCK_RATE]);
-    if (pulse === 0) {
+    if (!(x > 0)) x = 0;
+    else if (x > 1) x = 1;
+    const stamp = Math.floor((tick + x) * rate);
+    if (pulse === 1) s[PULSE_PERIOD] = s[PULSE_STAMP] - stamp;
+    else {
       s[PULSE_STAMP] = stamp;
       if (now - before === 1) {
         s[PULSE_PERIOD] = stamp - last;
         break;
       }
       distance -= spacing;
-    } else s[PULSE_PERIOD] = s[PULSE_STAMP] - stamp;
+    }
   }
   // A pulse faster than the clock is read as one tick of it.
   if (s[PULSE_PERIOD] < 1) s[PULSE_PERIOD] = 1;
