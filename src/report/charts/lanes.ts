@@ -23,13 +23,11 @@ import {
 import { cycleMarks } from './cycle-marks.ts';
 import { holdBrackets, holdColumns, holdHead } from './hold-brackets.ts';
 import { curveOf, curvesOfRide, type LaneLook, laneLooks } from './lane-looks.ts';
-import { envelopePath, linePath, type Point } from './paths.ts';
+import { BREAK, envelopePath, linePath, type Point } from './paths.ts';
 import { rideLine, rideSign } from './ride-line.ts';
 
 /** Columns of two user units: what a screen can tell apart, and half the bytes. */
 const COLUMN = 2;
-/** Between two parts of a line: nothing is drawn. */
-const BREAK: Point = [Number.NaN, Number.NaN];
 /** Columns in a user unit of a line without a shade around it. */
 const FINE = 2;
 

@@ -2,6 +2,9 @@ import { area, line } from 'd3';
 
 export type Point = readonly [x: number, y: number];
 
+/** Between two parts of a line: nothing is drawn. */
+export const BREAK: Point = [Number.NaN, Number.NaN];
+
 /** A tenth of a user unit is finer than any screen shows. */
 const DIGITS = 1;
 /** How far a left-out point may lie from the line that is drawn [user units]. */

@@ -1,6 +1,6 @@
 import { toKm } from '../../units/convert.ts';
 import { type Html, html } from '../html.ts';
-import { type Curve, columnsOf } from '../model/columns.ts';
+import { type Curve, columnsOf, unbrokenRuns } from '../model/columns.ts';
 import { BOTTOM_AXIS_HEIGHT, bottomAxis, leftAxis, type Scale, scaleOf } from './axes.ts';
 import {
   type Box,
@@ -13,7 +13,7 @@ import {
   segment,
   stroked,
 } from './canvas.ts';
-import { envelopePath, linePath, type Point } from './paths.ts';
+import { BREAK, envelopePath, linePath, type Point } from './paths.ts';
 
 /** Columns of two user units, as in the lanes of a report. */
 const COLUMN = 2;
@@ -80,10 +80,13 @@ function curveMarks(
   y: Scale,
   column: number,
 ): Html {
-  const columns = columnsOf(curve, 0, column);
+  const runs = unbrokenRuns(curve).map((run) => columnsOf(run, 0, column));
   const points = (pick: 'low' | 'mean' | 'high'): Point[] =>
-    columns.map((one) => [x(toKm(one.at)), y(lane.of(one[pick]))]);
-  const spread = columns.some(({ low, high }) => high > low);
+    runs.flatMap((run, i): Point[] => [
+      ...(i === 0 ? [] : [BREAK]),
+      ...run.map((one): Point => [x(toKm(one.at)), y(lane.of(one[pick]))]),
+    ]);
+  const spread = runs.flat().some(({ low, high }) => high > low);
   return html`<g>${spread && filled(envelopePath(points('low'), points('high')), stroke, 0.2)}${stroked(linePath(points('mean')), { stroke, width: 1.5, dash })}</g>`;
 }
 

@@ -4,7 +4,7 @@ import type { Curve } from '../model/columns.ts';
 
 /** What a series tells for the charts of a comparison, over the distance [m]. */
 export interface Series {
-  /** Speed error [m/s]. */
+  /** Speed error [m/s]; NaN while hold is off. */
   readonly error: Curve;
   /** Throttle at the actuator [%]. */
   readonly throttle: Curve;
@@ -43,10 +43,14 @@ export function readSeries(text: string, file: string): Series {
       throw damaged(file, i + 2, `${row.length} fields`, `${header.length}, as in the first line`);
     return row;
   });
+  const mode = header.indexOf('mode');
+  const isOff = fields.map((row) => row[mode] === 'off');
   const column = (name: string): Float64Array => {
     const at = header.indexOf(name);
     if (at < 0) throw damaged(file, 1, `no column ${name}`, 'the columns of a series');
     return Float64Array.from(fields, (row, i) => {
+      // Hold is off in all of such a bin: there is no error.
+      if (row[at] === '' && name === 'speed_error_kmh') return Number.NaN;
       const value = row[at] === '' ? Number.NaN : Number(row[at]);
       if (!Number.isFinite(value)) throw damaged(file, i + 2, `${name} '${row[at]}'`, 'a number');
       return value;
@@ -57,10 +61,10 @@ export function readSeries(text: string, file: string): Series {
     if (distance[i]! < distance[i - 1]!)
       throw damaged(file, i + 2, 'a distance that goes back', 'rows in order along the road');
   const set = column('set_speed_kmh');
-  const error = (speed: Float64Array): Float64Array => speed.map((kmh, i) => fromKmh(kmh - set[i]!));
+  const error = (speed: Float64Array, i: number): number => fromKmh(speed[i]! - set[i]!);
   if (header.includes('actuator_pct')) {
     const [speed, throttle] = BY_SAMPLE.map(column) as [Float64Array, Float64Array];
-    const mean = error(speed);
+    const mean = speed.map((_, i) => (isOff[i] ? Number.NaN : error(speed, i)));
     return { error: plain(distance, mean), throttle: plain(distance, throttle) };
   }
   const [low, high, mean, ...throttle] = BY_BIN.map(column) as [
@@ -72,8 +76,10 @@ export function readSeries(text: string, file: string): Series {
     Float64Array,
   ];
   const at = middles(distance);
+  // The extremes of a bin in which hold ends or begins are those of the rider too: its mean alone is the hold's.
+  const held = (speed: Float64Array) => mean.map((kmh, i) => (isOff[i] ? fromKmh(kmh) : error(speed, i)));
   return {
-    error: { size: at.length, at, low: error(low), mean: mean.map(fromKmh), high: error(high) },
+    error: { size: at.length, at, low: held(low), mean: mean.map(fromKmh), high: held(high) },
     throttle: { size: at.length, at, low: throttle[1], mean: throttle[0], high: throttle[2] },
   };
 }

@@ -102,7 +102,7 @@ function isSame({ before, after }: SeriesPair): boolean {
     a.size === b.size &&
     [0, 1, 2, 3].every((k) => {
       const [x, y] = [[a.at, a.low, a.mean, a.high][k]!, [b.at, b.low, b.mean, b.high][k]!];
-      for (let i = 0; i < a.size; i++) if (x[i] !== y[i]) return false;
+      for (let i = 0; i < a.size; i++) if (!Object.is(x[i], y[i]) && x[i] !== y[i]) return false;
       return true;
     });
   return same(before.error, after.error) && same(before.throttle, after.throttle);

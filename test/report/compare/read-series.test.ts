@@ -33,6 +33,19 @@ test('by sample: every one as it stands', () => {
   expectClose(Array.from(throttle.mean), [30, 31], 0, 'throttle [%]');
 });
 
+test('while hold is off there is no error, and a bin in which it ends has its mean alone', () => {
+  const text = `${BINS.replace('\r\n', ',mode\r\n')}0,0,72,68.4,75.6,-1.8,30,20,40,hold\r\n1,10,72,36,72,-3.6,10,0,30,off\r\n2,20,72,36,36,,9,9,9,off\r\n`;
+  const { error, throttle } = readSeries(text, 's.csv');
+  for (const values of [error.low, error.mean, error.high]) expect(values[2]).toBeNaN();
+  expectClose([error.low[1]!, error.mean[1]!, error.high[1]!], [-1, -1, -1], 1e-12, 'error [m/s]');
+  expectClose(Array.from(throttle.mean), [30, 10, 9], 0, 'throttle [%]');
+  const samples = readSeries(
+    'time_s,distance_m,set_speed_kmh,speed_kmh,actuator_pct,mode\r\n0,0,36,36,30,hold\r\n0.02,0.2,36,18,31,off\r\n',
+    's.csv',
+  );
+  expect(Array.from(samples.error.mean)).toEqual([0, Number.NaN]);
+});
+
 test('what the data files write is read', () => {
   const run = fixtureResult({});
   for (const candidate of run.candidates) {
