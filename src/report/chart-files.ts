@@ -4,6 +4,8 @@ import { energyChart } from './charts/energy.ts';
 import { forceSpeedChart } from './charts/force-speed.ts';
 import { hillPicture } from './charts/hill-picture.ts';
 import { histogramChart } from './charts/histogram.ts';
+import { holdPicture } from './charts/hold-picture.ts';
+import { holdStrip } from './charts/hold-strip.ts';
 import { laneLooks } from './charts/lane-looks.ts';
 import { laneChart } from './charts/lanes.ts';
 import { planChart } from './charts/plan.ts';
@@ -11,8 +13,10 @@ import { profileChart } from './charts/profile.ts';
 import { roadLanesChart } from './charts/road-lanes.ts';
 import { segmentStrip } from './charts/segment-strip.ts';
 import { errorBand, spreadsOf } from './model/histograms.ts';
+import { asksOfHold } from './model/hold-away.ts';
+import { MOMENT_KINDS, shownMoments } from './model/hold-moments.ts';
 import { planMap } from './model/plan-map.ts';
-import { viewOf } from './model/view.ts';
+import { type View, viewOf } from './model/view.ts';
 import type { ReportOptions } from './render-report.ts';
 import { loopPageOf } from './sections/loop-page.ts';
 import { pageLoopChart } from './sections/loop-section.ts';
@@ -45,6 +49,7 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
         narrow: true,
       }),
     ),
+    ...(asksOfHold(result) ? holdFiles(view) : []),
     ...(map === null || design === undefined
       ? []
       : [chartFile('plan', (canvas) => planChart(view, design, map, canvas))]),
@@ -57,3 +62,16 @@ export function chartFiles(result: RunResult, options: ReportOptions): readonly 
       ),
   ];
 }
+
+/** Where hold was on, and what followed its events: the pictures of the page, numbered by kind. */
+const holdFiles = (view: View): ChartFile[] => [
+  chartFile('hold', (canvas) => holdStrip(view, canvas)),
+  ...MOMENT_KINDS.flatMap((kind) =>
+    shownMoments(view, kind).map((moment, i) =>
+      chartFile(`hold-${kind.replaceAll('_', '-')}-${i + 1}`, (canvas) => holdPicture(view, moment, canvas), {
+        width: 420,
+        narrow: true,
+      }),
+    ),
+  ),
+];

@@ -128,15 +128,15 @@ function pictures(view: View, moments: readonly HoldMoment[]): Html {
   return html`<h3>What followed</h3>
 <p>${moments.length < total && `The worst ${moments.length} of ${total} moments, at most two of a kind. `}Time counts from the event, the upright line. Above: speed, the set speed dotted, in dashes what the first of the designs aims at. Below: the command, and the limits of the throttle. Hatched: that design's hold is off; shaded: the grip has the throttle. Lowest and highest are measured from the set speed; of a resume from where its ramp has arrived, of an override from where hold is back.</p>
 ${candidateKey(view.candidates, PAGE_PAINT)}
-<div class="cards">${moments.map((moment) => card(view, moment))}</div>`;
+<div class="cards">${moments.map((moment, i) => card(view, moment, i + 1))}</div>`;
 }
 
-function card(view: View, moment: HoldMoment): Html {
-  const id = `moment-${moment.kind}-${Math.round(moment.distance)}`;
+function card(view: View, moment: HoldMoment, number: number): Html {
+  const id = `moment-${number}`;
   const canvas = { id, paint: PAGE_PAINT, width: PICTURE_WIDTH, narrow: true };
   return html`<article class="card" aria-labelledby="${id}-h"><h3 id="${id}-h">${titleOf(moment)} <span class="of">${placeText(moment.distance)}</span></h3>
 ${holdPicture(view, moment, canvas)}
-${outcomes(view, moment)}${reasons(moment)}</article>`;
+${outcomes(view, moment, number)}${reasons(moment)}</article>`;
 }
 
 /** Why a transient has no settling; equal reasons once. */
@@ -164,7 +164,7 @@ function titleOf({ kind, measures: [first] }: HoldMoment): string {
   return kind === 'ended' && first !== undefined ? `${title}: ${CAUSE_NAMES[first.event.cause]}` : title;
 }
 
-function outcomes(view: View, { kind, measures, distance }: HoldMoment): Html {
+function outcomes(view: View, { kind, measures, distance }: HoldMoment, number: number): Html {
   const { speed } = view;
   const ended = kind === 'ended';
   const inOrder = view.candidates.flatMap(({ name }) => measures.find((one) => one.candidate === name) ?? []);
@@ -177,7 +177,7 @@ function outcomes(view: View, { kind, measures, distance }: HoldMoment): Html {
     figure(measure.jerk, (v) => fixed(v, 1)),
   ]);
   return table(
-    `${EVENT_NAMES[kind]} at ${placeText(distance)}`,
+    `Moment ${number}: ${EVENT_NAMES[kind]} at ${placeText(distance)}`,
     [
       { head: 'candidate' },
       { head: ended ? `speed / ${speed.axis}` : 'step / %', number: true },

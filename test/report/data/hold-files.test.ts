@@ -1,5 +1,6 @@
 import { expect, test } from 'vitest';
 import { LIMIT_BRAKE, LIMIT_OFF, LIMIT_OVERRIDE, LIMIT_SHIFT } from '../../../src/loop/plan.ts';
+import { chartFiles } from '../../../src/report/chart-files.ts';
 import { modeWord } from '../../../src/report/data/bin-series.ts';
 import { dataFiles } from '../../../src/report/data/data-files.ts';
 import { summaryJson } from '../../../src/report/data/summary.ts';
@@ -75,6 +76,19 @@ test('the summary and the map have events and places, and only of a case that as
   expect(names).not.toContain('hold-events.csv');
   expect(names).not.toContain('bends.csv');
   expect(Object.keys(JSON.parse(summaryJson(plain, [])))).not.toContain('hold_events');
+});
+
+test('the pictures of the section are files too', () => {
+  const names = chartFiles(result, { units: 'kmh' }).map(({ name }) => name);
+  expect(names.filter((name) => name.startsWith('hold'))).toEqual([
+    'hold.svg',
+    'hold-resumed-1.svg',
+    'hold-resumed-2.svg',
+    'hold-override-ended-1.svg',
+    'hold-ended-1.svg',
+    'hold-ended-2.svg',
+  ]);
+  expect(new Set(names).size).toBe(names.length);
 });
 
 test('the mode says who has the throttle', () => {

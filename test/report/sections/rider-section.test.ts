@@ -39,7 +39,7 @@ test('all candidates that had an event stand in one picture of it', () => {
   const cards = body.split('<article').slice(1);
   // The bend and the rule, two resumes, the override.
   expect(cards).toHaveLength(5);
-  const bend = cards.find((card) => card.includes('moment-ended-4000'))!;
+  const bend = cards.find((card) => card.includes('Hold ended: a bend'))!;
   expect(text(bend)).toContain('Hold ended: a bend km 4.00');
   expect(text(bend)).toMatch(/pi-firm .* pi-soft/);
   expect(bend.match(/<title>hold is off<\/title>/g)).toHaveLength(1);
