@@ -37,7 +37,9 @@ export function tuneAnswer(view: TuneView): TuneAnswer {
       sentence: `Keep ${best.name}: no proposal costs less on this road (${significant(costOf(best))} against ${significant(cost)} of ${chosen.name}), and it keeps the bound of ${bound(result)} everywhere.${others}`,
     };
   const against =
-    best === null ? '' : `, against ${significant(costOf(best))} of ${best.name}, the best of the case under the bound`;
+    best === null
+      ? ''
+      : `, against ${significant(costOf(best))} of ${best.name}, the best of the case under the bound`;
   return {
     standing: exceeds.length === 0 ? 'found' : 'exceeded',
     sentence: `Take ${chosen.name}, ${gainsText(chosen, view.speed)}: of ${proposals(view)} it costs least on this road (${significant(cost)}${against}), and its sensitivity keeps the bound of ${bound(result)} ${keeping}.${others}`,
