@@ -7,7 +7,9 @@ import { InputError } from '../problems/input-error.ts';
 import { type RoadColumn, valueAt } from '../road/lookup.ts';
 import { matchPositions } from '../road/match-positions.ts';
 import type { Road } from '../road/road.ts';
+import { GRAIN_OF_PLACES, SPEED_WINDOW, wrongWay } from '../study/lay-ride.ts';
 import type { LoggedRide } from '../study/logged-ride.ts';
+import { backwards, longestPassage } from '../study/ride-passage.ts';
 import { derateFactor } from '../vehicle/derating.ts';
 import { wheelForce } from '../vehicle/drive-law.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -65,9 +67,10 @@ export function stretchesOnRoad(
 
 /**
  * A ride with its own speed and its power at the wheel on the road of a case: by position where both have positions, else
- * by the distances of the log from the start of the driven road.
+ * by the distances of the log from the start of the driven road. Of several passages the longest counts.
  *
- * @throws InputError `ride-off-the-road` where the log does not say its place, or hardly any of it lies on the road
+ * @throws InputError `ride-off-the-road` where the log does not say its place, or hardly any of it lies on the road;
+ *   `ride-wrong-way`
  */
 export function stretchesOfLogOnRoad(run: LoggedRun, road: Road, vehicle: Vehicle): readonly RideStretch[] {
   const place = placesOnRoad(run, road);
@@ -80,8 +83,13 @@ export function stretchesOfLogOnRoad(run: LoggedRun, road: Road, vehicle: Vehicl
       found: `${on.length} of ${place.length} rows on it`,
       allowed: 'distance_m from the start of the driven road, or lat_deg and lon_deg along it',
     });
-  const pick = (values: Float64Array): Float64Array => Float64Array.from(on, (i) => values[i]!);
-  const along = pick(place);
+  const whole = withoutScatter(run, on, place);
+  const passage = longestPassage(whole);
+  const along = whole.subarray(passage.first, passage.end);
+  const { forth, back } = backwards(whole);
+  if (back > forth && along[along.length - 1]! - along[0]! < back / 2) throw wrongWay(back, run.file);
+  const taken = on.subarray(passage.first, passage.end);
+  const pick = (values: Float64Array): Float64Array => Float64Array.from(taken, (i) => values[i]!);
   const rows: RideRows = {
     ...roadAlong(road, along),
     time: pick(run.time),
@@ -92,6 +100,15 @@ export function stretchesOfLogOnRoad(run: LoggedRun, road: Road, vehicle: Vehicl
   };
   return cut(rows, vehicle, (i) => along[i + 1]! < along[i]!);
 }
+
+/** Places as a receiver scatters them, many to the second, would go back as often as forth. */
+const withoutScatter = ({ time }: LoggedRun, on: Int32Array, place: Float64Array): Float64Array =>
+  localRegression(
+    Float64Array.from(on, (i) => time[i]!),
+    Float64Array.from(on, (i) => place[i]!),
+    SPEED_WINDOW,
+    GRAIN_OF_PLACES,
+  ).value;
 
 function placesOnRoad({ distance, latitudeDeg, longitudeDeg, time }: LoggedRun, road: Road): Float64Array {
   const end = road.distance[road.size - 1]!;

@@ -13,7 +13,7 @@ import { breakAfter, rowsOf } from './ride-rows.ts';
 /** Half-width of the window in which places become a speed [s]. */
 export const SPEED_WINDOW = 4;
 /** A fix this far from the curve through its neighbours has half their weight, however little they scatter [m]. */
-const GRAIN = 3;
+export const GRAIN_OF_PLACES = 3;
 /** Beside fixes off the road a fix farther off than this is on its way there [m], if it is within so long of them [s]. */
 const LEAVING = 8;
 const LEAVING_TIME = 10;
@@ -144,7 +144,7 @@ function smoothed(
       time.subarray(from, to),
       along.subarray(from, to),
       SPEED_WINDOW,
-      GRAIN,
+      GRAIN_OF_PLACES,
     );
     for (let i = from; i < to; i++) {
       const grade = valueAt(road, 'grade', value[i - from]!);
@@ -161,14 +161,7 @@ function refuseElsewhere(log: RideLog, road: Road, { along }: Fixes, covered: nu
   const length = road.distance[road.size - 1]!;
   if (covered >= LEAST_COVER * length) return;
   const { forth, back } = backwards(along);
-  if (back > forth && back >= LEAST_COVER * length)
-    throw new InputError({
-      code: 'ride-wrong-way',
-      place: { file },
-      message: 'the logged ride goes the other way along the road',
-      found: `${km(back)} against the way that is driven`,
-      allowed: 'a ride in the direction of the case, or another track.direction',
-    });
+  if (back > forth && back >= LEAST_COVER * length) throw wrongWay(back, file);
   throw new InputError({
     code: 'ride-off-the-road',
     place: { file },
@@ -177,6 +170,16 @@ function refuseElsewhere(log: RideLog, road: Road, { along }: Fixes, covered: nu
     allowed: `at least ${LEAST_COVER * 100} % of the road, points within ${ON_ROAD} m of it`,
   });
 }
+
+/** The refusal of a ride against the road [m]. */
+export const wrongWay = (back: number, file: string): InputError =>
+  new InputError({
+    code: 'ride-wrong-way',
+    place: { file },
+    message: 'the logged ride goes the other way along the road',
+    found: `${km(back)} against the way that is driven`,
+    allowed: 'a ride in the direction of the case, or another track.direction',
+  });
 
 const km = (distance: number): string => `${toKm(distance).toFixed(2)} km`;
 

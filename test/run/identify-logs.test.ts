@@ -281,3 +281,64 @@ test('the candidates of a step test are those of a case', () => {
   );
   expect(document.file.candidates.map(({ name }) => name)).toEqual(['simc-tight', 'simc-calm']);
 });
+
+describe('a ride with its power and ten positions a second, on the road of a case', () => {
+  // 14 km due north over waves, a step of 1 / 111 229 of a degree a metre (WGS 84 at 50 degrees, to 3e-5), and positions that
+  // scatter by 1.5 m about a step of 1.5 m: every third goes back.
+  const LENGTH = 14_000;
+  const latitude = (x: number) => (50 + x / 111_229).toFixed(7);
+  const slope = (x: number) => 0.03 * Math.cos(x / 500);
+  const track = Array.from({ length: 701 }, (_, i) => `${latitude(20 * i)},10,${15 * Math.sin(i / 25)}`);
+  const files = (back: boolean): Readonly<Record<string, string>> => {
+    const random = seededStream(10);
+    const rows = ['time_s,lat_deg,lon_deg,speed_kmh,wheel_power_kw'];
+    for (let [x, v, tenth] = [100, 15, 0]; x < LENGTH - 100; tenth++) {
+      const at = back ? LENGTH - x : x;
+      const grade = (back ? -1 : 1) * slope(at);
+      const force = 130 + 50 * Math.sin(tenth / 470) + 215 * 9.80665 * grade * 0.8;
+      const place = latitude(at + 1.5 * random.normal());
+      const east = (10 + (1.5 * random.normal()) / 71_700).toFixed(7);
+      rows.push(`${tenth / 10},${place},${east},${(3.6 * v).toFixed(2)},${((force * v) / 1000).toFixed(4)}`);
+      for (let k = 0; k < 10; k++) {
+        const cosine = 1 / Math.sqrt(1 + grade * grade);
+        v += (0.01 * (force - 0.36 * v * v - 215 * 9.80665 * (0.015 + grade) * cosine)) / 231;
+        x += 0.01 * v * cosine;
+      }
+    }
+    return {
+      'case.yaml': `track: {file: track.csv}
+road: {elevation_source: lidar}
+air: {density_kg_m3: 1.2}
+vehicle: vehicle.yaml
+hold: {set_speed_kmh: 60}
+candidates: [{name: locked, kind: locked, throttle: level}]
+`,
+      'track.csv': `lat_deg,lon_deg,elevation_m\n${track.join('\n')}\n`,
+      'vehicle.yaml':
+        'mass: {kerb_kg: 215, rotating_kg: 16}\nroad_load: {cda_m2: 0.5, crr: 0.02}\ndrive: {kind: force, peak_force_n: 400, peak_power_kw: 9}\n',
+      'log.csv': `${rows.join('\n')}\n`,
+    };
+  };
+  const ridden = (back: boolean) => {
+    const own = files(back);
+    const encoded = (name: string) => new TextEncoder().encode(own[name]!);
+    return identifyLogs({
+      logs: ['log.csv'],
+      read: encoded,
+      case: { file: 'case.yaml', read: encoded },
+    });
+  };
+
+  test('is laid on it whole, though its positions go back as often as forth', () => {
+    const result = ridden(false);
+    if (result.kind !== 'ride') throw new Error(result.kind);
+    expect(result.fit.length).toBeGreaterThan(13_700);
+    const [cda, crr] = result.fit.unknowns;
+    expectClose(cda!.estimate.value, 0.6, 0.002);
+    expectClose(crr!.estimate.value, 0.015, 1e-4);
+  });
+
+  test('is refused the other way, and says so', () => {
+    expect(() => ridden(true)).toThrow(/goes the other way along the road .*13\.\d\d km/);
+  });
+});
