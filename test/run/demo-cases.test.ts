@@ -14,7 +14,7 @@ const run = (name: string, overrides: readonly string[] = []) =>
   runCase({ file: name, read: (file) => readFileSync(new URL(file, routes)), overrides });
 
 it('surges on the descent over the fuel cut, and not without it', () => {
-  const { cycles, candidates } = run('harrow-descent.yaml');
+  const { cycles, candidates } = run('harrow-descent.yaml', ['requirements=[]']);
   expect(cycles.map(({ candidate, cause }) => [candidate, cause])).toEqual([['pi-brisk', 'fuel_cut']]);
   const [surge] = cycles;
   // The descent of 2400 m at 9 % begins at km 1.3.
@@ -22,7 +22,9 @@ it('surges on the descent over the fuel cut, and not without it', () => {
   expect(surge!.to).toBeLessThan(3800);
   expect(surge!.to - surge!.from).toBeGreaterThan(1500);
   expect(candidates.every(({ result }) => result.status === 'completed')).toBe(true);
-  expect(run('harrow-descent.yaml', ['vehicle.drive.fuel_cut.extra_drag_nm=0']).cycles).toEqual([]);
+  expect(
+    run('harrow-descent.yaml', ['vehicle.drive.fuel_cut.extra_drag_nm=0', 'requirements=[]']).cycles,
+  ).toEqual([]);
 });
 
 it('loses the pass in fifth, and not in third', () => {
@@ -43,6 +45,7 @@ it('loses the pass in fifth, and not in third', () => {
 it('shifts where the rider planned it, and the hold resumes', () => {
   const { candidates } = run('harrow-shifts.yaml', [
     'candidates.0={name: given, kind: locked, throttle_pct: 100}',
+    'requirements=[]',
   ]);
   const { shifts } = candidates[1]!.result;
   expect(shifts.map(({ from, to }) => [from, to])).toEqual([
@@ -100,6 +103,7 @@ it('swings over the slack of a worn cable, and not with a new one', () => {
   const brisk = (...overrides: string[]) =>
     run('harrow-cable.yaml', [
       'candidates=[{name: pi-brisk, kind: pi, sample_s: 0.02, kp_pct_per_kmh: 4, ti_s: 2.5}]',
+      'requirements=[]',
       ...overrides,
     ]).cycles.map(({ cause }) => cause);
   expect(brisk()).toContain('slack');
