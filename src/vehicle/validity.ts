@@ -28,7 +28,7 @@ const ALWAYS: readonly NoteRule[] = [
   [
     true,
     'no-cut-outs',
-    "The rider's own throttle, and the cut-outs by brake, clutch and stand, are outside of the model.",
+    "The rider's own throttle and the cut-outs by brake and clutch act only where the case writes them; that of the stand never does.",
   ],
 ];
 

@@ -100,7 +100,8 @@ export const BIN_COLUMNS: readonly Column<BinSource>[] = [
   {
     name: 'speed_error_kmh',
     decimals: 4,
-    about: 'speed minus set speed, mean over time, negative is too slow',
+    about:
+      'speed minus set speed, mean over the time with hold on, negative is too slow; empty where hold is off',
     value: (s, i) => {
       const error = meanErrorIn(s.bins, i);
       return error === null ? null : toKmh(error);

@@ -36,7 +36,7 @@ export function atPoint(point: Place, speed: SpeedUnit): string {
     `${gear} ${speedText(point.speed, speed, 0)}`,
     Math.abs(grade) >= LEVEL && ` on ${gradeText(grade)}`,
     Math.abs(headwind) >= CALM &&
-      ` ${headwind > 0 ? 'against' : 'before'} ${withUnit(fixed(Math.abs(headwind)), 'm/s')} of wind`,
+      ` ${headwind > 0 ? 'against' : 'with'} ${withUnit(fixed(Math.abs(headwind)), 'm/s')} of wind${headwind > 0 ? '' : ' from behind'}`,
     point.load !== null && `, load ${point.load},`,
   ]
     .filter((part) => part !== false)
