@@ -108,6 +108,7 @@ export const limitText = ({ sense, limit, figure }: SummaryRequirement, speed: S
 /** Verdicts of the matrix that changed, of those that both have. */
 function matrixClauses({ matrix }: Comparison): string[] {
   if (matrix === null) return [];
+  if (matrix.combinations === 0) return ['the matrices are not compared: no combination is in both'];
   const count = (fate: MatrixChange['fate']) => matrix.changes.filter((one) => one.fate === fate).length;
   const [lost, gained] = [count('lost'), count('gained')];
   const of = `of ${matrix.verdicts} verdicts in the ${matrix.combinations} combinations that both have`;

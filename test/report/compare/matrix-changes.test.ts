@@ -55,6 +55,9 @@ test('combinations that only one has are not matched, by any of what they are', 
   );
   expect(comparison.matrix).toEqual({ combinations: 0, verdicts: 0, changes: [] });
   expect(isWorse(comparison)).toBe(false);
+  expect(comparisonAnswer(comparison, SPEED_UNITS.kmh).sentence).toContain(
+    'the matrices are not compared: no combination is in both',
+  );
 });
 
 test('without a matrix in both there is nothing to say', () => {
