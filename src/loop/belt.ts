@@ -10,7 +10,9 @@ import type { Machine } from './machine.ts';
  * by its first-order lag over the sample, over which it is then held: first order in the sample. What turns before the
  * belt is brought to its new speed by the vehicle: the speed changes so that the kinetic energy of both stays. Where the
  * clutch slips nothing turns along; as it locks the engine has the speed of the shaft, so that the vehicle's stays, and
- * the kinetic energy that joins or leaves is booked like that of a shift.
+ * the kinetic energy that joins or leaves is booked like that of a shift. The cells of road and drive at hand follow.
+ *
+ * @param row of the road table, and cell over throttle, in which the vehicle is
  */
 export function moveBelt(machine: Machine, row: number, throttleCell: number): void {
   const { s, p, here, fittings } = machine;

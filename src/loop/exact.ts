@@ -74,6 +74,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   const crosswind = p[at.P_CROSSWIND] === 1;
   const lastThrottleCell = throttleEdges.length;
   const lastRow = rows.length - at.R_STRIDE;
+  const end = rows[lastRow + at.R_STATION] + rows[lastRow + at.R_LENGTH] - KNOT;
   const toTrue = p[at.P_TO_TRUE];
   const brakesAbove = p[at.P_BRAKES_ABOVE];
   const strongest = p[at.P_STRONGEST_BRAKE];
@@ -377,8 +378,7 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
       }
       if (q - here[at.H_STATION] > here[at.H_LENGTH] - KNOT) {
         while (row < lastRow && q >= rows[row + at.R_STRIDE + at.R_STATION] - KNOT) row += at.R_STRIDE;
-        if (row === lastRow && q >= rows[row + at.R_STATION] + rows[row + at.R_LENGTH] - KNOT)
-          event = at.END_OF_ROAD;
+        if (q >= end) event = at.END_OF_ROAD;
       }
       if (v > ceiling - EDGE && acceleration >= 0) speedCell++;
       else if (v < floor + EDGE && acceleration < 0) {
@@ -394,7 +394,8 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
     }
     if (event === at.STOPPED) v = 0;
     else if (v < stall) event = at.STALLED;
-    elapsed = event === at.RUNNING ? sample : sample - ((parts - 1) * step + left);
+    // After a whole sample none of it is left.
+    elapsed = sample - ((parts - 1) * step + left);
     if (limited) chunk[at.C_RATED_TIME] += elapsed;
     if (delayed) past = keepHistory(s, past, slope0, filter > 0 ? (v - z) / filter : acceleration);
     if (fitted) {
@@ -422,9 +423,11 @@ export function advanceExact(machine: Machine, ticks: number, until: number): nu
   s[at.SPEED_CELL] = speedCell;
   s[at.CELL] = row / at.R_STRIDE;
   s[at.THROTTLE_CELL] = throttleCell;
-  if (event !== at.RUNNING) s[at.PARTIAL] = elapsed;
+  // Told without a branch: one that is first taken at the end of a road would make the engine compile the loop anew.
+  const cut = event === at.RUNNING ? 0 : 1;
+  s[at.PARTIAL] = cut === 0 ? s[at.PARTIAL] : elapsed;
   if (p[at.P_SOURCE] === at.DRAWN_BY_CHUNK) drawOverChunk(machine, tick, elapsed);
-  const whole = event === at.RUNNING ? tick : tick - 1;
+  const whole = tick - cut;
   s[at.TICK] += whole;
   chunk[at.C_TICKS] = tick;
   chunk[at.C_TIME] = whole * sample + s[at.PARTIAL];
