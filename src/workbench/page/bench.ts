@@ -139,6 +139,7 @@ export class Bench {
       this.refresh({ anew: false, moving: true });
     } catch (error) {
       this.refuse(error);
+      if (this.settled) this.words.textContent = 'A value is refused; the picture is of the ones before.';
     }
   }
 
@@ -200,6 +201,7 @@ export class Bench {
         return;
       case 'whole':
         this.road = false;
+        this.panel.tell([]);
         this.sections.showAll(reply.sections);
         this.showHead(reply.head.title, reply.head.memo);
         this.quick.hidden = true;

@@ -51,9 +51,9 @@ section[data-older]>h2::after{content:'of the values before';font-size:.8rem;fon
 body.dropping::after{content:'Drop to bring it in';position:fixed;inset:.6rem;border:4px dashed var(--accent);display:grid;place-items:center;background:color-mix(in srgb,var(--page) 80%,transparent);font-size:1.5rem;z-index:3;pointer-events:none}
 [hidden]{display:none!important}
 @media (min-width:2200px){.bench{max-width:2100px;grid-template-columns:26rem minmax(0,1fr)}}
-@media (max-width:1000px){.bench{grid-template-columns:minmax(0,1fr)}#values{position:static;max-height:none;padding:.6rem 0}#quick{font-size:.95rem}}
+@media (max-width:1000px){.bench{grid-template-columns:minmax(0,1fr)}#values{position:static;max-height:none}#quick{font-size:.95rem}}
 .to-answer{display:none}
-@media (max-width:1000px){.bench:not([data-empty]){padding-bottom:9rem}#live{position:fixed;left:0;right:0;bottom:0;top:auto;margin:0;padding:.4rem .9rem;border:0;border-top:2px solid var(--ink);max-height:45vh;overflow-y:auto}#state{min-height:0}.to-answer{display:inline}.results section{scroll-margin-top:1rem}}
+@media (max-width:1000px){html{scroll-padding-bottom:10rem}#values{padding:.6rem .3rem}.bench:not([data-empty]){padding-bottom:9rem}#live{position:fixed;left:0;right:0;bottom:0;top:auto;margin:0;padding:.4rem .9rem;border:0;border-top:2px solid var(--ink);max-height:45vh;overflow-y:auto}#state{min-height:0}.to-answer{display:inline}.results section{scroll-margin-top:1rem}}
 @media (max-width:640px){.bench{padding:0 .9rem}.entry{grid-template-columns:5.2rem 4.6rem minmax(0,1fr)}}
 @media (prefers-reduced-motion:no-preference){html{scroll-behavior:smooth}}
 @media print{.bench{display:block;max-width:none;padding:0}#values,#live,.tools,.results nav,.welcome,.product{display:none}}
