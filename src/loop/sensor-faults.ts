@@ -3,6 +3,7 @@ import type { Controller } from '../control/controller.ts';
 import * as at from './layout.ts';
 import type { Machine } from './machine.ts';
 import type { LoopPlan, SensorFault } from './plan.ts';
+import type { Checkpoint } from './result.ts';
 import { routeSchedule, ticksOf } from './route-schedule.ts';
 
 /** Kinds of a fault; s[FAULT] is 1 + the place in it. */
@@ -37,6 +38,9 @@ export function sensorFaults(machine: Machine, plan: LoopPlan): SensorFaults {
     nextPlace: schedule.nextPlace,
   };
 }
+
+/** How many faults of its plan a run had begun at a checkpoint. */
+export const faultsBegun = ({ state }: Checkpoint): number => state[at.FAULTS_BEGUN];
 
 /** A controller, of any kind, to which a sensor with faults tells the speed. */
 export function withFaultySensor(inner: Controller): Controller {

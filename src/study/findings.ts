@@ -74,7 +74,9 @@ export type Cause =
   | 'derating'
   | 'wind'
   | 'gear'
-  | 'traction';
+  | 'traction'
+  /** The speed sensor told the controller something else. */
+  | 'sensor';
 
 /** What takes the force under the cause `derating`: thin air; heat, voltage or emptiness of a battery; a battery too full to take regeneration. */
 export type Derating = 'altitude' | 'heat' | 'voltage' | 'empty' | 'full';

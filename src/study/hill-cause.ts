@@ -158,7 +158,8 @@ function causeOfLeaving(scene: Scene, ideal: Figure): CauseFinding {
 }
 
 /** A run that ended on the way has an infinite excess; one that still ends has lost nothing of it. */
-const takesHalf = (left: number, excess: number): boolean => Number.isFinite(left) && left <= excess / 2;
+export const takesHalf = (left: number, excess: number): boolean =>
+  Number.isFinite(left) && left <= excess / 2;
 
 /** Side of the worst error where that is the side away from the limit; else 0. */
 function farSide({ timeUpper, timeLower, low, high }: HillEvents): 1 | -1 | 0 {
@@ -287,7 +288,7 @@ function brakeWords({ rider }: LoopPlan, events: HillEvents): string {
   return ` The rider's brake, on for ${inSeconds(events.timeBrake)} at ${inKmh(rider.brakesAbove)} above the set speed, kept it from growing further.`;
 }
 
-const errorRange = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): string =>
+export const errorRange = ({ low, high }: Pick<HillPassage, 'low' | 'high'>): string =>
   `error from ${inKmh(low)} to ${inKmh(high)}`;
 
 function windupCause(passage: HillPassage, events: HillEvents): CauseFinding {

@@ -23,6 +23,7 @@ import { lockedCause } from './locked-cause.ts';
 import { offOnHill } from './off-on-hill.ts';
 import { quasiSteadySpeeds } from './quasi-steady.ts';
 import { leversHelp, remediesFor } from './remedies.ts';
+import { sensorCause } from './sensor-cause.ts';
 import { isSettling, passageOf, thinSeries } from './series-measures.ts';
 
 /** Shown after the recovery [s]; rows of a picture. */
@@ -47,7 +48,7 @@ export function hillOutcome(replayed: Replayed, hill: HillFacts, context: Passag
   const passage = passageOf(series, first, last, course.settling);
   const predictedChange = predict(replayed, hill, context, series, first);
   const reasons = events.affected
-    ? explainOutcome(replayed, hill, context, events, predictedChange, series.command[first])
+    ? explainAffected(replayed, hill, context, events, predictedChange, series.command[first])
     : { ...off.unaffected, wouldHold: [] };
   return {
     candidate: name,
@@ -131,18 +132,34 @@ function differs(simulated: number, predicted: Figure): boolean {
   return gap > AGREES_ABSOLUTE && gap > AGREES * Math.abs(simulated);
 }
 
+/** A fault of the sensor comes first: no replay of a piece of the road has it. */
+function explainAffected(
+  replayed: Replayed,
+  hill: HillFacts,
+  context: PassageContext,
+  events: HillEvents,
+  predicted: Figure,
+  command: number,
+): Explanation {
+  if (replayed.plan.controller.kind === 'locked')
+    return { ...lockedCause(replayed.plan, hill, context.demand, command), wouldHold: [] };
+  const sensor = sensorCause(replayed, hill, context, events);
+  if (sensor.cause !== null) return { ...sensor.cause, wouldHold: [] };
+  const found = explainOutcome(replayed, hill, context, events, predicted);
+  return { ...found, why: `${found.why}${sensor.words}` };
+}
+
+type Explanation = Pick<HillOutcome, 'cause' | 'derating' | 'why' | 'wouldHold'>;
+
 function explainOutcome(
   replayed: Replayed,
   hill: HillFacts,
   { demand, course, band }: PassageContext,
   events: HillEvents,
   predicted: Figure,
-  command: number,
-): Pick<HillOutcome, 'cause' | 'derating' | 'why' | 'wouldHold'> {
+): Explanation {
   const { plan } = replayed;
   const { road } = plan;
-  if (plan.controller.kind === 'locked')
-    return { ...lockedCause(plan, hill, demand, command), wouldHold: [] };
   const ideal = { change: predicted, gripped: idealChange(road, demand, hill, course) };
   const nearest = hillWindow(hill, road, demand, course);
   const near = windowFrom(nearest, nearest.start, replayed);

@@ -11,7 +11,7 @@ import { holdOff, isByRule } from './hold-off.ts';
 /** Rate at which a change of set speed is granted to be followed when neither it nor the controller says one [m/s2]. */
 const GRANTED_RATE = 0.5;
 /** Granted for settling after it [s]. */
-const GRANTED_SETTLING = 10;
+export const GRANTED_SETTLING = 10;
 
 /** The set speed in the order of the way, as true speeds [m/s]. */
 export interface HoldCourse {
@@ -167,7 +167,8 @@ interface TimedPlace {
   readonly from: number;
 }
 
-function placeInRun({ bins, endTime, endDistance }: LoopResult, time: number): TimedPlace {
+/** Where a run was at a time from its start; infinite where it had ended [m]. */
+export function placeInRun({ bins, endTime, endDistance }: LoopResult, time: number): TimedPlace {
   if (time >= endTime || bins.size === 0)
     return { at: Number.POSITIVE_INFINITY, from: Number.POSITIVE_INFINITY };
   const i = intervalOf(bins.timeAt.subarray(0, bins.size), time);

@@ -124,6 +124,33 @@ describe('the cause of a hill', () => {
     expect(hill.kind).toBe('level');
   });
 
+  it('is the sensor where the band is kept but for a fault that it has on the way', () => {
+    // Level road, 60 km/h = 16.67 m/s: for 6 s the controller sees no speed and opens the throttle. Road load 126 N, at 20 m/s 169 N; mass 220 kg.
+    const road = roadOf([{ length: 5000, grade: 0 }]);
+    for (const at of [{ distance: 2000 }, { time: (2000 * 3.6) / 60 }]) {
+      const faulty = planOf(road, vehicleOf(), STIFF, { faults: [{ at, shows: 'nothing', for: 6 }] });
+      const { hill, outcome } = firstOutcome(faulty);
+      expect(hill.from).toBeGreaterThan(1900);
+      expect(outcome.cause).toBe('sensor');
+      expectClose(outcome.speedChange, (6 * (260 - (126 + 169) / 2)) / 220, 0.15);
+      expect(outcome.why).toMatch(/showed no speed for 6(\.0)? s from km 2\.0/);
+      expect(outcome.wouldHold).toEqual([]);
+    }
+    expect(study({ pi: planOf(road, vehicleOf(), STIFF) }).hills).toEqual([]);
+  });
+
+  it('stays that of the hill where a fault on it changes little', () => {
+    const faults = [{ at: { distance: 1900 }, shows: 'last_value', for: 0.5 }] as const;
+    const { outcome } = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF, { faults }));
+    expect(outcome.cause).toBe('torque');
+    expect(outcome.why).toMatch(/The speed sensor went on showing its last speed for 0\.5 s/);
+    // Long before the hill a fault has nothing to do with it.
+    const early = [{ at: { distance: 300 }, shows: 'last_value', for: 0.5 }] as const;
+    const before = firstOutcome(planOf(oneHill(0.08), vehicleOf(), STIFF, { faults: early })).outcome;
+    expect(before.cause).toBe('torque');
+    expect(before.why).not.toContain('sensor');
+  });
+
   it('is not asked of a locked throttle, which makes no hill either', () => {
     const locked: LoopPlan['controller'] = { kind: 'locked', throttle: 'level' };
     const road = oneHill(0.03);

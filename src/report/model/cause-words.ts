@@ -13,6 +13,7 @@ const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
   wind: 'the headwind asks for too much',
   gear: 'the gear is too high',
   traction: 'the tyre cannot pass the force on',
+  sensor: 'its speed sensor tells it a wrong speed',
 };
 
 /** A cause in a table, in as few words as it takes. */
@@ -28,6 +29,7 @@ const CAUSE_NAMES: Readonly<Record<Cause, string>> = {
   wind: 'wind',
   gear: 'gear too high',
   traction: 'grip',
+  sensor: 'sensor fault',
 };
 
 const DERATING_WORDS: Readonly<Record<Derating, string>> = {
