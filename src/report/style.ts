@@ -118,6 +118,7 @@ thead{display:table-header-group}
 .dense .who{white-space:normal}
 section>p:has(+figure),section>p:has(+.scroll),section>p:has(+.keys),section>p:has(+p+.keys){break-after:avoid}
 #force svg{max-height:58mm}
+#spread .pair{grid-template-columns:1fr 1fr;gap:0 6mm}
 #force:has(tbody tr:nth-child(2)) svg{max-height:96mm}
 #lanes svg:not(.key){max-height:222mm}
 .card p,.card ul{font-size:7.6pt;line-height:1.35}
