@@ -65,11 +65,22 @@ export function bestDesign(view: View): CandidateView | null {
   return ranked[0]?.candidate ?? null;
 }
 
+/** The set speed of the case, unless it changes on the way or is that at which the rider engages. */
+function heldSpeed(
+  { result: { hold }, speed }: View,
+  { result: { holdEvents = [] } }: CandidateView,
+): string {
+  const taps = holdEvents.some(({ kind }) => kind === 'tapped');
+  if (hold.changes.length > 0 || taps) return 'its set speeds';
+  if (hold.starts === 'by_hand') return 'the set speed';
+  const another = holdEvents.some(({ kind, setSpeed }) => kind === 'engaged' && setSpeed !== hold.setSpeed);
+  return another ? 'its set speeds' : speedText(hold.setSpeed, speed, 0);
+}
+
 /** What share of the time a candidate is within the band, and of what: the holdable stretches where a requirement asks that. */
 export function withinClause(view: View, candidate: CandidateView): string {
   const { result, speed } = view;
-  const target =
-    result.hold.changes.length > 0 ? 'its set speeds' : speedText(result.hold.setSpeed, speed, 0);
+  const target = heldSpeed(view, candidate);
   const asked = findingsOf(view, candidate.name).find(
     ({ requirement }) => requirement.figure === 'within_band_pct' && requirement.where === 'holdable',
   );

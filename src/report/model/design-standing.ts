@@ -54,18 +54,33 @@ const isDefeated = ({ result: { band, hills } }: View, name: string): boolean =>
       outcomes.some((one) => one.candidate === name && one.affected && Math.abs(one.speedChange) > band),
   );
 
-/** Share of the road, as `on the holdable 74 % of the road`, where nothing was asked beyond it; null where something was, or all of it can be held. */
+/** Of findings asked of no more than the holdable road. */
+interface HoldableScope {
+  /** `on the holdable 74 % of the road`. */
+  readonly road: string;
+  /** How many of them are taken there and not over the whole road: `2 of them`; null: all. */
+  readonly some: string | null;
+}
+
+/** What of the findings is of the holdable road alone; null where something was asked beyond it, nothing of it, or all of it can be held. */
 function holdableOnly(
   { result: { demand }, speed }: View,
   findings: readonly RequirementFinding[],
-): string | null {
+): HoldableScope | null {
   const beyond = findings.some(({ requirement }) => requirement.where !== 'holdable');
-  const of = findings.some(
+  const { length } = findings.filter(
     ({ requirement: { figure, where } }) => whereMeasured(figure, where) === 'holdable',
   );
-  if (demand.holdableShare >= 1 || beyond || !of) return null;
-  return `on the holdable ${percent(toPct(demand.holdableShare), speed)} of the road`;
+  if (demand.holdableShare >= 1 || beyond || length === 0) return null;
+  return {
+    road: `on the holdable ${percent(toPct(demand.holdableShare), speed)} of the road`,
+    some: length === findings.length ? null : `${length === 1 ? 'one' : length} of them`,
+  };
 }
+
+/** `both met where it can be held`, `both met, one of them where it can be held`. */
+const withSome = (words: string, { some }: HoldableScope, where: string): string =>
+  some === null ? `${words} ${where}` : `${words}, ${some} ${where}`;
 
 export function requirementClause(
   view: View,
@@ -89,7 +104,7 @@ export function requirementClause(
       const lost = findings.some(({ candidate }) => isDefeated(view, candidate));
       return {
         standing: lost ? 'met in part' : standing,
-        words: `and meets ${allOf(findings.length)} ${where}`,
+        words: withSome(`and meets ${allOf(findings.length)}`, where, where.road),
       };
     }
   }
@@ -116,8 +131,8 @@ export function designStanding(view: View, design: CandidateView): DesignStandin
   const { length } = findings;
   if (standing === 'met' || standing === 'met in part') {
     const all = length === 1 ? 'its one met' : length === 2 ? 'both met' : `all ${length} met`;
-    const words = standing === 'met' ? all : `${all} where it can be held`;
-    return told(words);
+    const where = standing === 'met' ? null : holdableOnly(view, findings);
+    return told(where === null ? all : withSome(all, where, 'where it can be held'));
   }
   return told(`${findings.filter((one) => one.verdict === standing).length} of ${length} ${standing}`);
 }

@@ -3,7 +3,9 @@ import type { RunResult } from '../../run/run-result.ts';
 import { isByRule } from '../../study/hold-off.ts';
 import type { HoldMeasure } from '../../study/hold-transient.ts';
 import { badness } from '../../study/hold-transients.ts';
-import { shareText, timeText } from '../quantity.ts';
+import { toPct } from '../../units/convert.ts';
+import { timeText } from '../quantity.ts';
+import { percent } from './design-standing.ts';
 import { offOf } from './hold-away.ts';
 import { readerWords } from './hold-words.ts';
 import type { CandidateView, View } from './view.ts';
@@ -47,18 +49,19 @@ function endedBy(event: HoldEvent): keyof HoldTally['ends'] {
   return isByRule(event) ? 'rules' : 'rider';
 }
 
-/** `ended 6 times: 5 times for bends, once by the rider`; what ended it is told, and that no rule did. */
+/** `it ends 6 times, 5 times for bends, once by the rider`, `it ends once, by a rule of the unit itself`; that no rule ended it is told too. */
 export function endWords({ ends, events }: HoldTally): string {
   if (events.ended === 0) return 'nothing ends it once it is engaged';
-  const parts = [
-    ends.bends > 0 ? `${timesText(ends.bends)} for bends` : '',
-    ends.rider > 0 ? `${timesText(ends.rider)} by the rider` : '',
-    ends.rules > 0 ? `${timesText(ends.rules)} by a rule of the unit itself` : '',
-  ].filter((part) => part !== '');
+  const causes: readonly [number, string][] = [
+    [ends.bends, 'for bends'],
+    [ends.rider, 'by the rider'],
+    [ends.rules, 'by a rule of the unit itself'],
+  ];
+  const parts = causes
+    .filter(([count]) => count > 0)
+    .map(([count, words]) => (count === events.ended ? words : `${timesText(count)} ${words}`));
   const never = ends.rules > 0 ? '' : ', never by a rule of the unit itself';
-  return parts.length === 1 && ends.rules === 0
-    ? `it ends ${parts[0]}${never}`
-    : `it ends ${timesText(events.ended)}, ${parts.join(', ')}${never}`;
+  return `it ends ${timesText(events.ended)}, ${parts.join(', ')}${never}`;
 }
 
 export const timesText = (count: number): string =>
@@ -75,10 +78,10 @@ export function worstTransient({ transients }: RunResult, candidate: string): Ho
 }
 
 /** What became of the hold, for the sentence that opens the page; null where hold was on all the way. */
-export function holdClause({ result }: View, candidate: CandidateView): string | null {
+export function holdClause({ result, speed }: View, candidate: CandidateView): string | null {
   const tally = holdTally(result, candidate);
   if (tally.off === 0) return null;
-  return `hold is on for ${shareText(tally.onShare)} of the time, ${endWords(tally)}`;
+  return `hold is on for ${percent(toPct(tally.onShare), speed)} of the time, ${endWords(tally)}`;
 }
 
 /** How often hold ended and why, the share of the time with it on, and the worst transient: one or two sentences. */
@@ -87,7 +90,7 @@ export function holdAnswer(view: View, candidate: CandidateView): string {
   const off = tally.off > 0 ? `, off for ${timeText(tally.off)}` : '';
   const worst = worstTransient(view.result, candidate.name);
   const told = worst === null ? '' : ` Its worst transient: ${readerWords(view, worst)}`;
-  return `${candidate.name} has hold on for ${shareText(tally.onShare)} of the time${off}; ${endWords(tally)}.${told}`;
+  return `${candidate.name} has hold on for ${percent(toPct(tally.onShare), view.speed)} of the time${off}; ${endWords(tally)}.${told}`;
 }
 
 /** The holds of a candidate that rules of the unit ended: place, speed and why. */

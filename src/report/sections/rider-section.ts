@@ -8,13 +8,14 @@ import { holdStrip } from '../charts/hold-strip.ts';
 import { candidateKey, lineKey } from '../charts/line-key.ts';
 import { type Html, type HtmlValue, html } from '../html.ts';
 import { answerOf } from '../model/answer.ts';
+import { percent } from '../model/design-standing.ts';
 import { asksOfHold } from '../model/hold-away.ts';
 import { type HoldMoment, MOMENT_KINDS, momentsOf, shownMoments } from '../model/hold-moments.ts';
 import { endsByRule, holdAnswer, holdTally } from '../model/hold-tally.ts';
 import { CAUSE_NAMES, EVENT_NAMES } from '../model/hold-words.ts';
 import type { View } from '../model/view.ts';
 import { PAGE_PAINT } from '../paint.ts';
-import { fixed, NO_VALUE, placeText, shareText, signed, speedText, timeText } from '../quantity.ts';
+import { fixed, NO_VALUE, placeText, signed, speedText, timeText } from '../quantity.ts';
 import { bendsPart } from './bends-part.ts';
 import { chartFigure } from './chart-figure.ts';
 import type { Section } from './section.ts';
@@ -75,7 +76,7 @@ function tallyTable(view: View): Html {
     ],
     tallies.map((tally) => [
       who(view, tally.candidate.name),
-      shareText(tally.onShare),
+      percent(toPct(tally.onShare), view.speed),
       timeText(tally.off),
       ...columns.map(({ of }) => fixed(of(tally))),
     ]),

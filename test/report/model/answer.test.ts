@@ -129,6 +129,52 @@ describe('the answer', () => {
     expect(told('hold_off_events')).not.toContain('98 % of the road');
   });
 
+  it('says the holdable road only of the requirements that are taken over it', () => {
+    const base = fixtureResult({ lengthKm: 28, requirements: 'met', designs: ['pi-firm'] });
+    const figures = ['within_band_pct', 'hold_off_events'];
+    const requirements = base.requirements.map((one, i) => ({
+      ...one,
+      requirement: { ...one.requirement, figure: figures[i]!, where: 'holdable' as const },
+    }));
+    const hills = base.hills.map((hill) => ({
+      ...hill,
+      share: 1.2,
+      outcomes: hill.outcomes.map((one) => ({ ...one, affected: true, speedChange: -5 })),
+    }));
+    const demand = { ...base.demand, holdableShare: 0.742 };
+    const { sentence, designs } = answerOf(viewOf({ ...base, hills, demand, requirements }, 'kmh'));
+    expect(plain(sentence)).toContain(
+      'and meets both requirements, one of them on the holdable 74 % of the road',
+    );
+    expect(designs[0]!.words).toBe('both met, one of them where it can be held');
+  });
+
+  it('names a speed only where hold keeps the one of the case', () => {
+    const base = fixtureResult({ lengthKm: 12, designs: ['pi-firm'] });
+    const told = (hold: Partial<typeof base.hold>, kind?: 'engaged' | 'tapped', setSpeed = 50 / 3.6) => {
+      const event = {
+        time: 60,
+        distance: 1000,
+        cause: 'rider',
+        setSpeed,
+        measured: setSpeed,
+        command: 0.2,
+      } as const;
+      const candidates = base.candidates.map((one) => ({
+        ...one,
+        result: { ...one.result, holdEvents: kind === undefined ? [] : [{ ...event, kind }] },
+      }));
+      return answerOf(
+        viewOf({ ...base, candidates, hold: { ...base.hold, ...hold } }, 'kmh'),
+      ).sentence.replace(/\u00a0/g, ' ');
+    };
+    expect(told({})).toContain('holds 60 km/h within');
+    expect(told({ starts: 'by_hand' }, 'engaged')).toContain('holds the set speed within');
+    expect(told({}, 'engaged')).toContain('holds its set speeds within');
+    expect(told({}, 'tapped')).toContain('holds its set speeds within');
+    expect(told({}, 'engaged', base.hold.setSpeed)).toContain('holds 60 km/h within');
+  });
+
   it('is no green light where requirements were asked of the holdable road alone and that is not all of it', () => {
     const base = fixtureResult({ lengthKm: 28, requirements: 'met', designs: ['pi-firm'] });
     const hillsOf = (share: number) =>

@@ -2,11 +2,17 @@ import { expect, test } from 'vitest';
 import { answerOf } from '../../../src/report/model/answer.ts';
 import { asksOfHold, overridesOf } from '../../../src/report/model/hold-away.ts';
 import { momentsOf, shownMoments } from '../../../src/report/model/hold-moments.ts';
-import { endWords, holdAnswer, holdTally, worstTransient } from '../../../src/report/model/hold-tally.ts';
+import {
+  endWords,
+  holdAnswer,
+  holdClause,
+  holdTally,
+  worstTransient,
+} from '../../../src/report/model/hold-tally.ts';
 import { type CandidateView, viewOf } from '../../../src/report/model/view.ts';
 import { expectClose } from '../../compare.ts';
 import { fixtureResult } from '../fixture.ts';
-import { withRider } from '../fixture-rider.ts';
+import { FIRM_EVENTS, withRider } from '../fixture-rider.ts';
 
 const plain = fixtureResult({ lengthKm: 12 });
 const view = viewOf(withRider(plain), 'kmh');
@@ -21,7 +27,11 @@ test('time off and what ended hold are counted by who did it', () => {
   expect(tally.events.override_began).toBe(1);
   expect(endWords(tally)).toBe('it ends twice, once for bends, once by a rule of the unit itself');
   const soft = holdTally(view.result, named('pi-soft'));
-  expect(endWords(soft)).toBe('it ends once for bends, never by a rule of the unit itself');
+  expect(endWords(soft)).toBe('it ends once, for bends, never by a rule of the unit itself');
+  const rules = { ...tally, events: { ...tally.events, ended: 1 }, ends: { bends: 0, rider: 0, rules: 1 } };
+  expect(endWords(rules)).toBe('it ends once, by a rule of the unit itself');
+  const thrice = { ...tally, events: { ...tally.events, ended: 3 }, ends: { bends: 0, rider: 2, rules: 1 } };
+  expect(endWords(thrice)).toBe('it ends 3 times, twice by the rider, once by a rule of the unit itself');
   expect(endWords(holdTally(view.result, named('locked')))).toBe('nothing ends it once it is engaged');
 });
 
@@ -41,6 +51,20 @@ test('the opening sentence tells it, and says nothing of a hold that was on all 
   expect(answerOf(viewOf(plain, 'kmh')).sentence).not.toContain('hold is on');
   expect(asksOfHold(plain)).toBe(false);
   expect(asksOfHold(view.result)).toBe(true);
+});
+
+test('all of the time is said only of a hold that was on all the time', () => {
+  // Off for 1.6 s.
+  const brief = FIRM_EVENTS.slice(-2).map((event, i) => ({ ...event, time: 400 + 1.6 * i }));
+  const candidate = named('pi-firm');
+  const result = { ...candidate.result, holdEvents: brief, endTime: 2000 };
+  // 1.6 s of 2000 s are 0.08 %.
+  expect(holdClause(view, { ...candidate, result })).toMatch(
+    /^hold is on for 99\.9\u00a0% of the time, it ends once, by a rule/,
+  );
+  expect(holdClause(view, { ...candidate, result: { ...result, endTime: 100_000 } })).toMatch(
+    / 99\.998\u00a0% /,
+  );
 });
 
 test('the same event of all candidates is one moment, an override is from grip to grip', () => {
