@@ -7,10 +7,10 @@ import type { LoopPlan } from '../loop/plan.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import type { Road } from '../road/road.ts';
 import { askedHold } from '../study/asked-hold.ts';
-import { compareCandidates } from '../study/compare-candidates.ts';
 import { demandOf } from '../study/demand.ts';
 import type { Demand, FigureValues, Replayed, RequirementFinding } from '../study/findings.ts';
 import { judge } from '../study/judge.ts';
+import { figureValues } from '../study/measure-figure.ts';
 import { readTrack } from '../track/read-track.ts';
 import type { Track } from '../track/track.ts';
 import { caseNameOf } from './case-name.ts';
@@ -80,9 +80,9 @@ export class QuickRuns {
       const candidate = candidates[i] as Candidate;
       const kept = this.runs.get(setting + controllerKey(document, i), () => {
         const result = runLoop({ ...plan, detail: true });
-        const [figures] = compareCandidates([{ name: candidate.name, plan, result }], context, band);
+        const figures = figureValues({ name: candidate.name, plan, result }, context, 'all', band);
         const loop = loopOfRun(document, vehicle, hold, candidate, result);
-        return { plan, result, figures: withoutHills(figures?.all ?? {}), loop, full: null };
+        return { plan, result, figures: withoutHills(figures), loop, full: null };
       });
       const { plan: run, ...found } = kept;
       replayed.push({ name: candidate.name, plan: run, result: kept.result });

@@ -2,7 +2,7 @@ import { type NumberField, numberFields } from '../../case/number-fields.ts';
 import { InputError, type Problem } from '../../problems/input-error.ts';
 import { element } from './element.ts';
 import { NumberInput } from './number-input.ts';
-import { fileOf, type Study, textOf } from './study.ts';
+import { fileOf, type Study, type StudyFile, textOf } from './study.ts';
 
 /** A number of one of the files of a study. */
 export interface FiledNumber extends NumberField {
@@ -142,9 +142,19 @@ function faultWords({ message, found, allowed }: Problem): string {
   return `${message}${told === '' ? '' : ` (${told})`}`;
 }
 
+/** Numbers of contents that were looked at: a hand that moves changes one file of two. */
+const known = new WeakMap<StudyFile, readonly FiledNumber[]>();
+
 /** None of a file that is not here, or that cannot be read at all. */
-function fieldsOf(study: Study, file: string | null, kind: 'case' | 'vehicle'): readonly FiledNumber[] {
-  if (file === null || fileOf(study, file) === undefined) return [];
+function fieldsOf(study: Study, name: string | null, kind: 'case' | 'vehicle'): readonly FiledNumber[] {
+  const file = name === null ? undefined : fileOf(study, name);
+  if (file === undefined) return [];
+  const fields = known.get(file) ?? numbersIn(study, file.name, kind);
+  known.set(file, fields);
+  return fields;
+}
+
+function numbersIn(study: Study, file: string, kind: 'case' | 'vehicle'): readonly FiledNumber[] {
   try {
     return numberFields(textOf(study, file), kind)
       .filter(({ path }) => !LEFT_OUT.includes(String(path[0])))
