@@ -151,7 +151,7 @@ export const COMMANDS = {
     details: [
       'A log is a CSV file whose header names the units: time_s and speed_kmh or speed_m_s; then elevation_m or grade_pct, headwind_m_s, distance_m where they were measured; run and direction (there or back) where a file holds several runs. throttle_pct makes it a step test, and with a place (distance_m, elevation_m, lat_deg and lon_deg) or with wheel_power_kw a ride.',
       'Coast-downs, runs both ways from high speed to below half of it, give the drag area and the rolling coefficient with their 95 % intervals; a step of the throttle gives gain, time constant and delay; a ride with its power or throttle is held against the vehicle, segment by segment, and corrects it. Logs that are too thin are refused, with what to measure.',
-      'Writes the file that --out names (out/<name of the log>/vehicle.yaml where it is left out), a vehicle file that ridgehold run takes, each number with where it is from, and beside it identify.html and identify.json; of a step test PI candidates for a case (candidates.yaml). Only a file that ridgehold wrote, and nobody changed since, is written over.',
+      'Writes the file that --out names (out/<name of the log>/vehicle.yaml where it is left out), a vehicle file that ridgehold run takes, each number with where it is from, and beside it identify.html, identify.json and the charts (charts/identify-*.svg); of a step test PI candidates for a case (candidates.yaml). Only a file that ridgehold wrote, and nobody changed since, is written over.',
       'Exit status: 0 done; 2 the input was refused; 70 a fault of the program.',
     ],
     options: [
@@ -165,6 +165,8 @@ export const COMMANDS = {
       'air-temperature-c',
       'air-pressure-hpa',
       'air-density-kg-m3',
+      'png',
+      'png-width',
       'json',
       'quiet',
       'units',

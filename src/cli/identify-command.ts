@@ -2,6 +2,7 @@ import { join } from 'node:path';
 import { RIDE_UNKNOWNS, type RideUnknown } from '../identify/ride.ts';
 import { InputError } from '../problems/input-error.ts';
 import { identificationAnswer } from '../report/identify/identification-answer.ts';
+import { identificationChartFiles } from '../report/identify/identification-chart-files.ts';
 import { identificationJson } from '../report/identify/identification-json.ts';
 import { renderIdentification } from '../report/identify/render-identification.ts';
 import { identifyLogs } from '../run/identify-logs.ts';
@@ -10,8 +11,10 @@ import type { Invocation } from './commands.ts';
 import { defaultFolder } from './default-folder.ts';
 import { DONE } from './exit-status.ts';
 import { numberOption } from './number-option.ts';
+import { pictureFiles } from './picture-files.ts';
+import { pngRenderer, pngWidthOf } from './png-renderer.ts';
 import { readBytes } from './read-files.ts';
-import { checkFolder, writeResult } from './result-folder.ts';
+import { checkFolder, type ResultFile, writeResult } from './result-folder.ts';
 import { say, tellWarnings } from './tell.ts';
 import { targetOf } from './vehicle-target.ts';
 
@@ -19,7 +22,8 @@ const PAGE = 'identify.html';
 const MARK = 'identify.json';
 
 /** `ridgehold identify LOG...`: logs become numbers of a vehicle, its file, and a page that says how good they are. */
-export function identifyCommand({ operands, values }: Invocation<'identify'>): number {
+export async function identifyCommand({ operands, values }: Invocation<'identify'>): Promise<number> {
+  const width = pngWidthOf(values);
   const ofCase = values.case === undefined ? null : readerOf(values.case);
   const work = () =>
     identifyLogs({
@@ -63,16 +67,17 @@ export function identifyCommand({ operands, values }: Invocation<'identify'>): n
   const { folder, name } = targetOf(values.out ?? fallback, MARK);
   checkFolder(folder, [PAGE, MARK]);
   const units = values.units ?? 'kmh';
-  const mark = identificationJson(result, name, [PAGE]);
-  writeResult(
-    folder,
-    [
-      { name, text: result.text },
-      { name: PAGE, text: renderIdentification(result, { units, output: name }) },
-      { name: MARK, text: mark },
-    ],
-    [name],
+  const draw = width === null ? null : await pngRenderer(width);
+  const files: readonly ResultFile[] = [
+    { name: PAGE, text: renderIdentification(result, { units, output: name }) },
+    ...pictureFiles(identificationChartFiles(result, { units }), draw),
+  ];
+  const mark = identificationJson(
+    result,
+    name,
+    files.map((file) => file.name),
   );
+  writeResult(folder, [{ name, text: result.text }, ...files, { name: MARK, text: mark }], [name]);
   if (!values.quiet) {
     say(identificationAnswer(result).sentence);
     tellWarnings(result.warnings, (place) => place);

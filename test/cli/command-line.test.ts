@@ -42,7 +42,7 @@ test('the help names every command, and no command that does not exist', () => {
   const { status, stdout, stderr } = ridgehold(here, ['--help']);
   expect([status, stderr]).toEqual([0, '']);
   const commands = [...stdout.matchAll(/^ {2}([a-z]+) /gm)].map((match) => match[1]);
-  expect(commands).toEqual(['run', 'road', 'compare', 'identify', 'tune', 'new', 'schema']);
+  expect(commands).toEqual(['run', 'road', 'compare', 'identify', 'tune', 'workbench', 'new', 'schema']);
   expect(ridgehold(here, ['help']).stdout).toBe(stdout);
 });
 
@@ -63,7 +63,8 @@ test.each([
     ],
   ],
   ['road', ['--out', '--set', '--png', '--png-width', '--json', '--quiet', '--units', '--help']],
-  ['tune', ['--out', '--set', '--add', '--json', '--quiet', '--units', '--help']],
+  ['tune', ['--out', '--set', '--add', '--png', '--png-width', '--json', '--quiet', '--units', '--help']],
+  ['workbench', ['--out', '--quiet', '--help']],
   ['compare', ['--out', '--json', '--quiet', '--units', '--help']],
   [
     'identify',
@@ -78,6 +79,8 @@ test.each([
       '--air-temperature-c',
       '--air-pressure-hpa',
       '--air-density-kg-m3',
+      '--png',
+      '--png-width',
       '--json',
       '--quiet',
       '--units',

@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { appendFileSync, existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
+import { appendFileSync, existsSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { type Ended, filesBelow, ridgehold, temporaryFolder } from './start-program.ts';
@@ -23,9 +23,20 @@ describe('a coast-down', () => {
   test('leaves a vehicle, a page and data, and says the numbers', () => {
     expect(ended.status).toBe(0);
     expect(ended.stderr).toMatch(/^CdA 0\.6\d\d\s±\s0\.0\d+\sm² and Crr 0\.015\d\s±\s0\.00\d+ from 10 runs/);
-    expect(readdirSync(join(here, 'cd')).sort()).toEqual(['identify.html', 'identify.json', 'mine.yaml']);
+    expect(Object.keys(filesBelow(join(here, 'cd'))).sort()).toEqual([
+      'charts/identify-force.svg',
+      'charts/identify-residuals.svg',
+      'identify.html',
+      'identify.json',
+      'mine.yaml',
+    ]);
     expect(ended.stdout).toBe(written('cd/identify.json'));
     const mark = JSON.parse(ended.stdout);
+    expect(mark.files).toEqual([
+      'identify.html',
+      'charts/identify-force.svg',
+      'charts/identify-residuals.svg',
+    ]);
     expect(mark.output.sha256).toBe(createHash('sha256').update(written('cd/mine.yaml')).digest('hex'));
     expect(ended.stdout + written('cd/identify.html') + written('cd/mine.yaml')).not.toContain(here);
     expect(ended.stdout + written('cd/identify.html') + written('cd/mine.yaml')).not.toContain(root);
@@ -96,6 +107,7 @@ test('a step test and a ride say their numbers', () => {
   ]);
   expect(readdirSync(join(here, 'out/gallop-field-steps')).sort()).toEqual([
     'candidates.yaml',
+    'charts',
     'identify.html',
     'identify.json',
   ]);
@@ -104,6 +116,32 @@ test('a step test and a ride say their numbers', () => {
     0,
     expect.stringMatching(/^Drag area CdA 0\.6\d*\s±\s.* makes .* agree/),
   ]);
+});
+
+test('charts are drawn as PNG too, with --png, and a chart of somebody else is not written over', () => {
+  const pictures = (): string[] => readdirSync(join(here, 'drawn/charts')).sort();
+  const drawn = (...more: string[]): Ended =>
+    identify(log('ride'), ...weather, '-o', 'drawn/v.yaml', '--quiet', ...more);
+  expect(drawn('--png-width', '400')).toMatchObject({ status: 0, stderr: '' });
+  const names = ['identify-energy', 'identify-speed'];
+  expect(pictures()).toEqual(names.flatMap((name) => [`${name}.png`, `${name}.svg`]));
+  // ISO/IEC 15948: eight bytes of signature, then the header, whose first number is the width.
+  const bytes = readFileSync(join(here, 'drawn/charts/identify-energy.png'));
+  expect([bytes.subarray(1, 4).toString('latin1'), bytes.readUInt32BE(16)]).toEqual(['PNG', 400]);
+  const text = written('drawn/charts/identify-energy.svg');
+  expect(text).toContain('>vehicle as it was</text>');
+  expect(text).toContain('>as fitted</text>');
+  expect(drawn().status).toBe(0);
+  expect(pictures()).toEqual(names.map((name) => `${name}.svg`));
+
+  mkdirSync(join(here, 'theirs/charts'), { recursive: true });
+  writeFileSync(join(here, 'theirs/charts/identify-speed.svg'), 'mine');
+  const refused = identify(log('ride'), ...weather, '-o', 'theirs/v.yaml');
+  expect([refused.status, refused.stderr]).toEqual([
+    2,
+    expect.stringContaining('theirs/charts/identify-speed.svg: would be written over'),
+  ]);
+  expect(Object.keys(filesBelow(join(here, 'theirs')))).toEqual(['charts/identify-speed.svg']);
 });
 
 test('thin data are refused with what to measure, and leave nothing', () => {

@@ -12,6 +12,7 @@ import {
   tenth,
   type Words,
 } from './canvas.ts';
+import { type KeyItem, keyRows, SIGN_WIDTH } from './key-row.ts';
 import { linePath, type Point } from './paths.ts';
 
 /** One set of points of a chart: measured ones as marks, computed ones as a line. */
@@ -34,6 +35,8 @@ export interface XyPlot {
   readonly height: number;
   /** The y axis takes in zero. */
   readonly fromZero: boolean;
+  /** The key stands below the drawing, for a file of its own; false where it is left out: the page has it. */
+  readonly keyed?: boolean;
 }
 
 /** A plain chart of measured points and computed lines over one axis. */
@@ -58,7 +61,10 @@ export function xyChart(words: Words, plot: XyPlot, canvas: Canvas): Html {
       : html`<g>${points.map((point) => markAt(point, series.mark, stroke))}</g>`;
   });
   const body = html`<defs>${clip(`${id}-c`, box)}</defs>${leftAxis(canvas, box, y, plot.y)}${clipped(`${id}-c`, html`${marks}`)}${bottomAxis(canvas, box, x, plot.x)}`;
-  return drawing(canvas, box.top + box.height + BOTTOM_AXIS_HEIGHT, words, body);
+  const bottom = box.top + box.height + BOTTOM_AXIS_HEIGHT;
+  if (plot.keyed !== true) return drawing(canvas, bottom, words, body);
+  const key = keyRows(plot.series.map(keyItem(canvas.paint)), left, bottom + 14, box.width, canvas.paint.ink);
+  return drawing(canvas, bottom + key.height, words, html`${body}${key.body}`);
 }
 
 function rangeOf({ series }: XyPlot, axis: 0 | 1, fromZero: boolean): readonly [number, number] {
@@ -89,6 +95,19 @@ function markAt([x, y]: Point, mark: XySeries['mark'], colour: string): Html {
       return html`<circle cx="${cx}" cy="${cy}" r="2.6" fill="${colour}"/>`;
   }
 }
+
+const keyItem =
+  (paint: Paint) =>
+  ({ name, mark, colour, dash = '' }: XySeries): KeyItem => {
+    const stroke = paint.series[colour]!;
+    return {
+      sign: (x, y) =>
+        mark === 'line'
+          ? segment(x, y, x + SIGN_WIDTH, y, { stroke, width: 1.8, dash })
+          : markAt([x + SIGN_WIDTH / 2, y], mark, stroke),
+      text: name,
+    };
+  };
 
 /** Key for people: mark and name of every series. */
 export const xyKey = (series: readonly XySeries[], paint: Paint): Html =>

@@ -5,18 +5,17 @@ import type { RoadLoadForm } from '../../identify/reference-conditions.ts';
 import type { CoastDownIdentification } from '../../run/identification.ts';
 import { STANDARD_GRAVITY } from '../../units/constants.ts';
 import { toNPerKmh, toNPerKmh2, toPct } from '../../units/convert.ts';
-import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
 import { type Html, html } from '../html.ts';
 import { estimateCells } from '../model/estimate-words.ts';
-import { PAGE_PAINT } from '../paint.ts';
 import { fixed, type SpeedUnit, signed, speedText, timeText, trimmed } from '../quantity.ts';
-import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
+import { coastDownCharts } from './coast-down-charts.ts';
 import { coastDownMethod } from './coast-down-method.ts';
 import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
 import { givenTable } from './given-table.ts';
 import { shortName } from './short-name.ts';
+import { xyFigures } from './xy-figures.ts';
 
 /** Sections 2 to 6 of a coast-down. */
 export function coastDownSections(result: CoastDownIdentification, speed: SpeedUnit): readonly Section[] {
@@ -50,57 +49,9 @@ ${givenTable(result.given)}
 <p class="note">No interval above has an error of these in it. CdA goes with the mass over the density, Crr hardly with either: 1 % of mass is 1 % of CdA.</p>`;
 }
 
-function residualsBody({ fit, logs }: CoastDownIdentification, speed: SpeedUnit): Html {
-  const { residuals, runs, setting } = fit;
-  const pointsOf = (direction: string, of: Float64Array) =>
-    Array.from(of, (force, i) => [speed.of(residuals.speed[i]!), force] as const).filter(
-      (_, i) => runs[residuals.run[i]!]!.direction === direction,
-    );
-  const measured = (of: Float64Array): XySeries[] => [
-    { name: 'there', mark: 'dot', colour: 1, points: pointsOf('there', of) },
-    { name: 'back', mark: 'ring', colour: 2, points: pointsOf('back', of) },
-  ];
-  const fastest = residuals.speed.reduce((a, b) => Math.max(a, b), 0);
-  const slowest = residuals.speed.reduce((a, b) => Math.min(a, b), fastest);
-  const line: XySeries = {
-    name: 'fitted: m g Crr + ½ ρ CdA v²',
-    mark: 'line',
-    colour: 0,
-    points: Array.from({ length: 41 }, (_, i) => {
-      const v = slowest + ((fastest - slowest) * i) / 40;
-      const air = (setting.airDensity / 2) * fit.cda.value * v * v;
-      return [speed.of(v), fit.crr.value * setting.mass * STANDARD_GRAVITY + air] as const;
-    }),
-  };
-  const x = `speed / ${speed.axis}`;
-  const force = [line, ...measured(residuals.force)];
-  return html`${xyKey(force, PAGE_PAINT)}
-${chartFigure(
-  'force',
-  (canvas) =>
-    xyChart(
-      {
-        title: 'Road load over speed: measured and fitted',
-        desc: `${residuals.force.length} measured forces between ${speedText(slowest, speed, 0)} and ${speedText(fastest, speed, 0)}, with the fitted curve.`,
-      },
-      { x, y: 'road load / N', series: force, height: 240, fromZero: true },
-      canvas,
-    ),
-  'Mean force that slowed the vehicle over each piece of a run, in still air on the level: what was measured, less the wind and the slope.',
-)}
-${chartFigure(
-  'left',
-  (canvas) =>
-    xyChart(
-      {
-        title: 'Residuals over speed',
-        desc: `Measured less fitted force, root mean square ${fixed(fit.rmsForce, 1)} N.`,
-      },
-      { x, y: 'measured less fitted / N', series: measured(residuals.residual), height: 170, fromZero: true },
-      canvas,
-    ),
-  `A cloud around zero without a bend is what should be here; root mean square ${fixed(fit.rmsForce, 1)} N. One way above the other means a wind or a slope that changed.`,
-)}
+function residualsBody(result: CoastDownIdentification, speed: SpeedUnit): Html {
+  const { fit, logs } = result;
+  return html`${xyFigures(coastDownCharts(result, speed))}
 ${table(
   'Runs',
   [
@@ -113,7 +64,7 @@ ${table(
     { head: 'rms left / N', number: true },
     { head: 'mean left / N', number: true },
   ],
-  runs.map((run) => [
+  fit.runs.map((run) => [
     shortName(run.name, logs),
     run.direction,
     speedText(run.from, speed, 0),

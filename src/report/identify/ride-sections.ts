@@ -1,10 +1,7 @@
 import type { RideIdentification } from '../../run/identification.ts';
-import { toKm } from '../../units/convert.ts';
-import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
 import { type Html, html } from '../html.ts';
 import { estimateCells } from '../model/estimate-words.ts';
 import { UNKNOWN_WORDS } from '../model/unknown-words.ts';
-import { PAGE_PAINT } from '../paint.ts';
 import {
   changeText,
   energyText,
@@ -18,18 +15,24 @@ import {
   stretchText,
   withUnit,
 } from '../quantity.ts';
-import { chartFigure } from '../sections/chart-figure.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
 import { givenTable } from './given-table.ts';
+import { rideCharts } from './ride-charts.ts';
 import { rideMethod } from './ride-method.ts';
+import { xyFigures } from './xy-figures.ts';
 
 /** Sections 2 to 6 of a ride. */
 export function rideSections(result: RideIdentification, speed: SpeedUnit): readonly Section[] {
   return [
     { id: 'estimates', number: 2, title: 'The estimates', body: estimatesBody(result) },
-    { id: 'residuals', number: 3, title: 'The ride beside the vehicle', body: residualsBody(result, speed) },
+    {
+      id: 'residuals',
+      number: 3,
+      title: 'The ride beside the vehicle',
+      body: xyFigures(rideCharts(result, speed)),
+    },
     { id: 'segments', number: 4, title: 'Segment by segment', body: segmentsBody(result, speed) },
     { id: 'next', number: 5, title: 'What to measure next', body: nextBody(result) },
     { id: 'method', number: 6, title: 'How it was computed', body: rideMethod() },
@@ -60,61 +63,6 @@ ${table('Elevation closure', ESTIMATE_COLUMNS, [
 }
 <h3>Taken for granted</h3>
 ${givenTable(given)}`;
-}
-
-function residualsBody({ fit }: RideIdentification, speed: SpeedUnit): Html {
-  const middle = (from: number, to: number): number => toKm((from + to) / 2);
-  const force = (name: string, mark: XySeries['mark'], colour: number, after: boolean): XySeries => ({
-    name,
-    mark,
-    colour,
-    points: fit.segments.map((one) => [
-      middle(one.from, one.to),
-      (one.given - (after ? one.neededAfter : one.needed)) / (one.to - one.from),
-    ]),
-  });
-  const forces = [force('vehicle as it was', 'ring', 2, false), force('as fitted', 'dot', 1, true)];
-  const speeds: XySeries[] = [
-    {
-      name: 'vehicle as it was',
-      mark: 'ring',
-      colour: 2,
-      points: fit.segments.map((one) => [middle(one.from, one.to), speed.of(one.rmsSpeed)]),
-    },
-    {
-      name: 'as fitted',
-      mark: 'dot',
-      colour: 1,
-      points: fit.segments.map((one) => [middle(one.from, one.to), speed.of(one.rmsSpeedAfter)]),
-    },
-  ];
-  return html`${xyKey(forces, PAGE_PAINT)}
-${chartFigure(
-  'energy',
-  (canvas) =>
-    xyChart(
-      {
-        title: 'Work that the log gave over what the vehicle needs, by segment',
-        desc: `Root mean square of the pieces ${fixed(fit.rmsForceBefore, 1)} N before the fit, ${fixed(fit.rmsForce, 1)} N after it.`,
-      },
-      { x: 'distance / km', y: 'given less needed / N', series: forces, height: 190, fromZero: true },
-      canvas,
-    ),
-  `Energy residual of each segment over its length: above zero the log gave more than the vehicle needs. Over the fitted pieces of 20 s, root mean square ${fixed(fit.rmsForceBefore, 1)} N before the fit and ${fixed(fit.rmsForce, 1)} N after it.`,
-)}
-${chartFigure(
-  'speed',
-  (canvas) =>
-    xyChart(
-      {
-        title: 'Speed of the simulation beside the ride, by segment',
-        desc: 'Root mean square difference of simulated and logged speed.',
-      },
-      { x: 'distance / km', y: `rms of speed / ${speed.axis}`, series: speeds, height: 150, fromZero: true },
-      canvas,
-    ),
-  'Speed residual of each segment: simulated from the logged speed at its start, with the logged drive, against what was ridden.',
-)}`;
 }
 
 /** Rows of a table that is still read; the rest is for programs. */

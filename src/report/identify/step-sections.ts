@@ -1,20 +1,18 @@
 import type { Estimate } from '../../identify/estimate.ts';
 import { scaledEstimate } from '../../identify/estimate.ts';
-import type { FittedStep, StepNumbers } from '../../identify/step-test.ts';
-import { exp } from '../../numeric/elementary.ts';
+import type { StepNumbers } from '../../identify/step-test.ts';
 import type { StepIdentification } from '../../run/identification.ts';
 import { toKmhPerPct, toPct, toPctPerKmh } from '../../units/convert.ts';
-import { type XySeries, xyChart, xyKey } from '../charts/xy-chart.ts';
 import { type Html, html } from '../html.ts';
 import { estimateCells, plusMinus } from '../model/estimate-words.ts';
-import { PAGE_PAINT } from '../paint.ts';
-import { fixed, type SpeedUnit, signed, significant, speedText } from '../quantity.ts';
-import { chartFigure } from '../sections/chart-figure.ts';
+import { fixed, type SpeedUnit, significant, speedText } from '../quantity.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
 import { ESTIMATE_COLUMNS } from './estimate-columns.ts';
 import { shortName } from './short-name.ts';
+import { stepCharts } from './step-charts.ts';
 import { stepMethod } from './step-method.ts';
+import { xyFigures } from './xy-figures.ts';
 
 /** Sections 2 to 6 of a step test. */
 export function stepSections(result: StepIdentification, speed: SpeedUnit): readonly Section[] {
@@ -44,8 +42,9 @@ function estimatesBody({ fit }: StepIdentification): Html {
 <p class="note">Of several steps the mean, its interval from their scatter; of a single step its own. The numbers are those of the whole chain from throttle to measured speed, at the speed, gear, load and slope of the test.</p>`;
 }
 
-function stepsBody({ fit, logs }: StepIdentification, speed: SpeedUnit): Html {
-  return html`${fit.steps.map((step, i) => stepFigure(step, i, speed))}
+function stepsBody(result: StepIdentification, speed: SpeedUnit): Html {
+  const { fit, logs } = result;
+  return html`${xyFigures(stepCharts(result, speed))}
 ${table(
   'Steps',
   [
@@ -71,56 +70,6 @@ ${table(
     fixed(speed.of(step.rmsSpeed), 2),
   ]),
   'dense',
-)}`;
-}
-
-/** More steps than this are in the table alone. */
-const MOST_FIGURES = 8;
-/** More marks than this run into each other. */
-const MOST_MARKS = 300;
-
-function stepFigure(step: FittedStep, i: number, speed: SpeedUnit): Html | null {
-  if (i >= MOST_FIGURES) return null;
-  const { record, before, settled, fit } = step;
-  const end = record.time[record.time.length - 1]!;
-  const curve: XySeries = {
-    name: 'fitted',
-    mark: 'line',
-    colour: 2,
-    points: Array.from({ length: 161 }, (_, k) => {
-      const t = record.time[0]! + ((end - record.time[0]!) * k) / 160;
-      const since = Math.max(0, t - fit.delay.value);
-      return [t, speed.of(before + (settled - before) * (1 - exp(-since / fit.timeConstant.value)))] as const;
-    }),
-  };
-  const measured: XySeries = {
-    name: 'measured',
-    mark: 'dot',
-    colour: 1,
-    points: Array.from(record.time, (t, k) => [t, speed.of(record.speed[k]!)] as const).filter(
-      (_, k) => k % Math.ceil(record.time.length / MOST_MARKS) === 0,
-    ),
-  };
-  const change = signed(toPct(record.to - record.from), 1);
-  return html`${i === 0 && xyKey([measured, curve], PAGE_PAINT)}
-${chartFigure(
-  `step-${i + 1}`,
-  (canvas) =>
-    xyChart(
-      {
-        title: `Answer to a step of ${change} %`,
-        desc: `From ${speedText(before, speed)} towards ${speedText(settled, speed)}, time constant ${fixed(fit.timeConstant.value, 1)} s, delay ${fixed(fit.delay.value, 2)} s.`,
-      },
-      {
-        x: 'time from the step / s',
-        y: `speed / ${speed.axis}`,
-        series: [measured, curve],
-        height: 150,
-        fromZero: false,
-      },
-      canvas,
-    ),
-  `Step of ${change} % at ${fixed(record.at, 1)} s.`,
 )}`;
 }
 
