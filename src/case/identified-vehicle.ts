@@ -1,8 +1,10 @@
 import { InputError } from '../problems/input-error.ts';
+import type { Warning } from '../problems/warning.ts';
 import { STANDARD_GRAVITY } from '../units/constants.ts';
 import { toNPerKmh, toNPerKmh2 } from '../units/convert.ts';
 import { editCase } from './edit-case.ts';
 import type { VehicleDocument } from './read-vehicle-file.ts';
+import type { VehicleFile } from './vehicle-schema.ts';
 import { placeOf } from './yaml-source.ts';
 
 /** Numbers that a measurement puts into a vehicle file, and what is said of each. */
@@ -81,6 +83,28 @@ export function withIdentified(vehicle: VehicleDocument, found: IdentifiedVehicl
   const comment = marked(found.provenance);
   const at = text.search(/^["']?road_load["']?\s*:/m);
   return at < 0 ? comment + text : text.slice(0, at) + comment + text.slice(at);
+}
+
+/** Whether a road load has places of its own for a drag area and a rolling coefficient; one that has none gives way to both. */
+export const hasOwnPlaces = (load: VehicleFile['road_load']): boolean =>
+  'f0_n' in load || ('cda_m2' in load && 'crr' in load);
+
+/** What the text of `withIdentified` no longer says that the file said: a form that gave way to coefficients. */
+export function identifiedWarnings(
+  { file }: VehicleDocument,
+  { cda, crr }: Pick<IdentifiedVehicle, 'cda' | 'crr'>,
+): readonly Warning[] {
+  const load = file.road_load;
+  if (hasOwnPlaces(load) || cda === null || crr === null) return [];
+  return [{ code: 'road-load-replaced', message: replacedWords(load) }];
+}
+
+function replacedWords(load: VehicleFile['road_load']): string {
+  if ('cda_table' in load)
+    return `The road load had its drag area in cda_table over yaw up to ${load.cda_table.at(-1)!.yaw_deg}°; the file that was written has one drag area, that without yaw: a side wind no longer changes it. Multiply the rows of the table by new over old and put them back where that matters.`;
+  if ('tyre_pressure_bar' in load)
+    return `The road load had its rolling coefficient from tyre_pressure_bar (${load.tyre_pressure_bar} bar); the file that was written has the measured one, which is that of the tyres on that day: another pressure no longer changes it.`;
+  return 'The road load was the row of a published table for the mass; the file that was written has the two measured numbers in its place, and another mass no longer takes another row.';
 }
 
 /** What is known of a vehicle that has no file yet. */

@@ -1,4 +1,4 @@
-import { newIdentifiedVehicle, withIdentified } from '../case/identified-vehicle.ts';
+import { identifiedWarnings, newIdentifiedVehicle, withIdentified } from '../case/identified-vehicle.ts';
 import type { VehicleDocument } from '../case/read-vehicle-file.ts';
 import { checkCoastDown } from '../identify/check-fit.ts';
 import { coastRunsOf } from '../identify/coast-runs.ts';
@@ -43,13 +43,17 @@ export function identifyCoastDown(
     `correlation ${fit.correlation.toFixed(2)}; air ${air.air.density.toFixed(3)} kg/m3 (${air.words}), loaded mass ${masses.mass.value} kg (${masses.mass.from})`,
     ...(vehicle === null ? [] : [`everything else is as in ${vehicle.source.file.split(/[\\/]/).at(-1)}`]),
   ];
+  const found = { cda: fit.cda.value, crr: fit.crr.value, growth: { c1: 0, c2: 0 }, mass: null, provenance };
   return {
     kind: 'coast-down',
     toolVersion: TOOL_VERSION,
     logs: logNames(request),
     inputs: log.files,
     given: [masses.mass, masses.rotating, ...air.given],
-    warnings: coastDownWarnings(fit, logs, air.assumed),
+    warnings: [
+      ...coastDownWarnings(fit, logs, air.assumed),
+      ...(vehicle === null ? [] : identifiedWarnings(vehicle, found)),
+    ],
     fit,
     air: air.air,
     measured,
@@ -65,12 +69,6 @@ export function identifyCoastDown(
             provenance,
             massWords: `Given: ${masses.mass.value} kg loaded (${masses.mass.from}); what turns with the wheels counts for ${masses.rotating.value} kg more (${masses.rotating.from}).`,
           })
-        : withIdentified(vehicle, {
-            cda: fit.cda.value,
-            crr: fit.crr.value,
-            growth: { c1: 0, c2: 0 },
-            mass: null,
-            provenance,
-          }),
+        : withIdentified(vehicle, found),
   };
 }

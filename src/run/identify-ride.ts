@@ -1,4 +1,4 @@
-import { withIdentified } from '../case/identified-vehicle.ts';
+import { hasOwnPlaces, identifiedWarnings, withIdentified } from '../case/identified-vehicle.ts';
 import { type CaseDocument, readCaseFile } from '../case/read-case-file.ts';
 import { readVehicleFile, type VehicleDocument } from '../case/read-vehicle-file.ts';
 import { segmentsOf } from '../case/run-of.ts';
@@ -70,26 +70,30 @@ export function identifyRide(
     }),
   ];
   const { byPower } = held;
+  const found = {
+    cda: value('cda_m2'),
+    crr: value('crr'),
+    growth: vehicle.roadLoad,
+    mass: value('mass_kg'),
+    provenance,
+  };
   return {
     kind: 'ride',
     toolVersion: TOOL_VERSION,
     logs: logNames(request),
     inputs: log.files,
     given: held.given.filter(({ name }) => name !== LOADED_MASS || !unknowns.includes('mass_kg')),
-    warnings: rideFitWarnings(fit, { byPower, airAssumed: held.airAssumed }),
+    warnings: [
+      ...rideFitWarnings(fit, { byPower, airAssumed: held.airAssumed }),
+      ...identifiedWarnings(document, found),
+    ],
     fit,
     vehicleName: vehicle.name,
     roadWords: held.roadWords,
     driveWords: byPower
       ? 'power at the wheel, as logged'
       : "throttle, as logged, through the vehicle's drive",
-    text: withIdentified(document, {
-      cda: value('cda_m2'),
-      crr: value('crr'),
-      growth: vehicle.roadLoad,
-      mass: value('mass_kg'),
-      provenance,
-    }),
+    text: withIdentified(document, found),
   };
 }
 
@@ -99,8 +103,7 @@ export function identifyRide(
  */
 function toldBy({ unknowns }: RideFit, { file }: VehicleDocument): readonly FittedUnknown[] {
   const told = unknowns.filter(({ estimate }) => estimate.low > 0);
-  const load = file.road_load;
-  if ('f0_n' in load || ('cda_m2' in load && 'crr' in load)) return told;
+  if (hasOwnPlaces(file.road_load)) return told;
   const both = (['cda_m2', 'crr'] as const).every((name) => told.some((one) => one.name === name));
   return both ? told : told.filter(({ name }) => name === 'mass_kg');
 }

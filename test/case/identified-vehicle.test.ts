@@ -1,6 +1,10 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
-import { newIdentifiedVehicle, withIdentified } from '../../src/case/identified-vehicle.ts';
+import {
+  identifiedWarnings,
+  newIdentifiedVehicle,
+  withIdentified,
+} from '../../src/case/identified-vehicle.ts';
 import { readVehicleFile } from '../../src/case/read-vehicle-file.ts';
 import { InputError } from '../../src/problems/input-error.ts';
 import { expectClose } from '../compare.ts';
@@ -56,6 +60,24 @@ road_load:
       'mass: {kerb_kg: 140}\n# cda_m2 measured\n# crr measured\nroad_load: {cda_m2: 0.61235, cda_yaw_per_rad2: 0, crr: 0.015235}\nname: after\n',
     );
     expect(() => edited(text, { ...found, crr: null })).toThrow(InputError);
+  });
+
+  test('tells what a form that gave way had in it, and nothing where both numbers have their places', () => {
+    const told = (load: string, more: Partial<typeof found> = {}) =>
+      identifiedWarnings(readVehicleFile(`mass: {kerb_kg: 140}\nroad_load: ${load}\n`, 'v.yaml'), {
+        ...found,
+        ...more,
+      }).map(({ code, message }) => `${code}: ${message}`);
+    const table = '{cda_table: [{yaw_deg: 0, cda_m2: 0.5}, {yaw_deg: 18, cda_m2: 0.6}], crr: 0.01}';
+    expect(told(table)).toEqual([expect.stringMatching(/^road-load-replaced: .* cda_table .* 18°/)]);
+    expect(told('{cda_m2: 0.5, tyre_pressure_bar: 2.2}')).toEqual([
+      expect.stringMatching(/^road-load-replaced: .* tyre_pressure_bar \(2\.2 bar\)/),
+    ]);
+    expect(told('{published: UN GTR 2}')).toEqual([expect.stringContaining('published table')]);
+    expect(told('{cda_m2: 0.5, crr: 0.01}')).toEqual([]);
+    expect(told('{f0_n: 9, f2_n_per_kmh2: 0.02}')).toEqual([]);
+    const nothing = { cda: null, crr: null } as unknown as Partial<typeof found>;
+    expect(told(table, nothing)).toEqual([]);
   });
 
   test('changes the kerb mass, so that the loaded mass is what was measured', () => {

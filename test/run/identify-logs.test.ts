@@ -103,6 +103,27 @@ describe('the demo coast-down', () => {
     expectClose(assumed.fit.cda.value / result.fit.cda.value, 2 / density, 1e-9);
   });
 
+  test('says in page and data that a table over yaw gave way to one drag area', () => {
+    const own = new TextDecoder()
+      .decode(read(vehicle))
+      .replace(
+        /^road_load:.*\n(?: .*\n)*/m,
+        'road_load: {cda_table: [{yaw_deg: 0, cda_m2: 0.5}, {yaw_deg: 18, cda_m2: 0.6}], crr: 0.01}\n',
+      );
+    const replaced = identifyLogs({
+      logs: ['logs/gallop-field-coast-down.csv'],
+      vehicle: 'own.yaml',
+      read: (name) => (name === 'own.yaml' ? new TextEncoder().encode(own) : read(name)),
+      ...WEATHER,
+    });
+    expect(replaced.text).not.toContain('cda_table');
+    const { warnings } = JSON.parse(identificationJson(replaced, 'v.yaml', []));
+    expect(warnings).toEqual([expect.objectContaining({ code: 'road-load-replaced' })]);
+    expect(renderIdentification(replaced, { units: 'kmh', output: 'v.yaml' })).toContain(
+      'a side wind no longer changes it',
+    );
+  });
+
   test('refuses the air twice', () => {
     expect(() => identified('coast-down', { vehicle, ...WEATHER, airDensityKgM3: 1.2 })).toThrow(
       'given twice',
