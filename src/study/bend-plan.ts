@@ -8,13 +8,14 @@ import type { Vehicle } from '../vehicle/vehicle.ts';
 import { askedHold } from './asked-hold.ts';
 import type { Stretch } from './findings.ts';
 import { type HoldCourse, nominalCourse } from './hold-course.ts';
+import { type Gaining, gainedAt } from './way-to-gain.ts';
 
 /** The vehicle may come to a bend this much faster than the set speed and still be slow enough at its beginning [m/s]. */
 const SPARE = fromKmh(5);
 /** Slower by less than this is no reason to brake again [m/s]. */
 const SAME = fromKmh(0.5);
 
-/** Behind a bend that is slower than the unit holds the rider gains speed by hand at this [m/s2]: an assumption. */
+/** Behind a bend that is slower than the unit holds the rider gains speed by hand at this, where the drive has it [m/s2]: an assumption. */
 const GAINS = 1;
 
 /** How the rider rides bends. SI. */
@@ -84,7 +85,7 @@ export interface BendRide {
  *    rider's deceleration from the end of this one.
  * 3. Bends with less than the shortest hold between resuming and braking again are one stop: the rider stays on the
  *    throttle, at the lowest speed so far, and brakes again where a bend asks for less.
- * 4. Behind a bend slower than the unit holds the rider first gains the set speed by hand.
+ * 4. Behind a bend slower than the unit holds the rider first gains the set speed by hand, at 1 m/s2 or as the drive can (gainedAt).
  * 5. Braking begins so early that a vehicle 5 km/h above the set speed is slow enough at the beginning of the bend.
  *
  * Written acts come first: they stay where they are, inside of a stop too. A bend's resume is left out where hold was
@@ -105,7 +106,15 @@ export function planBends(
   const speeds = reachable(bends, riding.deceleration);
   const end = road.distance[road.size - 1]!;
   const lowest = (ride.unit?.lowestSpeed ?? 0) / (1 + vehicle.sensor.scaleError);
-  const groups = grouped(bends, speeds, { ...riding, speedAt, lowest, end });
+  const gaining = {
+    road,
+    vehicle,
+    shifts: rider.shifts,
+    acceleration: GAINS,
+    goalAt: speedAt,
+    enough: lowest + SAME,
+  };
+  const groups = grouped(bends, speeds, { ...riding, speedAt, end, gaining });
   const written = rider.acts ?? [];
   const stops = groups.map((group): BendStop => {
     const { to, first, last } = group;
@@ -166,10 +175,9 @@ type Group = Stretch & Pick<BendStop, 'first' | 'last' | 'gainsFrom'>;
 /** What decides which bends are one stop. */
 interface Grouping extends BendRiding {
   readonly speedAt: (distance: number) => number;
-  /** That the unit holds, true [m/s]. */
-  readonly lowest: number;
   /** Of the road [m]. */
   readonly end: number;
+  readonly gaining: Gaining;
 }
 
 function grouped(bends: readonly Bend[], speeds: readonly number[], grouping: Grouping): Group[] {
@@ -182,7 +190,7 @@ function grouped(bends: readonly Bend[], speeds: readonly number[], grouping: Gr
     const before = groups.at(-1);
     const joins = before !== undefined && from - before.to < shortestHold * speedAt(before.to);
     inHand = joins ? Math.min(inHand, speed) : speed;
-    const behind = { ...resumeBehind(bend, inHand, grouping), last: i };
+    const behind = { ...resumeBehind(bend, bends[i + 1] ?? null, inHand, grouping), last: i };
     if (joins) groups[groups.length - 1] = { ...before, ...behind };
     else groups.push({ from, first: i, ...behind });
   });
@@ -192,14 +200,16 @@ function grouped(bends: readonly Bend[], speeds: readonly number[], grouping: Gr
 /** Where the rider resumes behind a bend with a speed in hand, and where they gain speed for it. */
 function resumeBehind(
   bend: Bend,
+  next: Bend | null,
   inHand: number,
-  { resumesAfter, lowest, speedAt, end }: Grouping,
+  { resumesAfter, end, gaining }: Grouping,
 ): Pick<Group, 'to' | 'gainsFrom'> {
   const place = bend.to + resumesAfter * inHand;
-  if (inHand >= lowest + SAME) return { to: Math.min(end, place), gainsFrom: null };
-  const goal = speedAt(place);
-  const way = Math.max(0, goal * goal - inHand * inHand) / (2 * GAINS);
-  return { to: Math.min(end, place + way), gainsFrom: Math.min(end, place) };
+  if (inHand >= gaining.enough) return { to: Math.min(end, place), gainsFrom: null };
+  const gainsFrom = Math.min(end, place);
+  // What is not gained before the next bend makes one stop with it.
+  const until = Math.max(gainsFrom, Math.min(end, next?.from ?? end));
+  return { to: gainedAt(gaining, gainsFrom, until, inHand), gainsFrom };
 }
 
 /** Whether hold was on before a stop by what is written, and nothing written in it ends hold. */

@@ -1,11 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import type { HoldPlan, RiderAct, RiderDeed } from '../../src/loop/plan.ts';
+import { runLoop } from '../../src/loop/run-loop.ts';
 import { seededStream } from '../../src/numeric/random.ts';
 import type { Road } from '../../src/road/road.ts';
 import { type BendRiding, planBends } from '../../src/study/bend-plan.ts';
 import { expectClose } from '../compare.ts';
 import { roadOf } from './road-of.ts';
-import { vehicleOf } from './vehicle-of.ts';
+import { piOf, planOf, vehicleOf } from './vehicle-of.ts';
 
 const RIDING: BendRiding = { maxLateral: 2.5, deceleration: 2, resumesAfter: 2, shortestHold: 20 };
 const SET = 25;
@@ -32,13 +33,19 @@ function roadWith(circles: readonly Circle[], length = 6000): Road {
 
 function plan(
   circles: readonly Circle[],
-  more: { acts?: RiderAct[]; hold?: HoldPlan; lowest?: number; riding?: Partial<BendRiding> } = {},
+  more: {
+    acts?: RiderAct[];
+    hold?: HoldPlan;
+    lowest?: number;
+    riding?: Partial<BendRiding>;
+    peakForce?: number;
+  } = {},
 ) {
-  const { acts = [], hold = HOLD, lowest = 0, riding = {} } = more;
+  const { acts = [], hold = HOLD, lowest = 0, riding = {}, peakForce = 600 } = more;
   return planBends(
     {
       road: roadWith(circles),
-      vehicle: vehicleOf(),
+      vehicle: vehicleOf({ drive: { peakForce } }),
       hold,
       rider: { brakesAbove: null, shifts: [], ...(acts.length > 0 ? { acts } : {}) },
       unit: { lowestSpeed: lowest, tap: 1, tapRamp: null },
@@ -110,9 +117,44 @@ describe('the plan of bends', () => {
     const { plan: bends, acts } = plan(bend, { lowest: 12 });
     expect(acts.map(({ does }) => does.kind)).toEqual(['brake', 'ride', 'resume']);
     expect(acts[1]?.does).toEqual({ kind: 'ride', to: SET, acceleration: 1 });
-    expectClose(place(acts[2]!) - place(acts[1]!), (SET ** 2 - allowed(40) ** 2) / 2, 1e-9);
+    expectClose(place(acts[2]!) - place(acts[1]!), (SET ** 2 - allowed(40) ** 2) / 2, 1e-8);
     expect(bends.unfit).toMatchObject([{ reason: 'below_lowest', bends: 1 }]);
     expect(plan(bend, { lowest: 9 }).acts.map(({ does }) => does.kind)).toEqual(['brake', 'resume']);
+  });
+
+  it('grants the way that full throttle takes where the drive gains less than the rider asks for', () => {
+    const bend = [{ at: 2000, length: 100, radius: 40 }];
+    // d(v^2)/dx = 2 (F - r - k v^2) / m: with w^2 = (F - r) / k the way is m / (2 k) ln((w^2 - u^2) / (w^2 - v^2)).
+    const [mass, k, roll] = [220, 0.5 * 1.2 * 0.58, 215 * 9.80665 * 0.014];
+    const square = (300 - roll) / k;
+    const way = (mass / (2 * k)) * Math.log((square - allowed(40) ** 2) / (square - SET ** 2));
+    const { acts } = plan(bend, { lowest: 12, peakForce: 300 });
+    expectClose(place(acts[2]!) - place(acts[1]!), way, 0.002 * way);
+    // 1 m/s2 would take 262 m.
+    expect(way).toBeGreaterThan(450);
+    // Ridden, the speed is there where the rider resumes.
+    const { holdEvents } = runLoop(
+      planOf(roadWith(bend), vehicleOf({ drive: { peakForce: 300 } }), piOf(), {
+        hold: HOLD,
+        rider: { brakesAbove: null, shifts: [], acts },
+      }),
+    );
+    const resumed = holdEvents!.find(({ kind }) => kind === 'resumed')!;
+    expectClose(resumed.measured, SET, 0.5);
+  });
+
+  it('resumes where full throttle gains no more, if the unit holds that speed', () => {
+    const bend = [{ at: 2000, length: 100, radius: 40 }];
+    // In the long run 240 N give sqrt((240 - 29.5) / 0.348) = 24.6 m/s; at 0.05 m/s2, 11 N less, 23.9 m/s.
+    const { acts } = plan(bend, { lowest: 12, peakForce: 240 });
+    const [mass, k, roll] = [220, 0.5 * 1.2 * 0.58, 215 * 9.80665 * 0.014];
+    const square = (240 - roll) / k;
+    const way = (mass / (2 * k)) * Math.log((square - allowed(40) ** 2) / (square - (240 - roll - 11) / k));
+    expect(acts.at(-1)?.does.kind).toBe('resume');
+    // Steps of 5 m.
+    expectClose(place(acts[2]!) - place(acts[1]!), way, 6);
+    // Never fast enough for the unit: the rider rides by hand to the end.
+    expect(plan(bend, { lowest: 24.5, peakForce: 240 }).acts.map(({ does }) => does.kind)).toEqual(['brake']);
   });
 
   it('resumes between bends that are far enough apart, at the set speed', () => {
