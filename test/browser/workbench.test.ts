@@ -223,9 +223,8 @@ describe.each([
 ] as const)('the page at %i px, %s', (width, scheme) => {
   it('breaks no rule of accessibility that a machine can check, and does not scroll sideways', async () => {
     const { page, context } = await open(join(dist, 'workbench.html'), width, scheme);
-    // The sections are those of the report, which has this test of its own.
     const violations = async () => {
-      const found = await new AxeBuilder({ page }).setLegacyMode().exclude('#sections section').analyze();
+      const found = await new AxeBuilder({ page }).setLegacyMode().analyze();
       return found.violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html.slice(0, 200)}`);
     };
     const over = () =>
@@ -236,8 +235,12 @@ describe.each([
     await settled(page);
     await page.locator('summary', { hasText: 'Drive' }).click();
     await page.locator('#fields input[type=text]').first().fill('-1');
-    expect(await violations()).toEqual([]);
     expect(await over()).toBe(0);
+    // What is in the sections is the report's, which has this test of its own.
+    await page.evaluate(() => {
+      for (const one of document.querySelectorAll('#sections section > div')) one.replaceChildren();
+    });
+    expect(await violations()).toEqual([]);
     await context.close();
   });
 });
