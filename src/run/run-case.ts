@@ -19,6 +19,7 @@ import { judge } from '../study/judge.ts';
 import { findLimitCycles } from '../study/limit-cycles.ts';
 import { type LoopSheet, loopSheet } from '../study/loop-sheet.ts';
 import { operatingPoints } from '../study/operating-points.ts';
+import { outOfRange } from '../study/out-of-range.ts';
 import { segmentRuns, segmentsByLength } from '../study/segments.ts';
 import { segmentsByTerrain } from '../study/terrain-segments.ts';
 import { visitsOfDemand, visitsOfRecord } from '../study/visited-points.ts';
@@ -114,7 +115,7 @@ export function runWithoutMatrix({
   const cycles = findLimitCycles({ road, demand, replayed, onCandidate: within(CYCLES) });
   const segments =
     segmenting.by === 'length' ? segmentsByLength(road, segmenting.length) : segmentsByTerrain(road);
-  const followed = followHolds(replayed);
+  const followed = followHolds(replayed, outOfRange(road, demand));
   const context = { road, demand, hills, holds: followed.measures };
   const figures = compareCandidates(replayed, context, band);
   const spread = figureSpread(requirements, replayed, context, { onRoad: within(SPREAD) });

@@ -35,7 +35,7 @@ export const HOLD_ROWS: readonly FigureRow[] = [
     'Sag at engaging',
     'km/h',
     'event',
-    'Furthest below the set speed behind an engaging, until 3 s within 1 km/h of it or what comes next on the way; the worst of all. Also for holdable, all of the road.',
+    'Furthest below the set speed behind an engaging, over the whole time that it is followed: to what comes next on the way, to where the drive cannot hold the set speed, or for a minute; the worst of all. Also for holdable, all of the road.',
     engageSag,
   ),
   row(
@@ -43,7 +43,7 @@ export const HOLD_ROWS: readonly FigureRow[] = [
     'Overshoot of a resume',
     'km/h',
     'event',
-    'Furthest above the set speed behind a resume, from where the reference has arrived at it, until 3 s within 1 km/h or what comes next on the way; the worst of all. Also for holdable, all of the road.',
+    'Furthest above the set speed behind a resume, from where the reference has arrived at it, over the whole time that it is followed: to what comes next on the way, to where the drive cannot hold the set speed, or for a minute; the worst of all. Also for holdable, all of the road.',
     resumeOvershoot,
   ),
   row(
@@ -51,7 +51,7 @@ export const HOLD_ROWS: readonly FigureRow[] = [
     'Settling of a resume',
     's',
     'event',
-    'From a resume to the start of 3 s within 1 km/h of the set speed; the longest of all. Also for holdable, all of the road.',
+    'From a resume to where the speed stays within 1 km/h of the set speed for as long as it is followed (to what comes next on the way, to where the drive cannot hold the set speed, or for a minute), 3 s at least; the longest of all. A speed that passes through and leaves again has not settled. Also for holdable, all of the road.',
     resumeSettling,
   ),
   row(

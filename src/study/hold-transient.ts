@@ -6,23 +6,33 @@ import type { HoldOff } from './hold-off.ts';
 export const NEXT_CAME = 'what came next on the way came first';
 
 /** Said of one that had the time and the road for it. */
-export const NOT_SETTLED = 'it was not within 1 km/h for 3 s in a minute';
+export const NOT_SETTLED = 'it did not come to stay within 1 km/h in a minute';
 
-/** What follows an event of the hold, from the event to where the speed has settled or the next one comes. */
+/** Said of one that the drive had no force for. */
+export const OUT_OF_RANGE = 'the drive could not hold the set speed there';
+
+/**
+ * What follows an event of the hold, over the whole time that it is followed: to the next event or change of set speed, to
+ * where the set speed asks for more or less than the drive has, or for a minute; with hold off for 10 s. What the road
+ * does in that time is in it too, alike for all candidates.
+ */
 export interface HoldMeasure {
   readonly candidate: string;
   readonly event: HoldEvent;
   /** Jump of the command at the event, within its limits, without its sign: 0 is bumpless. Of an override at the sample at which hold is back. */
   readonly commandStep: Figure;
   /**
-   * Furthest below and above the set speed on the way, in true speed [m/s], signed: 0 where it never was on that side. Of
+   * Furthest below and above the set speed in that time, in true speed [m/s], signed: 0 where it never was on that side. Of
    * a resume from where the reference has arrived, of taps from where the speed has, behind an override from where hold is back.
    */
   readonly lowest: Figure;
   readonly highest: Figure;
-  /** From the event to the start of 3 s within 1 km/h of the set speed [s]. */
+  /**
+   * From the event to where the speed is within 1 km/h of the set speed for the rest of that time, 3 s of it at least
+   * [s]. Not the first 3 s within, at which a recovery is over: a slow loop passes through the band and goes on.
+   */
   readonly settling: Figure;
-  /** Greatest |da/dt| on the way, over 0.2 s [m/s3]. */
+  /** Greatest |da/dt| in that time, over 0.2 s [m/s3]. */
   readonly jerk: Figure;
 }
 

@@ -1,7 +1,7 @@
 import { nearestCheckpoint, replay } from '../loop/replay.ts';
 import type { FullSeries, HoldEvent, HoldEventKind, LoopResult } from '../loop/result.ts';
 import { throttleRange } from '../vehicle/throttle-range.ts';
-import type { Figure, Replayed } from './findings.ts';
+import type { Figure, Replayed, Stretch } from './findings.ts';
 import { courseOfRun, type HoldCourse, trueSpeedFactor } from './hold-course.ts';
 import { isByRule } from './hold-off.ts';
 import {
@@ -10,6 +10,7 @@ import {
   type HoldTransients,
   NEXT_CAME,
   NOT_SETTLED,
+  OUT_OF_RANGE,
 } from './hold-transient.ts';
 import { type MeasuredTransient, measureTransient, sampleAtTime } from './measure-transient.ts';
 import { thinSeries } from './series-measures.ts';
@@ -43,11 +44,12 @@ interface Kept extends Followed {
 /**
  * What follows every event of the hold of a run, by replay from the nearest checkpoint, every sample looked at.
  *
+ * @param out where the set speed is out of the range of the drive, in order: a transient is followed up to there
  * @returns in order along the way; empty for a run without events
  */
-export function holdMeasures(replayed: Replayed): readonly HoldMeasure[] {
+export function holdMeasures(replayed: Replayed, out: readonly Stretch[]): readonly HoldMeasure[] {
   const course = courseOfRun(replayed);
-  return eventsOf(replayed).map((at) => follow(replayed, course, at).measure);
+  return eventsOf(replayed).map((at) => follow(replayed, { course, out }, at).measure);
 }
 
 /** What follows the events of all candidates. */
@@ -57,8 +59,8 @@ export interface FollowedHolds {
   readonly measures: ReadonlyMap<LoopResult, readonly HoldMeasure[]>;
 }
 
-/** The transients of all candidates: figures of all, pictures of the worst few of one kind and candidate. */
-export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
+/** The transients of all candidates: figures of all, pictures of the worst few of one kind and candidate; `out` as above. */
+export function followHolds(candidates: readonly Replayed[], out: readonly Stretch[]): FollowedHolds {
   const measures = new Map<LoopResult, readonly HoldMeasure[]>();
   const shown: HoldTransient[] = [];
   const leftOut: HoldTransients['leftOut'][number][] = [];
@@ -69,7 +71,7 @@ export function followHolds(candidates: readonly Replayed[]): FollowedHolds {
     const worst = new Map(FOLLOWED.map((kind): [HoldEventKind, Kept[]] => [kind, []]));
     const dropped = new Map<HoldEventKind, number>();
     for (const at of eventsOf(replayed)) {
-      const followed = { ...follow(replayed, course, at), at };
+      const followed = { ...follow(replayed, { course, out }, at), at };
       all.push(followed.measure);
       const { kind } = followed.measure.event;
       const alike = worst.get(kind) ?? [];
@@ -104,7 +106,13 @@ export function badness({ event, settling, lowest, highest, jerk }: HoldMeasure)
   return unsettled + Math.max(size(lowest), size(highest));
 }
 
-function follow(replayed: Replayed, course: HoldCourse, at: number): Followed {
+/** What a transient is cut short by, beside the events of its run. */
+interface Way {
+  readonly course: HoldCourse;
+  readonly out: readonly Stretch[];
+}
+
+function follow(replayed: Replayed, { course, out }: Way, at: number): Followed {
   const { plan, result } = replayed;
   const events = result.holdEvents ?? [];
   const event = events[at]!;
@@ -112,30 +120,33 @@ function follow(replayed: Replayed, course: HoldCourse, at: number): Followed {
   const speed = Math.max(event.measured, event.setSpeed) * toTrue;
   const off = event.kind === 'ended';
   const next = endedBy(events, at, course);
+  const left = leavesRange(out, event.distance);
   const longest = off ? LONGEST_OFF : LONGEST;
   const horizon = event.distance + (longest + TAIL) * speed;
-  const to = Math.min(next.place, horizon, result.endDistance);
+  const to = Math.min(next, left, horizon, result.endDistance);
   const from = Math.max(0, event.distance - LEAD * speed);
   const { series } = replay(plan, nearestCheckpoint(result, from), to, from);
-  const unsettled = to === next.place ? NEXT_CAME : to === horizon ? NOT_SETTLED : RUN_ENDED;
+  const isOut = out.some((stretch) => event.distance >= stretch.from && event.distance < stretch.to);
+  const never = isOut ? OUT_OF_RANGE : NOT_SETTLED;
+  const unsettled = to === next ? NEXT_CAME : to === left ? OUT_OF_RANGE : to === horizon ? never : RUN_ENDED;
   const range = throttleRange(plan.vehicle);
-  const window = { candidate: replayed.name, range, events, at, longest, unsettled };
+  const window = { candidate: replayed.name, range, events, at, longest, never, unsettled };
   return { ...measureTransient(series, window), series };
 }
 
 /** The event, or the change of set speed, that a transient ends at. */
-function endedBy(
-  events: readonly HoldEvent[],
-  at: number,
-  { changes }: Pick<HoldCourse, 'changes'>,
-): { readonly place: number } {
+function endedBy(events: readonly HoldEvent[], at: number, { changes }: Pick<HoldCourse, 'changes'>): number {
   const { kind, distance } = events[at]!;
   const ends = ({ kind: other }: HoldEvent): boolean =>
     other !== 'refused' && !(kind === 'override_ended' && other === 'reentered');
   const event = events.slice(at + 1).find(ends)?.distance ?? Number.POSITIVE_INFINITY;
   const change = changes.find((one) => one.at > distance)?.at ?? Number.POSITIVE_INFINITY;
-  return { place: Math.min(event, change) };
+  return Math.min(event, change);
 }
+
+/** Where the demand leaves the range next [m]. */
+const leavesRange = (out: readonly Stretch[], distance: number): number =>
+  out.find(({ from }) => from > distance)?.from ?? Number.POSITIVE_INFINITY;
 
 function endOfTail(series: FullSeries, last: number): number {
   const until = (series.time[Math.max(0, last - 1)] ?? 0) + TAIL;

@@ -9,6 +9,7 @@ import { courseOfRun } from './hold-course.ts';
 import { holdOff, isByRule } from './hold-off.ts';
 import type { HoldMeasure, HoldRecord } from './hold-transient.ts';
 import { type FollowedHolds, holdMeasures } from './hold-transients.ts';
+import { outOfRange } from './out-of-range.ts';
 import { qualityOfRun } from './run-quality.ts';
 import { withUnit } from './wording.ts';
 
@@ -82,7 +83,9 @@ export function recordOf(
     greatestCommand: throttleRange(plan.vehicle).greatest,
     events: eventsOf(replayed, hills),
     quality: once(() => qualityOfRun(road, plan.vehicle, result.bins, chosen)),
-    hold: once(() => holdRecordOf(replayed, where, holds?.get(result))),
+    hold: once(() =>
+      holdRecordOf(replayed, where, holds?.get(result) ?? holdMeasures(replayed, outOfRange(road, demand))),
+    ),
   };
 }
 
@@ -98,16 +101,12 @@ function eventsOf(replayed: Replayed, hills: readonly RecoveredHill[]): number[]
 }
 
 /** Events in the stretch; all of them for `holdable`: where hold is off or coming back, nothing is holdable. */
-function holdRecordOf(
-  replayed: Replayed,
-  where: Where,
-  known: readonly HoldMeasure[] | undefined,
-): HoldRecord {
+function holdRecordOf(replayed: Replayed, where: Where, measures: readonly HoldMeasure[]): HoldRecord {
   const inside = (place: number): boolean =>
     typeof where === 'string' || (place >= where.from && place < where.to);
   const { plan, result } = replayed;
   return {
-    measures: (known ?? holdMeasures(replayed)).filter(({ event }) => inside(event.distance)),
+    measures: measures.filter(({ event }) => inside(event.distance)),
     off: holdOff(plan, result).filter(({ from }) => inside(from)),
     endedByRule: (result.holdEvents ?? [])
       .filter((event) => event.kind === 'ended' && isByRule(event) && inside(event.distance))

@@ -1,6 +1,6 @@
 import type { FullSeries, HoldEvent } from '../loop/result.ts';
 import type { Figure } from './findings.ts';
-import { type HoldMeasure, NOT_SETTLED } from './hold-transient.ts';
+import type { HoldMeasure } from './hold-transient.ts';
 import { RECOVERED_BAND, RECOVERED_FOR } from './recovery.ts';
 import { errorAt, sampleAt } from './series-measures.ts';
 
@@ -24,7 +24,8 @@ export interface TransientWindow {
   readonly at: number;
   /** It is followed for so long [s]. */
   readonly longest: number;
-  /** Why it has no settling where the series ends before `longest` has passed. */
+  /** Why it has no settling where it had all of that time, and where the series ends before. */
+  readonly never: string;
   readonly unsettled: string;
 }
 
@@ -41,20 +42,16 @@ export interface MeasuredTransient {
  */
 export function measureTransient(
   series: FullSeries,
-  { candidate, range, events, at, longest, unsettled }: TransientWindow,
+  { candidate, range, events, at, longest, never, unsettled }: TransientWindow,
 ): MeasuredTransient {
   const event = events[at]!;
   const first = Math.min(sampleAtTime(series, event.time), Math.max(0, series.size - 1));
   const off = event.kind === 'ended';
   const settled = off ? null : settledAt(series, first, event.time + longest);
   const seen = series.time[series.size - 1] ?? 0;
-  const why = seen >= event.time + longest + RECOVERED_FOR ? NOT_SETTLED : unsettled;
-  const lastTime = Math.min(
-    settled === null ? Number.POSITIVE_INFINITY : series.time[settled]! + RECOVERED_FOR,
-    event.time + longest,
-  );
-  const last = Math.min(series.size, sampleAtTime(series, lastTime) + 1);
-  const from = countedFrom(events, at, series, first);
+  const why = seen >= event.time + longest + RECOVERED_FOR ? never : unsettled;
+  const last = Math.min(series.size, sampleAtTime(series, event.time + longest) + 1);
+  const from = countedFrom(events, at, series, first, last);
   return {
     last,
     measure: {
@@ -89,16 +86,22 @@ function stepAt(
     : { none: NOT_BACK };
 }
 
-/** Sample at which 3 s within 1 km/h of the set speed begin, up to a time [s]; null: none do. */
+/**
+ * Sample from which the speed stays within 1 km/h of the set speed up to a time [s] or the end of the series, for 3 s at
+ * least: those may end behind that time. A slow loop that crosses the band and leaves it again has not settled there.
+ */
 function settledAt(series: FullSeries, first: number, latest: number): number | null {
   let inside = -1;
   for (let i = first; i < series.size; i++) {
-    if (inside < 0 && series.time[i]! > latest) return null;
+    const time = series.time[i]!;
+    const stayed = inside >= 0 && series.time[i - 1]! - series.time[inside]! >= RECOVERED_FOR - 1e-9;
+    if (time > latest && (inside < 0 || stayed)) break;
     if (Math.abs(errorAt(series, i)) > RECOVERED_BAND) inside = -1;
     else if (inside < 0) inside = i;
-    if (inside >= 0 && series.time[i]! - series.time[inside]! >= RECOVERED_FOR - 1e-9) return inside;
+    if (time > latest && inside < 0) break;
   }
-  return null;
+  if (inside < 0) return null;
+  return series.time[series.size - 1]! - series.time[inside]! >= RECOVERED_FOR - 1e-9 ? inside : null;
 }
 
 /** Sample from which the extremes count, or why none does. */
@@ -107,21 +110,21 @@ function countedFrom(
   at: number,
   series: FullSeries,
   first: number,
+  last: number,
 ): number | { readonly none: string } {
   const { kind } = events[at]!;
   if (kind === 'ended') return { none: HOLD_OFF };
   if (kind === 'override_ended') {
     const back = events[at + 1];
-    const i = back?.kind === 'reentered' ? sampleAtTime(series, back.time) : series.size;
-    return i < series.size ? i : { none: NOT_BACK };
+    const i = back?.kind === 'reentered' ? sampleAtTime(series, back.time) : last;
+    return i < last ? i : { none: NOT_BACK };
   }
   if (kind === 'engaged') return first;
   if (kind === 'tapped') {
-    for (let i = first + 1; i < series.size; i++)
-      if (errorAt(series, i) * errorAt(series, first) < 0) return i;
+    for (let i = first + 1; i < last; i++) if (errorAt(series, i) * errorAt(series, first) < 0) return i;
     return { none: NOT_BEYOND };
   }
-  for (let i = first; i < series.size; i++)
+  for (let i = first; i < last; i++)
     if (Math.abs(series.reference[i]! - series.setSpeed[i]!) <= ARRIVED) return i;
   return { none: NOT_ARRIVED };
 }
@@ -133,8 +136,7 @@ function extremes(
 ): Pick<HoldMeasure, 'lowest' | 'highest'> {
   if (typeof from !== 'number') return { lowest: from, highest: from };
   let [lowest, highest] = [0, 0];
-  // Where it settles before the reference arrives, the sample of the arrival counts.
-  for (let i = from; i < Math.max(last, Math.min(from + 1, series.size)); i++) {
+  for (let i = from; i < last; i++) {
     lowest = Math.min(lowest, errorAt(series, i));
     highest = Math.max(highest, errorAt(series, i));
   }

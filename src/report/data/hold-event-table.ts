@@ -80,19 +80,20 @@ export const HOLD_EVENT_COLUMNS: readonly Column<Rows>[] = [
   {
     name: 'lowest_kmh',
     decimals: 4,
-    about: 'furthest below the set speed behind it, true speed, negative; 0 where it never was below',
+    about:
+      'furthest below the set speed for as long as it is followed, true speed, negative; 0 where it never was below',
     value: followed(({ lowest }) => lowest, toKmh),
   },
   {
     name: 'highest_kmh',
     decimals: 4,
-    about: 'furthest above the set speed behind it; 0 where it never was above',
+    about: 'furthest above the set speed for as long as it is followed; 0 where it never was above',
     value: followed(({ highest }) => highest, toKmh),
   },
   {
     name: 'settling_s',
     decimals: 3,
-    about: 'to the start of 3 s within 1 km/h of the set speed',
+    about: 'to where it stays within 1 km/h of the set speed for as long as it is followed, 3 s at least',
     value: followed(({ settling }) => settling, same),
   },
   {

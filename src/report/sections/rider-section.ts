@@ -127,7 +127,7 @@ function ruleList(view: View): Html | null {
 function pictures(view: View, moments: readonly HoldMoment[]): Html {
   const total = MOMENT_KINDS.reduce((sum, kind) => sum + momentsOf(view.result.transients, kind).length, 0);
   return html`<h3>What followed</h3>
-<p>${moments.length < total && `The worst ${moments.length} of ${total} moments, at most two of a kind. `}Time counts from the event, the upright line. Above: speed, the set speed dotted, in dashes what the first of the designs aims at. Below: the command, and the limits of the throttle. Hatched: that design's hold is off; shaded: the grip has the throttle. Lowest and highest are measured from the set speed; of a resume from where its ramp has arrived, of an override from where hold is back.</p>
+<p>${moments.length < total && `The worst ${moments.length} of ${total} moments, at most two of a kind. `}Time counts from the event, the upright line. Above: speed, the set speed dotted, in dashes what the first of the designs aims at. Below: the command, and the limits of the throttle. Hatched: that design's hold is off; shaded: the grip has the throttle. Lowest and highest are measured from the set speed; of a resume from where its ramp has arrived, of an override from where hold is back. Each is followed to what comes next on the way, to where the drive cannot hold the set speed, or for a minute; settled is where the speed stays within 1 km/h for the rest of that time.</p>
 ${candidateKey(view.candidates, PAGE_PAINT)}
 <div class="cards">${moments.map((moment, i) => card(view, moment, i + 1))}</div>`;
 }
