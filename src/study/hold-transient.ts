@@ -32,7 +32,7 @@ export interface HoldMeasure {
    * [s]. Not the first 3 s within, at which a recovery is over: a slow loop passes through the band and goes on.
    */
   readonly settling: Figure;
-  /** Greatest |da/dt| in that time, over 0.2 s [m/s3]. */
+  /** Greatest |da/dt| in that time, over 0.2 s [m/s3]; of an end by the rider's brake, for a bend too, none: it is the rider's. */
   readonly jerk: Figure;
 }
 

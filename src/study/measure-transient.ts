@@ -10,6 +10,7 @@ const JERK_OVER = 0.2;
 const ARRIVED = 1e-6;
 
 const HOLD_OFF = 'hold is off';
+const BRAKE = "the rider's brake";
 const NOT_BACK = 'hold did not come back first';
 const NOT_BEYOND = 'it does not go beyond the new set speed';
 const NOT_ARRIVED = 'the reference did not arrive at the set speed first';
@@ -60,10 +61,14 @@ export function measureTransient(
       commandStep: stepAt(range, events, at, series, first),
       ...extremes(series, from, last),
       settling: settled === null ? { none: off ? HOLD_OFF : why } : series.time[settled]! - event.time,
-      jerk: greatestJerk(series, first, last),
+      jerk: isBraking(event) ? { none: BRAKE } : greatestJerk(series, first, last),
     },
   };
 }
+
+/** Hold ends by a brake: what is felt is the rider's doing, no design's. */
+const isBraking = ({ kind, cause }: HoldEvent): boolean =>
+  kind === 'ended' && (cause === 'brake' || cause === 'bend');
 
 /** First sample at or behind a time. */
 export const sampleAtTime = (series: FullSeries, time: number): number =>

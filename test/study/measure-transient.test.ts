@@ -124,6 +124,16 @@ describe('a transient', () => {
     );
   });
 
+  it('has no jerk where the rider brakes, and that of a rule or of a grip let go', () => {
+    const acceleration = (t: number): number => (t < 0 ? 0 : -4);
+    const jerk = (cause: HoldEvent['cause']) =>
+      measure(course({ error: () => 0, acceleration }), [{ ...event('ended'), cause }], 10).jerk;
+    for (const cause of ['brake', 'bend'] as const)
+      expect(jerk(cause)).toEqual({ none: "the rider's brake" });
+    for (const cause of ['rider', 'too_slow', 'clutch'] as const)
+      expectClose(jerk(cause) as number, 20, 1e-9);
+  });
+
   it('tells a slow, lightly damped loop that passes through the band by how far it goes on', () => {
     // e = -4 exp(-t / 40 s) cos(2 pi t / 48 s) m/s: within 1 km/h from 11.4 s to 12.7 s and longer at later passages,
     // highest near 24 s. tan(w t) = -1 / (40 s w) at the extreme: 22.56 s.

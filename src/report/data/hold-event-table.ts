@@ -99,7 +99,7 @@ export const HOLD_EVENT_COLUMNS: readonly Column<Rows>[] = [
   {
     name: 'jerk_m_s3',
     decimals: 3,
-    about: 'greatest change of the acceleration, over 0.2 s',
+    about: "greatest change of the acceleration, over 0.2 s; none where the rider's brake ends hold",
     value: followed(({ jerk }) => jerk, same),
   },
 ];
