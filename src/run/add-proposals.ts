@@ -8,7 +8,7 @@ import type { TuneResult } from './tune-result.ts';
 
 /** A proposal that shall become a candidate of the case. */
 export interface Addition {
-  /** Of a way to gains; or the one that costs least. */
+  /** Of a way to gains; or the one to take. */
   readonly design: (typeof TUNE_DESIGNS)[number] | 'best';
   /** null: the name that it has as a proposal. */
   readonly name: string | null;

@@ -13,6 +13,7 @@ import type { LoopPlan } from '../loop/plan.ts';
 import { runLoop } from '../loop/run-loop.ts';
 import { InputError } from '../problems/input-error.ts';
 import type { Road } from '../road/road.ts';
+import { askedHold } from '../study/asked-hold.ts';
 import { demandOf } from '../study/demand.ts';
 import { askDetail } from '../study/figure-table.ts';
 import { isNone, type Replayed } from '../study/findings.ts';
@@ -28,24 +29,26 @@ import { toKm } from '../units/convert.ts';
 import { caseNameOf } from './case-name.ts';
 import { checkSize } from './check-size.ts';
 import { InputLog } from './input-log.ts';
+import { judgeTuned } from './judge-tuned.ts';
 import { bandOf, bandsOf, loopPlans } from './loop-plans.ts';
 import { placesOnRoad } from './places-on-road.ts';
 import { type Ride, rideOf } from './ride-of.ts';
 import { roadMaker } from './road-of.ts';
 import type { RunRequest } from './run-case.ts';
 import { SCHEMA_VERSION, TOOL_VERSION } from './tool-version.ts';
+import { firstChoice } from './tune-choice.ts';
 import { type Proposed, proposalsOf } from './tune-proposals.ts';
 import type { TunedCandidate, TuneResult } from './tune-result.ts';
 
 /** Shares of the time up to the end of the operating points, the proposals, the margins. */
 const POINTS = 0.05;
-const PROPOSED = 0.88;
-const MARGINS = 0.94;
+const PROPOSED = 0.8;
+const MARGINS = 0.85;
 
 /**
  * Finds gains for a case: where its loop will run, how its candidates stand there, gains by every way that it asks for,
- * each with its margins and the figures of its replay over the road. Every proposal keeps the bound of the sensitivity at
- * every operating point, and `run` on a case with it finds the same figures.
+ * each with its margins, the figures of its replay over the road, and what the requirements of the case say of it. Every proposal keeps the bound of the sensitivity at
+ * every operating point, and `run` on a case with it finds the same figures and verdicts.
  *
  * @throws InputError for what the reader or a file refuses, as `runCase`; `nothing-to-tune` where the drive holds no
  *   speed of the case anywhere
@@ -58,7 +61,7 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
   const vehicle = vehicleOfCase(document, vehicleDocument);
   const plan = tuneOf(document, vehicleDocument);
   const road = roadMaker(document, log, file, placeOf(document.source, ['track', 'file']))(document);
-  const { bends: _, ...ride } = rideOf(document, vehicle, road);
+  const { bends, ...ride } = rideOf(document, vehicle, road);
   const requirements = requirementsOf(document);
   const warnings = placesOnRoad(document, requirements, ride, road, plan.cost);
   const scheme = schemeOf(document);
@@ -77,7 +80,8 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
   onProgress(0.01, 'operating points');
   const { points, notHeld } = pointsOf({ document, vehicle: vehicleDocument, road, plan });
   if (points.length === 0) throw nothingToTune(document);
-  const demand = demandOf(road, vehicle, ride.hold, ride.rider);
+  const asked = askedHold(ride.hold, ride.rider, ride.supervisor ?? {}, vehicle);
+  const demand = demandOf(road, vehicle, asked, ride.rider);
   const replay = (
     { name }: Pick<Candidate, 'name'>,
     planned: LoopPlan,
@@ -127,6 +131,7 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
       loop,
       keeps: loop.notLinear === null ? within : null,
       figures,
+      requirements: judgeTuned(run, among, { requirements, demand, band }),
       cost: costOf(plan.cost, run, context, band),
       runStatus: run.result.status,
     };
@@ -143,13 +148,16 @@ export function tuneCase({ file, read, overrides = [], onProgress = () => {} }: 
     vehicle,
     hold: ride.hold,
     rider: ride.rider,
+    supervisor: ride.supervisor ?? null,
+    faults: ride.faults ?? [],
+    bends,
     scheme,
     band,
     plan,
     sheet,
     tuned,
     notProposed: proposals.notProposed,
-    chosen: cheapest(ofProposals),
+    chosen: firstChoice(ofProposals)?.name ?? null,
     trials: proposals.trials,
     border: proposals.border,
     defaults: [...tuneDefaults(document), ...rideDefaults(document, vehicleDocument)],
@@ -193,13 +201,6 @@ function pointsOf({ document, vehicle, road, plan }: PointsBase): OperatingPoint
     rides,
     grid: { speeds, grades, headwinds, gears, loads, air: atSeaLevel(document) },
   });
-}
-
-function cheapest(proposals: readonly TunedCandidate[]): string | null {
-  const [first] = proposals
-    .flatMap(({ name, cost }) => (isNone(cost) ? [] : [{ name, cost }]))
-    .sort((a, b) => a.cost - b.cost);
-  return first?.name ?? null;
 }
 
 function nothingToTune(document: CaseDocument): InputError {

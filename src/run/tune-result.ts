@@ -3,10 +3,12 @@ import type { GivenValue } from '../case/given-values.ts';
 import type { DefaultUsed } from '../case/list-defaults.ts';
 import type { TuneDesign, TunePlan } from '../case/tune-of.ts';
 import type { Candidate } from '../control/setup.ts';
-import type { HoldPlan, RiderPlan, RunStatus } from '../loop/plan.ts';
+import type { SupervisorSetup } from '../control/supervisor-setup.ts';
+import type { HoldPlan, RiderPlan, RunStatus, SensorFault } from '../loop/plan.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { Road } from '../road/road.ts';
-import type { Figure, FigureValues } from '../study/findings.ts';
+import type { BendPlan } from '../study/bend-plan.ts';
+import type { Figure, FigureValues, RequirementFinding } from '../study/findings.ts';
 import type { CandidateLoop, LoopSheet } from '../study/loop-sheet.ts';
 import type { RoadTrial } from '../study/tune-search.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
@@ -24,6 +26,10 @@ export interface TuneResult {
   readonly vehicle: Vehicle;
   readonly hold: HoldPlan;
   readonly rider: RiderPlan;
+  readonly supervisor: SupervisorSetup | null;
+  readonly faults: readonly SensorFault[];
+  /** Null where the case does not ask for bends. */
+  readonly bends: BendPlan | null;
   readonly scheme: 'exact' | 'fast';
   /** Half-width of the band of the figures [m/s]. */
   readonly band: number;
@@ -33,7 +39,7 @@ export interface TuneResult {
   /** The candidates of the case, then the proposals, in their orders. */
   readonly tuned: readonly TunedCandidate[];
   readonly notProposed: readonly NotProposed[];
-  /** Name of the proposal of the least cost; null: there is none. */
+  /** Name of the proposal to take: of those that miss the fewest requirements that of the least cost; null: there is none. */
   readonly chosen: string | null;
   /** Gains tried on the road, in order; empty: none were. */
   readonly trials: readonly RoadTrial[];
@@ -55,6 +61,8 @@ export interface TunedCandidate extends Candidate {
   readonly keeps: boolean | null;
   /** Of the replay over the road of the case, as `run` finds them. */
   readonly figures: FigureValues;
+  /** What each requirement of the case that speaks of it says, as `run` finds it. */
+  readonly requirements: readonly RequirementFinding[];
   readonly cost: Figure;
   readonly runStatus: RunStatus;
 }

@@ -10,6 +10,7 @@ import { addProposals, checkAdditions, readAddition } from '../../src/run/add-pr
 import { runCase } from '../../src/run/run-case.ts';
 import { tuneCase } from '../../src/run/tune-case.ts';
 import type { TuneResult } from '../../src/run/tune-result.ts';
+import type { RequirementFinding } from '../../src/study/findings.ts';
 import { gainsAtPoint, linearAt, vehicleAt } from '../../src/study/point-margins.ts';
 
 const TEXT = `# A short road for two loads, invented.
@@ -24,7 +25,12 @@ hold: {set_speed_kmh: 50}
 candidates:
   - {name: shipped, kind: pi, sample_s: 0.05, kp_pct_per_kmh: 25, ti_s: 1.5, setpoint_weight: 0.5}   # too stiff
   - {name: calm, kind: pi, design: {settling_s: 40, overshoot_pct: 1}}
-requirements: [{id: R-1, figure: recovery_s, at_most: 60}]
+requirements:
+  - {id: R-1, figure: recovery_s, at_most: 60}
+  - {id: R-2, figure: worst_low_kmh, at_least: -0.05}   # of no loop on a hill
+  - {id: R-3, figure: recovery_s, at_most: 2, where: {from_km: 0.5, to_km: 1}}
+  - {id: R-4, figure: within_band_pct, band_kmh: 1, at_least: 50}
+  - {id: R-5, figure: rms_error_kmh, at_most: 9, candidates: [shipped]}
 tune:
   cost: [{figure: rms_error_kmh, weight: 1}, {figure: within_band_pct, weight: 0.01}, {figure: throttle_travel_pct_per_km, weight: 0.01}]
   speeds_kmh: [30, 50, 70]
@@ -118,8 +124,8 @@ describe('tuneCase', () => {
     }
   });
 
-  test('a proposal goes into the case, no other byte of which changes, and a run finds the same figures', () => {
-    for (const { name, figures, proposal } of result.tuned) {
+  test('a proposal goes into the case, no other byte of which changes, and a run finds the same figures and verdicts', () => {
+    for (const { name, figures, requirements, proposal } of result.tuned) {
       if (proposal === null) continue;
       const edited = addProposals(TEXT, 'road.yaml', result, [{ design: proposal.design, name: 'chosen' }]);
       const start = [...TEXT].findIndex((c, i) => c !== edited[i]);
@@ -127,7 +133,74 @@ describe('tuneCase', () => {
       const run = runCase(read(edited));
       const again = run.candidates.find((one) => one.name === 'chosen')!;
       expect(again.figures, name).toEqual(figures);
+      const judged = run.requirements.filter(({ candidate }) => candidate === 'chosen');
+      expect(judged.map((one) => verdictOf(one, name))).toEqual(
+        requirements.map((one) => verdictOf(one, name)),
+      );
     }
+  }, 60_000);
+
+  test('a proposal that misses a requirement is told with it, in the answer, on the page and in the data', () => {
+    const ofRun = runCase(read(TEXT)).requirements;
+    for (const { name, proposal, requirements } of result.tuned) {
+      if (proposal === null) {
+        expect(requirements).toEqual(ofRun.filter(({ candidate }) => candidate === name));
+        continue;
+      }
+      // That which names its candidates speaks of no other.
+      expect(requirements.map(({ requirement }) => requirement.id)).toEqual(['R-1', 'R-2', 'R-3', 'R-4']);
+      expect(requirements[1]).toMatchObject({ verdict: 'not met' });
+    }
+    const chosen = result.tuned.find(({ name }) => name === result.chosen)!;
+    const missed = (one: typeof chosen): readonly string[] =>
+      one.requirements
+        .filter(({ verdict }) => verdict === 'not met' || verdict === 'not judged')
+        .map(({ requirement }) => requirement.id);
+    const words = `meets ${4 - missed(chosen).length} of 4`;
+    const misses = `misses ${missed(chosen).join(', ')}`;
+    const json = JSON.parse(tuneJson(result, []));
+    const page = renderTune(result, { units: 'kmh' });
+    expect(json.answer).toContain(`(${words} requirements; ${misses})`);
+    expect(page).toContain(`>${words}; ${misses}</span>`);
+    const told = json.proposals.find(({ name }: { name: string }) => name === result.chosen);
+    expect(told.requirements[1]).toMatchObject({ id: 'R-2', verdict: 'not met' });
+    const row = proposalsCsv(result)
+      .split('\r\n')
+      .find((line) => line.startsWith(`${result.chosen},`));
+    expect(row).toContain(`,4,${missed(chosen).join(' ')},`);
+    // No proposal misses fewer; and none of those that miss as many costs less.
+    for (const one of result.tuned.filter(({ proposal }) => proposal !== null)) {
+      expect(missed(one).length).toBeGreaterThanOrEqual(missed(chosen).length);
+      if (missed(one).length === missed(chosen).length)
+        expect(one.cost as number).toBeGreaterThanOrEqual(chosen.cost as number);
+    }
+  });
+
+  test('a proposal that costs more is taken where the cheapest misses a requirement', () => {
+    const overrides = [
+      'tune.designs=[simc, rejection]',
+      'tune.cost=[{figure: rms_error_kmh, weight: 1}]',
+      'candidates=[{name: calm, kind: pi, design: {settling_s: 40, overshoot_pct: 1}}]',
+    ];
+    const requiring = (requirement: string) =>
+      tuneCase({ ...read(TEXT), overrides: [...overrides, `requirements=[${requirement}]`] });
+    const free = requiring('');
+    const [cheap, dear] = free.tuned
+      .filter(({ proposal }) => proposal !== null)
+      .sort((one, other) => (one.cost as number) - (other.cost as number));
+    expect(free.chosen).toBe(cheap!.name);
+    // The better it holds, the more it travels: a limit between the two.
+    const [more, less] = [cheap!, dear!].map((one) => one.figures.throttle_travel_pct_per_km as number);
+    expect(more!).toBeGreaterThan(less!);
+    const limited = requiring(
+      `{id: R-1, figure: throttle_travel_pct_per_km, where: all, at_most: ${(more! + less!) / 2}}`,
+    );
+    expect(limited.chosen).toBe(dear!.name);
+    // One that no gains meet changes nothing but what is said of it.
+    const hopeless = requiring('{id: R-1, figure: worst_low_kmh, at_least: -0.01}');
+    expect(hopeless.chosen).toBe(cheap!.name);
+    expect(JSON.parse(tuneJson(hopeless, [])).answer).toContain('(meets 0 of 1 requirement; misses R-1)');
+    expect(renderTune(hopeless, { units: 'kmh' })).toContain('miss requirements of the case');
   }, 60_000);
 
   test('the same case gives the same bytes', () => {
@@ -176,8 +249,8 @@ describe('tuneCase', () => {
   test('a cost may be that of a stretch, of which a requirement finds the same figure', () => {
     const stretch = '{from_km: 0.3, to_km: 0.6}';
     const text = TEXT.replace(
-      'requirements: [',
-      `requirements: [{id: R-2, figure: rms_error_kmh, where: ${stretch}, at_most: 9}, `,
+      'requirements:',
+      `requirements:\n  - {id: R-6, figure: rms_error_kmh, where: ${stretch}, at_most: 9}`,
     );
     const costing = (cost: string) =>
       tuneCase({
@@ -193,7 +266,7 @@ describe('tuneCase', () => {
     const figure = 'figure: rms_error_kmh, weight: 2';
     const [shipped] = costing(`{${figure}, where: ${stretch}}`);
     const judged = runCase(read(text)).requirements.find(
-      ({ requirement, candidate }) => requirement.id === 'R-2' && candidate === 'shipped',
+      ({ requirement, candidate }) => requirement.id === 'R-6' && candidate === 'shipped',
     )!;
     expect(shipped!.cost).toBeCloseTo(2 * (judged.measured as number), 12);
     // The hill lies there: it costs more than the whole road does.
@@ -209,6 +282,20 @@ describe('tuneCase', () => {
       .replaceAll('grade_pct: -2', 'grade_pct: 2');
     expect(codeOf(() => tuneCase(read(text)))).toBe('nothing-to-tune');
   });
+});
+
+/** All that is judged; the name of its candidate is another in the case. */
+const verdictOf = (
+  { requirement, measured, margin, spread, worstAt, verdict, words }: RequirementFinding,
+  name: string,
+) => ({
+  id: requirement.id,
+  measured,
+  margin,
+  spread,
+  worstAt,
+  verdict,
+  words: words.replace(/^chosen:/, `${name}:`),
 });
 
 const codeOf = (work: () => unknown): string => {

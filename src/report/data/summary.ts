@@ -52,7 +52,7 @@ function summaryOf(run: RunResult, files: readonly string[]): Json {
     })),
     hills: hillRows(run.hills),
     cycles: cycleRows(run.cycles),
-    requirements: run.requirements.map(requirementOf),
+    requirements: run.requirements.map(requirementJson),
     ...(asksOfHold(run) ? { hold_events: holdEventRows(run) } : {}),
     ...(run.bends === null ? {} : { bends: bendsJson(run.bends) }),
     ...(run.loggedRides.length === 0 ? {} : { logged_rides: run.loggedRides.map(rideJson) }),
@@ -166,7 +166,8 @@ function marginsOf(
   });
 }
 
-function requirementOf(finding: RequirementFinding): Json {
+/** A finding as summary.json has it. */
+export function requirementJson(finding: RequirementFinding): Json {
   const { requirement } = finding;
   const decimals = decimalsOf(requirement.figure);
   const figure = (name: string, value: Figure): Record<string, Json> =>

@@ -18,7 +18,7 @@ export function gainMapPart(view: TuneView): Section {
   const sampling =
     ' The curve is that of the sampling of the proposals; a schedule is drawn by its gains at the set speed.';
   const body = html`<p>Under the curve every loop keeps a greatest sensitivity of ${significant(result.plan.sensitivity)} at all ${result.sheet.points.length} operating points; above it, or to the right, one of them does not.</p>
-${chartFigure('gain-map', (canvas) => gainMapOf(view, canvas), `Squares: candidates of the case; diamonds: proposals; ringed: the one that costs least.${tried}${sampling}`)}`;
+${chartFigure('gain-map', (canvas) => gainMapOf(view, canvas), `Squares: candidates of the case; diamonds: proposals; ringed: the one to take.${tried}${sampling}`)}`;
   return { id: 'gains', number: 3, title: 'Where the gains lie', body };
 }
 

@@ -4,6 +4,7 @@ import type { OperatingPoint } from '../../study/operating-point.ts';
 import { toKmh, toPct, toPctPerKmh } from '../../units/convert.ts';
 import { decimalsOf } from '../data/decimals-of.ts';
 import { type Cell, type Column, csvText } from '../data/table.ts';
+import { closeIds, missedIds } from './requirement-words.ts';
 
 type Tuned = Pick<TuneResult, 'tuned' | 'sheet'>;
 
@@ -103,6 +104,24 @@ export const PROPOSAL_COLUMNS: readonly Column<Tuned>[] = [
   },
   { name: 'run_status', decimals: 0, about: 'how the replay ended', value: of(({ runStatus }) => runStatus) },
   { name: 'cost', decimals: 6, about: 'as the case defines it; empty: none', value: of(({ cost }) => cost) },
+  {
+    name: 'requirements',
+    decimals: 0,
+    about: 'requirements of the case that speak of it',
+    value: of(({ requirements }) => requirements.length),
+  },
+  {
+    name: 'missed',
+    decimals: 0,
+    about: 'ids of those that are not met, or could not be judged',
+    value: of(({ requirements }) => missedIds(requirements).join(' ') || null),
+  },
+  {
+    name: 'too_close_to_call',
+    decimals: 0,
+    about: 'ids of those whose limit lies within the spread of the figure',
+    value: of(({ requirements }) => closeIds(requirements).join(' ') || null),
+  },
   ...FIGURES.filter(({ name }) => name !== 'ledger_residual').map(
     ({ name, definition }): Column<Tuned> => ({
       name,

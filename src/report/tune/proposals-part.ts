@@ -10,6 +10,7 @@ import { NO_VALUE, significant, trimmed } from '../quantity.ts';
 import { whereWords } from '../sections/answer-section.ts';
 import type { Section } from '../sections/section.ts';
 import { table } from '../sections/table.ts';
+import { missedIds, requirementWords } from './requirement-words.ts';
 import { gainsText } from './tune-answer.ts';
 import { type TunedView, type TuneView, tunedKey } from './tune-view.ts';
 
@@ -44,10 +45,12 @@ function costWords({ result: { plan } }: TuneView): string {
 function figuresTable(view: TuneView): Html {
   const { result, tuned, speed } = view;
   const figures = [...new Set([...result.plan.cost.map(({ figure }) => figure), ...TOLD])];
+  const judged = tuned.some(({ requirements }) => requirements.length > 0);
   const row = (one: TunedView): HtmlValue[] => [
-    html`<span class="who">${tunedKey(one, PAGE_PAINT)} ${one.name}</span>${one.name === result.chosen && html`<br><span class="small">costs least of the proposals</span>`}`,
+    html`<span class="who">${tunedKey(one, PAGE_PAINT)} ${one.name}</span>${one.name === result.chosen && html`<br><span class="small">the one to take of the proposals</span>`}`,
     gainsText(one, speed),
     sensitivityCell(one, view),
+    ...(judged ? [requirementCell(one)] : []),
     isNone(one.cost) ? html`<span title="${one.cost.none}">${NO_VALUE}</span>` : significant(one.cost),
     ...figures.map((name) => figureText(one.figures[name], figureLabel(name).unit, speed)),
   ];
@@ -57,12 +60,20 @@ function figuresTable(view: TuneView): Html {
       { head: 'candidate' },
       { head: 'gains' },
       { head: 'greatest Ms' },
+      ...(judged ? [{ head: 'requirements' }] : []),
       { head: 'cost', number: true },
       ...figures.map((name) => ({ head: figureLabel(name).label.toLowerCase(), number: true })),
     ],
     tuned.map(row),
     'dense',
   );
+}
+
+function requirementCell({ requirements }: TunedView): HtmlValue {
+  if (requirements.length === 0) return html`<span title="no requirement speaks of it">${NO_VALUE}</span>`;
+  const told = requirements.filter(({ verdict }) => verdict !== 'met').map(({ words }) => words);
+  const look = missedIds(requirements).length > 0 ? 'flag' : 'within';
+  return html`<span class="${look} wrap" title="${told.join(' ')}">${requirementWords(requirements)}</span>`;
 }
 
 function sensitivityCell({ loop, keeps }: TunedView, { result, speed }: TuneView): HtmlValue {

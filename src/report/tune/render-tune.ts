@@ -46,11 +46,11 @@ export function renderTune(result: TuneResult, { units }: TuneOptions): string {
   });
 }
 
-/** Proposals that cost more are told by their margins in the table and in the file alone. */
+/** The other proposals are told by their margins in the table and in the file alone. */
 const withOthers = (section: Section, count: number): Section =>
   count === 0
     ? section
     : {
         ...section,
-        body: html`<p>The loops of the case and of the proposal that costs least; those of the other proposals stand in margins.csv.</p>${section.body}`,
+        body: html`<p>The loops of the case and of the proposal to take; those of the other proposals stand in margins.csv.</p>${section.body}`,
       };

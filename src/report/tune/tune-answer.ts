@@ -1,12 +1,14 @@
+import { byChoice, firstChoice, missedBy } from '../../run/tune-choice.ts';
 import type { TuneResult } from '../../run/tune-result.ts';
 import { isNone } from '../../study/findings.ts';
 import { placeOfPoint, sensitivityText } from '../model/point-words.ts';
 import { type SpeedUnit, significant, withUnit } from '../quantity.ts';
+import { missedIds, requirementWords } from './requirement-words.ts';
 import type { TunedView, TuneView } from './tune-view.ts';
 
 export interface TuneAnswer {
-  /** `exceeded`: there are gains to take, and a candidate of the case exceeds the bound. */
-  readonly standing: 'found' | 'kept' | 'exceeded' | 'nothing';
+  /** `exceeded`: there are gains to take, and a candidate of the case exceeds the bound; `misses`: those to take miss a requirement. */
+  readonly standing: 'found' | 'kept' | 'misses' | 'exceeded' | 'nothing';
   readonly sentence: string;
 }
 
@@ -24,26 +26,41 @@ export function tuneAnswer(view: TuneView): TuneAnswer {
       standing: 'nothing',
       sentence: `Nothing can be proposed under the bound of ${bound(result)}: ${reasons(result)}.${keptWords(ofCase)}${others}`,
     };
-  const best = cheapest(ofCase.filter(({ keeps }) => keeps === true));
+  const best = firstChoice(ofCase.filter(({ keeps }) => keeps === true));
   const points = result.sheet.points.length;
   const cost = costOf(chosen);
   const keeping =
     points === 1
       ? 'at the one operating point'
       : `at all ${points} operating points, the worst being ${worstWords(chosen, view)}`;
-  if (best !== null && costOf(best) <= cost)
+  const standing = (one: TunedView, kept: 'found' | 'kept'): TuneAnswer['standing'] =>
+    exceeds.length > 0 ? 'exceeded' : missedBy(one) > 0 ? 'misses' : kept;
+  if (best !== null && byChoice(best, chosen) <= 0)
     return {
-      standing: exceeds.length === 0 ? 'kept' : 'exceeded',
-      sentence: `Keep ${best.name}: no proposal costs less on this road (${significant(costOf(best))} against ${significant(cost)} of ${chosen.name}), and it keeps the bound of ${bound(result)} everywhere.${others}`,
+      standing: standing(best, 'kept'),
+      sentence: `Keep ${best.name}${judgedWords(best)}: ${missedBy(best) < missedBy(chosen) ? `every proposal misses more requirements (the best, ${chosen.name}, ${missedIds(chosen.requirements).join(', ')})` : `no proposal costs less on this road (${significant(costOf(best))} against ${significant(cost)} of ${chosen.name})`}, and it keeps the bound of ${bound(result)} everywhere.${others}`,
     };
   const against =
     best === null
       ? ''
-      : `, against ${significant(costOf(best))} of ${best.name}, the best of the case under the bound`;
+      : `, against ${significant(costOf(best))} of ${best.name}, the best of the case under the bound${missedBy(best) > missedBy(chosen) ? `, which misses ${missedIds(best.requirements).join(', ')}` : ''}`;
   return {
-    standing: exceeds.length === 0 ? 'found' : 'exceeded',
-    sentence: `Take ${chosen.name}, ${gainsText(chosen, view.speed)}: of ${proposals(view)} it costs least on this road (${significant(cost)}${against}), and its sensitivity keeps the bound of ${bound(result)} ${keeping}.${others}`,
+    standing: standing(chosen, 'found'),
+    sentence: `Take ${chosen.name}, ${gainsText(chosen, view.speed)}${judgedWords(chosen)}: ${chosenWords(chosen, view)} (${significant(cost)}${against}), and its sensitivity keeps the bound of ${bound(result)} ${keeping}.${others}`,
   };
+}
+
+const judgedWords = ({ requirements }: TunedView): string =>
+  requirements.length === 0 ? '' : ` (${requirementWords(requirements, 'requirement')})`;
+
+/** Why that one of the proposals: the cost, where it is the least; else that fewer requirements are missed. */
+function chosenWords(chosen: TunedView, view: TuneView): string {
+  const least = view.tuned.every(
+    ({ proposal, cost }) => proposal === null || isNone(cost) || cost >= costOf(chosen),
+  );
+  return least
+    ? `of ${proposals(view)} it costs least on this road`
+    : `none of ${proposals(view)} misses fewer requirements, and of those that miss as many it costs least on this road`;
 }
 
 const costWords = ({ cost }: TunedView): string =>
@@ -64,13 +81,6 @@ const reasons = ({ notProposed }: TuneResult): string =>
 function proposals({ tuned }: TuneView): string {
   const count = tuned.filter(({ proposal }) => proposal !== null).length;
   return count === 1 ? 'one proposal' : `${count} proposals`;
-}
-
-function cheapest(tuned: readonly TunedView[]): TunedView | null {
-  return tuned.reduce<TunedView | null>(
-    (best, one) => (costOf(one) < (best === null ? Number.POSITIVE_INFINITY : costOf(best)) ? one : best),
-    null,
-  );
 }
 
 /** Greatest sensitivity and where: `1.68 at 60 km/h, level`; or that the loop is unstable there. */

@@ -4,11 +4,12 @@ import type { OperatingPoint, PointMargins } from '../../study/operating-point.t
 import { toDeg, toKm, toKmh, toPct, toPctPerKmh } from '../../units/convert.ts';
 import { type Json, numbers, warningJson } from '../data/json-parts.ts';
 import { jsonText } from '../data/json-text.ts';
+import { requirementJson } from '../data/summary.ts';
 import { tuneAnswer } from './tune-answer.ts';
 import { tuneView } from './tune-view.ts';
 
 /** Version of the shape of tune.json, by the rule of SCHEMA_VERSION. */
-const TUNE_VERSION = '1.0';
+const TUNE_VERSION = '1.1';
 
 /**
  * tune.json: what a tuning found, for programs. No clock and no absolute path is in it. Infinite margins, where nothing
@@ -90,6 +91,7 @@ function tunedJson({
   loop,
   keeps,
   figures,
+  requirements,
   cost,
   runStatus,
 }: TunedCandidate): Json {
@@ -112,6 +114,7 @@ function tunedJson({
     run_status: runStatus,
     cost: isNone(cost) ? null : short(cost),
     ...(isNone(cost) ? { cost_reason: cost.none } : {}),
+    requirements: requirements.map(requirementJson),
     figures: numbers(figures),
   };
 }

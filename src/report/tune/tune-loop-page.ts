@@ -2,7 +2,7 @@ import { PAGE_PAINT } from '../paint.ts';
 import type { LoopPage } from '../sections/loop-section.ts';
 import { type TunedView, type TuneView, tunedKey } from './tune-view.ts';
 
-/** The loops of a tuning that are told of at length: those of the case, and that of the proposal of the least cost. */
+/** The loops of a tuning that are told of at length: those of the case, and that of the proposal to take. */
 export function tuneLoopPage({ result, speed, tuned }: TuneView): LoopPage {
   const named = (name: string): TunedView | undefined => tuned.find((one) => one.name === name);
   const loops = result.sheet.loops.filter(

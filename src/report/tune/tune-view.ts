@@ -10,7 +10,7 @@ export interface TuneView {
   readonly speed: SpeedUnit;
   /** Candidates of the case, then proposals, with the colours of their lines. */
   readonly tuned: readonly TunedView[];
-  /** The proposal of the least cost; null: none. */
+  /** The proposal to take; null: none. */
   readonly chosen: TunedView | null;
 }
 export interface TunedView extends TunedCandidate {
