@@ -1,5 +1,6 @@
 import type { CaseDocument } from '../case/read-case-file.ts';
 import { placeOf } from '../case/yaml-source.ts';
+import type { RoutePlace } from '../loop/plan.ts';
 import type { HoldEvent } from '../loop/result.ts';
 import type { Warning } from '../problems/warning.ts';
 import type { BendPlan, UnfitPlace } from '../study/bend-plan.ts';
@@ -11,7 +12,7 @@ import { atKm, inKmh, inSeconds } from '../study/wording.ts';
 /** So many ends of one kind are told one by one; the rest is counted. */
 const TOLD = 3;
 
-/** Bends where hold does not belong, acts that are written within bends; holds that rules ended or refused, and that nobody resumed. */
+/** Bends where hold does not belong, acts that are written within bends, engaging while hold is on; holds that rules ended or refused, and that nobody resumed. */
 export function holdWarnings(
   { source }: CaseDocument,
   bends: BendPlan | null,
@@ -29,6 +30,7 @@ export function holdWarnings(
     ...(bends?.unfit ?? []).map(unfitWarning),
     ...(bends === null ? [] : tooNearToStart(bends)),
     ...inBends,
+    ...engagedWhileOn(source, replayed),
     ...replayed.flatMap(rulesOf),
     ...replayed.flatMap(notResumed),
   ];
@@ -47,6 +49,47 @@ function unfitWarning({ from, to, reason, bends, lowestSpeed }: UnfitPlace): War
     to,
   };
 }
+
+/**
+ * Engaging while hold is on sets the speed of the moment, which nobody who takes it for switching on expects. Behind a
+ * grip that is let go for it, it is how a higher speed is set.
+ */
+function engagedWhileOn(source: CaseDocument['source'], replayed: readonly Replayed[]): Warning[] {
+  const found = new Map<number, { readonly event: HoldEvent; readonly names: string[] }>();
+  for (const { name, plan, result } of replayed) {
+    if (plan.controller.kind === 'locked') continue;
+    const acts = (plan.rider.acts ?? []).filter(({ reason }) => reason === 'written');
+    let on = plan.hold.starts !== 'by_hand';
+    let before: HoldEvent | undefined;
+    for (const event of result.holdEvents ?? []) {
+      const letGo = before?.kind === 'override_ended' && before.time === event.time;
+      if (event.kind === 'engaged' && on && !letGo) {
+        const act = acts.findLastIndex(({ at, does }) => does.kind === 'engage' && isBehind(event, at));
+        const told = found.get(act);
+        if (told === undefined) found.set(act, { event, names: [name] });
+        else if (!told.names.includes(name)) told.names.push(name);
+      }
+      if (event.kind === 'ended') on = false;
+      else if (event.kind === 'engaged' || event.kind === 'resumed') on = true;
+      before = event;
+    }
+  }
+  return [...found].slice(0, TOLD).map(([act, { event, names }], i): Warning => {
+    const { distance, setSpeed } = event;
+    const others = names.length > 1 ? ` (so do ${names.slice(1).join(', ')}, each its own)` : '';
+    const more = i === TOLD - 1 && found.size > TOLD ? ` So ${found.size - TOLD} times more.` : '';
+    return {
+      code: 'engage-while-on',
+      message: `Hold was on already at ${atKm(distance)}: ${names[0]} takes the speed of the moment, ${inKmh(setSpeed)}, as its set speed${others}.${more}`,
+      ...(act < 0 ? {} : { place: placeOf(source, ['rider', 'does', act]) }),
+      from: distance,
+      to: distance,
+    };
+  });
+}
+
+const isBehind = ({ time, distance }: HoldEvent, at: RoutePlace): boolean =>
+  'time' in at ? at.time <= time + 1e-9 : at.distance <= distance + 1e-9;
 
 /** Braking for a bend cannot begin before the road. */
 function tooNearToStart({ stops, bends }: BendPlan): Warning[] {

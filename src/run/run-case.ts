@@ -26,6 +26,7 @@ import { visitsOfDemand, visitsOfRecord } from '../study/visited-points.ts';
 import type { Vehicle } from '../vehicle/vehicle.ts';
 import { caseNameOf } from './case-name.ts';
 import { checkFullSeries, checkSize } from './check-size.ts';
+import { faultWarnings } from './fault-warnings.ts';
 import { holdWarnings } from './hold-warnings.ts';
 import { InputLog, type Reader } from './input-log.ts';
 import { loggedRidesOf, rideResults, rideWarnings } from './logged-rides.ts';
@@ -161,6 +162,7 @@ export function runWithoutMatrix({
       ...prepared.warnings,
       ...rideWarnings(loggedRides, road),
       ...holdWarnings(document, prepared.bends, replayed),
+      ...faultWarnings(document, replayed),
       ...overrideWarnings(document, overrides),
       ...timesNotReached(document, ride, results),
     ],

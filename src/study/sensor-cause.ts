@@ -20,7 +20,8 @@ export interface SensorFinding {
 
 const NO_FAULT: SensorFinding = { cause: null, words: '' };
 
-const SHOWED: Readonly<Record<SensorFault['shows'], string>> = {
+/** What the sensor did, to follow on `The speed sensor`. */
+export const SHOWED: Readonly<Record<SensorFault['shows'], string>> = {
   nothing: 'showed no speed',
   last_value: 'went on showing its last speed',
   double: 'showed twice the speed',
@@ -69,7 +70,7 @@ function faultStretch(result: LoopResult, fault: SensorFault): Stretch {
 }
 
 /** When a run came to a place [s]; infinite where it did not. */
-function timeInRun({ bins, endDistance }: LoopResult, distance: number): number {
+export function timeInRun({ bins, endDistance }: LoopResult, distance: number): number {
   if (distance >= endDistance || bins.size === 0) return Number.POSITIVE_INFINITY;
   const i = Math.min(intervalOf(bins.edge, distance), bins.size - 1);
   const share = (distance - bins.edge[i]) / (bins.edge[i + 1] - bins.edge[i]);

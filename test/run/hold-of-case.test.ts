@@ -254,6 +254,65 @@ test('a sensor that shows twice the speed ends hold where it is not believed', (
   expect(told(result, 'hold-ended')[0]!.message).toContain('changed faster than a vehicle can');
 });
 
+test('a sensor that stands still leaves its trace, with what came of it, whether a rule ended hold or not', () => {
+  const climb = [
+    { length_m: 1500, grade_pct: 0 },
+    { length_m: 1500, grade_pct: 4 },
+  ];
+  const faults = [{ at_km: 1.49, speed_sensor: 'last_value', for_s: 3 }];
+  const quiet = run({ track: { profile: climb }, faults });
+  const [warning, ...more] = told(quiet, 'sensor-fault');
+  expect(more).toEqual([]);
+  expect(warning!.place).toMatchObject({ key: 'faults.0' });
+  expect(warning!.message).toMatch(
+    /^The speed sensor went on showing its last speed for 3\.0 s from km 1\.49 on: pi, no rule ended hold, error from [−-]\d+\.\d km\/h to .* up to 10 s behind its end\.$/,
+  );
+  // Held up to here, a 4 % climb takes 0.39 m/s2 for 3 s.
+  const lowest = Number(/from [−-](\d+\.\d)/.exec(warning!.message)![1]);
+  expectClose(lowest, 3.6 * 0.39 * 2.4, 1.5);
+  const loud = run({
+    faults: [{ at_km: 1.5, speed_sensor: 'double', for_s: 3 }],
+    supervisor: { believable_m_s2: 20 },
+  });
+  expect(told(loud, 'sensor-fault')[0]!.message).toMatch(
+    /: pi, a rule ended hold 0\.\d s later, the measured/,
+  );
+  expect(told(run({}), 'sensor-fault')).toEqual([]);
+});
+
+test('engaging a hold that is on is told with its act and the speed that it takes', () => {
+  const does = [
+    { at_km: 0.5, act: 'tap', taps: 2 },
+    { at_km: 0.51, act: 'engage' },
+  ];
+  const [warning, ...more] = told(run({ rider: { does } }), 'engage-while-on');
+  expect(more).toEqual([]);
+  expect(warning!.message).toMatch(
+    /^Hold was on already at km 0\.51: pi takes the speed of the moment, 60\.\d km\/h, as its set speed\.$/,
+  );
+  expect(warning!.place).toMatchObject({ key: 'rider.does.1' });
+  const silent = [
+    { hold: { set_speed_kmh: 60, starts: 'by_hand' }, rider: { does: [{ at_km: 1, act: 'engage' }] } },
+    {
+      rider: {
+        does: [
+          { at_km: 0.5, act: 'cancel' },
+          { at_km: 1, act: 'engage' },
+        ],
+      },
+    },
+    {
+      rider: {
+        does: [
+          { at_km: 0.5, act: 'override', throttle_pct: 90, for_s: 60 },
+          { at_km: 0.6, act: 'engage' },
+        ],
+      },
+    },
+  ];
+  for (const wish of silent) expect(told(run(wish), 'engage-while-on')).toEqual([]);
+});
+
 test('a requirement of the transients is judged, also in the combinations of a matrix', () => {
   const result = run({
     hold: { set_speed_kmh: 60, starts: 'by_hand' },
