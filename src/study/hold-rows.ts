@@ -51,7 +51,7 @@ export const HOLD_ROWS: readonly FigureRow[] = [
     'Settling of a resume',
     's',
     'event',
-    'From a resume to where the speed stays within 1 km/h of the set speed for as long as it is followed (to what comes next on the way, to where the drive cannot hold the set speed, or for a minute), 3 s at least; the longest of all. A speed that passes through and leaves again has not settled. Also for holdable, all of the road.',
+    'From a resume to the start of the first 3 s within 1 km/h of the set speed, as a recovery is measured; the longest of all. A slow loop may pass through so and go on: how far is in the overshoot. Also for holdable, all of the road.',
     resumeSettling,
   ),
   row(

@@ -6,7 +6,7 @@ import type { HoldOff } from './hold-off.ts';
 export const NEXT_CAME = 'what came next on the way came first';
 
 /** Said of one that had the time and the road for it. */
-export const NOT_SETTLED = 'it did not come to stay within 1 km/h in a minute';
+export const NOT_SETTLED = 'it was not within 1 km/h for 3 s in a minute';
 
 /** Said of one that the drive had no force for. */
 export const OUT_OF_RANGE = 'the drive could not hold the set speed there';
@@ -28,8 +28,8 @@ export interface HoldMeasure {
   readonly lowest: Figure;
   readonly highest: Figure;
   /**
-   * From the event to where the speed is within 1 km/h of the set speed for the rest of that time, 3 s of it at least
-   * [s]. Not the first 3 s within, at which a recovery is over: a slow loop passes through the band and goes on.
+   * From the event to the start of the first 3 s within 1 km/h of the set speed [s], as a recovery is measured: the next
+   * hill counts for nothing in it. A slow loop may pass so and go on: that is in the extremes.
    */
   readonly settling: Figure;
   /** Greatest |da/dt| in that time, over 0.2 s [m/s3]; of an end by the rider's brake, for a bend too, none: it is the rider's. */

@@ -91,22 +91,16 @@ function stepAt(
     : { none: NOT_BACK };
 }
 
-/**
- * Sample from which the speed stays within 1 km/h of the set speed up to a time [s] or the end of the series, for 3 s at
- * least: those may end behind that time. A slow loop that crosses the band and leaves it again has not settled there.
- */
+/** Sample at which the first 3 s within 1 km/h of the set speed begin, up to a time [s]; null: none do. */
 function settledAt(series: FullSeries, first: number, latest: number): number | null {
   let inside = -1;
   for (let i = first; i < series.size; i++) {
-    const time = series.time[i]!;
-    const stayed = inside >= 0 && series.time[i - 1]! - series.time[inside]! >= RECOVERED_FOR - 1e-9;
-    if (time > latest && (inside < 0 || stayed)) break;
+    if (inside < 0 && series.time[i]! > latest) return null;
     if (Math.abs(errorAt(series, i)) > RECOVERED_BAND) inside = -1;
     else if (inside < 0) inside = i;
-    if (time > latest && inside < 0) break;
+    if (inside >= 0 && series.time[i]! - series.time[inside]! >= RECOVERED_FOR - 1e-9) return inside;
   }
-  if (inside < 0) return null;
-  return series.time[series.size - 1]! - series.time[inside]! >= RECOVERED_FOR - 1e-9 ? inside : null;
+  return null;
 }
 
 /** Sample from which the extremes count, or why none does. */

@@ -62,5 +62,5 @@ function wayWords({ lowest, highest }: HoldMeasure): string {
 
 const settlingWords = (settling: Figure): string =>
   typeof settling === 'number'
-    ? `within 1 km/h of it from ${inSeconds(settling)} on`
+    ? `first within 1 km/h of it for 3 s after ${inSeconds(settling)}`
     : `its settling is not seen: ${settling.none}`;

@@ -57,7 +57,7 @@ describe('figures of the hold', () => {
   });
 
   it('put a resume that never settled before all others', () => {
-    const never = { none: 'it did not come to stay within 1 km/h in a minute' };
+    const never = { none: 'it was not within 1 km/h for 3 s in a minute' };
     const measures = [
       measure('resumed', 100, { settling: 50 }),
       measure('resumed', 900, { settling: never }),

@@ -93,7 +93,7 @@ export const HOLD_EVENT_COLUMNS: readonly Column<Rows>[] = [
   {
     name: 'settling_s',
     decimals: 3,
-    about: 'to where it stays within 1 km/h of the set speed for as long as it is followed, 3 s at least',
+    about: 'to the start of the first 3 s within 1 km/h of the set speed, which it may leave again',
     value: followed(({ settling }) => settling, same),
   },
   {
