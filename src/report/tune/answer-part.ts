@@ -7,7 +7,7 @@ import type { TunedView, TuneView } from './tune-view.ts';
 const LOOKS: Readonly<Record<TuneAnswer['standing'], { mark: string; words: string; look: string }>> = {
   found: { mark: '✓', words: 'Gains that keep the bound', look: 'good' },
   kept: { mark: '✓', words: 'The case has them already', look: 'good' },
-  misses: { mark: '✗', words: 'They keep the bound, but miss requirements of the case', look: 'bad' },
+  misses: { mark: '✗', words: 'Gains that keep the bound, but miss requirements of the case', look: 'bad' },
   exceeded: { mark: '✗', words: 'A candidate of the case exceeds the bound', look: 'bad' },
   nothing: { mark: '✗', words: 'Nothing to propose', look: 'bad' },
 };

@@ -105,3 +105,24 @@ test('a candidate of the case that costs less than every proposal is kept', () =
   expect(standing).toBe('kept');
   expect(sentence).toMatch(/^Keep shipped: no proposal costs less/);
 });
+
+test('the cautions know whether the rider brakes for bends', () => {
+  const blind = renderTune(result, { units: 'kmh' });
+  expect(blind).toContain('lean, bends or traffic');
+  const braking = renderTune(
+    {
+      ...result,
+      bends: {
+        riding: { maxLateral: 2, deceleration: 2, resumesAfter: 2, shortestHold: 2 },
+        resolution: 30,
+        bends: [],
+        stops: [],
+        unfit: [],
+        written: [],
+      },
+    },
+    { units: 'kmh' },
+  );
+  expect(braking).not.toContain('lean, bends or traffic');
+  expect(braking).toContain('Bends are known by the radius of the track alone');
+});
