@@ -130,7 +130,8 @@ it('is ridden by hand through the bends of the pass, and hold comes back behind 
   const [{ result, figures }] = candidates as [(typeof candidates)[number]];
   expect(result.status).toBe('completed');
   expect(figures.command_step_pct).toBeLessThan(0.5);
-  expect(figures.engage_sag_kmh).toBeLessThan(0.1);
+  // What the road does in the minute behind it counts as well.
+  expect(figures.engage_sag_kmh).toBeLessThan(1);
   const ends = result.holdEvents!.filter(({ kind, cause }) => kind === 'ended' && cause === 'bend');
   expect(ends).toHaveLength(bends!.stops.length);
   // The stops on the climb, each braked for at 2 m/s2, at no more than 2.5 m/s2 to the side.
