@@ -121,6 +121,9 @@ section>p:has(+figure),section>p:has(+.scroll),section>p:has(+.keys),section>p:h
 #spread .pair{grid-template-columns:1fr 1fr;gap:0 6mm}
 #force:has(tbody tr:nth-child(2)) svg{max-height:96mm}
 #lanes svg:not(.key){max-height:222mm}
+#rider .cards{display:grid;grid-template-columns:1fr 1fr;gap:3.5mm}
+#rider .card{display:block;margin:0}
+#rider .keys{break-after:auto}
 .card p,.card ul{font-size:7.6pt;line-height:1.35}
 .card table{font-size:7pt}
 .keys,.keyline,.facts{break-after:avoid}
